@@ -1,0 +1,1 @@
+"""What a person meets: files, units, words, terminal, calc sheet and (only in app.gui) the window."""

@@ -1,0 +1,1 @@
+"""Everything that imports Qt; nothing outside this package does."""

@@ -1,0 +1,85 @@
+"""What is being looked at: the shown state, the cursor and the selection; not part of the document.
+
+The rooms of the window do not know each other; they share this one object, set its values and hear its signals.
+Lives in the GUI thread.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from typing import Literal
+
+from PySide6.QtCore import QObject, Signal
+
+ShownKind = Literal["combination", "case", "unloaded", "envelope"]
+
+
+@dataclass(frozen=True, slots=True)
+class Shown:
+    """What the strips show: one state by kind and name, or the envelope (its name is then empty)."""
+
+    kind: ShownKind
+    name: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Cursor:
+    """The cursor's place: x in m along the member; at a joint `side` says which side is read out first."""
+
+    x: float
+    side: Literal["left", "right"] = "right"
+
+
+@dataclass(frozen=True, slots=True)
+class Selection:
+    """Selected segments and joints, by index along the chain."""
+
+    segments: frozenset[int] = field(default_factory=frozenset)
+    joints: frozenset[int] = field(default_factory=frozenset)
+
+
+class View(QObject):
+    """Holds the three values; a setter emits only when the value changes, so an echo ends by itself."""
+
+    shown_changed = Signal(object)  # Shown
+    cursor_changed = Signal(object)  # Cursor or None
+    selection_changed = Signal(object)  # Selection
+
+    def __init__(self, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self._shown = Shown("envelope")
+        self._cursor: Cursor | None = None
+        self._selection = Selection()
+
+    @property
+    def shown(self) -> Shown:
+        """The state the strips show."""
+        return self._shown
+
+    def set_shown(self, shown: Shown) -> None:
+        """Show another state."""
+        if shown != self._shown:
+            self._shown = shown
+            self.shown_changed.emit(shown)
+
+    @property
+    def cursor(self) -> Cursor | None:
+        """The cursor, or None while it is nowhere."""
+        return self._cursor
+
+    def set_cursor(self, cursor: Cursor | None) -> None:
+        """Move the cursor."""
+        if cursor != self._cursor:
+            self._cursor = cursor
+            self.cursor_changed.emit(cursor)
+
+    @property
+    def selection(self) -> Selection:
+        """What is selected."""
+        return self._selection
+
+    def set_selection(self, selection: Selection) -> None:
+        """Select segments and joints, replacing what was selected."""
+        if selection != self._selection:
+            self._selection = selection
+            self.selection_changed.emit(selection)

@@ -1,0 +1,1 @@
+"""The calc sheet: content as data, figures as SVG, layout and PDF by Typst."""

@@ -1,0 +1,38 @@
+"""The member as arrays: what the solver passes work on, packed once from the records of a project.
+
+n segments, n + 1 joints, m states (combinations and load cases). A quantity that is linear along a segment is
+held as its values at start and end; the area, at most quadratic, as its three Bernstein
+coefficients, which are all positive for every section, so that nothing cancels where a taper runs thin.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from solver.arrays import BoolArray, FloatArray
+
+
+@dataclass(frozen=True, slots=True)
+class Chain:
+    """The member without loads. Shapes by segment (n, …) or by joint (n + 1)."""
+
+    length: FloatArray  # (n,) m
+    modulus: FloatArray  # (n,) Pa
+    area: FloatArray  # (n, 3) m², Bernstein coefficients on the segment's 0…1
+    bedding: FloatArray  # (n, 2) N/m², at start and end
+    expansion: FloatArray  # (n,) 1/K
+    density: FloatArray  # (n,) kg/m³
+    fixed: BoolArray  # (n + 1,) joints held at their movement
+    spring: FloatArray  # (n + 1,) N/m, 0 where there is none
+
+
+@dataclass(frozen=True, slots=True)
+class Loads:
+    """The loads of m states, already factored and summed. Shapes (m, …)."""
+
+    distributed: FloatArray  # (m, n, 2) N/m along +x, at start and end; without self-weight
+    gravity: FloatArray  # (m,) m/s² along +x; acts on density times area
+    temperature: FloatArray  # (m, n, 2) K above the stress-free state, at start and end
+    lack_of_fit: FloatArray  # (m, n) m, positive for a part made too long
+    joint_force: FloatArray  # (m, n + 1) N along +x
+    movement: FloatArray  # (m, n + 1) m along +x, 0 where there is no support

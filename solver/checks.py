@@ -1,0 +1,39 @@
+"""Checks as data: what was compared with what, where, and whether it passes; worded in `app.phrases`.
+
+A check that could not be made is listed as not made, with the reason, and never counts as passed.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal, TypeAlias
+
+CheckKind: TypeAlias = Literal["tension", "compression", "displacement", "relative", "reaction"]
+Status: TypeAlias = Literal["pass", "fail", "not_made"]
+Verdict: TypeAlias = Literal["pass", "fail", "incomplete"]
+Reason: TypeAlias = Literal["no_allowable_tension", "no_allowable_compression", "no_support"]
+
+PASS_MARGIN = 1e-9  # a utilisation up to 1 + this passes: room for rounding, not for judgement
+NO_STRESS = 1e-9  # |σ| up to this part of the state's largest |σ| has no sign and is not checked
+
+
+@dataclass(frozen=True, slots=True)
+class Check:
+    """One comparison. `segment` or `joint` or `start` and `end` (the file's `from` and `to`) say of what.
+
+    `position` is in m along the member (None for `relative`), `value` and `limit` are in SI and never
+    negative except that `value` of a stress, displacement or reaction keeps its sign. None where not made.
+    """
+
+    check: CheckKind
+    combination: str
+    status: Status
+    segment: str | None = None
+    joint: str | None = None
+    start: str | None = None
+    end: str | None = None
+    position: float | None = None
+    value: float | None = None
+    limit: float | None = None
+    utilisation: float | None = None
+    reason: Reason | None = None

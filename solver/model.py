@@ -1,0 +1,299 @@
+"""The project: frozen msgspec structs with exactly the keys of the project file, in its order.
+
+A key that was left out stays left out when the project is saved, one that was written stays, even where it
+says what the default says. So a default is a value that knows it was never written (`AbsentNumber` and its
+kin): it computes and compares like the plain value, and only the writer asks. The rejected alternatives were
+`value | None` in every field, which every reader would have to resolve again, and dropping written defaults,
+which changes a file that nobody edited. `*_end` keys are different: absent means "follows the start", so they
+are UNSET and resolved by `end_of`.
+
+The constraints here (sizes greater than zero, and so on) are those of a single value; what concerns several
+(marks, inner below outer) is in `validation`.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Annotated, Final, Literal, TypeAlias
+
+from msgspec import UNSET, Meta, Struct, UnsetType, field
+
+FORMAT: Final = "barwright-project"
+VERSION: Final = 1
+
+
+class AbsentNumber(float):
+    """A number the file does not hold; computes and compares as its default."""
+
+    __slots__ = ()
+
+
+class AbsentText(str):
+    """A text the file does not hold; reads as its default."""
+
+    __slots__ = ()
+
+
+class AbsentList(tuple[()]):
+    """A list the file does not hold; empty."""
+
+    __slots__ = ()
+
+
+class AbsentTable(dict[str, float]):
+    """A table of numbers the file does not hold; empty."""
+
+    __slots__ = ()
+
+
+# Factories rather than shared default objects: msgspec's JSON Schema cannot show a default of our own type.
+def absent_zero() -> float:
+    """A 0 that was never written."""
+    return AbsentNumber(0.0)
+
+
+def absent_one() -> float:
+    """A 1 that was never written."""
+    return AbsentNumber(1.0)
+
+
+def absent_text() -> str:
+    """An empty text that was never written."""
+    return AbsentText("")
+
+
+def absent_list() -> tuple[()]:
+    """An empty list that was never written."""
+    return AbsentList()
+
+
+def absent_table() -> Mapping[str, float]:
+    """An empty table that was never written."""
+    return AbsentTable()
+
+
+Number: TypeAlias = float
+Positive: TypeAlias = Annotated[float, Meta(gt=0)]
+NotNegative: TypeAlias = Annotated[float, Meta(ge=0)]
+Name: TypeAlias = Annotated[str, Meta(min_length=1)]
+
+
+class Record(Struct, frozen=True, forbid_unknown_fields=True):
+    """Base of everything that stands in a project file."""
+
+
+class Section(Record, frozen=True, kw_only=True, tag_field="shape"):
+    """A cross-section; each dimension varies linearly from its start to its `_end`."""
+
+
+class AreaSection(Section, frozen=True, kw_only=True, tag="area"):
+    """A section known by its area (m²) alone, with the second moment (m⁴) where stability needs it."""
+
+    area: Positive
+    area_end: Positive | UnsetType = UNSET
+    second_moment: Positive | UnsetType = UNSET
+    second_moment_end: Positive | UnsetType = UNSET
+
+
+class RoundSection(Section, frozen=True, kw_only=True, tag="round"):
+    """A solid round bar, diameters in m."""
+
+    diameter: Positive
+    diameter_end: Positive | UnsetType = UNSET
+
+
+class TubeSection(Section, frozen=True, kw_only=True, tag="tube"):
+    """A round tube, outside and inside diameters in m; inner is below outer everywhere."""
+
+    outer: Positive
+    outer_end: Positive | UnsetType = UNSET
+    inner: NotNegative
+    inner_end: NotNegative | UnsetType = UNSET
+
+
+class RectangleSection(Section, frozen=True, kw_only=True, tag="rectangle"):
+    """A solid rectangle, width and depth in m; the drawing shows the depth."""
+
+    width: Positive
+    width_end: Positive | UnsetType = UNSET
+    depth: Positive
+    depth_end: Positive | UnsetType = UNSET
+
+
+AnySection: TypeAlias = AreaSection | RoundSection | TubeSection | RectangleSection
+
+
+def end_of(start: float, end: float | UnsetType) -> float:
+    """The value at the segment's end: an absent `*_end` follows its start."""
+    return start if isinstance(end, UnsetType) else end
+
+
+class Material(Record, frozen=True):
+    """Modulus in Pa, expansion in 1/K, density in kg/m³, allowables in Pa (both positive)."""
+
+    name: Name
+    modulus: Positive
+    expansion: Number = field(default_factory=absent_zero)
+    density: NotNegative = field(default_factory=absent_zero)
+    allowable_tension: Positive | UnsetType = UNSET
+    allowable_compression: Positive | UnsetType = UNSET
+
+
+class Support(Record, frozen=True, kw_only=True, tag_field="kind"):
+    """What holds a joint along the axis."""
+
+
+class FixedSupport(Support, frozen=True, kw_only=True, tag="fixed"):
+    """Holds the joint at its movement (0 without one)."""
+
+
+class SpringSupport(Support, frozen=True, kw_only=True, tag="spring"):
+    """Pulls the joint back with `stiffness` (N/m) times its displacement from the support's movement."""
+
+    stiffness: Positive
+
+
+class StopSupport(Support, frozen=True, kw_only=True, tag="stop"):
+    """One-sided: blocks motion beyond `clearance` (m) to its side; rigid without a stiffness (N/m)."""
+
+    side: Literal["plus", "minus"]
+    clearance: NotNegative
+    stiffness: Positive | UnsetType = UNSET
+
+
+AnySupport: TypeAlias = FixedSupport | SpringSupport | StopSupport
+
+
+class Joint(Record, frozen=True):
+    """An end of a segment; free where it has no support."""
+
+    mark: Name
+    support: AnySupport | UnsetType = UNSET
+
+
+class Segment(Record, frozen=True):
+    """A part between two joints: length in m, bedding in N/m² (force per length and displacement)."""
+
+    mark: Name
+    length: Positive
+    material: Name
+    section: AnySection
+    bedding: NotNegative = field(default_factory=absent_zero)
+    bedding_end: NotNegative | UnsetType = UNSET
+
+
+class SegmentLoad(Record, frozen=True):
+    """Load on a segment: N/m along +x and K above the stress-free state, both linear; lack of fit in m."""
+
+    segment: Name
+    load_start: Number = field(default_factory=absent_zero)
+    load_end: Number | UnsetType = UNSET
+    temperature_start: Number = field(default_factory=absent_zero)
+    temperature_end: Number | UnsetType = UNSET
+    lack_of_fit: Number = field(default_factory=absent_zero)
+
+
+class JointLoad(Record, frozen=True):
+    """Load at a joint: force in N along +x, movement of its support in m along +x."""
+
+    joint: Name
+    force: Number = field(default_factory=absent_zero)
+    movement: Number = field(default_factory=absent_zero)
+
+
+class LoadCase(Record, frozen=True):
+    """Loads that come together; gravity is the component of the acceleration along +x, in m/s²."""
+
+    name: Name
+    gravity: Number = field(default_factory=absent_zero)
+    segment_loads: tuple[SegmentLoad, ...] = field(default_factory=absent_list)
+    joint_loads: tuple[JointLoad, ...] = field(default_factory=absent_list)
+
+
+class Combination(Record, frozen=True):
+    """Factors by load case (a case not named counts 0); `allowable_factor` scales allowable stresses only."""
+
+    name: Name
+    factors: Mapping[str, Number] = field(default_factory=absent_table)
+    allowable_factor: Positive = field(default_factory=absent_one)
+
+
+class DisplacementLimit(Record, frozen=True):
+    """|u| at a joint stays within `limit` (m)."""
+
+    joint: Name
+    limit: Positive
+
+
+class RelativeLimit(Record, frozen=True, rename={"start": "from", "end": "to"}):
+    """|u_to − u_from| stays within `limit` (m); the file's keys are `from` and `to`."""
+
+    start: Name
+    end: Name
+    limit: Positive
+
+
+class ReactionLimit(Record, frozen=True):
+    """|R| of the support at a joint stays within `limit` (N)."""
+
+    joint: Name
+    limit: Positive
+
+
+class Limits(Record, frozen=True):
+    """What the member must keep within beside the allowable stresses."""
+
+    displacement: tuple[DisplacementLimit, ...] = field(default_factory=absent_list)
+    relative: tuple[RelativeLimit, ...] = field(default_factory=absent_list)
+    reaction: tuple[ReactionLimit, ...] = field(default_factory=absent_list)
+
+
+class SheetTexts(Record, frozen=True):
+    """Texts of the calc sheet's title block."""
+
+    job: str = field(default_factory=absent_text)
+    author: str = field(default_factory=absent_text)
+    checker: str = field(default_factory=absent_text)
+    revision: str = field(default_factory=absent_text)
+    date: str = field(default_factory=absent_text)
+
+
+UnitSystemName: TypeAlias = Literal["mm-N-MPa", "mm-kN-MPa", "m-kN-MPa", "in-lbf-psi", "in-kip-ksi"]
+Orientation: TypeAlias = Literal["horizontal", "vertical"]
+
+DEFAULT_UNITS: Final[UnitSystemName] = "mm-N-MPa"
+DEFAULT_ORIENTATION: Final[Orientation] = "horizontal"
+
+
+class Display(Record, frozen=True):
+    """How the project is shown; never changes what it stores. Read it through the properties."""
+
+    units: UnitSystemName | UnsetType = UNSET
+    orientation: Orientation | UnsetType = UNSET
+
+    @property
+    def unit_system(self) -> UnitSystemName:
+        """The display unit system, `mm-N-MPa` where the file names none."""
+        return self.units or DEFAULT_UNITS
+
+    @property
+    def layout(self) -> Orientation:
+        """The orientation of the drawing, horizontal where the file names none."""
+        return self.orientation or DEFAULT_ORIENTATION
+
+
+class Project(Record, frozen=True, kw_only=True):
+    """A whole project; n segments in a chain between n + 1 joints."""
+
+    format: Literal["barwright-project"]
+    version: Literal[1]
+    title: str = field(default_factory=absent_text)
+    notes: str = field(default_factory=absent_text)
+    sheet: SheetTexts = field(default_factory=SheetTexts)
+    display: Display = field(default_factory=Display)
+    materials: tuple[Material, ...] = field(default_factory=absent_list)
+    joints: tuple[Joint, ...]
+    segments: tuple[Segment, ...]
+    load_cases: tuple[LoadCase, ...] = field(default_factory=absent_list)
+    combinations: tuple[Combination, ...] = field(default_factory=absent_list)
+    limits: Limits = field(default_factory=Limits)

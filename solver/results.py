@@ -1,0 +1,76 @@
+"""Results: everything a screen, a terminal or a sheet shows, computed once from the solution, frozen.
+
+The fields along the member stay piecewise polynomials; `solver.fields` evaluates them where they are wanted.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal, TypeAlias
+
+from solver.arrays import FloatArray
+from solver.chain import Chain, Loads
+from solver.checks import Check, Verdict
+from solver.model import Project
+from solver.solution import Solution
+
+StateKind: TypeAlias = Literal["combination", "case", "unloaded"]
+
+
+@dataclass(frozen=True, slots=True)
+class State:
+    """One loading of the member: a combination, a case alone, or no load at all.
+
+    `checked` says whether it takes part in checks, verdict and envelope: combinations do, and cases
+    only where there are no combinations.
+    """
+
+    name: str
+    kind: StateKind
+    factors: dict[str, float]
+    allowable_factor: float
+    checked: bool
+
+
+@dataclass(frozen=True, slots=True)
+class SegmentResults:
+    """Extremes by state and segment, all (m, n); NaN in `utilisation` and its place where no check was made.
+
+    `*_at` are positions x along the member in m, the smallest x among places within 1e-9 of the extreme.
+    """
+
+    force_start: FloatArray
+    force_end: FloatArray
+    force_max: FloatArray
+    force_min: FloatArray
+    stress_max: FloatArray
+    stress_max_at: FloatArray
+    stress_min: FloatArray
+    stress_min_at: FloatArray
+    utilisation: FloatArray
+    utilisation_at: FloatArray
+    force_bound: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
+class Results:
+    """The results of one project: states first the checked ones, in the project's order, then the others."""
+
+    project: Project
+    chain: Chain
+    loads: Loads
+    states: tuple[State, ...]
+    solution: Solution
+    position: FloatArray  # (n + 1,) x of the joints, m
+    segments: SegmentResults
+    checks: tuple[Check, ...]
+    verdict: Verdict
+    governing: Check | None
+    mass: float  # kg
+
+    def state_index(self, name: str, kind: StateKind | None = None) -> int:
+        """The index of the state called `name`; KeyError where there is none."""
+        for index, state in enumerate(self.states):
+            if state.name == name and kind in (None, state.kind):
+                return index
+        raise KeyError(name)
