@@ -1,6 +1,6 @@
 """What is being looked at: the shown state, the cursor and the selection; not part of the document.
 
-The rooms of the window do not know each other; they share this one object, set its values and hear its signals.
+The rooms of the window do not know each other; they share this one object, set its values, hear its signals.
 Lives in the GUI thread.
 """
 
