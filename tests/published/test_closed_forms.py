@@ -1,7 +1,7 @@
 """Closed forms from handbooks and textbooks, evaluated from their formula and not from pasted digits.
 
-Tolerances: the solver promises 1e-9 in the energy norm; displacements at a point and forces are held to 1e-9 of
-the largest value along the member, which a single wrong coefficient misses by many orders.
+Tolerances: the solver promises 1e-9 in the energy norm; displacements at a point and forces are held to 1e-9
+of the largest value along the member, which a single wrong coefficient misses by many orders.
 """
 
 from __future__ import annotations
@@ -27,7 +27,7 @@ def displacement_at(results, x):
 
 
 def test_hanging_prismatic_bar_under_its_own_weight():
-    # Timoshenko, Strength of Materials, Part I, on bars under their own weight: δ = ρ g L² / 2E (from memory).
+    # Timoshenko, Strength of Materials, Part I, bars under their own weight: δ = ρ g L² / 2E (from memory).
     length, density = 40.0, 7850.0
     project = member([Part(length, area(3e-4), density=density)], {0: FIXED}, [case(gravity=GRAVITY)])
     results = solve(project)
@@ -126,7 +126,7 @@ def test_heated_bar_between_springs():
 
 @pytest.mark.parametrize("mu_length", [0.05, 0.5, 1.0, 3.0, 8.0, 15.0, 30.0])
 def test_bedded_bar_along_its_length(mu_length):
-    # Axially loaded pile in an elastic, linear medium, free tip (Randolph and Wroth, 1978, for a rigid-tip-free
+    # Axially loaded pile in an elastic, linear medium, free tip (Randolph and Wroth, 1978, for a
     # pile; formula from memory, and it satisfies E A u'' = k u, N(0) = −P, N(L) = 0 term by term):
     # u(x) = P cosh μ(L−x) / (E A μ sinh μL), N(x) = −P sinh μ(L−x) / sinh μL.
     length, section, load = 12.0, 0.02, 9e5

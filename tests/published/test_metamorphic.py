@@ -218,7 +218,7 @@ def test_betti_reciprocity_between_two_joint_forces(data, k, p, q):
 
 
 def simpson_energy(chain, load, u_of, du_of, spring, shown=2001):
-    """Π of mechanics by fine Simpson quadrature in plain numpy, a road that shares nothing with the solver."""
+    """Π by fine Simpson quadrature in plain numpy, a road that shares nothing with the solver."""
     from scipy.integrate import simpson
 
     total, x0 = 0.0, 0.0
@@ -268,21 +268,23 @@ def test_potential_energy_is_lowest_at_the_solution(data, seed):
 
     rng = np.random.default_rng(seed)
     amplitude = np.abs(solution.joint_displacement).max() + 1e-9
-    total = joints[-1]
     for _ in range(5):
-        waves = rng.normal(size=4) * amplitude * 0.1
-        number = np.arange(4)[:, None] + 0.5
-        # vanishes at the fixed far end, free at the start: admissible
-        v = lambda x, w=waves: w @ np.cos(number * np.pi * x / total)  # noqa: E731
-        dv = lambda x, w=waves: w @ (-number * np.pi / total * np.sin(number * np.pi * x / total))  # noqa: E731
-        other = simpson_energy(
-            chain,
-            load,
-            lambda i, x: u_of(i, x) + v(x),  # noqa: B023
-            lambda i, x: du_of(i, x) + dv(x),  # noqa: B023
-            spring,
-        )
+        other = simpson_energy(chain, load, *disturbed(u_of, du_of, joints[-1], amplitude, rng), spring)
         assert other > lowest - 1e-9 * scale
+
+
+def disturbed(u_of, du_of, total, amplitude, rng):
+    """The solution plus waves that vanish at the fixed far end: admissible, and no longer the solution."""
+    waves = rng.normal(size=4) * amplitude * 0.1
+    number = (np.arange(4)[:, None] + 0.5) * np.pi / total
+
+    def u(i, x):
+        return u_of(i, x) + waves @ np.cos(number * x)
+
+    def du(i, x):
+        return du_of(i, x) - waves @ (number * np.sin(number * x))
+
+    return u, du
 
 
 def _evaluate(solution, joints, segment, x, *, derivative):
