@@ -36,6 +36,7 @@ class State:
 class SegmentResults:
     """Extremes by state and segment, all (m, n); NaN in `utilisation` and its place where no check was made.
 
+    Exact: taken among ends and stationary points, not among samples.
     `*_at` are positions x along the member in m, the smallest x among places within 1e-9 of the extreme.
     """
 
@@ -50,6 +51,12 @@ class SegmentResults:
     utilisation: FloatArray
     utilisation_at: FloatArray
     force_bound: FloatArray
+    force_max_at: FloatArray
+    force_min_at: FloatArray
+    displacement_max: FloatArray
+    displacement_max_at: FloatArray
+    displacement_min: FloatArray
+    displacement_min_at: FloatArray
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,0 +1,154 @@
+"""From the records of a project to the arrays that the solver works on.
+
+The only place before the results that loops over records.
+Each load case is summed into arrays of its own first; the states are then one matrix of factors times the
+cases, so that any number of combinations costs one product.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable
+
+import numpy as np
+
+from solver.arrays import BoolArray, FloatArray, frozen
+from solver.chain import Chain, Loads
+from solver.model import FixedSupport, Project, Segment, SegmentLoad, SpringSupport, end_of
+from solver.results import State
+from solver.sections import area_coefficients
+
+UNLOADED = "Unloaded"
+
+
+def pack(project: Project, *, cases: bool = True) -> tuple[Chain, Loads, tuple[State, ...]]:
+    """The chain, the loads of every state, and the states; the project must be well formed.
+
+    Checked states come first. With `cases`, the load cases follow the combinations, unchecked.
+    A number too large for floating point comes out infinite or NaN: the caller looks.
+    """
+    states = states_of(project, cases=cases)
+    with np.errstate(over="ignore", invalid="ignore"):
+        return pack_chain(project), pack_loads(project, states), states
+
+
+def states_of(project: Project, *, cases: bool = True) -> tuple[State, ...]:
+    """The states of a project: combinations, else cases alone, else the unloaded member."""
+    if not project.combinations:
+        return _alone(project, checked=True) or (State(UNLOADED, "unloaded", {}, 1.0, True),)
+    combined = tuple(
+        State(c.name, "combination", dict(c.factors), float(c.allowable_factor), True)
+        for c in project.combinations
+    )
+    return combined + (_alone(project, checked=False) if cases else ())
+
+
+def _alone(project: Project, *, checked: bool) -> tuple[State, ...]:
+    return tuple(State(case.name, "case", {case.name: 1.0}, 1.0, checked) for case in project.load_cases)
+
+
+def pack_chain(project: Project) -> Chain:
+    """The member as arrays."""
+    segments = project.segments
+    by_name = {material.name: material for material in project.materials}
+    materials = [by_name[segment.material] for segment in segments]
+    fixed, spring = _supports(project)
+    return Chain(
+        length=_array(segment.length for segment in segments),
+        modulus=_array(material.modulus for material in materials),
+        area=_array(_areas(segments)).reshape(-1, 3),
+        bedding=_array(_beddings(segments)).reshape(-1, 2),
+        expansion=_array(material.expansion for material in materials),
+        density=_array(material.density for material in materials),
+        fixed=fixed,
+        spring=spring,
+    )
+
+
+def _array(values: Iterable[float]) -> FloatArray:
+    return frozen(np.fromiter(values, dtype=np.float64))
+
+
+def _areas(segments: tuple[Segment, ...]) -> Iterable[float]:
+    for segment in segments:
+        yield from area_coefficients(segment.section)
+
+
+def _beddings(segments: tuple[Segment, ...]) -> Iterable[float]:
+    for segment in segments:
+        yield segment.bedding
+        yield end_of(segment.bedding, segment.bedding_end)
+
+
+def _supports(project: Project) -> tuple[BoolArray, FloatArray]:
+    fixed = np.zeros(len(project.joints), dtype=np.bool_)
+    spring = np.zeros(len(project.joints))
+    for index, joint in enumerate(project.joints):
+        if isinstance(joint.support, FixedSupport):
+            fixed[index] = True
+        elif isinstance(joint.support, SpringSupport):
+            spring[index] = joint.support.stiffness
+    fixed.setflags(write=False)
+    return fixed, frozen(spring)
+
+
+def pack_loads(project: Project, states: tuple[State, ...]) -> Loads:
+    """The loads of the states, factored and summed."""
+    factors = _factors(project, states)
+    on_segments = _combined(factors, _segment_values(project))
+    on_joints = _combined(factors, _joint_values(project))
+    gravity = _array(case.gravity for case in project.load_cases)
+    return Loads(
+        distributed=_part(on_segments[..., 0:2]),
+        gravity=_part(factors @ gravity),
+        temperature=_part(on_segments[..., 2:4]),
+        lack_of_fit=_part(on_segments[..., 4]),
+        joint_force=_part(on_joints[..., 0]),
+        movement=_part(on_joints[..., 1]),
+    )
+
+
+def _part(array: FloatArray) -> FloatArray:
+    return frozen(np.ascontiguousarray(array))
+
+
+def _factors(project: Project, states: tuple[State, ...]) -> FloatArray:
+    """The factor of each case in each state, (m, c)."""
+    names = [case.name for case in project.load_cases]
+    return np.array([[state.factors.get(name, 0.0) for name in names] for state in states], dtype=np.float64)
+
+
+def _combined(factors: FloatArray, values: FloatArray) -> FloatArray:
+    """Factors (m, c) times values (c, …), giving (m, …)."""
+    flat = factors @ values.reshape(len(values), math.prod(values.shape[1:]))
+    return flat.reshape(len(factors), *values.shape[1:])
+
+
+def _segment_values(project: Project) -> FloatArray:
+    """By case and segment: load and temperature at start and end, lack of fit; (c, n, 5)."""
+    index_of = {segment.mark: index for index, segment in enumerate(project.segments)}
+    values = np.zeros((len(project.load_cases), len(project.segments), 5))
+    for case, row in zip(project.load_cases, values, strict=True):
+        loads = case.segment_loads
+        places = np.fromiter((index_of[load.segment] for load in loads), dtype=np.intp, count=len(loads))
+        np.add.at(row, places, _array(_numbers(loads)).reshape(-1, 5))
+    return values
+
+
+def _numbers(loads: tuple[SegmentLoad, ...]) -> Iterable[float]:
+    for load in loads:
+        yield load.load_start
+        yield end_of(load.load_start, load.load_end)
+        yield load.temperature_start
+        yield end_of(load.temperature_start, load.temperature_end)
+        yield load.lack_of_fit
+
+
+def _joint_values(project: Project) -> FloatArray:
+    """By case and joint: force and movement; (c, n + 1, 2)."""
+    index_of = {joint.mark: index for index, joint in enumerate(project.joints)}
+    values = np.zeros((len(project.load_cases), len(project.joints), 2))
+    for case, row in zip(project.load_cases, values, strict=True):
+        for load in case.joint_loads:
+            row[index_of[load.joint]] += (load.force, load.movement)
+    return values
