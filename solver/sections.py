@@ -57,7 +57,7 @@ def _tube(section: TubeSection) -> Coefficients:
     both, both_end = outer + inner, outer_end + inner_end
     quarter = math.pi / 4
     middle = 0.5 * (wall * both_end + wall_end * both)
-    return quarter * wall * both, quarter * middle, quarter * wall_end * both_end
+    return quarter * (wall * both), quarter * middle, quarter * (wall_end * both_end)
 
 
 def _rectangle(section: RectangleSection) -> Coefficients:

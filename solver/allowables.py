@@ -1,0 +1,87 @@
+"""Stresses against allowable stresses, as arrays over all states and segments.
+
+A stress has a sign, and so a check, where it exceeds `NO_STRESS` of the largest in its state.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from msgspec import UnsetType
+
+from solver.arrays import BoolArray, FloatArray, frozen
+from solver.checks import NO_STRESS
+from solver.extremes import SAME, Extremes
+from solver.model import Project
+from solver.results import State
+
+
+@dataclass(frozen=True, slots=True)
+class Allowables:
+    """Allowable stresses times the state's factor, Pa, (m, n); NaN where the material has none."""
+
+    tension: FloatArray
+    compression: FloatArray
+
+
+def allowables(project: Project, states: tuple[State, ...]) -> Allowables:
+    """The allowable stresses of every segment in every state."""
+    by_name = {material.name: material for material in project.materials}
+    materials = [by_name[segment.material] for segment in project.segments]
+    factor = np.array([[state.allowable_factor] for state in states])
+    tension = np.array([_or_nan(material.allowable_tension) for material in materials])
+    compression = np.array([_or_nan(material.allowable_compression) for material in materials])
+    return Allowables(frozen(factor * tension), frozen(factor * compression))
+
+
+def _or_nan(value: float | UnsetType) -> float:
+    return np.nan if isinstance(value, UnsetType) else value
+
+
+def no_stress(largest: FloatArray, smallest: FloatArray) -> FloatArray:
+    """The stress (m,) up to which a state's stress counts as zero, from its extremes (m, n)."""
+    bound: FloatArray = NO_STRESS * np.max(np.maximum(np.abs(largest), np.abs(smallest)), axis=1)
+    return bound
+
+
+@dataclass(frozen=True, slots=True)
+class Side:
+    """Tension or compression compared with its allowable, all (m, n).
+
+    `present` says where there is such a stress at all; `value` keeps its sign; `limit` and `utilisation` are
+    NaN where the material has no such allowable, `utilisation` also where the stress is not present.
+    """
+
+    present: BoolArray
+    value: FloatArray
+    at: FloatArray
+    limit: FloatArray
+    utilisation: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
+class StressChecks:
+    """Both sides, and the larger utilisation with the smallest x that has it; NaN where none was made."""
+
+    tension: Side
+    compression: Side
+    utilisation: FloatArray
+    utilisation_at: FloatArray
+
+
+def check_stresses(stress: Extremes, limits: Allowables) -> StressChecks:
+    """Compare the extremes of stress with the allowables."""
+    zero = no_stress(stress.largest, stress.smallest)[:, np.newaxis]
+    tension = _side(stress.largest > zero, stress.largest, stress.largest_at, limits.tension)
+    compression = _side(-stress.smallest > zero, stress.smallest, stress.smallest_at, limits.compression)
+    largest = np.fmax(tension.utilisation, compression.utilisation)
+    places = [
+        np.where(side.utilisation >= largest * (1.0 - SAME), side.at, np.nan)
+        for side in (tension, compression)
+    ]
+    return StressChecks(tension, compression, frozen(largest), frozen(np.fmin(*places)))
+
+
+def _side(present: BoolArray, value: FloatArray, at: FloatArray, limit: FloatArray) -> Side:
+    return Side(present, value, at, limit, np.where(present, np.abs(value) / limit, np.nan))

@@ -1,0 +1,161 @@
+"""The making of checks: one record for each comparison, in the contract's order, and the verdict over them.
+
+By combination, then along the chain (tension before compression), then the limits on displacement, relative
+displacement and reaction. The numbers come compared from `solver.allowables`; here they get their names.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from dataclasses import dataclass
+from typing import Literal
+
+from msgspec import UnsetType
+
+from solver.allowables import Side, StressChecks
+from solver.arrays import FloatArray
+from solver.checks import PASS_MARGIN, Check, Reason, Status, Verdict
+from solver.model import Project
+from solver.results import State
+from solver.solution import Solution
+
+_MISSING: dict[Literal["tension", "compression"], Reason] = {
+    "tension": "no_allowable_tension",
+    "compression": "no_allowable_compression",
+}
+
+
+@dataclass(frozen=True, slots=True)
+class Checker:
+    """Makes the checks of one project from what was computed."""
+
+    project: Project
+    states: tuple[State, ...]
+    solution: Solution
+    position: FloatArray
+    stress: StressChecks
+
+    def checks(self) -> tuple[Check, ...]:
+        """All checks of the checked states, in order."""
+        joints = {joint.mark: index for index, joint in enumerate(self.project.joints)}
+        return tuple(
+            check
+            for index, state in enumerate(self.states)
+            if state.checked
+            for check in self._of_state(index, state.name, joints)
+        )
+
+    def _of_state(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
+        yield from self._stresses(index, name)
+        yield from self._displacements(index, name, joints)
+        yield from self._relatives(index, name, joints)
+        yield from self._reactions(index, name, joints)
+
+    def _stresses(self, index: int, name: str) -> Iterator[Check]:
+        marks = [segment.mark for segment in self.project.segments]
+        tension = _compared(self.stress.tension, index)
+        compression = _compared(self.stress.compression, index)
+        for mark, pulled, pushed in zip(marks, tension, compression, strict=True):
+            if pulled.present:
+                yield pulled.check("tension", name, mark)
+            if pushed.present:
+                yield pushed.check("compression", name, mark)
+
+    def _displacements(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
+        for limit in self.project.limits.displacement:
+            place = joints[limit.joint]
+            value = float(self.solution.joint_displacement[index, place])
+            yield self._at_joint("displacement", name, place, value, limit.limit)
+
+    def _relatives(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
+        for limit in self.project.limits.relative:
+            moved = self.solution.joint_displacement[index]
+            value = abs(float(moved[joints[limit.end]] - moved[joints[limit.start]]))
+            utilisation = value / limit.limit
+            yield Check(
+                check="relative",
+                combination=name,
+                status=_status(utilisation),
+                start=limit.start,
+                end=limit.end,
+                value=value,
+                limit=float(limit.limit),
+                utilisation=utilisation,
+            )
+
+    def _reactions(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
+        for limit in self.project.limits.reaction:
+            place = joints[limit.joint]
+            value = float(self.solution.reaction[index, place])
+            if isinstance(self.project.joints[place].support, UnsetType):
+                position = float(self.position[place])
+                yield Check(
+                    "reaction", name, "not_made", joint=limit.joint, position=position, reason="no_support"
+                )
+            else:
+                yield self._at_joint("reaction", name, place, value, limit.limit)
+
+    def _at_joint(
+        self, kind: Literal["displacement", "reaction"], name: str, place: int, value: float, limit: float
+    ) -> Check:
+        utilisation = abs(value) / limit
+        return Check(
+            check=kind,
+            combination=name,
+            status=_status(utilisation),
+            joint=self.project.joints[place].mark,
+            position=float(self.position[place]),
+            value=value,
+            limit=float(limit),
+            utilisation=utilisation,
+        )
+
+
+@dataclass(frozen=True, slots=True)
+class _Compared:
+    """A segment's stress of one sign against its allowable; `limit` is NaN where there is none."""
+
+    present: bool
+    position: float
+    value: float
+    limit: float
+    utilisation: float
+
+    def check(self, kind: Literal["tension", "compression"], name: str, mark: str) -> Check:
+        """The record."""
+        if math.isnan(self.limit):
+            return Check(kind, name, "not_made", segment=mark, position=self.position, reason=_MISSING[kind])
+        return Check(
+            check=kind,
+            combination=name,
+            status=_status(self.utilisation),
+            segment=mark,
+            position=self.position,
+            value=self.value,
+            limit=self.limit,
+            utilisation=self.utilisation,
+        )
+
+
+def _compared(side: Side, index: int) -> Iterator[_Compared]:
+    arrays = (side.present, side.at, side.value, side.limit, side.utilisation)
+    return map(_Compared, *(array[index].tolist() for array in arrays))
+
+
+def _status(utilisation: float) -> Status:
+    return "pass" if utilisation <= 1.0 + PASS_MARGIN else "fail"
+
+
+def verdict_of(checks: tuple[Check, ...]) -> Verdict:
+    """`fail` if any check fails; else `incomplete` if any was not made, or none exists; else `pass`."""
+    statuses = {check.status for check in checks}
+    if "fail" in statuses:
+        return "fail"
+    return "pass" if statuses == {"pass"} else "incomplete"
+
+
+def governing_of(checks: tuple[Check, ...]) -> Check | None:
+    """The made check of largest utilisation, the first of equals; None where none was made."""
+    made = [check for check in checks if check.utilisation is not None]
+    return max(made, key=lambda check: check.utilisation or 0.0, default=None)

@@ -1,0 +1,118 @@
+"""A project in, its results out: the one door through which window, terminal and sheet get their numbers."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+import numpy as np
+
+from solver.allowables import StressChecks, allowables, check_stresses
+from solver.arrays import FloatArray, frozen
+from solver.axial import solve_axial
+from solver.chain import Chain
+from solver.checking import Checker, governing_of, verdict_of
+from solver.errors import Cancelled, NotSolvable, OutOfRange
+from solver.extremes import ExtremeFinder, Extremes
+from solver.faults import Fault
+from solver.model import Project
+from solver.packing import pack, states_of
+from solver.results import Results, SegmentResults, State
+from solver.validation import unsolvable
+
+
+def never() -> bool:
+    """The answer to "cancelled?" of a caller who never cancels."""
+    return False
+
+
+def solve(
+    project: Project,
+    *,
+    cases: bool = True,
+    tolerance: float = 1e-9,
+    cancelled: Callable[[], bool] = never,
+) -> Results:
+    """The results of a well-formed project, for every combination and, with `cases`, every case alone.
+
+    `tolerance` is what every state's relative error bound must meet. `cancelled` is asked between stages.
+    Raises an `InputError` (`NotSolvable`, `StiffnessContrast`, `BoundNotMet`, `OutOfRange`) or `Cancelled`.
+    """
+    _refuse_unsolvable(project)
+    chain, loads, states = pack(project, cases=cases)
+    _refuse_out_of_range(chain, states)
+    names = tuple(state.name for state in states)
+    solution = solve_axial(chain, loads, names=names, tolerance=tolerance, cancelled=cancelled)
+    position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
+    finder = ExtremeFinder(chain, solution, position)
+    stress = finder.stress()
+    stress_checks = check_stresses(stress, allowables(project, states))
+    segments = _segment_results(finder, stress, stress_checks, solution.force_bound)
+    if cancelled():
+        raise Cancelled
+    checks = Checker(project, states, solution, position, stress_checks).checks()
+    return Results(
+        project=project,
+        chain=chain,
+        loads=loads,
+        states=states,
+        solution=solution,
+        position=position,
+        segments=segments,
+        checks=checks,
+        verdict=verdict_of(checks),
+        governing=governing_of(checks),
+        mass=_mass(chain),
+    )
+
+
+def _refuse_unsolvable(project: Project) -> None:
+    faults = unsolvable(project)
+    if faults:
+        raise NotSolvable(faults, _states_with(project, faults))
+
+
+def _states_with(project: Project, faults: tuple[Fault, ...]) -> tuple[str, ...]:
+    """The checked states that the faults concern: those that use the faults' cases, else all of them."""
+    states = states_of(project, cases=False)
+    cases = {fault.facts.get("case") for fault in faults}
+    if None in cases:
+        return tuple(state.name for state in states)
+    names = tuple(state.name for state in states if any(state.factors.get(str(case)) for case in cases))
+    return names or tuple(map(str, cases))
+
+
+def _refuse_out_of_range(chain: Chain, states: tuple[State, ...]) -> None:
+    """Stiffnesses that floating point cannot hold; what follows from loads is the solver's to see."""
+    stiffness = chain.modulus[:, np.newaxis] * chain.area
+    if not (np.all(np.isfinite(stiffness)) and np.all(stiffness > 0.0)):
+        raise OutOfRange(states[0].name, "stiffness")
+
+
+def _segment_results(
+    finder: ExtremeFinder, stress: Extremes, checks: StressChecks, force_bound: FloatArray
+) -> SegmentResults:
+    force, displacement = finder.force(), finder.displacement()
+    return SegmentResults(
+        force_start=force.start,
+        force_end=force.end,
+        force_max=force.largest,
+        force_min=force.smallest,
+        stress_max=stress.largest,
+        stress_max_at=stress.largest_at,
+        stress_min=stress.smallest,
+        stress_min_at=stress.smallest_at,
+        utilisation=checks.utilisation,
+        utilisation_at=checks.utilisation_at,
+        force_bound=force_bound,
+        force_max_at=force.largest_at,
+        force_min_at=force.smallest_at,
+        displacement_max=displacement.largest,
+        displacement_max_at=displacement.largest_at,
+        displacement_min=displacement.smallest,
+        displacement_min_at=displacement.smallest_at,
+    )
+
+
+def _mass(chain: Chain) -> float:
+    """∫ ρ A dx in kg; the mean of an area is that of its Bernstein coefficients."""
+    return float(np.sum(chain.density * chain.length * np.mean(chain.area, axis=-1)))
