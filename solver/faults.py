@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import json
+import re
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Literal, TypeAlias
@@ -31,6 +33,10 @@ Rule: TypeAlias = Literal[
     "inner_not_below_outer",  # facts: inner, outer, end (start or end)
     "duplicate_limit",  # facts: joint, first
     "same_joint",  # facts: joint
+    # of an edit that cannot be made
+    "not_inside",  # facts: length, value: a split must lie inside the segment
+    "cannot_join",  # facts: differ (material, shape) or carries (support, load, limit) of the joint between
+    "several_records",  # facts: count: the cell stands for more than one load record
     # of solvability (place is the part of the model; facts name the combination where it matters)
     "not_held",
     "stop_not_yet",  # facts: joint
@@ -45,3 +51,27 @@ class Fault:
     place: str
     rule: Rule
     facts: Mapping[str, object] = field(default_factory=dict)
+
+
+Place: TypeAlias = tuple[str | int, ...]
+
+_PLAIN_KEY = re.compile(r"[^\W\d]\w*")
+
+
+def place_text(place: Place) -> str:
+    """The place as a path: `segments[2].section.diameter`; keys that are no plain words stand in ["…"]."""
+    parts = [_step_text(step) for step in place]
+    return "".join(parts).removeprefix(".")
+
+
+def _step_text(step: str | int) -> str:
+    if isinstance(step, int):
+        return f"[{step}]"
+    if _PLAIN_KEY.fullmatch(step):
+        return f".{step}"
+    return f"[{json.dumps(printable(step), ensure_ascii=False)}]"
+
+
+def printable(text: str) -> str:
+    """The text with lone surrogates, which no UTF-8 can hold, spelled out."""
+    return text.encode("utf-8", "backslashreplace").decode("utf-8")

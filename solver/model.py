@@ -2,7 +2,9 @@
 
 A key that was left out stays left out when the project is saved, one that was written stays, even where it
 says what the default says. So a default is a value that knows it was never written (`AbsentNumber` and its
-kin): it computes and compares like the plain value, and only the writer asks. The rejected alternatives were
+kin): it computes and compares like the plain value, and only the writer asks. For a whole record (`sheet`,
+`display`, `limits`) it is one object (`ABSENT_SHEET` and so on) that the writer knows by identity; replacing
+anything in it makes another object, which is written. The rejected alternatives were
 `value | None` in every field, which every reader would have to resolve again, and dropping written defaults,
 which changes a file that nobody edited. `*_end` keys are different: absent means "follows the start", so they
 are UNSET and resolved by `end_of`.
@@ -248,6 +250,14 @@ class Limits(Record, frozen=True):
     reaction: tuple[ReactionLimit, ...] = field(default_factory=absent_list)
 
 
+ABSENT_LIMITS: Final = Limits()
+
+
+def absent_limits() -> Limits:
+    """Limits that were never written."""
+    return ABSENT_LIMITS
+
+
 class SheetTexts(Record, frozen=True):
     """Texts of the calc sheet's title block."""
 
@@ -256,6 +266,14 @@ class SheetTexts(Record, frozen=True):
     checker: str = field(default_factory=absent_text)
     revision: str = field(default_factory=absent_text)
     date: str = field(default_factory=absent_text)
+
+
+ABSENT_SHEET: Final = SheetTexts()
+
+
+def absent_sheet() -> SheetTexts:
+    """Sheet texts that were never written."""
+    return ABSENT_SHEET
 
 
 UnitSystemName: TypeAlias = Literal["mm-N-MPa", "mm-kN-MPa", "m-kN-MPa", "in-lbf-psi", "in-kip-ksi"]
@@ -282,6 +300,14 @@ class Display(Record, frozen=True):
         return self.orientation or DEFAULT_ORIENTATION
 
 
+ABSENT_DISPLAY: Final = Display()
+
+
+def absent_display() -> Display:
+    """A display that was never written."""
+    return ABSENT_DISPLAY
+
+
 class Project(Record, frozen=True, kw_only=True):
     """A whole project; n segments in a chain between n + 1 joints."""
 
@@ -289,11 +315,11 @@ class Project(Record, frozen=True, kw_only=True):
     version: Literal[1]
     title: str = field(default_factory=absent_text)
     notes: str = field(default_factory=absent_text)
-    sheet: SheetTexts = field(default_factory=SheetTexts)
-    display: Display = field(default_factory=Display)
+    sheet: SheetTexts = field(default_factory=absent_sheet)
+    display: Display = field(default_factory=absent_display)
     materials: tuple[Material, ...] = field(default_factory=absent_list)
     joints: tuple[Joint, ...]
     segments: tuple[Segment, ...]
     load_cases: tuple[LoadCase, ...] = field(default_factory=absent_list)
     combinations: tuple[Combination, ...] = field(default_factory=absent_list)
-    limits: Limits = field(default_factory=Limits)
+    limits: Limits = field(default_factory=absent_limits)

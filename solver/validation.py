@@ -1,0 +1,212 @@
+"""What makes a project well formed as a whole, and what keeps a well-formed one from being solved.
+
+The rules of a single value (types, sizes greater than zero) are in the model's types; here is what concerns
+records together: marks, references, the number of joints, inner below outer. A project read from a faulty
+file holds None where a part could not be read: such parts are passed over, so that one fault neither hides
+the others nor brings forth new ones.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from functools import cache
+from itertools import chain
+from typing import Any
+
+from msgspec import UNSET
+
+from solver.faults import Fault, Place, place_text
+from solver.model import (
+    FixedSupport,
+    LoadCase,
+    Project,
+    SpringSupport,
+    StopSupport,
+    TubeSection,
+    end_of,
+)
+from solver.nearest import nearest
+
+
+def faults(project: Project) -> tuple[Fault, ...]:
+    """All faults of records together; empty for a well-formed project."""
+    rules = (_count_faults, _mark_faults, _reference_faults, _tube_faults, _limit_faults)
+    return tuple(chain.from_iterable(rule(project) for rule in rules))
+
+
+def unsolvable(project: Project) -> tuple[Fault, ...]:
+    """What keeps a well-formed project from being solved: not held, a stop, a movement without support."""
+    return (*_hold_faults(project), *_stop_faults(project), *_movement_faults(project))
+
+
+# --- records together ---
+
+
+def _records(value: object) -> Iterator[tuple[int, Any]]:
+    """The records of a list with their index; nothing where the list could not be read."""
+    return iter(enumerate(value)) if isinstance(value, tuple) else iter(())
+
+
+def _text(record: object, key: str) -> str | None:
+    value = getattr(record, key, None)
+    return value if isinstance(value, str) else None
+
+
+def _count_faults(project: Project) -> Iterator[Fault]:
+    segments, joints = project.segments, project.joints
+    if isinstance(segments, tuple) and not segments:
+        yield Fault("segments", "too_few_segments")
+    elif isinstance(segments, tuple) and isinstance(joints, tuple) and len(joints) != len(segments) + 1:
+        yield Fault("joints", "joint_count", {"joints": len(joints), "segments": len(segments)})
+
+
+_NAMED = (
+    ("materials", "name"),
+    ("joints", "mark"),
+    ("segments", "mark"),
+    ("load_cases", "name"),
+    ("combinations", "name"),
+)
+
+
+def _mark_faults(project: Project) -> Iterator[Fault]:
+    for name, key in _NAMED:
+        yield from _duplicates(name, key, getattr(project, name))
+
+
+def _duplicates(name: str, key: str, records: Sequence[object]) -> Iterator[Fault]:
+    first: dict[str, int] = {}
+    for index, record in _records(records):
+        mark = _text(record, key)
+        if mark is None:
+            continue
+        if first.setdefault(mark, index) != index:
+            facts = {"value": mark, "first": place_text((name, first[mark], key))}
+            yield Fault(place_text((name, index, key)), "duplicate_mark", facts)
+
+
+# --- references ---
+
+_KINDS = {
+    "segment": ("segments", "mark"),
+    "joint": ("joints", "mark"),
+    "material": ("materials", "name"),
+    "load case": ("load_cases", "name"),
+}
+_Reference = tuple[str, Place, object]
+
+
+def _reference_faults(project: Project) -> Iterator[Fault]:
+    names = {kind: _names(getattr(project, field), key) for kind, (field, key) in _KINDS.items()}
+    suggest = cache(lambda kind, value: nearest(value, names[kind] or ()))
+    for kind, place, value in _references(project):
+        known = names[kind]
+        if known is not None and isinstance(value, str) and value not in known:
+            facts = {"kind": kind, "value": value, "nearest": suggest(kind, value)}
+            yield Fault(place_text(place), "unknown_reference", facts)
+
+
+def _names(records: object, key: str) -> dict[str, None] | None:
+    """The names in their order; None where one could not be read, since any reference may mean that one."""
+    if not isinstance(records, tuple):
+        return None
+    names = [_text(record, key) for record in records]
+    return None if None in names else dict.fromkeys(name for name in names if name is not None)
+
+
+def _references(project: Project) -> Iterator[_Reference]:
+    """Everything that names another record: of what kind, where, and the name."""
+    for index, segment in _records(project.segments):
+        yield "material", ("segments", index, "material"), _text(segment, "material")
+    for index, case in _records(project.load_cases):
+        yield from _load_references(case, ("load_cases", index))
+    for index, combination in _records(project.combinations):
+        factors = getattr(combination, "factors", None)
+        for name in factors if isinstance(factors, dict) else ():
+            yield "load case", ("combinations", index, "factors", name), name
+    yield from _limit_references(project)
+
+
+def _load_references(case: LoadCase, place: Place) -> Iterator[_Reference]:
+    for key, kind in (("segment_loads", "segment"), ("joint_loads", "joint")):
+        for index, load in _records(getattr(case, key, None)):
+            yield kind, (*place, key, index, kind), _text(load, kind)
+
+
+def _limit_references(project: Project) -> Iterator[_Reference]:
+    for key, ends in (("displacement", ("joint",)), ("relative", ("start", "end")), ("reaction", ("joint",))):
+        for index, limit in _records(getattr(project.limits, key, None)):
+            for end in ends:
+                file_key = {"start": "from", "end": "to"}.get(end, end)
+                yield "joint", ("limits", key, index, file_key), _text(limit, end)
+
+
+# --- sections and limits ---
+
+
+def _tube_faults(project: Project) -> Iterator[Fault]:
+    for index, segment in _records(project.segments):
+        section = getattr(segment, "section", None)
+        if isinstance(section, TubeSection):
+            yield from _wall_faults(section, ("segments", index, "section"))
+
+
+def _wall_faults(tube: TubeSection, place: Place) -> Iterator[Fault]:
+    """Both dimensions are linear, so inner is below outer everywhere when it is at both ends."""
+    yield from _wall_fault(tube.inner, tube.outer, "start", (*place, "inner"))
+    if (tube.inner_end, tube.outer_end) != (UNSET, UNSET):
+        key = "outer_end" if tube.inner_end is UNSET else "inner_end"
+        inner, outer = end_of(tube.inner, tube.inner_end), end_of(tube.outer, tube.outer_end)
+        yield from _wall_fault(inner, outer, "end", (*place, key))
+
+
+def _wall_fault(inner: object, outer: object, end: str, place: Place) -> Iterator[Fault]:
+    if isinstance(inner, float) and isinstance(outer, float) and not inner < outer:
+        facts = {"inner": inner, "outer": outer, "end": end}
+        yield Fault(place_text(place), "inner_not_below_outer", facts)
+
+
+def _limit_faults(project: Project) -> Iterator[Fault]:
+    for key in ("displacement", "reaction"):
+        yield from _duplicate_limits(key, getattr(project.limits, key, None))
+    for index, limit in _records(getattr(project.limits, "relative", None)):
+        start, end = _text(limit, "start"), _text(limit, "end")
+        if start is not None and start == end:
+            yield Fault(place_text(("limits", "relative", index, "to")), "same_joint", {"joint": end})
+
+
+def _duplicate_limits(key: str, limits: object) -> Iterator[Fault]:
+    first: dict[str, int] = {}
+    for index, limit in _records(limits):
+        joint = _text(limit, "joint")
+        if joint is not None and first.setdefault(joint, index) != index:
+            facts = {"joint": joint, "first": place_text(("limits", key, first[joint], "joint"))}
+            yield Fault(place_text(("limits", key, index, "joint")), "duplicate_limit", facts)
+
+
+# --- solvability ---
+
+
+def _hold_faults(project: Project) -> Iterator[Fault]:
+    """Held by any support or bedding; whether a stop holds depends on the loads, so it counts here."""
+    held = (FixedSupport, SpringSupport, StopSupport)
+    supported = any(isinstance(joint.support, held) for joint in project.joints)
+    bedded = any(s.bedding > 0 or end_of(s.bedding, s.bedding_end) > 0 for s in project.segments)
+    if not (supported or bedded):
+        yield Fault("joints", "not_held")
+
+
+def _stop_faults(project: Project) -> Iterator[Fault]:
+    for index, joint in enumerate(project.joints):
+        if isinstance(joint.support, StopSupport):
+            yield Fault(place_text(("joints", index, "support")), "stop_not_yet", {"joint": joint.mark})
+
+
+def _movement_faults(project: Project) -> Iterator[Fault]:
+    free = {joint.mark for joint in project.joints if joint.support is UNSET}
+    for index, case in enumerate(project.load_cases):
+        for number, load in enumerate(case.joint_loads):
+            if load.movement != 0 and load.joint in free:
+                place = ("load_cases", index, "joint_loads", number, "movement")
+                facts = {"joint": load.joint, "case": case.name}
+                yield Fault(place_text(place), "movement_without_support", facts)
