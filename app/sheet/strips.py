@@ -1,0 +1,220 @@
+"""Strips of u, N, σ and utilisation on one position axis, with the allowable band and the over-limit hatching.
+
+Tension is blue and marked +, compression orange and marked −; what exceeds its limit is hatched as well as
+coloured. The curves come from `solver.fields`; only where they cross zero or the limit is interpolated here,
+between neighbouring points of the drawing.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass, field
+from typing import Final
+
+import numpy as np
+
+from app.sheet import colours
+from app.sheet.ruler import Ruler
+from app.sheet.svg import Canvas, Ink
+from app.units import Quantity, format_value, symbol
+from app.words import tr
+from solver.arrays import FloatArray
+from solver.checks import PASS_MARGIN
+from solver.model import UnitSystemName
+
+DEPTH_ACROSS: Final = {"displacement": 44.0, "force": 56.0, "stress": 70.0, "utilisation": 44.0}
+DEPTH_UPRIGHT: Final = 96.0
+_SIZE = 7.5
+_LIMIT = Ink(colours.INK, 0.7, dashes="4 2.5")
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """An allowable as steps along the member: places in m, values in SI, NaN where there is none."""
+
+    x: FloatArray
+    value: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
+class Strip:
+    """One strip: curves (k,) over x in SI; `over` (k,) is the utilisation that decides on the hatching."""
+
+    name: str
+    kind: str
+    quantity: Quantity
+    x: FloatArray
+    curves: tuple[FloatArray, ...]
+    signed: bool = True
+    over: FloatArray | None = None
+    limits: tuple[Limit, ...] = field(default_factory=tuple)
+
+
+@dataclass(frozen=True, slots=True)
+class _Scale:
+    """The strip's place: baseline of the value 0 and points per SI unit, both aside from the axis."""
+
+    low: float  # aside, the edge of the box where the smallest value lies
+    high: float
+    zero: float
+    factor: float
+
+    def aside(self, value: float) -> float:
+        return self.zero + value * self.factor
+
+
+def draw_strip(
+    canvas: Canvas, ruler: Ruler, strip: Strip, start: float, depth: float, joints: FloatArray, units: UnitSystemName
+) -> None:
+    """Draw a strip in the box between `start` and `start + depth` aside; joints (n + 1,) in m."""
+    scale, least, most = _scale(strip, start, depth)
+    _draw_frame(canvas, ruler, scale, joints)
+    for curve in strip.curves:
+        _draw_curve(canvas, ruler, strip, scale, curve)
+    canvas.path(ruler.points([(0.0, scale.zero), (ruler.extent, scale.zero)]), Ink(colours.INK, 0.7))
+    for limit in strip.limits:
+        _draw_limit(canvas, ruler, scale, limit)
+    _draw_words(canvas, ruler, strip, scale, (least, most), units)
+
+
+def _scale(strip: Strip, start: float, depth: float) -> tuple[_Scale, float, float]:
+    """The scale, and the smallest and largest value of the curves."""
+    values = np.concatenate([c[np.isfinite(c)] for c in strip.curves] or [np.zeros(1)])
+    least, most = (float(values.min()), float(values.max())) if values.size else (0.0, 0.0)
+    largest = max(abs(least), abs(most))
+    bounds = [v for limit in strip.limits for v in limit.value[np.isfinite(limit.value)].tolist()]
+    near = [v for v in bounds if abs(v) <= 8 * largest or not largest]
+    low, high = min(0.0, least, *near), max(0.0, most, *near)
+    if high - low <= 1e-12 * largest or high == low:
+        low, high = low - 1.0, high + 1.0
+    inner = depth - 10.0
+    factor = inner / (high - low)
+    return _Scale(start, start + depth, start + 5 - low * factor, factor), least, most
+
+
+def _draw_frame(canvas: Canvas, ruler: Ruler, scale: _Scale, joints: FloatArray) -> None:
+    corners = [(0.0, scale.low), (ruler.extent, scale.low), (ruler.extent, scale.high), (0.0, scale.high)]
+    canvas.path(ruler.points(corners), Ink(colours.RULE, 0.6, "#FFFFFF"), closed=True)
+    inner = [ruler.along(x) for x in joints[1:-1].tolist()]
+    canvas.lines(
+        ((ruler.point(a, scale.low), ruler.point(a, scale.high)) for a in inner),
+        Ink(colours.RULE, 0.5, dashes="2 2"),
+    )
+
+
+def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, curve: FloatArray) -> None:
+    over = np.zeros_like(curve) if strip.over is None else np.nan_to_num(strip.over)
+    x, value, over = _with_crossings(strip.x, curve, over)
+    if not strip.signed:
+        for low, high in _runs(np.isfinite(value)):
+            _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colours.DISPLACEMENT, "")
+        return
+    for low, high in _runs(np.isfinite(value) & (value >= 0)):
+        _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colours.TENSION, colours.TENSION_FILL)
+    for low, high in _runs(np.isfinite(value) & (value <= 0)):
+        _draw_run(
+            canvas, ruler, scale, (x[low:high], value[low:high]), colours.COMPRESSION, colours.COMPRESSION_FILL
+        )
+    for low, high in _runs(over >= 1 + PASS_MARGIN):
+        _draw_over(canvas, ruler, scale, (x[low:high], value[low:high]))
+    if strip.kind != "utilisation":
+        _draw_signs(canvas, ruler, scale, x, value)
+
+
+def _with_crossings(x: FloatArray, value: FloatArray, over: FloatArray) -> tuple[FloatArray, FloatArray, FloatArray]:
+    """The points with those added where the value crosses 0 or the utilisation crosses its limit."""
+    for watched, level in ((value, 0.0), (over, 1 + PASS_MARGIN)):
+        above = watched - level
+        with np.errstate(invalid="ignore", divide="ignore"):
+            at = np.flatnonzero(above[:-1] * above[1:] < 0)
+            t = above[at] / (above[at] - above[at + 1])
+        x, value, over = (
+            np.insert(a, at + 1, (1 - t) * a[at] + t * a[at + 1]) for a in (x, value, over)
+        )
+        exact = at + 1 + np.arange(len(at))
+        (value if level == 0.0 else over)[exact] = level
+        if level == 0.0:
+            over = np.asarray(over)
+    return x, value, over
+
+
+def _runs(mask: np.ndarray[tuple[int, ...], np.dtype[np.bool_]]) -> list[tuple[int, int]]:
+    """Half-open index ranges where the mask holds, at least two points long."""
+    edges = np.flatnonzero(np.diff(np.r_[False, mask, False].astype(np.int8)))
+    return [(int(a), int(b)) for a, b in zip(edges[::2], edges[1::2], strict=True) if b - a > 1]
+
+
+def _places(ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray]) -> list[tuple[float, float]]:
+    return [(ruler.along(x), scale.aside(v)) for x, v in zip(run[0].tolist(), run[1].tolist(), strict=True)]
+
+
+def _draw_run(
+    canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray], colour: str, fill: str
+) -> None:
+    if not np.any(run[1]) and fill:
+        return
+    places = _places(ruler, scale, run)
+    if fill:
+        closed = [(places[0][0], scale.zero), *places, (places[-1][0], scale.zero)]
+        canvas.path(ruler.points(closed), Ink(fill=fill), closed=True)
+    canvas.path(ruler.points(places), Ink(colour, 1.2))
+
+
+def _draw_over(canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray]) -> None:
+    places = _places(ruler, scale, run)
+    closed = ruler.points([(places[0][0], scale.zero), *places, (places[-1][0], scale.zero)])
+    canvas.hatch(closed, colours.OVER)
+    canvas.path(ruler.points(places), Ink(colours.OVER, 1.6))
+
+
+def _draw_signs(canvas: Canvas, ruler: Ruler, scale: _Scale, x: FloatArray, value: FloatArray) -> None:
+    """+ and − in the middle of each run that has room for it."""
+    for sign, colour, text in ((1, colours.TENSION, "+"), (-1, colours.COMPRESSION, "−")):
+        for low, high in _runs(sign * value > 0):
+            a, b = ruler.along(float(x[low])), ruler.along(float(x[high - 1]))
+            middle = float(np.interp((x[low] + x[high - 1]) / 2, x[low:high], value[low:high]))
+            if b - a > 14 and abs(middle * scale.factor) > 11:
+                px, py = ruler.point((a + b) / 2, scale.zero + middle * scale.factor / 2)
+                canvas.pill((px, py), 9, 9, Ink(fill="#FFFFFF"))
+                canvas.text((px, py + 3.2), text, size=10, fill=colour, bold=True, anchor="middle")
+
+
+def _draw_limit(canvas: Canvas, ruler: Ruler, scale: _Scale, limit: Limit) -> None:
+    for low, high in _runs(np.isfinite(limit.value)):
+        places = _places(ruler, scale, (limit.x[low:high], limit.value[low:high]))
+        inside = all(scale.low - 0.5 <= aside <= scale.high + 0.5 for _, aside in places)
+        if inside:
+            canvas.path(ruler.points(places), _LIMIT)
+
+
+def _draw_words(
+    canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, values: tuple[float, float], units: UnitSystemName
+) -> None:
+    """The name with its unit, and the largest and smallest value at their height."""
+    unit = symbol(strip.quantity, units)
+    texts = [(v, format_value(v, strip.quantity, units, 4)) for v in sorted({values[0], values[1], 0.0})]
+    if ruler.upright:
+        x, y = ruler.point(ruler.extent, scale.low)
+        canvas.text((x, y - 15), f"{strip.name} {unit}".strip(), size=8.5, bold=True)
+        canvas.text((x, y - 5), tr("{least} to {most}").format(least=_read(values[0], strip, units), most=_read(values[1], strip, units)), size=_SIZE, fill=colours.QUIET)
+        return
+    middle = (scale.low + scale.high) / 2
+    x, y = ruler.point(0.0, middle)
+    canvas.text((x - 52, y), strip.name, size=8.5, bold=True, anchor="end" if len(strip.name) > 2 else "start")
+    if unit:
+        canvas.text((x - 52, y + 9), unit, size=_SIZE, fill=colours.QUIET)
+    _draw_heights(canvas, ruler, scale, texts)
+
+
+def _read(value: float, strip: Strip, units: UnitSystemName) -> str:
+    return format_value(value, strip.quantity, units, 4)
+
+
+def _draw_heights(canvas: Canvas, ruler: Ruler, scale: _Scale, texts: Sequence[tuple[float, str]]) -> None:
+    """Values beside the box, those too near to the one of larger size left out."""
+    taken: list[float] = []
+    for value, text in sorted(texts, key=lambda pair: -abs(pair[0])):
+        x, y = ruler.point(0.0, scale.aside(value))
+        if all(abs(y - other) >= _SIZE for other in taken):
+            taken.append(y)
+            canvas.text((x - 4, y + 2.6), text, size=_SIZE, fill=colours.QUIET, anchor="end")
