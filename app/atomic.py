@@ -1,4 +1,4 @@
-"""Writing a file so that a crash or a full disk leaves the old one whole: a new one beside it, then replace."""
+"""Writing a file so that a crash or a full disk leaves the old one whole: write beside it, replace."""
 
 from __future__ import annotations
 

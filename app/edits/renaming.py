@@ -1,0 +1,111 @@
+"""Renaming: a mark or name changes together with every reference to it, in one step."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from typing import Final, TypeVar
+
+from msgspec import Struct, structs
+
+from app.edits.checking import checked
+from solver.faults import Place
+from solver.model import LoadCase, Project
+
+_R = TypeVar("_R", bound=Struct)
+# where limits name joints: the list, and the record's field
+LIMIT_JOINTS: Final = (
+    ("displacement", "joint"),
+    ("relative", "start"),
+    ("relative", "end"),
+    ("reaction", "joint"),
+)
+_Renamer = Callable[[Project, str, str], Project]
+
+
+def rename_segment(project: Project, old: str, new: str) -> Project:
+    """The project with the segment marked `old` marked `new`; EditError where `new` is taken or empty."""
+    cases = _each(project.load_cases, lambda case: _records_of(case, "segment_loads", "segment", old, new))
+    segments = _renamed(project.segments, "mark", old, new)
+    return checked(structs.replace(project, segments=segments, load_cases=cases))
+
+
+def rename_joint(project: Project, old: str, new: str) -> Project:
+    """The project with the joint marked `old` marked `new`, in loads and limits as well."""
+    cases = _each(project.load_cases, lambda case: _records_of(case, "joint_loads", "joint", old, new))
+    limits = project.limits
+    for key, end in (
+        ("displacement", "joint"),
+        ("relative", "start"),
+        ("relative", "end"),
+        ("reaction", "joint"),
+    ):
+        limits = _records_of(limits, key, end, old, new)
+    joints = _renamed(project.joints, "mark", old, new)
+    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits))
+
+
+def rename_material(project: Project, old: str, new: str) -> Project:
+    """The project with the material `old` called `new`, in its segments as well."""
+    segments = _renamed(project.segments, "material", old, new)
+    materials = _renamed(project.materials, "name", old, new)
+    return checked(structs.replace(project, materials=materials, segments=segments))
+
+
+def rename_case(project: Project, old: str, new: str) -> Project:
+    """The project with the load case `old` called `new`, in the combinations' factors as well."""
+    cases = _renamed(project.load_cases, "name", old, new)
+    combinations = project.combinations
+    if any(old in combination.factors for combination in combinations):
+        combinations = tuple(
+            structs.replace(combination, factors=_with_key(combination.factors, old, new))
+            if old in combination.factors
+            else combination
+            for combination in combinations
+        )
+    return checked(structs.replace(project, load_cases=cases, combinations=combinations))
+
+
+def rename_combination(project: Project, old: str, new: str) -> Project:
+    """The project with the combination `old` called `new`."""
+    combinations = _renamed(project.combinations, "name", old, new)
+    return checked(structs.replace(project, combinations=combinations))
+
+
+RENAMERS: Mapping[tuple[str | int, str | int], _Renamer] = {
+    ("segments", "mark"): rename_segment,
+    ("joints", "mark"): rename_joint,
+    ("materials", "name"): rename_material,
+    ("load_cases", "name"): rename_case,
+    ("combinations", "name"): rename_combination,
+}
+
+
+def rename(project: Project, place: Place, new: str) -> Project:
+    """Rename what stands at the place of a mark or name, such as ("joints", 1, "mark")."""
+    record = getattr(project, str(place[0]))[place[1]]
+    return RENAMERS[place[0], place[2]](project, getattr(record, str(place[2])), new)
+
+
+def _renamed(records: tuple[_R, ...], key: str, old: str, new: str) -> tuple[_R, ...]:
+    """The records with `old` replaced by `new` under `key`; the very same list where nothing names `old`."""
+    if all(getattr(record, key) != old for record in records):
+        return records
+    return tuple(
+        structs.replace(record, **{key: new}) if getattr(record, key) == old else record for record in records
+    )
+
+
+def _records_of(holder: _R, field: str, key: str, old: str, new: str) -> _R:
+    """The holder with `old` replaced in the records of one of its lists; itself where nothing names `old`."""
+    records = getattr(holder, field)
+    renamed = _renamed(records, key, old, new)
+    return holder if renamed is records else structs.replace(holder, **{field: renamed})
+
+
+def _each(cases: tuple[LoadCase, ...], change: Callable[[LoadCase], LoadCase]) -> tuple[LoadCase, ...]:
+    return tuple(change(case) for case in cases) if cases else cases
+
+
+def _with_key(factors: Mapping[str, float], old: str, new: str) -> dict[str, float]:
+    """The factors with a key renamed in its place; a key already called `new` stays for the check to find."""
+    return {(new if key == old else key): factor for key, factor in factors.items()}
