@@ -14,15 +14,7 @@ from solver.arrays import BoolArray, FloatArray, frozen
 from solver.checks import NO_STRESS
 from solver.extremes import SAME, Extremes
 from solver.model import Project
-from solver.results import State
-
-
-@dataclass(frozen=True, slots=True)
-class Allowables:
-    """Allowable stresses times the state's factor, Pa, (m, n); NaN where the material has none."""
-
-    tension: FloatArray
-    compression: FloatArray
+from solver.results import Allowables, State
 
 
 def allowables(project: Project, states: tuple[State, ...]) -> Allowables:

@@ -33,6 +33,14 @@ class State:
 
 
 @dataclass(frozen=True, slots=True)
+class Allowables:
+    """Allowable stresses times the state's factor, Pa, both positive, (m, n); NaN where there is none."""
+
+    tension: FloatArray
+    compression: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
 class SegmentResults:
     """Extremes by state and segment, all (m, n); NaN in `utilisation` and its place where no check was made.
 
@@ -70,6 +78,7 @@ class Results:
     solution: Solution
     position: FloatArray  # (n + 1,) x of the joints, m
     segments: SegmentResults
+    allowables: Allowables
     checks: tuple[Check, ...]
     verdict: Verdict
     governing: Check | None

@@ -45,7 +45,8 @@ def solve(
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
     finder = ExtremeFinder(chain, solution, position)
     stress = finder.stress()
-    stress_checks = check_stresses(stress, allowables(project, states))
+    limits = allowables(project, states)
+    stress_checks = check_stresses(stress, limits)
     segments = _segment_results(finder, stress, stress_checks, solution.force_bound)
     if cancelled():
         raise Cancelled
@@ -58,6 +59,7 @@ def solve(
         solution=solution,
         position=position,
         segments=segments,
+        allowables=limits,
         checks=checks,
         verdict=verdict_of(checks),
         governing=governing_of(checks),

@@ -1,0 +1,114 @@
+"""Where curves are drawn through: both sides of every joint, the extremes, and an even filling between.
+
+A place is a segment and a fraction 0…1 of it, so that the two sides of a joint are two places. The number of
+places keeps to a budget, whatever the number of segments: the ends are always there, the extremes as far as
+they fit (those of the whole member always), and what is left is shared out by length.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from solver.arrays import FloatArray, IntArray
+from solver.results import Results, SegmentResults
+
+_CLOSE = 1e-9  # a place nearer than this part of the segment to the one before adds nothing to a curve
+
+
+@dataclass(frozen=True, slots=True)
+class Places:
+    """Places in order along the member, all (k,)."""
+
+    segment: IntArray
+    fraction: FloatArray
+    x: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
+class Peaks:
+    """An extreme quantity by state and segment (m, n): its size, the larger the more extreme, and its x."""
+
+    size: FloatArray
+    x: FloatArray
+
+
+def peaks_of(segments: SegmentResults) -> tuple[Peaks, ...]:
+    """The extremes that a curve must pass through."""
+    return (
+        Peaks(segments.displacement_max, segments.displacement_max_at),
+        Peaks(-segments.displacement_min, segments.displacement_min_at),
+        Peaks(segments.force_max, segments.force_max_at),
+        Peaks(-segments.force_min, segments.force_min_at),
+        Peaks(segments.stress_max, segments.stress_max_at),
+        Peaks(-segments.stress_min, segments.stress_min_at),
+    )
+
+
+def places_for(results: Results, states: IntArray, points: int) -> Places:
+    """Places for curves of these states; about `points` of them, more only where the ends alone take more."""
+    n = len(results.chain.length)
+    peaks = [Peaks(peak.size[states], peak.x[states]) for peak in peaks_of(results.segments)]
+    extremes = _inside(results, [_governing(peak) for peak in peaks])
+    if 2 * n + len(extremes) > points:
+        extremes = _inside(results, [_of_member(peak) for peak in peaks])
+    filling = _filling(results.chain.length, points - 2 * n - len(extremes))
+    segment = np.concatenate([np.repeat(np.arange(n), 2), extremes.segment, filling.segment])
+    fraction = np.concatenate([np.tile([0.0, 1.0], n), extremes.fraction, filling.fraction])
+    return _in_order(results, _Inside(segment, fraction))
+
+
+@dataclass(frozen=True, slots=True)
+class _Inside:
+    """Places in no order."""
+
+    segment: IntArray
+    fraction: FloatArray
+
+    def __len__(self) -> int:
+        return len(self.segment)
+
+
+def _governing(peak: Peaks) -> _Inside:
+    """By segment, the place in the state where the quantity is most extreme; `fraction` is still x."""
+    segment = np.arange(peak.size.shape[1])
+    return _Inside(segment, peak.x[np.argmax(peak.size, axis=0), segment])
+
+
+def _of_member(peak: Peaks) -> _Inside:
+    state, segment = np.unravel_index(np.argmax(peak.size), peak.size.shape)
+    return _Inside(np.array([segment]), peak.x[state, segment].reshape(1))
+
+
+def _inside(results: Results, found: list[_Inside]) -> _Inside:
+    """The places that lie inside their segment, each once, x turned into the fraction."""
+    segment = np.concatenate([f.segment for f in found])
+    x = np.concatenate([f.fraction for f in found])
+    fraction = (x - results.position[segment]) / results.chain.length[segment]
+    inside = (fraction > _CLOSE) & (fraction < 1.0 - _CLOSE)
+    once = np.unique(np.stack([segment[inside], fraction[inside]], axis=1), axis=0)
+    return _Inside(once[:, 0].astype(np.intp), once[:, 1])
+
+
+def _filling(length: FloatArray, points: int) -> _Inside:
+    """Even places inside the segments, as many as the budget leaves, shared by length."""
+    counts = np.floor(max(points, 0) * length / np.sum(length)).astype(np.intp)
+    segment = np.repeat(np.arange(len(length)), counts)
+    rank = np.arange(len(segment)) - np.repeat(np.cumsum(counts) - counts, counts)
+    return _Inside(segment, (rank + 1.0) / (counts[segment] + 1.0))
+
+
+def _in_order(results: Results, places: _Inside) -> Places:
+    order = np.lexsort((places.fraction, places.segment))
+    segment, fraction = places.segment[order], places.fraction[order]
+    new = np.append(True, (np.diff(segment) > 0) | (np.diff(fraction) > _CLOSE))
+    segment, fraction = segment[new], fraction[new]
+    return Places(segment, fraction, x_of(results, segment, fraction))
+
+
+def x_of(results: Results, segment: IntArray, fraction: FloatArray) -> FloatArray:
+    """The positions x of places, exactly the joint's at a segment's ends."""
+    end = results.position[segment + 1]
+    inside = results.position[segment] + fraction * results.chain.length[segment]
+    return np.where(fraction >= 1.0, end, np.minimum(inside, end))
