@@ -1,0 +1,120 @@
+"""Numerals without units: the shortest decimal that means a given number, and figures laid out for reading.
+
+Entries must show what was typed, to the last digit, so they are written by exact integer arithmetic; readings
+are rounded to a few significant digits. Two different jobs that must not be mixed: what is edited is never
+rounded, what is read never shows seventeen digits.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from fractions import Fraction
+from typing import Final
+
+MINUS: Final = "\u2212"
+GROUP: Final = "\u202f"  # the narrow no-break space: a thin space at which no line ends
+
+# 17 digits tell any two doubles apart; the spare ones serve intervals narrower than a double's own.
+_MOST_DIGITS: Final = 20
+_PLAIN_FROM, _PLAIN_TO = -5, 15  # powers of ten between which an entry is written without an exponent
+_SUPERSCRIPTS: Final = str.maketrans("0123456789-", "⁰¹²³⁴⁵⁶⁷⁸⁹⁻")
+
+
+def shortest_decimal(target: Fraction, means: Callable[[Fraction], bool]) -> str:
+    """The decimal of fewest digits near `target` for which `means` holds, as ASCII text.
+
+    `means` must hold on an interval around `target`. More digits then never harm, so the number of digits is
+    found by halving. ValueError where twenty digits are not enough, which no double needs.
+    """
+    if target == 0:
+        return "0"
+    least, most = 1, _MOST_DIGITS
+    found = _accepted(target, most, means)
+    if found is None:
+        raise ValueError(target)
+    while least < most:
+        middle = (least + most) // 2
+        candidate = _accepted(target, middle, means)
+        if candidate is None:
+            least = middle + 1
+        else:
+            found, most = candidate, middle
+    return _written(*found)
+
+
+def _accepted(target: Fraction, digits: int, means: Callable[[Fraction], bool]) -> tuple[int, int] | None:
+    """The accepted (mantissa, power of ten) of that many digits next to the target, the nearer first."""
+    power = _magnitude(target) - digits + 1
+    scaled = target / Fraction(10) ** power
+    below = math.floor(scaled)
+    neighbours = sorted((below, below + 1), key=lambda mantissa: abs(mantissa - scaled))
+    for mantissa in neighbours:
+        if means(mantissa * Fraction(10) ** power):
+            return mantissa, power
+    return None
+
+
+def _magnitude(value: Fraction) -> int:
+    """The power of ten of the leading digit of a value other than 0."""
+    value = abs(value)
+    power = len(str(value.numerator)) - len(str(value.denominator))
+    return power if value >= Fraction(10) ** power else power - 1
+
+
+def _written(mantissa: int, power: int) -> str:
+    """mantissa · 10^power as text without needless zeros, with an exponent where it is long otherwise."""
+    sign, digits = "-" if mantissa < 0 else "", str(abs(mantissa))
+    power += len(digits) - len(digits.rstrip("0"))
+    digits = digits.rstrip("0")
+    leading = power + len(digits) - 1
+    if not _PLAIN_FROM < leading < _PLAIN_TO:
+        return f"{sign}{digits[0]}{'.' + digits[1:] if digits[1:] else ''}e{leading}"
+    if power >= 0:
+        return sign + digits + "0" * power
+    digits = digits.rjust(1 - power, "0")
+    return f"{sign}{digits[:power]}.{digits[power:]}"
+
+
+def reading(value: float, digits: int, *, strip: bool = False) -> str:
+    """`value` to `digits` significant digits for reading: real minus, thin spaces, no rounding above units.
+
+    `strip` takes needless zeros off the decimals. Not finite reads "–" (nothing to show) or "∞".
+    """
+    if math.isnan(value):
+        return "–"
+    if math.isinf(value):
+        return "∞" if value > 0 else MINUS + "∞"
+    if value != 0 and not 1e-4 <= abs(value) < 1e9:
+        return _with_power(value, digits, strip=strip)
+    return fixed(value, _decimals(value, digits), strip=strip)
+
+
+def fixed(value: float, decimals: int, *, strip: bool = False) -> str:
+    """`value` with that many decimals for reading; what rounds to nothing has no sign."""
+    text = f"{abs(value):.{decimals}f}"
+    sign = MINUS if value < 0 and text.strip("0.") else ""
+    whole, point, part = text.partition(".")
+    part = part.rstrip("0") if strip else part
+    return sign + _grouped(whole) + (point + part if part else "")
+
+
+def _decimals(value: float, digits: int) -> int:
+    """How many decimals show `digits` significant digits, after rounding (9.996 has one digit less)."""
+    if value == 0:
+        return 0
+    return max(0, digits - 1 - int(f"{value:.{digits - 1}e}".partition("e")[2]))
+
+
+def _grouped(whole: str) -> str:
+    """Thousands apart by a thin space from five figures on."""
+    return whole if len(whole) < 5 else f"{int(whole):,}".replace(",", GROUP)
+
+
+def _with_power(value: float, digits: int, *, strip: bool) -> str:
+    """As a·10ⁿ."""
+    mantissa, _, power = f"{abs(value):.{digits - 1}e}".partition("e")
+    if strip and "." in mantissa:
+        mantissa = mantissa.rstrip("0").rstrip(".")
+    sign = MINUS if value < 0 else ""
+    return f"{sign}{mantissa}·10{str(int(power)).translate(_SUPERSCRIPTS)}"

@@ -1,0 +1,47 @@
+"""What is said about a typed entry that cannot be read: why, and what to type instead."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Final, Literal, TypeAlias
+
+from app.words import later, tr
+
+EntryRule: TypeAlias = Literal[
+    "empty", "too_long", "too_deep", "not_a_number", "two_decimal_signs", "two_numbers", "number_missing",
+    "bracket_open", "bracket_stray", "zero_divisor", "too_large", "too_small", "unknown_unit", "near_unit",
+    "no_unit", "section_unknown", "section_ambiguous", "section_dimensions", "section_units",
+    "wall_too_thick", "size_not_positive", "section_change",
+]  # fmt: skip
+
+ENTRIES: Final[Mapping[EntryRule, str]] = {
+    "empty": later("Nothing entered; type a number such as {example}"),
+    "too_long": later("Too long to be a number: {length} characters, at most {most}"),
+    "too_deep": later("Brackets in brackets go at most {most} deep"),
+    "not_a_number": later("“{found}” is not a number; type one such as {example}"),
+    "two_decimal_signs": later(
+        "“{found}” has more than one decimal sign; type thousands without a sign between"
+    ),
+    "two_numbers": later("“{found}” follows a number with no sign between; type thousands without a gap"),
+    "number_missing": later("A number is missing before “{found}”"),
+    "bracket_open": later("A closing bracket is missing"),
+    "bracket_stray": later("A closing bracket without an opening one"),
+    "zero_divisor": later("Division by zero"),
+    "too_large": later("Too large to compute with"),
+    "too_small": later("Too small to tell from 0; type 0 if that is meant"),
+    "unknown_unit": later("“{found}” is no unit that can stand here; use one such as {example}"),
+    "near_unit": later("“{found}” is no unit that can stand here; did you mean “{nearest}”?"),
+    "no_unit": later("“{found}”: a plain number without a unit is wanted here"),
+    "section_unknown": later("“{found}” is no section; type one such as ⌀40, ⌀60×5, ▭20×30 or A 1200"),
+    "section_ambiguous": later("A tube or a rectangle? Type ⌀{found} or ▭{found}"),
+    "section_dimensions": later("“{found}” needs {wanted} dimensions, such as {example}"),
+    "section_units": later("Give the unit once, at the end, or with every dimension"),
+    "wall_too_thick": later("The wall is thicker than half the outside diameter"),
+    "size_not_positive": later("Every dimension must be greater than 0"),
+    "section_change": later("Start and end of a segment have the same shape; “{found}” is another"),
+}
+
+
+def entry_sentence(rule: EntryRule, facts: Mapping[str, object]) -> str:
+    """The sentence to show beside the field."""
+    return tr(ENTRIES[rule]).format(**facts)
