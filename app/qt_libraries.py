@@ -1,12 +1,13 @@
-"""The system libraries that Qt loads on Linux and no wheel brings along, with their Debian packages.
+"""What a window needs from the system: a display, and the libraries of Qt that no wheel brings along.
 
-Read before anything is installed, so only the standard library is used. The list comes from the NEEDED
+Read before anything is installed, so only the standard library is used. The libraries come from the NEEDED
 entries of the PySide6 6.11 libraries and of their platform plugins (`objdump -p`).
 """
 
 from __future__ import annotations
 
 import ctypes
+import os
 import sys
 
 # What Qt needs even without a display, by soname.
@@ -39,6 +40,13 @@ WINDOW = {
     "libxcb-xkb.so.1": "libxcb-xkb1",
     "libxkbcommon-x11.so.0": "libxkbcommon-x11-0",
 }
+
+
+def has_display() -> bool:
+    """Whether a display is to be expected; QT_QPA_PLATFORM says that the user has chosen one."""
+    if not sys.platform.startswith("linux"):
+        return True
+    return any(os.environ.get(name) for name in ("DISPLAY", "WAYLAND_DISPLAY", "QT_QPA_PLATFORM"))
 
 
 def loads(soname: str) -> bool:

@@ -1,9 +1,16 @@
-"""The packaged sample projects: members from the works of an invented small harbour, Skarvik."""
+"""The packaged sample projects: members from the works of an invented small harbour, Skarvik.
+
+Finding them takes the standard library alone, because `app.start` does so before anything is installed.
+"""
 
 from __future__ import annotations
 
 from importlib import resources
 from pathlib import Path
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from solver.model import Project
 
 SUFFIX = ".barwright.json"
 FIRST = "hoist_shaft"  # opened where nothing else is asked for; it passes
@@ -23,6 +30,8 @@ def sample_path(name: str = FIRST) -> Path:
     return _FOLDER / f"{name}{SUFFIX}"
 
 
-def read_sample(name: str = FIRST) -> bytes:
-    """The bytes of a sample's project file; KeyError where there is none of that name."""
-    return sample_path(name).read_bytes()
+def read_sample(name: str = FIRST) -> Project:
+    """A sample as a project; KeyError where there is none of that name."""
+    from app.project_file import read
+
+    return read(sample_path(name))

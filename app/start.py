@@ -6,13 +6,13 @@ line and prints the sample's check in the terminal instead. Only the standard li
 
 from __future__ import annotations
 
-import os
 import subprocess
 import sys
 from pathlib import Path
 
 from app.environment import ROOT, SetupFailed, prepare
-from app.qt_libraries import DRAWING, WINDOW, missing_packages
+from app.qt_libraries import DRAWING, WINDOW, has_display, missing_packages
+from app.samples import FIRST, sample_path
 from app.words import tr
 
 TRY_A_WINDOW = "from PySide6.QtWidgets import QApplication; QApplication([])"
@@ -29,7 +29,7 @@ def main() -> int:
     reason = why_no_window(python)
     if reason:
         return print_check(python, reason)
-    return run(python, "sample", "--open")
+    return run(python, "open", "--sample", FIRST)
 
 
 def run(python: Path, *arguments: str) -> int:
@@ -43,7 +43,7 @@ def print_check(python: Path, reason: str) -> int:
         tr("No window here: {reason} The sample's check instead:").format(reason=reason) + "\n\n"
     )
     sys.stdout.flush()
-    code = run(python, "sample", "--check")
+    code = run(python, "check", str(sample_path()))
     return 0 if code in CHECK_PRINTED else code
 
 
@@ -60,13 +60,6 @@ def why_no_window(python: Path) -> str:
             command="apt install " + " ".join(packages)
         )
     return tr("Qt cannot reach the display.")
-
-
-def has_display() -> bool:
-    """Whether a display is to be expected; QT_QPA_PLATFORM says that the user has chosen one."""
-    if not sys.platform.startswith("linux"):
-        return True
-    return any(os.environ.get(name) for name in ("DISPLAY", "WAYLAND_DISPLAY", "QT_QPA_PLATFORM"))
 
 
 if __name__ == "__main__":

@@ -1,0 +1,84 @@
+"""What one file came to in the terminal: an exit code, and what to print where.
+
+Two families of errors are told apart here, at the outer edge, and nowhere else: an input that cannot be used
+or solved becomes sentences (2), anything unforeseen is our own fault and keeps its traceback (4).
+"""
+
+from __future__ import annotations
+
+import traceback
+from collections.abc import Callable, Iterable
+from dataclasses import dataclass
+from typing import Final
+
+from app.phrases import error_sentences
+from app.project_file import ProjectFileError
+from app.words import tr
+from solver.errors import InputError
+
+PASS: Final = 0
+FAIL: Final = 1
+UNUSABLE: Final = 2
+INCOMPLETE: Final = 3
+OUR_FAULT: Final = 4
+WORST_FIRST: Final = (OUR_FAULT, UNUSABLE, FAIL, INCOMPLETE, PASS)
+
+
+@dataclass(frozen=True, slots=True)
+class Outcome:
+    """The exit code of one file, its text for standard output and its text for standard error."""
+
+    code: int
+    out: str = ""
+    err: str = ""
+
+
+def worst(codes: Iterable[int]) -> int:
+    """The exit code of a run over several files."""
+    present = set(codes) or {PASS}
+    return next(code for code in WORST_FIRST if code in present)
+
+
+def outcome(file: str, work: Callable[[str], Outcome]) -> Outcome:
+    """Do the work on one file; whatever goes wrong becomes words on standard error and a code."""
+    try:
+        return work(file)
+    except (ProjectFileError, InputError) as error:
+        return unusable(file, error_sentences(error))
+    except OSError as error:
+        return unusable(file, (os_sentence(error),))
+    except Exception:  # the outer edge: reported with its traceback, and the next file goes on
+        return Outcome(OUR_FAULT, err=our_fault(file))
+
+
+def unusable(file: str, sentences: Iterable[str]) -> Outcome:
+    """An input that cannot be used, with its reasons."""
+    head = tr("{file} cannot be used:").format(file=file)
+    return Outcome(UNUSABLE, err="\n".join([head, *(f"  {sentence}" for sentence in sentences)]) + "\n")
+
+
+def unwritten(target: str, reason: str) -> Outcome:
+    """A file that cannot be written."""
+    return Outcome(
+        UNUSABLE, err=tr("{name} cannot be written: {reason}").format(name=target, reason=reason) + "\n"
+    )
+
+
+def our_fault(file: str) -> str:
+    """The words and the traceback of an exception that nobody foresaw."""
+    line = tr(
+        "{file}: Barwright itself has failed here; this is not a fault of the file. Please report this:"
+    )
+    return f"{line.format(file=file)}\n{traceback.format_exc()}"
+
+
+def os_sentence(error: OSError) -> str:
+    """What the system refused, in plain words, with the file it was about."""
+    sentences: dict[type[OSError], str] = {
+        FileNotFoundError: tr("there is no such file or folder: {name}"),
+        IsADirectoryError: tr("this is a folder, a file is needed: {name}"),
+        NotADirectoryError: tr("a part of the path is not a folder: {name}"),
+        PermissionError: tr("the system does not permit it: {name}"),
+    }
+    words = sentences.get(type(error))
+    return words.format(name=error.filename) if words else str(error)
