@@ -11,7 +11,7 @@ import io
 import os
 import sys
 from collections.abc import Callable, Sequence
-from typing import TypeAlias
+from dataclasses import dataclass
 
 from app import commands
 from app.version import PROGRAM
@@ -53,7 +53,7 @@ def with_command(arguments: list[str]) -> list[str]:
     if not arguments:
         return ["open"]
     first = arguments[0]
-    return arguments if first.startswith("-") or first in COMMANDS else ["open", *arguments]
+    return arguments if first.startswith("-") or first in command_table() else ["open", *arguments]
 
 
 def parser() -> argparse.ArgumentParser:
@@ -69,82 +69,70 @@ def parser() -> argparse.ArgumentParser:
     )
     top.add_argument("--version", action="version", version=PROGRAM, help=tr("print the version and end"))
     places = top.add_subparsers(metavar=tr("COMMAND"), required=True)
-    for name, add in COMMANDS.items():
-        add(places, name)
+    for name, command in command_table().items():
+        added = places.add_parser(
+            name,
+            help=command.words,
+            description=f"{command.words[:1].upper()}{command.words[1:]}.",
+            epilog=command.more,
+            formatter_class=argparse.RawDescriptionHelpFormatter,
+        )
+        added.set_defaults(run=command.run)
+        command.take(added)
     return top
 
 
-Places: TypeAlias = "argparse._SubParsersAction[argparse.ArgumentParser]"
-
-
-def command(
-    places: Places, name: str, run: Callable[[argparse.Namespace], int], words: str, more: str = ""
-) -> argparse.ArgumentParser:
-    """A command with its one-line help, which also opens its own help page."""
-    added = places.add_parser(
-        name,
-        help=words,
-        description=words[:1].upper() + words[1:] + ".",
-        epilog=more,
-        formatter_class=argparse.RawDescriptionHelpFormatter,
-    )
-    added.set_defaults(run=run)
-    return added
-
-
-def add_open(places: Places, name: str) -> None:
+def take_open(command: argparse.ArgumentParser) -> None:
     """`barwright open [FILE …]`, also without the word."""
-    added = command(places, name, commands.run_open, tr("open the window; the word may be left out"))
-    added.add_argument("files", nargs="*", metavar=tr("FILE"), help=tr("project files, one window each"))
-    added.add_argument("--sample", metavar=tr("NAME"), help=tr("open a packaged sample as a new project"))
+    command.add_argument("files", nargs="*", metavar=tr("FILE"), help=tr("project files, one window each"))
+    command.add_argument("--sample", metavar=tr("NAME"), help=tr("open a packaged sample as a new project"))
 
 
-def add_check(places: Places, name: str) -> None:
-    """`barwright check FILE …`."""
-    added = command(
-        places, name, commands.run_check, tr("check members and print what governs"), exit_codes()
-    )
-    added.add_argument("files", nargs="+", metavar=tr("FILE"), help=tr("project files"))
-    added.add_argument("--json", action="store_true", help=tr("print the results file, one line each"))
+def take_check(command: argparse.ArgumentParser) -> None:
+    """`barwright check FILE … [--json]`."""
+    command.add_argument("files", nargs="+", metavar=tr("FILE"), help=tr("project files"))
+    command.add_argument("--json", action="store_true", help=tr("print the results file, one line each"))
 
 
-def add_sheet(places: Places, name: str) -> None:
-    """`barwright sheet FILE …`."""
-    added = command(places, name, commands.run_sheet, tr("write calc sheets as PDF"), sheet_examples())
-    added.add_argument("files", nargs="+", metavar=tr("FILE"), help=tr("project files"))
-    added.add_argument(
-        "-o",
-        "--out",
-        metavar=tr("PDF-or-folder"),
-        help=tr("where to write; without it, beside each project. A folder is made if there is none"),
-    )
+def take_sheet(command: argparse.ArgumentParser) -> None:
+    """`barwright sheet FILE … [--out PDF-or-folder]`."""
+    where = tr("where to write; without it, beside each project. A folder is made if there is none")
+    command.add_argument("files", nargs="+", metavar=tr("FILE"), help=tr("project files"))
+    command.add_argument("-o", "--out", metavar=tr("PDF-or-folder"), help=where)
 
 
-def add_schema(places: Places, name: str) -> None:
-    """`barwright schema`."""
-    command(places, name, commands.run_schema, tr("print the JSON Schema of the project file"))
+def take_nothing(command: argparse.ArgumentParser) -> None:
+    """A command without arguments."""
 
 
-def add_sample(places: Places, name: str) -> None:
+def take_sample(command: argparse.ArgumentParser) -> None:
     """`barwright sample [NAME]`."""
-    added = command(places, name, commands.run_sample, tr("list the packaged samples, or copy one"))
-    added.add_argument("name", nargs="?", metavar=tr("NAME"), help=tr("the sample to copy"))
-    added.add_argument(
-        "-o",
-        "--out",
-        default=".",
-        metavar=tr("FILE-or-folder"),
-        help=tr("where to, this folder if not given"),
-    )
+    where = tr("where to, this folder if not given")
+    command.add_argument("name", nargs="?", metavar=tr("NAME"), help=tr("the sample to copy"))
+    command.add_argument("-o", "--out", default=".", metavar=tr("FILE-or-folder"), help=where)
 
 
-COMMANDS: dict[str, Callable[..., None]] = {
-    "open": add_open,
-    "check": add_check,
-    "sheet": add_sheet,
-    "schema": add_schema,
-    "sample": add_sample,
-}
+@dataclass(frozen=True)
+class Command:
+    """A command: its help in one line, what it runs, what it takes, and how its help page ends."""
+
+    words: str
+    run: Callable[[argparse.Namespace], int]
+    take: Callable[[argparse.ArgumentParser], None]
+    more: str = ""
+
+
+def command_table() -> dict[str, Command]:
+    """The commands in the order of the help page, worded in the user's language."""
+    return {
+        "open": Command(tr("open the window; the word may be left out"), commands.run_open, take_open),
+        "check": Command(
+            tr("check members and print what governs"), commands.run_check, take_check, exit_codes()
+        ),
+        "sheet": Command(tr("write calc sheets as PDF"), commands.run_sheet, take_sheet, sheet_examples()),
+        "schema": Command(tr("print the JSON Schema of the project file"), commands.run_schema, take_nothing),
+        "sample": Command(tr("list the packaged samples, or copy one"), commands.run_sample, take_sample),
+    }
 
 
 def main_examples() -> str:

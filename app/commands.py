@@ -42,7 +42,8 @@ def open_windows(options: Namespace) -> int:
 
     for file in options.files[1:]:
         subprocess.Popen([sys.executable, "-m", "app", "open", "--", file])  # noqa: S603 - ourselves
-    return run(Path(options.files[0]) if options.files else None)
+    code: int = run(Path(options.files[0]) if options.files else None)
+    return code
 
 
 def refuse(sentence: str) -> int:
