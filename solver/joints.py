@@ -1,0 +1,136 @@
+"""The tridiagonal system of the joints: assembled, factored once, solved for all states together.
+
+"Joints" are here the ends of all elements, 0…e. A support that holds a joint takes its equation out (one on
+the diagonal, nothing beside it), so that the matrix stays symmetric, positive definite and tridiagonal, as
+LAPACK's pttrf and pttrs want it.
+
+The solution is kept as a sum of two doubles, the second being what one step of iterative refinement adds:
+the stretch of an element is the difference of its ends, and where a stiff part hangs on a soft spring it lies
+in digits that a single double no longer has. The plain sum would lose them again.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from scipy.linalg.lapack import dpttrf, dpttrs
+
+from solver.arrays import FloatArray, IntArray
+from solver.chain import Chain, Loads
+from solver.condense import Condensed
+from solver.mesh import Mesh
+
+
+@dataclass(frozen=True, slots=True)
+class Held:
+    """Supports and joint loads at the ends of the elements."""
+
+    fixed: IntArray  # indices of held ends
+    spring: FloatArray  # (e + 1,)
+    force: FloatArray  # (m, e + 1)
+    movement: FloatArray  # (m, e + 1)
+
+
+@dataclass(frozen=True, slots=True)
+class Displacements:
+    """Of the ends of the elements, (m, e + 1) each: the displacement is their sum."""
+
+    high: FloatArray
+    low: FloatArray
+
+    def mean(self) -> FloatArray:
+        """(m, e) the mean of each element's ends."""
+        total = self.high + self.low
+        return np.asarray((total[:, 1:] + total[:, :-1]) / 2)
+
+    def stretch(self) -> FloatArray:
+        """(m, e) end less start of each element."""
+        return np.asarray((self.high[:, 1:] - self.high[:, :-1]) + (self.low[:, 1:] - self.low[:, :-1]))
+
+
+class FactorError(Exception):
+    """The factor met a pivot that is not positive, at the end `at` of an element."""
+
+    def __init__(self, at: int) -> None:
+        super().__init__(f"pivot {at}")
+        self.at = at
+
+
+def held(chain: Chain, loads: Loads, mesh: Mesh) -> Held:
+    """Supports and joint loads spread from the joints to the ends of the elements."""
+    if mesh.whole:
+        fixed = np.flatnonzero(chain.fixed)
+        return Held(fixed, chain.spring, loads.joint_force, loads.movement)
+    joints = mesh.joints()
+
+    def spread(values: FloatArray) -> FloatArray:
+        wide = np.zeros((*values.shape[:-1], mesh.segment.size + 1))
+        wide[..., joints] = values
+        return wide
+
+    return Held(joints[chain.fixed], spread(chain.spring), spread(loads.joint_force), spread(loads.movement))
+
+
+class JointSystem:
+    """The condensed matrix K, factored."""
+
+    def __init__(self, condensed: Condensed, at: Held) -> None:
+        self._ends = condensed
+        self._held = at
+        self._bedded = bool(condensed.mean_mean.any())
+        diagonal, beside = self._assembled()
+        self._diagonal, self._beside, failed = dpttrf(diagonal, beside, overwrite_d=1, overwrite_e=1)
+        if failed:
+            raise FactorError(failed - 1)
+
+    def _assembled(self) -> tuple[FloatArray, FloatArray]:
+        ends, fixed = self._ends, self._held.fixed
+        quarter = ends.mean_mean / 4
+        own = quarter + ends.stretch_stretch
+        diagonal = self._held.spring.copy()
+        diagonal[:-1] += own - ends.mean_stretch
+        diagonal[1:] += own + ends.mean_stretch
+        beside = quarter - ends.stretch_stretch
+        diagonal[fixed] = 1.0
+        beside[fixed[fixed < beside.size]] = 0.0
+        beside[fixed[fixed > 0] - 1] = 0.0
+        return diagonal, beside
+
+    def solve(self, right: FloatArray) -> FloatArray:
+        """K⁻¹ right for (r, e + 1); zero at held ends where right is."""
+        solution, _ = dpttrs(self._diagonal, self._beside, right.T)
+        return np.asarray(solution.T)
+
+    def displacements(self) -> Displacements:
+        """Solve, and refine once."""
+        start = np.zeros_like(self._held.movement)
+        start[:, self._held.fixed] = self._held.movement[:, self._held.fixed]
+        nothing = np.zeros_like(start)
+        high = start + self.solve(self._unbalanced(Displacements(start, nothing)))
+        low = self.solve(self._unbalanced(Displacements(high, nothing)))
+        return Displacements(high, low)
+
+    def _unbalanced(self, u: Displacements) -> FloatArray:
+        ends, stretch = self._ends, u.stretch()
+        half_sum = ends.stretch_stretch * stretch - ends.load_stretch
+        difference = -ends.load_mean
+        if self._bedded:
+            mean = u.mean()
+            half_sum += ends.mean_stretch * mean
+            difference = ends.mean_mean * mean + ends.mean_stretch * stretch - ends.load_mean
+        return unbalanced(self._held, u, half_sum - difference / 2, half_sum + difference / 2)
+
+
+def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
+    """(m, e + 1) the force along +x left over at each end; 0 where the support takes whatever comes."""
+    left = at.force + spring_force(at, u)
+    left[:, :-1] += start_force
+    left[:, 1:] -= end_force
+    left[:, at.fixed] = 0.0
+    return left
+
+
+def spring_force(at: Held, u: Displacements) -> FloatArray:
+    """(m, e + 1) what the springs exert on the member along +x."""
+    return np.asarray(at.spring * ((at.movement - u.high) - u.low))

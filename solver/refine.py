@@ -1,0 +1,119 @@
+"""Which degree an element gets, and where the mesh is refined when the bound asks for it.
+
+The degree is chosen beforehand from what limits the convergence. The slope of the displacement behaves like
+1/A, whose poles lie beyond the segment's ends where the area's linear factors vanish; with ζ the ratio of such
+a factor's values at the two ends, Legendre expansions converge like ρ⁻ᵖ, ρ = (1 + √ζ)/|1 − √ζ| (Bernstein,
+1912). Bedding adds cosh(z t) with z = μL/2, whose coefficients fall like zᵖ/(2p − 1)!!. Usually one pass
+suffices; where it does not, the bound's own shares say where to raise the degree or to halve.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+
+from solver.arrays import BoolArray, FloatArray, IntArray
+from solver.chain import Chain
+from solver.elements import GREATEST_DEGREE, LEAST_DEGREE
+from solver.mesh import Mesh, closed_segments
+from solver.sections import part_of
+
+CLOSED_DEGREE = 3
+SAFETY = 0.1  # part of the tolerance the first degree aims at
+STEP = 2  # by which a degree is raised
+FEW = 256  # up to so many stacked elements share one degree: the calls cost more than the arithmetic
+SHORTEST = 2.0**-40  # part of a segment below which no element is halved
+
+
+def first_mesh(chain: Chain, tolerance: float) -> Mesh:
+    """One element a segment, halved where no degree is expected to do."""
+    closed = closed_segments(chain)
+    count = closed.size
+    mesh = Mesh(
+        segment=np.arange(count),
+        start=np.zeros(count),
+        end=np.ones(count),
+        degree=np.full(count, CLOSED_DEGREE),
+        closed=closed,
+        whole=True,
+    )
+    if closed.all():
+        return mesh
+    wanted = wanted_degree(chain, mesh, tolerance)
+    while (wanted > GREATEST_DEGREE).any():
+        mesh = halved(mesh, wanted > GREATEST_DEGREE)
+        wanted = wanted_degree(chain, mesh, tolerance)
+    return with_degrees(mesh, wanted)
+
+
+def wanted_degree(chain: Chain, mesh: Mesh, tolerance: float) -> IntArray:
+    """(e,) the degree expected to meet the tolerance, or one more than the greatest where none does."""
+    wanted = np.full(mesh.segment.size, CLOSED_DEGREE)
+    opened = np.flatnonzero(~mesh.closed)
+    segment, start, end = mesh.segment[opened], mesh.start[opened], mesh.end[opened]
+    area = part_of(chain.area[segment], start, end)
+    decay = pole_decay(area)
+    z = bedding_number(chain, segment, area, end - start)
+    error, term = np.ones_like(decay), np.ones_like(z)
+    degree = np.full(opened.size, GREATEST_DEGREE + 1)
+    for p in range(1, GREATEST_DEGREE + 1):
+        term = term * z / (2 * p - 1)
+        error = error * decay + term
+        met = (p * error < SAFETY * tolerance) & (end - start > SHORTEST)
+        degree = np.where(met & (degree > p), max(p, LEAST_DEGREE), degree)
+    wanted[opened] = np.where(end - start > SHORTEST, degree, GREATEST_DEGREE)
+    return wanted
+
+
+def pole_decay(area: FloatArray) -> FloatArray:
+    """(e,) 1/ρ of the nearer pole of 1/A, from Bernstein coefficients (e, 3); 0 where A is constant."""
+    first, middle, last = area.T
+    root = np.sqrt(np.maximum(middle * middle - first * last, 0.0))
+    ratios = np.sqrt(np.stack(((middle + root) / last, first / (middle + root))))
+    return np.asarray((np.abs(1 - ratios) / (1 + ratios)).max(axis=0))
+
+
+def bedding_number(chain: Chain, segment: IntArray, area: FloatArray, part: FloatArray) -> FloatArray:
+    """(e,) μL/2 with the segment's largest bedding and the element's least rigidity."""
+    rigidity = chain.modulus[segment] * area.min(axis=1)
+    bedding = chain.bedding[segment].max(axis=1)
+    return np.asarray(np.sqrt(bedding / rigidity) * chain.length[segment] * part / 2)
+
+
+def with_degrees(mesh: Mesh, degree: IntArray) -> Mesh:
+    """The mesh with these degrees, rounded up to few different ones."""
+    opened = ~mesh.closed
+    if np.count_nonzero(opened) <= FEW:
+        rounded = np.where(opened, degree[opened].max(), CLOSED_DEGREE)
+    else:
+        rounded = np.where(opened, np.minimum(degree + degree % 2, GREATEST_DEGREE), CLOSED_DEGREE)
+    return Mesh(mesh.segment, mesh.start, mesh.end, rounded, mesh.closed, mesh.whole)
+
+
+def halved(mesh: Mesh, marked: BoolArray) -> Mesh:
+    """The mesh with the marked elements (e,) halved."""
+    copies = np.where(marked, 2, 1)
+    middle = (mesh.start + mesh.end) / 2
+    start, end = np.repeat(mesh.start, copies), np.repeat(mesh.end, copies)
+    first = np.flatnonzero(marked) + np.arange(np.count_nonzero(marked))
+    end[first] = middle[marked]
+    start[first + 1] = middle[marked]
+    return Mesh(
+        segment=np.repeat(mesh.segment, copies),
+        start=start,
+        end=end,
+        degree=np.repeat(mesh.degree, copies),
+        closed=np.repeat(mesh.closed, copies),
+        whole=False,
+    )
+
+
+def refined(mesh: Mesh, share: FloatArray, allowed: FloatArray) -> Mesh | None:
+    """The next mesh, or None where no element's η² (m, e) is above its part of what is `allowed` (m,)."""
+    marked = ((share > allowed[:, None] / mesh.segment.size).any(axis=0)) & ~mesh.closed
+    if not marked.any():
+        return None
+    raised = np.where(marked, mesh.degree + STEP, mesh.degree)
+    split = (raised > GREATEST_DEGREE) & (mesh.end - mesh.start > SHORTEST)
+    degree = np.minimum(raised, GREATEST_DEGREE)
+    grown = Mesh(mesh.segment, mesh.start, mesh.end, degree, mesh.closed, mesh.whole)
+    return halved(grown, split) if split.any() else grown
