@@ -34,15 +34,14 @@ _EXAMPLES: Final[dict[Quantity, float]] = {"modulus": 2.1e11, "stress": 1.6e8, "
 class EntryError(ValueError):
     """The text cannot be read as what is wanted; `sentence` says why, in the user's language."""
 
-    def __init__(self, rule: EntryRule, **facts: object) -> None:
-        self.rule = rule
-        self.facts = facts
-        super().__init__(self.sentence)
+    def __init__(self, sentence: str) -> None:
+        super().__init__(sentence)
+        self.sentence = sentence
 
-    @property
-    def sentence(self) -> str:
-        """What to show beside the field."""
-        return entry_sentence(self.rule, self.facts)
+
+def refusal(rule: EntryRule, **facts: object) -> EntryError:
+    """The error for a rule of `app.phrases.entries` and its facts."""
+    return EntryError(entry_sentence(rule, facts))
 
 
 def parse_entry(text: str, quantity: Quantity, system: UnitSystemName) -> float:
@@ -63,7 +62,7 @@ def parse_exact(text: str, quantity: Quantity, system: UnitSystemName) -> Fracti
 def read_number(text: str, quantity: Quantity, system: UnitSystemName) -> tuple[Fraction, str]:
     """The number and the text of the unit (empty where there is none), not yet put together."""
     if len(text) > MOST_CHARACTERS:
-        raise EntryError("too_long", length=len(text), most=MOST_CHARACTERS)
+        raise refusal("too_long", length=len(text), most=MOST_CHARACTERS)
     reader = _Reader(text.translate(_SIGNS).strip(), _example(quantity, system))
     number = reader.sum()
     return number, reader.unit()
@@ -76,11 +75,11 @@ def factor_of(unit_text: str, quantity: Quantity, system: UnitSystemName) -> Fra
     except UnknownUnitError:
         pass
     if not symbol(quantity, system):
-        raise EntryError("no_unit", found=unit_text)
+        raise refusal("no_unit", found=unit_text)
     nearest = nearest_unit(unit_text, quantity)
     if nearest:
-        raise EntryError("near_unit", found=unit_text, nearest=nearest)
-    raise EntryError("unknown_unit", found=unit_text, example=symbol(quantity, system))
+        raise refusal("near_unit", found=unit_text, nearest=nearest)
+    raise refusal("unknown_unit", found=unit_text, example=symbol(quantity, system))
 
 
 def nearest_double(exact: Fraction) -> float:
@@ -88,9 +87,9 @@ def nearest_double(exact: Fraction) -> float:
     try:
         value = float(exact)
     except OverflowError:
-        raise EntryError("too_large") from None
+        raise refusal("too_large") from None
     if exact and not value:
-        raise EntryError("too_small")
+        raise refusal("too_small")
     return value
 
 
@@ -110,7 +109,7 @@ class _Reader:
         self.position = 0
         self.depth = 0
         if not text:
-            raise EntryError("empty", example=example)
+            raise refusal("empty", example=example)
 
     def sum(self) -> Fraction:
         """Terms added and taken away."""
@@ -126,23 +125,23 @@ class _Reader:
         if not rest or _UNIT_START.match(rest):
             return rest
         if rest[0] == ")":
-            raise EntryError("bracket_stray")
+            raise refusal("bracket_stray")
         if _NUMBER.match(rest):
             self._refuse_second_number(rest)
-        raise EntryError("not_a_number", found=_short(self.text), example=self.example)
+        raise refusal("not_a_number", found=_short(self.text), example=self.example)
 
     def _refuse_second_number(self, rest: str) -> None:
         """A number right behind a number: a second decimal sign, or thousands set apart."""
         if rest[0] in ".," and self.text[self.position - 1] != " ":
-            raise EntryError("two_decimal_signs", found=_short(self.text))
-        raise EntryError("two_numbers", found=_short(rest))
+            raise refusal("two_decimal_signs", found=_short(self.text))
+        raise refusal("two_numbers", found=_short(rest))
 
     def _product(self) -> Fraction:
         product = self._factor()
         while sign := self._take("*/"):
             factor = self._factor()
             if sign == "/" and factor == 0:
-                raise EntryError("zero_divisor")
+                raise refusal("zero_divisor")
             product = product * factor if sign == "*" else product / factor
         return product
 
@@ -161,13 +160,13 @@ class _Reader:
             return _exact(number.group())
         rest = self.text[self.position :].strip()
         if rest and rest[0] in "+-*/)" and self.position:
-            raise EntryError("number_missing", found=rest[0])
-        raise EntryError("not_a_number", found=_short(rest or self.text), example=self.example)
+            raise refusal("number_missing", found=rest[0])
+        raise refusal("not_a_number", found=_short(rest or self.text), example=self.example)
 
     def _bracket(self) -> Fraction:
         self.depth += 1
         if self.depth > _MOST_DEPTH:
-            raise EntryError("too_deep", most=_MOST_DEPTH)
+            raise refusal("too_deep", most=_MOST_DEPTH)
         total = self.sum()
         if not self._take(")"):
             self._refuse_open_bracket()
@@ -179,13 +178,13 @@ class _Reader:
         rest = self.text[self.position :].strip()
         if rest and _NUMBER.match(rest):
             self._refuse_second_number(rest)
-        raise EntryError("bracket_open")
+        raise refusal("bracket_open")
 
     @staticmethod
     def _mixed(whole: int, over: int, under: int) -> Fraction:
         """1 1/2; a gap before an improper fraction is more likely a slip than a sum."""
         if over >= under:
-            raise EntryError("two_numbers", found=f"{over}/{under}")
+            raise refusal("two_numbers", found=f"{over}/{under}")
         return whole + Fraction(over, under)
 
     def _match(self, pattern: re.Pattern[str]) -> re.Match[str] | None:
@@ -214,7 +213,7 @@ def _exact(number: str) -> Fraction:
     """A plain number as a fraction; its power of ten is bounded before it is raised."""
     mantissa, _, power = number.lower().partition("e")
     if power and abs(int(power)) > _MOST_POWER:
-        raise EntryError("too_small" if power.startswith("-") else "too_large")
+        raise refusal("too_small" if power.startswith("-") else "too_large")
     return Fraction(mantissa.replace(",", ".").rstrip(".")) * Fraction(10) ** int(power or 0)
 
 

@@ -11,7 +11,7 @@ EntryRule: TypeAlias = Literal[
     "empty", "too_long", "too_deep", "not_a_number", "two_decimal_signs", "two_numbers", "number_missing",
     "bracket_open", "bracket_stray", "zero_divisor", "too_large", "too_small", "unknown_unit", "near_unit",
     "no_unit", "section_unknown", "section_ambiguous", "section_dimensions", "section_units",
-    "wall_too_thick", "size_not_positive", "section_change",
+    "wall_too_thick", "bore_too_wide", "size_not_positive", "section_change",
 ]  # fmt: skip
 
 ENTRIES: Final[Mapping[EntryRule, str]] = {
@@ -37,6 +37,7 @@ ENTRIES: Final[Mapping[EntryRule, str]] = {
     "section_dimensions": later("“{found}” needs {wanted} dimensions, such as {example}"),
     "section_units": later("Give the unit once, at the end, or with every dimension"),
     "wall_too_thick": later("The wall is thicker than half the outside diameter"),
+    "bore_too_wide": later("The bore must be smaller than the outside diameter"),
     "size_not_positive": later("Every dimension must be greater than 0"),
     "section_change": later("Start and end of a segment have the same shape; “{found}” is another"),
 }
