@@ -17,6 +17,7 @@ from msgspec import UNSET
 
 from solver.faults import Fault, Place, place_text
 from solver.model import (
+    AreaSection,
     FixedSupport,
     LoadCase,
     Project,
@@ -30,7 +31,7 @@ from solver.nearest import nearest
 
 def faults(project: Project) -> tuple[Fault, ...]:
     """All faults of records together; empty for a well-formed project."""
-    rules = (_count_faults, _mark_faults, _reference_faults, _tube_faults, _limit_faults)
+    rules = (_count_faults, _mark_faults, _reference_faults, _section_faults, _limit_faults)
     return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
@@ -144,11 +145,21 @@ def _limit_references(project: Project) -> Iterator[_Reference]:
 # --- sections and limits ---
 
 
-def _tube_faults(project: Project) -> Iterator[Fault]:
+def _section_faults(project: Project) -> Iterator[Fault]:
     for index, segment in _records(project.segments):
-        section = getattr(segment, "section", None)
+        section, place = getattr(segment, "section", None), ("segments", index, "section")
         if isinstance(section, TubeSection):
-            yield from _wall_faults(section, ("segments", index, "section"))
+            yield from _wall_faults(section, place)
+        if (
+            isinstance(section, AreaSection)
+            and section.second_moment is UNSET is not section.second_moment_end
+        ):
+            yield Fault(place_text(place), "missing_key", {"key": "second_moment"})
+
+
+def _ends_in_nothing(section: AreaSection) -> bool:
+    """Whether the second moment is known at the end only."""
+    return section.second_moment is UNSET and section.second_moment_end is not UNSET
 
 
 def _wall_faults(tube: TubeSection, place: Place) -> Iterator[Fault]:

@@ -3,8 +3,19 @@
 An edit that would give anything else raises `EditError` with the faults, and nothing changes.
 """
 
+from app.edits.cases import add_case, add_combination, remove_case, set_factor
 from app.edits.cells import add_record, move_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
+from app.edits.loads import (
+    joint_load_places,
+    joint_load_sum,
+    segment_load_places,
+    segment_load_sum,
+    set_joint_load,
+    set_segment_load,
+)
+from app.edits.member import delete_segments, insert_segment, reverse_member
+from app.edits.parts import join_segments, split_segment
 from app.edits.renaming import (
     rename_case,
     rename_combination,
@@ -15,14 +26,29 @@ from app.edits.renaming import (
 
 __all__ = [
     "EditError",
+    "add_case",
+    "add_combination",
     "add_record",
+    "delete_segments",
+    "insert_segment",
+    "join_segments",
+    "joint_load_places",
+    "joint_load_sum",
     "move_record",
+    "remove_case",
     "remove_records",
     "rename_case",
     "rename_combination",
     "rename_joint",
     "rename_material",
     "rename_segment",
+    "reverse_member",
+    "segment_load_places",
+    "segment_load_sum",
+    "set_factor",
+    "set_joint_load",
+    "set_segment_load",
     "set_value",
+    "split_segment",
     "value_at",
 ]

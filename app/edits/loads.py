@@ -1,0 +1,90 @@
+"""Loads as tables show them: a cell for one segment or joint in one load case.
+
+Several records may stand for one segment in one case; their cell shows the sum and is not edited here.
+"""
+
+from __future__ import annotations
+
+from typing import Any
+
+from msgspec import UNSET, UnsetType
+
+from app.edits.cells import add_record, remove_records, set_value
+from app.edits.checking import refused
+from app.encode import plain
+from solver.faults import Place
+from solver.model import Project, SegmentLoad, end_of
+
+_LISTS = {"segment": "segment_loads", "joint": "joint_loads"}
+
+
+def segment_load_places(project: Project, case: str, segment: str) -> tuple[Place, ...]:
+    """The places of the records that load the segment in the case; the cell is editable while at most one."""
+    return _places(project, case, "segment", segment)
+
+
+def joint_load_places(project: Project, case: str, joint: str) -> tuple[Place, ...]:
+    """The places of the records that load the joint in the case."""
+    return _places(project, case, "joint", joint)
+
+
+def segment_load_sum(project: Project, case: str, segment: str, key: str) -> float:
+    """The sum of `key` over the segment's records in the case; an absent end counts as its start."""
+    loads = project.load_cases[_case_index(project, case)].segment_loads
+    return sum((_value(load, key) for load in loads if load.segment == segment), 0.0)
+
+
+def joint_load_sum(project: Project, case: str, joint: str, key: str) -> float:
+    """The sum of `key` (force or movement) over the joint's records in the case."""
+    loads = project.load_cases[_case_index(project, case)].joint_loads
+    return sum((float(getattr(load, key)) for load in loads if load.joint == joint), 0.0)
+
+
+def _value(load: SegmentLoad, key: str) -> float:
+    if key.endswith("_end"):
+        return float(end_of(getattr(load, f"{key.removesuffix('_end')}_start"), getattr(load, key)))
+    return float(getattr(load, key))
+
+
+def set_segment_load(
+    project: Project, case: str, segment: str, key: str, value: float | UnsetType
+) -> Project:
+    """The project with `key` of the segment's load in the case set, in a new record where there is none.
+
+    UNSET takes the key away, and the record with its last one. EditError where several records stand for it.
+    """
+    return _set_load(project, case, "segment", segment, key, value)
+
+
+def set_joint_load(project: Project, case: str, joint: str, key: str, value: float | UnsetType) -> Project:
+    """The project with `key` of the joint's load in the case set, likewise."""
+    return _set_load(project, case, "joint", joint, key, value)
+
+
+def _case_index(project: Project, name: str) -> int:
+    return next(index for index, case in enumerate(project.load_cases) if case.name == name)
+
+
+def _places(project: Project, case: str, kind: str, mark: str) -> tuple[Place, ...]:
+    index, name = _case_index(project, case), _LISTS[kind]
+    loads = getattr(project.load_cases[index], name)
+    return tuple(
+        ("load_cases", index, name, number)
+        for number, load in enumerate(loads)
+        if getattr(load, kind) == mark
+    )
+
+
+def _set_load(
+    project: Project, case: str, kind: str, mark: str, key: str, value: float | UnsetType
+) -> Project:
+    places = _places(project, case, kind, mark)
+    name = _LISTS[kind]
+    whole: Place = ("load_cases", _case_index(project, case), name)
+    if len(places) > 1:
+        raise refused(whole, "several_records", count=len(places))
+    if not places:
+        return project if value is UNSET else add_record(project, whole, {kind: mark, key: value})
+    fresh = set_value(project, (*places[0], key), value)
+    left: Any = plain(getattr(fresh.load_cases[int(whole[1])], name)[places[0][-1]])
+    return remove_records(fresh, whole, [int(places[0][-1])]) if left == {kind: mark} else fresh

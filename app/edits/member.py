@@ -1,0 +1,146 @@
+"""Edits of the chain itself: insert, delete and reverse. Split and join are in `parts`.
+
+A segment's own joint is the one at its far end, as in a row of the segment table: it comes and goes with the
+segment, so the first joint always stays.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from typing import TypeVar
+
+from msgspec import Struct, structs
+
+from app.edits.checking import checked
+from app.edits.linear import turned
+from app.edits.records import fresh_mark, kept, mapped, with_cases
+from app.encode import is_absent
+from solver.model import (
+    AnySection,
+    Joint,
+    JointLoad,
+    Limits,
+    LoadCase,
+    Project,
+    Segment,
+    SegmentLoad,
+    StopSupport,
+    end_of,
+)
+
+_R = TypeVar("_R", bound=Struct)
+
+
+def insert_segment(
+    project: Project, index: int, segment: Segment | None = None, joint: Joint | None = None
+) -> Project:
+    """The project with a segment put in at `index` (0…n), with a new joint at its far end.
+
+    Without a segment given it is like its neighbour before (or after), without taper and bedding.
+    """
+    if segment is None:
+        segment = _like(project, max(index - 1, 0), at_start=index == 0)
+    if joint is None:
+        joint = fresh_joint(project, index)
+    segments, joints = list(project.segments), list(project.joints)
+    segments.insert(index, segment)
+    joints.insert(index + 1, joint)
+    return checked(structs.replace(project, segments=tuple(segments), joints=tuple(joints)))
+
+
+def fresh_joint(project: Project, before: int) -> Joint:
+    """A free joint with a mark of its own, in the manner of the joint with index `before`."""
+    return Joint(fresh_mark((joint.mark for joint in project.joints), project.joints[before].mark))
+
+
+def fresh_segment_mark(project: Project, like: str) -> str:
+    """A mark that no segment has yet."""
+    return fresh_mark((segment.mark for segment in project.segments), like)
+
+
+def _like(project: Project, neighbour: int, *, at_start: bool) -> Segment:
+    model = project.segments[neighbour]
+    section = _prismatic(model.section, at_start=at_start)
+    return Segment(fresh_segment_mark(project, model.mark), model.length, model.material, section)
+
+
+def _prismatic(section: AnySection, *, at_start: bool) -> AnySection:
+    """The section as it is at one end of its segment."""
+    sizes = {name: getattr(section, name) for name in section.__struct_fields__ if not name.endswith("_end")}
+    ends = {name: getattr(section, f"{name}_end") for name in sizes}
+    if at_start:
+        return type(section)(**sizes)
+    return type(section)(**{name: end_of(size, ends[name]) for name, size in sizes.items()})
+
+
+def delete_segments(project: Project, indices: Iterable[int]) -> Project:
+    """The project without these segments and their loads, and without their far joints, loads and limits."""
+    gone = set(indices)
+    segments = tuple(segment for index, segment in enumerate(project.segments) if index not in gone)
+    joints = tuple(joint for index, joint in enumerate(project.joints) if index - 1 not in gone)
+    marks = {project.segments[index].mark for index in gone}
+    joint_marks = {project.joints[index + 1].mark for index in gone}
+    fresh = structs.replace(
+        project, segments=segments, joints=joints, limits=_limits_without(project.limits, joint_marks)
+    )
+    return checked(with_cases(fresh, lambda case: _without(case, marks, joint_marks)))
+
+
+def _without(case: LoadCase, segments: set[str], joints: set[str]) -> LoadCase:
+    segment_loads = kept(case.segment_loads, lambda load: load.segment not in segments)
+    joint_loads = kept(case.joint_loads, lambda load: load.joint not in joints)
+    return structs.replace(case, segment_loads=segment_loads, joint_loads=joint_loads)
+
+
+def _limits_without(limits: Limits, joints: set[str]) -> Limits:
+    if is_absent(limits):
+        return limits
+    return structs.replace(
+        limits,
+        displacement=kept(limits.displacement, lambda limit: limit.joint not in joints),
+        relative=kept(limits.relative, lambda limit: not {limit.start, limit.end} & joints),
+        reaction=kept(limits.reaction, lambda limit: limit.joint not in joints),
+    )
+
+
+def reverse_member(project: Project) -> Project:
+    """The same member described from its other end; twice gives the project back."""
+    fresh = structs.replace(
+        project,
+        joints=tuple(_joint_turned(joint) for joint in reversed(project.joints)),
+        segments=tuple(_segment_turned(segment) for segment in reversed(project.segments)),
+    )
+    return checked(with_cases(fresh, _case_turned))
+
+
+def _joint_turned(joint: Joint) -> Joint:
+    if not isinstance(joint.support, StopSupport):
+        return joint
+    side = "minus" if joint.support.side == "plus" else "plus"
+    return structs.replace(joint, support=structs.replace(joint.support, side=side))
+
+
+def _segment_turned(segment: Segment) -> Segment:
+    return structs.replace(turned(segment), section=turned(segment.section))
+
+
+def _case_turned(case: LoadCase) -> LoadCase:
+    return structs.replace(
+        _negated(case, "gravity"),
+        segment_loads=mapped(case.segment_loads, _segment_load_turned),
+        joint_loads=mapped(case.joint_loads, _joint_load_turned),
+    )
+
+
+def _segment_load_turned(load: SegmentLoad) -> SegmentLoad:
+    return _negated(turned(load), "load_start", "load_end")
+
+
+def _joint_load_turned(load: JointLoad) -> JointLoad:
+    return _negated(load, "force", "movement")
+
+
+def _negated(record: _R, *keys: str) -> _R:
+    """The record with these values negated; nothing stays as it is, a 0 without a sign and unwritten."""
+    values = {key: getattr(record, key) for key in keys}
+    return structs.replace(record, **{key: -value for key, value in values.items() if value})
