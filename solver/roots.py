@@ -33,7 +33,7 @@ class Roots:
 def roots_inside(coefficients: FloatArray, noise: FloatArray) -> Roots:
     """The roots inside 0…1 of the rows (r, d + 1); coefficients up to `noise` (r,) in size count as 0.
 
-    Where a piece of a polynomial is nothing but noise, without being so as a whole, its middle is given.
+    A root of even order, where nothing changes sign, may come out as two next to each other or not at all.
     """
     coefficients = np.where(np.abs(coefficients) > noise[:, np.newaxis], coefficients, 0.0)
     rows = np.flatnonzero((coefficients.max(axis=-1) > 0.0) & (coefficients.min(axis=-1) < 0.0))
@@ -43,8 +43,9 @@ def roots_inside(coefficients: FloatArray, noise: FloatArray) -> Roots:
         if len(pieces.row) == 0:
             break
         changes = _sign_changes(pieces.coefficients)
-        found += [_single_roots(pieces.only(np.equal(changes, 1))), _flat_middles(pieces)]
+        found.append(_single_roots(pieces.only(np.equal(changes, 1))))
         pieces = _halved(pieces.only(np.greater(changes, 1)), noise)
+        found.append(_roots_on_cuts(pieces))
     else:
         found.append(Roots(pieces.row, pieces.start + 0.5 * pieces.width))
     return Roots(np.concatenate([f.row for f in found]), np.concatenate([f.place for f in found]))
@@ -74,9 +75,11 @@ def _sign_changes(coefficients: FloatArray) -> IntArray:
     return changes
 
 
-def _flat_middles(pieces: _Pieces) -> Roots:
-    flat = pieces.only(np.all(pieces.coefficients == 0.0, axis=-1))
-    return Roots(flat.row, flat.start + 0.5 * flat.width)
+def _roots_on_cuts(halves: _Pieces) -> Roots:
+    """Where a polynomial was halved right at a root: neither half has a change of sign there."""
+    left = len(halves.row) // 2
+    cut = halves.only(np.append(halves.coefficients[:left, -1] == 0.0, np.zeros(left, dtype=np.bool_)))
+    return Roots(cut.row, cut.start + cut.width)
 
 
 def _halved(pieces: _Pieces, noise: FloatArray) -> _Pieces:
