@@ -35,7 +35,8 @@ Rule: TypeAlias = Literal[
     "same_joint",  # facts: joint
     # of an edit that cannot be made
     "not_inside",  # facts: length, value: a split must lie inside the segment
-    "cannot_join",  # facts: differ (material, shape) or carries (support, load, limit) of the joint between
+    "parts_differ",  # facts: kind (material, section): segments to be joined are unlike in it
+    "joint_carries",  # facts: joint, kind (support, load, limit): joining would lose it
     "several_records",  # facts: count: the cell stands for more than one load record
     # of solvability (place is the part of the model; facts name the combination where it matters)
     "not_held",

@@ -86,11 +86,12 @@ def _hindrances(project: Project, first: int, last: int) -> Iterator[Fault]:
     for index, other in pairwise(range(first, last + 1)):
         a, b = project.segments[index], project.segments[other]
         if a.material != b.material:
-            yield Fault(place_text(("segments", other, "material")), "cannot_join", {"differ": "material"})
+            yield Fault(place_text(("segments", other, "material")), "parts_differ", {"kind": "material"})
         if type(a.section) is not type(b.section):
-            yield Fault(place_text(("segments", other, "section")), "cannot_join", {"differ": "shape"})
+            yield Fault(place_text(("segments", other, "section")), "parts_differ", {"kind": "section"})
         for what in _carried(project, other):
-            yield Fault(place_text(("joints", other)), "cannot_join", {"carries": what})
+            facts = {"joint": project.joints[other].mark, "kind": what}
+            yield Fault(place_text(("joints", other)), "joint_carries", facts)
 
 
 def _carried(project: Project, index: int) -> Iterator[str]:
@@ -118,7 +119,7 @@ def _joined(project: Project, index: int) -> Project:
 
 
 def _loads_joined(case: LoadCase, first: str, second: str) -> LoadCase:
-    """The k-th record of the one part with the k-th of the other; where one has fewer, with nothing."""
+    """The k-th record of the one part with the k-th of the other; where one has fewer, with a blank."""
     ones = [load for load in case.segment_loads if load.segment == first]
     others = [load for load in case.segment_loads if load.segment == second]
     nothing = SegmentLoad(first)

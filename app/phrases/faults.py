@@ -58,6 +58,22 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("keep one of them"),
     ),
     "same_joint": (later("both ends are joint {joint}"), later("choose two different joints")),
+    "not_inside": (
+        later("a split must lie inside the segment, which is {length} long; given is {value}"),
+        later("choose a place between its ends"),
+    ),
+    "parts_differ": (
+        later("segments that differ in {kind} cannot be joined"),
+        later("make them alike first"),
+    ),
+    "joint_carries": (
+        later("joint {joint} has a {kind}, which joining would lose"),
+        later("take it out first"),
+    ),
+    "several_records": (
+        later("{count} load records stand behind this cell"),
+        later("edit them one by one in the Loads table"),
+    ),
     "not_held": (
         later("nothing holds the member along its axis"),
         later("give a joint a fixed or a spring support, or a segment a bedding"),
@@ -81,7 +97,8 @@ _TYPES: Final[Mapping[str, str]] = {
 _KINDS: Final[Mapping[str, str]] = {
     "segment": later("segment"), "joint": later("joint"), "material": later("material"),
     "load case": later("load case"), "load_case": later("load case"),
-    "start": later("start"), "end": later("end"),
+    "start": later("start"), "end": later("end"), "section": later("section shape"),
+    "support": later("support"), "load": later("load"), "limit": later("limit"),
 }  # fmt: skip
 _NEAREST: Final = later("did you mean {nearest}?")
 _LONGEST: Final = 60
@@ -107,7 +124,7 @@ def _fact(name: str, value: object, quantity: Quantity | None, system: UnitSyste
         return tr(_TYPES.get(value, value))
     if name == "first" and isinstance(value, str):
         return place_words(value) if system else value
-    if name in ("reason", "line", "column", "joints", "segments", "known"):
+    if name in ("reason", "line", "column", "joints", "segments", "known", "count"):
         return str(value)
     if system and quantity and isinstance(value, float | int) and not isinstance(value, bool):
         return _in_units(value, quantity, system)
