@@ -14,9 +14,12 @@ from app import strict_json
 from app.atomic import write_bytes
 from app.decode import convert, project_type, shown
 from app.encode import encode
+from app.schema import schema
 from solver import validation
 from solver.faults import Fault
 from solver.model import FORMAT, VERSION, Project
+
+__all__ = ["ProjectFileError", "dump", "parse", "read", "schema", "sha256", "write"]
 
 
 class ProjectFileError(Exception):

@@ -284,7 +284,9 @@ DEFAULT_ORIENTATION: Final[Orientation] = "horizontal"
 
 
 class Display(Record, frozen=True):
-    """How the project is shown; never changes what it stores. Read it through the properties."""
+    """How the project is shown; never changes what it stores."""
+
+    # read through the properties, which resolve what was left out
 
     units: UnitSystemName | UnsetType = UNSET
     orientation: Orientation | UnsetType = UNSET

@@ -1,0 +1,111 @@
+"""Results as the plain values of a results file, its keys in its order; the terminal prints them as JSON.
+
+Only what was checked is in it: the combinations, or the cases where there are none. A number that does not
+exist (the reaction where nothing supports, a utilisation where no check was made) is null.
+"""
+
+from __future__ import annotations
+
+import math
+from typing import Any
+
+from app.phrases import reason_text
+from app.project_file import sha256
+from app.version import PROGRAM
+from solver.arrays import FloatArray
+from solver.checks import Check
+from solver.results import Results
+
+FORMAT = "barwright-results"
+VERSION = 1
+
+Values = dict[str, Any]
+
+# of a check: the field, and the file's key where that differs
+_CHECK_KEYS = {"start": "from", "end": "to"}
+_CHECK_FIELDS = (
+    "check", "combination", "segment", "joint", "start", "end", "position",
+    "value", "limit", "utilisation", "status", "reason",
+)  # fmt: skip
+# of a segment, all of them arrays by state and segment
+_SEGMENT_FIELDS = (
+    "force_start", "force_end", "force_max", "force_min",
+    "stress_max", "stress_max_at", "stress_min", "stress_min_at",
+    "utilisation", "utilisation_at", "force_bound",
+)  # fmt: skip
+
+
+def results_json(results: Results) -> Values:
+    """The results file as dict, list, str, float and None, in SI units, ready for a strict JSON writer."""
+    governing = results.governing
+    return {
+        "format": FORMAT,
+        "version": VERSION,
+        "title": str(results.project.title),
+        "program": PROGRAM,
+        "project_sha256": sha256(results.project),
+        "verdict": results.verdict,
+        "governing": None if governing is None else _check(governing),
+        "checks": [_check(check) for check in results.checks],
+        "combinations": [_state(results, i) for i, state in enumerate(results.states) if state.checked],
+    }
+
+
+def _check(check: Check) -> Values:
+    """Only the keys that apply to it."""
+    values = {_CHECK_KEYS.get(name, name): getattr(check, name) for name in _CHECK_FIELDS}
+    if check.reason is not None:
+        values["reason"] = reason_text(check.reason)
+    return {key: _plain(value) for key, value in values.items() if value is not None}
+
+
+def _state(results: Results, state: int) -> Values:
+    solution = results.solution
+    return {
+        "name": results.states[state].name,
+        "joints": _joints(results, state),
+        "segments": _segments(results, state),
+        "equilibrium": {
+            "loads": _plain(solution.loads[state]),
+            "reactions": _plain(math.fsum(r for r in solution.reaction[state] if not math.isnan(r))),
+            "bedding": _plain(solution.bedding[state]),
+            "residual": _plain(solution.residual[state]),
+        },
+        "energy": {
+            "strain": _plain(solution.strain_energy[state]),
+            "potential": _plain(solution.potential[state]),
+        },
+        "error_bound": _plain(solution.error_bound[state]),
+    }
+
+
+def _joints(results: Results, state: int) -> list[Values]:
+    columns = {
+        "mark": [joint.mark for joint in results.project.joints],
+        "position": _column(results.position),
+        "displacement": _column(results.solution.joint_displacement[state]),
+        "reaction": _column(results.solution.reaction[state]),
+    }
+    return _rows(columns)
+
+
+def _segments(results: Results, state: int) -> list[Values]:
+    marks: Values = {"mark": [segment.mark for segment in results.project.segments]}
+    columns = {name: _column(getattr(results.segments, name)[state]) for name in _SEGMENT_FIELDS}
+    return _rows(marks | columns)
+
+
+def _rows(columns: Values) -> list[Values]:
+    """Columns of equal length as one dict a row."""
+    return [dict(zip(columns, row, strict=True)) for row in zip(*columns.values(), strict=True)]
+
+
+def _column(array: FloatArray) -> list[float | None]:
+    return [_plain(value) for value in array.tolist()]
+
+
+def _plain(value: Any) -> Any:
+    """A number as a plain float, without the sign of a zero, None where it does not exist."""
+    if not isinstance(value, float):
+        return value
+    return None if math.isnan(value) else float(value) + 0.0
