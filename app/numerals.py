@@ -90,6 +90,21 @@ def reading(value: float, digits: int, *, strip: bool = False) -> str:
     return fixed(value, _decimals(value, digits), strip=strip)
 
 
+def rounded(value: float, digits: int) -> float:
+    """The number that `reading` shows."""
+    if value != 0 and not 1e-4 <= abs(value) < 1e9:
+        return float(f"{value:.{digits - 1}e}")
+    return float(f"{value:.{_decimals(value, digits)}f}")
+
+
+def at_most(bound: float) -> str:
+    """A bound to one digit, rounded up: 2.1e-11 reads 3·10⁻¹¹."""
+    if bound == 0 or not math.isfinite(bound):
+        return reading(bound, 1)
+    power = _magnitude(Fraction(bound))
+    return reading(float(math.ceil(Fraction(bound) / Fraction(10) ** power) * Fraction(10) ** power), 1)
+
+
 def fixed(value: float, decimals: int, *, strip: bool = False) -> str:
     """`value` with that many decimals for reading; what rounds to nothing has no sign."""
     text = f"{abs(value):.{decimals}f}"

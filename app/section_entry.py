@@ -5,8 +5,8 @@
 On a plain keyboard: d40, r20x30, 75->52. One unit at the end counts for every dimension. A bare number is an
 area where the section was one, else a diameter. Two without a shape could be a tube or a flat bar: they are
 taken as what the section was before, and refused where that says nothing, since a wrong guess would change
-the area silently. A wall becomes the inside diameter exactly, before anything is rounded; where that makes a long
-number of the wall, the bore is written instead.
+the area silently. A wall becomes the inside diameter exactly, before anything is rounded; where that makes a
+long number of the wall, the bore is written instead.
 """
 
 from __future__ import annotations

@@ -80,7 +80,7 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
     ),
     "stop_not_yet": (
         later("joint {joint} has a stop, which this version keeps but does not solve yet"),
-        later("the member can be computed without it only"),
+        later("nothing is computed while it is there"),
     ),
     "movement_without_support": (
         later("joint {joint} is moved by {case} but has no support to move"),
@@ -139,8 +139,10 @@ def _in_units(value: float, quantity: Quantity, system: UnitSystemName) -> str:
 
 def shown(value: object) -> str:
     """A value of the file as it stands there, cut where it is long."""
-    if isinstance(value, Mapping):
+    if isinstance(value, Mapping) or value in ("{…}", "{}"):
         return tr("a table of keys")
+    if value in ("[…]", "[]"):
+        return tr("a list")
     if isinstance(value, Sequence | frozenset | set) and not isinstance(value, str):
         return ", ".join(shown(part) for part in value) if _are_plain(value) else tr("a list")
     text = _json(value)

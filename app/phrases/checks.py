@@ -1,0 +1,198 @@
+"""The sentences of checks and of the verdict over them.
+
+Careful with what is said: "Passes" alone stands only where every check was made and passes and nothing in the
+member is compressed; since buckling is not covered, compression is named in the same line.
+"""
+
+from __future__ import annotations
+
+from collections import Counter
+from collections.abc import Mapping, Sequence
+from typing import Final
+
+from app.numerals import rounded
+from app.units import Quantity, format_value, symbol, to_display, utilisation_text
+from app.words import later, tr, trn
+from solver.checks import Check, CheckKind, Reason, Status
+from solver.model import UnitSystemName
+from solver.results import Results
+
+QUANTITIES: Final[Mapping[CheckKind, Quantity]] = {
+    "tension": "stress",
+    "compression": "stress",
+    "displacement": "displacement",
+    "relative": "displacement",
+    "reaction": "force",
+}
+
+CHECKS: Final[Mapping[CheckKind, str]] = {
+    "tension": later(
+        "{segment}: {value} of {limit} {unit} in tension, {utilisation}, at {position}, {combination}"
+    ),
+    "compression": later(
+        "{segment}: {value} of {limit} {unit} in compression, {utilisation}, at {position}, {combination}"
+    ),
+    "displacement": later(
+        "Joint {joint}: displacement {value} of {limit} {unit}, {utilisation}, {combination}"
+    ),
+    "relative": later(
+        "Joints {start} to {end}: relative displacement {value} of {limit} {unit}, {utilisation},"
+        " {combination}"
+    ),
+    "reaction": later("Joint {joint}: reaction {value} of {limit} {unit}, {utilisation}, {combination}"),
+}
+
+SUBJECTS: Final[Mapping[CheckKind, str]] = {
+    "tension": later("{segment}: tension"),
+    "compression": later("{segment}: compression"),
+    "displacement": later("Joint {joint}: displacement"),
+    "relative": later("Joints {start} to {end}: relative displacement"),
+    "reaction": later("Joint {joint}: reaction"),
+}
+
+# Why a check was not made, and what to enter for it.
+REASONS: Final[Mapping[Reason, tuple[str, str]]] = {
+    "no_allowable_tension": (
+        later("the material has no allowable stress in tension"),
+        later("enter one in the table of materials"),
+    ),
+    "no_allowable_compression": (
+        later("the material has no allowable stress in compression"),
+        later("enter one in the table of materials"),
+    ),
+    "no_support": (
+        later("the joint has no support and so no reaction"),
+        later("give it a support or take the limit out"),
+    ),
+}
+
+_PLACES: Final[Mapping[CheckKind, str]] = {
+    "tension": later("segment {segment}, {combination}"),
+    "compression": later("segment {segment}, {combination}"),
+    "displacement": later("joint {joint}, {combination}"),
+    "relative": later("joints {start} to {end}, {combination}"),
+    "reaction": later("joint {joint}, {combination}"),
+}
+
+
+def check_sentence(check: Check, system: UnitSystemName) -> str:
+    """A check in one sentence: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"."""
+    if check.value is None or check.limit is None or check.utilisation is None:
+        return not_made_sentence(check)
+    quantity = QUANTITIES[check.check]
+    value, limit = compared(check.value, check.limit, check.status, quantity, system)
+    return tr(CHECKS[check.check]).format(
+        **_names(check),
+        value=value.lstrip("\u2212") if quantity == "stress" else value,
+        limit=limit,
+        unit=symbol(quantity, system),
+        utilisation=utilisation_text(check.utilisation, check.status),
+        position=position_text(check.position, system),
+    )
+
+
+def not_made_sentence(check: Check) -> str:
+    """A check that was not made, with the reason and what to enter."""
+    subject = tr(SUBJECTS[check.check]).format(**_names(check))
+    sentence = tr("{subject} not checked, {combination}: {reason}")
+    reason = reason_text(check.reason) if check.reason else tr("it could not be made")
+    return sentence.format(subject=subject, combination=check.combination, reason=reason)
+
+
+def reason_text(reason: Reason) -> str:
+    """Why a check was not made, and what to enter for it."""
+    return "; ".join(map(tr, REASONS[reason]))
+
+
+def compared(
+    value: float, limit: float, status: Status, quantity: Quantity, system: UnitSystemName
+) -> tuple[str, str]:
+    """Value and limit in display units, with as many digits as it takes not to contradict the status."""
+    shown_limit = rounded(to_display(limit, quantity, system), _LIMIT_DIGITS)
+    digits = _VALUE_DIGITS
+    while digits < _MOST_DIGITS and _contradicts(
+        abs(rounded(to_display(value, quantity, system), digits)), shown_limit, status
+    ):
+        digits += 1
+    return (
+        format_value(value, quantity, system, digits),
+        format_value(limit, quantity, system, _LIMIT_DIGITS, strip=True),
+    )
+
+
+_VALUE_DIGITS: Final = 3
+_LIMIT_DIGITS: Final = 6
+_MOST_DIGITS: Final = 17
+
+
+def _contradicts(value: float, limit: float, status: Status) -> bool:
+    return (value > limit) != (status == "fail")
+
+
+def position_text(position: float | None, system: UnitSystemName) -> str:
+    """A position along the member, with its unit."""
+    return "" if position is None else format_value(position, "length", system, strip=True, with_unit=True)
+
+
+def _names(check: Check) -> dict[str, str | None]:
+    """What a check is of, for the templates."""
+    return {
+        "segment": check.segment,
+        "joint": check.joint,
+        "start": check.start,
+        "end": check.end,
+        "combination": check.combination,
+    }
+
+
+def has_compression(checks: Sequence[Check]) -> bool:
+    """Whether any checked state compresses any segment: such a stress always has a check, made or not."""
+    return any(check.check == "compression" for check in checks)
+
+
+def verdict_line(results: Results) -> str:
+    """The verdict, which never flatters; compression takes its note along, since buckling is not covered."""
+    return f"{_verdict(results)}; {tr('buckling not checked')}" if _needs_note(results) else _verdict(results)
+
+
+def _needs_note(results: Results) -> bool:
+    """No note where the line says that the member does not pass, or nothing was checked."""
+    made = any(check.status != "not_made" for check in results.checks)
+    return made and results.verdict != "fail" and has_compression(results.checks)
+
+
+def _verdict(results: Results) -> str:
+    counts = Counter(check.status for check in results.checks)
+    if counts["fail"]:
+        return tr("Does not pass")
+    if not counts["pass"]:
+        return tr("Nothing checked")
+    if counts["not_made"]:
+        return trn("No check fails, {count} not made", "No check fails, {count} not made", counts["not_made"])
+    return tr("Passes")
+
+
+def verdict_detail(results: Results) -> str:
+    """What stands under the verdict: the largest utilisation, what fails, what was not made."""
+    governing = results.governing
+    if governing is None or governing.utilisation is None:
+        return _nothing_made(results)
+    text = utilisation_text(governing.utilisation, governing.status)
+    place = tr(_PLACES[governing.check]).format(**_names(governing))
+    largest = tr("Largest utilisation {utilisation}: {place}").format(utilisation=text, place=place)
+    return f"{largest}. {_counted(results)}" if results.verdict == "fail" else largest
+
+
+def _nothing_made(results: Results) -> str:
+    if not results.checks:
+        return tr("Enter allowable stresses or limits to have the member checked")
+    return trn("{count} check could not be made", "{count} checks could not be made", len(results.checks))
+
+
+def _counted(results: Results) -> str:
+    """How many of the checks fail and how many were not made."""
+    counts = Counter(check.status for check in results.checks)
+    fails = tr("{fail} of {count} checks fail").format(fail=counts["fail"], count=len(results.checks))
+    if not counts["not_made"]:
+        return fails
+    return f"{fails}, {tr('{count} not made').format(count=counts['not_made'])}"

@@ -1,0 +1,33 @@
+"""Standing sentences: the numerical error in words, what this version does not cover, the caution."""
+
+from __future__ import annotations
+
+import math
+from typing import Final
+
+from app.numerals import at_most
+from app.words import later, tr
+
+BUCKLING: Final = later("Buckling in compression is not covered by this version: check it separately")
+BEDDING: Final = later(
+    "The bedding pushes and pulls alike and has no slip limit: check that the ground can do so"
+)
+
+
+def numerical_error_sentence(bound: float) -> str:
+    """The relative error bound of a state (or the largest of several) in words; never rounded down."""
+    if not math.isfinite(bound):
+        return tr("Numerical error unknown")
+    sentence = tr(
+        "Numerical error at most {bound} (displacement, energy norm);"
+        " it says nothing about the model or the input"
+    )
+    return sentence.format(bound=at_most(bound))
+
+
+def caution() -> str:
+    """What every sheet, terminal and window says about the calculation as a whole."""
+    return tr(
+        "An aid to calculation, to be verified by a competent engineer;"
+        " local codes and licensed practice govern."
+    )
