@@ -101,6 +101,7 @@ def _draw_rows(
             fill=style.fill,
             bold=style.bold,
             italic=style.italic,
+            backed=True,
             anchor="middle",
         )
     edge.reach += (max(row for _, row in placed) + 1) * pitch + 2.5
@@ -116,6 +117,7 @@ def _draw_turned(canvas: Canvas, ruler: Ruler, edge: Edge, labels: Sequence[Labe
             fill=style.fill,
             bold=style.bold,
             italic=style.italic,
+            backed=True,
             anchor="start" if edge.side > 0 else "end",
             upwards=True,
         )
@@ -134,6 +136,7 @@ def _draw_column(canvas: Canvas, ruler: Ruler, edge: Edge, labels: Sequence[Labe
             fill=style.fill,
             bold=style.bold,
             italic=style.italic,
+            backed=True,
             anchor="start" if edge.side > 0 else "end",
         )
     edge.reach += max(text_width(label.text, style.size) for label in kept) + 8.0

@@ -71,15 +71,16 @@ def member_figure(
     """The drawing; `positions` (n + 1,) in m, with the loads of `state` where given, and the dimension chain."""
     member = _on_ruler(project, positions)
     units = project.display.unit_system
-    canvas = Canvas()
+    canvas, feet = Canvas(), Canvas()
     half = max(member.half(s, t) for s in project.segments for t in (0.0, 1.0))
     near, far = Edge(1, half + 5), Edge(-1, half + 5)
-    _draw_body(canvas, member, far)
+    behind = _draw_body(canvas, member, far)
     _draw_supports(canvas, member, far, units)
     if loads is not None:
         draw_loads(canvas, member.ruler, near, loads, state, member.joints, units)
     if chain:
-        _draw_chain(canvas, member, far, units)
+        _draw_chain(canvas, feet, member, far, units)
+        canvas.parts[behind:behind] = feet.parts
     note = tr("Labels without room are left out; the tables hold them.") if near.left_out + far.left_out else ""
     alt = _alt(project, units)
     return Figure(canvas.render(alt), *canvas.size, alt, f"{_scale_note(member)} {note}".strip())
@@ -114,7 +115,8 @@ def _alt(project: Project, units: UnitSystemName) -> str:
     return tr("Drawing of the member, {length} long, segments {marks}").format(length=length, marks=marks)
 
 
-def _draw_body(canvas: Canvas, member: _Member, far: Edge) -> None:
+def _draw_body(canvas: Canvas, member: _Member, far: Edge) -> int:
+    """The segments with their marks; returns how many shapes lie behind all labels beside the member."""
     outside: list[Label] = []
     bedded = []
     for index, segment in enumerate(member.project.segments):
@@ -126,7 +128,9 @@ def _draw_body(canvas: Canvas, member: _Member, far: Edge) -> None:
         label = Label(float(member.joints[index] + member.joints[index + 1]) / 2, _short(segment.mark))
         if not _draw_mark(canvas, member, index, label):
             outside.append(label)
+    behind = len(canvas.parts)
     draw_lane(canvas, member.ruler, far, outside, Style(_MARK, INK, bold=True))
+    return behind
 
 
 def _short(mark: str) -> str:
@@ -206,35 +210,41 @@ def _draw_bedding_labels(canvas: Canvas, member: _Member, far: Edge, units: Unit
     draw_lane(canvas, member.ruler, far, labels, _QUIET)
 
 
-def _draw_chain(canvas: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
+def _draw_chain(canvas: Canvas, feet: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
     """Joint marks, then the lengths along a line with slanted ticks, then the sections."""
-    ruler, top = member.ruler, far.reach
+    ruler = member.ruler
     marks = [Label(float(a), _short(j.mark)) for a, j in zip(member.joints, member.project.joints, strict=True)]
     draw_lane(canvas, ruler, far, marks, Style(7.0, QUIET, italic=True))
     middles = [(a + b) / 2 for a, b in zip(member.joints, member.joints[1:], strict=False)]
     lengths = [format_value(s.length, "length", units, strip=True) for s in member.project.segments]
     draw_lane(canvas, ruler, far, [Label(float(m), t) for m, t in zip(middles, lengths, strict=True)], Style(7.5))
-    _draw_ticks(canvas, member, far, top)
+    _draw_ticks(canvas, member, far)
+    _draw_feet(feet, member, far)
     far.reach += 3
-    sections = _merged_sections(member, units)
+    sections = _section_labels(member, units)
     draw_lane(canvas, ruler, far, sections, _QUIET)
 
 
-def _draw_ticks(canvas: Canvas, member: _Member, far: Edge, top: float) -> None:
+def _draw_ticks(canvas: Canvas, member: _Member, far: Edge) -> None:
     ruler, line = member.ruler, far.at(1.5)
     canvas.path(ruler.points([(0.0, line), (ruler.extent, line)]), Ink(INK, 0.6))
     canvas.lines(
         ((ruler.point(a - 2.2, line - 2.2), ruler.point(a + 2.2, line + 2.2)) for a in member.joints.tolist()),
         Ink(INK, 1.0),
     )
-    feet = (
-        (ruler.point(a, far.side * (member.half_at_joint(i) + 2)), ruler.point(a, far.side * top))
+
+
+def _draw_feet(canvas: Canvas, member: _Member, far: Edge) -> None:
+    """Thin lines from the joints to the dimension chain."""
+    ruler = member.ruler
+    ends = (
+        (ruler.point(a, far.side * (member.half_at_joint(i) + 2)), ruler.point(a, far.at(0.0)))
         for i, a in enumerate(member.joints.tolist())
     )
-    canvas.lines(feet, Ink(QUIET, 0.35))
+    canvas.lines(ends, Ink(QUIET, 0.35))
 
 
-def _merged_sections(member: _Member, units: UnitSystemName) -> Sequence[Label]:
+def _section_labels(member: _Member, units: UnitSystemName) -> Sequence[Label]:
     from app.section_entry import section_text
 
     middles = ((a + b) / 2 for a, b in zip(member.joints, member.joints[1:], strict=False))

@@ -133,8 +133,6 @@ def _with_crossings(x: FloatArray, value: FloatArray, over: FloatArray) -> tuple
         )
         exact = at + 1 + np.arange(len(at))
         (value if level == 0.0 else over)[exact] = level
-        if level == 0.0:
-            over = np.asarray(over)
     return x, value, over
 
 

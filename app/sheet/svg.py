@@ -109,10 +109,15 @@ class Canvas:
         bold: bool = False,
         italic: bool = False,
         upwards: bool = False,
+        backed: bool = False,
     ) -> None:
-        """Text with its baseline at the point; `upwards` turns it to read from below."""
+        """Text with its baseline at the point; `upwards` turns it to read from below, `backed` hides lines."""
         shown = printable(text).replace("\n", " ")
-        self._reach_of_text(at, text_width(shown, size), size, anchor, upwards=upwards)
+        corners = _corners(at, text_width(shown, size), size, anchor, upwards=upwards)
+        for corner in corners:
+            self.reach(*corner)
+        if backed:
+            self.path(corners, Ink(fill="#FFFFFF"), closed=True)
         x, y = number(at[0]), number(at[1])
         style = (
             (' font-weight="700"' if bold else "")
@@ -123,13 +128,6 @@ class Canvas:
             f'<text x="{x}" y="{y}" font-family="{FONT}" font-size="{number(size)}" fill="{fill}"'
             f' text-anchor="{anchor}"{style}>{escape(shown)}</text>'
         )
-
-    def _reach_of_text(self, at: Point, width: float, size: float, anchor: Anchor, *, upwards: bool) -> None:
-        before = {"start": 0.0, "middle": width / 2, "end": width}[anchor]
-        along = (-before, width - before)
-        for run in along:
-            for rise in (-0.8 * size, 0.25 * size):
-                self.reach(*((at[0] + rise, at[1] - run) if upwards else (at[0] + run, at[1] + rise)))
 
     def hatch(self, points: Sequence[Point], colour: str) -> None:
         """The area inside the points in slanted lines."""
@@ -156,3 +154,12 @@ class Canvas:
             f' viewBox="{box}" role="img" aria-label={quoteattr(printable(title))}>'
             f"<defs>{definitions}</defs>{''.join(self.parts)}</svg>"
         )
+
+
+def _corners(at: Point, width: float, size: float, anchor: Anchor, *, upwards: bool) -> list[Point]:
+    """The corners of the box around a text."""
+    before = {"start": 0.0, "middle": width / 2, "end": width}[anchor]
+    box = [(-before, -0.8), (width - before, -0.8), (width - before, 0.25), (-before, 0.25)]
+    if upwards:
+        return [(at[0] + rise * size, at[1] - run) for run, rise in box]
+    return [(at[0] + run, at[1] + rise * size) for run, rise in box]

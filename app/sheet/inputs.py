@@ -1,0 +1,240 @@
+"""Every input with its unit, exact to the last digit, so that a checker can redo any number."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from msgspec import UnsetType
+
+from app.section_entry import section_text
+from app.sheet.blocks import Block, column, heading, paragraph, picture, table
+from app.sheet.member_figure import member_figure
+from app.sheet.readings import NOTHING, Readings
+from app.words import tr
+from solver.model import (
+    AreaSection,
+    FixedSupport,
+    Joint,
+    LoadCase,
+    Material,
+    Project,
+    SegmentLoad,
+    SpringSupport,
+    StopSupport,
+    end_of,
+)
+from solver.results import Results
+from solver.sections import area_coefficients
+
+
+def input_blocks(project: Project, results: Results, say: Readings) -> Iterator[Block]:
+    """The chapter of inputs."""
+    yield heading(tr("Input"))
+    yield _materials(project, say)
+    yield _segments(project, say)
+    yield _joints(project, results, say)
+    if not project.load_cases:
+        yield paragraph(tr("There are no load cases: the member is unloaded."))
+    for case in project.load_cases:
+        yield from _load_case(project, results, case, say)
+    yield from _combinations(project, say)
+    yield from _limits(project, say)
+
+
+def _materials(project: Project, say: Readings) -> Block:
+    columns = [
+        column(tr("Material"), align="left", wide=True),
+        column("E", say.unit("modulus")),
+        column("α", say.unit("expansion")),
+        column("ρ", say.unit("density")),
+        column(tr("Allowable in tension"), say.unit("stress")),
+        column(tr("Allowable in compression"), say.unit("stress")),
+    ]
+    return table(tr("Materials"), columns, [_material_row(m, say) for m in project.materials])
+
+
+def _material_row(material: Material, say: Readings) -> list[str]:
+    allowables = (material.allowable_tension, material.allowable_compression)
+    return [
+        material.name,
+        say.exact(material.modulus, "modulus"),
+        say.exact(material.expansion, "expansion"),
+        say.exact(material.density, "density"),
+        *(NOTHING if isinstance(v, UnsetType) else say.exact(v, "stress") for v in allowables),
+    ]
+
+
+def _segments(project: Project, say: Readings) -> Block:
+    bedded = any(s.bedding or end_of(s.bedding, s.bedding_end) for s in project.segments)
+    columns = [
+        column(tr("Segment"), align="left"),
+        column(tr("From – to"), align="left"),
+        column(tr("Length"), say.unit("length")),
+        column(tr("Section"), say.unit("size"), align="left", wide=True),
+        column(tr("Area"), say.unit("area")),
+        column(tr("Material"), align="left"),
+        *([column(tr("Bedding"), say.unit("bedding"))] if bedded else []),
+    ]
+    return table(tr("Segments, along +x"), columns, list(_segment_rows(project, say, bedded=bedded)))
+
+
+def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[list[str]]:
+    for index, segment in enumerate(project.segments):
+        first, _, last = area_coefficients(segment.section)
+        area = [say.read(a, "area") for a in (first, last)]
+        ends = f"{project.joints[index].mark} – {project.joints[index + 1].mark}"
+        row = [
+            segment.mark,
+            ends,
+            say.exact(segment.length, "length"),
+            _section(segment.section, say),
+            area[0] if first == last else " → ".join(area),
+            segment.material,
+        ]
+        if bedded:
+            row.append(say.pair(segment.bedding, end_of(segment.bedding, segment.bedding_end), "bedding"))
+        yield row
+
+
+def _section(section: object, say: Readings) -> str:
+    if isinstance(section, AreaSection):
+        return tr("area given")
+    return section_text(section, say.units)  # type: ignore[arg-type]
+
+
+def _joints(project: Project, results: Results, say: Readings) -> Block:
+    columns = [
+        column(tr("Joint"), align="left"),
+        column("x", say.unit("length")),
+        column(tr("Support"), align="left", wide=True),
+    ]
+    rows = [
+        [joint.mark, say.read(x, "length", digits=7), support_words(joint, say)]
+        for joint, x in zip(project.joints, results.position.tolist(), strict=True)
+    ]
+    return table(tr("Joints and supports"), columns, rows)
+
+
+def support_words(joint: Joint, say: Readings) -> str:
+    """The support in words."""
+    match joint.support:
+        case FixedSupport():
+            return tr("fixed")
+        case SpringSupport(stiffness=stiffness):
+            return tr("spring, {stiffness}").format(stiffness=say.exact(stiffness, "spring", unit=True))
+        case StopSupport(side=side, clearance=clearance):
+            gap = say.exact(clearance, "displacement", unit=True)
+            sense = "+x" if side == "plus" else "−x"
+            return tr("stop against {sense}, clearance {gap}").format(sense=sense, gap=gap)
+        case _:
+            return tr("free")
+
+
+def _load_case(project: Project, results: Results, case: LoadCase, say: Readings) -> Iterator[Block]:
+    yield heading(tr("Load case {name}").format(name=case.name), 2)
+    if case.gravity:
+        value = say.exact(case.gravity, "acceleration", unit=True)
+        yield paragraph(tr("Gravity along +x: {value}, on the density of every segment.").format(value=value))
+    state = _state_of(results, case.name)
+    if state is not None:
+        figure = member_figure(project, results.position, results.loads, state, chain=False)
+        yield picture(figure, tr("Load case {name}: loads, factor 1").format(name=case.name))
+    if case.segment_loads:
+        yield _segment_loads(case, say)
+    if case.joint_loads:
+        yield _joint_loads(case, say)
+    if not (case.gravity or case.segment_loads or case.joint_loads):
+        yield paragraph(tr("No loads."))
+
+
+def _state_of(results: Results, name: str) -> int | None:
+    try:
+        return results.state_index(name, "case")
+    except KeyError:
+        return None
+
+
+def _segment_loads(case: LoadCase, say: Readings) -> Block:
+    columns = [
+        column(tr("Segment"), align="left", wide=True),
+        column(tr("q at start"), say.unit("distributed")),
+        column(tr("q at end"), say.unit("distributed")),
+        column(tr("ΔT at start"), say.unit("temperature")),
+        column(tr("ΔT at end"), say.unit("temperature")),
+        column(tr("Lack of fit λ"), say.unit("displacement")),
+    ]
+    return table(tr("On segments"), columns, [_segment_load_row(load, say) for load in case.segment_loads])
+
+
+def _segment_load_row(load: SegmentLoad, say: Readings) -> list[str]:
+    return [
+        load.segment,
+        say.exact(load.load_start, "distributed"),
+        say.exact(end_of(load.load_start, load.load_end), "distributed"),
+        say.exact(load.temperature_start, "temperature"),
+        say.exact(end_of(load.temperature_start, load.temperature_end), "temperature"),
+        say.exact(load.lack_of_fit, "displacement"),
+    ]
+
+
+def _joint_loads(case: LoadCase, say: Readings) -> Block:
+    columns = [
+        column(tr("Joint"), align="left", wide=True),
+        column(tr("Force P"), say.unit("force")),
+        column(tr("Movement δ of the support"), say.unit("displacement")),
+    ]
+    rows = [
+        [load.joint, say.exact(load.force, "force"), say.exact(load.movement, "displacement")]
+        for load in case.joint_loads
+    ]
+    return table(tr("At joints"), columns, rows)
+
+
+def _combinations(project: Project, say: Readings) -> Iterator[Block]:
+    yield heading(tr("Combinations and limits"), 2)
+    if not project.combinations:
+        yield paragraph(tr("No combinations: every load case is checked alone with factor 1."))
+        return
+    columns = [
+        column(tr("Combination"), align="left"),
+        column(tr("Load cases with their factors"), align="left", wide=True),
+        column(tr("Factor f on allowable stresses")),
+    ]
+    rows = [
+        [
+            combination.name,
+            factors_text(combination.factors, say),
+            say.exact(combination.allowable_factor, "factor"),
+        ]
+        for combination in project.combinations
+    ]
+    yield table(tr("Combinations"), columns, rows)
+
+
+def factors_text(factors: object, say: Readings) -> str:
+    """The factors as a sum: "1.35 · Dead + 1.5 · Service"; nothing where every case counts 0."""
+    parts = [f"{say.exact(factor, 'factor')} · {name}" for name, factor in dict(factors).items()]  # type: ignore[call-overload]
+    return " + ".join(parts) or tr("no load case")
+
+
+def _limits(project: Project, say: Readings) -> Iterator[Block]:
+    limits = project.limits
+    rows = [
+        *(
+            [tr("Displacement of joint {joint}").format(joint=v.joint), "|u|", say.exact(v.limit, "displacement", unit=True)]
+            for v in limits.displacement
+        ),
+        *(
+            [tr("Movement of joint {end} against {start}").format(end=v.end, start=v.start), "|Δu|", say.exact(v.limit, "displacement", unit=True)]
+            for v in limits.relative
+        ),
+        *(
+            [tr("Reaction at joint {joint}").format(joint=v.joint), "|R|", say.exact(v.limit, "force", unit=True)]
+            for v in limits.reaction
+        ),
+    ]
+    if not rows:
+        yield paragraph(tr("No limits on displacements or reactions are set."))
+        return
+    columns = [column(tr("Limit on"), align="left", wide=True), column("", align="left"), column(tr("At most"))]
+    yield table(tr("Limits"), columns, rows)

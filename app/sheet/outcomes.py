@@ -1,0 +1,237 @@
+"""Results of every checked state: the strips, segments, joints, equilibrium, energy, numerical error."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+import numpy as np
+
+from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
+from app.sheet.figures import envelope_figure, state_figure
+from app.sheet.inputs import factors_text
+from app.sheet.readings import NOTHING, Readings
+from app.sheet.verdicts import status_word
+from app.phrases import numerical_error_sentence
+from app.units import utilisation_text
+from app.words import tr
+from solver.arrays import FloatArray
+from solver.checks import Check
+from solver.results import Results, State
+
+
+def outcome_blocks(results: Results, say: Readings) -> Iterator[Block]:
+    """The chapter of results, one part for each checked state, then the envelope."""
+    yield heading(tr("Results"))
+    checked = [(index, state) for index, state in enumerate(results.states) if state.checked]
+    for index, state in checked:
+        yield from _state_blocks(results, index, state, say)
+    if len(checked) > 1:
+        yield from _envelope_blocks(results, say)
+
+
+def _state_blocks(results: Results, index: int, state: State, say: Readings) -> Iterator[Block]:
+    yield heading(state_title(state), 2)
+    if state.kind == "combination":
+        yield paragraph(
+            tr("{factors}; factor on allowable stresses {factor}.").format(
+                factors=factors_text(state.factors, say), factor=say.exact(state.allowable_factor, "factor")
+            )
+        )
+    caption = tr(
+        "{name}: displacement u, axial force N (+ tension, − compression), stress σ within its allowables"
+        " (dashed), utilisation. Hatched: over the limit."
+    )
+    yield picture(state_figure(results, index), caption.format(name=state.name))
+    yield _segments(results, index, say)
+    yield _joints(results, index, say)
+    yield _balance(results, index, say)
+
+
+def state_title(state: State) -> str:
+    """What a state is called in a heading."""
+    if state.kind == "unloaded":
+        return tr("Unloaded member")
+    words = tr("Combination {name}") if state.kind == "combination" else tr("Load case {name}, alone")
+    return words.format(name=state.name)
+
+
+def _largest(values: FloatArray) -> float:
+    finite = np.abs(values[np.isfinite(values)])
+    return float(finite.max()) if finite.size else 0.0
+
+
+def _segments(results: Results, index: int, say: Readings) -> Block:
+    length, stress = say.unit("length"), say.unit("stress")
+    columns = [
+        column(tr("Segment"), align="left"),
+        column(tr("N at start"), say.unit("force")),
+        column(tr("N at end"), say.unit("force")),
+        column(tr("σ largest"), stress),
+        column(tr("at x"), length),
+        column(tr("σ smallest"), stress),
+        column(tr("at x"), length),
+        column(tr("Utilisation")),
+        column(tr("at x"), length),
+        column(tr("Check"), align="left"),
+    ]
+    return table(
+        tr("Segments: axial force, stress, utilisation"),
+        columns,
+        [_segment_row(results, index, place, say) for place in range(len(results.project.segments))],
+        strong=_failing(results, index),
+    )
+
+
+def _segment_row(results: Results, index: int, place: int, say: Readings) -> list[str]:
+    segments, mark = results.segments, results.project.segments[place].mark
+    force = max(_largest(segments.force_max[index]), _largest(segments.force_min[index]))
+    stress = max(_largest(segments.stress_max[index]), _largest(segments.stress_min[index]))
+
+    def at(values: FloatArray) -> str:
+        return _position(results, float(values[index, place]), say)
+
+    return [
+        mark,
+        say.read(segments.force_start[index, place], "force", beside=force),
+        say.read(segments.force_end[index, place], "force", beside=force),
+        say.read(segments.stress_max[index, place], "stress", beside=stress),
+        at(segments.stress_max_at),
+        say.read(segments.stress_min[index, place], "stress", beside=stress),
+        at(segments.stress_min_at),
+        *_utilisation(results, index, place, say),
+    ]
+
+
+def _position(results: Results, x: float, say: Readings) -> str:
+    if math.isnan(x):
+        return NOTHING
+    return say.read(x, "length", beside=float(results.position[-1]))
+
+
+def _of_segment(results: Results, index: int, mark: str) -> list[Check]:
+    name = results.states[index].name
+    return [c for c in results.checks if c.segment == mark and c.combination == name]
+
+
+def _utilisation(results: Results, index: int, place: int, say: Readings) -> list[str]:
+    """Utilisation, its place, and the verdict of all checks of the segment in this state."""
+    checks = _of_segment(results, index, results.project.segments[place].mark)
+    statuses = {c.status for c in checks}
+    value = float(results.segments.utilisation[index, place])
+    if "fail" in statuses:
+        status = "fail"
+    else:
+        status = "not_made" if "not_made" in statuses else "pass"
+    words = status_word(status) if checks else tr("no stress")
+    if math.isnan(value):
+        return [NOTHING, NOTHING, words]
+    number = utilisation_text(value, "fail" if status == "fail" else "pass")
+    return [number, _position(results, float(results.segments.utilisation_at[index, place]), say), words]
+
+
+def _failing(results: Results, index: int) -> list[int]:
+    marks = {
+        c.segment
+        for c in results.checks
+        if c.status == "fail" and c.segment and c.combination == results.states[index].name
+    }
+    return [place for place, segment in enumerate(results.project.segments) if segment.mark in marks]
+
+
+def _joints(results: Results, index: int, say: Readings) -> Block:
+    solution = results.solution
+    moved, reactions = solution.joint_displacement[index], solution.reaction[index]
+    far, strong = _largest(moved), max(_largest(reactions), abs(float(solution.loads[index])))
+    columns = [
+        column(tr("Joint"), align="left", wide=True),
+        column("x", say.unit("length")),
+        column(tr("Displacement u"), say.unit("displacement")),
+        column(tr("Reaction R"), say.unit("force")),
+    ]
+    rows = [
+        [
+            joint.mark,
+            _position(results, x, say),
+            say.read(u, "displacement", beside=far),
+            NOTHING if math.isnan(r) else say.read(r, "force", beside=strong),
+        ]
+        for joint, x, u, r in zip(
+            results.project.joints, results.position.tolist(), moved.tolist(), reactions.tolist(), strict=True
+        )
+    ]
+    return table(tr("Joints: displacement and reaction"), columns, rows)
+
+
+def _balance(results: Results, index: int, say: Readings) -> Block:
+    solution = results.solution
+    reactions = solution.reaction[index]
+    parts = {
+        "loads": float(solution.loads[index]),
+        "reactions": float(np.nansum(reactions)),
+        "bedding": float(solution.bedding[index]),
+        "residual": float(solution.residual[index]),
+    }
+    beside = max(_largest(reactions), *(abs(v) for v in parts.values()))
+
+    def force(name: str) -> str:
+        return say.read(parts[name], "force", unit=True, beside=0.0 if name == "residual" else beside)
+
+    joined = tr("loads {loads}, reactions {reactions}, bedding {bedding}; left over {residual}")
+    energies = tr("strain energy {strain}, potential energy {potential}").format(
+        strain=say.read(solution.strain_energy[index], "energy", unit=True),
+        potential=say.read(solution.potential[index], "energy", unit=True),
+    )
+    return facts(
+        [
+            (tr("Equilibrium, sum along x"), joined.format(**{name: force(name) for name in parts})),
+            (tr("Energy"), energies),
+            (tr("Numerical error"), numerical_error_sentence(float(solution.error_bound[index]))),
+        ]
+    )
+
+
+def _envelope_blocks(results: Results, say: Readings) -> Iterator[Block]:
+    yield heading(tr("Envelope"), 2)
+    yield picture(
+        envelope_figure(results),
+        tr("Largest and smallest values over all checked states; extremes, not one state in equilibrium."),
+    )
+    length, stress = say.unit("length"), say.unit("stress")
+    columns = [
+        column(tr("Segment"), align="left"),
+        column(tr("N largest"), say.unit("force")),
+        column(tr("N smallest"), say.unit("force")),
+        column(tr("σ largest"), stress),
+        column(tr("σ smallest"), stress),
+        column(tr("Utilisation")),
+        column(tr("at x"), length),
+        column(tr("In"), align="left", wide=True),
+    ]
+    rows = [_envelope_row(results, place, say) for place in range(len(results.project.segments))]
+    yield table(tr("Envelope by segment"), columns, rows)
+
+
+def _envelope_row(results: Results, place: int, say: Readings) -> list[str]:
+    segments = results.segments
+    count = sum(state.checked for state in results.states)
+    force = max(_largest(segments.force_max[:count]), _largest(segments.force_min[:count]))
+    stress = max(_largest(segments.stress_max[:count]), _largest(segments.stress_min[:count]))
+    values = segments.utilisation[:count, place]
+    row = [
+        results.project.segments[place].mark,
+        say.read(float(segments.force_max[:count, place].max()), "force", beside=force),
+        say.read(float(segments.force_min[:count, place].min()), "force", beside=force),
+        say.read(float(segments.stress_max[:count, place].max()), "stress", beside=stress),
+        say.read(float(segments.stress_min[:count, place].min()), "stress", beside=stress),
+    ]
+    if np.isnan(values).all():
+        return [*row, NOTHING, NOTHING, NOTHING]
+    worst = int(np.nanargmax(values))
+    fails = any(c.status == "fail" for c in _of_segment(results, worst, row[0]))
+    return [
+        *row,
+        utilisation_text(float(values[worst]), "fail" if fails else "pass"),
+        _position(results, float(segments.utilisation_at[worst, place]), say),
+        results.states[worst].name,
+    ]

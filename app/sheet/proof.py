@@ -1,0 +1,243 @@
+"""The checks: the governing one by hand, then the worst of each kind, then what was not checked.
+
+Nothing is computed here: the formulas are filled with the solver's values, to so many digits that a checker
+with a pocket calculator arrives at the numbers shown.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+
+import numpy as np
+from msgspec import UnsetType
+
+from app.phrases import reason_text
+from app.sheet.blocks import Block, column, formula, heading, paragraph, table
+from app.sheet.readings import Readings
+from app.sheet.verdicts import check_row, kind_words, quantity_of, subject
+from app.units import utilisation_text
+from app.words import tr
+from solver.checks import Check
+from solver.fields import PointValues, at
+from solver.model import (
+    AreaSection,
+    RectangleSection,
+    RoundSection,
+    SpringSupport,
+    TubeSection,
+    end_of,
+)
+from solver.results import Results
+from solver.sections import area_at
+
+_BY_HAND = 7  # digits of numbers to compute with
+
+
+def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
+    """The chapter of checks."""
+    yield heading(tr("Checks"))
+    if results.governing is None:
+        yield paragraph(tr("No check could be made."), "caution")
+    else:
+        yield from _governing_blocks(results, results.governing, say)
+    made = [check for check in results.checks if check.status != "not_made"]
+    if made:
+        yield _worst_table(made, say)
+    failing = [check for check in made if check.status == "fail"]
+    if failing:
+        yield _table(tr("Every check that fails"), failing, say, strong=True)
+    yield from _not_made(results)
+
+
+def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    yield heading(tr("The governing check, by hand"), 2)
+    yield paragraph(
+        tr("Largest utilisation of all checks: {kind}, {subject}, {combination}.").format(
+            kind=kind_words(check), subject=subject(check), combination=check.combination
+        )
+    )
+    if check.segment is not None:
+        yield from _stress_by_hand(results, check, say)
+    elif check.joint is not None:
+        yield from _joint_by_hand(results, check, say)
+    else:
+        yield from _relative_by_hand(results, check, say)
+
+
+def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    state = _state(results, check)
+    place = next(i for i, s in enumerate(results.project.segments) if s.mark == check.segment)
+    x = float(check.position or 0.0)
+    s = min(1.0, max(0.0, (x - float(results.position[place])) / float(results.chain.length[place])))
+    values = _in_segment(results, state, x, place)
+    area = float(area_at(results.chain.area[place], np.array(s)))
+    yield paragraph(
+        tr("At x = {x}, {share} of the length of segment {mark} from its start:").format(
+            x=say.read(x, "length", unit=True, digits=_BY_HAND), share=f"{s:.6g}", mark=check.segment
+        )
+    )
+    yield _area_by_hand(results, place, s, area, say)
+    stress = say.read(values.stress, "stress", unit=True, digits=6)
+    force = say.read(values.force, "force", unit=True, digits=_BY_HAND)
+    size = say.read(area, "area", unit=True, digits=_BY_HAND)
+    alt = tr("σ = N / A = {force} / {area} = {stress}").format(force=force, area=size, stress=stress)
+    yield formula("stress_numbers", alt, force=force, area=size, stress=stress)
+    yield _utilisation_by_hand(results, check, state, stress, say)
+
+
+def _state(results: Results, check: Check) -> int:
+    return next(i for i, s in enumerate(results.states) if s.checked and s.name == check.combination)
+
+
+def _in_segment(results: Results, state: int, x: float, place: int) -> PointValues:
+    """The side of x that lies in the segment."""
+    readout = at(results, state, x)
+    sides = [side for side in (readout.left, readout.right) if side is not None]
+    return next((side for side in sides if side.segment == place), sides[0])
+
+
+def _area_by_hand(results: Results, place: int, s: float, area: float, say: Readings) -> Block:
+    """The area from the dimensions at that place, which vary linearly along the segment."""
+    section = results.project.segments[place].section
+
+    def size(start: float, end: float | UnsetType) -> str:
+        return say.read((1 - s) * start + s * end_of(start, end), "size", unit=True, digits=_BY_HAND)
+
+    result = say.read(area, "area", unit=True, digits=_BY_HAND)
+    match section:
+        case RoundSection():
+            parts = {"d": size(section.diameter, section.diameter_end)}
+            name, alt = "round_numbers", tr("A = π · ({d})² / 4 = {area}")
+        case TubeSection():
+            parts = {
+                "outer": size(section.outer, section.outer_end),
+                "inner": size(section.inner, section.inner_end),
+            }
+            name, alt = "tube_numbers", tr("A = π / 4 · (({outer})² − ({inner})²) = {area}")
+        case RectangleSection():
+            parts = {"b": size(section.width, section.width_end), "h": size(section.depth, section.depth_end)}
+            name, alt = "rectangle_numbers", tr("A = {b} · {h} = {area}")
+        case AreaSection():
+            parts, name, alt = {}, "area_numbers", tr("A = {area}")
+    return formula(name, alt.format(area=result, **parts), area=result, **parts)
+
+
+def _utilisation_by_hand(results: Results, check: Check, state: int, stress: str, say: Readings) -> Block:
+    material = next(
+        m
+        for m in results.project.materials
+        for s in results.project.segments
+        if s.mark == check.segment and m.name == s.material
+    )
+    allowable = material.allowable_tension if check.check == "tension" else material.allowable_compression
+    parts = {
+        "stress": stress,
+        "factor": say.exact(results.states[state].allowable_factor, "factor"),
+        "allowable": say.exact(float(allowable or 0.0), "stress", unit=True),
+        "utilisation": utilisation_by_hand(check),
+    }
+    sign = "" if check.check == "tension" else "−"
+    alt = tr("utilisation = {sign}({stress}) / ({factor} · {allowable}) = {utilisation}")
+    return formula(f"{check.check}_numbers", alt.format(sign=sign, **parts), **parts)
+
+
+def utilisation_by_hand(check: Check) -> str:
+    """The utilisation to four decimals at least, more where its verdict needs them."""
+    value = check.utilisation or 0.0
+    shown = utilisation_text(value, check.status)
+    return shown if len(shown.partition(".")[2]) >= 4 else f"{value:.4f}"
+
+
+def _joint_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    quantity = quantity_of(check)
+    parts = _against_limit(check, say)
+    name = "R" if check.check == "reaction" else "u"
+    alt = tr("utilisation = |{name}| / limit = |{value}| / {limit} = {utilisation}").format(name=name, **parts)
+    if quantity == "force":
+        yield from _spring_by_hand(results, check, say)
+    yield formula(f"{check.check}_numbers", alt, **parts)
+
+
+def _against_limit(check: Check, say: Readings) -> dict[str, str]:
+    quantity = quantity_of(check)
+    return {
+        "value": say.read(float(check.value or 0.0), quantity, unit=True, digits=6),
+        "limit": say.exact(float(check.limit or 0.0), quantity, unit=True),
+        "utilisation": utilisation_by_hand(check),
+    }
+
+
+def _spring_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    """A spring's reaction from its stiffness and the joint's displacement."""
+    place = next(i for i, j in enumerate(results.project.joints) if j.mark == check.joint)
+    support, state = results.project.joints[place].support, _state(results, check)
+    if not isinstance(support, SpringSupport):
+        return
+    parts = {
+        "stiffness": say.exact(support.stiffness, "spring", unit=True),
+        "u": say.read(float(results.solution.joint_displacement[state, place]), "displacement", unit=True, digits=_BY_HAND),
+        "movement": say.read(float(results.loads.movement[state, place]), "displacement", unit=True, digits=_BY_HAND),
+        "reaction": say.read(float(check.value or 0.0), "force", unit=True, digits=6),
+    }
+    alt = tr("R = −k (u − δ) = −{stiffness} · ({u} − ({movement})) = {reaction}").format(**parts)
+    yield formula("spring_numbers", alt, **parts)
+
+
+def _relative_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    state = _state(results, check)
+    joints = {joint.mark: index for index, joint in enumerate(results.project.joints)}
+    moved = results.solution.joint_displacement[state]
+    parts = _against_limit(check, say) | {
+        name: say.read(float(moved[joints[str(mark)]]), "displacement", unit=True, digits=_BY_HAND)
+        for name, mark in (("start", check.start), ("end", check.end))
+    }
+    alt = tr("utilisation = |u at {to} − u at {of}| / limit = |{end} − ({start})| / {limit} = {utilisation}")
+    yield formula("relative_numbers", alt.format(to=check.end, of=check.start, **parts), **parts)
+
+
+def _key(check: Check) -> tuple[str | None, ...]:
+    return (check.segment, check.joint, check.start, check.end, None if check.segment else check.check)
+
+
+def _worst_table(made: Iterable[Check], say: Readings) -> Block:
+    """The largest utilisation of every segment and of every limit, worst first."""
+    worst: dict[tuple[str | None, ...], Check] = {}
+    for check in made:
+        other = worst.get(_key(check))
+        if other is None or (check.utilisation or 0.0) > (other.utilisation or 0.0):
+            worst[_key(check)] = check
+    ordered = sorted(worst.values(), key=lambda check: -(check.utilisation or 0.0))
+    return _table(tr("Largest utilisation of each segment and limit, the worst first"), ordered, say)
+
+
+def _table(title: str, checks: list[Check], say: Readings, *, strong: bool = False) -> Block:
+    columns = [
+        column(tr("Of"), align="left"),
+        column(tr("What"), align="left"),
+        column(tr("In"), align="left", wide=True),
+        column(tr("at x")),
+        column(tr("Value")),
+        column(tr("Limit")),
+        column(tr("Utilisation")),
+        column(tr("Verdict"), align="left"),
+    ]
+    bold = range(len(checks)) if strong else [i for i, c in enumerate(checks) if c.status == "fail"]
+    return table(title, columns, [check_row(check, say) for check in checks], strong=list(bold))
+
+
+def _not_made(results: Results) -> Iterator[Block]:
+    missing = [check for check in results.checks if check.status == "not_made"]
+    yield heading(tr("Not checked"), 2)
+    if not missing:
+        yield paragraph(tr("Every check of stresses and limits that the input asks for was made."))
+        return
+    columns = [
+        column(tr("Of"), align="left"),
+        column(tr("What"), align="left"),
+        column(tr("In"), align="left"),
+        column(tr("Why not, and what to enter"), align="left", wide=True),
+    ]
+    rows = [
+        [subject(c), kind_words(c), c.combination, reason_text(c.reason)] for c in missing if c.reason is not None
+    ]
+    yield table(tr("NOT CHECKED"), columns, rows)

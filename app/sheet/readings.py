@@ -1,0 +1,41 @@
+"""Numbers of a sheet as text in the project's display units: entries exact, results to a few digits."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from app.numerals import MINUS
+from app.units import Quantity, entry_text, format_value, symbol
+from solver.model import UnitSystemName
+
+NOTHING = "–"
+DIGITS = 5
+_ROUNDING = 1e-10  # of the largest value beside it: less than this is rounding and reads 0
+
+
+@dataclass(frozen=True, slots=True)
+class Readings:
+    """The words for numbers in one unit system."""
+
+    units: UnitSystemName
+
+    def unit(self, quantity: Quantity) -> str:
+        """The unit's symbol."""
+        return symbol(quantity, self.units)
+
+    def exact(self, value: float, quantity: Quantity, *, unit: bool = False) -> str:
+        """An entry, to its last digit."""
+        text = entry_text(float(value), quantity, self.units).replace("-", MINUS)
+        return f"{text} {self.unit(quantity)}".rstrip() if unit else text
+
+    def pair(self, start: float, end: float, quantity: Quantity) -> str:
+        """An entry that varies from start to end."""
+        first, last = self.exact(start, quantity), self.exact(end, quantity)
+        return first if first == last else f"{first} → {last}"
+
+    def read(
+        self, value: float, quantity: Quantity, *, unit: bool = False, digits: int = DIGITS, beside: float = 0.0
+    ) -> str:
+        """A result; one that is nothing but rounding beside the largest of its kind reads 0."""
+        shown = 0.0 if abs(value) < _ROUNDING * abs(beside) else float(value)
+        return format_value(shown, quantity, self.units, digits, with_unit=unit)

@@ -1,0 +1,43 @@
+"""The head of the sheet: who, what, when, from which file, and the verdict in one line."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Final
+
+from app.sheet.blocks import Value
+from app.sheet.printable import shortened
+from app.words import tr
+from solver.model import Project
+
+LONGEST_TITLE: Final = 160
+_LONGEST_FIELD: Final = 100
+
+
+@dataclass(frozen=True, slots=True)
+class Origin:
+    """Where the sheet comes from: file, date (ISO), program with version, fingerprint of the project."""
+
+    file_name: str
+    date: str
+    program: str
+    sha256: str
+
+
+def title_block(project: Project, origin: Origin) -> dict[str, Value]:
+    """The fields of the title block, as pairs in reading order; what nobody filled in stays blank to sign."""
+    sheet = project.sheet
+    return {
+        "title": shortened(project.title, LONGEST_TITLE) or tr("Untitled member"),
+        "fields": [
+            [tr("Job"), shortened(sheet.job, _LONGEST_FIELD)],
+            [tr("Revision"), shortened(sheet.revision, _LONGEST_FIELD)],
+            [tr("Author"), shortened(sheet.author, _LONGEST_FIELD)],
+            [tr("Checker"), shortened(sheet.checker, _LONGEST_FIELD)],
+            [tr("Date of the calculation"), shortened(sheet.date, _LONGEST_FIELD)],
+            [tr("Date of this sheet"), origin.date],
+            [tr("File"), shortened(origin.file_name, _LONGEST_FIELD)],
+            [tr("Program"), origin.program],
+        ],
+        "fingerprint": [tr("SHA-256 of the project as saved"), origin.sha256],
+    }
