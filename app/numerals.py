@@ -87,14 +87,14 @@ def reading(value: float, digits: int, *, strip: bool = False) -> str:
         return "∞" if value > 0 else MINUS + "∞"
     if value != 0 and not 1e-4 <= abs(value) < 1e9:
         return _with_power(value, digits, strip=strip)
-    return fixed(value, _decimals(value, digits), strip=strip)
+    return fixed(value, decimals_for(value, digits), strip=strip)
 
 
 def rounded(value: float, digits: int) -> float:
     """The number that `reading` shows."""
     if value != 0 and not 1e-4 <= abs(value) < 1e9:
         return float(f"{value:.{digits - 1}e}")
-    return float(f"{value:.{_decimals(value, digits)}f}")
+    return float(f"{value:.{decimals_for(value, digits)}f}")
 
 
 def at_most(bound: float) -> str:
@@ -114,7 +114,7 @@ def fixed(value: float, decimals: int, *, strip: bool = False) -> str:
     return sign + _grouped(whole) + (point + part if part else "")
 
 
-def _decimals(value: float, digits: int) -> int:
+def decimals_for(value: float, digits: int) -> int:
     """How many decimals show `digits` significant digits, after rounding (9.996 has one digit less)."""
     if value == 0:
         return 0

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections import Counter
 from collections.abc import Mapping, Sequence
-from typing import Final
+from typing import Final, Literal
 
 from app.numerals import rounded
 from app.units import Quantity, format_value, symbol, to_display, utilisation_text
@@ -42,6 +42,12 @@ CHECKS: Final[Mapping[CheckKind, str]] = {
     "reaction": later("Joint {joint}: reaction {value} of {limit} {unit}, {utilisation}, {combination}"),
 }
 
+# Of a stress beside a mark and a utilisation of its own.
+SHORT: Final[Mapping[Literal["tension", "compression"], str]] = {
+    "tension": later("{value} of {limit} {unit} in tension, at {position}, {combination}"),
+    "compression": later("{value} of {limit} {unit} in compression, at {position}, {combination}"),
+}
+
 SUBJECTS: Final[Mapping[CheckKind, str]] = {
     "tension": later("{segment}: tension"),
     "compression": later("{segment}: compression"),
@@ -50,20 +56,34 @@ SUBJECTS: Final[Mapping[CheckKind, str]] = {
     "reaction": later("Joint {joint}: reaction"),
 }
 
-# Why a check was not made, and what to enter for it.
-REASONS: Final[Mapping[Reason, tuple[str, str]]] = {
+# Why a check was not made.
+REASONS: Final[Mapping[Reason, str]] = {
+    "no_allowable_tension": later("the material has no allowable stress in tension"),
+    "no_allowable_compression": later("the material has no allowable stress in compression"),
+    "no_support": later("the joint has no support and so no reaction"),
+}
+
+# What to enter for it; a second wording names the material.
+REMEDIES: Final[Mapping[Reason, tuple[str, str]]] = {
     "no_allowable_tension": (
-        later("the material has no allowable stress in tension"),
-        later("enter one in the table of materials"),
+        later("enter the material's allowable stress in tension"),
+        later("enter an allowable stress in tension for {material}"),
     ),
     "no_allowable_compression": (
-        later("the material has no allowable stress in compression"),
-        later("enter one in the table of materials"),
+        later("enter the material's allowable stress in compression"),
+        later("enter an allowable stress in compression for {material}"),
     ),
     "no_support": (
-        later("the joint has no support and so no reaction"),
+        later("give it a support or take the limit out"),
         later("give it a support or take the limit out"),
     ),
+}
+
+# Several checks not made for the same reason, in one sentence.
+NOT_MADE: Final[Mapping[Reason, str]] = {
+    "no_allowable_tension": later("Not checked: tension in {places} ({states})"),
+    "no_allowable_compression": later("Not checked: compression in {places} ({states})"),
+    "no_support": later("Not checked: reaction at joint {places} ({states})"),
 }
 
 _PLACES: Final[Mapping[CheckKind, str]] = {
@@ -79,14 +99,30 @@ def check_sentence(check: Check, system: UnitSystemName) -> str:
     """A check in one sentence: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"."""
     if check.value is None or check.limit is None or check.utilisation is None:
         return not_made_sentence(check)
+    return _filled(CHECKS[check.check], check, check.value, check.limit, check.utilisation, system)
+
+
+def short_sentence(check: Check, system: UnitSystemName) -> str:
+    """A made check of stress without its mark and utilisation, where those stand beside it."""
+    if check.value is None or check.limit is None or check.utilisation is None:
+        return not_made_sentence(check)
+    template = SHORT["tension" if check.check == "tension" else "compression"]
+    return _filled(template, check, check.value, check.limit, check.utilisation, system)
+
+
+def _filled(
+    template: str, check: Check, value: float, limit: float, utilisation: float, system: UnitSystemName
+) -> str:
     quantity = QUANTITIES[check.check]
-    value, limit = compared(check.value, check.limit, check.status, quantity, system)
-    return tr(CHECKS[check.check]).format(
+    # A stress has its sign in words, tension or compression.
+    size = abs(value) if quantity == "stress" else value
+    value_text, limit_text = compared(size, limit, check.status, quantity, system)
+    return tr(template).format(
         **_names(check),
-        value=value.lstrip("\u2212") if quantity == "stress" else value,
-        limit=limit,
+        value=value_text,
+        limit=limit_text,
         unit=symbol(quantity, system),
-        utilisation=utilisation_text(check.utilisation, check.status),
+        utilisation=utilisation_text(utilisation, check.status),
         position=position_text(check.position, system),
     )
 
@@ -101,7 +137,13 @@ def not_made_sentence(check: Check) -> str:
 
 def reason_text(reason: Reason) -> str:
     """Why a check was not made, and what to enter for it."""
-    return "; ".join(map(tr, REASONS[reason]))
+    return f"{tr(REASONS[reason])}; {remedy_text(reason)}"
+
+
+def remedy_text(reason: Reason, material: str = "") -> str:
+    """What to enter to have the check made, naming the material where it is known."""
+    general, named = REMEDIES[reason]
+    return tr(named).format(material=material) if material else tr(general)
 
 
 def compared(

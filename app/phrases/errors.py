@@ -15,8 +15,7 @@ from solver.model import Project, UnitSystemName
 ERRORS: Final[Mapping[type[InputError], str]] = {
     StiffnessContrast: later(
         "{combination}: stiffnesses are so far apart that the digits do not suffice ({share} of the largest"
-        " force is left over at joint {joint}); take a fixed support for a very stiff spring, or join very short"
-        " segments"
+        " force is left over at joint {joint}); fix what a very stiff spring holds or join tiny segments"
     ),
     BoundNotMet: later(
         "{combination}: the numerical error can be held to {bound} only, {tolerance} is wanted; look for"

@@ -1,0 +1,29 @@
+"""What is found, as window, terminal and sheet all show it: frozen values made from `Results`, with words.
+
+`records` says what there is to show, `stress` and `limits` make the checked part, `books` reactions,
+movements and energy. Nothing here is computed anew: the numbers were made and compared by the solver.
+"""
+
+from app.findings.make import findings
+from app.findings.records import (
+    Band,
+    Findings,
+    JointReaction,
+    LimitFinding,
+    Movement,
+    NotMade,
+    SegmentFinding,
+    StateBooks,
+)
+
+__all__ = [
+    "Band",
+    "Findings",
+    "JointReaction",
+    "LimitFinding",
+    "Movement",
+    "NotMade",
+    "SegmentFinding",
+    "StateBooks",
+    "findings",
+]

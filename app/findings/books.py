@@ -1,0 +1,95 @@
+"""The books of each checked state: reactions with the sum of all forces along x, energies; and the movements.
+
+Every figure of a sum has the same decimals, those of its largest part, so that the column can be added by
+hand; what is left over is shown to the same decimals.
+"""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+
+from app.findings.records import JointReaction, Movement, StateBooks
+from app.numerals import decimals_for, fixed
+from app.phrases.notes import numerical_error_sentence
+from app.units import format_value, symbol, to_display
+from solver.arrays import FloatArray
+from solver.model import UnitSystemName
+from solver.results import Results, State
+
+_DIGITS = 4
+
+
+def state_books(results: Results, system: UnitSystemName) -> tuple[StateBooks, ...]:
+    """The books of every checked state, in order."""
+    bedded = bool(np.any(results.chain.bedding > 0))
+    return tuple(
+        _books(results, index, state, bedded, system)
+        for index, state in enumerate(results.states)
+        if state.checked
+    )
+
+
+def _books(results: Results, index: int, state: State, bedded: bool, system: UnitSystemName) -> StateBooks:
+    solution = results.solution
+    reactions = solution.reaction[index]
+    loads, bedding, residual = (
+        float(part[index]) for part in (solution.loads, solution.bedding, solution.residual)
+    )
+    column = _Column(np.array([*reactions[np.isfinite(reactions)], loads, bedding]), system)
+    return StateBooks(
+        name=state.name,
+        kind=state.kind,
+        reactions=_reactions(results, reactions, column),
+        reactions_text=column.text(float(np.nansum(reactions))),
+        loads_text=column.text(loads),
+        bedding_text=column.text(bedding) if bedded else "",
+        residual=residual,
+        residual_text=column.text(residual),
+        strain_text=_energy(solution.strain_energy[index], system),
+        potential_text=_energy(solution.potential[index], system),
+        numerical_error=numerical_error_sentence(float(solution.error_bound[index])),
+    )
+
+
+class _Column:
+    """Forces that are added up: all with the decimals of the largest."""
+
+    def __init__(self, forces: FloatArray, system: UnitSystemName) -> None:
+        largest = to_display(float(np.max(np.abs(forces), initial=0.0)), "force", system)
+        self._decimals = decimals_for(largest, _DIGITS)
+        self._system = system
+
+    def text(self, force: float) -> str:
+        """A force with its unit."""
+        number = fixed(to_display(force, "force", self._system), self._decimals)
+        return f"{number} {symbol('force', self._system)}"
+
+
+def _reactions(results: Results, reactions: FloatArray, column: _Column) -> tuple[JointReaction, ...]:
+    return tuple(
+        JointReaction(index, joint.mark, value, column.text(value))
+        for index, (joint, value) in enumerate(zip(results.project.joints, reactions.tolist(), strict=True))
+        if not math.isnan(value)
+    )
+
+
+def _energy(value: float, system: UnitSystemName) -> str:
+    return format_value(float(value), "energy", system, with_unit=True)
+
+
+def movements(results: Results, system: UnitSystemName) -> tuple[Movement, ...]:
+    """For each joint the displacement of largest size among the checked states."""
+    states = [state.name for state in results.states if state.checked]
+    moved = results.solution.joint_displacement[: len(states)]
+    worst = np.argmax(np.abs(moved), axis=0).tolist()
+    return tuple(
+        _movement(index, joint.mark, float(moved[row, index]), states[row], system)
+        for index, (joint, row) in enumerate(zip(results.project.joints, worst, strict=True))
+    )
+
+
+def _movement(joint: int, mark: str, value: float, state: str, system: UnitSystemName) -> Movement:
+    text = format_value(value, "displacement", system, with_unit=True)
+    return Movement(joint, mark, value, text, state)

@@ -1,0 +1,76 @@
+"""The limits on displacements and reactions, the worst first; and what was not checked, by reason."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+
+from app.findings.records import LimitFinding, NotMade
+from app.findings.stress import worst_by
+from app.phrases.checks import NOT_MADE, check_sentence, remedy_text
+from app.units import utilisation_text
+from app.words import tr
+from solver.checks import Check, Reason
+from solver.model import Project, UnitSystemName
+from solver.results import Results
+
+
+def limit_findings(results: Results, system: UnitSystemName) -> tuple[LimitFinding, ...]:
+    """One finding for each limit that was checked."""
+    places = {joint.mark: index for index, joint in enumerate(results.project.joints)}
+    limits = (
+        ((check.check, check.joint, check.start, check.end), check)
+        for check in results.checks
+        if check.segment is None
+    )
+    return tuple(_finding(check, places, system) for check in worst_by(limits))
+
+
+def _finding(check: Check, places: Mapping[str, int], system: UnitSystemName) -> LimitFinding:
+    marks = (check.joint, check.start, check.end)
+    utilisation = check.utilisation or 0.0
+    return LimitFinding(
+        joints=tuple(places[mark] for mark in marks if mark is not None),
+        sentence=check_sentence(check, system),
+        state=check.combination,
+        utilisation=utilisation,
+        utilisation_text=utilisation_text(utilisation, check.status),
+        status=check.status,
+        position=check.position,
+    )
+
+
+def not_made(results: Results) -> tuple[NotMade, ...]:
+    """The checks not made, together by reason and material, in the order of their first."""
+    materials = {segment.mark: segment.material for segment in results.project.segments}
+    groups: dict[tuple[Reason, str], list[Check]] = {}
+    for check in results.checks:
+        if check.reason is not None:
+            groups.setdefault((check.reason, materials.get(check.segment or "", "")), []).append(check)
+    return tuple(
+        _not_made(reason, material, checks, results.project) for (reason, material), checks in groups.items()
+    )
+
+
+def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: Project) -> NotMade:
+    segments = {check.segment for check in checks}
+    joints = {check.joint for check in checks}
+    states = list(dict.fromkeys(check.combination for check in checks))
+    places = [s.mark for s in project.segments if s.mark in segments]
+    places += [j.mark for j in project.joints if j.mark in joints]
+    return NotMade(
+        sentence=tr(NOT_MADE[reason]).format(places=_listed(places), states=_listed(states)),
+        remedy=remedy_text(reason, material),
+        count=len(checks),
+        segments=tuple(i for i, s in enumerate(project.segments) if s.mark in segments),
+        joints=tuple(i for i, j in enumerate(project.joints) if j.mark in joints),
+    )
+
+
+_MOST_LISTED = 6
+
+
+def _listed(names: Sequence[str]) -> str:
+    """Names one after the other; many are cut short, with how many there are."""
+    if len(names) <= _MOST_LISTED:
+        return ", ".join(names)
+    return tr("{names} … ({count})").format(names=", ".join(names[: _MOST_LISTED - 1]), count=len(names))

@@ -1,0 +1,44 @@
+"""The findings put together."""
+
+from __future__ import annotations
+
+from app.findings.books import movements, state_books
+from app.findings.limits import limit_findings, not_made
+from app.findings.records import Findings
+from app.findings.stress import segment_findings
+from app.phrases.checks import has_compression, verdict_detail, verdict_line
+from app.phrases.notes import BEDDING, BUCKLING, numerical_error_sentence
+from app.units import format_value
+from app.words import tr
+from solver.model import UnitSystemName
+from solver.results import Results
+
+
+def findings(results: Results, system: UnitSystemName) -> Findings:
+    """What there is to say about the results, in the display units of a system."""
+    moved = movements(results, system)
+    checked = [index for index, state in enumerate(results.states) if state.checked]
+    return Findings(
+        verdict=results.verdict,
+        headline=verdict_line(results),
+        detail=verdict_detail(results),
+        segments=segment_findings(results, system),
+        limits=limit_findings(results, system),
+        not_made=not_made(results),
+        notes=notes(results),
+        books=state_books(results, system),
+        movements=moved,
+        largest_movement=max(moved, key=lambda movement: abs(movement.value)),
+        mass_text=format_value(results.mass, "mass", system, with_unit=True),
+        numerical_error=numerical_error_sentence(float(results.solution.error_bound[checked].max())),
+    )
+
+
+def notes(results: Results) -> tuple[str, ...]:
+    """What this calculation does not say, where it matters for this member."""
+    standing = []
+    if has_compression(results.checks):
+        standing.append(tr(BUCKLING))
+    if (results.chain.bedding > 0).any():
+        standing.append(tr(BEDDING))
+    return tuple(standing)

@@ -1,0 +1,121 @@
+"""The shapes of the findings. Texts are in the user's language and display units; bare numbers are SI."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from solver.checks import Status, Verdict
+from solver.results import StateKind
+
+
+@dataclass(frozen=True, slots=True)
+class Band:
+    """The little scale of a segment: its range of stress between the allowables, all in Pa with their sign.
+
+    Where combinations have different allowable factors every stress is taken at the factor of the governing
+    one (σ · its factor / own factor), so that the bar leaves the scale exactly when a check fails. None for
+    an allowable that the material does not have; the texts are the scale's labels.
+    """
+
+    low: float
+    high: float
+    compression: float | None  # the allowable, negative
+    tension: float | None  # the allowable, positive
+    compression_text: str
+    tension_text: str
+
+
+@dataclass(frozen=True, slots=True)
+class SegmentFinding:
+    """The worst made check of stress in one segment."""
+
+    segment: int
+    mark: str
+    sentence: str  # the whole: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"
+    short: str  # without mark and utilisation, which stand beside it: "129 of 160 MPa in tension, at 760 mm"
+    state: str
+    utilisation: float
+    utilisation_text: str
+    status: Status
+    position: float
+    band: Band
+
+
+@dataclass(frozen=True, slots=True)
+class LimitFinding:
+    """The worst made check of one limit; `joints` are one index, or two for a relative displacement."""
+
+    joints: tuple[int, ...]
+    sentence: str
+    state: str
+    utilisation: float
+    utilisation_text: str
+    status: Status
+    position: float | None
+
+
+@dataclass(frozen=True, slots=True)
+class NotMade:
+    """Checks that were not made for one reason: what, and what to enter for it."""
+
+    sentence: str
+    remedy: str
+    count: int
+    segments: tuple[int, ...]
+    joints: tuple[int, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class JointReaction:
+    """The force of one support on the member along +x."""
+
+    joint: int
+    mark: str
+    value: float
+    text: str  # with unit
+
+
+@dataclass(frozen=True, slots=True)
+class StateBooks:
+    """One state's sum of forces along x, and its energies; the texts have their units."""
+
+    name: str
+    kind: StateKind
+    reactions: tuple[JointReaction, ...]
+    reactions_text: str  # their sum
+    loads_text: str  # all applied loads, self-weight included
+    bedding_text: str  # what the bedding exerts; empty for a member without bedding
+    residual: float
+    residual_text: str  # what is left of loads + reactions + bedding
+    strain_text: str
+    potential_text: str
+    numerical_error: str
+
+
+@dataclass(frozen=True, slots=True)
+class Movement:
+    """The largest displacement of one joint over the checked states, with its sign."""
+
+    joint: int
+    mark: str
+    value: float
+    text: str  # with unit
+    state: str
+
+
+@dataclass(frozen=True, slots=True)
+class Findings:
+    """Everything that is said about a solved member; over checked states only."""
+
+    verdict: Verdict
+    headline: str
+    detail: str
+    segments: tuple[SegmentFinding, ...]  # the worst first
+    limits: tuple[LimitFinding, ...]  # the worst first
+    not_made: tuple[NotMade, ...]
+    notes: tuple[str, ...]
+    books: tuple[StateBooks, ...]  # in the states' order
+    movements: tuple[Movement, ...]  # along the chain
+    largest_movement: Movement
+    mass_text: str
+    numerical_error: str  # of the worst state

@@ -1,0 +1,94 @@
+"""The stress checks by segment, the worst first, each with its little scale."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Mapping
+
+import numpy as np
+
+from app.findings.records import Band, SegmentFinding
+from app.phrases.checks import check_sentence, short_sentence
+from app.units import format_value, utilisation_text
+from solver.checks import Check
+from solver.model import UnitSystemName
+from solver.results import Results
+
+
+def worst_by(checks: Iterable[tuple[object, Check]]) -> list[Check]:
+    """The made check of largest utilisation for each key, the first of equals; the worst first."""
+    worst: dict[object, Check] = {}
+    for key, check in checks:
+        if check.utilisation is not None and check.utilisation > _utilisation(worst.get(key)):
+            worst[key] = check
+    return sorted(worst.values(), key=_utilisation, reverse=True)
+
+
+def _utilisation(check: Check | None) -> float:
+    return -1.0 if check is None or check.utilisation is None else check.utilisation
+
+
+def segment_findings(results: Results, system: UnitSystemName) -> tuple[SegmentFinding, ...]:
+    """One finding for each segment with a made check of stress."""
+    places = {segment.mark: index for index, segment in enumerate(results.project.segments)}
+    bands = _Bands(results, system)
+    stresses = ((check.segment, check) for check in results.checks if check.segment is not None)
+    return tuple(_finding(check, places, bands, system) for check in worst_by(stresses))
+
+
+def _finding(
+    check: Check, places: Mapping[str, int], bands: _Bands, system: UnitSystemName
+) -> SegmentFinding:
+    utilisation = _utilisation(check)
+    mark = str(check.segment)
+    return SegmentFinding(
+        segment=places[mark],
+        mark=mark,
+        sentence=check_sentence(check, system),
+        short=short_sentence(check, system),
+        state=check.combination,
+        utilisation=utilisation,
+        utilisation_text=utilisation_text(utilisation, check.status),
+        status=check.status,
+        position=float(check.position or 0.0),
+        band=bands.of(places[mark], check.combination),
+    )
+
+
+class _Bands:
+    """The scales of all segments; stresses of checked states divided by their allowable factor."""
+
+    def __init__(self, results: Results, system: UnitSystemName) -> None:
+        self._results = results
+        self._system = system
+        states = [state for state in results.states if state.checked]
+        self._factors = {state.name: state.allowable_factor for state in states}
+        factors = np.array([state.allowable_factor for state in states])[:, np.newaxis]
+        checked = len(states)  # the checked states come first
+        self._high = np.max(results.segments.stress_max[:checked] / factors, axis=0)
+        self._low = np.min(results.segments.stress_min[:checked] / factors, axis=0)
+
+    def of(self, segment: int, state: str) -> Band:
+        """The scale of a segment at the allowable factor of a state."""
+        factor = self._factors[state]
+        row = self._results.state_index(state)
+        tension = _given(self._results.allowables.tension[row, segment])
+        compression = _given(self._results.allowables.compression[row, segment])
+        return Band(
+            low=float(self._low[segment]) * factor,
+            high=float(self._high[segment]) * factor,
+            compression=None if compression is None else -compression,
+            tension=tension,
+            compression_text=self._label(compression, -1.0),
+            tension_text=self._label(tension, 1.0),
+        )
+
+    def _label(self, allowable: float | None, sign: float) -> str:
+        if allowable is None:
+            return ""
+        return format_value(sign * allowable, "stress", self._system, 4, strip=True)
+
+
+def _given(value: np.float64) -> float | None:
+    """The allowable as a number, None where the material has none."""
+    return None if math.isnan(value) else float(value)
