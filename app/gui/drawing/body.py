@@ -1,0 +1,111 @@
+"""The member itself: each segment by its outline, its mark in a circle, the axis through all."""
+
+from __future__ import annotations
+
+from app.gui.drawing.placing import place
+from app.gui.drawing.shapes import Circle, Part, Text
+from app.gui.drawing.sketch import Sketch
+from app.gui.drawing.tips import joint_tip, segment_tip
+from solver.model import AreaSection, Segment, TubeSection
+from solver.sections import outline
+
+SAMPLES = 12  # of an outline that is not straight
+LEAST_HALF = 2.0  # pixels: a segment is never a hair
+JOINT_REACH = 8.0  # pixels to either side in which a joint is pointed at
+
+
+def draw_body(sketch: Sketch) -> None:
+    """All segments, their targets, their marks."""
+    for index in range(len(sketch.member.project.segments)):
+        if sketch.shown_span(index) is not None:
+            _draw_segment(sketch, index)
+    _draw_axis(sketch)
+    _draw_marks(sketch)
+    _aim_at_joints(sketch)
+
+
+def half_depth(sketch: Sketch, segment: Segment, s: float) -> float:
+    """Half the drawn thickness at a fraction of the segment, px."""
+    return max(outline(segment.section, s).outer * sketch.scale, LEAST_HALF)
+
+
+def edge_at(sketch: Sketch, joint: int) -> float:
+    """The half thickness of the thicker side at a joint, px."""
+    segments = sketch.member.project.segments
+    left = half_depth(sketch, segments[joint - 1], 1.0) if joint > 0 else 0.0
+    right = half_depth(sketch, segments[joint], 0.0) if joint < len(segments) else 0.0
+    return max(left, right)
+
+
+def _draw_segment(sketch: Sketch, index: int) -> None:
+    segment = sketch.member.project.segments[index]
+    part = Part("segment", index)
+    bare = isinstance(segment.section, AreaSection)
+    fractions = [i / SAMPLES for i in range(SAMPLES + 1)] if bare else [0.0, 1.0]
+    start, end = sketch.along(index), sketch.along(index + 1)
+    axis = sketch.rows.axis
+    halves = [(start + s * (end - start), half_depth(sketch, segment, s)) for s in fractions]
+    upper = [(a, axis - h) for a, h in halves]
+    lower = [(a, axis + h) for a, h in reversed(halves)]
+    fill, dash = ("band_fill", (5.0, 3.0)) if bare else ("body_fill", ())
+    sketch.line(*upper, *lower, width=1.4, fill=fill, closed=True, dash=dash, part=part, clip=True)
+    if isinstance(segment.section, TubeSection):
+        _draw_bore(sketch, segment, start, end)
+    thick = max(max(h for _, h in halves), 12.0)
+    span = sketch.shown_span(index) or (start, end)
+    sketch.target(span, (axis - thick, axis + thick), part, segment_tip(sketch.member, index))
+
+
+def _draw_bore(sketch: Sketch, segment: Segment, start: float, end: float) -> None:
+    """The inside of a tube, dashed as a hidden edge."""
+    inner = [outline(segment.section, s).inner * sketch.scale for s in (0.0, 1.0)]
+    for side in (-1.0, 1.0):
+        ends = [(a, sketch.rows.axis + side * h) for a, h in zip((start, end), inner, strict=True)]
+        sketch.line(*ends, ink="quiet", dash=(4.0, 3.0), clip=True)
+
+
+def _draw_axis(sketch: Sketch) -> None:
+    low, high = sketch.window
+    ends = (low - 6.0, sketch.rows.axis), (high + 6.0, sketch.rows.axis)
+    sketch.line(*ends, ink="quiet", width=0.8, dash=(12.0, 3.0, 2.0, 3.0))
+
+
+def _draw_marks(sketch: Sketch) -> None:
+    """A mark in a circle where it fits between its joints, else the mark alone where that fits."""
+    wishes = []
+    for index, segment in enumerate(sketch.member.project.segments):
+        span = sketch.shown_span(index)
+        if span is not None:
+            along = 0.5 * (span[0] + span[1])
+            wish = sketch.wish(segment.mark, along, Part("segment", index), face="strong")
+            wishes.append(wish)
+    for label in place(wishes, 1, sketch.room):
+        _draw_mark(sketch, label.wish.text, label.wish.along, label.wish.part)
+
+
+def _draw_mark(sketch: Sketch, mark: str, along: float, part: Part) -> None:
+    size = sketch.place.fonts.measure(mark, "strong")
+    radius = 0.5 * max(size.width(), size.height()) + 2.0
+    centre = sketch.point(along, sketch.rows.axis)
+    span = sketch.shown_span(part.index)
+    if span is not None and 2.0 * radius + 2.0 <= span[1] - span[0]:
+        sketch.picture.circles.append(Circle(centre, radius))
+    box = sketch.rect((along, along), (sketch.rows.axis, sketch.rows.axis))
+    box.setSize(size)
+    box.moveCenter(centre)
+    sketch.picture.texts.append(Text(box, mark, "strong", "ink", part))
+
+
+def _aim_at_joints(sketch: Sketch) -> None:
+    """Joints are pointed at near their line, but never so widely that a short segment is out of reach."""
+    joints = sketch.member.project.joints
+    for index in range(len(joints)):
+        if not sketch.holds(index):
+            continue
+        beside = [s for s in (index - 1, index) if 0 <= s < len(joints) - 1]
+        shortest = min(abs(sketch.along(s + 1) - sketch.along(s)) for s in beside)
+        reach = min(JOINT_REACH, shortest / 4.0)
+        along, thick = sketch.along(index), max(edge_at(sketch, index), 12.0)
+        span = along - reach, along + reach
+        across = sketch.rows.axis - thick, sketch.rows.axis + thick
+        sketch.target(span, across, Part("joint", index), joint_tip(sketch.member, index))

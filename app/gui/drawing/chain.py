@@ -1,0 +1,89 @@
+"""The dimension chain: slanted ticks at the joints, lengths on one side of the line, sections on the other.
+
+Upright, marks of level at the joints as well, between the drawing and the strips.
+"""
+
+from __future__ import annotations
+
+from itertools import groupby
+
+from PySide6.QtCore import QPointF, QRectF
+
+from app.gui.drawing.placing import Wish, place
+from app.gui.drawing.shapes import Part, Stroke, Text
+from app.gui.drawing.sketch import Sketch
+from app.gui.drawing.tips import segment_tip
+from app.section_entry import section_label
+from app.units import format_value
+
+TICK = 4.0
+LEVEL_GAP = 16.0  # room of the triangle before a level's text
+
+
+def draw_chain(sketch: Sketch) -> None:
+    """Line, ticks, lengths and sections of all segments inside the window."""
+    rows = sketch.rows
+    low, high = sketch.window
+    sketch.line((low, rows.chain), (high, rows.chain), ink="quiet", clip=True)
+    for joint in range(len(sketch.member.position)):
+        if sketch.holds(joint):
+            along = sketch.along(joint)
+            sketch.line((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK), width=1.6)
+    sketch.put(length_wishes(sketch), rows.lengths)
+    sketch.put(section_wishes(sketch), rows.sections)
+    for index in range(len(sketch.member.project.segments)):
+        span = sketch.shown_span(index)
+        if span is not None:
+            across = rows.lengths[0][0], rows.sections[-1][1]
+            sketch.target(span, across, Part("length", index), segment_tip(sketch.member, index))
+
+
+def length_wishes(sketch: Sketch) -> list[Wish]:
+    """Each length in the middle of its span; where only a part is shown, in the middle of that."""
+    wishes = []
+    for index, segment in enumerate(sketch.member.project.segments):
+        span = sketch.shown_span(index)
+        if span is not None:
+            text = format_value(segment.length, "length", sketch.member.system, strip=True)
+            wishes.append(sketch.wish(text, 0.5 * (span[0] + span[1]), Part("length", index)))
+    return wishes
+
+
+def section_wishes(sketch: Sketch) -> list[Wish]:
+    """One text for neighbours of the same section."""
+    segments = sketch.member.project.segments
+    wishes = []
+    for _, group in groupby(range(len(segments)), key=lambda index: segments[index].section):
+        members = list(group)
+        spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
+        if spans:
+            text = section_label(segments[members[0]].section, sketch.member.system)
+            middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))
+            wishes.append(sketch.wish(text, middle, Part("length", members[0])))
+    return wishes
+
+
+def level_texts(sketch: Sketch) -> list[str]:
+    """The position of every joint as a level."""
+    texts = []
+    for x in sketch.member.position:
+        text = format_value(x, "length", sketch.member.system, strip=True)
+        texts.append(f"+{text}" if x > 0 else text)
+    return texts
+
+
+def draw_levels(sketch: Sketch, column: QRectF) -> None:
+    """A triangle standing on each joint's line, with its level beside it (upright only)."""
+    wishes = []
+    for joint, text in enumerate(level_texts(sketch)):
+        if sketch.holds(joint):
+            size = sketch.place.fonts.measure(text, "small")
+            middle = sketch.along(joint) - 0.5 * size.height()
+            wishes.append(Wish(text, middle, size.height(), size.width(), Part("joint", joint)))
+    for label in place(wishes, 1, sketch.room):
+        left, foot = column.left() + 4.0, label.span[1]
+        size = sketch.place.fonts.measure(label.wish.text, "small")
+        box = QRectF(QPointF(left + LEVEL_GAP, label.span[0]), size)
+        sketch.picture.texts.append(Text(box, label.wish.text, "small", "quiet", label.wish.part))
+        corners = QPointF(left, foot - 9.0), QPointF(left + 11.0, foot - 9.0), QPointF(left + 5.5, foot - 0.5)
+        sketch.picture.strokes.append(Stroke(corners, "ink", 1.2, closed=True, fill="paper", clip=False))

@@ -1,0 +1,178 @@
+"""From a member and a place to a picture: how much room each row gets, then the parts one after another.
+
+Needs no window: only a ruler, a rectangle and the measure of texts.
+"""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from PySide6.QtCore import QPointF, QRectF
+
+from app.gui.drawing.body import draw_body
+from app.gui.drawing.chain import (
+    LEVEL_GAP,
+    draw_chain,
+    draw_levels,
+    length_wishes,
+    level_texts,
+    section_wishes,
+)
+from app.gui.drawing.loads import draw_loads
+from app.gui.drawing.member import Member
+from app.gui.drawing.placing import Span, Wish
+from app.gui.drawing.shapes import Part, Picture, Text
+from app.gui.drawing.sketch import Rows, Sketch
+from app.gui.drawing.supports import draw_supports, hangs, support_of
+from app.gui.sheet_layout import Place
+from app.units import format_value
+from app.words import tr
+from solver.sections import outline
+
+BAND = 17.0  # distributed loads at their largest, px
+ARROWS = 18.0  # the row of joint forces
+UNDER = 20.0  # the row of hanging supports
+CHAIN = 7.0  # to either side of the dimension line
+FACTORS = (1.0, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0, 6.0, 8.0)  # of each power of ten
+COLUMN = 6.5  # widest column of load labels upright, in text heights
+
+
+def lay_out(member: Member, place: Place) -> Picture:
+    """The picture of a member in its place."""
+    sketch = _sketch(member, place)
+    draw_chain(sketch)
+    draw_body(sketch)
+    draw_supports(sketch)
+    draw_loads(sketch)
+    _draw_factor(sketch)
+    _set_edge(sketch)
+    return sketch.picture
+
+
+def _set_edge(sketch: Sketch) -> None:
+    """Where joint lines begin: at the dimension line, or upright at the column of levels."""
+    if sketch.place.axes.upright:
+        column = _level_column(sketch)
+        draw_levels(sketch, column)
+        sketch.picture.chain_edge = column.left()
+    else:
+        sketch.picture.chain_edge = sketch.point(0.0, sketch.rows.sections[-1][1]).y()
+
+
+def _level_column(sketch: Sketch) -> QRectF:
+    rect = sketch.place.rect
+    width = max(sketch.place.fonts.measure(t, "small").width() for t in level_texts(sketch))
+    return QRectF(QPointF(rect.right() - width - LEVEL_GAP - 6.0, rect.top()), rect.bottomRight())
+
+
+def _sketch(member: Member, place: Place) -> Sketch:
+    """A sketch with its rows: those that are needed get their room, the member the rest."""
+    draft = Sketch(member, place, _no_rows(), zero=0.0, scale=0.0)
+    low, high = place.axes.across_of(place.rect)
+    if place.axes.upright:
+        high = _level_column(draft).left()
+        draft.zero = high
+    else:
+        draft.zero = low
+    rows = _rows(draft, high - low)
+    thickest = _thickest(member)
+    factor = _factor(rows.half / (thickest * place.ruler.pixels_per_metre))
+    scale = factor * place.ruler.pixels_per_metre
+    sketch = replace(draft, rows=rows, scale=scale)
+    sketch.picture.factor = factor
+    return sketch
+
+
+def _no_rows() -> Rows:
+    nothing = (0.0, 0.0)
+    return Rows((nothing,), nothing, 0.0, 0.0, 0.0, 0.0, nothing, (nothing,), 0.0, (nothing,))
+
+
+def _rows(sketch: Sketch, room: float) -> Rows:
+    at = 4.0
+    height = sketch.place.fonts.measure("0", "small").height()
+    upright = sketch.place.axes.upright
+    label = min(COLUMN * height, 0.3 * room) if upright else height
+    labels = tuple((at + i * label, at + (i + 1) * label) for i in range(1 if upright else 2))
+    at = labels[-1][1] + 2.0
+    band = (at, at + (BAND if _has_distributed(sketch) else 0.0))
+    arrows = band[1] + 0.5 * ARROWS
+    first = band[1] + (ARROWS if _has_inner_forces(sketch) else 4.0)
+    foot = room - 4.0
+    sections = _text_rows(sketch, section_wishes(sketch), foot)
+    chain = sections[0][0] - CHAIN
+    lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN)
+    hanging = _has_hanging(sketch)
+    under_label_depth = (label if upright else height) if hanging else 0.0
+    under_label = (lengths[0][0] - under_label_depth, lengths[0][0])
+    under = under_label[0] - 0.5 * UNDER
+    last = (under_label[0] - UNDER if hanging else under_label[0]) - (10.0 if hanging else 12.0)
+    half = max(0.5 * (last - first), 4.0)
+    return Rows(
+        labels=tuple(reversed(labels)),
+        band=band,
+        arrows=arrows,
+        axis=0.5 * (first + last),
+        half=half,
+        under=under,
+        under_label=under_label,
+        lengths=tuple(reversed(lengths)),
+        chain=chain,
+        sections=sections,
+    )
+
+
+def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float) -> tuple[Span, ...]:
+    """One row, or two where a text is too long for one; the last ends at `foot`."""
+    if not wishes:
+        return ((foot, foot),)
+    depth = max(w.depth for w in wishes)
+    one_row = len(sketch.placed(wishes, ((0.0, depth),))) == len(wishes)
+    count = 1 if one_row or sketch.place.axes.upright else 2
+    return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
+
+
+def _has_distributed(sketch: Sketch) -> bool:
+    loads = sketch.member.loads
+    return loads is not None and bool(loads.distributed.any())
+
+
+def _has_inner_forces(sketch: Sketch) -> bool:
+    """Whether any force is drawn in the row of arrows (those at free ends lie on the axis)."""
+    if sketch.member.loads is None:
+        return False
+    last = len(sketch.member.project.segments)
+    forces = sketch.member.loads.joint_force[0]
+    held = [j for j in range(last + 1) if j not in (0, last) or support_of(sketch, j) is not None]
+    return any(forces[j] for j in held)
+
+
+def _has_hanging(sketch: Sketch) -> bool:
+    last = len(sketch.member.project.segments)
+    return any(hangs(support_of(sketch, j), inner=0 < j < last) for j in range(last + 1))
+
+
+def _thickest(member: Member) -> float:
+    """The largest half depth of any section, m."""
+    return max(outline(s.section, at).outer for s in member.project.segments for at in (0.0, 1.0))
+
+
+def _factor(largest: float) -> float:
+    """The largest round factor that still fits."""
+    power = 1e-6
+    best = power
+    while power <= largest:
+        best = max(power * f for f in FACTORS if power * f <= largest)
+        power *= 10.0
+    return best
+
+
+def _draw_factor(sketch: Sketch) -> None:
+    """How much the drawing is stretched across the axis, in its corner away from the loads."""
+    text = tr("across ×{factor}").format(
+        factor=format_value(sketch.picture.factor, "factor", sketch.member.system, strip=True)
+    )
+    size = sketch.place.fonts.measure(text, "small")
+    rect = sketch.place.rect
+    box = QRectF(QPointF(rect.left() + 6.0, rect.bottom() - size.height() - 2.0), size)
+    sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", -1)))

@@ -1,0 +1,152 @@
+"""The drawing as an interactive item of the scene: paints a picture, says what is under the mouse.
+
+Knows parts by kind and index only; what a click does is up to whoever listens.
+"""
+
+from __future__ import annotations
+
+import pyqtgraph as pg
+from PySide6.QtCore import QPointF, QRectF, Qt, Signal
+from PySide6.QtGui import QBrush, QPainter, QPen, QPolygonF
+from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
+from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent
+
+from app.gui.drawing.layout import lay_out
+from app.gui.drawing.member import Member
+from app.gui.drawing.shapes import Circle, Part, Picture, Stroke
+from app.gui.fonts import Fonts
+from app.gui.sheet_layout import Place
+from app.gui.theme import Theme, colour
+from app.gui.view import Selection
+
+
+class MemberDrawing(pg.GraphicsObject):
+    """The member with supports, loads and dimension chain."""
+
+    clicked = Signal(object)  # Part
+    hovered = Signal(object)  # Part, or None
+
+    def __init__(self, theme: Theme) -> None:
+        super().__init__()
+        self._theme = theme
+        self._member: Member | None = None
+        self._place: Place | None = None
+        self._picture = Picture()
+        self._selection = Selection()
+        self._under_mouse: Part | None = None
+        self.setZValue(10.0)
+
+    @property
+    def picture(self) -> Picture:
+        """What is drawn."""
+        return self._picture
+
+    @property
+    def chain_edge(self) -> float:
+        """The pixel across the axis where joint lines begin."""
+        return self._picture.chain_edge
+
+    def show_member(self, member: Member) -> None:
+        """Draw another member, or other loads on it."""
+        self._member = member
+        self._prepare()
+
+    def set_place(self, place: Place) -> None:
+        """Another place or another window of the ruler."""
+        self.prepareGeometryChange()
+        self._place = place
+        self._prepare()
+
+    def set_theme(self, theme: Theme) -> None:
+        """Other colours."""
+        self._theme = theme
+        self.update()
+
+    def set_selection(self, selection: Selection) -> None:
+        """Light what is selected."""
+        self._selection = selection
+        self.update()
+
+    def _prepare(self) -> None:
+        if self._member is not None and self._place is not None:
+            self._picture = lay_out(self._member, self._place)
+            self.update()
+
+    def part_at(self, point: QPointF) -> Part | None:
+        """The part under a point, or None."""
+        target = self._picture.target_at(point)
+        return None if target is None else target.part
+
+    # Qt's own
+
+    def boundingRect(self) -> QRectF:
+        """The drawing's rectangle."""
+        return QRectF() if self._place is None else self._place.rect
+
+    def hoverEvent(self, event: HoverEvent) -> None:
+        """Announce the part under the mouse and show its tooltip."""
+        target = None if event.isExit() else self._picture.target_at(event.pos())
+        part = None if target is None else target.part
+        if part != self._under_mouse:
+            self._under_mouse = part
+            self.setToolTip("" if target is None else target.tip)
+            self.hovered.emit(part)
+
+    def mouseClickEvent(self, event: MouseClickEvent) -> None:
+        """Announce a click on a part; elsewhere the ground hears it."""
+        part = self.part_at(event.pos())
+        if event.button() == Qt.MouseButton.LeftButton and not event.double() and part is not None:
+            event.accept()
+            self.clicked.emit(part)
+        else:
+            event.ignore()
+
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """Strokes, circles, texts."""
+        if self._place is None:
+            return
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        for stroke in self._picture.strokes:
+            self._paint_stroke(painter, stroke, self._place)
+        for circle in self._picture.circles:
+            self._paint_circle(painter, circle)
+        self._paint_texts(painter, self._place.fonts)
+
+    def _is_selected(self, part: Part | None) -> bool:
+        if part is None:
+            return False
+        if part.kind == "segment":
+            return part.index in self._selection.segments
+        return part.kind in ("support", "force") and part.index in self._selection.joints
+
+    def _paint_stroke(self, painter: QPainter, stroke: Stroke, place: Place) -> None:
+        selected = self._is_selected(stroke.part)
+        pen = QPen(colour(self._theme.select if selected else getattr(self._theme, stroke.ink)))
+        pen.setWidthF(stroke.width + (0.8 if selected else 0.0))
+        if stroke.dash:
+            pen.setDashPattern([d / pen.widthF() for d in stroke.dash])
+        painter.setPen(pen)
+        fill = "select_fill" if selected and stroke.fill else stroke.fill
+        painter.setBrush(QBrush(colour(getattr(self._theme, fill))) if fill else Qt.BrushStyle.NoBrush)
+        painter.setClipping(stroke.clip)
+        if stroke.clip:
+            window = (place.ruler.begin, place.ruler.end)
+            clip = place.axes.rect(window, place.axes.across_of(place.rect))
+            painter.setClipRect(clip.adjusted(-1, -1, 1, 1))
+        if stroke.closed:
+            painter.drawPolygon(QPolygonF(stroke.points))
+        else:
+            painter.drawPolyline(QPolygonF(stroke.points))
+        painter.setClipping(False)
+
+    def _paint_circle(self, painter: QPainter, circle: Circle) -> None:
+        painter.setPen(QPen(colour(self._theme.ink), 1.0))
+        painter.setBrush(QBrush(colour(self._theme.card)))
+        painter.drawEllipse(circle.centre, circle.radius, circle.radius)
+
+    def _paint_texts(self, painter: QPainter, fonts: Fonts) -> None:
+        flags = Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip
+        for text in self._picture.texts:
+            painter.setFont(fonts.font(text.face))
+            painter.setPen(QPen(colour(getattr(self._theme, text.ink))))
+            painter.drawText(text.rect, flags, text.text)

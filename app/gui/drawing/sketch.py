@@ -1,0 +1,145 @@
+"""The sheet of paper that the parts of the drawing are put on: (along, across) pixels, rows, and the picture.
+
+`across` is counted from the side of the loads: downward when the sheet lies across, leftward when upright. The
+parts (body, supports, loads, chain) draw in these coordinates and never ask which way the sheet is turned.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+from PySide6.QtCore import QPointF, QRectF
+
+from app.gui.drawing.member import Member
+from app.gui.drawing.placing import Placed, Span, Wish, place
+from app.gui.drawing.shapes import Fill, Ink, Part, Picture, Stroke, Target, Text
+from app.gui.fonts import Face
+from app.gui.sheet_layout import Place
+
+
+@dataclass(frozen=True, slots=True)
+class Rows:
+    """Where the parts lie across the axis: each a span (or one coordinate), from the side of the loads."""
+
+    labels: tuple[Span, ...]  # of loads, the nearest to the member first
+    band: Span  # distributed loads
+    arrows: float  # joint forces
+    axis: float
+    half: float  # of the thickest section
+    under: float  # springs and stops of inner joints
+    under_label: Span
+    lengths: tuple[Span, ...]
+    chain: float
+    sections: tuple[Span, ...]
+
+
+@dataclass(slots=True)
+class Sketch:
+    """A member, its place, the rows, and the picture so far."""
+
+    member: Member
+    place: Place
+    rows: Rows
+    zero: float  # the pixel across the axis where `across` is 0
+    scale: float  # pixels per metre across the axis
+    picture: Picture = field(default_factory=Picture)
+
+    @property
+    def window(self) -> Span:
+        """The pixels along the axis that the ruler shows, growing."""
+        low, high = sorted((self.place.ruler.begin, self.place.ruler.end))
+        return low, high
+
+    @property
+    def room(self) -> Span:
+        """The pixels along the axis that labels may use."""
+        low, high = self.place.axes.along_of(self.place.rect)
+        return low + 4.0, high - 4.0
+
+    @property
+    def forward(self) -> float:
+        """+1 where x grows with the pixels, −1 upright."""
+        return 1.0 if self.place.ruler.end > self.place.ruler.begin else -1.0
+
+    def along(self, joint: int) -> float:
+        """The pixel of a joint."""
+        return self.place.ruler.pixel(self.member.position[joint])
+
+    def holds(self, joint: int) -> bool:
+        """Whether a joint is inside the window."""
+        return self.place.ruler.holds(self.member.position[joint])
+
+    def shown_span(self, segment: int) -> Span | None:
+        """The pixels of a segment inside the window, growing; None where it is outside."""
+        low, high = sorted((self.along(segment), self.along(segment + 1)))
+        low, high = max(low, self.window[0]), min(high, self.window[1])
+        return (low, high) if high - low > 0.5 else None
+
+    def point(self, along: float, across: float) -> QPointF:
+        """The point of the scene."""
+        turned = self.zero - across if self.place.axes.upright else self.zero + across
+        return self.place.axes.point(along, turned)
+
+    def rect(self, along: Span, across: Span) -> QRectF:
+        """The rectangle of the scene."""
+        return QRectF(self.point(along[0], across[0]), self.point(along[1], across[1])).normalized()
+
+    def extents(self, text: str, face: Face = "small") -> tuple[float, float]:
+        """How much of (along, across) a text takes; texts are never turned."""
+        size = self.place.fonts.measure(text, face)
+        upright = self.place.axes.upright
+        return (size.height(), size.width()) if upright else (size.width(), size.height())
+
+    def line(
+        self,
+        *points: tuple[float, float],
+        ink: Ink = "ink",
+        width: float = 1.0,
+        fill: Fill = "",
+        closed: bool = False,
+        dash: tuple[float, ...] = (),
+        part: Part | None = None,
+        clip: bool = False,
+    ) -> None:
+        """A stroke through points (along, across)."""
+        turned = tuple(self.point(*point) for point in points)
+        self.picture.strokes.append(Stroke(turned, ink, width, closed, fill, dash, part, clip))
+
+    def hatch(self, along: Span, across: Span, step: tuple[float, float]) -> None:
+        """Short slanted strokes along a line from one end to the other: ground that does not move."""
+        count = max(int(max(abs(along[1] - along[0]), abs(across[1] - across[0])) / 6.0), 2)
+        for i in range(count + 1):
+            a = along[0] + (along[1] - along[0]) * i / count
+            c = across[0] + (across[1] - across[0]) * i / count
+            self.line((a, c), (a + step[0], c + step[1]), ink="ink", width=1.0)
+
+    def wish(
+        self, text: str, along: float, part: Part, *, face: Face = "small", rank: int = 0, slide: float = 0.0
+    ) -> Wish:
+        """A label that wants a place."""
+        extent, depth = self.extents(text, face)
+        return Wish(text, along, extent, depth, part, rank, slide)
+
+    def placed(self, wishes: list[Wish], rows: tuple[Span, ...]) -> list[Placed]:
+        """Places for labels in rows; those wider than a row (upright) are dropped like those without room."""
+        widest = max((high - low for low, high in rows), default=0.0)
+        fitting = [w for w in wishes if w.depth <= widest + 0.5]
+        return place(fitting, len(rows), self.room)
+
+    def put(self, wishes: list[Wish], rows: tuple[Span, ...]) -> None:
+        """Place labels in rows and write them small and quiet."""
+        for label in self.placed(wishes, rows):
+            self.text(label.wish.text, label.span, rows[label.row], label.wish.part)
+
+    def text(
+        self, text: str, along: Span, across: Span, part: Part, *, face: Face = "small", ink: Ink = "quiet"
+    ) -> None:
+        """A text centred in a box of exactly its size, in the middle of the given spans."""
+        size = self.place.fonts.measure(text, face)
+        box = QRectF(0.0, 0.0, size.width(), size.height())
+        box.moveCenter(self.rect(along, across).center())
+        self.picture.texts.append(Text(box, text, face, ink, part))
+
+    def target(self, along: Span, across: Span, part: Part, tip: str) -> None:
+        """Where a part can be pointed at."""
+        self.picture.targets.append(Target(self.rect(along, across), part, tip))

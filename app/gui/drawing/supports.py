@@ -1,0 +1,144 @@
+"""What holds the member: a hatched wall, a zigzag spring with its stiffness, a stop with its gap.
+
+At the ends of the member, walls and springs lie on the axis outside it; at inner joints they hang from the
+joint in a row of their own on the far side of the loads.
+"""
+
+from __future__ import annotations
+
+from msgspec import UnsetType
+
+from app.gui.drawing.body import edge_at
+from app.gui.drawing.placing import Wish
+from app.gui.drawing.shapes import Part
+from app.gui.drawing.sketch import Sketch
+from app.support_entry import support_text
+from app.units import format_value
+from app.words import tr
+from solver.model import AnySupport, FixedSupport, SpringSupport, StopSupport
+
+SPRING = 38.0  # length of a zigzag, px
+WALL = 7.0  # how far hatching reaches, px
+TEETH = 5
+
+
+def support_of(sketch: Sketch, joint: int) -> AnySupport | None:
+    """The support at a joint, or None."""
+    support = sketch.member.project.joints[joint].support
+    return None if isinstance(support, UnsetType) else support
+
+
+def hangs(support: AnySupport | None, *, inner: bool) -> bool:
+    """Whether a support takes room in the row under the member."""
+    return support is not None and (inner or isinstance(support, StopSupport))
+
+
+def draw_supports(sketch: Sketch) -> None:
+    """All supports inside the window, with their labels."""
+    last = len(sketch.member.project.joints) - 1
+    wishes: list[Wish] = []
+    for joint in range(last + 1):
+        support = support_of(sketch, joint)
+        if support is None or not sketch.holds(joint):
+            continue
+        if hangs(support, inner=0 < joint < last):
+            wishes += _draw_hanging(sketch, joint, support)
+        else:
+            _draw_at_end(sketch, joint, support, -1.0 if joint == 0 else 1.0)
+    sketch.put(wishes, (sketch.rows.under_label,))
+
+
+def _tip(sketch: Sketch, joint: int, support: AnySupport) -> str:
+    mark = sketch.member.project.joints[joint].mark
+    return tr("Joint {mark}: {support}").format(
+        mark=mark, support=support_text(support, sketch.member.system)
+    )
+
+
+def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -> None:
+    """On the axis, outward: `side` −1 at the first joint, +1 at the last."""
+    out = side * sketch.forward
+    along, axis, half = sketch.along(joint), sketch.rows.axis, edge_at(sketch, joint)
+    part = Part("support", joint)
+    reach = WALL + 3.0
+    if isinstance(support, FixedSupport):
+        _wall(sketch, along, half + 8.0, out)
+    elif isinstance(support, SpringSupport):
+        ground = along + out * SPRING
+        _zigzag(sketch, along, ground, axis, part)
+        _wall(sketch, ground, 12.0, out)
+        reach, half = SPRING + WALL, max(half, 12.0)
+        _label_end_spring(sketch, support, 0.5 * (along + ground), part)
+    span = (along, along + out * max(reach, 24.0))
+    sketch.target(span, (axis - half - 8.0, axis + half + 8.0), part, _tip(sketch, joint, support))
+
+
+def _label_end_spring(sketch: Sketch, support: SpringSupport, along: float, part: Part) -> None:
+    text = _stiffness(sketch, support.stiffness)
+    extent, across = sketch.extents(text)
+    low, high = sketch.room
+    along = min(max(along, low + 0.5 * extent), high - 0.5 * extent)
+    top = sketch.rows.axis + 15.0
+    sketch.text(text, (along, along), (top, top + across), part)
+
+
+def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:
+    """A wall across the axis, hatched on its outer side."""
+    axis = sketch.rows.axis
+    sketch.line((along, axis - half), (along, axis + half), width=2.0)
+    sketch.hatch((along, along), (axis - half, axis + half - 4.0), (out * WALL, 5.0))
+
+
+def _zigzag(sketch: Sketch, start: float, end: float, across: float, part: Part) -> None:
+    """A spring along the axis."""
+    straight, step = 0.15 * (end - start), 0.7 * (end - start) / TEETH
+    points = [(start, across), (start + straight, across)]
+    for tooth in range(TEETH):
+        points.append((start + straight + (tooth + 0.5) * step, across + (5.0 if tooth % 2 else -5.0)))
+    points += [(end - straight, across), (end, across)]
+    sketch.line(*points, width=1.3, part=part)
+
+
+def _stiffness(sketch: Sketch, stiffness: float) -> str:
+    return format_value(stiffness, "spring", sketch.member.system, strip=True, with_unit=True)
+
+
+def _draw_hanging(sketch: Sketch, joint: int, support: AnySupport) -> list[Wish]:
+    """Under the joint, on a stem; gives the label that wants a place below."""
+    part = Part("support", joint)
+    along, under = sketch.along(joint), sketch.rows.under
+    sketch.line((along, sketch.rows.axis + edge_at(sketch, joint)), (along, under), width=1.6, part=part)
+    drawer = {FixedSupport: _hang_fixed, SpringSupport: _hang_spring, StopSupport: _hang_stop}[type(support)]
+    span, text = drawer(sketch, along, support)
+    sketch.target(span, (under - 9.0, sketch.rows.under_label[1]), part, _tip(sketch, joint, support))
+    return [sketch.wish(text, 0.5 * (span[0] + span[1]), part, slide=30.0)] if text else []
+
+
+def _hang_fixed(sketch: Sketch, along: float, _support: AnySupport) -> tuple[tuple[float, float], str]:
+    under = sketch.rows.under
+    sketch.line((along - 12.0, under), (along + 12.0, under), width=2.0)
+    sketch.hatch((along - 12.0, along + 8.0), (under, under), (5.0, WALL))
+    return (along - 12.0, along + 12.0), ""
+
+
+def _hang_spring(sketch: Sketch, along: float, support: AnySupport) -> tuple[tuple[float, float], str]:
+    assert isinstance(support, SpringSupport)  # noqa: S101 - chosen by its type
+    under, ground = sketch.rows.under, along - sketch.forward * SPRING
+    _zigzag(sketch, along, ground, under, Part("support", 0))
+    sketch.line((ground, under - 7.0), (ground, under + 7.0), width=1.6)
+    sketch.hatch((ground, ground), (under - 7.0, under + 4.0), (-sketch.forward * 5.0, 4.0))
+    return (min(along, ground), max(along, ground)), _stiffness(sketch, support.stiffness)
+
+
+def _hang_stop(sketch: Sketch, along: float, support: AnySupport) -> tuple[tuple[float, float], str]:
+    """A plate on the joint, a gap, and the wall it can meet on its side."""
+    assert isinstance(support, StopSupport)  # noqa: S101 - chosen by its type
+    out = sketch.forward * (1.0 if support.side == "plus" else -1.0)
+    under = sketch.rows.under
+    nose, wall = along + out * 8.0, along + out * 16.0
+    sketch.line((along, under), (nose, under), width=1.6)
+    sketch.line((nose, under - 5.0), (nose, under + 5.0), width=2.4)
+    sketch.line((wall, under - 8.0), (wall, under + 8.0), width=1.6)
+    sketch.hatch((wall, wall), (under - 8.0, under + 4.0), (out * 5.0, 4.0))
+    gap = format_value(support.clearance, "displacement", sketch.member.system, strip=True, with_unit=True)
+    return (min(along, wall), max(along, wall)), tr("gap {value}").format(value=gap)

@@ -1,0 +1,40 @@
+"""The faces of the sheet's texts, all from the widget's own font, and their measure in pixels."""
+
+from __future__ import annotations
+
+from typing import Literal, TypeAlias
+
+from PySide6.QtCore import QSizeF
+from PySide6.QtGui import QFont, QFontMetricsF
+
+Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
+_SIZES: dict[Face, float] = {"plain": 1.0, "strong": 1.06, "small": 0.9, "small_strong": 0.9, "mark": 1.25}
+
+
+class Fonts:
+    """The faces made from one font: plain, strong (bold), small and mark (for + and −)."""
+
+    def __init__(self, base: QFont) -> None:
+        self._fonts = {face: _sized(base, face) for face in _SIZES}
+        self._metrics = {face: QFontMetricsF(font) for face, font in self._fonts.items()}
+
+    @property
+    def text_height(self) -> float:
+        """The height of a line of plain text."""
+        return self._metrics["plain"].height()
+
+    def font(self, face: Face) -> QFont:
+        """The font of a face."""
+        return self._fonts[face]
+
+    def measure(self, text: str, face: Face) -> QSizeF:
+        """Width and height of a text."""
+        metrics = self._metrics[face]
+        return QSizeF(metrics.horizontalAdvance(text), metrics.height())
+
+
+def _sized(base: QFont, face: Face) -> QFont:
+    font = QFont(base)
+    font.setPointSizeF(max(base.pointSizeF(), 1.0) * _SIZES[face])
+    font.setBold(face in ("strong", "small_strong", "mark"))
+    return font

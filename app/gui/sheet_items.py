@@ -1,0 +1,191 @@
+"""What lies under and over drawing and strips: the ground that hears the mouse, joint lines, cursor, texts.
+
+All of them are in pixels of the scene and know the member only through the ruler.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+import pyqtgraph as pg
+from PySide6.QtCore import QPointF, QRectF, Qt, Signal
+from PySide6.QtGui import QPainter, QPen
+from PySide6.QtWidgets import QGraphicsSceneWheelEvent, QStyleOptionGraphicsItem, QWidget
+from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent, MouseDragEvent
+
+from app.gui.fonts import Fonts
+from app.gui.ruler import Ruler
+from app.gui.sheet_layout import SheetLayout
+from app.gui.theme import Theme, colour
+
+WHEEL_STEP = 1.0015  # zoom for each eighth of a degree that the wheel turns
+
+
+class SheetGround(pg.GraphicsObject):
+    """Hears the mouse wherever nothing above it wants it; its places are in pixels along the axis."""
+
+    hovered = Signal(object)  # QPointF, or None when the mouse leaves
+    clicked = Signal(object)  # QPointF
+    dragged = Signal(object)  # QPointF: how far since the last
+    wheeled = Signal(object, float)  # QPointF, factor
+    double_clicked = Signal()
+
+    def __init__(self) -> None:
+        super().__init__()
+        self._rect = QRectF()
+        self.setZValue(-100)
+
+    def set_rect(self, rect: QRectF) -> None:
+        """The whole sheet."""
+        self.prepareGeometryChange()
+        self._rect = rect
+
+    def boundingRect(self) -> QRectF:
+        """The whole sheet."""
+        return self._rect
+
+    def paint(self, *_: object) -> None:
+        """Nothing: the view paints the paper."""
+
+    def hoverEvent(self, event: HoverEvent) -> None:
+        """Announce where the mouse is."""
+        self.hovered.emit(None if event.isExit() else event.pos())
+
+    def mouseClickEvent(self, event: MouseClickEvent) -> None:
+        """Announce clicks of the left button."""
+        if event.button() != Qt.MouseButton.LeftButton:
+            return
+        event.accept()
+        if event.double():
+            self.double_clicked.emit()
+        else:
+            self.clicked.emit(event.pos())
+
+    def mouseDragEvent(self, event: MouseDragEvent) -> None:
+        """Announce drags with the left or middle button."""
+        if event.button() in (Qt.MouseButton.LeftButton, Qt.MouseButton.MiddleButton):
+            event.accept()
+            self.dragged.emit(QPointF(event.pos() - event.lastPos()))
+
+    def wheelEvent(self, event: QGraphicsSceneWheelEvent) -> None:
+        """Announce turns of the wheel."""
+        self.wheeled.emit(event.pos(), WHEEL_STEP ** event.delta())
+        event.accept()
+
+
+class Painted(pg.GraphicsObject):
+    """Base of items that only paint: a rectangle, a theme, no mouse."""
+
+    def __init__(self, theme: Theme, z: float) -> None:
+        super().__init__()
+        self._theme = theme
+        self._rect = QRectF()
+        self.setZValue(z)
+        self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
+
+    def set_theme(self, theme: Theme) -> None:
+        """Other colours."""
+        self._theme = theme
+        self.update()
+
+    def set_rect(self, rect: QRectF) -> None:
+        """Another place."""
+        self.prepareGeometryChange()
+        self._rect = rect
+        self.update()
+
+    def boundingRect(self) -> QRectF:
+        """The place."""
+        return self._rect
+
+    def shape(self):  # noqa: ANN201 - QPainterPath
+        """Empty, so that the mouse goes through."""
+        return pg.QtGui.QPainterPath()
+
+
+class JointLines(Painted):
+    """The dotted line of every joint through drawing and strips."""
+
+    def __init__(self, theme: Theme) -> None:
+        super().__init__(theme, 5.0)
+        self._lines: list[tuple[QPointF, QPointF]] = []
+
+    def set_joints(self, positions: Sequence[float], ruler: Ruler, layout: SheetLayout, first: float) -> None:
+        """The joints of the member, on this ruler, from the pixel `first` across the sheet."""
+        axes = layout.axes
+        last = axes.across_of(layout.strips[-1])[1]
+        shown = [ruler.pixel(x) for x in positions if ruler.holds(x)]
+        self._lines = [(axes.point(a, first), axes.point(a, last)) for a in shown]
+        self.set_rect(layout.crossing.adjusted(-1, -1, 1, 1))
+
+    @property
+    def count(self) -> int:
+        """How many lines are drawn."""
+        return len(self._lines)
+
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """Dotted lines, crisp."""
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, False)
+        painter.setPen(QPen(colour(self._theme.joint), 1.0, Qt.PenStyle.DotLine))
+        for first, last in self._lines:
+            painter.drawLine(first, last)
+
+
+class CursorLine(Painted):
+    """The one cursor, across everything."""
+
+    def __init__(self, theme: Theme) -> None:
+        super().__init__(theme, 20.0)
+        self._line: tuple[QPointF, QPointF] | None = None
+
+    def set_pixel(self, along: float | None, layout: SheetLayout) -> None:
+        """The cursor's pixel along the axis, or None where it is not shown."""
+        across = layout.axes.across_of(layout.crossing)
+        self._line = None
+        if along is not None:
+            self._line = (layout.axes.point(along, across[0]), layout.axes.point(along, across[1]))
+        self.setVisible(along is not None)
+        if self._line is not None:
+            self.set_rect(QRectF(*self._line).normalized().adjusted(-2, -2, 2, 2))
+
+    @property
+    def line(self) -> tuple[QPointF, QPointF] | None:
+        """The line's ends, or None."""
+        return self._line
+
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """One crisp line."""
+        if self._line is not None:
+            painter.setPen(QPen(colour(self._theme.select), 1.4))
+            painter.drawLine(*self._line)
+
+
+class Message(Painted):
+    """A line of text on a ground: the readout, "out of date", or why there is nothing to show."""
+
+    def __init__(self, theme: Theme, ground: str = "panel", ink: str = "ink", z: float = 15.0) -> None:
+        super().__init__(theme, z)
+        self._ground, self._ink = ground, ink
+        self._text = ""
+        self._fonts: Fonts | None = None
+
+    @property
+    def text(self) -> str:
+        """What it says."""
+        return self._text
+
+    def set_text(self, text: str, fonts: Fonts) -> None:
+        """Say something else; nothing where empty."""
+        self._text, self._fonts = text, fonts
+        self.setVisible(bool(text))
+        self.update()
+
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """Ground and text, wrapped where it is long."""
+        if self._fonts is None:
+            return
+        painter.fillRect(self._rect, colour(getattr(self._theme, self._ground)))
+        painter.setFont(self._fonts.font("plain"))
+        painter.setPen(colour(getattr(self._theme, self._ink)))
+        flags = Qt.AlignmentFlag.AlignVCenter | Qt.TextFlag.TextWordWrap
+        painter.drawText(self._rect.adjusted(8, 0, -8, 0), flags, self._text)

@@ -1,0 +1,111 @@
+"""Where the parts of the sheet lie, across or upright: plain geometry, testable without a window.
+
+Across, the drawing lies on top and the strips under it; upright, the drawing stands left and the strips beside
+it. Both share the pixels `begin`…`end` along the member's axis.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from PySide6.QtCore import QPointF, QRectF
+
+from app.gui.fonts import Fonts
+from app.gui.ruler import Ruler
+
+STRIP_SHARES = (0.22, 0.26, 0.32, 0.20)  # u, N, σ, utilisation: stress carries the most
+GAP = 12.0
+
+
+@dataclass(frozen=True, slots=True)
+class Axes:
+    """Turns (along, across) into points: across the sheet along is x; upright along is y and across x."""
+
+    upright: bool
+
+    def point(self, along: float, across: float) -> QPointF:
+        """The point of the scene."""
+        return QPointF(across, along) if self.upright else QPointF(along, across)
+
+    def rect(self, along: tuple[float, float], across: tuple[float, float]) -> QRectF:
+        """The rectangle between two corners, in any order."""
+        return QRectF(self.point(along[0], across[0]), self.point(along[1], across[1])).normalized()
+
+    def along(self, point: QPointF) -> float:
+        """The pixel along the axis."""
+        return point.y() if self.upright else point.x()
+
+    def along_of(self, rect: QRectF) -> tuple[float, float]:
+        """The rectangle's span along the axis, in growing pixels."""
+        return (rect.top(), rect.bottom()) if self.upright else (rect.left(), rect.right())
+
+    def across_of(self, rect: QRectF) -> tuple[float, float]:
+        """The rectangle's span across the axis, in growing pixels."""
+        return (rect.left(), rect.right()) if self.upright else (rect.top(), rect.bottom())
+
+
+@dataclass(frozen=True, slots=True)
+class Place:
+    """Where an item lies, and how positions and texts are measured there."""
+
+    rect: QRectF
+    ruler: Ruler
+    axes: Axes
+    fonts: Fonts
+
+
+@dataclass(frozen=True, slots=True)
+class SheetLayout:
+    """The places on a sheet of some size; `begin`…`end` are the pixels of the ruler."""
+
+    axes: Axes
+    drawing: QRectF
+    strips: tuple[QRectF, ...]
+    readout: QRectF
+    begin: float
+    end: float
+
+    @property
+    def crossing(self) -> QRectF:
+        """What joint lines and cursor cross: from the drawing's start to the last strip's end."""
+        across = (self.axes.across_of(self.drawing)[0], self.axes.across_of(self.strips[-1])[1])
+        return self.axes.rect((self.begin, self.end), across)
+
+
+def sheet_layout(width: float, height: float, upright: bool, text_height: float) -> SheetLayout:
+    """The layout on a sheet of the given pixels; margins follow the height of the text."""
+    readout_height = round(1.7 * text_height)
+    place = _upright if upright else _across
+    return place(width, height - readout_height - GAP, readout_height, text_height)
+
+
+def _across(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
+    left, right = 7.2 * text_height, 5.2 * text_height
+    begin, end = left, max(width - right, left + 50.0)
+    drawing_height = min(max(0.36 * height, 11.0 * text_height), 26.0 * text_height)
+    drawing = QRectF(0.0, 4.0, width, drawing_height)
+    spans = _spans(drawing.bottom() + 6.0, height)
+    strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)
+    readout = QRectF(begin, height + 4.0, end - begin, readout_height)
+    return SheetLayout(Axes(upright=False), drawing, strips, readout, begin, end)
+
+
+def _upright(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
+    top, bottom = 5.0 * text_height, 4.6 * text_height
+    begin, end = max(height - bottom, top + 50.0), top
+    drawing_width = min(max(0.42 * width, 20.0 * text_height), 40.0 * text_height)
+    drawing = QRectF(0.0, 0.0, drawing_width, height)
+    spans = _spans(drawing.right() + GAP, width - GAP, equal=True)
+    strips = tuple(QRectF(QPointF(a, end), QPointF(b, begin)) for a, b in spans)
+    readout = QRectF(GAP, height + 4.0, width - 2 * GAP, readout_height)
+    return SheetLayout(Axes(upright=True), drawing, strips, readout, begin, end)
+
+
+def _spans(first: float, last: float, *, equal: bool = False) -> list[tuple[float, float]]:
+    """The four strips' spans across the axis, with gaps between them."""
+    room = max(last - first - 3 * GAP, 4.0)
+    spans, at = [], first
+    for share in (0.25,) * 4 if equal else STRIP_SHARES:
+        spans.append((at, at + share * room))
+        at += share * room + GAP
+    return spans

@@ -1,0 +1,284 @@
+"""What the four strips show of one state or of the envelope: plain values, made once per result.
+
+No mechanics here: curves come from `solver.fields`, allowables from the materials times the state's factor.
+Every strip includes 0, so that nothing looks larger than it is, and has a least range, so that round-off
+(a heated free bar's stress of 1e-8 Pa) does not fill the strip: a strain of 1e-9 counts as nothing.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import Literal, TypeAlias
+
+import numpy as np
+
+from app.units import format_value, symbol, utilisation_text
+from app.words import tr
+from solver.arrays import FloatArray, IntArray
+from solver.checks import PASS_MARGIN
+from solver.fields import curves, envelope
+from solver.model import UnitSystemName
+from solver.results import Results
+
+Kind: TypeAlias = Literal["displacement", "force", "stress", "utilisation"]
+Values: TypeAlias = dict[Kind, tuple[FloatArray, ...]]
+NOTHING = 1e-9  # a strain this small is drawn as nothing
+BAND_SHOWN = 0.15  # allowables are drawn to scale where the stress reaches this part of them
+
+NONE, PLAIN, TENSION, COMPRESSION, OVER = -1, 0, 1, 2, 3  # how an interval of a curve is drawn
+
+
+@dataclass(frozen=True, slots=True)
+class Trace:
+    """One curve of k points and how each of its k − 1 intervals is drawn (NONE: a jump or no value)."""
+
+    x: FloatArray  # (k,) m
+    value: FloatArray  # (k,) SI
+    drawn: IntArray  # (k − 1,)
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """A limit from `first` to `last` (m), with its text."""
+
+    first: float
+    last: float
+    value: float
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Extreme:
+    """A largest or smallest value, its place (m) and its text."""
+
+    x: float
+    value: float
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
+class StripContent:
+    """One strip: traces over a range `low`…`high`, limits, extremes, and stretches that were not checked."""
+
+    kind: Kind
+    title: str
+    unit: str
+    traces: tuple[Trace, ...]
+    low: float
+    high: float
+    limits: tuple[Limit, ...] = ()
+    beyond: tuple[Limit, ...] = ()  # limits too far to be drawn to scale
+    extremes: tuple[Extreme, ...] = ()
+    unchecked: tuple[tuple[float, float], ...] = ()
+    filled: bool = True
+
+
+def titles() -> dict[Kind, str]:
+    """The strips' symbols, in their order."""
+    return {"displacement": "u", "force": "N", "stress": "σ", "utilisation": tr("utilisation")}
+
+
+def unit_of(kind: Kind, system: UnitSystemName) -> str:
+    """The unit beside the symbol, empty for utilisation."""
+    return "" if kind == "utilisation" else symbol(kind, system)
+
+
+def number(kind: Kind, value: float, system: UnitSystemName) -> str:
+    """A value as the strips write it."""
+    if kind == "utilisation":
+        return utilisation_text(value, "fail" if value > 1 + PASS_MARGIN else "pass")
+    return format_value(value, kind, system)
+
+
+def state_contents(results: Results, state: int) -> tuple[StripContent, ...]:
+    """The strips of one state."""
+    shown = curves(results, state)
+    values: Values = {
+        "displacement": (shown.displacement,),
+        "force": (shown.force,),
+        "stress": (shown.stress,),
+        "utilisation": (shown.utilisation,),
+    }
+    return _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress).build(values)
+
+
+def envelope_contents(results: Results) -> tuple[StripContent, ...]:
+    """The strips of the envelope: largest and smallest of the checked states."""
+    shown = envelope(results)
+    values: Values = {
+        "displacement": (shown.displacement_max, shown.displacement_min),
+        "force": (shown.force_max, shown.force_min),
+        "stress": (shown.stress_max, shown.stress_min),
+        "utilisation": (shown.utilisation,),
+    }
+    states = tuple(index for index, state in enumerate(results.states) if state.checked)
+    return _Builder(results, states, shown.x, shown.segment, shown.utilisation, None).build(values)
+
+
+class _Builder:
+    """Makes the four contents from curves that share x; `stress` None stands for the envelope.
+
+    An allowable has one place in the envelope's stress strip only where all states share one factor; else
+    only the utilisation strip shows the limit.
+    """
+
+    def __init__(
+        self,
+        results: Results,
+        states: tuple[int, ...],
+        x: FloatArray,
+        segment: IntArray,
+        utilisation: FloatArray,
+        stress: FloatArray | None,
+    ) -> None:
+        self._results = results
+        self._system = results.project.display.unit_system
+        self._states = states
+        self._one_allowable = len({results.states[i].allowable_factor for i in states}) == 1
+        self._x, self._segment = x, segment
+        self._utilisation, self._stress = utilisation, stress
+
+    def build(self, values: Values) -> tuple[StripContent, ...]:
+        return tuple(self._content(kind, title, values[kind]) for kind, title in titles().items())
+
+    def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
+        limits = self._limits(kind, columns)
+        least = self._nothing(kind)
+        beyond = tuple(limit for limit in limits if not _reached(limit, columns, kind))
+        drawn = tuple(limit for limit in limits if limit not in beyond)
+        low, high = _range(columns, drawn, least)
+        return StripContent(
+            kind=kind,
+            title=title,
+            unit=unit_of(kind, self._system),
+            traces=tuple(self._trace(kind, column) for column in columns),
+            low=low,
+            high=high,
+            limits=drawn,
+            beyond=beyond,
+            extremes=self._extremes(kind, columns, least),
+            unchecked=self._unchecked() if kind == "utilisation" else (),
+            filled=kind != "displacement",
+        )
+
+    def _nothing(self, kind: Kind) -> float:
+        """The least range of a strip, from the member's own stiffness."""
+        chain = self._results.chain
+        length = float(self._results.position[-1])
+        modulus, area = float(chain.modulus.max()), float(chain.area.max())
+        least = {
+            "displacement": length,
+            "force": modulus * area,
+            "stress": modulus,
+            "utilisation": 1.0,
+        }
+        return NOTHING * least[kind]
+
+    def _trace(self, kind: Kind, value: FloatArray) -> Trace:
+        """The curve with points put in where it changes sign or passes its limit."""
+        sign = value if self._stress is None or kind == "force" else self._stress
+        columns = np.vstack([self._x, value, sign, self._over_measure(kind, value)])
+        if kind != "displacement":
+            columns = with_crossings(with_crossings(columns, 2, 0.0), 3, 1.0)
+        return Trace(columns[0], columns[1], self._drawn(kind, columns))
+
+    def _over_measure(self, kind: Kind, value: FloatArray) -> FloatArray:
+        """What is above 1 where the limit is passed: of the envelope's stress, each side by itself."""
+        if kind == "utilisation" or (kind == "stress" and self._stress is not None):
+            return self._utilisation
+        if kind != "stress" or not self._one_allowable:
+            return np.zeros_like(value)
+        tension, compression = self._allowables()
+        allowed = np.where(value > 0, tension[self._segment], compression[self._segment])
+        return np.abs(value) / allowed
+
+    def _allowables(self) -> tuple[FloatArray, FloatArray]:
+        """Allowable stress by segment in tension and compression, NaN where there is none."""
+        both = self._results.allowables
+        return both.tension[self._states[0]], both.compression[self._states[0]]
+
+    def _drawn(self, kind: Kind, columns: FloatArray) -> IntArray:
+        middle = 0.5 * (columns[:, 1:] + columns[:, :-1])
+        if kind == "displacement" or (kind == "utilisation" and self._stress is None):
+            drawn = np.full(middle.shape[1], PLAIN)
+        else:
+            drawn = np.where(middle[2] < 0, COMPRESSION, np.where(middle[2] > 0, TENSION, PLAIN))
+        drawn = np.where(middle[3] > 1 + PASS_MARGIN, OVER, drawn)
+        return np.where((np.diff(columns[0]) > 0) & np.isfinite(middle[1]), drawn, NONE)
+
+    def _limits(self, kind: Kind, columns: tuple[FloatArray, ...]) -> tuple[Limit, ...]:
+        length = float(self._results.position[-1])
+        if kind == "utilisation":
+            return (Limit(0.0, length, 1.0, "1"),)
+        if kind != "stress" or not self._one_allowable:
+            return ()
+        tension, compression = self._allowables()
+        least = self._nothing(kind)
+        sides = [tension] if max(float(c.max()) for c in columns) > least else []
+        sides += [-compression] if min(float(c.min()) for c in columns) < -least else []
+        return tuple(limit for side in sides for limit in self._limit_runs(side))
+
+    def _limit_runs(self, side: FloatArray) -> list[Limit]:
+        """Neighbours with the same allowable share one line."""
+        position, found = self._results.position, []
+        starts = [0, *(np.flatnonzero(np.diff(np.nan_to_num(side)) != 0) + 1), len(side)]
+        for first, stop in zip(starts, starts[1:], strict=False):
+            if np.isfinite(side[first]):
+                text = tr("allowable {value}").format(value=number("stress", abs(side[first]), self._system))
+                found.append(Limit(float(position[first]), float(position[stop]), float(side[first]), text))
+        return found
+
+    def _extremes(self, kind: Kind, columns: tuple[FloatArray, ...], least: float) -> tuple[Extreme, ...]:
+        if not np.isfinite(columns[0]).any():
+            return ()
+        high = self._extreme(kind, columns[0], np.nanargmax, least)
+        low = self._extreme(kind, columns[-1], np.nanargmin, least)
+        if kind == "utilisation" or low.text == high.text:
+            return (high,)
+        return tuple(e for e in (high, low) if e.value != 0.0) or (high,)
+
+    def _extreme(
+        self, kind: Kind, column: FloatArray, pick: Callable[[FloatArray], np.intp], least: float
+    ) -> Extreme:
+        at = int(pick(column))
+        value = float(column[at]) if abs(column[at]) > least else 0.0
+        return Extreme(float(self._x[at]), value, number(kind, value, self._system))
+
+    def _unchecked(self) -> tuple[tuple[float, float], ...]:
+        """Segments with a check of stress not made in a shown state, or without any utilisation."""
+        missing = {int(i) for i in np.unique(self._segment[np.isnan(self._utilisation)])}
+        names = {self._results.states[i].name for i in self._states if self._results.states[i].checked}
+        marks = {c.segment for c in self._results.checks if c.status == "not_made" and c.combination in names}
+        missing |= {i for i, s in enumerate(self._results.project.segments) if s.mark in marks}
+        position = self._results.position
+        return tuple((float(position[i]), float(position[i + 1])) for i in sorted(missing))
+
+
+def _reached(limit: Limit, columns: tuple[FloatArray, ...], kind: Kind) -> bool:
+    """Whether the stress comes near enough to the limit for it to be drawn to scale."""
+    largest = max(float(np.nanmax(np.abs(c), initial=0.0)) for c in columns)
+    return kind == "utilisation" or largest >= BAND_SHOWN * abs(limit.value)
+
+
+def _range(columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float) -> tuple[float, float]:
+    """Low and high of a strip: always with 0, with a little air, never less than `least`."""
+    ends = [0.0, *(limit.value for limit in limits)]
+    for column in columns:
+        if np.isfinite(column).any():
+            ends += [float(np.nanmin(column)), float(np.nanmax(column))]
+    low, high = min(ends), max(ends)
+    air = 0.07 * max(high - low, least)
+    low, high = (low - air if low < 0 else low), (high + air if high > 0 else high)
+    return (low, high) if high - low >= least else (low - least, high + least)
+
+
+def with_crossings(columns: FloatArray, row: int, level: float) -> FloatArray:
+    """Points (c, k) with one put in wherever row `row` passes `level` between two points, all rows linear."""
+    values = columns[row] - level
+    with np.errstate(invalid="ignore"):
+        at = np.flatnonzero((values[:-1] * values[1:] < 0) & (np.diff(columns[0]) > 0))
+    share = values[at] / (values[at] - values[at + 1])
+    between = columns[:, at] + share * (columns[:, at + 1] - columns[:, at])
+    between[row] = level
+    return np.insert(columns, at + 1, between, axis=1)
