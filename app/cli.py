@@ -10,6 +10,7 @@ import argparse
 import io
 import os
 import sys
+import textwrap
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
@@ -19,6 +20,7 @@ from app.words import tr
 
 BROKEN_PIPE = 141  # what a shell reports of a program that SIGPIPE ended
 INTERRUPTED = 130  # likewise of Ctrl+C
+HELP_WIDTH = 90
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
@@ -60,9 +62,11 @@ def parser() -> argparse.ArgumentParser:
     """The grammar of the command line, with its help."""
     top = argparse.ArgumentParser(
         prog="barwright",
-        description=tr(
-            "Members under axial load: stepped shafts, tie rods, columns, piles. Opens a window, or checks "
-            "project files and prints calc sheets in the terminal."
+        description=filled(
+            tr(
+                "Members under axial load: stepped shafts, tie rods, columns, piles. Opens a window, or checks "
+                "project files and prints calc sheets in the terminal."
+            )
         ),
         epilog=main_examples(),
         formatter_class=argparse.RawDescriptionHelpFormatter,
@@ -73,13 +77,18 @@ def parser() -> argparse.ArgumentParser:
         added = places.add_parser(
             name,
             help=command.words,
-            description=f"{command.words[:1].upper()}{command.words[1:]}.",
+            description=filled(f"{command.words[:1].upper()}{command.words[1:]}."),
             epilog=command.more,
             formatter_class=argparse.RawDescriptionHelpFormatter,
         )
         added.set_defaults(run=command.run)
         command.take(added)
     return top
+
+
+def filled(text: str) -> str:
+    """Text in lines of a readable length; the examples below it keep theirs."""
+    return textwrap.fill(text, HELP_WIDTH)
 
 
 def take_open(command: argparse.ArgumentParser) -> None:
@@ -167,4 +176,5 @@ def sheet_examples() -> str:
   barwright sheet gate.barwright.json -o sheets/A4.pdf   that file
   barwright sheet *.barwright.json -o sheets             one PDF for each, in that folder
 
-A PDF of that name is replaced, a project never. Exit code 0 once all are written, whatever their verdict.""")
+A PDF of that name is replaced, a project never. Exit code 0 once all are written, whatever their
+verdict; 2 and 4 as for check.""")

@@ -1,0 +1,119 @@
+"""A check as text to read: verdict, what governs, utilisations by combination, reactions, numerical error.
+
+Shows the same findings in the same words as window and sheet; only the layout in columns is made here.
+"""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Callable, Iterator, Sequence
+
+from app.columns import table
+from app.findings import Findings, StateBooks, findings
+from app.phrases import caution, check_sentence
+from app.phrases.checks import SUBJECTS
+from app.units import utilisation_text
+from app.words import tr
+from solver.checks import Check
+from solver.model import Project, UnitSystemName
+from solver.results import Results
+
+STRESSES = ("tension", "compression")
+NOT_MADE = "?"  # beside a utilisation: another check of the same thing could not be made
+NOTHING = "–"
+
+
+def report(project: Project, results: Results, file: str) -> str:
+    """The check of one file as lines, in the project's display units."""
+    system = project.display.unit_system
+    found = findings(results, system)
+    blocks = [
+        f"{project.title or file}\n",
+        verdict(results, found, system),
+        *utilisations(results),
+        *limits(results),
+        forces(found.books),
+        remarks(found),
+    ]
+    return "\n".join(blocks)
+
+
+def verdict(results: Results, found: Findings, system: UnitSystemName) -> str:
+    """The verdict and the check that governs."""
+    lines = [found.headline, found.detail]
+    if results.governing is not None:
+        lines.append(check_sentence(results.governing, system))
+    return "".join(line + "\n" for line in lines)
+
+
+def utilisations(results: Results) -> Iterator[str]:
+    """The largest utilisation of stress in every segment, a column for each combination."""
+    stresses = [check for check in results.checks if check.check in STRESSES]
+    if stresses:
+        marks = [segment.mark for segment in results.project.segments]
+        rows = by_combination(results, stresses, lambda check: check.segment or "")
+        head = [tr("Utilisation of stress"), *checked(results)]
+        yield table(head, [[mark, *rows[mark]] for mark in marks])
+
+
+def limits(results: Results) -> Iterator[str]:
+    """The utilisation of every other limit, a column for each combination."""
+    others = [check for check in results.checks if check.check not in STRESSES]
+    if others:
+        rows = by_combination(results, others, subject)
+        head = [tr("Utilisation of limits"), *checked(results)]
+        yield table(head, [[name, *row] for name, row in rows.items()])
+
+
+def subject(check: Check) -> str:
+    """What a limit is of, in a few words."""
+    return tr(SUBJECTS[check.check]).format(joint=check.joint, start=check.start, end=check.end)
+
+
+def by_combination(
+    results: Results, checks: Sequence[Check], row: Callable[[Check], str]
+) -> dict[str, list[str]]:
+    """The texts of the utilisations by row and combination; rows in the order in which they come up."""
+    groups: defaultdict[str, defaultdict[str, list[Check]]] = defaultdict(lambda: defaultdict(list))
+    for check in checks:
+        groups[row(check)][check.combination].append(check)
+    names = checked(results)
+    return defaultdict(
+        lambda: [NOTHING] * len(names),
+        {name: [cell(group[combination]) for combination in names] for name, group in groups.items()},
+    )
+
+
+def cell(checks: Sequence[Check]) -> str:
+    """The largest utilisation of some checks, marked where one of them could not be made."""
+    made = [(check.utilisation, check.status) for check in checks if check.utilisation is not None]
+    texts = [utilisation_text(*max(made))] if made else []
+    return " ".join([*texts, *([NOT_MADE] if len(made) < len(checks) else [])]) or NOTHING
+
+
+def checked(results: Results) -> list[str]:
+    """The names of the states that are checked; they come first."""
+    return [state.name for state in results.states if state.checked]
+
+
+def forces(books: Sequence[StateBooks]) -> str:
+    """The forces on the member along it, by combination: what holds it, what loads it, what is left over."""
+    names = [reaction.mark for reaction in books[0].reactions]
+    rows = [[tr("Joint {mark}").format(mark=mark), *_reactions(books, row)] for row, mark in enumerate(names)]
+    rows.append([tr("Loads"), *(book.loads_text for book in books)])
+    if books[0].bedding_text:
+        rows.append([tr("Bedding"), *(book.bedding_text for book in books)])
+    rows.append([tr("Sum"), *(book.residual_text for book in books)])
+    return table([tr("Forces on the member"), *(book.name for book in books)], rows)
+
+
+def _reactions(books: Sequence[StateBooks], row: int) -> list[str]:
+    """The reactions at one support."""
+    return [book.reactions[row].text for book in books]
+
+
+def remarks(found: Findings) -> str:
+    """What was not checked and what to enter for it, what else is to be known, how exact the numbers are."""
+    missing = [f"{NOT_MADE} {item.sentence}: {item.remedy}" for item in found.not_made]
+    lines = (*missing, *found.notes, found.numerical_error, caution())
+    return "".join(f"{line}\n" for line in lines)
