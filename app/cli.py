@@ -64,8 +64,8 @@ def parser() -> argparse.ArgumentParser:
         prog="barwright",
         description=filled(
             tr(
-                "Members under axial load: stepped shafts, tie rods, columns, piles. Opens a window, or checks "
-                "project files and prints calc sheets in the terminal."
+                "Members under axial load: stepped shafts, tie rods, columns, piles. Opens a window, or "
+                "checks project files and prints calc sheets in the terminal."
             )
         ),
         epilog=main_examples(),
@@ -94,7 +94,6 @@ def filled(text: str) -> str:
 def take_open(command: argparse.ArgumentParser) -> None:
     """`barwright open [FILE …]`, also without the word."""
     command.add_argument("files", nargs="*", metavar=tr("FILE"), help=tr("project files, one window each"))
-    command.add_argument("--sample", metavar=tr("NAME"), help=tr("open a packaged sample as a new project"))
 
 
 def take_check(command: argparse.ArgumentParser) -> None:

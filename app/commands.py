@@ -24,7 +24,7 @@ if TYPE_CHECKING:
 
 
 def run_open(options: Namespace) -> int:
-    """Open a window on each file, on a packaged sample, or on what was last open."""
+    """Open a window on each file, or on a new project."""
     from app.qt_libraries import DRAWING, has_display, missing_packages
 
     if not has_display():

@@ -12,7 +12,7 @@ from pathlib import Path
 
 from app.environment import ROOT, SetupFailed, prepare
 from app.qt_libraries import DRAWING, WINDOW, has_display, missing_packages
-from app.samples import FIRST, sample_path
+from app.samples import sample_path
 from app.words import tr
 
 TRY_A_WINDOW = "from PySide6.QtWidgets import QApplication; QApplication([])"
@@ -29,7 +29,7 @@ def main() -> int:
     reason = why_no_window(python)
     if reason:
         return print_check(python, reason)
-    return run(python, "open", "--sample", FIRST)
+    return run(python, "open", str(sample_path()))
 
 
 def run(python: Path, *arguments: str) -> int:

@@ -10,6 +10,7 @@ import pytest
 
 from app import environment, qt_libraries, start
 from app.environment import SetupFailed
+from app.samples import sample_path
 from tests import __main__ as tests_command
 
 
@@ -150,7 +151,7 @@ def test_with_a_display_the_window_opens_on_the_sample(
 ) -> None:
     monkeypatch.setattr(start, "why_no_window", lambda python: "")
     start.main()
-    assert ran == [("open", "--sample", "hoist_shaft")]
+    assert ran == [("open", str(sample_path("hoist_shaft")))]
 
 
 def test_a_setup_that_fails_is_a_sentence(
