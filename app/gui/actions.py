@@ -1,0 +1,135 @@
+"""Every command of the window in one table: menu, words, key, tip. Menus, top bar and help walk it."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+from typing import Final
+
+from PySide6.QtCore import QObject
+from PySide6.QtGui import QAction, QKeySequence
+from PySide6.QtWidgets import QMenu, QMenuBar
+
+from app.words import later, tr
+
+Key = QKeySequence.StandardKey | str | None
+Role = QAction.MenuRole
+KEYS = QKeySequence.StandardKey
+
+
+@dataclass(frozen=True, slots=True)
+class Command:
+    """One command: `key` names it, `text` with its mnemonic stands in `menu`, `bar` in the top bar."""
+
+    key: str
+    menu: str
+    text: str
+    shortcut: Key = None
+    bar: str = ""
+    tip: str = ""
+    role: Role = Role.NoRole
+    fallback: str = ""  # a key where the system names none for the standard one
+
+
+SEPARATOR: Final = Command("", "", "")
+MENUS: Final = (later("&File"), later("&Edit"), later("&Member"), later("&View"), later("&Help"))
+RECENT: Final = "recent"  # submenus filled when they open
+SAMPLES: Final = "samples"
+
+COMMANDS: Final[tuple[Command, ...]] = (
+    Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
+    Command("open", "&File", later("&Open…"), KEYS.Open, later("Open"), later("Open a project file")),
+    Command(RECENT, "&File", later("Open &recent")),
+    Command(SAMPLES, "&File", later("Open a sa&mple")),
+    Command("save", "&File", later("&Save"), KEYS.Save, later("Save"), later("Save the project")),
+    Command("save_as", "&File", later("Save &as…"), KEYS.SaveAs, fallback="Ctrl+Shift+S"),
+    SEPARATOR,
+    Command("title_block", "&File", later("&Title block…"), "Ctrl+T"),
+    Command(
+        "sheet",
+        "&File",
+        later("&Calc sheet…"),
+        KEYS.Print,
+        later("Calc sheet"),
+        later("Write the calc sheet as PDF"),
+    ),
+    SEPARATOR,
+    Command("quit", "&File", later("&Quit"), KEYS.Quit, role=Role.QuitRole, fallback="Ctrl+Q"),
+    Command("undo", "&Edit", later("&Undo"), KEYS.Undo, later("Undo")),
+    Command("redo", "&Edit", later("&Redo"), KEYS.Redo, later("Redo"), fallback="Ctrl+Shift+Z"),
+    SEPARATOR,
+    Command("copy", "&Edit", later("&Copy"), KEYS.Copy),
+    Command("paste", "&Edit", later("&Paste"), KEYS.Paste),
+    Command("fill_down", "&Edit", later("Fill &down"), "Ctrl+D"),
+    Command("clear", "&Edit", later("C&lear cells")),
+    Command("delete_rows", "&Edit", later("Delete ro&ws"), "Ctrl+Backspace"),
+    Command("insert_before", "&Member", later("Insert segment &before"), "Ctrl+Shift+B"),
+    Command("insert_after", "&Member", later("Insert segment &after"), "Ctrl+B"),
+    Command("delete_segments", "&Member", later("&Delete segments"), "Ctrl+Delete"),
+    SEPARATOR,
+    Command("split", "&Member", later("&Split segment in the middle"), "Ctrl+Shift+D"),
+    Command("join", "&Member", later("&Join segments"), "Ctrl+J"),
+    Command("reverse", "&Member", later("&Reverse the member")),
+    Command("next_pane", "&View", later("&Next pane"), "F6"),
+    Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
+    Command("keys", "&Help", later("&Keys"), KEYS.HelpContents, fallback="F1"),
+    Command("log", "&Help", later("Where the &log is")),
+    Command("about", "&Help", later("&About Barwright"), role=Role.AboutRole),
+)
+
+
+def shortcut_of(command: Command) -> QKeySequence:
+    """The command's first key on this system; empty where it has none."""
+    if command.shortcut is None:
+        return QKeySequence()
+    if isinstance(command.shortcut, str):
+        return QKeySequence(command.shortcut)
+    bound = QKeySequence.keyBindings(command.shortcut)
+    return bound[0] if bound else QKeySequence(command.fallback)
+
+
+def make_actions(parent: QObject, handlers: Mapping[str, Callable[[], None]]) -> dict[str, QAction]:
+    """An action for each command that is not a submenu, connected to its handler."""
+    made = {}
+    for command in COMMANDS:
+        if command.key in ("", RECENT, SAMPLES):
+            continue
+        action = QAction(tr(command.text), parent)
+        action.setShortcut(shortcut_of(command))
+        action.setMenuRole(command.role)
+        plain = tr(command.tip) if command.tip else action.text().replace("&", "").rstrip("…")
+        action.setToolTip(_with_key(plain, action.shortcut()))
+        action.triggered.connect(lambda _checked=False, handle=handlers[command.key]: handle())
+        made[command.key] = action
+    return made
+
+
+def _with_key(text: str, key: QKeySequence) -> str:
+    shown = key.toString(QKeySequence.SequenceFormat.NativeText)
+    return f"{text} ({shown})" if shown else text
+
+
+def fill_menus(bar: QMenuBar, actions: Mapping[str, QAction], submenus: Mapping[str, QMenu]) -> None:
+    """Menus in the order of the table."""
+    menus = {title: bar.addMenu(tr(title)) for title in MENUS}
+    current = menus[MENUS[0]]
+    for command in COMMANDS:
+        if command is SEPARATOR:
+            current.addSeparator()
+            continue
+        current = menus[command.menu]
+        if command.key in submenus:
+            submenus[command.key].setTitle(tr(command.text))
+            current.addMenu(submenus[command.key])
+        else:
+            current.addAction(actions[command.key])
+
+
+def keys_text() -> str:
+    """The keys for the help page, a line each."""
+    lines = []
+    for command in COMMANDS:
+        key = shortcut_of(command).toString(QKeySequence.SequenceFormat.NativeText)
+        if key:
+            lines.append(f"{key}\t{tr(command.text).replace('&', '').rstrip('…')}")
+    return "\n".join(lines)

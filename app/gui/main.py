@@ -1,0 +1,85 @@
+"""Opens the window: application, settings, log, recovery copies, and the end of all of them."""
+
+from __future__ import annotations
+
+import os
+import sys
+from pathlib import Path
+
+from PySide6.QtCore import QTimer
+from PySide6.QtWidgets import QApplication
+
+from app import samples
+from app.gui import dialogs, log, settings
+from app.gui.files import blank_project
+from app.gui.recovery import Recovered, left_behind
+from app.gui.settings import Settings
+from app.gui.window import Window
+from app.words import tr
+
+
+def application() -> QApplication:
+    """The application, with the names that settings and desktops know it by."""
+    existing = QApplication.instance()
+    made = existing if isinstance(existing, QApplication) else QApplication(sys.argv[:1])
+    made.setApplicationName("barwright")
+    made.setApplicationDisplayName("Barwright")
+    made.setDesktopFileName("barwright")
+    return made
+
+
+def open_window(path: str | os.PathLike[str] | None, store: Settings, recovery_folder: Path) -> Window:
+    """A window on the file, or on a new project."""
+    window = Window(blank_project(store.units), store, recovery_folder)
+    window.show()
+    if path is not None:
+        opened = Path(path)
+        if is_sample(opened):
+            window.document.load(samples.read_sample(opened.name.removesuffix(samples.SUFFIX)), None)
+        else:
+            window.files.read(opened)
+    return window
+
+
+def is_sample(path: Path) -> bool:
+    """Whether the file is a packaged sample, which is opened as a project of its own and never written over."""
+    name = path.name.removesuffix(samples.SUFFIX)
+    return name in samples.names() and path.resolve() == samples.sample_path(name).resolve()
+
+
+def offer_recovery(window: Window, found: tuple[Recovered, ...]) -> None:
+    """Ask about copies left behind, one after the other."""
+    if not found:
+        return
+    first, rest = found[0], found[1:]
+    name = first.path.name if first.path else first.snapshot.project.title or tr("new project")
+
+    def on_answer(answer: bool | None) -> None:
+        if answer:
+            window.files.when_safe(lambda: window.files.recover(first.snapshot, first.path))
+            window.recovery.write()
+        if answer is not None:
+            first.discard()
+        if not answer:
+            offer_recovery(window, rest)
+
+    dialogs.ask_recover(window, name, on_answer)
+
+
+def run(path: str | os.PathLike[str] | None = None) -> int:
+    """Open the window on a file or on a new project; returns the exit code when it is closed."""
+    app = application()
+    folder = settings.folder()
+    log.start(folder)
+    store = Settings()
+    recovery_folder = folder / "recovery"
+    found = left_behind(recovery_folder)
+    window = open_window(path, store, recovery_folder)
+    errors = log.UncaughtErrors(window.show_fault)
+    errors.install()
+    QTimer.singleShot(0, window, lambda: offer_recovery(window, found))
+    try:
+        return app.exec()
+    finally:
+        errors.remove()
+        log.stop()

@@ -1,0 +1,103 @@
+"""The commands that change the member as a whole: insert, delete, split, join, reverse, rows of any table.
+
+Each is one undo step on the records chosen in the tables; what cannot be done is said in the status line.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from PySide6.QtCore import QObject, Signal
+
+from app import edits
+from app.gui.document import Document
+from app.gui.tables.pane import TablesPane
+from app.gui.tables.reasons import TypingError, reason_of
+from app.words import tr
+from solver.model import Project
+
+
+class MemberEdits(QObject):
+    """Commands on the chosen segments and rows."""
+
+    told = Signal(str)
+
+    def __init__(self, document: Document, tables: TablesPane, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self._tables = tables
+
+    def _chosen(self) -> tuple[int, ...]:
+        """The chosen segments; empty where none is."""
+        return self._tables.views["segments"].chosen_records()
+
+    def _do(self, name: str, edit: Callable[[Project], Project]) -> None:
+        self._tables.commit_open_editor()
+        try:
+            project = edit(self._document.project)
+        except TypingError as error:
+            self.told.emit(reason_of(error))
+        else:
+            self._document.commit(project, name)
+
+    def _choose(self, segment: int) -> None:
+        self._tables.views["segments"].choose_record(segment)
+
+    def insert_before(self) -> None:
+        """A segment before the first chosen one."""
+        index = min(self._chosen(), default=0)
+        self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
+        self._choose(index)
+
+    def insert_after(self) -> None:
+        """A segment behind the last chosen one."""
+        index = max(self._chosen(), default=len(self._document.project.segments) - 1) + 1
+        self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
+        self._choose(index)
+
+    def delete_segments(self) -> None:
+        """The chosen segments, with their loads."""
+        chosen = self._chosen()
+        if not chosen:
+            self.told.emit(tr("choose segments to delete in the table first"))
+        elif len(chosen) == len(self._document.project.segments):
+            self.told.emit(tr("a member has at least one segment"))
+        else:
+            self._do(tr("Delete segments"), lambda project: edits.delete_segments(project, chosen))
+
+    def split(self) -> None:
+        """The chosen segment in its middle."""
+        chosen = self._chosen()
+        if len(chosen) != 1:
+            self.told.emit(tr("choose one segment to split"))
+            return
+        half = self._document.project.segments[chosen[0]].length / 2
+        self._do(tr("Split segment"), lambda project: edits.split_segment(project, chosen[0], half))
+
+    def join(self) -> None:
+        """The chosen segments to one, or the chosen one with the next."""
+        chosen = self._chosen()
+        if not chosen:
+            self.told.emit(tr("choose the segments to join"))
+            return
+        first, last = chosen[0], chosen[-1] if len(chosen) > 1 else chosen[0] + 1
+        if last >= len(self._document.project.segments):
+            self.told.emit(tr("there is no segment behind it to join"))
+            return
+        self._do(tr("Join segments"), lambda project: edits.join_segments(project, first, last))
+
+    def reverse(self) -> None:
+        """The member described from its other end."""
+        self._do(tr("Reverse member"), edits.reverse_member)
+
+    def delete_rows(self) -> None:
+        """The records chosen in the table with the keyboard."""
+        view = self._tables.current_view()
+        table, chosen = view.table_model.table, view.chosen_records()
+        if table.key == "segments":
+            self.delete_segments()
+        elif table.delete is None or not chosen:
+            self.told.emit(tr("choose rows to delete first"))
+        else:
+            delete, sight = table.delete, view.table_model.sight
+            self._do(tr(table.delete_name), lambda project: delete(project, chosen, sight))

@@ -1,0 +1,115 @@
+"""What a solve gives the window: results with their findings, or the sentences on why there are none.
+
+`compute` runs in the solver's thread and touches nothing but its arguments. What cannot be computed for a
+reason in the input is an outcome like any other; what else escapes is a fault of ours and stays an exception.
+"""
+
+from __future__ import annotations
+
+import time
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from app.gui.tables.column import Figures
+from app.gui.view import Shown
+from solver.arrays import FloatArray
+from solver.errors import InputError
+from solver.model import Project
+from solver.results import Results
+
+if TYPE_CHECKING:
+    from app.findings import Findings
+
+
+@dataclass(frozen=True, slots=True)
+class Outcome:
+    """The project that was solved, with what came of it; `problems` say why there are no results."""
+
+    project: Project
+    results: Results | None
+    findings: Findings | None
+    problems: tuple[str, ...]
+    seconds: float
+
+
+def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
+    """Solve the project and word its findings. Raises Cancelled."""
+    from app.findings import findings
+    from app.phrases import error_sentences
+    from solver.solve import solve
+
+    start = time.perf_counter()
+    try:
+        results = solve(project, cancelled=cancelled)
+    except InputError as error:
+        return Outcome(project, None, None, tuple(error_sentences(error)), time.perf_counter() - start)
+    seconds = time.perf_counter() - start
+    return Outcome(project, results, findings(results, project.display.unit_system), (), seconds)
+
+
+def shown_states(project: Project) -> tuple[Shown, ...]:
+    """What the strips can show of a project: the envelope where several states are checked, then each state."""
+    combinations = [Shown("combination", combination.name) for combination in project.combinations]
+    cases = [Shown("case", case.name) for case in project.load_cases]
+    checked = combinations or cases
+    envelope = [Shown("envelope")] if len(checked) > 1 else []
+    return (*envelope, *combinations, *cases) or (Shown("unloaded", "Unloaded"),)
+
+
+def still_shown(shown: Shown, project: Project) -> Shown:
+    """The same state where the project still has it, else the first there is."""
+    states = shown_states(project)
+    return shown if shown in states else states[0]
+
+
+def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figures:
+    """What the tables show of the results of the shown state."""
+    if results is None:
+        return Figures(current=current)
+    state = None if shown.kind == "envelope" else _index(results, shown)
+    segments = len(results.project.segments)
+    utilisation, governs = _utilisation(results, state, segments)
+    nothing: FloatArray = np.zeros(0)
+    return Figures(
+        utilisation=utilisation,
+        governs=governs,
+        displacement=nothing if state is None else results.solution.joint_displacement[state],
+        reaction=nothing if state is None else results.solution.reaction[state],
+        mass=results.mass,
+        current=current,
+    )
+
+
+def _index(results: Results, shown: Shown) -> int | None:
+    """The shown state's index; None where these results (of an earlier edit) do not have it."""
+    try:
+        return results.state_index(shown.name, None if shown.kind == "envelope" else shown.kind)
+    except KeyError:
+        return None
+
+
+def _utilisation(results: Results, state: int | None, segments: int) -> tuple[FloatArray, FloatArray]:
+    """The largest utilisation of each segment over the made checks of stress, and the sign of that stress."""
+    name = None if state is None else results.states[state].name
+    found = np.full(segments, np.nan)
+    signs = np.zeros(segments)
+    if state is not None and not results.states[state].checked:
+        return found, signs
+    place = {segment.mark: index for index, segment in enumerate(results.project.segments)}
+    for check in results.checks:
+        if check.segment is None or check.utilisation is None or name not in (None, check.combination):
+            continue
+        index = place[check.segment]
+        if not check.utilisation <= found[index]:  # also where nothing was found yet
+            found[index] = check.utilisation
+            signs[index] = 1.0 if check.check == "tension" else -1.0
+    return found, signs
+
+
+def largest_bound(results: Results) -> float:
+    """The largest numerical error over the checked states, relative, displacement in the energy norm."""
+    checked = [index for index, state in enumerate(results.states) if state.checked]
+    return float(results.solution.error_bound[checked].max())

@@ -1,0 +1,72 @@
+"""Where a cell stands in the project, and how a draft finds its cell again after rows came or went.
+
+A place reads like the file's own path: list names, indices, keys (`("segments", 2, "length")`). A cell that
+belongs to a load case ends in the case's place (`("segments", 2, "load", "load_cases", 0)`); lists of the
+project itself are therefore looked up at the root wherever they stand. Records are frozen and untouched ones
+are shared between snapshots, so identity says which rows moved; the alternative, an id in each record, would
+have to be kept out of the file.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from solver.model import Project
+
+Place = tuple[str | int, ...]
+
+
+def span(old: Sequence[object], new: Sequence[object]) -> tuple[int, int]:
+    """How many items at the front, and then at the back, are the very same in both."""
+    shorter = min(len(old), len(new))
+    front = back = 0
+    while front < shorter and old[front] is new[front]:
+        front += 1
+    while back < shorter - front and old[-1 - back] is new[-1 - back]:
+        back += 1
+    return front, back
+
+
+def moved_index(index: int, old: Sequence[object], new: Sequence[object]) -> int | None:
+    """Where the item at `index` stands in `new`; None where it is gone."""
+    front, back = span(old, new)
+    if index < front:
+        return index
+    if index >= len(old) - back:
+        return index + len(new) - len(old)
+    same = [place for place, item in enumerate(new) if item is old[index]]
+    if same:
+        return same[0]
+    return index if len(old) == len(new) else None
+
+
+def follow(place: Place, old: Project, new: Project) -> Place | None:
+    """The same cell's place in `new`; None where its row is gone."""
+    found: list[str | int] = []
+    old_node: object = old
+    new_node: object = new
+    for step in place:
+        if isinstance(step, int):
+            index = _follow_index(step, old_node, new_node)
+            if index is None:
+                return None
+            found.append(index)
+            old_node, new_node = _item(old_node, step), _item(new_node, index)
+        else:
+            found.append(step)
+            root = hasattr(old, step)
+            old_node = getattr(old if root else old_node, step, None)
+            new_node = getattr(new if root else new_node, step, None)
+    return tuple(found)
+
+
+def _follow_index(index: int, old: object, new: object) -> int | None:
+    if not (isinstance(old, tuple) and isinstance(new, tuple)):
+        return index
+    if index == len(old):  # the row that adds another stands after the last
+        return len(new)
+    return moved_index(index, old, new)
+
+
+def _item(node: object, index: int) -> object:
+    return node[index] if isinstance(node, tuple) and index < len(node) else None

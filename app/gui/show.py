@@ -1,0 +1,154 @@
+"""From edit to screen: asks the solver for what the document shows, and shows what comes back.
+
+A result of an earlier edit is shown while nothing newer is there, marked as such; only the newest result of a
+project with no unfinished entry counts as current.
+"""
+
+from __future__ import annotations
+
+from typing import Protocol
+
+from PySide6.QtCore import QObject
+
+from app.gui import log
+from app.gui.document import Document
+from app.gui.outcome import Outcome, compute, figures_of, largest_bound, still_shown
+from app.gui.status_line import StatusLine
+from app.gui.tables.pane import TablesPane
+from app.gui.view import Shown, View
+from app.gui.worker import Delivery, LatestSolver
+from app.words import tr
+from solver.model import Project
+from solver.results import Results
+
+
+class Sheet(Protocol):
+    """The drawing and its strips."""
+
+    def show_results(self, project: Project, results: Results | None, current: bool) -> None:
+        """Show these."""
+
+
+class Panel(Protocol):
+    """The findings."""
+
+    def show_findings(self, findings: object, problems: tuple[str, ...], current: bool) -> None:
+        """Show these."""
+
+
+class Showing(QObject):
+    """Keeps the screens at the document's latest edit."""
+
+    def __init__(
+        self,
+        document: Document,
+        view: View,
+        sheet: Sheet,
+        panel: Panel,
+        tables: TablesPane,
+        status: StatusLine,
+    ) -> None:
+        super().__init__(document)
+        self._document = document
+        self._view = view
+        self._sheet = sheet
+        self._panel = panel
+        self._tables = tables
+        self._status = status
+        self._outcome: Outcome | None = None
+        self._fault = ""
+        self._asked: Project | None = None
+        self._newest = False
+        self.solver = LatestSolver(compute, self)
+        self.solver.ready.connect(self.on_ready)
+        self.solver.failed.connect(self.on_failed)
+        document.changed.connect(lambda _snapshot: self.follow())
+        document.preview_changed.connect(lambda _preview: self.follow())
+        view.shown_changed.connect(self.on_shown)
+
+    @property
+    def outcome(self) -> Outcome | None:
+        """What is shown."""
+        return self._outcome
+
+    @property
+    def current(self) -> bool:
+        """Whether what is shown is of everything that has been typed."""
+        return self._newest and not self._document.has_drafts and not self._fault
+
+    def follow(self) -> None:
+        """The document or its preview changed: solve it where it is another project, and show what is known."""
+        project = self._document.shown_project
+        self._view.set_shown(still_shown(self._view.shown, project))
+        if project is self._asked:
+            self._show()
+            return
+        self._asked = project
+        self._newest = False
+        self._fault = ""
+        self._tables.set_figures(self._figures())
+        self.solver.request(project)
+
+    def on_ready(self, delivery: Delivery) -> None:
+        """A result, in the order of the edits."""
+        assert isinstance(delivery.value, Outcome)  # noqa: S101 - what `compute` gives
+        self._outcome = delivery.value
+        self._newest = delivery.newest
+        self._show()
+
+    def on_failed(self, delivery: Delivery) -> None:
+        """A fault of ours in the solver: into the log and the status line; the next edit is solved again."""
+        assert isinstance(delivery.value, BaseException)  # noqa: S101 - what a failure carries
+        log.log_error("solver", delivery.value)
+        self._fault = tr("A fault of the program stopped the solver, see the log: {error}").format(
+            error=f"{type(delivery.value).__name__}: {delivery.value}"
+        )
+        self._show()
+
+    def on_shown(self, _shown: Shown) -> None:
+        """Another state is looked at."""
+        self._tables.set_figures(self._figures())
+        self._tell()
+
+    def _figures(self) -> object:
+        results = self._outcome.results if self._outcome else None
+        return figures_of(results, self._view.shown, current=self.current)
+
+    def _show(self) -> None:
+        outcome = self._outcome
+        results = outcome.results if outcome else None
+        findings = outcome.findings if outcome else None
+        problems = (self._fault,) if self._fault else outcome.problems if outcome else ()
+        self._sheet.show_results(self._document.shown_project, results, self.current)
+        self._panel.show_findings(findings, problems, self.current)
+        self._tables.set_figures(self._figures())
+        self._tell()
+
+    def _tell(self) -> None:
+        self._status.solver.setText(self._solver_line())
+
+    def _solver_line(self) -> str:
+        preview = self._document.preview
+        if preview is not None and preview.project is None:
+            return tr("Results are out of date: {reason}").format(reason=preview.reason)
+        drafts = self._document.snapshot.drafts
+        if drafts:
+            first = next(iter(drafts.values()))
+            return tr("Results are out of date: {cell}: {reason}").format(
+                cell=first.name, reason=first.reason
+            )
+        if self._fault:
+            return self._fault
+        if self._outcome is None or not self._newest:
+            return tr("Solving…")
+        return outcome_line(self._outcome)
+
+
+def outcome_line(outcome: Outcome) -> str:
+    """What a solve came to, in a line."""
+    from app.phrases import numerical_error_sentence
+
+    if outcome.results is None:
+        return outcome.problems[0] if outcome.problems else tr("No results")
+    solved = tr("Solved in {time} ms.").format(time=f"{1000 * outcome.seconds:.1f}")
+    return f"{solved} {numerical_error_sentence(largest_bound(outcome.results))}"

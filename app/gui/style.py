@@ -1,0 +1,36 @@
+"""The one style sheet of the window's own panels, made from the theme's colours."""
+
+from __future__ import annotations
+
+from app.gui.theme import Theme
+
+_SHEET = """
+QMainWindow, QMenuBar, QWidget#top_bar, QWidget#status_line {{ background: {panel}; color: {ink}; }}
+QMenuBar::item {{ background: transparent; color: {ink}; padding: 4px 9px; }}
+QMenuBar::item:selected {{ background: {select_fill}; }}
+QWidget#top_bar {{ border-bottom: 1px solid {edge}; }}
+QWidget#status_line {{ border-top: 1px solid {edge}; }}
+QWidget#top_bar QLabel, QWidget#status_line QLabel {{ color: {ink}; }}
+QLabel#quiet, QWidget#top_bar QLabel#quiet, QWidget#status_line QLabel#quiet {{ color: {quiet}; }}
+QFrame#rule {{ color: {edge}; }}
+QToolButton {{ border: 1px solid transparent; border-radius: 3px; padding: 4px 9px; color: {ink}; }}
+QToolButton:hover, QToolButton:pressed {{ background: {select_fill}; }}
+QToolButton:focus {{ border: 1px solid {select}; }}
+QToolButton:disabled {{ color: {quiet}; }}
+QTabWidget::pane {{ border: none; background: {card}; }}
+QTabWidget {{ background: {card}; }}
+QTabBar {{ background: {card}; }}
+QTabBar::tab {{ background: {card}; color: {quiet}; padding: 6px 12px; border: none;
+    border-bottom: 2px solid transparent; }}
+QTabBar::tab:selected {{ color: {ink}; border-bottom: 2px solid {ink}; }}
+QTabBar::tab:focus {{ color: {select}; }}
+QSplitter::handle {{ background: {edge}; }}
+QSplitter::handle:horizontal {{ width: 1px; }}
+QSplitter::handle:vertical {{ height: 1px; }}
+"""
+
+
+def style_sheet(theme: Theme) -> str:
+    """The style sheet in these colours."""
+    names = ("panel", "ink", "quiet", "edge", "select", "select_fill", "card")
+    return _SHEET.format(**{name: getattr(theme, name) for name in names})

@@ -1,0 +1,112 @@
+"""What a table is made of, as data: its rows from a project, its columns, what a typed text changes.
+
+A column knows how a cell is read (`show`), what its editor starts from (`entry`, None where the cell of that
+row is not for typing) and what a typed text makes of the project (`put`). It knows no Qt, so that each
+table can be tested without a window. Functions take the index of the record, not of the table's row.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, field
+from typing import Any
+
+import numpy as np
+
+from app.gui.places import Place
+from app.units import Quantity
+from solver.arrays import FloatArray
+from solver.model import LoadCase, Project, UnitSystemName
+
+
+@dataclass(frozen=True, slots=True)
+class Sight:
+    """How the tables are read: the unit system, and the load case whose loads they edit (None: no case)."""
+
+    system: UnitSystemName
+    case: int | None
+
+    def load_case(self, project: Project) -> LoadCase | None:
+        """The case whose loads are edited."""
+        return None if self.case is None else project.load_cases[self.case]
+
+
+@dataclass(frozen=True, slots=True)
+class Figures:
+    """What the tables show of the results of the state that is looked at; empty arrays where there is none.
+
+    `utilisation` (n,), NaN where no check was made; `governs` (n,) the sign of the stress that governs it;
+    `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support. `current` is
+    False for results of an earlier edit.
+    """
+
+    utilisation: FloatArray = field(default_factory=lambda: np.zeros(0))
+    governs: FloatArray = field(default_factory=lambda: np.zeros(0))
+    displacement: FloatArray = field(default_factory=lambda: np.zeros(0))
+    reaction: FloatArray = field(default_factory=lambda: np.zeros(0))
+    mass: float | None = None
+    current: bool = True
+
+    @staticmethod
+    def value(values: FloatArray, index: int) -> float | None:
+        """One of the values; None where there is none."""
+        if not 0 <= index < len(values) or np.isnan(values[index]):
+            return None
+        return float(values[index])
+
+
+@dataclass(frozen=True, slots=True)
+class Change:
+    """What a typed text makes of the project, with a line to say where it does more than it seems to."""
+
+    project: Project
+    note: str = ""
+
+
+Show = Callable[[Any, Sight], str]
+Entry = Callable[[Any, Sight], str | None]
+Put = Callable[[Project, int, str, Sight], Change]
+
+
+@dataclass(frozen=True, slots=True)
+class Column:
+    """One column. `optional` cells can be cleared; `figure` and `bar` are of results, never typed."""
+
+    key: str
+    title: str
+    show: Show = lambda _row, _sight: ""
+    entry: Entry = lambda _row, _sight: None
+    put: Put | None = None
+    place: Callable[[int, Sight], Place] | None = None
+    quantity: Quantity | None = None
+    optional: bool = False
+    width: int = 9  # in digits
+    figure: Callable[[int, Figures, Sight], str] | None = None
+    bar: Callable[[int, Figures], tuple[float, float] | None] | None = None  # utilisation, sign of the stress
+
+
+@dataclass(frozen=True, slots=True)
+class Adding:
+    """The last row: typing into it adds a record."""
+
+    hint: str
+    put: Callable[[Project, str, Sight], Change]
+    name: str  # of the undo step
+    column: str  # the key of the column whose text adds a record when rows are pasted past the end
+
+
+@dataclass(frozen=True, slots=True)
+class Table:
+    """One table; `lead` rows stand before the first record."""
+
+    key: str
+    title: str
+    rows: Callable[[Project, Sight], tuple[object, ...]]
+    columns: Callable[[Project, Sight], tuple[Column, ...]]
+    row_name: Callable[[Project, int, Sight], str]
+    records: Callable[[Sight], Place]  # the list the rows stand for
+    adding: Adding | None = None
+    lead: int = 0
+    total: Callable[[Project, Figures, Sight], str] | None = None
+    delete: Callable[[Project, tuple[int, ...], Sight], Project] | None = None
+    delete_name: str = ""

@@ -1,0 +1,120 @@
+"""The joints table: where each joint is, what holds and loads it, and what it does in the shown state."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from itertools import accumulate
+from math import fsum
+
+from msgspec import UNSET
+
+from app import edits
+from app.entry import parse_entry
+from app.gui.places import Place
+from app.gui.tables.column import Change, Column, Figures, Sight, Table
+from app.gui.tables.loads import case_place, needed_case
+from app.support_entry import parse_support, support_entry, support_text
+from app.units import Quantity, entry_text, format_value
+from solver.model import Joint, JointLoad, Project
+
+
+@dataclass(frozen=True, slots=True)
+class JointRow:
+    """A joint, its position and its loads in the edited case."""
+
+    joint: Joint
+    position: float
+    loads: tuple[JointLoad, ...] | None
+
+
+def rows(project: Project, sight: Sight) -> tuple[object, ...]:
+    """A row for each joint."""
+    case = sight.load_case(project)
+    positions = accumulate((segment.length for segment in project.segments), initial=0.0)
+    return tuple(
+        JointRow(
+            joint, x, None if case is None else tuple(p for p in case.joint_loads if p.joint == joint.mark)
+        )
+        for joint, x in zip(project.joints, positions, strict=True)
+    )
+
+
+def _put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
+    return Change(edits.set_value(project, ("joints", index, "support"), parse_support(text, sight.system)))
+
+
+def _load(key: str, title: str, quantity: Quantity) -> Column:
+    """A column for the sum of one kind of load in the edited case."""
+
+    def total(row: JointRow) -> float | None:
+        return None if row.loads is None else fsum(getattr(load, key) for load in row.loads)
+
+    def show(row: JointRow, sight: Sight) -> str:
+        value = total(row)
+        return "" if value is None else format_value(value, quantity, sight.system, strip=True)
+
+    def entry(row: JointRow, sight: Sight) -> str | None:
+        value = total(row)
+        single = row.loads is not None and len(row.loads) <= 1
+        return entry_text(value, quantity, sight.system) if single and value is not None else None
+
+    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        value = parse_entry(text, quantity, sight.system) if text.strip() else UNSET
+        case, mark = needed_case(project, sight).name, project.joints[index].mark
+        return Change(edits.set_joint_load(project, case, mark, key, value))
+
+    def place(index: int, sight: Sight) -> Place:
+        return ("joints", index, key, *case_place(sight))
+
+    return Column(key, title, show, entry, put, place=place, quantity=quantity, optional=True, width=12)
+
+
+def _figure(name: str, quantity: Quantity) -> Column:
+    def text(index: int, figures: Figures, sight: Sight) -> str:
+        value = figures.value(getattr(figures, name), index)
+        return "" if value is None else format_value(value, quantity, sight.system)
+
+    titles = {"displacement": "Moves by", "reaction": "Reaction"}
+    return Column(name, titles[name], quantity=quantity, figure=text, width=10)
+
+
+COLUMNS = (
+    Column(
+        "mark",
+        "Mark",
+        lambda row, _sight: row.joint.mark,
+        lambda row, _sight: row.joint.mark,
+        lambda project, index, text, _sight: Change(
+            edits.set_value(project, ("joints", index, "mark"), text.strip())
+        ),
+        width=6,
+    ),
+    Column(
+        "position",
+        "Position",
+        lambda row, sight: format_value(row.position, "length", sight.system, 6, strip=True),
+        quantity="length",
+    ),
+    Column(
+        "support",
+        "Held by",
+        lambda row, sight: support_text(row.joint.support, sight.system),
+        lambda row, sight: support_entry(row.joint.support, sight.system),
+        _put_support,
+        optional=True,
+        width=20,
+    ),
+    _load("force", "Force along +x", "force"),
+    _load("movement", "Support moves by", "displacement"),
+    _figure("displacement", "displacement"),
+    _figure("reaction", "force"),
+)
+
+JOINTS = Table(
+    key="joints",
+    title="Joints",
+    rows=rows,
+    columns=lambda _project, _sight: COLUMNS,
+    row_name=lambda project, index, _sight: project.joints[index].mark,
+    records=lambda _sight: ("joints",),
+)

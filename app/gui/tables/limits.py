@@ -1,0 +1,99 @@
+"""The Limits tab: how far joints may move, how far from each other, and what supports may take."""
+
+from __future__ import annotations
+
+from app import edits
+from app.entry import parse_entry
+from app.gui.tables.column import Adding, Change, Column, Sight, Table
+from app.gui.tables.reasons import NotTaken
+from app.units import Quantity, entry_text, format_value
+from app.words import tr
+from solver.model import DisplacementLimit, Project, ReactionLimit, RelativeLimit
+
+FIRST_MOVEMENT = 0.001  # m, what a new limit starts from, to be typed over
+FIRST_REACTION = 1000.0  # N
+
+
+def _mark(kind: str, key: str, file_key: str, title: str) -> Column:
+    def put(project: Project, index: int, text: str, _sight: Sight) -> Change:
+        return Change(edits.set_value(project, ("limits", kind, index, file_key), text.strip()))
+
+    return Column(
+        key, title, lambda row, _s: getattr(row, key), lambda row, _s: getattr(row, key), put, width=8
+    )
+
+
+def _limit(kind: str, quantity: Quantity) -> Column:
+    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        value = parse_entry(text, quantity, sight.system)
+        return Change(edits.set_value(project, ("limits", kind, index, "limit"), value))
+
+    return Column(
+        "limit",
+        "At most",
+        lambda row, sight: format_value(row.limit, quantity, sight.system, strip=True),
+        lambda row, sight: entry_text(row.limit, quantity, sight.system),
+        put,
+        quantity=quantity,
+    )
+
+
+def _table(kind: str, title: str, columns: tuple[Column, ...], adding: Adding) -> Table:
+    def row_name(project: Project, index: int, sight: Sight) -> str:
+        return columns[0].show(getattr(project.limits, kind)[index], sight)
+
+    return Table(
+        key=f"limits {kind}",
+        title=title,
+        rows=lambda project, _sight: tuple(getattr(project.limits, kind)),
+        columns=lambda _project, _sight: columns,
+        row_name=row_name,
+        records=lambda _sight: ("limits", kind),
+        adding=adding,
+        delete=lambda project, indexes, _sight: edits.remove_records(project, ("limits", kind), indexes),
+        delete_name="Delete limits",
+    )
+
+
+def _add_displacement(project: Project, text: str, _sight: Sight) -> Change:
+    return Change(
+        edits.add_record(project, ("limits", "displacement"), DisplacementLimit(text.strip(), FIRST_MOVEMENT))
+    )
+
+
+def _add_reaction(project: Project, text: str, _sight: Sight) -> Change:
+    return Change(
+        edits.add_record(project, ("limits", "reaction"), ReactionLimit(text.strip(), FIRST_REACTION))
+    )
+
+
+def _add_relative(project: Project, text: str, _sight: Sight) -> Change:
+    """Two marks, such as "0 -> 2"."""
+    marks = [part.strip() for part in text.replace("→", "->").split("->")]
+    if len(marks) != 2:
+        raise NotTaken(tr("type two joints' marks, such as 0 -> 2"))
+    return Change(edits.add_record(project, ("limits", "relative"), RelativeLimit(*marks, FIRST_MOVEMENT)))
+
+
+DISPLACEMENT = _table(
+    "displacement",
+    "Movement of a joint",
+    (_mark("displacement", "joint", "joint", "Movement of joint"), _limit("displacement", "displacement")),
+    Adding("type a joint's mark to limit it", _add_displacement, "Add displacement limit", "joint"),
+)
+RELATIVE = _table(
+    "relative",
+    "Movement between joints",
+    (
+        _mark("relative", "start", "from", "Movement from joint"),
+        _mark("relative", "end", "to", "to joint"),
+        _limit("relative", "displacement"),
+    ),
+    Adding("type two marks: 0 -> 2", _add_relative, "Add relative limit", "start"),
+)
+REACTION = _table(
+    "reaction",
+    "Reaction of a support",
+    (_mark("reaction", "joint", "joint", "Reaction at joint"), _limit("reaction", "force")),
+    Adding("type a joint's mark to limit it", _add_reaction, "Add reaction limit", "joint"),
+)

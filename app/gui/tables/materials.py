@@ -1,0 +1,106 @@
+"""The materials table, and the modulus typed into a segment's row."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+from msgspec import UNSET, UnsetType
+from msgspec.structs import replace
+
+from app import edits
+from app.entry import parse_entry
+from app.gui.tables.column import Adding, Change, Column, Sight, Table
+from app.gui.tables.reasons import NotTaken
+from app.units import Quantity, entry_text, format_value
+from app.words import tr
+from solver.model import Material, Project
+
+
+def with_modulus(project: Project, index: int, modulus: float) -> Change:
+    """The segment's modulus. A material that other segments share is left alone: the segment gets its own copy."""
+    segment = project.segments[index]
+    place = next((i for i, m in enumerate(project.materials) if m.name == segment.material), None)
+    if place is None:
+        raise NotTaken(tr("name a material from the Materials table first"))
+    if sum(other.material == segment.material for other in project.segments) == 1:
+        note = tr("Modulus of material {name} changed").format(name=segment.material)
+        return Change(edits.set_value(project, ("materials", place, "modulus"), modulus), note)
+    name = free_name(f"{segment.material} {segment.mark}", {m.name for m in project.materials})
+    own = replace(project.materials[place], name=name, modulus=modulus)
+    with_own = edits.add_record(project, ("materials",), own)
+    note = tr("{mark} now has a material of its own, {name}").format(mark=segment.mark, name=name)
+    return Change(edits.set_value(with_own, ("segments", index, "material"), name), note)
+
+
+def free_name(wished: str, taken: set[str]) -> str:
+    """The wished name, with a number behind it where it is taken."""
+    name, count = wished, 2
+    while name in taken:
+        name, count = f"{wished} {count}", count + 1
+    return name
+
+
+def _number(key: str, title: str, quantity: Quantity, *, optional: bool = True, width: int = 10) -> Column:
+    """A column for one number of a material."""
+
+    def value(row: Material) -> float | UnsetType:
+        return getattr(row, key)  # type: ignore[no-any-return]
+
+    def show(row: Material, sight: Sight) -> str:
+        number = value(row)
+        return (
+            "" if isinstance(number, UnsetType) else format_value(number, quantity, sight.system, strip=True)
+        )
+
+    def entry(row: Material, sight: Sight) -> str:
+        number = value(row)
+        return "" if isinstance(number, UnsetType) else entry_text(number, quantity, sight.system)
+
+    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        empty = optional and not text.strip()
+        number = UNSET if empty else parse_entry(text, quantity, sight.system)
+        return Change(edits.set_value(project, ("materials", index, key), number))
+
+    return Column(key, title, show, entry, put, quantity=quantity, optional=optional, width=width)
+
+
+def put_name(records: str) -> Callable[[Project, int, str, Sight], Change]:
+    """Renames a record of that list and every reference to it."""
+    return lambda project, index, text, _sight: Change(
+        edits.set_value(project, (records, index, "name"), text.strip())
+    )
+
+
+def name_of(row: Any, _sight: Sight) -> str:
+    """A record's name."""
+    name: str = row.name
+    return name
+
+
+def _add(project: Project, text: str, _sight: Sight) -> Change:
+    """A material as of structural steel by name only: its modulus is the last one's, to be typed over."""
+    modulus = project.materials[-1].modulus if project.materials else 210e9
+    return Change(edits.add_record(project, ("materials",), Material(text.strip(), modulus)))
+
+
+COLUMNS = (
+    Column("name", "Name", name_of, name_of, put_name("materials"), width=16),
+    _number("modulus", "Modulus", "modulus", optional=False),
+    _number("expansion", "Thermal expansion", "expansion"),
+    _number("density", "Density", "density"),
+    _number("allowable_tension", "Allowable in tension", "stress", width=14),
+    _number("allowable_compression", "Allowable in compression", "stress", width=14),
+)
+
+MATERIALS = Table(
+    key="materials",
+    title="Materials",
+    rows=lambda project, _sight: tuple(project.materials),
+    columns=lambda _project, _sight: COLUMNS,
+    row_name=lambda project, index, _sight: project.materials[index].name,
+    records=lambda _sight: ("materials",),
+    adding=Adding("type a name to add a material", _add, "Add material", "name"),
+    delete=lambda project, indexes, _sight: edits.remove_records(project, ("materials",), indexes),
+    delete_name="Delete materials",
+)

@@ -1,0 +1,169 @@
+"""The tables below the sheet, behind tabs, with the picker of the load case whose loads they edit."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QSignalBlocker, Signal
+from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxLayout, QWidget
+
+from app.gui.document import Document, Snapshot
+from app.gui.tables.column import Figures, Sight, Table
+from app.gui.tables.combinations import COMBINATIONS
+from app.gui.tables.joints import JOINTS
+from app.gui.tables.limits import DISPLACEMENT, REACTION, RELATIVE
+from app.gui.tables.loads import CASES, JOINT_LOADS, SEGMENT_LOADS
+from app.gui.tables.materials import MATERIALS
+from app.gui.tables.model import TableModel
+from app.gui.tables.segments import SEGMENTS
+from app.gui.tables.view import TableView
+from app.gui.theme import Theme
+from app.gui.view import Selection, View
+from app.words import later, tr
+
+# Each tab with the tables that stand in it side by side, and their shares of its width
+TABS: tuple[tuple[str, tuple[tuple[Table, int], ...]], ...] = (
+    (later("Segments"), ((SEGMENTS, 1),)),
+    (later("Joints"), ((JOINTS, 1),)),
+    (later("Loads"), ((CASES, 30), (SEGMENT_LOADS, 66), (JOINT_LOADS, 34))),
+    (later("Combinations"), ((COMBINATIONS, 1),)),
+    (later("Materials"), ((MATERIALS, 1),)),
+    (later("Limits"), ((DISPLACEMENT, 30), (RELATIVE, 40), (REACTION, 30))),
+)
+
+
+class TablesPane(QWidget):
+    """All tables of one document; their selection is the view's."""
+
+    noted = Signal(str)
+    current_table_changed = Signal()
+
+    def __init__(self, document: Document, view: View, theme: Theme, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self._view = view
+        self.views: dict[str, TableView] = {}
+        self._sight = Sight(document.project.display.unit_system, 0 if document.project.load_cases else None)
+        self.case_picker = QComboBox()
+        self.tabs = self._make_tabs(theme)
+        self._lay_out()
+        self.on_document_changed(document.snapshot)
+        document.changed.connect(self.on_document_changed)
+        self.case_picker.activated.connect(self.on_case_picked)
+        view.selection_changed.connect(self.on_selection_changed)
+        for key in ("segments", "joints"):
+            self.views[key].record_chosen.connect(self.on_record_chosen)
+        self.tabs.currentChanged.connect(lambda _index: self.current_table_changed.emit())
+
+    def _make_tabs(self, theme: Theme) -> QTabWidget:
+        tabs = QTabWidget()
+        tabs.setDocumentMode(True)
+        tabs.setAccessibleName(tr("Tables"))
+        for title, tables in TABS:
+            shown = [self._make_view(table, theme) for table, _share in tables]
+            tabs.addTab(self._side_by_side(shown, [share for _table, share in tables]), tr(title))
+        return tabs
+
+    def _make_view(self, table: Table, theme: Theme) -> TableView:
+        model = TableModel(table, self._document, self._sight, self)
+        model.noted.connect(self.noted)
+        view = TableView(model, theme)
+        self.views[table.key] = view
+        return view
+
+    @staticmethod
+    def _side_by_side(shown: list[TableView], shares: list[int]) -> QWidget:
+        if len(shown) == 1:
+            return shown[0]
+        splitter = QSplitter()
+        splitter.setChildrenCollapsible(False)
+        for place, (view, share) in enumerate(zip(shown, shares, strict=True)):
+            splitter.addWidget(view)
+            splitter.setStretchFactor(place, share)
+        splitter.setSizes([share * 12 for share in shares])
+        return splitter
+
+    def _lay_out(self) -> None:
+        label = QLabel(tr("Edit loads of"))
+        label.setBuddy(self.case_picker)
+        self.case_picker.setAccessibleName(tr("Edit loads of"))
+        self.case_picker.setMinimumContentsLength(14)
+        corner = QWidget()
+        row = QHBoxLayout(corner)
+        row.setContentsMargins(0, 2, 12, 2)
+        row.addWidget(label)
+        row.addWidget(self.case_picker)
+        self.tabs.setCornerWidget(corner)
+        whole = QVBoxLayout(self)
+        whole.setContentsMargins(0, 0, 0, 0)
+        whole.addWidget(self.tabs)
+
+    # What is shown
+
+    @property
+    def sight(self) -> Sight:
+        """Units and edited case."""
+        return self._sight
+
+    def current_view(self) -> TableView:
+        """The table with the keyboard, else the first of the tab in front."""
+        page = self.tabs.currentWidget()
+        shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
+        return next(
+            (view for view in shown if view.hasFocus() or view.isAncestorOf(self.focusWidget())), shown[0]
+        )
+
+    def on_document_changed(self, snapshot: Snapshot) -> None:
+        """The picker lists the cases of now; the edited case is kept by its name."""
+        names = [case.name for case in snapshot.project.load_cases]
+        kept = self.case_picker.currentText()
+        place = (
+            names.index(kept)
+            if kept in names
+            else min(max(self.case_picker.currentIndex(), 0), len(names) - 1)
+        )
+        with QSignalBlocker(self.case_picker):
+            self.case_picker.clear()
+            self.case_picker.addItems(names or [tr("no load case yet")])
+            self.case_picker.setCurrentIndex(max(place, 0))
+        self.case_picker.setEnabled(bool(names))
+        self._set_sight(Sight(snapshot.project.display.unit_system, place if names else None))
+
+    def on_case_picked(self, index: int) -> None:
+        """Edit the loads of another case."""
+        self._set_sight(Sight(self._sight.system, index))
+
+    def _set_sight(self, sight: Sight) -> None:
+        self._sight = sight
+        for view in self.views.values():
+            view.table_model.set_sight(sight)
+
+    def set_figures(self, figures: Figures) -> None:
+        """Show results in the columns that have them."""
+        for view in self.views.values():
+            view.table_model.set_figures(figures)
+
+    def set_theme(self, theme: Theme) -> None:
+        """Take over the colours."""
+        for view in self.views.values():
+            view.set_theme(theme)
+
+    def commit_open_editor(self) -> None:
+        """Take in what an open editor holds."""
+        for view in self.views.values():
+            view.commit_open_editor()
+
+    # Selection
+
+    def on_record_chosen(self, records: frozenset[int]) -> None:
+        """The rows chosen in the tables are what the view has selected."""
+        if self.sender() is self.views["segments"]:
+            self._view.set_selection(Selection(segments=records))
+        else:
+            self._view.set_selection(Selection(joints=records))
+
+    def on_selection_changed(self, selection: Selection) -> None:
+        """Light what is selected elsewhere, and bring its row into sight."""
+        for key, records in (("segments", selection.segments), ("joints", selection.joints)):
+            view = self.views[key]
+            view.table_model.set_lit(records)
+            if records and not records <= set(view.chosen_records()):
+                view.scrollTo(view.table_model.index(view.table_model.row_of(min(records)), 0))

@@ -1,0 +1,240 @@
+"""The table on the screen: keys of the hand, no trap for them, and rows that add a record.
+
+Enter moves down, Tab to the next cell and out of the table after the last one, F2 edits, Delete clears what can
+be empty, Escape restores.
+"""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QItemSelection, Qt, Signal
+from PySide6.QtGui import QFontMetrics, QGuiApplication, QKeyEvent, QPalette, QResizeEvent
+from PySide6.QtWidgets import (
+    QAbstractItemDelegate,
+    QAbstractItemView,
+    QHeaderView,
+    QLineEdit,
+    QTableView,
+    QWidget,
+)
+
+from app.gui.tables.clipboard import block_of, block_text, tiled
+from app.gui.tables.delegate import BAR_WIDTH, MARGIN, CellDelegate
+from app.gui.tables.model import TableModel
+from app.gui.theme import Theme, colour
+from app.words import tr
+
+ROW_HEIGHT = 26
+ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
+TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
+
+
+class TableView(QTableView):
+    """One table of the document."""
+
+    record_chosen = Signal(object)  # frozenset of the records that hold a selected cell
+
+    def __init__(self, model: TableModel, theme: Theme, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.table_model = model
+        self._cells = CellDelegate(theme, self)
+        self._cells.stepped.connect(self.step)
+        self._cells.closeEditor.connect(self.on_editor_closed)
+        self.setItemDelegate(self._cells)
+        self.setModel(model)
+        self.setAccessibleName(tr(model.table.title))
+        self._dress()
+        self.set_theme(theme)
+        for came in (model.rowsInserted, model.rowsRemoved, model.columnsInserted, model.columnsRemoved):
+            came.connect(self.on_shape_changed)
+        model.modelReset.connect(self.on_shape_changed)
+        self.on_shape_changed()
+
+    def _dress(self) -> None:
+        self.setShowGrid(False)
+        self.setFrameShape(QTableView.Shape.NoFrame)
+        self.setCornerButtonEnabled(False)
+        self.setTabKeyNavigation(True)
+        self.setSelectionMode(QAbstractItemView.SelectionMode.ExtendedSelection)
+        triggers = QAbstractItemView.EditTrigger
+        self.setEditTriggers(triggers.DoubleClicked | triggers.EditKeyPressed | triggers.AnyKeyPressed)
+        self.setHorizontalScrollMode(QAbstractItemView.ScrollMode.ScrollPerPixel)
+        self.verticalHeader().hide()
+        rows = self.verticalHeader()
+        rows.setMinimumSectionSize(24)
+        rows.setDefaultSectionSize(max(ROW_HEIGHT, self.fontMetrics().height() + 10))
+        head = self.horizontalHeader()
+        head.setHighlightSections(False)
+        head.setSectionsClickable(False)
+        head.setSectionResizeMode(QHeaderView.ResizeMode.Fixed)
+        head.setMinimumSectionSize(40)
+        head.setDefaultAlignment(Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)
+
+    def set_theme(self, theme: Theme) -> None:
+        """Take over the colours."""
+        self._cells.theme = theme
+        palette = self.palette()
+        roles = QPalette.ColorRole
+        for role, name in (
+            (roles.Base, "card"),
+            (roles.Window, "card"),
+            (roles.Button, "card"),
+            (roles.Text, "ink"),
+            (roles.WindowText, "ink"),
+            (roles.ButtonText, "quiet"),
+            (roles.Highlight, "select_fill"),
+            (roles.HighlightedText, "ink"),
+        ):
+            palette.setColor(role, colour(getattr(theme, name)))
+        self.setPalette(palette)
+        self.horizontalHeader().setStyleSheet(
+            f"QHeaderView::section {{ background: {theme.card}; color: {theme.quiet}; border: none;"
+            f" border-bottom: 1px solid {theme.edge}; padding: 2px {MARGIN}px; }}"
+        )
+        self.viewport().update()
+
+    # The shape of the table
+
+    def on_shape_changed(self) -> None:
+        """Span the adding row's hint, and share the width out."""
+        model = self.table_model
+        self.clearSpans()
+        last, columns = model.rowCount() - 1, model.columnCount()
+        if model.table.adding is not None and columns > 2:
+            self.setSpan(last, 0, 1, columns // 2)
+            if model.table.total is not None:
+                self.setSpan(last, columns // 2, 1, 1)
+        self.share_width()
+
+    def share_width(self) -> None:
+        """Give each column its width in digits, and what is left over in the same proportion."""
+        columns = self.table_model.columns
+        digit = QFontMetrics(self.font()).horizontalAdvance("0")
+        wished = [self._least_width(place, column.width * digit) for place, column in enumerate(columns)]
+        spare = self.viewport().width() - sum(wished)
+        share = 1 + max(0.0, min(spare / max(1, sum(wished)), 0.8))
+        for place, width in enumerate(wished):
+            self.setColumnWidth(place, int(width * share))
+
+    def _least_width(self, place: int, wished: int) -> int:
+        """Wide enough for the heading too."""
+        metrics = QFontMetrics(self.horizontalHeader().font())
+        heading = max(metrics.horizontalAdvance(text) for text in self.table_model.heading(place))
+        bar = BAR_WIDTH + 10 if self.table_model.columns[place].bar is not None else 0
+        return max(wished + bar, heading) + 2 * MARGIN + 4
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """The width is shared out anew."""
+        super().resizeEvent(event)
+        self.share_width()
+
+    # Keys
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        """The keys that Qt's table lacks or traps."""
+        if event.key() in ENTER and not self._is_editing():
+            self.step(-1 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1)
+        elif event.key() == Qt.Key.Key_Delete or event.key() == Qt.Key.Key_Backspace:
+            self.clear_selected()
+        elif event.key() in TAB and self._leaves(forward=event.key() == Qt.Key.Key_Tab):
+            self._leave(forward=event.key() == Qt.Key.Key_Tab)
+        else:
+            super().keyPressEvent(event)
+
+    def _is_editing(self) -> bool:
+        return self.state() == QAbstractItemView.State.EditingState
+
+    def _leaves(self, *, forward: bool) -> bool:
+        current, model = self.currentIndex(), self.table_model
+        if not current.isValid():
+            return True
+        if not forward:
+            return current.row() == 0 and current.column() == 0
+        reach = current.column() + self.columnSpan(current.row(), current.column())
+        return current.row() == model.rowCount() - 1 and reach >= model.columnCount() - 1
+
+    def _leave(self, *, forward: bool) -> None:
+        self.setTabKeyNavigation(False)  # with navigation on, focusNextPrevChild comes back here
+        self.focusNextPrevChild(forward)
+        self.setTabKeyNavigation(True)
+
+    def step(self, rows: int) -> None:
+        """Move the current cell down (or up)."""
+        current = self.currentIndex()
+        row = min(max(current.row() + rows, 0), self.table_model.rowCount() - 1)
+        column = 0 if self.table_model.is_adding(row) else current.column()
+        self.setCurrentIndex(self.table_model.index(row, column))
+
+    def on_editor_closed(self, _editor: QWidget, hint: QAbstractItemDelegate.EndEditHint) -> None:
+        """Escape takes the preview back."""
+        if hint == QAbstractItemDelegate.EndEditHint.RevertModelCache:
+            self.table_model.drop_preview()
+
+    def commit_open_editor(self) -> None:
+        """Take in what an open editor holds, before saving or closing."""
+        editor = self.findChild(QLineEdit)
+        if editor is not None and self._is_editing():
+            self.commitData(editor)
+            self.closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+
+    def clear_selected(self) -> None:
+        """Empty the selected cells that may be empty, as one undo step."""
+        self.table_model.clear(self.selectedIndexes())
+
+    # Blocks
+
+    def _selected_block(self) -> tuple[int, int, int, int] | None:
+        """Top, left, rows and columns of the selection's bounding block."""
+        chosen = self.selectedIndexes()
+        if not chosen:
+            return None
+        rows, columns = [i.row() for i in chosen], [i.column() for i in chosen]
+        return min(rows), min(columns), max(rows) - min(rows) + 1, max(columns) - min(columns) + 1
+
+    def copy(self) -> None:
+        """The selected block to the clipboard, with all digits."""
+        block = self._selected_block()
+        if block is None:
+            return
+        top, left, rows, columns = block
+        texts = [
+            [self.table_model.text_to_copy(row, column) for column in range(left, left + columns)]
+            for row in range(top, top + rows)
+        ]
+        QGuiApplication.clipboard().setText(block_text(texts))
+
+    def paste(self) -> None:
+        """The clipboard's block from the selection's corner on, one undo step."""
+        block, selected = block_of(QGuiApplication.clipboard().text()), self._selected_block()
+        if block and selected is not None:
+            top, left, rows, columns = selected
+            self.table_model.put_block(top, left, tiled(block, rows, columns), tr("Paste"))
+
+    def fill_down(self) -> None:
+        """The selection's first row into the rows below it, one undo step."""
+        selected = self._selected_block()
+        if selected is None or selected[2] < 2:
+            return
+        top, left, rows, columns = selected
+        first = [self.table_model.text_to_copy(top, column) for column in range(left, left + columns)]
+        self.table_model.put_block(top + 1, left, [first] * (rows - 1), tr("Fill down"))
+
+    # Selection
+
+    def chosen_records(self) -> tuple[int, ...]:
+        """The records that hold a selected cell, in order."""
+        rows = {index.row() for index in self.selectedIndexes()}
+        return tuple(
+            self.table_model.record_of(row) for row in sorted(rows) if self.table_model.is_record(row)
+        )
+
+    def choose_record(self, record: int) -> None:
+        """Make a record's row the current one, in the column that is current."""
+        column = max(self.currentIndex().column(), 0)
+        row = self.table_model.row_of(record)
+        if row != self.currentIndex().row():
+            self.setCurrentIndex(self.table_model.index(row, column))
+
+    def selectionChanged(self, selected: QItemSelection, deselected: QItemSelection) -> None:
+        """Say which records are chosen."""
+        super().selectionChanged(selected, deselected)
+        self.record_chosen.emit(frozenset(self.chosen_records()))

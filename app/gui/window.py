@@ -1,0 +1,322 @@
+"""The window: makes the rooms, puts them in their places and wires them; they do not know each other."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from pathlib import Path
+
+from msgspec.structs import replace
+from PySide6.QtCore import QEvent, Qt
+from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
+from PySide6.QtWidgets import QMainWindow, QMenu, QSplitter, QVBoxLayout, QWidget
+
+from app import samples
+from app.gui import dialogs, settings
+from app.gui.actions import RECENT, SAMPLES, fill_menus, keys_text, make_actions
+from app.gui.document import Document
+from app.gui.files import Files
+from app.gui.findings.panel import FindingsPanel
+from app.gui.member_edits import MemberEdits
+from app.gui.outcome import shown_states
+from app.gui.printing import Printing
+from app.gui.recovery import Recovery
+from app.gui.settings import Settings
+from app.gui.sheet_view import SheetView
+from app.gui.show import Showing
+from app.gui.status_line import StatusLine
+from app.gui.style import style_sheet
+from app.gui.tables.pane import TablesPane
+from app.gui.theme import theme_for
+from app.gui.title_block import TitleBlockDialog
+from app.gui.top_bar import TopBar
+from app.gui.view import View
+from app.version import VERSION
+from app.words import tr
+from solver.model import Orientation, Project, UnitSystemName
+
+
+class Window(QMainWindow):
+    """One project in one window."""
+
+    def __init__(self, project: Project, store: Settings, recovery_folder: Path) -> None:
+        super().__init__()
+        self.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
+        self.setAcceptDrops(True)
+        self.store = store
+        self.document = Document(project, parent=self)
+        self.view = View(self)
+        self._theme = theme_for(self.palette())
+        self._make_rooms(recovery_folder)
+        self._make_commands()
+        self._lay_out()
+        self._wire()
+        self._restore()
+        self.setStyleSheet(style_sheet(self._theme))
+        self.on_document_changed()
+        self.showing.follow()
+
+    def _make_rooms(self, recovery_folder: Path) -> None:
+        self.sheet = SheetView(self.view)
+        self.findings = FindingsPanel(self.view)
+        self.tables = TablesPane(self.document, self.view, self._theme)
+        self.status = StatusLine()
+        self.showing = Showing(self.document, self.view, self.sheet, self.findings, self.tables, self.status)
+        commit = self.tables.commit_open_editor
+        self.files = Files(self, self.document, self.store, commit)
+        self.printing = Printing(self, self.document, self.store, commit)
+        self.edits = MemberEdits(self.document, self.tables, self)
+        self.recovery = Recovery(self.document, recovery_folder, self)
+
+    def _make_commands(self) -> None:
+        self.actions_by_key = make_actions(self, self._handlers())
+        self._recent_menu, self._samples_menu = QMenu(self), QMenu(self)
+        fill_menus(
+            self.menuBar(), self.actions_by_key, {RECENT: self._recent_menu, SAMPLES: self._samples_menu}
+        )
+        self._recent_menu.aboutToShow.connect(self._fill_recent)
+        self._samples_menu.aboutToShow.connect(self._fill_samples)
+        self.top_bar = TopBar(self.actions_by_key)
+
+    def _handlers(self) -> dict[str, Callable[[], None]]:
+        return {
+            "new": self.files.new,
+            "open": self.files.open,
+            "save": self.files.save,
+            "save_as": self.files.save_as,
+            "title_block": lambda: TitleBlockDialog(self, self.document).open(),
+            "sheet": self.printing.ask,
+            "quit": lambda: self.close() and None,
+            "undo": self.on_undo,
+            "redo": self.on_redo,
+            "copy": lambda: self.tables.current_view().copy(),
+            "paste": lambda: self.tables.current_view().paste(),
+            "fill_down": lambda: self.tables.current_view().fill_down(),
+            "clear": lambda: self.tables.current_view().clear_selected(),
+            "delete_rows": self.edits.delete_rows,
+            "insert_before": self.edits.insert_before,
+            "insert_after": self.edits.insert_after,
+            "delete_segments": self.edits.delete_segments,
+            "split": self.edits.split,
+            "join": self.edits.join,
+            "reverse": self.edits.reverse,
+            "next_pane": lambda: self.go_to_pane(1),
+            "previous_pane": lambda: self.go_to_pane(-1),
+            "keys": lambda: self._show_text(tr("Keys"), tr("Keys of the commands"), keys_text()),
+            "log": self._show_log,
+            "about": self._show_about,
+        }
+
+    def _lay_out(self) -> None:
+        self.across = QSplitter(Qt.Orientation.Horizontal)
+        self.across.addWidget(self.sheet)
+        self.across.addWidget(self.findings)
+        self.across.setStretchFactor(0, 1)
+        self.down = QSplitter(Qt.Orientation.Vertical)
+        self.down.addWidget(self.across)
+        self.down.addWidget(self.tables)
+        self.down.setStretchFactor(0, 1)
+        for splitter in (self.across, self.down):
+            splitter.setChildrenCollapsible(False)
+        middle = QWidget()
+        rows = QVBoxLayout(middle)
+        rows.setContentsMargins(0, 0, 0, 0)
+        rows.setSpacing(0)
+        for widget in (self.top_bar, self.down, self.status):
+            rows.addWidget(widget)
+        rows.setStretch(1, 1)
+        self.setCentralWidget(middle)
+
+    def _wire(self) -> None:
+        self.document.changed.connect(lambda _snapshot: self.on_document_changed())
+        self.document.history_changed.connect(self.on_history_changed)
+        self.document.modified_changed.connect(lambda _modified: self.on_file_changed())
+        self.document.path_changed.connect(lambda _path: self.on_file_changed())
+        self.view.shown_changed.connect(lambda _shown: self._show_pickers())
+        self.top_bar.show_picked.connect(self.view.set_shown)
+        self.top_bar.units_picked.connect(self.on_units_picked)
+        self.top_bar.layout_picked.connect(self.on_layout_picked)
+        for room in (self.files, self.printing, self.edits):
+            room.told.connect(self.status.tell)
+        self.tables.noted.connect(self.status.tell)
+
+    # The document
+
+    def on_document_changed(self) -> None:
+        """Pickers, sheet and title follow."""
+        self._show_pickers()
+        self.sheet.set_orientation(self.document.project.display.layout)
+        self.status.tell("")
+        self.on_history_changed()
+        self.on_file_changed()
+
+    def _show_pickers(self) -> None:
+        project = self.document.project
+        states = shown_states(project)
+        shown = self.view.shown if self.view.shown in states else states[0]
+        self.top_bar.show_project(project, states, shown)
+
+    def on_history_changed(self) -> None:
+        """Undo and redo say what they would do."""
+        for key, plain, named, name in (
+            ("undo", tr("&Undo"), tr("&Undo {name}"), self.document.undo_name),
+            ("redo", tr("&Redo"), tr("&Redo {name}"), self.document.redo_name),
+        ):
+            action = self.actions_by_key[key]
+            action.setEnabled(name is not None)
+            action.setText(plain if name is None else named.format(name=name.replace("&", "&&")))
+
+    def on_file_changed(self) -> None:
+        """Title and status say which file, and whether it has changed."""
+        path, modified = self.document.path, self.document.modified
+        name = self.files.name
+        self.setWindowTitle(f"{name}[*] – Barwright")
+        self.setWindowModified(modified)
+        self.setWindowFilePath(str(path) if path else "")
+        self.status.file.setText(tr("{name}, changed").format(name=name) if modified else name)
+
+    def on_undo(self) -> None:
+        """Back one step; an open editor's text is the step taken back first."""
+        self.tables.commit_open_editor()
+        self.document.undo()
+
+    def on_redo(self) -> None:
+        """Forward one step."""
+        self.tables.commit_open_editor()
+        self.document.redo()
+
+    def on_units_picked(self, system: UnitSystemName) -> None:
+        """Another unit system, as an undo step of the project."""
+        self.tables.commit_open_editor()
+        project = self.document.project
+        self.store.set_units(system)
+        self.document.commit(replace(project, display=replace(project.display, units=system)), tr("Units"))
+
+    def on_layout_picked(self, layout: Orientation) -> None:
+        """Across or upright, as an undo step of the project."""
+        self.tables.commit_open_editor()
+        project = self.document.project
+        display = replace(project.display, orientation=layout)
+        self.document.commit(replace(project, display=display), tr("Lay"))
+
+    # Moving about
+
+    def go_to_pane(self, by: int) -> None:
+        """Give the keyboard to the next pane (F6)."""
+        panes: tuple[QWidget, ...] = (self.sheet, self.findings, self.tables.current_view(), self.top_bar)
+        focus = self.focusWidget()
+        here = next(
+            (i for i, pane in enumerate(panes) if focus and (pane is focus or pane.isAncestorOf(focus))), -1
+        )
+        target = panes[(here + by) % len(panes)]
+        if target is self.top_bar:
+            self.top_bar.show_picker.setFocus(Qt.FocusReason.ShortcutFocusReason)
+        else:
+            target.setFocus(Qt.FocusReason.ShortcutFocusReason)
+
+    # Menus and dialogs
+
+    def _fill_recent(self) -> None:
+        self._recent_menu.clear()
+        for path in self.store.recent:
+            self._recent_menu.addAction(
+                str(path).replace("&", "&&"), lambda path=path: self.files.open_path(path)
+            )
+        if self._recent_menu.isEmpty():
+            self._recent_menu.addAction(tr("none yet")).setEnabled(False)
+            return
+        self._recent_menu.addSeparator()
+        self._recent_menu.addAction(tr("Forget these"), self.store.clear_recent)
+
+    def _fill_samples(self) -> None:
+        self._samples_menu.clear()
+        for name in samples.names():
+            words = name.replace("_", " ").capitalize()
+            self._samples_menu.addAction(words, lambda name=name: self._open_sample(name))
+
+    def _open_sample(self, name: str) -> None:
+        self.files.open_sample(samples.read_sample(name))
+
+    def _show_text(self, title: str, headline: str, text: str) -> None:
+        dialogs.show_text(self, title, headline, text)
+
+    def _show_log(self) -> None:
+        self._show_text(
+            tr("Log"), tr("What goes wrong inside the program is written to:"), str(settings.folder())
+        )
+
+    def _show_about(self) -> None:
+        from app.gui.about import about_text
+
+        self._show_text(tr("About Barwright"), f"Barwright {VERSION}", about_text())
+
+    def show_fault(self, report: str) -> None:
+        """An exception that nobody caught: told once, with its report to copy."""
+        if not self.findChildren(dialogs.TextDialog):
+            self._show_text(
+                tr("A fault of the program"),
+                tr(
+                    "Something went wrong inside Barwright. Your project is kept; save it under another name."
+                ),
+                report,
+            )
+
+    # Window
+
+    def _restore(self) -> None:
+        self.resize(1280, 800)
+        if not self.restoreGeometry(self.store.bytes_of("geometry")):
+            self.resize(1280, 800)
+        self.across.setSizes([930, 350])
+        self.down.setSizes([480, 230])
+        for key, splitter in (("across", self.across), ("down", self.down)):
+            splitter.restoreState(self.store.bytes_of(key))
+
+    def _remember(self) -> None:
+        self.store.set_bytes("geometry", self.saveGeometry())
+        for key, splitter in (("across", self.across), ("down", self.down)):
+            self.store.set_bytes(key, splitter.saveState())
+        self.store.sync()
+
+    def closeEvent(self, event: QCloseEvent) -> None:
+        """Ask about unsaved changes, then end cleanly, also while the solver runs."""
+        if self._may_close():
+            self._remember()
+            self.showing.solver.close()
+            self.printing.close()
+            self.recovery.close()
+            event.accept()
+        else:
+            event.ignore()
+            self.files.when_safe(self._close_now)
+
+    _closing = False
+
+    def _may_close(self) -> bool:
+        self.tables.commit_open_editor()
+        return self._closing or not self.document.modified
+
+    def _close_now(self) -> None:
+        self._closing = True
+        self.close()
+
+    def dragEnterEvent(self, event: QDragEnterEvent) -> None:
+        """A file may be dropped."""
+        if any(url.isLocalFile() for url in event.mimeData().urls()):
+            event.acceptProposedAction()
+
+    def dropEvent(self, event: QDropEvent) -> None:
+        """Open the first file dropped."""
+        local = [url.toLocalFile() for url in event.mimeData().urls() if url.isLocalFile()]
+        if local:
+            event.acceptProposedAction()
+            self.files.open_path(Path(local[0]))
+
+    def changeEvent(self, event: QEvent) -> None:
+        """Follow the system between light and dark."""
+        super().changeEvent(event)
+        if event.type() == QEvent.Type.PaletteChange and hasattr(self, "status"):
+            theme = theme_for(self.palette())
+            if theme != self._theme:
+                self._theme = theme
+                self.tables.set_theme(theme)
+                self.setStyleSheet(style_sheet(theme))
