@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Literal, TypeAlias
 
-from PySide6.QtCore import QSizeF
+from PySide6.QtCore import QRectF, QSizeF, Qt
 from PySide6.QtGui import QFont, QFontMetricsF
 
 Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
@@ -28,9 +28,18 @@ class Fonts:
         return self._fonts[face]
 
     def measure(self, text: str, face: Face) -> QSizeF:
-        """Width and height of a text."""
-        metrics = self._metrics[face]
-        return QSizeF(metrics.horizontalAdvance(text), metrics.height())
+        """Width and height of a text; line breaks in it count."""
+        metrics, lines = self._metrics[face], text.split("\n")
+        return QSizeF(max(map(metrics.horizontalAdvance, lines)), len(lines) * metrics.height())
+
+    def wrapped_height(self, text: str, face: Face, width: float) -> float:
+        """The height of a text that wraps at words within a width."""
+        room = QRectF(0.0, 0.0, width, 1e4)
+        return self._metrics[face].boundingRect(room, Qt.TextFlag.TextWordWrap, text).height()
+
+    def elided(self, text: str, face: Face, width: float) -> str:
+        """The text, cut short with an ellipsis where it is wider than `width`."""
+        return self._metrics[face].elidedText(text, Qt.TextElideMode.ElideRight, width)
 
 
 def _sized(base: QFont, face: Face) -> QFont:

@@ -1,0 +1,141 @@
+"""What the panel lists, row by row, from `app.findings`: no window, no words of its own but headings."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal, TypeAlias
+
+from app.findings import Band, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
+from app.gui.view import Shown
+from app.words import tr
+
+Tone: TypeAlias = Literal["pass", "fail", "not_made", "problem", "note"]
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """One finding: what it says, and where choosing it leads (nowhere where there is no index)."""
+
+    tone: Tone
+    mark: str
+    text: str
+    spoken: str  # the whole sentence, for those who hear it
+    value: str = ""
+    remedy: str = ""
+    band: Band | None = None
+    band_named: bool = False  # whether the ends of the scale carry their numbers
+    position: float | None = None
+    segments: frozenset[int] = frozenset()
+    joints: frozenset[int] = frozenset()
+
+    @property
+    def leads_somewhere(self) -> bool:
+        """Whether choosing the row shows something."""
+        return bool(self.segments or self.joints)
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """One line of a block: a name and a value."""
+
+    name: str
+    value: str
+    quiet: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Block:
+    """A heading and its lines."""
+
+    title: str
+    lines: tuple[Line, ...]
+
+
+def rows(findings: Findings) -> tuple[Row, ...]:
+    """Checks, the worst first, then what was not checked, then what the calculation does not say."""
+    checked = sorted(
+        [*_segment_rows(findings), *map(_limit_row, findings.limits)], key=lambda pair: -pair[0]
+    )
+    not_made = [_not_made_row(item) for item in findings.not_made]
+    notes = [Row("note", "!", text, text) for text in findings.notes]
+    return (*(row for _, row in checked), *not_made, *notes)
+
+
+def _segment_rows(findings: Findings) -> list[tuple[float, Row]]:
+    """The scales' numbers stand only where they differ from those of the row above."""
+    found: list[tuple[float, Row]] = []
+    above: tuple[str, str] | None = None
+    for item in findings.segments:
+        ends = item.band.compression_text, item.band.tension_text
+        found.append((item.utilisation, _segment_row(item, named=ends != above)))
+        above = ends
+    return found
+
+
+def _segment_row(item: SegmentFinding, *, named: bool) -> Row:
+    return Row(
+        tone=item.status,
+        mark=item.mark,
+        text=item.short,
+        spoken=item.sentence,
+        value=item.utilisation_text,
+        band=item.band,
+        band_named=named,
+        position=item.position,
+        segments=frozenset((item.segment,)),
+    )
+
+
+def _limit_row(item: LimitFinding) -> tuple[float, Row]:
+    row = Row(
+        tone=item.status,
+        mark="",
+        text=item.sentence,
+        spoken=item.sentence,
+        value=item.utilisation_text,
+        position=item.position,
+        joints=frozenset(item.joints),
+    )
+    return item.utilisation, row
+
+
+def _not_made_row(item: NotMade) -> Row:
+    return Row(
+        tone="not_made",
+        mark="!",
+        text=item.sentence,
+        spoken=f"{item.sentence}. {item.remedy}",
+        remedy=item.remedy,
+        segments=frozenset(item.segments),
+        joints=frozenset(item.joints),
+    )
+
+
+def problem_rows(problems: tuple[str, ...]) -> tuple[Row, ...]:
+    """Why there are no results."""
+    return tuple(Row("problem", "!", text, text) for text in problems)
+
+
+def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:
+    """Reactions of the shown state (of all where the envelope is shown), movements, the rest of the books."""
+    chosen = [b for b in findings.books if (b.kind, b.name) == (shown.kind, shown.name)]
+    reactions = [_reactions(book) for book in chosen or findings.books]
+    moved = tuple(
+        Line(tr("joint {mark}, {state}").format(mark=m.mark, state=m.state), m.text)
+        for m in findings.movements
+    )
+    return (*reactions, Block(tr("Largest movements"), moved), _rest(findings, chosen or findings.books))
+
+
+def _reactions(book: StateBooks) -> Block:
+    lines = [Line(tr("joint {mark}").format(mark=r.mark), r.text) for r in book.reactions]
+    lines.append(Line(tr("loads"), book.loads_text, quiet=True))
+    if book.bedding_text:
+        lines.append(Line(tr("bedding"), book.bedding_text, quiet=True))
+    lines.append(Line(tr("sum of all forces"), book.residual_text, quiet=True))
+    return Block(tr("Reactions, {state}").format(state=book.name), tuple(lines))
+
+
+def _rest(findings: Findings, books: tuple[StateBooks, ...] | list[StateBooks]) -> Block:
+    lines = [Line(tr("strain energy, {state}").format(state=b.name), b.strain_text) for b in books]
+    return Block(tr("Energy and mass"), (*lines, Line(tr("mass"), findings.mass_text)))

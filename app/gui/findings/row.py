@@ -1,0 +1,154 @@
+"""One finding in the panel: mark, sentence, utilisation and the little scale of stress; a button to go there."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QRectF, QSize, Qt
+from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen
+from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
+
+from app.gui.findings.content import Row
+from app.gui.findings.scale import SCALE_HEIGHT, SCALE_NUMBERS, paint_scale
+from app.gui.fonts import Face, Fonts
+from app.gui.theme import Theme, colour
+
+PAD = 7.0
+MARK_WIDTH = 26.0
+WRAP = Qt.TextFlag.TextWordWrap | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop
+
+
+class FindingRow(QAbstractButton):
+    """A row; clicking it, Space or Enter chooses it."""
+
+    def __init__(self, theme: Theme, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self._theme = theme
+        self._row: Row | None = None
+        self._fonts = Fonts(self.font())
+        self._lit = False
+        policy = QSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
+        policy.setHeightForWidth(True)
+        self.setSizePolicy(policy)
+
+    @property
+    def row(self) -> Row | None:
+        """What the row says."""
+        return self._row
+
+    def show_row(self, row: Row) -> None:
+        """Say something else; what leads nowhere cannot be chosen."""
+        self._row = row
+        self.setAccessibleName(row.spoken)
+        leads = row.leads_somewhere
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
+        self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
+        self.updateGeometry()
+        self.update()
+
+    def set_theme(self, theme: Theme) -> None:
+        """Other colours."""
+        self._theme = theme
+        self.update()
+
+    def set_fonts(self, fonts: Fonts) -> None:
+        """Another font."""
+        self._fonts = fonts
+        self.updateGeometry()
+        self.update()
+
+    def set_lit(self, lit: bool) -> None:
+        """Light the row of what is selected."""
+        if lit != self._lit:
+            self._lit = lit
+            self.update()
+
+    # Measures
+
+    def _value_width(self) -> float:
+        text = self._row.value if self._row else ""
+        return self._fonts.measure(text, "strong").width() + 8.0 if text else 0.0
+
+    def _text_rect(self, width: float) -> QRectF:
+        indent = MARK_WIDTH if self._row and self._row.mark else 0.0
+        return QRectF(PAD + indent, PAD, width - 2 * PAD - indent - self._value_width(), 1e4)
+
+    def _height_of(self, text: str, face: Face, width: float) -> float:
+        return self._fonts.wrapped_height(text, face, width) if text else 0.0
+
+    def hasHeightForWidth(self) -> bool:
+        """Sentences wrap."""
+        return True
+
+    def heightForWidth(self, width: int) -> int:
+        """As high as sentence, remedy and scale need."""
+        if self._row is None:
+            return 0
+        room = self._text_rect(width).width()
+        height = 2 * PAD + self._height_of(self._row.text, "plain", room)
+        height += self._height_of(self._row.remedy, "small", room)
+        if self._row.band is not None:
+            height += SCALE_HEIGHT + (SCALE_NUMBERS if self._row.band_named else 0.0)
+        return max(round(height + 0.5), 24)
+
+    def sizeHint(self) -> QSize:
+        """Any width, the height that follows."""
+        return QSize(240, self.heightForWidth(max(self.width(), 240)))
+
+    def minimumSizeHint(self) -> QSize:
+        """Never lower than its content."""
+        return QSize(120, self.heightForWidth(max(self.width(), 120)))
+
+    # Qt's own
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        """Enter chooses, as Space does by itself."""
+        if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
+            self.click()
+        else:
+            super().keyPressEvent(event)
+
+    def paintEvent(self, _event: QPaintEvent) -> None:
+        """Card, mark, sentence, value, remedy, scale, focus."""
+        if self._row is None:
+            return
+        painter = QPainter(self)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        self._paint_card(painter)
+        self._paint_texts(painter, self._row)
+
+    def _paint_card(self, painter: QPainter) -> None:
+        rect = QRectF(self.rect()).adjusted(1, 1, -1, -1)
+        hovered = self.underMouse() and self._row is not None and self._row.leads_somewhere
+        if self._lit or hovered:
+            painter.setPen(QPen(colour(self._theme.edge), 1.0))
+            painter.setBrush(colour(self._theme.card))
+            painter.drawRoundedRect(rect, 3, 3)
+        if self.hasFocus():
+            painter.setPen(QPen(colour(self._theme.select), 2.0))
+            painter.setBrush(Qt.BrushStyle.NoBrush)
+            painter.drawRoundedRect(rect, 3, 3)
+
+    def _paint_texts(self, painter: QPainter, row: Row) -> None:
+        theme, text = self._theme, self._text_rect(self.width())
+        painter.setFont(self._fonts.font("strong"))
+        painter.setPen(colour(theme.over if row.tone == "fail" else theme.ink))
+        top = Qt.AlignmentFlag.AlignTop
+        painter.drawText(
+            QRectF(PAD, PAD, self.width() - 2 * PAD, 100.0), Qt.AlignmentFlag.AlignRight | top, row.value
+        )
+        painter.setPen(colour(theme.over if row.tone in ("not_made", "problem") else theme.ink))
+        painter.drawText(QRectF(PAD, PAD, 200.0, 100.0), Qt.AlignmentFlag.AlignLeft | top, self._mark(row))
+        painter.setFont(self._fonts.font("plain"))
+        painter.setPen(colour(theme.ink))
+        painter.drawText(text, WRAP, row.text)
+        foot = text.top() + self._height_of(row.text, "plain", text.width())
+        if row.remedy:
+            painter.setFont(self._fonts.font("small"))
+            painter.setPen(colour(theme.quiet))
+            painter.drawText(QRectF(text.left(), foot, text.width(), 1e4), WRAP, row.remedy)
+        if row.band is not None:
+            room = QRectF(text.left() + 4, foot, self.width() - 2 * PAD - text.left(), SCALE_HEIGHT)
+            paint_scale(painter, room, row, theme, self._fonts)
+
+    def _mark(self, row: Row) -> str:
+        """A long mark is cut to its room; the sentence for those who hear names it whole."""
+        return self._fonts.elided(row.mark, "strong", MARK_WIDTH - 3.0)
