@@ -135,14 +135,16 @@ def at(results: Results, state_index: int, x: float) -> Readout:
     """The values of one state at the position x (m)."""
     states = np.array([state_index])
     left, right = _sides(results, x)
-    return Readout(x, *(_point(results, states, side) for side in (left, right)))
+    first = _point(results, states, left)
+    return Readout(x, first, first if right is left else _point(results, states, right))
 
 
 def envelope_at(results: Results, x: float) -> EnvelopeReadout:
     """The envelope at the position x (m)."""
     states = checked_states(results)
     left, right = _sides(results, x)
-    return EnvelopeReadout(x, *(_envelope_point(results, states, side) for side in (left, right)))
+    first = _envelope_point(results, states, left)
+    return EnvelopeReadout(x, first, first if right is left else _envelope_point(results, states, right))
 
 
 def checked_states(results: Results) -> IntArray:
