@@ -11,7 +11,7 @@ from collections.abc import Callable, Sequence
 
 import numpy as np
 
-from solver.arrays import FloatArray
+from solver.arrays import BoolArray
 from solver.chain import Chain, Loads
 from solver.errors import BoundNotMet, Cancelled, NotSolvable, OutOfRange, StiffnessContrast
 from solver.faults import Fault
@@ -89,13 +89,13 @@ def _sound_pass(
 def _require_range(trial: Pass, names: Sequence[str]) -> None:
     size = trial.bound.size
     moved = trial.ends.high.any(axis=1) | trial.fields.start_force.any(axis=1)
-    _require(np.isfinite(trial.ends.high).all(axis=1), "displacement", names)
-    _require(np.isfinite(trial.leftover).all(axis=1), "force", names)
+    _require(np.isfinite(trial.ends.high.sum(axis=1)), "displacement", names)
+    _require(np.isfinite(trial.leftover.sum(axis=1)), "force", names)
     _require(np.isfinite(trial.bound.relative()), "energy", names)
     _require((size > SMALLEST_SIZE) | ~moved, "energy", names)
 
 
-def _require(good: FloatArray, what: str, names: Sequence[str]) -> None:
+def _require(good: BoolArray, what: str, names: Sequence[str]) -> None:
     if not good.all():
         raise OutOfRange(names[int(np.argmin(good))], what)
 

@@ -18,7 +18,7 @@ from typing import Protocol
 import numpy as np
 
 from solver.arrays import FloatArray
-from solver.elements import Reference, reference
+from solver.elements import reference
 from solver.mesh import Block
 
 
@@ -164,14 +164,14 @@ class Stacked:
 
     def fields(self, mean: FloatArray, stretch: FloatArray) -> Fields:
         """See Condensation."""
-        block, ref, bubbles = self._block, self._ref, self._bubbles
+        bubbles = self._bubbles
         modes = np.empty((*mean.shape, bubbles.shape[1] + 2))
         modes[..., 0], modes[..., 1] = mean, stretch
         modes[..., 2:] = bubbles[:, :, 2:].transpose(2, 0, 1)
         modes[..., 2:] -= stretch[..., None] * bubbles[:, :, 1]
         if self._bedded:
             modes[..., 2:] -= mean[..., None] * bubbles[:, :, 0]
-        u = modes @ ref.legendre
+        u = modes @ self._ref.legendre
         y = self._force(u, mean, stretch)
         return self._with_integrals(u, y)
 

@@ -106,19 +106,23 @@ def _integrals(degree: int) -> dict[str, FloatArray]:
     }
 
 
+def _at_bound_points(degree: int) -> dict[str, FloatArray]:
+    t, w = legendre.leggauss(degree + BOUND_POINTS)
+    return {
+        "weights": w,
+        "bernstein": bernstein_values(t),
+        "value": np.asarray(legendre.legvander(t, degree).T),
+        "slope": legendre_slopes(degree, t),
+        "force": np.asarray(legendre.legvander(t, degree + 2).T),
+    }
+
+
 @cache
 def reference(degree: int) -> Reference:
     """The arrays of one degree, read-only, made when first asked for."""
-    t, w = legendre.leggauss(degree + BOUND_POINTS)
-    arrays = _integrals(degree) | {
-        "legendre": legendre_of_modes(degree),
-        "force_of_mean_bedding": integration(degree, degree + 3),
-        "force_of_bedding_slope": times_t(degree) @ integration(degree + 1, degree + 3),
-        "force_of_load": integration(2, degree + 3),
-        "weights": w,
-        "bernstein": bernstein_values(t),
-        "value": legendre.legvander(t, degree).T.copy(),
-        "slope": legendre_slopes(degree, t),
-        "force": legendre.legvander(t, degree + 2).T.copy(),
-    }
-    return Reference(**{name: frozen(array) for name, array in arrays.items()})
+    arrays = _integrals(degree) | _at_bound_points(degree)
+    arrays["legendre"] = legendre_of_modes(degree)
+    arrays["force_of_mean_bedding"] = integration(degree, degree + 3)
+    arrays["force_of_bedding_slope"] = times_t(degree) @ integration(degree + 1, degree + 3)
+    arrays["force_of_load"] = integration(2, degree + 3)
+    return Reference(**{name: frozen(np.ascontiguousarray(array)) for name, array in arrays.items()})

@@ -37,8 +37,8 @@ class MemberFields:
     end_force: FloatArray  # (m, e)
     error: FloatArray  # (m, e) η²
     flexibility: FloatArray  # (e,)
-    stretching: float
-    norm: FloatArray  # (m,) and so on
+    stretching: FloatArray  # ()
+    norm: FloatArray  # (m,) as all below
     strain_norm: FloatArray
     force_norm: FloatArray
     strain_energy: FloatArray

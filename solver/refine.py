@@ -1,10 +1,11 @@
 """Which degree an element gets, and where the mesh is refined when the bound asks for it.
 
 The degree is chosen beforehand from what limits the convergence. The slope of the displacement behaves like
-1/A, whose poles lie beyond the segment's ends where the area's linear factors vanish; with ζ the ratio of such
-a factor's values at the two ends, Legendre expansions converge like ρ⁻ᵖ, ρ = (1 + √ζ)/|1 − √ζ| (Bernstein,
-1912). Bedding adds cosh(z t) with z = μL/2, whose coefficients fall like zᵖ/(2p − 1)!!. Usually one pass
-suffices; where it does not, the bound's own shares say where to raise the degree or to halve.
+1/A, whose poles lie beyond the segment's ends where the area's linear factors vanish; with ζ the ratio of
+such a factor's values at the two ends, Legendre expansions converge like ρ⁻ᵖ, ρ = (1 + √ζ)/|1 − √ζ|
+(Bernstein, 1912; from memory). Bedding adds cosh(z t) with z = μL/2, whose coefficients fall like
+zᵖ/(2p − 1)!!. Usually one pass suffices; where it does not, the bound's own shares say where to raise the
+degree or to halve.
 """
 
 from __future__ import annotations
@@ -19,6 +20,7 @@ from solver.sections import part_of
 
 CLOSED_DEGREE = 3
 SAFETY = 0.1  # part of the tolerance the first degree aims at
+COARSEST = 1e-3  # tolerance aimed at where a larger one is asked: 1/A must stay smooth to the bound's quadrature
 STEP = 2  # by which a degree is raised
 FEW = 256  # up to so many stacked elements share one degree: the calls cost more than the arithmetic
 SHORTEST = 2.0**-40  # part of a segment below which no element is halved
@@ -54,11 +56,12 @@ def wanted_degree(chain: Chain, mesh: Mesh, tolerance: float) -> IntArray:
     decay = pole_decay(area)
     z = bedding_number(chain, segment, area, end - start)
     error, term = np.ones_like(decay), np.ones_like(z)
+    aim = SAFETY * min(tolerance, COARSEST)
     degree = np.full(opened.size, GREATEST_DEGREE + 1)
     for p in range(1, GREATEST_DEGREE + 1):
         term = term * z / (2 * p - 1)
         error = error * decay + term
-        met = (p * error < SAFETY * tolerance) & (end - start > SHORTEST)
+        met = (p * error < aim) & (end - start > SHORTEST)
         degree = np.where(met & (degree > p), max(p, LEAST_DEGREE), degree)
     wanted[opened] = np.where(end - start > SHORTEST, degree, GREATEST_DEGREE)
     return wanted
