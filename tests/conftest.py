@@ -44,7 +44,7 @@ collect_ignore_glob = [] if HAS_QT else ["gui/*", "benchmarks/*window*", "benchm
 def pytest_addoption(parser: pytest.Parser, pluginmanager: pytest.PytestPluginManager) -> None:
     """Let the settings of pytest-qt stand in pyproject.toml where it is not loaded."""
     if not pluginmanager.has_plugin("pytest-qt"):
-        for name in ("qt_api", "qt_log_level_fail"):
+        for name in ("qt_api", "qt_log_level_fail", "qt_log_ignore"):
             parser.addini(name, "of pytest-qt, which is not loaded here")
 
 
