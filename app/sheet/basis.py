@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from app.sheet.blocks import Block, bullets, formula, heading, paragraph
+from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.words import tr
 from solver.model import AreaSection, Project, RectangleSection, RoundSection, TubeSection, end_of
 
@@ -14,42 +14,55 @@ def basis_blocks(project: Project) -> Iterator[Block]:
     yield heading(tr("Basis"))
     yield paragraph(
         tr(
-            "A chain of segments in series under axial load, linear elastic, small displacements, plane sections."
-            " Finite elements of rising degree on every segment, refined until the guaranteed bound on the"
-            " numerical error (Prager and Synge 1947, equilibrated forces) is met. The axial force given is the"
-            " equilibrated one; stress is force over area, both sides of a joint."
+            "A chain of segments in series under axial load: linear elastic, small displacements, plane"
+            " sections. Finite elements of rising degree on every segment, refined until the guaranteed bound"
+            " on the numerical error (Prager and Synge 1947, equilibrated forces) is met. The axial force"
+            " given is the equilibrated one; stress is force over area, on both sides of a joint."
         )
     )
     yield paragraph(
         tr(
-            "Signs: x runs along the chain from the first joint. Displacement u, forces, loads, movements and"
-            " gravity are positive along +x; axial force N and stress σ are positive (+) in tension, negative (−)"
-            " in compression; a temperature is the rise above the stress-free state; lack of fit λ is positive for"
-            " a part made too long; a reaction R is the force of the support on the member."
+            "Signs: x runs along the chain from the first joint. Displacement u, force P, distributed load q,"
+            " movement δ and gravity g are positive along +x; axial force N and stress σ are positive (+) in"
+            " tension, negative (−) in compression; ΔT is the rise above the stress-free state; lack of fit λ"
+            " is positive for a part made too long; a reaction R is the force of the support on the member."
+            " E modulus, A area, L length, α expansion, ρ density, k stiffness of a spring or of the bedding"
+            " per length, f the factor on allowable stresses, η utilisation."
         )
     )
-    yield from _formulas(project)
+    yield formulas(list(_formulas(project)))
     yield bullets(_assumptions(project))
 
 
-def _formulas(project: Project) -> Iterator[Block]:
-    yield formula("force", tr("N equals E A times u′ minus α ΔT minus λ over L"))
-    yield formula("equilibrium", tr("minus N′ plus k u equals q plus ρ g A"))
-    yield formula("joint", tr("N right of a joint minus N left of it plus P plus R equals 0"))
-    yield formula("spring", tr("spring: R equals minus k times u minus δ; fixed: u equals δ"))
-    yield formula("stress", tr("σ equals N over A"))
-    yield formula("tension", tr("utilisation in tension equals σ over f times the allowable stress in tension"))
+def _formulas(project: Project) -> Iterator[dict[str, Value]]:
+    yield formula(tr("axial force"), "force", tr("N equals E A times u′ minus α ΔT minus λ over L"))
+    yield formula(tr("equilibrium in a segment"), "equilibrium", tr("minus N′ plus k u equals q plus ρ g A"))
+    yield formula(tr("at a joint"), "joint", tr("N right of it minus N left of it plus P plus R equals 0"))
     yield formula(
-        "compression", tr("utilisation in compression equals minus σ over f times the allowable in compression")
+        tr("spring, or fixed"),
+        "spring",
+        tr("R equals minus k times u minus δ, or u equals δ where it is fixed"),
     )
     shapes = {type(segment.section) for segment in project.segments}
-    for shape, name, alt in (
-        (RoundSection, "round", tr("round: A equals π d squared over 4")),
-        (TubeSection, "tube", tr("tube: A equals π over 4 times D squared minus d squared")),
-        (RectangleSection, "rectangle", tr("rectangle: A equals b times h")),
+    for shape, label, name, alt in (
+        (RoundSection, tr("area, round"), "round", tr("A equals π over 4 times d squared")),
+        (TubeSection, tr("area, tube"), "tube", tr("A equals π over 4 times D squared minus d squared")),
+        (RectangleSection, tr("area, rectangle"), "rectangle", tr("A equals b times h")),
     ):
         if shape in shapes:
-            yield formula(name, alt)
+            yield formula(label, name, alt)
+    yield formula(tr("stress"), "stress", tr("σ equals N over A"))
+    yield formula(
+        tr("utilisation in tension"), "tension", tr("η equals σ over f times the allowable stress in tension")
+    )
+    yield formula(
+        tr("utilisation in compression"),
+        "compression",
+        tr("η equals minus σ over f times the allowable stress in compression"),
+    )
+    yield formula(
+        tr("utilisation of a limit"), "limit", tr("η equals the magnitude of the value over its limit")
+    )
 
 
 def _assumptions(project: Project) -> list[str]:
@@ -62,8 +75,8 @@ def _assumptions(project: Project) -> list[str]:
     if any(s.bedding or end_of(s.bedding, s.bedding_end) for s in project.segments):
         items.append(
             tr(
-                "Bedding k resists along the segment in proportion to u; it pushes and pulls and has no slip limit:"
-                " compare it with what the ground can carry."
+                "Bedding k resists along the segment in proportion to u; it pushes and pulls and has no slip"
+                " limit: compare it with what the ground can carry."
             )
         )
     if any(isinstance(s.section, AreaSection) for s in project.segments):

@@ -1,4 +1,4 @@
-"""The building blocks of a sheet as JSON-able values: what `sheet.typ` lays out, without knowing the contents.
+"""The building blocks of a sheet as JSON-able values, which `sheet.typ` lays out whatever they say.
 
 Every string in them is data: Typst never reads it as markup. `content` composes them; a test can read them.
 """
@@ -10,10 +10,10 @@ from typing import Literal, TypeAlias
 
 from app.sheet.member_figure import Figure
 
-Value: TypeAlias = "str | int | float | bool | None | list[Value] | dict[str, Value]"
+Value: TypeAlias = "str | int | float | bool | list[Value] | dict[str, Value] | None"
 Block: TypeAlias = dict[str, Value]
 Align: TypeAlias = Literal["left", "right"]
-Weight: TypeAlias = Literal["plain", "quiet", "strong", "caution"]
+Weight: TypeAlias = Literal["plain", "lead", "quiet", "caution"]
 
 
 def heading(text: str, level: int = 1) -> Block:
@@ -22,7 +22,7 @@ def heading(text: str, level: int = 1) -> Block:
 
 
 def paragraph(text: str, weight: Weight = "plain") -> Block:
-    """A paragraph; line breaks in it are kept."""
+    """A paragraph; line breaks in it are kept; a `lead` stays with what follows."""
     return {"kind": "paragraph", "text": text, "weight": weight}
 
 
@@ -36,9 +36,9 @@ def facts(pairs: Sequence[tuple[str, str]]) -> Block:
     return {"kind": "facts", "rows": [[name, value] for name, value in pairs]}
 
 
-def column(head: str, unit: str = "", align: Align = "right", *, wide: bool = False) -> dict[str, Value]:
-    """A column of a table; `wide` takes what room is left."""
-    return {"head": head, "unit": unit, "align": align, "wide": wide}
+def column(head: str, unit: str = "", align: Align = "right") -> dict[str, Value]:
+    """A column of a table with its unit under its head."""
+    return {"head": head, "unit": unit, "align": align}
 
 
 def table(
@@ -70,6 +70,11 @@ def picture(figure: Figure, caption: str) -> Block:
     }
 
 
-def formula(name: str, alt: str, **parts: str) -> Block:
-    """A formula that `sheet.typ` knows by name, with the numbers to put in, and the same read aloud."""
-    return {"kind": "formula", "name": name, "alt": alt, "parts": dict(parts)}
+def formula(label: str, name: str, alt: str, **parts: str) -> dict[str, Value]:
+    """A formula that `sheet.typ` knows by name, with the numbers to put in; `alt` is the same read aloud."""
+    return {"label": label, "name": name, "alt": alt, "parts": dict(parts)}
+
+
+def formulas(items: Sequence[dict[str, Value]]) -> Block:
+    """Formulas one below the other."""
+    return {"kind": "formulas", "items": list(items)}

@@ -37,7 +37,7 @@ def build_sheet(project: Project, results: Results, *, file_name: str, date: dt.
     content = sheet_content(shown.project, shown, origin)
     files = _files(content) | {"project.json": dump(project)}
     stamp = int(dt.datetime(day.year, day.month, day.day, tzinfo=dt.UTC).timestamp())
-    pdf = typst.compile(
+    pdf = typst.compile(  # type: ignore[call-overload]  # the stubs do not know a dict of files as input
         input=files,
         format="pdf",
         pdf_standards=list(STANDARDS),

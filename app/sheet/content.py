@@ -1,4 +1,4 @@
-"""The whole sheet as plain JSON-able values: what is said, in which order; `sheet.typ` decides how it looks."""
+"""The whole sheet as plain JSON-able values: what is said, in which order; `sheet.typ` gives it its looks."""
 
 from __future__ import annotations
 
@@ -8,8 +8,8 @@ from app.phrases import caution, verdict_detail, verdict_line
 from app.sheet.basis import basis_blocks
 from app.sheet.blocks import Block, Value, facts, heading, paragraph, picture
 from app.sheet.figures import member_figure
-from app.sheet.notes import note_blocks
 from app.sheet.inputs import input_blocks
+from app.sheet.notes import note_blocks
 from app.sheet.outcomes import outcome_blocks, state_title
 from app.sheet.printable import shortened
 from app.sheet.proof import proof_blocks
@@ -17,7 +17,6 @@ from app.sheet.readings import Readings
 from app.sheet.title import Origin, title_block
 from app.words import tr
 from solver.model import Project
-from solver.packing import pack
 from solver.results import Results
 
 
@@ -48,7 +47,7 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
 
 def _blocks(project: Project, results: Results, say: Readings) -> Iterator[Block]:
     yield from _member(project, results, say)
-    yield from input_blocks(project, results, say)
+    yield from input_blocks(results, say)
     yield from basis_blocks(project)
     yield from outcome_blocks(results, say)
     yield from proof_blocks(results, say)
@@ -63,7 +62,7 @@ def _member(project: Project, results: Results, say: Readings) -> Iterator[Block
     yield picture(figure, caption.format(state=state_title(results.states[state]), note=figure.note))
     yield facts(
         [
-            (tr("Length"), say.read(float(results.position[-1]), "length", unit=True, digits=7)),
+            (tr("Length"), say.plain(float(results.position[-1]), "length", unit=True)),
             (tr("Mass"), say.read(results.mass, "mass", unit=True)),
             (tr("Units"), _units(say)),
         ]

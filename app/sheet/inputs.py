@@ -2,16 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 
 from msgspec import UnsetType
 
+from app.numerals import MINUS
 from app.section_entry import section_text
 from app.sheet.blocks import Block, column, heading, paragraph, picture, table
-from app.sheet.member_figure import member_figure
+from app.sheet.member_figure import Figure, member_figure
 from app.sheet.readings import NOTHING, Readings
 from app.words import tr
 from solver.model import (
+    AnySection,
     AreaSection,
     FixedSupport,
     Joint,
@@ -23,12 +25,16 @@ from solver.model import (
     StopSupport,
     end_of,
 )
+from solver.packing import pack
 from solver.results import Results
 from solver.sections import area_coefficients
 
 
-def input_blocks(project: Project, results: Results, say: Readings) -> Iterator[Block]:
+def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
     """The chapter of inputs."""
+    project = results.project
+    _, loads, states = pack(project)
+    alone = {state.name: index for index, state in enumerate(states) if state.kind == "case"}
     yield heading(tr("Input"))
     yield _materials(project, say)
     yield _segments(project, say)
@@ -36,14 +42,15 @@ def input_blocks(project: Project, results: Results, say: Readings) -> Iterator[
     if not project.load_cases:
         yield paragraph(tr("There are no load cases: the member is unloaded."))
     for case in project.load_cases:
-        yield from _load_case(project, results, case, say)
+        figure = member_figure(project, results.position, loads, alone[case.name], chain=False)
+        yield from _load_case(case, figure, say)
     yield from _combinations(project, say)
     yield from _limits(project, say)
 
 
 def _materials(project: Project, say: Readings) -> Block:
     columns = [
-        column(tr("Material"), align="left", wide=True),
+        column(tr("Material"), align="left"),
         column("E", say.unit("modulus")),
         column("α", say.unit("expansion")),
         column("ρ", say.unit("density")),
@@ -70,7 +77,7 @@ def _segments(project: Project, say: Readings) -> Block:
         column(tr("Segment"), align="left"),
         column(tr("From – to"), align="left"),
         column(tr("Length"), say.unit("length")),
-        column(tr("Section"), say.unit("size"), align="left", wide=True),
+        column(tr("Section"), say.unit("size"), align="left"),
         column(tr("Area"), say.unit("area")),
         column(tr("Material"), align="left"),
         *([column(tr("Bedding"), say.unit("bedding"))] if bedded else []),
@@ -96,20 +103,18 @@ def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[
         yield row
 
 
-def _section(section: object, say: Readings) -> str:
-    if isinstance(section, AreaSection):
-        return tr("area given")
-    return section_text(section, say.units)  # type: ignore[arg-type]
+def _section(section: AnySection, say: Readings) -> str:
+    return tr("area given") if isinstance(section, AreaSection) else section_text(section, say.units)
 
 
 def _joints(project: Project, results: Results, say: Readings) -> Block:
     columns = [
         column(tr("Joint"), align="left"),
         column("x", say.unit("length")),
-        column(tr("Support"), align="left", wide=True),
+        column(tr("Support"), align="left"),
     ]
     rows = [
-        [joint.mark, say.read(x, "length", digits=7), support_words(joint, say)]
+        [joint.mark, say.plain(x, "length"), support_words(joint, say)]
         for joint, x in zip(project.joints, results.position.tolist(), strict=True)
     ]
     return table(tr("Joints and supports"), columns, rows)
@@ -130,14 +135,14 @@ def support_words(joint: Joint, say: Readings) -> str:
             return tr("free")
 
 
-def _load_case(project: Project, results: Results, case: LoadCase, say: Readings) -> Iterator[Block]:
+def _load_case(case: LoadCase, figure: Figure, say: Readings) -> Iterator[Block]:
     yield heading(tr("Load case {name}").format(name=case.name), 2)
     if case.gravity:
         value = say.exact(case.gravity, "acceleration", unit=True)
-        yield paragraph(tr("Gravity along +x: {value}, on the density of every segment.").format(value=value))
-    state = _state_of(results, case.name)
-    if state is not None:
-        figure = member_figure(project, results.position, results.loads, state, chain=False)
+        yield paragraph(
+            tr("Gravity along +x: {value}, on the density of every segment.").format(value=value), "lead"
+        )
+    if case.gravity or case.segment_loads or case.joint_loads:
         yield picture(figure, tr("Load case {name}: loads, factor 1").format(name=case.name))
     if case.segment_loads:
         yield _segment_loads(case, say)
@@ -147,16 +152,9 @@ def _load_case(project: Project, results: Results, case: LoadCase, say: Readings
         yield paragraph(tr("No loads."))
 
 
-def _state_of(results: Results, name: str) -> int | None:
-    try:
-        return results.state_index(name, "case")
-    except KeyError:
-        return None
-
-
 def _segment_loads(case: LoadCase, say: Readings) -> Block:
     columns = [
-        column(tr("Segment"), align="left", wide=True),
+        column(tr("Segment"), align="left"),
         column(tr("q at start"), say.unit("distributed")),
         column(tr("q at end"), say.unit("distributed")),
         column(tr("ΔT at start"), say.unit("temperature")),
@@ -179,7 +177,7 @@ def _segment_load_row(load: SegmentLoad, say: Readings) -> list[str]:
 
 def _joint_loads(case: LoadCase, say: Readings) -> Block:
     columns = [
-        column(tr("Joint"), align="left", wide=True),
+        column(tr("Joint"), align="left"),
         column(tr("Force P"), say.unit("force")),
         column(tr("Movement δ of the support"), say.unit("displacement")),
     ]
@@ -197,7 +195,7 @@ def _combinations(project: Project, say: Readings) -> Iterator[Block]:
         return
     columns = [
         column(tr("Combination"), align="left"),
-        column(tr("Load cases with their factors"), align="left", wide=True),
+        column(tr("Load cases with their factors"), align="left"),
         column(tr("Factor f on allowable stresses")),
     ]
     rows = [
@@ -211,30 +209,43 @@ def _combinations(project: Project, say: Readings) -> Iterator[Block]:
     yield table(tr("Combinations"), columns, rows)
 
 
-def factors_text(factors: object, say: Readings) -> str:
+def factors_text(factors: Mapping[str, float], say: Readings) -> str:
     """The factors as a sum: "1.35 · Dead + 1.5 · Service"; nothing where every case counts 0."""
-    parts = [f"{say.exact(factor, 'factor')} · {name}" for name, factor in dict(factors).items()]  # type: ignore[call-overload]
-    return " + ".join(parts) or tr("no load case")
+    signed = [(f"{MINUS} " if factor < 0 else "+ ", abs(factor), name) for name, factor in factors.items()]
+    text = " ".join(f"{sign}{say.exact(factor, 'factor')} · {name}" for sign, factor, name in signed)
+    return text.removeprefix("+ ") or tr("no load case")
 
 
 def _limits(project: Project, say: Readings) -> Iterator[Block]:
     limits = project.limits
     rows = [
         *(
-            [tr("Displacement of joint {joint}").format(joint=v.joint), "|u|", say.exact(v.limit, "displacement", unit=True)]
+            [
+                tr("Displacement of joint {joint}").format(joint=v.joint),
+                "|u|",
+                say.exact(v.limit, "displacement", unit=True),
+            ]
             for v in limits.displacement
         ),
         *(
-            [tr("Movement of joint {end} against {start}").format(end=v.end, start=v.start), "|Δu|", say.exact(v.limit, "displacement", unit=True)]
+            [
+                tr("Movement of joint {end} against {start}").format(end=v.end, start=v.start),
+                "|Δu|",
+                say.exact(v.limit, "displacement", unit=True),
+            ]
             for v in limits.relative
         ),
         *(
-            [tr("Reaction at joint {joint}").format(joint=v.joint), "|R|", say.exact(v.limit, "force", unit=True)]
+            [
+                tr("Reaction at joint {joint}").format(joint=v.joint),
+                "|R|",
+                say.exact(v.limit, "force", unit=True),
+            ]
             for v in limits.reaction
         ),
     ]
     if not rows:
         yield paragraph(tr("No limits on displacements or reactions are set."))
         return
-    columns = [column(tr("Limit on"), align="left", wide=True), column("", align="left"), column(tr("At most"))]
+    columns = [column(tr("Limit on"), align="left"), column("", align="left"), column(tr("At most"))]
     yield table(tr("Limits"), columns, rows)

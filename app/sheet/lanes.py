@@ -50,7 +50,7 @@ class Edge:
 
 
 def packed(spans: Sequence[tuple[float, float]]) -> list[int]:
-    """A row for each span (low, high) so that no two in a row touch; the spans come in order of their middle."""
+    """A row for each span (low, high), given in order of their middles, so that no two in a row touch."""
     ends: list[float] = []
     rows = []
     for low, high in spans:

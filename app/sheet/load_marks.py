@@ -1,4 +1,4 @@
-"""How loads are drawn beside the member: bands of arrows, arrows at joints, brackets for temperature and fit."""
+"""How loads are drawn beside the member: bands, arrows at joints, brackets for temperature and misfit."""
 
 from __future__ import annotations
 
@@ -35,7 +35,13 @@ class Arrow:
 
 
 def draw_loads(
-    canvas: Canvas, ruler: Ruler, edge: Edge, loads: Loads, state: int, joints: FloatArray, units: UnitSystemName
+    canvas: Canvas,
+    ruler: Ruler,
+    edge: Edge,
+    loads: Loads,
+    state: int,
+    joints: FloatArray,
+    units: UnitSystemName,
 ) -> None:
     """All loads of one state beyond the edge; `joints` (n + 1,) are places in points."""
     _draw_arrows(canvas, ruler, edge, _joint_arrows(loads, state, joints, units))
@@ -47,9 +53,7 @@ def draw_loads(
 
 def _joint_arrows(loads: Loads, state: int, joints: FloatArray, units: UnitSystemName) -> list[Arrow]:
     arrows = []
-    for along, force, movement in zip(
-        joints, loads.joint_force[state], loads.movement[state], strict=True
-    ):
+    for along, force, movement in zip(joints, loads.joint_force[state], loads.movement[state], strict=True):
         if force:
             text = format_value(float(force), "force", units, strip=True, with_unit=True)
             arrows.append(Arrow(float(along), 1 if force > 0 else -1, text))
@@ -83,7 +87,8 @@ def _draw_arrow(canvas: Canvas, ruler: Ruler, edge: Edge, arrow: Arrow, further:
     tip, middle = arrow.along + arrow.sense * _ARROW, arrow.along + arrow.sense * _ARROW / 2
     canvas.path(ruler.points([(arrow.along, edge.at(0)), (arrow.along, aside)]), Ink(QUIET, 0.5))
     canvas.path(
-        ruler.points([(arrow.along, aside), (tip, aside)]), Ink(INK, 1.4, dashes="3 2" if arrow.dashed else "")
+        ruler.points([(arrow.along, aside), (tip, aside)]),
+        Ink(INK, 1.4, dashes="3 2" if arrow.dashed else ""),
     )
     draw_head(canvas, ruler, tip, aside, arrow.sense, 3.2)
     x, y = ruler.point(middle, aside)
@@ -135,7 +140,9 @@ def _draw_trapezoid(
         s = (index + 0.5) / count
         value = (1 - s) * first + s * last
         if value and high - low > 6:
-            _draw_small_arrow(canvas, ruler, low + s * (high - low), base + edge.side * 4, 1 if value > 0 else -1)
+            _draw_small_arrow(
+                canvas, ruler, low + s * (high - low), base + edge.side * 4, 1 if value > 0 else -1
+            )
 
 
 def _draw_small_arrow(canvas: Canvas, ruler: Ruler, middle: float, aside: float, sense: int) -> None:
@@ -173,18 +180,24 @@ def _misfits(
     for index, misfit in enumerate(loads.lack_of_fit[state]):
         if misfit:
             value = format_value(float(misfit), "displacement", units, strip=True, with_unit=True)
-            spans.append((float(joints[index]), float(joints[index + 1]), tr("λ {value}").format(value=value)))
+            spans.append(
+                (float(joints[index]), float(joints[index + 1]), tr("λ {value}").format(value=value))
+            )
     return spans
 
 
-def _draw_brackets(canvas: Canvas, ruler: Ruler, edge: Edge, spans: Sequence[tuple[float, float, str]]) -> None:
+def _draw_brackets(
+    canvas: Canvas, ruler: Ruler, edge: Edge, spans: Sequence[tuple[float, float, str]]
+) -> None:
     if not spans:
         return
     for low, high, _ in spans:
         inset = min(1.5, (high - low) / 4)
         foot, top = edge.at(3), edge.at(6)
         canvas.path(
-            ruler.points([(low + inset, foot), (low + inset, top), (high - inset, top), (high - inset, foot)]),
+            ruler.points(
+                [(low + inset, foot), (low + inset, top), (high - inset, top), (high - inset, foot)]
+            ),
             Ink(QUIET, 0.7),
         )
     edge.reach += 7

@@ -68,7 +68,7 @@ class _Member:
 def member_figure(
     project: Project, positions: FloatArray, loads: Loads | None = None, state: int = 0, *, chain: bool = True
 ) -> Figure:
-    """The drawing; `positions` (n + 1,) in m, with the loads of `state` where given, and the dimension chain."""
+    """The drawing with the loads of `state`, if any, and the dimension chain; `positions` (n + 1,) in m."""
     member = _on_ruler(project, positions)
     units = project.display.unit_system
     canvas, feet = Canvas(), Canvas()
@@ -81,7 +81,9 @@ def member_figure(
     if chain:
         _draw_chain(canvas, feet, member, far, units)
         canvas.parts[behind:behind] = feet.parts
-    note = tr("Labels without room are left out; the tables hold them.") if near.left_out + far.left_out else ""
+    note = (
+        tr("Labels without room are left out; the tables hold them.") if near.left_out + far.left_out else ""
+    )
     alt = _alt(project, units)
     return Figure(canvas.render(alt), *canvas.size, alt, f"{_scale_note(member)} {note}".strip())
 
@@ -102,9 +104,9 @@ def _scale_note(member: _Member) -> str:
     depths = 72 / 0.0254 / member.depth
     if abs(lengths / depths - 1) < 1e-9:
         return tr("Drawn to scale, about 1 : {scale}.").format(scale=f"{lengths:.3g}")
-    return tr("Lengths to scale, about 1 : {lengths}; depths to a scale of their own, about 1 : {depths}.").format(
-        lengths=f"{lengths:.3g}", depths=f"{depths:.3g}"
-    )
+    return tr(
+        "Lengths to scale, about 1 : {lengths}; depths to a scale of their own, about 1 : {depths}."
+    ).format(lengths=f"{lengths:.3g}", depths=f"{depths:.3g}")
 
 
 def _alt(project: Project, units: UnitSystemName) -> str:
@@ -171,25 +173,33 @@ def _draw_mark(canvas: Canvas, member: _Member, index: int, label: Label) -> boo
 
 def _draw_supports(canvas: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
     joints = member.project.joints
-    reach = []
     for index, out in ((0, -1), (len(joints) - 1, 1)):
         along = float(member.joints[index])
         half = member.half_at_joint(index)
-        reach.append(draw_end_support(canvas, member.ruler, joints[index], along, half, out))
+        draw_end_support(canvas, member.ruler, joints[index], along, half, out)
+        _draw_end_stiffness(canvas, member, index, out, _stiffness(joints[index], units))
     inner = [index for index in range(1, len(joints) - 1) if joints[index].support]
     for index in inner:
         half = member.half_at_joint(index)
         draw_side_support(canvas, member.ruler, joints[index], float(member.joints[index]), far, half)
     if inner:
         far.reach += 18
-    shifts = {0: -reach[0], len(joints) - 1: reach[1]}
     labels = [
-        Label(float(member.joints[index]) + shifts.get(index, 0.0), text)
-        for index, joint in enumerate(joints)
-        if (text := _stiffness(joint, units))
+        Label(float(member.joints[index]), text)
+        for index in inner
+        if (text := _stiffness(joints[index], units))
     ]
     draw_lane(canvas, member.ruler, far, labels, _QUIET)
     _draw_bedding_labels(canvas, member, far, units)
+
+
+def _draw_end_stiffness(canvas: Canvas, member: _Member, index: int, out: int, text: str) -> None:
+    """The stiffness of an end spring, beside it on the side without loads."""
+    half = member.half_at_joint(index) + 6
+    x, y = member.ruler.point(float(member.joints[index]) + out * (13 if member.ruler.upright else 3), -half)
+    upright, size = member.ruler.upright, _QUIET.size
+    at = (x - 3, y + 0.35 * size) if upright else (x, y + size)
+    canvas.text(at, text, size=size, fill=QUIET, anchor="end" if upright or out < 0 else "start")
 
 
 def _stiffness(joint: Joint, units: UnitSystemName) -> str:
@@ -206,18 +216,24 @@ def _draw_bedding_labels(canvas: Canvas, member: _Member, far: Edge, units: Unit
             values = [format_value(v, "bedding", units, strip=True) for v in (segment.bedding, end)]
             pair = values[0] if values[0] == values[1] else " → ".join(values)
             middle = float(member.joints[index] + member.joints[index + 1]) / 2
-            labels.append(Label(middle, tr("bedding {value}").format(value=f"{pair} {symbol('bedding', units)}")))
+            labels.append(
+                Label(middle, tr("bedding {value}").format(value=f"{pair} {symbol('bedding', units)}"))
+            )
     draw_lane(canvas, member.ruler, far, labels, _QUIET)
 
 
 def _draw_chain(canvas: Canvas, feet: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
     """Joint marks, then the lengths along a line with slanted ticks, then the sections."""
     ruler = member.ruler
-    marks = [Label(float(a), _short(j.mark)) for a, j in zip(member.joints, member.project.joints, strict=True)]
+    marks = [
+        Label(float(a), _short(j.mark)) for a, j in zip(member.joints, member.project.joints, strict=True)
+    ]
     draw_lane(canvas, ruler, far, marks, Style(7.0, QUIET, italic=True))
     middles = [(a + b) / 2 for a, b in zip(member.joints, member.joints[1:], strict=False)]
     lengths = [format_value(s.length, "length", units, strip=True) for s in member.project.segments]
-    draw_lane(canvas, ruler, far, [Label(float(m), t) for m, t in zip(middles, lengths, strict=True)], Style(7.5))
+    draw_lane(
+        canvas, ruler, far, [Label(float(m), t) for m, t in zip(middles, lengths, strict=True)], Style(7.5)
+    )
     _draw_ticks(canvas, member, far)
     _draw_feet(feet, member, far)
     far.reach += 3
@@ -229,7 +245,10 @@ def _draw_ticks(canvas: Canvas, member: _Member, far: Edge) -> None:
     ruler, line = member.ruler, far.at(1.5)
     canvas.path(ruler.points([(0.0, line), (ruler.extent, line)]), Ink(INK, 0.6))
     canvas.lines(
-        ((ruler.point(a - 2.2, line - 2.2), ruler.point(a + 2.2, line + 2.2)) for a in member.joints.tolist()),
+        (
+            (ruler.point(a - 2.2, line - 2.2), ruler.point(a + 2.2, line + 2.2))
+            for a in member.joints.tolist()
+        ),
         Ink(INK, 1.0),
     )
 

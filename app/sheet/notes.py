@@ -25,4 +25,6 @@ def _notes(results: Results) -> Iterator[str]:
         yield tr(BEDDING)
     checked = [index for index, state in enumerate(results.states) if state.checked]
     yield numerical_error_sentence(float(results.solution.error_bound[checked].max()))
-    yield tr("The project file this sheet was made from is attached to this PDF; its SHA-256 is on the first page.")
+    yield tr(
+        "The project file this sheet was made from is attached to this PDF; its SHA-256 is on the first page."
+    )

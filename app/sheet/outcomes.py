@@ -7,12 +7,12 @@ from collections.abc import Iterator
 
 import numpy as np
 
+from app.phrases import numerical_error_sentence
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
 from app.sheet.figures import envelope_figure, state_figure
 from app.sheet.inputs import factors_text
 from app.sheet.readings import NOTHING, Readings
 from app.sheet.verdicts import status_word
-from app.phrases import numerical_error_sentence
 from app.units import utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray
@@ -36,11 +36,11 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
         yield paragraph(
             tr("{factors}; factor on allowable stresses {factor}.").format(
                 factors=factors_text(state.factors, say), factor=say.exact(state.allowable_factor, "factor")
-            )
+            ),
+            "lead",
         )
     caption = tr(
-        "{name}: displacement u, axial force N (+ tension, − compression), stress σ within its allowables"
-        " (dashed), utilisation. Hatched: over the limit."
+        "{name}: u, N (+ tension, − compression), σ, utilisation; allowables dashed, beyond them hatched"
     )
     yield picture(state_figure(results, index), caption.format(name=state.name))
     yield _segments(results, index, say)
@@ -106,7 +106,7 @@ def _segment_row(results: Results, index: int, place: int, say: Readings) -> lis
 def _position(results: Results, x: float, say: Readings) -> str:
     if math.isnan(x):
         return NOTHING
-    return say.read(x, "length", beside=float(results.position[-1]))
+    return say.plain(0.0 if abs(x) < 1e-12 * float(results.position[-1]) else x, "length", digits=6)
 
 
 def _of_segment(results: Results, index: int, mark: str) -> list[Check]:
@@ -119,10 +119,7 @@ def _utilisation(results: Results, index: int, place: int, say: Readings) -> lis
     checks = _of_segment(results, index, results.project.segments[place].mark)
     statuses = {c.status for c in checks}
     value = float(results.segments.utilisation[index, place])
-    if "fail" in statuses:
-        status = "fail"
-    else:
-        status = "not_made" if "not_made" in statuses else "pass"
+    status = next((status for status in ("fail", "not_made") if status in statuses), "pass")
     words = status_word(status) if checks else tr("no stress")
     if math.isnan(value):
         return [NOTHING, NOTHING, words]
@@ -144,7 +141,7 @@ def _joints(results: Results, index: int, say: Readings) -> Block:
     moved, reactions = solution.joint_displacement[index], solution.reaction[index]
     far, strong = _largest(moved), max(_largest(reactions), abs(float(solution.loads[index])))
     columns = [
-        column(tr("Joint"), align="left", wide=True),
+        column(tr("Joint"), align="left"),
         column("x", say.unit("length")),
         column(tr("Displacement u"), say.unit("displacement")),
         column(tr("Reaction R"), say.unit("force")),
@@ -175,16 +172,21 @@ def _balance(results: Results, index: int, say: Readings) -> Block:
     beside = max(_largest(reactions), *(abs(v) for v in parts.values()))
 
     def force(name: str) -> str:
-        return say.read(parts[name], "force", unit=True, beside=0.0 if name == "residual" else beside)
+        return say.read(parts[name], "force", beside=beside)
 
-    joined = tr("loads {loads}, reactions {reactions}, bedding {bedding}; left over {residual}")
+    joined = tr("loads {loads} + reactions {reactions} + bedding {bedding} = {residual} {unit} (rounding)")
+    residual = say.read(parts["residual"], "force", digits=2)
+    words = {name: force(name) for name in ("loads", "reactions", "bedding")}
     energies = tr("strain energy {strain}, potential energy {potential}").format(
         strain=say.read(solution.strain_energy[index], "energy", unit=True),
         potential=say.read(solution.potential[index], "energy", unit=True),
     )
     return facts(
         [
-            (tr("Equilibrium, sum along x"), joined.format(**{name: force(name) for name in parts})),
+            (
+                tr("Equilibrium, sum along x"),
+                joined.format(**words, residual=residual, unit=say.unit("force")),
+            ),
             (tr("Energy"), energies),
             (tr("Numerical error"), numerical_error_sentence(float(solution.error_bound[index]))),
         ]
@@ -206,7 +208,7 @@ def _envelope_blocks(results: Results, say: Readings) -> Iterator[Block]:
         column(tr("σ smallest"), stress),
         column(tr("Utilisation")),
         column(tr("at x"), length),
-        column(tr("In"), align="left", wide=True),
+        column(tr("In"), align="left"),
     ]
     rows = [_envelope_row(results, place, say) for place in range(len(results.project.segments))]
     yield table(tr("Envelope by segment"), columns, rows)

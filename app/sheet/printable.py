@@ -38,7 +38,9 @@ _RANGES: Final = tuple(
 _STARTS: Final = tuple(low for low, _ in _RANGES)
 _REFUSED: Final = frozenset({"Cc", "Cf", "Cn", "Co", "Cs", "Mc", "Me", "Mn", "Zl", "Zp"})
 _BREAK: Final = "\u200b"  # a place where a line may break, without width
-_RIGHT_TO_LEFT: Final = re.compile("[\u0590-\u08ff\ufb1d-\ufb4f](?:.*[\u0590-\u08ff\ufb1d-\ufb4f])?", re.DOTALL)
+_RIGHT_TO_LEFT: Final = re.compile(
+    "[\u0590-\u08ff\ufb1d-\ufb4f](?:.*[\u0590-\u08ff\ufb1d-\ufb4f])?", re.DOTALL
+)
 _LEFT_TO_RIGHT_MARK: Final = "\u200e"
 _LONG_RUN: Final = re.compile(r"\S{24,}")
 _RUN: Final = 8

@@ -12,7 +12,7 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.phrases import reason_text
-from app.sheet.blocks import Block, column, formula, heading, paragraph, table
+from app.sheet.blocks import Block, Value, column, formula, formulas, heading, paragraph, table
 from app.sheet.readings import Readings
 from app.sheet.verdicts import check_row, kind_words, quantity_of, subject
 from app.units import utilisation_text
@@ -29,8 +29,6 @@ from solver.model import (
 )
 from solver.results import Results
 from solver.sections import area_at
-
-_BY_HAND = 7  # digits of numbers to compute with
 
 
 def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
@@ -54,7 +52,8 @@ def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator
     yield paragraph(
         tr("Largest utilisation of all checks: {kind}, {subject}, {combination}.").format(
             kind=kind_words(check), subject=subject(check), combination=check.combination
-        )
+        ),
+        "lead",
     )
     if check.segment is not None:
         yield from _stress_by_hand(results, check, say)
@@ -72,17 +71,22 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
     values = _in_segment(results, state, x, place)
     area = float(area_at(results.chain.area[place], np.array(s)))
     yield paragraph(
-        tr("At x = {x}, {share} of the length of segment {mark} from its start:").format(
-            x=say.read(x, "length", unit=True, digits=_BY_HAND), share=f"{s:.6g}", mark=check.segment
-        )
+        tr("Segment {mark} at x = {x}, {share} of its length from its start.").format(
+            x=say.plain(x, "length", unit=True), share=f"{s:.6g}", mark=check.segment
+        ),
+        "lead",
     )
-    yield _area_by_hand(results, place, s, area, say)
-    stress = say.read(values.stress, "stress", unit=True, digits=6)
-    force = say.read(values.force, "force", unit=True, digits=_BY_HAND)
-    size = say.read(area, "area", unit=True, digits=_BY_HAND)
+    stress = say.plain(values.stress, "stress", unit=True, digits=6)
+    force = say.plain(values.force, "force", unit=True)
+    size = say.plain(area, "area", unit=True)
     alt = tr("σ = N / A = {force} / {area} = {stress}").format(force=force, area=size, stress=stress)
-    yield formula("stress_numbers", alt, force=force, area=size, stress=stress)
-    yield _utilisation_by_hand(results, check, state, stress, say)
+    yield formulas(
+        [
+            _area_by_hand(results, place, s, area, say),
+            formula(tr("stress"), "stress_numbers", alt, force=force, area=size, stress=stress),
+            _utilisation_by_hand(results, check, state, stress, say),
+        ]
+    )
 
 
 def _state(results: Results, check: Check) -> int:
@@ -96,14 +100,14 @@ def _in_segment(results: Results, state: int, x: float, place: int) -> PointValu
     return next((side for side in sides if side.segment == place), sides[0])
 
 
-def _area_by_hand(results: Results, place: int, s: float, area: float, say: Readings) -> Block:
+def _area_by_hand(results: Results, place: int, s: float, area: float, say: Readings) -> dict[str, Value]:
     """The area from the dimensions at that place, which vary linearly along the segment."""
     section = results.project.segments[place].section
 
     def size(start: float, end: float | UnsetType) -> str:
-        return say.read((1 - s) * start + s * end_of(start, end), "size", unit=True, digits=_BY_HAND)
+        return say.plain((1 - s) * start + s * end_of(start, end), "size", unit=True)
 
-    result = say.read(area, "area", unit=True, digits=_BY_HAND)
+    result = say.plain(area, "area", unit=True)
     match section:
         case RoundSection():
             parts = {"d": size(section.diameter, section.diameter_end)}
@@ -119,10 +123,12 @@ def _area_by_hand(results: Results, place: int, s: float, area: float, say: Read
             name, alt = "rectangle_numbers", tr("A = {b} · {h} = {area}")
         case AreaSection():
             parts, name, alt = {}, "area_numbers", tr("A = {area}")
-    return formula(name, alt.format(area=result, **parts), area=result, **parts)
+    return formula(tr("area"), name, alt.format(area=result, **parts), area=result, **parts)
 
 
-def _utilisation_by_hand(results: Results, check: Check, state: int, stress: str, say: Readings) -> Block:
+def _utilisation_by_hand(
+    results: Results, check: Check, state: int, stress: str, say: Readings
+) -> dict[str, Value]:
     material = next(
         m
         for m in results.project.materials
@@ -138,7 +144,7 @@ def _utilisation_by_hand(results: Results, check: Check, state: int, stress: str
     }
     sign = "" if check.check == "tension" else "−"
     alt = tr("utilisation = {sign}({stress}) / ({factor} · {allowable}) = {utilisation}")
-    return formula(f"{check.check}_numbers", alt.format(sign=sign, **parts), **parts)
+    return formula(tr("utilisation"), f"{check.check}_numbers", alt.format(sign=sign, **parts), **parts)
 
 
 def utilisation_by_hand(check: Check) -> str:
@@ -152,35 +158,36 @@ def _joint_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Bl
     quantity = quantity_of(check)
     parts = _against_limit(check, say)
     name = "R" if check.check == "reaction" else "u"
-    alt = tr("utilisation = |{name}| / limit = |{value}| / {limit} = {utilisation}").format(name=name, **parts)
-    if quantity == "force":
-        yield from _spring_by_hand(results, check, say)
-    yield formula(f"{check.check}_numbers", alt, **parts)
+    alt = tr("utilisation = |{name}| / limit = |{value}| / {limit} = {utilisation}").format(
+        name=name, **parts
+    )
+    spring = _spring_by_hand(results, check, say) if quantity == "force" else []
+    yield formulas([*spring, formula(tr("utilisation"), f"{check.check}_numbers", alt, **parts)])
 
 
 def _against_limit(check: Check, say: Readings) -> dict[str, str]:
     quantity = quantity_of(check)
     return {
-        "value": say.read(float(check.value or 0.0), quantity, unit=True, digits=6),
+        "value": say.plain(float(check.value or 0.0), quantity, unit=True, digits=6),
         "limit": say.exact(float(check.limit or 0.0), quantity, unit=True),
         "utilisation": utilisation_by_hand(check),
     }
 
 
-def _spring_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+def _spring_by_hand(results: Results, check: Check, say: Readings) -> list[dict[str, Value]]:
     """A spring's reaction from its stiffness and the joint's displacement."""
     place = next(i for i, j in enumerate(results.project.joints) if j.mark == check.joint)
     support, state = results.project.joints[place].support, _state(results, check)
     if not isinstance(support, SpringSupport):
-        return
+        return []
     parts = {
         "stiffness": say.exact(support.stiffness, "spring", unit=True),
-        "u": say.read(float(results.solution.joint_displacement[state, place]), "displacement", unit=True, digits=_BY_HAND),
-        "movement": say.read(float(results.loads.movement[state, place]), "displacement", unit=True, digits=_BY_HAND),
-        "reaction": say.read(float(check.value or 0.0), "force", unit=True, digits=6),
+        "u": say.plain(float(results.solution.joint_displacement[state, place]), "displacement", unit=True),
+        "movement": say.plain(float(results.loads.movement[state, place]), "displacement", unit=True),
+        "reaction": say.plain(float(check.value or 0.0), "force", unit=True, digits=6),
     }
     alt = tr("R = −k (u − δ) = −{stiffness} · ({u} − ({movement})) = {reaction}").format(**parts)
-    yield formula("spring_numbers", alt, **parts)
+    return [formula(tr("reaction of the spring"), "spring_numbers", alt, **parts)]
 
 
 def _relative_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
@@ -188,11 +195,12 @@ def _relative_by_hand(results: Results, check: Check, say: Readings) -> Iterator
     joints = {joint.mark: index for index, joint in enumerate(results.project.joints)}
     moved = results.solution.joint_displacement[state]
     parts = _against_limit(check, say) | {
-        name: say.read(float(moved[joints[str(mark)]]), "displacement", unit=True, digits=_BY_HAND)
+        name: say.plain(float(moved[joints[str(mark)]]), "displacement", unit=True)
         for name, mark in (("start", check.start), ("end", check.end))
     }
     alt = tr("utilisation = |u at {to} − u at {of}| / limit = |{end} − ({start})| / {limit} = {utilisation}")
-    yield formula("relative_numbers", alt.format(to=check.end, of=check.start, **parts), **parts)
+    spoken = alt.format(to=check.end, of=check.start, **parts)
+    yield formulas([formula(tr("utilisation"), "relative_numbers", spoken, **parts)])
 
 
 def _key(check: Check) -> tuple[str | None, ...]:
@@ -214,7 +222,7 @@ def _table(title: str, checks: list[Check], say: Readings, *, strong: bool = Fal
     columns = [
         column(tr("Of"), align="left"),
         column(tr("What"), align="left"),
-        column(tr("In"), align="left", wide=True),
+        column(tr("In"), align="left"),
         column(tr("at x")),
         column(tr("Value")),
         column(tr("Limit")),
@@ -235,9 +243,11 @@ def _not_made(results: Results) -> Iterator[Block]:
         column(tr("Of"), align="left"),
         column(tr("What"), align="left"),
         column(tr("In"), align="left"),
-        column(tr("Why not, and what to enter"), align="left", wide=True),
+        column(tr("Why not, and what to enter"), align="left"),
     ]
     rows = [
-        [subject(c), kind_words(c), c.combination, reason_text(c.reason)] for c in missing if c.reason is not None
+        [subject(c), kind_words(c), c.combination, reason_text(c.reason)]
+        for c in missing
+        if c.reason is not None
     ]
     yield table(tr("NOT CHECKED"), columns, rows)

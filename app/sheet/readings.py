@@ -10,6 +10,7 @@ from solver.model import UnitSystemName
 
 NOTHING = "–"
 DIGITS = 5
+PLAIN = 7
 _ROUNDING = 1e-10  # of the largest value beside it: less than this is rounding and reads 0
 
 
@@ -34,8 +35,18 @@ class Readings:
         return first if first == last else f"{first} → {last}"
 
     def read(
-        self, value: float, quantity: Quantity, *, unit: bool = False, digits: int = DIGITS, beside: float = 0.0
+        self,
+        value: float,
+        quantity: Quantity,
+        *,
+        unit: bool = False,
+        digits: int = DIGITS,
+        beside: float = 0.0,
     ) -> str:
         """A result; one that is nothing but rounding beside the largest of its kind reads 0."""
         shown = 0.0 if abs(value) < _ROUNDING * abs(beside) else float(value)
         return format_value(shown, quantity, self.units, digits, with_unit=unit)
+
+    def plain(self, value: float, quantity: Quantity, *, unit: bool = False, digits: int = PLAIN) -> str:
+        """A value without needless zeros: a position, or a number to compute with."""
+        return format_value(float(value), quantity, self.units, digits, strip=True, with_unit=unit)

@@ -28,7 +28,7 @@ def state_figure(results: Results, state: int) -> Figure:
     field = curves(results, state, points=POINTS)
     checked = results.states[state].checked
     strips = [
-        Strip("u", "displacement", "displacement", field.x, (field.displacement,), signed=False),
+        Strip("u", "displacement", "displacement", field.x, (field.displacement,)),
         Strip("N", "force", "force", field.x, (field.force,)),
         Strip(
             "σ",
@@ -43,7 +43,9 @@ def state_figure(results: Results, state: int) -> Figure:
     if checked:
         strips.append(_utilisation(results, field.x, field.utilisation))
     name = results.states[state].name
-    return _figure(results, strips, tr("Displacement, axial force, stress and utilisation, {name}").format(name=name))
+    return _figure(
+        results, strips, tr("Displacement, axial force, stress and utilisation, {name}").format(name=name)
+    )
 
 
 def envelope_figure(results: Results) -> Figure:
@@ -51,7 +53,7 @@ def envelope_figure(results: Results) -> Figure:
     field = envelope(results, points=POINTS)
     x = field.x
     strips = [
-        Strip("u", "displacement", "displacement", x, (field.displacement_max, field.displacement_min), signed=False),
+        Strip("u", "displacement", "displacement", x, (field.displacement_max, field.displacement_min)),
         Strip("N", "force", "force", x, (field.force_max, field.force_min)),
         Strip("σ", "stress", "stress", x, (field.stress_max, field.stress_min), limits=_common_band(results)),
         _utilisation(results, x, field.utilisation),
@@ -111,5 +113,11 @@ def _draw_places(canvas: Canvas, ruler: Ruler, results: Results, place: float) -
             continue
         last = along
         px, py = ruler.point(along, -5.0 if ruler.upright else -place - 2)
-        anchor = "end" if ruler.upright else "middle"
-        canvas.text((px, py + 2.5), mark, size=7, fill=QUIET, italic=True, anchor=anchor)
+        canvas.text(
+            (px, py + 2.5),
+            mark,
+            size=7,
+            fill=QUIET,
+            italic=True,
+            anchor="end" if ruler.upright else "middle",
+        )

@@ -1,4 +1,4 @@
-"""Strips of u, N, σ and utilisation on one position axis, with the allowable band and the over-limit hatching.
+"""Strips of u, N, σ and utilisation on one position axis, with allowables and over-limit hatching.
 
 Tension is blue and marked +, compression orange and marked −; what exceeds its limit is hatched as well as
 coloured. The curves come from `solver.fields`; only where they cross zero or the limit is interpolated here,
@@ -16,9 +16,9 @@ import numpy as np
 from app.sheet import colours
 from app.sheet.ruler import Ruler
 from app.sheet.svg import Canvas, Ink
-from app.units import Quantity, format_value, symbol
+from app.units import Quantity, format_value, symbol, utilisation_text
 from app.words import tr
-from solver.arrays import FloatArray
+from solver.arrays import BoolArray, FloatArray
 from solver.checks import PASS_MARGIN
 from solver.model import UnitSystemName
 
@@ -45,7 +45,6 @@ class Strip:
     quantity: Quantity
     x: FloatArray
     curves: tuple[FloatArray, ...]
-    signed: bool = True
     over: FloatArray | None = None
     limits: tuple[Limit, ...] = field(default_factory=tuple)
 
@@ -64,16 +63,23 @@ class _Scale:
 
 
 def draw_strip(
-    canvas: Canvas, ruler: Ruler, strip: Strip, start: float, depth: float, joints: FloatArray, units: UnitSystemName
+    canvas: Canvas,
+    ruler: Ruler,
+    strip: Strip,
+    start: float,
+    depth: float,
+    joints: FloatArray,
+    units: UnitSystemName,
 ) -> None:
     """Draw a strip in the box between `start` and `start + depth` aside; joints (n + 1,) in m."""
     scale, least, most = _scale(strip, start, depth)
     _draw_frame(canvas, ruler, scale, joints)
-    for curve in strip.curves:
-        _draw_curve(canvas, ruler, strip, scale, curve)
+    for number in range(len(strip.curves)):
+        _draw_curve(canvas, ruler, strip, scale, number)
     canvas.path(ruler.points([(0.0, scale.zero), (ruler.extent, scale.zero)]), Ink(colours.INK, 0.7))
     for limit in strip.limits:
-        _draw_limit(canvas, ruler, scale, limit)
+        if _draw_limit(canvas, ruler, scale, limit):
+            _draw_limit_value(canvas, ruler, strip, scale, limit, units)
     _draw_words(canvas, ruler, strip, scale, (least, most), units)
 
 
@@ -102,41 +108,50 @@ def _draw_frame(canvas: Canvas, ruler: Ruler, scale: _Scale, joints: FloatArray)
     )
 
 
-def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, curve: FloatArray) -> None:
+def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, number: int) -> None:
+    curve = strip.curves[number]
     over = np.zeros_like(curve) if strip.over is None else np.nan_to_num(strip.over)
     x, value, over = _with_crossings(strip.x, curve, over)
-    if not strip.signed:
-        for low, high in _runs(np.isfinite(value)):
-            _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colours.DISPLACEMENT, "")
-        return
-    for low, high in _runs(np.isfinite(value) & (value >= 0)):
-        _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colours.TENSION, colours.TENSION_FILL)
-    for low, high in _runs(np.isfinite(value) & (value <= 0)):
-        _draw_run(
-            canvas, ruler, scale, (x[low:high], value[low:high]), colours.COMPRESSION, colours.COMPRESSION_FILL
-        )
+    for held, colour, fill in _colours(strip, value):
+        for low, high in _runs(np.isfinite(value) & held):
+            _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colour, fill)
     for low, high in _runs(over >= 1 + PASS_MARGIN):
         _draw_over(canvas, ruler, scale, (x[low:high], value[low:high]))
-    if strip.kind != "utilisation":
-        _draw_signs(canvas, ruler, scale, x, value)
+    if strip.kind in ("force", "stress"):
+        # of two curves the first is the largest and carries the +, the second the smallest and carries the −
+        signs = (1, -1) if len(strip.curves) == 1 else ((1,), (-1,))[number]
+        _draw_signs(canvas, ruler, scale, x, value, signs)
 
 
-def _with_crossings(x: FloatArray, value: FloatArray, over: FloatArray) -> tuple[FloatArray, FloatArray, FloatArray]:
+def _colours(strip: Strip, value: FloatArray) -> list[tuple[BoolArray, str, str]]:
+    """Which part of a curve is drawn in which colour and over which ground."""
+    if strip.kind == "displacement":
+        return [(np.ones(value.shape, dtype=np.bool_), colours.DISPLACEMENT, "")]
+    if strip.kind == "utilisation":
+        return [(np.ones(value.shape, dtype=np.bool_), colours.INK, colours.LOAD)]
+    with np.errstate(invalid="ignore"):
+        return [
+            (value >= 0, colours.TENSION, colours.TENSION_FILL),
+            (value <= 0, colours.COMPRESSION, colours.COMPRESSION_FILL),
+        ]
+
+
+def _with_crossings(
+    x: FloatArray, value: FloatArray, over: FloatArray
+) -> tuple[FloatArray, FloatArray, FloatArray]:
     """The points with those added where the value crosses 0 or the utilisation crosses its limit."""
     for watched, level in ((value, 0.0), (over, 1 + PASS_MARGIN)):
         above = watched - level
         with np.errstate(invalid="ignore", divide="ignore"):
             at = np.flatnonzero(above[:-1] * above[1:] < 0)
             t = above[at] / (above[at] - above[at + 1])
-        x, value, over = (
-            np.insert(a, at + 1, (1 - t) * a[at] + t * a[at + 1]) for a in (x, value, over)
-        )
+        x, value, over = (np.insert(a, at + 1, (1 - t) * a[at] + t * a[at + 1]) for a in (x, value, over))
         exact = at + 1 + np.arange(len(at))
         (value if level == 0.0 else over)[exact] = level
     return x, value, over
 
 
-def _runs(mask: np.ndarray[tuple[int, ...], np.dtype[np.bool_]]) -> list[tuple[int, int]]:
+def _runs(mask: BoolArray) -> list[tuple[int, int]]:
     """Half-open index ranges where the mask holds, at least two points long."""
     edges = np.flatnonzero(np.diff(np.r_[False, mask, False].astype(np.int8)))
     return [(int(a), int(b)) for a, b in zip(edges[::2], edges[1::2], strict=True) if b - a > 1]
@@ -165,9 +180,12 @@ def _draw_over(canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArra
     canvas.path(ruler.points(places), Ink(colours.OVER, 1.6))
 
 
-def _draw_signs(canvas: Canvas, ruler: Ruler, scale: _Scale, x: FloatArray, value: FloatArray) -> None:
+def _draw_signs(
+    canvas: Canvas, ruler: Ruler, scale: _Scale, x: FloatArray, value: FloatArray, signs: Sequence[int]
+) -> None:
     """+ and − in the middle of each run that has room for it."""
-    for sign, colour, text in ((1, colours.TENSION, "+"), (-1, colours.COMPRESSION, "−")):
+    for sign in signs:
+        colour, text = (colours.TENSION, "+") if sign > 0 else (colours.COMPRESSION, "−")
         for low, high in _runs(sign * value > 0):
             a, b = ruler.along(float(x[low])), ruler.along(float(x[high - 1]))
             middle = float(np.interp((x[low] + x[high - 1]) / 2, x[low:high], value[low:high]))
@@ -177,34 +195,61 @@ def _draw_signs(canvas: Canvas, ruler: Ruler, scale: _Scale, x: FloatArray, valu
                 canvas.text((px, py + 3.2), text, size=10, fill=colour, bold=True, anchor="middle")
 
 
-def _draw_limit(canvas: Canvas, ruler: Ruler, scale: _Scale, limit: Limit) -> None:
+def _draw_limit(canvas: Canvas, ruler: Ruler, scale: _Scale, limit: Limit) -> bool:
+    """The limit as a dashed line; whether it lies inside the strip."""
+    shown = False
     for low, high in _runs(np.isfinite(limit.value)):
         places = _places(ruler, scale, (limit.x[low:high], limit.value[low:high]))
-        inside = all(scale.low - 0.5 <= aside <= scale.high + 0.5 for _, aside in places)
-        if inside:
+        if all(scale.low - 0.5 <= aside <= scale.high + 0.5 for _, aside in places):
             canvas.path(ruler.points(places), _LIMIT)
+            shown = True
+    return shown
+
+
+def _draw_limit_value(
+    canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, limit: Limit, units: UnitSystemName
+) -> None:
+    """The limit at the last segment that has one, beyond the end of the strip (before it, upright)."""
+    value = float(limit.value[np.isfinite(limit.value)][-1])
+    text = format_value(value, strip.quantity, units, 4, strip=True)
+    along = 0.0 if ruler.upright else ruler.extent
+    x, y = ruler.point(along, scale.aside(value))
+    at = (x, y + 8) if ruler.upright else (x + 3, y + 2.6)
+    canvas.text(at, text, size=_SIZE, fill=colours.QUIET, anchor="middle" if ruler.upright else "start")
 
 
 def _draw_words(
-    canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, values: tuple[float, float], units: UnitSystemName
+    canvas: Canvas,
+    ruler: Ruler,
+    strip: Strip,
+    scale: _Scale,
+    values: tuple[float, float],
+    units: UnitSystemName,
 ) -> None:
     """The name with its unit, and the largest and smallest value at their height."""
     unit = symbol(strip.quantity, units)
-    texts = [(v, format_value(v, strip.quantity, units, 4)) for v in sorted({values[0], values[1], 0.0})]
     if ruler.upright:
         x, y = ruler.point(ruler.extent, scale.low)
         canvas.text((x, y - 15), f"{strip.name} {unit}".strip(), size=8.5, bold=True)
-        canvas.text((x, y - 5), tr("{least} to {most}").format(least=_read(values[0], strip, units), most=_read(values[1], strip, units)), size=_SIZE, fill=colours.QUIET)
+        canvas.text((x, y - 5), _range_text(strip, values, units), size=_SIZE, fill=colours.QUIET)
         return
-    middle = (scale.low + scale.high) / 2
-    x, y = ruler.point(0.0, middle)
-    canvas.text((x - 52, y), strip.name, size=8.5, bold=True, anchor="end" if len(strip.name) > 2 else "start")
-    if unit:
-        canvas.text((x - 52, y + 9), unit, size=_SIZE, fill=colours.QUIET)
-    _draw_heights(canvas, ruler, scale, texts)
+    x, y = ruler.point(0.0, (scale.low + scale.high) / 2)
+    canvas.text((x - 46, y), strip.name, size=8.5, bold=True, anchor="end")
+    canvas.text((x - 46, y + 9), unit, size=_SIZE, fill=colours.QUIET, anchor="end")
+    shown = (values[1], 0.0) if strip.kind == "utilisation" else sorted({*values, 0.0})
+    _draw_heights(canvas, ruler, scale, [(value, _value_text(value, strip, units)) for value in shown])
 
 
-def _read(value: float, strip: Strip, units: UnitSystemName) -> str:
+def _range_text(strip: Strip, values: tuple[float, float], units: UnitSystemName) -> str:
+    least, most = (_value_text(value, strip, units) for value in values)
+    if strip.kind == "utilisation":
+        return tr("up to {most}").format(most=most)
+    return tr("{least} to {most}").format(least=least, most=most)
+
+
+def _value_text(value: float, strip: Strip, units: UnitSystemName) -> str:
+    if strip.kind == "utilisation":
+        return utilisation_text(value, "fail" if value > 1 + PASS_MARGIN else "pass")
     return format_value(value, strip.quantity, units, 4)
 
 

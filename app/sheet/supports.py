@@ -20,7 +20,7 @@ _TEETH = 5
 
 
 def draw_wall(canvas: Canvas, ruler: Ruler, along: float, aside: tuple[float, float], facing: int) -> None:
-    """A wall across the axis with hatching on its far side; the member lies on the side `facing` points to."""
+    """A wall across the axis, hatched on its far side; the member lies on the side `facing` points to."""
     low, high = aside
     canvas.path(ruler.points([(along, low), (along, high)]), _BODY)
     count = max(2, round((high - low) / 5))
@@ -49,24 +49,22 @@ def draw_spring(canvas: Canvas, ruler: Ruler, start: float, end: float, aside: f
     canvas.path(ruler.points(places), _LINE)
 
 
-def draw_end_support(canvas: Canvas, ruler: Ruler, joint: Joint, along: float, half: float, out: int) -> float:
-    """The support of an end joint, drawn beyond the member; `out` is −1 at the first joint, +1 at the last.
-
-    Returns how far it reaches beyond the joint, in points.
-    """
+def draw_end_support(canvas: Canvas, ruler: Ruler, joint: Joint, along: float, half: float, out: int) -> None:
+    """The support of an end joint, beyond the member; `out` is −1 at the first joint, +1 at the last."""
     support = joint.support
     if isinstance(support, UnsetType):
-        return 0.0
+        return
     away = 0.0 if isinstance(support, FixedSupport) else _SPRING
     if isinstance(support, SpringSupport) or (
         isinstance(support, StopSupport) and not isinstance(support.stiffness, UnsetType)
     ):
         draw_spring(canvas, ruler, along, along + out * away, 0.0)
     draw_wall(canvas, ruler, along + out * away, (-half - 4, half + 4), -out)
-    return away + 6.0
 
 
-def draw_side_support(canvas: Canvas, ruler: Ruler, joint: Joint, along: float, edge: Edge, half: float) -> None:
+def draw_side_support(
+    canvas: Canvas, ruler: Ruler, joint: Joint, along: float, edge: Edge, half: float
+) -> None:
     """The support of a joint inside the member, drawn beside it beyond the edge."""
     support = joint.support
     aside = edge.at(9.0)
@@ -90,7 +88,9 @@ def draw_bedding(
     for index in range(count):
         s = (index + 0.5) / count
         along, edge = start + s * (end - start), half(s)
-        for side in (-1, 1):
-            marks.append((ruler.point(along - 1.5, side * edge), ruler.point(along + 1.5, side * (edge + 4))))
+        marks += [
+            (ruler.point(along - 1.5, side * edge), ruler.point(along + 1.5, side * (edge + 4)))
+            for side in (-1, 1)
+        ]
     canvas.lines(marks, Ink(QUIET, 0.7))
     return True

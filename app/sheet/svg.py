@@ -111,7 +111,7 @@ class Canvas:
         upwards: bool = False,
         backed: bool = False,
     ) -> None:
-        """Text with its baseline at the point; `upwards` turns it to read from below, `backed` hides lines."""
+        """Text with its baseline at the point; `upwards` reads from below, `backed` hides lines behind it."""
         shown = printable(text).replace("\n", " ")
         corners = _corners(at, text_width(shown, size), size, anchor, upwards=upwards)
         for corner in corners:
