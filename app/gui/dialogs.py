@@ -1,4 +1,4 @@
-"""The few dialogs: for files, and for what cannot be undone. All open without blocking and end in a signal."""
+"""The few dialogs: for files, and for what cannot be undone. None blocks; all end in a signal."""
 
 from __future__ import annotations
 

@@ -146,7 +146,7 @@ class Document(QObject):
         self._announce_modified()
 
     def commit(self, project: Project, name: str, *, settled: tuple[Place, ...] = ()) -> None:
-        """One undo step to `project`; drafts at `settled` places are done with, the others follow their row."""
+        """One undo step to `project`; drafts at `settled` places are done with, others follow their row."""
         old = self.snapshot
         drafts = {}
         for place, draft in old.drafts.items():

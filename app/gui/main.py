@@ -42,7 +42,7 @@ def open_window(path: str | os.PathLike[str] | None, store: Settings, recovery_f
 
 
 def is_sample(path: Path) -> bool:
-    """Whether the file is a packaged sample, which is opened as a project of its own and never written over."""
+    """Whether the file is a packaged sample, which is opened as a new project and never written over."""
     name = path.name.removesuffix(samples.SUFFIX)
     return name in samples.names() and path.resolve() == samples.sample_path(name).resolve()
 
@@ -56,12 +56,16 @@ def offer_recovery(window: Window, found: tuple[Recovered, ...]) -> None:
 
     def on_answer(answer: bool | None) -> None:
         if answer:
-            window.files.when_safe(lambda: window.files.recover(first.snapshot, first.path))
-            window.recovery.write()
-        if answer is not None:
+            window.files.when_safe(take_over)
+            return  # the window holds one project; other copies are offered at the next start
+        if answer is False:
             first.discard()
-        if not answer:
-            offer_recovery(window, rest)
+        offer_recovery(window, rest)
+
+    def take_over() -> None:
+        window.files.recover(first.snapshot, first.path)
+        window.recovery.write()  # the old copy goes only once there is a new one
+        first.discard()
 
     dialogs.ask_recover(window, name, on_answer)
 

@@ -51,7 +51,7 @@ def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
 
 
 def shown_states(project: Project) -> tuple[Shown, ...]:
-    """What the strips can show of a project: the envelope where several states are checked, then each state."""
+    """What the strips can show: the envelope where several states are checked, then each state."""
     combinations = [Shown("combination", combination.name) for combination in project.combinations]
     cases = [Shown("case", case.name) for case in project.load_cases]
     checked = combinations or cases

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from typing import Protocol
 
-from PySide6.QtCore import QObject
+from PySide6.QtCore import QObject, QTimer
 
 from app.gui import log
 from app.gui.document import Document
@@ -20,6 +20,8 @@ from app.gui.worker import Delivery, LatestSolver
 from app.words import tr
 from solver.model import Project
 from solver.results import Results
+
+GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
 
 
 class Sheet(Protocol):
@@ -59,6 +61,10 @@ class Showing(QObject):
         self._fault = ""
         self._asked: Project | None = None
         self._newest = False
+        self._late = QTimer(self)
+        self._late.setSingleShot(True)
+        self._late.setInterval(GRACE)
+        self._late.timeout.connect(self.on_late)
         self.solver = LatestSolver(compute, self)
         self.solver.ready.connect(self.on_ready)
         self.solver.failed.connect(self.on_failed)
@@ -77,16 +83,16 @@ class Showing(QObject):
         return self._newest and not self._document.has_drafts and not self._fault
 
     def follow(self) -> None:
-        """The document or its preview changed: solve it where it is another project, and show what is known."""
+        """The document or its preview changed: solve another project, and show what is known."""
         project = self._document.shown_project
         self._view.set_shown(still_shown(self._view.shown, project))
-        if project is self._asked:
+        if project == self._asked:
             self._show()
             return
         self._asked = project
         self._newest = False
         self._fault = ""
-        self._tables.set_figures(self._figures())
+        self._late.start()
         self.solver.request(project)
 
     def on_ready(self, delivery: Delivery) -> None:
@@ -95,6 +101,16 @@ class Showing(QObject):
         self._outcome = delivery.value
         self._newest = delivery.newest
         self._show()
+
+    def on_late(self) -> None:
+        """The solver takes longer than a person would not notice: what is shown is of an earlier edit."""
+        if not self._newest:
+            self._show()
+
+    def close(self) -> None:
+        """Stop solving; clean also while it runs."""
+        self._late.stop()
+        self.solver.close()
 
     def on_failed(self, delivery: Delivery) -> None:
         """A fault of ours in the solver: into the log and the status line; the next edit is solved again."""

@@ -1,4 +1,4 @@
-"""The status line: what the solver does, the numerical error, news of a command, the file and whether changed."""
+"""The status line: what the solver does, the numerical error, a command's news, file, whether changed."""
 
 from __future__ import annotations
 

@@ -19,6 +19,8 @@ QToolButton:focus {{ border: 1px solid {select}; }}
 QToolButton:disabled {{ color: {quiet}; }}
 QTabWidget::pane {{ border: none; background: {card}; }}
 QTabWidget {{ background: {card}; }}
+QWidget#corner, QWidget#tables {{ background: {card}; color: {ink}; }}
+QWidget#corner QLabel {{ color: {quiet}; }}
 QTabBar {{ background: {card}; }}
 QTabBar::tab {{ background: {card}; color: {quiet}; padding: 6px 12px; border: none;
     border-bottom: 2px solid transparent; }}

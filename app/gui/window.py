@@ -54,6 +54,7 @@ class Window(QMainWindow):
         self.setStyleSheet(style_sheet(self._theme))
         self.on_document_changed()
         self.showing.follow()
+        self.tables.views["segments"].setFocus()
 
     def _make_rooms(self, recovery_folder: Path) -> None:
         self.sheet = SheetView(self.view)
@@ -281,7 +282,7 @@ class Window(QMainWindow):
         """Ask about unsaved changes, then end cleanly, also while the solver runs."""
         if self._may_close():
             self._remember()
-            self.showing.solver.close()
+            self.showing.close()
             self.printing.close()
             self.recovery.close()
             event.accept()

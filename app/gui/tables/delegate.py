@@ -24,6 +24,7 @@ from app.words import tr
 MARGIN = 6  # px left and right of a cell's text
 BAR_WIDTH = 64
 BAR_HEIGHT = 8
+ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 
 Index = QModelIndex | QPersistentModelIndex
 
@@ -78,7 +79,9 @@ class CellDelegate(QStyledItemDelegate):
         if wrong:
             area = area.adjusted(0, 0, -14, 0)
         text = QFontMetrics(cell.font).elidedText(cell.text, Qt.TextElideMode.ElideRight, area.width())
-        painter.drawText(area, int(Qt.AlignmentFlag.AlignVCenter) | int(Qt.AlignmentFlag.AlignLeft), text)
+        total = index.data(HINT_ROLE) and index.column() > 0
+        side = Qt.AlignmentFlag.AlignRight if total else Qt.AlignmentFlag.AlignLeft
+        painter.drawText(area, int(Qt.AlignmentFlag.AlignVCenter | side), text)
 
     def _paint_mark(self, painter: QPainter, cell: QStyleOptionViewItem, area: QRect) -> None:
         """A boxed "!" at the right and a dashed underline."""
@@ -131,15 +134,11 @@ class CellDelegate(QStyledItemDelegate):
 
     def eventFilter(self, editor: QObject, event: QEvent) -> bool:
         """Enter commits and moves down (up with Shift); the rest is Qt's."""
-        if (
-            event.type() == QEvent.Type.KeyPress
-            and isinstance(event, QKeyEvent)
-            and isinstance(editor, QWidget)
-        ):
-            if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
-                back = bool(event.modifiers() & Qt.KeyboardModifier.ShiftModifier)
-                self.commitData.emit(editor)
-                self.closeEditor.emit(editor, QAbstractItemDelegate.EndEditHint.NoHint)
-                self.stepped.emit(-1 if back else 1)
-                return True
+        pressed = isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress
+        if pressed and event.key() in ENTER and isinstance(editor, QWidget):
+            back = bool(event.modifiers() & Qt.KeyboardModifier.ShiftModifier)
+            self.commitData.emit(editor)
+            self.closeEditor.emit(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+            self.stepped.emit(-1 if back else 1)
+            return True
         return super().eventFilter(editor, event)

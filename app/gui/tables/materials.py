@@ -18,7 +18,7 @@ from solver.model import Material, Project
 
 
 def with_modulus(project: Project, index: int, modulus: float) -> Change:
-    """The segment's modulus. A material that other segments share is left alone: the segment gets its own copy."""
+    """The segment's modulus; where others share its material, the segment gets a copy of its own."""
     segment = project.segments[index]
     place = next((i for i, m in enumerate(project.materials) if m.name == segment.material), None)
     if place is None:

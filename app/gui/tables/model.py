@@ -1,24 +1,23 @@
-"""The one table model: a snapshot's rows, told to Qt as what came, went or changed, never as a reset.
+"""What the cells of a table answer and what typing into them does: undo steps, drafts, previews.
 
-A reset would close the open editor and lose the current cell. Results arrive in their own columns only, so
-that no cell being typed is ever announced as changed because the solver came back.
+Results arrive in their own columns only, so that no cell being typed is ever announced as changed because the
+solver came back.
 """
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from types import MappingProxyType
-from typing import Any
+from collections.abc import Callable, Sequence
+from typing import Any, ClassVar
 
-from PySide6.QtCore import QAbstractTableModel, QModelIndex, QObject, QPersistentModelIndex, Qt, Signal
+from PySide6.QtCore import QObject, Qt
 
-from app.gui.document import Document, Draft, Preview, Snapshot
-from app.gui.places import Place
-from app.gui.tables.column import Change, Column, Figures, Sight, Table
+from app.gui.document import Document, Draft, Preview
+from app.gui.tables.column import Change, Figures, Sight, Table
+from app.gui.tables.paste import Block
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
+from app.gui.tables.rows import Index, RowsModel
 from app.units import symbol
 from app.words import tr
-from solver.model import Project
 
 ERROR_ROLE = int(Qt.ItemDataRole.UserRole) + 1  # the reason why the cell's text is not taken in, or ""
 BAR_ROLE = ERROR_ROLE + 1  # (utilisation, sign of the stress) or None
@@ -26,54 +25,14 @@ HINT_ROLE = ERROR_ROLE + 2  # whether the text is a hint, not a value
 LIT_ROLE = ERROR_ROLE + 3  # whether the row is selected elsewhere
 STALE_ROLE = ERROR_ROLE + 4  # whether the figure is of an earlier edit
 
-Index = QModelIndex | QPersistentModelIndex
-NONE = QModelIndex()
 
-
-def changed_span(old: Sequence[object], new: Sequence[object]) -> tuple[int, int]:
-    """How many rows at the front, and then at the back, say the same in both."""
-    shorter = min(len(old), len(new))
-    front = back = 0
-    while front < shorter and old[front] == new[front]:
-        front += 1
-    while back < shorter - front and old[-1 - back] == new[-1 - back]:
-        back += 1
-    return front, back
-
-
-class TableModel(QAbstractTableModel):
+class TableModel(RowsModel):
     """Shows one `Table` of the document; typed texts go to the document as undo steps."""
 
-    noted = Signal(str)  # a line about an edit that did more than it seems to
-
     def __init__(self, table: Table, document: Document, sight: Sight, parent: QObject | None = None) -> None:
-        super().__init__(parent)
-        self.table = table
-        self._document = document
-        self._sight = sight
+        super().__init__(table, document, sight, parent)
         self._figures = Figures()
         self._lit: frozenset[int] = frozenset()
-        self._rows = table.rows(document.project, sight)
-        self._columns = table.columns(document.project, sight)
-        document.changed.connect(self.on_document_changed)
-
-    # What is shown
-
-    def on_document_changed(self, snapshot: Snapshot) -> None:
-        """Follow the document."""
-        cases = len(snapshot.project.load_cases)
-        case = self._sight.case
-        if case is not None and case >= cases:
-            self._sight = Sight(snapshot.project.display.unit_system, cases - 1 if cases else None)
-        self._follow(snapshot.project)
-
-    def set_sight(self, sight: Sight) -> None:
-        """Read the table in other units or with the loads of another case."""
-        if sight != self._sight:
-            self._sight = sight
-            self._follow(self._document.project)
-            last = max(self.rowCount() - 1, 0)
-            self.dataChanged.emit(self.index(0, 0), self.index(last, len(self._columns) - 1))
 
     def set_figures(self, figures: Figures) -> None:
         """Show these results; touches the columns of results only."""
@@ -94,94 +53,6 @@ class TableModel(QAbstractTableModel):
             if rows:
                 last = len(self._columns) - 1
                 self.dataChanged.emit(self.index(min(rows), 0), self.index(max(rows), last), [LIT_ROLE])
-
-    def _follow(self, project: Project) -> None:
-        self._sync_columns(self.table.columns(project, self._sight))
-        self._sync_rows(self.table.rows(project, self._sight))
-
-    def _sync_columns(self, new: tuple[Column, ...]) -> None:
-        old = self._columns
-        front, back = changed_span([c.key for c in old], [c.key for c in new])
-        end = min(len(old), len(new)) - back
-        grown = len(new) - len(old)
-        if grown > 0:
-            self.beginInsertColumns(NONE, end, end + grown - 1)
-            self._columns = old[:end] + new[end : end + grown] + old[end:]
-            self.endInsertColumns()
-        elif grown < 0:
-            self.beginRemoveColumns(NONE, end, end - grown - 1)
-            self._columns = old[:end] + old[end - grown :]
-            self.endRemoveColumns()
-        self._columns = new
-        self.headerDataChanged.emit(Qt.Orientation.Horizontal, 0, len(new) - 1)
-
-    def _sync_rows(self, new: tuple[object, ...]) -> None:
-        old = self._rows
-        front, back = changed_span(old, new)
-        end = min(len(old), len(new)) - back
-        grown = len(new) - len(old)
-        if grown > 0:
-            self.beginInsertRows(NONE, end, end + grown - 1)
-            self._rows = old[:end] + new[end : end + grown] + old[end:]
-            self.endInsertRows()
-        elif grown < 0:
-            self.beginRemoveRows(NONE, end, end - grown - 1)
-            self._rows = old[:end] + old[end - grown :]
-            self.endRemoveRows()
-        self._rows = new
-        # Drafts can change anywhere, so all rows are announced; an open editor keeps its text by itself.
-        last = len(self._columns) - 1
-        if self.rowCount():
-            self.dataChanged.emit(self.index(0, 0), self.index(self.rowCount() - 1, last))
-
-    # What stands where
-
-    @property
-    def columns(self) -> tuple[Column, ...]:
-        """The columns as they are now."""
-        return self._columns
-
-    @property
-    def sight(self) -> Sight:
-        """Units and case the table is read in."""
-        return self._sight
-
-    def record_of(self, row: int) -> int:
-        """The index of the record a row stands for; −1 in a row before the first."""
-        return row - self.table.lead
-
-    def row_of(self, record: int) -> int:
-        """The row that stands for a record."""
-        return record + self.table.lead
-
-    def is_record(self, row: int) -> bool:
-        """Whether the row stands for a record (and not for the start or the adding of one)."""
-        return self.table.lead <= row < len(self._rows)
-
-    def is_adding(self, row: int) -> bool:
-        """Whether typing into the row adds a record."""
-        return self.table.adding is not None and row == len(self._rows)
-
-    def place(self, row: int, column: int) -> Place:
-        """The place of a cell in the project."""
-        own = self._columns[column].place
-        if own is not None and not self.is_adding(row):
-            return own(self.record_of(row), self._sight)
-        return (*self.table.records(self._sight), self.record_of(row), self._columns[column].key)
-
-    def draft(self, index: Index) -> Draft | None:
-        """What was typed into the cell and not taken in."""
-        return self._document.snapshot.drafts.get(self.place(index.row(), index.column()))
-
-    # Qt's side of it
-
-    def rowCount(self, parent: Index = NONE) -> int:
-        """Rows of records, the rows before them and the adding row."""
-        return 0 if parent.isValid() else len(self._rows) + (self.table.adding is not None)
-
-    def columnCount(self, parent: Index = NONE) -> int:
-        """The columns of the table."""
-        return 0 if parent.isValid() else len(self._columns)
 
     def flags(self, index: Index) -> Qt.ItemFlag:
         """Every cell can be chosen, those with an entry can be edited."""
@@ -204,7 +75,7 @@ class TableModel(QAbstractTableModel):
         """One cell's answer for a role."""
         if not index.isValid():
             return None
-        answer = _ANSWERS.get(role)
+        answer = self._ANSWERS.get(role)
         return None if answer is None else answer(self, index)
 
     def _display(self, index: Index) -> str:
@@ -221,9 +92,14 @@ class TableModel(QAbstractTableModel):
     def _adding_text(self, column: int) -> str:
         if column == 0 and self.table.adding is not None:
             return "+ " + tr(self.table.adding.hint)
-        if column == len(self._columns) - 1 and self.table.total is not None:
+        if column == self.total_column and self.table.total is not None:
             return self.table.total(self._document.project, self._figures, self._sight)
         return ""
+
+    @property
+    def total_column(self) -> int:
+        """Where the adding row's second half begins, with the totals."""
+        return len(self._columns) // 2
 
     def _error(self, index: Index) -> str:
         draft = self.draft(index)
@@ -251,6 +127,18 @@ class TableModel(QAbstractTableModel):
 
     def _is_lit(self, index: Index) -> bool:
         return self.is_record(index.row()) and self.record_of(index.row()) in self._lit
+
+    _ANSWERS: ClassVar[dict[int, Callable[[TableModel, Index], Any]]] = {
+        Qt.ItemDataRole.DisplayRole: _display,
+        Qt.ItemDataRole.EditRole: entry,
+        Qt.ItemDataRole.ToolTipRole: _tip,
+        Qt.ItemDataRole.AccessibleTextRole: _spoken,
+        ERROR_ROLE: _error,
+        BAR_ROLE: _bar,
+        HINT_ROLE: _is_hint,
+        LIT_ROLE: _is_lit,
+        STALE_ROLE: _stale,
+    }
 
     def headerData(
         self, section: int, orientation: Qt.Orientation, role: int = Qt.ItemDataRole.DisplayRole
@@ -325,12 +213,8 @@ class TableModel(QAbstractTableModel):
 
         What is no valid entry becomes a draft of its cell; cells that are not for typing are passed over.
         """
-        snapshot = self._document.snapshot
-        builder = _Block(self, snapshot.project, dict(snapshot.drafts))
-        for down, texts in enumerate(block):
-            for across, text in enumerate(texts):
-                builder.type_in(top + down, left + across, text)
-        self._document.commit_snapshot(builder.snapshot(), name)
+        done = Block(self, self._document.snapshot).typed(top, left, block)
+        self._document.commit_snapshot(done, name)
 
     def setData(self, index: Index, value: Any, role: int = Qt.ItemDataRole.EditRole) -> bool:
         """Commit what was typed as one undo step, as a draft where it is no valid entry."""
@@ -342,7 +226,7 @@ class TableModel(QAbstractTableModel):
             return True
         place, name = self.place(index.row(), index.column()), self.step_name(index)
         if self.is_adding(index.row()) and not text.strip():
-            self._forget_draft(place, name)
+            self._document.commit(self._document.project, name, settled=(place,))
             return True
         try:
             change = self.put(index, text)
@@ -354,9 +238,6 @@ class TableModel(QAbstractTableModel):
                 self.noted.emit(change.note)
         return True
 
-    def _forget_draft(self, place: Place, name: str) -> None:
-        self._document.commit(self._document.project, name, settled=(place,))
-
     def step_name(self, index: Index) -> str:
         """The name of the undo step that an edit of the cell makes."""
         if self.is_adding(index.row()) and self.table.adding is not None:
@@ -364,60 +245,3 @@ class TableModel(QAbstractTableModel):
         row = self.table.row_name(self._document.project, self.record_of(index.row()), self._sight)
         title = tr(self._columns[index.column()].title)
         return tr("{column} of {row}").format(column=title, row=row)
-
-
-class _Block:
-    """Collects the cells of one paste on top of each other."""
-
-    def __init__(self, model: TableModel, project: Project, drafts: dict[Place, Draft]) -> None:
-        self._model = model
-        self._project = project
-        self._drafts = drafts
-
-    def type_in(self, row: int, column: int, text: str) -> None:
-        """One cell."""
-        model, records = self._model, self._model.table.rows(self._project, self._model.sight)
-        if not 0 <= column < len(model.columns):
-            return
-        if row >= len(records):
-            self._add(column, text)
-            return
-        wanted = model.columns[column]
-        entry = wanted.entry(records[row], model.sight)
-        if wanted.put is None or entry is None or text == entry:
-            return
-        place = model.place(row, column)
-        try:
-            change = wanted.put(self._project, model.record_of(row), text, model.sight)
-        except TypingError as error:
-            self._drafts[place] = Draft(text, reason_of(error), tr(wanted.title))
-        else:
-            self._drafts.pop(place, None)
-            self._project = change.project
-
-    def _add(self, column: int, text: str) -> None:
-        """Past the end: the first column that can add a record does, the others then find its row."""
-        adding = self._model.table.adding
-        if adding is None or self._model.columns[column].key != adding.column or not text.strip():
-            return
-        try:
-            self._project = adding.put(self._project, text, self._model.sight).project
-        except TypingError:
-            return
-
-    def snapshot(self) -> Snapshot:
-        """What came of it."""
-        return Snapshot(self._project, MappingProxyType(self._drafts))
-
-
-_ANSWERS = {
-    Qt.ItemDataRole.DisplayRole: TableModel._display,
-    Qt.ItemDataRole.EditRole: TableModel.entry,
-    Qt.ItemDataRole.ToolTipRole: TableModel._tip,
-    Qt.ItemDataRole.AccessibleTextRole: TableModel._spoken,
-    ERROR_ROLE: TableModel._error,
-    BAR_ROLE: TableModel._bar,
-    HINT_ROLE: TableModel._is_hint,
-    LIT_ROLE: TableModel._is_lit,
-    STALE_ROLE: TableModel._stale,
-}

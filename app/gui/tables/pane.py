@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QSignalBlocker, Signal
+from PySide6.QtCore import QSignalBlocker, Qt, Signal
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxLayout, QWidget
 
 from app.gui.document import Document, Snapshot
@@ -38,6 +38,8 @@ class TablesPane(QWidget):
 
     def __init__(self, document: Document, view: View, theme: Theme, parent: QWidget | None = None) -> None:
         super().__init__(parent)
+        self.setObjectName("tables")
+        self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
         self._document = document
         self._view = view
         self.views: dict[str, TableView] = {}
@@ -56,6 +58,7 @@ class TablesPane(QWidget):
     def _make_tabs(self, theme: Theme) -> QTabWidget:
         tabs = QTabWidget()
         tabs.setDocumentMode(True)
+        tabs.tabBar().setDrawBase(False)
         tabs.setAccessibleName(tr("Tables"))
         for title, tables in TABS:
             shown = [self._make_view(table, theme) for table, _share in tables]
@@ -87,6 +90,7 @@ class TablesPane(QWidget):
         self.case_picker.setAccessibleName(tr("Edit loads of"))
         self.case_picker.setMinimumContentsLength(14)
         corner = QWidget()
+        corner.setObjectName("corner")
         row = QHBoxLayout(corner)
         row.setContentsMargins(0, 2, 12, 2)
         row.addWidget(label)

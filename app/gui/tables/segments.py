@@ -1,6 +1,6 @@
 """The segment table: the job on one page, from mark to utilisation.
 
-The row before the first holds the first joint's support; every segment's row holds the support at its far end.
+The row before the first holds the first joint's support; a segment's row holds the support at its far end.
 Loads and temperatures are those of the load case that is edited; a cell that stands for several records shows
 their sum and is edited in the Loads table.
 """

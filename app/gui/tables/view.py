@@ -1,7 +1,7 @@
 """The table on the screen: keys of the hand, no trap for them, and rows that add a record.
 
-Enter moves down, Tab to the next cell and out of the table after the last one, F2 edits, Delete clears what can
-be empty, Escape restores.
+Enter moves down, Tab to the next cell and out of the table after the last one, F2 edits, Delete clears what
+can be empty, Escape restores.
 """
 
 from __future__ import annotations
@@ -18,13 +18,12 @@ from PySide6.QtWidgets import (
 )
 
 from app.gui.tables.clipboard import block_of, block_text, tiled
-from app.gui.tables.delegate import BAR_WIDTH, MARGIN, CellDelegate
+from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate
 from app.gui.tables.model import TableModel
 from app.gui.theme import Theme, colour
 from app.words import tr
 
 ROW_HEIGHT = 26
-ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
 
@@ -87,6 +86,8 @@ class TableView(QTableView):
             palette.setColor(role, colour(getattr(theme, name)))
         self.setPalette(palette)
         self.horizontalHeader().setStyleSheet(
+            f"QHeaderView {{ background: {theme.card}; border: none;"
+            f" border-bottom: 1px solid {theme.edge}; }}"
             f"QHeaderView::section {{ background: {theme.card}; color: {theme.quiet}; border: none;"
             f" border-bottom: 1px solid {theme.edge}; padding: 2px {MARGIN}px; }}"
         )
@@ -95,15 +96,23 @@ class TableView(QTableView):
     # The shape of the table
 
     def on_shape_changed(self) -> None:
-        """Span the adding row's hint, and share the width out."""
+        """Span the adding row's hint and totals, and share the width out."""
+        self.share_width()
         model = self.table_model
         self.clearSpans()
         last, columns = model.rowCount() - 1, model.columnCount()
-        if model.table.adding is not None and columns > 2:
-            self.setSpan(last, 0, 1, columns // 2)
-            if model.table.total is not None:
-                self.setSpan(last, columns // 2, 1, 1)
-        self.share_width()
+        half = model.total_column
+        if model.table.adding is None:
+            return
+        if model.table.total is None:
+            self._span(last, 0, columns)
+        else:
+            self._span(last, 0, half)
+            self._span(last, half, columns - half)
+
+    def _span(self, row: int, column: int, count: int) -> None:
+        if count > 1:  # Qt complains about a span of one cell
+            self.setSpan(row, column, 1, count)
 
     def share_width(self) -> None:
         """Give each column its width in digits, and what is left over in the same proportion."""
@@ -111,7 +120,7 @@ class TableView(QTableView):
         digit = QFontMetrics(self.font()).horizontalAdvance("0")
         wished = [self._least_width(place, column.width * digit) for place, column in enumerate(columns)]
         spare = self.viewport().width() - sum(wished)
-        share = 1 + max(0.0, min(spare / max(1, sum(wished)), 0.8))
+        share = 1 + max(0.0, min(spare / max(1, sum(wished)), 2.0))
         for place, width in enumerate(wished):
             self.setColumnWidth(place, int(width * share))
 

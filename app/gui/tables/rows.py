@@ -1,0 +1,141 @@
+"""The rows and columns of a table as Qt is told of them: what came, went or changed, never a reset.
+
+A reset would close the open editor and lose the current cell and the selection.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from PySide6.QtCore import QAbstractTableModel, QModelIndex, QObject, QPersistentModelIndex, Qt, Signal
+
+from app.gui.document import Document, Draft, Snapshot
+from app.gui.places import Place
+from app.gui.tables.column import Column, Sight, Table
+from solver.model import Project
+
+Index = QModelIndex | QPersistentModelIndex
+NONE = QModelIndex()
+
+
+def changed_span(old: Sequence[object], new: Sequence[object]) -> tuple[int, int]:
+    """Where rows came or went, and how many came (negative: went).
+
+    Rows alike at both ends are taken to be the same; the difference in number is before those at the back.
+    """
+    shorter = min(len(old), len(new))
+    front = back = 0
+    while front < shorter and old[front] == new[front]:
+        front += 1
+    while back < shorter - front and old[-1 - back] == new[-1 - back]:
+        back += 1
+    return shorter - back, len(new) - len(old)
+
+
+class RowsModel(QAbstractTableModel):
+    """Rows and columns of one `Table` of the document, in the sight of now."""
+
+    noted = Signal(str)  # a line about an edit that did more than it seems to
+
+    def __init__(self, table: Table, document: Document, sight: Sight, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self.table = table
+        self._document = document
+        self._sight = sight
+        self._rows = table.rows(document.project, sight)
+        self._columns = table.columns(document.project, sight)
+        document.changed.connect(self.on_document_changed)
+
+    def on_document_changed(self, snapshot: Snapshot) -> None:
+        """Follow the document; the case that was edited may be gone."""
+        cases = len(snapshot.project.load_cases)
+        case = self._sight.case
+        if case is not None and case >= cases:
+            self._sight = Sight(self._sight.system, cases - 1 if cases else None)
+        self._follow(snapshot.project)
+
+    def set_sight(self, sight: Sight) -> None:
+        """Read the table in other units or with the loads of another case."""
+        if sight != self._sight:
+            self._sight = sight
+            self._follow(self._document.project)
+
+    def _follow(self, project: Project) -> None:
+        self._sync_columns(self.table.columns(project, self._sight))
+        self._sync_rows(self.table.rows(project, self._sight))
+        # Drafts and units can change any cell, so all are announced; an open editor keeps its text by itself.
+        if self.rowCount():
+            self.dataChanged.emit(self.index(0, 0), self.index(self.rowCount() - 1, len(self._columns) - 1))
+
+    def _sync_columns(self, new: tuple[Column, ...]) -> None:
+        old = self._columns
+        at, grown = changed_span([c.key for c in old], [c.key for c in new])
+        if grown > 0:
+            self.beginInsertColumns(NONE, at, at + grown - 1)
+            self._columns = new
+            self.endInsertColumns()
+        elif grown < 0:
+            self.beginRemoveColumns(NONE, at, at - grown - 1)
+            self._columns = new
+            self.endRemoveColumns()
+        self._columns = new
+        self.headerDataChanged.emit(Qt.Orientation.Horizontal, 0, len(new) - 1)
+
+    def _sync_rows(self, new: tuple[object, ...]) -> None:
+        at, grown = changed_span(self._rows, new)
+        if grown > 0:
+            self.beginInsertRows(NONE, at, at + grown - 1)
+            self._rows = new
+            self.endInsertRows()
+        elif grown < 0:
+            self.beginRemoveRows(NONE, at, at - grown - 1)
+            self._rows = new
+            self.endRemoveRows()
+        self._rows = new
+
+    # What stands where
+
+    @property
+    def columns(self) -> tuple[Column, ...]:
+        """The columns as they are now."""
+        return self._columns
+
+    @property
+    def sight(self) -> Sight:
+        """Units and case the table is read in."""
+        return self._sight
+
+    def record_of(self, row: int) -> int:
+        """The index of the record a row stands for; −1 in a row before the first."""
+        return row - self.table.lead
+
+    def row_of(self, record: int) -> int:
+        """The row that stands for a record."""
+        return record + self.table.lead
+
+    def is_record(self, row: int) -> bool:
+        """Whether the row stands for a record (and not for the start or the adding of one)."""
+        return self.table.lead <= row < len(self._rows)
+
+    def is_adding(self, row: int) -> bool:
+        """Whether typing into the row adds a record."""
+        return self.table.adding is not None and row == len(self._rows)
+
+    def place(self, row: int, column: int) -> Place:
+        """The place of a cell in the project."""
+        own = self._columns[column].place
+        if own is not None and not self.is_adding(row):
+            return own(self.record_of(row), self._sight)
+        return (*self.table.records(self._sight), self.record_of(row), self._columns[column].key)
+
+    def draft(self, index: Index) -> Draft | None:
+        """What was typed into the cell and not taken in."""
+        return self._document.snapshot.drafts.get(self.place(index.row(), index.column()))
+
+    def rowCount(self, parent: Index = NONE) -> int:
+        """Rows of records, the rows before them and the adding row."""
+        return 0 if parent.isValid() else len(self._rows) + (self.table.adding is not None)
+
+    def columnCount(self, parent: Index = NONE) -> int:
+        """The columns of the table."""
+        return 0 if parent.isValid() else len(self._columns)
