@@ -21,7 +21,7 @@ from msgspec import UNSET, UnsetType, structs
 
 from app.entry import MOST_CHARACTERS, factor_of, nearest_double, read_number, refusal
 from app.numerals import shortest_decimal
-from app.units import Quantity, entry_text, format_value, rounds_to, unit
+from app.units import Quantity, entry_text, format_value, input_text, rounds_to, unit
 from solver.model import (
     AnySection,
     AreaSection,
@@ -204,12 +204,17 @@ def section_text(section: AnySection, system: UnitSystemName) -> str:
 
 
 def section_label(section: AnySection, system: UnitSystemName) -> str:
-    """The same for reading, on drawings: rounded to four digits."""
+    """The same for reading, on drawings and sheets: long numbers rounded."""
 
     def number(value: float, quantity: Quantity) -> str:
-        return format_value(value, quantity, system, strip=True)
+        return input_text(value, quantity, system)
 
-    return _worded(section, number, lambda outer, inner: f"×{number((outer - inner) / 2, 'size')}")
+    def second(outer: float, inner: float) -> str:
+        wall = _wall_text(outer, inner, system)
+        rounded = format_value((outer - inner) / 2, "size", system, strip=True)
+        return f"×{wall if len(wall) <= _LONGEST_WALL else rounded}"
+
+    return _worded(section, number, second)
 
 
 def _worded(section: AnySection, number: _Wording, second: Callable[[float, float], str]) -> str:

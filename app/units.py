@@ -43,6 +43,9 @@ QUANTITIES: Final[tuple[Quantity, ...]] = get_args(Quantity)
 SYSTEM_NAMES: Final[tuple[UnitSystemName, ...]] = get_args(UnitSystemName)
 
 
+_LONGEST_INPUT: Final = 9
+
+
 @dataclass(frozen=True, slots=True)
 class Unit:
     """A unit as it is shown, and how many SI units one of it is."""
@@ -189,6 +192,14 @@ def format_value(
     """
     text = reading(to_display(value, quantity, system), digits, strip=strip)
     return f"{text} {symbol(quantity, system)}".rstrip() if with_unit else text
+
+
+def input_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """An input for reading: to the last digit as typed where that is short, else rounded to five digits."""
+    typed = entry_text(value, quantity, system)
+    if "e" in typed or len(typed.lstrip("-")) > _LONGEST_INPUT:
+        return format_value(value, quantity, system, 5, strip=True)
+    return fixed(to_display(value, quantity, system), len(typed.partition(".")[2]))
 
 
 def utilisation_text(value: float, status: Status) -> str:
