@@ -51,7 +51,7 @@ def _blocks(project: Project, results: Results, say: Readings) -> Iterator[Block
     yield from basis_blocks(project)
     yield from outcome_blocks(results, say)
     yield from proof_blocks(results, say)
-    yield from note_blocks(results)
+    yield from note_blocks(results, say)
 
 
 def _member(project: Project, results: Results, say: Readings) -> Iterator[Block]:

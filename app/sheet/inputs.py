@@ -211,9 +211,11 @@ def _combinations(project: Project, say: Readings) -> Iterator[Block]:
 
 def factors_text(factors: Mapping[str, float], say: Readings) -> str:
     """The factors as a sum: "1.35 · Dead + 1.5 · Service"; nothing where every case counts 0."""
-    signed = [(f"{MINUS} " if factor < 0 else "+ ", abs(factor), name) for name, factor in factors.items()]
-    text = " ".join(f"{sign}{say.exact(factor, 'factor')} · {name}" for sign, factor, name in signed)
-    return text.removeprefix("+ ") or tr("no load case")
+    text = ""
+    for name, factor in factors.items():
+        sign = (MINUS if factor < 0 else "") if not text else f" {MINUS} " if factor < 0 else " + "
+        text += f"{sign}{say.exact(abs(factor), 'factor')} · {name}"
+    return text or tr("no load case")
 
 
 def _limits(project: Project, say: Readings) -> Iterator[Block]:

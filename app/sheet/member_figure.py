@@ -25,7 +25,7 @@ from solver.chain import Loads
 from solver.model import Joint, Project, Segment, SpringSupport, UnitSystemName
 from solver.sections import outline
 
-ACROSS, UPRIGHT = 420.0, 400.0  # drawn length of the member in points
+ACROSS, UPRIGHT, SMALL = 420.0, 400.0, 200.0  # drawn length of the member in points
 _LEAST_HALF, _MOST_HALF = 11.0, 34.0
 _OUTLINE = Ink(INK, 1.2, BODY)
 _QUIET = Style(7.0, QUIET)
@@ -69,13 +69,15 @@ def member_figure(
     project: Project, positions: FloatArray, loads: Loads | None = None, state: int = 0, *, chain: bool = True
 ) -> Figure:
     """The drawing with the loads of `state`, if any, and the dimension chain; `positions` (n + 1,) in m."""
-    member = _on_ruler(project, positions)
+    member = _on_ruler(project, positions, UPRIGHT if chain else SMALL)
     units = project.display.unit_system
     canvas, feet = Canvas(), Canvas()
     half = max(member.half(s, t) for s in project.segments for t in (0.0, 1.0))
     near, far = Edge(1, half + 5), Edge(-1, half + 5)
     behind = _draw_body(canvas, member, far)
-    _draw_supports(canvas, member, far, units)
+    _draw_supports(canvas, member, far)
+    if chain:
+        _draw_stiffnesses(canvas, member, far, units)
     if loads is not None:
         draw_loads(canvas, member.ruler, near, loads, state, member.joints, units)
     if chain:
@@ -88,9 +90,9 @@ def member_figure(
     return Figure(canvas.render(alt), *canvas.size, alt, f"{_scale_note(member)} {note}".strip())
 
 
-def _on_ruler(project: Project, positions: FloatArray) -> _Member:
+def _on_ruler(project: Project, positions: FloatArray, height: float) -> _Member:
     upright = project.display.layout == "vertical"
-    ruler = Ruler(upright, float(positions[-1]), UPRIGHT if upright else ACROSS)
+    ruler = Ruler(upright, float(positions[-1]), height if upright else ACROSS)
     half = max(outline(s.section, t).outer for s in project.segments for t in (0.0, 1.0))
     true = ruler.extent / ruler.length
     depth = min(max(true, _LEAST_HALF / half), _MOST_HALF / half)
@@ -158,35 +160,56 @@ def _draw_axis(canvas: Canvas, member: _Member) -> None:
 
 
 def _draw_mark(canvas: Canvas, member: _Member, index: int, label: Label) -> bool:
-    """The segment's mark in a ring on the axis; False where it has no room there."""
+    """The segment's mark in a ring on the axis or close beside; False where it has no room in either."""
     width = max(13.0, text_width(label.text, _MARK) + 7)
     long = float(member.joints[index + 1] - member.joints[index])
     deep = 2 * member.half(member.project.segments[index], 0.5)
     room, height = (deep, long) if member.ruler.upright else (long, deep)
     if width + 2 > room or height < 14:
-        return False
+        return _draw_mark_beside(canvas, member, index, label, long)
     x, y = member.ruler.point(label.along, 0.0)
     canvas.pill((x, y), width, 13.0, Ink(INK, 0.7, "#FFFFFF"))
     canvas.text((x, y + 0.34 * _MARK), label.text, size=_MARK, bold=True, anchor="middle")
     return True
 
 
-def _draw_supports(canvas: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
+def _draw_mark_beside(canvas: Canvas, member: _Member, index: int, label: Label, long: float) -> bool:
+    segment, upright = member.project.segments[index], member.ruler.upright
+    half = max(member.half(segment, s) for s in (0.0, 0.5, 1.0)) + 6
+    if long < (_MARK if upright else text_width(label.text, _MARK) + 1):
+        return False
+    x, y = member.ruler.point(label.along, -half)
+    at = (x, y + 0.34 * _MARK) if upright else (x, y + 0.7 * _MARK)
+    canvas.text(at, label.text, size=_MARK, bold=True, anchor="end" if upright else "middle")
+    return True
+
+
+def _draw_supports(canvas: Canvas, member: _Member, far: Edge) -> None:
     joints = member.project.joints
     for index, out in ((0, -1), (len(joints) - 1, 1)):
         along = float(member.joints[index])
         half = member.half_at_joint(index)
         draw_end_support(canvas, member.ruler, joints[index], along, half, out)
-        _draw_end_stiffness(canvas, member, index, out, _stiffness(joints[index], units))
-    inner = [index for index in range(1, len(joints) - 1) if joints[index].support]
+    inner = _inner_supports(joints)
     for index in inner:
         half = member.half_at_joint(index)
         draw_side_support(canvas, member.ruler, joints[index], float(member.joints[index]), far, half)
     if inner:
         far.reach += 18
+
+
+def _inner_supports(joints: tuple[Joint, ...]) -> list[int]:
+    return [index for index in range(1, len(joints) - 1) if joints[index].support]
+
+
+def _draw_stiffnesses(canvas: Canvas, member: _Member, far: Edge, units: UnitSystemName) -> None:
+    """The stiffness of springs and bedding."""
+    joints = member.project.joints
+    for index, out in ((0, -1), (len(joints) - 1, 1)):
+        _draw_end_stiffness(canvas, member, index, out, _stiffness(joints[index], units))
     labels = [
         Label(float(member.joints[index]), text)
-        for index in inner
+        for index in _inner_supports(joints)
         if (text := _stiffness(joints[index], units))
     ]
     draw_lane(canvas, member.ruler, far, labels, _QUIET)

@@ -4,27 +4,21 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from app.phrases import numerical_error_sentence
-from app.phrases.checks import has_compression
-from app.phrases.notes import BEDDING, BUCKLING
+from app.findings import findings
 from app.sheet.blocks import Block, bullets, heading
+from app.sheet.readings import Readings
 from app.words import tr
 from solver.results import Results
 
 
-def note_blocks(results: Results) -> Iterator[Block]:
+def note_blocks(results: Results, say: Readings) -> Iterator[Block]:
     """The closing chapter before the sign-off."""
+    found = findings(results, say.units)
     yield heading(tr("Notes"))
-    yield bullets(list(_notes(results)))
-
-
-def _notes(results: Results) -> Iterator[str]:
-    if has_compression(results.checks):
-        yield tr(BUCKLING)
-    if results.chain.bedding.any():
-        yield tr(BEDDING)
-    checked = [index for index, state in enumerate(results.states) if state.checked]
-    yield numerical_error_sentence(float(results.solution.error_bound[checked].max()))
-    yield tr(
-        "The project file this sheet was made from is attached to this PDF; its SHA-256 is on the first page."
+    yield bullets(
+        [
+            *found.notes,
+            found.numerical_error,
+            tr("The project of this sheet is attached to this PDF; its SHA-256 stands on the first page."),
+        ]
     )

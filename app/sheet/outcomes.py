@@ -7,12 +7,13 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from app.phrases import numerical_error_sentence
+from app.findings.books import state_books
+from app.findings.records import StateBooks
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
 from app.sheet.figures import envelope_figure, state_figure
 from app.sheet.inputs import factors_text
 from app.sheet.readings import NOTHING, Readings
-from app.sheet.verdicts import status_word
+from app.sheet.verdicts import check_table, status_word
 from app.units import utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray
@@ -24,8 +25,10 @@ def outcome_blocks(results: Results, say: Readings) -> Iterator[Block]:
     """The chapter of results, one part for each checked state, then the envelope."""
     yield heading(tr("Results"))
     checked = [(index, state) for index, state in enumerate(results.states) if state.checked]
-    for index, state in checked:
+    books = state_books(results, say.units)
+    for (index, state), book in zip(checked, books, strict=True):
         yield from _state_blocks(results, index, state, say)
+        yield _balance(book)
     if len(checked) > 1:
         yield from _envelope_blocks(results, say)
 
@@ -45,7 +48,9 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
     yield picture(state_figure(results, index), caption.format(name=state.name))
     yield _segments(results, index, say)
     yield _joints(results, index, say)
-    yield _balance(results, index, say)
+    limits = [c for c in results.checks if c.segment is None and c.combination == state.name]
+    if limits:
+        yield check_table(tr("Limits"), limits, say)
 
 
 def state_title(state: State) -> str:
@@ -160,35 +165,19 @@ def _joints(results: Results, index: int, say: Readings) -> Block:
     return table(tr("Joints: displacement and reaction"), columns, rows)
 
 
-def _balance(results: Results, index: int, say: Readings) -> Block:
-    solution = results.solution
-    reactions = solution.reaction[index]
-    parts = {
-        "loads": float(solution.loads[index]),
-        "reactions": float(np.nansum(reactions)),
-        "bedding": float(solution.bedding[index]),
-        "residual": float(solution.residual[index]),
-    }
-    beside = max(_largest(reactions), *(abs(v) for v in parts.values()))
-
-    def force(name: str) -> str:
-        return say.read(parts[name], "force", beside=beside)
-
-    joined = tr("loads {loads} + reactions {reactions} + bedding {bedding} = {residual} {unit} (rounding)")
-    residual = say.read(parts["residual"], "force", digits=2)
-    words = {name: force(name) for name in ("loads", "reactions", "bedding")}
-    energies = tr("strain energy {strain}, potential energy {potential}").format(
-        strain=say.read(solution.strain_energy[index], "energy", unit=True),
-        potential=say.read(solution.potential[index], "energy", unit=True),
-    )
+def _balance(book: StateBooks) -> Block:
+    """The sum of all forces on the member along x, the energies, the numerical error."""
+    parts = [
+        tr("loads {force}").format(force=book.loads_text),
+        tr("reactions {force}").format(force=book.reactions_text),
+        *([tr("bedding {force}").format(force=book.bedding_text)] if book.bedding_text else []),
+    ]
+    energies = tr("strain energy {strain}, potential energy {potential}")
     return facts(
         [
-            (
-                tr("Equilibrium, sum along x"),
-                joined.format(**words, residual=residual, unit=say.unit("force")),
-            ),
-            (tr("Energy"), energies),
-            (tr("Numerical error"), numerical_error_sentence(float(solution.error_bound[index]))),
+            (tr("Equilibrium along x"), f"{' + '.join(parts)} = {book.residual_text}"),
+            (tr("Energy"), energies.format(strain=book.strain_text, potential=book.potential_text)),
+            (tr("Numerical error"), book.numerical_error),
         ]
     )
 

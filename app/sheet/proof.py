@@ -11,10 +11,10 @@ from collections.abc import Iterable, Iterator
 import numpy as np
 from msgspec import UnsetType
 
-from app.phrases import reason_text
-from app.sheet.blocks import Block, Value, column, formula, formulas, heading, paragraph, table
+from app.findings import findings
+from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.sheet.readings import Readings
-from app.sheet.verdicts import check_row, kind_words, quantity_of, subject
+from app.sheet.verdicts import check_table, kind_words, quantity_of, subject
 from app.units import utilisation_text
 from app.words import tr
 from solver.checks import Check
@@ -43,8 +43,8 @@ def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
         yield _worst_table(made, say)
     failing = [check for check in made if check.status == "fail"]
     if failing:
-        yield _table(tr("Every check that fails"), failing, say, strong=True)
-    yield from _not_made(results)
+        yield check_table(tr("Every check that fails"), failing, say)
+    yield from _not_made(results, say)
 
 
 def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator[Block]:
@@ -215,39 +215,14 @@ def _worst_table(made: Iterable[Check], say: Readings) -> Block:
         if other is None or (check.utilisation or 0.0) > (other.utilisation or 0.0):
             worst[_key(check)] = check
     ordered = sorted(worst.values(), key=lambda check: -(check.utilisation or 0.0))
-    return _table(tr("Largest utilisation of each segment and limit, the worst first"), ordered, say)
+    return check_table(tr("Largest utilisation of each segment and limit, the worst first"), ordered, say)
 
 
-def _table(title: str, checks: list[Check], say: Readings, *, strong: bool = False) -> Block:
-    columns = [
-        column(tr("Of"), align="left"),
-        column(tr("What"), align="left"),
-        column(tr("In"), align="left"),
-        column(tr("at x")),
-        column(tr("Value")),
-        column(tr("Limit")),
-        column(tr("Utilisation")),
-        column(tr("Verdict"), align="left"),
-    ]
-    bold = range(len(checks)) if strong else [i for i, c in enumerate(checks) if c.status == "fail"]
-    return table(title, columns, [check_row(check, say) for check in checks], strong=list(bold))
-
-
-def _not_made(results: Results) -> Iterator[Block]:
-    missing = [check for check in results.checks if check.status == "not_made"]
+def _not_made(results: Results, say: Readings) -> Iterator[Block]:
     yield heading(tr("Not checked"), 2)
+    missing = findings(results, say.units).not_made
     if not missing:
         yield paragraph(tr("Every check of stresses and limits that the input asks for was made."))
         return
-    columns = [
-        column(tr("Of"), align="left"),
-        column(tr("What"), align="left"),
-        column(tr("In"), align="left"),
-        column(tr("Why not, and what to enter"), align="left"),
-    ]
-    rows = [
-        [subject(c), kind_words(c), c.combination, reason_text(c.reason)]
-        for c in missing
-        if c.reason is not None
-    ]
-    yield table(tr("NOT CHECKED"), columns, rows)
+    yield paragraph(tr("NOT CHECKED, and so not passed:"), "caution")
+    yield bullets([f"{found.sentence}. {found.remedy}" for found in missing])

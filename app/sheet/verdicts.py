@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
+from app.sheet.blocks import Block, column, table
 from app.sheet.readings import DIGITS, NOTHING, Readings
 from app.units import Quantity, utilisation_text
 from app.words import tr
@@ -62,3 +65,19 @@ def against(value: float, limit: float, quantity: Quantity, say: Readings) -> st
         if (rounded > limit) == (abs(value) > limit):
             return say.read(value, quantity, digits=digits)
     return say.read(value, quantity, digits=17)
+
+
+def check_table(title: str, checks: Sequence[Check], say: Readings) -> Block:
+    """Checks with their numbers and verdicts; those that fail stand out, and say so in words."""
+    columns = [
+        column(tr("Of"), align="left"),
+        column(tr("What"), align="left"),
+        column(tr("In"), align="left"),
+        column(tr("at x")),
+        column(tr("Value")),
+        column(tr("Limit")),
+        column(tr("Utilisation")),
+        column(tr("Verdict"), align="left"),
+    ]
+    strong = [index for index, check in enumerate(checks) if check.status == "fail"]
+    return table(title, columns, [check_row(check, say) for check in checks], strong=strong)
