@@ -33,8 +33,11 @@ class Fonts:
         return QSizeF(max(map(metrics.horizontalAdvance, lines)), len(lines) * metrics.height())
 
     def wrapped_height(self, text: str, face: Face, width: float) -> float:
-        """The height of a text that wraps at words within a width."""
-        room = QRectF(0.0, 0.0, width, 1e4)
+        """The height of a text that wraps at words within a width.
+
+        A little less width than there is: painting hints glyphs and may wrap earlier than the measure says.
+        """
+        room = QRectF(0.0, 0.0, 0.97 * width - 2.0, 1e4)
         return self._metrics[face].boundingRect(room, Qt.TextFlag.TextWordWrap, text).height()
 
     def elided(self, text: str, face: Face, width: float) -> str:

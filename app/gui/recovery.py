@@ -1,4 +1,4 @@
-"""The recovery copy: the document with its drafts, half a minute after a change, outside the project's folder.
+"""The recovery copy: the document with its drafts, half a minute after a change, not beside the project.
 
 One copy a window, beside it a lock that a living program holds; a copy whose lock is free was left behind by
 one that ended badly, and is offered at the next start. A clean end removes both.

@@ -82,7 +82,7 @@ def sheet_layout(width: float, height: float, upright: bool, text_height: float)
 def _across(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
     left, right = 7.2 * text_height, 5.2 * text_height
     begin, end = left, max(width - right, left + 50.0)
-    drawing_height = min(max(0.36 * height, 11.0 * text_height), 26.0 * text_height)
+    drawing_height = min(max(0.40 * height, 11.0 * text_height), 26.0 * text_height)
     drawing = QRectF(0.0, 4.0, width, drawing_height)
     spans = _spans(drawing.bottom() + 6.0, height)
     strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)
@@ -93,7 +93,7 @@ def _across(width: float, height: float, readout_height: float, text_height: flo
 def _upright(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
     top, bottom = 5.0 * text_height, 4.6 * text_height
     begin, end = max(height - bottom, top + 50.0), top
-    drawing_width = min(max(0.42 * width, 20.0 * text_height), 40.0 * text_height)
+    drawing_width = min(max(0.45 * width, 20.0 * text_height), 40.0 * text_height)
     drawing = QRectF(0.0, 0.0, drawing_width, height)
     spans = _spans(drawing.right() + GAP, width - GAP, equal=True)
     strips = tuple(QRectF(QPointF(a, end), QPointF(b, begin)) for a, b in spans)

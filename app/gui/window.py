@@ -115,7 +115,8 @@ class Window(QMainWindow):
         self.down = QSplitter(Qt.Orientation.Vertical)
         self.down.addWidget(self.across)
         self.down.addWidget(self.tables)
-        self.down.setStretchFactor(0, 1)
+        self.down.setStretchFactor(0, 3)
+        self.down.setStretchFactor(1, 2)
         for splitter in (self.across, self.down):
             splitter.setChildrenCollapsible(False)
         middle = QWidget()

@@ -29,8 +29,8 @@ def draw_chain(sketch: Sketch) -> None:
         if sketch.holds(joint):
             along = sketch.along(joint)
             sketch.line((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK), width=1.6)
-    sketch.put(length_wishes(sketch), rows.lengths)
-    sketch.put(section_wishes(sketch), rows.sections)
+    sketch.put(length_wishes(sketch), rows.lengths, "high")
+    sketch.put(section_wishes(sketch), rows.sections, "low")
     for index in range(len(sketch.member.project.segments)):
         span = sketch.shown_span(index)
         if span is not None:
@@ -50,7 +50,7 @@ def length_wishes(sketch: Sketch) -> list[Wish]:
 
 
 def section_wishes(sketch: Sketch) -> list[Wish]:
-    """One text for neighbours of the same section."""
+    """One text for neighbours of the same section; upright a taper takes two lines rather than twice the room."""
     segments = sketch.member.project.segments
     wishes = []
     for _, group in groupby(range(len(segments)), key=lambda index: segments[index].section):
@@ -58,6 +58,8 @@ def section_wishes(sketch: Sketch) -> list[Wish]:
         spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
         if spans:
             text = section_label(segments[members[0]].section, sketch.member.system)
+            if sketch.place.axes.upright:
+                text = text.replace("→", "\n→")
             middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))
             wishes.append(sketch.wish(text, middle, Part("length", members[0])))
     return wishes

@@ -18,12 +18,12 @@ from app.gui.drawing.chain import (
     level_texts,
     section_wishes,
 )
-from app.gui.drawing.loads import draw_loads
+from app.gui.drawing.loads import draw_loads, lies_outside, load_wishes
 from app.gui.drawing.member import Member
 from app.gui.drawing.placing import Span, Wish
 from app.gui.drawing.shapes import Part, Picture, Text
 from app.gui.drawing.sketch import Rows, Sketch
-from app.gui.drawing.supports import draw_supports, hangs, support_of
+from app.gui.drawing.supports import draw_supports, hanging_wishes, hangs, support_of
 from app.gui.sheet_layout import Place
 from app.units import format_value
 from app.words import tr
@@ -33,8 +33,8 @@ BAND = 17.0  # distributed loads at their largest, px
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
 CHAIN = 7.0  # to either side of the dimension line
-FACTORS = (1.0, 1.5, 2.0, 2.5, 3.0, 4.0, 5.0, 6.0, 8.0)  # of each power of ten
-COLUMN = 6.5  # widest column of load labels upright, in text heights
+FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
+COLUMN = 0.34  # widest column of load labels upright, of the drawing's room
 
 
 def lay_out(member: Member, place: Place) -> Picture:
@@ -89,37 +89,48 @@ def _no_rows() -> Rows:
 
 
 def _rows(sketch: Sketch, room: float) -> Rows:
-    at = 4.0
-    height = sketch.place.fonts.measure("0", "small").height()
-    upright = sketch.place.axes.upright
-    label = min(COLUMN * height, 0.3 * room) if upright else height
-    labels = tuple((at + i * label, at + (i + 1) * label) for i in range(1 if upright else 2))
-    at = labels[-1][1] + 2.0
-    band = (at, at + (BAND if _has_distributed(sketch) else 0.0))
-    arrows = band[1] + 0.5 * ARROWS
-    first = band[1] + (ARROWS if _has_inner_forces(sketch) else 4.0)
-    foot = room - 4.0
-    sections = _text_rows(sketch, section_wishes(sketch), foot)
+    """The rows from both sides inward; the member gets what is left between them."""
+    labels = _label_rows(sketch, room)
+    top = labels[-1][1] + 2.0
+    band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
+    first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
+    sections = _text_rows(sketch, section_wishes(sketch), room - 4.0)
     chain = sections[0][0] - CHAIN
     lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN)
-    hanging = _has_hanging(sketch)
-    under_label_depth = (label if upright else height) if hanging else 0.0
-    under_label = (lengths[0][0] - under_label_depth, lengths[0][0])
-    under = under_label[0] - 0.5 * UNDER
-    last = (under_label[0] - UNDER if hanging else under_label[0]) - (10.0 if hanging else 12.0)
-    half = max(0.5 * (last - first), 4.0)
+    under_label, under = _under_rows(sketch, lengths[0][0])
+    last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
     return Rows(
         labels=tuple(reversed(labels)),
         band=band,
-        arrows=arrows,
+        arrows=band[1] + 0.5 * ARROWS,
         axis=0.5 * (first + last),
-        half=half,
+        half=max(0.5 * (last - first), 4.0),
         under=under,
         under_label=under_label,
         lengths=tuple(reversed(lengths)),
         chain=chain,
         sections=sections,
     )
+
+
+def _label_rows(sketch: Sketch, room: float) -> tuple[Span, ...]:
+    """As many rows as the labels of loads need, at most three; upright one column as wide as they are."""
+    wishes = load_wishes(sketch)
+    if not wishes:
+        return ((4.0, 4.0),)
+    depth = max(w.depth for w in wishes)
+    if sketch.place.axes.upright:
+        widest = max((w.depth for w in wishes if w.depth <= COLUMN * room), default=0.0)
+        return ((4.0, 4.0 + widest),)
+    fits = [len(sketch.placed(wishes, ((0.0, depth),) * count)) == len(wishes) for count in (1, 2)]
+    count = 1 if fits[0] else 2 if fits[1] else 3
+    return tuple((4.0 + i * depth, 4.0 + (i + 1) * depth) for i in range(count))
+
+
+def _under_rows(sketch: Sketch, foot: float) -> tuple[Span, float]:
+    """The row of labels of hanging supports, which ends at `foot`, and the line the supports hang on."""
+    depth = max((w.depth for w in hanging_wishes(sketch)), default=0.0)
+    return (foot - depth, foot), foot - depth - 0.5 * UNDER
 
 
 def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float) -> tuple[Span, ...]:
@@ -143,8 +154,7 @@ def _has_inner_forces(sketch: Sketch) -> bool:
         return False
     last = len(sketch.member.project.segments)
     forces = sketch.member.loads.joint_force[0]
-    held = [j for j in range(last + 1) if j not in (0, last) or support_of(sketch, j) is not None]
-    return any(forces[j] for j in held)
+    return any(forces[j] and not lies_outside(sketch, j) for j in range(last + 1))
 
 
 def _has_hanging(sketch: Sketch) -> bool:

@@ -5,6 +5,8 @@ Arrows show the direction, so values stand without sign, except where a load cha
 
 from __future__ import annotations
 
+import math
+from dataclasses import replace
 from itertools import groupby
 
 import numpy as np
@@ -13,7 +15,7 @@ from app.gui.drawing.placing import Wish
 from app.gui.drawing.shapes import Part
 from app.gui.drawing.sketch import Sketch
 from app.gui.drawing.supports import support_of
-from app.units import Quantity, format_value
+from app.gui.drawing.words import bedding_text, distributed_text, fit_text, signed_text, value_text, warmth_text
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
@@ -26,56 +28,54 @@ LEAST_BAND = 5.0  # height of the smallest distributed load, px
 
 def draw_loads(sketch: Sketch) -> None:
     """Everything that acts, and the bedding, which is drawn whether anything acts or not."""
+    _draw_bedding(sketch)
+    if sketch.member.loads is not None:
+        _draw_distributed(sketch, sketch.member.loads.distributed[0])
+        _draw_forces(sketch, sketch.member.loads.joint_force[0])
+    rows = sketch.rows.labels
+    for label in sketch.placed(load_wishes(sketch), rows):
+        face, ink = ("small_strong", "ink") if label.wish.part.kind == "force" else ("small", "quiet")
+        sketch.text(label.wish, label.span, rows[label.row], "high", face, ink)
+
+
+def load_wishes(sketch: Sketch) -> list[Wish]:
+    """The labels that want a place in the rows of labels; forces come first."""
     wishes = _bedding_wishes(sketch)
     loads = sketch.member.loads
-    if loads is not None:
-        wishes += _draw_distributed(sketch, loads.distributed[0])
-        wishes += _draw_forces(sketch, loads.joint_force[0])
-        wishes += _word_wishes(sketch, loads)
-    placed = sketch.placed(wishes, sketch.rows.labels)
-    for label in placed:
-        forceful = label.wish.part.kind == "force"
-        sketch.text(
-            label.wish.text,
-            label.span,
-            sketch.rows.labels[label.row],
-            label.wish.part,
-            face="small_strong" if forceful else "small",
-            ink="ink" if forceful else "quiet",
-        )
-
-
-def value_text(sketch: Sketch, value: float, quantity: Quantity, *, with_unit: bool = True) -> str:
-    """A value with needless zeros taken off."""
-    return format_value(value, quantity, sketch.member.system, strip=True, with_unit=with_unit)
-
-
-def range_text(sketch: Sketch, start: float, end: float, quantity: Quantity) -> str:
-    """ "520 → 320 kN/m", or one value where both are equal."""
-    if start == end:
-        return value_text(sketch, start, quantity)
-    first = value_text(sketch, start, quantity, with_unit=False)
-    return f"{first} → {value_text(sketch, end, quantity)}"
+    if loads is None:
+        return wishes
+    wishes += _force_wishes(sketch, loads.joint_force[0])
+    wishes += _distributed_wishes(sketch, loads.distributed[0])
+    wishes += _movement_wishes(sketch, loads.movement[0])
+    system = sketch.member.system
+    wishes += _run_wishes(sketch, [fit_text(v, system) for v in loads.lack_of_fit[0].tolist()], rank=2)
+    warm = [warmth_text(*ends, system) for ends in loads.temperature[0].tolist()]
+    return wishes + _run_wishes(sketch, warm, rank=3) + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
 # Distributed loads
 
 
-def _draw_distributed(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
+def _draw_distributed(sketch: Sketch, distributed: FloatArray) -> None:
     largest = float(np.max(np.abs(distributed)))
-    wishes = []
     for index, (start, end) in enumerate(distributed.tolist()):
         span = sketch.shown_span(index)
         if span is not None and (start or end):
             _draw_band(sketch, index, start / largest, end / largest)
-            same_way = start * end >= 0.0
-            text = range_text(sketch, *((abs(start), abs(end)) if same_way else (start, end)), "distributed")
-            part = Part("distributed", index)
             tip = tr("Distributed load on {mark}: {value}").format(
                 mark=sketch.member.project.segments[index].mark,
-                value=range_text(sketch, start, end, "distributed"),
+                value=distributed_text(start, end, sketch.member.system, signed=True),
             )
-            sketch.target(span, sketch.rows.band, part, tip)
+            sketch.target(span, sketch.rows.band, Part("distributed", index), tip)
+
+
+def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
+    wishes = []
+    for index, (start, end) in enumerate(distributed.tolist()):
+        span = sketch.shown_span(index)
+        if span is not None and (start or end):
+            text = distributed_text(start, end, sketch.member.system, signed=False)
+            part = Part("distributed", index)
             wishes.append(sketch.wish(text, 0.5 * (span[0] + span[1]), part, rank=1, slide=40.0))
     return wishes
 
@@ -114,38 +114,72 @@ def _arrow(
 # Forces at joints
 
 
-def _draw_forces(sketch: Sketch, forces: FloatArray) -> list[Wish]:
-    wishes = []
+def _draw_forces(sketch: Sketch, forces: FloatArray) -> None:
     for joint, force in enumerate(forces.tolist()):
         if force and sketch.holds(joint):
-            wishes.append(_draw_force(sketch, joint, force))
-    return wishes
+            _draw_force(sketch, joint, force)
 
 
-def _draw_force(sketch: Sketch, joint: int, force: float) -> Wish:
-    """The arrow starts at its joint, or ends there where a force presses on an end from outside."""
+def _draw_force(sketch: Sketch, joint: int, force: float) -> None:
+    part = Part("force", joint)
+    tail, tip_at = _force_span(sketch, joint, force)
+    outside = lies_outside(sketch, joint)
+    across = sketch.rows.axis if outside else sketch.rows.arrows
+    _arrow(sketch, tail, tip_at - tail, across, 2.4, HEAD + 3.0, part)
+    tip = tr("Force at joint {mark}: {value}").format(
+        mark=sketch.member.project.joints[joint].mark, value=value_text(force, "force", sketch.member.system)
+    )
+    sketch.target((tail, tip_at), (across - 12.0, across + 12.0), part, tip)
+    wish = _outside_wish(sketch, joint, force) if outside else None
+    if wish is not None:
+        span = wish.along - 0.5 * wish.extent, wish.along + 0.5 * wish.extent
+        across -= 10.0
+        sketch.text(wish, span, (across - wish.depth, across), face="small_strong", ink="ink")
+
+
+def _force_span(sketch: Sketch, joint: int, force: float) -> tuple[float, float]:
+    """Tail and tip: an arrow starts at its joint, or ends there where it presses on an end from outside."""
     direction = sketch.forward * (1.0 if force > 0 else -1.0)
     last = len(sketch.member.project.segments)
     pressing = (joint == 0 and force > 0) or (joint == last and force < 0)
-    along = sketch.along(joint)
-    gap = 2.0 * direction
+    along, gap = sketch.along(joint), 3.0 * direction
     tail = along - gap - ARROW * direction if pressing else along + gap
-    part = Part("force", joint)
-    across = _force_row(sketch, joint, last)
-    _arrow(sketch, tail, ARROW * direction, across, 2.4, HEAD + 3.0, part)
-    value = value_text(sketch, abs(force), "force")
-    tip = tr("Force at joint {mark}: {value}").format(
-        mark=sketch.member.project.joints[joint].mark, value=value_text(sketch, force, "force")
-    )
-    span = tail, tail + ARROW * direction
-    sketch.target(span, (across - 12.0, across + 12.0), part, tip)
-    return sketch.wish(value, 0.5 * (span[0] + span[1]), part, face="small_strong", slide=46.0)
+    return tail, tail + ARROW * direction
 
 
-def _force_row(sketch: Sketch, joint: int, last: int) -> float:
-    """On the axis outside a free end, else in the row of arrows."""
-    at_end = joint in (0, last)
-    return sketch.rows.axis if at_end and support_of(sketch, joint) is None else sketch.rows.arrows
+def lies_outside(sketch: Sketch, joint: int) -> bool:
+    """Whether a force lies on the axis outside the member: at a free end; else it is in the row of arrows."""
+    at_end = joint in (0, len(sketch.member.project.segments))
+    return at_end and support_of(sketch, joint) is None
+
+
+def _outside_wish(sketch: Sketch, joint: int, force: float) -> Wish | None:
+    """The label beside an arrow outside the member, None where the margin is too narrow for it."""
+    wish = _force_wish(sketch, joint, force)
+    end = sketch.along(joint)
+    outer = sketch.room[0] if abs(end - sketch.window[0]) < abs(end - sketch.window[1]) else sketch.room[1]
+    low, high = sorted((outer, end + math.copysign(2.0, outer - end)))
+    if wish.extent > high - low:
+        return None
+    half = 0.5 * wish.extent
+    return replace(wish, along=min(max(wish.along, low + half), high - half))
+
+
+def _force_wish(sketch: Sketch, joint: int, force: float) -> Wish:
+    middle = 0.5 * sum(_force_span(sketch, joint, force))
+    text = value_text(abs(force), "force", sketch.member.system)
+    return sketch.wish(text, middle, Part("force", joint), face="small_strong", slide=46.0)
+
+
+def _force_wishes(sketch: Sketch, forces: FloatArray) -> list[Wish]:
+    """Labels of forces that do not stand beside their arrow."""
+    return [
+        _force_wish(sketch, joint, force)
+        for joint, force in enumerate(forces.tolist())
+        if force
+        and sketch.holds(joint)
+        and not (lies_outside(sketch, joint) and _outside_wish(sketch, joint, force) is not None)
+    ]
 
 
 # What is said in words
@@ -153,8 +187,9 @@ def _force_row(sketch: Sketch, joint: int, last: int) -> float:
 
 def _word_wishes(sketch: Sketch, loads: Loads) -> list[Wish]:
     wishes = _movement_wishes(sketch, loads.movement[0])
-    wishes += _run_wishes(sketch, [_fit_text(sketch, v) for v in loads.lack_of_fit[0].tolist()], rank=2)
-    warm = [_warmth_text(sketch, *ends) for ends in loads.temperature[0].tolist()]
+    system = sketch.member.system
+    wishes += _run_wishes(sketch, [fit_text(v, system) for v in loads.lack_of_fit[0].tolist()], rank=2)
+    warm = [warmth_text(*ends, system) for ends in loads.temperature[0].tolist()]
     return wishes + _run_wishes(sketch, warm, rank=3) + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
@@ -162,26 +197,9 @@ def _movement_wishes(sketch: Sketch, movement: FloatArray) -> list[Wish]:
     wishes = []
     for joint, value in enumerate(movement.tolist()):
         if value and sketch.holds(joint):
-            text = tr("moved {value}").format(value=_signed(sketch, value, "displacement"))
+            text = tr("moved {value}").format(value=signed_text(value, "displacement", sketch.member.system))
             wishes.append(sketch.wish(text, sketch.along(joint), Part("note", joint), rank=1, slide=60.0))
     return wishes
-
-
-def _signed(sketch: Sketch, value: float, quantity: Quantity) -> str:
-    text = value_text(sketch, value, quantity)
-    return f"+{text}" if value > 0 else text
-
-
-def _fit_text(sketch: Sketch, value: float) -> str:
-    if not value:
-        return ""
-    amount = value_text(sketch, abs(value), "displacement")
-    words = tr("{amount} too long") if value > 0 else tr("{amount} too short")
-    return words.format(amount=amount)
-
-
-def _warmth_text(sketch: Sketch, start: float, end: float) -> str:
-    return f"ΔT {range_text(sketch, start, end, 'temperature')}" if start or end else ""
 
 
 def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
@@ -198,24 +216,25 @@ def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
 
 
 def _bedding_wishes(sketch: Sketch) -> list[Wish]:
-    """Slanted ticks along the far edge of a bedded segment, and its stiffness."""
     texts = []
+    for segment in sketch.member.project.segments:
+        end = end_of(segment.bedding, segment.bedding_end)
+        texts.append(bedding_text(segment.bedding, end, sketch.member.system))
+    return _run_wishes(sketch, texts, rank=4)
+
+
+def _draw_bedding(sketch: Sketch) -> None:
+    """Slanted ticks along the far edge of every bedded segment."""
     for index, segment in enumerate(sketch.member.project.segments):
-        ends = segment.bedding, end_of(segment.bedding, segment.bedding_end)
-        bedded = any(ends)
-        texts.append(
-            tr("bedding {value}").format(value=range_text(sketch, *ends, "bedding")) if bedded else ""
-        )
         span = sketch.shown_span(index)
-        if bedded and span is not None:
+        if span is not None and (segment.bedding or end_of(segment.bedding, segment.bedding_end)):
             edge = sketch.rows.axis + sketch.rows.half + 3.0
             sketch.hatch((span[0], span[1] - 4.0), (edge, edge), (4.0, 5.0))
-    return _run_wishes(sketch, texts, rank=4)
 
 
 def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
     if not gravity:
         return []
-    text = tr("self-weight, g {value} along x").format(value=_signed(sketch, gravity, "acceleration"))
+    text = tr("self-weight, g {value} along x").format(value=signed_text(gravity, "acceleration", sketch.member.system))
     middle = 0.5 * (sketch.window[0] + sketch.window[1])
     return [sketch.wish(text, middle, Part("note", 5), rank=5, slide=sketch.window[1] - sketch.window[0])]

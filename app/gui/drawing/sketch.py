@@ -7,6 +7,7 @@ parts (body, supports, loads, chain) draw in these coordinates and never ask whi
 from __future__ import annotations
 
 from dataclasses import dataclass, field
+from typing import Literal, TypeAlias
 
 from PySide6.QtCore import QPointF, QRectF
 
@@ -15,6 +16,10 @@ from app.gui.drawing.placing import Placed, Span, Wish, place
 from app.gui.drawing.shapes import Fill, Ink, Part, Picture, Stroke, Target, Text
 from app.gui.fonts import Face
 from app.gui.sheet_layout import Place
+
+
+Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, across
+LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
 @dataclass(frozen=True, slots=True)
@@ -116,9 +121,23 @@ class Sketch:
     def wish(
         self, text: str, along: float, part: Part, *, face: Face = "small", rank: int = 0, slide: float = 0.0
     ) -> Wish:
-        """A label that wants a place."""
+        """A label that wants a place; upright a long one takes several lines."""
+        if self.place.axes.upright:
+            text = self._in_lines(text, face)
         extent, depth = self.extents(text, face)
         return Wish(text, along, extent, depth, part, rank, slide)
+
+    def _in_lines(self, text: str, face: Face) -> str:
+        """The text with line breaks at spaces, so that it stays within the widest column."""
+        widest = LONGEST_LINE * self.place.fonts.measure("0", face).width()
+        lines = [""]
+        for word in text.split(" "):
+            longer = f"{lines[-1]} {word}".strip()
+            if lines[-1] and self.place.fonts.measure(longer, face).width() > widest:
+                lines.append(word)
+            else:
+                lines[-1] = longer
+        return "\n".join(lines)
 
     def placed(self, wishes: list[Wish], rows: tuple[Span, ...]) -> list[Placed]:
         """Places for labels in rows; those wider than a row (upright) are dropped like those without room."""
@@ -126,19 +145,21 @@ class Sketch:
         fitting = [w for w in wishes if w.depth <= widest + 0.5]
         return place(fitting, len(rows), self.room)
 
-    def put(self, wishes: list[Wish], rows: tuple[Span, ...]) -> None:
-        """Place labels in rows and write them small and quiet."""
+    def put(self, wishes: list[Wish], rows: tuple[Span, ...], toward: Toward) -> None:
+        """Place labels in rows and write them small and quiet, on the side of the row that is named."""
         for label in self.placed(wishes, rows):
-            self.text(label.wish.text, label.span, rows[label.row], label.wish.part)
+            self.text(label.wish, label.span, rows[label.row], toward)
 
     def text(
-        self, text: str, along: Span, across: Span, part: Part, *, face: Face = "small", ink: Ink = "quiet"
-    ) -> None:
-        """A text centred in a box of exactly its size, in the middle of the given spans."""
-        size = self.place.fonts.measure(text, face)
-        box = QRectF(0.0, 0.0, size.width(), size.height())
-        box.moveCenter(self.rect(along, across).center())
-        self.picture.texts.append(Text(box, text, face, ink, part))
+        self, wish: Wish, along: Span, across: Span, toward: Toward = "middle", face: Face = "small", ink: Ink = "quiet"
+    ) -> QRectF:
+        """A text in a box of exactly its size within the given spans; gives the box."""
+        spare = across[1] - across[0] - wish.depth
+        first = across[0] + {"low": 0.0, "middle": 0.5, "high": 1.0}[toward] * spare
+        box = QRectF(QPointF(), self.place.fonts.measure(wish.text, face))
+        box.moveCenter(self.rect(along, (first, first + wish.depth)).center())
+        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part))
+        return box
 
     def target(self, along: Span, across: Span, part: Part, tip: str) -> None:
         """Where a part can be pointed at."""

@@ -12,8 +12,8 @@ from app.gui.drawing.body import edge_at
 from app.gui.drawing.placing import Wish
 from app.gui.drawing.shapes import Part
 from app.gui.drawing.sketch import Sketch
+from app.gui.drawing.words import value_text
 from app.support_entry import support_text
-from app.units import format_value
 from app.words import tr
 from solver.model import AnySupport, FixedSupport, SpringSupport, StopSupport
 
@@ -36,16 +36,53 @@ def hangs(support: AnySupport | None, *, inner: bool) -> bool:
 def draw_supports(sketch: Sketch) -> None:
     """All supports inside the window, with their labels."""
     last = len(sketch.member.project.joints) - 1
-    wishes: list[Wish] = []
     for joint in range(last + 1):
         support = support_of(sketch, joint)
         if support is None or not sketch.holds(joint):
             continue
         if hangs(support, inner=0 < joint < last):
-            wishes += _draw_hanging(sketch, joint, support)
+            _draw_hanging(sketch, joint, support)
         else:
             _draw_at_end(sketch, joint, support, -1.0 if joint == 0 else 1.0)
-    sketch.put(wishes, (sketch.rows.under_label,))
+    sketch.put(hanging_wishes(sketch), (sketch.rows.under_label,), "low")
+
+
+def hanging_wishes(sketch: Sketch) -> list[Wish]:
+    """The labels of hanging springs and stops."""
+    last = len(sketch.member.project.joints) - 1
+    wishes = []
+    for joint in range(last + 1):
+        support = support_of(sketch, joint)
+        if support is not None and hangs(support, inner=0 < joint < last) and sketch.holds(joint):
+            low, high = _hanging_span(sketch, joint, support)
+            text = _hanging_text(sketch, support)
+            if text:
+                wishes.append(sketch.wish(text, 0.5 * (low + high), Part("support", joint), slide=30.0))
+    return wishes
+
+
+def _hanging_text(sketch: Sketch, support: AnySupport) -> str:
+    if isinstance(support, SpringSupport):
+        return _stiffness(sketch, support.stiffness)
+    if isinstance(support, StopSupport):
+        gap = value_text(support.clearance, "displacement", sketch.member.system)
+        return tr("gap {value}").format(value=gap)
+    return ""
+
+
+def _hanging_span(sketch: Sketch, joint: int, support: AnySupport) -> tuple[float, float]:
+    """The pixels along the axis that a hanging support takes, growing."""
+    along = sketch.along(joint)
+    if isinstance(support, FixedSupport):
+        return along - 12.0, along + 12.0
+    reach = -SPRING if isinstance(support, SpringSupport) else 16.0 * _side(support)
+    low, high = sorted((along, along + sketch.forward * reach))
+    return low, high
+
+
+def _side(support: AnySupport) -> float:
+    """+1 for a stop on the plus side, −1 on the other."""
+    return -1.0 if isinstance(support, StopSupport) and support.side == "minus" else 1.0
 
 
 def _tip(sketch: Sketch, joint: int, support: AnySupport) -> str:
@@ -74,12 +111,11 @@ def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -
 
 
 def _label_end_spring(sketch: Sketch, support: SpringSupport, along: float, part: Part) -> None:
-    text = _stiffness(sketch, support.stiffness)
-    extent, across = sketch.extents(text)
+    wish = sketch.wish(_stiffness(sketch, support.stiffness), along, part)
     low, high = sketch.room
-    along = min(max(along, low + 0.5 * extent), high - 0.5 * extent)
+    along = min(max(along, low + 0.5 * wish.extent), high - 0.5 * wish.extent)
     top = sketch.rows.axis + 15.0
-    sketch.text(text, (along, along), (top, top + across), part)
+    sketch.text(wish, (along, along), (top, top + wish.depth))
 
 
 def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:
@@ -100,45 +136,37 @@ def _zigzag(sketch: Sketch, start: float, end: float, across: float, part: Part)
 
 
 def _stiffness(sketch: Sketch, stiffness: float) -> str:
-    return format_value(stiffness, "spring", sketch.member.system, strip=True, with_unit=True)
+    return value_text(stiffness, "spring", sketch.member.system)
 
 
-def _draw_hanging(sketch: Sketch, joint: int, support: AnySupport) -> list[Wish]:
-    """Under the joint, on a stem; gives the label that wants a place below."""
+def _draw_hanging(sketch: Sketch, joint: int, support: AnySupport) -> None:
+    """Under the joint, on a stem."""
     part = Part("support", joint)
     along, under = sketch.along(joint), sketch.rows.under
     sketch.line((along, sketch.rows.axis + edge_at(sketch, joint)), (along, under), width=1.6, part=part)
-    drawer = {FixedSupport: _hang_fixed, SpringSupport: _hang_spring, StopSupport: _hang_stop}[type(support)]
-    span, text = drawer(sketch, along, support)
+    if isinstance(support, FixedSupport):
+        sketch.line((along - 12.0, under), (along + 12.0, under), width=2.0, part=part)
+        sketch.hatch((along - 12.0, along + 8.0), (under, under), (5.0, WALL))
+    elif isinstance(support, SpringSupport):
+        _hang_spring(sketch, along, part)
+    else:
+        _hang_stop(sketch, along, sketch.forward * _side(support), part)
+    span = _hanging_span(sketch, joint, support)
     sketch.target(span, (under - 9.0, sketch.rows.under_label[1]), part, _tip(sketch, joint, support))
-    return [sketch.wish(text, 0.5 * (span[0] + span[1]), part, slide=30.0)] if text else []
 
 
-def _hang_fixed(sketch: Sketch, along: float, _support: AnySupport) -> tuple[tuple[float, float], str]:
-    under = sketch.rows.under
-    sketch.line((along - 12.0, under), (along + 12.0, under), width=2.0)
-    sketch.hatch((along - 12.0, along + 8.0), (under, under), (5.0, WALL))
-    return (along - 12.0, along + 12.0), ""
-
-
-def _hang_spring(sketch: Sketch, along: float, support: AnySupport) -> tuple[tuple[float, float], str]:
-    assert isinstance(support, SpringSupport)  # noqa: S101 - chosen by its type
+def _hang_spring(sketch: Sketch, along: float, part: Part) -> None:
     under, ground = sketch.rows.under, along - sketch.forward * SPRING
-    _zigzag(sketch, along, ground, under, Part("support", 0))
-    sketch.line((ground, under - 7.0), (ground, under + 7.0), width=1.6)
+    _zigzag(sketch, along, ground, under, part)
+    sketch.line((ground, under - 7.0), (ground, under + 7.0), width=1.6, part=part)
     sketch.hatch((ground, ground), (under - 7.0, under + 4.0), (-sketch.forward * 5.0, 4.0))
-    return (min(along, ground), max(along, ground)), _stiffness(sketch, support.stiffness)
 
 
-def _hang_stop(sketch: Sketch, along: float, support: AnySupport) -> tuple[tuple[float, float], str]:
+def _hang_stop(sketch: Sketch, along: float, out: float, part: Part) -> None:
     """A plate on the joint, a gap, and the wall it can meet on its side."""
-    assert isinstance(support, StopSupport)  # noqa: S101 - chosen by its type
-    out = sketch.forward * (1.0 if support.side == "plus" else -1.0)
     under = sketch.rows.under
     nose, wall = along + out * 8.0, along + out * 16.0
-    sketch.line((along, under), (nose, under), width=1.6)
-    sketch.line((nose, under - 5.0), (nose, under + 5.0), width=2.4)
-    sketch.line((wall, under - 8.0), (wall, under + 8.0), width=1.6)
+    sketch.line((along, under), (nose, under), width=1.6, part=part)
+    sketch.line((nose, under - 5.0), (nose, under + 5.0), width=2.4, part=part)
+    sketch.line((wall, under - 8.0), (wall, under + 8.0), width=1.6, part=part)
     sketch.hatch((wall, wall), (under - 8.0, under + 4.0), (out * 5.0, 4.0))
-    gap = format_value(support.clearance, "displacement", sketch.member.system, strip=True, with_unit=True)
-    return (min(along, wall), max(along, wall)), tr("gap {value}").format(value=gap)

@@ -29,6 +29,7 @@ class FindingsPanel(QScrollArea):
         self._theme = theme_for(self.palette())
         self._findings: Findings | None = None
         self._current = True
+        self._has_problems = False
         self._rows: list[FindingRow] = []
         self._blocks: list[LinesBlock] = []
         self._make_widgets()
@@ -85,6 +86,7 @@ class FindingsPanel(QScrollArea):
         """Show findings (`current`, or of an earlier edit), and the problems that keep from solving."""
         self._findings = findings
         self._current = current
+        self._has_problems = bool(problems)
         shown = problem_rows(problems) + (rows(findings) if findings is not None else ())
         self._show_rows(shown)
         self._headline.setText(_headline(findings, problems))
@@ -143,7 +145,7 @@ class FindingsPanel(QScrollArea):
         self._body.setPalette(ground)
         self._body.setAutoFillBackground(True)
         self.viewport().setPalette(ground)
-        self._dress_labels(dressed.ink if self._current else dressed.quiet)
+        self._dress_labels(dressed.ink)
 
     def _dress_labels(self, ink: str) -> None:
         big = self.font()
@@ -152,8 +154,8 @@ class FindingsPanel(QScrollArea):
         self._headline.setFont(big)
         for label in self._labels:
             palette = QPalette(self._body.palette())
-            strong = label is self._headline or label is self._stale
-            palette.setColor(QPalette.ColorRole.WindowText, colour(ink if strong else self._theme.quiet))
+            inks = {self._headline: self._theme.ink if self._has_problems else ink, self._stale: self._theme.ink}
+            palette.setColor(QPalette.ColorRole.WindowText, colour(inks.get(label, self._theme.quiet)))
             label.setPalette(palette)
 
     # What happened

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from PySide6.QtCore import QRectF, QSize, Qt
-from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen
+from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen, QResizeEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
 
 from app.gui.findings.content import Row
@@ -25,9 +25,7 @@ class FindingRow(QAbstractButton):
         self._row: Row | None = None
         self._fonts = Fonts(self.font())
         self._lit = False
-        policy = QSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
-        policy.setHeightForWidth(True)
-        self.setSizePolicy(policy)
+        self.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
 
     @property
     def row(self) -> Row | None:
@@ -41,7 +39,7 @@ class FindingRow(QAbstractButton):
         leads = row.leads_somewhere
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
         self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
-        self.updateGeometry()
+        self._fit_height()
         self.update()
 
     def set_theme(self, theme: Theme) -> None:
@@ -52,7 +50,7 @@ class FindingRow(QAbstractButton):
     def set_fonts(self, fonts: Fonts) -> None:
         """Another font."""
         self._fonts = fonts
-        self.updateGeometry()
+        self._fit_height()
         self.update()
 
     def set_lit(self, lit: bool) -> None:
@@ -74,12 +72,8 @@ class FindingRow(QAbstractButton):
     def _height_of(self, text: str, face: Face, width: float) -> float:
         return self._fonts.wrapped_height(text, face, width) if text else 0.0
 
-    def hasHeightForWidth(self) -> bool:
-        """Sentences wrap."""
-        return True
-
-    def heightForWidth(self, width: int) -> int:
-        """As high as sentence, remedy and scale need."""
+    def needed_height(self, width: int) -> int:
+        """As high as sentence, remedy and scale need at this width."""
         if self._row is None:
             return 0
         room = self._text_rect(width).width()
@@ -89,15 +83,20 @@ class FindingRow(QAbstractButton):
             height += SCALE_HEIGHT + (SCALE_NUMBERS if self._row.band_named else 0.0)
         return max(round(height + 0.5), 24)
 
-    def sizeHint(self) -> QSize:
-        """Any width, the height that follows."""
-        return QSize(240, self.heightForWidth(max(self.width(), 240)))
+    def _fit_height(self) -> None:
+        """Set the height itself: box layouts keep heights for width that they were told before a resize."""
+        self.setFixedHeight(self.needed_height(self.width()))
 
-    def minimumSizeHint(self) -> QSize:
-        """Never lower than its content."""
-        return QSize(120, self.heightForWidth(max(self.width(), 120)))
+    def sizeHint(self) -> QSize:
+        """Any width, the height that was set."""
+        return QSize(240, self.height())
 
     # Qt's own
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """Another width wraps differently."""
+        super().resizeEvent(event)
+        self._fit_height()
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """Enter chooses, as Space does by itself."""

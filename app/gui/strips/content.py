@@ -40,12 +40,13 @@ class Trace:
 
 @dataclass(frozen=True, slots=True)
 class Limit:
-    """A limit from `first` to `last` (m), with its text."""
+    """A limit from `first` to `last` (m), with its text, also in short."""
 
     first: float
     last: float
     value: float
     text: str
+    number: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -210,7 +211,7 @@ class _Builder:
     def _limits(self, kind: Kind, columns: tuple[FloatArray, ...]) -> tuple[Limit, ...]:
         length = float(self._results.position[-1])
         if kind == "utilisation":
-            return (Limit(0.0, length, 1.0, "1"),)
+            return (Limit(0.0, length, 1.0, "1", "1"),)
         if kind != "stress" or not self._one_allowable:
             return ()
         tension, compression = self._allowables()
@@ -225,8 +226,10 @@ class _Builder:
         starts = [0, *(np.flatnonzero(np.diff(np.nan_to_num(side)) != 0) + 1), len(side)]
         for first, stop in zip(starts, starts[1:], strict=False):
             if np.isfinite(side[first]):
-                text = tr("allowable {value}").format(value=number("stress", abs(side[first]), self._system))
-                found.append(Limit(float(position[first]), float(position[stop]), float(side[first]), text))
+                short = format_value(abs(side[first]), "stress", self._system, strip=True)
+                text = tr("allowable {value}").format(value=short)
+                span = float(position[first]), float(position[stop])
+                found.append(Limit(*span, float(side[first]), text, short))
         return found
 
     def _extremes(self, kind: Kind, columns: tuple[FloatArray, ...], least: float) -> tuple[Extreme, ...]:

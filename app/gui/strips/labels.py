@@ -5,8 +5,9 @@ Plain layout: a content, its rectangle and a measure of text give labels with th
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
+from itertools import product
 from typing import TypeAlias
 
 import numpy as np
@@ -15,7 +16,7 @@ from PySide6.QtCore import QPointF, QRectF, QSizeF
 from app.gui.fonts import Face
 from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Axes
-from app.gui.strips.content import COMPRESSION, TENSION, Extreme, StripContent, Trace
+from app.gui.strips.content import COMPRESSION, TENSION, Extreme, Limit, StripContent, Trace
 from app.gui.strips.paths import Scale, runs
 from app.words import tr
 
@@ -41,7 +42,31 @@ def strip_labels(
     scale = Scale.of(content, rect, axes)
     placer = _Placer(content, rect, ruler, axes, measure, scale)
     title = placer.title()
-    return (*title, *placer.extremes(title), *placer.limits(), *placer.unchecked(), *placer.signs())
+    standing = [*title, *placer.extremes(title), *placer.limits(), *placer.unchecked()]
+    return (*standing, *(sign for sign in placer.signs() if not _meets(sign.rect, standing)))
+
+
+def _meets(box: QRectF, labels: Sequence[Label]) -> bool:
+    """Whether a box lies on any of the labels."""
+    return any(label.rect.intersects(box) for label in labels)
+
+
+def spread(wanted: list[float], sizes: list[float], first: float, last: float) -> list[float]:
+    """Places in growing order, as near to the wanted ones as they can be without overlap in first…last.
+
+    Fewer than were wanted where there is not room for all.
+    """
+    while wanted and sum(sizes) > last - first + 0.5:
+        wanted, sizes = wanted[:-1], sizes[:-1]
+    places, at = [], first
+    for want, size in zip(wanted, sizes, strict=True):
+        places.append(max(want, at))
+        at = places[-1] + size
+    at = last
+    for index in range(len(places) - 1, -1, -1):
+        places[index] = min(places[index], at - sizes[index])
+        at = places[index]
+    return places
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,60 +98,69 @@ class _Placer:
         return place(extremes, title)
 
     def _extremes_across(self, extremes: list[Extreme], title: list[Label]) -> list[Label]:
-        labels: list[Label] = []
-        first = self.rect.top()
-        for extreme in extremes:
-            size = self.measure(extreme.text, "small")
-            right = self.rect.left() - EDGE
-            top = max(self.scale.pixel(extreme.value) - 0.5 * size.height(), first)
-            top = min(top, self.rect.bottom() - size.height())
-            box = QRectF(QPointF(right - size.width(), top), size)
-            for label in title:
-                if label.rect.intersects(box):
-                    box.moveTop(label.rect.bottom())
-            if box.top() >= first - 0.5 and box.bottom() <= self.rect.bottom() + 0.5:
-                labels.append(Label(box, extreme.text, "small", "quiet"))
-                first = box.bottom()
-        return labels
+        sizes = [self.measure(e.text, "small") for e in extremes]
+        wanted = [self.scale.pixel(e.value) - 0.5 * s.height() for e, s in zip(extremes, sizes, strict=True)]
+        right = self.rect.left() - EDGE
+        widest = max((s.width() for s in sizes), default=0.0)
+        beside = right - widest > title[-1].rect.right() + 2.0
+        first = self.rect.top() if beside else title[0].rect.bottom()
+        tops = spread(wanted, [s.height() for s in sizes], first, self.rect.bottom())
+        return [
+            Label(QRectF(QPointF(right - size.width(), top), size), extreme.text, "small", "quiet")
+            for extreme, size, top in zip(extremes, sizes, tops, strict=False)
+        ]
 
     def _extremes_upright(self, extremes: list[Extreme], title: list[Label]) -> list[Label]:
-        labels: list[Label] = []
-        first = self.rect.left()
-        for extreme in extremes:
-            size = self.measure(extreme.text, "small")
-            left = self.scale.pixel(extreme.value) - 0.5 * size.width()
-            left = min(max(left, first), self.rect.right() - size.width())
-            box = QRectF(QPointF(left, title[0].rect.bottom()), size)
-            if box.left() >= first - 0.5:
-                labels.append(Label(box, extreme.text, "small", "quiet"))
-                first = box.right() + EDGE
-        return labels
+        sizes = [self.measure(e.text, "small") for e in extremes]
+        wanted = [self.scale.pixel(e.value) - 0.5 * s.width() for e, s in zip(extremes, sizes, strict=True)]
+        room = [s.width() + EDGE for s in sizes]
+        lefts = spread(wanted, room, self.rect.left(), self.rect.right() + EDGE)
+        return [
+            Label(QRectF(QPointF(left, title[0].rect.bottom()), size), extreme.text, "small", "quiet")
+            for extreme, size, left in zip(extremes, sizes, lefts, strict=False)
+        ]
 
     def limits(self) -> list[Label]:
-        """Each allowable at the end of its line where there is room; those off the strip at its edge."""
-        labels: list[Label] = []
+        """Each allowable along its line, in short where there is little room; those off the strip at its edge."""
         drawn = [(limit, False) for limit in self.content.limits if self.content.kind == "stress"]
+        labels: list[Label] = []
         for limit, off in drawn + [(limit, True) for limit in self.content.beyond]:
-            size = self.measure(limit.text, "small")
-            span = sorted((self._shown(limit.first), self._shown(limit.last)))
-            box = self._limit_box(limit.value, span[1], size, off=off)
-            along = self.axes.along_of(box)
-            fits = along[0] >= span[0] and self.rect.contains(box)
-            if fits and not any(other.rect.intersects(box) for other in labels):
-                labels.append(Label(box, limit.text, "small", "quiet"))
+            boxes = [box for box in self._limit_boxes(limit, off=off) if not _meets(box.rect, labels)]
+            clear = [box for box in boxes if not self._covers_curve(box.rect)]
+            labels += (clear or boxes)[:1]
         return labels
 
-    def _limit_box(self, value: float, end: float, size: QSizeF, *, off: bool) -> QRectF:
-        """Beside the line, on the side of 0, at the far end of the span."""
-        inward = 1.0 if self.scale.pixel(0.0) > self.scale.pixel(value) else -1.0
-        low, high = self.axes.across_of(self.rect)
-        line = (low if inward > 0 else high) if off else self.scale.pixel(value)
-        room = size.width() if self.axes.upright else size.height()
-        across = line + 2.0 if inward > 0 else line - 2.0 - room
-        if self.axes.upright:
-            begin = min(self._shown(self.ruler.length), self._shown(0.0))
-            return QRectF(QPointF(across, max(begin, end - size.height() - 2.0)), size)
-        return QRectF(QPointF(end - size.width() - 4.0, across), size)
+    def _limit_boxes(self, limit: Limit, *, off: bool) -> Iterator[Label]:
+        """Where the label could stand: at either end, on either side of the line, long or short."""
+        low, high = sorted((self._shown(limit.first), self._shown(limit.last)))
+        line = self.scale.pixel(limit.value)
+        inward = 1.0 if self.scale.pixel(0.0) > line else -1.0
+        if off:
+            edges = self.axes.across_of(self.rect)
+            line = edges[0] if inward > 0 else edges[1]
+        for text in (limit.text, limit.number):
+            size = self.measure(text, "small")
+            extent, depth = (size.width(), size.height())[:: -1 if self.axes.upright else 1]
+            for side, first in product((inward, -inward), (high - extent - 4.0, low + 4.0)):
+                top = line + 2.0 if side > 0 else line - 2.0 - depth
+                box = self.axes.rect((first, first + extent), (top, top + depth))
+                if first >= low and self.rect.contains(box):
+                    yield Label(box, text, "small", "quiet")
+
+    def _covers_curve(self, box: QRectF) -> bool:
+        """Whether a box lies on a curve or on the fill between a curve and 0."""
+        along, across = self.axes.along_of(box), self.axes.across_of(box)
+        zero = self.scale.pixel(0.0)
+        for trace in self.content.traces:
+            pixels = self.ruler.pixel(trace.x)
+            inside = (pixels >= along[0]) & (pixels <= along[1])
+            order = np.argsort(pixels, kind="stable")
+            values = self.scale.pixels(trace.value)
+            ends = np.interp(along, pixels[order], values[order])
+            reached = np.concatenate([values[inside], ends, [zero]])
+            if np.nanmin(reached) < across[1] and np.nanmax(reached) > across[0]:
+                return True
+        return False
 
     def _shown(self, x: float) -> float:
         """The pixel of a position, kept within the strip."""

@@ -21,7 +21,7 @@ from app.gui.tables.column import Adding, Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import case_place, needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
-from app.section_entry import parse_section, section_text
+from app.section_entry import parse_section, section_label, section_text
 from app.support_entry import parse_support, support_entry, support_text
 from app.units import Quantity, entry_text, format_value, utilisation_text
 from app.words import tr
@@ -98,10 +98,8 @@ def _area_coefficients(row: SegmentRow) -> tuple[float, float]:
 
 
 def _put_section(project: Project, index: int, text: str, sight: Sight) -> Change:
-    section = parse_section(text, sight.system)
-    old = project.segments[index].section
-    if isinstance(section, AreaSection) and isinstance(old, AreaSection):
-        section = _with_second_moments(section, old)
+    """The old section settles what bare numbers are, and keeps second moments that no text shows."""
+    section = parse_section(text, sight.system, project.segments[index].section)
     return Change(edits.set_value(project, ("segments", index, "section"), section))
 
 
@@ -284,7 +282,7 @@ COLUMNS = (
     Column(
         "section",
         "Section",
-        in_segments(lambda row, s: section_text(row.segment.section, s.system), ""),
+        in_segments(lambda row, s: section_label(row.segment.section, s.system), ""),
         in_segments(lambda row, s: section_text(row.segment.section, s.system), None),
         _put_section,
         quantity="size",

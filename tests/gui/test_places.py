@@ -1,0 +1,50 @@
+"""Drafts find their cells again when rows come, go and change."""
+
+import pytest
+
+from app import edits
+from app.gui.places import follow
+from solver.model import FixedSupport
+from tests.members import Part, case, member, round_bar
+
+BAR = round_bar(0.04)
+
+
+@pytest.fixture
+def project():
+    parts = [Part(1.0, BAR), Part(2.0, BAR), Part(3.0, BAR)]
+    return member(parts, {0: FixedSupport()}, [case("Dead"), case("Live")])
+
+
+def test_a_cell_behind_an_inserted_row_moves_down(project):
+    grown = edits.insert_segment(project, 1)
+    assert follow(("segments", 0, "length"), project, grown) == ("segments", 0, "length")
+    assert follow(("segments", 2, "length"), project, grown) == ("segments", 3, "length")
+
+
+def test_a_cell_of_a_deleted_row_is_gone(project):
+    shrunk = edits.delete_segments(project, (1,))
+    assert follow(("segments", 1, "length"), project, shrunk) is None
+    assert follow(("segments", 2, "length"), project, shrunk) == ("segments", 1, "length")
+
+
+def test_a_cell_of_a_changed_row_stays(project):
+    changed = edits.set_value(project, ("segments", 1, "length"), 9.0)
+    assert follow(("segments", 1, "section"), project, changed) == ("segments", 1, "section")
+
+
+def test_the_case_at_the_end_of_a_place_is_followed_at_the_root(project):
+    place = ("segments", 2, "heat", "load_cases", 1)
+    fewer = edits.remove_case(project, "Dead")
+    assert follow(place, project, fewer) == ("segments", 2, "heat", "load_cases", 0)
+    assert follow(("segments", 2, "heat", "load_cases", 0), project, fewer) is None
+
+
+def test_the_row_that_adds_another_stays_last(project):
+    grown = edits.insert_segment(project, 0)
+    assert follow(("segments", 3, "mark"), project, grown) == ("segments", 4, "mark")
+
+
+def test_reversing_takes_the_cell_of_an_untouched_joint_along(project):
+    turned = edits.reverse_member(project)
+    assert follow(("joints", 0, "mark"), project, turned) == ("joints", 3, "mark")
