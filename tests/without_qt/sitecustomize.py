@@ -12,7 +12,7 @@ BLOCKED = frozenset({"PySide6", "shiboken6", "pyqtgraph"})
 class NoQt(MetaPathFinder):
     """Finds nothing and refuses the blocked packages."""
 
-    def find_spec(self, name: str, path: object = None, target: object = None) -> ModuleSpec | None:  # noqa: ARG002
+    def find_spec(self, name: str, path: object = None, target: object = None) -> ModuleSpec | None:
         if name.partition(".")[0] in BLOCKED:
             raise ModuleNotFoundError(f"No module named {name!r} (blocked by tests/without_qt)", name=name)
         return None
