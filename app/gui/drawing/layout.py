@@ -32,6 +32,7 @@ from solver.sections import outline
 BAND = 17.0  # distributed loads at their largest, px
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
+BESIDE = 6.0  # between labels of hanging supports and lengths
 CHAIN = 7.0  # to either side of the dimension line
 FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
 COLUMN = 0.34  # widest column of load labels upright, of the drawing's room
@@ -130,6 +131,7 @@ def _label_rows(sketch: Sketch, room: float) -> tuple[Span, ...]:
 def _under_rows(sketch: Sketch, foot: float) -> tuple[Span, float]:
     """The row of labels of hanging supports, which ends at `foot`, and the line the supports hang on."""
     depth = max((w.depth for w in hanging_wishes(sketch)), default=0.0)
+    foot -= BESIDE if depth else 0.0
     return (foot - depth, foot), foot - depth - 0.5 * UNDER
 
 

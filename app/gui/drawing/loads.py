@@ -15,7 +15,14 @@ from app.gui.drawing.placing import Wish
 from app.gui.drawing.shapes import Part
 from app.gui.drawing.sketch import Sketch
 from app.gui.drawing.supports import support_of
-from app.gui.drawing.words import bedding_text, distributed_text, fit_text, signed_text, value_text, warmth_text
+from app.gui.drawing.words import (
+    bedding_text,
+    distributed_text,
+    fit_text,
+    signed_text,
+    value_text,
+    warmth_text,
+)
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
@@ -76,7 +83,9 @@ def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
         if span is not None and (start or end):
             text = distributed_text(start, end, sketch.member.system, signed=False)
             part = Part("distributed", index)
-            wishes.append(sketch.wish(text, 0.5 * (span[0] + span[1]), part, rank=1, slide=40.0))
+            wishes.append(
+                sketch.wish(text, 0.5 * (span[0] + span[1]), part, rank=1, slide=0.5 * (span[1] - span[0]))
+            )
     return wishes
 
 
@@ -168,7 +177,8 @@ def _outside_wish(sketch: Sketch, joint: int, force: float) -> Wish | None:
 def _force_wish(sketch: Sketch, joint: int, force: float) -> Wish:
     middle = 0.5 * sum(_force_span(sketch, joint, force))
     text = value_text(abs(force), "force", sketch.member.system)
-    return sketch.wish(text, middle, Part("force", joint), face="small_strong", slide=46.0)
+    wish = sketch.wish(text, middle, Part("force", joint), face="small_strong")
+    return replace(wish, slide=0.5 * wish.extent + 6.0)
 
 
 def _force_wishes(sketch: Sketch, forces: FloatArray) -> list[Wish]:
@@ -235,6 +245,8 @@ def _draw_bedding(sketch: Sketch) -> None:
 def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
     if not gravity:
         return []
-    text = tr("self-weight, g {value} along x").format(value=signed_text(gravity, "acceleration", sketch.member.system))
+    text = tr("self-weight, g {value} along x").format(
+        value=signed_text(gravity, "acceleration", sketch.member.system)
+    )
     middle = 0.5 * (sketch.window[0] + sketch.window[1])
     return [sketch.wish(text, middle, Part("note", 5), rank=5, slide=sketch.window[1] - sketch.window[0])]

@@ -151,7 +151,13 @@ class Sketch:
             self.text(label.wish, label.span, rows[label.row], toward)
 
     def text(
-        self, wish: Wish, along: Span, across: Span, toward: Toward = "middle", face: Face = "small", ink: Ink = "quiet"
+        self,
+        wish: Wish,
+        along: Span,
+        across: Span,
+        toward: Toward = "middle",
+        face: Face = "small",
+        ink: Ink = "quiet",
     ) -> QRectF:
         """A text in a box of exactly its size within the given spans; gives the box."""
         spare = across[1] - across[0] - wish.depth

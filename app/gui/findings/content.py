@@ -53,9 +53,7 @@ class Block:
 
 def rows(findings: Findings) -> tuple[Row, ...]:
     """Checks, the worst first, then what was not checked, then what the calculation does not say."""
-    checked = sorted(
-        [*_segment_rows(findings), *map(_limit_row, findings.limits)], key=lambda pair: -pair[0]
-    )
+    checked = sorted([*_segment_rows(findings), *map(_limit_row, findings.limits)], key=lambda pair: -pair[0])
     not_made = [_not_made_row(item) for item in findings.not_made]
     notes = [Row("note", "!", text, text) for text in findings.notes]
     return (*(row for _, row in checked), *not_made, *notes)

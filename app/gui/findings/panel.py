@@ -154,7 +154,10 @@ class FindingsPanel(QScrollArea):
         self._headline.setFont(big)
         for label in self._labels:
             palette = QPalette(self._body.palette())
-            inks = {self._headline: self._theme.ink if self._has_problems else ink, self._stale: self._theme.ink}
+            inks = {
+                self._headline: self._theme.ink if self._has_problems else ink,
+                self._stale: self._theme.ink,
+            }
             palette.setColor(QPalette.ColorRole.WindowText, colour(inks.get(label, self._theme.quiet)))
             label.setPalette(palette)
 

@@ -60,7 +60,9 @@ def paint_scale(painter: QPainter, room: QRectF, row: Row, theme: Theme, fonts: 
     _paint_line(painter, scale, band, middle, theme)
     _paint_bar(painter, scale, row, middle, theme)
     if row.band_named:
-        _paint_numbers(painter, scale, band, QRectF(room.left(), room.bottom() - 3.0, room.width(), 14.0), theme, fonts)
+        _paint_numbers(
+            painter, scale, band, QRectF(room.left(), room.bottom() - 3.0, room.width(), 14.0), theme, fonts
+        )
 
 
 def _paint_line(painter: QPainter, scale: StressScale, band: Band, middle: float, theme: Theme) -> None:

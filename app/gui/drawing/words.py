@@ -1,0 +1,54 @@
+"""The short texts of the drawing, the same on labels and in tooltips; empty where there is nothing to say."""
+
+from __future__ import annotations
+
+from app.units import Quantity, format_value
+from app.words import tr
+from solver.model import UnitSystemName
+
+
+def value_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """A value with its unit, needless zeros taken off."""
+    return format_value(value, quantity, system, strip=True, with_unit=True)
+
+
+def signed_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """A value that shows its sign also where it is positive."""
+    text = value_text(value, quantity, system)
+    return f"+{text}" if value > 0 else text
+
+
+def range_text(start: float, end: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """ "520 → 320 kN/m", or one value where both are equal."""
+    if start == end:
+        return value_text(start, quantity, system)
+    return f"{format_value(start, quantity, system, strip=True)} → {value_text(end, quantity, system)}"
+
+
+def distributed_text(start: float, end: float, system: UnitSystemName, *, signed: bool) -> str:
+    """A distributed load; beside its arrows without sign, where it keeps its direction."""
+    if not (start or end):
+        return ""
+    if not signed and start * end >= 0.0:
+        start, end = abs(start), abs(end)
+    return range_text(start, end, "distributed", system)
+
+
+def warmth_text(start: float, end: float, system: UnitSystemName) -> str:
+    """A temperature rise."""
+    return f"ΔT {range_text(start, end, 'temperature', system)}" if start or end else ""
+
+
+def fit_text(value: float, system: UnitSystemName) -> str:
+    """A lack of fit in words, which say its sign."""
+    if not value:
+        return ""
+    words = tr("{amount} too long") if value > 0 else tr("{amount} too short")
+    return words.format(amount=value_text(abs(value), "displacement", system))
+
+
+def bedding_text(start: float, end: float, system: UnitSystemName) -> str:
+    """A bedding's stiffness."""
+    if not (start or end):
+        return ""
+    return tr("bedding {value}").format(value=range_text(start, end, "bedding", system))
