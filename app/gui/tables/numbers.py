@@ -31,5 +31,5 @@ def pair_entry(start: float, end: float | UnsetType, quantity: Quantity, system:
 
 def pair_text(start: float, end: float | UnsetType, quantity: Quantity, system: UnitSystemName) -> str:
     """Two ends for reading."""
-    texts = [format_value(value, quantity, system) for value in (start, end_of(start, end))]
+    texts = [format_value(value, quantity, system, strip=True) for value in (start, end_of(start, end))]
     return texts[0] if texts[0] == texts[1] else "→".join(texts)

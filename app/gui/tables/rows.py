@@ -72,24 +72,25 @@ class RowsModel(QAbstractTableModel):
         at, grown = changed_span([c.key for c in old], [c.key for c in new])
         if grown > 0:
             self.beginInsertColumns(NONE, at, at + grown - 1)
-            self._columns = new
+            self._columns = old[:at] + new[at : at + grown] + old[at:]
             self.endInsertColumns()
         elif grown < 0:
             self.beginRemoveColumns(NONE, at, at - grown - 1)
-            self._columns = new
+            self._columns = old[:at] + old[at - grown :]
             self.endRemoveColumns()
         self._columns = new
         self.headerDataChanged.emit(Qt.Orientation.Horizontal, 0, len(new) - 1)
 
     def _sync_rows(self, new: tuple[object, ...]) -> None:
-        at, grown = changed_span(self._rows, new)
+        old = self._rows
+        at, grown = changed_span(old, new)
         if grown > 0:
             self.beginInsertRows(NONE, at, at + grown - 1)
-            self._rows = new
+            self._rows = old[:at] + new[at : at + grown] + old[at:]
             self.endInsertRows()
         elif grown < 0:
             self.beginRemoveRows(NONE, at, at - grown - 1)
-            self._rows = new
+            self._rows = old[:at] + old[at - grown :]
             self.endRemoveRows()
         self._rows = new
 

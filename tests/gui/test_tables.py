@@ -1,0 +1,460 @@
+"""The tables under the hand: keys, drafts, previews, blocks of cells, and the signals they send to Qt."""
+
+import pytest
+from hypothesis import HealthCheck, given, settings
+from hypothesis import strategies as st
+from PySide6.QtCore import QItemSelectionModel, Qt
+from PySide6.QtGui import QAccessible, QGuiApplication
+from PySide6.QtTest import QAbstractItemModelTester, QTest
+from PySide6.QtWidgets import QLineEdit, QVBoxLayout, QWidget
+
+from app import edits
+from app.gui.document import Document
+from app.gui.tables.column import Figures, Sight
+from app.gui.tables.model import ERROR_ROLE, TableModel
+from app.gui.tables.pane import TABS, TablesPane
+from app.gui.theme import LIGHT
+from app.gui.view import Selection, View
+from solver.model import AreaSection, Combination, FixedSupport, RoundSection, SegmentLoad, SpringSupport
+from tests.gui.hand import begin, cell, editor, enter, go_to, text_at
+from tests.members import Part, case, member, round_bar
+
+KEY = Qt.Key
+
+
+def shaft():
+    bar = round_bar(0.04)
+    loads = [SegmentLoad("B", 1000.0), SegmentLoad("C", 1.0), SegmentLoad("C", 2.0)]
+    project = member(
+        [Part(0.5, bar), Part(1.0, bar), Part(0.25, round_bar(0.04, 0.03))],
+        {0: FixedSupport()},
+        [case("Dead", on_segments=loads), case("Hot")],
+        [Combination("Working", {"Dead": 1.0})],
+    )
+    return edits.set_value(project, ("display", "units"), "mm-kN-MPa")
+
+
+@pytest.fixture
+def document(qapp):
+    return Document(shaft())
+
+
+@pytest.fixture
+def view(qapp):
+    return View()
+
+
+@pytest.fixture
+def pane(qtbot, document, view):
+    made = TablesPane(document, view, LIGHT)
+    qtbot.addWidget(made)
+    made.resize(1200, 260)
+    made.show()
+    with qtbot.waitActive(made):
+        made.activateWindow()
+    made.views["segments"].setFocus()
+    return made
+
+
+@pytest.fixture
+def table(pane):
+    return pane.views["segments"]
+
+
+def lengths(document):
+    return [segment.length for segment in document.project.segments]
+
+
+# Keys
+
+
+def test_typing_replaces_enter_commits_and_moves_down(table, document):
+    enter(table, 1, "length", "600")
+    assert lengths(document) == [0.6, 1.0, 0.25]
+    assert table.currentIndex() == cell(table, 2, "length")
+    assert document.undo_name == "Length of A"
+
+
+def test_shift_enter_moves_up_and_enter_on_a_closed_cell_moves_down(table):
+    go_to(table, 2, "length")
+    QTest.keyClick(begin(table, "700"), KEY.Key_Return, Qt.KeyboardModifier.ShiftModifier)
+    assert table.currentIndex() == cell(table, 1, "length")
+    QTest.keyClick(table, KEY.Key_Return)
+    assert table.currentIndex() == cell(table, 2, "length")
+
+
+def test_tab_commits_and_opens_the_next_cell(table, document):
+    go_to(table, 1, "length")
+    QTest.keyClick(begin(table, "600"), KEY.Key_Tab)
+    assert lengths(document)[0] == 0.6
+    assert table.currentIndex() == cell(table, 1, "section")
+
+
+def test_f2_edits_with_all_digits_and_escape_restores(table, document):
+    go_to(table, 1, "length")
+    QTest.keyClick(table, KEY.Key_F2)
+    line = editor(table)
+    assert line.text() == "500"
+    QTest.keyClicks(line, "9")
+    assert document.preview is not None
+    QTest.keyClick(line, KEY.Key_Escape)
+    assert document.preview is None
+    assert document.undo_name is None
+    assert lengths(document) == [0.5, 1.0, 0.25]
+
+
+@pytest.mark.parametrize(("key", "row", "column"), [(KEY.Key_Tab, 5, 5), (KEY.Key_Backtab, 0, 0)])
+def test_tab_leaves_the_table_at_its_ends(qtbot, document, view, key, row, column):
+    window = QWidget()
+    before, pane, behind = QLineEdit(), TablesPane(document, view, LIGHT), QLineEdit()
+    rows = QVBoxLayout(window)
+    for widget in (before, pane, behind):
+        rows.addWidget(widget)
+    qtbot.addWidget(window)
+    window.show()
+    with qtbot.waitActive(window):
+        window.activateWindow()
+    table = pane.views["segments"]
+    table.setFocus()
+    model = table.table_model
+    table.setCurrentIndex(model.index(min(row, model.rowCount() - 1), column))
+    for _ in range(8):  # a few keys lead out, whatever controls stand between
+        if not table.hasFocus():
+            break
+        QTest.keyClick(table, key)
+    assert not table.hasFocus()
+
+
+def test_delete_clears_what_may_be_empty_as_one_step(table, document):
+    for key in ("load_start", "length"):
+        table.selectionModel().select(cell(table, 2, key), QItemSelectionModel.SelectionFlag.Select)
+    QTest.keyClick(table, KEY.Key_Delete)
+    assert not [load for load in document.project.load_cases[0].segment_loads if load.segment == "B"]
+    assert lengths(document) == [0.5, 1.0, 0.25]
+    document.undo()
+    assert document.project.load_cases[0].segment_loads[0].load_start == 1000.0
+
+
+# What cells take in
+
+
+def test_units_in_an_entry_and_two_ends_in_a_cell(table, document):
+    enter(table, 1, "length", "1/2 m")
+    enter(table, 1, "heat", "10 -> 20")
+    enter(table, 2, "bedding", "2->3")
+    load = document.project.load_cases[0].segment_loads[-1]
+    assert (load.segment, load.temperature_start, load.temperature_end) == ("A", 10.0, 20.0)
+    assert text_at(table, 1, "heat") == "10→20"
+    bedded = document.project.segments[1]
+    assert (bedded.bedding, bedded.bedding_end) == (2e6, 3e6)
+
+
+def test_supports_are_typed_as_text_and_the_start_row_holds_the_first_joints(table, document):
+    enter(table, 3, "support", "spring 600 kN/mm")
+    enter(table, 0, "support", "free")
+    assert document.project.joints[3].support == SpringSupport(stiffness=6e8)
+    assert not document.project.joints[0].support
+    assert text_at(table, 3, "support") == "3: spring 600 kN/mm"
+    assert text_at(table, 0, "support") == "0: free"
+
+
+def test_a_typed_area_makes_the_section_known_by_its_area_alone_and_says_so(table, document, qtbot):
+    with qtbot.waitSignal(table.table_model.noted, check_params_cb=lambda note: "A" in note):
+        enter(table, 1, "area", "1200")
+    assert document.project.segments[0].section == AreaSection(area=0.0012)
+
+
+def test_looking_at_the_area_changes_nothing(table, document):
+    go_to(table, 1, "area")
+    QTest.keyClick(table, KEY.Key_F2)
+    QTest.keyClick(editor(table), KEY.Key_Return)
+    assert document.undo_name is None
+    assert isinstance(document.project.segments[0].section, RoundSection)
+
+
+def test_a_shared_materials_modulus_becomes_the_rows_own(qtbot, qapp, view):
+    project = edits.set_value(shaft(), ("segments", 1, "material"), "of A")
+    document = Document(project)
+    pane = TablesPane(document, view, LIGHT)
+    qtbot.addWidget(pane)
+    table = pane.views["segments"]
+    model = table.table_model
+    with qtbot.waitSignal(model.noted, check_params_cb=lambda note: "B" in note and "of A B" in note):
+        model.setData(cell(table, 2, "modulus"), "70000")
+    moduli = {material.name: material.modulus for material in document.project.materials}
+    assert document.project.segments[1].material == "of A B"
+    assert (moduli["of A B"], moduli["of A"]) == (7e10, 2.1e11)
+
+
+def test_a_cell_of_several_records_shows_their_sum_and_is_not_for_typing(table):
+    index = cell(table, 3, "load_start")
+    assert index.data() == "0.003"
+    assert not index.flags() & Qt.ItemFlag.ItemIsEditable
+
+
+def test_renaming_a_mark_takes_its_loads_along(table, document):
+    enter(table, 2, "mark", "Neck")
+    assert document.project.load_cases[0].segment_loads[0].segment == "Neck"
+
+
+def test_typing_a_length_into_the_last_row_adds_a_segment(table, document):
+    go_to(table, 4, "mark")
+    assert "type a length" in table.currentIndex().data()
+    QTest.keyClick(begin(table, "800"), KEY.Key_Return)
+    assert lengths(document) == [0.5, 1.0, 0.25, 0.8]
+    assert document.project.segments[3].section == RoundSection(diameter=0.03)
+    assert table.table_model.is_adding(table.currentIndex().row()), "the next length can be typed at once"
+    document.undo()
+    assert len(lengths(document)) == 3
+
+
+def test_the_last_row_keeps_what_it_cannot_take_in(table, document):
+    go_to(table, 4, "mark")
+    QTest.keyClick(begin(table, "-5"), KEY.Key_Return)
+    assert text_at(table, 4, "mark") == "-5"
+    assert len(document.project.segments) == 3
+    QTest.keyClick(table, KEY.Key_Up)
+    go_to(table, 4, "mark")
+    QTest.keyClick(table, KEY.Key_F2)
+    QTest.keyClick(editor(table), KEY.Key_A, Qt.KeyboardModifier.ControlModifier)
+    QTest.keyClick(editor(table), KEY.Key_Backspace)
+    QTest.keyClick(editor(table), KEY.Key_Return)
+    assert not document.snapshot.drafts
+
+
+# Drafts and previews
+
+
+def test_an_invalid_cell_stays_as_typed_with_its_reason(table, document):
+    enter(table, 1, "length", "abc")
+    index = cell(table, 1, "length")
+    assert index.data() == "abc"
+    assert index.data(ERROR_ROLE)
+    assert index.data(Qt.ItemDataRole.ToolTipRole) == index.data(ERROR_ROLE)
+    assert index.data(ERROR_ROLE) in index.data(Qt.ItemDataRole.AccessibleTextRole)
+    assert lengths(document) == [0.5, 1.0, 0.25]
+    enter(table, 1, "length", "600")
+    assert not document.snapshot.drafts
+    assert lengths(document)[0] == 0.6
+    document.undo()
+    assert cell(table, 1, "length").data() == "abc"
+
+
+def test_a_negative_length_and_an_unknown_material_are_refused_in_words(table, document):
+    enter(table, 1, "length", "-3")
+    enter(table, 1, "material", "of Q")
+    reasons = [draft.reason for draft in document.snapshot.drafts.values()]
+    assert "greater than 0" in reasons[0]
+    assert "of Q" in reasons[1]
+
+
+def test_each_keystroke_previews_the_model_it_makes(table, document):
+    go_to(table, 1, "length")
+    line = begin(table, "7")
+    assert document.shown_project.segments[0].length == 0.007
+    QTest.keyClicks(line, "0")
+    assert document.shown_project.segments[0].length == 0.07
+    QTest.keyClicks(line, "x")
+    assert document.preview.project is None
+    assert document.preview.reason
+    assert lengths(document)[0] == 0.5, "nothing is committed yet"
+    QTest.keyClick(line, KEY.Key_Backspace)
+    QTest.keyClick(line, KEY.Key_Return)
+    assert lengths(document)[0] == 0.07
+    document.undo()
+    assert lengths(document)[0] == 0.5, "all keystrokes are one step"
+
+
+def test_an_open_editor_keeps_its_text_when_results_or_units_arrive(table, document):
+    go_to(table, 1, "length")
+    line = begin(table, "77")
+    table.table_model.set_figures(Figures())
+    table.table_model.set_sight(Sight("in-lbf-psi", 0))
+    assert line.text() == "77"
+    assert line.isVisible()
+
+
+def test_results_touch_only_their_own_columns(table, qtbot):
+    model, touched = table.table_model, []
+    model.dataChanged.connect(
+        lambda first, last: touched.append((first.column(), last.column(), first.row()))
+    )
+    model.set_figures(Figures())
+    result = next(i for i, c in enumerate(model.columns) if c.key == "utilisation")
+    last = model.rowCount() - 1
+    assert touched
+    assert all(span[:2] == (result, result) or span[2] == last for span in touched)
+
+
+def test_save_takes_in_an_open_editor(table, pane, document):
+    go_to(table, 1, "length")
+    begin(table, "600")
+    pane.commit_open_editor()
+    assert lengths(document)[0] == 0.6
+    assert not [line for line in table.findChildren(QLineEdit) if line.isVisible()]
+
+
+# Blocks
+
+
+def test_a_block_is_pasted_as_one_step_and_rows_past_the_end_are_added(table, document):
+    QGuiApplication.clipboard().setText("A\t100\t⌀20\nB\t200\t⌀30\nC\t300\t⌀40\nD\t400\t⌀50\n")
+    go_to(table, 1, "mark")
+    table.paste()
+    assert lengths(document) == [0.1, 0.2, 0.3, 0.4]
+    document.undo()
+    assert lengths(document) == [0.5, 1.0, 0.25]
+
+
+def test_what_is_copied_can_be_pasted_back(table, document):
+    before = document.project
+    table.selectAll()
+    table.copy()
+    table.paste()
+    assert document.project == before
+
+
+def test_a_bad_cell_in_a_paste_becomes_a_draft_and_the_rest_is_taken_in(table, document):
+    QGuiApplication.clipboard().setText("100\nlong\n300")
+    go_to(table, 1, "length")
+    table.paste()
+    assert lengths(document) == [0.1, 1.0, 0.3]
+    assert [draft.text for draft in document.snapshot.drafts.values()] == ["long"]
+
+
+def test_fill_down_copies_the_first_selected_row(table, document):
+    for row in (1, 2, 3):
+        table.selectionModel().select(cell(table, row, "length"), QItemSelectionModel.SelectionFlag.Select)
+    table.fill_down()
+    assert lengths(document) == [0.5, 0.5, 0.5]
+    assert document.undo_name == "Fill down"
+
+
+# The other tables and the pickers
+
+
+def test_the_edited_case_is_picked_by_name_and_shared_by_all_tables(pane, document, qtbot):
+    pane.case_picker.setFocus()
+    QTest.keyClick(pane.case_picker, KEY.Key_Down)
+    assert pane.sight.case == 1
+    table = pane.views["segments"]
+    assert text_at(table, 2, "load_start") == "0"
+    enter(table, 2, "load_start", "5")
+    assert document.project.load_cases[1].segment_loads == (SegmentLoad("B", 5000.0),)
+    document.commit(edits.remove_case(document.project, "Dead"), "Delete load cases")
+    assert pane.case_picker.currentText() == "Hot"
+    assert pane.sight.case == 0
+
+
+@pytest.mark.parametrize(
+    ("key", "column", "text", "place", "value"),
+    [
+        ("joints", "force", "25", ("load_cases", 0, "joint_loads", 0, "force"), 25e3),
+        ("joints", "movement", "0.5", ("load_cases", 0, "joint_loads", 0, "movement"), 0.5e-3),
+        ("load_cases", "gravity", "-9.8", ("load_cases", 0, "gravity"), -9.8),
+        ("segment_loads", "lack_of_fit", "0.1", ("load_cases", 0, "segment_loads", 0, "lack_of_fit"), 1e-4),
+        ("combinations", "factor of Hot", "1.5", ("combinations", 0, "factors", "Hot"), 1.5),
+        ("combinations", "allowable_factor", "1.2", ("combinations", 0, "allowable_factor"), 1.2),
+        ("materials", "allowable_tension", "160", ("materials", 0, "allowable_tension"), 160e6),
+    ],
+)
+def test_each_table_edits_its_records(pane, document, key, column, text, place, value):
+    view = pane.views[key]
+    view.table_model.setData(cell(view, 0, column), text)
+    assert edits.value_at(document.project, place) == pytest.approx(value, rel=1e-15)
+
+
+@pytest.mark.parametrize(
+    ("key", "text"),
+    [
+        ("load_cases", "Cold"),
+        ("segment_loads", "A"),
+        ("joint_loads", "1"),
+        ("combinations", "Rare"),
+        ("materials", "Bronze"),
+        ("limits displacement", "3"),
+        ("limits relative", "0 -> 3"),
+        ("limits reaction", "0"),
+    ],
+)
+def test_each_tables_last_row_adds_and_its_records_can_be_deleted(pane, document, key, text):
+    view = pane.views[key]
+    before = view.table_model.rowCount()
+    view.table_model.setData(view.table_model.index(before - 1, 0), text)
+    assert view.table_model.rowCount() == before + 1
+    assert not document.snapshot.drafts
+    table = view.table_model.table
+    document.commit(table.delete(document.project, (before - 1,), view.table_model.sight), "Delete")
+    assert view.table_model.rowCount() == before
+
+
+def test_a_new_case_gets_a_column_in_the_combinations(pane, document):
+    combinations = pane.views["combinations"].table_model
+    before = combinations.columnCount()
+    document.commit(edits.add_case(document.project, "Cold"), "Add load case")
+    assert combinations.columnCount() == before + 1
+    assert combinations.heading(before - 1)[0] == "Cold"
+
+
+def test_choosing_a_row_selects_the_segment_and_the_other_way_round(pane, table, view):
+    go_to(table, 2, "length")
+    assert view.selection == Selection(segments=frozenset({1}))
+    view.set_selection(Selection(segments=frozenset({2})))
+    assert table.table_model._lit == frozenset({2})
+
+
+def test_tables_headers_and_editors_have_names(pane, table):
+    go_to(table, 1, "length")
+    line = begin(table, "7")
+    assert line.accessibleName() == "Length (mm), row 2"
+    assert QAccessible.queryAccessibleInterface(table).text(QAccessible.Text.Name) == "Segments"
+    header = table.table_model.headerData(1, Qt.Orientation.Horizontal, Qt.ItemDataRole.AccessibleTextRole)
+    assert header == "Length (mm)"
+    QTest.keyClick(line, KEY.Key_Escape)
+
+
+# What Qt is told
+
+ALL_TABLES = [table for _title, tables in TABS for table, _share in tables]
+STEPS = st.lists(
+    st.tuples(
+        st.sampled_from(["insert", "delete", "length", "reverse", "undo", "redo", "case", "uncase"]),
+        st.integers(0, 7),
+    ),
+    max_size=12,
+)
+
+
+def take_step(document, step, at):
+    project = document.project
+    index = at % len(project.segments)
+    edit = {
+        "insert": lambda: edits.insert_segment(project, index),
+        "delete": lambda: edits.delete_segments(project, (index,)) if len(project.segments) > 1 else project,
+        "length": lambda: edits.set_value(project, ("segments", index, "length"), 1.0 + at),
+        "reverse": lambda: edits.reverse_member(project),
+        "case": lambda: edits.add_case(project, "Case"),
+        "uncase": lambda: (
+            edits.remove_case(project, project.load_cases[-1].name) if project.load_cases else project
+        ),
+    }
+    if step in edit:
+        document.commit(edit[step](), step)
+    else:
+        getattr(document, step)()
+
+
+@settings(suppress_health_check=[HealthCheck.function_scoped_fixture])
+@given(steps=STEPS)
+def test_qt_is_told_the_truth_about_rows_and_columns(qapp, steps):
+    document = Document(shaft())
+    sight = Sight("mm-kN-MPa", 0)
+    models = [TableModel(table, document, sight) for table in ALL_TABLES]
+    mode = QAbstractItemModelTester.FailureReportingMode.Warning  # a warning of Qt fails the test
+    testers = [QAbstractItemModelTester(model, mode) for model in models]
+    for step, at in steps:
+        take_step(document, step, at)
+        for model in models:
+            records = model.table.rows(document.project, model.sight)
+            assert model.rowCount() == len(records) + (model.table.adding is not None)
+    del testers
