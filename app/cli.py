@@ -11,15 +11,15 @@ import io
 import os
 import sys
 import textwrap
+import traceback
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 from app import commands
+from app.exit_codes import BROKEN_PIPE, INTERRUPTED, OUR_FAULT
 from app.version import PROGRAM
 from app.words import tr
 
-BROKEN_PIPE = 141  # what a shell reports of a program that SIGPIPE ended
-INTERRUPTED = 130  # likewise of Ctrl+C
 HELP_WIDTH = 90
 
 
@@ -35,6 +35,12 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return BROKEN_PIPE
     except KeyboardInterrupt:
         return INTERRUPTED
+    except OSError as error:  # what concerns one file was told there; here the output itself fails
+        hush()
+        return commands.refuse(tr("The output cannot be written: {reason}").format(reason=error.strerror))
+    except Exception:  # never Python's own exit code 1, which means that a check fails
+        traceback.print_exc()
+        return OUR_FAULT
     return code
 
 

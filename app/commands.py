@@ -15,6 +15,7 @@ from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
+from app.exit_codes import FAIL, INCOMPLETE, PASS, UNUSABLE, worst
 from app.words import tr
 
 if TYPE_CHECKING:
@@ -48,23 +49,22 @@ def open_windows(options: Namespace) -> int:
 
 def refuse(sentence: str) -> int:
     """Say on standard error what stands in the way; gives the exit code."""
-    from app.outcome import UNUSABLE
-
     sys.stderr.write(sentence + "\n")
     return UNUSABLE
 
 
 def run_check(options: Namespace) -> int:
     """Check every file and print what came out; gives the exit code of the results file's contract."""
-    from app.outcome import outcome, worst
+    from app.outcome import outcome
 
-    codes = []
-    for number, file in enumerate(options.files):
-        if number and not options.json:
-            sys.stdout.write("\n")
+    codes, printed = [], False
+    for file in options.files:
         result = outcome(file, check_json if options.json else check_text)
+        if printed and result.out and not options.json:
+            sys.stdout.write("\n")
         tell(result)
         codes.append(result.code)
+        printed = printed or bool(result.out)
     return worst(codes)
 
 
@@ -95,8 +95,6 @@ def solved(file: str) -> tuple[Project, Results]:
 
 def verdict_code(results: Results) -> int:
     """The exit code of a verdict."""
-    from app.outcome import FAIL, INCOMPLETE, PASS
-
     return {"pass": PASS, "fail": FAIL, "incomplete": INCOMPLETE}[results.verdict]
 
 
@@ -121,7 +119,7 @@ def check_text(file: str) -> Outcome:
 
 def run_sheet(options: Namespace) -> int:
     """Write a calc sheet for every file; 0 where all were written, whatever their verdict."""
-    from app.outcome import outcome, worst
+    from app.outcome import outcome
     from app.sheet_paths import UnusableTarget, sheet_paths
 
     try:
@@ -139,7 +137,7 @@ def run_sheet(options: Namespace) -> int:
 def write_sheet(target: Path, file: str) -> Outcome:
     """Write one calc sheet and tell its verdict."""
     from app.atomic import write_bytes
-    from app.outcome import PASS, Outcome, os_sentence, unwritten
+    from app.outcome import Outcome, os_sentence, unwritten
     from app.phrases import verdict_line
     from app.sheet import build_sheet
 
@@ -150,7 +148,7 @@ def write_sheet(target: Path, file: str) -> Outcome:
         write_bytes(target, data)
     except OSError as error:
         return unwritten(str(target), os_sentence(error))
-    return Outcome(PASS, f"{target}: {verdict_line(results)}\n")
+    return Outcome(PASS, shown(f"{target}: {verdict_line(results)}\n"))
 
 
 def run_schema(options: Namespace) -> int:  # noqa: ARG001 - every command takes its options
@@ -188,7 +186,7 @@ def sample_list() -> str:
 
 def copy_new(source: Path, target: Path) -> int:
     """Copy a file to where there is none yet."""
-    from app.outcome import PASS, os_sentence
+    from app.outcome import os_sentence
 
     try:
         with target.open("xb") as file:

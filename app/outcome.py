@@ -9,19 +9,12 @@ from __future__ import annotations
 import traceback
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
-from typing import Final
 
+from app.exit_codes import OUR_FAULT, UNUSABLE
 from app.phrases import error_sentences
 from app.project_file import ProjectFileError
 from app.words import tr
 from solver.errors import InputError
-
-PASS: Final = 0
-FAIL: Final = 1
-UNUSABLE: Final = 2
-INCOMPLETE: Final = 3
-OUR_FAULT: Final = 4
-WORST_FIRST: Final = (OUR_FAULT, UNUSABLE, FAIL, INCOMPLETE, PASS)
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,12 +24,6 @@ class Outcome:
     code: int
     out: str = ""
     err: str = ""
-
-
-def worst(codes: Iterable[int]) -> int:
-    """The exit code of a run over several files."""
-    present = set(codes) or {PASS}
-    return next(code for code in WORST_FIRST if code in present)
 
 
 def outcome(file: str, work: Callable[[str], Outcome]) -> Outcome:
@@ -81,4 +68,6 @@ def os_sentence(error: OSError) -> str:
         PermissionError: tr("the system does not permit it: {name}"),
     }
     words = sentences.get(type(error))
-    return words.format(name=error.filename) if words else str(error)
+    if words is None:
+        return ": ".join(str(part) for part in (error.strerror, error.filename) if part)
+    return words.format(name=error.filename)

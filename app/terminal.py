@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Callable, Iterator, Sequence
+from pathlib import Path
 
 from app.columns import table
 from app.findings import Findings, StateBooks, findings
@@ -28,7 +29,7 @@ def report(project: Project, results: Results, file: str) -> str:
     system = project.display.unit_system
     found = findings(results, system)
     blocks = [
-        f"{project.title or file}\n",
+        heading(project, file),
         verdict(results, found, system),
         *utilisations(results),
         *limits(results),
@@ -36,6 +37,12 @@ def report(project: Project, results: Results, file: str) -> str:
         remarks(found),
     ]
     return "\n".join(blocks)
+
+
+def heading(project: Project, file: str) -> str:
+    """Which member this is, and from which file."""
+    name = Path(file).name
+    return f"{project.title} ({name})\n" if project.title else f"{name}\n"
 
 
 def verdict(results: Results, found: Findings, system: UnitSystemName) -> str:

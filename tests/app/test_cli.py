@@ -2,17 +2,19 @@
 
 from __future__ import annotations
 
+import errno
 import json
 import os
 import subprocess
 import sys
 from collections.abc import Callable
 from pathlib import Path
+from types import ModuleType
 
 import pytest
 
-from app import cli, commands
-from app.outcome import WORST_FIRST, worst
+from app import cli, commands, qt_libraries
+from app.exit_codes import BROKEN_PIPE, WORST_FIRST, worst
 from app.samples import sample_path
 
 ROOT = Path(__file__).resolve().parents[2]
@@ -202,6 +204,60 @@ def test_words_of_a_file_do_not_steer_the_terminal(
     assert "red \ufffd[31m" in out
 
 
+def test_several_tables_name_their_files_and_keep_apart(
+    edited: Callable[..., str], capsys: pytest.CaptureFixture[str]
+) -> None:
+    cli.main(["check", edited(with_two_faults), PASSING, FAILING])
+    out = capsys.readouterr().out
+    assert out.startswith("Boat hoist, worm shaft (hoist_shaft.barwright.json)\n")
+    assert "\n\nSlip gate, tie rod (tie_rod.barwright.json)\n" in out
+    assert not out.endswith("\n\n")
+
+
+def test_a_fault_beyond_the_files_is_4_and_never_the_1_of_a_check_that_fails(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    def broken(options: object) -> int:
+        raise ZeroDivisionError("planted")
+
+    monkeypatch.setattr(commands, "run_schema", broken)
+    assert cli.main(["schema"]) == 4
+    assert "ZeroDivisionError: planted" in capsys.readouterr().err
+
+
+def test_an_output_that_cannot_be_written_is_a_sentence(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    def full(options: object) -> int:
+        raise OSError(errno.ENOSPC, "No space left on device")
+
+    monkeypatch.setattr(commands, "run_schema", full)
+    monkeypatch.setattr(cli, "hush", lambda: None)
+    assert cli.main(["schema"]) == 2
+    assert capsys.readouterr().err == "The output cannot be written: No space left on device\n"
+
+
+def test_several_files_open_a_window_each(monkeypatch: pytest.MonkeyPatch) -> None:
+    opened: list[object] = []
+    door = ModuleType("app.gui.main")
+    door.run = lambda path: opened.append(path) or 0  # type: ignore[attr-defined]
+    monkeypatch.setitem(sys.modules, "app.gui.main", door)
+    monkeypatch.setattr(subprocess, "Popen", lambda command: opened.append(command[-1]))
+    monkeypatch.setattr(qt_libraries, "missing_packages", lambda table: ())
+    monkeypatch.setenv("QT_QPA_PLATFORM", "offscreen")
+    assert cli.main(["a.barwright.json", "b.barwright.json"]) == 0
+    assert opened == ["b.barwright.json", Path("a.barwright.json")]
+
+
+def test_a_window_without_the_libraries_of_qt_names_them(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    monkeypatch.setattr(qt_libraries, "missing_packages", lambda table: ("libegl1",))
+    monkeypatch.setenv("QT_QPA_PLATFORM", "offscreen")
+    assert cli.main([]) == 2
+    assert "apt install libegl1" in capsys.readouterr().err
+
+
 def run(*arguments: str, **environment: str) -> subprocess.CompletedProcess[bytes]:
     return subprocess.run(
         [sys.executable, "-m", "app", *arguments],
@@ -226,7 +282,7 @@ def test_a_reader_who_leaves_is_no_fault() -> None:
         "from app.cli import main; sys.exit(main(['check', sys.argv[1], sys.argv[1]]))"
     )
     ran = subprocess.run([sys.executable, "-c", code, PASSING], cwd=ROOT, capture_output=True, check=False)
-    assert ran.returncode == cli.BROKEN_PIPE
+    assert ran.returncode == BROKEN_PIPE
     assert ran.stderr == b""
 
 
