@@ -146,6 +146,12 @@ def test_movements_are_the_largest_of_the_checked_states() -> None:
     assert result.largest_movement.joint == 1
 
 
+def test_a_movement_back_counts_by_its_size() -> None:
+    loads = [case(name, on_joints=[JointLoad(joint="1", force=f)]) for name, f in (("a", 1e3), ("b", -21e3))]
+    (_, tip) = found(member([Part(1.0, area(1e-3))], {0: FixedSupport()}, loads)).movements
+    assert (tip.text, tip.state) == ("−0.1000 mm", "b")
+
+
 def test_nothing_to_check_is_no_pass() -> None:
     part = Part(1.0, area(1e-3))
     result = found(member([part], {0: SpringSupport(stiffness=1e7)}))
