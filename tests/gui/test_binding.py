@@ -1,7 +1,7 @@
 """Qt's Python binding keeps None alive.
 
-PySide6 6.12.0 on Python 3.11 loses one reference to None in nearly every call that returns it, and aborts after
-some hundred repaints; pyproject.toml therefore pins 6.11 there.
+PySide6 6.12.0 on Python 3.11 loses one reference to None in nearly every call that returns it, and aborts
+after some hundred repaints; pyproject.toml therefore pins 6.11 there.
 """
 
 import sys
