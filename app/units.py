@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
-from functools import lru_cache
+from functools import cache, lru_cache
 from typing import Final, Literal, TypeAlias, get_args, overload
 
 from app.numerals import fixed, reading, shortest_decimal
@@ -141,13 +141,19 @@ def symbol(quantity: Quantity, system: UnitSystemName) -> str:
     return unit(quantity, system).symbol
 
 
+@cache
+def _per_si(quantity: Quantity, system: UnitSystemName) -> float:
+    """Display units per SI unit, rounded once."""
+    return float(1 / unit(quantity, system).factor)
+
+
 @overload
 def to_display(value: float, quantity: Quantity, system: UnitSystemName) -> float: ...
 @overload
 def to_display(value: FloatArray, quantity: Quantity, system: UnitSystemName) -> FloatArray: ...
 def to_display(value: float | FloatArray, quantity: Quantity, system: UnitSystemName) -> float | FloatArray:
     """SI to display units, for drawing and reading; the last digit may be off by one."""
-    return value * float(1 / unit(quantity, system).factor)
+    return value * _per_si(quantity, system)
 
 
 @overload
