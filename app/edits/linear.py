@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import math
 from fractions import Fraction
+from itertools import chain
 from typing import Final, TypeVar
 
 from msgspec import UNSET, Struct, UnsetType, structs
@@ -53,11 +54,25 @@ def sum_of(first: float, second: float) -> float:
     return rounded(exact(first) + exact(second))
 
 
-def rest_of(whole: float, part: float) -> float:
-    """What `sum_of` adds to the part to give back the whole: the decimal difference or a neighbour of it."""
-    plain = rounded(exact(whole) - exact(part))
-    near = (plain, math.nextafter(plain, math.inf), math.nextafter(plain, -math.inf))
-    return next((rest for rest in near if sum_of(part, rest) == whole), plain)
+def parted(whole: float, part: float) -> tuple[float, float]:
+    """The part and the rest, in decimals, such that `sum_of` makes the very same whole of them again.
+
+    Where the digits are too many for that, the rest gives way in its last digit, and failing that the part.
+    """
+    rests = tuple(_around(_difference(whole, part)))
+    as_asked = ((part, rest) for rest in rests)
+    shifted = ((near, rest) for rest in rests for near in _around(_difference(whole, rest)))
+    fitting = (pair for pair in chain(as_asked, shifted) if sum_of(*pair) == whole)
+    return next(fitting, (part, rests[0]))
+
+
+def _difference(whole: float, part: float) -> float:
+    return rounded(exact(whole) - exact(part))
+
+
+def _around(value: float) -> tuple[float, float, float]:
+    """The value and the doubles next to it."""
+    return value, math.nextafter(value, math.inf), math.nextafter(value, -math.inf)
 
 
 def cut(record: _R, at: Fraction) -> tuple[_R, _R]:

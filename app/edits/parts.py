@@ -13,7 +13,7 @@ from itertools import count, pairwise, zip_longest
 from msgspec import UNSET, structs
 
 from app.edits.checking import EditError, checked, refused
-from app.edits.linear import cut, exact, rest_of, rounded, sum_of, united
+from app.edits.linear import cut, exact, parted, rounded, sum_of, united
 from app.edits.member import fresh_joint, fresh_segment_mark
 from app.edits.records import expanded, with_cases
 from app.edits.renaming import LIMIT_JOINTS
@@ -42,9 +42,9 @@ def split_segment(project: Project, index: int, at: float) -> Project:
 def _segment_parts(whole: Segment, at: float, fraction: Fraction, mark: str) -> tuple[Segment, Segment]:
     first, second = cut(whole, fraction)
     first_section, second_section = cut(whole.section, fraction)
-    rest = rest_of(whole.length, at)
+    length, rest = parted(whole.length, at)
     return (
-        structs.replace(first, length=at, section=first_section),
+        structs.replace(first, length=length, section=first_section),
         structs.replace(second, mark=mark, length=rest, section=second_section),
     )
 
@@ -61,11 +61,8 @@ def _load_parts(load: SegmentLoad, mark: str, fraction: Fraction) -> tuple[Segme
     second = structs.replace(second, segment=mark)
     if is_absent(load.lack_of_fit):
         return first, second
-    share = rounded(exact(load.lack_of_fit) * fraction)
-    return (
-        structs.replace(first, lack_of_fit=share),
-        structs.replace(second, lack_of_fit=rest_of(load.lack_of_fit, share)),
-    )
+    share, rest = parted(load.lack_of_fit, rounded(exact(load.lack_of_fit) * fraction))
+    return structs.replace(first, lack_of_fit=share), structs.replace(second, lack_of_fit=rest)
 
 
 def join_segments(project: Project, first: int, last: int) -> Project:
