@@ -39,7 +39,7 @@ class Ruler:
     def sheet(self, x: float) -> float: ...
     @overload
     def sheet(self, x: FloatArray) -> FloatArray: ...
-    def sheet(self, x):  # noqa: ANN001, ANN201 - typed by the overloads
+    def sheet(self, x):
         """Sheet coordinate of a position, monotone; any shape."""
         return x
 
@@ -51,7 +51,7 @@ class Ruler:
     def pixel(self, x: float) -> float: ...
     @overload
     def pixel(self, x: FloatArray) -> FloatArray: ...
-    def pixel(self, x):  # noqa: ANN001, ANN201 - typed by the overloads
+    def pixel(self, x):
         """Pixel of a position (m); any shape; may lie outside `begin`…`end`."""
         return self.begin + (self.sheet(x) - self.first) * self.scale
 

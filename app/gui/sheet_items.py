@@ -8,10 +8,10 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 import pyqtgraph as pg
+from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent, MouseDragEvent
 from PySide6.QtCore import QPointF, QRectF, Qt, Signal
 from PySide6.QtGui import QPainter, QPen
 from PySide6.QtWidgets import QGraphicsSceneWheelEvent, QStyleOptionGraphicsItem, QWidget
-from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent, MouseDragEvent
 
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
@@ -98,7 +98,7 @@ class Painted(pg.GraphicsObject):
         """The place."""
         return self._rect
 
-    def shape(self):  # noqa: ANN201 - QPainterPath
+    def shape(self):
         """Empty, so that the mouse goes through."""
         return pg.QtGui.QPainterPath()
 

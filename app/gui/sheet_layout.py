@@ -1,7 +1,7 @@
 """Where the parts of the sheet lie, across or upright: plain geometry, testable without a window.
 
-Across, the drawing lies on top and the strips under it; upright, the drawing stands left and the strips beside
-it. Both share the pixels `begin`…`end` along the member's axis.
+Across, the drawing lies on top and the strips under it; upright, the drawing stands left and the strips
+beside it. Both share the pixels `begin`…`end` along the member's axis.
 """
 
 from __future__ import annotations

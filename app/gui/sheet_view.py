@@ -115,7 +115,7 @@ class SheetView(pg.GraphicsView):
         return self._notice.text
 
     def show_results(self, project: Project, results: Results | None, current: bool) -> None:
-        """Show the project, and results of it (`current`) or of an earlier edit; None where there are none."""
+        """Show the project, and results of it (`current`) or of an earlier edit, or none."""
         fresh = results is not self._results
         self._project, self._results = project, results
         self._current = current and results is not None
@@ -310,7 +310,7 @@ class SheetView(pg.GraphicsView):
         action()
         event.accept()
 
-    def _key_action(self, event: QKeyEvent):  # noqa: ANN202 - a callable or None
+    def _key_action(self, event: QKeyEvent):
         forward, back = (
             (Qt.Key.Key_Up, Qt.Key.Key_Down) if self._upright else (Qt.Key.Key_Right, Qt.Key.Key_Left)
         )

@@ -1,8 +1,8 @@
 """The one table of colours, light and dark, and the choice between them by the palette of the system.
 
 After Okabe and Ito, darkened where contrast asks for it; a test computes every contrast. Fills are opaque
-mixtures with the paper: on a raster they paint several times faster than translucent ones. What is out of date
-is drawn with the same theme after `greyed`, so that nothing needs a second way of painting.
+mixtures with the paper: on a raster they paint several times faster than translucent ones. What is out of
+date is drawn with the same theme after `greyed`, so that nothing needs a second way of painting.
 """
 
 from __future__ import annotations

@@ -5,7 +5,6 @@ from __future__ import annotations
 from app.gui.drawing.placing import place
 from app.gui.drawing.shapes import Circle, Part, Text
 from app.gui.drawing.sketch import Sketch
-from app.gui.drawing.tips import joint_tip, segment_tip
 from solver.model import AreaSection, Segment, TubeSection
 from solver.sections import outline
 
@@ -51,9 +50,9 @@ def _draw_segment(sketch: Sketch, index: int) -> None:
     sketch.line(*upper, *lower, width=1.4, fill=fill, closed=True, dash=dash, part=part, clip=True)
     if isinstance(segment.section, TubeSection):
         _draw_bore(sketch, segment, start, end)
-    thick = max(max(h for _, h in halves), 12.0)
+    thick = max(*(h for _, h in halves), 12.0)
     span = sketch.shown_span(index) or (start, end)
-    sketch.target(span, (axis - thick, axis + thick), part, segment_tip(sketch.member, index))
+    sketch.target(span, (axis - thick, axis + thick), part)
 
 
 def _draw_bore(sketch: Sketch, segment: Segment, start: float, end: float) -> None:
@@ -102,10 +101,8 @@ def _aim_at_joints(sketch: Sketch) -> None:
     for index in range(len(joints)):
         if not sketch.holds(index):
             continue
-        beside = [s for s in (index - 1, index) if 0 <= s < len(joints) - 1]
-        shortest = min(abs(sketch.along(s + 1) - sketch.along(s)) for s in beside)
-        reach = min(JOINT_REACH, shortest / 4.0)
+        reach = min(JOINT_REACH, sketch.shortest_beside(index) / 4.0)
         along, thick = sketch.along(index), max(edge_at(sketch, index), 12.0)
         span = along - reach, along + reach
         across = sketch.rows.axis - thick, sketch.rows.axis + thick
-        sketch.target(span, across, Part("joint", index), joint_tip(sketch.member, index))
+        sketch.target(span, across, Part("joint", index))

@@ -12,8 +12,7 @@ from PySide6.QtCore import QPointF, QRectF
 from app.gui.drawing.placing import Wish, place
 from app.gui.drawing.shapes import Part, Stroke, Text
 from app.gui.drawing.sketch import Sketch
-from app.gui.drawing.tips import segment_tip
-from app.section_entry import section_label
+from app.gui.drawing.words import section_text
 from app.units import format_value
 
 TICK = 4.0
@@ -35,7 +34,7 @@ def draw_chain(sketch: Sketch) -> None:
         span = sketch.shown_span(index)
         if span is not None:
             across = rows.lengths[0][0], rows.sections[-1][1]
-            sketch.target(span, across, Part("length", index), segment_tip(sketch.member, index))
+            sketch.target(span, across, Part("length", index))
 
 
 def length_wishes(sketch: Sketch) -> list[Wish]:
@@ -50,14 +49,14 @@ def length_wishes(sketch: Sketch) -> list[Wish]:
 
 
 def section_wishes(sketch: Sketch) -> list[Wish]:
-    """One text for neighbours of the same section; upright a taper takes two lines rather than twice the room."""
+    """One text for neighbours of the same section; upright a taper takes two lines."""
     segments = sketch.member.project.segments
     wishes = []
     for _, group in groupby(range(len(segments)), key=lambda index: segments[index].section):
         members = list(group)
         spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
         if spans:
-            text = section_label(segments[members[0]].section, sketch.member.system)
+            text = section_text(segments[members[0]].section, sketch.member.system)
             if sketch.place.axes.upright:
                 text = text.replace("→", "\n→")
             middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))

@@ -32,6 +32,7 @@ from solver.sections import outline
 BAND = 17.0  # distributed loads at their largest, px
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
+LEAST_HALF = 13.0  # of the thickest section, before labels give way, px
 BESIDE = 6.0  # between labels of hanging supports and lengths
 CHAIN = 7.0  # to either side of the dimension line
 FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
@@ -90,8 +91,17 @@ def _no_rows() -> Rows:
 
 
 def _rows(sketch: Sketch, room: float) -> Rows:
+    """As many rows of labels as leave the member enough room."""
+    for most in (3, 2):
+        rows = _rows_with(sketch, room, most)
+        if rows.half >= LEAST_HALF:
+            return rows
+    return _rows_with(sketch, room, 1)
+
+
+def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
     """The rows from both sides inward; the member gets what is left between them."""
-    labels = _label_rows(sketch, room)
+    labels = _label_rows(sketch, room, most)
     top = labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
@@ -114,8 +124,8 @@ def _rows(sketch: Sketch, room: float) -> Rows:
     )
 
 
-def _label_rows(sketch: Sketch, room: float) -> tuple[Span, ...]:
-    """As many rows as the labels of loads need, at most three; upright one column as wide as they are."""
+def _label_rows(sketch: Sketch, room: float, most: int) -> tuple[Span, ...]:
+    """As many rows as the labels of loads need, up to `most`; upright one column as wide as they are."""
     wishes = load_wishes(sketch)
     if not wishes:
         return ((4.0, 4.0),)
@@ -123,8 +133,9 @@ def _label_rows(sketch: Sketch, room: float) -> tuple[Span, ...]:
     if sketch.place.axes.upright:
         widest = max((w.depth for w in wishes if w.depth <= COLUMN * room), default=0.0)
         return ((4.0, 4.0 + widest),)
-    fits = [len(sketch.placed(wishes, ((0.0, depth),) * count)) == len(wishes) for count in (1, 2)]
-    count = 1 if fits[0] else 2 if fits[1] else 3
+    count = 1
+    while count < most and len(sketch.placed(wishes, ((0.0, depth),) * count)) < len(wishes):
+        count += 1
     return tuple((4.0 + i * depth, 4.0 + (i + 1) * depth) for i in range(count))
 
 

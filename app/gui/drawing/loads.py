@@ -5,7 +5,6 @@ Arrows show the direction, so values stand without sign, except where a load cha
 
 from __future__ import annotations
 
-import math
 from dataclasses import replace
 from itertools import groupby
 
@@ -29,6 +28,7 @@ from solver.chain import Loads
 from solver.model import end_of
 
 ARROW = 32.0  # length of the arrow of a joint force, px
+LEAST_ARROW = 13.0
 HEAD = 5.0
 LEAST_BAND = 5.0  # height of the smallest distributed load, px
 
@@ -69,11 +69,7 @@ def _draw_distributed(sketch: Sketch, distributed: FloatArray) -> None:
         span = sketch.shown_span(index)
         if span is not None and (start or end):
             _draw_band(sketch, index, start / largest, end / largest)
-            tip = tr("Distributed load on {mark}: {value}").format(
-                mark=sketch.member.project.segments[index].mark,
-                value=distributed_text(start, end, sketch.member.system, signed=True),
-            )
-            sketch.target(span, sketch.rows.band, Part("distributed", index), tip)
+            sketch.target(span, sketch.rows.band, Part("distributed", index))
 
 
 def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
@@ -135,10 +131,7 @@ def _draw_force(sketch: Sketch, joint: int, force: float) -> None:
     outside = lies_outside(sketch, joint)
     across = sketch.rows.axis if outside else sketch.rows.arrows
     _arrow(sketch, tail, tip_at - tail, across, 2.4, HEAD + 3.0, part)
-    tip = tr("Force at joint {mark}: {value}").format(
-        mark=sketch.member.project.joints[joint].mark, value=value_text(force, "force", sketch.member.system)
-    )
-    sketch.target((tail, tip_at), (across - 12.0, across + 12.0), part, tip)
+    sketch.target((tail, tip_at), (across - 12.0, across + 12.0), part)
     wish = _outside_wish(sketch, joint, force) if outside else None
     if wish is not None:
         span = wish.along - 0.5 * wish.extent, wish.along + 0.5 * wish.extent
@@ -152,8 +145,10 @@ def _force_span(sketch: Sketch, joint: int, force: float) -> tuple[float, float]
     last = len(sketch.member.project.segments)
     pressing = (joint == 0 and force > 0) or (joint == last and force < 0)
     along, gap = sketch.along(joint), 3.0 * direction
-    tail = along - gap - ARROW * direction if pressing else along + gap
-    return tail, tail + ARROW * direction
+    inner = min(max(0.7 * sketch.shortest_beside(joint), LEAST_ARROW), ARROW)
+    length = direction * (ARROW if lies_outside(sketch, joint) else inner)
+    tail = along - gap - length if pressing else along + gap
+    return tail, tail + length
 
 
 def lies_outside(sketch: Sketch, joint: int) -> bool:
@@ -165,9 +160,7 @@ def lies_outside(sketch: Sketch, joint: int) -> bool:
 def _outside_wish(sketch: Sketch, joint: int, force: float) -> Wish | None:
     """The label beside an arrow outside the member, None where the margin is too narrow for it."""
     wish = _force_wish(sketch, joint, force)
-    end = sketch.along(joint)
-    outer = sketch.room[0] if abs(end - sketch.window[0]) < abs(end - sketch.window[1]) else sketch.room[1]
-    low, high = sorted((outer, end + math.copysign(2.0, outer - end)))
+    low, high = sketch.margin_beyond(joint)
     if wish.extent > high - low:
         return None
     half = 0.5 * wish.extent
@@ -178,7 +171,7 @@ def _force_wish(sketch: Sketch, joint: int, force: float) -> Wish:
     middle = 0.5 * sum(_force_span(sketch, joint, force))
     text = value_text(abs(force), "force", sketch.member.system)
     wish = sketch.wish(text, middle, Part("force", joint), face="small_strong")
-    return replace(wish, slide=0.5 * wish.extent + 6.0)
+    return replace(wish, slide=0.4 * wish.extent)
 
 
 def _force_wishes(sketch: Sketch, forces: FloatArray) -> list[Wish]:

@@ -6,14 +6,15 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 from __future__ import annotations
 
 import pyqtgraph as pg
-from PySide6.QtCore import QPointF, QRectF, Qt, Signal
-from PySide6.QtGui import QBrush, QPainter, QPen, QPolygonF
-from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent
+from PySide6.QtCore import QPointF, QRectF, Qt, Signal
+from PySide6.QtGui import QBrush, QPainter, QPen
+from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
 from app.gui.drawing.layout import lay_out
 from app.gui.drawing.member import Member
 from app.gui.drawing.shapes import Circle, Part, Picture, Stroke
+from app.gui.drawing.tips import tip
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
@@ -31,31 +32,37 @@ class MemberDrawing(pg.GraphicsObject):
         self._theme = theme
         self._member: Member | None = None
         self._place: Place | None = None
-        self._picture = Picture()
+        self._picture: Picture | None = None  # None: to be made when next asked for
         self._selection = Selection()
         self._under_mouse: Part | None = None
         self.setZValue(10.0)
+        self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     @property
     def picture(self) -> Picture:
         """What is drawn."""
+        if self._picture is None:
+            ready = self._member is not None and self._place is not None
+            self._picture = lay_out(self._member, self._place) if ready else Picture()
         return self._picture
 
     @property
     def chain_edge(self) -> float:
         """The pixel across the axis where joint lines begin."""
-        return self._picture.chain_edge
+        return self.picture.chain_edge
 
     def show_member(self, member: Member) -> None:
         """Draw another member, or other loads on it."""
         self._member = member
-        self._prepare()
+        self._picture = None
+        self.update()
 
     def set_place(self, place: Place) -> None:
         """Another place or another window of the ruler."""
         self.prepareGeometryChange()
         self._place = place
-        self._prepare()
+        self._picture = None
+        self.update()
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
@@ -67,14 +74,9 @@ class MemberDrawing(pg.GraphicsObject):
         self._selection = selection
         self.update()
 
-    def _prepare(self) -> None:
-        if self._member is not None and self._place is not None:
-            self._picture = lay_out(self._member, self._place)
-            self.update()
-
     def part_at(self, point: QPointF) -> Part | None:
         """The part under a point, or None."""
-        target = self._picture.target_at(point)
+        target = self.picture.target_at(point)
         return None if target is None else target.part
 
     # Qt's own
@@ -85,11 +87,10 @@ class MemberDrawing(pg.GraphicsObject):
 
     def hoverEvent(self, event: HoverEvent) -> None:
         """Announce the part under the mouse and show its tooltip."""
-        target = None if event.isExit() else self._picture.target_at(event.pos())
-        part = None if target is None else target.part
+        part = None if event.isExit() else self.part_at(event.pos())
         if part != self._under_mouse:
             self._under_mouse = part
-            self.setToolTip("" if target is None else target.tip)
+            self.setToolTip("" if part is None or self._member is None else tip(self._member, part))
             self.hovered.emit(part)
 
     def mouseClickEvent(self, event: MouseClickEvent) -> None:
@@ -106,9 +107,11 @@ class MemberDrawing(pg.GraphicsObject):
         if self._place is None:
             return
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        for stroke in self._picture.strokes:
-            self._paint_stroke(painter, stroke, self._place)
-        for circle in self._picture.circles:
+        self._clip(painter, self._place)
+        for stroke in self.picture.strokes:
+            self._paint_stroke(painter, stroke)
+        painter.setClipping(False)
+        for circle in self.picture.circles:
             self._paint_circle(painter, circle)
         self._paint_texts(painter, self._place.fonts)
 
@@ -119,7 +122,13 @@ class MemberDrawing(pg.GraphicsObject):
             return part.index in self._selection.segments
         return part.kind in ("support", "force") and part.index in self._selection.joints
 
-    def _paint_stroke(self, painter: QPainter, stroke: Stroke, place: Place) -> None:
+    def _clip(self, painter: QPainter, place: Place) -> None:
+        """To the window of the ruler, for the strokes that ask for it."""
+        window = (place.ruler.begin, place.ruler.end)
+        clip = place.axes.rect(window, place.axes.across_of(place.rect))
+        painter.setClipRect(clip.adjusted(-1, -1, 1, 1))
+
+    def _paint_stroke(self, painter: QPainter, stroke: Stroke) -> None:
         selected = self._is_selected(stroke.part)
         pen = QPen(colour(self._theme.select if selected else getattr(self._theme, stroke.ink)))
         pen.setWidthF(stroke.width + (0.8 if selected else 0.0))
@@ -128,16 +137,14 @@ class MemberDrawing(pg.GraphicsObject):
         painter.setPen(pen)
         fill = "select_fill" if selected and stroke.fill else stroke.fill
         painter.setBrush(QBrush(colour(getattr(self._theme, fill))) if fill else Qt.BrushStyle.NoBrush)
-        painter.setClipping(stroke.clip)
-        if stroke.clip:
-            window = (place.ruler.begin, place.ruler.end)
-            clip = place.axes.rect(window, place.axes.across_of(place.rect))
-            painter.setClipRect(clip.adjusted(-1, -1, 1, 1))
-        if stroke.closed:
-            painter.drawPolygon(QPolygonF(stroke.points))
+        if stroke.clip != painter.hasClipping():
+            painter.setClipping(stroke.clip)
+        if stroke.pairs:
+            painter.drawLines(stroke.points)
+        elif stroke.closed:
+            painter.drawPolygon(stroke.points)
         else:
-            painter.drawPolyline(QPolygonF(stroke.points))
-        painter.setClipping(False)
+            painter.drawPolyline(stroke.points)
 
     def _paint_circle(self, painter: QPainter, circle: Circle) -> None:
         painter.setPen(QPen(colour(self._theme.ink), 1.0))
@@ -146,7 +153,7 @@ class MemberDrawing(pg.GraphicsObject):
 
     def _paint_texts(self, painter: QPainter, fonts: Fonts) -> None:
         flags = Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip
-        for text in self._picture.texts:
+        for text in self.picture.texts:
             painter.setFont(fonts.font(text.face))
             painter.setPen(QPen(colour(getattr(self._theme, text.ink))))
             painter.drawText(text.rect, flags, text.text)

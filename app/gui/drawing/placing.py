@@ -55,6 +55,10 @@ def place(wishes: Iterable[Wish], rows: int, room: Span) -> list[Placed]:
 def _free_span(wish: Wish, taken: Sequence[Span], room: Span) -> Span | None:
     """The free span nearest to where the label wants to be, or None."""
     half = 0.5 * wish.extent
+    if wish.slide == 0.0:
+        taken_by = [other for other in taken if _meets((wish.along - half, wish.along + half), other)]
+        span = wish.along - half, wish.along + half
+        return span if _inside(span, room) and not taken_by else None
     centres = [wish.along, room[0] + half, room[1] - half]
     centres += [low - CLEAR - half for low, _ in taken] + [high + CLEAR + half for _, high in taken]
     for centre in sorted(centres, key=lambda c: abs(c - wish.along)):

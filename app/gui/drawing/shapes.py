@@ -37,6 +37,7 @@ class Stroke:
     dash: tuple[float, ...] = ()
     part: Part | None = None
     clip: bool = True  # to the window of the ruler
+    pairs: bool = False  # every two points are a line of their own
 
 
 @dataclass(frozen=True, slots=True)
@@ -60,11 +61,10 @@ class Text:
 
 @dataclass(frozen=True, slots=True)
 class Target:
-    """Where a part can be pointed at, and what its tooltip says."""
+    """Where a part can be pointed at."""
 
     rect: QRectF
     part: Part
-    tip: str
 
 
 @dataclass(slots=True)

@@ -1,7 +1,7 @@
 """The sheet of paper that the parts of the drawing are put on: (along, across) pixels, rows, and the picture.
 
-`across` is counted from the side of the loads: downward when the sheet lies across, leftward when upright. The
-parts (body, supports, loads, chain) draw in these coordinates and never ask which way the sheet is turned.
+`across` is counted from the side of the loads: downward when the sheet lies across, leftward when upright.
+The parts (body, supports, loads, chain) draw in these coordinates; which way the sheet is turned is known here.
 """
 
 from __future__ import annotations
@@ -16,7 +16,6 @@ from app.gui.drawing.placing import Placed, Span, Wish, place
 from app.gui.drawing.shapes import Fill, Ink, Part, Picture, Stroke, Target, Text
 from app.gui.fonts import Face
 from app.gui.sheet_layout import Place
-
 
 Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, across
 LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
@@ -61,6 +60,13 @@ class Sketch:
         low, high = self.place.axes.along_of(self.place.rect)
         return low + 4.0, high - 4.0
 
+    def margin_beyond(self, joint: int) -> Span:
+        """The pixels along the axis from an end joint outward to where labels end, growing."""
+        end = self.along(joint)
+        if abs(end - self.window[0]) < abs(end - self.window[1]):
+            return self.room[0], end - 2.0
+        return end + 2.0, self.room[1]
+
     @property
     def forward(self) -> float:
         """+1 where x grows with the pixels, −1 upright."""
@@ -69,6 +75,12 @@ class Sketch:
     def along(self, joint: int) -> float:
         """The pixel of a joint."""
         return self.place.ruler.pixel(self.member.position[joint])
+
+    def shortest_beside(self, joint: int) -> float:
+        """The length in pixels of the shorter of the segments that meet at a joint."""
+        last = len(self.member.position) - 1
+        beside = [s for s in (joint - 1, joint) if 0 <= s < last]
+        return min(abs(self.along(s + 1) - self.along(s)) for s in beside)
 
     def holds(self, joint: int) -> bool:
         """Whether a joint is inside the window."""
@@ -113,10 +125,12 @@ class Sketch:
     def hatch(self, along: Span, across: Span, step: tuple[float, float]) -> None:
         """Short slanted strokes along a line from one end to the other: ground that does not move."""
         count = max(int(max(abs(along[1] - along[0]), abs(across[1] - across[0])) / 6.0), 2)
+        points = []
         for i in range(count + 1):
             a = along[0] + (along[1] - along[0]) * i / count
             c = across[0] + (across[1] - across[0]) * i / count
-            self.line((a, c), (a + step[0], c + step[1]), ink="ink", width=1.0)
+            points += [self.point(a, c), self.point(a + step[0], c + step[1])]
+        self.picture.strokes.append(Stroke(tuple(points), clip=False, pairs=True))
 
     def wish(
         self, text: str, along: float, part: Part, *, face: Face = "small", rank: int = 0, slide: float = 0.0
@@ -167,6 +181,6 @@ class Sketch:
         self.picture.texts.append(Text(box, wish.text, face, ink, wish.part))
         return box
 
-    def target(self, along: Span, across: Span, part: Part, tip: str) -> None:
+    def target(self, along: Span, across: Span, part: Part) -> None:
         """Where a part can be pointed at."""
-        self.picture.targets.append(Target(self.rect(along, across), part, tip))
+        self.picture.targets.append(Target(self.rect(along, across), part))

@@ -13,7 +13,6 @@ from app.gui.drawing.placing import Wish
 from app.gui.drawing.shapes import Part
 from app.gui.drawing.sketch import Sketch
 from app.gui.drawing.words import value_text
-from app.support_entry import support_text
 from app.words import tr
 from solver.model import AnySupport, FixedSupport, SpringSupport, StopSupport
 
@@ -85,13 +84,6 @@ def _side(support: AnySupport) -> float:
     return -1.0 if isinstance(support, StopSupport) and support.side == "minus" else 1.0
 
 
-def _tip(sketch: Sketch, joint: int, support: AnySupport) -> str:
-    mark = sketch.member.project.joints[joint].mark
-    return tr("Joint {mark}: {support}").format(
-        mark=mark, support=support_text(support, sketch.member.system)
-    )
-
-
 def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -> None:
     """On the axis, outward: `side` −1 at the first joint, +1 at the last."""
     out = side * sketch.forward
@@ -105,17 +97,23 @@ def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -
         _zigzag(sketch, along, ground, axis, part)
         _wall(sketch, ground, 12.0, out)
         reach, half = SPRING + WALL, max(half, 12.0)
-        _label_end_spring(sketch, support, 0.5 * (along + ground), part)
+        _label_end_spring(sketch, joint, support, 0.5 * (along + ground))
     span = (along, along + out * max(reach, 24.0))
-    sketch.target(span, (axis - half - 8.0, axis + half + 8.0), part, _tip(sketch, joint, support))
+    sketch.target(span, (axis - half - 8.0, axis + half + 8.0), part)
 
 
-def _label_end_spring(sketch: Sketch, support: SpringSupport, along: float, part: Part) -> None:
-    wish = sketch.wish(_stiffness(sketch, support.stiffness), along, part)
-    low, high = sketch.room
-    along = min(max(along, low + 0.5 * wish.extent), high - 0.5 * wish.extent)
+def _label_end_spring(sketch: Sketch, joint: int, support: SpringSupport, along: float) -> None:
+    """Beside the spring, outside the member; under its edge where the margin is too narrow for that."""
+    wish = sketch.wish(_stiffness(sketch, support.stiffness), along, Part("support", joint))
+    low, high = sketch.margin_beyond(joint)
     top = sketch.rows.axis + 15.0
-    sketch.text(wish, (along, along), (top, top + wish.depth))
+    if wish.extent > high - low:
+        low, high = sketch.room
+        top = max(top, sketch.rows.axis + edge_at(sketch, joint) + 3.0)
+    along = min(max(along, low + 0.5 * wish.extent), high - 0.5 * wish.extent)
+    if top + wish.depth <= sketch.rows.under_label[0]:
+        span = along - 0.5 * wish.extent, along + 0.5 * wish.extent
+        sketch.text(wish, span, (top, top + wish.depth))
 
 
 def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:
@@ -128,11 +126,10 @@ def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:
 def _zigzag(sketch: Sketch, start: float, end: float, across: float, part: Part) -> None:
     """A spring along the axis."""
     straight, step = 0.15 * (end - start), 0.7 * (end - start) / TEETH
-    points = [(start, across), (start + straight, across)]
-    for tooth in range(TEETH):
-        points.append((start + straight + (tooth + 0.5) * step, across + (5.0 if tooth % 2 else -5.0)))
-    points += [(end - straight, across), (end, across)]
-    sketch.line(*points, width=1.3, part=part)
+    first = start + straight
+    teeth = [(first + (i + 0.5) * step, across + (5.0 if i % 2 else -5.0)) for i in range(TEETH)]
+    ends = (end - straight, across), (end, across)
+    sketch.line((start, across), (first, across), *teeth, *ends, width=1.3, part=part)
 
 
 def _stiffness(sketch: Sketch, stiffness: float) -> str:
@@ -152,7 +149,7 @@ def _draw_hanging(sketch: Sketch, joint: int, support: AnySupport) -> None:
     else:
         _hang_stop(sketch, along, sketch.forward * _side(support), part)
     span = _hanging_span(sketch, joint, support)
-    sketch.target(span, (under - 9.0, sketch.rows.under_label[1]), part, _tip(sketch, joint, support))
+    sketch.target(span, (under - 9.0, sketch.rows.under_label[1]), part)
 
 
 def _hang_spring(sketch: Sketch, along: float, part: Part) -> None:

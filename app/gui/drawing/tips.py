@@ -2,39 +2,77 @@
 
 from __future__ import annotations
 
+from msgspec import UnsetType
+
 from app.gui.drawing.member import Member
-from app.gui.drawing.words import bedding_text, distributed_text, fit_text, warmth_text
-from app.section_entry import section_label
-from app.units import format_value
+from app.gui.drawing.shapes import Part
+from app.gui.drawing.words import (
+    bedding_text,
+    distributed_text,
+    fit_text,
+    section_text,
+    signed_text,
+    value_text,
+    warmth_text,
+)
+from app.support_entry import support_text
 from app.words import tr
 from solver.model import end_of
 
 
-def segment_tip(member: Member, index: int) -> str:
+def tip(member: Member, part: Part) -> str:
+    """The tooltip of a part."""
+    if part.kind in ("segment", "length", "distributed"):
+        return _segment_tip(member, part.index)
+    return _joint_tip(member, part.index)
+
+
+def _segment_tip(member: Member, index: int) -> str:
     """Mark, section, length and material of a segment, and what acts on it."""
     segment = member.project.segments[index]
     first = tr("Segment {mark}: {section}, {length}, {material}").format(
         mark=segment.mark,
-        section=section_label(segment.section, member.system),
-        length=format_value(segment.length, "length", member.system, strip=True, with_unit=True),
+        section=section_text(segment.section, member.system),
+        length=value_text(segment.length, "length", member.system),
         material=segment.material,
     )
     bedding = bedding_text(segment.bedding, end_of(segment.bedding, segment.bedding_end), member.system)
-    return "\n".join(line for line in (first, *_load_lines(member, index), bedding) if line)
+    return _lines(first, *_on_segment(member, index), bedding)
 
 
-def _load_lines(member: Member, index: int) -> tuple[str, ...]:
+def _on_segment(member: Member, index: int) -> tuple[str, ...]:
     if member.loads is None:
         return ()
     loads, system = member.loads, member.system
+    load = distributed_text(*loads.distributed[0, index].tolist(), system, signed=True)
     return (
-        distributed_text(*loads.distributed[0, index].tolist(), system, signed=True),
+        tr("load {value}").format(value=load) if load else "",
         warmth_text(*loads.temperature[0, index].tolist(), system),
         fit_text(float(loads.lack_of_fit[0, index]), system),
     )
 
 
-def joint_tip(member: Member, index: int) -> str:
-    """Mark and position of a joint."""
-    position = format_value(member.position[index], "length", member.system, strip=True, with_unit=True)
-    return tr("Joint {mark} at {position}").format(mark=member.project.joints[index].mark, position=position)
+def _joint_tip(member: Member, index: int) -> str:
+    """Mark, position and support of a joint, and what acts on it."""
+    joint = member.project.joints[index]
+    first = tr("Joint {mark} at {position}").format(
+        mark=joint.mark, position=value_text(member.position[index], "length", member.system)
+    )
+    held = "" if isinstance(joint.support, UnsetType) else support_text(joint.support, member.system)
+    return _lines(first, held, *_on_joint(member, index))
+
+
+def _on_joint(member: Member, index: int) -> tuple[str, ...]:
+    if member.loads is None:
+        return ()
+    force, movement = float(member.loads.joint_force[0, index]), float(member.loads.movement[0, index])
+    return (
+        tr("force {value}").format(value=signed_text(force, "force", member.system)) if force else "",
+        tr("moved {value}").format(value=signed_text(movement, "displacement", member.system))
+        if movement
+        else "",
+    )
+
+
+def _lines(*lines: str) -> str:
+    return "\n".join(line for line in lines if line)

@@ -2,9 +2,18 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
+from app.section_entry import section_label
 from app.units import Quantity, format_value
 from app.words import tr
-from solver.model import UnitSystemName
+from solver.model import AnySection, UnitSystemName
+
+
+@lru_cache(maxsize=4096)
+def section_text(section: AnySection, system: UnitSystemName) -> str:
+    """A section for reading; kept, because it is asked for at every keystroke and every step of a zoom."""
+    return section_label(section, system)
 
 
 def value_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:

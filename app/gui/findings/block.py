@@ -1,4 +1,4 @@
-"""A heading with names and values under it, such as the reactions of one state; painted, read aloud as one."""
+"""A heading with names and values under it, such as the reactions of one state; read aloud as one."""
 
 from __future__ import annotations
 

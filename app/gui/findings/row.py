@@ -1,4 +1,4 @@
-"""One finding in the panel: mark, sentence, utilisation and the little scale of stress; a button to go there."""
+"""One finding in the panel: mark, sentence, utilisation and the little scale of stress; a button."""
 
 from __future__ import annotations
 

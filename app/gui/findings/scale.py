@@ -1,4 +1,4 @@
-"""The little scale of stress: from the allowable in compression through 0 to that in tension, the range as a bar.
+"""The little scale of stress: from the allowable in compression through 0 to that in tension, range as bar.
 
 Where an allowable is missing the scale has no end there and is dotted; where the range leaves the scale, the
 scale gives way and the end mark stands inside, so that what is over the limit is seen to be over it.

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import Literal, TypeAlias
 
 import numpy as np
@@ -224,7 +225,7 @@ class _Builder:
         """Neighbours with the same allowable share one line."""
         position, found = self._results.position, []
         starts = [0, *(np.flatnonzero(np.diff(np.nan_to_num(side)) != 0) + 1), len(side)]
-        for first, stop in zip(starts, starts[1:], strict=False):
+        for first, stop in pairwise(starts):
             if np.isfinite(side[first]):
                 short = format_value(abs(side[first]), "stress", self._system, strip=True)
                 text = tr("allowable {value}").format(value=short)

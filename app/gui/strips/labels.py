@@ -121,7 +121,7 @@ class _Placer:
         ]
 
     def limits(self) -> list[Label]:
-        """Each allowable along its line, in short where there is little room; those off the strip at its edge."""
+        """Each allowable along its line, in short where room is little; those off the strip at its edge."""
         drawn = [(limit, False) for limit in self.content.limits if self.content.kind == "stress"]
         labels: list[Label] = []
         for limit, off in drawn + [(limit, True) for limit in self.content.beyond]:
@@ -183,13 +183,15 @@ class _Placer:
         """+ and − in every fill that has room for them, so that colour is not alone in saying it."""
         if self.content.kind not in ("force", "stress"):
             return []
-        return [label for trace in self.content.traces for label in self._signs_of(trace)]
+        plus = self._signs_of(self.content.traces[0], TENSION)
+        return plus + self._signs_of(self.content.traces[-1], COMPRESSION)
 
-    def _signs_of(self, trace: Trace) -> list[Label]:
+    def _signs_of(self, trace: Trace, drawn: int) -> list[Label]:
+        """Of the largest values the + , of the smallest the − (the same curve, except of an envelope)."""
         along, across = self.ruler.pixel(trace.x), self.scale.pixels(trace.value)
         zero, labels = self.scale.pixel(0.0), []
         for run in runs(trace.drawn):
-            if run.drawn not in (TENSION, COMPRESSION):
+            if run.drawn != drawn:
                 continue
             part = slice(run.first, run.last + 1)
             span = np.clip(np.sort(along[[run.first, run.last]]), *self.axes.along_of(self.rect))

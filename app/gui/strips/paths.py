@@ -6,16 +6,17 @@ The paths are made when the content or the ruler changes, and painted as they ar
 from __future__ import annotations
 
 from dataclasses import dataclass
+from itertools import pairwise
 
 import numpy as np
+from pyqtgraph.functions import arrayToQPath
 from PySide6.QtCore import QRectF
 from PySide6.QtGui import QPainterPath
-from pyqtgraph.functions import arrayToQPath
 
 from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Axes
 from app.gui.strips.content import NONE, StripContent, Trace
-from solver.arrays import FloatArray, IntArray
+from solver.arrays import BoolArray, FloatArray, IntArray
 
 
 @dataclass(frozen=True, slots=True)
@@ -57,32 +58,46 @@ def runs(drawn: IntArray) -> list[Run]:
     if len(drawn) == 0:
         return []
     starts = [0, *(np.flatnonzero(np.diff(drawn)) + 1).tolist(), len(drawn)]
-    spans = zip(starts, starts[1:], strict=False)
-    return [Run(first, stop, int(drawn[first])) for first, stop in spans if drawn[first] != NONE]
+    return [Run(first, stop, int(drawn[first])) for first, stop in pairwise(starts) if drawn[first] != NONE]
 
 
 def line_paths(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, QPainterPath]:
-    """The curve, by way of drawing; it breaks at jumps."""
+    """The curve, by way of drawing; it breaks at jumps. One path each, however many segments there are."""
     along, across = ruler.pixel(trace.x), scale.pixels(trace.value)
-    x, y = (across, along) if axes.upright else (along, across)
-    paths: dict[int, QPainterPath] = {}
-    for run in runs(trace.drawn):
-        part = slice(run.first, run.last + 1)
-        path = arrayToQPath(np.ascontiguousarray(x[part]), np.ascontiguousarray(y[part]))
-        paths.setdefault(run.drawn, QPainterPath()).addPath(path)
-    return paths
+    return {
+        int(way): _path(along, across, axes, connect=np.append(trace.drawn == way, False).astype(np.int32))
+        for way in np.unique(trace.drawn)
+        if way != NONE
+    }
 
 
 def fill_paths(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, QPainterPath]:
-    """The area between the curve and 0, by way of drawing."""
+    """The area between the curve and 0, by way of drawing, as one outline that goes along 0 between runs."""
     along, across, zero = ruler.pixel(trace.x), scale.pixels(trace.value), scale.pixel(0.0)
-    paths: dict[int, QPainterPath] = {}
-    for run in runs(trace.drawn):
-        part = slice(run.first, run.last + 1)
-        closed_along = np.r_[along[run.first], along[part], along[run.last]]
-        closed_across = np.r_[zero, across[part], zero]
-        x, y = (closed_across, closed_along) if axes.upright else (closed_along, closed_across)
-        path = arrayToQPath(x, y)
-        path.closeSubpath()
-        paths.setdefault(run.drawn, QPainterPath()).addPath(path)
-    return paths
+    return {
+        int(way): _outline(along, across, zero, trace.drawn == way, axes)
+        for way in np.unique(trace.drawn)
+        if way != NONE
+    }
+
+
+def _outline(
+    along: FloatArray, across: FloatArray, zero: float, chosen: BoolArray, axes: Axes
+) -> QPainterPath:
+    """Each chosen interval from start to end, from 0 or to 0 where its neighbour is not chosen."""
+    at = np.flatnonzero(chosen)
+    opens = np.append(True, np.diff(at) > 1)
+    closes = np.append(np.diff(at) > 1, True)
+    first, last = across[at], across[at + 1]
+    corners = [np.where(opens, zero, first), first, last, np.where(closes, zero, last)]
+    places = [along[at], along[at], along[at + 1], along[at + 1]]
+    path = _path(np.column_stack(places).ravel(), np.column_stack(corners).ravel(), axes)
+    path.closeSubpath()
+    return path
+
+
+def _path(along: FloatArray, across: FloatArray, axes: Axes, connect: IntArray | None = None) -> QPainterPath:
+    x, y = (across, along) if axes.upright else (along, across)
+    return arrayToQPath(
+        np.ascontiguousarray(x), np.ascontiguousarray(y), connect="all" if connect is None else connect
+    )

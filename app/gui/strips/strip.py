@@ -1,6 +1,8 @@
-"""One strip as a scene item: paints prepared paths in pixels; the sheet places it and gives it its content."""
+"""One strip as a scene item: paints prepared paths in pixels; the sheet places and fills it."""
 
 from __future__ import annotations
+
+from dataclasses import dataclass
 
 import pyqtgraph as pg
 from PySide6.QtCore import QRectF, Qt
@@ -18,6 +20,31 @@ LINES = {TENSION: "tension", COMPRESSION: "compression", OVER: "over"}
 FILLS = {TENSION: "tension_fill", COMPRESSION: "compression_fill", OVER: "over_fill"}
 
 
+@dataclass(frozen=True, slots=True)
+class Prepared:
+    """What is painted of a content in a place, ready in pixels."""
+
+    scale: Scale
+    lines: tuple[tuple[int, QPainterPath], ...]
+    fills: tuple[tuple[int, QPainterPath], ...]
+    labels: tuple[Label, ...]
+
+    @classmethod
+    def of(cls, content: StripContent, place: Place) -> Prepared:
+        """Make the paths and place the labels."""
+        scale = Scale.of(content, place.rect, place.axes)
+        where = place.ruler, scale, place.axes
+        traces = content.traces
+        return cls(
+            scale=scale,
+            lines=tuple(item for trace in traces for item in line_paths(trace, *where).items()),
+            fills=tuple(
+                item for trace in traces if content.filled for item in fill_paths(trace, *where).items()
+            ),
+            labels=strip_labels(content, place.rect, place.ruler, place.axes, place.fonts.measure),
+        )
+
+
 class Strip(pg.GraphicsObject):
     """A strip; `show_content(None)` leaves its frame empty."""
 
@@ -26,9 +53,8 @@ class Strip(pg.GraphicsObject):
         self._theme = theme
         self._content: StripContent | None = None
         self._place: Place | None = None
-        self._lines: list[tuple[int, QPainterPath]] = []
-        self._fills: list[tuple[int, QPainterPath]] = []
-        self._labels: tuple[Label, ...] = ()
+        self._prepared: Prepared | None = None  # None: to be made when next asked for
+        self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     @property
     def content(self) -> StripContent | None:
@@ -38,7 +64,8 @@ class Strip(pg.GraphicsObject):
     @property
     def labels(self) -> tuple[Label, ...]:
         """The placed texts."""
-        return self._labels
+        prepared = self._ready()
+        return () if prepared is None else prepared.labels
 
     @property
     def place(self) -> Place | None:
@@ -53,36 +80,30 @@ class Strip(pg.GraphicsObject):
     def show_content(self, content: StripContent | None) -> None:
         """Other curves."""
         self._content = content
-        self._prepare()
+        self._spoil()
 
     def set_place(self, place: Place) -> None:
         """Another place or another window of the ruler."""
         self.prepareGeometryChange()
         self._place = place
-        self._prepare()
+        self._spoil()
 
-    def _prepare(self) -> None:
-        self._lines, self._fills, self._labels = [], [], ()
-        if self._content is not None and self._place is not None:
-            place = self._place
-            scale = Scale.of(self._content, place.rect, place.axes)
-            for trace in self._content.traces:
-                self._lines += line_paths(trace, place.ruler, scale, place.axes).items()
-                if self._content.filled:
-                    self._fills += fill_paths(trace, place.ruler, scale, place.axes).items()
-            self._labels = strip_labels(
-                self._content, place.rect, place.ruler, place.axes, place.fonts.measure
-            )
+    def _spoil(self) -> None:
+        self._prepared = None
         self.update()
 
+    def _ready(self) -> Prepared | None:
+        if self._prepared is None and self._content is not None and self._place is not None:
+            self._prepared = Prepared.of(self._content, self._place)
+        return self._prepared
+
     def boundingRect(self) -> QRectF:
-        """Frame and labels."""
+        """The frame, and room for the labels left of it or above it."""
         if self._place is None:
             return QRectF()
-        rect = QRectF(self._place.rect)
-        for label in self._labels:
-            rect |= label.rect
-        return rect.adjusted(-110.0, -60.0, 4.0, 4.0)
+        height = self._place.fonts.text_height
+        left, top = (4.0, 4.0 * height) if self._place.axes.upright else (self._place.rect.left(), 4.0)
+        return self._place.rect.adjusted(-left, -top, 4.0, 4.0)
 
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
         """Frame, fills, lines, limits, texts, in this order."""
@@ -92,24 +113,27 @@ class Strip(pg.GraphicsObject):
         painter.fillRect(self._place.rect, colour(self._theme.card))
         painter.save()
         painter.setClipRect(self._place.rect)
-        if self._content is not None:
-            self._paint_content(painter, self._content, self._place)
+        prepared = self._ready()
+        if self._content is not None and prepared is not None:
+            self._paint_content(painter, self._content, self._place, prepared)
         painter.restore()
         painter.setPen(QPen(colour(self._theme.edge), 1.0))
         painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.drawRect(self._place.rect)
         self._paint_labels(painter, self._place.fonts)
 
-    def _paint_content(self, painter: QPainter, content: StripContent, place: Place) -> None:
-        scale = Scale.of(content, place.rect, place.axes)
+    def _paint_content(
+        self, painter: QPainter, content: StripContent, place: Place, prepared: Prepared
+    ) -> None:
+        scale = prepared.scale
         self._paint_band(painter, content, place, scale)
         painter.setPen(Qt.PenStyle.NoPen)
-        for drawn, path in self._fills:
+        for drawn, path in prepared.fills:
             self._paint_fill(painter, drawn, path)
         self._paint_unchecked(painter, content, place)
         painter.setBrush(Qt.BrushStyle.NoBrush)
         self._paint_base(painter, content, place, scale)
-        for drawn, path in self._lines:
+        for drawn, path in prepared.lines:
             painter.setPen(QPen(colour(self._line_colour(content, drawn)), 1.8))
             painter.drawPath(path)
         self._paint_extremes(painter, content, place, scale)
@@ -161,7 +185,7 @@ class Strip(pg.GraphicsObject):
             painter.drawEllipse(point, 3.0, 3.0)
 
     def _paint_labels(self, painter: QPainter, fonts: Fonts) -> None:
-        for label in self._labels:
+        for label in self.labels:
             painter.setFont(fonts.font(label.face))
             painter.setPen(colour(getattr(self._theme, label.ink)))
             painter.drawText(label.rect, Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip, label.text)
