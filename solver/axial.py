@@ -64,10 +64,18 @@ def _refined_until_met(
         bound = trial.bound.relative()
         if (bound <= tolerance).all():
             return trial.solution()
-        allowed = AIM * (tolerance * trial.bound.size) ** 2
-        mesh = refined(mesh, trial.fields.error, np.where(bound > tolerance, allowed, np.inf))
+        mesh = _finer(mesh, trial, tolerance)
     worst = int(np.argmax(bound))
     raise BoundNotMet(names[worst], float(bound[worst]), tolerance)
+
+
+def _finer(mesh: Mesh, trial: Pass, tolerance: float) -> Mesh | None:
+    """The mesh of the next pass; None where rounding alone is too much, or nothing is left to refine."""
+    bound, allowed = trial.bound, tolerance * trial.bound.size
+    if (bound.leftover + bound.rounding > allowed).any():
+        return None
+    unmet = bound.relative() > tolerance
+    return refined(mesh, trial.fields.error, np.where(unmet, AIM * allowed**2, np.inf))
 
 
 def _sound_pass(
@@ -78,9 +86,10 @@ def _sound_pass(
     try:
         trial = Pass(chain, loads, mesh, cancelled)
     except FactorError as lost:
+        state = int(np.argmax(lost.largest_load))
+        largest = float(lost.largest_load[state])
         joint = int(np.searchsorted(mesh.joints(), lost.at))
-        largest = float(np.abs(loads.joint_force).max())
-        raise StiffnessContrast(names[0], joint, largest, largest) from lost
+        raise StiffnessContrast(names[state], joint, largest, largest) from lost
     _require_range(trial, names)
     _require_balance(trial, names)
     return trial

@@ -68,7 +68,8 @@ def joint_roundings(at: Held, ends: Condensed, u: Displacements) -> FloatArray:
     if ends.mean_mean.any():
         size += np.abs(ends.mean_stretch) * (np.abs(mean) + np.abs(stretch) / 2)
         size += ends.mean_mean * np.abs(mean) / 2
-    total = np.abs(at.force) + at.spring * (np.abs(at.movement) + np.abs(u.high))
+    total = np.abs(at.force)
+    total[:, at.sprung] += at.spring * (np.abs(at.movement[:, at.sprung]) + np.abs(u.high[:, at.sprung]))
     total[:, :-1] += size
     total[:, 1:] += size
     total[:, at.fixed] = 0.0

@@ -4,9 +4,10 @@
 the diagonal, nothing beside it), so that the matrix stays symmetric, positive definite and tridiagonal, as
 LAPACK's pttrf and pttrs want it.
 
-The solution is kept as a sum of two doubles, the second being what one step of iterative refinement adds:
-the stretch of an element is the difference of its ends, and where a stiff part hangs on a soft spring it lies
-in digits that a single double no longer has. The plain sum would lose them again.
+The solution is kept as a sum of two doubles, the second being what iterative refinement adds: the stretch of
+an element is the difference of its ends, and where a stiff part hangs on a soft spring it lies in digits that
+a single double no longer has. The plain sum would lose them again. One step of refinement is enough up to
+stiffnesses some 1e9 apart, and only beyond are there more.
 """
 
 from __future__ import annotations
@@ -21,13 +22,17 @@ from solver.chain import Chain, Loads
 from solver.condense import Condensed
 from solver.mesh import Mesh
 
+REFINEMENTS = 4
+SETTLED = 1e-9  # a correction up to this part of the displacement needs no other after it
+
 
 @dataclass(frozen=True, slots=True)
 class Held:
     """Supports and joint loads at the ends of the elements."""
 
-    fixed: IntArray  # indices of held ends
-    spring: FloatArray  # (e + 1,)
+    fixed: IntArray  # which ends are held
+    sprung: IntArray  # (s,) which ends have a spring
+    spring: FloatArray  # (s,) its stiffness
     force: FloatArray  # (m, e + 1)
     movement: FloatArray  # (m, e + 1)
 
@@ -38,6 +43,12 @@ class Displacements:
 
     high: FloatArray
     low: FloatArray
+
+    def corrected(self, correction: FloatArray) -> Displacements:
+        """With the correction added, the high part again the sum's nearest double."""
+        low = self.low + correction
+        high = self.high + low
+        return Displacements(high, low - (high - self.high))
 
     def mean(self) -> FloatArray:
         """(m, e) the mean of each element's ends."""
@@ -50,26 +61,24 @@ class Displacements:
 
 
 class FactorError(Exception):
-    """The factor met a pivot that is not positive, at the end `at` of an element."""
+    """The factor met a pivot that is not positive, at the end `at` of an element: no digit is left there."""
 
-    def __init__(self, at: int) -> None:
+    def __init__(self, at: int, largest_load: FloatArray) -> None:
         super().__init__(f"pivot {at}")
         self.at = at
+        self.largest_load = largest_load  # (m,) N
 
 
 def held(chain: Chain, loads: Loads, mesh: Mesh) -> Held:
     """Supports and joint loads spread from the joints to the ends of the elements."""
-    if mesh.whole:
-        fixed = np.flatnonzero(chain.fixed)
-        return Held(fixed, chain.spring, loads.joint_force, loads.movement)
-    joints = mesh.joints()
-
-    def spread(values: FloatArray) -> FloatArray:
-        wide = np.zeros((*values.shape[:-1], mesh.segment.size + 1))
-        wide[..., joints] = values
-        return wide
-
-    return Held(joints[chain.fixed], spread(chain.spring), spread(loads.joint_force), spread(loads.movement))
+    fixed, sprung = np.flatnonzero(chain.fixed), np.flatnonzero(chain.spring)
+    spring, force, movement = chain.spring[sprung], loads.joint_force, loads.movement
+    if not mesh.whole:
+        joints, shape = mesh.joints(), (force.shape[0], mesh.segment.size + 1)
+        fixed, sprung = joints[fixed], joints[sprung]
+        force, movement = np.zeros(shape), np.zeros(shape)
+        force[:, joints], movement[:, joints] = loads.joint_force, loads.movement
+    return Held(fixed, sprung, spring, force, movement)
 
 
 class JointSystem:
@@ -82,13 +91,14 @@ class JointSystem:
         diagonal, beside = self._assembled()
         self._diagonal, self._beside, failed = dpttrf(diagonal, beside, overwrite_d=1, overwrite_e=1)
         if failed:
-            raise FactorError(failed - 1)
+            raise FactorError(failed - 1, largest_load(at, condensed))
 
     def _assembled(self) -> tuple[FloatArray, FloatArray]:
         ends, fixed = self._ends, self._held.fixed
         quarter = ends.mean_mean / 4
         own = quarter + ends.stretch_stretch
-        diagonal = self._held.spring.copy()
+        diagonal = np.zeros(own.size + 1)
+        diagonal[self._held.sprung] = self._held.spring
         diagonal[:-1] += own - ends.mean_stretch
         diagonal[1:] += own + ends.mean_stretch
         beside = quarter - ends.stretch_stretch
@@ -103,13 +113,17 @@ class JointSystem:
         return np.asarray(solution.T)
 
     def displacements(self) -> Displacements:
-        """Solve, and refine once."""
+        """Solve, and refine: once, and again only while a correction is more than rounding."""
         start = np.zeros_like(self._held.movement)
         start[:, self._held.fixed] = self._held.movement[:, self._held.fixed]
-        nothing = np.zeros_like(start)
-        high = start + self.solve(self._unbalanced(Displacements(start, nothing)))
-        low = self.solve(self._unbalanced(Displacements(high, nothing)))
-        return Displacements(high, low)
+        u = Displacements(start, np.zeros_like(start))
+        u = u.corrected(self.solve(self._unbalanced(u)))
+        for _ in range(REFINEMENTS):
+            correction = self.solve(self._unbalanced(u))
+            u = u.corrected(correction)
+            if np.abs(correction).max() <= SETTLED * np.abs(u.high).max():
+                break
+        return u
 
     def _unbalanced(self, u: Displacements) -> FloatArray:
         ends, stretch = self._ends, u.stretch()
@@ -124,7 +138,8 @@ class JointSystem:
 
 def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
     """(m, e + 1) the force along +x left over at each end; 0 where the support takes whatever comes."""
-    left = at.force + spring_force(at, u)
+    left = at.force.copy()
+    left[:, at.sprung] += spring_force(at, u)
     left[:, :-1] += start_force
     left[:, 1:] -= end_force
     left[:, at.fixed] = 0.0
@@ -132,5 +147,15 @@ def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: F
 
 
 def spring_force(at: Held, u: Displacements) -> FloatArray:
-    """(m, e + 1) what the springs exert on the member along +x."""
-    return np.asarray(at.spring * ((at.movement - u.high) - u.low))
+    """(m, s) what the springs exert on the member along +x."""
+    sprung = at.sprung
+    return np.asarray(at.spring * ((at.movement[:, sprung] - u.high[:, sprung]) - u.low[:, sprung]))
+
+
+def largest_load(at: Held, ends: Condensed) -> FloatArray:
+    """(m,) N, the largest of what loads do to a joint: by forces, by elements, by movements of supports."""
+    stiffness = np.zeros(at.force.shape[1])
+    stiffness[at.sprung] = at.spring
+    stiffness[:-1] += ends.stretch_stretch + ends.mean_mean
+    loads = (at.force, ends.load_stretch, ends.load_mean, stiffness * at.movement)
+    return np.asarray(np.max([np.abs(load).max(axis=1) for load in loads], axis=0))

@@ -17,7 +17,7 @@ from solver.bound import FLOOR, Bound, displacement_share, field_share, joint_ro
 from solver.chain import Chain, Loads
 from solver.condense import ClosedForm, Condensation, Condensed, Fields, Stacked
 from solver.errors import Cancelled
-from solver.joints import Displacements, JointSystem, held, spring_force, unbalanced
+from solver.joints import Displacements, JointSystem, held, largest_load, spring_force, unbalanced
 from solver.mesh import Mesh, Where, block
 from solver.solution import Solution
 
@@ -77,22 +77,13 @@ class Pass:
     def _size_squared(self) -> FloatArray:
         u, fields = self.ends.high, self.fields
         floor = FLOOR * np.abs(u).max(axis=1) ** 2 * fields.stretching
-        return np.asarray(fields.norm + fields.strain_norm + (u * u) @ self.held.spring + floor)
+        springs = u[:, self.held.sprung] ** 2 @ self.held.spring
+        return np.asarray(fields.norm + fields.strain_norm + springs + floor)
 
     def largest_force(self) -> FloatArray:
-        """(m,) N, of all forces that meet at a joint, with those a support's movement would make."""
-        ends, at = self.condensed, self.held
-        stiffness = at.spring.copy()
-        stiffness[:-1] += ends.stretch_stretch + ends.mean_mean
-        forces = (
-            at.force,
-            self.fields.start_force,
-            self.fields.end_force,
-            ends.load_stretch,
-            ends.load_mean,
-            stiffness * at.movement,
-        )
-        return np.asarray(np.max([np.abs(force).max(axis=1) for force in forces], axis=0))
+        """(m,) N, the largest of all forces that meet at a joint, and of what the loads do there."""
+        found = (np.abs(self.fields.start_force).max(axis=1), np.abs(self.fields.end_force).max(axis=1))
+        return np.asarray(np.max([*found, largest_load(self.held, self.condensed)], axis=0))
 
     def solution(self) -> Solution:
         """What the caller gets."""
@@ -123,7 +114,8 @@ class Pass:
 
     def _reactions(self) -> FloatArray:
         at, fields = self.held, self.fields
-        reaction = np.where(at.spring > 0, spring_force(at, self.ends), np.nan)
+        reaction = np.full(at.force.shape, np.nan)
+        reaction[:, at.sprung] = spring_force(at, self.ends)
         whole = -at.force
         whole[:, :-1] -= fields.start_force
         whole[:, 1:] += fields.end_force
@@ -131,8 +123,9 @@ class Pass:
         return reaction
 
     def _spring_energy(self, u: FloatArray) -> FloatArray:
-        shortening = u - self.held.movement
-        return np.asarray((shortening * shortening) @ self.held.spring / 2)
+        at = self.held
+        shortening = u[:, at.sprung] - at.movement[:, at.sprung]
+        return np.asarray((shortening * shortening) @ at.spring / 2)
 
     def _force_bound(self, joints: IntArray) -> FloatArray:
         flexibility = np.add.reduceat(self.fields.flexibility, joints[:-1])

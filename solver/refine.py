@@ -20,9 +20,12 @@ from solver.sections import part_of
 
 CLOSED_DEGREE = 3
 SAFETY = 0.1  # part of the tolerance the first degree aims at
-COARSEST = 1e-3  # tolerance aimed at where a larger one is asked: 1/A must stay smooth to the bound's quadrature
+COARSEST = (
+    1e-3  # tolerance aimed at where a larger one is asked: 1/A must stay smooth to the bound's quadrature
+)
 STEP = 2  # by which a degree is raised
 FEW = 256  # up to so many stacked elements share one degree: the calls cost more than the arithmetic
+MOST_HALVINGS = 20_000
 SHORTEST = 2.0**-40  # part of a segment below which no element is halved
 
 
@@ -111,9 +114,13 @@ def halved(mesh: Mesh, marked: BoolArray) -> Mesh:
 
 
 def refined(mesh: Mesh, share: FloatArray, allowed: FloatArray) -> Mesh | None:
-    """The next mesh, or None where no element's η² (m, e) is above its part of what is `allowed` (m,)."""
+    """The next mesh, where an element's η² (m, e) is above its part of what is `allowed` (m,).
+
+    None where no element is, and where halving went so far that more of it would only gather rounding.
+    """
     marked = ((share > allowed[:, None] / mesh.segment.size).any(axis=0)) & ~mesh.closed
-    if not marked.any():
+    halvings = mesh.segment.size - (mesh.segment[-1] + 1)
+    if not marked.any() or halvings > MOST_HALVINGS:
         return None
     raised = np.where(marked, mesh.degree + STEP, mesh.degree)
     split = (raised > GREATEST_DEGREE) & (mesh.end - mesh.start > SHORTEST)
