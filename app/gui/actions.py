@@ -78,14 +78,13 @@ COMMANDS: Final[tuple[Command, ...]] = (
 )
 
 
-def shortcut_of(command: Command) -> QKeySequence:
-    """The command's first key on this system; empty where it has none."""
+def shortcuts_of(command: Command) -> list[QKeySequence]:
+    """The command's keys on this system, the one to show first; empty where it has none."""
     if command.shortcut is None:
-        return QKeySequence()
+        return []
     if isinstance(command.shortcut, str):
-        return QKeySequence(command.shortcut)
-    bound = QKeySequence.keyBindings(command.shortcut)
-    return bound[0] if bound else QKeySequence(command.fallback)
+        return [QKeySequence(command.shortcut)]
+    return QKeySequence.keyBindings(command.shortcut) or [QKeySequence(command.fallback)]
 
 
 def make_actions(parent: QObject, handlers: Mapping[str, Callable[[], None]]) -> dict[str, QAction]:
@@ -95,7 +94,7 @@ def make_actions(parent: QObject, handlers: Mapping[str, Callable[[], None]]) ->
         if command.key in ("", RECENT, SAMPLES):
             continue
         action = QAction(tr(command.text), parent)
-        action.setShortcut(shortcut_of(command))
+        action.setShortcuts(shortcuts_of(command))
         action.setMenuRole(command.role)
         plain = tr(command.tip) if command.tip else action.text().replace("&", "").rstrip("…")
         action.setToolTip(_with_key(plain, action.shortcut()))
@@ -129,7 +128,7 @@ def keys_text() -> str:
     """The keys for the help page, a line each."""
     lines = []
     for command in COMMANDS:
-        key = shortcut_of(command).toString(QKeySequence.SequenceFormat.NativeText)
-        if key:
-            lines.append(f"{key}\t{tr(command.text).replace('&', '').rstrip('…')}")
+        keys = [key.toString(QKeySequence.SequenceFormat.NativeText) for key in shortcuts_of(command)]
+        if keys:
+            lines.append(f"{', '.join(keys)}\t{tr(command.text).replace('&', '').rstrip('…')}")
     return "\n".join(lines)

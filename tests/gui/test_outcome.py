@@ -25,7 +25,7 @@ def test_figures_of_a_state_are_the_solvers_own(outcome):
     name = results.states[0].name
     figures = figures_of(results, Shown("combination", name), current=True)
     np.testing.assert_array_equal(figures.displacement, results.solution.joint_displacement[0])
-    # Two roads: the largest over the checks here, the largest over the length in the solver. 1e-12 is rounding.
+    # Two roads: the largest over the checks here, over the length in the solver; 1e-12 is rounding.
     np.testing.assert_allclose(figures.utilisation, results.segments.utilisation[0], rtol=1e-12)
 
 

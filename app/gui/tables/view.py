@@ -41,6 +41,9 @@ class TableView(QTableView):
         self.setItemDelegate(self._cells)
         self.setModel(model)
         self.setAccessibleName(tr(model.table.title))
+        self.horizontalHeader().setAccessibleName(
+            tr("Columns of {table}").format(table=tr(model.table.title))
+        )
         self._dress()
         self.set_theme(theme)
         for came in (model.rowsInserted, model.rowsRemoved, model.columnsInserted, model.columnsRemoved):
