@@ -10,6 +10,7 @@ from __future__ import annotations
 import datetime as dt
 import json
 from importlib import resources
+from typing import Final
 
 from app.project_file import dump, sha256
 from app.sheet.blocks import Value
@@ -21,7 +22,9 @@ from app.version import PROGRAM
 from solver.model import Project
 from solver.results import Results
 
-STANDARDS = ("a-3a", "ua-1")
+STANDARDS: Final = ("a-3a", "ua-1")
+_LINE: Final = 38  # characters without a space that every line has room for
+_LONGEST_RUN: Final = {"rows": 12, "fingerprint": 64}  # less in the cells of tables, a whole SHA-256
 
 
 def build_sheet(project: Project, results: Results, *, file_name: str, date: dt.date | None = None) -> bytes:
@@ -62,11 +65,12 @@ def layout() -> bytes:
     return (resources.files("app.sheet") / "sheet.typ").read_bytes()
 
 
-def _ready(value: Value, figures: dict[str, bytes]) -> Value:
+def _ready(value: Value, figures: dict[str, bytes], longest: int = _LINE) -> Value:
+    """The value with printable strings; runs longer than `longest` without a space may break."""
     if isinstance(value, str):
-        return breakable(printable(value))
+        return breakable(printable(value), longest)
     if isinstance(value, list):
-        return [_ready(item, figures) for item in value]
+        return [_ready(item, figures, longest) for item in value]
     if isinstance(value, dict):
         return {key: _entry(key, item, figures) for key, item in value.items()}
     return value
@@ -78,4 +82,4 @@ def _entry(key: str, value: Value, figures: dict[str, bytes]) -> Value:
         name = f"figure-{len(figures)}.svg"
         figures[name] = value.encode()
         return name
-    return _ready(value, figures)
+    return _ready(value, figures, _LONGEST_RUN.get(key, _LINE))

@@ -71,6 +71,11 @@ def _draw_arrows(canvas: Canvas, ruler: Ruler, edge: Edge, arrows: Sequence[Arro
     ordered = sorted(arrows, key=lambda arrow: arrow.along + arrow.sense * _ARROW / 2)
     rows = packed([_span(ruler, arrow) for arrow in ordered])
     pitch = max(text_width(a.text, _SIZE) for a in arrows) + 14 if ruler.upright else _SIZE + 9
+    stems = (
+        (ruler.point(arrow.along, edge.at(0)), ruler.point(arrow.along, edge.at(6 + row * pitch)))
+        for arrow, row in zip(ordered, rows, strict=True)
+    )
+    canvas.lines(stems, Ink(QUIET, 0.5))
     for arrow, row in zip(ordered, rows, strict=True):
         _draw_arrow(canvas, ruler, edge, arrow, 6 + row * pitch)
     edge.reach += 6 + (max(rows) + 1) * pitch - (0 if ruler.upright else 2)
@@ -85,7 +90,6 @@ def _span(ruler: Ruler, arrow: Arrow) -> tuple[float, float]:
 def _draw_arrow(canvas: Canvas, ruler: Ruler, edge: Edge, arrow: Arrow, further: float) -> None:
     aside = edge.at(further)
     tip, middle = arrow.along + arrow.sense * _ARROW, arrow.along + arrow.sense * _ARROW / 2
-    canvas.path(ruler.points([(arrow.along, edge.at(0)), (arrow.along, aside)]), Ink(QUIET, 0.5))
     canvas.path(
         ruler.points([(arrow.along, aside), (tip, aside)]),
         Ink(INK, 1.4, dashes="3 2" if arrow.dashed else ""),
@@ -93,7 +97,9 @@ def _draw_arrow(canvas: Canvas, ruler: Ruler, edge: Edge, arrow: Arrow, further:
     draw_head(canvas, ruler, tip, aside, arrow.sense, 3.2)
     x, y = ruler.point(middle, aside)
     at = (x + 5, y + 0.35 * _SIZE) if ruler.upright else (x, y - 4)
-    canvas.text(at, arrow.text, size=_SIZE, bold=True, anchor="start" if ruler.upright else "middle")
+    canvas.text(
+        at, arrow.text, size=_SIZE, bold=True, anchor="start" if ruler.upright else "middle", backed=True
+    )
 
 
 def draw_head(canvas: Canvas, ruler: Ruler, tip: float, aside: float, sense: int, size: float) -> None:

@@ -17,7 +17,7 @@ from app.sheet.lanes import Edge, Label, Style, draw_lane
 from app.sheet.load_marks import draw_loads
 from app.sheet.ruler import Ruler
 from app.sheet.supports import draw_bedding, draw_end_support, draw_side_support
-from app.sheet.svg import Canvas, Ink, text_width
+from app.sheet.svg import Canvas, Ink, fitted, text_width
 from app.units import format_value, symbol
 from app.words import tr
 from solver.arrays import FloatArray
@@ -30,7 +30,8 @@ _LEAST_HALF, _MOST_HALF = 11.0, 34.0
 _OUTLINE = Ink(INK, 1.2, BODY)
 _QUIET = Style(7.0, QUIET)
 _MARK = 8.0
-_LONGEST_MARK = 14
+_WIDEST_MARK = 56.0
+_LONGEST_SECTION = 26
 
 
 @dataclass(frozen=True, slots=True)
@@ -138,7 +139,7 @@ def _draw_body(canvas: Canvas, member: _Member, far: Edge) -> int:
 
 
 def _short(mark: str) -> str:
-    return mark if len(mark) <= _LONGEST_MARK else mark[: _LONGEST_MARK - 1] + "…"
+    return fitted(mark, _MARK, _WIDEST_MARK)
 
 
 def _draw_segment(canvas: Canvas, member: _Member, segment: Segment, span: tuple[float, float]) -> None:
@@ -261,7 +262,9 @@ def _draw_chain(canvas: Canvas, feet: Canvas, member: _Member, far: Edge, units:
     _draw_feet(feet, member, far)
     far.reach += 3
     sections = _section_labels(member, units)
-    draw_lane(canvas, ruler, far, sections, _QUIET)
+    shown = [label for label in sections if len(label.text) <= _LONGEST_SECTION]
+    far.left_out += len(sections) - len(shown)
+    draw_lane(canvas, ruler, far, shown, _QUIET)
 
 
 def _draw_ticks(canvas: Canvas, member: _Member, far: Edge) -> None:

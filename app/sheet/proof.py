@@ -67,13 +67,11 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
     state = _state(results, check)
     place = next(i for i, s in enumerate(results.project.segments) if s.mark == check.segment)
     x = float(check.position or 0.0)
-    s = min(1.0, max(0.0, (x - float(results.position[place])) / float(results.chain.length[place])))
+    s = _share(x, float(results.position[place]), float(results.chain.length[place]))
     values = _in_segment(results, state, x, place)
     area = float(area_at(results.chain.area[place], np.array(s)))
     yield paragraph(
-        tr("Segment {mark} at x = {x}, {share} of its length from its start.").format(
-            x=say.plain(x, "length", unit=True), share=f"{s:.6g}", mark=check.segment
-        ),
+        _place_words(s).format(x=say.plain(x, "length", unit=True), share=f"{s:.6g}", mark=check.segment),
         "lead",
     )
     stress = say.plain(values.stress, "stress", unit=True, digits=6)
@@ -87,6 +85,20 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
             _utilisation_by_hand(results, check, state, stress, say),
         ]
     )
+
+
+def _share(x: float, start: float, length: float) -> float:
+    """The fraction 0…1 of a segment at x, without the rounding of positions at its ends."""
+    s = min(1.0, max(0.0, (x - start) / length))
+    return round(s) if min(s, 1 - s) < 1e-9 else s
+
+
+def _place_words(s: float) -> str:
+    if s == 0.0:
+        return tr("Segment {mark} at its start, x = {x}.")
+    if s == 1.0:
+        return tr("Segment {mark} at its end, x = {x}.")
+    return tr("Segment {mark} at x = {x}, {share} of its length from its start.")
 
 
 def _state(results: Results, check: Check) -> int:
@@ -225,4 +237,4 @@ def _not_made(results: Results, say: Readings) -> Iterator[Block]:
         yield paragraph(tr("Every check of stresses and limits that the input asks for was made."))
         return
     yield paragraph(tr("NOT CHECKED, and so not passed:"), "caution")
-    yield bullets([f"{found.sentence}. {found.remedy}" for found in missing])
+    yield bullets([f"{found.sentence}: {found.remedy}" for found in missing])

@@ -17,8 +17,8 @@ from solver.checks import Check
 from solver.model import LoadCase, Project
 from solver.results import Results, StateKind
 
-LONGEST: Final = 40
-LONGEST_MARK: Final = 24
+LONGEST: Final = 32
+LONGEST_MARK: Final = 18
 
 
 @dataclasses.dataclass(frozen=True, slots=True)

@@ -10,7 +10,7 @@ from app.sheet.colours import QUIET
 from app.sheet.member_figure import ACROSS, Figure
 from app.sheet.ruler import Ruler
 from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Limit, Strip, draw_strip
-from app.sheet.svg import Canvas
+from app.sheet.svg import Canvas, fitted, text_width
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.fields import curves, envelope
@@ -21,6 +21,7 @@ if TYPE_CHECKING:
 POINTS = 240
 _UPRIGHT = 270.0
 _GAP = 7.0
+_SIZE = 7.0
 
 
 def state_figure(results: Results, state: int) -> Figure:
@@ -107,8 +108,8 @@ def _draw_places(canvas: Canvas, ruler: Ruler, results: Results, place: float) -
     last = -np.inf
     for x, joint in zip(results.position.tolist(), results.project.joints, strict=True):
         along = ruler.along(x)
-        mark = joint.mark if len(joint.mark) <= 8 else joint.mark[:7] + "…"
-        room = 8.0 if ruler.upright else 4.2 * len(mark) + 5
+        mark = fitted(joint.mark, _SIZE, 40.0)
+        room = _SIZE if ruler.upright else text_width(mark, _SIZE) + 3
         if along - last < room:
             continue
         last = along
@@ -116,7 +117,7 @@ def _draw_places(canvas: Canvas, ruler: Ruler, results: Results, place: float) -
         canvas.text(
             (px, py + 2.5),
             mark,
-            size=7,
+            size=_SIZE,
             fill=QUIET,
             italic=True,
             anchor="end" if ruler.upright else "middle",

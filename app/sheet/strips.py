@@ -76,6 +76,8 @@ def draw_strip(
     _draw_frame(canvas, ruler, scale, joints)
     for number in range(len(strip.curves)):
         _draw_curve(canvas, ruler, strip, scale, number)
+    for number in range(len(strip.curves)):
+        _draw_signs(canvas, ruler, strip, scale, number)
     canvas.path(ruler.points([(0.0, scale.zero), (ruler.extent, scale.zero)]), Ink(colours.INK, 0.7))
     for limit in strip.limits:
         if _draw_limit(canvas, ruler, scale, limit):
@@ -117,10 +119,6 @@ def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, numbe
             _draw_run(canvas, ruler, scale, (x[low:high], value[low:high]), colour, fill)
     for low, high in _runs(over >= 1 + PASS_MARGIN):
         _draw_over(canvas, ruler, scale, (x[low:high], value[low:high]))
-    if strip.kind in ("force", "stress"):
-        # of two curves the first is the largest and carries the +, the second the smallest and carries the −
-        signs = (1, -1) if len(strip.curves) == 1 else ((1,), (-1,))[number]
-        _draw_signs(canvas, ruler, scale, x, value, signs)
 
 
 def _colours(strip: Strip, value: FloatArray) -> list[tuple[BoolArray, str, str]]:
@@ -180,19 +178,24 @@ def _draw_over(canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArra
     canvas.path(ruler.points(places), Ink(colours.OVER, 1.6))
 
 
-def _draw_signs(
-    canvas: Canvas, ruler: Ruler, scale: _Scale, x: FloatArray, value: FloatArray, signs: Sequence[int]
-) -> None:
-    """+ and − in the middle of each run that has room for it."""
-    for sign in signs:
-        colour, text = (colours.TENSION, "+") if sign > 0 else (colours.COMPRESSION, "−")
+def _draw_signs(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, number: int) -> None:
+    """+ and − in the middle of each run with room for it; of two curves the larger carries +, the other −."""
+    if strip.kind not in ("force", "stress"):
+        return
+    x, value = strip.x, strip.curves[number]
+    for sign in (1, -1) if len(strip.curves) == 1 else ((1,), (-1,))[number]:
         for low, high in _runs(sign * value > 0):
             a, b = ruler.along(float(x[low])), ruler.along(float(x[high - 1]))
             middle = float(np.interp((x[low] + x[high - 1]) / 2, x[low:high], value[low:high]))
             if b - a > 14 and abs(middle * scale.factor) > 11:
-                px, py = ruler.point((a + b) / 2, scale.zero + middle * scale.factor / 2)
-                canvas.pill((px, py), 9, 9, Ink(fill="#FFFFFF"))
-                canvas.text((px, py + 3.2), text, size=10, fill=colour, bold=True, anchor="middle")
+                _draw_sign(canvas, ruler, ((a + b) / 2, scale.zero + middle * scale.factor / 2), sign)
+
+
+def _draw_sign(canvas: Canvas, ruler: Ruler, place: tuple[float, float], sign: int) -> None:
+    x, y = ruler.point(*place)
+    colour, text = (colours.TENSION, "+") if sign > 0 else (colours.COMPRESSION, "−")
+    canvas.pill((x, y), 9, 9, Ink(fill="#FFFFFF"))
+    canvas.text((x, y + 3.2), text, size=10, fill=colour, bold=True, anchor="middle")
 
 
 def _draw_limit(canvas: Canvas, ruler: Ruler, scale: _Scale, limit: Limit) -> bool:

@@ -13,7 +13,7 @@ from dataclasses import dataclass, field
 from typing import Final, Literal, TypeAlias
 from xml.sax.saxutils import escape, quoteattr
 
-from app.sheet.printable import printable
+from app.sheet.printable import printable, printable_in_figure
 
 Point: TypeAlias = tuple[float, float]
 Anchor: TypeAlias = Literal["start", "middle", "end"]
@@ -24,12 +24,23 @@ _WIDE: Final = frozenset("mwMW@—%")
 
 
 def text_width(text: str, size: float) -> float:
-    """About how wide the text runs, in points; rather too much than too little."""
+    """About how wide the text runs as it is shown, in points; rather too much than too little."""
+    text = printable_in_figure(text)
     narrow = sum(c in _NARROW for c in text)
     wide = sum(c in _WIDE or ord(c) > 0x2FF for c in text)
     capital = sum(c.isupper() for c in text)
     plain = len(text) - narrow - wide - capital
     return size * (0.34 * narrow + 0.86 * wide + 0.7 * capital + 0.52 * plain)
+
+
+def fitted(text: str, size: float, width: float) -> str:
+    """The text, cut with an ellipsis where it would run wider than `width` points."""
+    if text_width(text, size) <= width:
+        return text
+    kept = next(
+        (end for end in range(len(text[:80]), 0, -1) if text_width(text[:end] + "…", size) <= width), 0
+    )
+    return text[:kept] + "…"
 
 
 def number(value: float) -> str:
@@ -112,8 +123,7 @@ class Canvas:
         backed: bool = False,
     ) -> None:
         """Text with its baseline at the point; `upwards` reads from below, `backed` hides lines behind it."""
-        shown = printable(text).replace("\n", " ")
-        corners = _corners(at, text_width(shown, size), size, anchor, upwards=upwards)
+        corners = _corners(at, text_width(text, size), size, anchor, upwards=upwards)
         for corner in corners:
             self.reach(*corner)
         if backed:
@@ -126,7 +136,7 @@ class Canvas:
         )
         self.parts.append(
             f'<text x="{x}" y="{y}" font-family="{FONT}" font-size="{number(size)}" fill="{fill}"'
-            f' text-anchor="{anchor}"{style}>{escape(shown)}</text>'
+            f' text-anchor="{anchor}"{style}>{escape(printable_in_figure(text))}</text>'
         )
 
     def hatch(self, points: Sequence[Point], colour: str) -> None:

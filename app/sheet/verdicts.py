@@ -46,7 +46,7 @@ def subject(check: Check) -> str:
 def check_row(check: Check, say: Readings) -> list[str]:
     """Subject, kind, place, value, limit, utilisation, verdict, combination."""
     quantity = quantity_of(check)
-    place = NOTHING if check.position is None else say.read(check.position, "length", unit=True)
+    place = NOTHING if check.position is None else say.plain(check.position, "length", unit=True)
     numbers = [NOTHING, NOTHING, NOTHING]
     if check.value is not None and check.limit is not None and check.utilisation is not None:
         limit = say.exact(check.limit, quantity) if quantity != "stress" else say.read(check.limit, quantity)
