@@ -154,8 +154,9 @@ def spring_force(at: Held, u: Displacements) -> FloatArray:
 
 def largest_load(at: Held, ends: Condensed) -> FloatArray:
     """(m,) N, the largest of what loads do to a joint: by forces, by elements, by movements of supports."""
+    beside = np.pad(ends.stretch_stretch + ends.mean_mean, 1)
     stiffness = np.zeros(at.force.shape[1])
     stiffness[at.sprung] = at.spring
-    stiffness[:-1] += ends.stretch_stretch + ends.mean_mean
+    stiffness[at.fixed] = np.maximum(beside[1:], beside[:-1])[at.fixed]
     loads = (at.force, ends.load_stretch, ends.load_mean, stiffness * at.movement)
     return np.asarray(np.max([np.abs(load).max(axis=1) for load in loads], axis=0))
