@@ -3,17 +3,10 @@
 An edit that would give anything else raises `EditError` with the faults, and nothing changes.
 """
 
-from app.edits.cases import add_case, add_combination, remove_case, set_factor
-from app.edits.cells import add_record, move_record, remove_records, set_value, value_at
+from app.edits.cases import remove_case, set_factor
+from app.edits.cells import add_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
-from app.edits.loads import (
-    joint_load_places,
-    joint_load_sum,
-    segment_load_places,
-    segment_load_sum,
-    set_joint_load,
-    set_segment_load,
-)
+from app.edits.loads import set_joint_load, set_segment_load
 from app.edits.member import delete_segments, insert_segment, reverse_member
 from app.edits.parts import join_segments, split_segment
 from app.edits.renaming import (
@@ -26,15 +19,10 @@ from app.edits.renaming import (
 
 __all__ = [
     "EditError",
-    "add_case",
-    "add_combination",
     "add_record",
     "delete_segments",
     "insert_segment",
     "join_segments",
-    "joint_load_places",
-    "joint_load_sum",
-    "move_record",
     "remove_case",
     "remove_records",
     "rename_case",
@@ -43,8 +31,6 @@ __all__ = [
     "rename_material",
     "rename_segment",
     "reverse_member",
-    "segment_load_places",
-    "segment_load_sum",
     "set_factor",
     "set_joint_load",
     "set_segment_load",

@@ -4,16 +4,10 @@ from __future__ import annotations
 
 from msgspec import UnsetType, structs
 
-from app.edits.cells import add_record, set_value
+from app.edits.cells import set_value
 from app.edits.checking import consistent
-from app.edits.records import free_name, kept, mapped
-from solver.model import Combination, LoadCase, Project
-
-
-def add_case(project: Project, name: str) -> Project:
-    """The project with an empty load case called `name`, or like it with a number where that is taken."""
-    taken = (case.name for case in project.load_cases)
-    return add_record(project, ("load_cases",), LoadCase(free_name(taken, name)))
+from app.edits.records import kept, mapped
+from solver.model import Combination, Project
 
 
 def remove_case(project: Project, name: str) -> Project:
@@ -26,13 +20,6 @@ def remove_case(project: Project, name: str) -> Project:
     cases = kept(project.load_cases, lambda case: case.name != name)
     combinations = mapped(project.combinations, without)
     return consistent(structs.replace(project, load_cases=cases, combinations=combinations))
-
-
-def add_combination(project: Project, name: str) -> Project:
-    """The project with a combination of all cases with factor 1, called `name` or like it with a number."""
-    taken = (combination.name for combination in project.combinations)
-    factors = {case.name: 1.0 for case in project.load_cases}
-    return add_record(project, ("combinations",), Combination(free_name(taken, name), factors))
 
 
 def set_factor(project: Project, combination: str, case: str, factor: float | UnsetType) -> Project:

@@ -1,4 +1,4 @@
-"""Setting, adding, removing and moving single values and records, at a place in the file's own path.
+"""Setting, adding and removing single values and records, at a place in the file's own path.
 
 A place is a tuple of the file's keys and of indices, ("segments", 2, "section", "diameter"); `place_text` of
 it is the place that faults name.
@@ -54,13 +54,6 @@ def remove_records(project: Project, place: Place, indices: Iterable[int]) -> Pr
     gone = set(indices)
     kept = [record for index, record in enumerate(value_at(project, place)) if index not in gone]
     return set_value(project, place, kept)
-
-
-def move_record(project: Project, place: Place, source: int, target: int) -> Project:
-    """The project with the record at `source` of the list at `place` moved to index `target`."""
-    records = list(value_at(project, place))
-    records.insert(target, records.pop(source))
-    return set_value(project, place, records)
 
 
 def _setter(place: Place, value: object) -> _Change:

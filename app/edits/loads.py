@@ -1,6 +1,6 @@
 """Loads as tables show them: a cell for one segment or joint in one load case.
 
-Several records may stand for one segment in one case; their cell shows the sum and is not edited here.
+Several records may stand for one segment in one case; their cell shows a sum and cannot be set.
 """
 
 from __future__ import annotations
@@ -13,37 +13,9 @@ from app.edits.cells import add_record, remove_records, set_value
 from app.edits.checking import refused
 from app.encode import plain
 from solver.faults import Place
-from solver.model import Project, SegmentLoad, end_of
+from solver.model import Project
 
 _LISTS = {"segment": "segment_loads", "joint": "joint_loads"}
-
-
-def segment_load_places(project: Project, case: str, segment: str) -> tuple[Place, ...]:
-    """The places of the records that load the segment in the case; the cell is editable while at most one."""
-    return _places(project, case, "segment", segment)
-
-
-def joint_load_places(project: Project, case: str, joint: str) -> tuple[Place, ...]:
-    """The places of the records that load the joint in the case."""
-    return _places(project, case, "joint", joint)
-
-
-def segment_load_sum(project: Project, case: str, segment: str, key: str) -> float:
-    """The sum of `key` over the segment's records in the case; an absent end counts as its start."""
-    loads = project.load_cases[_case_index(project, case)].segment_loads
-    return sum((_value(load, key) for load in loads if load.segment == segment), 0.0)
-
-
-def joint_load_sum(project: Project, case: str, joint: str, key: str) -> float:
-    """The sum of `key` (force or movement) over the joint's records in the case."""
-    loads = project.load_cases[_case_index(project, case)].joint_loads
-    return sum((float(getattr(load, key)) for load in loads if load.joint == joint), 0.0)
-
-
-def _value(load: SegmentLoad, key: str) -> float:
-    if key.endswith("_end"):
-        return float(end_of(getattr(load, f"{key.removesuffix('_end')}_start"), getattr(load, key)))
-    return float(getattr(load, key))
 
 
 def set_segment_load(

@@ -48,12 +48,3 @@ def fresh_mark(taken: Iterable[str], like: str) -> str:
     while f"{stem}{number}" in used:
         number += 1
     return f"{stem}{number}"
-
-
-def free_name(taken: Iterable[str], name: str) -> str:
-    """The name itself where it is free, else with the next free number after it."""
-    used = set(taken)
-    fresh, number = name, 2
-    while fresh in used:
-        fresh, number = f"{name} {number}", number + 1
-    return fresh

@@ -418,6 +418,6 @@ EDITS: list[Any] = [
     lambda member, _: edits.reverse_member(member),
     lambda member, index: edits.rename_joint(member, member.joints[index].mark, "renamed"),
     lambda member, index: edits.rename_segment(member, member.segments[index].mark, "renamed"),
-    lambda member, _: edits.add_case(member, "name 0"),
+    lambda member, index: edits.rename_material(member, member.segments[index].material, "renamed"),
     lambda member, _: edits.remove_case(member, "name 0"),
 ]
