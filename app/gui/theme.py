@@ -126,7 +126,7 @@ def theme_for(palette: QPalette) -> Theme:
 
 def greyed(theme: Theme) -> Theme:
     """The theme of what is out of date: no colour speaks any more, only shapes."""
-    grey, thin = theme.quiet, mixed(theme.quiet, theme.paper, 0.14)
+    grey, thin = theme.quiet, mixed(theme.quiet, theme.paper, 0.12)
     names = ("tension", "compression", "displacement", "over", "ink")
     fills = ("tension_fill", "compression_fill", "over_fill")
     return replace(theme, **dict.fromkeys(names, grey), **dict.fromkeys(fills, thin))

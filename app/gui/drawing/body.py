@@ -14,13 +14,12 @@ JOINT_REACH = 8.0  # pixels to either side in which a joint is pointed at
 
 
 def draw_body(sketch: Sketch) -> None:
-    """All segments, their targets, their marks."""
+    """All segments, their targets, their marks, the axis."""
     for index in range(len(sketch.member.project.segments)):
         if sketch.shown_span(index) is not None:
             _draw_segment(sketch, index)
     _draw_axis(sketch)
     _draw_marks(sketch)
-    _aim_at_joints(sketch)
 
 
 def half_depth(sketch: Sketch, segment: Segment, s: float) -> float:
@@ -95,7 +94,7 @@ def _draw_mark(sketch: Sketch, mark: str, along: float, part: Part) -> None:
     sketch.picture.texts.append(Text(box, mark, "strong", "ink", part))
 
 
-def _aim_at_joints(sketch: Sketch) -> None:
+def aim_at_joints(sketch: Sketch) -> None:
     """Joints are pointed at near their line, but never so widely that a short segment is out of reach."""
     joints = sketch.member.project.joints
     for index in range(len(joints)):

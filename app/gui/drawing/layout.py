@@ -9,7 +9,7 @@ from dataclasses import replace
 
 from PySide6.QtCore import QPointF, QRectF
 
-from app.gui.drawing.body import draw_body
+from app.gui.drawing.body import aim_at_joints, draw_body
 from app.gui.drawing.chain import (
     LEVEL_GAP,
     draw_chain,
@@ -46,6 +46,7 @@ def lay_out(member: Member, place: Place) -> Picture:
     draw_body(sketch)
     draw_supports(sketch)
     draw_loads(sketch)
+    aim_at_joints(sketch)
     _draw_factor(sketch)
     _set_edge(sketch)
     return sketch.picture

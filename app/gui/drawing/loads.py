@@ -18,6 +18,7 @@ from app.gui.drawing.words import (
     bedding_text,
     distributed_text,
     fit_text,
+    gravity_text,
     signed_text,
     value_text,
     warmth_text,
@@ -42,7 +43,8 @@ def draw_loads(sketch: Sketch) -> None:
     rows = sketch.rows.labels
     for label in sketch.placed(load_wishes(sketch), rows):
         face, ink = ("small_strong", "ink") if label.wish.part.kind == "force" else ("small", "quiet")
-        sketch.text(label.wish, label.span, rows[label.row], "high", face, ink)
+        if sketch.is_free(label.wish, label.span, rows[label.row], "high"):
+            sketch.text(label.wish, label.span, rows[label.row], "high", face, ink)
 
 
 def load_wishes(sketch: Sketch) -> list[Wish]:
@@ -131,7 +133,8 @@ def _draw_force(sketch: Sketch, joint: int, force: float) -> None:
     outside = lies_outside(sketch, joint)
     across = sketch.rows.axis if outside else sketch.rows.arrows
     _arrow(sketch, tail, tip_at - tail, across, 2.4, HEAD + 3.0, part)
-    sketch.target((tail, tip_at), (across - 12.0, across + 12.0), part)
+    below = 12.0 if outside else 9.0  # the row of arrows is near the member, which must stay within reach
+    sketch.target((tail, tip_at), (across + below - 24.0, across + below), part)
     wish = _outside_wish(sketch, joint, force) if outside else None
     if wish is not None:
         span = wish.along - 0.5 * wish.extent, wish.along + 0.5 * wish.extent
@@ -145,7 +148,7 @@ def _force_span(sketch: Sketch, joint: int, force: float) -> tuple[float, float]
     last = len(sketch.member.project.segments)
     pressing = (joint == 0 and force > 0) or (joint == last and force < 0)
     along, gap = sketch.along(joint), 3.0 * direction
-    inner = min(max(0.7 * sketch.shortest_beside(joint), LEAST_ARROW), ARROW)
+    inner = min(max(0.45 * sketch.shortest_beside(joint), LEAST_ARROW), ARROW)
     length = direction * (ARROW if lies_outside(sketch, joint) else inner)
     tail = along - gap - length if pressing else along + gap
     return tail, tail + length
@@ -236,10 +239,8 @@ def _draw_bedding(sketch: Sketch) -> None:
 
 
 def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
-    if not gravity:
+    text = gravity_text(gravity, sketch.member.system)
+    if not text:
         return []
-    text = tr("self-weight, g {value} along x").format(
-        value=signed_text(gravity, "acceleration", sketch.member.system)
-    )
     middle = 0.5 * (sketch.window[0] + sketch.window[1])
     return [sketch.wish(text, middle, Part("note", 5), rank=5, slide=sketch.window[1] - sketch.window[0])]

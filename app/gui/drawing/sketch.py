@@ -1,7 +1,7 @@
 """The sheet of paper that the parts of the drawing are put on: (along, across) pixels, rows, and the picture.
 
 `across` is counted from the side of the loads: downward when the sheet lies across, leftward when upright.
-The parts (body, supports, loads, chain) draw in these coordinates; which way the sheet is turned is known here.
+The parts (body, supports, loads, chain) draw in these coordinates and need not know which way it is turned.
 """
 
 from __future__ import annotations
@@ -172,13 +172,21 @@ class Sketch:
         toward: Toward = "middle",
         face: Face = "small",
         ink: Ink = "quiet",
-    ) -> QRectF:
-        """A text in a box of exactly its size within the given spans; gives the box."""
+    ) -> None:
+        """A text in a box of exactly its size within the given spans."""
+        box = self._box(wish, along, across, toward, face)
+        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part))
+
+    def is_free(self, wish: Wish, along: Span, across: Span, toward: Toward) -> bool:
+        """Whether a label would meet none that stands outside the rows, such as that of an end force."""
+        box = self._box(wish, along, across, toward, "small")
+        return not any(text.rect.intersects(box) for text in self.picture.texts)
+
+    def _box(self, wish: Wish, along: Span, across: Span, toward: Toward, face: Face) -> QRectF:
         spare = across[1] - across[0] - wish.depth
         first = across[0] + {"low": 0.0, "middle": 0.5, "high": 1.0}[toward] * spare
         box = QRectF(QPointF(), self.place.fonts.measure(wish.text, face))
         box.moveCenter(self.rect(along, (first, first + wish.depth)).center())
-        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part))
         return box
 
     def target(self, along: Span, across: Span, part: Part) -> None:

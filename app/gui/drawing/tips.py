@@ -10,6 +10,7 @@ from app.gui.drawing.words import (
     bedding_text,
     distributed_text,
     fit_text,
+    gravity_text,
     section_text,
     signed_text,
     value_text,
@@ -49,6 +50,7 @@ def _on_segment(member: Member, index: int) -> tuple[str, ...]:
         tr("load {value}").format(value=load) if load else "",
         warmth_text(*loads.temperature[0, index].tolist(), system),
         fit_text(float(loads.lack_of_fit[0, index]), system),
+        gravity_text(float(loads.gravity[0]), system),
     )
 
 

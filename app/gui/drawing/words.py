@@ -56,6 +56,13 @@ def fit_text(value: float, system: UnitSystemName) -> str:
     return words.format(amount=value_text(abs(value), "displacement", system))
 
 
+def gravity_text(value: float, system: UnitSystemName) -> str:
+    """Self-weight, by the component of gravity along x."""
+    if not value:
+        return ""
+    return tr("self-weight, g {value} along x").format(value=signed_text(value, "acceleration", system))
+
+
 def bedding_text(start: float, end: float, system: UnitSystemName) -> str:
     """A bedding's stiffness."""
     if not (start or end):

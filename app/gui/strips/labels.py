@@ -6,7 +6,7 @@ Plain layout: a content, its rectangle and a measure of text give labels with th
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from itertools import product
 from typing import TypeAlias
 
@@ -127,7 +127,7 @@ class _Placer:
         for limit, off in drawn + [(limit, True) for limit in self.content.beyond]:
             boxes = [box for box in self._limit_boxes(limit, off=off) if not _meets(box.rect, labels)]
             clear = [box for box in boxes if not self._covers_curve(box.rect)]
-            labels += (clear or boxes)[:1]
+            labels += clear[:1] or [replace(box, ink="ink") for box in boxes[:1]]
         return labels
 
     def _limit_boxes(self, limit: Limit, *, off: bool) -> Iterator[Label]:
@@ -176,7 +176,7 @@ class _Placer:
             middle = self.axes.rect(span, self.axes.across_of(self.rect)).center()
             box = QRectF(middle - QPointF(0.5 * size.width(), 0.5 * size.height()), size)
             if self.axes.along_of(box)[0] >= min(span) and self.axes.along_of(box)[1] <= max(span):
-                labels.append(Label(box, tr("not checked"), "small", "quiet"))
+                labels.append(Label(box, tr("not checked"), "small"))
         return labels
 
     def signs(self) -> list[Label]:
