@@ -24,6 +24,7 @@ from PySide6.QtGui import QColor, QPalette
 
 from app.gui.main import application
 from app.gui.settings import Settings
+from app.gui.view import Shown
 from app.gui.window import Window
 
 SIZES = ("1280x800", "2560x1440")
@@ -42,7 +43,7 @@ def main(arguments: list[str]) -> int:
             for size in options.size:
                 theme = "-dark" if options.dark else ""
                 target = options.folder / f"{name}-{units}-{size}{theme}.png"
-                take(in_units(samples.read_sample(name), units), size_of(size), target)
+                take(in_units(samples.read_sample(name), units), size_of(size), target, options.show)
                 sys.stdout.write(f"{target}\n")
     return 0
 
@@ -55,6 +56,7 @@ def parser() -> argparse.ArgumentParser:
     asked.add_argument("--units", nargs="+", default=SYSTEM_NAMES, choices=SYSTEM_NAMES)
     asked.add_argument("--size", nargs="+", default=SIZES, metavar="WIDTHxHEIGHT")
     asked.add_argument("--dark", action="store_true", help="with a dark palette")
+    asked.add_argument("--show", metavar="COMBINATION", help="show this one instead of the envelope")
     return asked
 
 
@@ -77,13 +79,16 @@ def dark_palette() -> QPalette:
     return palette
 
 
-def take(project: Project, size: QSize, target: Path) -> None:
+def take(project: Project, size: QSize, target: Path, combination: str | None = None) -> None:
     """Open the window on a project, wait for its results, and grab it."""
     with tempfile.TemporaryDirectory() as folder:
         window = Window(project, Settings(Path(folder) / "settings.ini"), Path(folder) / "recovery")
         window.resize(size)
         window.show()
         wait_for_results(window)
+        if combination is not None:
+            window.view.set_shown(Shown("combination", combination))
+            QCoreApplication.processEvents()
         window.grab().save(str(target))
         window.close()
         QCoreApplication.sendPostedEvents(None, QEvent.Type.DeferredDelete)
