@@ -79,7 +79,11 @@ def _linear(ends: FloatArray, parts: tuple[FloatArray, FloatArray] | None) -> Fl
     if parts is not None:
         start, end = parts
         first, last = first * (1 - start) + last * start, first * (1 - end) + last * end
-    return np.stack((first + last, last - first)) / 2
+    series = np.empty((2, *first.shape))
+    np.add(first, last, out=series[0])
+    np.subtract(last, first, out=series[1])
+    series *= 0.5
+    return series
 
 
 def _load(

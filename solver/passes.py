@@ -92,7 +92,7 @@ class Pass:
         reaction = self._reactions()[:, joints]
         spring_energy, work = self._spring_energy(u), np.einsum("mj,mj->m", self.held.force, u)
         applied = fields.load + self.held.force.sum(axis=1)
-        balance = applied + np.nansum(reaction, axis=1) + fields.bedding_force
+        balance = applied + np.where(np.isnan(reaction), 0.0, reaction).sum(axis=1) + fields.bedding_force
         strain = fields.strain_energy + spring_energy
         arrays = {
             "start": mesh.start,
@@ -210,4 +210,4 @@ def _summed(fields: list[Fields]) -> dict[str, FloatArray]:
         "load",
         "bedding_force",
     )
-    return {name: np.sum([getattr(own, name) for own in fields], axis=0) for name in names}
+    return {name: sum(getattr(own, name) for own in fields) for name in names}

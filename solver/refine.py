@@ -18,6 +18,7 @@ from solver.elements import GREATEST_DEGREE, LEAST_DEGREE
 from solver.mesh import Mesh, closed_segments
 from solver.sections import part_of
 
+DEGREES = np.arange(1, GREATEST_DEGREE + 1)
 CLOSED_DEGREE = 3
 SAFETY = 0.1  # part of the tolerance the first degree aims at
 COARSEST = (
@@ -55,27 +56,33 @@ def wanted_degree(chain: Chain, mesh: Mesh, tolerance: float) -> IntArray:
     wanted = np.full(mesh.segment.size, CLOSED_DEGREE)
     opened = np.flatnonzero(~mesh.closed)
     segment, start, end = mesh.segment[opened], mesh.start[opened], mesh.end[opened]
-    area = part_of(chain.area[segment], start, end)
-    decay = pole_decay(area)
-    z = bedding_number(chain, segment, area, end - start)
-    error, term = np.ones_like(decay), np.ones_like(z)
-    aim = SAFETY * min(tolerance, COARSEST)
-    degree = np.full(opened.size, GREATEST_DEGREE + 1)
-    for p in range(1, GREATEST_DEGREE + 1):
-        term = term * z / (2 * p - 1)
-        error = error * decay + term
-        met = (p * error < aim) & (end - start > SHORTEST)
-        degree = np.where(met & (degree > p), max(p, LEAST_DEGREE), degree)
-    wanted[opened] = np.where(end - start > SHORTEST, degree, GREATEST_DEGREE)
+    area = chain.area[segment] if mesh.whole else part_of(chain.area[segment], start, end)
+    error = expected_error(pole_decay(area), bedding_number(chain, segment, area, end - start))
+    met = error < SAFETY * min(tolerance, COARSEST)
+    met[end - start <= SHORTEST, -1] = True  # as good as it gets
+    degree = np.where(met.any(axis=1), np.maximum(met.argmax(axis=1) + 1, LEAST_DEGREE), GREATEST_DEGREE + 1)
+    wanted[opened] = degree
     return wanted
+
+
+def expected_error(decay: FloatArray, z: FloatArray) -> FloatArray:
+    """(e, p) for the degrees 1…12, relative: the coefficients of pole and bedding multiplied as series."""
+    error = decay[:, None] ** DEGREES
+    if z.any():
+        column, term = np.ones_like(decay), np.ones_like(z)
+        for p in range(1, GREATEST_DEGREE + 1):
+            term = term * z / (2 * p - 1)
+            column = column * decay + term
+            error[:, p - 1] = column
+    return np.asarray(DEGREES * error)
 
 
 def pole_decay(area: FloatArray) -> FloatArray:
     """(e,) 1/ρ of the nearer pole of 1/A, from Bernstein coefficients (e, 3); 0 where A is constant."""
     first, middle, last = area.T
     root = np.sqrt(np.maximum(middle * middle - first * last, 0.0))
-    ratios = np.sqrt(np.stack(((middle + root) / last, first / (middle + root))))
-    return np.asarray((np.abs(1 - ratios) / (1 + ratios)).max(axis=0))
+    one, other = np.sqrt((middle + root) / last), np.sqrt(first / (middle + root))
+    return np.asarray(np.maximum(np.abs(1 - one) / (1 + one), np.abs(1 - other) / (1 + other)))
 
 
 def bedding_number(chain: Chain, segment: IntArray, area: FloatArray, part: FloatArray) -> FloatArray:
