@@ -91,6 +91,12 @@ def test_what_the_reader_refuses_in_one_record_does_not_fit(change: tuple[Any, .
     assert not fits(changed(*change), SCHEMA)
 
 
+@pytest.mark.parametrize("short", [changed("segments", []), changed("joints", [{"mark": "0"}])])
+def test_a_member_has_a_segment_between_two_joints(short: Any) -> None:
+    assert faults_of(short)
+    assert not fits(short, SCHEMA)
+
+
 @given(st.data())
 def test_reader_and_schema_agree_on_anything_anywhere(data: st.DataObject) -> None:
     document = example()
