@@ -61,9 +61,10 @@ def joint_share(system: JointSystem, leftover: FloatArray, roundings: FloatArray
     return np.asarray(np.sqrt(np.maximum(energy, 0.0)))
 
 
-def joint_roundings(at: Held, ends: Condensed, u: Displacements) -> FloatArray:
+def joint_roundings(
+    at: Held, ends: Condensed, u: Displacements, mean: FloatArray, stretch: FloatArray
+) -> FloatArray:
     """(m, e + 1) how far rounding can have moved the sum of forces at each end of an element."""
-    mean, stretch = u.mean(), u.stretch()
     size = np.abs(ends.stretch_stretch * stretch) + np.abs(ends.load_stretch) + np.abs(ends.load_mean) / 2
     if ends.mean_mean.any():
         size += np.abs(ends.mean_stretch) * (np.abs(mean) + np.abs(stretch) / 2)

@@ -17,7 +17,7 @@ from solver.bound import FLOOR, Bound, displacement_share, field_share, joint_ro
 from solver.chain import Chain, Loads
 from solver.condense import ClosedForm, Condensation, Condensed, Fields, Stacked
 from solver.errors import Cancelled
-from solver.joints import Displacements, JointSystem, held, largest_load, spring_force, unbalanced
+from solver.joints import JointSystem, held, largest_load, spring_force, unbalanced
 from solver.mesh import Mesh, Where, block
 from solver.solution import Solution
 
@@ -59,12 +59,12 @@ class Pass:
         self.ends = system.displacements()
         if cancelled():
             raise Cancelled
-        self.fields = gathered(parts, self.ends, mesh)
+        mean, stretch = self.ends.mean(), self.ends.stretch()
+        self.fields = gathered(parts, mean, stretch, mesh)
         self.leftover = unbalanced(self.held, self.ends, self.fields.start_force, self.fields.end_force)
-        self.bound = self._bound(system)
+        self.bound = self._bound(system, joint_roundings(self.held, self.condensed, self.ends, mean, stretch))
 
-    def _bound(self, system: JointSystem) -> Bound:
-        roundings = joint_roundings(self.held, self.condensed, self.ends)
+    def _bound(self, system: JointSystem, roundings: FloatArray) -> Bound:
         rounding = displacement_share(self.condensed, self.ends)
         rounding += field_share(self.fields.force_norm + self.fields.strain_norm)
         return Bound(
@@ -176,9 +176,8 @@ def joined(parts: list[Part], states: int, elements: int) -> Condensed:
     return whole
 
 
-def gathered(parts: list[Part], ends: Displacements, mesh: Mesh) -> MemberFields:
-    """The fields of all elements."""
-    mean, stretch = ends.mean(), ends.stretch()
+def gathered(parts: list[Part], mean: FloatArray, stretch: FloatArray, mesh: Mesh) -> MemberFields:
+    """The fields of all elements, from mean and stretch (m, e) of their end displacements."""
     states, elements = mean.shape
     stacked = not mesh.closed.all()
     degree = int(mesh.degree.max())
