@@ -152,6 +152,15 @@ def test_a_stress_of_rounding_has_no_sign():
     assert [c.segment for c in made(member(parts(allowable_tension=1e8), HELD, [audible]))] == ["A", "B"]
 
 
+def test_equal_tension_and_compression_count_at_the_smaller_x():
+    # an even load on a bar held at both ends: q L / 2 pulled at the start, as much pushed at the end
+    held = {0: FixedSupport(), 1: FixedSupport()}
+    loaded = case(on_segments=[SegmentLoad("A", load_start=1e4)])
+    results = solve(member(parts(allowable_tension=1e8, allowable_compression=1e8)[:1], held, [loaded]))
+    assert_allclose([c.utilisation for c in results.checks], 0.05, rtol=1e-12)
+    assert results.segments.utilisation_at[0, 0] == 0.0
+
+
 def test_the_first_of_equals_governs():
     def check(name, utilisation, status="pass"):
         return Check("tension", name, status, segment="A", utilisation=utilisation)

@@ -73,6 +73,7 @@ def test_curves_pass_through_ends_and_extremes(project):
         assert_array_equal(found.x[last], results.position[1:])
         tiny = 1e-14 * np.max(np.abs(found.force))  # sums in another order
         assert_allclose(found.force[first], segments.force_start[state], rtol=1e-14, atol=tiny)
+        assert_allclose(found.force[last], segments.force_end[state], rtol=1e-14, atol=tiny)
 
 
 @given(projects())
@@ -114,6 +115,21 @@ def test_the_envelope_is_the_largest_and_smallest_of_the_states(project):
             near = 1e-11 * np.max(np.abs([getattr(found, f"{name}_max"), getattr(found, f"{name}_min")]))
             assert_allclose([largest, smallest], [max(values), min(values)], rtol=1e-9, atol=near)
             assert getattr(found, f"{name}_max_state")[k] in states
+
+
+@given(projects())
+def test_the_envelope_passes_through_the_extremes_of_all_checked_states(project):
+    results = solve(project)
+    states = checked_states(results)
+    found = envelope(results)
+    for name in NAMES:
+        largest = getattr(results.segments, f"{name}_max")[states].max(axis=0)
+        smallest = getattr(results.segments, f"{name}_min")[states].min(axis=0)
+        near = 1e-12 * np.max(np.abs([largest, smallest]))
+        for index in range(len(project.segments)):
+            own = found.segment == index
+            assert_allclose(getattr(found, f"{name}_max")[own].max(), largest[index], rtol=0, atol=near)
+            assert_allclose(getattr(found, f"{name}_min")[own].min(), smallest[index], rtol=0, atol=near)
 
 
 def test_the_envelope_names_the_state_that_governs():
