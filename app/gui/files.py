@@ -48,6 +48,16 @@ def blank_project(system: UnitSystemName) -> Project:
     )
 
 
+def read_or_say(path: Path) -> tuple[Project | None, tuple[str, ...]]:
+    """The project in a file, or None with the sentences on why there is none."""
+    try:
+        return project_file.read(path), ()
+    except ProjectFileError as error:
+        return None, tuple(fault_sentence(fault) for fault in error.faults)
+    except OSError as error:
+        return None, (error.strerror or str(error),)
+
+
 class Files(QObject):
     """The document's way from and to files."""
 
@@ -112,20 +122,16 @@ class Files(QObject):
 
     def read(self, path: Path) -> bool:
         """Read a file into the document; its faults, all of them, are shown and change nothing."""
-        try:
-            project = project_file.read(path)
-        except ProjectFileError as error:
-            sentences = [fault_sentence(fault) for fault in error.faults]
-            self._show_faults(path, sentences)
-        except OSError as error:
-            self._show_faults(path, [error.strerror or str(error)])
-        else:
-            self._document.load(project, path)
-            self._remember(path)
-            return True
-        return False
+        project, faults = read_or_say(path)
+        if project is None:
+            self.show_faults(path, faults)
+            return False
+        self._document.load(project, path)
+        self.remember(path)
+        return True
 
-    def _show_faults(self, path: Path, sentences: list[str]) -> None:
+    def show_faults(self, path: Path, sentences: tuple[str, ...]) -> None:
+        """Say why a file was not opened, all of it."""
         headline = tr("{name} was not opened:").format(name=path.name)
         dialogs.show_text(self._window, tr("Not opened"), headline, "\n".join(sentences))
 
@@ -178,11 +184,12 @@ class Files(QObject):
             dialogs.show_text(self._window, tr("Not saved"), headline, error.strerror or str(error))
             return False
         self._document.mark_saved(snapshot.project, path)
-        self._remember(path)
+        self.remember(path)
         self.told.emit(saved_line(snapshot))
         return True
 
-    def _remember(self, path: Path) -> None:
+    def remember(self, path: Path) -> None:
+        """Note a file as a recent one."""
         self._settings.add_recent(path.resolve())
         self._settings.set_last_folder(path.resolve().parent)
         self.recent_changed.emit()

@@ -11,7 +11,7 @@ from PySide6.QtWidgets import QApplication
 
 from app import samples
 from app.gui import dialogs, log, settings
-from app.gui.files import blank_project
+from app.gui.files import blank_project, read_or_say
 from app.gui.recovery import Recovered, left_behind
 from app.gui.settings import Settings
 from app.gui.window import Window
@@ -30,14 +30,15 @@ def application() -> QApplication:
 
 def open_window(path: str | os.PathLike[str] | None, store: Settings, recovery_folder: Path) -> Window:
     """A window on the file, or on a new project."""
-    window = Window(blank_project(store.units), store, recovery_folder)
+    named = None if path is None else Path(path)
+    project, faults = (None, ()) if named is None else read_or_say(named)
+    held = None if project is None or named is None or is_sample(named) else named
+    window = Window(project or blank_project(store.units), store, recovery_folder, held)
     window.show()
-    if path is not None:
-        opened = Path(path)
-        if is_sample(opened):
-            window.document.load(samples.read_sample(opened.name.removesuffix(samples.SUFFIX)), None)
-        else:
-            window.files.read(opened)
+    if held is not None:
+        window.files.remember(held)
+    if faults and named is not None:
+        window.files.show_faults(named, faults)
     return window
 
 

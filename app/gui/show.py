@@ -95,6 +95,12 @@ class Showing(QObject):
         self._late.start()
         self.solver.request(project)
 
+    def begin(self) -> None:
+        """Draw the member at once, and ask the solver when that is on the screen: its libraries take a while."""
+        self._view.set_shown(still_shown(self._view.shown, self._document.project))
+        self._show()
+        QTimer.singleShot(0, self, self.follow)
+
     def on_ready(self, delivery: Delivery) -> None:
         """A result, in the order of the edits."""
         assert isinstance(delivery.value, Outcome)  # noqa: S101 - what `compute` gives

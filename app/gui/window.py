@@ -38,12 +38,14 @@ from solver.model import Orientation, Project, UnitSystemName
 class Window(QMainWindow):
     """One project in one window."""
 
-    def __init__(self, project: Project, store: Settings, recovery_folder: Path) -> None:
+    def __init__(
+        self, project: Project, store: Settings, recovery_folder: Path, path: Path | None = None
+    ) -> None:
         super().__init__()
         self.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
         self.setAcceptDrops(True)
         self.store = store
-        self.document = Document(project, parent=self)
+        self.document = Document(project, path, parent=self)
         self.view = View(self)
         self._theme = theme_for(self.palette())
         self._make_rooms(recovery_folder)
@@ -53,7 +55,7 @@ class Window(QMainWindow):
         self._restore()
         self.setStyleSheet(style_sheet(self._theme))
         self.on_document_changed()
-        self.showing.follow()
+        self.showing.begin()
         self.tables.views["segments"].setFocus()
 
     def _make_rooms(self, recovery_folder: Path) -> None:

@@ -187,12 +187,12 @@ def test_closing_while_the_solver_runs_is_clean(qtbot, store, rod, tmp_path, mon
 
         started.set()
         while not cancelled():
-            pass
+            threading.Event().wait(0.001)
         raise Cancelled
 
     monkeypatch.setattr("solver.solve.solve", endless)
     window = open_window(rod, store, tmp_path / "recovery")
-    assert started.wait(5)
+    qtbot.waitUntil(started.is_set, timeout=5000)
     with qtbot.waitSignal(window.destroyed, timeout=2000):
         window.close()
     assert list((tmp_path / "recovery").iterdir()) == []
