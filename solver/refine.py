@@ -31,7 +31,7 @@ SHORTEST = 2.0**-40  # part of a segment below which no element is halved
 
 
 def first_mesh(chain: Chain, tolerance: float) -> Mesh:
-    """One element a segment, halved where no degree is expected to do."""
+    """One element a segment, halved where no degree is expected to do; if that ends early the bound tells."""
     closed = closed_segments(chain)
     count = closed.size
     mesh = Mesh(
@@ -45,10 +45,10 @@ def first_mesh(chain: Chain, tolerance: float) -> Mesh:
     if closed.all():
         return mesh
     wanted = wanted_degree(chain, mesh, tolerance)
-    while (wanted > GREATEST_DEGREE).any():
+    while (wanted > GREATEST_DEGREE).any() and mesh.segment.size - count <= MOST_HALVINGS:
         mesh = halved(mesh, wanted > GREATEST_DEGREE)
         wanted = wanted_degree(chain, mesh, tolerance)
-    return with_degrees(mesh, wanted)
+    return with_degrees(mesh, np.minimum(wanted, GREATEST_DEGREE))
 
 
 def wanted_degree(chain: Chain, mesh: Mesh, tolerance: float) -> IntArray:

@@ -11,7 +11,7 @@ from msgspec import UNSET
 from msgspec.structs import replace
 from numpy.testing import assert_allclose
 
-from solver.errors import Cancelled, NotSolvable, OutOfRange
+from solver.errors import Cancelled, InputError, NotSolvable, OutOfRange
 from solver.model import Combination, FixedSupport, Joint, JointLoad, StopSupport
 from solver.solve import solve
 from tests.members import Part, area, case, member, round_bar
@@ -70,6 +70,16 @@ def test_a_stop_is_refused_for_now():
 def test_an_area_beyond_floating_point_is_refused(size):
     with pytest.raises(OutOfRange):
         solve(member([Part(1.0, round_bar(size))], HELD))
+
+
+@pytest.mark.parametrize("bedding", [1e25, 1e60, 1e300])
+def test_an_absurd_bedding_is_refused_rather_than_halved_for_ever(bedding):
+    with pytest.raises(InputError):
+        solve(
+            member(
+                [Part(1.0, area(1e-3), bedding=bedding)], HELD, [case(on_joints=[JointLoad("1", force=1e3)])]
+            )
+        )
 
 
 def test_loads_beyond_floating_point_are_refused():
