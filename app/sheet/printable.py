@@ -52,6 +52,7 @@ _RIGHT_TO_LEFT: Final = re.compile(
 )
 _LEFT_TO_RIGHT_MARK: Final = "\u200e"
 _RUN: Final = 6
+_DRAFTING: Final = str.maketrans("⌀▭", "ø□")  # where accents forbid the second font that has these signs
 
 
 class _Table:
@@ -85,12 +86,14 @@ def printable(text: str) -> str:
 
 def printable_in_figure(text: str) -> str:
     """The text on one line as a figure may hold it, every other character written as its number."""
-    return _shown(" ".join(text.split()).replace("▭", "□"), FIGURE_TABLE)
+    line = text.replace("\r\n", " ").replace("\n", " ").replace("\t", " ")
+    plain = unicodedata.normalize("NFD", line) == line
+    return _shown(line if plain else line.translate(_DRAFTING), FIGURE_TABLE, spare="⌀▭" if plain else "")
 
 
-def _shown(text: str, table: _Table) -> str:
+def _shown(text: str, table: _Table, spare: str = "\n") -> str:
     composed = unicodedata.normalize("NFC", text.replace("\t", " "))
-    return "".join(c if c == "\n" or c in table else f"[U+{ord(c):04X}]" for c in composed)
+    return "".join(c if c in spare or c in table else f"[U+{ord(c):04X}]" for c in composed)
 
 
 def breakable(text: str, longest: int) -> str:
@@ -102,7 +105,7 @@ def breakable(text: str, longest: int) -> str:
 
 
 def _with_breaks(run: str) -> str:
-    return _BREAK.join(run[start : start + _RUN] for start in range(0, len(run), _RUN))
+    return _BREAK.join(["", *(run[start : start + _RUN] for start in range(0, len(run), _RUN)), ""])
 
 
 def shortened(text: str, length: int) -> str:

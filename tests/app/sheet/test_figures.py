@@ -1,0 +1,148 @@
+"""Figures: plain SVG, nothing outside the frame, nothing on top of each other, marks beside the colours."""
+
+from __future__ import annotations
+
+import re
+from itertools import pairwise
+from xml.etree import ElementTree
+
+import hypothesis
+import pytest
+from hypothesis import given
+from msgspec import structs
+
+from app.samples import names, read_sample
+from app.sheet import colours
+from app.sheet.figures import Figure, envelope_figure, member_figure, state_figure
+from app.sheet.lanes import packed
+from app.sheet.svg import Canvas, Ink, text_width
+from solver.model import Display, Project
+from solver.results import Results
+from solver.solve import solve
+from tests.strategies import projects
+
+SVG = "{http://www.w3.org/2000/svg}"
+
+
+def parsed(svg: str) -> ElementTree.Element:
+    return ElementTree.fromstring(svg)  # noqa: S314 - our own figure, not a stranger's
+
+
+def turned(project: Project, orientation: str) -> Project:
+    return structs.replace(project, display=structs.replace(project.display, orientation=orientation))
+
+
+def texts(figure: Figure) -> list[str]:
+    return [element.text or "" for element in parsed(figure.svg).iter(f"{SVG}text")]
+
+
+def points(figure: Figure) -> list[tuple[float, float]]:
+    found = []
+    for path in parsed(figure.svg).iter(f"{SVG}path"):
+        numbers = [float(n) for n in re.findall(r"-?\d+\.?\d*", path.get("d", ""))]
+        found += list(zip(numbers[::2], numbers[1::2], strict=True))
+    return found
+
+
+def figures(results: Results) -> list[Figure]:
+    return [
+        member_figure(results.project, results.position, results.loads, 0),
+        member_figure(results.project, results.position, results.loads, 0, chain=False),
+        state_figure(results, 0),
+        envelope_figure(results),
+    ]
+
+
+@pytest.mark.parametrize("orientation", ["horizontal", "vertical"])
+@pytest.mark.parametrize("name", names())
+def test_nothing_reaches_out_of_the_frame(name: str, orientation: str) -> None:
+    for figure in figures(solve(turned(read_sample(name), orientation))):
+        root = parsed(figure.svg)
+        x, y, width, height = map(float, root.get("viewBox", "").split())
+        assert (width, height) == pytest.approx((figure.width, figure.height), abs=0.01)
+        assert all(x <= px <= x + width and y <= py <= y + height for px, py in points(figure))
+
+
+@hypothesis.settings(max_examples=15)
+@given(projects())
+def test_any_project_can_be_drawn(project: Project) -> None:
+    for figure in figures(solve(project)):
+        assert parsed(figure.svg).tag == f"{SVG}svg"
+        drawn = re.sub(
+            r"<text.*?</text>|aria-label=\"[^\"]*\"|aria-label='[^']*'", "", figure.svg, flags=re.DOTALL
+        )
+        assert not re.search("nan|inf", drawn)
+
+
+def test_the_drawing_names_segments_loads_and_lengths() -> None:
+    results = solve(read_sample("tie_rod"))
+    state = results.state_index("Storm surge")
+    shown = texts(member_figure(results.project, results.position, results.loads, state))
+    for expected in ("A", "H", "1100", "⌀38", "λ −3.5 mm", "−0.9 → −0.35 N/mm", "22000 N/mm", "moves 0.4 mm"):
+        assert expected in [text.replace("\u202f", "") for text in shown], expected
+
+
+def test_the_drawing_turns_with_the_project() -> None:
+    results = solve(read_sample("tie_rod"))
+    across, upright = (
+        member_figure(turned(results.project, way), results.position) for way in ("horizontal", "vertical")
+    )
+    assert across.width > across.height
+    assert upright.height > upright.width
+
+
+def test_equal_scales_are_said_to_be_equal() -> None:
+    results = solve(read_sample("hoist_shaft"))
+    assert member_figure(results.project, results.position).note.startswith("Drawn to scale")
+    results = solve(read_sample("tie_rod"))
+    assert "depths to a scale of their own" in member_figure(results.project, results.position).note
+
+
+def test_signs_stand_beside_the_colours_and_hatching_beside_over_the_limit() -> None:
+    results = solve(read_sample("hoist_shaft"))
+    figure = state_figure(results, results.state_index("Warm running"))
+    assert "−" in texts(figure)
+    assert colours.COMPRESSION in figure.svg
+    assert "url(#hatch" not in figure.svg
+    results = solve(read_sample("tie_rod"))
+    figure = state_figure(results, results.state_index("Storm surge"))
+    assert "+" in texts(figure)
+    assert figure.svg.count("url(#hatch") == 4  # two segments fail, in stress and in utilisation
+
+
+def test_only_colours_of_the_table_are_used() -> None:
+    table = {value for name, value in vars(colours).items() if name.isupper()} | {"#FFFFFF"}
+    for figure in figures(solve(read_sample("quay_pile"))):
+        assert set(re.findall(r"#[0-9A-Fa-f]{6}", figure.svg)) <= table
+
+
+def test_a_hostile_name_stays_a_name() -> None:
+    canvas = Canvas()
+    canvas.text((0, 0), '</text><script>alert("x")</script>\U0001f600\x00')
+    canvas.path([(0, 0), (1, 1)], Ink("#000000"))
+    root = parsed(canvas.render('"/><x y="'))
+    assert [element.tag for element in root] == [f"{SVG}defs", f"{SVG}text", f"{SVG}path"]
+    assert root[1].text == '</text><script>alert("x")</script>[U+1F600][U+0000]'
+
+
+def test_the_estimated_width_covers_the_text() -> None:
+    # widths of Libertinus Serif as Typst measured them at 100 pt
+    measured = {"0123456789": 465.0, "−560 → −400 kN/m": 809.4, "Spun concrete": 580.3, "WWWW": 387.6}
+    for text, width in measured.items():
+        assert width <= text_width(text, 100.0) <= 1.5 * width
+
+
+@pytest.mark.parametrize("count", [1, 7, 40])
+def test_packed_spans_of_one_row_do_not_touch(count: int) -> None:
+    spans = [(10.0 * i, 10.0 * i + 24.0) for i in range(count)]
+    rows = packed(spans)
+    for row in set(rows):
+        ends = [span for span, at in zip(spans, rows, strict=True) if at == row]
+        assert all(a[1] <= b[0] for a, b in pairwise(ends))
+    assert max(rows) <= 2
+
+
+def test_the_display_units_reach_the_figures() -> None:
+    project = structs.replace(read_sample("tie_rod"), display=Display(units="in-kip-ksi"))
+    results = solve(project)
+    assert {"in", "kip", "ksi"} <= set(texts(state_figure(results, 0)))

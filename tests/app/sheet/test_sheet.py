@@ -1,0 +1,384 @@
+"""The calc sheet read back: its numbers are those of the results, and no text can break it."""
+
+from __future__ import annotations
+
+import datetime as dt
+import io
+import math
+import re
+from functools import lru_cache
+from typing import Any
+
+import hypothesis
+import pytest
+from hypothesis import given
+from msgspec import UNSET, structs
+from pypdf import PdfReader
+
+from app.phrases import caution
+from app.project_file import dump, sha256
+from app.results_file import results_json
+from app.samples import names, read_sample
+from app.sheet import build_sheet
+from app.sheet.content import sheet_content
+from app.sheet.title import Origin
+from solver.model import (
+    FORMAT,
+    VERSION,
+    Combination,
+    DisplacementLimit,
+    Display,
+    FixedSupport,
+    Joint,
+    JointLoad,
+    Limits,
+    LoadCase,
+    Material,
+    Project,
+    ReactionLimit,
+    RelativeLimit,
+    RoundSection,
+    Segment,
+    SegmentLoad,
+    SheetTexts,
+    SpringSupport,
+)
+from solver.solve import solve
+from tests.strategies import projects
+
+DAY = dt.date(2026, 3, 14)
+SYSTEMS = ("mm-N-MPa", "mm-kN-MPa", "m-kN-MPa", "in-lbf-psi", "in-kip-ksi")
+HALF_A_DIGIT = 5.1e-5  # results are printed to five figures
+
+
+def sheet(project: Project) -> PdfReader:
+    pdf = build_sheet(project, solve(project, cases=False), file_name="member.barwright.json", date=DAY)
+    return PdfReader(io.BytesIO(pdf))
+
+
+@lru_cache
+def sample_sheet(name: str) -> PdfReader:
+    return sheet(read_sample(name))
+
+
+def read(pdf: PdfReader) -> str:
+    text = "\n".join(page.extract_text() for page in pdf.pages)
+    return text.replace("\u202f", "").replace("−", "-")
+
+
+def content(project: Project) -> dict[str, Any]:
+    return sheet_content(project, solve(project, cases=False), Origin("f", "2026-03-14", "p", "0" * 64))
+
+
+def numbers(line: str) -> list[float]:
+    return [float(word) for word in line.split() if re.fullmatch(r"-?\d+(\.\d+)?", word)]
+
+
+def in_units(project: Project, units: str, orientation: str = "horizontal") -> Project:
+    return structs.replace(project, display=Display(units=units, orientation=orientation))
+
+
+# --- the numbers ---
+
+
+def test_the_segment_tables_hold_the_numbers_of_the_results_file() -> None:
+    project = read_sample("tie_rod")  # in mm, N and MPa
+    states = results_json(solve(project, cases=False))["combinations"]
+    text = read(sample_sheet("tie_rod"))
+    found = 0
+    for state in states:
+        part = text.partition(f"Combination {state['name']}\n")[2]
+        for segment in state["segments"]:
+            row = re.search(rf"^{segment['mark']} .*(passes|FAILS)$", part, re.MULTILINE)
+            assert row, segment["mark"]
+            start, end, most, most_at, least, least_at, used, used_at = numbers(row.group())
+            assert [start, end] == pytest.approx(
+                [segment["force_start"], segment["force_end"]], rel=HALF_A_DIGIT
+            )
+            assert [most, least] == pytest.approx(
+                [segment["stress_max"] / 1e6, segment["stress_min"] / 1e6], rel=HALF_A_DIGIT
+            )
+            places = [segment[name] * 1e3 for name in ("stress_max_at", "stress_min_at", "utilisation_at")]
+            assert [most_at, least_at, used_at] == pytest.approx(places, rel=1e-5, abs=1e-9)
+            assert used == pytest.approx(segment["utilisation"], abs=0.00501)
+            found += 1
+    assert found == len(states) * len(project.segments)
+
+
+def test_the_joint_tables_hold_displacements_and_reactions() -> None:
+    project = read_sample("tie_rod")
+    text = read(sample_sheet("tie_rod"))
+    for state in results_json(solve(project, cases=False))["combinations"]:
+        part = text.partition(f"Combination {state['name']}\n")[2].partition("Joints: displacement")[2]
+        for joint in state["joints"]:
+            row = re.search(rf"^{joint['mark']} .*$", part, re.MULTILINE)
+            assert row, joint["mark"]
+            _, x, u, *reaction = numbers(row.group())
+            assert [x, u] == pytest.approx(
+                [joint["position"] * 1e3, joint["displacement"] * 1e3], rel=HALF_A_DIGIT, abs=1e-12
+            )
+            expected = [] if joint["reaction"] is None else [joint["reaction"]]
+            assert reaction == pytest.approx(expected, rel=HALF_A_DIGIT)
+
+
+def formula_parts(project: Project) -> dict[str, dict[str, str]]:
+    blocks = content(project)["blocks"]
+    items = [item for block in blocks if block["kind"] == "formulas" for item in block["items"]]
+    return {item["name"]: item["parts"] for item in items}
+
+
+def value(text: str) -> float:
+    number, _, unit = re.sub("\u202f", "", text).replace("−", "-").partition(" ")
+    per_inch = {"lbf": 4.4482216152605, "kip": 4448.2216152605}
+    units = {"": 1.0, "N": 1.0, "kN": 1e3, "MPa": 1e6, "mm": 1e-3, "m": 1.0, "mm²": 1e-6, "in": 0.0254}
+    units |= {"in²": 0.0254**2, "psi": 4.4482216152605 / 0.0254**2, "ksi": 4448.2216152605 / 0.0254**2}
+    return float(number) * (units | per_inch)[unit]
+
+
+@pytest.mark.parametrize("units", SYSTEMS)
+@pytest.mark.parametrize("name", ["hoist_shaft", "tie_rod"])
+def test_the_governing_stress_can_be_redone_by_hand(name: str, units: str) -> None:
+    project = in_units(read_sample(name), units)
+    parts = formula_parts(project)
+    governing = results_json(solve(project, cases=False))["governing"]
+    used = {key: value(text) for key, text in parts[f"{governing['check']}_numbers"].items()}
+    stress = {key: value(text) for key, text in parts["stress_numbers"].items()}
+    assert stress["force"] / stress["area"] == pytest.approx(stress["stress"], rel=1e-5)
+    assert stress["stress"] == pytest.approx(governing["value"], rel=1e-5)
+    redone = abs(used["stress"]) / (used["factor"] * used["allowable"])
+    assert redone == pytest.approx(used["utilisation"], abs=6e-5)
+    assert redone == pytest.approx(governing["utilisation"], rel=1e-5)
+    if "round_numbers" in parts:
+        assert math.pi / 4 * value(parts["round_numbers"]["d"]) ** 2 == pytest.approx(
+            stress["area"], rel=1e-6
+        )
+
+
+def test_the_governing_displacement_can_be_redone_by_hand() -> None:
+    parts = formula_parts(read_sample("quay_pile"))["displacement_numbers"]
+    assert abs(value(parts["value"])) / value(parts["limit"]) == pytest.approx(
+        float(parts["utilisation"]), abs=6e-5
+    )
+
+
+def test_the_governing_reaction_and_relative_movement_can_be_redone_by_hand() -> None:
+    sample = read_sample("tie_rod")
+    tight = structs.replace(sample, limits=Limits(reaction=(ReactionLimit(joint="0", limit=1e3),)))
+    parts = formula_parts(tight)
+    spring = parts["spring_numbers"]
+    stiffness = float(spring["stiffness"].partition(" ")[0].replace("\u202f", "")) * 1e3  # N/mm
+    redone = -stiffness * (value(spring["u"]) - value(spring["movement"]))
+    assert redone == pytest.approx(value(spring["reaction"]), rel=1e-5)
+    assert redone == pytest.approx(value(parts["reaction_numbers"]["value"]), rel=1e-5)
+    close = structs.replace(sample, limits=Limits(relative=(RelativeLimit(start="3", end="6", limit=1e-5),)))
+    parts = formula_parts(close)["relative_numbers"]
+    moved = abs(value(parts["end"]) - value(parts["start"]))
+    assert moved / value(parts["limit"]) == pytest.approx(float(parts["utilisation"]), rel=1e-5)
+
+
+def test_every_input_is_printed_to_its_last_digit() -> None:
+    project = read_sample("tie_rod")
+    exact = structs.replace(project.segments[2], length=1.1000000000000334)
+    changed = structs.replace(project, segments=(*project.segments[:2], exact, *project.segments[3:]))
+    assert "1100.0000000000334" in read(sheet(changed))
+
+
+def test_number_and_verdict_agree_where_they_are_close() -> None:
+    bar = small(limit=1.0)
+    (moved,) = solve(bar).solution.joint_displacement[0][1:]
+    text = read(sheet(small(limit=float(moved) / 1.00000004)))
+    assert "Does not pass" in text
+    row = re.search(r"^joint end displacement .*FAILS$", text, re.MULTILINE)
+    assert row
+    *_, shown, limit, _, used, _ = row.group().split()
+    assert float(shown) > float(limit)
+    assert float(used) > 1
+
+
+def small(limit: float) -> Project:
+    return Project(
+        format=FORMAT,
+        version=VERSION,
+        materials=(Material(name="Steel", modulus=2.1e11),),
+        joints=(Joint(mark="wall", support=FixedSupport()), Joint(mark="end")),
+        segments=(Segment(mark="A", length=1.0, material="Steel", section=RoundSection(diameter=0.02)),),
+        load_cases=(LoadCase(name="pull", joint_loads=(JointLoad(joint="end", force=1e4),)),),
+        limits=Limits(displacement=(DisplacementLimit(joint="end", limit=limit),)),
+    )
+
+
+# --- what must stand on every sheet ---
+
+
+@pytest.mark.parametrize("name", names())
+def test_every_page_has_the_caution_and_its_number(name: str) -> None:
+    pdf = sample_sheet(name)
+    count = len(pdf.pages)
+    assert count <= 12
+    for number, page in enumerate(pdf.pages, 1):
+        text = " ".join(page.extract_text().split())
+        assert caution() in text
+        assert f"Page {number} of {count}" in text
+
+
+@pytest.mark.parametrize("name", names())
+def test_title_block_and_attachment_tell_where_the_sheet_comes_from(name: str) -> None:
+    project, pdf = read_sample(name), sample_sheet(name)
+    first = pdf.pages[0].extract_text()
+    expected = (project.title, project.sheet.job, project.sheet.author, project.sheet.revision)
+    for text in (*expected, project.sheet.date, "2026-03-14", "member.barwright.json", sha256(project)):
+        assert text in first
+    assert pdf.attachments["project.barwright.json"] == [dump(project)]
+    assert pdf.metadata is not None
+    assert pdf.metadata.title == project.title
+
+
+@pytest.mark.parametrize("name", names())
+def test_the_sheet_is_tagged_and_archival(name: str) -> None:
+    root = sample_sheet(name).trailer["/Root"]
+    assert root["/MarkInfo"]["/Marked"]
+    metadata = root["/Metadata"].get_data().decode()
+    assert "<pdfaid:part>3</pdfaid:part>" in metadata
+    assert "<pdfuaid:part>1</pdfuaid:part>" in metadata
+
+
+def test_a_failure_stands_on_the_first_page_and_beside_its_numbers() -> None:
+    pdf = sample_sheet("tie_rod")
+    assert "Does not pass" in pdf.pages[0].extract_text()
+    text = read(pdf)
+    assert text.count("FAILS") >= 4
+    assert "1.1 ⋅ 180" in text or "1.0482" in text
+
+
+def test_buckling_is_named_where_something_is_compressed() -> None:
+    assert "Buckling in compression is not covered by this version" in read(sample_sheet("quay_pile"))
+    assert "no slip limit" in read(sample_sheet("quay_pile"))
+
+
+def test_what_was_not_checked_never_reads_as_passed() -> None:
+    project = read_sample("hoist_shaft")
+    bare = tuple(structs.replace(m, allowable_tension=UNSET) for m in project.materials)
+    text = read(sheet(structs.replace(project, materials=bare)))
+    assert "NOT CHECKED, and so not passed" in text
+    assert re.search(r"^A .*NOT CHECKED$", text, re.MULTILINE)
+    assert not re.search(r"^A .*passes$", text.partition("Combination Cold start\n")[2][:3000], re.MULTILINE)
+
+
+def test_a_member_without_any_load_or_limit_prints() -> None:
+    bare = structs.replace(small(1.0), load_cases=(), limits=Limits())
+    text = read(sheet(bare))
+    assert "There are no load cases: the member is unloaded." in text
+    assert "Nothing checked" in text
+
+
+def test_same_project_and_date_give_the_same_bytes() -> None:
+    project = read_sample("hoist_shaft")
+    results = solve(project)
+    first, second = (build_sheet(project, results, file_name="f", date=DAY) for _ in range(2))
+    assert first == second
+    assert first != build_sheet(project, results, file_name="f", date=dt.date(2026, 3, 15))
+
+
+@pytest.mark.parametrize(("units", "orientation"), zip(SYSTEMS, ["vertical", "horizontal"] * 3, strict=False))
+def test_every_unit_system_and_layout_prints(units: str, orientation: str) -> None:
+    pdf = sheet(in_units(read_sample("hoist_shaft"), units, orientation))
+    force = {"mm-N-MPa": "N", "in-lbf-psi": "lbf", "in-kip-ksi": "kip"}.get(units, "kN")
+    assert f"force {force}," in read(pdf)
+    paper = 612 if units.startswith("in-") else 595
+    assert int(pdf.pages[0].mediabox.width) == paper
+    assert len(pdf.pages) <= 14
+
+
+# --- texts that want to be more than texts ---
+
+HOSTILE = (
+    '#set page(fill: red) *bold* _x_ $a^2$ `raw` <lab> @ref // c #panic("x") \\u{41}',
+    "<b>&amp;</b><script>alert(1)</script>]]>",
+    "\U0001f600 emoji 漢字 \u202eright\u202c עברית العربية",
+    "a\x00b\x07c\nnew line\ttab",
+    "W" * 10_000,
+    "x " * 5_000,
+    "é" * 50 + "\u0301" * 500,
+    "⚆Ȃ ẘ∹ ❈ấ ⋄ǭ",
+)
+
+
+def hostile(kind: str, index: int) -> str:
+    return f"{HOSTILE[(index + len(kind)) % len(HOSTILE)]} {kind}{index}"
+
+
+def many(count: int, combinations: int, name: Any, orientation: str = "horizontal") -> Project:
+    ends = {0: FixedSupport(), count: SpringSupport(stiffness=3e8)}
+    return Project(
+        format=FORMAT,
+        version=VERSION,
+        title=name("title", 0),
+        notes="\n".join(HOSTILE) if name is hostile else "",
+        sheet=SheetTexts(*(name("sheet", i) for i in range(5))),
+        display=Display(orientation=orientation),
+        materials=(Material(name=name("M", 0), modulus=2.1e11, density=7850.0, allowable_compression=1.6e8),),
+        joints=tuple(Joint(mark=name("J", i), support=ends.get(i, UNSET)) for i in range(count + 1)),
+        segments=tuple(
+            Segment(
+                mark=name("S", i),
+                length=0.1 + 0.05 * (i % 5),
+                material=name("M", 0),
+                section=RoundSection(diameter=0.05, diameter_end=0.06),
+                bedding=float(i % 3) * 1e6,
+            )
+            for i in range(count)
+        ),
+        load_cases=tuple(
+            LoadCase(
+                name=name("C", c),
+                gravity=-9.81 * (c == 0),
+                segment_loads=tuple(
+                    SegmentLoad(
+                        segment=name("S", i), load_start=1e3, load_end=2e3, temperature_start=10.0 * c
+                    )
+                    for i in range(c, count, 2)
+                ),
+                joint_loads=tuple(JointLoad(joint=name("J", i), force=2e4) for i in range(1, count, 3)),
+            )
+            for c in range(2)
+        ),
+        combinations=tuple(
+            Combination(name=name("K", k), factors={name("C", 0): 1.0, name("C", 1): 0.1 * k})
+            for k in range(combinations)
+        ),
+        limits=Limits(relative=(RelativeLimit(start=name("J", 0), end=name("J", count), limit=1e-3),)),
+    )
+
+
+@pytest.mark.parametrize("orientation", ["horizontal", "vertical"])
+def test_hostile_texts_stay_texts(orientation: str) -> None:
+    project = many(8, 2, hostile, orientation)
+    pdf = sheet(project)
+    text = " ".join(read(pdf).split())
+    assert HOSTILE[0] in text
+    assert HOSTILE[1] in text
+    assert "[U+1F600] emoji [U+6F22][U+5B57] [U+202E]right[U+202C]" in text
+    assert "a[U+0000]b[U+0007]c new line tab" in text
+    assert text.replace(" ", "").count("W") >= 10_000
+    assert text.count("x x x") > 1_000
+    assert "[U+0301]" in text
+    assert not set(text) & set("\u200b\u200e")
+    assert len(pdf.pages) <= 24
+    assert pdf.attachments["project.barwright.json"] == [dump(project)]
+
+
+def test_a_long_member_pages_well() -> None:
+    pdf = sheet(many(40, 10, lambda kind, index: f"{kind}{index}"))
+    assert len(pdf.pages) <= 36
+    pages = [page.extract_text() for page in pdf.pages]
+    rows = [page for page in pages if re.search(r"^S\d+ .*(passes|FAILS|NOT CHECKED)$", page, re.MULTILINE)]
+    assert len(rows) >= 10
+    assert all("Utilisation" in page for page in rows)  # the head is repeated on every page
+
+
+@hypothesis.settings(max_examples=10)
+@given(projects())
+def test_any_project_prints(project: Project) -> None:
+    pdf = sheet(project)
+    assert pdf.attachments["project.barwright.json"] == [dump(project)]
+    assert f"Page 1 of {len(pdf.pages)}" in pdf.pages[0].extract_text()
