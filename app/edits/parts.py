@@ -133,7 +133,7 @@ def _loads_joined(case: LoadCase, first: str, second: str) -> LoadCase:
 
 
 def _load_united(first: SegmentLoad, second: SegmentLoad) -> SegmentLoad:
-    load = structs.replace(united(first, second), segment=first.segment)
+    load = united(first, second)
     if is_absent(first.lack_of_fit) and is_absent(second.lack_of_fit):
         return load
     return structs.replace(load, lack_of_fit=sum_of(first.lack_of_fit, second.lack_of_fit))
