@@ -279,7 +279,9 @@ def test_same_project_and_date_give_the_same_bytes() -> None:
     assert first != build_sheet(project, results, file_name="f", date=dt.date(2026, 3, 15))
 
 
-@pytest.mark.parametrize(("units", "orientation"), zip(SYSTEMS, ["vertical", "horizontal"] * 3, strict=False))
+@pytest.mark.parametrize(
+    ("units", "orientation"), list(zip(SYSTEMS, ["vertical", "horizontal"] * 3, strict=False))
+)
 def test_every_unit_system_and_layout_prints(units: str, orientation: str) -> None:
     pdf = sheet(in_units(read_sample("hoist_shaft"), units, orientation))
     force = {"mm-N-MPa": "N", "in-lbf-psi": "lbf", "in-kip-ksi": "kip"}.get(units, "kN")
