@@ -96,7 +96,7 @@ class Showing(QObject):
         self.solver.request(project)
 
     def begin(self) -> None:
-        """Draw the member at once, and ask the solver when that is on the screen: its libraries take a while."""
+        """Draw the member at once; ask the solver once it is on the screen, as its libraries take a while."""
         self._view.set_shown(still_shown(self._view.shown, self._document.project))
         self._show()
         QTimer.singleShot(0, self, self.follow)

@@ -15,7 +15,15 @@ from app.gui.tables.model import ERROR_ROLE, TableModel
 from app.gui.tables.pane import TABS, TablesPane
 from app.gui.theme import LIGHT
 from app.gui.view import Selection, View
-from solver.model import AreaSection, Combination, FixedSupport, RoundSection, SegmentLoad, SpringSupport
+from solver.model import (
+    AreaSection,
+    Combination,
+    FixedSupport,
+    LoadCase,
+    RoundSection,
+    SegmentLoad,
+    SpringSupport,
+)
 from tests.gui.hand import begin, cell, editor, enter, go_to, text_at
 from tests.members import Part, case, member, round_bar
 
@@ -391,7 +399,7 @@ def test_each_tables_last_row_adds_and_its_records_can_be_deleted(pane, document
 def test_a_new_case_gets_a_column_in_the_combinations(pane, document):
     combinations = pane.views["combinations"].table_model
     before = combinations.columnCount()
-    document.commit(edits.add_case(document.project, "Cold"), "Add load case")
+    document.commit(edits.add_record(document.project, ("load_cases",), LoadCase("Cold")), "Add load case")
     assert combinations.columnCount() == before + 1
     assert combinations.heading(before - 1)[0] == "Cold"
 
@@ -433,13 +441,18 @@ def take_step(document, step, at):
         "delete": lambda: edits.delete_segments(project, (index,)) if len(project.segments) > 1 else project,
         "length": lambda: edits.set_value(project, ("segments", index, "length"), 1.0 + at),
         "reverse": lambda: edits.reverse_member(project),
-        "case": lambda: edits.add_case(project, "Case"),
+        "case": lambda: edits.add_record(
+            project, ("load_cases",), LoadCase(f"Case {len(project.load_cases)}-{at}")
+        ),
         "uncase": lambda: (
             edits.remove_case(project, project.load_cases[-1].name) if project.load_cases else project
         ),
     }
     if step in edit:
-        document.commit(edit[step](), step)
+        try:
+            document.commit(edit[step](), step)
+        except edits.EditError:  # a name that is taken already
+            return
     else:
         getattr(document, step)()
 

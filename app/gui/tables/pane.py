@@ -139,6 +139,7 @@ class TablesPane(QWidget):
         self._sight = sight
         for view in self.views.values():
             view.table_model.set_sight(sight)
+            view.widen_if_needed()
 
     def set_figures(self, figures: Figures) -> None:
         """Show results in the columns that have them."""

@@ -137,6 +137,11 @@ class RowsModel(QAbstractTableModel):
         """Rows of records, the rows before them and the adding row."""
         return 0 if parent.isValid() else len(self._rows) + (self.table.adding is not None)
 
+    @property
+    def record_rows(self) -> int:
+        """The rows before the adding one."""
+        return len(self._rows)
+
     def columnCount(self, parent: Index = NONE) -> int:
         """The columns of the table."""
         return 0 if parent.isValid() else len(self._columns)

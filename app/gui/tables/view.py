@@ -7,7 +7,7 @@ can be empty, Escape restores.
 from __future__ import annotations
 
 from PySide6.QtCore import QItemSelection, Qt, Signal
-from PySide6.QtGui import QFontMetrics, QGuiApplication, QKeyEvent, QPalette, QResizeEvent
+from PySide6.QtGui import QGuiApplication, QKeyEvent, QPalette, QResizeEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QAbstractItemView,
@@ -24,6 +24,7 @@ from app.gui.theme import Theme, colour
 from app.words import tr
 
 ROW_HEIGHT = 26
+MEASURED = 60  # rows whose texts are measured for the widths
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
 
@@ -118,21 +119,34 @@ class TableView(QTableView):
             self.setSpan(row, column, 1, count)
 
     def share_width(self) -> None:
-        """Give each column its width in digits, and what is left over in the same proportion."""
-        columns = self.table_model.columns
-        digit = QFontMetrics(self.font()).horizontalAdvance("0")
-        wished = [self._least_width(place, column.width * digit) for place, column in enumerate(columns)]
-        spare = self.viewport().width() - sum(wished)
-        share = 1 + max(0.0, min(spare / max(1, sum(wished)), 2.0))
-        for place, width in enumerate(wished):
-            self.setColumnWidth(place, int(width * share))
+        """Give each column what its texts need, towards its usual width, and then more in proportion."""
+        needed = self._needed_widths()
+        usual = [max(width, self._usual_width(place)) for place, width in enumerate(needed)]
+        room, least, most = self.viewport().width(), sum(needed), sum(usual)
+        grown = min(max((room - least) / max(1, most - least), 0.0), 1.0)
+        share = min(max(room / max(1, most), 1.0), 3.0)
+        for place, (need, wish) in enumerate(zip(needed, usual, strict=True)):
+            self.setColumnWidth(place, int((need + grown * (wish - need)) * share))
 
-    def _least_width(self, place: int, wished: int) -> int:
-        """Wide enough for the heading too."""
-        metrics = QFontMetrics(self.horizontalHeader().font())
-        heading = max(metrics.horizontalAdvance(text) for text in self.table_model.heading(place))
-        bar = BAR_WIDTH + 10 if self.table_model.columns[place].bar is not None else 0
-        return max(wished + bar, heading) + 2 * MARGIN + 4
+    def widen_if_needed(self) -> None:
+        """After a change: share the width out anew only where a text would be cut off."""
+        if any(self.columnWidth(place) < width for place, width in enumerate(self._needed_widths())):
+            self.share_width()
+
+    def _usual_width(self, place: int) -> int:
+        return self.table_model.columns[place].width * self.fontMetrics().horizontalAdvance("0") + 2 * MARGIN
+
+    def _needed_widths(self) -> list[int]:
+        return [self._needed_width(place) for place in range(self.table_model.columnCount())]
+
+    def _needed_width(self, place: int) -> int:
+        """Wide enough for the heading and the texts, but no text takes more than three usual widths."""
+        model, metrics = self.table_model, self.fontMetrics()
+        texts = [str(model.index(row, place).data()) for row in range(min(model.record_rows, MEASURED))]
+        widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
+        bar = BAR_WIDTH + 10 if model.columns[place].bar is not None else 0
+        heading = max(metrics.horizontalAdvance(text) for text in model.heading(place))
+        return max(min(widest, 3 * self._usual_width(place)) + bar, heading) + 2 * MARGIN + 2
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The width is shared out anew."""
