@@ -162,3 +162,25 @@ def test_states_have_bounds_of_their_own():
     assert solution.error_bound[0] > 0
     assert solution.error_bound[1] == 0
     assert (solution.force_bound[0] > 0).all()
+
+
+def test_rounding_of_the_displacements_has_its_share():
+    # 2 ε √Σ κ (|u_i| + |u_j|)², by hand: κ = EA/L of a prismatic element, u = F over spring and bars
+    chain = chain_of([1.0, 2.0], [1.0, 1.0], modulus=1e6, spring=[(0, 1.0)])
+    solution = Pass(chain, loads_of(chain, force=[(2, 1.0)]), first_mesh(chain, 1e-9), never)
+    u = np.array([1.0, 1.0 + 1e-6, 1.0 + 3e-6])
+    kappa = np.array([1e6, 0.5e6])
+    share = 2 * np.finfo(float).eps * np.sqrt((kappa * (u[1:] + u[:-1]) ** 2).sum())
+    assert share <= solution.bound.rounding[0] <= 1.01 * share
+
+
+@pytest.mark.parametrize("seed", range(5))
+def test_a_movement_of_a_spring_moves_the_whole_member_without_force(seed):
+    rng = np.random.default_rng(seed)
+    chain = chain_of(
+        rng.uniform(0.5, 2, 4), rng.uniform(0.5, 2, 4), modulus=[3.1e6, 1.7, 2.3e6, 1.3], spring=[(0, 0.7)]
+    )
+    solution = solve_axial(chain, loads_of(chain, movement=[(0, 1 / 3)]), NAMES)
+    assert_allclose(solution.joint_displacement, 1 / 3, rtol=1e-15)
+    assert np.abs(solution.force).max() < 1e-12
+    assert solution.error_bound[0] < 1e-9
