@@ -25,6 +25,9 @@ hypothesis.settings.register_profile(
     derandomize=True,  # the same examples everywhere; the thorough profile looks for new ones
     database=None,
 )
+hypothesis.settings.register_profile(
+    "few", hypothesis.settings.get_profile("quick"), max_examples=5
+)  # where a second run asks something else, such as whether it works without Qt
 hypothesis.settings.register_profile("thorough", deadline=None, max_examples=1000)
 hypothesis.settings.load_profile(os.environ.get("HYPOTHESIS_PROFILE", "quick"))
 
