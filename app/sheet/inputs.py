@@ -10,7 +10,7 @@ from app.numerals import MINUS
 from app.section_entry import section_text
 from app.sheet.blocks import Block, column, heading, paragraph, picture, table
 from app.sheet.member_figure import Figure, member_figure
-from app.sheet.readings import NOTHING, Readings
+from app.sheet.readings import NOTHING, Readings, legible
 from app.words import tr
 from solver.model import (
     AnySection,
@@ -36,6 +36,10 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
     _, loads, states = pack(project)
     alone = {state.name: index for index, state in enumerate(states) if state.kind == "case"}
     yield heading(tr("Input"))
+    yield paragraph(
+        tr("The values as entered; those of more than ten digits to nine, in full in the attached project."),
+        "lead",
+    )
     yield _materials(project, say)
     yield _segments(project, say)
     yield _joints(project, results, say)
@@ -104,7 +108,7 @@ def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[
 
 
 def _section(section: AnySection, say: Readings) -> str:
-    return tr("area given") if isinstance(section, AreaSection) else section_text(section, say.units)
+    return tr("area given") if isinstance(section, AreaSection) else legible(section_text(section, say.units))
 
 
 def _joints(project: Project, results: Results, say: Readings) -> Block:

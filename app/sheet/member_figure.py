@@ -12,6 +12,7 @@ from functools import partial
 
 import numpy as np
 
+from app.section_entry import section_label
 from app.sheet.colours import BODY, INK, QUIET
 from app.sheet.lanes import Edge, Label, Style, draw_lane
 from app.sheet.load_marks import draw_loads
@@ -25,8 +26,8 @@ from solver.chain import Loads
 from solver.model import Joint, Project, Segment, SpringSupport, UnitSystemName
 from solver.sections import outline
 
-ACROSS, UPRIGHT, SMALL = 420.0, 400.0, 200.0  # drawn length of the member in points
-_LEAST_HALF, _MOST_HALF = 11.0, 34.0
+ACROSS, UPRIGHT, SMALL = 420.0, 330.0, 190.0  # drawn length of the member in points
+_LEAST_HALF, _MOST_HALF, _SMALL_HALF = 11.0, 34.0, 20.0
 _OUTLINE = Ink(INK, 1.2, BODY)
 _QUIET = Style(7.0, QUIET)
 _MARK = 8.0
@@ -96,9 +97,9 @@ def _on_ruler(project: Project, positions: FloatArray, height: float) -> _Member
     ruler = Ruler(upright, float(positions[-1]), height if upright else ACROSS)
     half = max(outline(s.section, t).outer for s in project.segments for t in (0.0, 1.0))
     true = ruler.extent / ruler.length
-    depth = min(max(true, _LEAST_HALF / half), _MOST_HALF / half)
-    if true * half < _LEAST_HALF:
-        depth = _MOST_HALF / half  # no true scale to keep: then as large as it reads well
+    largest = _SMALL_HALF if ruler.extent == SMALL else _MOST_HALF
+    # at the scale of the length where that reads well; else as deep as the sheet has room for
+    depth = true if _LEAST_HALF <= true * half <= largest else largest / half
     return _Member(project, ruler, ruler.extent * np.asarray(positions) / ruler.length, depth)
 
 
@@ -290,8 +291,6 @@ def _draw_feet(canvas: Canvas, member: _Member, far: Edge) -> None:
 
 
 def _section_labels(member: _Member, units: UnitSystemName) -> Sequence[Label]:
-    from app.section_entry import section_text
-
     middles = ((a + b) / 2 for a, b in zip(member.joints, member.joints[1:], strict=False))
-    texts = (section_text(s.section, units) for s in member.project.segments)
+    texts = (section_label(s.section, units) for s in member.project.segments)
     return [Label(float(m), t) for m, t in zip(middles, texts, strict=True)]

@@ -1,7 +1,12 @@
-"""Numbers of a sheet as text in the project's display units: entries exact, results to a few digits."""
+"""Numbers of a sheet as text in the project's display units: entries exact, results to a few digits.
+
+An entry made in one unit system takes up to seventeen digits in another. Nobody computes by hand with those,
+so entries of more than ten digits are rounded to nine; the attached project has them in full.
+"""
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 
 from app.numerals import MINUS
@@ -11,7 +16,18 @@ from solver.model import UnitSystemName
 NOTHING = "–"
 DIGITS = 5
 PLAIN = 7
+_MOST_DIGITS = 10
 _ROUNDING = 1e-10  # of the largest value beside it: less than this is rounding and reads 0
+
+
+def legible(text: str) -> str:
+    """The text with each decimal number of more than ten significant digits rounded to nine."""
+    return re.sub(r"\d+\.\d+", lambda found: _rounded(found.group()), text)
+
+
+def _rounded(number: str) -> str:
+    digits = number.replace(".", "").lstrip("0")
+    return number if len(digits) <= _MOST_DIGITS else f"{float(number):.9g}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -25,8 +41,8 @@ class Readings:
         return symbol(quantity, self.units)
 
     def exact(self, value: float, quantity: Quantity, *, unit: bool = False) -> str:
-        """An entry, to its last digit."""
-        text = entry_text(float(value), quantity, self.units).replace("-", MINUS)
+        """An entry to its last digit, as far as `legible` lets it."""
+        text = legible(entry_text(float(value), quantity, self.units)).replace("-", MINUS)
         return f"{text} {self.unit(quantity)}".rstrip() if unit else text
 
     def pair(self, start: float, end: float, quantity: Quantity) -> str:

@@ -4,11 +4,14 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from app.numerals import rounded
 from app.sheet.blocks import Block, column, table
-from app.sheet.readings import DIGITS, NOTHING, Readings
-from app.units import Quantity, utilisation_text
+from app.sheet.readings import DIGITS, NOTHING, PLAIN, Readings
+from app.units import Quantity, to_display, utilisation_text
 from app.words import tr
-from solver.checks import Check, Status
+from solver.checks import PASS_MARGIN, Check, Status
+
+_MOST_DIGITS = 17
 
 
 def status_word(status: Status | str) -> str:
@@ -49,22 +52,30 @@ def check_row(check: Check, say: Readings) -> list[str]:
     place = NOTHING if check.position is None else say.plain(check.position, "length", unit=True)
     numbers = [NOTHING, NOTHING, NOTHING]
     if check.value is not None and check.limit is not None and check.utilisation is not None:
-        limit = say.exact(check.limit, quantity) if quantity != "stress" else say.read(check.limit, quantity)
         numbers = [
-            against(check.value, check.limit, quantity, say),
-            f"{limit} {say.unit(quantity)}",
+            *against(check.value, check.limit, quantity, say),
             utilisation_text(check.utilisation, check.status),
         ]
     return [subject(check), kind_words(check), check.combination, place, *numbers, status_word(check.status)]
 
 
-def against(value: float, limit: float, quantity: Quantity, say: Readings) -> str:
-    """The value to so many digits that it lies on the right side of its limit when read."""
-    for digits in range(DIGITS, 18):
-        rounded = float(f"{abs(value):.{digits - 1}e}")
-        if (rounded > limit) == (abs(value) > limit):
-            return say.read(value, quantity, digits=digits)
-    return say.read(value, quantity, digits=17)
+def against(value: float, limit: float, quantity: Quantity, say: Readings) -> list[str]:
+    """Value and limit to so many digits that, read side by side, they say what the verdict says."""
+    shown, bound = (to_display(v, quantity, say.units) for v in (abs(value), limit))
+    for digits in range(DIGITS, _MOST_DIGITS):
+        if (rounded(shown, digits) > rounded(bound, max(digits, PLAIN))) == value_over(value, limit):
+            break
+    else:
+        digits = _MOST_DIGITS
+    return [
+        say.read(value, quantity, digits=digits),
+        say.plain(limit, quantity, unit=True, digits=max(digits, PLAIN)),
+    ]
+
+
+def value_over(value: float, limit: float) -> bool:
+    """Whether a value exceeds its limit, beyond the margin for rounding."""
+    return abs(value) > limit * (1 + PASS_MARGIN)
 
 
 def check_table(title: str, checks: Sequence[Check], say: Readings) -> Block:
