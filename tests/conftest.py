@@ -41,7 +41,7 @@ def has_qt() -> bool:
 
 
 HAS_QT = has_qt()
-collect_ignore_glob = [] if HAS_QT else ["gui/*", "benchmarks/*window*", "benchmarks/*gui*"]
+collect_ignore_glob = [] if HAS_QT else ["gui/*"]
 
 
 def pytest_addoption(parser: pytest.Parser, pluginmanager: pytest.PytestPluginManager) -> None:
