@@ -285,6 +285,7 @@ def test_the_example_reversed() -> None:
     ]
     assert service["joint_loads"] == [{"joint": "1", "force": -25000.0}, {"joint": "0", "movement": 0.0005}]
     assert turned["limits"] == example()["limits"]
+    assert dump(edits.reverse_member(edits.reverse_member(project()))) == encoded(example())
 
 
 def test_an_end_that_was_left_out_follows_the_same_value_reversed() -> None:
