@@ -1,4 +1,4 @@
-"""What lies under and over drawing and strips: the ground that hears the mouse, joint lines, cursor, texts.
+"""What lies over drawing and strips: joint lines, the cursor, lines of text.
 
 All of them are in pixels of the scene and know the member only through the ruler.
 """
@@ -7,73 +7,17 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-import pyqtgraph as pg
-from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent, MouseDragEvent
-from PySide6.QtCore import QPointF, QRectF, Qt, Signal
-from PySide6.QtGui import QPainter, QPen
-from PySide6.QtWidgets import QGraphicsSceneWheelEvent, QStyleOptionGraphicsItem, QWidget
+from PySide6.QtCore import QPointF, QRectF, Qt
+from PySide6.QtGui import QPainter, QPainterPath, QPen
+from PySide6.QtWidgets import QGraphicsObject, QStyleOptionGraphicsItem, QWidget
 
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
 from app.gui.sheet_layout import SheetLayout
 from app.gui.theme import Theme, colour
 
-WHEEL_STEP = 1.0015  # zoom for each eighth of a degree that the wheel turns
 
-
-class SheetGround(pg.GraphicsObject):
-    """Hears the mouse wherever nothing above it wants it; its places are in pixels along the axis."""
-
-    hovered = Signal(object)  # QPointF, or None when the mouse leaves
-    clicked = Signal(object)  # QPointF
-    dragged = Signal(object)  # QPointF: how far since the last
-    wheeled = Signal(object, float)  # QPointF, factor
-    double_clicked = Signal()
-
-    def __init__(self) -> None:
-        super().__init__()
-        self._rect = QRectF()
-        self.setZValue(-100)
-
-    def set_rect(self, rect: QRectF) -> None:
-        """The whole sheet."""
-        self.prepareGeometryChange()
-        self._rect = rect
-
-    def boundingRect(self) -> QRectF:
-        """The whole sheet."""
-        return self._rect
-
-    def paint(self, *_: object) -> None:
-        """Nothing: the view paints the paper."""
-
-    def hoverEvent(self, event: HoverEvent) -> None:
-        """Announce where the mouse is."""
-        self.hovered.emit(None if event.isExit() else event.pos())
-
-    def mouseClickEvent(self, event: MouseClickEvent) -> None:
-        """Announce clicks of the left button."""
-        if event.button() != Qt.MouseButton.LeftButton:
-            return
-        event.accept()
-        if event.double():
-            self.double_clicked.emit()
-        else:
-            self.clicked.emit(event.pos())
-
-    def mouseDragEvent(self, event: MouseDragEvent) -> None:
-        """Announce drags with the left or middle button."""
-        if event.button() in (Qt.MouseButton.LeftButton, Qt.MouseButton.MiddleButton):
-            event.accept()
-            self.dragged.emit(QPointF(event.pos() - event.lastPos()))
-
-    def wheelEvent(self, event: QGraphicsSceneWheelEvent) -> None:
-        """Announce turns of the wheel."""
-        self.wheeled.emit(event.pos(), WHEEL_STEP ** event.delta())
-        event.accept()
-
-
-class Painted(pg.GraphicsObject):
+class Painted(QGraphicsObject):
     """Base of items that only paint: a rectangle, a theme, no mouse."""
 
     def __init__(self, theme: Theme, z: float) -> None:
@@ -98,9 +42,9 @@ class Painted(pg.GraphicsObject):
         """The place."""
         return self._rect
 
-    def shape(self):
+    def shape(self) -> QPainterPath:
         """Empty, so that the mouse goes through."""
-        return pg.QtGui.QPainterPath()
+        return QPainterPath()
 
 
 class JointLines(Painted):

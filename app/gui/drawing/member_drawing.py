@@ -5,11 +5,16 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 
 from __future__ import annotations
 
-import pyqtgraph as pg
-from pyqtgraph.GraphicsScene.mouseEvents import HoverEvent, MouseClickEvent
 from PySide6.QtCore import QPointF, QRectF, Qt, Signal
 from PySide6.QtGui import QBrush, QPainter, QPen
-from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
+from PySide6.QtWidgets import (
+    QApplication,
+    QGraphicsObject,
+    QGraphicsSceneHoverEvent,
+    QGraphicsSceneMouseEvent,
+    QStyleOptionGraphicsItem,
+    QWidget,
+)
 
 from app.gui.drawing.layout import lay_out
 from app.gui.drawing.member import Member
@@ -21,7 +26,7 @@ from app.gui.theme import Theme, colour
 from app.gui.view import Selection
 
 
-class MemberDrawing(pg.GraphicsObject):
+class MemberDrawing(QGraphicsObject):
     """The member with supports, loads and dimension chain."""
 
     clicked = Signal(object)  # Part
@@ -36,6 +41,8 @@ class MemberDrawing(pg.GraphicsObject):
         self._selection = Selection()
         self._under_mouse: Part | None = None
         self.setZValue(10.0)
+        self.setAcceptHoverEvents(True)
+        self.setAcceptedMouseButtons(Qt.MouseButton.LeftButton)
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     @property
@@ -85,22 +92,31 @@ class MemberDrawing(pg.GraphicsObject):
         """The drawing's rectangle."""
         return QRectF() if self._place is None else self._place.rect
 
-    def hoverEvent(self, event: HoverEvent) -> None:
-        """Announce the part under the mouse and show its tooltip."""
-        part = None if event.isExit() else self.part_at(event.pos())
+    def hoverMoveEvent(self, event: QGraphicsSceneHoverEvent) -> None:
+        """Announce the part under the mouse and say it in the tooltip."""
+        self._set_under_mouse(self.part_at(event.pos()))
+
+    def hoverLeaveEvent(self, _event: QGraphicsSceneHoverEvent) -> None:
+        """Announce that no part is under the mouse any more."""
+        self._set_under_mouse(None)
+
+    def _set_under_mouse(self, part: Part | None) -> None:
         if part != self._under_mouse:
             self._under_mouse = part
             self.setToolTip("" if part is None or self._member is None else tip(self._member, part))
             self.hovered.emit(part)
 
-    def mouseClickEvent(self, event: MouseClickEvent) -> None:
-        """Announce a click on a part; elsewhere the ground hears it."""
-        part = self.part_at(event.pos())
-        if event.button() == Qt.MouseButton.LeftButton and not event.double() and part is not None:
-            event.accept()
-            self.clicked.emit(part)
-        else:
+    def mousePressEvent(self, event: QGraphicsSceneMouseEvent) -> None:
+        """Take the mouse on a part only; elsewhere the sheet pans."""
+        if self.part_at(event.pos()) is None:
             event.ignore()
+
+    def mouseReleaseEvent(self, event: QGraphicsSceneMouseEvent) -> None:
+        """A press and release in one place is a click."""
+        moved = event.screenPos() - event.buttonDownScreenPos(Qt.MouseButton.LeftButton)
+        part = self.part_at(event.pos())
+        if part is not None and moved.manhattanLength() < QApplication.startDragDistance():
+            self.clicked.emit(part)
 
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
         """Strokes, circles, texts."""

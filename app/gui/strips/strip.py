@@ -4,10 +4,9 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-import pyqtgraph as pg
 from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPainterPath, QPen
-from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
+from PySide6.QtWidgets import QGraphicsObject, QStyleOptionGraphicsItem, QWidget
 
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
@@ -45,7 +44,7 @@ class Prepared:
         )
 
 
-class Strip(pg.GraphicsObject):
+class Strip(QGraphicsObject):
     """A strip; `show_content(None)` leaves its frame empty."""
 
     def __init__(self, theme: Theme) -> None:
@@ -54,6 +53,7 @@ class Strip(pg.GraphicsObject):
         self._content: StripContent | None = None
         self._place: Place | None = None
         self._prepared: Prepared | None = None  # None: to be made when next asked for
+        self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     @property

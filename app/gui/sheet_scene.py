@@ -1,0 +1,210 @@
+"""What is on the sheet: drawing, strips, joint lines, cursor and readout, all on one ruler.
+
+The scene's coordinates are the widget's pixels. It is told what to show and where; who asks for it (mouse,
+keys, other rooms of the window) is the business of `sheet_view`.
+"""
+
+from __future__ import annotations
+
+from itertools import accumulate
+
+from PySide6.QtCore import QObject, QPointF, QRectF, QSizeF
+from PySide6.QtWidgets import QGraphicsScene
+
+from app.gui.drawing.member import Member
+from app.gui.drawing.member_drawing import MemberDrawing
+from app.gui.fonts import Fonts
+from app.gui.ruler import Ruler
+from app.gui.sheet_items import CursorLine, JointLines, Message
+from app.gui.sheet_layout import Place, SheetLayout, sheet_layout
+from app.gui.strips.content import envelope_contents, state_contents
+from app.gui.strips.readout import envelope_readout, state_readout
+from app.gui.strips.strip import Strip
+from app.gui.theme import Theme, colour, greyed
+from app.gui.view import Cursor, Shown
+from app.words import tr
+from solver.model import Project
+from solver.results import Results
+
+
+class SheetScene(QGraphicsScene):
+    """The items, what they show, and the ruler they are drawn by."""
+
+    def __init__(self, theme: Theme, fonts: Fonts, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self._theme, self._fonts = theme, fonts
+        self._project: Project | None = None
+        self._results: Results | None = None
+        self._current = False
+        self._upright = False
+        self._size = QSizeF(900.0, 500.0)
+        self._shown = Shown("envelope")
+        self._cursor: Cursor | None = None
+        self._positions: tuple[float, ...] = (0.0, 1.0)
+        self._make_items()
+        self._layout = self._laid_out()
+        self._ruler = Ruler.whole(1.0, self._layout.begin, self._layout.end)
+        self.dress(theme)
+
+    def _make_items(self) -> None:
+        self.drawing = MemberDrawing(self._theme)
+        self.strips = tuple(Strip(self._theme) for _ in range(4))
+        self.joint_lines = JointLines(self._theme)
+        self.cursor_line = CursorLine(self._theme)
+        self._readout = Message(self._theme)
+        self._notice = Message(self._theme, ground="paper", ink="quiet")
+        for item in (self.drawing, *self.strips, *self._over()):
+            self.addItem(item)
+
+    def _over(self) -> tuple[JointLines, CursorLine, Message, Message]:
+        return self.joint_lines, self.cursor_line, self._readout, self._notice
+
+    @property
+    def ruler(self) -> Ruler:
+        """The ruler that everything is drawn by."""
+        return self._ruler
+
+    @property
+    def places(self) -> SheetLayout:
+        """Where the parts lie."""
+        return self._layout
+
+    @property
+    def positions(self) -> tuple[float, ...]:
+        """The positions of the joints, m."""
+        return self._positions
+
+    @property
+    def is_empty(self) -> bool:
+        """Whether there is no project yet."""
+        return self._project is None
+
+    @property
+    def readout(self) -> str:
+        """The readout line."""
+        return self._readout.text
+
+    @property
+    def notice(self) -> str:
+        """Why the strips show nothing, or that they are out of date; else empty."""
+        return self._notice.text
+
+    # What is shown
+
+    def show_results(self, project: Project, results: Results | None, *, current: bool) -> None:
+        """Show the project, and results of it (`current`) or of an earlier edit, or none."""
+        fresh = results is not self._results
+        self._project, self._results = project, results
+        self._current = current and results is not None
+        lengths = (segment.length for segment in project.segments)
+        self._positions = tuple(accumulate(lengths, initial=0.0))
+        self._ruler = self._ruler.of(self._positions[-1])
+        if fresh:
+            self._show_curves()
+        self.drawing.show_member(Member.of(project, self._shown))
+        self._place_all()
+        self.dress(self._theme)
+
+    def show_state(self, shown: Shown) -> None:
+        """Show the curves and loads of another state."""
+        self._shown = shown
+        self._show_curves()
+        if self._project is not None:
+            self.drawing.show_member(Member.of(self._project, shown))
+        self._place_all()
+
+    def _show_curves(self) -> None:
+        contents = None
+        if self._results is not None:
+            state = self._state(self._results)
+            contents = (
+                envelope_contents(self._results) if state is None else state_contents(self._results, state)
+            )
+        for index, strip in enumerate(self.strips):
+            strip.show_content(None if contents is None else contents[index])
+
+    def _state(self, results: Results) -> int | None:
+        """The index of the shown state; None for the envelope, and for a state the results do not have."""
+        for index, state in enumerate(results.states):
+            if (state.kind, state.name) == (self._shown.kind, self._shown.name):
+                return index
+        return None
+
+    # Places and colours
+
+    def set_size(self, size: QSizeF) -> None:
+        """Lay the sheet out on other pixels."""
+        self._size = size
+        self.setSceneRect(QRectF(QPointF(), size))
+        self._place_all()
+
+    def set_upright(self, *, upright: bool) -> None:
+        """Turn the sheet."""
+        if upright != self._upright:
+            self._upright = upright
+            self._ruler = self._ruler.fitted()
+            self._place_all()
+
+    def set_ruler(self, ruler: Ruler) -> None:
+        """Show another window of the member."""
+        if ruler != self._ruler:
+            self._ruler = ruler
+            self._place_all()
+
+    def set_fonts(self, fonts: Fonts) -> None:
+        """Write with another font."""
+        self._fonts = fonts
+        self._place_all()
+
+    def _laid_out(self) -> SheetLayout:
+        return sheet_layout(self._size.width(), self._size.height(), self._upright, self._fonts.text_height)
+
+    def _place_all(self) -> None:
+        self._layout = layout = self._laid_out()
+        self._ruler = ruler = self._ruler.on(layout.begin, layout.end)
+        self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
+        for strip, rect in zip(self.strips, layout.strips, strict=True):
+            strip.set_place(Place(rect, ruler, layout.axes, self._fonts))
+        self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
+        self._readout.set_rect(layout.readout)
+        self._say_notice()
+        self.show_cursor(self._cursor)
+
+    def _say_notice(self) -> None:
+        text = ""
+        if self._results is None and self._project is not None:
+            text = tr("No results yet: the findings say what is missing.")
+        elif self._results is not None and not self._current:
+            text = tr("out of date")
+        width = min(self._fonts.measure(text, "plain").width() + 20.0, self._layout.readout.width())
+        box = QRectF(0.0, 0.0, width, 1.7 * self._fonts.text_height)
+        box.moveCenter(self._layout.strips[0].center())
+        self._notice.set_text(text, self._fonts)
+        self._notice.set_rect(box)
+
+    def dress(self, theme: Theme) -> None:
+        """Give everything its colours; results that are out of date have none."""
+        self._theme = theme
+        self.setBackgroundBrush(colour(theme.paper))
+        of_results = theme if self._current else greyed(theme)
+        for item in (self.drawing, *self._over()):
+            item.set_theme(theme)
+        for item in (*self.strips, self._readout):
+            item.set_theme(of_results)
+
+    # The cursor
+
+    def show_cursor(self, cursor: Cursor | None) -> None:
+        """Draw the cursor, where it is in the window, and read the values there."""
+        self._cursor = cursor
+        held = cursor is not None and self._ruler.holds(cursor.x)
+        self.cursor_line.set_pixel(self._ruler.pixel(cursor.x) if held else None, self._layout)
+        self._readout.set_text("" if cursor is None else self._values_at(cursor.x), self._fonts)
+
+    def _values_at(self, x: float) -> str:
+        if self._results is None:
+            return ""
+        x = min(max(x, 0.0), float(self._results.position[-1]))
+        state = self._state(self._results)
+        text = envelope_readout(self._results, x) if state is None else state_readout(self._results, state, x)
+        return text if self._current else tr("{values}  (out of date)").format(values=text)
