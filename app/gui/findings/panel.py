@@ -73,6 +73,11 @@ class FindingsPanel(QScrollArea):
         return self._headline.text()
 
     @property
+    def is_marked_out_of_date(self) -> bool:
+        """Whether the panel says that the findings are of an earlier edit."""
+        return not self._stale.isHidden()
+
+    @property
     def rows(self) -> tuple[FindingRow, ...]:
         """The rows that are shown, problems first."""
         return tuple(row for row in self._rows if not row.isHidden())

@@ -53,6 +53,11 @@ class FindingRow(QAbstractButton):
         self._fit_height()
         self.update()
 
+    @property
+    def is_lit(self) -> bool:
+        """Whether what the row is about is selected."""
+        return self._lit
+
     def set_lit(self, lit: bool) -> None:
         """Light the row of what is selected."""
         if lit != self._lit:
