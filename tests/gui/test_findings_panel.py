@@ -1,8 +1,9 @@
-"""The findings with real events: what is listed and in which order, choosing by mouse and keys, stale, problems."""
+"""The findings with real events: what is listed, in which order, choosing, what is out of date, problems."""
 
 from __future__ import annotations
 
 from dataclasses import replace
+from itertools import pairwise
 
 import pytest
 from PySide6.QtCore import Qt
@@ -62,7 +63,7 @@ class TestContent:
 
     def test_the_numbers_of_a_scale_stand_where_they_change(self):
         scales = [row for row in rows(ROD_FINDINGS) if row.band is not None]
-        for above, row in zip(scales, scales[1:], strict=False):
+        for above, row in pairwise(scales):
             ends = row.band.compression_text, row.band.tension_text
             assert row.band_named == (ends != (above.band.compression_text, above.band.tension_text))
 
