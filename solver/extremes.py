@@ -21,6 +21,8 @@ from solver.solution import Solution
 SAME = 1e-9  # places whose value is within this part of the extreme count as equal: the smallest x is taken
 _NOISE = 1e-13  # a slope up to this part of the element's largest value is rounding
 
+_NEXT_TO_NOTHING = 1e-290  # here products of small numbers have lost their digits
+
 
 @dataclass(frozen=True, slots=True)
 class Extremes:
@@ -151,7 +153,7 @@ def _size(coefficients: FloatArray) -> FloatArray:
 
 
 def _flat(slopes: FloatArray, size: FloatArray) -> tuple[FloatArray, FloatArray]:
-    return slopes.reshape(-1, slopes.shape[-1]), _NOISE * size.reshape(-1)
+    return slopes.reshape(-1, slopes.shape[-1]), _NOISE * size.reshape(-1) + _NEXT_TO_NOTHING
 
 
 def _stress_slopes(y: FloatArray, area: FloatArray) -> FloatArray:

@@ -206,8 +206,9 @@ def _utilisation(results: Results, states: IntArray, segment: IntArray, stress: 
     segments = results.segments
     zero = no_stress(segments.stress_max[states], segments.stress_min[states])[:, np.newaxis]
     nothing = np.where(np.isnan(tension) & np.isnan(compression), np.nan, 0.0)
-    pressed = np.where(stress < -zero, -stress / compression, nothing)
-    return np.where(stress > zero, stress / tension, pressed)
+    with np.errstate(over="ignore"):  # the side that is not taken may overflow
+        pressed = np.where(stress < -zero, -stress / compression, nothing)
+        return np.where(stress > zero, stress / tension, pressed)
 
 
 def _envelope(results: Results, states: IntArray, places: Places) -> Envelope:

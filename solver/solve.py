@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable
 
 import numpy as np
 
 from solver.allowables import StressChecks, allowables, check_stresses
-from solver.arrays import FloatArray, frozen
+from solver.arrays import BoolArray, FloatArray, frozen
 from solver.axial import solve_axial
-from solver.chain import Chain
+from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
 from solver.errors import Cancelled, NotSolvable, OutOfRange
 from solver.extremes import ExtremeFinder, Extremes
@@ -17,6 +18,7 @@ from solver.faults import Fault
 from solver.model import Project
 from solver.packing import pack, states_of
 from solver.results import Results, SegmentResults, State
+from solver.solution import Solution
 from solver.validation import unsolvable
 
 
@@ -42,14 +44,22 @@ def solve(
     _refuse_out_of_range(chain, states)
     names = tuple(state.name for state in states)
     solution = solve_axial(chain, loads, names=names, tolerance=tolerance, cancelled=cancelled)
+    if cancelled():
+        raise Cancelled
+    with np.errstate(all="ignore"):  # what overflows is found by its result
+        results = _results(project, chain, loads, states, solution)
+    _refuse_overflow(results)
+    return results
+
+
+def _results(
+    project: Project, chain: Chain, loads: Loads, states: tuple[State, ...], solution: Solution
+) -> Results:
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
     finder = ExtremeFinder(chain, solution, position)
     stress = finder.stress()
     limits = allowables(project, states)
     stress_checks = check_stresses(stress, limits)
-    segments = _segment_results(finder, stress, stress_checks, solution.force_bound)
-    if cancelled():
-        raise Cancelled
     checks = Checker(project, states, solution, position, stress_checks).checks()
     return Results(
         project=project,
@@ -58,7 +68,7 @@ def solve(
         states=states,
         solution=solution,
         position=position,
-        segments=segments,
+        segments=_segment_results(finder, stress, stress_checks, solution.force_bound),
         allowables=limits,
         checks=checks,
         verdict=verdict_of(checks),
@@ -85,9 +95,32 @@ def _states_with(project: Project, faults: tuple[Fault, ...]) -> tuple[str, ...]
 
 def _refuse_out_of_range(chain: Chain, states: tuple[State, ...]) -> None:
     """Stiffnesses that floating point cannot hold; what follows from loads is the solver's to see."""
-    stiffness = chain.modulus[:, np.newaxis] * chain.area
+    with np.errstate(over="ignore"):
+        stiffness = chain.modulus[:, np.newaxis] * chain.area
     if not (np.all(np.isfinite(stiffness)) and np.all(stiffness > 0.0)):
         raise OutOfRange(states[0].name, "stiffness")
+
+
+def _refuse_overflow(results: Results) -> None:
+    """Stresses, positions, masses, allowables and utilisations that floating point could not hold."""
+    segments, limits = results.segments, results.allowables
+    stress = [segments.stress_max, segments.stress_min, segments.stress_max_at]
+    _require(np.all(np.isfinite(stress), axis=0), "stress", results)
+    for limit in (limits.tension, limits.compression):
+        _require(np.isnan(limit) | (np.isfinite(limit) & (limit > 0.0)), "allowable", results)
+    _require(~np.isinf(segments.utilisation), "utilisation", results)
+    if not math.isfinite(results.mass):
+        raise OutOfRange(results.states[0].name, "mass")
+    for check in results.checks:
+        if check.utilisation is not None and not math.isfinite(check.utilisation):
+            raise OutOfRange(check.combination, "utilisation")
+
+
+def _require(sound: BoolArray, what: str, results: Results) -> None:
+    """Refuse the first state (m, n) that is not sound."""
+    states = np.all(sound, axis=1)
+    if not np.all(states):
+        raise OutOfRange(results.states[int(np.argmin(states))].name, what)
 
 
 def _segment_results(

@@ -88,6 +88,14 @@ def test_loads_beyond_floating_point_are_refused():
         solve(member(PARTS, HELD, [huge]))
 
 
+def test_an_allowable_beyond_floating_point_is_refused():
+    weak = [Part(1.0, area(1e-3), allowable_tension=1e-200)]
+    pulled = case("Pull", on_joints=[JointLoad("1", force=1e3)])
+    with pytest.raises(OutOfRange) as refused:
+        solve(member(weak, HELD, [pulled], [Combination("Faint", {"Pull": 1.0}, 1e-200)]))
+    assert (refused.value.combination, refused.value.what) == ("Faint", "allowable")
+
+
 def test_cancelling_is_heard_at_every_stage():
     project = member(PARTS, HELD, [PULL])
     asked = 0
