@@ -16,28 +16,13 @@ from solver.model import Project
 Place = tuple[str | int, ...]
 
 
-def span(old: Sequence[object], new: Sequence[object]) -> tuple[int, int]:
-    """How many items at the front, and then at the back, are the very same in both."""
-    shorter = min(len(old), len(new))
-    front = back = 0
-    while front < shorter and old[front] is new[front]:
-        front += 1
-    while back < shorter - front and old[-1 - back] is new[-1 - back]:
-        back += 1
-    return front, back
-
-
 def moved_index(index: int, old: Sequence[object], new: Sequence[object]) -> int | None:
-    """Where the item at `index` stands in `new`; None where it is gone."""
-    front, back = span(old, new)
-    if index < front:
-        return index
-    if index >= len(old) - back:
-        return index + len(new) - len(old)
-    same = [place for place, item in enumerate(new) if item is old[index]]
-    if same:
-        return same[0]
-    return index if len(old) == len(new) else None
+    """Where the item at `index` stands in `new`; None where it is gone.
+
+    An item that is no longer there was changed in place where the number is the same, else taken out.
+    """
+    found = next((place for place, item in enumerate(new) if item is old[index]), None)
+    return index if found is None and len(old) == len(new) else found
 
 
 def follow(place: Place, old: Project, new: Project) -> Place | None:

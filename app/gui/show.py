@@ -80,7 +80,7 @@ class Showing(QObject):
     @property
     def current(self) -> bool:
         """Whether what is shown is of everything that has been typed."""
-        return self._newest and not self._document.has_drafts and not self._fault
+        return self._newest and not self._document.has_drafts
 
     def follow(self) -> None:
         """The document or its preview changed: solve another project, and show what is known."""

@@ -18,8 +18,6 @@ from typing import Any
 
 from PySide6.QtCore import QObject, Qt, Signal, Slot
 
-from solver.errors import Cancelled
-
 PATIENCE = 0.2  # s, the age from which a running solve is given up for a newer edit
 
 Compute = Callable[[Any, Callable[[], bool]], object]
@@ -119,7 +117,7 @@ class LatestSolver(QObject):
         newest = number == self._newest
         if error is None:
             self.ready.emit(Delivery(number, newest, value))
-        elif newest and not isinstance(error, Cancelled):
+        elif newest:  # what was cancelled is never the newest
             self.failed.emit(Delivery(number, newest, error))
         if waiting is None:
             self.busy_changed.emit(False)

@@ -349,9 +349,15 @@ def test_the_edited_case_is_picked_by_name_and_shared_by_all_tables(pane, docume
     assert text_at(table, 2, "load_start") == "0"
     enter(table, 2, "load_start", "5")
     assert document.project.load_cases[1].segment_loads == (SegmentLoad("B", 5000.0),)
-    document.commit(edits.remove_case(document.project, "Dead"), "Delete load cases")
+    project = edits.add_record(document.project, ("load_cases",), LoadCase("Cold"), 0)
+    document.commit(edits.add_record(project, ("load_cases",), LoadCase("Wet"), 0), "Add load cases")
     assert pane.case_picker.currentText() == "Hot"
-    assert pane.sight.case == 0
+    assert pane.sight.case == 3
+    document.commit(edits.remove_case(document.project, "Cold"), "Delete load cases")
+    assert pane.case_picker.currentText() == "Hot"
+    assert pane.sight.case == 2
+    document.commit(edits.remove_case(document.project, "Hot"), "Delete load cases")
+    assert pane.sight.case == 1
 
 
 @pytest.mark.parametrize(
