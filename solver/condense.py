@@ -73,14 +73,18 @@ class ClosedForm:
     def __init__(self, block: Block) -> None:
         self._block = block
         self._rigidity = block.stiffness[:, 1]
-        thermal = self._rigidity * block.strain[0]
-        none = np.zeros_like(block.length)
-        self.condensed = Condensed(
+
+    @property
+    def condensed(self) -> Condensed:
+        """See Condensation; made anew, for it is needed once and there may be many elements."""
+        length, load = self._block.length, self._block.load
+        none = np.zeros_like(length)
+        return Condensed(
             mean_mean=none,
             mean_stretch=none,
-            stretch_stretch=self._rigidity / block.length,
-            load_mean=block.length * block.load[0],
-            load_stretch=thermal + (block.length / 6) * block.load[1],
+            stretch_stretch=self._rigidity / length,
+            load_mean=length * load[0],
+            load_stretch=self._rigidity * self._block.strain[0] + (length / 6) * load[1],
         )
 
     def fields(self, mean: FloatArray, stretch: FloatArray) -> Fields:
@@ -90,7 +94,7 @@ class ClosedForm:
         flexibility = length / rigidity
         half = length / 2
         y = np.empty((*mean.shape, 3))
-        y0 = self.condensed.stretch_stretch * stretch - rigidity * strain[0]
+        y0 = (rigidity / length) * stretch - rigidity * strain[0]
         y1 = -half * load[0]
         y2 = (-half / 3) * load[1]
         y[..., 0], y[..., 1], y[..., 2] = y0, y1, y2
@@ -111,7 +115,7 @@ class ClosedForm:
             end_force=y0 + y1 + y2,
             error=None,
             flexibility=flexibility,
-            stretching=self.condensed.stretch_stretch.sum(),
+            stretching=(rigidity / length).sum(),
             norm=(stretch * stretch / 4 + slope1 * slope1 / 3 + slope2 * slope2 / 5) @ stiffness,
             strain_norm=(strain[0] * strain[0] + strain[1] * strain[1] / 3) @ (rigidity * length),
             force_norm=force_norm,

@@ -15,7 +15,7 @@ import numpy as np
 from solver.arrays import FloatArray, IntArray, frozen
 from solver.bound import FLOOR, Bound, displacement_share, field_share, joint_roundings, joint_share
 from solver.chain import Chain, Loads
-from solver.condense import ClosedForm, Condensation, Condensed, Fields, Stacked
+from solver.condense import ClosedForm, Condensation, Condensed, Stacked
 from solver.errors import Cancelled
 from solver.joints import JointSystem, held, largest_load, spring_force, unbalanced
 from solver.mesh import Mesh, Where, block
@@ -23,6 +23,17 @@ from solver.solution import Solution
 
 CLOSED_BLOCK = 4096
 STACKED_BLOCK = 256
+
+SUMMED = (
+    "stretching",
+    "norm",
+    "strain_norm",
+    "force_norm",
+    "strain_energy",
+    "work",
+    "load",
+    "bedding_force",
+)  # the integrals of `Fields` that are sums over its elements
 
 Part: TypeAlias = tuple[Where, Condensation]
 
@@ -61,6 +72,7 @@ class Pass:
             raise Cancelled
         mean, stretch = self.ends.mean(), self.ends.stretch()
         self.fields = gathered(parts, mean, stretch, mesh)
+        del parts  # a long member's are as large as its results: their memory serves the rest of the pass
         self.leftover = unbalanced(self.held, self.ends, self.fields.start_force, self.fields.end_force)
         self.bound = self._bound(system, joint_roundings(self.held, self.condensed, self.ends, mean, stretch))
 
@@ -185,7 +197,7 @@ def gathered(parts: list[Part], mean: FloatArray, stretch: FloatArray, mesh: Mes
     force = np.zeros((states, elements, degree + 3 if stacked else 3))
     start_force, end_force, error = np.empty_like(mean), np.empty_like(mean), np.zeros_like(mean)
     flexibility = np.empty(elements)
-    sums = []
+    sums: dict[str, FloatArray] = {}
     for where, part in parts:
         own = part.fields(mean[:, where], stretch[:, where])
         displacement[:, where, : own.displacement.shape[2]] = own.displacement
@@ -194,19 +206,6 @@ def gathered(parts: list[Part], mean: FloatArray, stretch: FloatArray, mesh: Mes
         flexibility[where] = own.flexibility
         if own.error is not None:
             error[:, where] = own.error
-        sums.append(own)
-    return MemberFields(displacement, force, start_force, end_force, error, flexibility, **_summed(sums))
-
-
-def _summed(fields: list[Fields]) -> dict[str, FloatArray]:
-    names = (
-        "stretching",
-        "norm",
-        "strain_norm",
-        "force_norm",
-        "strain_energy",
-        "work",
-        "load",
-        "bedding_force",
-    )
-    return {name: sum(getattr(own, name) for own in fields) for name in names}
+        for name in SUMMED:
+            sums[name] = sums.get(name, 0.0) + getattr(own, name)
+    return MemberFields(displacement, force, start_force, end_force, error, flexibility, **sums)
