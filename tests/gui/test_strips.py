@@ -8,7 +8,7 @@ from itertools import combinations
 import numpy as np
 import pytest
 from PySide6.QtCore import QRectF
-from PySide6.QtGui import QFont
+from PySide6.QtGui import QFont, QPainterPath
 
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
@@ -19,6 +19,7 @@ from app.gui.strips.content import (
     OVER,
     TENSION,
     StripContent,
+    _range,
     envelope_contents,
     number,
     state_contents,
@@ -156,6 +157,11 @@ class TestRange:
             assert filled < 1e-2
             assert [extreme.text for extreme in shown.extremes] == [number(kind, 0.0, "mm-N-MPa")]
 
+    def test_noise_alone_stays_a_flat_line(self):
+        noise = np.array([3e-9, -7e-9, 5e-9])
+        low, high = _range((noise,), (), 210.0)
+        assert high - low >= 210.0
+
     def test_an_unloaded_member_has_strips(self):
         results = solve(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}))
         for shown in state_contents(results, 0):
@@ -174,29 +180,26 @@ class TestPixels:
                     assert place.rect.adjusted(-1, -1, 1, 1).contains(path.boundingRect())
 
     @BOTH_WAYS
-    def test_a_fill_has_the_area_of_its_curve(self, upright):
-        results = solve(read_sample("quay_pile"))
+    def test_fills_have_the_areas_of_their_curve(self, upright):
+        results = solve(read_sample("hoist_shaft"))  # tension, compression, tension: runs with a gap between
         shown = content(results, "force")
         place = places(results, upright=upright)[1]
         scale = Scale.of(shown, place.rect, place.axes)
         trace = shown.traces[0]
         paths = fill_paths(trace, place.ruler, scale, place.axes)
-        assert set(paths) == {COMPRESSION}
-        # The area by the shoelace formula against the integral by trapezoids: the same polygon, two roads.
-        area = 0.0
-        for polygon in paths[COMPRESSION].toSubpathPolygons():
-            points = np.array([[p.x(), p.y()] for p in polygon])
-            x, y = points[:, 0], points[:, 1]
-            area += 0.5 * abs(np.sum(x * np.roll(y, -1) - y * np.roll(x, -1)))
         pixels = abs(place.ruler.scale * (scale.end - scale.begin) / (scale.high - scale.low))
-        assert area == pytest.approx(abs(np.trapezoid(trace.value, trace.x)) * pixels, rel=1e-9)
+        # The area by the shoelace formula against the integral by trapezoids: two roads to one polygon.
+        for drawn, side in ((TENSION, np.maximum), (COMPRESSION, np.minimum)):
+            integral = abs(np.trapezoid(side(trace.value, 0.0), trace.x)) * pixels
+            assert _area(paths[drawn]) == pytest.approx(integral, rel=1e-9)
 
     @BOTH_WAYS
     @pytest.mark.parametrize("size", SIZES, ids=["small", "large"])
     @pytest.mark.parametrize("name", ["hoist_shaft", "quay_pile", "tie_rod", "busy 40"])
     def test_labels_stand_apart_and_inside_the_sheet(self, name, size, upright):
         results = solve(busy_member(40) if name == "busy 40" else read_sample(name))
-        for shown_state in (state_contents(results, 0), envelope_contents(results)):
+        of_states = [state_contents(results, index) for index in range(min(len(results.states), 4))]
+        for shown_state in (*of_states, envelope_contents(results)):
             labels = [
                 label
                 for shown, place in zip(shown_state, places(results, size, upright=upright), strict=True)
@@ -220,6 +223,15 @@ class TestPixels:
             close = replace(place, ruler=place.ruler.zoomed(8.0, place.ruler.begin))
             for label in Prepared.of(shown, close).labels:
                 assert label.rect.right() <= place.rect.right() + 0.5
+
+
+def _area(path: QPainterPath) -> float:
+    """The area inside a path that never crosses itself."""
+    total = 0.0
+    for polygon in path.toSubpathPolygons():
+        x, y = np.array([[point.x(), point.y()] for point in polygon]).T
+        total += 0.5 * float(np.sum(x * np.roll(y, -1) - y * np.roll(x, -1)))
+    return abs(total)
 
 
 class TestSpread:
