@@ -1,11 +1,15 @@
-"""The one style sheet of the window's own panels, made from the theme's colours."""
+"""The one style sheet of the window's own panels, made from the theme's colours.
+
+It is given to these panels only: on the window itself it would replace the palettes of all that is in it, and
+light is told from dark by the palette.
+"""
 
 from __future__ import annotations
 
 from app.gui.theme import Theme
 
 _SHEET = """
-QMainWindow, QMenuBar, QWidget#top_bar, QWidget#status_line {{ background: {panel}; color: {ink}; }}
+QMenuBar, QWidget#top_bar, QWidget#status_line {{ background: {panel}; color: {ink}; }}
 QMenuBar::item {{ background: transparent; color: {ink}; padding: 4px 9px; }}
 QMenuBar::item:selected {{ background: {select_fill}; }}
 QWidget#top_bar {{ border-bottom: 1px solid {edge}; }}
@@ -26,9 +30,9 @@ QTabBar::tab {{ background: {card}; color: {quiet}; padding: 6px 12px; border: n
     border-bottom: 2px solid transparent; }}
 QTabBar::tab:selected {{ color: {ink}; border-bottom: 2px solid {ink}; }}
 QTabBar::tab:focus {{ color: {select}; }}
-QSplitter::handle {{ background: {edge}; }}
-QSplitter::handle:horizontal {{ width: 1px; }}
-QSplitter::handle:vertical {{ height: 1px; }}
+QTableView {{ background: {card}; color: {ink}; border: none; }}
+QLineEdit#cell {{ background: {card}; color: {ink}; border: 2px solid {select}; }}
+QSplitterHandle {{ background: {edge}; }}
 """
 
 

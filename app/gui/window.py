@@ -53,7 +53,7 @@ class Window(QMainWindow):
         self._lay_out()
         self._wire()
         self._restore()
-        self.setStyleSheet(style_sheet(self._theme))
+        self._dress()
         self.on_document_changed()
         self.showing.begin()
         self.tables.views["segments"].setFocus()
@@ -121,6 +121,7 @@ class Window(QMainWindow):
         self.down.setStretchFactor(1, 2)
         for splitter in (self.across, self.down):
             splitter.setChildrenCollapsible(False)
+            splitter.setHandleWidth(3)
         middle = QWidget()
         rows = QVBoxLayout(middle)
         rows.setContentsMargins(0, 0, 0, 0)
@@ -315,6 +316,13 @@ class Window(QMainWindow):
             event.acceptProposedAction()
             self.files.open_path(Path(local[0]))
 
+    def _dress(self) -> None:
+        """Colours for the window's own panels; sheet and findings follow the palette by themselves."""
+        style = style_sheet(self._theme)
+        handles = (self.across.handle(1), self.down.handle(1))
+        for panel in (self.menuBar(), self.top_bar, self.tables, self.status, *handles):
+            panel.setStyleSheet(style)
+
     def changeEvent(self, event: QEvent) -> None:
         """Follow the system between light and dark."""
         super().changeEvent(event)
@@ -323,4 +331,4 @@ class Window(QMainWindow):
             if theme != self._theme:
                 self._theme = theme
                 self.tables.set_theme(theme)
-                self.setStyleSheet(style_sheet(theme))
+                self._dress()

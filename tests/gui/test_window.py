@@ -5,7 +5,7 @@ import threading
 
 import pytest
 from PySide6.QtCore import QMimeData, QPointF, Qt, QUrl
-from PySide6.QtGui import QAccessible, QDropEvent
+from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import (
     QAbstractButton,
@@ -529,6 +529,20 @@ def test_nothing_is_cut_off_in_the_bars_at_the_least_usual_size(window):
         )
         assert picker.width() >= widest + 20
     assert window.top_bar.minimumSizeHint().width() <= 1280
+
+
+def test_light_and_dark_follow_the_system(qapp, window):
+    light, dark = qapp.palette(), QPalette(QColor("#202020"))
+    assert not window._theme.is_dark
+    try:
+        qapp.setPalette(dark)
+        qapp.processEvents()
+        assert window._theme.is_dark
+        assert window.tables.views["segments"]._cells.theme.is_dark
+    finally:
+        qapp.setPalette(light)
+        qapp.processEvents()
+    assert not window._theme.is_dark
 
 
 def test_an_editor_left_open_is_the_first_thing_undone(window, table):

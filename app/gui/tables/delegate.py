@@ -111,8 +111,8 @@ class CellDelegate(QStyledItemDelegate):
     def createEditor(self, parent: QWidget, _option: QStyleOptionViewItem, index: Index) -> QWidget:
         """A line with the cell's full digits; each keystroke is previewed."""
         editor = CellEditor(parent)
-        editor.setFrame(False)
-        editor.setTextMargins(MARGIN - 2, 0, 0, 0)
+        editor.setObjectName("cell")
+        editor.setTextMargins(MARGIN - 5, 0, 0, 0)
         model = index.model()
         if isinstance(model, TableModel):
             title, unit = model.heading(index.column())

@@ -7,20 +7,19 @@ can be empty, Escape restores.
 from __future__ import annotations
 
 from PySide6.QtCore import QItemSelection, Qt, Signal
-from PySide6.QtGui import QGuiApplication, QKeyEvent, QPalette, QResizeEvent
+from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QAbstractItemView,
     QHeaderView,
-    QLineEdit,
     QTableView,
     QWidget,
 )
 
 from app.gui.tables.clipboard import block_of, block_text, tiled
-from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate
+from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate, CellEditor
 from app.gui.tables.model import TableModel
-from app.gui.theme import Theme, colour
+from app.gui.theme import Theme
 from app.words import tr
 
 ROW_HEIGHT = 26
@@ -75,20 +74,6 @@ class TableView(QTableView):
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""
         self._cells.theme = theme
-        palette = self.palette()
-        roles = QPalette.ColorRole
-        for role, name in (
-            (roles.Base, "card"),
-            (roles.Window, "card"),
-            (roles.Button, "card"),
-            (roles.Text, "ink"),
-            (roles.WindowText, "ink"),
-            (roles.ButtonText, "quiet"),
-            (roles.Highlight, "select_fill"),
-            (roles.HighlightedText, "ink"),
-        ):
-            palette.setColor(role, colour(getattr(theme, name)))
-        self.setPalette(palette)
         self.horizontalHeader().setStyleSheet(
             f"QHeaderView {{ background: {theme.card}; border: none;"
             f" border-bottom: 1px solid {theme.edge}; }}"
@@ -197,10 +182,12 @@ class TableView(QTableView):
 
     def commit_open_editor(self) -> None:
         """Take in what an open editor holds, before saving or closing."""
-        editor = self.findChild(QLineEdit)
-        if editor is not None and self._is_editing():
-            self.commitData(editor)
-            self.closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+        if not self._is_editing():
+            return
+        for editor in self.findChildren(CellEditor):
+            if editor.isVisible():  # one that was closed waits hidden for its deletion
+                self.commitData(editor)
+                self.closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
 
     def clear_selected(self) -> None:
         """Empty the selected cells that may be empty, as one undo step."""
