@@ -8,12 +8,12 @@ from pathlib import Path
 from msgspec.structs import replace
 from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
-from PySide6.QtWidgets import QMainWindow, QMenu, QSplitter, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QMainWindow, QSplitter, QVBoxLayout, QWidget
 
-from app import samples
 from app.gui import dialogs, settings
 from app.gui.actions import RECENT, SAMPLES, fill_menus, keys_text, make_actions
 from app.gui.document import Document
+from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
 from app.gui.findings.panel import FindingsPanel
 from app.gui.member_edits import MemberEdits
@@ -72,12 +72,11 @@ class Window(QMainWindow):
 
     def _make_commands(self) -> None:
         self.actions_by_key = make_actions(self, self._handlers())
-        self._recent_menu, self._samples_menu = QMenu(self), QMenu(self)
+        self.recent_menu = RecentMenu(self.store, self.files.open_path, self)
+        self.samples_menu = SamplesMenu(self.files.open_sample, self)
         fill_menus(
-            self.menuBar(), self.actions_by_key, {RECENT: self._recent_menu, SAMPLES: self._samples_menu}
+            self.menuBar(), self.actions_by_key, {RECENT: self.recent_menu, SAMPLES: self.samples_menu}
         )
-        self._recent_menu.aboutToShow.connect(self._fill_recent)
-        self._samples_menu.aboutToShow.connect(self._fill_samples)
         self.top_bar = TopBar(self.actions_by_key)
 
     def _handlers(self) -> dict[str, Callable[[], None]]:
@@ -219,27 +218,6 @@ class Window(QMainWindow):
             target.setFocus(Qt.FocusReason.ShortcutFocusReason)
 
     # Menus and dialogs
-
-    def _fill_recent(self) -> None:
-        self._recent_menu.clear()
-        for path in self.store.recent:
-            self._recent_menu.addAction(
-                str(path).replace("&", "&&"), lambda path=path: self.files.open_path(path)
-            )
-        if self._recent_menu.isEmpty():
-            self._recent_menu.addAction(tr("none yet")).setEnabled(False)
-            return
-        self._recent_menu.addSeparator()
-        self._recent_menu.addAction(tr("Forget these"), self.store.clear_recent)
-
-    def _fill_samples(self) -> None:
-        self._samples_menu.clear()
-        for name in samples.names():
-            words = name.replace("_", " ").capitalize()
-            self._samples_menu.addAction(words, lambda name=name: self._open_sample(name))
-
-    def _open_sample(self, name: str) -> None:
-        self.files.open_sample(samples.read_sample(name))
 
     def _show_text(self, title: str, headline: str, text: str) -> None:
         dialogs.show_text(self, title, headline, text)

@@ -354,15 +354,15 @@ def test_new_is_blank_valid_and_solves_in_the_units_chosen_last(qtbot, window, s
 def test_a_sample_is_opened_as_a_new_project_and_never_written_over(qtbot, window, store, tmp_path):
     assert is_sample(samples.sample_path())
     assert not is_sample(tmp_path / samples.sample_path().name)
-    window._samples_menu.aboutToShow.emit()
-    window._samples_menu.actions()[0].trigger()
+    window.samples_menu.aboutToShow.emit()
+    window.samples_menu.actions()[0].trigger()
     assert window.document.path is None
     assert window.document.project == samples.read_sample()
 
 
 def test_recent_files_stand_in_their_menu(window, rod):
-    window._recent_menu.aboutToShow.emit()
-    assert window._recent_menu.actions()[0].text() == str(rod)
+    window.recent_menu.aboutToShow.emit()
+    assert window.recent_menu.actions()[0].text() == str(rod)
 
 
 # The question about unsaved changes

@@ -1,0 +1,267 @@
+"""The cells of the segment table: how each is read, and what a typed text makes of the project.
+
+Loads and temperatures are those of the load case that is edited; a cell that stands for several records shows
+their sum and is edited in the Loads table.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from math import fsum
+from typing import Any
+
+from msgspec import UNSET
+
+from app import edits
+from app.entry import parse_entry
+from app.gui.places import Place
+from app.gui.tables.column import Change, Figures, Sight
+from app.gui.tables.loads import case_place, needed_case
+from app.gui.tables.materials import with_modulus
+from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
+from app.section_entry import parse_section
+from app.support_entry import parse_support, support_entry, support_text
+from app.units import Quantity, entry_text, format_value, utilisation_text
+from app.words import tr
+from solver.checks import PASS_MARGIN
+from solver.model import AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
+from solver.sections import area_coefficients
+
+
+@dataclass(frozen=True, slots=True)
+class StartRow:
+    """Before the first segment: the member's first joint."""
+
+    joint: Joint
+
+
+@dataclass(frozen=True, slots=True)
+class SegmentRow:
+    """A segment, the joint at its far end, its material's modulus and its loads in the edited case."""
+
+    segment: Segment
+    joint: Joint
+    modulus: float | None
+    loads: tuple[SegmentLoad, ...] | None  # None: no case is edited
+
+
+def rows(project: Project, sight: Sight) -> tuple[object, ...]:
+    """The start row and a row for each segment."""
+    moduli = {material.name: material.modulus for material in project.materials}
+    loads = _loads_by_mark(sight.load_case(project))
+    found: list[object] = [StartRow(project.joints[0])]
+    for segment, joint in zip(project.segments, project.joints[1:], strict=True):
+        own = None if loads is None else tuple(loads.get(segment.mark, ()))
+        found.append(SegmentRow(segment, joint, moduli.get(segment.material), own))
+    return tuple(found)
+
+
+def _loads_by_mark(case: LoadCase | None) -> dict[str, list[SegmentLoad]] | None:
+    if case is None:
+        return None
+    found: dict[str, list[SegmentLoad]] = {}
+    for load in case.segment_loads:
+        found.setdefault(load.segment, []).append(load)
+    return found
+
+
+def in_segments(read: Callable[[SegmentRow, Sight], Any], otherwise: Any) -> Callable[[Any, Sight], Any]:
+    """The reading of a segment's row; `otherwise` in the row before the first."""
+    return lambda row, sight: read(row, sight) if isinstance(row, SegmentRow) else otherwise
+
+
+def set_in_segment(
+    key: str, read: Callable[[str, Sight], Any]
+) -> Callable[[Project, int, str, Sight], Change]:
+    """Sets one key of a segment to what `read` makes of the text."""
+    return lambda project, index, text, sight: Change(
+        edits.set_value(project, ("segments", index, key), read(text, sight))
+    )
+
+
+# One by one
+
+
+def show_mark(row: object, _sight: Sight) -> str:
+    """The mark; in the row before the first, a word for it."""
+    return row.segment.mark if isinstance(row, SegmentRow) else tr("start")
+
+
+def put_mark(project: Project, index: int, text: str, _sight: Sight) -> Change:
+    """Rename the segment and every reference to it."""
+    return Change(edits.set_value(project, ("segments", index, "mark"), text.strip()))
+
+
+def end_areas(row: SegmentRow) -> tuple[float, float]:
+    """The areas at start and end, m²."""
+    first, _middle, last = area_coefficients(row.segment.section)
+    return first, last
+
+
+def put_section(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """The old section settles what bare numbers are, and keeps second moments that no text shows."""
+    section = parse_section(text, sight.system, project.segments[index].section)
+    return Change(edits.set_value(project, ("segments", index, "section"), section))
+
+
+def _with_second_moments(section: AreaSection, old: AreaSection) -> AreaSection:
+    """Typed areas keep second moments that no cell shows."""
+    return AreaSection(
+        area=section.area,
+        area_end=section.area_end,
+        second_moment=old.second_moment,
+        second_moment_end=old.second_moment_end,
+    )
+
+
+def put_area(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """A typed area is known by its area alone from then on, which the note says."""
+    start, end = parse_pair(text, "area", sight.system)
+    old = project.segments[index].section
+    section = AreaSection(area=start, area_end=end)
+    note = ""
+    if isinstance(old, AreaSection):
+        section = _with_second_moments(section, old)
+    else:
+        note = tr("{mark} is now known by its area alone").format(mark=project.segments[index].mark)
+    return Change(edits.set_value(project, ("segments", index, "section"), section), note)
+
+
+def put_modulus(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """The modulus, by changing or copying the material."""
+    return with_modulus(project, index, parse_entry(text, "modulus", sight.system))
+
+
+def bedding_entry(row: SegmentRow, sight: Sight) -> str:
+    """Both ends of the bedding, all digits."""
+    return pair_entry(row.segment.bedding, row.segment.bedding_end, "bedding", sight.system)
+
+
+def show_bedding(row: SegmentRow, sight: Sight) -> str:
+    """Both ends of the bedding, for reading."""
+    return pair_text(row.segment.bedding, row.segment.bedding_end, "bedding", sight.system)
+
+
+def put_bedding(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """Both ends of the bedding; an empty text takes it away."""
+    start, end = parse_pair(text, "bedding", sight.system) if text.strip() else (UNSET, UNSET)
+    bedded = edits.set_value(project, ("segments", index, "bedding"), start)
+    return Change(edits.set_value(bedded, ("segments", index, "bedding_end"), end))
+
+
+def show_support(row: StartRow | SegmentRow, sight: Sight) -> str:
+    """The joint's mark and what holds it."""
+    return f"{row.joint.mark}: {support_text(row.joint.support, sight.system)}"
+
+
+def entry_of_support(row: StartRow | SegmentRow, sight: Sight) -> str:
+    """What holds the joint, as it is typed."""
+    return support_entry(row.joint.support, sight.system)
+
+
+def put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """Another support at the segment's far joint."""
+    support = parse_support(text, sight.system)
+    return Change(edits.set_value(project, ("joints", index + 1, "support"), support))
+
+
+# Loads of the edited case
+
+
+@dataclass(frozen=True, slots=True)
+class Ends:
+    """The two keys of a load that varies along the segment."""
+
+    start: str
+    end: str
+    quantity: Quantity
+
+    def of(self, load: SegmentLoad) -> tuple[float, float]:
+        """The load at both ends."""
+        start: float = getattr(load, self.start)
+        return start, end_of(start, getattr(load, self.end))
+
+    def total(self, row: SegmentRow) -> tuple[float, float] | None:
+        """The sum of the segment's records; None where no case is edited."""
+        if row.loads is None:
+            return None
+        pairs = [self.of(load) for load in row.loads]
+        return fsum(start for start, _ in pairs), fsum(end for _, end in pairs)
+
+
+FORCE = Ends("load_start", "load_end", "distributed")
+HEAT = Ends("temperature_start", "temperature_end", "temperature")
+
+
+def one_end(ends: Ends, which: int) -> dict[str, Any]:
+    """A column's functions for the load at the start (0) or the end (1) of the segment."""
+
+    def show(row: SegmentRow, sight: Sight) -> str:
+        total = ends.total(row)
+        return "" if total is None else format_value(total[which], ends.quantity, sight.system, strip=True)
+
+    def entry(row: SegmentRow, sight: Sight) -> str | None:
+        total = ends.total(row)
+        editable = total is not None and row.loads is not None and len(row.loads) <= 1
+        return entry_text(total[which], ends.quantity, sight.system) if editable and total else None
+
+    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        value = parse_entry(text, ends.quantity, sight.system) if text.strip() else UNSET
+        key = ends.start if which == 0 else ends.end
+        case, mark = needed_case(project, sight).name, project.segments[index].mark
+        return Change(edits.set_segment_load(project, case, mark, key, value))
+
+    return {"show": in_segments(show, ""), "entry": in_segments(entry, None), "put": put}
+
+
+def show_heat(row: SegmentRow, sight: Sight) -> str:
+    """Both ends of the temperature rise, for reading."""
+    total = HEAT.total(row)
+    return "" if total is None else pair_text(*total, HEAT.quantity, sight.system)
+
+
+def heat_entry(row: SegmentRow, sight: Sight) -> str | None:
+    """Both ends, all digits; None where several records stand for them."""
+    total = HEAT.total(row)
+    if total is None or row.loads is None or len(row.loads) > 1:
+        return None
+    return pair_entry(*total, HEAT.quantity, sight.system)
+
+
+def put_heat(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """Both ends of the temperature rise; an empty text takes it away."""
+    start, end = parse_pair(text, HEAT.quantity, sight.system) if text.strip() else (UNSET, UNSET)
+    case, mark = needed_case(project, sight).name, project.segments[index].mark
+    heated = edits.set_segment_load(project, case, mark, HEAT.start, start)
+    return Change(edits.set_segment_load(heated, case, mark, HEAT.end, end))
+
+
+def at_case(key: str) -> Callable[[int, Sight], Place]:
+    """The place of a cell that belongs to the edited case."""
+    return lambda index, sight: ("segments", index, key, *case_place(sight))
+
+
+# Results
+
+
+def utilisation(index: int, figures: Figures, _sight: Sight) -> str:
+    """The utilisation in words, with the digits that its verdict needs."""
+    value = figures.value(figures.utilisation, index)
+    return "" if value is None else utilisation_text(value, "pass" if value <= 1 + PASS_MARGIN else "fail")
+
+
+def bar(index: int, figures: Figures) -> tuple[float, float] | None:
+    """Utilisation and sign of the stress for the bar."""
+    value = figures.value(figures.utilisation, index)
+    return None if value is None else (value, float(figures.governs[index]))
+
+
+def total_line(project: Project, figures: Figures, sight: Sight) -> str:
+    """Length and mass of the whole member."""
+    length = fsum(segment.length for segment in project.segments)
+    text = format_value(length, "length", sight.system, with_unit=True, strip=True)
+    if figures.mass is None:
+        return tr("total {length}").format(length=text)
+    mass = format_value(figures.mass, "mass", sight.system, 3, with_unit=True)
+    return tr("total {length}, {mass}").format(length=text, mass=mass)
