@@ -15,6 +15,7 @@ import numpy as np
 
 from app.gui.places import Place
 from app.units import Quantity
+from app.words import tr
 from solver.arrays import FloatArray
 from solver.model import LoadCase, Project, UnitSystemName
 
@@ -83,6 +84,12 @@ class Column:
     width: int = 9  # in digits
     figure: Callable[[int, Figures, Sight], str] | None = None
     bar: Callable[[int, Figures], tuple[float, float] | None] | None = None  # utilisation, sign of the stress
+    named_by_user: bool = False  # the title is the user's own word
+
+    @property
+    def words(self) -> str:
+        """The title in the user's language."""
+        return self.title if self.named_by_user else tr(self.title)
 
 
 @dataclass(frozen=True, slots=True)

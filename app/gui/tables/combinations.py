@@ -10,6 +10,7 @@ from app.gui.places import Place
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.materials import name_of, put_name
 from app.units import entry_text, format_value
+from app.words import later
 from solver.model import Combination, Project
 
 
@@ -33,7 +34,9 @@ def _factor(case: int, name: str) -> Column:
     def place(index: int, _sight: Sight) -> Place:
         return ("combinations", index, "factors", "load_cases", case)
 
-    return Column(f"factor of {name}", name, show, entry, put, place=place, optional=True, width=8)
+    return Column(
+        f"factor of {name}", name, show, entry, put, place=place, optional=True, width=8, named_by_user=True
+    )
 
 
 def _put_allowable(project: Project, index: int, text: str, sight: Sight) -> Change:
@@ -53,10 +56,10 @@ def _add(project: Project, text: str, _sight: Sight) -> Change:
     return Change(edits.add_record(project, ("combinations",), Combination(text.strip(), factors)))
 
 
-_NAME = Column("name", "Combination", name_of, name_of, put_name("combinations"), width=16)
+_NAME = Column("name", later("Combination"), name_of, name_of, put_name("combinations"), width=16)
 _ALLOWABLE = Column(
     "allowable_factor",
-    "Allowables times",
+    later("Allowables times"),
     lambda row, sight: format_value(row.allowable_factor, "factor", sight.system, strip=True),
     lambda row, sight: entry_text(row.allowable_factor, "factor", sight.system),
     _put_allowable,
@@ -65,12 +68,12 @@ _ALLOWABLE = Column(
 
 COMBINATIONS = Table(
     key="combinations",
-    title="Combinations",
+    title=later("Combinations"),
     rows=lambda project, _sight: tuple(project.combinations),
     columns=columns,
     row_name=lambda project, index, _sight: project.combinations[index].name,
     records=lambda _sight: ("combinations",),
-    adding=Adding("type a name to add a combination", _add, "Add combination", "name"),
+    adding=Adding(later("type a name to add a combination"), _add, later("Add combination"), "name"),
     delete=lambda project, indexes, _sight: edits.remove_records(project, ("combinations",), indexes),
-    delete_name="Delete combinations",
+    delete_name=later("Delete combinations"),
 )

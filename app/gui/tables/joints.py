@@ -15,6 +15,7 @@ from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import case_place, needed_case
 from app.support_entry import parse_support, support_entry, support_text
 from app.units import Quantity, entry_text, format_value
+from app.words import later
 from solver.model import Joint, JointLoad, Project
 
 
@@ -74,14 +75,14 @@ def _figure(name: str, quantity: Quantity) -> Column:
         value = figures.value(getattr(figures, name), index)
         return "" if value is None else format_value(value, quantity, sight.system)
 
-    titles = {"displacement": "Moves by", "reaction": "Reaction"}
+    titles = {"displacement": later("Moves by"), "reaction": later("Reaction")}
     return Column(name, titles[name], quantity=quantity, figure=text, width=10)
 
 
 COLUMNS = (
     Column(
         "mark",
-        "Mark",
+        later("Mark"),
         lambda row, _sight: row.joint.mark,
         lambda row, _sight: row.joint.mark,
         lambda project, index, text, _sight: Change(
@@ -91,28 +92,28 @@ COLUMNS = (
     ),
     Column(
         "position",
-        "Position",
+        later("Position"),
         lambda row, sight: format_value(row.position, "length", sight.system, 6, strip=True),
         quantity="length",
     ),
     Column(
         "support",
-        "Held by",
+        later("Held by"),
         lambda row, sight: support_text(row.joint.support, sight.system),
         lambda row, sight: support_entry(row.joint.support, sight.system),
         _put_support,
         optional=True,
         width=20,
     ),
-    _load("force", "Force along +x", "force"),
-    _load("movement", "Support moves by", "displacement"),
+    _load("force", later("Force along +x"), "force"),
+    _load("movement", later("Support moves by"), "displacement"),
     _figure("displacement", "displacement"),
     _figure("reaction", "force"),
 )
 
 JOINTS = Table(
     key="joints",
-    title="Joints",
+    title=later("Joints"),
     rows=rows,
     columns=lambda _project, _sight: COLUMNS,
     row_name=lambda project, index, _sight: project.joints[index].mark,

@@ -7,7 +7,7 @@ from app.entry import parse_entry
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.reasons import NotTaken
 from app.units import Quantity, entry_text, format_value
-from app.words import tr
+from app.words import later, tr
 from solver.model import DisplacementLimit, Project, ReactionLimit, RelativeLimit
 
 FIRST_MOVEMENT = 0.001  # m, what a new limit starts from, to be typed over
@@ -30,7 +30,7 @@ def _limit(kind: str, quantity: Quantity) -> Column:
 
     return Column(
         "limit",
-        "At most",
+        later("At most"),
         lambda row, sight: format_value(row.limit, quantity, sight.system, strip=True),
         lambda row, sight: entry_text(row.limit, quantity, sight.system),
         put,
@@ -51,7 +51,7 @@ def _table(kind: str, title: str, columns: tuple[Column, ...], adding: Adding) -
         records=lambda _sight: ("limits", kind),
         adding=adding,
         delete=lambda project, indexes, _sight: edits.remove_records(project, ("limits", kind), indexes),
-        delete_name="Delete limits",
+        delete_name=later("Delete limits"),
     )
 
 
@@ -77,23 +77,28 @@ def _add_relative(project: Project, text: str, _sight: Sight) -> Change:
 
 DISPLACEMENT = _table(
     "displacement",
-    "Movement of a joint",
-    (_mark("displacement", "joint", "joint", "Movement of joint"), _limit("displacement", "displacement")),
-    Adding("type a joint's mark to limit it", _add_displacement, "Add displacement limit", "joint"),
+    later("Movement of a joint"),
+    (
+        _mark("displacement", "joint", "joint", later("Movement of joint")),
+        _limit("displacement", "displacement"),
+    ),
+    Adding(
+        later("type a joint's mark to limit it"), _add_displacement, later("Add displacement limit"), "joint"
+    ),
 )
 RELATIVE = _table(
     "relative",
-    "Movement between joints",
+    later("Movement between joints"),
     (
-        _mark("relative", "start", "from", "Movement from joint"),
-        _mark("relative", "end", "to", "to joint"),
+        _mark("relative", "start", "from", later("Movement from joint")),
+        _mark("relative", "end", "to", later("to joint")),
         _limit("relative", "displacement"),
     ),
-    Adding("type two marks: 0 -> 2", _add_relative, "Add relative limit", "start"),
+    Adding(later("type two marks: 0 -> 2"), _add_relative, later("Add relative limit"), "start"),
 )
 REACTION = _table(
     "reaction",
-    "Reaction of a support",
-    (_mark("reaction", "joint", "joint", "Reaction at joint"), _limit("reaction", "force")),
-    Adding("type a joint's mark to limit it", _add_reaction, "Add reaction limit", "joint"),
+    later("Reaction of a support"),
+    (_mark("reaction", "joint", "joint", later("Reaction at joint")), _limit("reaction", "force")),
+    Adding(later("type a joint's mark to limit it"), _add_reaction, later("Add reaction limit"), "joint"),
 )

@@ -13,7 +13,7 @@ from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.materials import name_of, put_name
 from app.gui.tables.reasons import NotTaken
 from app.units import Quantity, entry_text, format_value
-from app.words import tr
+from app.words import later, tr
 from solver.model import JointLoad, LoadCase, Project, SegmentLoad, end_of
 
 
@@ -56,28 +56,28 @@ def delete_cases(project: Project, indexes: tuple[int, ...]) -> Project:
 
 CASES = Table(
     key="load_cases",
-    title="Load cases",
+    title=later("Load cases"),
     rows=lambda project, _sight: tuple(project.load_cases),
     columns=lambda _project, _sight: CASE_COLUMNS,
     row_name=lambda project, index, _sight: project.load_cases[index].name,
     records=lambda _sight: ("load_cases",),
     adding=Adding(
-        "type a name to add a case",
+        later("type a name to add a case"),
         lambda project, text, _sight: Change(
             edits.add_record(project, ("load_cases",), LoadCase(text.strip()))
         ),
-        "Add load case",
+        later("Add load case"),
         "name",
     ),
     delete=lambda project, indexes, _sight: delete_cases(project, indexes),
-    delete_name="Delete load cases",
+    delete_name=later("Delete load cases"),
 )
 
 CASE_COLUMNS = (
-    Column("name", "Load case", name_of, name_of, put_name("load_cases"), width=16),
+    Column("name", later("Load case"), name_of, name_of, put_name("load_cases"), width=16),
     Column(
         "gravity",
-        "Gravity along +x",
+        later("Gravity along +x"),
         _gravity_show,
         lambda row, sight: entry_text(row.gravity, "acceleration", sight.system),
         _put_gravity,
@@ -146,7 +146,7 @@ def _records(kind: str, key: str, title: str, columns: tuple[Column, ...], addin
         delete=lambda project, indexes, sight: edits.remove_records(
             project, (*case_place(sight), kind), indexes
         ),
-        delete_name="Delete loads",
+        delete_name=later("Delete loads"),
     )
 
 
@@ -163,26 +163,30 @@ def _add_joint_load(project: Project, text: str, sight: Sight) -> Change:
 SEGMENT_LOADS = _records(
     "segment_loads",
     "segment",
-    "Loads on segments",
+    later("Loads on segments"),
     (
-        _reference("segment_loads", "segment", "Segment"),
-        _number("segment_loads", "load_start", "Load at start", "distributed"),
-        _number("segment_loads", "load_end", "Load at end", "distributed", "load_start"),
-        _number("segment_loads", "temperature_start", "Heated at start", "temperature"),
-        _number("segment_loads", "temperature_end", "Heated at end", "temperature", "temperature_start"),
-        _number("segment_loads", "lack_of_fit", "Too long by", "displacement"),
+        _reference("segment_loads", "segment", later("Segment")),
+        _number("segment_loads", "load_start", later("Load at start"), "distributed"),
+        _number("segment_loads", "load_end", later("Load at end"), "distributed", "load_start"),
+        _number("segment_loads", "temperature_start", later("Heated at start"), "temperature"),
+        _number(
+            "segment_loads", "temperature_end", later("Heated at end"), "temperature", "temperature_start"
+        ),
+        _number("segment_loads", "lack_of_fit", later("Too long by"), "displacement"),
     ),
-    Adding("type a segment's mark to load it", _add_segment_load, "Add segment load", "segment"),
+    Adding(
+        later("type a segment's mark to load it"), _add_segment_load, later("Add segment load"), "segment"
+    ),
 )
 
 JOINT_LOADS = _records(
     "joint_loads",
     "joint",
-    "Loads at joints",
+    later("Loads at joints"),
     (
-        _reference("joint_loads", "joint", "Joint"),
-        _number("joint_loads", "force", "Force along +x", "force"),
-        _number("joint_loads", "movement", "Support moves by", "displacement"),
+        _reference("joint_loads", "joint", later("Joint")),
+        _number("joint_loads", "force", later("Force along +x"), "force"),
+        _number("joint_loads", "movement", later("Support moves by"), "displacement"),
     ),
-    Adding("type a joint's mark to load it", _add_joint_load, "Add joint load", "joint"),
+    Adding(later("type a joint's mark to load it"), _add_joint_load, later("Add joint load"), "joint"),
 )

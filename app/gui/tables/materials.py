@@ -13,7 +13,7 @@ from app.entry import parse_entry
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.reasons import NotTaken
 from app.units import Quantity, entry_text, format_value
-from app.words import tr
+from app.words import later, tr
 from solver.model import Material, Project
 
 
@@ -85,22 +85,22 @@ def _add(project: Project, text: str, _sight: Sight) -> Change:
 
 
 COLUMNS = (
-    Column("name", "Name", name_of, name_of, put_name("materials"), width=16),
-    _number("modulus", "Modulus", "modulus", optional=False),
-    _number("expansion", "Thermal expansion", "expansion"),
-    _number("density", "Density", "density"),
-    _number("allowable_tension", "Allowable in tension", "stress", width=14),
-    _number("allowable_compression", "Allowable in compression", "stress", width=14),
+    Column("name", later("Name"), name_of, name_of, put_name("materials"), width=16),
+    _number("modulus", later("Modulus"), "modulus", optional=False),
+    _number("expansion", later("Thermal expansion"), "expansion"),
+    _number("density", later("Density"), "density"),
+    _number("allowable_tension", later("Allowable in tension"), "stress", width=14),
+    _number("allowable_compression", later("Allowable in compression"), "stress", width=14),
 )
 
 MATERIALS = Table(
     key="materials",
-    title="Materials",
+    title=later("Materials"),
     rows=lambda project, _sight: tuple(project.materials),
     columns=lambda _project, _sight: COLUMNS,
     row_name=lambda project, index, _sight: project.materials[index].name,
     records=lambda _sight: ("materials",),
-    adding=Adding("type a name to add a material", _add, "Add material", "name"),
+    adding=Adding(later("type a name to add a material"), _add, later("Add material"), "name"),
     delete=lambda project, indexes, _sight: edits.remove_records(project, ("materials",), indexes),
-    delete_name="Delete materials",
+    delete_name=later("Delete materials"),
 )

@@ -158,7 +158,7 @@ class TableModel(RowsModel):
     def heading(self, column: int) -> tuple[str, str]:
         """A column's title and unit."""
         quantity = self._columns[column].quantity
-        return tr(self._columns[column].title), symbol(quantity, self._sight.system) if quantity else ""
+        return self._columns[column].words, symbol(quantity, self._sight.system) if quantity else ""
 
     # Typing
 
@@ -243,5 +243,5 @@ class TableModel(RowsModel):
         if self.is_adding(index.row()) and self.table.adding is not None:
             return tr(self.table.adding.name)
         row = self.table.row_name(self._document.project, self.record_of(index.row()), self._sight)
-        title = tr(self._columns[index.column()].title)
+        title = self._columns[index.column()].words
         return tr("{column} of {row}").format(column=title, row=row)

@@ -52,7 +52,7 @@ class Block:
     def _cell_name(self, row: int, column: int) -> str:
         model = self._model
         name = model.table.row_name(self._project, model.record_of(row), model.sight)
-        return tr("{column} of {row}").format(column=tr(model.columns[column].title), row=name)
+        return tr("{column} of {row}").format(column=model.columns[column].words, row=name)
 
     def _add(self, column: Column, text: str) -> None:
         adding = self._model.table.adding

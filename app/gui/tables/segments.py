@@ -38,6 +38,7 @@ from app.gui.tables.segment_cells import (
 )
 from app.section_entry import section_label, section_text
 from app.units import entry_text, format_value
+from app.words import later
 from solver.model import Project
 
 
@@ -59,10 +60,10 @@ def columns(_project: Project, _sight: Sight) -> tuple[Column, ...]:
 
 
 COLUMNS = (
-    Column("mark", "Mark", show_mark, in_segments(_mark_entry, None), put_mark, width=6),
+    Column("mark", later("Mark"), show_mark, in_segments(_mark_entry, None), put_mark, width=6),
     Column(
         "length",
-        "Length",
+        later("Length"),
         in_segments(lambda row, s: format_value(row.segment.length, "length", s.system, 6, strip=True), ""),
         in_segments(lambda row, s: entry_text(row.segment.length, "length", s.system), None),
         set_in_segment("length", lambda text, s: parse_entry(text, "length", s.system)),
@@ -70,7 +71,7 @@ COLUMNS = (
     ),
     Column(
         "section",
-        "Section",
+        later("Section"),
         in_segments(lambda row, s: section_label(row.segment.section, s.system), ""),
         in_segments(lambda row, s: section_text(row.segment.section, s.system), None),
         put_section,
@@ -79,7 +80,7 @@ COLUMNS = (
     ),
     Column(
         "area",
-        "Area",
+        later("Area"),
         in_segments(lambda row, s: pair_text(*end_areas(row), "area", s.system), ""),
         in_segments(lambda row, s: pair_entry(*end_areas(row), "area", s.system), None),
         put_area,
@@ -88,7 +89,7 @@ COLUMNS = (
     ),
     Column(
         "material",
-        "Material",
+        later("Material"),
         in_segments(lambda row, _s: row.segment.material, ""),
         in_segments(lambda row, _s: row.segment.material, None),
         set_in_segment("material", lambda text, _s: text.strip()),
@@ -96,7 +97,7 @@ COLUMNS = (
     ),
     Column(
         "modulus",
-        "Modulus",
+        later("Modulus"),
         in_segments(
             lambda row, s: (
                 "" if row.modulus is None else format_value(row.modulus, "modulus", s.system, strip=True)
@@ -111,7 +112,7 @@ COLUMNS = (
     ),
     Column(
         "load_start",
-        "Load at start",
+        later("Load at start"),
         **one_end(FORCE, 0),
         place=at_case("load_start"),
         quantity="distributed",
@@ -119,7 +120,7 @@ COLUMNS = (
     ),
     Column(
         "load_end",
-        "Load at end",
+        later("Load at end"),
         **one_end(FORCE, 1),
         place=at_case("load_end"),
         quantity="distributed",
@@ -127,7 +128,7 @@ COLUMNS = (
     ),
     Column(
         "heat",
-        "Heated by",
+        later("Heated by"),
         in_segments(show_heat, ""),
         in_segments(heat_entry, None),
         put_heat,
@@ -137,7 +138,7 @@ COLUMNS = (
     ),
     Column(
         "bedding",
-        "Bedding",
+        later("Bedding"),
         in_segments(show_bedding, ""),
         in_segments(bedding_entry, None),
         put_bedding,
@@ -146,7 +147,7 @@ COLUMNS = (
     ),
     Column(
         "support",
-        "Far end held by",
+        later("Far end held by"),
         show_support,
         entry_of_support,
         put_support,
@@ -154,21 +155,21 @@ COLUMNS = (
         optional=True,
         width=17,
     ),
-    Column("utilisation", "Utilisation", figure=utilisation, bar=bar, width=6),
+    Column("utilisation", later("Utilisation"), figure=utilisation, bar=bar, width=6),
 )
 
 SEGMENTS = Table(
     key="segments",
-    title="Segments",
+    title=later("Segments"),
     rows=rows,
     columns=columns,
     row_name=lambda project, index, _sight: (
         project.segments[index].mark if index >= 0 else project.joints[0].mark
     ),
     records=lambda _sight: ("segments",),
-    adding=Adding("type a length to add a segment", add_segment, "Add segment", "length"),
+    adding=Adding(later("type a length to add a segment"), add_segment, later("Add segment"), "length"),
     lead=1,
     total=total_line,
     delete=lambda project, indexes, _sight: edits.delete_segments(project, indexes),
-    delete_name="Delete segments",
+    delete_name=later("Delete segments"),
 )
