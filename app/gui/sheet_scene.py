@@ -53,7 +53,8 @@ class SheetScene(QGraphicsScene):
         self.cursor_line = CursorLine(self._theme)
         self._readout = Message(self._theme)
         self._notice = Message(self._theme, ground="paper", ink="quiet")
-        for item in (self.drawing, *self.strips, *self._over()):
+        labels = [strip.label_layer for strip in self.strips]
+        for item in (self.drawing, *self.strips, *labels, *self._over()):
             self.addItem(item)
 
     def _over(self) -> tuple[JointLines, CursorLine, Message, Message]:
@@ -102,8 +103,8 @@ class SheetScene(QGraphicsScene):
         if fresh:
             self._show_curves()
         self.drawing.show_member(Member.of(project, self._shown))
-        self._place_all()
         self.dress(self._theme)
+        self._place_all()
 
     def show_state(self, shown: Shown) -> None:
         """Show the curves and loads of another state."""
@@ -165,6 +166,7 @@ class SheetScene(QGraphicsScene):
         self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
         for strip, rect in zip(self.strips, layout.strips, strict=True):
             strip.set_place(Place(rect, ruler, layout.axes, self._fonts))
+            strip.refresh()
         self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
         self._readout.set_rect(layout.readout)
         self._say_notice()
@@ -191,6 +193,8 @@ class SheetScene(QGraphicsScene):
             item.set_theme(theme)
         for item in (*self.strips, self._readout):
             item.set_theme(of_results)
+        for strip in self.strips:
+            strip.refresh()
 
     # The cursor
 

@@ -6,9 +6,10 @@ from dataclasses import replace
 from itertools import combinations
 
 import numpy as np
+import pyqtgraph as pg
 import pytest
-from PySide6.QtCore import QRectF
-from PySide6.QtGui import QFont, QPainterPath
+from PySide6.QtCore import QRectF, Qt
+from PySide6.QtGui import QColor, QFont, QPainterPath
 
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
@@ -26,11 +27,12 @@ from app.gui.strips.content import (
     with_crossings,
 )
 from app.gui.strips.labels import spread
-from app.gui.strips.paths import Scale, fill_paths, line_paths, runs
+from app.gui.strips.paths import Scale, runs
 from app.gui.strips.readout import envelope_readout, state_readout
-from app.gui.strips.strip import Prepared
+from app.gui.strips.strip import Strip
+from app.gui.theme import LIGHT
 from app.samples import read_sample
-from solver.model import Combination, FixedSupport, JointLoad, SegmentLoad
+from solver.model import AreaSection, Combination, FixedSupport, JointLoad, SegmentLoad
 from solver.results import Results
 from solver.solve import solve
 from tests.gui.sheets import SIZES, busy_member, laid_out
@@ -51,6 +53,14 @@ def pulled(force: float = 1e5, *, allowable_factor: float = 1.0) -> Results:
     return solve(member(parts, {0: FixedSupport(), 2: FixedSupport()}, [load], [combination]))
 
 
+def two_states(stress: float, factor: float) -> Results:
+    """A bar of 1000 mm² in tension by so many MPa in a state with this factor, and by a tenth in another."""
+    part = Part(1.0, AreaSection(area=1e-3), allowable_tension=1.6e8, allowable_compression=1.4e8)
+    load = case(on_joints=[JointLoad("1", force=1e3 * stress)])
+    combinations = [Combination("Full", {"Load": 1.0}, factor), Combination("Tenth", {"Load": 0.1})]
+    return solve(member([part], {0: FixedSupport()}, [load], combinations))
+
+
 def places(results: Results, size=SIZES[0], *, upright=False) -> list[Place]:
     layout = laid_out(size, upright=upright)
     ruler = Ruler.whole(float(results.position[-1]), layout.begin, layout.end)
@@ -59,6 +69,20 @@ def places(results: Results, size=SIZES[0], *, upright=False) -> list[Place]:
 
 def content(results: Results, kind: str) -> StripContent:
     return state_contents(results, 0)[KINDS.index(kind)]
+
+
+def strip_in(shown: StripContent, place: Place) -> Strip:
+    strip = Strip(LIGHT)
+    strip.show_content(shown)
+    strip.set_place(place)
+    strip.refresh()
+    return strip
+
+
+def filled_with(strip: Strip, fill: str) -> list[pg.PlotCurveItem]:
+    """The items filled with a colour."""
+    brushes = [(curve, curve.opts["brush"]) for curve in strip.curves]
+    return [curve for curve, brush in brushes if brush is not None and brush.color() == QColor(fill)]
 
 
 class TestCurves:
@@ -117,7 +141,7 @@ class TestLimits:
     def test_are_the_allowables_times_the_states_factor(self):
         shown = content(pulled(allowable_factor=1.1), "stress")
         assert sorted(limit.value for limit in shown.limits) == pytest.approx([-1.54e8, 1.76e8])
-        assert {limit.text for limit in shown.limits} == {"allowable 176", "allowable 154"}
+        assert {limit.texts[0] for limit in shown.limits} == {"allowable 176", "allowable 154"}
         assert shown.low < -1.54e8
         assert shown.high > 1.76e8
 
@@ -127,10 +151,51 @@ class TestLimits:
         assert len(shown.beyond) == 2
         assert shown.high < 1e6
 
-    def test_of_an_envelope_are_drawn_where_all_states_share_one_factor(self):
-        assert len(envelope_contents(pulled())[2].limits) == 2
-        assert envelope_contents(solve(read_sample("tie_rod")))[2].limits == ()
-        assert envelope_contents(solve(read_sample("tie_rod")))[3].limits[0].value == 1.0
+    def test_of_an_envelope_are_the_least_of_its_states(self):
+        shown = envelope_contents(pulled())[2]
+        assert {limit.texts[0] for limit in shown.limits} == {"allowable 160", "allowable 140"}
+        # Forged steel allows 140 MPa and rod steel 180 MPa, by factors of 1, 1 and 1.1 in the combinations.
+        shown = envelope_contents(solve(read_sample("tie_rod")))[2]
+        assert {limit.texts[0] for limit in shown.limits} == {"least allowable 140", "least allowable 180"}
+        assert sorted({limit.value for limit in shown.limits}) == pytest.approx([1.4e8, 1.8e8])
+        assert shown.high > 1.8e8
+
+    def test_of_an_envelope_over_its_least_is_told_apart_only_where_a_state_is_over(self):
+        # 165 MPa against 160 MPa, allowed by the factor of its own combination, not by that of the other.
+        for factor, over in ((1.1, False), (1.0, True)):
+            results = two_states(165.0, factor)
+            trace = envelope_contents(results)[2].traces[0]
+            assert (OVER in trace.drawn) is over
+            assert (OVER in envelope_contents(results)[3].traces[0].drawn) is over
+
+    @pytest.mark.parametrize(("stress", "drawn"), [(14.0, True), (13.0, False)])
+    def test_are_drawn_to_scale_up_to_twelve_times_the_stress(self, stress, drawn):
+        shown = two_states(stress, 1.0)
+        strip = state_contents(shown, 0)[2]
+        assert len(strip.limits) == (1 if drawn else 0)
+        assert len(strip.beyond) == (0 if drawn else 1)
+
+    @BOTH_WAYS
+    @pytest.mark.usefixtures("qapp")
+    def test_off_the_strip_are_named_at_its_edge_with_an_arrow(self, upright):
+        results = two_states(5.0, 1.0)
+        place = places(results, upright=upright)[2]
+        (label,) = [x for x in strip_in(content(results, "stress"), place).labels if "allowable" in x.text]
+        assert label.text == ("→ allowable 160" if upright else "↑ allowable 160")
+        edge = label.rect.right() if upright else label.rect.top()
+        assert abs(edge - (place.rect.right() if upright else place.rect.top())) < 10.0
+
+    @pytest.mark.usefixtures("qapp")
+    @pytest.mark.parametrize("name", ["hoist_shaft", "tie_rod"])
+    def test_are_dashed_and_named_inside_the_strip_of_every_combination(self, name):
+        results = solve(read_sample(name))
+        for shown_state in (*(state_contents(results, i) for i in range(3)), envelope_contents(results)):
+            shown, place = shown_state[2], places(results)[2]
+            assert shown.limits
+            scale = Scale.of(shown, place.rect, place.axes)
+            for limit in shown.limits:
+                assert place.rect.top() < scale.pixel(limit.value) < place.rect.bottom()
+            assert any("allowable" in label.text for label in strip_in(shown, place).labels)
 
     def test_utilisation_always_shows_its_line_at_one(self):
         shown = content(pulled(force=1.0), "utilisation")
@@ -174,10 +239,8 @@ class TestPixels:
     def test_lines_and_fills_stay_in_their_strip(self, upright):
         results = solve(busy_member(12))
         for shown, place in zip(state_contents(results, 0), places(results, upright=upright), strict=True):
-            scale = Scale.of(shown, place.rect, place.axes)
-            for paths in (line_paths, fill_paths):
-                for path in paths(shown.traces[0], place.ruler, scale, place.axes).values():
-                    assert place.rect.adjusted(-1, -1, 1, 1).contains(path.boundingRect())
+            for curve in strip_in(shown, place).curves:
+                assert place.rect.adjusted(-1, -1, 1, 1).contains(curve.getPath().boundingRect())
 
     @BOTH_WAYS
     def test_fills_have_the_areas_of_their_curve(self, upright):
@@ -186,12 +249,36 @@ class TestPixels:
         place = places(results, upright=upright)[1]
         scale = Scale.of(shown, place.rect, place.axes)
         trace = shown.traces[0]
-        paths = fill_paths(trace, place.ruler, scale, place.axes)
+        strip = strip_in(shown, place)
         pixels = abs(place.ruler.scale * (scale.end - scale.begin) / (scale.high - scale.low))
         # The area by the shoelace formula against the integral by trapezoids: two roads to one polygon.
-        for drawn, side in ((TENSION, np.maximum), (COMPRESSION, np.minimum)):
+        for fill, side in ((LIGHT.tension_fill, np.maximum), (LIGHT.compression_fill, np.minimum)):
             integral = abs(np.trapezoid(side(trace.value, 0.0), trace.x)) * pixels
-            assert _area(paths[drawn]) == pytest.approx(integral, rel=1e-9)
+            (curve,) = filled_with(strip, fill)
+            assert _area(curve.getPath()) == pytest.approx(integral, rel=1e-9)
+
+    @BOTH_WAYS
+    def test_curves_are_the_plotting_librarys_and_kept(self, upright):
+        results = solve(busy_member(12))
+        strip = strip_in(state_contents(results, 0)[1], places(results, upright=upright)[1])
+        first = strip.curves
+        assert first
+        assert all(isinstance(curve, pg.PlotCurveItem) and curve.parentItem() is strip for curve in first)
+        strip.show_content(state_contents(results, 1)[1])
+        strip.refresh()
+        assert set(strip.curves) <= set(first) or set(first) <= set(strip.curves)
+        strip.show_content(None)
+        strip.refresh()
+        assert strip.curves == []
+        assert strip.labels == ()
+
+    def test_what_is_over_the_limit_is_hatched_in_stress_and_utilisation(self):
+        results = solve(read_sample("tie_rod"))
+        for index, hatched in ((1, 0), (2, 1), (3, 1)):
+            strip = strip_in(envelope_contents(results)[index], places(results)[index])
+            brushes = [curve.opts["brush"] for curve in filled_with(strip, LIGHT.over)]
+            assert len(brushes) == hatched
+            assert all(brush.style() == Qt.BrushStyle.BDiagPattern for brush in brushes)
 
     @BOTH_WAYS
     @pytest.mark.parametrize("size", SIZES, ids=["small", "large"])
@@ -203,7 +290,7 @@ class TestPixels:
             labels = [
                 label
                 for shown, place in zip(shown_state, places(results, size, upright=upright), strict=True)
-                for label in Prepared.of(shown, place).labels
+                for label in strip_in(shown, place).labels
             ]
             sheet = QRectF(0.0, 0.0, *size)
             assert [label.text for label in labels if not sheet.contains(label.rect)] == []
@@ -213,7 +300,7 @@ class TestPixels:
     def test_signs_say_what_colours_say(self):
         results = pulled()
         place = places(results)[1]
-        labels = Prepared.of(content(results, "force"), place).labels
+        labels = strip_in(content(results, "force"), place).labels
         at = {label.text: label.rect.center().x() for label in labels if label.face == "mark"}
         assert at["+"] < place.ruler.pixel(1.0) < at["−"]
 
@@ -221,7 +308,7 @@ class TestPixels:
         results = solve(busy_member(25))
         for place, shown in zip(places(results), state_contents(results, 0), strict=True):
             close = replace(place, ruler=place.ruler.zoomed(8.0, place.ruler.begin))
-            for label in Prepared.of(shown, close).labels:
+            for label in strip_in(shown, close).labels:
                 assert label.rect.right() <= place.rect.right() + 0.5
 
 

@@ -9,11 +9,11 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from itertools import pairwise
 from typing import Literal, TypeAlias
 
 import numpy as np
 
+from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, least_allowables
 from app.units import format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray, IntArray
@@ -24,8 +24,6 @@ from solver.results import Results
 
 Kind: TypeAlias = Literal["displacement", "force", "stress", "utilisation"]
 Values: TypeAlias = dict[Kind, tuple[FloatArray, ...]]
-NOTHING = 1e-9  # a strain this small is drawn as nothing
-BAND_SHOWN = 0.15  # allowables are drawn to scale where the stress reaches this part of them
 
 NONE, PLAIN, TENSION, COMPRESSION, OVER = -1, 0, 1, 2, 3  # how an interval of a curve is drawn
 
@@ -41,13 +39,12 @@ class Trace:
 
 @dataclass(frozen=True, slots=True)
 class Limit:
-    """A limit from `first` to `last` (m), with its text, also in short."""
+    """A limit from `first` to `last` (m), with its text and shorter ones for where room is short."""
 
     first: float
     last: float
     value: float
-    text: str
-    number: str
+    texts: tuple[str, ...]
 
 
 @dataclass(frozen=True, slots=True)
@@ -119,11 +116,7 @@ def envelope_contents(results: Results) -> tuple[StripContent, ...]:
 
 
 class _Builder:
-    """Makes the four contents from curves that share x; `stress` None stands for the envelope.
-
-    An allowable has one place in the envelope's stress strip only where all states share one factor; else
-    only the utilisation strip shows the limit.
-    """
+    """Makes the four contents from curves that share x; `stress` None stands for the envelope."""
 
     def __init__(
         self,
@@ -137,7 +130,6 @@ class _Builder:
         self._results = results
         self._system = results.project.display.unit_system
         self._states = states
-        self._one_allowable = len({results.states[i].allowable_factor for i in states}) == 1
         self._x, self._segment = x, segment
         self._utilisation, self._stress = utilisation, stress
 
@@ -145,10 +137,8 @@ class _Builder:
         return tuple(self._content(kind, title, values[kind]) for kind, title in titles().items())
 
     def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
-        limits = self._limits(kind, columns)
         least = self._nothing(kind)
-        beyond = tuple(limit for limit in limits if not _reached(limit, columns, kind))
-        drawn = tuple(limit for limit in limits if limit not in beyond)
+        drawn, beyond = self._limits(kind, columns)
         low, high = _range(columns, drawn, least)
         return StripContent(
             kind=kind,
@@ -186,19 +176,18 @@ class _Builder:
         return Trace(columns[0], columns[1], self._drawn(kind, columns))
 
     def _over_measure(self, kind: Kind, value: FloatArray) -> FloatArray:
-        """What is above 1 where the limit is passed: of the envelope's stress, each side by itself."""
+        """What is above 1 where the limit is passed.
+
+        Of the envelope's stress each side by itself, where it is beyond the least allowable and some state is
+        over its own.
+        """
         if kind == "utilisation" or (kind == "stress" and self._stress is not None):
             return self._utilisation
-        if kind != "stress" or not self._one_allowable:
+        if kind != "stress":
             return np.zeros_like(value)
-        tension, compression = self._allowables()
-        allowed = np.where(value > 0, tension[self._segment], compression[self._segment])
-        return np.abs(value) / allowed
-
-    def _allowables(self) -> tuple[FloatArray, FloatArray]:
-        """Allowable stress by segment in tension and compression, NaN where there is none."""
-        both = self._results.allowables
-        return both.tension[self._states[0]], both.compression[self._states[0]]
+        tension, compression = least_allowables(self._results, self._states)
+        least = np.where(value > 0, tension[self._segment], compression[self._segment])
+        return np.minimum(self._utilisation, np.abs(value) / least)
 
     def _drawn(self, kind: Kind, columns: FloatArray) -> IntArray:
         middle = 0.5 * (columns[:, 1:] + columns[:, :-1])
@@ -209,29 +198,18 @@ class _Builder:
         drawn = np.where(middle[3] > 1 + PASS_MARGIN, OVER, drawn)
         return np.where((np.diff(columns[0]) > 0) & np.isfinite(middle[1]), drawn, NONE)
 
-    def _limits(self, kind: Kind, columns: tuple[FloatArray, ...]) -> tuple[Limit, ...]:
-        length = float(self._results.position[-1])
+    def _limits(self, kind: Kind, columns: tuple[FloatArray, ...]) -> tuple[tuple[Limit, ...], ...]:
+        """The limits drawn to scale, and those too far for that."""
         if kind == "utilisation":
-            return (Limit(0.0, length, 1.0, "1", "1"),)
-        if kind != "stress" or not self._one_allowable:
-            return ()
-        tension, compression = self._allowables()
-        least = self._nothing(kind)
-        sides = [tension] if max(float(c.max()) for c in columns) > least else []
-        sides += [-compression] if min(float(c.min()) for c in columns) < -least else []
-        return tuple(limit for side in sides for limit in self._limit_runs(side))
-
-    def _limit_runs(self, side: FloatArray) -> list[Limit]:
-        """Neighbours with the same allowable share one line."""
-        position, found = self._results.position, []
-        starts = [0, *(np.flatnonzero(np.diff(np.nan_to_num(side)) != 0) + 1), len(side)]
-        for first, stop in pairwise(starts):
-            if np.isfinite(side[first]):
-                short = format_value(abs(side[first]), "stress", self._system, strip=True)
-                text = tr("allowable {value}").format(value=short)
-                span = float(position[first]), float(position[stop])
-                found.append(Limit(*span, float(side[first]), text, short))
-        return found
+            return (Limit(0.0, float(self._results.position[-1]), 1.0, ("1",)),), ()
+        if kind != "stress":
+            return (), ()
+        lines = allowable_lines(self._results, self._states, columns)
+        limits = [
+            (line.far, Limit(line.first, line.last, line.value, allowable_texts(line, self._system)))
+            for line in lines
+        ]
+        return tuple(tuple(limit for far, limit in limits if far is wanted) for wanted in (False, True))
 
     def _extremes(self, kind: Kind, columns: tuple[FloatArray, ...], least: float) -> tuple[Extreme, ...]:
         if not np.isfinite(columns[0]).any():
@@ -257,12 +235,6 @@ class _Builder:
         missing |= {i for i, s in enumerate(self._results.project.segments) if s.mark in marks}
         position = self._results.position
         return tuple((float(position[i]), float(position[i + 1])) for i in sorted(missing))
-
-
-def _reached(limit: Limit, columns: tuple[FloatArray, ...], kind: Kind) -> bool:
-    """Whether the stress comes near enough to the limit for it to be drawn to scale."""
-    largest = max(float(np.nanmax(np.abs(c), initial=0.0)) for c in columns)
-    return kind == "utilisation" or largest >= BAND_SHOWN * abs(limit.value)
 
 
 def _range(columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float) -> tuple[float, float]:

@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, replace
-from itertools import product
+from itertools import pairwise, product
 from typing import TypeAlias
 
 import numpy as np
@@ -15,24 +15,27 @@ from PySide6.QtCore import QPointF, QRectF, QSizeF
 
 from app.gui.fonts import Face
 from app.gui.ruler import Ruler
-from app.gui.sheet_layout import Axes
+from app.gui.sheet_layout import GAP, Axes
 from app.gui.strips.content import COMPRESSION, TENSION, Extreme, Limit, StripContent, Trace
-from app.gui.strips.paths import Scale, runs
+from app.gui.strips.paths import Run, Scale, runs
 from app.words import tr
 
 Measure: TypeAlias = Callable[[str, Face], QSizeF]
 EDGE = 6.0  # between a strip and its labels
+OVER_EDGE = 0.4 * GAP  # how far the label of a limit may reach over the edge of the strip
+NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
 
 @dataclass(frozen=True, slots=True)
 class Label:
-    """A text in its box; `ink` names a colour of the theme."""
+    """A text in its box; `ink` and `ground` name colours of the theme."""
 
     rect: QRectF
     text: str
     face: Face = "plain"
     ink: str = "ink"
+    ground: str = ""  # none where empty
 
 
 def strip_labels(
@@ -126,26 +129,43 @@ class _Placer:
         labels: list[Label] = []
         for limit, off in drawn + [(limit, True) for limit in self.content.beyond]:
             boxes = [box for box in self._limit_boxes(limit, off=off) if not _meets(box.rect, labels)]
-            clear = [box for box in boxes if not self._covers_curve(box.rect)]
-            labels += clear[:1] or [replace(box, ink="ink") for box in boxes[:1]]
+            clear = next((box for box in boxes if not self._covers_curve(box.rect)), None)
+            if clear is not None:
+                labels.append(clear)
+            elif off or self._is_near(limit):
+                labels += [replace(box, ink="ink") for box in boxes[:1]]
         return labels
+
+    def _is_near(self, limit: Limit) -> bool:
+        """Whether a curve comes so near to a limit that its number matters more than what it covers."""
+        shares = [
+            trace.value[(trace.x >= limit.first) & (trace.x <= limit.last)] / limit.value
+            for trace in self.content.traces
+        ]
+        return max(float(share.max(initial=0.0)) for share in shares) >= NEAR
 
     def _limit_boxes(self, limit: Limit, *, off: bool) -> Iterator[Label]:
         """Where the label could stand: at either end, on either side of the line, long or short."""
         low, high = sorted((self._shown(limit.first), self._shown(limit.last)))
         line = self.scale.pixel(limit.value)
         inward = 1.0 if self.scale.pixel(0.0) > line else -1.0
+        edges = self.axes.across_of(self.rect)
         if off:
-            edges = self.axes.across_of(self.rect)
             line = edges[0] if inward > 0 else edges[1]
-        for text in (limit.text, limit.number):
+        for words in limit.texts:
+            text = f"{self._outward(inward)} {words}" if off else words
             size = self.measure(text, "small")
             extent, depth = (size.width(), size.height())[:: -1 if self.axes.upright else 1]
             for side, first in product((inward, -inward), (high - extent - 4.0, low + 4.0)):
                 top = line + 2.0 if side > 0 else line - 2.0 - depth
-                box = self.axes.rect((first, first + extent), (top, top + depth))
-                if first >= low and self.rect.contains(box):
-                    yield Label(box, text, "small", "quiet")
+                within = edges[0] - OVER_EDGE <= top and top + depth <= edges[1] + OVER_EDGE
+                if first >= low and first + extent <= high and within:
+                    box = self.axes.rect((first, first + extent), (top, top + depth))
+                    yield Label(box, text, "small", "quiet", "band_fill" if side == inward else "card")
+
+    def _outward(self, inward: float) -> str:
+        """The small mark of a limit that lies off the strip: an arrow that points there."""
+        return ("←→" if self.axes.upright else "↑↓")[0 if inward > 0 else 1]
 
     def _covers_curve(self, box: QRectF) -> bool:
         """Whether a box lies on a curve or on the fill between a curve and 0."""
@@ -188,19 +208,28 @@ class _Placer:
 
     def _signs_of(self, trace: Trace, drawn: int) -> list[Label]:
         """Of the largest values the + , of the smallest the − (the same curve, except of an envelope)."""
-        along, across = self.ruler.pixel(trace.x), self.scale.pixels(trace.value)
-        zero, labels = self.scale.pixel(0.0), []
+        along, labels = self.ruler.pixel(trace.x), []
         for run in runs(trace.drawn):
             if run.drawn != drawn:
                 continue
-            part = slice(run.first, run.last + 1)
             span = np.clip(np.sort(along[[run.first, run.last]]), *self.axes.along_of(self.rect))
             middle = 0.5 * float(span[0] + span[1])
-            order = np.argsort(along[part], kind="stable")
-            height = float(np.interp(middle, along[part][order], across[part][order]))
-            if span[1] - span[0] >= SIGN_ROOM and abs(height - zero) >= SIGN_ROOM:
-                labels.append(self._sign(run.drawn, middle, 0.5 * (height + zero)))
+            low, high = self._sign_span(trace, run, middle)
+            if span[1] - span[0] >= SIGN_ROOM and abs(high - low) >= SIGN_ROOM:
+                labels.append(self._sign(run.drawn, middle, 0.5 * (low + high)))
         return labels
+
+    def _sign_span(self, trace: Trace, run: Run, along: float) -> tuple[float, float]:
+        """Between 0 and the curve; where the other curve of an envelope runs between them, the wider part."""
+        x, zero = self.ruler.position_at(along), self.scale.pixel(0.0)
+        outer = self._across_at(x, trace, slice(run.first, run.last + 1))
+        inner = [self._across_at(x, other) for other in self.content.traces if other is not trace]
+        corners = sorted([zero, outer, *(at for at in inner if min(zero, outer) < at < max(zero, outer))])
+        return max(pairwise(corners), key=lambda span: span[1] - span[0])
+
+    def _across_at(self, x: float, trace: Trace, part: slice = slice(None)) -> float:
+        """The pixel across the axis of a part of a curve at a position."""
+        return self.scale.pixel(float(np.interp(x, trace.x[part], trace.value[part])))
 
     def _sign(self, drawn: int, along: float, across: float) -> Label:
         text, ink = ("+", "tension") if drawn == TENSION else ("−", "compression")

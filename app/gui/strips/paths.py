@@ -1,7 +1,4 @@
-"""From a strip's traces to paths in pixels: one line path and one fill path for each way of drawing.
-
-The paths are made when the content or the ruler changes, and painted as they are.
-"""
+"""From a strip's traces to points in pixels: one line and one outline of a fill for each way of drawing."""
 
 from __future__ import annotations
 
@@ -9,9 +6,7 @@ from dataclasses import dataclass
 from itertools import pairwise
 
 import numpy as np
-from pyqtgraph.functions import arrayToQPath
 from PySide6.QtCore import QRectF
-from PySide6.QtGui import QPainterPath
 
 from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Axes
@@ -61,17 +56,26 @@ def runs(drawn: IntArray) -> list[Run]:
     return [Run(first, stop, int(drawn[first])) for first, stop in pairwise(starts) if drawn[first] != NONE]
 
 
-def line_paths(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, QPainterPath]:
-    """The curve, by way of drawing; it breaks at jumps. One path each, however many segments there are."""
+@dataclass(frozen=True, slots=True)
+class Polyline:
+    """Points (k,) in pixels of the sheet; `joined` says of each whether a line leads to the next."""
+
+    x: FloatArray
+    y: FloatArray
+    joined: IntArray
+
+
+def lines(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, Polyline]:
+    """The curve, by way of drawing; it breaks at jumps. One each, however many segments there are."""
     along, across = ruler.pixel(trace.x), scale.pixels(trace.value)
     return {
-        int(way): _path(along, across, axes, connect=np.append(trace.drawn == way, False).astype(np.int32))
+        int(way): _polyline(along, across, axes, np.append(trace.drawn == way, False))
         for way in np.unique(trace.drawn)
         if way != NONE
     }
 
 
-def fill_paths(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, QPainterPath]:
+def fills(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, Polyline]:
     """The area between the curve and 0, by way of drawing, as one outline that goes along 0 between runs."""
     along, across, zero = ruler.pixel(trace.x), scale.pixels(trace.value), scale.pixel(0.0)
     return {
@@ -81,23 +85,17 @@ def fill_paths(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int
     }
 
 
-def _outline(
-    along: FloatArray, across: FloatArray, zero: float, chosen: BoolArray, axes: Axes
-) -> QPainterPath:
+def _outline(along: FloatArray, across: FloatArray, zero: float, chosen: BoolArray, axes: Axes) -> Polyline:
     """Each chosen interval from start to end, from 0 or to 0 where its neighbour is not chosen."""
     at = np.flatnonzero(chosen)
     opens = np.append(True, np.diff(at) > 1)
     closes = np.append(np.diff(at) > 1, True)
     first, last = across[at], across[at + 1]
-    corners = [np.where(opens, zero, first), first, last, np.where(closes, zero, last)]
-    places = [along[at], along[at], along[at + 1], along[at + 1]]
-    path = _path(np.column_stack(places).ravel(), np.column_stack(corners).ravel(), axes)
-    path.closeSubpath()
-    return path
+    corners = np.column_stack([np.where(opens, zero, first), first, last, np.where(closes, zero, last)])
+    places = np.column_stack([along[at], along[at], along[at + 1], along[at + 1]])
+    return _polyline(places.ravel(), corners.ravel(), axes, np.ones(corners.size, dtype=np.bool_))
 
 
-def _path(along: FloatArray, across: FloatArray, axes: Axes, connect: IntArray | None = None) -> QPainterPath:
+def _polyline(along: FloatArray, across: FloatArray, axes: Axes, joined: BoolArray) -> Polyline:
     x, y = (across, along) if axes.upright else (along, across)
-    return arrayToQPath(
-        np.ascontiguousarray(x), np.ascontiguousarray(y), connect="all" if connect is None else connect
-    )
+    return Polyline(np.ascontiguousarray(x), np.ascontiguousarray(y), joined.astype(np.int32))
