@@ -40,6 +40,12 @@ class Snapshot:
     drafts: Mapping[Place, Draft] = field(default_factory=lambda: NO_DRAFTS)
 
 
+def moved(drafts: Mapping[Place, Draft], old: Project, new: Project) -> dict[Place, Draft]:
+    """The drafts at the places where their cells stand in `new`; those of rows that are gone are dropped."""
+    places = ((follow(place, old, new), draft) for place, draft in drafts.items())
+    return {place: draft for place, draft in places if place is not None}
+
+
 @dataclass(frozen=True, slots=True)
 class Step:
     """A snapshot and the name of what led to it."""
@@ -148,11 +154,8 @@ class Document(QObject):
     def commit(self, project: Project, name: str, *, settled: tuple[Place, ...] = ()) -> None:
         """One undo step to `project`; drafts at `settled` places are done with, others follow their row."""
         old = self.snapshot
-        drafts = {}
-        for place, draft in old.drafts.items():
-            now = follow(place, old.project, project)
-            if now is not None and place not in settled:
-                drafts[now] = draft
+        unsettled = {place: draft for place, draft in old.drafts.items() if place not in settled}
+        drafts = moved(unsettled, old.project, project)
         self.commit_snapshot(Snapshot(project, MappingProxyType(drafts)), name)
 
     def commit_draft(self, place: Place, draft: Draft, name: str) -> None:

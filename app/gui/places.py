@@ -19,10 +19,19 @@ Place = tuple[str | int, ...]
 def moved_index(index: int, old: Sequence[object], new: Sequence[object]) -> int | None:
     """Where the item at `index` stands in `new`; None where it is gone.
 
-    An item that is no longer there was changed in place where the number is the same, else taken out.
+    An item that is no longer there was changed: it is the one of its mark or name, else the one in its place
+    where the number is the same, else it was taken out.
     """
-    found = next((place for place, item in enumerate(new) if item is old[index]), None)
+    item, name = old[index], _name(old[index])
+    same = (place for place, other in enumerate(new) if other is item)
+    named = (place for place, other in enumerate(new) if name is not None and _name(other) == name)
+    found = next(same, next(named, None))
     return index if found is None and len(old) == len(new) else found
+
+
+def _name(item: object) -> object:
+    """What names a record among its like; None for loads and limits, which have no name of their own."""
+    return getattr(item, "mark", getattr(item, "name", None))
 
 
 def follow(place: Place, old: Project, new: Project) -> Place | None:
@@ -48,10 +57,12 @@ def follow(place: Place, old: Project, new: Project) -> Place | None:
 def _follow_index(index: int, old: object, new: object) -> int | None:
     if not (isinstance(old, tuple) and isinstance(new, tuple)):
         return index
+    if index < 0:  # typed while there was no load case: belongs to the first one
+        return 0 if new else index
     if index == len(old):  # the row that adds another stands after the last
         return len(new)
     return moved_index(index, old, new)
 
 
 def _item(node: object, index: int) -> object:
-    return node[index] if isinstance(node, tuple) and index < len(node) else None
+    return node[index] if isinstance(node, tuple) and 0 <= index < len(node) else None

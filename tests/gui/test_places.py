@@ -48,3 +48,22 @@ def test_the_row_that_adds_another_stays_last(project):
 def test_reversing_takes_the_cell_of_an_untouched_joint_along(project):
     turned = edits.reverse_member(project)
     assert follow(("joints", 0, "mark"), project, turned) == ("joints", 3, "mark")
+
+
+def test_reversing_takes_the_cell_of_a_segment_along_that_has_changed_too(project):
+    tapered = edits.set_value(project, ("segments", 2, "section"), round_bar(0.04, 0.03))
+    turned = edits.reverse_member(tapered)
+    assert turned.segments[0].mark == "C"
+    assert follow(("segments", 2, "length"), tapered, turned) == ("segments", 0, "length")
+
+
+def test_renaming_leaves_the_cell_where_it_is(project):
+    renamed = edits.rename_segment(project, "B", "Q")
+    assert follow(("segments", 1, "length"), project, renamed) == ("segments", 1, "length")
+
+
+def test_a_load_typed_before_there_is_a_case_belongs_to_the_first_one(project):
+    bare = edits.remove_case(edits.remove_case(project, "Dead"), "Live")
+    place = ("load_cases", -1, "segment_loads", 0, "segment")
+    assert follow(place, bare, edits.set_value(bare, ("title",), "Rod")) == place
+    assert follow(place, bare, project) == ("load_cases", 0, "segment_loads", 0, "segment")

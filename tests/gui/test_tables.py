@@ -338,6 +338,97 @@ def test_fill_down_copies_the_first_selected_row(table, document):
     assert document.undo_name == "Fill down"
 
 
+def test_rows_past_the_end_take_their_marks_along(table, document):
+    QGuiApplication.clipboard().setText("Q\t700")
+    table.setCurrentIndex(table.table_model.index(4, 0))
+    table.paste()
+    assert (document.project.segments[-1].mark, lengths(document)[-1]) == ("Q", 0.7)
+
+
+def test_a_row_that_cannot_be_added_leaves_the_others_their_numbers_and_is_told(pane, document, qtbot):
+    loads = pane.views["segment_loads"]
+    QGuiApplication.clipboard().setText("A\t5\nNowhere\t6\nB\t7")
+    loads.setCurrentIndex(loads.table_model.index(3, 0))
+    with qtbot.waitSignal(pane.noted, check_params_cb=lambda line: "1 row was not added" in line):
+        loads.paste()
+    added = document.project.load_cases[0].segment_loads[3:]
+    assert [(load.segment, load.load_start) for load in added] == [("A", 5e3), ("B", 7e3)]
+    assert [draft.text for draft in document.snapshot.drafts.values()] == ["Nowhere"]
+    assert loads.table_model.index(5, 0).data() == "Nowhere"
+
+
+def test_what_waits_in_the_last_row_stays_there_when_rows_are_pasted(table, document):
+    enter(table, 4, "mark", "abc")
+    QGuiApplication.clipboard().setText("Q\t700")
+    table.setCurrentIndex(table.table_model.index(4, 0))
+    table.paste()
+    assert table.table_model.index(5, 0).data() == "abc"
+    assert text_at(table, 4, "mark") == "Q"
+    table.setCurrentIndex(table.table_model.index(5, 0))
+    QTest.keyClick(table, KEY.Key_Delete)
+    assert not document.snapshot.drafts
+
+
+def test_a_copy_holds_no_hint_for_adding_rows(table):
+    table.selectAll()
+    table.copy()
+    assert len(QGuiApplication.clipboard().text().splitlines()) == table.table_model.record_rows
+
+
+def choose(table, rows, key):
+    """Choose the cells of a column."""
+    table.clearSelection()
+    for row in rows:
+        table.selectionModel().select(cell(table, row, key), QItemSelectionModel.SelectionFlag.Select)
+
+
+def test_filling_down_adds_no_row_and_spreads_no_cell_that_is_not_for_typing(table, document):
+    choose(table, (1, 2, 3, 4), "length")
+    table.fill_down()
+    assert lengths(document) == [0.5, 0.5, 0.5]
+    document.undo()
+    choose(table, (0, 1, 2, 3), "length")
+    table.fill_down()
+    assert lengths(document) == [0.5, 1.0, 0.25]
+    assert not document.snapshot.drafts
+
+
+def test_filling_down_and_pasting_take_in_the_open_editor_first(table, document):
+    go_to(table, 1, "length")
+    begin(table, "900")
+    choose(table, (1, 2, 3), "length")
+    table.fill_down()
+    assert lengths(document) == [0.9, 0.9, 0.9]
+
+
+# Drafts and what becomes of them
+
+
+def test_a_draft_that_has_become_valid_is_taken_in_by_enter(table, pane, document):
+    enter(table, 1, "material", "Bronze")
+    pane.tabs.setCurrentIndex(4)
+    enter(pane.views["materials"], 3, "name", "Bronze")
+    pane.tabs.setCurrentIndex(0)
+    go_to(table, 1, "material")
+    QTest.keyClick(table, KEY.Key_F2)
+    QTest.keyClick(editor(table), KEY.Key_Return)
+    assert document.project.segments[0].material == "Bronze"
+    assert not document.snapshot.drafts
+
+
+def test_a_load_typed_before_there_is_a_case_waits_for_the_first_one(qtbot, qapp, view):
+    document = Document(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}))
+    pane = TablesPane(document, view, LIGHT)
+    qtbot.addWidget(pane)
+    loads, cases = pane.views["segment_loads"].table_model, pane.views["load_cases"].table_model
+    loads.setData(loads.index(0, 0), "A")
+    assert "load case" in loads.index(0, 0).data(ERROR_ROLE)
+    cases.setData(cases.index(0, 0), "Dead")
+    assert loads.index(0, 0).data() == "A"
+    loads.setData(loads.index(0, 0), "A")
+    assert [load.segment for load in document.project.load_cases[0].segment_loads] == ["A"]
+
+
 # The other tables and the pickers
 
 
@@ -415,6 +506,26 @@ def test_choosing_a_row_selects_the_segment_and_the_other_way_round(pane, table,
     assert view.selection == Selection(segments=frozenset({1}))
     view.set_selection(Selection(segments=frozenset({2})))
     assert table.table_model._lit == frozenset({2})
+
+
+def test_commands_find_the_segment_that_was_chosen_elsewhere_last(pane, table, view):
+    go_to(table, 1, "length")
+    view.set_selection(Selection(segments=frozenset({1, 2})))
+    assert table.chosen_records() == (1, 2)
+    assert table.currentIndex() == cell(table, 2, "length")
+    view.set_selection(Selection())
+    assert table.chosen_records() == (1, 2), "a click beside the member leaves the table's choice alone"
+    view.set_selection(Selection(segments=frozenset({99})))
+    assert table.chosen_records() == (1, 2)
+
+
+def test_picking_another_case_takes_in_what_is_being_typed_for_the_old_one(pane, table, document):
+    go_to(table, 1, "load_start")
+    begin(table, "7")
+    pane.case_picker.activated.emit(1)
+    dead, hot = document.project.load_cases
+    assert "A" in {load.segment for load in dead.segment_loads}
+    assert not hot.segment_loads
 
 
 def test_tables_headers_and_editors_have_names(pane, table):

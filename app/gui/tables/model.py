@@ -13,7 +13,7 @@ from PySide6.QtCore import QObject, Qt
 
 from app.gui.document import Document, Draft, Preview
 from app.gui.tables.column import Change, Figures, Sight, Table
-from app.gui.tables.paste import Block
+from app.gui.tables.paste import Block, Texts
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import Index, RowsModel
 from app.units import symbol
@@ -174,7 +174,8 @@ class TableModel(RowsModel):
 
     def preview(self, index: Index, text: str) -> None:
         """Show what `text` in the cell would give, without committing it."""
-        if text == self.entry(index) or (self.is_adding(index.row()) and not text.strip()):
+        same = text == self.entry(index) and self.draft(index) is None
+        if same or (self.is_adding(index.row()) and not text.strip()):
             self._document.drop_preview()
             return
         try:
@@ -193,35 +194,40 @@ class TableModel(RowsModel):
         project, places = self._document.project, []
         for index in indexes:
             column = self._columns[index.column()]
-            typed = self.entry(index) is not None and self.is_adding(index.row()) is False
-            if not typed or not (column.optional or self.draft(index)):
+            empties = column.optional and not self.is_adding(index.row())
+            if self.entry(index) is None or not (empties or self.draft(index)):
                 continue
             places.append(self.place(index.row(), index.column()))
-            if column.optional and column.put is not None:
+            if empties and column.put is not None:
                 project = column.put(project, self.record_of(index.row()), "", self._sight).project
         if places:
             self._document.commit(project, tr("Clear cells"), settled=tuple(places))
 
     def text_to_copy(self, row: int, column: int) -> str:
         """A cell for the clipboard: all digits of what is typed, what is read of the rest."""
-        index = self.index(row, column)
-        entry = None if self.is_adding(row) else self.entry(index)
-        return self._display(index) if entry is None else entry
+        text = self.text_to_fill(row, column)
+        return self._display(self.index(row, column)) if text is None else text
 
-    def put_block(self, top: int, left: int, block: Sequence[Sequence[str]], name: str) -> None:
+    def text_to_fill(self, row: int, column: int) -> str | None:
+        """A cell's own text with all digits; None where it is not for typing."""
+        return None if self.is_adding(row) else self.entry(self.index(row, column))
+
+    def put_block(self, top: int, left: int, texts: Sequence[Texts], name: str) -> None:
         """Type a block of texts into the cells from `top`, `left` on, rows past the end added: one undo step.
 
         What is no valid entry becomes a draft of its cell; cells that are not for typing are passed over.
         """
-        done = Block(self, self._document.snapshot).typed(top, left, block)
-        self._document.commit_snapshot(done, name)
+        block = Block(self, self._document.snapshot)
+        self._document.commit_snapshot(block.typed(top, left, texts), name)
+        if block.note:
+            self.noted.emit(block.note)
 
     def setData(self, index: Index, value: Any, role: int = Qt.ItemDataRole.EditRole) -> bool:
         """Commit what was typed as one undo step, as a draft where it is no valid entry."""
         if role != Qt.ItemDataRole.EditRole or not index.isValid():
             return False
         text = str(value)
-        if text == self.entry(index):
+        if text == self.entry(index) and self.draft(index) is None:  # a draft may be valid by now
             self._document.drop_preview()
             return True
         place, name = self.place(index.row(), index.column()), self.step_name(index)

@@ -132,7 +132,8 @@ class TablesPane(QWidget):
         self._set_sight(Sight(snapshot.project.display.unit_system, place if names else None))
 
     def on_case_picked(self, index: int) -> None:
-        """Edit the loads of another case."""
+        """Edit the loads of another case; what is being typed belongs to the one before."""
+        self.commit_open_editor()
         self._set_sight(Sight(self._sight.system, index))
 
     def _set_sight(self, sight: Sight) -> None:
@@ -166,9 +167,7 @@ class TablesPane(QWidget):
             self._view.set_selection(Selection(joints=records))
 
     def on_selection_changed(self, selection: Selection) -> None:
-        """Light what is selected elsewhere, and bring its row into sight."""
+        """Light what is selected elsewhere, and choose its rows, as commands work on the rows chosen."""
         for key, records in (("segments", selection.segments), ("joints", selection.joints)):
-            view = self.views[key]
-            view.table_model.set_lit(records)
-            if records and not records <= set(view.chosen_records()):
-                view.scrollTo(view.table_model.index(view.table_model.row_of(min(records)), 0))
+            self.views[key].table_model.set_lit(records)
+            self.views[key].choose_records(records)

@@ -1,15 +1,23 @@
-"""A block of texts typed into a table at once: the cells on top of each other, for one undo step."""
+"""A block of texts typed into a table at once: the cells on top of each other, for one undo step.
+
+Nothing that was pasted is lost unsaid: a cell that is no valid entry becomes a draft, and so does the first
+row that cannot be added; the note counts such rows.
+"""
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from types import MappingProxyType
 
-from app.gui.document import Draft, Snapshot
-from app.gui.tables.column import Column
-from app.gui.tables.reasons import TypingError, reason_of
+from app.gui.document import Draft, Snapshot, moved
+from app.gui.places import Place
+from app.gui.tables.column import Adding
+from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import RowsModel
-from app.words import tr
+from app.words import tr, trn
+from solver.model import Project
+
+Texts = Sequence[str | None]  # None: nothing for that cell
 
 
 class Block:
@@ -19,46 +27,83 @@ class Block:
         self._model = model
         self._project = snapshot.project
         self._drafts = dict(snapshot.drafts)
+        self._refused: list[Draft] = []  # rows that could not be added
 
-    def typed(self, top: int, left: int, block: Sequence[Sequence[str]]) -> Snapshot:
+    def typed(self, top: int, left: int, block: Sequence[Texts]) -> Snapshot:
         """The document with the texts typed from the cell `top`, `left` on."""
-        for down, texts in enumerate(block):
-            for column, text in enumerate(texts, left):
-                if 0 <= column < len(self._model.columns):
-                    self._type_in(top + down, column, text)
+        for row, texts in enumerate(block, top):
+            self._type_row(row, dict(enumerate(texts, left)))
+        if self._refused:
+            self._drafts[self._adding_place()] = self._refused[0]
         return Snapshot(self._project, MappingProxyType(self._drafts))
 
-    def _type_in(self, row: int, column: int, text: str) -> None:
-        """One cell; past the end, a record is added by the column that can, and the others find its row."""
-        records = self._model.table.rows(self._project, self._model.sight)
-        wanted = self._model.columns[column]
-        if row >= len(records):
-            self._add(wanted, text)
-        elif wanted.entry(records[row], self._model.sight) not in (None, text):
-            self._put(row, column, text)
+    @property
+    def note(self) -> str:
+        """A line about rows that were not taken in; empty where all were."""
+        if not self._refused:
+            return ""
+        rows = trn("{count} row was not added", "{count} rows were not added", len(self._refused))
+        return f"{rows}: {self._refused[0].reason}"
 
-    def _put(self, row: int, column: int, text: str) -> None:
-        wanted, place = self._model.columns[column], self._model.place(row, column)
-        if wanted.put is None:
+    def _type_row(self, row: int, texts: Mapping[int, str | None]) -> None:
+        """One row; past the end, a record is added by the column that can, and the others find its row."""
+        records = self._model.table.rows(self._project, self._model.sight)
+        row = min(row, len(records))  # rows that were refused leave no gap
+        if row == len(records) and not self._add(texts):
+            return
+        for column, text in texts.items():
+            if text is not None and 0 <= column < len(self._model.columns):
+                self._type_in(row, column, text)
+
+    def _type_in(self, row: int, column: int, text: str) -> None:
+        """One cell; those that are not for typing are passed over."""
+        wanted = self._model.columns[column]
+        records = self._model.table.rows(self._project, self._model.sight)
+        if wanted.put is None or wanted.entry(records[row], self._model.sight) in (None, text):
             return
         try:
             change = wanted.put(self._project, self._model.record_of(row), text, self._model.sight)
         except TypingError as error:
-            self._drafts[place] = Draft(text, reason_of(error), self._cell_name(row, column))
+            name = self._cell_name(row, column)
+            self._drafts[self._place(row, column)] = Draft(text, reason_of(error), name)
         else:
-            self._drafts.pop(place, None)
-            self._project = change.project
+            self._follow(change.project)
+            self._drafts.pop(self._place(row, column), None)
+
+    def _follow(self, project: Project) -> None:
+        self._drafts = moved(self._drafts, self._project, project)
+        self._project = project
+
+    def _place(self, row: int, column: int) -> Place:
+        return self._model.cell_place(self._model.record_of(row), column)
+
+    def _adding_place(self) -> Place:
+        """Where the row that adds a record stands now."""
+        model = self._model
+        records = model.table.rows(self._project, model.sight)
+        return (*model.table.records(model.sight), model.record_of(len(records)), model.columns[0].key)
 
     def _cell_name(self, row: int, column: int) -> str:
         model = self._model
         name = model.table.row_name(self._project, model.record_of(row), model.sight)
         return tr("{column} of {row}").format(column=model.columns[column].words, row=name)
 
-    def _add(self, column: Column, text: str) -> None:
+    def _add(self, texts: Mapping[int, str | None]) -> bool:
+        """Add a record by the text in the column that can; whether there is one now."""
         adding = self._model.table.adding
-        if adding is None or column.key != adding.column or not text.strip():
-            return
+        if adding is None or not any(texts.values()):
+            return False
+        keys = [column.key for column in self._model.columns]
+        text = texts.get(keys.index(adding.column)) or ""
         try:
-            self._project = adding.put(self._project, text, self._model.sight).project
-        except TypingError:
-            return
+            self._follow(self._grown(adding, text))
+        except TypingError as error:
+            self._refused.append(Draft(text, reason_of(error), tr(adding.name)))
+            return False
+        return True
+
+    def _grown(self, adding: Adding, text: str) -> Project:
+        if not text.strip():
+            column = next(c for c in self._model.columns if c.key == adding.column)
+            raise NotTaken(tr("a row is added by its “{column}”").format(column=column.words))
+        return adding.put(self._project, text, self._model.sight).project

@@ -124,10 +124,16 @@ class RowsModel(QAbstractTableModel):
 
     def place(self, row: int, column: int) -> Place:
         """The place of a cell in the project."""
+        if self.is_adding(row):
+            return (*self.table.records(self._sight), self.record_of(row), self._columns[column].key)
+        return self.cell_place(self.record_of(row), column)
+
+    def cell_place(self, record: int, column: int) -> Place:
+        """The place of a record's cell, also of a record that is not shown yet."""
         own = self._columns[column].place
-        if own is not None and not self.is_adding(row):
-            return own(self.record_of(row), self._sight)
-        return (*self.table.records(self._sight), self.record_of(row), self._columns[column].key)
+        if own is not None:
+            return own(record, self._sight)
+        return (*self.table.records(self._sight), record, self._columns[column].key)
 
     def draft(self, index: Index) -> Draft | None:
         """What was typed into the cell and not taken in."""

@@ -6,7 +6,7 @@ can be empty, Escape restores.
 
 from __future__ import annotations
 
-from PySide6.QtCore import QItemSelection, Qt, Signal
+from PySide6.QtCore import QItemSelection, QItemSelectionModel, Qt, Signal
 from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
@@ -172,7 +172,7 @@ class TableView(QTableView):
         """Move the current cell down (or up)."""
         current = self.currentIndex()
         row = min(max(current.row() + rows, 0), self.table_model.rowCount() - 1)
-        column = 0 if self.table_model.is_adding(row) else current.column()
+        column = 0 if self.table_model.is_adding(row) else max(current.column(), 0)
         self.setCurrentIndex(self.table_model.index(row, column))
 
     def on_editor_closed(self, _editor: QWidget, hint: QAbstractItemDelegate.EndEditHint) -> None:
@@ -191,6 +191,7 @@ class TableView(QTableView):
 
     def clear_selected(self) -> None:
         """Empty the selected cells that may be empty, as one undo step."""
+        self.commit_open_editor()
         self.table_model.clear(self.selectedIndexes())
 
     # Blocks
@@ -204,32 +205,37 @@ class TableView(QTableView):
         return min(rows), min(columns), max(rows) - min(rows) + 1, max(columns) - min(columns) + 1
 
     def copy(self) -> None:
-        """The selected block to the clipboard, with all digits."""
+        """The selected block to the clipboard, with all digits; the row that adds another stays behind."""
+        self.commit_open_editor()
         block = self._selected_block()
         if block is None:
             return
         top, left, rows, columns = block
         texts = [
             [self.table_model.text_to_copy(row, column) for column in range(left, left + columns)]
-            for row in range(top, top + rows)
+            for row in range(top, min(top + rows, self.table_model.record_rows))
         ]
         QGuiApplication.clipboard().setText(block_text(texts))
 
     def paste(self) -> None:
         """The clipboard's block from the selection's corner on, one undo step."""
+        self.commit_open_editor()
         block, selected = block_of(QGuiApplication.clipboard().text()), self._selected_block()
         if block and selected is not None:
             top, left, rows, columns = selected
             self.table_model.put_block(top, left, tiled(block, rows, columns), tr("Paste"))
 
     def fill_down(self) -> None:
-        """The selection's first row into the rows below it, one undo step."""
+        """The selection's first row into the rows below it, one undo step; no row is added."""
+        self.commit_open_editor()
         selected = self._selected_block()
-        if selected is None or selected[2] < 2:
+        if selected is None:
             return
         top, left, rows, columns = selected
-        first = [self.table_model.text_to_copy(top, column) for column in range(left, left + columns)]
-        self.table_model.put_block(top + 1, left, [first] * (rows - 1), tr("Fill down"))
+        below = min(top + rows, self.table_model.record_rows) - top - 1
+        if below > 0:
+            first = [self.table_model.text_to_fill(top, column) for column in range(left, left + columns)]
+            self.table_model.put_block(top + 1, left, [first] * below, tr("Fill down"))
 
     # Selection
 
@@ -242,10 +248,22 @@ class TableView(QTableView):
 
     def choose_record(self, record: int) -> None:
         """Make a record's row the current one, in the column that is current."""
-        column = max(self.currentIndex().column(), 0)
-        row = self.table_model.row_of(record)
-        if row != self.currentIndex().row():
-            self.setCurrentIndex(self.table_model.index(row, column))
+        self.choose_records(frozenset((record,)))
+
+    def choose_records(self, records: frozenset[int]) -> None:
+        """Choose these records' rows in the column that is current, unless they are chosen already."""
+        column, model = max(self.currentIndex().column(), 0), self.table_model
+        cells = [model.index(model.row_of(record), column) for record in sorted(records)]
+        cells = [index for index in cells if index.isValid()]
+        if not cells or records == frozenset(self.chosen_records()):
+            return
+        chosen = QItemSelection()
+        for index in cells:
+            chosen.select(index, index)
+        flags = QItemSelectionModel.SelectionFlag
+        self.selectionModel().setCurrentIndex(cells[0], flags.NoUpdate)
+        self.selectionModel().select(chosen, flags.ClearAndSelect)
+        self.scrollTo(cells[0])
 
     def selectionChanged(self, selected: QItemSelection, deselected: QItemSelection) -> None:
         """Say which records are chosen."""
