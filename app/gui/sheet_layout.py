@@ -13,8 +13,10 @@ from PySide6.QtCore import QPointF, QRectF
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
 
-STRIP_SHARES = (0.22, 0.26, 0.32, 0.20)  # u, N, σ, utilisation: stress carries the most
+SHARES_ACROSS = (0.22, 0.26, 0.32, 0.20)  # u, N, σ, utilisation: stress carries the most
+SHARES_UPRIGHT = (0.23, 0.25, 0.29, 0.23)  # side by side each needs room for its words
 GAP = 12.0
+ABOVE, BELOW = 46.0, 52.0  # upright, beyond the member's ends: the arrow of a force, a spring on its ground
 
 
 @dataclass(frozen=True, slots=True)
@@ -76,7 +78,7 @@ def sheet_layout(width: float, height: float, upright: bool, text_height: float)
     """The layout on a sheet of the given pixels; margins follow the height of the text."""
     readout_height = round(1.7 * text_height)
     place = _upright if upright else _across
-    return place(width, height - readout_height - GAP, readout_height, text_height)
+    return place(width, height - readout_height - 8.0, readout_height, text_height)
 
 
 def _across(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
@@ -84,28 +86,28 @@ def _across(width: float, height: float, readout_height: float, text_height: flo
     begin, end = left, max(width - right, left + 50.0)
     drawing_height = min(max(0.40 * height, 11.0 * text_height), 26.0 * text_height)
     drawing = QRectF(0.0, 4.0, width, drawing_height)
-    spans = _spans(drawing.bottom() + 6.0, height)
+    spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS)
     strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)
     readout = QRectF(begin, height + 4.0, end - begin, readout_height)
     return SheetLayout(Axes(upright=False), drawing, strips, readout, begin, end)
 
 
 def _upright(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
-    top, bottom = 5.0 * text_height, 4.6 * text_height
+    top, bottom = max(3.4 * text_height, ABOVE), max(3.2 * text_height, BELOW)
     begin, end = max(height - bottom, top + 50.0), top
     drawing_width = min(max(0.45 * width, 20.0 * text_height), 40.0 * text_height)
     drawing = QRectF(0.0, 0.0, drawing_width, height)
-    spans = _spans(drawing.right() + GAP, width - GAP, equal=True)
+    spans = _spans(drawing.right() + GAP, width - GAP, SHARES_UPRIGHT)
     strips = tuple(QRectF(QPointF(a, end), QPointF(b, begin)) for a, b in spans)
     readout = QRectF(GAP, height + 4.0, width - 2 * GAP, readout_height)
     return SheetLayout(Axes(upright=True), drawing, strips, readout, begin, end)
 
 
-def _spans(first: float, last: float, *, equal: bool = False) -> list[tuple[float, float]]:
+def _spans(first: float, last: float, shares: tuple[float, ...]) -> list[tuple[float, float]]:
     """The four strips' spans across the axis, with gaps between them."""
     room = max(last - first - 3 * GAP, 4.0)
     spans, at = [], first
-    for share in (0.25,) * 4 if equal else STRIP_SHARES:
+    for share in shares:
         spans.append((at, at + share * room))
         at += share * room + GAP
     return spans

@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
-from PySide6.QtCore import QPointF, QRectF
+from PySide6.QtCore import QPointF, QRectF, QSizeF
 
 from app.gui.drawing.body import aim_at_joints, draw_body
 from app.gui.drawing.chain import (
@@ -18,7 +18,7 @@ from app.gui.drawing.chain import (
     level_texts,
     section_wishes,
 )
-from app.gui.drawing.loads import draw_loads, lies_outside, load_wishes
+from app.gui.drawing.loads import draw_loads, lies_outside, load_wishes, no_loads_text
 from app.gui.drawing.member import Member
 from app.gui.drawing.placing import Span, Wish
 from app.gui.drawing.shapes import Part, Picture, Text
@@ -27,15 +27,19 @@ from app.gui.drawing.supports import draw_supports, hanging_wishes, hangs, suppo
 from app.gui.sheet_layout import Place
 from app.units import format_value
 from app.words import tr
+from solver.model import end_of
 from solver.sections import outline
 
 BAND = 17.0  # distributed loads at their largest, px
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
 LEAST_HALF = 13.0  # of the thickest section, before labels give way, px
+EDGE = 10.0  # upright, between sections and the edge of the sheet
+BEDDING = 6.0  # for the hatch along the member
 BESIDE = 6.0  # between labels of hanging supports and lengths
 CHAIN = 7.0  # to either side of the dimension line
 FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
+MOST_ROWS = 3  # of labels of loads; upright as much less of a column
 COLUMN = 0.34  # widest column of load labels upright, of the drawing's room
 
 
@@ -45,6 +49,7 @@ def lay_out(member: Member, place: Place) -> Picture:
     draw_chain(sketch)
     draw_body(sketch)
     draw_supports(sketch)
+    _draw_no_loads(sketch)
     draw_loads(sketch)
     aim_at_joints(sketch)
     _draw_factor(sketch)
@@ -93,7 +98,7 @@ def _no_rows() -> Rows:
 
 def _rows(sketch: Sketch, room: float) -> Rows:
     """As many rows of labels as leave the member enough room."""
-    for most in (3, 2):
+    for most in range(MOST_ROWS, 1, -1):
         rows = _rows_with(sketch, room, most)
         if rows.half >= LEAST_HALF:
             return rows
@@ -106,11 +111,12 @@ def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
     top = labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    sections = _text_rows(sketch, section_wishes(sketch), room - 4.0)
+    sections = _text_rows(sketch, section_wishes(sketch), room - (EDGE if sketch.place.axes.upright else 4.0))
     chain = sections[0][0] - CHAIN
     lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN)
     under_label, under = _under_rows(sketch, lengths[0][0])
     last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
+    last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(
         labels=tuple(reversed(labels)),
         band=band,
@@ -128,16 +134,18 @@ def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
 def _label_rows(sketch: Sketch, room: float, most: int) -> tuple[Span, ...]:
     """As many rows as the labels of loads need, up to `most`; upright one column as wide as they are."""
     wishes = load_wishes(sketch)
+    first = 4.0 if sketch.place.axes.upright else 4.0 + _note_size(sketch).height()
     if not wishes:
-        return ((4.0, 4.0),)
+        return ((first, first),)
     depth = max(w.depth for w in wishes)
     if sketch.place.axes.upright:
-        widest = max((w.depth for w in wishes if w.depth <= COLUMN * room), default=0.0)
-        return ((4.0, 4.0 + widest),)
+        column = COLUMN * room * most / MOST_ROWS
+        widest = max((w.depth for w in wishes if w.depth <= column), default=0.0)
+        return ((first, first + widest),)
     count = 1
     while count < most and len(sketch.placed(wishes, ((0.0, depth),) * count)) < len(wishes):
         count += 1
-    return tuple((4.0 + i * depth, 4.0 + (i + 1) * depth) for i in range(count))
+    return tuple((first + i * depth, first + (i + 1) * depth) for i in range(count))
 
 
 def _under_rows(sketch: Sketch, foot: float) -> tuple[Span, float]:
@@ -171,6 +179,10 @@ def _has_inner_forces(sketch: Sketch) -> bool:
     return any(forces[j] and not lies_outside(sketch, j) for j in range(last + 1))
 
 
+def _has_bedding(sketch: Sketch) -> bool:
+    return any(s.bedding or end_of(s.bedding, s.bedding_end) for s in sketch.member.project.segments)
+
+
 def _has_hanging(sketch: Sketch) -> bool:
     last = len(sketch.member.project.segments)
     return any(hangs(support_of(sketch, j), inner=0 < j < last) for j in range(last + 1))
@@ -200,3 +212,16 @@ def _draw_factor(sketch: Sketch) -> None:
     rect = sketch.place.rect
     box = QRectF(QPointF(rect.left() + 6.0, rect.bottom() - size.height() - 2.0), size)
     sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", -1)))
+
+
+def _draw_no_loads(sketch: Sketch) -> None:
+    """Why no loads are drawn, in the corner."""
+    text = no_loads_text(sketch)
+    if text:
+        box = QRectF(sketch.place.rect.topLeft() + QPointF(6.0, 4.0), _note_size(sketch))
+        sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", 0)))
+
+
+def _note_size(sketch: Sketch) -> QSizeF:
+    text = no_loads_text(sketch)
+    return sketch.place.fonts.measure(text, "small") if text else QSizeF(0.0, 0.0)

@@ -52,7 +52,7 @@ def load_wishes(sketch: Sketch) -> list[Wish]:
     wishes = _bedding_wishes(sketch)
     loads = sketch.member.loads
     if loads is None:
-        return wishes + _no_loads_wishes(sketch)
+        return wishes
     wishes += _force_wishes(sketch, loads.joint_force[0])
     wishes += _distributed_wishes(sketch, loads.distributed[0])
     wishes += _movement_wishes(sketch, loads.movement[0])
@@ -238,13 +238,11 @@ def _draw_bedding(sketch: Sketch) -> None:
             sketch.hatch((span[0], span[1] - 4.0), (edge, edge), (4.0, 5.0))
 
 
-def _no_loads_wishes(sketch: Sketch) -> list[Wish]:
+def no_loads_text(sketch: Sketch) -> str:
     """Why no loads are drawn: an envelope has none of its own."""
-    if not sketch.member.project.load_cases:
-        return []
-    low, high = sketch.window
-    text = tr("loads are drawn when one case or combination is shown")
-    return [sketch.wish(text, 0.5 * (low + high), Part("note", 0), rank=5, slide=high - low)]
+    if sketch.member.loads is not None or not sketch.member.project.load_cases:
+        return ""
+    return tr("loads: pick a case or combination")
 
 
 def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:

@@ -23,6 +23,7 @@ from app.words import tr
 Measure: TypeAlias = Callable[[str, Face], QSizeF]
 EDGE = 6.0  # between a strip and its labels
 OVER_EDGE = 0.4 * GAP  # how far the label of a limit may reach over the edge of the strip
+SHARES = (1.0, 0.0, 0.5, 0.75, 0.25)  # of the way along a limit, where its label is tried
 NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
@@ -133,7 +134,8 @@ class _Placer:
             if clear is not None:
                 labels.append(clear)
             elif off or self._is_near(limit):
-                labels += [replace(box, ink="ink") for box in boxes[:1]]
+                smallest = sorted(boxes, key=lambda box: box.rect.width())[:1]
+                labels += [replace(box, ink="ink") for box in smallest]
         return labels
 
     def _is_near(self, limit: Limit) -> bool:
@@ -145,7 +147,7 @@ class _Placer:
         return max(float(share.max(initial=0.0)) for share in shares) >= NEAR
 
     def _limit_boxes(self, limit: Limit, *, off: bool) -> Iterator[Label]:
-        """Where the label could stand: at either end, on either side of the line, long or short."""
+        """Where the label could stand: at the ends or between, on either side of the line, long or short."""
         low, high = sorted((self._shown(limit.first), self._shown(limit.last)))
         line = self.scale.pixel(limit.value)
         inward = 1.0 if self.scale.pixel(0.0) > line else -1.0
@@ -156,7 +158,8 @@ class _Placer:
             text = f"{self._outward(inward)} {words}" if off else words
             size = self.measure(text, "small")
             extent, depth = (size.width(), size.height())[:: -1 if self.axes.upright else 1]
-            for side, first in product((inward, -inward), (high - extent - 4.0, low + 4.0)):
+            starts = [low + 4.0 + share * (high - low - extent - 8.0) for share in SHARES]
+            for side, first in product((inward, -inward), starts):
                 top = line + 2.0 if side > 0 else line - 2.0 - depth
                 within = edges[0] - OVER_EDGE <= top and top + depth <= edges[1] + OVER_EDGE
                 if first >= low and first + extent <= high and within:
