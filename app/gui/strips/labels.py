@@ -134,8 +134,7 @@ class _Placer:
             if clear is not None:
                 labels.append(clear)
             elif off or self._is_near(limit):
-                smallest = sorted(boxes, key=lambda box: box.rect.width())[:1]
-                labels += [replace(box, ink="ink") for box in smallest]
+                labels += [replace(box, ink="ink") for box in (boxes if off else boxes[::-1])[:1]]
         return labels
 
     def _is_near(self, limit: Limit) -> bool:
