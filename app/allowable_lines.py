@@ -14,11 +14,12 @@ import numpy as np
 
 from app.units import format_value
 from app.words import tr
-from solver.arrays import FloatArray
+from solver.arrays import FloatArray, IntArray
 from solver.model import UnitSystemName
 from solver.results import Results
 
-FAR: Final = 12.0  # an allowable beyond this many times the largest stress of its sign is named, not drawn
+FAR: Final = 12.0  # an allowable beyond this many times the largest stress of its sign is named, not drawn,
+FAR_FROM_ALL: Final = 3.0  # unless it is within this many times the largest stress of either sign
 NOTHING: Final = 1e-9  # a strain this small is drawn as nothing
 
 
@@ -39,6 +40,23 @@ def least_allowables(results: Results, states: tuple[int, ...]) -> tuple[FloatAr
     return allowables.tension[rows].min(axis=0), allowables.compression[rows].min(axis=0)
 
 
+def over_least(
+    results: Results,
+    states: tuple[int, ...],
+    segment: IntArray,
+    stress: FloatArray,
+    utilisation: FloatArray,
+) -> FloatArray:
+    """What is above 1 where a stress of the envelope is over the limit, all (k,), NaN without an allowable.
+
+    There some state has a utilisation above 1, and this stress is beyond the least allowable of its sign.
+    """
+    tension, compression = least_allowables(results, states)
+    least = np.where(stress > 0, tension[segment], compression[segment])
+    over: FloatArray = np.minimum(utilisation, np.abs(stress) / least)
+    return over
+
+
 def allowable_lines(
     results: Results, states: tuple[int, ...], stress: tuple[FloatArray, ...]
 ) -> tuple[AllowableLine, ...]:
@@ -48,7 +66,7 @@ def allowable_lines(
     least = len({results.states[index].allowable_factor for index in states}) > 1
     sides = zip((1.0, -1.0), largest, least_allowables(results, states), strict=True)
     return tuple(
-        AllowableLine(*run, far=abs(run[2]) > FAR * reached, least=least)
+        AllowableLine(*run, abs(run[2]) > max(FAR * reached, FAR_FROM_ALL * max(largest)), least)
         for sign, reached, allowable in sides
         if reached > nothing
         for run in _runs(results.position, sign * allowable)

@@ -7,6 +7,7 @@ from typing import Final
 INK: Final = "#1F2A33"
 QUIET: Final = "#5D6972"
 RULE: Final = "#C9CDD0"
+BAND: Final = "#F4F5F4"
 BODY: Final = "#E9EDF0"
 LOAD: Final = "#DFE3E6"
 TENSION: Final = "#0072B2"

@@ -6,10 +6,12 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from app.allowable_lines import allowable_lines, allowable_texts, over_least
 from app.sheet.colours import QUIET
+from app.sheet.limit_labels import Limit
 from app.sheet.member_figure import ACROSS, Figure
 from app.sheet.ruler import Ruler
-from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Limit, Strip, draw_strip
+from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Strip, draw_strip
 from app.sheet.svg import Canvas, fitted, text_width
 from app.words import tr
 from solver.arrays import FloatArray
@@ -37,8 +39,8 @@ def state_figure(results: Results, state: int) -> Figure:
             "stress",
             field.x,
             (field.stress,),
-            over=field.utilisation if checked else None,
-            limits=_band(results, state) if checked else (),
+            over=(field.utilisation,) if checked else (),
+            limits=_allowables(results, (state,), (field.stress,)) if checked else (),
         ),
     ]
     if checked:
@@ -52,41 +54,46 @@ def state_figure(results: Results, state: int) -> Figure:
 def envelope_figure(results: Results) -> Figure:
     """The largest and smallest values over all checked states; extremes, not one state in equilibrium."""
     field = envelope(results, points=POINTS)
-    x = field.x
+    x, stress = field.x, (field.stress_max, field.stress_min)
+    checked = tuple(index for index, state in enumerate(results.states) if state.checked)
     strips = [
         Strip("u", "displacement", "displacement", x, (field.displacement_max, field.displacement_min)),
         Strip("N", "force", "force", x, (field.force_max, field.force_min)),
-        Strip("σ", "stress", "stress", x, (field.stress_max, field.stress_min), limits=_common_band(results)),
+        Strip(
+            "σ",
+            "stress",
+            "stress",
+            x,
+            stress,
+            over=tuple(over_least(results, checked, field.segment, c, field.utilisation) for c in stress),
+            limits=_allowables(results, checked, stress),
+        ),
         _utilisation(results, x, field.utilisation),
     ]
     return _figure(results, strips, tr("Envelope of displacement, axial force, stress and utilisation"))
 
 
 def _utilisation(results: Results, x: FloatArray, values: FloatArray) -> Strip:
-    ends = results.position[[0, -1]]
     return Strip(
         tr("utilisation"),
         "utilisation",
         "factor",
         x,
         (values,),
-        over=values,
-        limits=(Limit(ends, np.ones(2)),),
+        over=(values,),
+        limits=(Limit(0.0, float(results.position[-1]), 1.0),),
     )
 
 
-def _band(results: Results, state: int) -> tuple[Limit, ...]:
-    """The state's allowable stresses in tension and compression as steps along the member."""
-    x = np.repeat(results.position, 2)[1:-1]
-    pulled, pushed = results.allowables.tension[state], results.allowables.compression[state]
-    return Limit(x, np.repeat(pulled, 2)), Limit(x, -np.repeat(pushed, 2))
-
-
-def _common_band(results: Results) -> tuple[Limit, ...]:
-    """The band where all checked states share one factor; with several there is no single band to draw."""
-    checked = [index for index, state in enumerate(results.states) if state.checked]
-    factors = {results.states[index].allowable_factor for index in checked}
-    return _band(results, checked[0]) if len(factors) == 1 else ()
+def _allowables(
+    results: Results, states: tuple[int, ...], stress: tuple[FloatArray, ...]
+) -> tuple[Limit, ...]:
+    """The states' allowable stresses, as the window draws them."""
+    units = results.project.display.unit_system
+    return tuple(
+        Limit(line.first, line.last, line.value, allowable_texts(line, units), line.far)
+        for line in allowable_lines(results, states, stress)
+    )
 
 
 def _figure(results: Results, strips: list[Strip], title: str) -> Figure:

@@ -14,8 +14,9 @@ from typing import Final
 import numpy as np
 
 from app.sheet import colours
+from app.sheet.limit_labels import Limit, Scale, draw_limit_labels
 from app.sheet.ruler import Ruler
-from app.sheet.svg import Canvas, Ink
+from app.sheet.svg import Canvas, Ink, Point
 from app.units import Quantity, format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import BoolArray, FloatArray
@@ -29,37 +30,16 @@ _LIMIT = Ink(colours.INK, 0.7, dashes="4 2.5")
 
 
 @dataclass(frozen=True, slots=True)
-class Limit:
-    """An allowable as steps along the member: places in m, values in SI, NaN where there is none."""
-
-    x: FloatArray
-    value: FloatArray
-
-
-@dataclass(frozen=True, slots=True)
 class Strip:
-    """One strip: curves (k,) over x in SI; `over` (k,) is the utilisation that decides on the hatching."""
+    """One strip: curves (k,) over x in SI; of each, `over` (k,) is above 1 where it is hatched."""
 
     name: str
     kind: str
     quantity: Quantity
     x: FloatArray
     curves: tuple[FloatArray, ...]
-    over: FloatArray | None = None
+    over: tuple[FloatArray, ...] = ()
     limits: tuple[Limit, ...] = field(default_factory=tuple)
-
-
-@dataclass(frozen=True, slots=True)
-class _Scale:
-    """The strip's place: baseline of the value 0 and points per SI unit, both aside from the axis."""
-
-    low: float  # aside, the edge of the box where the smallest value lies
-    high: float
-    zero: float
-    factor: float
-
-    def aside(self, value: float) -> float:
-        return self.zero + value * self.factor
 
 
 def draw_strip(
@@ -73,36 +53,42 @@ def draw_strip(
 ) -> None:
     """Draw a strip in the box between `start` and `start + depth` aside; joints (n + 1,) in m."""
     scale, least, most = _scale(strip, start, depth)
-    _draw_frame(canvas, ruler, scale, joints)
+    _draw_frame(canvas, ruler, strip, scale, joints)
     for number in range(len(strip.curves)):
         _draw_curve(canvas, ruler, strip, scale, number)
     for number in range(len(strip.curves)):
         _draw_signs(canvas, ruler, strip, scale, number)
     canvas.path(ruler.points([(0.0, scale.zero), (ruler.extent, scale.zero)]), Ink(colours.INK, 0.7))
     for limit in strip.limits:
-        if _draw_limit(canvas, ruler, scale, limit):
-            _draw_limit_value(canvas, ruler, strip, scale, limit, units)
+        if not limit.far:
+            canvas.path(_line(ruler, limit, scale.aside(limit.value)), _LIMIT)
+    draw_limit_labels(canvas, ruler, scale, strip.limits, (strip.x, strip.curves))
     _draw_words(canvas, ruler, strip, scale, (least, most), units)
 
 
-def _scale(strip: Strip, start: float, depth: float) -> tuple[_Scale, float, float]:
+def _scale(strip: Strip, start: float, depth: float) -> tuple[Scale, float, float]:
     """The scale, and the smallest and largest value of the curves."""
     values = np.concatenate([c[np.isfinite(c)] for c in strip.curves] or [np.zeros(1)])
     least, most = (float(values.min()), float(values.max())) if values.size else (0.0, 0.0)
     largest = max(abs(least), abs(most))
-    bounds = [v for limit in strip.limits for v in limit.value[np.isfinite(limit.value)].tolist()]
-    near = [v for v in bounds if abs(v) <= 8 * largest or not largest]
+    near = [limit.value for limit in strip.limits if not limit.far]
     low, high = min(0.0, least, *near), max(0.0, most, *near)
     if high - low <= 1e-12 * largest or high == low:
         low, high = low - 1.0, high + 1.0
     inner = depth - 10.0
     factor = inner / (high - low)
-    return _Scale(start, start + depth, start + 5 - low * factor, factor), least, most
+    return Scale(start, start + depth, start + 5 - low * factor, factor), least, most
 
 
-def _draw_frame(canvas: Canvas, ruler: Ruler, scale: _Scale, joints: FloatArray) -> None:
+def _draw_frame(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, joints: FloatArray) -> None:
+    """Ground, allowable band, frame, and the lines of the inner joints."""
     corners = [(0.0, scale.low), (ruler.extent, scale.low), (ruler.extent, scale.high), (0.0, scale.high)]
-    canvas.path(ruler.points(corners), Ink(colours.RULE, 0.6, "#FFFFFF"), closed=True)
+    canvas.path(ruler.points(corners), Ink(fill="#FFFFFF"), closed=True)
+    for limit in strip.limits if strip.kind == "stress" else ():
+        edge = min(max(scale.aside(limit.value), scale.low), scale.high)
+        inside = [*_line(ruler, limit, edge), *_line(ruler, limit, scale.zero)[::-1]]
+        canvas.path(inside, Ink(fill=colours.BAND), closed=True)
+    canvas.path(ruler.points(corners), Ink(colours.RULE, 0.6), closed=True)
     inner = [ruler.along(x) for x in joints[1:-1].tolist()]
     canvas.lines(
         ((ruler.point(a, scale.low), ruler.point(a, scale.high)) for a in inner),
@@ -110,9 +96,9 @@ def _draw_frame(canvas: Canvas, ruler: Ruler, scale: _Scale, joints: FloatArray)
     )
 
 
-def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, number: int) -> None:
+def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, number: int) -> None:
     curve = strip.curves[number]
-    over = np.zeros_like(curve) if strip.over is None else np.nan_to_num(strip.over)
+    over = np.nan_to_num(strip.over[number]) if strip.over else np.zeros_like(curve)
     x, value, over = _with_crossings(strip.x, curve, over)
     for held, colour, fill in _colours(strip, value):
         for low, high in _runs(np.isfinite(value) & held):
@@ -155,12 +141,12 @@ def _runs(mask: BoolArray) -> list[tuple[int, int]]:
     return [(int(a), int(b)) for a, b in zip(edges[::2], edges[1::2], strict=True) if b - a > 1]
 
 
-def _places(ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray]) -> list[tuple[float, float]]:
+def _places(ruler: Ruler, scale: Scale, run: tuple[FloatArray, FloatArray]) -> list[tuple[float, float]]:
     return [(ruler.along(x), scale.aside(v)) for x, v in zip(run[0].tolist(), run[1].tolist(), strict=True)]
 
 
 def _draw_run(
-    canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray], colour: str, fill: str
+    canvas: Canvas, ruler: Ruler, scale: Scale, run: tuple[FloatArray, FloatArray], colour: str, fill: str
 ) -> None:
     if not np.any(run[1]) and fill:
         return
@@ -171,14 +157,14 @@ def _draw_run(
     canvas.path(ruler.points(places), Ink(colour, 1.2))
 
 
-def _draw_over(canvas: Canvas, ruler: Ruler, scale: _Scale, run: tuple[FloatArray, FloatArray]) -> None:
+def _draw_over(canvas: Canvas, ruler: Ruler, scale: Scale, run: tuple[FloatArray, FloatArray]) -> None:
     places = _places(ruler, scale, run)
     closed = ruler.points([(places[0][0], scale.zero), *places, (places[-1][0], scale.zero)])
     canvas.hatch(closed, colours.OVER)
     canvas.path(ruler.points(places), Ink(colours.OVER, 1.6))
 
 
-def _draw_signs(canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, number: int) -> None:
+def _draw_signs(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, number: int) -> None:
     """+ and − in the middle of each run with room for it; of two curves the larger carries +, the other −."""
     if strip.kind not in ("force", "stress"):
         return
@@ -198,34 +184,16 @@ def _draw_sign(canvas: Canvas, ruler: Ruler, place: tuple[float, float], sign: i
     canvas.text((x, y + 3.2), text, size=10, fill=colour, bold=True, anchor="middle")
 
 
-def _draw_limit(canvas: Canvas, ruler: Ruler, scale: _Scale, limit: Limit) -> bool:
-    """The limit as a dashed line; whether it lies inside the strip."""
-    shown = False
-    for low, high in _runs(np.isfinite(limit.value)):
-        places = _places(ruler, scale, (limit.x[low:high], limit.value[low:high]))
-        if all(scale.low - 0.5 <= aside <= scale.high + 0.5 for _, aside in places):
-            canvas.path(ruler.points(places), _LIMIT)
-            shown = True
-    return shown
-
-
-def _draw_limit_value(
-    canvas: Canvas, ruler: Ruler, strip: Strip, scale: _Scale, limit: Limit, units: UnitSystemName
-) -> None:
-    """The limit at the last segment that has one, beyond the end of the strip (before it, upright)."""
-    value = float(limit.value[np.isfinite(limit.value)][-1])
-    text = format_value(value, strip.quantity, units, 4, strip=True)
-    along = 0.0 if ruler.upright else ruler.extent
-    x, y = ruler.point(along, scale.aside(value))
-    at = (x, y + 8) if ruler.upright else (x + 3, y + 2.6)
-    canvas.text(at, text, size=_SIZE, fill=colours.QUIET, anchor="middle" if ruler.upright else "start")
+def _line(ruler: Ruler, limit: Limit, aside: float) -> list[Point]:
+    """From a limit's start to its end, at some distance aside."""
+    return ruler.points([(ruler.along(limit.first), aside), (ruler.along(limit.last), aside)])
 
 
 def _draw_words(
     canvas: Canvas,
     ruler: Ruler,
     strip: Strip,
-    scale: _Scale,
+    scale: Scale,
     values: tuple[float, float],
     units: UnitSystemName,
 ) -> None:
@@ -256,7 +224,7 @@ def _value_text(value: float, strip: Strip, units: UnitSystemName) -> str:
     return format_value(value, strip.quantity, units, 4)
 
 
-def _draw_heights(canvas: Canvas, ruler: Ruler, scale: _Scale, texts: Sequence[tuple[float, str]]) -> None:
+def _draw_heights(canvas: Canvas, ruler: Ruler, scale: Scale, texts: Sequence[tuple[float, str]]) -> None:
     """Values beside the box, those too near to the one of larger size left out."""
     taken: list[float] = []
     for value, text in sorted(texts, key=lambda pair: -abs(pair[0])):

@@ -175,6 +175,17 @@ class TestLimits:
         assert len(strip.limits) == (1 if drawn else 0)
         assert len(strip.beyond) == (0 if drawn else 1)
 
+    def test_are_drawn_to_scale_near_the_stress_of_the_other_sign_too(self):
+        # Held at both ends, 1/20 of its length beyond the force: that part is pressed by 19/20 of 100 MPa.
+        parts = [
+            Part(length, AreaSection(area=1e-3), allowable_tension=1.6e8, allowable_compression=1.4e8)
+            for length in (1.9, 0.1)
+        ]
+        load = case(on_joints=[JointLoad("1", force=1e5)])
+        shown = content(solve(member(parts, {0: FixedSupport(), 2: FixedSupport()}, [load])), "stress")
+        assert max(trace.value.max() for trace in shown.traces) == pytest.approx(5e6)  # 160 is 32 times this
+        assert {limit.texts[0] for limit in shown.limits} == {"allowable 160", "allowable 140"}
+
     @BOTH_WAYS
     @pytest.mark.usefixtures("qapp")
     def test_off_the_strip_are_named_at_its_edge_with_an_arrow(self, upright):

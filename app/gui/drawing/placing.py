@@ -12,7 +12,7 @@ from dataclasses import dataclass
 
 from app.gui.drawing.shapes import Part
 
-CLEAR = 4.0  # least pixels between two labels in a row
+CLEAR = 9.0  # least pixels between two labels in a row
 Span = tuple[float, float]
 
 

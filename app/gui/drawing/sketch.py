@@ -64,8 +64,8 @@ class Sketch:
         """The pixels along the axis from an end joint outward to where labels end, growing."""
         end = self.along(joint)
         if abs(end - self.window[0]) < abs(end - self.window[1]):
-            return self.room[0], end - 2.0
-        return end + 2.0, self.room[1]
+            return self.room[0], end - 4.0
+        return end + 4.0, self.room[1]
 
     @property
     def forward(self) -> float:

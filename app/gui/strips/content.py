@@ -13,7 +13,7 @@ from typing import Literal, TypeAlias
 
 import numpy as np
 
-from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, least_allowables
+from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, over_least
 from app.units import format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray, IntArray
@@ -176,18 +176,12 @@ class _Builder:
         return Trace(columns[0], columns[1], self._drawn(kind, columns))
 
     def _over_measure(self, kind: Kind, value: FloatArray) -> FloatArray:
-        """What is above 1 where the limit is passed.
-
-        Of the envelope's stress each side by itself, where it is beyond the least allowable and some state is
-        over its own.
-        """
+        """What is above 1 where the limit is passed: of the envelope's stress, each side by itself."""
         if kind == "utilisation" or (kind == "stress" and self._stress is not None):
             return self._utilisation
         if kind != "stress":
             return np.zeros_like(value)
-        tension, compression = least_allowables(self._results, self._states)
-        least = np.where(value > 0, tension[self._segment], compression[self._segment])
-        return np.minimum(self._utilisation, np.abs(value) / least)
+        return over_least(self._results, self._states, self._segment, value, self._utilisation)
 
     def _drawn(self, kind: Kind, columns: FloatArray) -> IntArray:
         middle = 0.5 * (columns[:, 1:] + columns[:, :-1])

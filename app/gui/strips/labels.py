@@ -140,7 +140,7 @@ class _Placer:
     def _is_near(self, limit: Limit) -> bool:
         """Whether a curve comes so near to a limit that its number matters more than what it covers."""
         shares = [
-            trace.value[(trace.x >= limit.first) & (trace.x <= limit.last)] / limit.value
+            trace.value[(trace.x > limit.first) & (trace.x < limit.last)] / limit.value
             for trace in self.content.traces
         ]
         return max(float(share.max(initial=0.0)) for share in shares) >= NEAR

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from itertools import pairwise
+from itertools import combinations, pairwise
 from xml.etree import ElementTree
 
 import hypothesis
@@ -15,6 +15,7 @@ from app.samples import names, read_sample
 from app.sheet import colours
 from app.sheet.figures import Figure, envelope_figure, member_figure, state_figure
 from app.sheet.lanes import packed
+from app.sheet.printable import printable_in_figure
 from app.sheet.svg import Canvas, Ink, text_width
 from solver.model import Display, Project
 from solver.results import Results
@@ -146,3 +147,34 @@ def test_the_display_units_reach_the_figures() -> None:
     project = structs.replace(read_sample("tie_rod"), display=Display(units="in-kip-ksi"))
     results = solve(project)
     assert {"in", "kip", "ksi"} <= set(texts(state_figure(results, 0)))
+
+
+def test_allowables_are_drawn_as_in_the_window() -> None:
+    results = solve(read_sample("tie_rod"))
+    state = results.state_index("Storm surge")
+    assert {"allowable 198", "154"} <= set(texts(state_figure(results, state)))
+    shown = envelope_figure(results)
+    assert {"least allowable 180", "least 140"} <= set(texts(shown))
+    assert shown.svg.count("url(#hatch") == 4  # where a state is over its own allowable, in σ and utilisation
+
+
+def test_an_allowable_far_from_the_stress_is_named_at_the_edge() -> None:
+    results = solve(read_sample("quay_pile"))
+    (far,) = [text for text in texts(envelope_figure(results)) if "160" in text]
+    assert far == "→ least allowable 160"
+    assert [printable_in_figure(arrow) for arrow in "←→↑↓"] == list("←→↑↓")
+
+
+@pytest.mark.parametrize("name", names())
+def test_labels_of_allowables_stand_apart(name: str) -> None:
+    results = solve(read_sample(name))
+    for figure in (envelope_figure(results), *(state_figure(results, index) for index in range(3))):
+        boxes = [box_of(e) for e in parsed(figure.svg).iter(f"{SVG}text") if "allowable" in (e.text or "")]
+        for one, other in combinations(boxes, 2):
+            assert one[0] + one[2] <= other[0] or other[0] + other[2] <= one[0] or abs(one[1] - other[1]) >= 6
+
+
+def box_of(element: ElementTree.Element) -> tuple[float, float, float]:
+    """Left, baseline and width of a centred text."""
+    width = text_width(element.text or "", 6.5)
+    return float(element.get("x", "")) - width / 2, float(element.get("y", "")), width
