@@ -15,6 +15,7 @@ from types import MappingProxyType
 from PySide6.QtCore import QObject, Signal
 
 from app.gui.places import Place, follow
+from app.project_file import dump
 from solver.model import Project
 
 UNDO_LIMIT = 500  # steps kept; a step is a few kB, since records are shared between snapshots
@@ -46,6 +47,11 @@ def moved(drafts: Mapping[Place, Draft], old: Project, new: Project) -> dict[Pla
     return {place: draft for place, draft in places if place is not None}
 
 
+def alike(one: Project, other: Project) -> bool:
+    """Whether both are the same file: equal projects can still differ in it, such as by a written 0."""
+    return one is other or (one == other and dump(one) == dump(other))
+
+
 @dataclass(frozen=True, slots=True)
 class Step:
     """A snapshot and the name of what led to it."""
@@ -65,6 +71,7 @@ class Preview:
 class Document(QObject):
     """One open project. `path` is None until it has been saved or opened."""
 
+    opened = Signal()  # another project, before `changed` says which
     changed = Signal(object)  # Snapshot; committed, undone, redone or opened
     preview_changed = Signal(object)  # Preview or None
     modified_changed = Signal(bool)
@@ -115,7 +122,7 @@ class Document(QObject):
     @property
     def modified(self) -> bool:
         """Whether saving would change the file, or something typed is not in it."""
-        return self.project is not self._saved or bool(self.snapshot.drafts)
+        return bool(self.snapshot.drafts) or self._saved is None or not alike(self.project, self._saved)
 
     @property
     def undo_name(self) -> str | None:
@@ -136,6 +143,7 @@ class Document(QObject):
         self._preview = None
         self._path = path
         self.path_changed.emit(path)
+        self.opened.emit()
         self._announce()
 
     def mark_unsaved(self) -> None:
@@ -167,9 +175,9 @@ class Document(QObject):
     def commit_snapshot(self, snapshot: Snapshot, name: str) -> None:
         """One undo step to `snapshot`; none where nothing differs."""
         old = self.snapshot
-        if snapshot.project == old.project:
+        if alike(snapshot.project, old.project):
             snapshot = Snapshot(old.project, snapshot.drafts)  # an entry that says the same changes nothing
-        if snapshot == old:
+        if snapshot.project is old.project and snapshot.drafts == old.drafts:
             self.drop_preview()
             return
         self._steps[self._index + 1 :] = [Step(name, snapshot)]

@@ -72,6 +72,7 @@ class Files(QObject):
         self._document = document
         self._settings = settings
         self._commit_editor = commit_editor
+        self._asking = False
 
     @property
     def name(self) -> str:
@@ -80,18 +81,25 @@ class Files(QObject):
         return path.name if path else tr("new project")
 
     def when_safe(self, then: Callable[[], None]) -> None:
-        """Go on once nothing would be lost: at once, or after the question about unsaved changes."""
+        """Go on once nothing would be lost: at once, or after the question about unsaved changes.
+
+        While the question stands, whatever else would lose the document is not begun.
+        """
+        if self._asking:
+            return
         self._commit_editor()
         if not self._document.modified:
             then()
             return
 
         def on_answer(answer: Answer) -> None:
+            self._asking = False
             if answer == "discard":
                 then()
             elif answer == "save":
                 self.save(lambda: self._go_on_if_saved(then))
 
+        self._asking = True
         dialogs.ask_unsaved(self._window, self.name, on_answer)
 
     def _go_on_if_saved(self, then: Callable[[], None]) -> None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import faulthandler
 import logging
 import sys
@@ -18,8 +19,9 @@ Tell = Callable[[str], None]
 
 
 def start(folder: Path) -> Path:
-    """Log to a file in `folder`; gives the file."""
-    folder.mkdir(parents=True, exist_ok=True)
+    """Log to a file in `folder`; gives the file. Where none can be written, the work goes on without."""
+    with contextlib.suppress(OSError):
+        folder.mkdir(parents=True, exist_ok=True)
     path = folder / "barwright.log"
     handler = RotatingFileHandler(path, maxBytes=SIZE, backupCount=1, encoding="utf-8", delay=True)
     handler.setFormatter(logging.Formatter("%(asctime)s %(levelname)s %(message)s"))

@@ -65,8 +65,8 @@ def offer_recovery(window: Window, found: tuple[Recovered, ...]) -> None:
 
     def take_over() -> None:
         window.files.recover(first.snapshot, first.path)
-        window.recovery.write()  # the old copy goes only once there is a new one
-        first.discard()
+        if window.recovery.write():  # the old copy goes only once there is a new one
+            first.discard()
 
     dialogs.ask_recover(window, name, on_answer)
 
@@ -80,7 +80,7 @@ def run(path: str | os.PathLike[str] | None = None) -> int:
     recovery_folder = folder / "recovery"
     found = left_behind(recovery_folder)
     window = open_window(path, store, recovery_folder)
-    errors = log.UncaughtErrors(window.show_fault)
+    errors = log.UncaughtErrors(window.help.show_fault)
     errors.install()
     QTimer.singleShot(0, window, lambda: offer_recovery(window, found))
     try:

@@ -59,10 +59,29 @@ def shown_states(project: Project) -> tuple[Shown, ...]:
     return (*envelope, *combinations, *cases) or (Shown("unloaded", "Unloaded"),)
 
 
-def still_shown(shown: Shown, project: Project) -> Shown:
-    """The same state where the project still has it, else the first there is."""
-    states = shown_states(project)
-    return shown if shown in states else states[0]
+def first_shown(project: Project) -> Shown:
+    """What is looked at until another is chosen: the first single state, since it has loads to draw."""
+    return next(state for state in shown_states(project) if state.kind != "envelope")
+
+
+def still_shown(shown: Shown, old: Project, new: Project) -> Shown:
+    """The same state in `new`, also where it was renamed; the first single one where it is gone."""
+    before, after = shown_states(old), shown_states(new)
+    if shown in after:
+        return shown
+    if shown in before and len(before) == len(after) and after[before.index(shown)].kind == shown.kind:
+        return after[before.index(shown)]
+    return first_shown(new)
+
+
+def governing(results: Results) -> Shown:
+    """The state with the largest utilisation; the first single one where nothing was checked."""
+    made = [check for check in results.checks if check.utilisation is not None]
+    worst = max(made, key=lambda check: check.utilisation or 0.0, default=None)
+    kind = next((state.kind for state in results.states if state.checked), None)
+    if worst is None or kind is None:
+        return first_shown(results.project)
+    return Shown(kind, worst.combination)
 
 
 def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figures:

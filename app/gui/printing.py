@@ -27,13 +27,16 @@ class SheetRequest:
     target: Path
 
 
-def write_sheet(request: SheetRequest, cancelled: Callable[[], bool]) -> Path:
-    """In the background: solve and write the PDF. Raises what the solver and the disk raise."""
+def write_sheet(request: SheetRequest, _cancelled: Callable[[], bool]) -> Path:
+    """In the background: solve and write the PDF, also while the window is being closed.
+
+    Raises what the solver and the disk raise.
+    """
     from app.atomic import write_bytes
     from app.sheet import build_sheet
     from solver.solve import solve
 
-    results = solve(request.project, cases=False, cancelled=cancelled)
+    results = solve(request.project, cases=False)
     write_bytes(request.target, build_sheet(request.project, results, file_name=request.file_name))
     return request.target
 
@@ -70,7 +73,10 @@ class Printing(QObject):
         dialog.open()
 
     def write(self, target: Path) -> None:
-        """Write the sheet of the last valid project."""
+        """Write the sheet of the last valid project, unless one is still being written."""
+        if self._worker.busy:
+            self.told.emit(tr("another calc sheet is still being written: try again when it is done"))
+            return
         path = self._document.path
         self.told.emit(tr("writing {name} …").format(name=target.name))
         name = path.name if path else tr("not saved")

@@ -6,14 +6,12 @@ one that ended badly, and is offered at the next start. A clean end removes both
 
 from __future__ import annotations
 
-import json
 import uuid
-from collections.abc import Mapping
 from dataclasses import dataclass
 from pathlib import Path
-from typing import Any
 
-from PySide6.QtCore import QLockFile, QObject, QTimer
+import msgspec
+from PySide6.QtCore import QLockFile, QObject, QTimer, Signal
 
 from app import project_file
 from app.atomic import write_bytes
@@ -21,6 +19,7 @@ from app.gui import log
 from app.gui.document import Document, Draft, Snapshot
 from app.gui.places import Place
 from app.project_file import ProjectFileError
+from app.words import tr
 
 DELAY = 30_000  # ms from a change to the copy
 SUFFIX = ".recovery.json"
@@ -36,36 +35,50 @@ class Recovered:
 
     def discard(self) -> None:
         """Remove the copy."""
-        self.copy.unlink(missing_ok=True)
+        remove(self.copy)
+
+
+def remove(copy: Path) -> None:
+    """Remove a copy; one that cannot be removed is logged, and offered again."""
+    try:
+        copy.unlink(missing_ok=True)
+    except OSError as error:
+        log.log_error("recovery copy not removed", error)
+
+
+class StoredDraft(msgspec.Struct, frozen=True):
+    """A draft with its place."""
+
+    place: Place
+    text: str
+    reason: str
+    name: str
+
+
+class Copy(msgspec.Struct, frozen=True, tag_field="format", tag="barwright-recovery"):
+    """What a copy holds; the project as the text of its own file."""
+
+    project: str
+    drafts: tuple[StoredDraft, ...]
+    path: str | None
+    version: int = 1
 
 
 def encode(snapshot: Snapshot, path: Path | None) -> bytes:
     """The copy's bytes."""
-    drafts = [
-        {"place": list(place), "text": draft.text, "reason": draft.reason, "name": draft.name}
-        for place, draft in snapshot.drafts.items()
-    ]
-    copy = {
-        "format": "barwright-recovery",
-        "version": 1,
-        "path": None if path is None else str(path),
-        "drafts": drafts,
-        "project": project_file.dump(snapshot.project).decode(),
-    }
-    return json.dumps(copy, ensure_ascii=False, indent=1).encode()
+    drafts = tuple(
+        StoredDraft(place, draft.text, draft.reason, draft.name) for place, draft in snapshot.drafts.items()
+    )
+    project = project_file.dump(snapshot.project).decode()
+    return msgspec.json.encode(Copy(project, drafts, None if path is None else str(path)))
 
 
 def decode(data: bytes, copy: Path) -> Recovered:
-    """The copy's document. ValueError, KeyError or ProjectFileError where it is none."""
-    stored = json.loads(data)
-    project = project_file.parse(stored["project"].encode())
-    drafts = dict(_draft(entry) for entry in stored["drafts"])
-    path = stored["path"]
-    return Recovered(Snapshot(project, drafts), None if path is None else Path(path), copy)
-
-
-def _draft(entry: Mapping[str, Any]) -> tuple[Place, Draft]:
-    return tuple(entry["place"]), Draft(entry["text"], entry["reason"], entry["name"])
+    """The copy's document. ValueError or ProjectFileError where it is none."""
+    stored = msgspec.json.decode(data, type=Copy)
+    project = project_file.parse(stored.project.encode())
+    drafts = {draft.place: Draft(draft.text, draft.reason, draft.name) for draft in stored.drafts}
+    return Recovered(Snapshot(project, drafts), None if stored.path is None else Path(stored.path), copy)
 
 
 def left_behind(folder: Path) -> tuple[Recovered, ...]:
@@ -79,7 +92,7 @@ def left_behind(folder: Path) -> tuple[Recovered, ...]:
         lock.unlock()
         try:
             found.append(decode(copy.read_bytes(), copy))
-        except (OSError, ValueError, KeyError, TypeError, ProjectFileError) as error:
+        except (OSError, ValueError, RecursionError, ProjectFileError) as error:
             log.log_error(f"unreadable recovery copy {copy}", error)
     return tuple(found)
 
@@ -91,9 +104,14 @@ def _lock_path(copy: Path) -> Path:
 class Recovery(QObject):
     """Keeps the copy of one document while the window lives."""
 
+    told = Signal(str)
+
     def __init__(self, document: Document, folder: Path, parent: QObject | None = None) -> None:
         super().__init__(parent)
-        folder.mkdir(parents=True, exist_ok=True)
+        try:
+            folder.mkdir(parents=True, exist_ok=True)
+        except OSError as error:  # work goes on; each copy that fails says so
+            log.log_error("no folder for recovery copies", error)
         self._document = document
         self.copy = folder / f"{uuid.uuid4().hex}{SUFFIX}"
         self._lock = QLockFile(str(_lock_path(self.copy)))
@@ -115,17 +133,21 @@ class Recovery(QObject):
         """Saved or opened: the file itself is the copy."""
         if not modified:
             self._timer.stop()
-            self.copy.unlink(missing_ok=True)
+            remove(self.copy)
 
-    def write(self) -> None:
-        """Write the copy now; a full disk is logged, and does not disturb the work."""
+    def write(self) -> bool:
+        """Write the copy now; whether it is there. A full disk is told, and does not disturb the work."""
         try:
             write_bytes(self.copy, encode(self._document.snapshot, self._document.path))
         except OSError as error:
             log.log_error("recovery copy not written", error)
+            reason = error.strerror or str(error)
+            self.told.emit(tr("no recovery copy could be written: {reason}").format(reason=reason))
+            return False
+        return True
 
     def close(self) -> None:
         """A clean end: no copy is left."""
         self._timer.stop()
-        self.copy.unlink(missing_ok=True)
+        remove(self.copy)
         self._lock.unlock()

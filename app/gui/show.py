@@ -12,7 +12,15 @@ from PySide6.QtCore import QObject, QTimer
 
 from app.gui import log
 from app.gui.document import Document
-from app.gui.outcome import Outcome, compute, figures_of, largest_bound, still_shown
+from app.gui.outcome import (
+    Outcome,
+    compute,
+    figures_of,
+    first_shown,
+    governing,
+    largest_bound,
+    still_shown,
+)
 from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.view import Shown, View
@@ -61,6 +69,9 @@ class Showing(QObject):
         self._fault = ""
         self._asked: Project | None = None
         self._newest = False
+        self._seen = document.project  # whose state the view shows
+        self._own_choice = self._view.shown
+        self._settled = False  # whether a person, or the first results, chose what is looked at
         self._late = QTimer(self)
         self._late.setSingleShot(True)
         self._late.setInterval(GRACE)
@@ -68,6 +79,7 @@ class Showing(QObject):
         self.solver = LatestSolver(compute, self)
         self.solver.ready.connect(self.on_ready)
         self.solver.failed.connect(self.on_failed)
+        document.opened.connect(self.on_opened)
         document.changed.connect(lambda _snapshot: self.follow())
         document.preview_changed.connect(lambda _preview: self.follow())
         view.shown_changed.connect(self.on_shown)
@@ -85,27 +97,47 @@ class Showing(QObject):
     def follow(self) -> None:
         """The document or its preview changed: solve another project, and show what is known."""
         project = self._document.shown_project
-        self._view.set_shown(still_shown(self._view.shown, project))
+        self._look_at(still_shown(self._view.shown, self._seen, project))
+        self._seen = project
         if project == self._asked:
             self._show()
             return
         self._asked = project
         self._newest = False
         self._fault = ""
-        self._late.start()
+        if not self._late.isActive():  # a burst of edits does not put the mark off
+            self._late.start()
         self.solver.request(project)
 
     def begin(self) -> None:
         """Draw the member at once; ask the solver once it is on the screen, as its libraries take a while."""
-        self._view.set_shown(still_shown(self._view.shown, self._document.project))
+        self.on_opened()
         self._show()
         QTimer.singleShot(0, self, self.follow)
+
+    def on_opened(self) -> None:
+        """Another project: look at its first single state until its results say which governs."""
+        self._seen, self._settled = self._document.project, False
+        self._look_at(first_shown(self._seen))
+
+    def _look_at(self, shown: Shown) -> None:
+        self._own_choice = shown
+        self._view.set_shown(shown)
+
+    def _settle(self, results: Results | None) -> None:
+        """With the first results, look at the state that governs, unless a person has chosen one by then."""
+        if results is not None and not self._settled:
+            self._settled = True
+            self._look_at(governing(results))
 
     def on_ready(self, delivery: Delivery) -> None:
         """A result, in the order of the edits."""
         assert isinstance(delivery.value, Outcome)  # noqa: S101 - what `compute` gives
         self._outcome = delivery.value
         self._newest = delivery.newest
+        if delivery.newest:
+            self._late.stop()
+            self._settle(delivery.value.results)
         self._show()
 
     def on_late(self) -> None:
@@ -127,8 +159,9 @@ class Showing(QObject):
         )
         self._show()
 
-    def on_shown(self, _shown: Shown) -> None:
-        """Another state is looked at."""
+    def on_shown(self, shown: Shown) -> None:
+        """Another state is looked at; from a person's choice on there is no other."""
+        self._settled = self._settled or shown != self._own_choice
         self._tables.set_figures(self._figures())
         self._tell()
 

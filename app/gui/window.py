@@ -8,16 +8,17 @@ from pathlib import Path
 from msgspec.structs import replace
 from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
-from PySide6.QtWidgets import QMainWindow, QSplitter, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QMainWindow
 
-from app.gui import dialogs, settings
-from app.gui.actions import RECENT, SAMPLES, fill_menus, keys_text, make_actions
+from app.gui.actions import RECENT, SAMPLES, fill_menus, make_actions
 from app.gui.document import Document
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
 from app.gui.findings.panel import FindingsPanel
+from app.gui.help import Help
 from app.gui.member_edits import MemberEdits
 from app.gui.outcome import shown_states
+from app.gui.panes import Panes
 from app.gui.printing import Printing
 from app.gui.recovery import Recovery
 from app.gui.settings import Settings
@@ -30,7 +31,6 @@ from app.gui.theme import theme_for
 from app.gui.title_block import TitleBlockDialog
 from app.gui.top_bar import TopBar
 from app.gui.view import View
-from app.version import VERSION
 from app.words import tr
 from solver.model import Orientation, Project, UnitSystemName
 
@@ -50,7 +50,6 @@ class Window(QMainWindow):
         self._theme = theme_for(self.palette())
         self._make_rooms(recovery_folder)
         self._make_commands()
-        self._lay_out()
         self._wire()
         self._restore()
         self._dress()
@@ -69,6 +68,7 @@ class Window(QMainWindow):
         self.printing = Printing(self, self.document, self.store, commit)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
+        self.help = Help(self)
 
     def _make_commands(self) -> None:
         self.actions_by_key = make_actions(self, self._handlers())
@@ -78,6 +78,8 @@ class Window(QMainWindow):
             self.menuBar(), self.actions_by_key, {RECENT: self.recent_menu, SAMPLES: self.samples_menu}
         )
         self.top_bar = TopBar(self.actions_by_key)
+        self.panes = Panes(self.top_bar, self.sheet, self.findings, self.tables, self.status)
+        self.setCentralWidget(self.panes)
 
     def _handlers(self) -> dict[str, Callable[[], None]]:
         return {
@@ -101,34 +103,12 @@ class Window(QMainWindow):
             "split": self.edits.split,
             "join": self.edits.join,
             "reverse": self.edits.reverse,
-            "next_pane": lambda: self.go_to_pane(1),
-            "previous_pane": lambda: self.go_to_pane(-1),
-            "keys": lambda: self._show_text(tr("Keys"), tr("Keys of the commands"), keys_text()),
-            "log": self._show_log,
-            "about": self._show_about,
+            "next_pane": lambda: self.panes.go_to(1),
+            "previous_pane": lambda: self.panes.go_to(-1),
+            "keys": self.help.show_keys,
+            "log": self.help.show_log,
+            "about": self.help.show_about,
         }
-
-    def _lay_out(self) -> None:
-        self.across = QSplitter(Qt.Orientation.Horizontal)
-        self.across.addWidget(self.sheet)
-        self.across.addWidget(self.findings)
-        self.across.setStretchFactor(0, 1)
-        self.down = QSplitter(Qt.Orientation.Vertical)
-        self.down.addWidget(self.across)
-        self.down.addWidget(self.tables)
-        self.down.setStretchFactor(0, 3)
-        self.down.setStretchFactor(1, 2)
-        for splitter in (self.across, self.down):
-            splitter.setChildrenCollapsible(False)
-            splitter.setHandleWidth(3)
-        middle = QWidget()
-        rows = QVBoxLayout(middle)
-        rows.setContentsMargins(0, 0, 0, 0)
-        rows.setSpacing(0)
-        for widget in (self.top_bar, self.down, self.status):
-            rows.addWidget(widget)
-        rows.setStretch(1, 1)
-        self.setCentralWidget(middle)
 
     def _wire(self) -> None:
         self.document.changed.connect(lambda _snapshot: self.on_document_changed())
@@ -139,7 +119,7 @@ class Window(QMainWindow):
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
-        for room in (self.files, self.printing, self.edits):
+        for room in (self.files, self.printing, self.edits, self.recovery):
             room.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
 
@@ -154,10 +134,10 @@ class Window(QMainWindow):
         self.on_file_changed()
 
     def _show_pickers(self) -> None:
-        project = self.document.project
+        project = self.document.shown_project
         states = shown_states(project)
-        shown = self.view.shown if self.view.shown in states else states[0]
-        self.top_bar.show_project(project, states, shown)
+        if self.view.shown in states:  # else it is about to follow
+            self.top_bar.show_project(project, states, self.view.shown)
 
     def on_history_changed(self) -> None:
         """Undo and redo say what they would do."""
@@ -202,62 +182,17 @@ class Window(QMainWindow):
         display = replace(project.display, orientation=layout)
         self.document.commit(replace(project, display=display), tr("Lay"))
 
-    # Moving about
-
-    def go_to_pane(self, by: int) -> None:
-        """Give the keyboard to the next pane (F6)."""
-        panes: tuple[QWidget, ...] = (self.sheet, self.findings, self.tables.current_view(), self.top_bar)
-        focus = self.focusWidget()
-        here = next(
-            (i for i, pane in enumerate(panes) if focus and (pane is focus or pane.isAncestorOf(focus))), -1
-        )
-        target = panes[(here + by) % len(panes)]
-        if target is self.top_bar:
-            self.top_bar.show_picker.setFocus(Qt.FocusReason.ShortcutFocusReason)
-        else:
-            target.setFocus(Qt.FocusReason.ShortcutFocusReason)
-
-    # Menus and dialogs
-
-    def _show_text(self, title: str, headline: str, text: str) -> None:
-        dialogs.show_text(self, title, headline, text)
-
-    def _show_log(self) -> None:
-        self._show_text(
-            tr("Log"), tr("What goes wrong inside the program is written to:"), str(settings.folder())
-        )
-
-    def _show_about(self) -> None:
-        from app.gui.about import about_text
-
-        self._show_text(tr("About Barwright"), f"Barwright {VERSION}", about_text())
-
-    def show_fault(self, report: str) -> None:
-        """An exception that nobody caught: told once, with its report to copy."""
-        if not self.findChildren(dialogs.TextDialog):
-            self._show_text(
-                tr("A fault of the program"),
-                tr(
-                    "Something went wrong inside Barwright. Your project is kept; save it under another name."
-                ),
-                report,
-            )
-
     # Window
 
     def _restore(self) -> None:
         self.resize(1280, 800)
         if not self.restoreGeometry(self.store.bytes_of("geometry")):
             self.resize(1280, 800)
-        self.across.setSizes([930, 350])
-        self.down.setSizes([480, 230])
-        for key, splitter in (("across", self.across), ("down", self.down)):
-            splitter.restoreState(self.store.bytes_of(key))
+        self.panes.restore(self.store)
 
     def _remember(self) -> None:
         self.store.set_bytes("geometry", self.saveGeometry())
-        for key, splitter in (("across", self.across), ("down", self.down)):
-            self.store.set_bytes(key, splitter.saveState())
+        self.panes.remember(self.store)
         self.store.sync()
 
     def closeEvent(self, event: QCloseEvent) -> None:
@@ -295,11 +230,10 @@ class Window(QMainWindow):
             self.files.open_path(Path(local[0]))
 
     def _dress(self) -> None:
-        """Colours for the window's own panels; sheet and findings follow the palette by themselves."""
+        """Colours from the theme."""
         style = style_sheet(self._theme)
-        handles = (self.across.handle(1), self.down.handle(1))
-        for panel in (self.menuBar(), self.top_bar, self.tables, self.status, *handles):
-            panel.setStyleSheet(style)
+        self.menuBar().setStyleSheet(style)
+        self.panes.dress(style)
 
     def changeEvent(self, event: QEvent) -> None:
         """Follow the system between light and dark."""

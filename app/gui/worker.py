@@ -1,10 +1,10 @@
 """The background solver: a request is a frozen snapshot with a number; the latest edit wins.
 
-One thread, one request running, at most one waiting. A new edit cancels the running solve only when that is
-already older than `PATIENCE`: cancelling at once would starve a member that takes longer than the pause
-between two keystrokes, so that nothing would ever be shown. Every result newer than the last one shown is
-delivered; whether it is of the newest request is told with it. A ThreadPoolExecutor rather than a QThread:
-a forgotten shutdown waits instead of aborting, and the solver stays free of Qt.
+One thread, one request running, at most one waiting. For a newer edit the running solve is given up once it
+is older than `PATIENCE`: cancelling at once would starve a member that takes longer than the pause between
+two keystrokes, so that nothing would ever be shown. Every result newer than the last one shown is delivered;
+whether it is of the newest request is told with it. A ThreadPoolExecutor rather than a QThread: a forgotten
+shutdown waits instead of aborting, and the solver stays free of Qt.
 """
 
 from __future__ import annotations
@@ -16,7 +16,7 @@ from concurrent.futures import ThreadPoolExecutor
 from dataclasses import dataclass
 from typing import Any
 
-from PySide6.QtCore import QObject, Qt, Signal, Slot
+from PySide6.QtCore import QObject, Qt, QTimer, Signal, Slot
 
 PATIENCE = 0.2  # s, the age from which a running solve is given up for a newer edit
 
@@ -57,6 +57,9 @@ class LatestSolver(QObject):
         self._stop = threading.Event()
         self._started = 0.0
         self._closed = False
+        self._impatient = QTimer(self)
+        self._impatient.setSingleShot(True)
+        self._impatient.timeout.connect(self.on_impatient)
         self._back.connect(self._on_done, Qt.ConnectionType.QueuedConnection)
 
     @property
@@ -74,20 +77,26 @@ class LatestSolver(QObject):
             self._start(job)
         else:
             self._waiting = job
-            if self._clock() - self._started > PATIENCE:
-                self._stop.set()
+            left = PATIENCE - (self._clock() - self._started)
+            self._impatient.start(max(0, round(1000 * left)))
         return self._newest
 
     def close(self) -> None:
         """Give up what runs and wait for the thread to end; nothing is delivered afterwards."""
         self._closed = True
+        self._impatient.stop()
         self._waiting = None
         self._stop.set()
         self._executor.shutdown(wait=True, cancel_futures=True)
         self._running = None
 
+    def on_impatient(self) -> None:
+        """The running solve has had its time, and a newer edit waits."""
+        self._stop.set()
+
     def _start(self, job: tuple[int, object]) -> None:
         self._running = job[0]
+        self._impatient.stop()
         self._stop = threading.Event()
         self._started = self._clock()
         self.busy_changed.emit(True)

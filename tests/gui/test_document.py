@@ -3,6 +3,7 @@
 from pathlib import Path
 
 import pytest
+from msgspec import UNSET
 
 from app import edits
 from app.gui.document import UNDO_LIMIT, Document, Draft, Preview
@@ -50,6 +51,21 @@ def test_an_entry_that_says_the_same_is_no_step(document, project):
     document.commit(with_length(project, 1.0), "Length of A")
     assert document.undo_name is None
     assert document.project is project
+
+
+def test_typing_what_was_saved_is_unmodified_again(document, project):
+    document.commit(with_length(project, 5.0), "Length of A")
+    document.commit(with_length(document.project, 1.0), "Length of A")
+    assert document.undo_name == "Length of A"
+    assert not document.modified
+
+
+def test_a_change_that_only_the_file_shows_is_a_change(document, project):
+    unwritten = edits.set_value(project, ("segments", 0, "bedding"), UNSET)  # where a 0 was written
+    assert unwritten == project
+    document.commit(unwritten, "Bedding of A")
+    assert document.project is unwritten
+    assert document.modified
 
 
 def test_undo_back_to_what_was_saved_is_unmodified_again(document, project, qtbot):

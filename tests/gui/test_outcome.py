@@ -4,7 +4,15 @@ import numpy as np
 import pytest
 
 from app import edits, samples
-from app.gui.outcome import compute, figures_of, largest_bound, shown_states, still_shown
+from app.gui.outcome import (
+    compute,
+    figures_of,
+    first_shown,
+    governing,
+    largest_bound,
+    shown_states,
+    still_shown,
+)
 from app.gui.view import Shown
 from solver.errors import Cancelled
 from solver.model import Combination, FixedSupport
@@ -77,8 +85,36 @@ def test_states_are_envelope_combinations_cases_or_unloaded():
     assert shown_states(two)[0] == Shown("envelope")
     combined = edits.set_value(two, ("combinations",), [Combination("Working", {"Dead": 1.0})])
     assert shown_states(combined)[0] == Shown("combination", "Working")
-    assert still_shown(Shown("case", "Gone"), combined) == Shown("combination", "Working")
-    assert still_shown(Shown("case", "Live"), combined) == Shown("case", "Live")
+    assert first_shown(two) == Shown("case", "Dead"), "an envelope draws no loads"
+
+
+def test_what_is_looked_at_stays_through_other_edits_and_renaming():
+    cases = [case("Dead"), case("Live")]
+    combinations = [Combination("Live", {"Live": 1.0}), Combination("Both", {"Dead": 1.0, "Live": 1.0})]
+    project = member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}, cases, combinations)
+    renamed = edits.rename_combination(project, "Live", "Working")
+    assert still_shown(Shown("case", "Live"), project, renamed) == Shown("case", "Live")
+    assert still_shown(Shown("combination", "Live"), project, renamed) == Shown("combination", "Working")
+    assert still_shown(Shown("combination", "Working"), renamed, project) == Shown("combination", "Live")
+    assert still_shown(Shown("envelope"), project, renamed) == Shown("envelope")
+    fewer = edits.remove_records(project, ("combinations",), [1])
+    assert still_shown(Shown("combination", "Both"), project, fewer) == Shown("combination", "Live")
+    assert still_shown(Shown("combination", "Live"), project, fewer) == Shown("combination", "Live")
+
+
+def test_the_governing_state_has_the_largest_utilisation(outcome):
+    results = outcome.results
+    worst = max(
+        (i for i, state in enumerate(results.states) if state.checked),
+        key=lambda i: np.nanmax(results.segments.utilisation[i]),
+    )
+    assert governing(results) == Shown("combination", results.states[worst].name)
+
+
+def test_without_any_check_the_first_single_state_stands_for_the_governing_one():
+    loads = [case("Dead", gravity=9.81), case("Live")]
+    bare = member([Part(1.0, round_bar(0.04), density=7850.0)], {0: FixedSupport()}, loads)
+    assert governing(compute(bare, never).results) == Shown("case", "Dead")
 
 
 def test_the_largest_bound_is_over_checked_states(outcome):

@@ -82,9 +82,20 @@ def test_a_clean_end_leaves_nothing(document, tmp_path):
     assert list(tmp_path.iterdir()) == []
 
 
-def test_an_unreadable_copy_is_logged_and_left_alone(tmp_path, qapp, caplog):
+@pytest.mark.parametrize(
+    "damaged",
+    [
+        b"{",
+        b"\xff",
+        b"[" * 100_000,
+        b'{"format": "barwright-recovery", "project": 5, "drafts": [], "path": null}',
+        b'{"format": "barwright-recovery", "project": "{}", "drafts": [], "path": null}',
+        b'{"format": "barwright-recovery", "project": "{}", "drafts": [{"place": 1}], "path": null}',
+    ],
+)
+def test_an_unreadable_copy_is_logged_and_left_alone(tmp_path, qapp, caplog, damaged):
     broken = tmp_path / "x.recovery.json"
-    broken.write_text("{", "utf-8")
+    broken.write_bytes(damaged)
     with caplog.at_level("ERROR", logger=log.LOGGER.name):
         assert left_behind(tmp_path) == ()
     assert "unreadable recovery copy" in caplog.text

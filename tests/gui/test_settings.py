@@ -1,6 +1,7 @@
 """What is remembered between starts, and the log."""
 
 import logging
+import os
 import sys
 
 import pytest
@@ -27,6 +28,30 @@ def test_recent_files_are_newest_first_without_repeats_and_exist(store, tmp_path
     assert files[5] not in store.recent
     store.clear_recent()
     assert store.recent == ()
+
+
+def test_a_recent_file_that_may_not_be_looked_at_any_more_is_passed_over(store, tmp_path, monkeypatch):
+    path = tmp_path / "private.json"
+    path.write_text("{}", "utf-8")
+    store.add_recent(path)
+    store.set_last_folder(path.parent)
+    real = os.stat
+
+    def refused(what, *args, **keys):
+        if str(what).startswith(str(tmp_path)):
+            raise PermissionError(13, "Permission denied")
+        return real(what, *args, **keys)
+
+    monkeypatch.setattr(os, "stat", refused)
+    assert store.recent == ()
+    assert store.last_folder != path.parent
+
+
+def test_where_no_log_can_be_written_the_work_goes_on(tmp_path):
+    blocked = tmp_path / "a file"
+    blocked.write_text("in the way")
+    log.start(blocked / "folder")
+    log.stop()
 
 
 def test_all_is_read_back_from_the_file(store, tmp_path):

@@ -22,70 +22,20 @@ from app import project_file, samples
 from app.gui import log
 from app.gui.dialogs import TextDialog
 from app.gui.document import Draft
+from app.gui.help import all_keys
 from app.gui.main import is_sample, offer_recovery, open_window
+from app.gui.outcome import first_shown, governing
 from app.gui.recovery import encode, left_behind
-from app.gui.settings import Settings
+from app.gui.show import GRACE
 from app.gui.view import Shown
 from app.units import SYSTEM_NAMES
+from solver.errors import Cancelled
 from tests.gui.hand import begin, cell, chord, editor, enter, go_to
+from tests.gui.windows import dialog_of, end, finish, solved
 
 KEY = Qt.Key
 SHIFT = Qt.KeyboardModifier.ShiftModifier
 CONTROL = Qt.KeyboardModifier.ControlModifier
-
-
-@pytest.fixture
-def store(tmp_path):
-    made = Settings(tmp_path / "settings.ini")
-    made.set_last_folder(tmp_path)
-    return made
-
-
-@pytest.fixture
-def rod(tmp_path):
-    """A file of the user's own."""
-    path = tmp_path / "rod.barwright.json"
-    path.write_bytes(samples.sample_path("tie_rod").read_bytes())
-    return path
-
-
-def solved(qtbot, window):
-    """Wait until what is shown is current."""
-    qtbot.waitUntil(lambda: window.showing.current, timeout=5000)
-
-
-@pytest.fixture
-def window(qtbot, store, rod, tmp_path):
-    made = open_window(rod, store, tmp_path / "recovery")
-    with qtbot.waitActive(made):
-        made.activateWindow()
-    solved(qtbot, made)
-    yield made
-    end(qtbot, made)
-
-
-def end(qtbot, window):
-    """Close without a question, and see it go."""
-    if isValid(window):
-        window._closing = True
-        with qtbot.waitSignal(window.destroyed, timeout=2000):
-            window.close()
-
-
-@pytest.fixture
-def table(window):
-    return window.tables.views["segments"]
-
-
-def dialog_of(window, kind):
-    """The dialog that is open."""
-    (found,) = [dialog for dialog in window.findChildren(kind) if dialog.isVisible()]
-    return found
-
-
-def finish(qtbot, dialog, act):
-    with qtbot.waitSignal(dialog.finished, timeout=2000):
-        act()
 
 
 # Results follow
@@ -179,26 +129,85 @@ def test_a_fault_in_the_solver_is_told_and_logged_and_the_next_edit_works(
     assert "Solved" in window.status.solver.text()
 
 
-def test_closing_while_the_solver_runs_is_clean(qtbot, store, rod, tmp_path, monkeypatch):
+@pytest.fixture
+def endless_solver(window, monkeypatch):
+    """From now on the solver ends only when it is told to."""
     started = threading.Event()
 
     def endless(_project, *, cancelled):
-        from solver.errors import Cancelled
-
         started.set()
         while not cancelled():
             threading.Event().wait(0.001)
         raise Cancelled
 
     monkeypatch.setattr("solver.solve.solve", endless)
-    window = open_window(rod, store, tmp_path / "recovery")
-    qtbot.waitUntil(started.is_set, timeout=5000)
-    with qtbot.waitSignal(window.destroyed, timeout=2000):
-        window.close()
+    return started
+
+
+def test_closing_while_the_solver_runs_is_clean(qtbot, window, table, tmp_path, endless_solver):
+    enter(table, 1, "length", "900")
+    qtbot.waitUntil(endless_solver.is_set, timeout=5000)
+    end(qtbot, window)
     assert list((tmp_path / "recovery").iterdir()) == []
 
 
+def test_in_a_burst_of_edits_what_is_shown_is_soon_marked_as_out_of_date(
+    qtbot, window, table, endless_solver
+):
+    go_to(table, 1, "length")
+    line = begin(table, "1")
+    for _ in range(4):
+        qtbot.wait(GRACE // 2)  # each keystroke comes before the grace of the one before has passed
+        QTest.keyClicks(line, "1")
+    assert window.sheet.notice
+    assert "Solving" in window.status.solver.text()
+    QTest.keyClick(line, KEY.Key_Escape)
+
+
 # Pickers
+
+
+def test_it_opens_on_the_state_that_governs(qtbot, window):
+    assert window.view.shown == governing(window.showing.outcome.results)
+    assert window.top_bar.show_picker.currentText() == window.view.shown.name
+    window.samples_menu.aboutToShow.emit()
+    for action in window.samples_menu.actions():
+        action.trigger()
+        assert window.view.shown == first_shown(window.document.project), "with loads while it is solved"
+        solved(qtbot, window)
+        assert window.view.shown == governing(window.showing.outcome.results)
+
+
+def test_what_a_person_has_picked_is_not_left_when_results_arrive(qtbot, window, table):
+    window.samples_menu.aboutToShow.emit()
+    window.samples_menu.actions()[0].trigger()
+    window.top_bar.show_picker.picked.emit(Shown("envelope"))
+    solved(qtbot, window)
+    assert window.view.shown == Shown("envelope")
+
+
+def test_another_edit_does_not_change_what_is_looked_at(qtbot, window, table):
+    shown = window.view.shown
+    other = next(c.name for c in window.document.project.combinations if c.name != shown.name)
+    window.view.set_shown(Shown("combination", other))
+    enter(table, 1, "length", "900")
+    solved(qtbot, window)
+    assert window.view.shown == Shown("combination", other)
+
+
+def test_renaming_what_is_looked_at_also_letter_by_letter_keeps_looking_at_it(qtbot, window):
+    name = window.document.project.combinations[0].name
+    window.view.set_shown(Shown("combination", name))
+    window.tables.tabs.setCurrentIndex(3)
+    names = window.tables.views["combinations"]
+    go_to(names, 0, "name")
+    line = begin(names, "Wi")
+    assert window.top_bar.show_picker.currentText() == "Wi"
+    QTest.keyClick(line, KEY.Key_Escape)
+    assert window.view.shown == Shown("combination", name)
+    enter(names, 0, "name", "Winter")
+    assert window.view.shown == Shown("combination", "Winter")
+    solved(qtbot, window)
 
 
 @pytest.mark.parametrize("system", SYSTEM_NAMES)
@@ -213,6 +222,8 @@ def test_every_unit_system_is_shown_and_remembered(qtbot, window, store, system)
 def test_the_show_picker_sets_what_the_strips_show_and_is_no_undo_step(qtbot, window):
     picker = window.top_bar.show_picker
     picker.setFocus()
+    QTest.keyClick(picker, KEY.Key_Home)
+    assert window.view.shown == Shown("envelope")
     QTest.keyClick(picker, KEY.Key_Down)
     name = window.document.project.combinations[0].name
     assert window.view.shown == Shown("combination", name)
@@ -395,6 +406,36 @@ def test_escape_answers_the_question_with_cancel(qtbot, window, table):
     assert window.document.project.segments[0].length == 0.9
 
 
+def test_a_save_that_fails_cancels_the_closing(qtbot, window, table, monkeypatch):
+    def full(*_args):
+        raise OSError(28, "No space left on device")
+
+    monkeypatch.setattr("app.project_file.write_bytes", full)
+    enter(table, 1, "length", "900")
+    window.close()
+    question = dialog_of(window, QMessageBox)
+    finish(qtbot, question, question.button(QMessageBox.StandardButton.Save).click)
+    told = dialog_of(window, TextDialog)
+    assert "No space left" in told.body.toPlainText()
+    finish(qtbot, told, told.reject)
+    assert window.isVisible()
+    assert window.isWindowModified()
+
+
+def test_there_is_one_question_at_a_time(qtbot, window, table, rod):
+    enter(table, 1, "length", "900")
+    window.close()
+    window.close()
+    drop(window, rod)
+    question = dialog_of(window, QMessageBox)
+    finish(qtbot, question, question.button(QMessageBox.StandardButton.Cancel).click)
+    drop(window, rod)
+    question = dialog_of(window, QMessageBox)
+    finish(qtbot, question, question.button(QMessageBox.StandardButton.Discard).click)
+    assert not window.isWindowModified()
+    assert window.document.project == project_file.read(rod)
+
+
 def test_save_before_closing_does_not_lose_a_draft_unasked(qtbot, window, table):
     enter(table, 1, "length", "abc")
     window.close()
@@ -424,9 +465,52 @@ def test_work_left_behind_is_offered_and_opened_with_its_drafts(qtbot, window, t
     assert window.recovery.copy.exists(), "the work is safe again before the old copy goes"
 
 
+def test_the_old_copy_is_kept_where_no_new_one_can_be_written(qtbot, window, tmp_path, rod, monkeypatch):
+    def full(*_args):
+        raise OSError(28, "No space left on device")
+
+    folder = tmp_path / "left"
+    folder.mkdir()
+    (folder / "1.recovery.json").write_bytes(encode(window.document.snapshot, rod))
+    monkeypatch.setattr("app.gui.recovery.write_bytes", full)
+    offer_recovery(window, left_behind(folder))
+    question = dialog_of(window, QMessageBox)
+    finish(qtbot, question, lambda: QTest.keyClick(question, KEY.Key_Return))
+    assert len(list(folder.glob("*.recovery.json"))) == 1
+    assert "No space left" in window.status.news.text()
+
+
+def test_where_no_recovery_copy_can_be_kept_the_window_works(qtbot, store, rod, tmp_path):
+    blocked = tmp_path / "a file"
+    blocked.write_text("in the way")
+    window = open_window(rod, store, blocked / "recovery")
+    solved(qtbot, window)
+    window.document.commit_draft(("segments", 0, "length"), Draft("abc", "not a number", "Length of A"), "x")
+    assert not window.recovery.write()
+    assert "no recovery copy" in window.status.news.text()
+    end(qtbot, window)
+
+
+def test_a_fault_is_told_also_over_another_text(qtbot, window):
+    window.actions_by_key["keys"].trigger()
+    keys = dialog_of(window, TextDialog)
+    window.help.show_fault("Traceback …")
+    texts = {dialog.body.toPlainText() for dialog in window.findChildren(TextDialog)}
+    assert "Traceback …" in texts
+    for dialog in window.findChildren(TextDialog):
+        finish(qtbot, dialog, dialog.reject)
+    assert keys
+
+
+def test_the_keys_of_every_pane_can_be_read(window):
+    text = all_keys()
+    for line in ("Home, End\tCursor to the first or last joint", "F2\tEdit the cell", "In the findings"):
+        assert line in text
+
+
 def test_an_uncaught_fault_is_told_once_with_its_report(qtbot, window):
-    window.show_fault("Traceback …")
-    window.show_fault("another")
+    window.help.show_fault("Traceback …")
+    window.help.show_fault("another")
     dialog = dialog_of(window, TextDialog)
     assert dialog.body.toPlainText() == "Traceback …"
     finish(qtbot, dialog, dialog.reject)
@@ -471,6 +555,15 @@ def test_the_calc_sheet_is_written_in_the_background_under_the_files_name(qtbot,
     assert "rod.pdf written" in window.status.news.text()
 
 
+def test_one_calc_sheet_at_a_time_and_none_is_dropped_unsaid(qtbot, window, tmp_path):
+    with qtbot.waitSignal(window.printing._worker.ready, timeout=20000):
+        window.printing.write(tmp_path / "a.pdf")
+        window.printing.write(tmp_path / "b.pdf")
+        assert "still being written" in window.status.news.text()
+    assert (tmp_path / "a.pdf").exists()
+    assert not (tmp_path / "b.pdf").exists()
+
+
 def test_a_sheet_that_cannot_be_written_says_why(qtbot, window, tmp_path):
     with qtbot.waitSignal(window.printing._worker.failed, timeout=20000):
         window.printing.write(tmp_path / "no such folder" / "rod.pdf")
@@ -510,12 +603,12 @@ def test_f6_goes_round_the_panes_and_back(window):
 
 def test_geometry_and_splitters_come_back(qtbot, window, store, rod, tmp_path):
     window.resize(1000, 580)  # the screen that the tests have is small
-    window.down.setSizes([200, 300])
-    share = window.down.sizes()[0] / sum(window.down.sizes())
+    window.panes.down.setSizes([200, 300])
+    share = window.panes.down.sizes()[0] / sum(window.panes.down.sizes())
     end(qtbot, window)
     again = open_window(rod, store, tmp_path / "recovery")
     assert again.height() == 580
-    assert again.down.sizes()[0] / sum(again.down.sizes()) == pytest.approx(share, abs=0.02)
+    assert again.panes.down.sizes()[0] / sum(again.panes.down.sizes()) == pytest.approx(share, abs=0.02)
     end(qtbot, again)
 
 

@@ -90,6 +90,14 @@ def test_a_young_solve_is_let_finish_and_an_old_one_is_given_up(qtbot, solver, s
     assert not solver.failures, "a cancelled solve is no failure"
 
 
+def test_the_last_edit_waits_no_longer_than_patience_for_the_one_before(qtbot, solver, slow):
+    solver.request("slow")
+    assert slow.started.wait(2)
+    solver.request("b")  # and no other, which could look at the clock again
+    qtbot.waitUntil(lambda: bool(solver.deliveries), timeout=2000)
+    assert [(d.value, d.newest) for d in solver.deliveries] == [("B", True)]
+
+
 def test_an_exception_is_told_and_the_next_edit_works(qtbot, solver):
     with qtbot.waitSignal(solver.failed, timeout=2000):
         solver.request("fail")
