@@ -56,7 +56,7 @@ def parser() -> argparse.ArgumentParser:
     asked.add_argument("--units", nargs="+", default=SYSTEM_NAMES, choices=SYSTEM_NAMES)
     asked.add_argument("--size", nargs="+", default=SIZES, metavar="WIDTHxHEIGHT")
     asked.add_argument("--dark", action="store_true", help="with a dark palette")
-    asked.add_argument("--show", metavar="COMBINATION", help="show this one instead of the envelope")
+    asked.add_argument("--show", metavar="COMBINATION", help="show this one instead of the one that governs")
     return asked
 
 

@@ -22,7 +22,7 @@ from PySide6.QtWidgets import QApplication
 from app.gui.main import open_window
 from app.gui.settings import Settings
 from app.gui.sheet_view import SheetView
-from app.gui.view import View
+from app.gui.view import Shown, View
 from app.project_file import write
 from app.samples import sample_path
 from solver.fields import envelope
@@ -73,6 +73,7 @@ def window(qtbot, tmp_path):
     with qtbot.waitActive(made):
         made.activateWindow()
     qtbot.waitUntil(lambda: made.showing.current, timeout=10000)
+    made.view.set_shown(Shown("envelope"))  # the most curves, as in the plain plots
     yield made
     made._closing = True
     with qtbot.waitSignal(made.destroyed, timeout=5000):
@@ -182,6 +183,7 @@ import time; start = time.perf_counter()
 import sys; from pathlib import Path
 from app.gui.main import application, open_window
 from app.gui.settings import Settings
+from app.gui.view import Shown
 from app.gui.sheet_view import SheetView
 from app.gui.view import View
 app = application(); folder = Path(sys.argv[2])

@@ -27,6 +27,7 @@ from app.gui.main import is_sample, offer_recovery, open_window
 from app.gui.outcome import first_shown, governing
 from app.gui.recovery import encode, left_behind
 from app.gui.show import GRACE
+from app.gui.tables.delegate import BAR_WIDTH, MARGIN
 from app.gui.view import Shown
 from app.units import SYSTEM_NAMES
 from solver.errors import Cancelled
@@ -622,6 +623,20 @@ def test_nothing_is_cut_off_in_the_bars_at_the_least_usual_size(window):
         )
         assert picker.width() >= widest + 20
     assert window.top_bar.minimumSizeHint().width() <= 1280
+
+
+@pytest.mark.parametrize("system", SYSTEM_NAMES)
+def test_every_utilisation_can_be_read_at_the_least_usual_size(qtbot, window, table, system):
+    window.on_units_picked(system)
+    window.resize(1280, 800)
+    solved(qtbot, window)
+    column = cell(table, 1, "utilisation").column()
+    room = table.columnWidth(column) - BAR_WIDTH - 10 - 2 * MARGIN
+    for row in range(1, table.table_model.record_rows):
+        text = table.table_model.index(row, column).data()
+        assert text
+        assert table.fontMetrics().horizontalAdvance(text) <= room
+    assert table.horizontalHeader().length() <= table.viewport().width()
 
 
 def test_light_and_dark_follow_the_system(qapp, window):

@@ -146,6 +146,7 @@ class TablesPane(QWidget):
         """Show results in the columns that have them."""
         for view in self.views.values():
             view.table_model.set_figures(figures)
+            view.widen_for_figures()
 
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""

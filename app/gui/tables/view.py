@@ -6,6 +6,8 @@ can be empty, Escape restores.
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+
 from PySide6.QtCore import QItemSelection, QItemSelectionModel, Qt, Signal
 from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent
 from PySide6.QtWidgets import (
@@ -115,7 +117,14 @@ class TableView(QTableView):
 
     def widen_if_needed(self) -> None:
         """After a change: share the width out anew only where a text would be cut off."""
-        if any(self.columnWidth(place) < width for place, width in enumerate(self._needed_widths())):
+        self._widen(range(self.table_model.columnCount()))
+
+    def widen_for_figures(self) -> None:
+        """The same after new results, which change their own columns only."""
+        self._widen(p for p, column in enumerate(self.table_model.columns) if column.figure is not None)
+
+    def _widen(self, places: Iterable[int]) -> None:
+        if any(self.columnWidth(place) < self._needed_width(place) for place in places):
             self.share_width()
 
     def _usual_width(self, place: int) -> int:
@@ -129,7 +138,10 @@ class TableView(QTableView):
         model, metrics = self.table_model, self.fontMetrics()
         texts = [str(model.index(row, place).data()) for row in range(min(model.record_rows, MEASURED))]
         widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
-        bar = BAR_WIDTH + 10 if model.columns[place].bar is not None else 0
+        column = model.columns[place]
+        if column.figure is not None:  # room for results before they are there, so that nothing jumps
+            widest = max(widest, column.width * metrics.horizontalAdvance("0"))
+        bar = BAR_WIDTH + 10 if column.bar is not None else 0
         heading = max(metrics.horizontalAdvance(text) for text in model.heading(place))
         return max(min(widest, 3 * self._usual_width(place)) + bar, heading) + 2 * MARGIN + 2
 
