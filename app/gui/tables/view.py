@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from PySide6.QtCore import QItemSelection, QItemSelectionModel, Qt, Signal
-from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent
+from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QAbstractItemView,
@@ -124,7 +124,7 @@ class TableView(QTableView):
         self._widen(p for p, column in enumerate(self.table_model.columns) if column.figure is not None)
 
     def _widen(self, places: Iterable[int]) -> None:
-        if any(self.columnWidth(place) < self._needed_width(place) for place in places):
+        if self.isVisible() and any(self.columnWidth(place) < self._needed_width(place) for place in places):
             self.share_width()
 
     def _usual_width(self, place: int) -> int:
@@ -144,6 +144,11 @@ class TableView(QTableView):
         bar = BAR_WIDTH + 10 if column.bar is not None else 0
         heading = max(metrics.horizontalAdvance(text) for text in model.heading(place))
         return max(min(widest, 3 * self._usual_width(place)) + bar, heading) + 2 * MARGIN + 2
+
+    def showEvent(self, event: QShowEvent) -> None:
+        """Texts may have changed while the table was hidden."""
+        super().showEvent(event)
+        self.widen_if_needed()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The width is shared out anew."""
