@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import Literal, TypeAlias
 
-from PySide6.QtCore import QRectF, QSizeF, Qt
+from PySide6.QtCore import QSizeF, Qt
 from PySide6.QtGui import QFont, QFontMetricsF
 
 Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
@@ -32,13 +32,20 @@ class Fonts:
         metrics, lines = self._metrics[face], text.split("\n")
         return QSizeF(max(map(metrics.horizontalAdvance, lines)), len(lines) * metrics.height())
 
-    def wrapped_height(self, text: str, face: Face, width: float) -> float:
-        """The height of a text that wraps at words within a width.
+    def wrapped(self, text: str, face: Face, width: float, between: str = " ") -> str:
+        """The text with line breaks at spaces (or at what else stands `between` its parts), so that no line
+        but a single long part is wider than `width`.
 
-        A little less width than there is: painting hints glyphs and may wrap earlier than the measure says.
+        So measured and painted lines are the same; Qt's own wrapping may paint more than it measures.
         """
-        room = QRectF(0.0, 0.0, 0.97 * width - 2.0, 1e4)
-        return self._metrics[face].boundingRect(room, Qt.TextFlag.TextWordWrap, text).height()
+        metrics, lines = self._metrics[face], []
+        for word in text.split(between):
+            longer = f"{lines[-1]}{between}{word}" if lines else word
+            if lines and metrics.horizontalAdvance(longer) <= width:
+                lines[-1] = longer
+            else:
+                lines.append(word)
+        return "\n".join(lines)
 
     def elided(self, text: str, face: Face, width: float) -> str:
         """The text, cut short with an ellipsis where it is wider than `width`."""

@@ -105,7 +105,7 @@ class CursorLine(Painted):
 
 
 class Message(Painted):
-    """A line of text on a ground: the readout, "out of date", or why there is nothing to show."""
+    """Lines of text on a ground: the readout, "out of date", or why there is nothing to show."""
 
     def __init__(self, theme: Theme, ground: str = "panel", ink: str = "ink", z: float = 15.0) -> None:
         super().__init__(theme, z)
@@ -125,11 +125,11 @@ class Message(Painted):
         self.update()
 
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """Ground and text, wrapped where it is long."""
+        """Ground and text."""
         if self._fonts is None:
             return
         painter.fillRect(self._rect, colour(getattr(self._theme, self._ground)))
         painter.setFont(self._fonts.font("plain"))
         painter.setPen(colour(getattr(self._theme, self._ink)))
-        flags = Qt.AlignmentFlag.AlignVCenter | Qt.TextFlag.TextWordWrap
+        flags = Qt.AlignmentFlag.AlignVCenter | Qt.TextFlag.TextDontClip
         painter.drawText(self._rect.adjusted(8, 0, -8, 0), flags, self._text)

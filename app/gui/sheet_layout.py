@@ -13,9 +13,11 @@ from PySide6.QtCore import QPointF, QRectF
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
 
-SHARES_ACROSS = (0.22, 0.26, 0.32, 0.20)  # u, N, σ, utilisation: stress carries the most
+SHARES_ACROSS = (0.22, 0.26, 0.31, 0.21)  # u, N, σ, utilisation: stress carries the most
 SHARES_UPRIGHT = (0.23, 0.25, 0.29, 0.23)  # side by side each needs room for its words
 GAP = 12.0
+READOUT_LINES, LINE_EDGES = 2, 0.6  # lines kept free for the readout; above and below them, in text heights
+LEAST_STRIP = 1.9  # across, the least depth of a strip in heights of the text: its title and one value
 ABOVE, BELOW = 46.0, 52.0  # upright, beyond the member's ends: the arrow of a force, a spring on its ground
 
 
@@ -74,9 +76,14 @@ class SheetLayout:
         return self.axes.rect((self.begin, self.end), across)
 
 
+def least_height(text_height: float) -> float:
+    """The height of a sheet on which drawing and strips can still be read, whichever way it lies."""
+    return (9.0 + 4 * LEAST_STRIP + READOUT_LINES + LINE_EDGES) * text_height + 5 * GAP
+
+
 def sheet_layout(width: float, height: float, upright: bool, text_height: float) -> SheetLayout:
     """The layout on a sheet of the given pixels; margins follow the height of the text."""
-    readout_height = round(1.7 * text_height)
+    readout_height = round((READOUT_LINES + LINE_EDGES) * text_height)
     place = _upright if upright else _across
     return place(width, height - readout_height - 8.0, readout_height, text_height)
 
@@ -85,17 +92,18 @@ def _across(width: float, height: float, readout_height: float, text_height: flo
     left, right = 7.2 * text_height, 5.2 * text_height
     begin, end = left, max(width - right, left + 50.0)
     drawing_height = min(max(0.40 * height, 11.0 * text_height), 26.0 * text_height)
+    drawing_height = min(drawing_height, height - 4 * (LEAST_STRIP * text_height + GAP))
     drawing = QRectF(0.0, 4.0, width, drawing_height)
     spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS)
     strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)
-    readout = QRectF(begin, height + 4.0, end - begin, readout_height)
+    readout = QRectF(GAP, height + 4.0, width - 2 * GAP, readout_height)
     return SheetLayout(Axes(upright=False), drawing, strips, readout, begin, end)
 
 
 def _upright(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
     top, bottom = max(3.4 * text_height, ABOVE), max(3.2 * text_height, BELOW)
     begin, end = max(height - bottom, top + 50.0), top
-    drawing_width = min(max(0.45 * width, 20.0 * text_height), 40.0 * text_height)
+    drawing_width = min(max(0.45 * width, min(25.0 * text_height, 0.52 * width)), 40.0 * text_height)
     drawing = QRectF(0.0, 0.0, drawing_width, height)
     spans = _spans(drawing.right() + GAP, width - GAP, SHARES_UPRIGHT)
     strips = tuple(QRectF(QPointF(a, end), QPointF(b, begin)) for a, b in spans)

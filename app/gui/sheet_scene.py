@@ -16,9 +16,9 @@ from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
 from app.gui.sheet_items import CursorLine, JointLines, Message
-from app.gui.sheet_layout import Place, SheetLayout, sheet_layout
+from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.strips.content import envelope_contents, state_contents
-from app.gui.strips.readout import envelope_readout, state_readout
+from app.gui.strips.readout import BETWEEN, envelope_readout, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
@@ -84,6 +84,11 @@ class SheetScene(QGraphicsScene):
     def readout(self) -> str:
         """The readout line."""
         return self._readout.text
+
+    @property
+    def readout_box(self) -> QRectF:
+        """Where the readout stands."""
+        return self._readout.boundingRect()
 
     @property
     def notice(self) -> str:
@@ -168,7 +173,6 @@ class SheetScene(QGraphicsScene):
             strip.set_place(Place(rect, ruler, layout.axes, self._fonts))
             strip.refresh()
         self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
-        self._readout.set_rect(layout.readout)
         self._say_notice()
         self.show_cursor(self._cursor)
 
@@ -203,7 +207,16 @@ class SheetScene(QGraphicsScene):
         self._cursor = cursor
         held = cursor is not None and self._ruler.holds(cursor.x)
         self.cursor_line.set_pixel(self._ruler.pixel(cursor.x) if held else None, self._layout)
-        self._readout.set_text("" if cursor is None else self._values_at(cursor.x), self._fonts)
+        self._say_values("" if cursor is None else self._values_at(cursor.x))
+
+    def _say_values(self, text: str) -> None:
+        """At the foot of the sheet, in as many lines as it takes."""
+        room = self._layout.readout
+        text = self._fonts.wrapped(text, "plain", room.width() - 16.0, BETWEEN)
+        size = self._fonts.measure(text, "plain")
+        height = size.height() + LINE_EDGES * self._fonts.text_height
+        self._readout.set_text(text, self._fonts)
+        self._readout.set_rect(QRectF(room.left(), room.bottom() - height, room.width(), height))
 
     def _values_at(self, x: float) -> str:
         if self._results is None:

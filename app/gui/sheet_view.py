@@ -5,7 +5,7 @@ from __future__ import annotations
 import bisect
 from collections.abc import Callable
 
-from PySide6.QtCore import QEvent, QPointF, QSizeF, Qt
+from PySide6.QtCore import QEvent, QPointF, QRectF, QSizeF, Qt
 from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
@@ -13,7 +13,7 @@ from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.drawing.shapes import Part
 from app.gui.fonts import Fonts
 from app.gui.ruler import Ruler
-from app.gui.sheet_layout import SheetLayout
+from app.gui.sheet_layout import SheetLayout, least_height
 from app.gui.sheet_scene import SheetScene
 from app.gui.strips.strip import Strip
 from app.gui.theme import theme_for
@@ -68,8 +68,13 @@ class SheetView(QGraphicsView):
         self.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
         self.setMouseTracking(True)
-        self.setMinimumSize(420, 320)
+        self._set_least_size()
         self.setAccessibleName(tr("Sheet: drawing and strips"))
+
+    def _set_least_size(self) -> None:
+        """As small as its texts can still be read, but never so large as to push all else off a screen."""
+        height = min(max(round(least_height(Fonts(self.font()).text_height)), 320), 560)
+        self.setMinimumSize(420, height)
 
     @property
     def ruler(self) -> Ruler:
@@ -95,6 +100,11 @@ class SheetView(QGraphicsView):
     def readout(self) -> str:
         """The readout line."""
         return self._sheet.readout
+
+    @property
+    def readout_box(self) -> QRectF:
+        """Where the readout stands."""
+        return self._sheet.readout_box
 
     @property
     def notice(self) -> str:
@@ -252,6 +262,7 @@ class SheetView(QGraphicsView):
         if event.type() == QEvent.Type.PaletteChange:
             self._sheet.dress(theme_for(self.palette()))
         elif event.type() == QEvent.Type.FontChange:
+            self._set_least_size()
             self._sheet.set_fonts(Fonts(self.font()))
 
     def focusInEvent(self, event: QFocusEvent) -> None:

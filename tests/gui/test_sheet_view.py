@@ -3,16 +3,19 @@
 from __future__ import annotations
 
 import pytest
-from PySide6.QtCore import QEvent, QPoint, QPointF, Qt
+from msgspec.structs import replace
+from PySide6.QtCore import QEvent, QPoint, QPointF, QSize, Qt
 from PySide6.QtGui import QColor, QMouseEvent, QPalette, QWheelEvent
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
 from app.gui.drawing.shapes import Part
+from app.gui.fonts import Fonts
 from app.gui.sheet_view import SheetView
 from app.gui.theme import DARK, LIGHT
 from app.gui.view import Cursor, Selection, Shown, View
 from app.samples import read_sample
+from app.units import SYSTEM_NAMES
 from solver.results import Results
 from solver.solve import solve
 from tests.gui.sheets import busy_member
@@ -268,3 +271,51 @@ class TestTheme:
 def test_results_of_the_sample_are_what_the_tests_think(qapp):
     assert isinstance(PILE_RESULTS, Results)
     assert [joint.mark for joint in PILE.joints][2] == "bed" or PILE_RESULTS.position[3] == 10.5
+
+
+class TestReadout:
+    @pytest.mark.parametrize("units", SYSTEM_NAMES)
+    @BOTH_WAYS
+    def test_is_never_cut_off_and_names_both_sides_of_a_joint(self, qtbot, units, orientation):
+        view = View()
+        sheet = SheetView(view)
+        qtbot.addWidget(sheet)
+        sheet.resize(920, 480)  # as in a window of 1280×800
+        sheet.set_orientation(orientation)
+        project = replace(PILE, display=replace(PILE.display, units=units))
+        results = solve(project)
+        sheet.show_results(project, results, True)
+        states = [Shown(state.kind, state.name) for state in results.states]
+        for shown in (Shown("envelope"), *states):
+            view.set_shown(shown)
+            for x in results.position[1:-1]:
+                move_mouse(sheet, point_of(sheet, float(x)))
+                assert view.cursor.x == x
+                assert "joint" in sheet.readout
+                # Above, force or section step at each joint; further down they meet, and both sides are equal.
+                if shown.kind != "case":
+                    assert ("|" in sheet.readout) == (x > 11.0)
+                box, text = sheet.readout_box, Fonts(sheet.font()).measure(sheet.readout, "plain")
+                assert text.width() <= box.width()
+                assert text.height() <= box.height()
+                assert sheet.scene().sceneRect().contains(box)
+                assert not box.intersects(sheet.places.strips[-1])
+
+
+class TestLargeFonts:
+    @pytest.mark.parametrize("size", [1.0, 1.5, 2.0])
+    @BOTH_WAYS
+    def test_strips_keep_room_for_their_words(self, qtbot, size, orientation):
+        sheet = SheetView(View())
+        qtbot.addWidget(sheet)
+        font = sheet.font()
+        font.setPointSizeF(size * font.pointSizeF())
+        sheet.setFont(font)
+        sheet.set_orientation(orientation)
+        sheet.resize(sheet.minimumSize().expandedTo(QSize(980, 480)))
+        sheet.show_results(PILE, PILE_RESULTS, True)
+        whole = sheet.scene().sceneRect()
+        for strip in sheet.strips:
+            assert whole.contains(strip.place.rect)
+            assert len(strip.labels) >= 2
+            assert [label.text for label in strip.labels if not whole.contains(label.rect)] == []

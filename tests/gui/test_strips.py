@@ -367,6 +367,13 @@ class TestReadout:
         line = envelope_readout(solve(read_sample("tie_rod")), 1.0)
         assert "…" in line
 
+    def test_reads_rounding_as_0(self):
+        part = Part(1.0, round_bar(0.04), expansion=1.2e-5)
+        heat = case(on_segments=[SegmentLoad("A", temperature_start=37.0, temperature_end=3.0)])
+        line = state_readout(solve(member([part, part], {0: FixedSupport()}, [heat])), 0, 1.0)
+        assert "N 0 N" in line
+        assert "σ 0 MPa" in line
+
     def test_says_where_nothing_is_checked(self):
         results = solve(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}))
         assert state_readout(results, 0, 0.5).endswith("utilisation not checked")

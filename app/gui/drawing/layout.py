@@ -98,22 +98,27 @@ def _no_rows() -> Rows:
 
 def _rows(sketch: Sketch, room: float) -> Rows:
     """As many rows of labels as leave the member enough room."""
-    for most in range(MOST_ROWS, 1, -1):
+    for most in range(MOST_ROWS, 0, -1):
         rows = _rows_with(sketch, room, most)
         if rows.half >= LEAST_HALF:
             return rows
-    return _rows_with(sketch, room, 1)
+    return _rows_with(sketch, room, 0)
 
 
 def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
-    """The rows from both sides inward; the member gets what is left between them."""
-    labels = _label_rows(sketch, room, most)
+    """The rows from both sides inward; the member gets what is left between them.
+
+    Of labels of loads there are at most `most` rows; with 0 one, and one of lengths and of sections each.
+    """
+    labels = _label_rows(sketch, room, max(most, 1))
     top = labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    sections = _text_rows(sketch, section_wishes(sketch), room - (EDGE if sketch.place.axes.upright else 4.0))
+    sections = _text_rows(
+        sketch, section_wishes(sketch), room - (EDGE if sketch.place.axes.upright else 4.0), most
+    )
     chain = sections[0][0] - CHAIN
-    lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN)
+    lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN, most)
     under_label, under = _under_rows(sketch, lengths[0][0])
     last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
     last -= BEDDING if _has_bedding(sketch) else 0.0
@@ -139,7 +144,8 @@ def _label_rows(sketch: Sketch, room: float, most: int) -> tuple[Span, ...]:
         return ((first, first),)
     depth = max(w.depth for w in wishes)
     if sketch.place.axes.upright:
-        column = COLUMN * room * most / MOST_ROWS
+        forces = max((w.depth for w in wishes if w.part.kind == "force"), default=0.0)
+        column = min(max(COLUMN * room * most / MOST_ROWS, forces), COLUMN * room)
         widest = max((w.depth for w in wishes if w.depth <= column), default=0.0)
         return ((first, first + widest),)
     count = 1
@@ -155,13 +161,13 @@ def _under_rows(sketch: Sketch, foot: float) -> tuple[Span, float]:
     return (foot - depth, foot), foot - depth - 0.5 * UNDER
 
 
-def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float) -> tuple[Span, ...]:
+def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float, most: int) -> tuple[Span, ...]:
     """One row, or two where a text is too long for one; the last ends at `foot`."""
     if not wishes:
         return ((foot, foot),)
     depth = max(w.depth for w in wishes)
     one_row = len(sketch.placed(wishes, ((0.0, depth),))) == len(wishes)
-    count = 1 if one_row or sketch.place.axes.upright else 2
+    count = 1 if one_row or not most or sketch.place.axes.upright else 2
     return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
 
 

@@ -7,13 +7,13 @@ from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen, QResizeEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
 
 from app.gui.findings.content import Row
-from app.gui.findings.scale import SCALE_HEIGHT, SCALE_NUMBERS, paint_scale
+from app.gui.findings.scale import SCALE_HEIGHT, numbers_height, paint_scale
 from app.gui.fonts import Face, Fonts
 from app.gui.theme import Theme, colour
 
 PAD = 7.0
-MARK_WIDTH = 26.0
-WRAP = Qt.TextFlag.TextWordWrap | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop
+MARK = 2.0  # the room of a mark, in heights of the text
+LINES = Qt.TextFlag.TextDontClip | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop
 
 
 class FindingRow(QAbstractButton):
@@ -71,11 +71,16 @@ class FindingRow(QAbstractButton):
         return self._fonts.measure(text, "strong").width() + 8.0 if text else 0.0
 
     def _text_rect(self, width: float) -> QRectF:
-        indent = MARK_WIDTH if self._row and self._row.mark else 0.0
+        indent = self._mark_width() if self._row and self._row.mark else 0.0
         return QRectF(PAD + indent, PAD, width - 2 * PAD - indent - self._value_width(), 1e4)
 
+    def _mark_width(self) -> float:
+        return MARK * self._fonts.text_height
+
     def _height_of(self, text: str, face: Face, width: float) -> float:
-        return self._fonts.wrapped_height(text, face, width) if text else 0.0
+        if not text:
+            return 0.0
+        return self._fonts.measure(self._fonts.wrapped(text, face, width), face).height()
 
     def needed_height(self, width: int) -> int:
         """As high as sentence, remedy and scale need at this width."""
@@ -85,7 +90,7 @@ class FindingRow(QAbstractButton):
         height = 2 * PAD + self._height_of(self._row.text, "plain", room)
         height += self._height_of(self._row.remedy, "small", room)
         if self._row.band is not None:
-            height += SCALE_HEIGHT + (SCALE_NUMBERS if self._row.band_named else 0.0)
+            height += SCALE_HEIGHT + (numbers_height(self._fonts) if self._row.band_named else 0.0)
         return max(round(height + 0.5), 24)
 
     def _fit_height(self) -> None:
@@ -143,16 +148,17 @@ class FindingRow(QAbstractButton):
         painter.drawText(QRectF(PAD, PAD, 200.0, 100.0), Qt.AlignmentFlag.AlignLeft | top, self._mark(row))
         painter.setFont(self._fonts.font("plain"))
         painter.setPen(colour(theme.ink))
-        painter.drawText(text, WRAP, row.text)
+        painter.drawText(text, LINES, self._fonts.wrapped(row.text, "plain", text.width()))
         foot = text.top() + self._height_of(row.text, "plain", text.width())
         if row.remedy:
             painter.setFont(self._fonts.font("small"))
             painter.setPen(colour(theme.quiet))
-            painter.drawText(QRectF(text.left(), foot, text.width(), 1e4), WRAP, row.remedy)
+            remedy = self._fonts.wrapped(row.remedy, "small", text.width())
+            painter.drawText(QRectF(text.left(), foot, text.width(), 1e4), LINES, remedy)
         if row.band is not None:
             room = QRectF(text.left() + 4, foot, self.width() - 2 * PAD - text.left(), SCALE_HEIGHT)
             paint_scale(painter, room, row, theme, self._fonts)
 
     def _mark(self, row: Row) -> str:
         """A long mark is cut to its room; the sentence for those who hear names it whole."""
-        return self._fonts.elided(row.mark, "strong", MARK_WIDTH - 3.0)
+        return self._fonts.elided(row.mark, "strong", self._mark_width() - 3.0)

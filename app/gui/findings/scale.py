@@ -17,7 +17,6 @@ from app.gui.fonts import Fonts
 from app.gui.theme import Theme, colour
 
 SCALE_HEIGHT = 17.0
-SCALE_NUMBERS = 12.0
 BAR = 7.0
 LEAST_BAR = 4.0
 ROOM = 1.06  # how far the scale reaches beyond what it holds
@@ -50,6 +49,11 @@ class StressScale:
         return self.left + (stress - self.low) / (self.high - self.low) * (self.right - self.left)
 
 
+def numbers_height(fonts: Fonts) -> float:
+    """How much more a scale with numbers takes."""
+    return fonts.measure("0", "small").height()
+
+
 def paint_scale(painter: QPainter, room: QRectF, row: Row, theme: Theme, fonts: Fonts) -> None:
     """The scale of a row in its room; the numbers of the ends below it where the row asks for them."""
     band = row.band
@@ -61,7 +65,12 @@ def paint_scale(painter: QPainter, room: QRectF, row: Row, theme: Theme, fonts: 
     _paint_bar(painter, scale, row, middle, theme)
     if row.band_named:
         _paint_numbers(
-            painter, scale, band, QRectF(room.left(), room.bottom() - 3.0, room.width(), 14.0), theme, fonts
+            painter,
+            scale,
+            band,
+            QRectF(room.left(), room.bottom() - 3.0, room.width(), numbers_height(fonts)),
+            theme,
+            fonts,
         )
 
 

@@ -90,6 +90,17 @@ def number(kind: Kind, value: float, system: UnitSystemName) -> str:
     return format_value(value, kind, system)
 
 
+def of_unit_strain(results: Results) -> dict[Kind, float]:
+    """How much each quantity is at most where the strain is 1: what is small and what is not, SI."""
+    modulus, area = float(results.chain.modulus.max()), float(results.chain.area.max())
+    return {
+        "displacement": float(results.position[-1]),
+        "force": modulus * area,
+        "stress": modulus,
+        "utilisation": 1.0,
+    }
+
+
 def state_contents(results: Results, state: int) -> tuple[StripContent, ...]:
     """The strips of one state."""
     shown = curves(results, state)
@@ -156,16 +167,7 @@ class _Builder:
 
     def _nothing(self, kind: Kind) -> float:
         """The least range of a strip, from the member's own stiffness."""
-        chain = self._results.chain
-        length = float(self._results.position[-1])
-        modulus, area = float(chain.modulus.max()), float(chain.area.max())
-        least = {
-            "displacement": length,
-            "force": modulus * area,
-            "stress": modulus,
-            "utilisation": 1.0,
-        }
-        return NOTHING * least[kind]
+        return NOTHING * of_unit_strain(self._results)[kind]
 
     def _trace(self, kind: Kind, value: FloatArray) -> Trace:
         """The curve with points put in where it changes sign or passes its limit."""

@@ -22,8 +22,10 @@ from app.words import tr
 
 Measure: TypeAlias = Callable[[str, Face], QSizeF]
 EDGE = 6.0  # between a strip and its labels
+BELOW = 0.8 * GAP  # how far a value beside a strip may reach below it
 OVER_EDGE = 0.4 * GAP  # how far the label of a limit may reach over the edge of the strip
 SHARES = (1.0, 0.0, 0.5, 0.75, 0.25)  # of the way along a limit, where its label is tried
+HARDLY = 2  # pixels of a curve that a label may cover
 NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
@@ -108,7 +110,7 @@ class _Placer:
         widest = max((s.width() for s in sizes), default=0.0)
         beside = right - widest > title[-1].rect.right() + 2.0
         first = self.rect.top() if beside else title[0].rect.bottom()
-        tops = spread(wanted, [s.height() for s in sizes], first, self.rect.bottom())
+        tops = spread(wanted, [s.height() for s in sizes], first, self.rect.bottom() + BELOW)
         return [
             Label(QRectF(QPointF(right - size.width(), top), size), extreme.text, "small", "quiet")
             for extreme, size, top in zip(extremes, sizes, tops, strict=False)
@@ -118,24 +120,44 @@ class _Placer:
         sizes = [self.measure(e.text, "small") for e in extremes]
         wanted = [self.scale.pixel(e.value) - 0.5 * s.width() for e, s in zip(extremes, sizes, strict=True)]
         room = [s.width() + EDGE for s in sizes]
-        lefts = spread(wanted, room, self.rect.left(), self.rect.right() + EDGE)
-        return [
-            Label(QRectF(QPointF(left, title[0].rect.bottom()), size), extreme.text, "small", "quiet")
-            for extreme, size, left in zip(extremes, sizes, lefts, strict=False)
-        ]
+        last = self.rect.right() + EDGE
+        if sum(room) > last - self.rect.left() + 0.5:  # the smaller value below the strip
+            order = sorted(range(len(extremes)), key=lambda i: -abs(extremes[i].value))
+            lefts = {i: spread([wanted[i]], [room[i]], self.rect.left(), last) for i in order}
+            tops = {order[0]: title[0].rect.bottom()} | dict.fromkeys(order[1:], self.rect.bottom() + 2.0)
+            found = [(i, QPointF(lefts[i][0], tops[i])) for i in order if lefts[i]]
+        else:
+            lefts_of_all = spread(wanted, room, self.rect.left(), last)
+            found = [(i, QPointF(left, title[0].rect.bottom())) for i, left in enumerate(lefts_of_all)]
+        return [Label(QRectF(corner, sizes[i]), extremes[i].text, "small", "quiet") for i, corner in found]
 
     def limits(self) -> list[Label]:
         """Each allowable along its line, in short where room is little; those off the strip at its edge."""
         drawn = [(limit, False) for limit in self.content.limits if self.content.kind == "stress"]
         labels: list[Label] = []
         for limit, off in drawn + [(limit, True) for limit in self.content.beyond]:
-            boxes = [box for box in self._limit_boxes(limit, off=off) if not _meets(box.rect, labels)]
-            clear = next((box for box in boxes if not self._covers_curve(box.rect)), None)
-            if clear is not None:
-                labels.append(clear)
-            elif off or self._is_near(limit):
-                labels += [replace(box, ink="ink") for box in (boxes if off else boxes[::-1])[:1]]
+            box, covered = self._least_covering(limit, labels, off=off)
+            if box is not None and (not covered or off or self._is_near(limit)):
+                labels.append(replace(box, ink="ink") if covered else box)
         return labels
+
+    def _least_covering(self, limit: Limit, taken: list[Label], *, off: bool) -> tuple[Label | None, float]:
+        """The first place of a label that covers no curve, else the one that covers least, and how much.
+
+
+        Off the strip the words stay whole, as there is no line to say what the number is.
+        """
+        best: Label | None = None
+        least = np.inf
+        for box in self._limit_boxes(limit, off=off):
+            if _meets(box.rect, taken) or (off and best is not None and box.text != best.text):
+                continue
+            covered = self._covered(box.rect)
+            if covered < least:
+                best, least = box, covered
+            if not covered:
+                break
+        return best, least
 
     def _is_near(self, limit: Limit) -> bool:
         """Whether a curve comes so near to a limit that its number matters more than what it covers."""
@@ -169,20 +191,17 @@ class _Placer:
         """The small mark of a limit that lies off the strip: an arrow that points there."""
         return ("←→" if self.axes.upright else "↑↓")[0 if inward > 0 else 1]
 
-    def _covers_curve(self, box: QRectF) -> bool:
-        """Whether a box lies on a curve or on the fill between a curve and 0."""
-        along, across = self.axes.along_of(box), self.axes.across_of(box)
-        zero = self.scale.pixel(0.0)
+    def _covered(self, box: QRectF) -> float:
+        """How deep a box lies on a curve or on the fill between a curve and 0, in pixels across the axis."""
+        ends = sorted(self.ruler.position_at(along) for along in self.axes.along_of(box))
+        across, zero, deepest = self.axes.across_of(box), self.scale.pixel(0.0), 0.0
         for trace in self.content.traces:
-            pixels = self.ruler.pixel(trace.x)
-            inside = (pixels >= along[0]) & (pixels <= along[1])
-            order = np.argsort(pixels, kind="stable")
-            values = self.scale.pixels(trace.value)
-            ends = np.interp(along, pixels[order], values[order])
-            reached = np.concatenate([values[inside], ends, [zero]])
-            if np.nanmin(reached) < across[1] and np.nanmax(reached) > across[0]:
-                return True
-        return False
+            inside = slice(*np.searchsorted(trace.x, ends).tolist())
+            values = np.concatenate([trace.value[inside], np.interp(ends, trace.x, trace.value)])
+            reached = [*self.scale.pixels(values), zero]
+            overlap = min(np.nanmax(reached), across[1]) - max(np.nanmin(reached), across[0])
+            deepest = max(deepest, float(overlap))
+        return deepest if deepest > HARDLY else 0.0
 
     def _shown(self, x: float) -> float:
         """The pixel of a position, kept within the strip."""

@@ -6,13 +6,14 @@ import math
 
 import numpy as np
 
-from app.gui.strips.content import Kind, number, titles, unit_of
+from app.gui.strips.content import Kind, number, of_unit_strain, titles, unit_of
 from app.units import format_value
 from app.words import tr
 from solver.fields import EnvelopePoint, PointValues, Readout, at, envelope_at
-from solver.model import UnitSystemName
 from solver.results import Results
 
+ROUNDING = 1e-15  # a strain this small is rounding and reads as 0
+BETWEEN = "    "  # the quantities; where a line ends if there is not room for all
 AT_JOINT = 1e-12  # of the member's length, as `solver.fields` has it
 
 
@@ -34,13 +35,12 @@ def envelope_readout(results: Results, x: float) -> str:
 
 def _line(results: Results, readout: Readout) -> str:
     sides = [side for side in (readout.left, readout.right) if side is not None]
-    system = results.project.display.unit_system
-    pairs = [_joint_pair(kind, [_value(kind, s, system) for s in sides], results) for kind in titles()]
+    pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in titles()]
     return _joined(results, readout.x, pairs)
 
 
 def _joined(results: Results, x: float, pairs: list[str]) -> str:
-    return "    ".join([_place(results, x), *pairs])
+    return BETWEEN.join([_place(results, x), *pairs])
 
 
 def _place(results: Results, x: float) -> str:
@@ -65,14 +65,20 @@ def _joint_pair(kind: Kind, texts: list[str], results: Results) -> str:
     return f"{titles()[kind]} {' | '.join(dict.fromkeys(texts))} {unit}".rstrip()
 
 
-def _value(kind: Kind, side: PointValues, system: UnitSystemName) -> str:
-    value = getattr(side, kind)
-    return tr("not checked") if math.isnan(value) else number(kind, value, system)
+def _value(kind: Kind, side: PointValues, results: Results) -> str:
+    return _number(kind, getattr(side, kind), results)
 
 
 def _span(kind: Kind, side: EnvelopePoint, results: Results) -> str:
-    system = results.project.display.unit_system
     if kind == "utilisation":
-        return tr("not checked") if math.isnan(side.utilisation) else number(kind, side.utilisation, system)
-    low, high = (number(kind, getattr(side, f"{kind}_{end}"), system) for end in ("min", "max"))
+        return _number(kind, side.utilisation, results)
+    low, high = (_number(kind, getattr(side, f"{kind}_{end}"), results) for end in ("min", "max"))
     return low if low == high else f"{low} … {high}"
+
+
+def _number(kind: Kind, value: float, results: Results) -> str:
+    """A value as the strips write it; what is only rounding is 0."""
+    if math.isnan(value):
+        return tr("not checked")
+    rounding = ROUNDING * of_unit_strain(results)[kind]
+    return number(kind, value if abs(value) > rounding else 0.0, results.project.display.unit_system)
