@@ -292,7 +292,7 @@ class TestReadout:
                 move_mouse(sheet, point_of(sheet, float(x)))
                 assert view.cursor.x == x
                 assert "joint" in sheet.readout
-                # Above, force or section step at each joint; further down they meet, and both sides are equal.
+                # Force or section step at each joint above; further down both sides are equal.
                 if shown.kind != "case":
                     assert ("|" in sheet.readout) == (x > 11.0)
                 box, text = sheet.readout_box, Fonts(sheet.font()).measure(sheet.readout, "plain")
