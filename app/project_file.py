@@ -10,6 +10,8 @@ import os
 from collections.abc import Mapping
 from pathlib import Path
 
+from msgspec import UNSET
+
 from app import strict_json
 from app.atomic import write_bytes
 from app.decode import convert, project_type, shown
@@ -65,9 +67,7 @@ def _identity_faults(value: Mapping[object, object]) -> tuple[Fault, ...]:
     """Another format or a newer version: said alone, since the rest of such a file means nothing to us."""
     found, version = value.get("format"), value.get("version")
     if found != FORMAT:
-        return (
-            Fault("format", "not_a_project", {"found": shown(found) if isinstance(found, str) else None}),
-        )
+        return (Fault("format", "not_a_project", {"found": None if found is UNSET else shown(found)}),)
     if isinstance(version, float) and version > VERSION:
         return (Fault("version", "newer_version", {"value": shown(version), "known": VERSION}),)
     return ()

@@ -150,10 +150,7 @@ def _section_faults(project: Project) -> Iterator[Fault]:
         section, place = getattr(segment, "section", None), ("segments", index, "section")
         if isinstance(section, TubeSection):
             yield from _wall_faults(section, place)
-        if (
-            isinstance(section, AreaSection)
-            and section.second_moment is UNSET is not section.second_moment_end
-        ):
+        if isinstance(section, AreaSection) and _ends_in_nothing(section):
             yield Fault(place_text(place), "missing_key", {"key": "second_moment"})
 
 

@@ -227,14 +227,15 @@ def verdict_detail(results: Results) -> str:
 
 def _nothing_made(results: Results) -> str:
     if not results.checks:
-        return tr("Enter allowable stresses or limits to have the member checked")
+        return tr("Nothing stresses the member and it has no limits: enter loads or limits to check")
     return trn("{count} check could not be made", "{count} checks could not be made", len(results.checks))
 
 
 def _counted(results: Results) -> str:
     """How many of the checks fail and how many were not made."""
     counts = Counter(check.status for check in results.checks)
-    fails = tr("{fail} of {count} checks fail").format(fail=counts["fail"], count=len(results.checks))
+    fails = trn("{count} of {{total}} checks fails", "{count} of {{total}} checks fail", counts["fail"])
+    fails = fails.format(total=len(results.checks))
     if not counts["not_made"]:
         return fails
     return f"{fails}, {tr('{count} not made').format(count=counts['not_made'])}"

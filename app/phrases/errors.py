@@ -14,8 +14,9 @@ from solver.model import Project, UnitSystemName
 
 ERRORS: Final[Mapping[type[InputError], str]] = {
     StiffnessContrast: later(
-        "{combination}: stiffnesses are so far apart that the digits do not suffice ({share} of the largest"
-        " force is left over at joint {joint}); fix what a very stiff spring holds or join tiny segments"
+        "{combination}: stiffnesses are so far apart that the digits do not suffice ({share} times the"
+        " largest force is left over at joint {joint}); look for springs or bedding that are very stiff or"
+        " very soft, and join tiny segments"
     ),
     BoundNotMet: later(
         "{combination}: the numerical error can be held to {bound} only, {tolerance} is wanted; look for"
@@ -31,6 +32,10 @@ _WHATS: Final[Mapping[str, str]] = {
     "displacement": later("a displacement"),
     "force": later("a force"),
     "energy": later("an energy"),
+    "stress": later("a stress"),
+    "allowable": later("an allowable stress"),
+    "utilisation": later("a utilisation"),
+    "mass": later("the mass"),
 }
 _IN: Final = later("{sentence} ({combinations})")
 

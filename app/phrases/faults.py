@@ -40,11 +40,11 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
     "wrong_type": (later("must be {expected}, is {value}"), ""),
     "not_greater_than": (later("must be greater than {bound}, is {value}"), ""),
     "below_least": (later("must be at least {bound}, is {value}"), ""),
-    "not_a_choice": (later("must be one of {choices}, is {value}"), ""),
+    "not_a_choice": (later("must be {choices}, is {value}"), ""),
     "empty_text": (later("must not be empty"), later("enter a name")),
     "too_few_segments": (later("a member has at least one segment, this has none"), later("add a segment")),
     "joint_count": (
-        later("a chain has one joint more than segments, here are {joints} joints and {segments} segments"),
+        later("a chain has one joint more than segments, here are joints: {joints}, segments: {segments}"),
         later("add or take out joints"),
     ),
     "duplicate_mark": (later("{value} is taken already, at {first}"), later("choose another")),
@@ -111,6 +111,8 @@ def fault_sentence(fault: Fault, system: UnitSystemName | None = None) -> str:
         remedy = _NEAREST
     quantity = quantity_at(fault.place) if system else None
     facts = {name: _fact(name, value, quantity, system) for name, value in fault.facts.items()}
+    if fault.rule == "not_finite":
+        facts["value"] = _cut(str(fault.facts["value"]))  # a numeral as written, no text
     sentence = "; ".join(tr(part).format_map(facts) for part in (rule, remedy) if part)
     place = place_words(fault.place) if system else fault.place
     return f"{place}: {sentence}" if place else sentence
@@ -122,6 +124,10 @@ def _fact(name: str, value: object, quantity: Quantity | None, system: UnitSyste
         return tr(_KINDS.get(value, value))
     if name == "expected" and isinstance(value, str):
         return tr(_TYPES.get(value, value))
+    if name == "found" and value is None:
+        return tr("not given")
+    if name == "choices" and isinstance(value, Sequence) and len(value) > 1:
+        return tr("one of {choices}").format(choices=shown(value))
     if name == "first" and isinstance(value, str):
         return place_words(value) if system else value
     if name in ("reason", "line", "column", "joints", "segments", "known", "count"):
@@ -145,7 +151,10 @@ def shown(value: object) -> str:
         return tr("a list")
     if isinstance(value, Sequence | frozenset | set) and not isinstance(value, str):
         return ", ".join(shown(part) for part in value) if _are_plain(value) else tr("a list")
-    text = _json(value)
+    return _cut(_json(value))
+
+
+def _cut(text: str) -> str:
     return text if len(text) <= _LONGEST else text[: _LONGEST - 1] + "…"
 
 

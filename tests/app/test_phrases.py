@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import re
+from pathlib import Path
 from typing import get_args
 
 import pytest
@@ -34,6 +36,7 @@ from solver.model import FixedSupport, JointLoad, SpringSupport
 from tests.members import Part, area, case, member
 
 MM = "mm-N-MPa"
+ROOT = Path(__file__).parents[2]
 
 # The facts of each rule, as `solver.faults` states them.
 FACTS: dict[str, dict[str, object]] = {
@@ -127,6 +130,26 @@ def test_long_values_are_cut() -> None:
     assert len(fault_sentence(Fault("title", "not_finite", {"value": "9" * 999}))) < 120
 
 
+@pytest.mark.parametrize(
+    ("text", "sentence"),
+    [
+        (b'{"version": 1}', 'the format must be "barwright-project", is not given; '),
+        (b'{"format": NaN}', 'the format must be "barwright-project", is not given; '),
+        (b'{"format": 5}', 'the format must be "barwright-project", is 5; '),
+        (b'{"format": "barwright-project", "version": 0}', "version: must be 1, is 0"),
+        (
+            b'{"format": "barwright-project", "version": 1, "joints": [], "segments": [{}]}',
+            ", here are joints: 0, segments: 1; ",
+        ),
+        (b'{"format": "barwright-project", "version": 1, "title": NaN}', "must be a finite number, is NaN; "),
+    ],
+)
+def test_a_fault_says_what_is_there(text: bytes, sentence: str) -> None:
+    with pytest.raises(ProjectFileError) as caught:
+        parse(text)
+    assert any(sentence in said for said in error_sentences(caught.value))
+
+
 def test_the_faults_of_a_file_come_as_sentences() -> None:
     with pytest.raises(ProjectFileError) as caught:
         parse(b'{"format": "barwright-project", "version": 1, "joints": [], "segments": [{"mark": 5}]}')
@@ -156,13 +179,23 @@ def test_places(place: tuple[str | int, ...], quantity: str | None, words: str) 
 def test_the_solver_errors_in_words() -> None:
     project = member([Part(1.0, area(1e-3))], {0: FixedSupport()})
     contrast = StiffnessContrast("Working", 1, 2e-4, 1e3)
-    assert "(2·10⁻⁷ of the largest" in error_sentences(contrast)[0]
+    assert "(2·10⁻⁷ times the largest" in error_sentences(contrast)[0]
     assert "at joint number 2" in error_sentences(contrast)[0]
     assert "at joint 1)" in error_sentences(contrast, project=project)[0]
     assert "to 3·10⁻⁵ only, 1·10⁻⁹ is wanted" in error_sentences(BoundNotMet("Working", 2.1e-5, 1e-9))[0]
     assert error_sentences(OutOfRange("Working", "stiffness"))[0].startswith("Working: a stiffness goes")
+    whole = StiffnessContrast("Working", 1, 1e3, 1e3)
+    assert "(1 times the largest force is left over" in error_sentences(whole)[0]
     unsolvable = NotSolvable((Fault("joints", "not_held"),), ("Working", "Lifted"))
     assert error_sentences(unsolvable)[0].endswith("a bedding (Working, Lifted)")
+
+
+def test_whatever_goes_out_of_range_has_words() -> None:
+    source = "".join(path.read_text() for path in (ROOT / "solver").glob("*.py"))
+    raised = set(re.findall(r'(?:OutOfRange|_require)\(.*?"(\w+)"', source))
+    assert {"stress", "mass"} < raised
+    for what in raised:
+        assert re.match("K: (an?|the) ", error_sentences(OutOfRange("K", what))[0]), what
 
 
 def test_an_error_of_ours_has_no_sentence() -> None:
@@ -265,10 +298,14 @@ def test_the_verdict_never_flatters(checks: tuple[Check, ...], line: str) -> Non
 def test_what_stands_under_the_verdict() -> None:
     assert verdict_detail(Checked(made("tension", 0.8))) == "Largest utilisation 0.80: segment C, Hot"
     assert verdict_detail(Checked(made("tension", 1.13), made("compression", 0.2), NOT_MADE_CHECK)) == (
-        "Largest utilisation 1.13: segment C, Hot. 1 of 3 checks fail, 1 not made"
+        "Largest utilisation 1.13: segment C, Hot. 1 of 3 checks fails, 1 not made"
     )
+    two = verdict_detail(Checked(made("tension", 1.13), made("compression", 1.2)))
+    assert two.endswith(". 2 of 2 checks fail")
     assert verdict_detail(Checked(NOT_MADE_CHECK)) == "1 check could not be made"
-    assert verdict_detail(Checked()).startswith("Enter allowable stresses")
+    assert verdict_detail(Checked()) == (
+        "Nothing stresses the member and it has no limits: enter loads or limits to have it checked"
+    )
 
 
 def test_the_numerical_error_is_not_called_more_than_it_is() -> None:
