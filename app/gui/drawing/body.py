@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from app.gui.drawing.placing import place
+from app.gui.drawing.placing import TIGHT, place
 from app.gui.drawing.shapes import Circle, Part, Text
 from app.gui.drawing.sketch import Sketch
 from solver.model import AreaSection, Segment, TubeSection
@@ -77,7 +77,7 @@ def _draw_marks(sketch: Sketch) -> None:
             along = 0.5 * (span[0] + span[1])
             wish = sketch.wish(segment.mark, along, Part("segment", index), face="strong")
             wishes.append(wish)
-    for label in place(wishes, 1, sketch.room):
+    for label in place(wishes, 1, sketch.room, TIGHT):
         _draw_mark(sketch, label.wish.text, label.wish.along, label.wish.part)
 
 

@@ -9,7 +9,7 @@ from itertools import groupby
 
 from PySide6.QtCore import QPointF, QRectF
 
-from app.gui.drawing.placing import Wish, place
+from app.gui.drawing.placing import TIGHT, Wish, place
 from app.gui.drawing.shapes import Part, Stroke, Text
 from app.gui.drawing.sketch import Sketch
 from app.gui.drawing.words import section_text
@@ -28,8 +28,8 @@ def draw_chain(sketch: Sketch) -> None:
         if sketch.holds(joint):
             along = sketch.along(joint)
             sketch.line((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK), width=1.6)
-    sketch.put(length_wishes(sketch), rows.lengths, "high")
-    sketch.put(section_wishes(sketch), rows.sections, "low")
+    sketch.put(length_wishes(sketch), rows.lengths, "high", TIGHT)
+    sketch.put(section_wishes(sketch), rows.sections, "low", TIGHT)
     for index in range(len(sketch.member.project.segments)):
         span = sketch.shown_span(index)
         if span is not None:
@@ -81,7 +81,7 @@ def draw_levels(sketch: Sketch, column: QRectF) -> None:
             size = sketch.place.fonts.measure(text, "small")
             middle = sketch.along(joint) - 0.5 * size.height()
             wishes.append(Wish(text, middle, size.height(), size.width(), Part("joint", joint)))
-    for label in place(wishes, 1, sketch.room):
+    for label in place(wishes, 1, sketch.room, TIGHT):
         left, foot = column.left() + 4.0, label.span[1]
         size = sketch.place.fonts.measure(label.wish.text, "small")
         box = QRectF(QPointF(left + LEVEL_GAP, label.span[0]), size)

@@ -20,7 +20,7 @@ from app.gui.drawing.chain import (
 )
 from app.gui.drawing.loads import draw_loads, lies_outside, load_wishes, no_loads_text
 from app.gui.drawing.member import Member
-from app.gui.drawing.placing import Span, Wish
+from app.gui.drawing.placing import TIGHT, Span, Wish
 from app.gui.drawing.shapes import Part, Picture, Text
 from app.gui.drawing.sketch import Rows, Sketch
 from app.gui.drawing.supports import draw_supports, hanging_wishes, hangs, support_of
@@ -33,7 +33,8 @@ from solver.sections import outline
 BAND = 17.0  # distributed loads at their largest, px
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
-LEAST_HALF = 13.0  # of the thickest section, before labels give way, px
+LEAST_HALF = 13.0  # of the thickest section, before labels of loads give way, px
+THINNEST = 6.0  # before lengths and sections do
 EDGE = 10.0  # upright, between sections and the edge of the sheet
 BEDDING = 6.0  # for the hatch along the member
 BESIDE = 6.0  # between labels of hanging supports and lengths
@@ -100,7 +101,7 @@ def _rows(sketch: Sketch, room: float) -> Rows:
     """As many rows of labels as leave the member enough room."""
     for most in range(MOST_ROWS, 0, -1):
         rows = _rows_with(sketch, room, most)
-        if rows.half >= LEAST_HALF:
+        if rows.half >= (LEAST_HALF if most > 1 else THINNEST):
             return rows
     return _rows_with(sketch, room, 0)
 
@@ -166,7 +167,7 @@ def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float, most: int) -> tu
     if not wishes:
         return ((foot, foot),)
     depth = max(w.depth for w in wishes)
-    one_row = len(sketch.placed(wishes, ((0.0, depth),))) == len(wishes)
+    one_row = len(sketch.placed(wishes, ((0.0, depth),), TIGHT)) == len(wishes)
     count = 1 if one_row or not most or sketch.place.axes.upright else 2
     return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
 

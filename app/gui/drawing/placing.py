@@ -12,7 +12,8 @@ from dataclasses import dataclass
 
 from app.gui.drawing.shapes import Part
 
-CLEAR = 9.0  # least pixels between two labels in a row
+CLEAR = 9.0  # least pixels between two labels in a row, so that they do not read as one
+TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart
 Span = tuple[float, float]
 
 
@@ -38,13 +39,13 @@ class Placed:
     span: Span
 
 
-def place(wishes: Iterable[Wish], rows: int, room: Span) -> list[Placed]:
+def place(wishes: Iterable[Wish], rows: int, room: Span, clear: float = CLEAR) -> list[Placed]:
     """Place what fits into `rows` rows between the two pixels of `room`."""
     taken: list[list[Span]] = [[] for _ in range(rows)]
     placed = []
     for wish in sorted(wishes, key=lambda w: (w.rank, w.along)):
         for row in range(rows):
-            span = _free_span(wish, taken[row], room)
+            span = _free_span(wish, taken[row], room, clear)
             if span is not None:
                 taken[row].append(span)
                 placed.append(Placed(wish, row, span))
@@ -52,19 +53,19 @@ def place(wishes: Iterable[Wish], rows: int, room: Span) -> list[Placed]:
     return placed
 
 
-def _free_span(wish: Wish, taken: Sequence[Span], room: Span) -> Span | None:
+def _free_span(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> Span | None:
     """The free span nearest to where the label wants to be, or None."""
     half = 0.5 * wish.extent
     if wish.slide == 0.0:
-        taken_by = [other for other in taken if _meets((wish.along - half, wish.along + half), other)]
+        taken_by = [other for other in taken if _meets((wish.along - half, wish.along + half), other, clear)]
         span = wish.along - half, wish.along + half
         return span if _inside(span, room) and not taken_by else None
     centres = [wish.along, room[0] + half, room[1] - half]
-    centres += [low - CLEAR - half for low, _ in taken] + [high + CLEAR + half for _, high in taken]
+    centres += [low - clear - half for low, _ in taken] + [high + clear + half for _, high in taken]
     for centre in sorted(centres, key=lambda c: abs(c - wish.along)):
         span = centre - half, centre + half
         near = abs(centre - wish.along) <= wish.slide + 1e-6
-        if near and _inside(span, room) and not any(_meets(span, other) for other in taken):
+        if near and _inside(span, room) and not any(_meets(span, other, clear) for other in taken):
             return span
     return None
 
@@ -73,5 +74,5 @@ def _inside(span: Span, room: Span) -> bool:
     return span[0] >= room[0] - 1e-6 and span[1] <= room[1] + 1e-6
 
 
-def _meets(span: Span, other: Span) -> bool:
-    return span[0] < other[1] + CLEAR - 1e-6 and other[0] < span[1] + CLEAR - 1e-6
+def _meets(span: Span, other: Span, clear: float) -> bool:
+    return span[0] < other[1] + clear - 1e-6 and other[0] < span[1] + clear - 1e-6

@@ -12,7 +12,7 @@ from typing import Literal, TypeAlias
 from PySide6.QtCore import QPointF, QRectF
 
 from app.gui.drawing.member import Member
-from app.gui.drawing.placing import Placed, Span, Wish, place
+from app.gui.drawing.placing import CLEAR, Placed, Span, Wish, place
 from app.gui.drawing.shapes import Fill, Ink, Part, Picture, Stroke, Target, Text
 from app.gui.fonts import Face
 from app.gui.sheet_layout import Place
@@ -153,15 +153,15 @@ class Sketch:
                 lines[-1] = longer
         return "\n".join(lines)
 
-    def placed(self, wishes: list[Wish], rows: tuple[Span, ...]) -> list[Placed]:
+    def placed(self, wishes: list[Wish], rows: tuple[Span, ...], clear: float = CLEAR) -> list[Placed]:
         """Places for labels in rows; those wider than a row (upright) are dropped like those without room."""
         widest = max((high - low for low, high in rows), default=0.0)
         fitting = [w for w in wishes if w.depth <= widest + 0.5]
-        return place(fitting, len(rows), self.room)
+        return place(fitting, len(rows), self.room, clear)
 
-    def put(self, wishes: list[Wish], rows: tuple[Span, ...], toward: Toward) -> None:
+    def put(self, wishes: list[Wish], rows: tuple[Span, ...], toward: Toward, clear: float = CLEAR) -> None:
         """Place labels in rows and write them small and quiet, on the side of the row that is named."""
-        for label in self.placed(wishes, rows):
+        for label in self.placed(wishes, rows, clear):
             self.text(label.wish, label.span, rows[label.row], toward)
 
     def text(

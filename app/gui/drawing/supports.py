@@ -106,14 +106,15 @@ def _label_end_spring(sketch: Sketch, joint: int, support: SpringSupport, along:
     """Beside the spring, outside the member; under its edge where the margin is too narrow for that."""
     wish = sketch.wish(_stiffness(sketch, support.stiffness), along, Part("support", joint))
     low, high = sketch.margin_beyond(joint)
-    top = sketch.rows.axis + 15.0
+    top, foot = sketch.rows.axis + 15.0, sketch.rows.sections[-1][1]
     if wish.extent > high - low:
         low, high = sketch.room
         top = max(top, sketch.rows.axis + edge_at(sketch, joint) + 3.0)
+        foot = sketch.rows.under_label[0]
     along = min(max(along, low + 0.5 * wish.extent), high - 0.5 * wish.extent)
-    if top + wish.depth <= sketch.rows.under_label[0]:
-        span = along - 0.5 * wish.extent, along + 0.5 * wish.extent
-        sketch.text(wish, span, (top, top + wish.depth))
+    span, across = (along - 0.5 * wish.extent, along + 0.5 * wish.extent), (top, top + wish.depth)
+    if across[1] <= foot and sketch.is_free(wish, span, across, "middle"):
+        sketch.text(wish, span, across)
 
 
 def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:
