@@ -304,7 +304,7 @@ def test_what_stands_under_the_verdict() -> None:
     assert two.endswith(". 2 of 2 checks fail")
     assert verdict_detail(Checked(NOT_MADE_CHECK)) == "1 check could not be made"
     assert verdict_detail(Checked()) == (
-        "Nothing stresses the member and it has no limits: enter loads or limits to have it checked"
+        "Nothing stresses the member and it has no limits: enter loads or limits to check"
     )
 
 
