@@ -108,6 +108,8 @@ class Showing(QObject):
         if not self._late.isActive():  # a burst of edits does not put the mark off
             self._late.start()
         self.solver.request(project)
+        if self._document.has_drafts:  # nothing that comes will be current, so there is nothing to wait for
+            self._show()
 
     def begin(self) -> None:
         """Draw the member at once; ask the solver once it is on the screen, as its libraries take a while."""

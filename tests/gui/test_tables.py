@@ -416,6 +416,17 @@ def test_a_draft_that_has_become_valid_is_taken_in_by_enter(table, pane, documen
     assert not document.snapshot.drafts
 
 
+def test_a_draft_of_a_load_says_of_which_case(table, pane, document):
+    enter(table, 1, "load_start", "abc")
+    pane.tabs.setCurrentIndex(1)
+    enter(pane.views["joints"], 1, "force", "abc")
+    names = [draft.name for draft in document.snapshot.drafts.values()]
+    assert names == ["Load at start of A, Dead", "Force along +x of 1, Dead"]
+    pane.on_case_picked(1)
+    pane.tabs.setCurrentIndex(0)
+    assert text_at(table, 1, "load_start") == "0"
+
+
 def test_a_load_typed_before_there_is_a_case_waits_for_the_first_one(qtbot, qapp, view):
     document = Document(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}))
     pane = TablesPane(document, view, LIGHT)

@@ -78,6 +78,14 @@ def test_what_is_not_taken_in_makes_the_results_out_of_date(qtbot, window, table
     assert not window.sheet.notice
 
 
+def test_a_paste_that_is_taken_in_only_in_part_is_out_of_date_at_once(qapp, window, table):
+    qapp.clipboard().setText("900\nabc")
+    go_to(table, 1, "length")
+    window.actions_by_key["paste"].trigger()
+    assert "out of date" in window.status.solver.text()
+    assert window.sheet.notice
+
+
 def test_a_result_on_its_way_is_not_shown_as_current(qtbot, window, table):
     enter(table, 1, "length", "900")
     assert not window.showing.current

@@ -31,6 +31,11 @@ class Sight:
         """The case whose loads are edited."""
         return None if self.case is None else project.load_cases[self.case]
 
+    @property
+    def case_place(self) -> Place:
+        """The edited case as the end of a cell's place; −1 for none."""
+        return ("load_cases", -1 if self.case is None else self.case)
+
 
 @dataclass(frozen=True, slots=True)
 class Figures:
@@ -84,6 +89,7 @@ class Column:
     width: int = 9  # in digits
     figure: Callable[[int, Figures, Sight], str] | None = None
     bar: Callable[[int, Figures], tuple[float, float] | None] | None = None  # utilisation, sign of the stress
+    of_case: bool = False  # the cell belongs to the load case that is edited
     named_by_user: bool = False  # the title is the user's own word
 
     @property

@@ -10,9 +10,8 @@ from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.places import Place
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
-from app.gui.tables.loads import case_place, needed_case
+from app.gui.tables.loads import needed_case
 from app.support_entry import parse_support, support_entry, support_text
 from app.units import Quantity, entry_text, format_value
 from app.words import later
@@ -64,10 +63,7 @@ def _load(key: str, title: str, quantity: Quantity) -> Column:
         case, mark = needed_case(project, sight).name, project.joints[index].mark
         return Change(edits.set_joint_load(project, case, mark, key, value))
 
-    def place(index: int, sight: Sight) -> Place:
-        return ("joints", index, key, *case_place(sight))
-
-    return Column(key, title, show, entry, put, place=place, quantity=quantity, optional=True, width=12)
+    return Column(key, title, show, entry, put, quantity=quantity, optional=True, width=12, of_case=True)
 
 
 def _figure(name: str, quantity: Quantity) -> Column:

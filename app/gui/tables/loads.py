@@ -8,7 +8,6 @@ from msgspec import UNSET, UnsetType
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.places import Place
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.materials import name_of, put_name
 from app.gui.tables.reasons import NotTaken
@@ -23,11 +22,6 @@ def needed_case(project: Project, sight: Sight) -> LoadCase:
     if case is None:
         raise NotTaken(tr("add a load case in the Loads table first"))
     return case
-
-
-def case_place(sight: Sight) -> Place:
-    """The edited case as the end of a cell's place."""
-    return ("load_cases", -1 if sight.case is None else sight.case)
 
 
 def _case_name(project: Project, sight: Sight) -> str:
@@ -99,7 +93,7 @@ def _number(kind: str, key: str, title: str, quantity: Quantity, follows: str = 
 
     def put(project: Project, index: int, text: str, sight: Sight) -> Change:
         number = parse_entry(text, quantity, sight.system) if text.strip() else UNSET
-        return Change(edits.set_value(project, (*case_place(sight), kind, index, key), number))
+        return Change(edits.set_value(project, (*sight.case_place, kind, index, key), number))
 
     return Column(
         key,
@@ -117,7 +111,7 @@ def _reference(kind: str, key: str, title: str) -> Column:
     """A column with the mark of what is loaded."""
 
     def put(project: Project, index: int, text: str, sight: Sight) -> Change:
-        place = (*case_place(sight), kind, index, key)
+        place = (*sight.case_place, kind, index, key)
         return Change(edits.set_value(project, place, text.strip()))
 
     return Column(
@@ -141,10 +135,10 @@ def _records(kind: str, key: str, title: str, columns: tuple[Column, ...], addin
         rows=rows,
         columns=lambda _project, _sight: columns,
         row_name=row_name,
-        records=lambda sight: (*case_place(sight), kind),
+        records=lambda sight: (*sight.case_place, kind),
         adding=adding,
         delete=lambda project, indexes, sight: edits.remove_records(
-            project, (*case_place(sight), kind), indexes
+            project, (*sight.case_place, kind), indexes
         ),
         delete_name=later("Delete loads"),
     )
@@ -152,12 +146,12 @@ def _records(kind: str, key: str, title: str, columns: tuple[Column, ...], addin
 
 def _add_segment_load(project: Project, text: str, sight: Sight) -> Change:
     needed_case(project, sight)
-    return Change(edits.add_record(project, (*case_place(sight), "segment_loads"), SegmentLoad(text.strip())))
+    return Change(edits.add_record(project, (*sight.case_place, "segment_loads"), SegmentLoad(text.strip())))
 
 
 def _add_joint_load(project: Project, text: str, sight: Sight) -> Change:
     needed_case(project, sight)
-    return Change(edits.add_record(project, (*case_place(sight), "joint_loads"), JointLoad(text.strip())))
+    return Change(edits.add_record(project, (*sight.case_place, "joint_loads"), JointLoad(text.strip())))
 
 
 SEGMENT_LOADS = _records(

@@ -248,6 +248,4 @@ class TableModel(RowsModel):
         """The name of the undo step that an edit of the cell makes."""
         if self.is_adding(index.row()) and self.table.adding is not None:
             return tr(self.table.adding.name)
-        row = self.table.row_name(self._document.project, self.record_of(index.row()), self._sight)
-        title = self._columns[index.column()].words
-        return tr("{column} of {row}").format(column=title, row=row)
+        return self.cell_name(self._document.project, self.record_of(index.row()), index.column())

@@ -64,7 +64,7 @@ class Block:
         try:
             change = wanted.put(self._project, self._model.record_of(row), text, self._model.sight)
         except TypingError as error:
-            name = self._cell_name(row, column)
+            name = self._model.cell_name(self._project, self._model.record_of(row), column)
             self._drafts[self._place(row, column)] = Draft(text, reason_of(error), name)
         else:
             self._follow(change.project)
@@ -82,11 +82,6 @@ class Block:
         model = self._model
         records = model.table.rows(self._project, model.sight)
         return (*model.table.records(model.sight), model.record_of(len(records)), model.columns[0].key)
-
-    def _cell_name(self, row: int, column: int) -> str:
-        model = self._model
-        name = model.table.row_name(self._project, model.record_of(row), model.sight)
-        return tr("{column} of {row}").format(column=model.columns[column].words, row=name)
 
     def _add(self, texts: Mapping[int, str | None]) -> bool:
         """Add a record by the text in the column that can; whether there is one now."""

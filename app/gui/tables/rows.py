@@ -12,6 +12,7 @@ from PySide6.QtCore import QAbstractTableModel, QModelIndex, QObject, QPersisten
 from app.gui.document import Document, Draft, Snapshot
 from app.gui.places import Place
 from app.gui.tables.column import Column, Sight, Table
+from app.words import tr
 from solver.model import Project
 
 Index = QModelIndex | QPersistentModelIndex
@@ -130,10 +131,20 @@ class RowsModel(QAbstractTableModel):
 
     def cell_place(self, record: int, column: int) -> Place:
         """The place of a record's cell, also of a record that is not shown yet."""
-        own = self._columns[column].place
-        if own is not None:
-            return own(record, self._sight)
-        return (*self.table.records(self._sight), record, self._columns[column].key)
+        wanted = self._columns[column]
+        if wanted.place is not None:
+            return wanted.place(record, self._sight)
+        case = self._sight.case_place if wanted.of_case else ()
+        return (*self.table.records(self._sight), record, wanted.key, *case)
+
+    def cell_name(self, project: Project, record: int, column: int) -> str:
+        """A record's cell in words, with the load case it belongs to."""
+        words = self._columns[column].words
+        row = self.table.row_name(project, record, self._sight)
+        case = self._sight.load_case(project) if self._columns[column].of_case else None
+        if case is None:
+            return tr("{column} of {row}").format(column=words, row=row)
+        return tr("{column} of {row}, {case}").format(column=words, row=row, case=case.name)
 
     def draft(self, index: Index) -> Draft | None:
         """What was typed into the cell and not taken in."""

@@ -15,9 +15,8 @@ from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.places import Place
 from app.gui.tables.column import Change, Figures, Sight
-from app.gui.tables.loads import case_place, needed_case
+from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
 from app.section_entry import parse_section
@@ -235,11 +234,6 @@ def put_heat(project: Project, index: int, text: str, sight: Sight) -> Change:
     case, mark = needed_case(project, sight).name, project.segments[index].mark
     heated = edits.set_segment_load(project, case, mark, HEAT.start, start)
     return Change(edits.set_segment_load(heated, case, mark, HEAT.end, end))
-
-
-def at_case(key: str) -> Callable[[int, Sight], Place]:
-    """The place of a cell that belongs to the edited case."""
-    return lambda index, sight: ("segments", index, key, *case_place(sight))
 
 
 # Results
