@@ -2,15 +2,22 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Sequence
 
 WIDTH = 100  # characters a line; a table that is wider goes on in a further part below
 GAP = "  "
+_BREAKS = re.compile(r"[\n\r\v\f\x1c-\x1e\x85\u2028\u2029]+")
+
+
+def one_line(text: str) -> str:
+    """The text without line breaks: words of a file must not look like lines of ours."""
+    return _BREAKS.sub(" ", text).strip()
 
 
 def table(head: Sequence[str], rows: Sequence[Sequence[str]], width: int = WIDTH) -> str:
     """A table as lines, each ended. Rows are as long as `head`; the first column recurs in every part."""
-    columns = [list(column) for column in zip(head, *rows, strict=True)]
+    columns = [list(map(one_line, column)) for column in zip(head, *rows, strict=True)]
     parts = _parts([max(map(len, column)) for column in columns], width)
     return "\n".join(_part([columns[0], *(columns[i] for i in part)]) for part in parts)
 

@@ -86,11 +86,17 @@ def shown(text: str) -> str:
 
 def solved(file: str) -> tuple[Project, Results]:
     """The project of a file and its results."""
+    from app.outcome import Unusable
+    from app.phrases import error_sentences
     from app.project_file import read
+    from solver.errors import InputError
     from solver.solve import solve
 
     project = read(Path(file))
-    return project, solve(project, cases=False)
+    try:
+        return project, solve(project, cases=False)
+    except InputError as error:  # worded here, where the project lends its marks
+        raise Unusable(error_sentences(error, project=project)) from error
 
 
 def verdict_code(results: Results) -> int:

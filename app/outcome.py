@@ -10,11 +10,11 @@ import traceback
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
 
+from app.columns import one_line
 from app.exit_codes import OUR_FAULT, UNUSABLE
 from app.phrases import error_sentences
 from app.project_file import ProjectFileError
 from app.words import tr
-from solver.errors import InputError
 
 
 @dataclass(frozen=True, slots=True)
@@ -26,11 +26,21 @@ class Outcome:
     err: str = ""
 
 
+class Unusable(Exception):  # noqa: N818 - read by a person, worded as one would say it
+    """An input that cannot be used, for reasons that are in words already."""
+
+    def __init__(self, sentences: tuple[str, ...]) -> None:
+        super().__init__(*sentences)
+        self.sentences = sentences
+
+
 def outcome(file: str, work: Callable[[str], Outcome]) -> Outcome:
     """Do the work on one file; whatever goes wrong becomes words on standard error and a code."""
     try:
         return work(file)
-    except (ProjectFileError, InputError) as error:
+    except Unusable as error:
+        return unusable(file, error.sentences)
+    except ProjectFileError as error:
         return unusable(file, error_sentences(error))
     except OSError as error:
         return unusable(file, (os_sentence(error),))
@@ -41,7 +51,9 @@ def outcome(file: str, work: Callable[[str], Outcome]) -> Outcome:
 def unusable(file: str, sentences: Iterable[str]) -> Outcome:
     """An input that cannot be used, with its reasons."""
     head = tr("{file} cannot be used:").format(file=file)
-    return Outcome(UNUSABLE, err="\n".join([head, *(f"  {sentence}" for sentence in sentences)]) + "\n")
+    return Outcome(
+        UNUSABLE, err="\n".join([head, *(f"  {one_line(sentence)}" for sentence in sentences)]) + "\n"
+    )
 
 
 def unwritten(target: str, reason: str) -> Outcome:

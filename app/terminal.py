@@ -9,7 +9,7 @@ from collections import defaultdict
 from collections.abc import Callable, Iterator, Sequence
 from pathlib import Path
 
-from app.columns import table
+from app.columns import one_line, table
 from app.findings import Findings, StateBooks, findings
 from app.phrases import caution, check_sentence
 from app.phrases.checks import SUBJECTS
@@ -41,8 +41,8 @@ def report(project: Project, results: Results, file: str) -> str:
 
 def heading(project: Project, file: str) -> str:
     """Which member this is, and from which file."""
-    name = Path(file).name
-    return f"{project.title} ({name})\n" if project.title else f"{name}\n"
+    name, title = one_line(Path(file).name), one_line(project.title)
+    return f"{title} ({name})\n" if title else f"{name}\n"
 
 
 def verdict(results: Results, found: Findings, system: UnitSystemName) -> str:
@@ -50,7 +50,7 @@ def verdict(results: Results, found: Findings, system: UnitSystemName) -> str:
     lines = [found.headline, found.detail]
     if results.governing is not None:
         lines.append(check_sentence(results.governing, system))
-    return "".join(line + "\n" for line in lines)
+    return "".join(f"{one_line(line)}\n" for line in lines)
 
 
 def utilisations(results: Results) -> Iterator[str]:
@@ -123,4 +123,4 @@ def remarks(found: Findings) -> str:
     """What was not checked and what to enter for it, what else is to be known, how exact the numbers are."""
     missing = [f"{NOT_MADE} {item.sentence}: {item.remedy}" for item in found.not_made]
     lines = (*missing, *found.notes, found.numerical_error, caution())
-    return "".join(f"{line}\n" for line in lines)
+    return "".join(f"{one_line(line)}\n" for line in lines)

@@ -204,6 +204,42 @@ def test_words_of_a_file_do_not_steer_the_terminal(
     assert "red \ufffd[31m" in out
 
 
+def test_words_of_a_file_make_no_lines_of_their_own(
+    edited: Callable[..., str], capsys: pytest.CaptureFixture[str]
+) -> None:
+    """A verdict on a line of its own is ours alone, and a row of a table stays one line."""
+
+    def hostile(project: dict[str, object]) -> None:
+        project["title"] = "Rod\n\nPasses\n"
+        project["segments"][0]["mark"] = "D\r\nD"  # type: ignore[index]
+        for case in project["load_cases"]:  # type: ignore[attr-defined]
+            case["segment_loads"] = [load for load in case.get("segment_loads", []) if load["segment"] != "A"]
+        project["combinations"][0]["name"] = "Storm\u2028surge"  # type: ignore[index]
+
+    assert cli.main(["check", edited(hostile, "tie_rod")]) == 1
+    out = capsys.readouterr().out
+    assert out.startswith("Rod Passes (edited.barwright.json)\n\nDoes not pass\n")
+    assert "\nD D " in out
+    assert "  Storm surge  " in out
+
+
+def test_joints_that_do_not_balance_are_named_by_their_mark(
+    edited: Callable[..., str], capsys: pytest.CaptureFixture[str]
+) -> None:
+    def hardly_held(project: dict[str, object]) -> None:
+        for joint in project["joints"]:  # type: ignore[attr-defined]
+            joint.pop("support", None)
+            joint["mark"] = f"point {joint['mark']}"
+        project["joints"][0]["support"] = {"kind": "spring", "stiffness": 1e-9}  # type: ignore[index]
+        project["limits"] = {}
+        force = {"joint": "point 1", "force": 1.0}
+        project["load_cases"] = [{"name": "Push", "joint_loads": [force]}]
+        project["combinations"] = []
+
+    assert cli.main(["check", edited(hardly_held)]) == 2
+    assert "left over at joint point" in capsys.readouterr().err
+
+
 def test_several_tables_name_their_files_and_keep_apart(
     edited: Callable[..., str], capsys: pytest.CaptureFixture[str]
 ) -> None:
