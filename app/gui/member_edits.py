@@ -36,7 +36,7 @@ class MemberEdits(QObject):
         try:
             project = edit(self._document.project)
         except TypingError as error:
-            self.told.emit(reason_of(error))
+            self.told.emit(reason_of(error, self._document.project.display.unit_system))
         else:
             self._document.commit(project, name)
 

@@ -599,3 +599,17 @@ def test_qt_is_told_the_truth_about_rows_and_columns(qapp, steps):
             records = model.table.rows(document.project, model.sight)
             assert model.rowCount() == len(records) + (model.table.adding is not None)
     del testers
+
+
+def test_reasons_speak_the_words_and_units_of_the_tables(table, pane, document):
+    enter(table, 1, "length", "-5")
+    enter(table, 2, "mark", "A")
+    pane.tabs.setCurrentIndex(2)
+    loads = pane.views["joint_loads"]
+    enter(loads, 0, "joint", "nine")
+    reasons = [draft.reason for draft in document.snapshot.drafts.values()]
+    assert reasons == [
+        "must be greater than 0, is −5 mm",
+        '"A" is taken already, at segment 1, mark; choose another',
+        'there is no joint "nine"; add it or choose one that exists',
+    ]

@@ -181,7 +181,8 @@ class TableModel(RowsModel):
         try:
             change = self.put(index, text)
         except TypingError as error:
-            self._document.set_preview(Preview(None, reason_of(error)))
+            place = self.place(index.row(), index.column())
+            self._document.set_preview(Preview(None, reason_of(error, self._sight.system, place)))
         else:
             self._document.set_preview(Preview(change.project))
 
@@ -237,7 +238,8 @@ class TableModel(RowsModel):
         try:
             change = self.put(index, text)
         except TypingError as error:
-            self._document.commit_draft(place, Draft(text, reason_of(error), name), name)
+            reason = reason_of(error, self._sight.system, place)
+            self._document.commit_draft(place, Draft(text, reason, name), name)
         else:
             self._document.commit(change.project, name, settled=(place,))
             if change.note:

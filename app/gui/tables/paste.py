@@ -65,7 +65,9 @@ class Block:
             change = wanted.put(self._project, self._model.record_of(row), text, self._model.sight)
         except TypingError as error:
             name = self._model.cell_name(self._project, self._model.record_of(row), column)
-            self._drafts[self._place(row, column)] = Draft(text, reason_of(error), name)
+            place = self._place(row, column)
+            reason = reason_of(error, self._model.sight.system, place)
+            self._drafts[place] = Draft(text, reason, name)
         else:
             self._follow(change.project)
             self._drafts.pop(self._place(row, column), None)
@@ -93,7 +95,8 @@ class Block:
         try:
             self._follow(self._grown(adding, text))
         except TypingError as error:
-            self._refused.append(Draft(text, reason_of(error), tr(adding.name)))
+            reason = reason_of(error, self._model.sight.system, self._adding_place())
+            self._refused.append(Draft(text, reason, tr(adding.name)))
             return False
         return True
 

@@ -5,7 +5,10 @@ from __future__ import annotations
 from app.edits import EditError
 from app.entry import EntryError
 from app.phrases import fault_sentence
+from app.places import place_words
 from app.support_entry import SupportError
+from solver.faults import Fault, Place, place_text
+from solver.model import UnitSystemName
 
 
 class NotTaken(ValueError):  # noqa: N818 - its message is the sentence beside the cell
@@ -15,8 +18,24 @@ class NotTaken(ValueError):  # noqa: N818 - its message is the sentence beside t
 TypingError = (EntryError, EditError, SupportError, NotTaken)
 
 
-def reason_of(error: Exception) -> str:
-    """The sentence beside the cell."""
+def reason_of(error: Exception, system: UnitSystemName, place: Place = ()) -> str:
+    """The sentence beside the cell at `place`, in the words and units of the tables.
+
+    What is wrong with the cell's own record is said without saying where: the cell is named beside it.
+    """
     if isinstance(error, EditError):
-        return "; ".join(fault_sentence(fault) for fault in error.faults)
+        record = place_text(_record_of(place))
+        return "; ".join(_sentence(fault, system, record) for fault in error.faults)
     return str(error)
+
+
+def _sentence(fault: Fault, system: UnitSystemName, record: str) -> str:
+    sentence = fault_sentence(fault, system)
+    own = record and fault.place.startswith(record)
+    return sentence.removeprefix(f"{place_words(fault.place)}: ") if own else sentence
+
+
+def _record_of(place: Place) -> Place:
+    """The place up to its last index."""
+    last = max((i for i, step in enumerate(place) if isinstance(step, int)), default=-1)
+    return place[: last + 1]
