@@ -45,7 +45,9 @@ def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
     try:
         results = solve(project, cancelled=cancelled)
     except InputError as error:
-        return Outcome(project, None, None, tuple(error_sentences(error)), time.perf_counter() - start)
+        return Outcome(
+            project, None, None, error_sentences(error, project=project), time.perf_counter() - start
+        )
     seconds = time.perf_counter() - start
     return Outcome(project, results, findings(results, project.display.unit_system), (), seconds)
 

@@ -15,7 +15,7 @@ from app.gui.outcome import (
 )
 from app.gui.view import Shown
 from solver.errors import Cancelled
-from solver.model import Combination, FixedSupport
+from solver.model import Combination, FixedSupport, JointLoad, SpringSupport
 from tests.members import Part, case, member, round_bar
 
 
@@ -67,6 +67,12 @@ def test_a_member_that_is_not_held_has_problems_and_no_results():
     assert outcome.results is None
     assert outcome.problems
     assert figures_of(None, Shown("envelope"), current=False).mass is None
+
+
+def test_a_joint_that_does_not_balance_is_named_by_its_mark():
+    push = case("Push", on_joints=[JointLoad(joint="1", force=1.0)])
+    hardly_held = member([Part(1.0, round_bar(0.04))], {0: SpringSupport(stiffness=1e-9)}, [push])
+    assert "left over at joint 1)" in compute(hardly_held, never).problems[0]
 
 
 def test_a_cancelled_solve_says_so():
