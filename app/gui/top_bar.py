@@ -9,6 +9,7 @@ from PySide6.QtGui import QAction
 from PySide6.QtWidgets import QComboBox, QFrame, QHBoxLayout, QLabel, QSizePolicy, QToolButton, QWidget
 
 from app.gui.actions import COMMANDS, SEPARATOR
+from app.gui.choice import Choice
 from app.gui.view import Shown
 from app.units import SYSTEM_NAMES
 from app.words import later, tr
@@ -29,7 +30,7 @@ def shown_text(shown: Shown) -> str:
     return shown.name if shown.kind == "combination" else tr("Unloaded")
 
 
-class Picker(QComboBox):
+class Picker(Choice):
     """A choice among values; tells only what a person picks."""
 
     picked = Signal(object)

@@ -4,8 +4,8 @@ import json
 import threading
 
 import pytest
-from PySide6.QtCore import QMimeData, QPointF, Qt, QUrl
-from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette
+from PySide6.QtCore import QMimeData, QPoint, QPointF, Qt, QUrl
+from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import (
     QAbstractButton,
@@ -247,6 +247,33 @@ def test_laying_the_sheet_upright_is_a_step_of_the_project(window):
     QTest.keyClick(picker, KEY.Key_End)
     assert window.document.project.display.layout == "vertical"
     assert window.document.undo_name == "Lay"
+
+
+def wheel(qapp, widget, turn):
+    """Turn the mouse wheel over a widget."""
+    point, none = QPointF(5, 5), Qt.KeyboardModifier.NoModifier
+    event = QWheelEvent(
+        point,
+        QPointF(widget.mapToGlobal(point.toPoint())),
+        QPoint(),
+        QPoint(0, turn),
+        Qt.MouseButton.NoButton,
+        none,
+        Qt.ScrollPhase.NoScrollPhase,
+        False,
+    )
+    qapp.sendEvent(widget, event)
+
+
+@pytest.mark.parametrize("of", ["case", "units"])
+def test_the_wheel_changes_a_picker_only_while_it_has_the_keyboard(qapp, window, table, of):
+    picker = window.tables.case_picker if of == "case" else window.top_bar.units_picker
+    table.setFocus()
+    wheel(qapp, picker, -120)
+    assert picker.currentIndex() == 0
+    picker.setFocus()
+    wheel(qapp, picker, -120)
+    assert picker.currentIndex() == 1
 
 
 # Member commands

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 from PySide6.QtCore import QSignalBlocker, Qt, Signal
-from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxLayout, QWidget
 
+from app.gui.choice import Choice
 from app.gui.document import Document, Snapshot
 from app.gui.tables.column import Figures, Sight, Table
 from app.gui.tables.combinations import COMBINATIONS
@@ -44,7 +45,7 @@ class TablesPane(QWidget):
         self._view = view
         self.views: dict[str, TableView] = {}
         self._sight = Sight(document.project.display.unit_system, 0 if document.project.load_cases else None)
-        self.case_picker = QComboBox()
+        self.case_picker = Choice()
         self.tabs = self._make_tabs(theme)
         self._lay_out()
         self.on_document_changed(document.snapshot)

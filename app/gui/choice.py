@@ -1,0 +1,25 @@
+"""A choice from a list that the mouse wheel does not change in passing.
+
+Scrolling over the window must never edit: not the units, and not the load case that the tables write to.
+"""
+
+from __future__ import annotations
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QWheelEvent
+from PySide6.QtWidgets import QComboBox, QWidget
+
+
+class Choice(QComboBox):
+    """Takes the wheel only while it has the keyboard."""
+
+    def __init__(self, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
+
+    def wheelEvent(self, event: QWheelEvent) -> None:
+        """Leave it to what lies below."""
+        if self.hasFocus():
+            super().wheelEvent(event)
+        else:
+            event.ignore()
