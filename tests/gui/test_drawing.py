@@ -8,15 +8,21 @@ from itertools import combinations
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
+from msgspec import structs
 from PySide6.QtCore import QPointF, QRectF
+from PySide6.QtGui import QFont, QPolygonF
 
 from app.gui.drawing.layout import lay_out
 from app.gui.drawing.member import Member
 from app.gui.drawing.placing import Wish, place
 from app.gui.drawing.shapes import Part, Picture, Text
 from app.gui.drawing.tips import tip
+from app.gui.fonts import Fonts
+from app.gui.ruler import Ruler
+from app.gui.sheet_layout import Place, sheet_layout
 from app.gui.view import Shown
-from app.samples import read_sample
+from app.samples import names, read_sample
+from app.units import SYSTEM_NAMES
 from solver.model import Project
 from solver.sections import outline
 from tests.gui.sheets import (
@@ -76,6 +82,45 @@ class TestLabels:
         assert len(forces) == 3
         marks = {t.text for t in shown if t.part is not None and t.part.kind == "segment"}
         assert marks == {segment.mark for segment in project.segments}
+
+    @pytest.mark.parametrize("units", SYSTEM_NAMES)
+    @pytest.mark.parametrize("name", names())
+    def test_no_text_touches_a_hatch_nor_the_edge(self, name, units):
+        project = read_sample(name)
+        project = structs.replace(project, display=structs.replace(project.display, units=units))
+        for upright in (False, True):
+            shown = picture(project, upright=upright)
+            hatches = [QPolygonF(stroke.points).boundingRect() for stroke in shown.strokes if stroke.pairs]
+            for text in shown.texts:
+                assert text.rect.left() >= 4.0
+                near = text.rect.adjusted(-2, 0, 2, 0)
+                assert not any(near.intersects(hatch) for hatch in hatches), text.text
+
+    @BOTH_WAYS
+    def test_an_envelope_says_in_the_corner_where_its_loads_are(self, upright):
+        for name in names():
+            member = Member.of(read_sample(name), Shown("envelope"))
+            place_ = drawing_place(member, SIZES[0], upright=upright)
+            shown = lay_out(member, place_)
+            (note,) = [t for t in shown.texts if t.text.startswith("loads:")]
+            assert (note.rect.left(), note.rect.top()) == (place_.rect.left() + 6, place_.rect.top() + 4)
+            assert note.ink == "quiet"
+            assert overlapping(shown.texts) == []
+            bodies = [s for s in shown.strokes if s.part is not None and s.part.kind == "segment"]
+            assert not any(QPolygonF(s.points).boundingRect().intersects(note.rect) for s in bodies)
+
+    @pytest.mark.parametrize("size", [1.0, 1.5])
+    def test_forces_keep_their_values_upright_at_large_fonts(self, size):
+        font = QFont()
+        font.setPointSizeF(size * font.pointSizeF())
+        project = read_sample("quay_pile")
+        project = structs.replace(project, display=structs.replace(project.display, units="in-lbf-psi"))
+        member = drawn(project)
+        layout = sheet_layout(900, 473, True, Fonts(font).text_height)
+        ruler = Ruler.whole(member.position[-1], layout.begin, layout.end)
+        shown = lay_out(member, Place(layout.drawing, ruler, layout.axes, Fonts(font)))
+        assert len([t for t in shown.texts if t.part is not None and t.part.kind == "force"]) == 3
+        assert overlapping(shown.texts) == []
 
     def test_the_stretch_across_is_said(self):
         shown = picture(read_sample("tie_rod"))

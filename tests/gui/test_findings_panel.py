@@ -13,7 +13,9 @@ from pytestqt.qtbot import QtBot
 from app.findings import Band, findings
 from app.gui.findings.content import blocks, problem_rows, rows
 from app.gui.findings.panel import FindingsPanel
-from app.gui.findings.scale import StressScale
+from app.gui.findings.row import PAD
+from app.gui.findings.scale import SCALE_HEIGHT, StressScale
+from app.gui.fonts import Fonts
 from app.gui.theme import DARK, LIGHT
 from app.gui.view import Selection, Shown, View
 from app.samples import read_sample
@@ -201,3 +203,22 @@ def _colours(panel: FindingsPanel) -> set[str]:
         for x in range(image.width())
         for y in range(0, image.height(), 2)
     }
+
+
+@pytest.mark.parametrize("size", [1.0, 1.5, 2.0])
+def test_rows_grow_with_the_font_and_keep_short_marks_whole(qtbot, panel, size):
+    font = panel.font()
+    font.setPointSizeF(size * font.pointSizeF())
+    panel.setFont(font)
+    pile = read_sample("quay_pile")
+    panel.show_findings(findings(solve(pile), pile.display.unit_system), (), True)
+    fonts = Fonts(panel.font())
+    for row in panel.rows:
+        assert row.row is not None
+        assert row._mark(row.row) == row.row.mark
+        lines = fonts.measure(
+            fonts.wrapped(row.row.text, "plain", row._text_rect(row.width()).width()), "plain"
+        )
+        numbers = fonts.measure("0", "small").height() if row.row.band_named else 0.0
+        scale = SCALE_HEIGHT if row.row.band is not None else 0.0
+        assert row.height() >= 2 * PAD + lines.height() + scale + numbers
