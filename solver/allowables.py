@@ -1,11 +1,14 @@
 """Stresses against allowable stresses, as arrays over all states and segments.
 
-A stress has a sign, and so a check, where it exceeds `NO_STRESS` of the largest in its state.
+A stress has a sign, and so a check, where it exceeds `NO_STRESS` of the largest in its state. Where every
+force of a state lies within its own error bound, as in a heated bar that is free to grow, what is left is
+rounding, and no stress has a sign.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TypeAlias
 
 import numpy as np
 from msgspec import UnsetType
@@ -15,6 +18,8 @@ from solver.checks import NO_STRESS
 from solver.extremes import SAME, Extremes
 from solver.model import Project
 from solver.results import Allowables, State
+
+Range: TypeAlias = tuple[FloatArray, FloatArray]  # largest and smallest by segment, (m, n) each
 
 
 def allowables(project: Project, states: tuple[State, ...]) -> Allowables:
@@ -31,10 +36,15 @@ def _or_nan(value: float | UnsetType) -> float:
     return np.nan if isinstance(value, UnsetType) else value
 
 
-def no_stress(largest: FloatArray, smallest: FloatArray) -> FloatArray:
-    """The stress (m,) up to which a state's stress counts as zero, from its extremes (m, n)."""
-    bound: FloatArray = NO_STRESS * np.max(np.maximum(np.abs(largest), np.abs(smallest)), axis=1)
-    return bound
+def no_stress(stress: Range, force: Range, force_bound: FloatArray) -> FloatArray:
+    """The stress (m,) up to which a state's stress counts as zero; infinite where all of it is rounding."""
+    rounding = np.all(_size(force) <= force_bound, axis=1)
+    return np.where(rounding, np.inf, NO_STRESS * np.max(_size(stress), axis=1))
+
+
+def _size(extremes: Range) -> FloatArray:
+    largest, smallest = extremes
+    return np.asarray(np.maximum(np.abs(largest), np.abs(smallest)))
 
 
 @dataclass(frozen=True, slots=True)
@@ -62,9 +72,12 @@ class StressChecks:
     utilisation_at: FloatArray
 
 
-def check_stresses(stress: Extremes, limits: Allowables) -> StressChecks:
+def check_stresses(
+    stress: Extremes, force: Extremes, force_bound: FloatArray, limits: Allowables
+) -> StressChecks:
     """Compare the extremes of stress with the allowables."""
-    zero = no_stress(stress.largest, stress.smallest)[:, np.newaxis]
+    ranges = (stress.largest, stress.smallest), (force.largest, force.smallest)
+    zero = no_stress(*ranges, force_bound)[:, np.newaxis]
     tension = _side(stress.largest > zero, stress.largest, stress.largest_at, limits.tension)
     compression = _side(-stress.smallest > zero, stress.smallest, stress.smallest_at, limits.compression)
     largest = np.fmax(tension.utilisation, compression.utilisation)

@@ -204,7 +204,11 @@ def _utilisation(results: Results, states: IntArray, segment: IntArray, stress: 
     where = states[:, np.newaxis], segment
     tension, compression = results.allowables.tension[where], results.allowables.compression[where]
     segments = results.segments
-    zero = no_stress(segments.stress_max[states], segments.stress_min[states])[:, np.newaxis]
+    zero = no_stress(
+        (segments.stress_max[states], segments.stress_min[states]),
+        (segments.force_max[states], segments.force_min[states]),
+        segments.force_bound[states],
+    )[:, np.newaxis]
     nothing = np.where(np.isnan(tension) & np.isnan(compression), np.nan, 0.0)
     with np.errstate(over="ignore"):  # the side that is not taken may overflow
         pressed = np.where(stress < -zero, -stress / compression, nothing)

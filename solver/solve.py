@@ -57,9 +57,9 @@ def _results(
 ) -> Results:
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
     finder = ExtremeFinder(chain, solution, position)
-    stress = finder.stress()
+    stress, force = finder.stress(), finder.force()
     limits = allowables(project, states)
-    stress_checks = check_stresses(stress, limits)
+    stress_checks = check_stresses(stress, force, solution.force_bound, limits)
     checks = Checker(project, states, solution, position, stress_checks).checks()
     return Results(
         project=project,
@@ -68,7 +68,7 @@ def _results(
         states=states,
         solution=solution,
         position=position,
-        segments=_segment_results(finder, stress, stress_checks, solution.force_bound),
+        segments=_segment_results(stress, force, finder.displacement(), stress_checks, solution.force_bound),
         allowables=limits,
         checks=checks,
         verdict=verdict_of(checks),
@@ -124,9 +124,8 @@ def _require(sound: BoolArray, what: str, results: Results) -> None:
 
 
 def _segment_results(
-    finder: ExtremeFinder, stress: Extremes, checks: StressChecks, force_bound: FloatArray
+    stress: Extremes, force: Extremes, displacement: Extremes, checks: StressChecks, force_bound: FloatArray
 ) -> SegmentResults:
-    force, displacement = finder.force(), finder.displacement()
     return SegmentResults(
         force_start=force.start,
         force_end=force.end,

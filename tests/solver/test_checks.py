@@ -24,7 +24,7 @@ from solver.model import (
     SpringSupport,
 )
 from solver.solve import solve
-from tests.members import Part, area, case, member
+from tests.members import Part, area, case, member, round_bar
 from tests.strategies import projects
 
 HELD = {0: FixedSupport()}
@@ -51,6 +51,28 @@ def test_a_bar_pulled_in_the_middle_is_checked_on_both_sides():
     assert_allclose([c.utilisation for c in checks], [0.5, 1.25], rtol=1e-12)
     assert [c.limit for c in checks] == [40e6, 8e6]
     assert [c.position for c in checks] == [0.0, 1.0]
+
+
+@pytest.mark.parametrize(
+    ("supports", "loads"),
+    [
+        (HELD, case("Warm", on_segments=[SegmentLoad("A", temperature_start=40.0, temperature_end=10.0)])),
+        ({1: SpringSupport(stiffness=1e7)}, case("Moved", on_joints=[JointLoad("1", movement=1e-3)])),
+    ],
+)
+def test_what_is_rounding_alone_is_no_stress(supports, loads):
+    # exactly nothing stresses them: a free heated taper, and a bar that its spring takes along
+    tapers = [
+        Part(0.3, round_bar(0.04, 0.03), expansion=1.2e-5, allowable_tension=160e6),
+        Part(0.7, round_bar(0.05), expansion=1.2e-5, allowable_tension=160e6),
+        Part(0.2, round_bar(0.03, 0.06), expansion=1.2e-5, allowable_tension=160e6),
+    ]
+    results = solve(member(tapers, supports, [loads]))
+    assert np.abs(results.segments.force_max).max() < 1e-6
+    assert (results.checks, results.verdict) == ((), "incomplete")
+    for scale in (1e-100, 1.0):  # but however small, a force that is there is checked
+        pulled = case("Pulled", on_joints=[JointLoad("3", force=scale)])
+        assert solve(member(tapers, HELD, [pulled])).verdict == "pass"
 
 
 def test_the_order_is_combination_then_chain_then_limits():
