@@ -13,6 +13,7 @@ from app.gui.document import Document
 from app.gui.tables.column import Figures, Sight
 from app.gui.tables.model import ERROR_ROLE, TableModel
 from app.gui.tables.pane import TABS, TablesPane
+from app.gui.tables.segments import SEGMENTS
 from app.gui.theme import LIGHT
 from app.gui.view import Selection, View
 from solver.model import (
@@ -192,6 +193,15 @@ def test_a_shared_materials_modulus_becomes_the_rows_own(qtbot, qapp, view):
     moduli = {material.name: material.modulus for material in document.project.materials}
     assert document.project.segments[1].material == "of A B"
     assert (moduli["of A B"], moduli["of A"]) == (7e10, 2.1e11)
+
+
+def test_a_shared_materials_own_modulus_typed_in_other_words_makes_no_new_material(qapp):
+    document = Document(edits.set_value(shaft(), ("segments", 1, "material"), "of A"))
+    model = TableModel(SEGMENTS, document, Sight("mm-kN-MPa", 0))
+    modulus = next(i for i, column in enumerate(model.columns) if column.key == "modulus")
+    model.setData(model.index(2, modulus), "210 GPa")
+    assert document.undo_name is None
+    assert len(document.project.materials) == 3
 
 
 def test_a_cell_of_several_records_shows_their_sum_and_is_not_for_typing(table):

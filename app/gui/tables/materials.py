@@ -23,6 +23,8 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
     place = next((i for i, m in enumerate(project.materials) if m.name == segment.material), None)
     if place is None:
         raise NotTaken(tr("name a material from the Materials table first"))
+    if project.materials[place].modulus == modulus:
+        return Change(project)
     if sum(other.material == segment.material for other in project.segments) == 1:
         note = tr("Modulus of material {name} changed").format(name=segment.material)
         return Change(edits.set_value(project, ("materials", place, "modulus"), modulus), note)
