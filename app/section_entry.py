@@ -40,7 +40,7 @@ _SHAPES: Final[dict[str, _Shape]] = {
     **dict.fromkeys("⌀øØ∅dD", "round"), **dict.fromkeys("▭rR", "rectangle"), **dict.fromkeys("aA", "area"),
 }  # fmt: skip
 _COUNTS: Final[dict[_Shape, tuple[int, str]]] = {
-    "round": (1, "⌀40"), "tube": (2, "⌀60×5"), "rectangle": (2, "▭20×30"), "area": (1, "A 1200"),
+    "round": (1, "d40"), "tube": (2, "d60x5"), "rectangle": (2, "r20x30"), "area": (1, "A 1200"),
 }  # fmt: skip
 _ARROW: Final = re.compile(r"→|->|=>")
 _SECOND: Final = re.compile(r"[×xX]|\bbore\b")
@@ -77,7 +77,7 @@ def parse_section(text: str, system: UnitSystemName, previous: AnySection | None
 
 def _read_ends(text: str) -> list[_End]:
     if not text:
-        raise refusal("empty", example="⌀40")
+        raise refusal("empty", example="d40")
     if len(text) > MOST_CHARACTERS:
         raise refusal("too_long", length=len(text), most=MOST_CHARACTERS)
     parts = _ARROW.split(text)
@@ -114,7 +114,7 @@ def _bare_pair(end: _End, previous: AnySection | None) -> _Shape:
         return "tube"
     if isinstance(previous, RectangleSection):
         return "rectangle"
-    raise refusal("section_ambiguous", found="×".join(end.dimensions)[:30])
+    raise refusal("section_ambiguous", found="x".join(end.dimensions)[:30])
 
 
 def _refuse_wrong_count(end: _End, shape: _Shape) -> None:

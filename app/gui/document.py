@@ -169,6 +169,7 @@ class Document(QObject):
     def commit_draft(self, place: Place, draft: Draft, name: str) -> None:
         """One undo step that keeps a cell's text as typed."""
         drafts = dict(self.snapshot.drafts)
+        drafts.pop(place, None)  # the newest stands last
         drafts[place] = draft
         self.commit_snapshot(Snapshot(self.project, MappingProxyType(drafts)), name)
 

@@ -6,12 +6,13 @@ project with no unfinished entry counts as current.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from typing import Protocol
 
 from PySide6.QtCore import QObject, QTimer
 
 from app.gui import log
-from app.gui.document import Document
+from app.gui.document import Document, Draft
 from app.gui.outcome import (
     Outcome,
     compute,
@@ -25,7 +26,7 @@ from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.view import Shown, View
 from app.gui.worker import Delivery, LatestSolver
-from app.words import tr
+from app.words import tr, trn
 from solver.model import Project
 from solver.results import Results
 
@@ -190,15 +191,21 @@ class Showing(QObject):
             return tr("Results are out of date: {reason}").format(reason=preview.reason)
         drafts = self._document.snapshot.drafts
         if drafts:
-            first = next(iter(drafts.values()))
-            return tr("Results are out of date: {cell}: {reason}").format(
-                cell=first.name, reason=first.reason
-            )
+            return drafts_line(tuple(drafts.values()))
         if self._fault:
             return self._fault
         if self._outcome is None or not self._newest:
             return tr("Solving…")
         return outcome_line(self._outcome)
+
+
+def drafts_line(drafts: Sequence[Draft]) -> str:
+    """Why nothing is current: the reason of the text typed last, and how many more there are."""
+    last, others = drafts[-1], len(drafts) - 1
+    line = tr("Results are out of date: {cell}: {reason}").format(cell=last.name, reason=last.reason)
+    if not others:
+        return line
+    return f"{line} ({trn('and {count} cell more', 'and {count} cells more', others)})"
 
 
 def outcome_line(outcome: Outcome) -> str:

@@ -32,8 +32,10 @@ ENTRIES: Final[Mapping[EntryRule, str]] = {
     "unknown_unit": later("“{found}” is no unit that can stand here; use one such as {example}"),
     "near_unit": later("“{found}” is no unit that can stand here; did you mean “{nearest}”?"),
     "no_unit": later("“{found}”: a plain number without a unit is wanted here"),
-    "section_unknown": later("“{found}” is no section; type one such as ⌀40, ⌀60×5, ▭20×30 or A 1200"),
-    "section_ambiguous": later("A tube or a rectangle? Type ⌀{found} or ▭{found}"),
+    "section_unknown": later(
+        "“{found}” is no section; type one such as d40, d60x5 (a tube), r20x30 or A 1200"
+    ),
+    "section_ambiguous": later("A tube or a rectangle? Type d{found} or r{found}"),
     "section_dimensions": later("“{found}” needs {wanted} dimensions, such as {example}"),
     "section_units": later("Give the unit once, at the end, or with every dimension"),
     "wall_too_thick": later("The wall is thicker than half the outside diameter"),

@@ -10,9 +10,11 @@ from PySide6.QtWidgets import QLineEdit, QVBoxLayout, QWidget
 
 from app import edits
 from app.gui.document import Document
+from app.gui.show import drafts_line
 from app.gui.tables.column import Figures, Sight
 from app.gui.tables.model import ERROR_ROLE, TableModel
 from app.gui.tables.pane import TABS, TablesPane
+from app.gui.tables.reasons import NotTaken
 from app.gui.tables.segments import SEGMENTS
 from app.gui.theme import LIGHT
 from app.gui.view import Selection, View
@@ -623,3 +625,60 @@ def test_reasons_speak_the_words_and_units_of_the_tables(table, pane, document):
         '"A" is taken already, at segment 1, mark; choose another',
         'there is no joint "nine"; add it or choose one that exists',
     ]
+
+
+def test_a_limit_that_nobody_typed_does_not_pass_for_one(pane, document):
+    pane.tabs.setCurrentIndex(5)
+    told = []
+    pane.noted.connect(told.append)
+    enter(pane.views["limits displacement"], 0, "joint", "1")
+    enter(pane.views["limits reaction"], 0, "joint", "0")
+    assert document.project.limits.displacement[0].limit <= 1e-6
+    assert document.project.limits.reaction[0].limit <= 1.0
+    assert len(told) == 2
+    assert "until you type yours" in told[0]
+
+
+def test_a_new_material_says_what_it_starts_with(pane):
+    pane.tabs.setCurrentIndex(4)
+    told = []
+    pane.noted.connect(told.append)
+    materials = pane.views["materials"]
+    enter(materials, materials.table_model.rowCount() - 1, "name", "Bronze")
+    assert told == [
+        "Bronze starts with the modulus of the material above it and expansion and density 0: type its own"
+    ]
+
+
+def test_a_cell_that_is_not_for_typing_says_why(table, pane, document):
+    told = []
+    pane.noted.connect(told.append)
+    go_to(table, 3, "load_start")  # two loads on C
+    QTest.keyClick(table, "5")
+    go_to(table, 1, "utilisation")
+    QTest.keyClick(table, "5")
+    document.commit(edits.remove_case(edits.remove_case(document.project, "Hot"), "Dead"), "Delete")
+    go_to(table, 1, "heat")
+    QTest.keyClick(table, "5")
+    assert told == [
+        "several loads stand behind this cell: edit them one by one in the Loads table",
+        "a result is not for typing",
+        "add a load case in the Loads table first",
+    ]
+    assert cell(table, 1, "heat").data(Qt.ItemDataRole.ToolTipRole) == told[-1]
+
+
+def test_the_status_tells_the_entry_refused_last(table, document):
+    for row, key, text in ((1, "length", "x"), (2, "section", "M36"), (1, "length", "y")):
+        enter(table, row, key, text)
+    assert drafts_line(tuple(document.snapshot.drafts.values())) == (
+        "Results are out of date: Length of A: “y” is not a number; type one such as 350 mm (and 1 cell more)"
+    )
+    enter(table, 1, "length", "5")
+    assert "d40, d60x5 (a tube), r20x30" in drafts_line(tuple(document.snapshot.drafts.values()))
+
+
+def test_a_material_in_use_is_kept_and_names_who_uses_it(pane, document):
+    delete = pane.views["materials"].table_model.table.delete
+    with pytest.raises(NotTaken, match=r"^A is made of of A: give it another material first$"):
+        delete(document.project, (0,), Sight("mm-N-MPa", None))

@@ -71,7 +71,7 @@ def _figure(name: str, quantity: Quantity) -> Column:
         value = figures.value(getattr(figures, name), index)
         return "" if value is None else format_value(value, quantity, sight.system)
 
-    titles = {"displacement": later("Moves by"), "reaction": later("Reaction")}
+    titles = {"displacement": later("Displacement"), "reaction": later("Reaction")}
     return Column(name, titles[name], quantity=quantity, figure=text, width=10)
 
 

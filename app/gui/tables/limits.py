@@ -10,8 +10,9 @@ from app.units import Quantity, entry_text, format_value
 from app.words import later, tr
 from solver.model import DisplacementLimit, Project, ReactionLimit, RelativeLimit
 
-FIRST_MOVEMENT = 0.001  # m, what a new limit starts from, to be typed over
-FIRST_REACTION = 1000.0  # N
+# What a new limit starts from, to be typed over: so little that hardly anything passes until it is.
+FIRST_MOVEMENT = 1e-6  # m
+FIRST_REACTION = 1.0  # N
 
 
 def _mark(kind: str, key: str, file_key: str, title: str) -> Column:
@@ -55,16 +56,17 @@ def _table(kind: str, title: str, columns: tuple[Column, ...], adding: Adding) -
     )
 
 
+def _added(project: Project, kind: str, limit: DisplacementLimit | RelativeLimit | ReactionLimit) -> Change:
+    note = tr("the new limit is next to nothing until you type yours under “At most”")
+    return Change(edits.add_record(project, ("limits", kind), limit), note)
+
+
 def _add_displacement(project: Project, text: str, _sight: Sight) -> Change:
-    return Change(
-        edits.add_record(project, ("limits", "displacement"), DisplacementLimit(text.strip(), FIRST_MOVEMENT))
-    )
+    return _added(project, "displacement", DisplacementLimit(text.strip(), FIRST_MOVEMENT))
 
 
 def _add_reaction(project: Project, text: str, _sight: Sight) -> Change:
-    return Change(
-        edits.add_record(project, ("limits", "reaction"), ReactionLimit(text.strip(), FIRST_REACTION))
-    )
+    return _added(project, "reaction", ReactionLimit(text.strip(), FIRST_REACTION))
 
 
 def _add_relative(project: Project, text: str, _sight: Sight) -> Change:
@@ -72,14 +74,14 @@ def _add_relative(project: Project, text: str, _sight: Sight) -> Change:
     marks = [part.strip() for part in text.replace("→", "->").split("->")]
     if len(marks) != 2:
         raise NotTaken(tr("type two joints' marks, such as 0 -> 2"))
-    return Change(edits.add_record(project, ("limits", "relative"), RelativeLimit(*marks, FIRST_MOVEMENT)))
+    return _added(project, "relative", RelativeLimit(*marks, FIRST_MOVEMENT))
 
 
 DISPLACEMENT = _table(
     "displacement",
-    later("Movement of a joint"),
+    later("Displacement of a joint"),
     (
-        _mark("displacement", "joint", "joint", later("Movement of joint")),
+        _mark("displacement", "joint", "joint", later("Displacement of joint")),
         _limit("displacement", "displacement"),
     ),
     Adding(
@@ -88,9 +90,9 @@ DISPLACEMENT = _table(
 )
 RELATIVE = _table(
     "relative",
-    later("Movement between joints"),
+    later("Displacement between joints"),
     (
-        _mark("relative", "start", "from", later("Movement from joint")),
+        _mark("relative", "start", "from", later("Displacement from joint")),
         _mark("relative", "end", "to", later("to joint")),
         _limit("relative", "displacement"),
     ),

@@ -83,7 +83,21 @@ def name_of(row: Any, _sight: Sight) -> str:
 def _add(project: Project, text: str, _sight: Sight) -> Change:
     """A material as of structural steel by name only: its modulus is the last one's, to be typed over."""
     modulus = project.materials[-1].modulus if project.materials else 210e9
-    return Change(edits.add_record(project, ("materials",), Material(text.strip(), modulus)))
+    made = Material(text.strip(), modulus)
+    note = tr(
+        "{name} starts with the modulus of the material above it and expansion and density 0: type its own"
+    )
+    return Change(edits.add_record(project, ("materials",), made), note.format(name=made.name))
+
+
+def _delete(project: Project, indexes: tuple[int, ...], _sight: Sight) -> Project:
+    """The project without these materials; NotTaken where a segment is made of one."""
+    names = {project.materials[index].name for index in indexes}
+    for segment in project.segments:
+        if segment.material in names:
+            used = tr("{mark} is made of {name}: give it another material first")
+            raise NotTaken(used.format(mark=segment.mark, name=segment.material))
+    return edits.remove_records(project, ("materials",), indexes)
 
 
 COLUMNS = (
@@ -103,6 +117,6 @@ MATERIALS = Table(
     row_name=lambda project, index, _sight: project.materials[index].name,
     records=lambda _sight: ("materials",),
     adding=Adding(later("type a name to add a material"), _add, later("Add material"), "name"),
-    delete=lambda project, indexes, _sight: edits.remove_records(project, ("materials",), indexes),
+    delete=_delete,
     delete_name=later("Delete materials"),
 )

@@ -110,7 +110,7 @@ class TableModel(RowsModel):
         return tr("{text}, not taken in: {reason}").format(text=text, reason=error) if error else text
 
     def _tip(self, index: Index) -> str | None:
-        return self._error(index) or None
+        return self._error(index) or self.why_not(index) or None
 
     def _bar(self, index: Index) -> tuple[float, float] | None:
         column = self._columns[index.column()]
@@ -171,6 +171,22 @@ class TableModel(RowsModel):
         if column.put is None:
             raise NotTaken(tr("this cell is not for typing"))
         return column.put(project, self.record_of(index.row()), text, self._sight)
+
+    def why_not(self, index: Index) -> str:
+        """Why a cell is not for typing, in words; empty where it is, or where nothing could ever be typed."""
+        if self.entry(index) is not None or not self.is_record(index.row()):
+            return ""
+        column = self._columns[index.column()]
+        if column.of_case and self._sight.case is None:
+            return tr("add a load case in the Loads table first")
+        if column.of_case:
+            return tr("several loads stand behind this cell: edit them one by one in the Loads table")
+        return tr("a result is not for typing") if column.figure is not None else ""
+
+    def tell_why_not(self, index: Index) -> None:
+        """Say it in the status line."""
+        if index.isValid() and (reason := self.why_not(index)):
+            self.noted.emit(reason)
 
     def preview(self, index: Index, text: str) -> None:
         """Show what `text` in the cell would give, without committing it."""

@@ -51,6 +51,7 @@ class TableView(QTableView):
         for came in (model.rowsInserted, model.rowsRemoved, model.columnsInserted, model.columnsRemoved):
             came.connect(self.on_shape_changed)
         model.modelReset.connect(self.on_shape_changed)
+        self.doubleClicked.connect(model.tell_why_not)
         self.on_shape_changed()
 
     def _dress(self) -> None:
@@ -166,6 +167,8 @@ class TableView(QTableView):
         elif event.key() in TAB and self._leaves(forward=event.key() == Qt.Key.Key_Tab):
             self._leave(forward=event.key() == Qt.Key.Key_Tab)
         else:
+            if event.text().isprintable() and event.text() and not self._is_editing():
+                self.table_model.tell_why_not(self.currentIndex())
             super().keyPressEvent(event)
 
     def _is_editing(self) -> bool:
