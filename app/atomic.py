@@ -20,8 +20,11 @@ def write_bytes(path: str | os.PathLike[str], data: bytes) -> None:
         if old is not None:
             _adopt(fresh, old)
         fresh.replace(target)
-    except BaseException:
-        fresh.unlink(missing_ok=True)
+    except BaseException as error:
+        with contextlib.suppress(OSError):
+            fresh.unlink(missing_ok=True)
+        if isinstance(error, OSError):
+            error.filename, error.filename2 = str(target), None  # nobody asked for the file beside it
         raise
     _sync_folder(target.parent)
 

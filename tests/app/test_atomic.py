@@ -160,3 +160,15 @@ def test_what_is_no_file_is_not_replaced(tmp_path: Path) -> None:
 def test_a_missing_folder_is_the_systems_own_error(tmp_path: Path) -> None:
     with pytest.raises(FileNotFoundError):
         write_bytes(tmp_path / "none" / "member.json", NEW)
+
+
+def test_an_error_names_the_file_that_was_asked_for(tmp_path: Path, target: Path) -> None:
+    missing = tmp_path / "none" / "member.json"
+    with pytest.raises(FileNotFoundError) as caught:
+        write_bytes(missing, NEW)
+    assert caught.value.filename == str(missing)
+    with pytest.MonkeyPatch.context() as patch:
+        patch.setattr(os, "fsync", full_disk)
+        with pytest.raises(OSError, match="No space") as full:
+            write_bytes(target, NEW)
+    assert full.value.filename == str(target)
