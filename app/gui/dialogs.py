@@ -66,6 +66,27 @@ def ask_recover(parent: QWidget, name: str, then: Callable[[bool | None], None])
     return box
 
 
+def ask_overwrite(parent: QWidget, name: str, then: Callable[[], None]) -> QMessageBox:
+    """Whether to write over a file that another program has changed; goes on only with a yes."""
+    box = QMessageBox(parent)
+    box.setIcon(QMessageBox.Icon.Warning)
+    box.setText(tr("{name} has been changed by another program since it was opened.").format(name=name))
+    box.setInformativeText(tr("Writing over it loses those changes; Save as keeps both."))
+    over = box.addButton(tr("Write over it"), QMessageBox.ButtonRole.DestructiveRole)
+    cancel = box.addButton(tr("Cancel"), QMessageBox.ButtonRole.RejectRole)
+    box.setDefaultButton(cancel)
+    box.setEscapeButton(cancel)
+
+    def on_finished(_result: int) -> None:
+        if box.clickedButton() is over:
+            then()
+
+    box.finished.connect(on_finished)
+    box.finished.connect(box.deleteLater)
+    box.open()
+    return box
+
+
 class TextDialog(QDialog):
     """A headline over a text that can be read, selected and copied."""
 

@@ -6,6 +6,7 @@ faults are shown to read and copy.
 
 from __future__ import annotations
 
+import hashlib
 from collections.abc import Callable
 from pathlib import Path
 
@@ -73,6 +74,7 @@ class Files(QObject):
         self._settings = settings
         self._commit_editor = commit_editor
         self._asking = False
+        self._known: dict[Path, str | None] = {}  # fingerprints of files as they were read or written
 
     @property
     def name(self) -> str:
@@ -155,11 +157,22 @@ class Files(QObject):
     # Saving
 
     def save(self, then: Callable[[], None] = lambda: None) -> None:
-        """Save where the document came from, or ask where to."""
+        """Save where the document came from, or ask where to; ask too where that file is another by now."""
         self._commit_editor()
-        if self._document.path is None:
+        path = self._document.path
+        if path is None:
             self.save_as(then)
-        elif self.write(self._document.path):
+        elif self._changed_since(path):
+            dialogs.ask_overwrite(self._window, path.name, lambda: self._write_then(path, then))
+        else:
+            self._write_then(path, then)
+
+    def _changed_since(self, path: Path) -> bool:
+        known, now = self._known.get(path), _fingerprint(path)
+        return known is not None and now is not None and known != now
+
+    def _write_then(self, path: Path, then: Callable[[], None]) -> None:
+        if self.write(path):
             then()
 
     def save_as(self, then: Callable[[], None] = lambda: None) -> None:
@@ -174,11 +187,7 @@ class Files(QObject):
         dialog.setDefaultSuffix(SUFFIX.removeprefix("."))
         dialog.selectFile(start.name)
 
-        def on_selected(name: str) -> None:
-            if self.write(Path(name)):
-                then()
-
-        dialog.fileSelected.connect(on_selected)
+        dialog.fileSelected.connect(lambda name: self._write_then(Path(name), then))
         dialog.finished.connect(dialog.deleteLater)
         dialog.open()
 
@@ -197,10 +206,19 @@ class Files(QObject):
         return True
 
     def remember(self, path: Path) -> None:
-        """Note a file as a recent one."""
+        """Note a file as a recent one, and what it holds now."""
+        self._known[path] = _fingerprint(path)
         self._settings.add_recent(path.resolve())
         self._settings.set_last_folder(path.resolve().parent)
         self.recent_changed.emit()
+
+
+def _fingerprint(path: Path) -> str | None:
+    """Of what the file holds; None where it cannot be read."""
+    try:
+        return hashlib.sha256(path.read_bytes()).hexdigest()
+    except OSError:
+        return None
 
 
 def saved_line(snapshot: Snapshot) -> str:

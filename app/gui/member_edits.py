@@ -50,8 +50,10 @@ class MemberEdits(QObject):
         self._choose(index)
 
     def insert_after(self) -> None:
-        """A segment behind the last chosen one."""
-        index = max(self._chosen(), default=len(self._document.project.segments) - 1) + 1
+        """A segment behind the last chosen one; behind the start, or where none is chosen at the end."""
+        start = self._tables.views["segments"].lead_is_chosen
+        last = -1 if start else len(self._document.project.segments) - 1
+        index = max(self._chosen(), default=last) + 1
         self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
         self._choose(index)
 

@@ -18,7 +18,7 @@ from PySide6.QtWidgets import (
 )
 from shiboken6 import isValid
 
-from app import project_file, samples
+from app import edits, project_file, samples
 from app.gui import log
 from app.gui.dialogs import TextDialog
 from app.gui.document import Draft
@@ -297,6 +297,12 @@ def test_segments_are_inserted_split_joined_reversed_and_deleted_by_commands(win
     assert len(window.document.project.segments) == count + 1
 
 
+def test_a_segment_inserted_after_the_start_row_is_the_first(window, table):
+    go_to(table, 0, "support")
+    window.actions_by_key["insert_after"].trigger()
+    assert window.document.project.segments[0].mark == "I"
+
+
 def test_the_last_segment_cannot_be_deleted_and_the_status_says_so(window, table):
     table.selectAll()
     window.actions_by_key["delete_segments"].trigger()
@@ -352,6 +358,31 @@ def test_a_save_that_fails_says_why_and_keeps_the_work(qtbot, window, table, tmp
     assert "No such file" in dialog.body.toPlainText()
     assert window.isWindowModified()
     finish(qtbot, dialog, dialog.reject)
+
+
+@pytest.mark.parametrize("write_over", [True, False])
+def test_a_file_that_another_program_changed_is_not_written_over_unasked(
+    qtbot, window, table, rod, write_over
+):
+    enter(table, 1, "length", "900")
+    window.actions_by_key["save"].trigger()
+    theirs = edits.set_value(window.document.project, ("title",), "theirs")
+    rod.write_bytes(project_file.dump(theirs))
+    enter(table, 1, "length", "901")
+    window.actions_by_key["save"].trigger()
+    question = dialog_of(window, QMessageBox)
+    assert project_file.read(rod) == theirs
+    button = next(b for b in question.buttons() if (b.text() == "Write over it") == write_over)
+    finish(qtbot, question, button.click)
+    assert window.isWindowModified() != write_over
+    assert (project_file.read(rod) == theirs) != write_over
+
+
+def test_a_file_that_was_removed_is_written_again(window, table, rod):
+    enter(table, 1, "length", "900")
+    rod.unlink()
+    window.actions_by_key["save"].trigger()
+    assert project_file.read(rod) == window.document.project
 
 
 def test_a_file_with_faults_lists_them_all_and_changes_nothing(qtbot, qapp, window, tmp_path):

@@ -266,6 +266,11 @@ class TableView(QTableView):
             self.table_model.record_of(row) for row in sorted(rows) if self.table_model.is_record(row)
         )
 
+    @property
+    def lead_is_chosen(self) -> bool:
+        """Whether a row before the first record holds a selected cell."""
+        return any(index.row() < self.table_model.table.lead for index in self.selectedIndexes())
+
     def choose_record(self, record: int) -> None:
         """Make a record's row the current one, in the column that is current."""
         self.choose_records(frozenset((record,)))
