@@ -5,7 +5,7 @@ The fields along the member stay piecewise polynomials; `solver.fields` evaluate
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, fields
 from typing import Literal, TypeAlias
 
 from solver.arrays import FloatArray
@@ -83,6 +83,17 @@ class Results:
     verdict: Verdict
     governing: Check | None
     mass: float  # kg
+
+    @property
+    def unloaded(self) -> tuple[State, ...]:
+        """The checked states in which nothing loads the member; their checks pass without saying anything."""
+        every = fields(self.loads)
+        loaded = [
+            any(getattr(self.loads, load.name)[i].any() for load in every) for i in range(len(self.states))
+        ]
+        return tuple(
+            state for state, some in zip(self.states, loaded, strict=True) if state.checked and not some
+        )
 
     def state_index(self, name: str, kind: StateKind | None = None) -> int:
         """The index of the state called `name`; KeyError where there is none."""

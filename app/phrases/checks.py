@@ -7,7 +7,7 @@ member is compressed; since buckling is not covered, compression is named in the
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from typing import Final, Literal
 
 from app.numerals import rounded
@@ -193,14 +193,24 @@ def has_compression(checks: Sequence[Check]) -> bool:
 
 
 def verdict_line(results: Results) -> str:
-    """The verdict, which never flatters; compression takes its note along, since buckling is not covered."""
-    return f"{_verdict(results)}; {tr('buckling not checked')}" if _needs_note(results) else _verdict(results)
+    """The verdict, which never flatters: what speaks against a pass stands in the same line.
 
-
-def _needs_note(results: Results) -> bool:
-    """No note where the line says that the member does not pass, or nothing was checked."""
+    Compression takes its note along, since buckling is not covered, and so does a state without any load. No
+    note where the line says that the member does not pass, or nothing was checked.
+    """
     made = any(check.status != "not_made" for check in results.checks)
-    return made and results.verdict != "fail" and has_compression(results.checks)
+    notes = _reservations(results) if made and results.verdict != "fail" else ()
+    return "; ".join((_verdict(results), *notes))
+
+
+def _reservations(results: Results) -> Iterator[str]:
+    if has_compression(results.checks):
+        yield tr("buckling not checked")
+    names = [state.name for state in results.unloaded if state.kind != "unloaded"]
+    if names:
+        yield tr("no load in {names}").format(names=", ".join(names))
+    elif results.unloaded:
+        yield tr("no load entered")
 
 
 def _verdict(results: Results) -> str:

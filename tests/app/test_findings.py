@@ -204,3 +204,15 @@ def test_findings_of_any_project_agree_with_its_results(project: Project) -> Non
         (results.segments.stress_min[:checked] < -1e-6 * abs(results.segments.stress_min).max()).any()
     )
     assert not (squashed and result.headline == "Passes")
+
+
+def test_a_combination_without_any_load_never_passes_unsaid() -> None:
+    limits = Limits(displacement=(DisplacementLimit(joint="1", limit=1e-3),))
+    loaded = stepped(limits, **ALLOWABLES)
+    empty = structs.replace(loaded, combinations=(Combination(name="ULS", factors={"Pull": 0.0}),))
+    assert found(empty).headline == "Passes; no load in ULS"
+    pair = (*empty.combinations, Combination(name="SLS", factors={}))
+    assert found(structs.replace(empty, combinations=pair)).headline == "Passes; no load in ULS, SLS"
+    bare = structs.replace(loaded, combinations=(), load_cases=())
+    assert found(bare).headline == "Passes; no load entered"
+    assert found(loaded).headline == "Passes; buckling not checked"

@@ -266,6 +266,7 @@ class Checked:
         self.checks = checks
         self.verdict = verdict_of(checks)
         self.governing = governing_of(checks)
+        self.unloaded = ()
 
 
 def made(kind: str, utilisation: float) -> Check:
