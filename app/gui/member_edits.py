@@ -28,11 +28,11 @@ class MemberEdits(QObject):
         self._tables = tables
 
     def _chosen(self) -> tuple[int, ...]:
-        """The chosen segments; empty where none is."""
+        """The chosen segments, with what was being typed taken in; empty where none is."""
+        self._tables.commit_open_editor()
         return self._tables.views["segments"].chosen_records()
 
     def _do(self, name: str, edit: Callable[[Project], Project]) -> None:
-        self._tables.commit_open_editor()
         try:
             project = edit(self._document.project)
         except TypingError as error:
@@ -51,9 +51,9 @@ class MemberEdits(QObject):
 
     def insert_after(self) -> None:
         """A segment behind the last chosen one; behind the start, or where none is chosen at the end."""
-        start = self._tables.views["segments"].lead_is_chosen
+        chosen, start = self._chosen(), self._tables.views["segments"].lead_is_chosen
         last = -1 if start else len(self._document.project.segments) - 1
-        index = max(self._chosen(), default=last) + 1
+        index = max(chosen, default=last) + 1
         self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
         self._choose(index)
 
@@ -83,6 +83,9 @@ class MemberEdits(QObject):
             self.told.emit(tr("choose the segments to join"))
             return
         first, last = chosen[0], chosen[-1] if len(chosen) > 1 else chosen[0] + 1
+        if len(chosen) > 1 and last - first >= len(chosen):
+            self.told.emit(tr("choose segments that lie side by side to join"))
+            return
         if last >= len(self._document.project.segments):
             self.told.emit(tr("there is no segment behind it to join"))
             return
@@ -90,10 +93,12 @@ class MemberEdits(QObject):
 
     def reverse(self) -> None:
         """The member described from its other end."""
+        self._tables.commit_open_editor()
         self._do(tr("Reverse member"), edits.reverse_member)
 
     def delete_rows(self) -> None:
         """The records chosen in the table with the keyboard."""
+        self._tables.commit_open_editor()
         view = self._tables.current_view()
         table, chosen = view.table_model.table, view.chosen_records()
         if table.key == "segments":

@@ -4,7 +4,7 @@ import json
 import threading
 
 import pytest
-from PySide6.QtCore import QMimeData, QPoint, QPointF, Qt, QUrl
+from PySide6.QtCore import QItemSelectionModel, QMimeData, QPoint, QPointF, Qt, QUrl
 from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import (
@@ -301,6 +301,35 @@ def test_a_segment_inserted_after_the_start_row_is_the_first(window, table):
     go_to(table, 0, "support")
     window.actions_by_key["insert_after"].trigger()
     assert window.document.project.segments[0].mark == "I"
+
+
+def test_a_segment_is_split_in_the_middle_of_the_length_being_typed(window, table):
+    go_to(table, 2, "length")
+    begin(table, "900")
+    window.actions_by_key["split"].trigger()
+    assert [s.length for s in window.document.project.segments[1:3]] == [0.45, 0.45]
+
+
+def test_only_segments_side_by_side_are_joined(window, table):
+    table.clearSelection()
+    for row in (1, 3):
+        table.selectionModel().select(cell(table, row, "length"), QItemSelectionModel.SelectionFlag.Select)
+    window.actions_by_key["join"].trigger()
+    assert window.document.undo_name is None
+    assert "side by side" in window.status.news.text()
+
+
+def test_rows_are_deleted_in_the_table_that_last_had_the_keyboard(window):
+    window.tables.tabs.setCurrentIndex(2)
+    loads = window.tables.views["segment_loads"]
+    window.tables.views["load_cases"].setCurrentIndex(window.tables.views["load_cases"].model().index(0, 0))
+    loads.setFocus()
+    loads.setCurrentIndex(loads.model().index(0, 0))
+    cases = window.document.project.load_cases
+    window.sheet.setFocus()
+    window.actions_by_key["delete_rows"].trigger()
+    assert len(window.document.project.load_cases) == len(cases)
+    assert len(window.document.project.load_cases[0].segment_loads) == len(cases[0].segment_loads) - 1
 
 
 def test_the_last_segment_cannot_be_deleted_and_the_status_says_so(window, table):

@@ -109,12 +109,11 @@ class TablesPane(QWidget):
         return self._sight
 
     def current_view(self) -> TableView:
-        """The table with the keyboard, else the first of the tab in front."""
+        """The table of the tab in front that has or last had the keyboard, else its first."""
         page = self.tabs.currentWidget()
         shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
-        return next(
-            (view for view in shown if view.hasFocus() or view.isAncestorOf(self.focusWidget())), shown[0]
-        )
+        last = page.focusWidget()
+        return next((view for view in shown if view is last or view.isAncestorOf(last)), shown[0])
 
     def on_document_changed(self, snapshot: Snapshot) -> None:
         """The picker lists the cases of now; the edited case is kept by its name."""
