@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Final
@@ -128,7 +129,14 @@ def keys_text() -> str:
     """The keys for the help page, a line each."""
     lines = []
     for command in COMMANDS:
-        keys = [key.toString(QKeySequence.SequenceFormat.NativeText) for key in shortcuts_of(command)]
+        keys = [text for key in shortcuts_of(command) if (text := keyboard_text(key))]
         if keys:
             lines.append(f"{', '.join(keys)}\t{tr(command.text).replace('&', '').rstrip('…')}")
     return "\n".join(lines)
+
+
+def keyboard_text(key: QKeySequence) -> str:
+    """The key as it is written; empty for one of old workstations or media keyboards, which Qt lists too."""
+    text = key.toString(QKeySequence.SequenceFormat.NativeText)
+    last = text.split("+")[-1]
+    return text if re.fullmatch(r".?|F[1-9]|F1[0-2]|Ins|Del|Backspace", last) else ""

@@ -97,6 +97,9 @@ class TextDialog(QDialog):
         words.setWordWrap(True)
         self.body = QPlainTextEdit(text)
         self.body.setReadOnly(True)
+        firsts = [line.split("\t")[0] for line in text.splitlines() if "\t" in line]
+        widest = max(map(self.body.fontMetrics().horizontalAdvance, firsts), default=0)
+        self.body.setTabStopDistance(widest + 24)
         self.body.setAccessibleName(headline)
         self.body.setTabChangesFocus(True)
         buttons = QDialogButtonBox(QDialogButtonBox.StandardButton.Close)

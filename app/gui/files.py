@@ -18,6 +18,7 @@ from app.gui import dialogs
 from app.gui.dialogs import Answer
 from app.gui.document import Document, Snapshot
 from app.gui.settings import Settings
+from app.outcome import os_sentence
 from app.phrases import fault_sentence
 from app.project_file import ProjectFileError
 from app.words import tr, trn
@@ -56,7 +57,7 @@ def read_or_say(path: Path) -> tuple[Project | None, tuple[str, ...]]:
     except ProjectFileError as error:
         return None, tuple(fault_sentence(fault) for fault in error.faults)
     except OSError as error:
-        return None, (error.strerror or str(error),)
+        return None, (os_sentence(error),)
 
 
 class Files(QObject):
@@ -198,7 +199,7 @@ class Files(QObject):
             project_file.write(snapshot.project, path)
         except OSError as error:
             headline = tr("{name} was not saved:").format(name=path.name)
-            dialogs.show_text(self._window, tr("Not saved"), headline, error.strerror or str(error))
+            dialogs.show_text(self._window, tr("Not saved"), headline, os_sentence(error))
             return False
         self._document.mark_saved(snapshot.project, path)
         self.remember(path)

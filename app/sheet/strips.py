@@ -71,6 +71,7 @@ def _scale(strip: Strip, start: float, depth: float) -> tuple[Scale, float, floa
     values = np.concatenate([c[np.isfinite(c)] for c in strip.curves] or [np.zeros(1)])
     least, most = (float(values.min()), float(values.max())) if values.size else (0.0, 0.0)
     largest = max(abs(least), abs(most))
+    least, most = (0.0 if abs(value) <= 1e-12 * largest else value for value in (least, most))  # rounding
     near = [limit.value for limit in strip.limits if not limit.far]
     low, high = min(0.0, least, *near), max(0.0, most, *near)
     if high - low <= 1e-12 * largest or high == low:

@@ -384,7 +384,7 @@ def test_a_save_that_fails_says_why_and_keeps_the_work(qtbot, window, table, tmp
     enter(table, 1, "length", "900")
     assert not window.files.write(tmp_path / "no such folder" / "x.barwright.json")
     dialog = dialog_of(window, TextDialog)
-    assert "No such file" in dialog.body.toPlainText()
+    assert "there is no such file or folder" in dialog.body.toPlainText()
     assert window.isWindowModified()
     finish(qtbot, dialog, dialog.reject)
 

@@ -7,6 +7,7 @@ from itertools import combinations, pairwise
 from xml.etree import ElementTree
 
 import hypothesis
+import numpy as np
 import pytest
 from hypothesis import given
 from msgspec import structs
@@ -16,6 +17,8 @@ from app.sheet import colours
 from app.sheet.figures import Figure, envelope_figure, member_figure, state_figure
 from app.sheet.lanes import packed
 from app.sheet.printable import printable_in_figure
+from app.sheet.strips import Strip
+from app.sheet.strips import _scale as _scale_of
 from app.sheet.svg import Canvas, Ink, text_width
 from solver.model import Display, Project
 from solver.results import Results
@@ -178,3 +181,10 @@ def box_of(element: ElementTree.Element) -> tuple[float, float, float]:
     """Left, baseline and width of a centred text."""
     width = text_width(element.text or "", 6.5)
     return float(element.get("x", "")) - width / 2, float(element.get("y", "")), width
+
+
+def test_rounding_at_a_held_end_is_no_value_to_label() -> None:
+    x = np.array([0.0, 0.5, 1.0])
+    strip = Strip("u", "displacement", "displacement", x, (np.array([-4e-21, 2e-4, 1e-4]),))
+    _scale, least, most = _scale_of(strip, 0.0, 44.0)
+    assert (least, most) == (0.0, 2e-4)
