@@ -173,14 +173,17 @@ class Window(QMainWindow):
         self.tables.commit_open_editor()
         project = self.document.project
         self.store.set_units(system)
-        self.document.commit(replace(project, display=replace(project.display, units=system)), tr("Units"))
+        if system != project.display.unit_system:
+            display = replace(project.display, units=system)
+            self.document.commit(replace(project, display=display), tr("Units"))
 
     def on_layout_picked(self, layout: Orientation) -> None:
         """Across or upright, as an undo step of the project."""
         self.tables.commit_open_editor()
         project = self.document.project
-        display = replace(project.display, orientation=layout)
-        self.document.commit(replace(project, display=display), tr("Lay"))
+        if layout != project.display.layout:
+            display = replace(project.display, orientation=layout)
+            self.document.commit(replace(project, display=display), tr("Lay"))
 
     # Window
 

@@ -4,6 +4,7 @@ import json
 import threading
 
 import pytest
+from msgspec import UNSET
 from PySide6.QtCore import QItemSelectionModel, QMimeData, QPoint, QPointF, Qt, QUrl
 from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette, QWheelEvent
 from PySide6.QtTest import QTest
@@ -247,6 +248,15 @@ def test_laying_the_sheet_upright_is_a_step_of_the_project(window):
     QTest.keyClick(picker, KEY.Key_End)
     assert window.document.project.display.layout == "vertical"
     assert window.document.undo_name == "Lay"
+
+
+def test_picking_what_is_already_so_is_no_step(qtbot, window):
+    bare = edits.set_value(window.document.project, ("display",), UNSET)
+    window.document.load(bare, window.document.path)
+    window.top_bar.units_picker.picked.emit(bare.display.unit_system)
+    window.top_bar.layout_picker.picked.emit(bare.display.layout)
+    assert window.document.undo_name is None
+    assert not window.isWindowModified()
 
 
 def wheel(qapp, widget, turn):
