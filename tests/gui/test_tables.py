@@ -212,6 +212,25 @@ def test_a_cell_of_several_records_shows_their_sum_and_is_not_for_typing(table):
     assert not index.flags() & Qt.ItemFlag.ItemIsEditable
 
 
+def test_typing_into_a_sum_says_where_its_loads_are_edited(table, pane, qtbot):
+    go_to(table, 3, "load_start")
+    with qtbot.waitSignal(pane.noted, check_params_cb=lambda line: "Loads table" in line):
+        QTest.keyClicks(table, "5")
+    go_to(table, 2, "load_start")
+    with qtbot.assertNotEmitted(pane.noted):
+        QTest.keyClicks(table, "5")
+
+
+def test_typing_a_load_without_a_case_says_what_to_do(qtbot, qapp, view):
+    pane = TablesPane(Document(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()})), view, LIGHT)
+    qtbot.addWidget(pane)
+    for key, row in (("segments", 1), ("joints", 0)):
+        table = pane.views[key]
+        go_to(table, row, "load_start" if key == "segments" else "force")
+        with qtbot.waitSignal(pane.noted, check_params_cb=lambda line: "add a load case" in line):
+            QTest.keyClicks(table, "5")
+
+
 def test_renaming_a_mark_takes_its_loads_along(table, document):
     enter(table, 2, "mark", "Neck")
     assert document.project.load_cases[0].segment_loads[0].segment == "Neck"

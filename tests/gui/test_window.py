@@ -313,6 +313,19 @@ def test_a_segment_inserted_after_the_start_row_is_the_first(window, table):
     assert window.document.project.segments[0].mark == "I"
 
 
+@pytest.mark.parametrize("key", [KEY.Key_Backspace, KEY.Key_Delete])
+def test_deleting_a_word_in_a_cell_deletes_no_segment(window, table, key):
+    count = len(window.document.project.segments)
+    go_to(table, 2, "length")
+    line = begin(table, "90 mm")
+    chord(line, key)
+    assert line.isVisible()
+    assert line.text() == ("90 " if key == KEY.Key_Backspace else "90 mm")
+    QTest.keyClick(line, KEY.Key_Escape)
+    assert len(window.document.project.segments) == count
+    assert window.document.undo_name is None
+
+
 def test_a_segment_is_split_in_the_middle_of_the_length_being_typed(window, table):
     go_to(table, 2, "length")
     begin(table, "900")

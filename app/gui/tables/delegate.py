@@ -8,7 +8,7 @@ the table is told of changes.
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QModelIndex, QObject, QPersistentModelIndex, QRect, QRectF, Qt, Signal
-from PySide6.QtGui import QBrush, QColor, QFontMetrics, QKeyEvent, QPainter, QPen
+from PySide6.QtGui import QBrush, QColor, QFontMetrics, QKeyEvent, QKeySequence, QPainter, QPen
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QLineEdit,
@@ -30,7 +30,16 @@ Index = QModelIndex | QPersistentModelIndex
 
 
 class CellEditor(QLineEdit):
-    """A cell's editor; says what is typed."""
+    """A cell's editor. Deleting a word in it is not the command that deletes segments."""
+
+    def event(self, event: QEvent) -> bool:
+        """Keep the keys that delete words for the text."""
+        if event.type() == QEvent.Type.ShortcutOverride and isinstance(event, QKeyEvent):
+            keys = QKeySequence.StandardKey
+            if event.matches(keys.DeleteStartOfWord) or event.matches(keys.DeleteEndOfWord):
+                event.accept()
+                return True
+        return super().event(event)
 
 
 class CellDelegate(QStyledItemDelegate):
