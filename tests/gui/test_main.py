@@ -58,4 +58,4 @@ def test_a_file_that_is_not_there_is_said_and_the_window_stays(tmp_path):
 
     code, texts = run_and_look(tmp_path / "gone.barwright.json", look)
     assert code == 0
-    assert "No such file" in texts[0]
+    assert "no such file" in texts[0]
