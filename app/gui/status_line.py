@@ -3,10 +3,13 @@
 from __future__ import annotations
 
 from PySide6.QtCore import Qt
-from PySide6.QtGui import QAccessible, QAccessibleEvent, QPainter, QPaintEvent
+from PySide6.QtGui import QAccessible, QAccessibleEvent, QPainter, QPaintEvent, QResizeEvent
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QSizePolicy, QWidget
 
 from app.words import tr
+
+LEAST_WIDTH = 40
+NEWS_SHARE = 0.7  # of the line, at most
 
 
 class StatusLine(QWidget):
@@ -16,6 +19,7 @@ class StatusLine(QWidget):
         super().__init__(parent)
         self.setObjectName("status_line")
         self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
+        self.setMinimumWidth(1)  # however long the news, the window can be made smaller
         self.solver = self._label(tr("Solver"))
         self.news = self._label(tr("News"))
         self.file = self._label(tr("File"))
@@ -33,9 +37,19 @@ class StatusLine(QWidget):
         return label
 
     def tell(self, text: str) -> None:
-        """News of a command, until the next."""
+        """News of a command, until the next; where the line is short, the solver's text gives way to them."""
         self.news.setText(text)
+        self._give_room()
         QAccessible.updateAccessibility(QAccessibleEvent(self.news, QAccessible.Event.NameChanged))
+
+    def _give_room(self) -> None:
+        needed = self.news.fontMetrics().horizontalAdvance(self.news.text()) + 2
+        self.news.setMinimumWidth(max(LEAST_WIDTH, min(needed, int(NEWS_SHARE * self.width()))))
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """The news' room follows the width."""
+        super().resizeEvent(event)
+        self._give_room()
 
 
 class ElidedLabel(QLabel):
@@ -46,7 +60,7 @@ class ElidedLabel(QLabel):
         self._whole = ""
         self.setTextFormat(Qt.TextFormat.PlainText)
         self.setSizePolicy(QSizePolicy.Policy.Preferred, QSizePolicy.Policy.Fixed)
-        self.setMinimumWidth(40)
+        self.setMinimumWidth(LEAST_WIDTH)
 
     def setText(self, text: str) -> None:
         """Show a text."""

@@ -18,6 +18,7 @@ from app.gui.actions import (
     shortcuts_of,
 )
 from app.gui.dialogs import TextDialog
+from app.gui.status_line import StatusLine
 
 REAL = [command for command in COMMANDS if command is not SEPARATOR]
 
@@ -84,3 +85,20 @@ def test_the_columns_of_a_shown_text_stand_under_each_other(qtbot):
         cursor.setPosition(cursor.position() + cursor.block().text().index(word))
         starts.append(dialog.body.cursorRect(cursor).left())
     assert starts[0] == starts[1]
+
+
+def test_the_solver_s_text_gives_way_to_news(qtbot):
+    line = StatusLine()
+    qtbot.addWidget(line)
+    line.solver.setText("Solved in 2.1 ms. " + 12 * "a long account ")
+    line.file.setText("rod.barwright.json, changed")
+    line.resize(1000, 24)
+    line.show()
+    line.tell(12 * "news ")
+    qtbot.waitUntil(lambda: line.news.width() >= line.news.fontMetrics().horizontalAdvance(12 * "news "))
+    line.tell(60 * "news ")
+    qtbot.waitUntil(lambda: line.news.width() >= 690)
+    line.resize(400, 24)
+    assert line.width() == 400
+    line.tell("")
+    qtbot.waitUntil(lambda: line.news.minimumWidth() == 40)
