@@ -701,3 +701,9 @@ def test_a_material_in_use_is_kept_and_names_who_uses_it(pane, document):
     delete = pane.views["materials"].table_model.table.delete
     with pytest.raises(NotTaken, match=r"^A is made of of A: give it another material first$"):
         delete(document.project, (0,), Sight("mm-N-MPa", None))
+
+
+def test_every_cell_has_a_name_that_can_be_read(pane):
+    """Names read "Length of A": a heading is a noun, not the start of a sentence."""
+    headings = [column.title for view in pane.views.values() for column in view.table_model.columns]
+    assert not [words for words in headings if words.endswith(" by") or words == "At most"]

@@ -94,7 +94,7 @@ COLUMNS = (
     ),
     Column(
         "support",
-        later("Held by"),
+        later("Support"),
         lambda row, sight: support_text(row.joint.support, sight.system),
         lambda row, sight: support_entry(row.joint.support, sight.system),
         _put_support,
@@ -102,7 +102,7 @@ COLUMNS = (
         width=20,
     ),
     _load("force", later("Force along +x"), "force"),
-    _load("movement", later("Support moves by"), "displacement"),
+    _load("movement", later("Support movement"), "displacement"),
     _figure("displacement", "displacement"),
     _figure("reaction", "force"),
 )

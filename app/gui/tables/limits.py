@@ -31,7 +31,7 @@ def _limit(kind: str, quantity: Quantity) -> Column:
 
     return Column(
         "limit",
-        later("At most"),
+        later("Limit"),
         lambda row, sight: format_value(row.limit, quantity, sight.system, strip=True),
         lambda row, sight: entry_text(row.limit, quantity, sight.system),
         put,
@@ -57,7 +57,7 @@ def _table(kind: str, title: str, columns: tuple[Column, ...], adding: Adding) -
 
 
 def _added(project: Project, kind: str, limit: DisplacementLimit | RelativeLimit | ReactionLimit) -> Change:
-    note = tr("the new limit is next to nothing until you type yours under “At most”")
+    note = tr("the new limit is next to nothing until you type yours")
     return Change(edits.add_record(project, ("limits", kind), limit), note)
 
 

@@ -166,7 +166,7 @@ SEGMENT_LOADS = _records(
         _number(
             "segment_loads", "temperature_end", later("Heated at end"), "temperature", "temperature_start"
         ),
-        _number("segment_loads", "lack_of_fit", later("Too long by"), "displacement"),
+        _number("segment_loads", "lack_of_fit", later("Lack of fit"), "displacement"),
     ),
     Adding(
         later("type a segment's mark to load it"), _add_segment_load, later("Add segment load"), "segment"
@@ -180,7 +180,7 @@ JOINT_LOADS = _records(
     (
         _reference("joint_loads", "joint", later("Joint")),
         _number("joint_loads", "force", later("Force along +x"), "force"),
-        _number("joint_loads", "movement", later("Support moves by"), "displacement"),
+        _number("joint_loads", "movement", later("Support movement"), "displacement"),
     ),
     Adding(later("type a joint's mark to load it"), _add_joint_load, later("Add joint load"), "joint"),
 )

@@ -127,7 +127,7 @@ COLUMNS = (
     ),
     Column(
         "heat",
-        later("Heated by"),
+        later("Temperature rise"),
         in_segments(show_heat, ""),
         in_segments(heat_entry, None),
         put_heat,
@@ -146,7 +146,7 @@ COLUMNS = (
     ),
     Column(
         "support",
-        later("Far end held by"),
+        later("Support at far end"),
         show_support,
         entry_of_support,
         put_support,
