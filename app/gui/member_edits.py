@@ -7,13 +7,14 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
+from msgspec import UnsetType
 from PySide6.QtCore import QObject, Signal
 
 from app import edits
 from app.gui.document import Document
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import TypingError, reason_of
-from app.words import tr
+from app.words import tr, trn
 from solver.model import Project
 
 
@@ -65,7 +66,10 @@ class MemberEdits(QObject):
         elif len(chosen) == len(self._document.project.segments):
             self.told.emit(tr("a member has at least one segment"))
         else:
+            before = self._document.project
             self._do(tr("Delete segments"), lambda project: edits.delete_segments(project, chosen))
+            if gone := also_gone(before, self._document.project):
+                self.told.emit(gone)
 
     def split(self) -> None:
         """The chosen segment in its middle."""
@@ -108,3 +112,23 @@ class MemberEdits(QObject):
         else:
             delete, sight = table.delete, view.table_model.sight
             self._do(tr(table.delete_name), lambda project: delete(project, chosen, sight))
+
+
+def also_gone(before: Project, after: Project) -> str:
+    """What went with the segments that a person did not choose, in words; empty where nothing did."""
+    kept = {joint.mark for joint in after.joints}
+    held = [j.mark for j in before.joints if j.mark not in kept and not isinstance(j.support, UnsetType)]
+    loads, limits = (count(before) - count(after) for count in (_loads, _limits))
+    parts = [tr("the support of joint {mark}").format(mark=mark) for mark in held]
+    parts += [trn("{count} load", "{count} loads", loads)] if loads else []
+    parts += [trn("{count} limit", "{count} limits", limits)] if limits else []
+    return tr("also gone: {things}").format(things=", ".join(parts)) if parts else ""
+
+
+def _loads(project: Project) -> int:
+    return sum(len(case.segment_loads) + len(case.joint_loads) for case in project.load_cases)
+
+
+def _limits(project: Project) -> int:
+    limits = project.limits
+    return len(limits.displacement) + len(limits.relative) + len(limits.reaction)

@@ -10,6 +10,7 @@ from PySide6.QtWidgets import QLineEdit, QVBoxLayout, QWidget
 
 from app import edits
 from app.gui.document import Document
+from app.gui.member_edits import MemberEdits, also_gone
 from app.gui.show import drafts_line
 from app.gui.tables.column import Figures, Sight
 from app.gui.tables.model import ERROR_ROLE, TableModel
@@ -21,8 +22,11 @@ from app.gui.view import Selection, View
 from solver.model import (
     AreaSection,
     Combination,
+    DisplacementLimit,
     FixedSupport,
+    Limits,
     LoadCase,
+    RelativeLimit,
     RoundSection,
     SegmentLoad,
     SpringSupport,
@@ -707,3 +711,22 @@ def test_every_cell_has_a_name_that_can_be_read(pane):
     """Names read "Length of A": a heading is a noun, not the start of a sentence."""
     headings = [column.title for view in pane.views.values() for column in view.table_model.columns]
     assert not [words for words in headings if words.endswith(" by") or words == "At most"]
+
+
+def test_what_goes_with_a_deleted_segment_is_told():
+    project = edits.set_value(shaft(), ("joints", 2, "support"), SpringSupport(stiffness=1e8))
+    limits = Limits(displacement=(DisplacementLimit("2", 1e-3),), relative=(RelativeLimit("1", "3", 1e-3),))
+    project = edits.set_value(project, ("limits",), limits)
+    assert also_gone(project, edits.delete_segments(project, (1,))) == (
+        "also gone: the support of joint 2, 1 load, 1 limit"
+    )
+    assert also_gone(shaft(), edits.delete_segments(shaft(), (0,))) == ""
+
+
+def test_the_status_tells_what_went_with_a_segment(pane, table, document):
+    told = []
+    commands = MemberEdits(document, pane)
+    commands.told.connect(told.append)
+    go_to(table, 3, "mark")
+    commands.delete_segments()
+    assert told == ["also gone: 2 loads"]
