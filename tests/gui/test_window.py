@@ -286,6 +286,23 @@ def test_the_wheel_changes_a_picker_only_while_it_has_the_keyboard(qapp, window,
     assert picker.currentIndex() == 1
 
 
+def test_tab_goes_from_the_findings_through_their_rows_and_only_then_on(window):
+    def focused():
+        return window.focusWidget()
+
+    findings = window.findings
+    rows = [row for row in findings.rows if row.row.leads_somewhere]
+    assert len(rows) > 2
+    findings.setFocus()
+    for row in rows:
+        QTest.keyClick(focused(), KEY.Key_Tab)
+        assert focused() is row
+    QTest.keyClick(focused(), KEY.Key_Tab)
+    assert not findings.isAncestorOf(focused())
+    QTest.keyClick(focused(), KEY.Key_Backtab)
+    assert focused() is rows[-1]
+
+
 # Member commands
 
 

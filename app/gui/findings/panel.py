@@ -108,8 +108,9 @@ class FindingsPanel(QScrollArea):
         while len(self._rows) < len(shown):
             row = FindingRow(self._theme)
             row.clicked.connect(self._on_row_clicked)
-            self._rows.append(row)
             self._rows_box.addWidget(row)
+            self.setTabOrder(self._rows[-1] if self._rows else self, row)  # else after the whole window
+            self._rows.append(row)
         for index, widget in enumerate(self._rows):
             if index < len(shown):
                 widget.show_row(shown[index])
