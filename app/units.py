@@ -8,6 +8,7 @@ international yard and pound agreement of 1959 (25.4 mm, 0.45359237 kg); standar
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
@@ -220,3 +221,19 @@ def utilisation_text(value: float, status: Status) -> str:
         if (float(text) > 1) == (status == "fail"):
             return text
     return repr(value)
+
+
+@cache
+def _before_unit() -> re.Pattern[str]:
+    """The space between a figure and any system's unit."""
+    symbols = {unit.symbol for system in SYSTEMS.values() for unit in system.values() if unit.symbol}
+    longest_first = sorted(symbols, key=lambda symbol: (-len(symbol), symbol))
+    return re.compile(rf"(?<=[\d⁰¹²³⁴⁵⁶⁷⁸⁹]) (?=(?:{'|'.join(map(re.escape, longest_first))})(?!\w))")
+
+
+def unbroken(text: str) -> str:
+    """A sentence for where lines are broken: no line ends between a number and its unit.
+
+    Only the window asks for it; what a terminal or a file gets stays plain, so that it can be searched.
+    """
+    return _before_unit().sub("\u00a0", text)

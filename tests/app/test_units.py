@@ -23,6 +23,7 @@ from app.units import (
     rounds_to,
     symbol,
     to_display,
+    unbroken,
     utilisation_text,
 )
 from solver.checks import PASS_MARGIN
@@ -207,3 +208,17 @@ def test_all_bits_of_odd_doubles_survive() -> None:
         text = entry_text(value, "spring", "in-kip-ksi")
         back = float(Fraction(text) * SYSTEMS["in-kip-ksi"]["spring"].factor)
         assert struct.unpack("<Q", struct.pack("<d", back))[0] == bits
+
+
+@pytest.mark.parametrize("system", SYSTEM_NAMES)
+def test_no_line_ends_between_a_number_and_its_unit(system: str) -> None:
+    for quantity in QUANTITIES:
+        for value in (1.0, 3.2e-12, -4.5e15):
+            text = format_value(value, quantity, system, with_unit=True)
+            assert " " not in unbroken(text)
+            assert unbroken(text).replace("\u00a0", " ") == text
+
+
+def test_elsewhere_lines_end_as_before() -> None:
+    sentence = "B: 80.0 of 100 MPa in compression, at 1000 mm, Case 2 inside"
+    assert unbroken(sentence) == "B: 80.0 of 100\u00a0MPa in compression, at 1000\u00a0mm, Case 2 inside"

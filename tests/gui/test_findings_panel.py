@@ -69,6 +69,15 @@ class TestContent:
             ends = row.band.compression_text, row.band.tension_text
             assert row.band_named == (ends != (above.band.compression_text, above.band.tension_text))
 
+    def test_no_line_ends_between_a_number_and_its_unit(self):
+        stress, limit = ROD_FINDINGS.segments[0], ROD_FINDINGS.limits[0]
+        shown = {row.spoken: row.text for row in rows(ROD_FINDINGS)}
+        assert " MPa" in stress.short
+        assert shown[stress.sentence] == stress.short.replace(" MPa", "\u00a0MPa").replace(" mm", "\u00a0mm")
+        assert shown[limit.sentence] != limit.sentence
+        (problem,) = problem_rows(("Length of A: must be greater than 0, is −5 mm",))
+        assert problem.text.endswith("−5\u00a0mm")
+
     def test_reactions_are_those_of_the_shown_state_or_of_all(self):
         of_all = blocks(ROD_FINDINGS, Shown("envelope"))
         name = ROD_FINDINGS.books[1].name

@@ -7,6 +7,7 @@ from typing import Literal, TypeAlias
 
 from app.findings import Band, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
 from app.gui.view import Shown
+from app.units import unbroken
 from app.words import tr
 
 Tone: TypeAlias = Literal["pass", "fail", "not_made", "problem", "note"]
@@ -55,7 +56,7 @@ def rows(findings: Findings) -> tuple[Row, ...]:
     """Checks, the worst first, then what was not checked, then what the calculation does not say."""
     checked = sorted([*_segment_rows(findings), *map(_limit_row, findings.limits)], key=lambda pair: -pair[0])
     not_made = [_not_made_row(item) for item in findings.not_made]
-    notes = [Row("note", "!", text, text) for text in findings.notes]
+    notes = [Row("note", "!", unbroken(text), text) for text in findings.notes]
     return (*(row for _, row in checked), *not_made, *notes)
 
 
@@ -74,7 +75,7 @@ def _segment_row(item: SegmentFinding, *, named: bool) -> Row:
     return Row(
         tone=item.status,
         mark=item.mark,
-        text=item.short,
+        text=unbroken(item.short),
         spoken=item.sentence,
         value=item.utilisation_text,
         band=item.band,
@@ -88,7 +89,7 @@ def _limit_row(item: LimitFinding) -> tuple[float, Row]:
     row = Row(
         tone=item.status,
         mark="",
-        text=item.sentence,
+        text=unbroken(item.sentence),
         spoken=item.sentence,
         value=item.utilisation_text,
         position=item.position,
@@ -101,7 +102,7 @@ def _not_made_row(item: NotMade) -> Row:
     return Row(
         tone="not_made",
         mark="!",
-        text=item.sentence,
+        text=unbroken(item.sentence),
         spoken=f"{item.sentence}. {item.remedy}",
         remedy=item.remedy,
         segments=frozenset(item.segments),
@@ -111,7 +112,7 @@ def _not_made_row(item: NotMade) -> Row:
 
 def problem_rows(problems: tuple[str, ...]) -> tuple[Row, ...]:
     """Why there are no results."""
-    return tuple(Row("problem", "!", text, text) for text in problems)
+    return tuple(Row("problem", "!", unbroken(text), text) for text in problems)
 
 
 def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:
