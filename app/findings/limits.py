@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
+from app.findings.listing import listed
 from app.findings.records import LimitFinding, NotMade
 from app.findings.stress import worst_by
 from app.phrases.checks import NOT_MADE, check_sentence, remedy_text
@@ -58,19 +59,9 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: P
     places = [s.mark for s in project.segments if s.mark in segments]
     places += [j.mark for j in project.joints if j.mark in joints]
     return NotMade(
-        sentence=tr(NOT_MADE[reason]).format(places=_listed(places), states=_listed(states)),
+        sentence=tr(NOT_MADE[reason]).format(places=listed(places), states=listed(states)),
         remedy=remedy_text(reason, material),
         count=len(checks),
         segments=tuple(i for i, s in enumerate(project.segments) if s.mark in segments),
         joints=tuple(i for i, j in enumerate(project.joints) if j.mark in joints),
     )
-
-
-_MOST_LISTED = 6
-
-
-def _listed(names: Sequence[str]) -> str:
-    """Names one after the other; many are cut short, with how many there are."""
-    if len(names) <= _MOST_LISTED:
-        return ", ".join(names)
-    return tr("{names} … ({count})").format(names=", ".join(names[: _MOST_LISTED - 1]), count=len(names))

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from app.findings.books import movements, state_books
+from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
 from app.findings.records import Findings
 from app.findings.stress import segment_findings
@@ -35,10 +36,10 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
 
 
 def notes(results: Results) -> tuple[str, ...]:
-    """What this calculation does not say, where it matters for this member."""
+    """What this calculation does not say, and what was entered in vain, where it matters for this member."""
     standing = []
     if has_compression(results.checks):
         standing.append(tr(BUCKLING))
     if (results.chain.bedding > 0).any():
         standing.append(tr(BEDDING))
-    return tuple(standing)
+    return (*standing, *idle_notes(results))

@@ -12,6 +12,10 @@ BUCKLING: Final = later("Buckling in compression is not covered by this version:
 BEDDING: Final = later(
     "The bedding pushes and pulls alike and has no slip limit: check that the ground can do so"
 )
+NO_EXPANSION: Final = later(
+    "The temperature of {places} in {cases} has no effect: the material has no expansion"
+)
+NO_DENSITY: Final = later("Gravity in {cases} gives no weight to {places}: the material has no density")
 
 
 def numerical_error_sentence(bound: float) -> str:

@@ -21,6 +21,7 @@ from solver.model import (
     Project,
     ReactionLimit,
     RelativeLimit,
+    SegmentLoad,
     SpringSupport,
 )
 from solver.solve import solve
@@ -125,6 +126,32 @@ def test_bedding_is_said_to_have_no_slip_limit() -> None:
     assert result.books[0].bedding_text == "−1000 N"
 
 
+def test_a_temperature_without_expansion_is_said_to_have_no_effect() -> None:
+    parts = [Part(1.0, area(1e-3)), Part(1.0, area(1e-3), expansion=1.2e-5), Part(1.0, area(1e-3))]
+    heat = [
+        SegmentLoad(segment="A", temperature_start=30.0),
+        SegmentLoad(segment="B", temperature_start=30.0),
+    ]
+    fade = [SegmentLoad(segment="C", temperature_start=0.0, temperature_end=5.0)]
+    unused = [SegmentLoad(segment="B", load_start=1.0), SegmentLoad(segment="A", temperature_start=1.0)]
+    cases = [case("Sun", on_segments=heat), case("Dusk", on_segments=fade), case("Fire", on_segments=unused)]
+    used = Combination(name="Day", factors={"Sun": 1.0, "Dusk": 0.5, "Fire": 0.0})
+    project = member(parts, {0: FixedSupport()}, cases, [used])
+    note = "The temperature of A, C in Sun, Dusk has no effect: the material has no expansion"
+    assert found(project).notes == (note,)
+    sound = tuple(structs.replace(material, expansion=1e-5) for material in project.materials)
+    assert found(structs.replace(project, materials=sound)).notes == ()
+
+
+def test_gravity_without_density_is_said_to_give_no_weight() -> None:
+    parts = [Part(0.1, area(1e-3), density=7850.0)] + [Part(0.1, area(1e-3))] * 8
+    project = member(parts, {0: FixedSupport()}, [case("Own", gravity=9.81)])
+    note = "Gravity in Own gives no weight to B, C, D, E, F and 3 more: the material has no density"
+    assert found(project).notes == (note,)
+    still = tuple(structs.replace(load, gravity=0.0) for load in project.load_cases)
+    assert found(structs.replace(project, load_cases=still)).notes == ()
+
+
 def test_the_books_add_up_as_shown() -> None:
     result = found(stepped(**ALLOWABLES), "mm-kN-MPa")
     both, rare = result.books
@@ -166,7 +193,7 @@ def test_many_names_are_cut_short() -> None:
     steel = structs.replace(project.materials[0], name="Steel")
     segments = tuple(structs.replace(segment, material="Steel") for segment in project.segments)
     (missing,) = found(structs.replace(project, materials=(steel,), segments=segments)).not_made
-    assert missing.sentence == "Not checked: tension in A, B, C, D, E … (9) (Load)"
+    assert missing.sentence == "Not checked: tension in A, B, C, D, E and 4 more (Load)"
     assert missing.remedy == "enter an allowable stress in tension for Steel"
 
 
