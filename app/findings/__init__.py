@@ -1,16 +1,16 @@
 """What is found, as window, terminal and sheet all show it: frozen values made from `Results`, with words.
 
 `records` says what there is to show, `stress` and `limits` make the checked part, `books` reactions,
-movements and energy. Nothing here is computed anew: the numbers were made and compared by the solver.
+displacements and energy. Nothing here is computed anew: the numbers were made and compared by the solver.
 """
 
 from app.findings.make import findings
 from app.findings.records import (
     Band,
     Findings,
+    JointDisplacement,
     JointReaction,
     LimitFinding,
-    Movement,
     NotMade,
     SegmentFinding,
     StateBooks,
@@ -19,9 +19,9 @@ from app.findings.records import (
 __all__ = [
     "Band",
     "Findings",
+    "JointDisplacement",
     "JointReaction",
     "LimitFinding",
-    "Movement",
     "NotMade",
     "SegmentFinding",
     "StateBooks",

@@ -1,4 +1,4 @@
-"""The books of each checked state: reactions with the sum of all forces along x, energies; and the movements.
+"""The books of each checked state: reactions with the sum of all forces along x, energies, displacements.
 
 Every figure of a sum has the same decimals, those of its largest part, so that the column can be added by
 hand; what is left over is shown to the same decimals.
@@ -10,9 +10,9 @@ import math
 
 import numpy as np
 
-from app.findings.records import JointReaction, Movement, StateBooks
+from app.findings.records import JointDisplacement, JointReaction, StateBooks
 from app.numerals import decimals_for, fixed
-from app.phrases.notes import numerical_error_sentence
+from app.phrases.notes import numerical_error_text
 from app.units import format_value, symbol, to_display
 from solver.arrays import FloatArray
 from solver.model import UnitSystemName
@@ -49,7 +49,7 @@ def _books(results: Results, index: int, state: State, bedded: bool, system: Uni
         residual_text=column.text(residual),
         strain_text=_energy(solution.strain_energy[index], system),
         potential_text=_energy(solution.potential[index], system),
-        numerical_error=numerical_error_sentence(float(solution.error_bound[index])),
+        numerical_error=numerical_error_text(float(solution.error_bound[index])),
     )
 
 
@@ -79,17 +79,19 @@ def _energy(value: float, system: UnitSystemName) -> str:
     return format_value(float(value), "energy", system, with_unit=True)
 
 
-def movements(results: Results, system: UnitSystemName) -> tuple[Movement, ...]:
+def displacements(results: Results, system: UnitSystemName) -> tuple[JointDisplacement, ...]:
     """For each joint the displacement of largest size among the checked states."""
     states = [state.name for state in results.states if state.checked]
     moved = results.solution.joint_displacement[: len(states)]
     worst = np.argmax(np.abs(moved), axis=0).tolist()
     return tuple(
-        _movement(index, joint.mark, float(moved[row, index]), states[row], system)
+        _displacement(index, joint.mark, float(moved[row, index]), states[row], system)
         for index, (joint, row) in enumerate(zip(results.project.joints, worst, strict=True))
     )
 
 
-def _movement(joint: int, mark: str, value: float, state: str, system: UnitSystemName) -> Movement:
+def _displacement(
+    joint: int, mark: str, value: float, state: str, system: UnitSystemName
+) -> JointDisplacement:
     text = format_value(value, "displacement", system, with_unit=True)
-    return Movement(joint, mark, value, text, state)
+    return JointDisplacement(joint, mark, value, text, state)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from app.findings.books import movements, state_books
+from app.findings.books import displacements, state_books
 from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
 from app.findings.records import Findings
@@ -17,7 +17,7 @@ from solver.results import Results
 
 def findings(results: Results, system: UnitSystemName) -> Findings:
     """What there is to say about the results, in the display units of a system."""
-    moved = movements(results, system)
+    moved = displacements(results, system)
     checked = [index for index, state in enumerate(results.states) if state.checked]
     return Findings(
         verdict=results.verdict,
@@ -28,8 +28,8 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
         not_made=not_made(results),
         notes=notes(results),
         books=state_books(results, system),
-        movements=moved,
-        largest_movement=max(moved, key=lambda movement: abs(movement.value)),
+        displacements=moved,
+        largest_displacement=max(moved, key=lambda joint: abs(joint.value)),
         mass_text=format_value(results.mass, "mass", system, with_unit=True),
         numerical_error=numerical_error_sentence(float(results.solution.error_bound[checked].max())),
     )

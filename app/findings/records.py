@@ -89,11 +89,11 @@ class StateBooks:
     residual_text: str  # what is left of loads + reactions + bedding
     strain_text: str
     potential_text: str
-    numerical_error: str
+    numerical_error: str  # beside a name of its own: "at most 3·10⁻¹¹ …"
 
 
 @dataclass(frozen=True, slots=True)
-class Movement:
+class JointDisplacement:
     """The largest displacement of one joint over the checked states, with its sign."""
 
     joint: int
@@ -115,7 +115,7 @@ class Findings:
     not_made: tuple[NotMade, ...]
     notes: tuple[str, ...]
     books: tuple[StateBooks, ...]  # in the states' order
-    movements: tuple[Movement, ...]  # along the chain
-    largest_movement: Movement
+    displacements: tuple[JointDisplacement, ...]  # along the chain
+    largest_displacement: JointDisplacement
     mass_text: str
     numerical_error: str  # of the worst state

@@ -14,16 +14,9 @@ from PySide6.QtWidgets import (
 )
 
 from app.gui.document import Document
-from app.words import later, tr
+from app.title_fields import TITLE_FIELDS
+from app.words import tr
 from solver.model import Project, SheetTexts
-
-FIELDS: tuple[tuple[str, str], ...] = (
-    ("job", later("Job")),
-    ("author", later("Made by")),
-    ("checker", later("Checked by")),
-    ("revision", later("Revision")),
-    ("date", later("Date")),
-)
 
 
 class TitleBlockDialog(QDialog):
@@ -37,10 +30,10 @@ class TitleBlockDialog(QDialog):
         self.title = QLineEdit(project.title)
         self.notes = QPlainTextEdit(project.notes)
         self.notes.setTabChangesFocus(True)
-        self.fields = {key: QLineEdit(getattr(project.sheet, key)) for key, _words in FIELDS}
+        self.fields = {key: QLineEdit(getattr(project.sheet, key)) for key, _words in TITLE_FIELDS}
         form = QFormLayout()
         self._add_row(form, tr("Title"), self.title)
-        for key, words in FIELDS:
+        for key, words in TITLE_FIELDS:
             self._add_row(form, tr(words), self.fields[key])
         self._add_row(form, tr("Notes"), self.notes)
         buttons = QDialogButtonBox(
@@ -75,6 +68,6 @@ class TitleBlockDialog(QDialog):
         changed: dict[str, object] = {key: text for key, text in own.items() if text != getattr(project, key)}
         if sheet:
             changed["sheet"] = SheetTexts(
-                **{key: sheet.get(key, getattr(project.sheet, key)) for key, _ in FIELDS}
+                **{key: sheet.get(key, getattr(project.sheet, key)) for key, _ in TITLE_FIELDS}
             )
         return replace(project, **changed) if changed else project

@@ -20,12 +20,14 @@ NO_DENSITY: Final = later("Gravity in {cases} gives no weight to {places}: the m
 
 def numerical_error_sentence(bound: float) -> str:
     """The relative error bound of a state (or the largest of several) in words; never rounded down."""
+    return tr("Numerical error {bound}").format(bound=numerical_error_text(bound))
+
+
+def numerical_error_text(bound: float) -> str:
+    """The same for where its name stands beside it."""
     if not math.isfinite(bound):
-        return tr("Numerical error unknown")
-    sentence = tr(
-        "Numerical error at most {bound} (displacement, energy norm);"
-        " it says nothing about the model or the input"
-    )
+        return tr("unknown")
+    sentence = tr("at most {bound} (displacement, energy norm); it says nothing about the model or the input")
     return sentence.format(bound=at_most(bound))
 
 

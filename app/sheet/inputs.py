@@ -235,7 +235,7 @@ def _limits(project: Project, say: Readings) -> Iterator[Block]:
         ),
         *(
             [
-                tr("Movement of joint {end} against {start}").format(end=v.end, start=v.start),
+                tr("Relative displacement of joints {start} to {end}").format(end=v.end, start=v.start),
                 "|Δu|",
                 say.exact(v.limit, "displacement", unit=True),
             ]

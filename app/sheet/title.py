@@ -7,6 +7,7 @@ from typing import Final
 
 from app.sheet.blocks import Value
 from app.sheet.printable import shortened
+from app.title_fields import TITLE_FIELDS
 from app.words import tr
 from solver.model import Project
 
@@ -26,15 +27,12 @@ class Origin:
 
 def title_block(project: Project, origin: Origin) -> dict[str, Value]:
     """The fields of the title block, as pairs in reading order; what nobody filled in stays blank to sign."""
-    sheet = project.sheet
+    texts = [(tr(name), str(getattr(project.sheet, key))) for key, name in TITLE_FIELDS]
+    fields: list[Value] = [[name, shortened(text, _LONGEST_FIELD)] for name, text in texts]
     return {
         "title": shortened(project.title, LONGEST_TITLE) or tr("Untitled member"),
         "fields": [
-            [tr("Job"), shortened(sheet.job, _LONGEST_FIELD)],
-            [tr("Revision"), shortened(sheet.revision, _LONGEST_FIELD)],
-            [tr("Author"), shortened(sheet.author, _LONGEST_FIELD)],
-            [tr("Checker"), shortened(sheet.checker, _LONGEST_FIELD)],
-            [tr("Date of the calculation"), shortened(sheet.date, _LONGEST_FIELD)],
+            *fields,
             [tr("Date of this sheet"), origin.date],
             [tr("File"), shortened(origin.file_name, _LONGEST_FIELD)],
             [tr("Program"), origin.program],

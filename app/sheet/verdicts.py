@@ -32,7 +32,7 @@ def kind_words(check: Check) -> str:
         "tension": tr("stress in tension"),
         "compression": tr("stress in compression"),
         "displacement": tr("displacement"),
-        "relative": tr("relative movement"),
+        "relative": tr("relative displacement"),
         "reaction": tr("reaction"),
     }[check.check]
 

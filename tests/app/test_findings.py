@@ -163,19 +163,19 @@ def test_the_books_add_up_as_shown() -> None:
     assert rare.potential_text == "−19.05 J"
 
 
-def test_movements_are_the_largest_of_the_checked_states() -> None:
+def test_displacements_are_the_largest_of_the_checked_states() -> None:
     result = found(stepped(**ALLOWABLES))
-    assert [(item.mark, item.text, item.state) for item in result.movements] == [
+    assert [(item.mark, item.text, item.state) for item in result.displacements] == [
         ("0", "0 mm", "Both"),
         ("1", "0.3810 mm", "Rare"),
         ("2", "0.1905 mm", "Rare"),
     ]
-    assert result.largest_movement.joint == 1
+    assert result.largest_displacement.joint == 1
 
 
-def test_a_movement_back_counts_by_its_size() -> None:
+def test_a_displacement_back_counts_by_its_size() -> None:
     loads = [case(name, on_joints=[JointLoad(joint="1", force=f)]) for name, f in (("a", 1e3), ("b", -21e3))]
-    (_, tip) = found(member([Part(1.0, area(1e-3))], {0: FixedSupport()}, loads)).movements
+    (_, tip) = found(member([Part(1.0, area(1e-3))], {0: FixedSupport()}, loads)).displacements
     assert (tip.text, tip.state) == ("−0.1000 mm", "b")
 
 

@@ -90,6 +90,11 @@ class TestContent:
         ]
         assert ROD_FINDINGS.books[1].residual_text in values
 
+    def test_the_largest_displacements_are_called_so(self):
+        block = blocks(ROD_FINDINGS, Shown("envelope"))[-2]
+        assert block.title == "Largest displacements"
+        assert [line.value for line in block.lines] == [item.text for item in ROD_FINDINGS.displacements]
+
     def test_problems_are_rows_too(self):
         assert [row.text for row in problem_rows(("one", "two"))] == ["one", "two"]
 

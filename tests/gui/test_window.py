@@ -30,6 +30,7 @@ from app.gui.recovery import encode, left_behind
 from app.gui.show import GRACE
 from app.gui.tables.delegate import BAR_WIDTH, MARGIN
 from app.gui.view import Shown
+from app.sheet.title import Origin, title_block
 from app.units import SYSTEM_NAMES
 from solver.errors import Cancelled
 from tests.gui.hand import begin, cell, chord, editor, enter, go_to
@@ -657,6 +658,9 @@ def test_the_title_block_is_one_step(qtbot, window):
     from app.gui.title_block import TitleBlockDialog
 
     dialog = dialog_of(window, TitleBlockDialog)
+    printed = [name for name, _ in title_block(window.document.project, Origin("", "", "", ""))["fields"]]
+    asked = [field.accessibleName() for field in dialog.fields.values()]
+    assert asked == printed[: len(asked)], "the form calls its fields what the sheet calls them"
     dialog.title.selectAll()
     QTest.keyClicks(dialog.title, "Mooring rod")
     QTest.keyClicks(dialog.fields["checker"], "H. Lind")

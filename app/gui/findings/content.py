@@ -116,14 +116,14 @@ def problem_rows(problems: tuple[str, ...]) -> tuple[Row, ...]:
 
 
 def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:
-    """Reactions of the shown state (of all where the envelope is shown), movements, the rest of the books."""
+    """Reactions of the shown state (of all for the envelope), displacements, the rest of the books."""
     chosen = [b for b in findings.books if (b.kind, b.name) == (shown.kind, shown.name)]
     reactions = [_reactions(book) for book in chosen or findings.books]
     moved = tuple(
         Line(tr("joint {mark}, {state}").format(mark=m.mark, state=m.state), m.text)
-        for m in findings.movements
+        for m in findings.displacements
     )
-    return (*reactions, Block(tr("Largest movements"), moved), _rest(findings, chosen or findings.books))
+    return (*reactions, Block(tr("Largest displacements"), moved), _rest(findings, chosen or findings.books))
 
 
 def _reactions(book: StateBooks) -> Block:

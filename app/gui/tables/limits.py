@@ -11,7 +11,7 @@ from app.words import later, tr
 from solver.model import DisplacementLimit, Project, ReactionLimit, RelativeLimit
 
 # What a new limit starts from, to be typed over: so little that hardly anything passes until it is.
-FIRST_MOVEMENT = 1e-6  # m
+FIRST_DISPLACEMENT = 1e-6  # m
 FIRST_REACTION = 1.0  # N
 
 
@@ -62,7 +62,7 @@ def _added(project: Project, kind: str, limit: DisplacementLimit | RelativeLimit
 
 
 def _add_displacement(project: Project, text: str, _sight: Sight) -> Change:
-    return _added(project, "displacement", DisplacementLimit(text.strip(), FIRST_MOVEMENT))
+    return _added(project, "displacement", DisplacementLimit(text.strip(), FIRST_DISPLACEMENT))
 
 
 def _add_reaction(project: Project, text: str, _sight: Sight) -> Change:
@@ -74,7 +74,7 @@ def _add_relative(project: Project, text: str, _sight: Sight) -> Change:
     marks = [part.strip() for part in text.replace("→", "->").split("->")]
     if len(marks) != 2:
         raise NotTaken(tr("type two joints' marks, such as 0 -> 2"))
-    return _added(project, "relative", RelativeLimit(*marks, FIRST_MOVEMENT))
+    return _added(project, "relative", RelativeLimit(*marks, FIRST_DISPLACEMENT))
 
 
 DISPLACEMENT = _table(

@@ -161,7 +161,7 @@ def test_the_governing_displacement_can_be_redone_by_hand() -> None:
     )
 
 
-def test_the_governing_reaction_and_relative_movement_can_be_redone_by_hand() -> None:
+def test_the_governing_reaction_and_relative_displacement_can_be_redone_by_hand() -> None:
     sample = read_sample("tie_rod")
     tight = structs.replace(sample, limits=Limits(reaction=(ReactionLimit(joint="0", limit=1e3),)))
     parts = formula_parts(tight)
@@ -225,6 +225,20 @@ def test_every_page_has_the_caution_and_its_number(name: str) -> None:
         text = " ".join(page.extract_text().split())
         assert caution() in text
         assert f"Page {number} of {count}" in text
+
+
+def test_only_supports_move_and_what_stands_beside_its_name_does_not_say_it_again() -> None:
+    sample = read_sample("tie_rod")
+    limits = Limits(relative=(RelativeLimit(start="3", end="6", limit=1e-3),))
+    blocks = content(structs.replace(sample, limits=limits))["blocks"]
+    (limit,) = next(block["rows"] for block in blocks if block.get("title") == "Limits")
+    assert limit[0] == "Relative displacement of joints 3 to 6"
+    checks = [row for block in blocks if block["kind"] == "table" for row in block["rows"] if len(row) == 8]
+    assert "relative displacement" in {row[1] for row in checks}
+    facts = [row for block in blocks if block["kind"] == "facts" for row in block["rows"]]
+    bounds = [value for name, value in facts if name == "Numerical error"]
+    assert len(bounds) == 3
+    assert all(value.startswith("at most ") for value in bounds)
 
 
 @pytest.mark.parametrize("name", names())
