@@ -1,13 +1,18 @@
-"""The faces of the sheet's texts, all from the widget's own font, and their measure in pixels."""
+"""The faces of the sheet's texts, all from the widget's own font, and their measure in pixels.
+
+Most texts stay the same from one keystroke to the next, so what was measured is kept.
+"""
 
 from __future__ import annotations
 
+from functools import lru_cache
 from typing import Literal, TypeAlias
 
 from PySide6.QtCore import QSizeF, Qt
 from PySide6.QtGui import QFont, QFontMetricsF
 
 Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
+_KEPT = 8192  # measures of texts
 _SIZES: dict[Face, float] = {"plain": 1.0, "strong": 1.06, "small": 0.9, "small_strong": 0.9, "mark": 1.25}
 
 
@@ -17,11 +22,13 @@ class Fonts:
     def __init__(self, base: QFont) -> None:
         self._fonts = {face: _sized(base, face) for face in _SIZES}
         self._metrics = {face: QFontMetricsF(font) for face, font in self._fonts.items()}
+        self._width = lru_cache(_KEPT)(lambda text, face: self._metrics[face].horizontalAdvance(text))
+        self._height = {face: metrics.height() for face, metrics in self._metrics.items()}
 
     @property
     def text_height(self) -> float:
         """The height of a line of plain text."""
-        return self._metrics["plain"].height()
+        return self._height["plain"]
 
     def font(self, face: Face) -> QFont:
         """The font of a face."""
@@ -29,8 +36,10 @@ class Fonts:
 
     def measure(self, text: str, face: Face) -> QSizeF:
         """Width and height of a text; line breaks in it count."""
-        metrics, lines = self._metrics[face], text.split("\n")
-        return QSizeF(max(map(metrics.horizontalAdvance, lines)), len(lines) * metrics.height())
+        if "\n" not in text:
+            return QSizeF(self._width(text, face), self._height[face])
+        lines = text.split("\n")
+        return QSizeF(max(self._width(line, face) for line in lines), len(lines) * self._height[face])
 
     def wrapped(self, text: str, face: Face, width: float, between: str = " ") -> str:
         """The text with line breaks at spaces (or at what else stands `between` its parts), so that no line
@@ -38,10 +47,12 @@ class Fonts:
 
         So measured and painted lines are the same; Qt's own wrapping may paint more than it measures.
         """
-        metrics, lines = self._metrics[face], []
+        if self._width(text, face) <= width:
+            return text
+        lines: list[str] = []
         for word in text.split(between):
             longer = f"{lines[-1]}{between}{word}" if lines else word
-            if lines and metrics.horizontalAdvance(longer) <= width:
+            if lines and self._width(longer, face) <= width:
                 lines[-1] = longer
             else:
                 lines.append(word)

@@ -29,8 +29,9 @@ class Painted(QGraphicsObject):
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
-        self._theme = theme
-        self.update()
+        if theme != self._theme:
+            self._theme = theme
+            self.update()
 
     def set_rect(self, rect: QRectF) -> None:
         """Another place."""

@@ -108,7 +108,7 @@ class SheetScene(QGraphicsScene):
         if fresh:
             self._show_curves()
         self.drawing.show_member(Member.of(project, self._shown))
-        self.dress(self._theme)
+        self._hand_out_colours()
         self._place_all()
 
     def show_state(self, shown: Shown) -> None:
@@ -192,13 +192,17 @@ class SheetScene(QGraphicsScene):
         """Give everything its colours; results that are out of date have none."""
         self._theme = theme
         self.setBackgroundBrush(colour(theme.paper))
+        self._hand_out_colours()
+        for strip in self.strips:
+            strip.refresh()
+
+    def _hand_out_colours(self) -> None:
+        theme = self._theme
         of_results = theme if self._current else greyed(theme)
         for item in (self.drawing, *self._over()):
             item.set_theme(theme)
         for item in (*self.strips, self._readout):
             item.set_theme(of_results)
-        for strip in self.strips:
-            strip.refresh()
 
     # The cursor
 

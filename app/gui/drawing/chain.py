@@ -19,7 +19,7 @@ TICK = 4.0
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 
-def draw_chain(sketch: Sketch) -> None:
+def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> None:
     """Line, ticks, lengths and sections of all segments inside the window."""
     rows = sketch.rows
     low, high = sketch.window
@@ -28,8 +28,8 @@ def draw_chain(sketch: Sketch) -> None:
         if sketch.holds(joint):
             along = sketch.along(joint)
             sketch.line((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK), width=1.6)
-    sketch.put(length_wishes(sketch), rows.lengths, "high", TIGHT)
-    sketch.put(section_wishes(sketch), rows.sections, "low", TIGHT)
+    sketch.put(lengths, rows.lengths, "high", TIGHT)
+    sketch.put(sections, rows.sections, "low", TIGHT)
     for index in range(len(sketch.member.project.segments)):
         span = sketch.shown_span(index)
         if span is not None:

@@ -5,7 +5,7 @@ Needs no window: only a ruler, a rectangle and the measure of texts.
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import dataclass
 
 from PySide6.QtCore import QPointF, QRectF, QSizeF
 
@@ -20,7 +20,7 @@ from app.gui.drawing.chain import (
 )
 from app.gui.drawing.loads import draw_loads, lies_outside, load_wishes, no_loads_text
 from app.gui.drawing.member import Member
-from app.gui.drawing.placing import TIGHT, Span, Wish
+from app.gui.drawing.placing import TIGHT, Span, Wish, fits
 from app.gui.drawing.shapes import Part, Picture, Text
 from app.gui.drawing.sketch import Rows, Sketch
 from app.gui.drawing.supports import draw_supports, hanging_wishes, hangs, support_of
@@ -44,14 +44,30 @@ MOST_ROWS = 3  # of labels of loads; upright as much less of a column
 COLUMN = 0.34  # widest column of load labels upright, of the drawing's room
 
 
+@dataclass(frozen=True, slots=True)
+class _Wishes:
+    """The labels that want a place in rows: how much room those get follows from them."""
+
+    loads: list[Wish]
+    lengths: list[Wish]
+    sections: list[Wish]
+    hanging: list[Wish]
+
+    @classmethod
+    def of(cls, sketch: Sketch) -> _Wishes:
+        return cls(load_wishes(sketch), length_wishes(sketch), section_wishes(sketch), hanging_wishes(sketch))
+
+
 def lay_out(member: Member, place: Place) -> Picture:
     """The picture of a member in its place."""
-    sketch = _sketch(member, place)
-    draw_chain(sketch)
+    sketch = Sketch(member, place, _no_rows(), zero=0.0, scale=0.0)
+    wishes = _Wishes.of(sketch)
+    _give_rows(sketch, wishes)
+    draw_chain(sketch, wishes.lengths, wishes.sections)
     draw_body(sketch)
-    draw_supports(sketch)
+    draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
-    draw_loads(sketch)
+    draw_loads(sketch, wishes.loads)
     aim_at_joints(sketch)
     _draw_factor(sketch)
     _set_edge(sketch)
@@ -74,22 +90,19 @@ def _level_column(sketch: Sketch) -> QRectF:
     return QRectF(QPointF(rect.right() - width - LEVEL_GAP - 6.0, rect.top()), rect.bottomRight())
 
 
-def _sketch(member: Member, place: Place) -> Sketch:
-    """A sketch with its rows: those that are needed get their room, the member the rest."""
-    draft = Sketch(member, place, _no_rows(), zero=0.0, scale=0.0)
+def _give_rows(sketch: Sketch, wishes: _Wishes) -> None:
+    """Give a sketch its rows: those that are needed get their room, the member the rest."""
+    place = sketch.place
     low, high = place.axes.across_of(place.rect)
     if place.axes.upright:
-        high = _level_column(draft).left()
-        draft.zero = high
+        high = _level_column(sketch).left()
+        sketch.zero = high
     else:
-        draft.zero = low
-    rows = _rows(draft, high - low)
-    thickest = _thickest(member)
-    factor = _factor(rows.half / (thickest * place.ruler.pixels_per_metre))
-    scale = factor * place.ruler.pixels_per_metre
-    sketch = replace(draft, rows=rows, scale=scale)
+        sketch.zero = low
+    sketch.rows = _rows(sketch, wishes, high - low)
+    factor = _factor(sketch.rows.half / (_thickest(sketch.member) * place.ruler.pixels_per_metre))
+    sketch.scale = factor * place.ruler.pixels_per_metre
     sketch.picture.factor = factor
-    return sketch
 
 
 def _no_rows() -> Rows:
@@ -97,30 +110,29 @@ def _no_rows() -> Rows:
     return Rows((nothing,), nothing, 0.0, 0.0, 0.0, 0.0, nothing, (nothing,), 0.0, (nothing,))
 
 
-def _rows(sketch: Sketch, room: float) -> Rows:
+def _rows(sketch: Sketch, wishes: _Wishes, room: float) -> Rows:
     """As many rows of labels as leave the member enough room."""
     for most in range(MOST_ROWS, 0, -1):
-        rows = _rows_with(sketch, room, most)
+        rows = _rows_with(sketch, wishes, room, most)
         if rows.half >= (LEAST_HALF if most > 1 else THINNEST):
             return rows
-    return _rows_with(sketch, room, 0)
+    return _rows_with(sketch, wishes, room, 0)
 
 
-def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
+def _rows_with(sketch: Sketch, wishes: _Wishes, room: float, most: int) -> Rows:
     """The rows from both sides inward; the member gets what is left between them.
 
     Of labels of loads there are at most `most` rows; with 0 one, and one of lengths and of sections each.
     """
-    labels = _label_rows(sketch, room, max(most, 1))
+    labels = _label_rows(sketch, wishes.loads, room, max(most, 1))
     top = labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    sections = _text_rows(
-        sketch, section_wishes(sketch), room - (EDGE if sketch.place.axes.upright else 4.0), most
-    )
+    edge = EDGE if sketch.place.axes.upright else 4.0
+    sections = _text_rows(sketch, wishes.sections, room - edge, most)
     chain = sections[0][0] - CHAIN
-    lengths = _text_rows(sketch, length_wishes(sketch), chain - CHAIN, most)
-    under_label, under = _under_rows(sketch, lengths[0][0])
+    lengths = _text_rows(sketch, wishes.lengths, chain - CHAIN, most)
+    under_label, under = _under_rows(wishes.hanging, lengths[0][0])
     last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
     last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(
@@ -137,9 +149,8 @@ def _rows_with(sketch: Sketch, room: float, most: int) -> Rows:
     )
 
 
-def _label_rows(sketch: Sketch, room: float, most: int) -> tuple[Span, ...]:
+def _label_rows(sketch: Sketch, wishes: list[Wish], room: float, most: int) -> tuple[Span, ...]:
     """As many rows as the labels of loads need, up to `most`; upright one column as wide as they are."""
-    wishes = load_wishes(sketch)
     first = 4.0 if sketch.place.axes.upright else 4.0 + _note_size(sketch).height()
     if not wishes:
         return ((first, first),)
@@ -150,14 +161,14 @@ def _label_rows(sketch: Sketch, room: float, most: int) -> tuple[Span, ...]:
         widest = max((w.depth for w in wishes if w.depth <= column), default=0.0)
         return ((first, first + widest),)
     count = 1
-    while count < most and len(sketch.placed(wishes, ((0.0, depth),) * count)) < len(wishes):
+    while count < most and not fits(wishes, count, sketch.room):
         count += 1
     return tuple((first + i * depth, first + (i + 1) * depth) for i in range(count))
 
 
-def _under_rows(sketch: Sketch, foot: float) -> tuple[Span, float]:
+def _under_rows(wishes: list[Wish], foot: float) -> tuple[Span, float]:
     """The row of labels of hanging supports, which ends at `foot`, and the line the supports hang on."""
-    depth = max((w.depth for w in hanging_wishes(sketch)), default=0.0)
+    depth = max((w.depth for w in wishes), default=0.0)
     foot -= BESIDE if depth else 0.0
     return (foot - depth, foot), foot - depth - 0.5 * UNDER
 
@@ -167,8 +178,8 @@ def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float, most: int) -> tu
     if not wishes:
         return ((foot, foot),)
     depth = max(w.depth for w in wishes)
-    one_row = len(sketch.placed(wishes, ((0.0, depth),), TIGHT)) == len(wishes)
-    count = 1 if one_row or not most or sketch.place.axes.upright else 2
+    single = not most or sketch.place.axes.upright or fits(wishes, 1, sketch.room, TIGHT)
+    count = 1 if single else 2
     return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
 
 

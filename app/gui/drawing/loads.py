@@ -25,7 +25,6 @@ from app.gui.drawing.words import (
 )
 from app.words import tr
 from solver.arrays import FloatArray
-from solver.chain import Loads
 from solver.model import end_of
 
 ARROW = 32.0  # length of the arrow of a joint force, px
@@ -34,14 +33,14 @@ HEAD = 5.0
 LEAST_BAND = 5.0  # height of the smallest distributed load, px
 
 
-def draw_loads(sketch: Sketch) -> None:
-    """Everything that acts, and the bedding, which is drawn whether anything acts or not."""
+def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
+    """All that acts, and the bedding, which is drawn whether anything acts or not, with their labels."""
     _draw_bedding(sketch)
     if sketch.member.loads is not None:
         _draw_distributed(sketch, sketch.member.loads.distributed[0])
         _draw_forces(sketch, sketch.member.loads.joint_force[0])
     rows = sketch.rows.labels
-    for label in sketch.placed(load_wishes(sketch), rows):
+    for label in sketch.placed(wishes, rows):
         face, ink = ("small_strong", "ink") if label.wish.part.kind == "force" else ("small", "quiet")
         if sketch.is_free(label.wish, label.span, rows[label.row], "high"):
             sketch.text(label.wish, label.span, rows[label.row], "high", face, ink)
@@ -189,14 +188,6 @@ def _force_wishes(sketch: Sketch, forces: FloatArray) -> list[Wish]:
 
 
 # What is said in words
-
-
-def _word_wishes(sketch: Sketch, loads: Loads) -> list[Wish]:
-    wishes = _movement_wishes(sketch, loads.movement[0])
-    system = sketch.member.system
-    wishes += _run_wishes(sketch, [fit_text(v, system) for v in loads.lack_of_fit[0].tolist()], rank=2)
-    warm = [warmth_text(*ends, system) for ends in loads.temperature[0].tolist()]
-    return wishes + _run_wishes(sketch, warm, rank=3) + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
 def _movement_wishes(sketch: Sketch, movement: FloatArray) -> list[Wish]:

@@ -73,8 +73,9 @@ class MemberDrawing(QGraphicsObject):
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
-        self._theme = theme
-        self.update()
+        if theme != self._theme:
+            self._theme = theme
+            self.update()
 
     def set_selection(self, selection: Selection) -> None:
         """Light what is selected."""

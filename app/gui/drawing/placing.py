@@ -7,8 +7,10 @@ Everything here is in (along, across) pixels, so that it serves both layouts.
 
 from __future__ import annotations
 
+import bisect
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from operator import itemgetter
 
 from app.gui.drawing.shapes import Part
 
@@ -47,27 +49,46 @@ def place(wishes: Iterable[Wish], rows: int, room: Span, clear: float = CLEAR) -
         for row in range(rows):
             span = _free_span(wish, taken[row], room, clear)
             if span is not None:
-                taken[row].append(span)
+                bisect.insort(taken[row], span)
                 placed.append(Placed(wish, row, span))
                 break
     return placed
 
 
+def fits(wishes: Sequence[Wish], rows: int, room: Span, clear: float = CLEAR) -> bool:
+    """Whether every label finds a place; not tried where they are longer together than all rows."""
+    longest = rows * (room[1] - room[0] + clear + 1e-5)
+    together = sum(wish.extent + clear - 1e-5 for wish in wishes)
+    return together <= longest and len(place(wishes, rows, room, clear)) == len(wishes)
+
+
 def _free_span(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> Span | None:
-    """The free span nearest to where the label wants to be, or None."""
+    """The free span nearest to where the label wants to be, or None; `taken` grows along the row."""
     half = 0.5 * wish.extent
-    if wish.slide == 0.0:
-        taken_by = [other for other in taken if _meets((wish.along - half, wish.along + half), other, clear)]
-        span = wish.along - half, wish.along + half
-        return span if _inside(span, room) and not taken_by else None
-    centres = [wish.along, room[0] + half, room[1] - half]
-    centres += [low - clear - half for low, _ in taken] + [high + clear + half for _, high in taken]
-    for centre in sorted(centres, key=lambda c: abs(c - wish.along)):
+    for centre in _centres(wish, taken, room, clear) if wish.slide else (wish.along,):
         span = centre - half, centre + half
-        near = abs(centre - wish.along) <= wish.slide + 1e-6
-        if near and _inside(span, room) and not any(_meets(span, other, clear) for other in taken):
+        if _inside(span, room) and _is_free(span, taken, clear):
             return span
     return None
+
+
+def _centres(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> list[float]:
+    """Where the label may slide: its own place, the ends of the room, beside what stands; nearest first."""
+    half, reach = 0.5 * wish.extent, wish.slide + 1e-6
+    far = reach + clear + half
+    first = bisect.bisect_left(taken, wish.along - far, key=itemgetter(1))
+    last = bisect.bisect_right(taken, wish.along + far, key=itemgetter(0))
+    beside = taken[first:last]
+    centres = [wish.along, room[0] + half, room[1] - half]
+    centres += [low - clear - half for low, _ in beside] + [high + clear + half for _, high in beside]
+    near = [centre for centre in centres if abs(centre - wish.along) <= reach]
+    return sorted(near, key=lambda centre: abs(centre - wish.along))
+
+
+def _is_free(span: Span, taken: Sequence[Span], clear: float) -> bool:
+    """Whether a span keeps clear of what stands: as that keeps clear of itself, its neighbours decide."""
+    after = bisect.bisect(taken, span)
+    return not any(_meets(span, other, clear) for other in taken[max(after - 1, 0) : after + 1])
 
 
 def _inside(span: Span, room: Span) -> bool:

@@ -7,6 +7,8 @@ The parts (body, supports, loads, chain) draw in these coordinates and need not 
 from __future__ import annotations
 
 from dataclasses import dataclass, field
+from functools import cached_property
+from itertools import pairwise
 from typing import Literal, TypeAlias
 
 from PySide6.QtCore import QPointF, QRectF
@@ -37,9 +39,9 @@ class Rows:
     sections: tuple[Span, ...]
 
 
-@dataclass(slots=True)
+@dataclass
 class Sketch:
-    """A member, its place, the rows, and the picture so far."""
+    """A member, its place, the rows, and the picture so far; what follows from member and place is kept."""
 
     member: Member
     place: Place
@@ -48,13 +50,13 @@ class Sketch:
     scale: float  # pixels per metre across the axis
     picture: Picture = field(default_factory=Picture)
 
-    @property
+    @cached_property
     def window(self) -> Span:
         """The pixels along the axis that the ruler shows, growing."""
         low, high = sorted((self.place.ruler.begin, self.place.ruler.end))
         return low, high
 
-    @property
+    @cached_property
     def room(self) -> Span:
         """The pixels along the axis that labels may use."""
         low, high = self.place.axes.along_of(self.place.rect)
@@ -72,9 +74,14 @@ class Sketch:
         """+1 where x grows with the pixels, −1 upright."""
         return 1.0 if self.place.ruler.end > self.place.ruler.begin else -1.0
 
+    @cached_property
+    def joints(self) -> tuple[float, ...]:
+        """The pixels of all joints."""
+        return tuple(map(self.place.ruler.pixel, self.member.position))
+
     def along(self, joint: int) -> float:
         """The pixel of a joint."""
-        return self.place.ruler.pixel(self.member.position[joint])
+        return self.joints[joint]
 
     def shortest_beside(self, joint: int) -> float:
         """The length in pixels of the shorter of the segments that meet at a joint."""
@@ -88,9 +95,15 @@ class Sketch:
 
     def shown_span(self, segment: int) -> Span | None:
         """The pixels of a segment inside the window, growing; None where it is outside."""
-        low, high = sorted((self.along(segment), self.along(segment + 1)))
-        low, high = max(low, self.window[0]), min(high, self.window[1])
-        return (low, high) if high - low > 0.5 else None
+        return self._spans[segment]
+
+    @cached_property
+    def _spans(self) -> tuple[Span | None, ...]:
+        spans = []
+        for ends in pairwise(self.joints):
+            low, high = max(min(ends), self.window[0]), min(max(ends), self.window[1])
+            spans.append((low, high) if high - low > 0.5 else None)
+        return tuple(spans)
 
     def point(self, along: float, across: float) -> QPointF:
         """The point of the scene."""

@@ -32,8 +32,8 @@ def hangs(support: AnySupport | None, *, inner: bool) -> bool:
     return support is not None and (inner or isinstance(support, StopSupport))
 
 
-def draw_supports(sketch: Sketch) -> None:
-    """All supports inside the window, with their labels."""
+def draw_supports(sketch: Sketch, wishes: list[Wish]) -> None:
+    """All supports inside the window, with the labels of those that hang."""
     last = len(sketch.member.project.joints) - 1
     for joint in range(last + 1):
         support = support_of(sketch, joint)
@@ -43,7 +43,7 @@ def draw_supports(sketch: Sketch) -> None:
             _draw_hanging(sketch, joint, support)
         else:
             _draw_at_end(sketch, joint, support, -1.0 if joint == 0 else 1.0)
-    sketch.put(hanging_wishes(sketch), (sketch.rows.under_label,), "low")
+    sketch.put(wishes, (sketch.rows.under_label,), "low")
 
 
 def hanging_wishes(sketch: Sketch) -> list[Wish]:

@@ -17,7 +17,7 @@ from app.gui.fonts import Face
 from app.gui.ruler import Ruler
 from app.gui.sheet_layout import GAP, Axes
 from app.gui.strips.content import COMPRESSION, TENSION, Extreme, Limit, StripContent, Trace
-from app.gui.strips.paths import Run, Scale, runs
+from app.gui.strips.paths import Scale, runs
 from app.words import tr
 
 Measure: TypeAlias = Callable[[str, Face], QSizeF]
@@ -55,6 +55,13 @@ def strip_labels(
 def _meets(box: QRectF, labels: Sequence[Label]) -> bool:
     """Whether a box lies on any of the labels."""
     return any(label.rect.intersects(box) for label in labels)
+
+
+def _widest_between(zero: float, outer: float, *inner: float) -> tuple[float, float]:
+    """The widest of the parts into which `inner` divides what lies between 0 and a curve, growing."""
+    low, high = min(zero, outer), max(zero, outer)
+    corners = [low, *sorted(at for at in inner if low < at < high), high]
+    return max(pairwise(corners), key=lambda span: span[1] - span[0])
 
 
 def spread(wanted: list[float], sizes: list[float], first: float, last: float) -> list[float]:
@@ -229,28 +236,24 @@ class _Placer:
 
     def _signs_of(self, trace: Trace, drawn: int) -> list[Label]:
         """Of the largest values the + , of the smallest the − (the same curve, except of an envelope)."""
-        along, labels = self.ruler.pixel(trace.x), []
-        for run in runs(trace.drawn):
-            if run.drawn != drawn:
-                continue
-            span = np.clip(np.sort(along[[run.first, run.last]]), *self.axes.along_of(self.rect))
-            middle = 0.5 * float(span[0] + span[1])
-            low, high = self._sign_span(trace, run, middle)
-            if span[1] - span[0] >= SIGN_ROOM and abs(high - low) >= SIGN_ROOM:
-                labels.append(self._sign(run.drawn, middle, 0.5 * (low + high)))
-        return labels
+        ends = [(trace.x[run.first], trace.x[run.last]) for run in runs(trace.drawn) if run.drawn == drawn]
+        spans = [(self._shown(first), self._shown(last)) for first, last in ends]
+        middles = [0.5 * (first + last) for first, last in spans if abs(last - first) >= SIGN_ROOM]
+        signs = zip(middles, self._sign_spans(trace, middles), strict=True)
+        return [
+            self._sign(drawn, a, 0.5 * (low + high)) for a, (low, high) in signs if high - low >= SIGN_ROOM
+        ]
 
-    def _sign_span(self, trace: Trace, run: Run, along: float) -> tuple[float, float]:
+    def _sign_spans(self, trace: Trace, along: list[float]) -> list[tuple[float, float]]:
         """Between 0 and the curve; where the other curve of an envelope runs between them, the wider part."""
-        x, zero = self.ruler.position_at(along), self.scale.pixel(0.0)
-        outer = self._across_at(x, trace, slice(run.first, run.last + 1))
-        inner = [self._across_at(x, other) for other in self.content.traces if other is not trace]
-        corners = sorted([zero, outer, *(at for at in inner if min(zero, outer) < at < max(zero, outer))])
-        return max(pairwise(corners), key=lambda span: span[1] - span[0])
+        x, zero = [self.ruler.position_at(a) for a in along], self.scale.pixel(0.0)
+        outer = self._across_at(x, trace)
+        others = [self._across_at(x, other) for other in self.content.traces if other is not trace]
+        return [_widest_between(zero, *at) for at in zip(outer, *others, strict=True)]
 
-    def _across_at(self, x: float, trace: Trace, part: slice = slice(None)) -> float:
-        """The pixel across the axis of a part of a curve at a position."""
-        return self.scale.pixel(float(np.interp(x, trace.x[part], trace.value[part])))
+    def _across_at(self, x: list[float], trace: Trace) -> list[float]:
+        """The pixels across the axis of a curve at positions that are no joints."""
+        return self.scale.pixels(np.interp(x, trace.x, trace.value)).tolist()
 
     def _sign(self, drawn: int, along: float, across: float) -> Label:
         text, ink = ("+", "tension") if drawn == TENSION else ("−", "compression")
