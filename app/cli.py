@@ -16,9 +16,11 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 from app import commands
+from app.columns import one_line
 from app.exit_codes import BROKEN_PIPE, INTERRUPTED, OUR_FAULT
 from app.version import PROGRAM
 from app.words import tr
+from solver.nearest import nearest
 
 HELP_WIDTH = 90
 
@@ -26,7 +28,10 @@ HELP_WIDTH = 90
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command; gives its exit code."""
     speak_utf8()
-    options = parser().parse_args(with_command(sys.argv[1:] if arguments is None else list(arguments)))
+    typed = sys.argv[1:] if arguments is None else list(arguments)
+    if slip := misnamed(typed):
+        return commands.refuse(slip)
+    options = parser().parse_args(with_command(typed))
     try:
         code: int = options.run(options)
         sys.stdout.flush()
@@ -62,6 +67,17 @@ def with_command(arguments: list[str]) -> list[str]:
         return ["open"]
     first = arguments[0]
     return arguments if first.startswith("-") or first in command_table() else ["open", *arguments]
+
+
+def misnamed(arguments: list[str]) -> str:
+    """A sentence on a first word that is neither a command nor a file that there is; else empty."""
+    word = arguments[0] if arguments else "-"
+    if word.startswith("-") or word in command_table() or os.path.lexists(word):
+        return ""
+    shown, meant = commands.shown(one_line(word)), nearest(word, command_table())
+    if meant is None:
+        return tr("There is no command or file {word}").format(word=shown)
+    return tr("There is no command or file {word}; did you mean {meant}?").format(word=shown, meant=meant)
 
 
 def parser() -> argparse.ArgumentParser:

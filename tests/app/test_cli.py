@@ -273,7 +273,9 @@ def test_an_output_that_cannot_be_written_is_a_sentence(
     assert capsys.readouterr().err == "The output cannot be written: No space left on device\n"
 
 
-def test_several_files_open_a_window_each(monkeypatch: pytest.MonkeyPatch) -> None:
+def test_several_files_open_a_window_each(monkeypatch: pytest.MonkeyPatch, tmp_path: Path) -> None:
+    monkeypatch.chdir(tmp_path)
+    Path("a.barwright.json").touch()
     opened: list[object] = []
     door = ModuleType("app.gui.main")
     door.run = lambda path: opened.append(path) or 0  # type: ignore[attr-defined]
@@ -443,6 +445,28 @@ def test_an_unknown_sample_is_answered_with_the_known_ones(capsys: pytest.Captur
 )
 def test_the_word_open_may_be_left_out(typed: list[str], meant: list[str]) -> None:
     assert cli.with_command(typed) == meant
+
+
+@pytest.mark.parametrize(
+    ("typed", "sentence"),
+    [
+        ("chek", "There is no command or file chek; did you mean check?\n"),
+        ("Schema", "There is no command or file Schema; did you mean schema?\n"),
+        ("gate.barwright.json", "There is no command or file gate.barwright.json\n"),
+        ("no\x1bsuch", "There is no command or file no\ufffdsuch\n"),
+    ],
+)
+def test_a_word_that_is_neither_command_nor_file_opens_no_window(
+    typed: str,
+    sentence: str,
+    monkeypatch: pytest.MonkeyPatch,
+    tmp_path: Path,
+    capsys: pytest.CaptureFixture[str],
+) -> None:
+    monkeypatch.chdir(tmp_path)
+    monkeypatch.setattr(commands, "run_open", lambda options: pytest.fail(str(options)))
+    assert cli.main([typed, "x"]) == 2
+    assert capsys.readouterr() == ("", sentence)
 
 
 def test_a_window_without_a_display_is_a_sentence(
