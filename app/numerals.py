@@ -10,6 +10,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 from fractions import Fraction
+from functools import lru_cache
 from typing import Final
 
 MINUS: Final = "\u2212"
@@ -76,6 +77,7 @@ def _written(mantissa: int, power: int) -> str:
     return f"{sign}{digits[:power]}.{digits[power:]}"
 
 
+@lru_cache(4096)  # numbers are written in several places, and most stay from one keystroke to the next
 def reading(value: float, digits: int, *, strip: bool = False) -> str:
     """`value` to `digits` significant digits for reading: real minus, thin spaces, no rounding above units.
 
