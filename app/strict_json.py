@@ -8,7 +8,8 @@ from __future__ import annotations
 
 import json
 import math
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
+from typing import Final, Literal, TypeAlias
 
 from msgspec import UNSET
 
@@ -32,6 +33,25 @@ class _TooDeep(Exception):  # noqa: N818 - ends the walk, never leaves this modu
     pass
 
 
+JsonSlip: TypeAlias = Literal[
+    "empty", "ends_early", "trailing_comma", "no_value", "no_key", "no_colon", "no_comma",
+    "text_open", "bad_escape", "control_sign", "goes_on", "other",
+]  # fmt: skip
+
+# How the decoder's messages begin; they are Python's, in English, and differ between its versions.
+_SLIPS: Final[Mapping[str, JsonSlip]] = {
+    "Illegal trailing comma": "trailing_comma",
+    "Expecting value": "no_value",
+    "Expecting property name": "no_key",
+    "Expecting ':'": "no_colon",
+    "Expecting ','": "no_comma",
+    "Unterminated string": "text_open",
+    "Invalid \\": "bad_escape",
+    "Invalid control character": "control_sign",
+    "Extra data": "goes_on",
+}
+
+
 def loads(data: bytes) -> tuple[object, tuple[Fault, ...]]:
     """The plain value of the text and its faults; the value is UNSET where the text is no JSON at all."""
     try:
@@ -44,10 +64,21 @@ def loads(data: bytes) -> tuple[object, tuple[Fault, ...]]:
     except UnicodeDecodeError as error:
         return UNSET, (Fault("", "not_utf8", {"byte": error.start}),)
     except json.JSONDecodeError as error:
-        facts = {"reason": error.msg, "line": error.lineno, "column": error.colno}
+        facts = {"reason": json_slip(error), "line": error.lineno, "column": error.colno}
         return UNSET, (Fault("", "not_json", facts),)
     except (RecursionError, _TooDeep):
         return UNSET, (Fault("", "too_deep"),)
+
+
+def json_slip(error: json.JSONDecodeError) -> JsonSlip:
+    """What is wrong with the text, by a name of our own, for `app.phrases` to word."""
+    before, after = error.doc[: error.pos].rstrip(), error.doc[error.pos :].strip()
+    slip: JsonSlip = next((slip for start, slip in _SLIPS.items() if error.msg.startswith(start)), "other")
+    if not after:
+        return "ends_early" if before else "empty"
+    if slip in ("no_value", "no_key") and before.endswith(",") and after[0] in "]}":
+        return "trailing_comma"
+    return slip
 
 
 def _number(text: str) -> float | _NotFinite:

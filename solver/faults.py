@@ -11,7 +11,7 @@ from typing import Literal, TypeAlias
 Rule: TypeAlias = Literal[
     # of the file's text
     "not_utf8",
-    "not_json",  # facts: reason, line, column
+    "not_json",  # facts: reason (a JsonSlip of app.strict_json), line, column
     "too_deep",
     "duplicate_key",  # facts: key
     "not_finite",  # facts: value (text as written)

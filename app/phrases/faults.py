@@ -100,6 +100,20 @@ _KINDS: Final[Mapping[str, str]] = {
     "start": later("start"), "end": later("end"), "section": later("section shape"),
     "support": later("support"), "load": later("load"), "limit": later("limit"),
 }  # fmt: skip
+JSON_SLIPS: Final[Mapping[str, str]] = {
+    "empty": later("the file is empty"),
+    "ends_early": later("the file ends before its last bracket is closed"),
+    "trailing_comma": later("no comma may stand before a closing bracket"),
+    "no_value": later("a value is missing or misspelt"),
+    "no_key": later("a key in double quotes is missing"),
+    "no_colon": later("a colon is missing after the key"),
+    "no_comma": later("a comma or a closing bracket is missing"),
+    "text_open": later("a text has no closing quotation mark"),
+    "bad_escape": later("a backslash stands before a sign that it cannot go with"),
+    "control_sign": later("a text holds a line break or a tab"),
+    "goes_on": later("the file goes on after its last bracket"),
+    "other": later("the rules of JSON are broken"),
+}
 _NEAREST: Final = later("did you mean {nearest}?")
 _LONGEST: Final = 60
 
@@ -130,7 +144,9 @@ def _fact(name: str, value: object, quantity: Quantity | None, system: UnitSyste
         return tr("one of {choices}").format(choices=shown(value))
     if name == "first" and isinstance(value, str):
         return place_words(value) if system else value
-    if name in ("reason", "line", "column", "joints", "segments", "known", "count"):
+    if name == "reason":
+        return tr(JSON_SLIPS[str(value)])
+    if name in ("line", "column", "joints", "segments", "known", "count"):
         return str(value)
     if system and quantity and isinstance(value, float | int) and not isinstance(value, bool):
         return _in_units(value, quantity, system)

@@ -12,6 +12,7 @@ from hypothesis import strategies as st
 
 from app.phrases import fault_sentence
 from app.project_file import dump, parse
+from app.strict_json import json_slip
 from tests.documents import changed, encoded, example, faults_of, without
 
 JSON = st.recursive(
@@ -203,6 +204,39 @@ def test_what_is_no_project_at_all_is_told_alone(data: bytes, rule: str) -> None
 def test_a_slip_in_the_text_is_told_with_line_and_column() -> None:
     (fault,) = faults_of(b'{\n  "title": oops\n}')
     assert (fault.facts["line"], fault.facts["column"]) == (2, 12)
+
+
+@pytest.mark.parametrize(
+    ("text", "slip"),
+    [
+        ("", "empty"),
+        (" \n", "empty"),
+        ("{", "ends_early"),
+        ('{"a": 1', "ends_early"),
+        ('{"a": 1,\n', "ends_early"),
+        ('{"a": 1,}', "trailing_comma"),
+        ('{"a": [1, ]}', "trailing_comma"),
+        ('{"a": }', "no_value"),
+        ('{"a": nul}', "no_value"),
+        ('{"a": [,1]}', "no_value"),
+        ("{'a': 1}", "no_key"),
+        ('{"a" 1}', "no_colon"),
+        ('{"a": 1 "b": 2}', "no_comma"),
+        ('{"a": [1 2]}', "no_comma"),
+        ('{"a": "b}', "text_open"),
+        ('{"a": "\\q"}', "bad_escape"),
+        ('{"a": "\\u12"}', "bad_escape"),
+        ('{"a": "b\nc"}', "control_sign"),
+        ("{}}", "goes_on"),
+    ],
+)
+def test_slips_in_the_text_have_names_of_our_own(text: str, slip: str) -> None:
+    (fault,) = faults_of(text.encode())
+    assert (fault.rule, fault.facts["reason"]) == ("not_json", slip)
+
+
+def test_words_that_the_decoder_may_learn_are_a_slip_all_the_same() -> None:
+    assert json_slip(json.JSONDecodeError("Something new", "{}", 0)) == "other"
 
 
 @pytest.mark.parametrize("found", ["barwright-results", "", "Barwright-Project"])

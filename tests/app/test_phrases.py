@@ -24,9 +24,10 @@ from app.phrases import (
 from app.phrases.checks import CHECKS, NOT_MADE, QUANTITIES, REASONS, REMEDIES, SUBJECTS, compared
 from app.phrases.entries import ENTRIES, EntryRule
 from app.phrases.errors import ERRORS
-from app.phrases.faults import FAULTS
+from app.phrases.faults import FAULTS, JSON_SLIPS
 from app.places import place_words, quantity_at
 from app.project_file import ProjectFileError, parse
+from app.strict_json import JsonSlip
 from app.units import SYSTEM_NAMES
 from solver.checking import governing_of, verdict_of
 from solver.checks import PASS_MARGIN, Check, CheckKind, Reason
@@ -41,7 +42,7 @@ ROOT = Path(__file__).parents[2]
 # The facts of each rule, as `solver.faults` states them.
 FACTS: dict[str, dict[str, object]] = {
     "not_utf8": {},
-    "not_json": {"reason": "Expecting value", "line": 3, "column": 7},
+    "not_json": {"reason": "no_value", "line": 3, "column": 7},
     "too_deep": {},
     "duplicate_key": {"key": "length"},
     "not_finite": {"value": "NaN"},
@@ -74,6 +75,7 @@ FACTS: dict[str, dict[str, object]] = {
 def test_every_rule_reason_kind_and_error_has_words() -> None:
     assert set(FAULTS) == set(FACTS) == set(get_args(Rule))
     assert set(ENTRIES) == set(get_args(EntryRule))
+    assert set(JSON_SLIPS) == set(get_args(JsonSlip))
     assert set(REASONS) == set(REMEDIES) == set(NOT_MADE) == set(get_args(Reason))
     assert set(CHECKS) == set(SUBJECTS) == set(QUANTITIES) == set(get_args(CheckKind))
     assert {*ERRORS, NotSolvable} == set(InputError.__subclasses__())
@@ -114,7 +116,10 @@ def test_every_fault_names_place_and_rule(rule: str, system: str | None) -> None
         (
             Fault("", "not_json", FACTS["not_json"]),
             None,
-            "is not JSON: Expecting value (line 3, column 7); mend it there or open an earlier copy",
+            (
+                "is not JSON: a value is missing or misspelt (line 3, column 7);"
+                " mend it there or open an earlier copy"
+            ),
         ),
     ],
 )
