@@ -36,6 +36,7 @@ class SheetScene(QGraphicsScene):
         self._project: Project | None = None
         self._results: Results | None = None
         self._current = False
+        self._waiting = False
         self._upright = False
         self._size = QSizeF(900.0, 500.0)
         self._shown = Shown("envelope")
@@ -97,8 +98,11 @@ class SheetScene(QGraphicsScene):
 
     # What is shown
 
-    def show_results(self, project: Project, results: Results | None, *, current: bool) -> None:
-        """Show the project, and results of it (`current`) or of an earlier edit, or none."""
+    def show_results(
+        self, project: Project, results: Results | None, *, current: bool, waiting: bool
+    ) -> None:
+        """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
+        self._waiting = waiting
         fresh = results is not self._results
         self._project, self._results = project, results
         self._current = current and results is not None
@@ -178,7 +182,9 @@ class SheetScene(QGraphicsScene):
 
     def _say_notice(self) -> None:
         text = ""
-        if self._results is None and self._project is not None:
+        if self._waiting:
+            text = tr("Solving…")
+        elif self._results is None and self._project is not None:
             text = tr("No results yet: the findings say what is missing.")
         elif self._results is not None and not self._current:
             text = tr("out of date")

@@ -111,9 +111,11 @@ class SheetView(QGraphicsView):
         """Why the strips show nothing, or that they are out of date; else empty."""
         return self._sheet.notice
 
-    def show_results(self, project: Project, results: Results | None, current: bool) -> None:
-        """Show the project, and results of it (`current`) or of an earlier edit, or none."""
-        self._sheet.show_results(project, results, current=current)
+    def show_results(
+        self, project: Project, results: Results | None, current: bool, waiting: bool = False
+    ) -> None:
+        """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
+        self._sheet.show_results(project, results, current=current, waiting=waiting)
 
     def set_orientation(self, orientation: Orientation) -> None:
         """Across for "horizontal", upright for "vertical"."""

@@ -36,7 +36,9 @@ GRACE = 40  # ms, two frames: results that come sooner replace the old ones with
 class Sheet(Protocol):
     """The drawing and its strips."""
 
-    def show_results(self, project: Project, results: Results | None, current: bool) -> None:
+    def show_results(
+        self, project: Project, results: Results | None, current: bool, waiting: bool = False
+    ) -> None:
         """Show these."""
 
 
@@ -177,7 +179,8 @@ class Showing(QObject):
         results = outcome.results if outcome else None
         findings = outcome.findings if outcome else None
         problems = (self._fault,) if self._fault else outcome.problems if outcome else ()
-        self._sheet.show_results(self._document.shown_project, results, self.current)
+        waiting = outcome is None and not self._fault  # for the very first outcome
+        self._sheet.show_results(self._document.shown_project, results, self.current, waiting)
         self._panel.show_findings(findings, problems, self.current)
         self._tables.set_figures(self._figures())
         self._tell()

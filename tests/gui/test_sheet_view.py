@@ -213,6 +213,8 @@ class TestWhatIsShown:
         sheet.show_results(PILE, None, False)
         assert [strip.content for strip in sheet.strips] == [None] * 4
         assert "findings" in sheet.notice
+        sheet.show_results(PILE, None, False, waiting=True)
+        assert "findings" not in sheet.notice
         assert sheet.drawing.picture.targets
 
     def test_out_of_date_results_are_greyed_and_say_so(self, sheet, view):

@@ -114,6 +114,29 @@ def test_undo_and_redo_of_everything_by_keys_with_their_names(qtbot, window, tab
     assert window.document.project.segments[0].length == 0.9
 
 
+def test_before_the_first_result_the_sheet_says_that_it_is_solved(qtbot, store, rod, tmp_path):
+    made = open_window(rod, store, tmp_path / "recovery")
+    assert made.sheet.notice == "Solving…", "the findings are empty and say nothing yet"
+    solved(qtbot, made)
+    assert made.sheet.notice == ""
+    end(qtbot, made)
+
+
+def test_a_fault_before_the_first_result_is_no_endless_solving(
+    qtbot, store, rod, tmp_path, monkeypatch, caplog
+):
+    def broken(*_args, **_keys):
+        raise ZeroDivisionError("planted")
+
+    with monkeypatch.context() as patch, caplog.at_level("CRITICAL", logger=log.LOGGER.name):
+        patch.setattr("solver.solve.solve", broken)
+        made = open_window(rod, store, tmp_path / "recovery")
+        qtbot.waitUntil(lambda: "planted" in made.status.solver.text(), timeout=5000)
+    assert "findings" in made.sheet.notice
+    assert "planted" in made.findings.rows[0].row.text
+    end(qtbot, made)
+
+
 def test_a_member_that_is_not_held_says_what_is_missing(qtbot, window, table):
     for row in range(table.table_model.rowCount() - 1):
         table.table_model.setData(cell(table, row, "support"), "free")
