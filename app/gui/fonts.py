@@ -5,6 +5,7 @@ Most texts stay the same from one keystroke to the next, so what was measured is
 
 from __future__ import annotations
 
+import bisect
 from functools import lru_cache
 from typing import Literal, TypeAlias
 
@@ -49,14 +50,20 @@ class Fonts:
         """
         if self._width(text, face) <= width:
             return text
-        lines: list[str] = []
-        for word in text.split(between):
-            longer = f"{lines[-1]}{between}{word}" if lines else word
-            if lines and self._width(longer, face) <= width:
-                lines[-1] = longer
-            else:
-                lines.append(word)
+        lines, words = [], text.split(between)
+        while words:
+            line, words = self._first_line(words, face, width, between)
+            lines.append(line)
         return "\n".join(lines)
+
+    def _first_line(self, words: list[str], face: Face, width: float, between: str) -> tuple[str, list[str]]:
+        """As many words as fit, at least one, and the rest; found by halving, as measuring is what costs."""
+
+        def width_of(count: int) -> float:
+            return self._width(between.join(words[:count]), face)
+
+        count = max(bisect.bisect_right(range(len(words) + 1), width, lo=1, key=width_of) - 1, 1)
+        return between.join(words[:count]), words[count:]
 
     def elided(self, text: str, face: Face, width: float) -> str:
         """The text, cut short with an ellipsis where it is wider than `width`."""

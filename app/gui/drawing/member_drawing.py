@@ -5,6 +5,8 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from PySide6.QtCore import QPointF, QRectF, Qt, Signal
 from PySide6.QtGui import QBrush, QPainter, QPen
 from PySide6.QtWidgets import (
@@ -147,13 +149,10 @@ class MemberDrawing(QGraphicsObject):
 
     def _paint_stroke(self, painter: QPainter, stroke: Stroke) -> None:
         selected = self._is_selected(stroke.part)
-        pen = QPen(colour(self._theme.select if selected else getattr(self._theme, stroke.ink)))
-        pen.setWidthF(stroke.width + (0.8 if selected else 0.0))
-        if stroke.dash:
-            pen.setDashPattern([d / pen.widthF() for d in stroke.dash])
-        painter.setPen(pen)
+        ink, extra = ("select", 0.8) if selected else (stroke.ink, 0.0)
+        painter.setPen(_pen(getattr(self._theme, ink), stroke.width + extra, stroke.dash))
         fill = "select_fill" if selected and stroke.fill else stroke.fill
-        painter.setBrush(QBrush(colour(getattr(self._theme, fill))) if fill else Qt.BrushStyle.NoBrush)
+        painter.setBrush(_brush(getattr(self._theme, fill)) if fill else Qt.BrushStyle.NoBrush)
         if stroke.clip != painter.hasClipping():
             painter.setClipping(stroke.clip)
         if stroke.pairs:
@@ -174,3 +173,17 @@ class MemberDrawing(QGraphicsObject):
             painter.setFont(fonts.font(text.face))
             painter.setPen(QPen(colour(getattr(self._theme, text.ink))))
             painter.drawText(text.rect, flags, text.text)
+
+
+@lru_cache(256)  # a drawing has hundreds of strokes and a few pens
+def _pen(ink: str, width: float, dash: tuple[float, ...]) -> QPen:
+    pen = QPen(colour(ink))
+    pen.setWidthF(width)
+    if dash:
+        pen.setDashPattern([d / pen.widthF() for d in dash])
+    return pen
+
+
+@lru_cache(64)
+def _brush(fill: str) -> QBrush:
+    return QBrush(colour(fill))

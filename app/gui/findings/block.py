@@ -18,10 +18,10 @@ LINE = 1.35  # of the text's height
 class LinesBlock(QWidget):
     """Shows a block."""
 
-    def __init__(self, theme: Theme, parent: QWidget | None = None) -> None:
+    def __init__(self, theme: Theme, fonts: Fonts, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._theme = theme
-        self._fonts = Fonts(self.font())
+        self._fonts = fonts
         self._block = Block("", ())
         self.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
 
@@ -40,8 +40,9 @@ class LinesBlock(QWidget):
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
-        self._theme = theme
-        self.update()
+        if theme != self._theme:
+            self._theme = theme
+            self.update()
 
     def set_fonts(self, fonts: Fonts) -> None:
         """Another font."""

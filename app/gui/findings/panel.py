@@ -27,6 +27,7 @@ class FindingsPanel(QScrollArea):
         super().__init__(parent)
         self._view = view
         self._theme = theme_for(self.palette())
+        self._fonts = Fonts(self.font())  # of all rows, so that what is measured for one is kept for all
         self._findings: Findings | None = None
         self._current = True
         self._has_problems = False
@@ -106,7 +107,7 @@ class FindingsPanel(QScrollArea):
 
     def _show_rows(self, shown: tuple[Row, ...]) -> None:
         while len(self._rows) < len(shown):
-            row = FindingRow(self._theme)
+            row = FindingRow(self._theme, self._fonts)
             row.clicked.connect(self._on_row_clicked)
             self._rows_box.addWidget(row)
             self.setTabOrder(self._rows[-1] if self._rows else self, row)  # else after the whole window
@@ -119,7 +120,7 @@ class FindingsPanel(QScrollArea):
     def _show_blocks(self) -> None:
         shown = blocks(self._findings, self._view.shown) if self._findings is not None else ()
         while len(self._blocks) < len(shown):
-            block = LinesBlock(self._theme)
+            block = LinesBlock(self._theme, self._fonts)
             self._blocks.append(block)
             self._blocks_box.addWidget(block)
         for index, widget in enumerate(self._blocks):
@@ -193,9 +194,9 @@ class FindingsPanel(QScrollArea):
         if event.type() == QEvent.Type.PaletteChange:
             self._dress()
         elif event.type() == QEvent.Type.FontChange:
-            fonts = Fonts(self.font())
+            self._fonts = Fonts(self.font())
             for widget in (*self._rows, *self._blocks):
-                widget.set_fonts(fonts)
+                widget.set_fonts(self._fonts)
             self._dress()
 
 

@@ -19,11 +19,11 @@ LINES = Qt.TextFlag.TextDontClip | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag
 class FindingRow(QAbstractButton):
     """A row; clicking it, Space or Enter chooses it."""
 
-    def __init__(self, theme: Theme, parent: QWidget | None = None) -> None:
+    def __init__(self, theme: Theme, fonts: Fonts, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._theme = theme
         self._row: Row | None = None
-        self._fonts = Fonts(self.font())
+        self._fonts = fonts
         self._lit = False
         self.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
 
@@ -44,8 +44,9 @@ class FindingRow(QAbstractButton):
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
-        self._theme = theme
-        self.update()
+        if theme != self._theme:
+            self._theme = theme
+            self.update()
 
     def set_fonts(self, fonts: Fonts) -> None:
         """Another font."""
