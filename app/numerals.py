@@ -116,6 +116,14 @@ def fixed(value: float, decimals: int, *, strip: bool = False) -> str:
     return sign + _grouped(whole) + (point + part if part else "")
 
 
+def laid_out(entry: str) -> str:
+    """An entry's decimal, such as "-210000" or "1.2e-5", written as readings are, with every digit kept."""
+    mantissa, _, power = entry.partition("e")
+    whole, point, part = mantissa.lstrip("-").partition(".")
+    text = (MINUS if entry.startswith("-") else "") + _grouped(whole) + point + part
+    return text + _power_of_ten(int(power)) if power else text
+
+
 def decimals_for(value: float, digits: int) -> int:
     """How many decimals show `digits` significant digits, after rounding (9.996 has one digit less)."""
     if value == 0:
@@ -134,4 +142,9 @@ def _with_power(value: float, digits: int, *, strip: bool) -> str:
     if strip and "." in mantissa:
         mantissa = mantissa.rstrip("0").rstrip(".")
     sign = MINUS if value < 0 else ""
-    return f"{sign}{mantissa}·10{str(int(power)).translate(_SUPERSCRIPTS)}"
+    return sign + mantissa + _power_of_ten(int(power))
+
+
+def _power_of_ten(power: int) -> str:
+    """As it stands behind a factor."""
+    return f"·10{str(power).translate(_SUPERSCRIPTS)}"

@@ -12,6 +12,8 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.findings import findings
+from app.phrases.checks import has_compression
+from app.phrases.notes import BUCKLING
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.sheet.readings import Readings
 from app.sheet.verdicts import check_table, kind_words, quantity_of, subject
@@ -231,10 +233,13 @@ def _worst_table(made: Iterable[Check], say: Readings) -> Block:
 
 
 def _not_made(results: Results, say: Readings) -> Iterator[Block]:
+    """What could not be checked, and what this version never checks but the member needs."""
     yield heading(tr("Not checked"), 2)
-    missing = findings(results, say.units).not_made
+    missing = [f"{found.sentence}: {found.remedy}" for found in findings(results, say.units).not_made]
     if not missing:
         yield paragraph(tr("Every check of stresses and limits that the input asks for was made."))
-        return
-    yield paragraph(tr("NOT CHECKED, and so not passed:"), "caution")
-    yield bullets([f"{found.sentence}: {found.remedy}" for found in missing])
+    if has_compression(results.checks):
+        missing.append(tr(BUCKLING))
+    if missing:
+        yield paragraph(tr("NOT CHECKED, and so not passed:"), "caution")
+        yield bullets(missing)

@@ -9,7 +9,7 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
-from app.numerals import MINUS
+from app.numerals import laid_out
 from app.units import Quantity, entry_text, format_value, symbol
 from solver.model import UnitSystemName
 
@@ -42,7 +42,7 @@ class Readings:
 
     def exact(self, value: float, quantity: Quantity, *, unit: bool = False) -> str:
         """An entry to its last digit, as far as `legible` lets it."""
-        text = legible(entry_text(float(value), quantity, self.units)).replace("-", MINUS)
+        text = laid_out(legible(entry_text(float(value), quantity, self.units)))
         return f"{text} {self.unit(quantity)}".rstrip() if unit else text
 
     def pair(self, start: float, end: float, quantity: Quantity) -> str:

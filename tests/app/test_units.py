@@ -11,7 +11,7 @@ import pytest
 from hypothesis import example, given
 from hypothesis import strategies as st
 
-from app.numerals import GROUP, at_most, reading, rounded, shortest_decimal
+from app.numerals import GROUP, at_most, laid_out, reading, rounded, shortest_decimal
 from app.units import (
     QUANTITIES,
     SYSTEM_NAMES,
@@ -149,6 +149,29 @@ def test_a_reading_is_within_half_its_last_digit(value: float, digits: int) -> N
     allowed = min(0.5, 0.5 * 10.0 ** (math.floor(math.log10(abs(value))) - digits + 2))
     assert abs(shown - value) <= allowed + 1e-15 * abs(value)
     assert shown == rounded(value, digits)
+
+
+@pytest.mark.parametrize(
+    ("entry", "text"),
+    [
+        ("0", "0"),
+        ("-0.04", "−0.04"),
+        ("1500", "1500"),
+        ("-210000", f"−210{GROUP}000"),
+        ("1234567.891", f"1{GROUP}234{GROUP}567.891"),
+        ("1.2e-5", "1.2·10⁻⁵"),
+        ("-3e21", "−3·10²¹"),
+    ],
+)
+def test_entries_are_laid_out_as_readings_are(entry: str, text: str) -> None:
+    assert laid_out(entry) == text
+
+
+@given(st.floats(allow_nan=False, allow_infinity=False))
+def test_laying_out_keeps_every_digit(value: float) -> None:
+    text = laid_out(entry_text(value, "factor", "mm-N-MPa")).replace(GROUP, "").replace("−", "-")
+    powers = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻", "0123456789-")
+    assert float(text.replace("·10", "e").translate(powers)) == value
 
 
 def test_stripping_takes_only_needless_zeros() -> None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import datetime as dt
 import io
+import json
 import math
 import re
 from functools import lru_cache
@@ -188,6 +189,39 @@ def test_inputs_are_printed_in_full_up_to_ten_digits(length: float, shown: str) 
         b["rows"] for b in content(changed)["blocks"] if b.get("title", "").startswith("Segments, along")
     )
     assert rows[2][2] == shown
+
+
+def test_numbers_are_laid_out_as_in_the_window_and_read_back_from_the_paper() -> None:
+    sample = read_sample("tie_rod")
+    tables = {b["title"]: b["rows"] for b in content(sample)["blocks"] if b["kind"] == "table"}
+    modulus, expansion = tables["Materials"][0][1:3]
+    assert (modulus, expansion) == ("210\u202f000", "1.2·10⁻⁵")
+    paper = "\n".join(page.extract_text() for page in sample_sheet("tie_rod").pages)
+    assert f"{modulus} {expansion}" in paper
+    shown = json.dumps(content(sample), ensure_ascii=False)
+    texts = re.sub(r'"(svg|fingerprint)": ("[^"\\]*(\\.[^"\\]*)*"|\[[^]]*\])', "", shown)
+    assert not re.search(r"(?<![.\d])\d{5}|\de[-−]?\d", texts), "a number without spaces or with an e"
+
+
+def test_what_is_not_covered_stands_among_what_is_not_checked() -> None:
+    def unchecked(project: Project) -> list[dict[str, Any]]:
+        blocks = content(project)["blocks"]
+        start = next(i for i, block in enumerate(blocks) if block.get("text") == "Not checked")
+        end = next(i for i, block in enumerate(blocks) if block.get("text") == "Notes")
+        return blocks[start + 1 : end]
+
+    buckling = "Buckling in compression is not covered by this version: check it separately"
+    made, caution, listed = unchecked(read_sample("hoist_shaft"))
+    assert made["text"].startswith("Every check")
+    assert caution["text"].startswith("NOT CHECKED")
+    assert listed["items"] == [buckling]
+    (made,) = unchecked(read_sample("tie_rod"))
+    assert made["text"].startswith("Every check")
+    bare = read_sample("hoist_shaft")
+    materials = tuple(structs.replace(m, allowable_compression=UNSET) for m in bare.materials)
+    caution, listed = unchecked(structs.replace(bare, materials=materials))
+    assert listed["items"][-1] == buckling
+    assert len(listed["items"]) > 1
 
 
 @pytest.mark.parametrize("ratio", [1.3, 1.0004, 1.00000004, 1.0000000021, 0.99999998, 0.9996, 0.7])
