@@ -11,7 +11,7 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
-from msgspec import UnsetType
+from msgspec import Struct, UnsetType
 
 from solver.allowables import Side, StressChecks
 from solver.arrays import FloatArray
@@ -112,8 +112,7 @@ class Checker:
         )
 
 
-@dataclass(frozen=True, slots=True)
-class _Compared:
+class _Compared(Struct, frozen=True):
     """A segment's stress of one sign against its allowable; `limit` is NaN where there is none."""
 
     present: bool

@@ -128,7 +128,7 @@ def _case(case: LoadCase, names: _Names) -> LoadCase:
 
 
 def _check(check: Check, names: _Names) -> Check:
-    return dataclasses.replace(
+    return structs.replace(
         check,
         combination=(names.combinations or names.cases).get(check.combination, check.combination),
         segment=None if check.segment is None else names.segments[check.segment],
