@@ -5,10 +5,10 @@ Arrows show the direction, so values stand without sign, except where a load cha
 
 from __future__ import annotations
 
-from dataclasses import replace
 from itertools import groupby
 
 import numpy as np
+from msgspec.structs import replace
 
 from app.gui.drawing.placing import Wish
 from app.gui.drawing.shapes import Part

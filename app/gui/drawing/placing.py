@@ -9,8 +9,9 @@ from __future__ import annotations
 
 import bisect
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass
 from operator import itemgetter
+
+from msgspec import Struct
 
 from app.gui.drawing.shapes import Part
 
@@ -19,8 +20,7 @@ TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart
 Span = tuple[float, float]
 
 
-@dataclass(frozen=True, slots=True)
-class Wish:
+class Wish(Struct, frozen=True):
     """A label that wants to be centred at `along`; `slide` is how far it may move; low ranks come first."""
 
     text: str
@@ -32,8 +32,7 @@ class Wish:
     slide: float = 0.0
 
 
-@dataclass(frozen=True, slots=True)
-class Placed:
+class Placed(Struct, frozen=True):
     """A label that has found its place: row and span along the axis."""
 
     wish: Wish

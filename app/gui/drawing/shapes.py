@@ -1,6 +1,7 @@
 """The drawing as plain values: strokes and texts in pixels, and what can be pointed at.
 
-A picture is made by `layout` without a window, painted and hit-tested by `MemberDrawing`.
+A picture is made by `layout` without a window, painted and hit-tested by `MemberDrawing`. Its parts are
+structs: hundreds are made for every edit, and they are made faster than dataclasses.
 """
 
 from __future__ import annotations
@@ -8,6 +9,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import Literal, TypeAlias
 
+from msgspec import Struct
 from PySide6.QtCore import QPointF, QRectF
 
 from app.gui.fonts import Face
@@ -17,16 +19,14 @@ Ink: TypeAlias = Literal["ink", "quiet", "joint", "select"]
 Fill: TypeAlias = Literal["", "body_fill", "band_fill", "select_fill", "load_fill", "paper", "ink"]
 
 
-@dataclass(frozen=True, slots=True)
-class Part:
+class Part(Struct, frozen=True):
     """What a point of the drawing stands for: `index` along the chain, of segments or of joints."""
 
     kind: PartKind
     index: int
 
 
-@dataclass(frozen=True, slots=True)
-class Stroke:
+class Stroke(Struct, frozen=True):
     """A line through points, closed or not; `fill` names a colour of the theme, empty for none."""
 
     points: tuple[QPointF, ...]
@@ -40,16 +40,14 @@ class Stroke:
     pairs: bool = False  # every two points are a line of their own
 
 
-@dataclass(frozen=True, slots=True)
-class Circle:
+class Circle(Struct, frozen=True):
     """A circle on paper around a mark."""
 
     centre: QPointF
     radius: float
 
 
-@dataclass(frozen=True, slots=True)
-class Text:
+class Text(Struct, frozen=True):
     """A text centred in its box."""
 
     rect: QRectF
@@ -59,8 +57,7 @@ class Text:
     part: Part | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class Target:
+class Target(Struct, frozen=True):
     """Where a part can be pointed at."""
 
     rect: QRectF

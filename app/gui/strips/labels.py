@@ -6,11 +6,13 @@ Plain layout: a content, its rectangle and a measure of text give labels with th
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from itertools import pairwise, product
 from typing import TypeAlias
 
 import numpy as np
+from msgspec import Struct
+from msgspec.structs import replace
 from PySide6.QtCore import QPointF, QRectF, QSizeF
 
 from app.gui.fonts import Face
@@ -30,8 +32,7 @@ NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
 
-@dataclass(frozen=True, slots=True)
-class Label:
+class Label(Struct, frozen=True):
     """A text in its box; `ink` and `ground` name colours of the theme."""
 
     rect: QRectF
