@@ -7,12 +7,12 @@ from __future__ import annotations
 
 import bisect
 from functools import lru_cache
-from typing import Literal, TypeAlias
 
 from PySide6.QtCore import QSizeF, Qt
 from PySide6.QtGui import QFont, QFontMetricsF
 
-Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
+from app.drawing.shapes import Face
+
 _KEPT = 8192  # measures of texts
 _SIZES: dict[Face, float] = {"plain": 1.0, "strong": 1.06, "small": 0.9, "small_strong": 0.9, "mark": 1.25}
 
@@ -37,10 +37,14 @@ class Fonts:
 
     def measure(self, text: str, face: Face) -> QSizeF:
         """Width and height of a text; line breaks in it count."""
+        return QSizeF(*self.extent(text, face))
+
+    def extent(self, text: str, face: Face) -> tuple[float, float]:
+        """The same as plain numbers."""
         if "\n" not in text:
-            return QSizeF(self._width(text, face), self._height[face])
+            return self._width(text, face), self._height[face]
         lines = text.split("\n")
-        return QSizeF(max(self._width(line, face) for line in lines), len(lines) * self._height[face])
+        return max(self._width(line, face) for line in lines), len(lines) * self._height[face]
 
     def wrapped(self, text: str, face: Face, width: float, between: str = " ") -> str:
         """The text with line breaks at spaces (or at what else stands `between` its parts), so that no line

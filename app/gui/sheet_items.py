@@ -11,8 +11,8 @@ from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QPainter, QPainterPath, QPen
 from PySide6.QtWidgets import QGraphicsObject, QStyleOptionGraphicsItem, QWidget
 
+from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import SheetLayout
 from app.gui.theme import Theme, colour
 

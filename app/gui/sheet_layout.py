@@ -10,8 +10,10 @@ from dataclasses import dataclass
 
 from PySide6.QtCore import QPointF, QRectF
 
+from app.drawing.frame import Frame
+from app.drawing.ruler import Ruler
+from app.drawing.shapes import Box
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 
 SHARES_ACROSS = (0.22, 0.26, 0.31, 0.21)  # u, N, σ, utilisation: stress carries the most
 SHARES_UPRIGHT = (0.23, 0.25, 0.29, 0.23)  # side by side each needs room for its words
@@ -56,6 +58,13 @@ class Place:
     ruler: Ruler
     axes: Axes
     fonts: Fonts
+
+    @property
+    def frame(self) -> Frame:
+        """The same for the drawing, which knows no Qt."""
+        rect = self.rect
+        box = Box(rect.left(), rect.top(), rect.right(), rect.bottom())
+        return Frame(box, self.ruler, self.axes.upright, self.fonts.extent)
 
 
 @dataclass(frozen=True, slots=True)

@@ -11,10 +11,10 @@ from itertools import accumulate
 from PySide6.QtCore import QObject, QPointF, QRectF, QSizeF
 from PySide6.QtWidgets import QGraphicsScene
 
-from app.gui.drawing.member import Member
+from app.drawing.member import Member
+from app.drawing.ruler import Ruler
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_items import CursorLine, JointLines, Message
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.strips.content import envelope_contents, state_contents

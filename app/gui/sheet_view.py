@@ -9,10 +9,10 @@ from PySide6.QtCore import QEvent, QPointF, QRectF, QSizeF, Qt
 from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
+from app.drawing.ruler import Ruler
+from app.drawing.shapes import Part
 from app.gui.drawing.member_drawing import MemberDrawing
-from app.gui.drawing.shapes import Part
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import SheetLayout, least_height
 from app.gui.sheet_scene import SheetScene
 from app.gui.strips.strip import Strip

@@ -11,15 +11,7 @@ from typing import Literal
 
 from PySide6.QtCore import QObject, Signal
 
-ShownKind = Literal["combination", "case", "unloaded", "envelope"]
-
-
-@dataclass(frozen=True, slots=True)
-class Shown:
-    """What the strips show: one state by kind and name, or the envelope (its name is then empty)."""
-
-    kind: ShownKind
-    name: str = ""
+from app.shown import Shown
 
 
 @dataclass(frozen=True, slots=True)

@@ -9,7 +9,7 @@ import numpy as np
 from app.allowable_lines import allowable_lines, allowable_texts, over_least
 from app.sheet.colours import QUIET
 from app.sheet.limit_labels import Limit
-from app.sheet.member_figure import ACROSS, Figure
+from app.sheet.member_figure import Figure
 from app.sheet.ruler import Ruler
 from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Strip, draw_strip
 from app.sheet.svg import Canvas, fitted, text_width
@@ -21,7 +21,7 @@ if TYPE_CHECKING:
     from solver.results import Results
 
 POINTS = 240
-_UPRIGHT = 270.0
+_ACROSS, _UPRIGHT = 420.0, 270.0
 _GAP = 7.0
 _SIZE = 7.0
 
@@ -99,7 +99,7 @@ def _allowables(
 def _figure(results: Results, strips: list[Strip], title: str) -> Figure:
     upright = results.project.display.layout == "vertical"
     units = results.project.display.unit_system
-    ruler = Ruler(upright, float(results.position[-1]), _UPRIGHT if upright else ACROSS)
+    ruler = Ruler(upright, float(results.position[-1]), _UPRIGHT if upright else _ACROSS)
     canvas, place = Canvas(), 0.0
     for strip in strips:
         depth = DEPTH_UPRIGHT if upright else DEPTH_ACROSS[strip.kind]

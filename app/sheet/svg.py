@@ -1,8 +1,8 @@
 """A plain SVG canvas that knows how far its drawing reaches, so that no figure is ever clipped.
 
 Only lines, paths and text in fonts that Typst embeds, every number rounded, so that the same project gives
-the same bytes. One unit is one point on paper. The rejected alternatives: the plotting widget's exporter is
-broken with this Qt, and its lines flood the picture in Typst.
+the same bytes. One unit is one point on paper, unless a canvas has another scale. The rejected alternatives:
+the plotting widget's exporter is broken with this Qt, and its lines flood the picture in Typst.
 """
 
 from __future__ import annotations
@@ -19,7 +19,8 @@ Point: TypeAlias = tuple[float, float]
 Anchor: TypeAlias = Literal["start", "middle", "end"]
 
 FONT: Final = "Libertinus Serif"
-_NARROW: Final = frozenset("iljt.,:;!|'()[]/· ")
+_NARROW: Final = frozenset("iljt.,:;!|'()[]/· \u2009\u202f")
+_OTHER_FONT: Final = "▭"  # a text with it is set in a wider font as a whole
 _WIDE: Final = frozenset("mwMW@—%")
 
 
@@ -30,6 +31,8 @@ def text_width(text: str, size: float) -> float:
     wide = sum(c in _WIDE or ord(c) > 0x2FF for c in text)
     capital = sum(c.isupper() for c in text)
     plain = len(text) - narrow - wide - capital
+    if _OTHER_FONT in text:
+        return size * 0.66 * len(text)
     return size * (0.34 * narrow + 0.86 * wide + 0.7 * capital + 0.52 * plain)
 
 
@@ -69,6 +72,7 @@ class Canvas:
     """Collects shapes; `render` wraps them in a view box around all of them."""
 
     parts: list[str] = field(default_factory=list)
+    scale: float = 1.0  # points on paper per unit of the drawing
     definitions: dict[str, str] = field(default_factory=dict)
     low: list[float] = field(default_factory=lambda: [float("inf"), float("inf")])
     high: list[float] = field(default_factory=lambda: [float("-inf"), float("-inf")])
@@ -152,12 +156,17 @@ class Canvas:
     @property
     def size(self) -> tuple[float, float]:
         """Width and height in points, a small margin included."""
+        width, height = self._extent
+        return self.scale * width, self.scale * height
+
+    @property
+    def _extent(self) -> tuple[float, float]:
         return self.high[0] - self.low[0] + 4, self.high[1] - self.low[1] + 4
 
     def render(self, title: str) -> str:
         """The SVG text, with a title for those who cannot see it."""
         width, height = self.size
-        box = " ".join(number(v) for v in (self.low[0] - 2, self.low[1] - 2, width, height))
+        box = " ".join(number(v) for v in (self.low[0] - 2, self.low[1] - 2, *self._extent))
         definitions = "".join(self.definitions[name] for name in sorted(self.definitions))
         return (
             f'<svg xmlns="http://www.w3.org/2000/svg" width="{number(width)}" height="{number(height)}"'

@@ -5,9 +5,9 @@ from __future__ import annotations
 from msgspec import UNSET
 from PySide6.QtGui import QFont
 
-from app.gui.drawing.member import Member
+from app.drawing.member import Member
+from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Place, SheetLayout, sheet_layout
 from app.gui.view import Shown
 from app.samples import names, read_sample

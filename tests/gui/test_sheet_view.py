@@ -9,7 +9,7 @@ from PySide6.QtGui import QColor, QMouseEvent, QPalette, QWheelEvent
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
-from app.gui.drawing.shapes import Part
+from app.drawing.shapes import Part
 from app.gui.fonts import Fonts
 from app.gui.sheet_view import SheetView
 from app.gui.theme import DARK, LIGHT

@@ -11,8 +11,8 @@ import pytest
 from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QColor, QFont, QPainterPath
 
+from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Place
 from app.gui.strips.content import (
     COMPRESSION,

@@ -1,1 +1,1 @@
-"""The drawing of the member: a plain layout in pixels, and the scene item that paints it and is clicked."""
+"""The drawing as an item of the scene: paints what `app.drawing` lays out, and is clicked."""

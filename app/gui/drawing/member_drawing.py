@@ -18,10 +18,10 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from app.gui.drawing.layout import lay_out
-from app.gui.drawing.member import Member
-from app.gui.drawing.shapes import Circle, Part, Picture, Stroke
-from app.gui.drawing.tips import tip
+from app.drawing.layout import lay_out
+from app.drawing.member import Member
+from app.drawing.shapes import Box, Circle, Part, Picture, Stroke
+from app.drawing.tips import tip
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
@@ -52,7 +52,7 @@ class MemberDrawing(QGraphicsObject):
         """What is drawn."""
         if self._picture is None:
             ready = self._member is not None and self._place is not None
-            self._picture = lay_out(self._member, self._place) if ready else Picture()
+            self._picture = lay_out(self._member, self._place.frame) if ready else Picture()
         return self._picture
 
     @property
@@ -86,7 +86,7 @@ class MemberDrawing(QGraphicsObject):
 
     def part_at(self, point: QPointF) -> Part | None:
         """The part under a point, or None."""
-        target = self.picture.target_at(point)
+        target = self.picture.target_at((point.x(), point.y()))
         return None if target is None else target.part
 
     # Qt's own
@@ -155,24 +155,29 @@ class MemberDrawing(QGraphicsObject):
         painter.setBrush(_brush(getattr(self._theme, fill)) if fill else Qt.BrushStyle.NoBrush)
         if stroke.clip != painter.hasClipping():
             painter.setClipping(stroke.clip)
+        points = [QPointF(x, y) for x, y in stroke.points]
         if stroke.pairs:
-            painter.drawLines(stroke.points)
+            painter.drawLines(points)
         elif stroke.closed:
-            painter.drawPolygon(stroke.points)
+            painter.drawPolygon(points)
         else:
-            painter.drawPolyline(stroke.points)
+            painter.drawPolyline(points)
 
     def _paint_circle(self, painter: QPainter, circle: Circle) -> None:
         painter.setPen(QPen(colour(self._theme.ink), 1.0))
         painter.setBrush(QBrush(colour(self._theme.card)))
-        painter.drawEllipse(circle.centre, circle.radius, circle.radius)
+        painter.drawEllipse(QPointF(*circle.centre), circle.radius, circle.radius)
 
     def _paint_texts(self, painter: QPainter, fonts: Fonts) -> None:
         flags = Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip
         for text in self.picture.texts:
             painter.setFont(fonts.font(text.face))
             painter.setPen(QPen(colour(getattr(self._theme, text.ink))))
-            painter.drawText(text.rect, flags, text.text)
+            painter.drawText(_rect(text.box), flags, text.text)
+
+
+def _rect(box: Box) -> QRectF:
+    return QRectF(box.left, box.top, box.right - box.left, box.bottom - box.top)
 
 
 @lru_cache(256)  # a drawing has hundreds of strokes and a few pens

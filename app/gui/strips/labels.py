@@ -15,8 +15,8 @@ from msgspec import Struct
 from msgspec.structs import replace
 from PySide6.QtCore import QPointF, QRectF, QSizeF
 
+from app.drawing.ruler import Ruler
 from app.gui.fonts import Face
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import GAP, Axes
 from app.gui.strips.content import COMPRESSION, TENSION, Extreme, Limit, StripContent, Trace
 from app.gui.strips.paths import Scale, runs

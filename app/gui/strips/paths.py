@@ -8,7 +8,7 @@ from itertools import pairwise
 import numpy as np
 from PySide6.QtCore import QRectF
 
-from app.gui.ruler import Ruler
+from app.drawing.ruler import Ruler
 from app.gui.sheet_layout import Axes
 from app.gui.strips.content import NONE, StripContent, Trace
 from solver.arrays import BoolArray, FloatArray, IntArray

@@ -7,12 +7,10 @@ from __future__ import annotations
 
 from itertools import groupby
 
-from PySide6.QtCore import QPointF, QRectF
-
-from app.gui.drawing.placing import TIGHT, Wish, place
-from app.gui.drawing.shapes import Part, Stroke, Text
-from app.gui.drawing.sketch import Sketch
-from app.gui.drawing.words import section_text
+from app.drawing.placing import TIGHT, Wish, place
+from app.drawing.shapes import Box, Part, Stroke, Text
+from app.drawing.sketch import Sketch
+from app.drawing.words import section_text
 from app.units import format_value
 
 TICK = 4.0
@@ -37,8 +35,27 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
             sketch.target(span, across, Part("length", index))
 
 
+def draw_joint_marks(sketch: Sketch, wishes: list[Wish]) -> None:
+    """The mark of every joint at the end of a thin line from it, which ends at the dimension line if any."""
+    foot = sketch.rows.chain if sketch.frame.detail.dimensions else sketch.rows.marks[0][1]
+    for joint in range(len(sketch.member.position)):
+        along = sketch.along(joint)
+        sketch.line((along, sketch.rows.axis), (along, foot), ink="joint", width=0.7)
+    sketch.put(wishes, sketch.rows.marks, "high", TIGHT)
+
+
+def joint_wishes(sketch: Sketch) -> list[Wish]:
+    """The marks of joints, where they are written at all."""
+    if not sketch.frame.detail.joint_marks:
+        return []
+    marks = enumerate(joint.mark for joint in sketch.member.project.joints)
+    return [sketch.wish(mark, sketch.along(joint), Part("joint", joint), slide=6.0) for joint, mark in marks]
+
+
 def length_wishes(sketch: Sketch) -> list[Wish]:
     """Each length in the middle of its span; where only a part is shown, in the middle of that."""
+    if not sketch.frame.detail.dimensions:
+        return []
     wishes = []
     for index, segment in enumerate(sketch.member.project.segments):
         span = sketch.shown_span(index)
@@ -50,6 +67,8 @@ def length_wishes(sketch: Sketch) -> list[Wish]:
 
 def section_wishes(sketch: Sketch) -> list[Wish]:
     """One text for neighbours of the same section; upright a taper takes two lines."""
+    if not sketch.frame.detail.dimensions:
+        return []
     segments = sketch.member.project.segments
     wishes = []
     for _, group in groupby(range(len(segments)), key=lambda index: segments[index].section):
@@ -57,7 +76,7 @@ def section_wishes(sketch: Sketch) -> list[Wish]:
         spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
         if spans:
             text = section_text(segments[members[0]].section, sketch.member.system)
-            if sketch.place.axes.upright:
+            if sketch.frame.upright:
                 text = text.replace("→", "\n→")
             middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))
             wishes.append(sketch.wish(text, middle, Part("length", members[0])))
@@ -73,18 +92,18 @@ def level_texts(sketch: Sketch) -> list[str]:
     return texts
 
 
-def draw_levels(sketch: Sketch, column: QRectF) -> None:
-    """A triangle standing on each joint's line, with its level beside it (upright only)."""
-    wishes = []
+def draw_levels(sketch: Sketch, column: float) -> None:
+    """A triangle standing on each joint's line, its level beside it, from the pixel `column`."""
+    left, wishes = column + 4.0, []
     for joint, text in enumerate(level_texts(sketch)):
         if sketch.holds(joint):
-            size = sketch.place.fonts.measure(text, "small")
-            middle = sketch.along(joint) - 0.5 * size.height()
-            wishes.append(Wish(text, middle, size.height(), size.width(), Part("joint", joint)))
+            width, height = sketch.frame.measure(text, "small")
+            middle = sketch.along(joint) - 0.5 * height
+            wishes.append(Wish(text, middle, height, width, Part("joint", joint)))
     for label in place(wishes, 1, sketch.room, TIGHT):
-        left, foot = column.left() + 4.0, label.span[1]
-        size = sketch.place.fonts.measure(label.wish.text, "small")
-        box = QRectF(QPointF(left + LEVEL_GAP, label.span[0]), size)
+        foot = label.span[1]
+        first = left + LEVEL_GAP
+        box = Box(first, label.span[0], first + label.wish.depth, foot)
         sketch.picture.texts.append(Text(box, label.wish.text, "small", "quiet", label.wish.part))
-        corners = QPointF(left, foot - 9.0), QPointF(left + 11.0, foot - 9.0), QPointF(left + 5.5, foot - 0.5)
+        corners = (left, foot - 9.0), (left + 11.0, foot - 9.0), (left + 5.5, foot - 0.5)
         sketch.picture.strokes.append(Stroke(corners, "ink", 1.2, closed=True, fill="paper", clip=False))

@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from app.gui.drawing.placing import TIGHT, place
-from app.gui.drawing.shapes import Circle, Part, Text
-from app.gui.drawing.sketch import Sketch
+from app.drawing.placing import TIGHT, place
+from app.drawing.shapes import Box, Circle, Fill, Part, Text
+from app.drawing.sketch import Sketch
 from solver.model import AreaSection, Segment, TubeSection
 from solver.sections import outline
 
@@ -45,7 +45,8 @@ def _draw_segment(sketch: Sketch, index: int) -> None:
     halves = [(start + s * (end - start), half_depth(sketch, segment, s)) for s in fractions]
     upper = [(a, axis - h) for a, h in halves]
     lower = [(a, axis + h) for a, h in reversed(halves)]
-    fill, dash = ("band_fill", (5.0, 3.0)) if bare else ("body_fill", ())
+    fill: Fill = "band_fill" if bare else "body_fill"
+    dash = (5.0, 3.0) if bare else ()
     sketch.line(*upper, *lower, width=1.4, fill=fill, closed=True, dash=dash, part=part, clip=True)
     if isinstance(segment.section, TubeSection):
         _draw_bore(sketch, segment, start, end)
@@ -77,21 +78,20 @@ def _draw_marks(sketch: Sketch) -> None:
             along = 0.5 * (span[0] + span[1])
             wish = sketch.wish(segment.mark, along, Part("segment", index), face="strong")
             wishes.append(wish)
-    for label in place(wishes, 1, sketch.room, TIGHT):
+    placed = place(wishes, 1, sketch.room, TIGHT)
+    sketch.picture.left_out += len(wishes) - len(placed)
+    for label in placed:
         _draw_mark(sketch, label.wish.text, label.wish.along, label.wish.part)
 
 
 def _draw_mark(sketch: Sketch, mark: str, along: float, part: Part) -> None:
-    size = sketch.place.fonts.measure(mark, "strong")
-    radius = 0.5 * max(size.width(), size.height()) + 2.0
+    width, height = sketch.frame.measure(mark, "strong")
+    radius = 0.5 * max(width, height) + 2.0
     centre = sketch.point(along, sketch.rows.axis)
     span = sketch.shown_span(part.index)
     if span is not None and 2.0 * radius + 2.0 <= span[1] - span[0]:
         sketch.picture.circles.append(Circle(centre, radius))
-    box = sketch.rect((along, along), (sketch.rows.axis, sketch.rows.axis))
-    box.setSize(size)
-    box.moveCenter(centre)
-    sketch.picture.texts.append(Text(box, mark, "strong", "ink", part))
+    sketch.picture.texts.append(Text(Box.around(centre, width, height), mark, "strong", "ink", part))
 
 
 def aim_at_joints(sketch: Sketch) -> None:

@@ -1,6 +1,6 @@
 """The drawing as plain values: strokes and texts in pixels, and what can be pointed at.
 
-A picture is made by `layout` without a window, painted and hit-tested by `MemberDrawing`. Its parts are
+A picture is made by `layout`, and painted by the window's drawing and by the calc sheet. Its parts are
 structs: hundreds are made for every edit, and they are made faster than dataclasses.
 """
 
@@ -10,13 +10,54 @@ from dataclasses import dataclass, field
 from typing import Literal, TypeAlias
 
 from msgspec import Struct
-from PySide6.QtCore import QPointF, QRectF
 
-from app.gui.fonts import Face
-
+HAIR = 1e-6  # px
+Point: TypeAlias = tuple[float, float]  # (x, y), y downward
+Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
+Anchor: TypeAlias = Literal["start", "middle", "end"]
 PartKind: TypeAlias = Literal["segment", "joint", "support", "force", "distributed", "length", "note"]
 Ink: TypeAlias = Literal["ink", "quiet", "joint", "select"]
 Fill: TypeAlias = Literal["", "body_fill", "band_fill", "select_fill", "load_fill", "paper", "ink"]
+
+
+class Box(Struct, frozen=True):
+    """A rectangle; `left` ≤ `right` and `top` ≤ `bottom`."""
+
+    left: float
+    top: float
+    right: float
+    bottom: float
+
+    @classmethod
+    def between(cls, one: Point, other: Point) -> Box:
+        """The box between two corners, in any order."""
+        left, right = (one[0], other[0]) if one[0] <= other[0] else (other[0], one[0])
+        top, bottom = (one[1], other[1]) if one[1] <= other[1] else (other[1], one[1])
+        return cls(left, top, right, bottom)
+
+    @classmethod
+    def around(cls, centre: Point, width: float, height: float) -> Box:
+        """The box of a size around its centre."""
+        left, top = centre[0] - 0.5 * width, centre[1] - 0.5 * height
+        return cls(left, top, left + width, top + height)
+
+    @property
+    def centre(self) -> Point:
+        """The point in its middle."""
+        return 0.5 * (self.left + self.right), 0.5 * (self.top + self.bottom)
+
+    def contains(self, point: Point) -> bool:
+        """Whether a point lies inside or on an edge."""
+        return self.left <= point[0] <= self.right and self.top <= point[1] <= self.bottom
+
+    def meets(self, other: Box) -> bool:
+        """Whether two boxes share more than an edge, whose place is rounded."""
+        return (
+            self.left < other.right - HAIR
+            and other.left < self.right - HAIR
+            and self.top < other.bottom - HAIR
+            and other.top < self.bottom - HAIR
+        )
 
 
 class Part(Struct, frozen=True):
@@ -29,7 +70,7 @@ class Part(Struct, frozen=True):
 class Stroke(Struct, frozen=True):
     """A line through points, closed or not; `fill` names a colour of the theme, empty for none."""
 
-    points: tuple[QPointF, ...]
+    points: tuple[Point, ...]
     ink: Ink = "ink"
     width: float = 1.0
     closed: bool = False
@@ -43,24 +84,25 @@ class Stroke(Struct, frozen=True):
 class Circle(Struct, frozen=True):
     """A circle on paper around a mark."""
 
-    centre: QPointF
+    centre: Point
     radius: float
 
 
 class Text(Struct, frozen=True):
     """A text centred in its box."""
 
-    rect: QRectF
+    box: Box
     text: str
     face: Face = "plain"
     ink: Ink = "ink"
     part: Part | None = None
+    anchor: Anchor = "middle"  # which end keeps its place where a font runs narrower than was measured
 
 
 class Target(Struct, frozen=True):
     """Where a part can be pointed at."""
 
-    rect: QRectF
+    box: Box
     part: Part
 
 
@@ -72,12 +114,13 @@ class Picture:
     chain_edge: float = 0.0  # across the axis: where joint lines begin
     strokes: list[Stroke] = field(default_factory=list)
     circles: list[Circle] = field(default_factory=list)
+    left_out: int = 0  # labels that found no room
     texts: list[Text] = field(default_factory=list)
     targets: list[Target] = field(default_factory=list)
 
-    def target_at(self, point: QPointF) -> Target | None:
+    def target_at(self, point: Point) -> Target | None:
         """The topmost target at a point, or None."""
         for target in reversed(self.targets):
-            if target.rect.contains(point):
+            if target.box.contains(point):
                 return target
         return None

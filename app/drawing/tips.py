@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from msgspec import UnsetType
 
-from app.gui.drawing.member import Member
-from app.gui.drawing.shapes import Part
-from app.gui.drawing.words import (
+from app.drawing.member import Member
+from app.drawing.shapes import Part
+from app.drawing.words import (
     bedding_text,
     distributed_text,
     fit_text,
@@ -45,10 +45,12 @@ def _on_segment(member: Member, index: int) -> tuple[str, ...]:
     if member.loads is None:
         return ()
     loads, system = member.loads, member.system
-    load = distributed_text(*loads.distributed[0, index].tolist(), system, signed=True)
+    first, last = loads.distributed[0, index].tolist()
+    load = distributed_text(first, last, system, signed=True)
+    warm_first, warm_last = loads.temperature[0, index].tolist()
     return (
         tr("load {value}").format(value=load) if load else "",
-        warmth_text(*loads.temperature[0, index].tolist(), system),
+        warmth_text(warm_first, warm_last, system),
         fit_text(float(loads.lack_of_fit[0, index]), system),
         gravity_text(float(loads.gravity[0]), system),
     )

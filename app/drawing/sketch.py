@@ -11,15 +11,13 @@ from functools import cached_property
 from itertools import pairwise
 from typing import Literal, TypeAlias
 
-from PySide6.QtCore import QPointF, QRectF
-
-from app.gui.drawing.member import Member
-from app.gui.drawing.placing import CLEAR, Placed, Span, Wish, place
-from app.gui.drawing.shapes import Fill, Ink, Part, Picture, Stroke, Target, Text
-from app.gui.fonts import Face
-from app.gui.sheet_layout import Place
+from app.drawing.frame import Frame
+from app.drawing.member import Member
+from app.drawing.placing import CLEAR, Placed, Span, Wish, place
+from app.drawing.shapes import Anchor, Box, Face, Fill, Ink, Part, Picture, Point, Stroke, Target, Text
 
 Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, across
+ANCHORS: dict[Toward, Anchor] = {"low": "end", "middle": "middle", "high": "start"}
 LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
@@ -28,12 +26,14 @@ class Rows:
     """Where the parts lie across the axis: each a span (or one coordinate), from the side of the loads."""
 
     labels: tuple[Span, ...]  # of loads, the nearest to the member first
+    brackets: tuple[Span, ...]  # over segments that are warmed, or too long or short
     band: Span  # distributed loads
     arrows: float  # joint forces
     axis: float
     half: float  # of the thickest section
     under: float  # springs and stops of inner joints
     under_label: Span
+    marks: tuple[Span, ...]  # of joints
     lengths: tuple[Span, ...]
     chain: float
     sections: tuple[Span, ...]
@@ -41,10 +41,10 @@ class Rows:
 
 @dataclass
 class Sketch:
-    """A member, its place, the rows, and the picture so far; what follows from member and place is kept."""
+    """A member, its frame, the rows, and the picture so far; what follows from member and frame is kept."""
 
     member: Member
-    place: Place
+    frame: Frame
     rows: Rows
     zero: float  # the pixel across the axis where `across` is 0
     scale: float  # pixels per metre across the axis
@@ -53,13 +53,13 @@ class Sketch:
     @cached_property
     def window(self) -> Span:
         """The pixels along the axis that the ruler shows, growing."""
-        low, high = sorted((self.place.ruler.begin, self.place.ruler.end))
+        low, high = sorted((self.frame.ruler.begin, self.frame.ruler.end))
         return low, high
 
     @cached_property
     def room(self) -> Span:
         """The pixels along the axis that labels may use."""
-        low, high = self.place.axes.along_of(self.place.rect)
+        low, high = self.frame.along
         return low + 4.0, high - 4.0
 
     def margin_beyond(self, joint: int) -> Span:
@@ -72,12 +72,12 @@ class Sketch:
     @property
     def forward(self) -> float:
         """+1 where x grows with the pixels, −1 upright."""
-        return 1.0 if self.place.ruler.end > self.place.ruler.begin else -1.0
+        return 1.0 if self.frame.ruler.end > self.frame.ruler.begin else -1.0
 
     @cached_property
     def joints(self) -> tuple[float, ...]:
         """The pixels of all joints."""
-        return tuple(map(self.place.ruler.pixel, self.member.position))
+        return tuple(map(self.frame.ruler.pixel, self.member.position))
 
     def along(self, joint: int) -> float:
         """The pixel of a joint."""
@@ -91,7 +91,7 @@ class Sketch:
 
     def holds(self, joint: int) -> bool:
         """Whether a joint is inside the window."""
-        return self.place.ruler.holds(self.member.position[joint])
+        return self.frame.ruler.holds(self.member.position[joint])
 
     def shown_span(self, segment: int) -> Span | None:
         """The pixels of a segment inside the window, growing; None where it is outside."""
@@ -105,20 +105,19 @@ class Sketch:
             spans.append((low, high) if high - low > 0.5 else None)
         return tuple(spans)
 
-    def point(self, along: float, across: float) -> QPointF:
-        """The point of the scene."""
-        turned = self.zero - across if self.place.axes.upright else self.zero + across
-        return self.place.axes.point(along, turned)
+    def point(self, along: float, across: float) -> Point:
+        """The point (x, y)."""
+        turned = self.zero - across if self.frame.upright else self.zero + across
+        return (turned, along) if self.frame.upright else (along, turned)
 
-    def rect(self, along: Span, across: Span) -> QRectF:
-        """The rectangle of the scene."""
-        return QRectF(self.point(along[0], across[0]), self.point(along[1], across[1])).normalized()
+    def box(self, along: Span, across: Span) -> Box:
+        """The box between two corners (along, across)."""
+        return Box.between(self.point(along[0], across[0]), self.point(along[1], across[1]))
 
     def extents(self, text: str, face: Face = "small") -> tuple[float, float]:
         """How much of (along, across) a text takes; texts are never turned."""
-        size = self.place.fonts.measure(text, face)
-        upright = self.place.axes.upright
-        return (size.height(), size.width()) if upright else (size.width(), size.height())
+        width, height = self.frame.measure(text, face)
+        return (height, width) if self.frame.upright else (width, height)
 
     def line(
         self,
@@ -149,18 +148,18 @@ class Sketch:
         self, text: str, along: float, part: Part, *, face: Face = "small", rank: int = 0, slide: float = 0.0
     ) -> Wish:
         """A label that wants a place; upright a long one takes several lines."""
-        if self.place.axes.upright:
+        if self.frame.upright:
             text = self._in_lines(text, face)
         extent, depth = self.extents(text, face)
         return Wish(text, along, extent, depth, part, rank, slide)
 
     def _in_lines(self, text: str, face: Face) -> str:
         """The text with line breaks at spaces, so that it stays within the widest column."""
-        widest = LONGEST_LINE * self.place.fonts.measure("0", face).width()
+        widest = LONGEST_LINE * self.frame.measure("0", face)[0]
         lines = [""]
         for word in text.split(" "):
             longer = f"{lines[-1]} {word}".strip()
-            if lines[-1] and self.place.fonts.measure(longer, face).width() > widest:
+            if lines[-1] and self.frame.measure(longer, face)[0] > widest:
                 lines.append(word)
             else:
                 lines[-1] = longer
@@ -170,7 +169,9 @@ class Sketch:
         """Places for labels in rows; those wider than a row (upright) are dropped like those without room."""
         widest = max((high - low for low, high in rows), default=0.0)
         fitting = [w for w in wishes if w.depth <= widest + 0.5]
-        return place(fitting, len(rows), self.room, clear)
+        found = place(fitting, len(rows), self.room, clear)
+        self.picture.left_out += len(wishes) - len(found)
+        return found
 
     def put(self, wishes: list[Wish], rows: tuple[Span, ...], toward: Toward, clear: float = CLEAR) -> None:
         """Place labels in rows and write them small and quiet, on the side of the row that is named."""
@@ -188,20 +189,20 @@ class Sketch:
     ) -> None:
         """A text in a box of exactly its size within the given spans."""
         box = self._box(wish, along, across, toward, face)
-        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part))
+        anchor = ANCHORS[toward] if self.frame.upright else "middle"
+        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part, anchor))
 
     def is_free(self, wish: Wish, along: Span, across: Span, toward: Toward) -> bool:
         """Whether a label would meet none that stands outside the rows, such as that of an end force."""
         box = self._box(wish, along, across, toward, "small")
-        return not any(text.rect.intersects(box) for text in self.picture.texts)
+        return not any(text.box.meets(box) for text in self.picture.texts)
 
-    def _box(self, wish: Wish, along: Span, across: Span, toward: Toward, face: Face) -> QRectF:
+    def _box(self, wish: Wish, along: Span, across: Span, toward: Toward, face: Face) -> Box:
         spare = across[1] - across[0] - wish.depth
         first = across[0] + {"low": 0.0, "middle": 0.5, "high": 1.0}[toward] * spare
-        box = QRectF(QPointF(), self.place.fonts.measure(wish.text, face))
-        box.moveCenter(self.rect(along, (first, first + wish.depth)).center())
-        return box
+        centre = self.box(along, (first, first + wish.depth)).centre
+        return Box.around(centre, *self.frame.measure(wish.text, face))
 
     def target(self, along: Span, across: Span, part: Part) -> None:
         """Where a part can be pointed at."""
-        self.picture.targets.append(Target(self.rect(along, across), part))
+        self.picture.targets.append(Target(self.box(along, across), part))

@@ -7,7 +7,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from app.gui.ruler import CLOSEST, Ruler
+from app.drawing.ruler import CLOSEST, Ruler
 
 LENGTHS = st.floats(1e-3, 1e4)
 SHARES = st.floats(0.0, 1.0)

@@ -1,4 +1,4 @@
-"""The one ruler of the sheet: position along the member ↔ sheet coordinate ↔ pixel.
+"""The one ruler of a sheet: position along the member ↔ sheet coordinate ↔ pixel.
 
 Drawing, strips, cursor and mouse all go through it and never scale a position by themselves; so when short
 segments get a least width on the sheet, only `sheet` and `position` change. Today the sheet coordinate is the
@@ -39,7 +39,7 @@ class Ruler:
     def sheet(self, x: float) -> float: ...
     @overload
     def sheet(self, x: FloatArray) -> FloatArray: ...
-    def sheet(self, x):
+    def sheet(self, x: float | FloatArray) -> float | FloatArray:
         """Sheet coordinate of a position, monotone; any shape."""
         return x
 
@@ -51,7 +51,7 @@ class Ruler:
     def pixel(self, x: float) -> float: ...
     @overload
     def pixel(self, x: FloatArray) -> FloatArray: ...
-    def pixel(self, x):
+    def pixel(self, x: float | FloatArray) -> float | FloatArray:
         """Pixel of a position (m); any shape; may lie outside `begin`…`end`."""
         return self.begin + (self.sheet(x) - self.first) * self.scale
 

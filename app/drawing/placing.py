@@ -13,7 +13,7 @@ from operator import itemgetter
 
 from msgspec import Struct
 
-from app.gui.drawing.shapes import Part
+from app.drawing.shapes import Part
 
 CLEAR = 9.0  # least pixels between two labels in a row, so that they do not read as one
 TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart

@@ -12,13 +12,13 @@ from msgspec import structs
 from PySide6.QtCore import QPointF, QRectF
 from PySide6.QtGui import QFont, QPolygonF
 
-from app.gui.drawing.layout import lay_out
-from app.gui.drawing.member import Member
-from app.gui.drawing.placing import CLEAR, Wish, fits, place
-from app.gui.drawing.shapes import Part, Picture, Text
-from app.gui.drawing.tips import tip
+from app.drawing.layout import lay_out
+from app.drawing.member import Member
+from app.drawing.placing import CLEAR, Wish, fits, place
+from app.drawing.ruler import Ruler
+from app.drawing.shapes import Part, Picture, Text
+from app.drawing.tips import tip
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Place, sheet_layout
 from app.gui.view import Shown
 from app.samples import names, read_sample

@@ -8,11 +8,11 @@ from __future__ import annotations
 
 from msgspec import UnsetType
 
-from app.gui.drawing.body import edge_at
-from app.gui.drawing.placing import Wish
-from app.gui.drawing.shapes import Part
-from app.gui.drawing.sketch import Sketch
-from app.gui.drawing.words import value_text
+from app.drawing.body import edge_at
+from app.drawing.placing import Wish
+from app.drawing.shapes import Part
+from app.drawing.sketch import Sketch
+from app.drawing.words import value_text
 from app.words import tr
 from solver.model import AnySupport, FixedSupport, SpringSupport, StopSupport
 
@@ -48,6 +48,8 @@ def draw_supports(sketch: Sketch, wishes: list[Wish]) -> None:
 
 def hanging_wishes(sketch: Sketch) -> list[Wish]:
     """The labels of hanging springs and stops."""
+    if not sketch.frame.detail.dimensions:
+        return []
     last = len(sketch.member.project.joints) - 1
     wishes = []
     for joint in range(last + 1):
@@ -97,7 +99,8 @@ def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -
         _zigzag(sketch, along, ground, axis, part)
         _wall(sketch, ground, 12.0, out)
         reach, half = SPRING + WALL, max(half, 12.0)
-        _label_end_spring(sketch, joint, support, 0.5 * (along + ground))
+        if sketch.frame.detail.dimensions:
+            _label_end_spring(sketch, joint, support, 0.5 * (along + ground))
     span = (along, along + out * max(reach, 24.0))
     sketch.target(span, (axis - half - 8.0, axis + half + 8.0), part)
 
@@ -115,6 +118,8 @@ def _label_end_spring(sketch: Sketch, joint: int, support: SpringSupport, along:
     span, across = (along - 0.5 * wish.extent, along + 0.5 * wish.extent), (top, top + wish.depth)
     if across[1] <= foot and sketch.is_free(wish, span, across, "middle"):
         sketch.text(wish, span, across)
+    else:
+        sketch.picture.left_out += 1
 
 
 def _wall(sketch: Sketch, along: float, half: float, out: float) -> None:

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from app.gui.view import Shown
+from app.shown import Shown
 from solver.chain import Loads
 from solver.model import Project, UnitSystemName
 from solver.packing import pack_loads, states_of

@@ -10,11 +10,11 @@ from itertools import groupby
 import numpy as np
 from msgspec.structs import replace
 
-from app.gui.drawing.placing import Wish
-from app.gui.drawing.shapes import Part
-from app.gui.drawing.sketch import Sketch
-from app.gui.drawing.supports import support_of
-from app.gui.drawing.words import (
+from app.drawing.placing import Span, Wish
+from app.drawing.shapes import Part
+from app.drawing.sketch import Sketch
+from app.drawing.supports import support_of
+from app.drawing.words import (
     bedding_text,
     distributed_text,
     fit_text,
@@ -25,7 +25,8 @@ from app.gui.drawing.words import (
 )
 from app.words import tr
 from solver.arrays import FloatArray
-from solver.model import end_of
+from solver.chain import Loads
+from solver.model import UnitSystemName, end_of
 
 ARROW = 32.0  # length of the arrow of a joint force, px
 LEAST_ARROW = 13.0
@@ -36,14 +37,18 @@ LEAST_BAND = 5.0  # height of the smallest distributed load, px
 def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
     """All that acts, and the bedding, which is drawn whether anything acts or not, with their labels."""
     _draw_bedding(sketch)
+    _draw_brackets(sketch)
     if sketch.member.loads is not None:
         _draw_distributed(sketch, sketch.member.loads.distributed[0])
         _draw_forces(sketch, sketch.member.loads.joint_force[0])
     rows = sketch.rows.labels
     for label in sketch.placed(wishes, rows):
-        face, ink = ("small_strong", "ink") if label.wish.part.kind == "force" else ("small", "quiet")
-        if sketch.is_free(label.wish, label.span, rows[label.row], "high"):
-            sketch.text(label.wish, label.span, rows[label.row], "high", face, ink)
+        if not sketch.is_free(label.wish, label.span, rows[label.row], "high"):
+            sketch.picture.left_out += 1
+        elif label.wish.part.kind == "force":
+            sketch.text(label.wish, label.span, rows[label.row], "high", "small_strong", "ink")
+        else:
+            sketch.text(label.wish, label.span, rows[label.row], "high")
 
 
 def load_wishes(sketch: Sketch) -> list[Wish]:
@@ -56,9 +61,9 @@ def load_wishes(sketch: Sketch) -> list[Wish]:
     wishes += _distributed_wishes(sketch, loads.distributed[0])
     wishes += _movement_wishes(sketch, loads.movement[0])
     system = sketch.member.system
-    wishes += _run_wishes(sketch, [fit_text(v, system) for v in loads.lack_of_fit[0].tolist()], rank=2)
-    warm = [warmth_text(*ends, system) for ends in loads.temperature[0].tolist()]
-    return wishes + _run_wishes(sketch, warm, rank=3) + _gravity_wishes(sketch, float(loads.gravity[0]))
+    wishes += _run_wishes(sketch, _misfits(loads, system), rank=2)
+    wishes += _run_wishes(sketch, _warmths(loads, system), rank=3)
+    return wishes + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
 # Distributed loads
@@ -199,20 +204,53 @@ def _movement_wishes(sketch: Sketch, movement: FloatArray) -> list[Wish]:
     return wishes
 
 
-def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
-    """One label for neighbours that say the same, in the middle of what is shown of them."""
-    wishes = []
+def _misfits(loads: Loads, system: UnitSystemName) -> list[str]:
+    return [fit_text(value, system) for value in loads.lack_of_fit[0].tolist()]
+
+
+def _warmths(loads: Loads, system: UnitSystemName) -> list[str]:
+    return [warmth_text(first, last, system) for first, last in loads.temperature[0].tolist()]
+
+
+def _runs(sketch: Sketch, texts: list[str]) -> list[tuple[str, Span]]:
+    """What is said of neighbours that say the same, and the pixels of them that are shown."""
+    runs = []
     for text, group in groupby(range(len(texts)), key=lambda index: texts[index]):
         spans = [span for index in group if (span := sketch.shown_span(index)) is not None]
         if text and spans:
-            low, high = min(s[0] for s in spans), max(s[1] for s in spans)
-            part = Part("note", rank)
-            wish = sketch.wish(text, 0.5 * (low + high), part, rank=rank, slide=0.5 * (high - low))
-            wishes.append(wish)
-    return wishes
+            runs.append((text, (min(s[0] for s in spans), max(s[1] for s in spans))))
+    return runs
+
+
+def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
+    """One label for neighbours that say the same, in the middle of what is shown of them."""
+    part = Part("note", rank)
+    return [
+        sketch.wish(text, 0.5 * (low + high), part, rank=rank, slide=0.5 * (high - low))
+        for text, (low, high) in _runs(sketch, texts)
+    ]
+
+
+def bracketed(sketch: Sketch) -> list[list[Span]]:
+    """Where brackets are drawn: a row for what is too long or short, one for what is warmed, if any is."""
+    loads, system = sketch.member.loads, sketch.member.system
+    if loads is None or not sketch.frame.detail.brackets:
+        return []
+    rows = (_runs(sketch, texts) for texts in (_misfits(loads, system), _warmths(loads, system)))
+    return [[span for _, span in row] for row in rows if row]
+
+
+def _draw_brackets(sketch: Sketch) -> None:
+    for spans, (top, foot) in zip(bracketed(sketch), sketch.rows.brackets, strict=True):
+        for low, high in spans:
+            inset = min(2.0, 0.25 * (high - low))
+            ends = low + inset, high - inset
+            sketch.line((ends[0], foot), (ends[0], top), (ends[1], top), (ends[1], foot), ink="quiet")
 
 
 def _bedding_wishes(sketch: Sketch) -> list[Wish]:
+    if not sketch.frame.detail.dimensions:
+        return []
     texts = []
     for segment in sketch.member.project.segments:
         end = end_of(segment.bedding, segment.bedding_end)

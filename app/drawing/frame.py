@@ -1,0 +1,58 @@
+"""Where a drawing lies and what it shows there: the one difference between screen and paper.
+
+On the screen room is given and labels without any are left to tooltips; on paper the drawing takes the room
+it needs, since nothing can be pointed at.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import TypeAlias
+
+from msgspec import Struct
+
+from app.drawing.ruler import Ruler
+from app.drawing.shapes import Box, Face
+
+Measure: TypeAlias = Callable[[str, Face], tuple[float, float]]  # width and height; line breaks count
+
+
+class Detail(Struct, frozen=True):
+    """What is drawn beside the member, and how much room it may take."""
+
+    load_rows: int = 3  # of labels of loads, at most; upright one column
+    text_rows: int = 2  # of lengths, of sections and of joint marks, at most
+    column: float = 0.34  # widest column of load labels upright, of the drawing's room
+    dimensions: bool = True  # lengths, sections, stiffnesses
+    levels: bool = True  # upright, beside the drawing
+    joint_marks: bool = False  # with thin lines from the joints; where nothing can be pointed at
+    brackets: bool = False  # over the segments that a label of warming or misfit speaks of
+    factor: bool = True  # whether the drawing itself says how it is stretched
+
+
+@dataclass(frozen=True, slots=True)
+class Frame:
+    """The room of a drawing, its ruler, which way it lies, and how texts are measured."""
+
+    box: Box
+    ruler: Ruler
+    upright: bool
+    measure: Measure
+    detail: Detail = Detail()  # noqa: RUF009 - frozen
+
+    def point(self, along: float, across: float) -> tuple[float, float]:
+        """The point (x, y)."""
+        return (across, along) if self.upright else (along, across)
+
+    @property
+    def along(self) -> tuple[float, float]:
+        """The room along the axis, growing."""
+        box = self.box
+        return (box.top, box.bottom) if self.upright else (box.left, box.right)
+
+    @property
+    def across(self) -> tuple[float, float]:
+        """The room across the axis, growing."""
+        box = self.box
+        return (box.left, box.right) if self.upright else (box.top, box.bottom)

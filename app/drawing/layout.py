@@ -1,0 +1,91 @@
+"""From a member and a frame to a picture: the rows first, then the parts one after another.
+
+Needs no window and no paper: only a ruler, a box and the measure of texts.
+"""
+
+from __future__ import annotations
+
+from app.drawing.body import aim_at_joints, draw_body
+from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_texts
+from app.drawing.frame import Frame
+from app.drawing.loads import draw_loads, no_loads_text
+from app.drawing.member import Member
+from app.drawing.rows import Wishes, no_rows, round_factor, rows_in, thickest
+from app.drawing.shapes import Box, Part, Picture, Text
+from app.drawing.sketch import Sketch
+from app.drawing.supports import draw_supports
+from app.units import format_value
+from app.words import tr
+
+
+def lay_out(member: Member, frame: Frame) -> Picture:
+    """The picture of a member in its frame."""
+    sketch = Sketch(member, frame, no_rows(), zero=0.0, scale=0.0)
+    wishes = Wishes.of(sketch)
+    _give_rows(sketch, wishes)
+    if frame.detail.joint_marks:
+        draw_joint_marks(sketch, wishes.joints)
+    if frame.detail.dimensions:
+        draw_chain(sketch, wishes.lengths, wishes.sections)
+    draw_body(sketch)
+    draw_supports(sketch, wishes.hanging)
+    _draw_no_loads(sketch)
+    draw_loads(sketch, wishes.loads)
+    aim_at_joints(sketch)
+    if frame.detail.factor:
+        _draw_factor(sketch)
+    _set_edge(sketch)
+    return sketch.picture
+
+
+def _set_edge(sketch: Sketch) -> None:
+    """Where joint lines begin: at the dimension line, or upright at the column of levels."""
+    if sketch.frame.upright:
+        sketch.picture.chain_edge = column = _level_column(sketch)
+        if sketch.frame.detail.levels:
+            draw_levels(sketch, column)
+    else:
+        sketch.picture.chain_edge = sketch.point(0.0, sketch.rows.sections[-1][1])[1]
+
+
+def _level_column(sketch: Sketch) -> float:
+    """Upright, where the column of levels begins, or the room ends where there is none."""
+    if not sketch.frame.detail.levels:
+        return sketch.frame.box.right
+    width = max(sketch.frame.measure(text, "small")[0] for text in level_texts(sketch))
+    return sketch.frame.box.right - width - LEVEL_GAP - 6.0
+
+
+def _give_rows(sketch: Sketch, wishes: Wishes) -> None:
+    """Give a sketch its rows: those that are needed get their room, the member the rest."""
+    low, high = sketch.frame.across
+    if sketch.frame.upright:
+        high = _level_column(sketch)
+    sketch.zero = high if sketch.frame.upright else low
+    sketch.rows = rows_in(sketch, wishes, high - low)
+    to_scale = thickest(sketch.member) * sketch.frame.ruler.pixels_per_metre
+    sketch.picture.factor = round_factor(sketch.rows.half / to_scale)
+    sketch.scale = sketch.picture.factor * sketch.frame.ruler.pixels_per_metre
+
+
+def _draw_factor(sketch: Sketch) -> None:
+    """How much the drawing is stretched across the axis, in its corner away from the loads."""
+    text = tr("across ×{factor}").format(
+        factor=format_value(sketch.picture.factor, "factor", sketch.member.system, strip=True)
+    )
+    corner = sketch.frame.box
+    _note(sketch, text, corner.bottom - sketch.frame.measure(text, "small")[1] - 2.0, index=-1)
+
+
+def _draw_no_loads(sketch: Sketch) -> None:
+    """Why no loads are drawn, in the corner."""
+    text = no_loads_text(sketch)
+    if text:
+        _note(sketch, text, sketch.frame.box.top + 4.0, index=0)
+
+
+def _note(sketch: Sketch, text: str, top: float, index: int) -> None:
+    width, height = sketch.frame.measure(text, "small")
+    left = sketch.frame.box.left + 6.0
+    box = Box(left, top, left + width, top + height)
+    sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", index)))

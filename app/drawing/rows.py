@@ -1,0 +1,195 @@
+"""How much room each part gets across the axis: the rows what they need from both sides, the member the rest.
+
+On the screen labels give way before the member is too thin to be seen; on paper the drawing gets the depth
+that it needs for all of them.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from app.drawing.chain import joint_wishes, length_wishes, section_wishes
+from app.drawing.frame import Frame
+from app.drawing.loads import bracketed, lies_outside, load_wishes, no_loads_text
+from app.drawing.member import Member
+from app.drawing.placing import TIGHT, Span, Wish, fits
+from app.drawing.sketch import Rows, Sketch
+from app.drawing.supports import hanging_wishes, hangs, support_of
+from solver.model import end_of
+from solver.sections import outline
+
+BAND = 17.0  # distributed loads at their largest, px
+BRACKET = 7.0  # a row of brackets and the gap under it
+ARROWS = 18.0  # the row of joint forces
+UNDER = 20.0  # the row of hanging supports
+LEAST_HALF = 13.0  # of the thickest section, before labels of loads give way, px
+THINNEST = 6.0  # before lengths and sections do
+EDGE = 10.0  # upright, between sections and the edge of the sheet
+BEDDING = 6.0  # for the hatch along the member
+BESIDE = 6.0  # between labels of hanging supports and lengths
+CHAIN = 7.0  # to either side of the dimension line
+FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
+AMPLE = 1e5  # across: room enough for any label, px
+
+
+@dataclass(frozen=True, slots=True)
+class Wishes:
+    """The labels that want a place in rows: how much room those get follows from them."""
+
+    loads: list[Wish]
+    lengths: list[Wish]
+    sections: list[Wish]
+    hanging: list[Wish]
+    joints: list[Wish]
+
+    @classmethod
+    def of(cls, sketch: Sketch) -> Wishes:
+        """The labels of a member in its frame."""
+        return cls(
+            load_wishes(sketch),
+            length_wishes(sketch),
+            section_wishes(sketch),
+            hanging_wishes(sketch),
+            joint_wishes(sketch),
+        )
+
+
+def no_rows() -> Rows:
+    """Rows without any room, for a sketch whose rows are not known yet."""
+    nothing = (0.0, 0.0)
+    return Rows((nothing,), (), nothing, 0.0, 0.0, 0.0, 0.0, nothing, (nothing,), (nothing,), 0.0, (nothing,))
+
+
+def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
+    """As many rows of labels as leave the member enough of the room across."""
+    for most in range(sketch.frame.detail.load_rows, 0, -1):
+        rows = _rows_with(sketch, wishes, room, most)
+        if rows.half >= (LEAST_HALF if most > 1 else THINNEST):
+            return rows
+    return _rows_with(sketch, wishes, room, 0)
+
+
+def depth_for(member: Member, frame: Frame, half: float) -> float:
+    """The room across that all labels need and a member whose thickest section has `half`, px."""
+    sketch = Sketch(member, frame, no_rows(), zero=0.0, scale=0.0)
+    rows = _rows_with(sketch, Wishes.of(sketch), AMPLE, frame.detail.load_rows)
+    return AMPLE - 2.0 * (rows.half - half)
+
+
+def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int) -> Rows:
+    """The rows from both sides inward; the member gets what is left between them.
+
+    Of labels of loads there are at most `most` rows; with 0 one, and one of lengths and of sections each.
+    """
+    labels = _label_rows(sketch, wishes.loads, room, max(most, 1))
+    brackets = _bracket_rows(sketch, labels[-1][1] + 2.0)
+    top = brackets[-1][1] if brackets else labels[-1][1] + 2.0
+    band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
+    first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
+    edge = EDGE if sketch.frame.upright else 4.0
+    sections = _text_rows(sketch, wishes.sections, room - edge, most)
+    chain = sections[0][0] - CHAIN
+    lengths = _text_rows(sketch, wishes.lengths, chain - CHAIN, most)
+    marks = _text_rows(sketch, wishes.joints, lengths[0][0], most)
+    under_label, under = _under_rows(wishes.hanging, marks[0][0])
+    last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
+    last -= BEDDING if _has_bedding(sketch) else 0.0
+    return Rows(
+        labels=tuple(reversed(labels)),
+        brackets=brackets,
+        band=band,
+        arrows=band[1] + 0.5 * ARROWS,
+        axis=0.5 * (first + last),
+        half=max(0.5 * (last - first), 4.0),
+        under=under,
+        under_label=under_label,
+        marks=tuple(reversed(marks)),
+        lengths=tuple(reversed(lengths)),
+        chain=chain,
+        sections=sections,
+    )
+
+
+def _label_rows(sketch: Sketch, wishes: list[Wish], room: float, most: int) -> tuple[Span, ...]:
+    """As many rows as the labels of loads need, up to `most`; upright one column as wide as they are."""
+    first = 4.0 if sketch.frame.upright else 4.0 + _note_height(sketch)
+    if not wishes:
+        return ((first, first),)
+    depth = max(w.depth for w in wishes)
+    if sketch.frame.upright:
+        forces = max((w.depth for w in wishes if w.part.kind == "force"), default=0.0)
+        column = sketch.frame.detail.column * room
+        column = min(max(column * most / sketch.frame.detail.load_rows, forces), column)
+        widest = max((w.depth for w in wishes if w.depth <= column), default=0.0)
+        return ((first, first + widest),)
+    count = 1
+    while count < most and not fits(wishes, count, sketch.room):
+        count += 1
+    return tuple((first + i * depth, first + (i + 1) * depth) for i in range(count))
+
+
+def _bracket_rows(sketch: Sketch, first: float) -> tuple[Span, ...]:
+    """A row for the brackets of warming, and one for those of misfit."""
+    count = len(bracketed(sketch))
+    return tuple((first + i * BRACKET, first + (i + 1) * BRACKET - 3.0) for i in range(count))
+
+
+def _under_rows(wishes: list[Wish], foot: float) -> tuple[Span, float]:
+    """The row of labels of hanging supports, which ends at `foot`, and the line the supports hang on."""
+    depth = max((w.depth for w in wishes), default=0.0)
+    foot -= BESIDE if depth else 0.0
+    return (foot - depth, foot), foot - depth - 0.5 * UNDER
+
+
+def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float, most: int) -> tuple[Span, ...]:
+    """One row, or more where a text is too long for one; the last ends at `foot`."""
+    if not wishes:
+        return ((foot, foot),)
+    depth = max(w.depth for w in wishes)
+    count, limit = 1, sketch.frame.detail.text_rows if most and not sketch.frame.upright else 1
+    while count < limit and not fits(wishes, count, sketch.room, TIGHT):
+        count += 1
+    return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
+
+
+def _has_distributed(sketch: Sketch) -> bool:
+    loads = sketch.member.loads
+    return loads is not None and bool(loads.distributed.any())
+
+
+def _has_inner_forces(sketch: Sketch) -> bool:
+    """Whether any force is drawn in the row of arrows (those at free ends lie on the axis)."""
+    if sketch.member.loads is None:
+        return False
+    last = len(sketch.member.project.segments)
+    forces = sketch.member.loads.joint_force[0]
+    return any(forces[j] and not lies_outside(sketch, j) for j in range(last + 1))
+
+
+def _has_bedding(sketch: Sketch) -> bool:
+    return any(s.bedding or end_of(s.bedding, s.bedding_end) for s in sketch.member.project.segments)
+
+
+def _has_hanging(sketch: Sketch) -> bool:
+    last = len(sketch.member.project.segments)
+    return any(hangs(support_of(sketch, j), inner=0 < j < last) for j in range(last + 1))
+
+
+def _note_height(sketch: Sketch) -> float:
+    text = no_loads_text(sketch)
+    return sketch.frame.measure(text, "small")[1] if text else 0.0
+
+
+def thickest(member: Member) -> float:
+    """The largest half depth of any section, m."""
+    return max(outline(s.section, at).outer for s in member.project.segments for at in (0.0, 1.0))
+
+
+def round_factor(largest: float) -> float:
+    """The largest round factor that still fits."""
+    power = 1e-6
+    best = power
+    while power <= largest:
+        best = max(power * f for f in FACTORS if power * f <= largest)
+        power *= 10.0
+    return best
