@@ -46,7 +46,7 @@ def draw_joint_marks(sketch: Sketch, wishes: list[Wish]) -> None:
 
 def joint_wishes(sketch: Sketch) -> list[Wish]:
     """The marks of joints, where they are written at all."""
-    if not sketch.frame.detail.joint_marks:
+    if not sketch.frame.detail.explained:
         return []
     marks = enumerate(joint.mark for joint in sketch.member.project.joints)
     return [sketch.wish(mark, sketch.along(joint), Part("joint", joint), slide=6.0) for joint, mark in marks]

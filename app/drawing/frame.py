@@ -26,8 +26,7 @@ class Detail(Struct, frozen=True):
     column: float = 0.34  # widest column of load labels upright, of the drawing's room
     dimensions: bool = True  # lengths, sections, stiffnesses
     levels: bool = True  # upright, beside the drawing
-    joint_marks: bool = False  # with thin lines from the joints; where nothing can be pointed at
-    brackets: bool = False  # over the segments that a label of warming or misfit speaks of
+    explained: bool = False  # marks of joints, brackets under labels: where nothing can be pointed at
     factor: bool = True  # whether the drawing itself says how it is stretched
 
 
@@ -40,10 +39,6 @@ class Frame:
     upright: bool
     measure: Measure
     detail: Detail = Detail()  # noqa: RUF009 - frozen
-
-    def point(self, along: float, across: float) -> tuple[float, float]:
-        """The point (x, y)."""
-        return (across, along) if self.upright else (along, across)
 
     @property
     def along(self) -> tuple[float, float]:

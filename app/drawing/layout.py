@@ -23,7 +23,7 @@ def lay_out(member: Member, frame: Frame) -> Picture:
     sketch = Sketch(member, frame, no_rows(), zero=0.0, scale=0.0)
     wishes = Wishes.of(sketch)
     _give_rows(sketch, wishes)
-    if frame.detail.joint_marks:
+    if frame.detail.explained:
         draw_joint_marks(sketch, wishes.joints)
     if frame.detail.dimensions:
         draw_chain(sketch, wishes.lengths, wishes.sections)

@@ -234,7 +234,7 @@ def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
 def bracketed(sketch: Sketch) -> list[list[Span]]:
     """Where brackets are drawn: a row for what is too long or short, one for what is warmed, if any is."""
     loads, system = sketch.member.loads, sketch.member.system
-    if loads is None or not sketch.frame.detail.brackets:
+    if loads is None or not sketch.frame.detail.explained:
         return []
     rows = (_runs(sketch, texts) for texts in (_misfits(loads, system), _warmths(loads, system)))
     return [[span for _, span in row] for row in rows if row]

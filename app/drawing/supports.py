@@ -7,6 +7,7 @@ joint in a row of their own on the far side of the loads.
 from __future__ import annotations
 
 from msgspec import UnsetType
+from msgspec.structs import replace
 
 from app.drawing.body import edge_at
 from app.drawing.placing import Wish
@@ -59,7 +60,31 @@ def hanging_wishes(sketch: Sketch) -> list[Wish]:
             text = _hanging_text(sketch, support)
             if text:
                 wishes.append(sketch.wish(text, 0.5 * (low + high), Part("support", joint), slide=30.0))
+    return wishes + _wide_wishes(sketch)
+
+
+def _wide_wishes(sketch: Sketch) -> list[Wish]:
+    """The stiffnesses of end springs that have no room outside the member, where they get some under it."""
+    if not sketch.frame.detail.explained:
+        return []
+    wishes = []
+    for joint in (0, len(sketch.member.project.joints) - 1):
+        support = support_of(sketch, joint)
+        if isinstance(support, SpringSupport):
+            wish = _stiffness_wish(sketch, joint, support, sketch.along(joint))
+            if _is_wide(sketch, joint, wish):
+                wishes.append(replace(wish, slide=wish.extent))
     return wishes
+
+
+def _stiffness_wish(sketch: Sketch, joint: int, support: SpringSupport, along: float) -> Wish:
+    return sketch.wish(_stiffness(sketch, support.stiffness), along, Part("support", joint))
+
+
+def _is_wide(sketch: Sketch, joint: int, wish: Wish) -> bool:
+    """Whether the margin beyond an end joint is too narrow for a label."""
+    low, high = sketch.margin_beyond(joint)
+    return wish.extent > high - low
 
 
 def _hanging_text(sketch: Sketch, support: AnySupport) -> str:
@@ -107,10 +132,12 @@ def _draw_at_end(sketch: Sketch, joint: int, support: AnySupport, side: float) -
 
 def _label_end_spring(sketch: Sketch, joint: int, support: SpringSupport, along: float) -> None:
     """Beside the spring, outside the member; under its edge where the margin is too narrow for that."""
-    wish = sketch.wish(_stiffness(sketch, support.stiffness), along, Part("support", joint))
+    wish = _stiffness_wish(sketch, joint, support, along)
     low, high = sketch.margin_beyond(joint)
     top, foot = sketch.rows.axis + 15.0, sketch.rows.sections[-1][1]
-    if wish.extent > high - low:
+    if _is_wide(sketch, joint, wish):
+        if sketch.frame.detail.explained:
+            return  # it stands in the row of hanging labels
         low, high = sketch.room
         top = max(top, sketch.rows.axis + edge_at(sketch, joint) + 3.0)
         foot = sketch.rows.under_label[0]

@@ -26,13 +26,11 @@ from solver.chain import Loads
 from solver.model import Project, UnitSystemName
 
 POINT: Final = 0.7
-_ACROSS, _UPRIGHT, _SMALL = 392.0 / POINT, 330.0 / POINT, 190.0 / POINT  # drawn length of the member
-_BEYOND = 72.0  # room beyond the member's ends
+_ACROSS, _UPRIGHT, _SMALL = 386.0 / POINT, 300.0 / POINT, 190.0 / POINT  # drawn length of the member
+_BEYOND = 76.0  # room beyond the member's ends
 _LEAST_HALF, _MOST_HALF, _SMALL_HALF = 11.0 / POINT, 34.0 / POINT, 20.0 / POINT
-_WHOLE = Detail(
-    load_rows=8, text_rows=5, column=1.0, levels=False, joint_marks=True, brackets=True, factor=False
-)
-_LOADS_ONLY = replace(_WHOLE, dimensions=False, joint_marks=False)
+_WHOLE = Detail(load_rows=8, text_rows=5, column=1.0, levels=False, explained=True, factor=False)
+_LOADS_ONLY = replace(_WHOLE, dimensions=False)
 
 
 @dataclass(frozen=True, slots=True)
@@ -95,7 +93,7 @@ def _note(frame: Frame, picture: Picture) -> str:
 
 def _scale_note(ruler: Ruler, factor: float) -> str:
     lengths = 72 / 0.0254 / (POINT * ruler.pixels_per_metre)
-    if factor == 1.0:
+    if abs(factor - 1.0) < 1e-9:
         return tr("Drawn to scale, about 1 : {scale}.").format(scale=f"{lengths:.3g}")
     return tr(
         "Lengths to scale, about 1 : {lengths}; depths to a scale of their own, about 1 : {depths}."

@@ -32,7 +32,7 @@ def text_width(text: str, size: float) -> float:
     capital = sum(c.isupper() for c in text)
     plain = len(text) - narrow - wide - capital
     if _OTHER_FONT in text:
-        return size * 0.66 * len(text)
+        return size * (0.66 * len(text) + 0.34 * text.count(_OTHER_FONT))
     return size * (0.34 * narrow + 0.86 * wide + 0.7 * capital + 0.52 * plain)
 
 

@@ -1,128 +1,15 @@
-"""Members and places for the tests of the sheet."""
+"""Places on the sheet for the tests of drawing and strips."""
 
 from __future__ import annotations
 
-from msgspec import UNSET
 from PySide6.QtGui import QFont
 
 from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place, SheetLayout, sheet_layout
-from app.gui.view import Shown
-from app.samples import names, read_sample
-from solver.model import (
-    AnySupport,
-    AreaSection,
-    Combination,
-    FixedSupport,
-    Joint,
-    JointLoad,
-    LoadCase,
-    Material,
-    Project,
-    RectangleSection,
-    RoundSection,
-    Segment,
-    SegmentLoad,
-    SpringSupport,
-    StopSupport,
-    TubeSection,
-)
-from solver.packing import states_of
 
-SECTIONS = (
-    RoundSection(diameter=0.050, diameter_end=0.060),
-    TubeSection(outer=0.080, inner=0.050),
-    RectangleSection(width=0.040, depth=0.060),
-    AreaSection(area=2e-3, area_end=3e-3),
-)
 SIZES = ((900, 480), (1900, 1000))  # the sheet in windows of 1280×800 and 2560×1440
-
-
-def busy_member(count: int) -> Project:
-    """Every shape of section, support and load, on `count` segments, in ten combinations of four cases."""
-    segments = tuple(
-        Segment(f"S{i}", 0.3 + 0.05 * (i % 5), "Steel", SECTIONS[i % 4], bedding=1e6 if i % 7 == 3 else 0.0)
-        for i in range(count)
-    )
-    joints = tuple(Joint(str(i), _support(i, count) or UNSET) for i in range(count + 1))
-    cases = tuple(_case(number, segments, joints) for number in range(4))
-    combinations = tuple(
-        Combination(f"Combination {k}", {case.name: 1.0 + 0.1 * k for case in cases}) for k in range(10)
-    )
-    return Project(
-        format="barwright-project",
-        version=1,
-        materials=(Material("Steel", 2.1e11, 1.2e-5, 7850.0, 1.6e8, 1.4e8),),
-        joints=joints,
-        segments=segments,
-        load_cases=cases,
-        combinations=combinations,
-    )
-
-
-def _support(joint: int, count: int) -> AnySupport | None:
-    if joint in (0, count // 2):
-        return FixedSupport()
-    return SpringSupport(stiffness=1e8 + joint * 1e6) if joint % 6 == 5 else None
-
-
-def _case(number: int, segments: tuple[Segment, ...], joints: tuple[Joint, ...]) -> LoadCase:
-    return LoadCase(
-        f"Case {number}",
-        gravity=-9.81 if number == 0 else 0.0,
-        segment_loads=tuple(
-            SegmentLoad(
-                s.mark, 1e3 * (i + 1), -500.0 * number, 10.0 * number, lack_of_fit=1e-4 if i == 3 else 0.0
-            )
-            for i, s in enumerate(segments)
-            if i % 3 == number % 3
-        ),
-        joint_loads=tuple(
-            JointLoad(joint.mark, force=2e4 * (j + 1) * (-1) ** j)
-            for j, joint in enumerate(joints)
-            if j and j % (2 + number) == 0
-        ),
-    )
-
-
-def stopped_member() -> Project:
-    """Stops on either side, which the drawing shows although they are not solved yet."""
-    project = busy_member(4)
-    joints = (
-        Joint("0", StopSupport(side="minus", clearance=2e-4)),
-        Joint("1", StopSupport(side="plus", clearance=5e-4, stiffness=1e8)),
-        Joint("2", FixedSupport()),
-        Joint("3"),
-        Joint("4", SpringSupport(stiffness=4e7)),
-    )
-    return Project(
-        format="barwright-project",
-        version=1,
-        materials=project.materials,
-        joints=joints,
-        segments=project.segments,
-        load_cases=project.load_cases,
-    )
-
-
-def all_members() -> dict[str, Project]:
-    """The samples, busy members of 1 to 40 segments, and one with stops."""
-    found = {name: read_sample(name) for name in names()}
-    found |= {f"busy {count}": busy_member(count) for count in (1, 12, 25, 40)}
-    return found | {"stops": stopped_member()}
-
-
-def first_state(project: Project) -> Shown:
-    """The first state of a project."""
-    state = states_of(project)[0]
-    return Shown(state.kind, state.name)
-
-
-def drawn(project: Project) -> Member:
-    """The member with the loads of its first state."""
-    return Member.of(project, first_state(project))
 
 
 def laid_out(size: tuple[int, int], *, upright: bool) -> SheetLayout:

@@ -21,7 +21,7 @@ from app.gui.view import Selection, Shown, View
 from app.samples import read_sample
 from solver.model import FixedSupport, JointLoad
 from solver.solve import solve
-from tests.gui.sheets import busy_member
+from tests.drawn_members import busy_member
 from tests.members import Part, case, member, round_bar
 
 ROD = read_sample("tie_rod")

@@ -18,7 +18,7 @@ from app.samples import read_sample
 from app.units import SYSTEM_NAMES
 from solver.results import Results
 from solver.solve import solve
-from tests.gui.sheets import busy_member
+from tests.drawn_members import busy_member
 
 PILE = read_sample("quay_pile")
 PILE_RESULTS = solve(PILE)
@@ -172,9 +172,8 @@ class TestSelection:
         sheet.set_orientation(orientation)
         target = next(t for t in sheet.drawing.picture.targets if t.part == Part("segment", 2))
         with qtbot.waitSignal(sheet.drawing.clicked, check_params_cb=lambda part: part == Part("segment", 2)):
-            qtbot.mouseClick(
-                sheet.viewport(), Qt.MouseButton.LeftButton, pos=_beside_mark(target.rect.center(), sheet)
-            )
+            place = _beside_mark(QPointF(*target.box.centre), sheet)
+            qtbot.mouseClick(sheet.viewport(), Qt.MouseButton.LeftButton, pos=place)
         assert view.selection == Selection(segments=frozenset({2}))
 
     def test_of_a_segment_is_lit_in_the_drawing(self, sheet, view):
@@ -185,7 +184,7 @@ class TestSelection:
     def test_hovering_tells_the_part(self, qtbot, sheet):
         target = next(t for t in sheet.drawing.picture.targets if t.part == Part("segment", 0))
         with qtbot.waitSignal(sheet.drawing.hovered, check_params_cb=lambda p: p == Part("segment", 0)):
-            move_mouse(sheet, target.rect.center().toPoint() + QPoint(20, 0))
+            move_mouse(sheet, QPointF(*target.box.centre).toPoint() + QPoint(20, 0))
         assert "P1" in sheet.drawing.toolTip()
 
 

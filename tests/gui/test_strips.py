@@ -35,7 +35,8 @@ from app.samples import read_sample
 from solver.model import AreaSection, Combination, FixedSupport, JointLoad, SegmentLoad
 from solver.results import Results
 from solver.solve import solve
-from tests.gui.sheets import SIZES, busy_member, laid_out
+from tests.drawn_members import busy_member
+from tests.gui.sheets import SIZES, laid_out
 from tests.members import Part, case, member, round_bar
 
 KINDS = ("displacement", "force", "stress", "utilisation")
