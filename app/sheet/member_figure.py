@@ -18,7 +18,7 @@ from app.drawing.rows import depth_for, round_factor, thickest
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Picture
 from app.sheet.picture_svg import draw_picture, measure
-from app.sheet.svg import Canvas
+from app.sheet.svg import Canvas, fitted
 from app.units import format_value
 from app.words import tr
 from solver.arrays import FloatArray
@@ -27,6 +27,7 @@ from solver.model import Project, UnitSystemName
 
 POINT: Final = 0.7
 _ACROSS, _UPRIGHT, _SMALL = 386.0 / POINT, 300.0 / POINT, 190.0 / POINT  # drawn length of the member
+_MARK, _WIDEST_MARK = 12.0, 80.0  # size and width of the longest mark
 _BEYOND = 76.0  # room beyond the member's ends
 _LEAST_HALF, _MOST_HALF, _SMALL_HALF = 11.0 / POINT, 34.0 / POINT, 20.0 / POINT
 _WHOLE = Detail(load_rows=8, text_rows=5, column=1.0, levels=False, explained=True, factor=False)
@@ -48,13 +49,26 @@ def member_figure(
     project: Project, positions: FloatArray, loads: Loads | None = None, state: int = 0, *, chain: bool = True
 ) -> Figure:
     """The drawing with the loads of `state`, if any, and the dimension chain; `positions` (n + 1,) in m."""
-    member = Member(project, tuple(map(float, positions)), None if loads is None else _of_state(loads, state))
+    member = Member(
+        _with_short_marks(project),
+        tuple(map(float, positions)),
+        None if loads is None else _of_state(loads, state),
+    )
     frame = _frame(member, whole=chain)
     picture = lay_out(member, frame)
     canvas = Canvas(scale=POINT)
     draw_picture(canvas, picture)
     alt = _alt(project, project.display.unit_system)
     return Figure(canvas.render(alt), *canvas.size, alt, _note(frame, picture))
+
+
+def _with_short_marks(project: Project) -> Project:
+    """The project with marks cut to what a drawing has room for; the tables hold them whole."""
+    return replace(
+        project,
+        segments=tuple(replace(s, mark=fitted(s.mark, _MARK, _WIDEST_MARK)) for s in project.segments),
+        joints=tuple(replace(j, mark=fitted(j.mark, _MARK, _WIDEST_MARK)) for j in project.joints),
+    )
 
 
 def _of_state(loads: Loads, state: int) -> Loads:

@@ -139,6 +139,15 @@ def is_bracket(steps: str) -> bool:
     return len(numbers) == 8 and "Z" not in steps and numbers[1] == numbers[7] > numbers[3] == numbers[5]
 
 
+def test_long_marks_are_cut_in_the_drawing_and_whole_in_what_it_says() -> None:
+    project = read_sample("tie_rod")
+    first = structs.replace(project.segments[2], mark="Middle of the rod, forged")
+    project = structs.replace(project, segments=(*project.segments[:2], first, *project.segments[3:]))
+    figure = member_figure(project, np.cumsum([0.0, *(s.length for s in project.segments)]))
+    assert [text for text in texts(figure) if text.startswith("Middle") and text.endswith("…")]
+    assert "Middle of the rod, forged" in figure.alt
+
+
 def test_a_stiffness_too_long_for_the_margin_stands_under_the_member() -> None:
     project = read_sample("tie_rod")
     first = structs.replace(project.joints[0], support=SpringSupport(stiffness=1.2e11))
