@@ -75,7 +75,7 @@ class CellEditor(QLineEdit):
         return self._list
 
     def _go(self, steps: int) -> None:
-        """To the next name; a closed list opens with all of them first."""
+        """To the next name; a closed list opens with all of them, at the one that stands in the cell."""
         shown = self.offer_list
         if shown is None:
             if steps < 0:
@@ -83,6 +83,7 @@ class CellEditor(QLineEdit):
             self._typed = self.text()
             shown = self._opened()
             shown.show_offers(self._offers)
+            shown.choose(next((i for i, o in enumerate(self._offers) if o.name == self._typed), -1))
         row = min(max(shown.currentIndex().row() + steps, -1), len(shown.offers) - 1)
         shown.choose(row)
         self._put(shown.offers[row].name if row >= 0 else self._typed)

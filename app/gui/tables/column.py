@@ -63,10 +63,15 @@ class Figures:
 
 @dataclass(frozen=True, slots=True)
 class Change:
-    """What a typed text makes of the project, with a line to say where it does more than it seems to."""
+    """What a typed text makes of the project, with a line to say where it does more than it seems to.
+
+    The note of an added record speaks of what its other cells start with; `stands` is True where it holds
+    also when these are typed at once, as in a paste.
+    """
 
     project: Project
     note: str = ""
+    stands: bool = False
 
 
 @dataclass(frozen=True, slots=True)

@@ -97,10 +97,11 @@ def _add(project: Project, text: str, _sight: Sight) -> Change:
 
 def _add_typical(project: Project, text: str, typical: Material) -> Change:
     """A name that is taken, as it was typed or as it is listed, is refused like any other."""
-    taken = {own.name for own in project.materials} & {text.strip(), typical.name}
-    if taken:
-        return Change(edits.add_record(project, ("materials",), replace(typical, name=taken.pop())))
-    return Change(*with_typical(project, typical))
+    taken = {own.name for own in project.materials}
+    for name in (text.strip(), typical.name):
+        if name in taken:
+            return Change(edits.add_record(project, ("materials",), replace(typical, name=name)))
+    return Change(*with_typical(project, typical), stands=True)
 
 
 def _delete(project: Project, indexes: tuple[int, ...], _sight: Sight) -> Project:

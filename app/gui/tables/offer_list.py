@@ -8,7 +8,16 @@ from __future__ import annotations
 
 from typing import Any
 
-from PySide6.QtCore import QAbstractListModel, QModelIndex, QObject, QPersistentModelIndex, QPoint, QRect, Qt
+from PySide6.QtCore import (
+    QAbstractListModel,
+    QModelIndex,
+    QObject,
+    QPersistentModelIndex,
+    QPoint,
+    QRect,
+    QSize,
+    Qt,
+)
 from PySide6.QtGui import QColor, QPainter
 from PySide6.QtWidgets import QListView, QStyle, QStyledItemDelegate, QStyleOptionViewItem, QWidget
 
@@ -17,6 +26,8 @@ from app.gui.theme import Theme
 from app.words import tr
 
 MOST_ROWS = 8  # seen at once; the rest is scrolled to
+LEAST_WIDTH = 120  # px, where its cell is as wide
+ROW_HEIGHT = 24  # px at least, the smallest that WCAG 2.5.8 calls easy to hit
 MARGIN = 6  # px left and right, as in a cell
 GAP = 18  # px between a name and its remark
 REMARK_ROLE = int(Qt.ItemDataRole.UserRole) + 1
@@ -60,6 +71,10 @@ class OfferDelegate(QStyledItemDelegate):
     def __init__(self, theme: Theme, parent: QObject) -> None:
         super().__init__(parent)
         self._theme = theme
+
+    def sizeHint(self, option: QStyleOptionViewItem, _index: Index) -> QSize:
+        """High enough to be clicked; the list is as wide as it is."""
+        return QSize(0, max(ROW_HEIGHT, option.fontMetrics.height() + 6))
 
     def paint(self, painter: QPainter, option: QStyleOptionViewItem, index: Index) -> None:
         """One row; the current one wears a bar at its left beside its colour."""
@@ -123,16 +138,13 @@ class OfferList(QListView):
         window, cell = self.parentWidget(), self._cell
         corner = cell.mapTo(window, QPoint(0, 0))
         above, below = corner.y(), window.height() - corner.y() - cell.height()
-        wanted = min(len(self.offers), MOST_ROWS) * self._row_height() + 2 * self.frameWidth()
+        wanted = min(len(self.offers), MOST_ROWS) * self.sizeHintForRow(0) + 2 * self.frameWidth()
         upwards = below < wanted and above > below
         height = min(wanted, above if upwards else below)
-        width = min(max(self._width_of_texts(), cell.width()), window.width())
+        width = min(max(self._width_of_texts(), min(cell.width(), LEAST_WIDTH)), window.width())
         left = max(min(corner.x(), window.width() - width), 0)
         top = corner.y() - height if upwards else corner.y() + cell.height()
         self.setGeometry(left, top, width, height)
-
-    def _row_height(self) -> int:
-        return max(self.sizeHintForRow(0), self.fontMetrics().height())
 
     def _width_of_texts(self) -> int:
         text = self.fontMetrics().horizontalAdvance
