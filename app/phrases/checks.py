@@ -150,21 +150,36 @@ def compared(
     value: float, limit: float, status: Status, quantity: Quantity, system: UnitSystemName
 ) -> tuple[str, str]:
     """Value and limit in display units, with as many digits as it takes not to contradict the status."""
-    shown_limit = rounded(to_display(limit, quantity, system), _LIMIT_DIGITS)
-    digits = _VALUE_DIGITS
-    while digits < _MOST_DIGITS and _contradicts(
-        abs(rounded(to_display(value, quantity, system), digits)), shown_limit, status
-    ):
-        digits += 1
+    shown = to_display(value, quantity, system)
+    bound = to_display(limit, quantity, system)
+    digits, limit_digits = _digits(abs(shown), bound, status)
     return (
         format_value(value, quantity, system, digits),
-        format_value(limit, quantity, system, _LIMIT_DIGITS, strip=True),
+        format_value(limit, quantity, system, limit_digits, strip=True),
     )
 
 
+def _digits(value: float, limit: float, status: Status) -> tuple[int, int]:
+    """The fewest digits of value and limit, both in display units, that agree with the status."""
+    for limit_digits in range(_limit_digits(limit), _MOST_DIGITS):
+        shown_limit = rounded(limit, limit_digits)
+        for digits in range(_VALUE_DIGITS, _MOST_DIGITS):
+            if not _contradicts(rounded(value, digits), shown_limit, status):
+                return digits, limit_digits
+    return _MOST_DIGITS, _MOST_DIGITS
+
+
 _VALUE_DIGITS: Final = 3
-_LIMIT_DIGITS: Final = 6
+_TYPED_DIGITS: Final = 6
+_CONVERTED_DIGITS: Final = 4
 _MOST_DIGITS: Final = 17
+_SAME: Final = 1e-9  # of a limit, far below what six digits show
+
+
+def _limit_digits(limit: float) -> int:
+    """All digits of a limit that was typed in these units; four of one that was converted into them."""
+    typed = abs(rounded(limit, _TYPED_DIGITS) - limit) <= _SAME * abs(limit)
+    return _TYPED_DIGITS if typed else _CONVERTED_DIGITS
 
 
 def _contradicts(value: float, limit: float, status: Status) -> bool:

@@ -337,3 +337,8 @@ def test_the_unsolvable_say_why() -> None:
         solve(member([Part(1.0, area(1e-3))], {}, [loads]))
     assert "nothing holds the member along its axis" in error_sentences(caught.value)[0]
     assert solve(member([Part(1.0, area(1e-3))], {0: SpringSupport(stiffness=1e6)}, [loads]))
+
+
+def test_a_limit_keeps_the_digits_typed_and_none_that_a_conversion_made() -> None:
+    assert compared(10e6, 140e6, "pass", "stress", "in-kip-ksi") == ("1.45", "20.31")
+    assert compared(0.01, 1.6875 * 0.0254, "pass", "displacement", "in-kip-ksi") == ("0.394", "1.6875")
