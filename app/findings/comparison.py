@@ -66,7 +66,7 @@ def _overall(old: Results, new: Results, system: UnitSystemName) -> Iterator[Cha
     yield Change(tr("largest utilisation"), _utilisation_change(old, new))
     missing = _not_made(old), _not_made(new)
     if missing[0] != missing[1]:
-        yield Change(tr("checks not made"), _arrow(*(reading(count, _DIGITS) for count in missing)))
+        yield Change(tr("checks not made"), _arrow(*(fixed(count, 0) for count in missing)))
     lengths = float(old.position[-1]), float(new.position[-1])
     if not _same(*lengths, max(lengths)):
         yield Change(tr("length"), change_text(*lengths, "length", system))
@@ -188,7 +188,7 @@ def _arrow(old: str, new: str) -> str:
 
 
 def _with_difference(text: str, difference: float, decimals: int) -> str:
-    """A difference that would round to nothing, or to next to nothing, is written with two digits."""
-    few = abs(difference) * 10**decimals < 1
+    """With the decimals of the values, and more where it takes them for two digits of the difference."""
+    few = 0 < abs(difference) * 10**decimals < 10
     number = reading(difference, 2) if few else fixed(difference, decimals)
     return f"{text} ({'+' if difference > 0 else ''}{number})"

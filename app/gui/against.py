@@ -13,7 +13,7 @@ from app.gui.picker import Picker
 from app.words import tr
 
 LONGEST = 40  # characters of a name
-WIDTH = 9  # digits that picker and field have room for
+WIDTH = 6  # digits that picker and field have room for; the picker's tip has a longer name whole
 
 
 class NameField(QLineEdit):
@@ -95,8 +95,9 @@ class AgainstBar(QWidget):
         some = self.picker.count() > 1
         self._label.setText(tr("Keep as") if self._asking else tr("Against"))
         self._label.setBuddy(self.field if self._asking else self.picker)
-        self.field.setVisible(self._asking)
-        self.picker.setVisible(some and not self._asking)
+        parts = {self.field: self._asking, self.picker: some and not self._asking}
+        for part in sorted(parts, key=parts.__getitem__):  # hide first: room for both would widen the window
+            part.setVisible(parts[part])
         self.setVisible(some or self._asking)
 
     def _on_named(self) -> None:
