@@ -30,7 +30,7 @@ _PLAIN: Final = (1e-3, 1e9)  # sizes of display values that are written without 
 
 @dataclass(frozen=True, slots=True)
 class Change:
-    """One figure then and now: "1.05 → 0.97 (−0.08)"."""
+    """One figure then and now: "1.05 → 0.97 (−0.08)"; without a name it goes on with the one above."""
 
     name: str
     text: str
@@ -62,7 +62,9 @@ def comparison(reference: Reference, results: Results, system: UnitSystemName) -
 def _overall(old: Results, new: Results, system: UnitSystemName) -> Iterator[Change]:
     verdicts = verdict_line(old), verdict_line(new)
     if verdicts[0] != verdicts[1]:
-        yield Change(tr("verdict before"), verdicts[0])
+        first, *reservations = verdicts[0].split("; ")
+        yield Change(tr("verdict before"), first)
+        yield from (Change("", reservation) for reservation in reservations)  # a line each: none is cut off
     yield Change(tr("largest utilisation"), _utilisation_change(old, new))
     missing = _not_made(old), _not_made(new)
     if missing[0] != missing[1]:

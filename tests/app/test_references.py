@@ -78,6 +78,14 @@ def test_the_verdict_before_is_said_where_it_was_another():
     assert "verdict before" not in texts(against(bar(1e-3), bar(2e-3)).overall)
 
 
+def test_what_the_verdict_before_held_back_is_not_lost():
+    found = against(bar(1e-3, force=-FORCE), bar(1e-3))
+    assert [(change.name, change.text) for change in found.overall][:2] == [
+        ("verdict before", "Passes"),
+        ("", "buckling not checked"),
+    ]
+
+
 def test_a_check_that_was_not_made_has_no_difference_and_is_counted():
     overall = texts(against(bar(1e-3, allowable=False), bar(1e-3)).overall)
     assert overall["largest utilisation"] == "none checked → 0.50"
