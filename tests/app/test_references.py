@@ -40,7 +40,9 @@ def against(old: Results, new: Results, system="mm-kN-MPa") -> Comparison:
 def test_the_first_free_number_is_proposed():
     kept = References().kept_as("Before 2", bar(1e-3))
     assert kept.proposed == "Before 1"
-    assert kept.kept_as("", bar(1e-3)).names == ("Before 2", "Before 1"), "no name takes the proposed one"
+    kept = kept.kept_as("", bar(1e-3))
+    assert kept.names == ("Before 2", "Before 1"), "no name takes the proposed one"
+    assert kept.proposed == "Before 3"
 
 
 def test_an_equal_name_loses_nothing():

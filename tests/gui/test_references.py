@@ -87,6 +87,20 @@ def test_a_reference_is_kept_and_held_against_the_next_edit(qtbot, window, table
     assert "dashed: Before 1" in [label.text for label in window.sheet.strips[0].labels]
 
 
+def test_the_places_that_changed_most_are_named_whole_with_both_values(qtbot, window, table):
+    before = window.showing.outcome.results.solution.joint_displacement
+    keep(window)
+    enter(table, 4, "section", "A 976")
+    solved(qtbot, window)
+    results = window.showing.outcome.results
+    changed = abs(results.solution.joint_displacement - before)[:3]
+    state, joint = divmod(int(changed.argmax()), changed.shape[1])
+    lines = window.findings.blocks[1].block.lines
+    assert lines[0].name == f"joint {results.project.joints[joint].mark}, {results.states[state].name}"
+    assert lines[1].value.startswith(f"{1e3 * before[state, joint]:.3f}".replace("-", "−"))
+    assert lines[0].name in window.findings.blocks[1].accessibleName()
+
+
 def test_it_survives_undo_and_is_held_against_what_undo_brings_back(qtbot, window, table):
     keep(window)
     enter(table, 4, "section", "A 976")

@@ -34,7 +34,7 @@ class LinesBlock(QWidget):
     def show_block(self, block: Block) -> None:
         """Show something else."""
         self._block = block
-        lines = [f"{line.name}: {line.value}" if line.name else line.value for line in block.lines]
+        lines = [": ".join(filter(None, (line.name, line.value))) for line in block.lines]
         self.setAccessibleName("; ".join([block.title, *lines]))
         self.setToolTip("\n".join([block.title, *lines]))  # whole, where the panel is narrow
         self.updateGeometry()

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
@@ -140,9 +141,16 @@ def detail_blocks(compared: Comparison) -> tuple[Block, ...]:
     )
     nothing = (Line(tr("none has changed"), "", quiet=True),)
     return tuple(
-        Block(title.format(name=compared.name), tuple(map(_change, changes)) or nothing)
+        Block(title.format(name=compared.name), tuple(_two_lines(changes)) or nothing)
         for title, changes in parts
     )
+
+
+def _two_lines(changes: tuple[Change, ...]) -> Iterator[Line]:
+    """A place and two values are too long for one line of a narrow panel."""
+    for change in changes:
+        yield Line(change.name, "", quiet=True)
+        yield Line("", change.text)
 
 
 def _change(change: Change, *, quiet: bool = False) -> Line:
