@@ -56,7 +56,7 @@ class AgainstBar(QWidget):
         self.field.dropped.connect(self._on_dropped)
         self._asking = False
         self._came_from: QWidget | None = None
-        self._arrange()
+        self.show_references((), None)
 
     @property
     def is_asking(self) -> bool:

@@ -152,10 +152,12 @@ def test_going_on_with_the_table_keeps_it_under_the_name_typed(qtbot, window, ta
     assert table.hasFocus()
 
 
-def test_what_is_kept_is_what_was_shown_when_it_was_asked_for(window):
+def test_what_is_kept_is_what_was_shown_when_it_was_asked_for(qtbot, window):
     before = window.showing.outcome.results
     chord(window, KEY.Key_K)
     window.on_layout_picked("vertical")
+    solved(qtbot, window)
+    assert window.showing.outcome.results is not before
     QTest.keyClick(window.against.field, KEY.Key_Return)
     assert window.comparing.references.against.results is before
 
