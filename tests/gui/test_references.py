@@ -25,7 +25,7 @@ from solver.solve import solve
 from tests.gui.hand import begin, chord, enter, go_to
 from tests.gui.sheets import SIZES, laid_out
 from tests.gui.test_strips import pulled
-from tests.gui.windows import solved
+from tests.gui.windows import end, solved
 
 KEY = Qt.Key
 
@@ -150,6 +150,11 @@ def test_going_on_with_the_table_keeps_it_under_the_name_typed(qtbot, window, ta
     assert names(window) == ("Old",)
     assert window.comparing.references.against.results is before
     assert table.hasFocus()
+
+
+def test_the_window_closes_while_a_name_is_asked_for(qtbot, window):
+    chord(window, KEY.Key_K)
+    end(qtbot, window)
 
 
 def test_what_is_kept_is_what_was_shown_when_it_was_asked_for(qtbot, window):
