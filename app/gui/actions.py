@@ -36,6 +36,8 @@ SEPARATOR: Final = Command("", "", "")
 MENUS: Final = (later("&File"), later("&Edit"), later("&Member"), later("&View"), later("&Help"))
 RECENT: Final = "recent"  # submenus filled when they open
 SAMPLES: Final = "samples"
+TYPICAL: Final = "typical"
+SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL)
 
 COMMANDS: Final[tuple[Command, ...]] = (
     Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
@@ -71,6 +73,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("split", "&Member", later("&Split segment in the middle"), "Ctrl+Shift+D"),
     Command("join", "&Member", later("&Join segments"), "Ctrl+J"),
     Command("reverse", "&Member", later("&Reverse the member")),
+    SEPARATOR,
+    Command(TYPICAL, "&Member", later("Add &typical material")),
     Command("next_pane", "&View", later("&Next pane"), "F6"),
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
     SEPARATOR,
@@ -102,7 +106,7 @@ def make_actions(parent: QObject, handlers: Mapping[str, Callable[[], None]]) ->
     """An action for each command that is not a submenu, connected to its handler."""
     made = {}
     for command in COMMANDS:
-        if command.key in ("", RECENT, SAMPLES):
+        if command.key in ("", *SUBMENUS):
             continue
         action = QAction(tr(command.text), parent)
         action.setShortcuts(shortcuts_of(command))

@@ -23,6 +23,7 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("Enter, Shift+Enter", later("Take in what is typed, one cell down or up")),
     ("Tab, Shift+Tab", later("The next cell or the one before, and out of the table at its ends")),
     ("F2", later("Edit the cell")),
+    ("↓ ↑", later("While a cell is edited: go through the names that it offers")),
     ("Esc", later("Leave the cell as it was")),
     ("Delete", later("Clear cells")),
 )

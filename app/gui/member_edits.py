@@ -14,8 +14,9 @@ from app import edits
 from app.gui.document import Document
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import TypingError, reason_of
+from app.typical_materials import with_typical
 from app.words import tr, trn
-from solver.model import Project
+from solver.model import Material, Project
 
 
 class MemberEdits(QObject):
@@ -99,6 +100,14 @@ class MemberEdits(QObject):
         """The member described from its other end."""
         self._tables.commit_open_editor()
         self._do(tr("Reverse member"), edits.reverse_member)
+
+    def add_typical(self, material: Material) -> None:
+        """A typical material, with its row in front for the allowable stresses that it lacks."""
+        self._tables.commit_open_editor()
+        project, note = with_typical(self._document.project, material)
+        self._document.commit(project, tr("Add material"))
+        self._tables.show_record("materials", len(project.materials) - 1)
+        self.told.emit(note)
 
     def delete_rows(self) -> None:
         """The records chosen in the table with the keyboard."""

@@ -10,7 +10,7 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
 from PySide6.QtWidgets import QMainWindow
 
-from app.gui.actions import RECENT, SAMPLES, fill_menus, make_actions
+from app.gui.actions import RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
 from app.gui.against import AgainstBar
 from app.gui.comparing import Comparing
 from app.gui.document import Document
@@ -32,6 +32,7 @@ from app.gui.tables.pane import TablesPane
 from app.gui.theme import theme_for
 from app.gui.title_block import TitleBlockDialog
 from app.gui.top_bar import TopBar
+from app.gui.typical_menu import TypicalMenu
 from app.gui.view import View
 from app.words import tr
 from solver.model import Orientation, Project, UnitSystemName
@@ -78,9 +79,9 @@ class Window(QMainWindow):
         self.actions_by_key = make_actions(self, self._handlers())
         self.recent_menu = RecentMenu(self.store, self.files.open_path, self)
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
-        fill_menus(
-            self.menuBar(), self.actions_by_key, {RECENT: self.recent_menu, SAMPLES: self.samples_menu}
-        )
+        self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
+        menus = {RECENT: self.recent_menu, SAMPLES: self.samples_menu, TYPICAL: self.typical_menu}
+        fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)
         self.panes = Panes(self.top_bar, self.sheet, self.findings, self.tables, self.status)
         self.setCentralWidget(self.panes)

@@ -9,9 +9,8 @@ from PySide6.QtWidgets import QMenu, QMenuBar
 from app.gui.actions import (
     COMMANDS,
     MENUS,
-    RECENT,
-    SAMPLES,
     SEPARATOR,
+    SUBMENUS,
     fill_menus,
     keys_text,
     make_actions,
@@ -48,7 +47,7 @@ def menu_bar(qtbot):
     called = []
     handlers = {c.key: (lambda key=c.key: called.append(key)) for c in REAL}
     actions = make_actions(bar, handlers)
-    fill_menus(bar, actions, {RECENT: QMenu(bar), SAMPLES: QMenu(bar)})
+    fill_menus(bar, actions, {key: QMenu(bar) for key in SUBMENUS})
     return bar, actions, called
 
 

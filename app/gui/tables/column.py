@@ -63,15 +63,34 @@ class Figures:
 
 @dataclass(frozen=True, slots=True)
 class Change:
-    """What a typed text makes of the project, with a line to say where it does more than it seems to."""
+    """What a typed text makes of the project, with a line to say where it does more than it seems to.
+
+    The note of an added record speaks of what its other cells start with; `stands` is True where it holds
+    also when these are typed at once, as in a paste.
+    """
 
     project: Project
     note: str = ""
+    stands: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Offer:
+    """A name that a cell offers while it is typed into, with a remark beside it."""
+
+    name: str
+    remark: str = ""
+
+    @property
+    def spoken(self) -> str:
+        """Both, as they are read aloud."""
+        return f"{self.name}, {self.remark}" if self.remark else self.name
 
 
 Show = Callable[[Any, Sight], str]
 Entry = Callable[[Any, Sight], str | None]
 Put = Callable[[Project, int, str, Sight], Change]
+Offers = Callable[[Project, Sight], tuple[Offer, ...]]
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,6 +110,7 @@ class Column:
     bar: Callable[[int, Figures], tuple[float, float] | None] | None = None  # utilisation, sign of the stress
     of_case: bool = False  # the cell belongs to the load case that is edited
     named_by_user: bool = False  # the title is the user's own word
+    offers: Offers | None = None  # names for a cell that refers to something
 
     @property
     def words(self) -> str:
@@ -106,6 +126,7 @@ class Adding:
     put: Callable[[Project, str, Sight], Change]
     name: str  # of the undo step
     column: str  # the key of the column whose text adds a record when rows are pasted past the end
+    offers: Offers | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -8,7 +8,7 @@ the table is told of changes.
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QModelIndex, QObject, QPersistentModelIndex, QRect, QRectF, Qt, Signal
-from PySide6.QtGui import QBrush, QColor, QFontMetrics, QKeyEvent, QKeySequence, QPainter, QPen
+from PySide6.QtGui import QBrush, QColor, QFontMetrics, QKeyEvent, QPainter, QPen
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QLineEdit,
@@ -17,6 +17,7 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.model import BAR_ROLE, ERROR_ROLE, HINT_ROLE, LIT_ROLE, STALE_ROLE, TableModel
 from app.gui.theme import Theme
 from app.words import tr
@@ -27,19 +28,6 @@ BAR_HEIGHT = 8
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 
 Index = QModelIndex | QPersistentModelIndex
-
-
-class CellEditor(QLineEdit):
-    """A cell's editor. Deleting a word in it is not the command that deletes segments."""
-
-    def event(self, event: QEvent) -> bool:
-        """Keep the keys that delete words for the text."""
-        if event.type() == QEvent.Type.ShortcutOverride and isinstance(event, QKeyEvent):
-            keys = QKeySequence.StandardKey
-            if event.matches(keys.DeleteStartOfWord) or event.matches(keys.DeleteEndOfWord):
-                event.accept()
-                return True
-        return super().event(event)
 
 
 class CellDelegate(QStyledItemDelegate):
@@ -119,16 +107,17 @@ class CellDelegate(QStyledItemDelegate):
 
     def createEditor(self, parent: QWidget, _option: QStyleOptionViewItem, index: Index) -> QWidget:
         """A line with the cell's full digits; each keystroke is previewed."""
-        editor = CellEditor(parent)
-        editor.setObjectName("cell")
-        editor.setTextMargins(MARGIN - 5, 0, 0, 0)
         model = index.model()
+        editor = CellEditor(parent, self.theme, model.offers(index) if isinstance(model, TableModel) else ())
+        editor.setTextMargins(MARGIN - 5, 0, 0, 0)
+        editor.picked.connect(lambda: self._take_in(editor))
         if isinstance(model, TableModel):
             title, unit = model.heading(index.column())
             name = f"{title} ({unit})" if unit else title
             editor.setAccessibleName(tr("{column}, row {row}").format(column=name, row=index.row() + 1))
             kept = QPersistentModelIndex(index)
-            editor.textEdited.connect(lambda text: model.preview(kept, text) if kept.isValid() else None)
+            for typed in (editor.textEdited, editor.offered):
+                typed.connect(lambda text: model.preview(kept, text) if kept.isValid() else None)
         return editor
 
     def setEditorData(self, editor: QWidget, index: Index) -> None:
@@ -146,8 +135,11 @@ class CellDelegate(QStyledItemDelegate):
         pressed = isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress
         if pressed and event.key() in ENTER and isinstance(editor, QWidget):
             back = bool(event.modifiers() & Qt.KeyboardModifier.ShiftModifier)
-            self.commitData.emit(editor)
-            self.closeEditor.emit(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+            self._take_in(editor)
             self.stepped.emit(-1 if back else 1)
             return True
         return super().eventFilter(editor, event)
+
+    def _take_in(self, editor: QWidget) -> None:
+        self.commitData.emit(editor)
+        self.closeEditor.emit(editor, QAbstractItemDelegate.EndEditHint.NoHint)

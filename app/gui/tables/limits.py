@@ -2,9 +2,12 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from app import edits
 from app.entry import parse_entry
-from app.gui.tables.column import Adding, Change, Column, Sight, Table
+from app.gui.tables import offers
+from app.gui.tables.column import Adding, Change, Column, Offers, Sight, Table
 from app.gui.tables.reasons import NotTaken
 from app.units import Quantity, entry_text, format_value
 from app.words import later, tr
@@ -15,13 +18,15 @@ FIRST_DISPLACEMENT = 1e-6  # m
 FIRST_REACTION = 1.0  # N
 
 
-def _mark(kind: str, key: str, file_key: str, title: str) -> Column:
+def _mark(kind: str, key: str, file_key: str, title: str, offered: Offers = offers.joints) -> Column:
     def put(project: Project, index: int, text: str, _sight: Sight) -> Change:
         return Change(edits.set_value(project, ("limits", kind, index, file_key), text.strip()))
 
-    return Column(
-        key, title, lambda row, _s: getattr(row, key), lambda row, _s: getattr(row, key), put, width=8
-    )
+    def show(row: Any, _sight: Sight) -> str:
+        mark: str = getattr(row, key)
+        return mark
+
+    return Column(key, title, show, show, put, width=8, offers=offered)
 
 
 def _limit(kind: str, quantity: Quantity) -> Column:
@@ -85,7 +90,11 @@ DISPLACEMENT = _table(
         _limit("displacement", "displacement"),
     ),
     Adding(
-        later("type a joint's mark to limit it"), _add_displacement, later("Add displacement limit"), "joint"
+        later("type a joint's mark to limit it"),
+        _add_displacement,
+        later("Add displacement limit"),
+        "joint",
+        offers.joints,
     ),
 )
 RELATIVE = _table(
@@ -101,6 +110,15 @@ RELATIVE = _table(
 REACTION = _table(
     "reaction",
     later("Reaction of a support"),
-    (_mark("reaction", "joint", "joint", later("Reaction at joint")), _limit("reaction", "force")),
-    Adding(later("type a joint's mark to limit it"), _add_reaction, later("Add reaction limit"), "joint"),
+    (
+        _mark("reaction", "joint", "joint", later("Reaction at joint"), offers.held_joints),
+        _limit("reaction", "force"),
+    ),
+    Adding(
+        later("type a joint's mark to limit it"),
+        _add_reaction,
+        later("Add reaction limit"),
+        "joint",
+        offers.held_joints,
+    ),
 )

@@ -8,7 +8,8 @@ from msgspec import UNSET, UnsetType
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.tables.column import Adding, Change, Column, Sight, Table
+from app.gui.tables import offers
+from app.gui.tables.column import Adding, Change, Column, Offers, Sight, Table
 from app.gui.tables.materials import name_of, put_name
 from app.gui.tables.reasons import NotTaken
 from app.units import Quantity, entry_text, format_value
@@ -107,16 +108,18 @@ def _number(kind: str, key: str, title: str, quantity: Quantity, follows: str = 
     )
 
 
-def _reference(kind: str, key: str, title: str) -> Column:
+def _reference(kind: str, key: str, title: str, offered: Offers) -> Column:
     """A column with the mark of what is loaded."""
 
     def put(project: Project, index: int, text: str, sight: Sight) -> Change:
         place = (*sight.case_place, kind, index, key)
         return Change(edits.set_value(project, place, text.strip()))
 
-    return Column(
-        key, title, lambda row, _s: getattr(row, key), lambda row, _s: getattr(row, key), put, width=8
-    )
+    def show(row: Any, _sight: Sight) -> str:
+        mark: str = getattr(row, key)
+        return mark
+
+    return Column(key, title, show, show, put, width=8, offers=offered)
 
 
 def _records(kind: str, key: str, title: str, columns: tuple[Column, ...], adding: Adding) -> Table:
@@ -159,7 +162,7 @@ SEGMENT_LOADS = _records(
     "segment",
     later("Loads on segments"),
     (
-        _reference("segment_loads", "segment", later("Segment")),
+        _reference("segment_loads", "segment", later("Segment"), offers.segments),
         _number("segment_loads", "load_start", later("Load at start"), "distributed"),
         _number("segment_loads", "load_end", later("Load at end"), "distributed", "load_start"),
         _number("segment_loads", "temperature_start", later("Heated at start"), "temperature"),
@@ -169,7 +172,11 @@ SEGMENT_LOADS = _records(
         _number("segment_loads", "lack_of_fit", later("Lack of fit"), "displacement"),
     ),
     Adding(
-        later("type a segment's mark to load it"), _add_segment_load, later("Add segment load"), "segment"
+        later("type a segment's mark to load it"),
+        _add_segment_load,
+        later("Add segment load"),
+        "segment",
+        offers.segments,
     ),
 )
 
@@ -178,9 +185,15 @@ JOINT_LOADS = _records(
     "joint",
     later("Loads at joints"),
     (
-        _reference("joint_loads", "joint", later("Joint")),
+        _reference("joint_loads", "joint", later("Joint"), offers.joints),
         _number("joint_loads", "force", later("Force along +x"), "force"),
         _number("joint_loads", "movement", later("Support movement"), "displacement"),
     ),
-    Adding(later("type a joint's mark to load it"), _add_joint_load, later("Add joint load"), "joint"),
+    Adding(
+        later("type a joint's mark to load it"),
+        _add_joint_load,
+        later("Add joint load"),
+        "joint",
+        offers.joints,
+    ),
 )

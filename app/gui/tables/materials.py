@@ -10,8 +10,10 @@ from msgspec.structs import replace
 
 from app import edits
 from app.entry import parse_entry
+from app.gui.tables import offers
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.reasons import NotTaken
+from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value
 from app.words import later, tr
 from solver.model import Material, Project
@@ -81,13 +83,25 @@ def name_of(row: Any, _sight: Sight) -> str:
 
 
 def _add(project: Project, text: str, _sight: Sight) -> Change:
-    """A material as of structural steel by name only: its modulus is the last one's, to be typed over."""
+    """A typical material by its name, else one whose modulus is the last one's, to be typed over."""
+    typical = typical_named(text)
+    if typical is not None:
+        return _add_typical(project, text, typical)
     modulus = project.materials[-1].modulus if project.materials else 210e9
     made = Material(text.strip(), modulus)
     note = tr(
         "{name} starts with the modulus of the material above it and expansion and density 0: type its own"
     )
     return Change(edits.add_record(project, ("materials",), made), note.format(name=made.name))
+
+
+def _add_typical(project: Project, text: str, typical: Material) -> Change:
+    """A name that is taken, as it was typed or as it is listed, is refused like any other."""
+    taken = {own.name for own in project.materials}
+    for name in (text.strip(), typical.name):
+        if name in taken:
+            return Change(edits.add_record(project, ("materials",), replace(typical, name=name)))
+    return Change(*with_typical(project, typical), stands=True)
 
 
 def _delete(project: Project, indexes: tuple[int, ...], _sight: Sight) -> Project:
@@ -116,7 +130,9 @@ MATERIALS = Table(
     columns=lambda _project, _sight: COLUMNS,
     row_name=lambda project, index, _sight: project.materials[index].name,
     records=lambda _sight: ("materials",),
-    adding=Adding(later("type a name to add a material"), _add, later("Add material"), "name"),
+    adding=Adding(
+        later("type a name to add a material"), _add, later("Add material"), "name", offers.new_materials
+    ),
     delete=_delete,
     delete_name=later("Delete materials"),
 )

@@ -12,7 +12,7 @@ from typing import Any, ClassVar
 from PySide6.QtCore import QObject, Qt
 
 from app.gui.document import Document, Draft, Preview
-from app.gui.tables.column import Change, Figures, Sight, Table
+from app.gui.tables.column import Change, Figures, Offer, Sight, Table
 from app.gui.tables.paste import Block, Texts
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import Index, RowsModel
@@ -171,6 +171,14 @@ class TableModel(RowsModel):
         if column.put is None:
             raise NotTaken(tr("this cell is not for typing"))
         return column.put(project, self.record_of(index.row()), text, self._sight)
+
+    def offers(self, index: Index) -> tuple[Offer, ...]:
+        """The names that a cell offers while it is typed into."""
+        adding = self.is_adding(index.row())
+        source = self.table.adding if adding else self._columns[index.column()]
+        if source is None or source.offers is None:
+            return ()
+        return source.offers(self._document.project, self._sight)
 
     def why_not(self, index: Index) -> str:
         """Why a cell is not for typing, in words; empty where it is, or where nothing could ever be typed."""

@@ -115,6 +115,15 @@ class TablesPane(QWidget):
         last = page.focusWidget()
         return next((view for view in shown if view is last or view.isAncestorOf(last)), shown[0])
 
+    def show_record(self, key: str, record: int) -> None:
+        """Bring a record's row to the front, with the keyboard in it."""
+        view = self.views[key]
+        pages = range(self.tabs.count())
+        page = next(i for i in pages if self.tabs.widget(i) in (view, view.parentWidget()))
+        self.tabs.setCurrentIndex(page)
+        view.choose_record(record)
+        view.setFocus()
+
     def on_document_changed(self, snapshot: Snapshot) -> None:
         """The picker lists the cases of now; the edited case is kept by its name."""
         names = [case.name for case in snapshot.project.load_cases]

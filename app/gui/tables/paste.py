@@ -1,7 +1,7 @@
 """A block of texts typed into a table at once: the cells on top of each other, for one undo step.
 
 Nothing that was pasted is lost unsaid: a cell that is no valid entry becomes a draft, and so does the first
-row that cannot be added; the note counts such rows.
+row that cannot be added; the note counts such rows, and passes on what single cells have to say.
 """
 
 from __future__ import annotations
@@ -11,11 +11,10 @@ from types import MappingProxyType
 
 from app.gui.document import Draft, Snapshot, moved
 from app.gui.places import Place
-from app.gui.tables.column import Adding
+from app.gui.tables.column import Adding, Change
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import RowsModel
 from app.words import tr, trn
-from solver.model import Project
 
 Texts = Sequence[str | None]  # None: nothing for that cell
 
@@ -28,6 +27,7 @@ class Block:
         self._project = snapshot.project
         self._drafts = dict(snapshot.drafts)
         self._refused: list[Draft] = []  # rows that could not be added
+        self._notes: dict[str, None] = {}  # of the cells and rows, each once, in order
 
     def typed(self, top: int, left: int, block: Sequence[Texts]) -> Snapshot:
         """The document with the texts typed from the cell `top`, `left` on."""
@@ -39,11 +39,17 @@ class Block:
 
     @property
     def note(self) -> str:
-        """A line about rows that were not taken in; empty where all were."""
+        """A line about rows that were not taken in, else about edits that did more than they seem to."""
         if not self._refused:
-            return ""
+            return self._notes_in_a_line()
         rows = trn("{count} row was not added", "{count} rows were not added", len(self._refused))
         return f"{rows}: {self._refused[0].reason}"
+
+    def _notes_in_a_line(self) -> str:
+        first, more = next(iter(self._notes), ""), len(self._notes) - 1
+        if more < 1:
+            return first
+        return first + trn(" (and {count} thing more)", " (and {count} things more)", more)
 
     def _type_row(self, row: int, texts: Mapping[int, str | None]) -> None:
         """One row; past the end, a record is added by the column that can, and the others find its row."""
@@ -69,12 +75,14 @@ class Block:
             reason = reason_of(error, self._model.sight.system, place)
             self._drafts[place] = Draft(text, reason, name)
         else:
-            self._follow(change.project)
+            self._follow(change)
             self._drafts.pop(self._place(row, column), None)
 
-    def _follow(self, project: Project) -> None:
-        self._drafts = moved(self._drafts, self._project, project)
-        self._project = project
+    def _follow(self, change: Change) -> None:
+        self._drafts = moved(self._drafts, self._project, change.project)
+        self._project = change.project
+        if change.note:
+            self._notes[change.note] = None
 
     def _place(self, row: int, column: int) -> Place:
         return self._model.cell_place(self._model.record_of(row), column)
@@ -93,15 +101,17 @@ class Block:
         keys = [column.key for column in self._model.columns]
         text = texts.get(keys.index(adding.column)) or ""
         try:
-            self._follow(self._grown(adding, text))
+            self._follow(self._grown(adding, text, whole=sum(map(bool, texts.values())) > 1))
         except TypingError as error:
             reason = reason_of(error, self._model.sight.system, self._adding_place())
             self._refused.append(Draft(text, reason, tr(adding.name)))
             return False
         return True
 
-    def _grown(self, adding: Adding, text: str) -> Project:
+    def _grown(self, adding: Adding, text: str, *, whole: bool) -> Change:
+        """The record added; of a whole row, what is said of its other cells may be wrong at once."""
         if not text.strip():
             column = next(c for c in self._model.columns if c.key == adding.column)
             raise NotTaken(tr("a row is added by its “{column}”").format(column=column.words))
-        return adding.put(self._project, text, self._model.sight).project
+        change = adding.put(self._project, text, self._model.sight)
+        return Change(change.project) if whole and not change.stands else change

@@ -21,6 +21,7 @@ from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
 from app.section_entry import parse_section
 from app.support_entry import parse_support, support_entry, support_text
+from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value, utilisation_text
 from app.words import tr
 from solver.checks import PASS_MARGIN
@@ -125,6 +126,16 @@ def put_area(project: Project, index: int, text: str, sight: Sight) -> Change:
     else:
         note = tr("{mark} is now known by its area alone").format(mark=project.segments[index].mark)
     return Change(edits.set_value(project, ("segments", index, "section"), section), note)
+
+
+def put_material(project: Project, index: int, text: str, _sight: Sight) -> Change:
+    """A material of the project, or a typical one, which is then added to it."""
+    name, note = text.strip(), ""
+    typical = None if any(own.name == name for own in project.materials) else typical_named(name)
+    if typical is not None:
+        project, note = with_typical(project, typical)
+        name = typical.name
+    return Change(edits.set_value(project, ("segments", index, "material"), name), note)
 
 
 def put_modulus(project: Project, index: int, text: str, sight: Sight) -> Change:

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from app import edits
 from app.entry import parse_entry
+from app.gui.tables import offers
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.numbers import pair_entry, pair_text
 from app.gui.tables.segment_cells import (
@@ -23,6 +24,7 @@ from app.gui.tables.segment_cells import (
     put_bedding,
     put_heat,
     put_mark,
+    put_material,
     put_modulus,
     put_section,
     put_support,
@@ -91,8 +93,9 @@ COLUMNS = (
         later("Material"),
         in_segments(lambda row, _s: row.segment.material, ""),
         in_segments(lambda row, _s: row.segment.material, None),
-        set_in_segment("material", lambda text, _s: text.strip()),
+        put_material,
         width=11,
+        offers=offers.materials,
     ),
     Column(
         "modulus",

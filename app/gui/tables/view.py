@@ -18,8 +18,9 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.clipboard import block_of, block_text, tiled
-from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate, CellEditor
+from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate
 from app.gui.tables.model import TableModel
 from app.gui.theme import Theme
 from app.words import tr

@@ -1,0 +1,58 @@
+"""The names that a cell offers while it is typed into: what a reference can name, and typical materials.
+
+Those of the project come first. An offered name is only a text: it is taken in as if it had been typed.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from msgspec import UNSET
+
+from app.gui.tables.column import Offer, Sight
+from app.typical_materials import not_in
+from app.units import format_value
+from app.words import tr
+from solver.model import Material, Project
+
+
+def materials(project: Project, sight: Sight) -> tuple[Offer, ...]:
+    """The project's materials, then typical ones that it has not."""
+    own = (Offer(material.name, _modulus(material, sight)) for material in project.materials)
+    return (*own, *new_materials(project, sight))
+
+
+def new_materials(project: Project, sight: Sight) -> tuple[Offer, ...]:
+    """Typical materials that the project has not yet, marked as such."""
+    marked = tr("{modulus}, typical, verify")
+    return tuple(Offer(one.name, marked.format(modulus=_modulus(one, sight))) for one in not_in(project))
+
+
+def _modulus(material: Material, sight: Sight) -> str:
+    return format_value(material.modulus, "modulus", sight.system, with_unit=True, strip=True)
+
+
+def segments(project: Project, _sight: Sight) -> tuple[Offer, ...]:
+    """The marks of the segments."""
+    return _named(segment.mark for segment in project.segments)
+
+
+def joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
+    """The marks of the joints."""
+    return _named(joint.mark for joint in project.joints)
+
+
+def held_joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
+    """The marks of the joints that have a support."""
+    return _named(joint.mark for joint in project.joints if joint.support is not UNSET)
+
+
+def _named(names: Iterable[str]) -> tuple[Offer, ...]:
+    return tuple(Offer(name) for name in names)
+
+
+def matching(offers: Iterable[Offer], text: str) -> tuple[Offer, ...]:
+    """Those with a word that begins with the text; none where that is the text itself and nothing more."""
+    wanted = text.strip().casefold()
+    found = tuple(offer for offer in offers if f" {wanted}" in f" {offer.name.casefold()}")
+    return () if [offer.name for offer in found] == [text.strip()] else found
