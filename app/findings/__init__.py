@@ -1,9 +1,11 @@
 """What is found, as window, terminal and sheet all show it: frozen values made from `Results`, with words.
 
 `records` says what there is to show, `stress` and `limits` make the checked part, `books` reactions,
-displacements and energy. Nothing here is computed anew: the numbers were made and compared by the solver.
+displacements and energy; `comparison` holds results against a reference. Nothing here is computed anew: the
+numbers were made and compared by the solver.
 """
 
+from app.findings.comparison import Change, Comparison, comparison
 from app.findings.make import findings
 from app.findings.records import (
     Band,
@@ -18,6 +20,8 @@ from app.findings.records import (
 
 __all__ = [
     "Band",
+    "Change",
+    "Comparison",
     "Findings",
     "JointDisplacement",
     "JointReaction",
@@ -25,5 +29,6 @@ __all__ = [
     "NotMade",
     "SegmentFinding",
     "StateBooks",
+    "comparison",
     "findings",
 ]

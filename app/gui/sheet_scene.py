@@ -17,11 +17,12 @@ from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_items import CursorLine, JointLines, Message
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
-from app.gui.strips.content import envelope_contents, state_contents
+from app.gui.strips.content import Earlier, earlier_curves, envelope_contents, state_contents
 from app.gui.strips.readout import BETWEEN, envelope_readout, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
+from app.references import Reference
 from app.words import tr
 from solver.model import Project
 from solver.results import Results
@@ -35,6 +36,8 @@ class SheetScene(QGraphicsScene):
         self._theme, self._fonts = theme, fonts
         self._project: Project | None = None
         self._results: Results | None = None
+        self._reference: Reference | None = None
+        self._earlier: Earlier | None = None  # the reference's curves, made once for each state
         self._current = False
         self._waiting = False
         self._upright = False
@@ -118,17 +121,38 @@ class SheetScene(QGraphicsScene):
     def show_state(self, shown: Shown) -> None:
         """Show the curves and loads of another state."""
         self._shown = shown
+        self._earlier = self._earlier_curves()
         self._show_curves()
         if self._project is not None:
             self.drawing.show_member(Member.of(self._project, shown))
         self._place_all()
+
+    def set_reference(self, reference: Reference | None) -> None:
+        """Show a reference's curves as well, or none."""
+        if reference is not self._reference:
+            self._reference = reference
+            self._earlier = self._earlier_curves()
+            self._show_curves()
+            self._place_all()
+
+    def _earlier_curves(self) -> Earlier | None:
+        """Those of the shown state, by its name; of no other one where the reference does not have it."""
+        if self._reference is None:
+            return None
+        name, results = self._reference.name, self._reference.results
+        state = self._state(results)
+        if state is None and self._shown.kind != "envelope":
+            return Earlier(name, results.position, {})
+        return earlier_curves(name, results, state)
 
     def _show_curves(self) -> None:
         contents = None
         if self._results is not None:
             state = self._state(self._results)
             contents = (
-                envelope_contents(self._results) if state is None else state_contents(self._results, state)
+                envelope_contents(self._results, self._earlier)
+                if state is None
+                else state_contents(self._results, state, self._earlier)
             )
         for index, strip in enumerate(self.strips):
             strip.show_content(None if contents is None else contents[index])

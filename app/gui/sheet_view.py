@@ -18,6 +18,7 @@ from app.gui.sheet_scene import SheetScene
 from app.gui.strips.strip import Strip
 from app.gui.theme import theme_for
 from app.gui.view import Cursor, Selection, View
+from app.references import Reference
 from app.words import tr
 from solver.model import Orientation, Project
 from solver.results import Results
@@ -116,6 +117,10 @@ class SheetView(QGraphicsView):
     ) -> None:
         """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
         self._sheet.show_results(project, results, current=current, waiting=waiting)
+
+    def set_reference(self, reference: Reference | None) -> None:
+        """Show a reference's curves dashed beside those of the results, or none."""
+        self._sheet.set_reference(reference)
 
     def set_orientation(self, orientation: Orientation) -> None:
         """Across for "horizontal", upright for "vertical"."""

@@ -7,7 +7,7 @@ project with no unfinished entry counts as current.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from typing import Protocol
+from typing import TYPE_CHECKING, Protocol
 
 from PySide6.QtCore import QObject, QTimer
 
@@ -26,9 +26,13 @@ from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.view import Shown, View
 from app.gui.worker import Delivery, LatestSolver
+from app.references import Reference
 from app.words import tr, trn
 from solver.model import Project
 from solver.results import Results
+
+if TYPE_CHECKING:
+    from app.findings import Comparison
 
 GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
 
@@ -41,11 +45,16 @@ class Sheet(Protocol):
     ) -> None:
         """Show these."""
 
+    def set_reference(self, reference: Reference | None) -> None:
+        """Show its curves as well."""
+
 
 class Panel(Protocol):
     """The findings."""
 
-    def show_findings(self, findings: object, problems: tuple[str, ...], current: bool) -> None:
+    def show_findings(
+        self, findings: object, problems: tuple[str, ...], current: bool, compared: object = None
+    ) -> None:
         """Show these."""
 
 
@@ -69,6 +78,7 @@ class Showing(QObject):
         self._tables = tables
         self._status = status
         self._outcome: Outcome | None = None
+        self._reference: Reference | None = None
         self._fault = ""
         self._asked: Project | None = None
         self._newest = False
@@ -181,9 +191,23 @@ class Showing(QObject):
         problems = (self._fault,) if self._fault else outcome.problems if outcome else ()
         waiting = outcome is None and not self._fault  # for the very first outcome
         self._sheet.show_results(self._document.shown_project, results, self.current, waiting)
-        self._panel.show_findings(findings, problems, self.current)
+        self._panel.show_findings(findings, problems, self.current, self._compared(results))
         self._tables.set_figures(self._figures())
         self._tell()
+
+    def set_reference(self, reference: Reference | None) -> None:
+        """Hold what is shown against a reference, or against none."""
+        if reference is not self._reference:
+            self._reference = reference
+            self._sheet.set_reference(reference)
+            self._show()
+
+    def _compared(self, results: Results | None) -> Comparison | None:
+        if self._reference is None or results is None:
+            return None
+        from app.findings import comparison
+
+        return comparison(self._reference, results, results.project.display.unit_system)
 
     def _tell(self) -> None:
         self._status.solver.setText(self._solver_line())

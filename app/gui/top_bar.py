@@ -1,15 +1,16 @@
-"""The top bar: plain words for the commands used most, and the three pickers Show, Units, Lay."""
+"""The top bar: plain words for the commands used most, and the pickers Against, Show, Units, Lay."""
 
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 
-from PySide6.QtCore import QSignalBlocker, Qt, Signal
+from PySide6.QtCore import Qt, Signal
 from PySide6.QtGui import QAction
-from PySide6.QtWidgets import QComboBox, QFrame, QHBoxLayout, QLabel, QSizePolicy, QToolButton, QWidget
+from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QSizePolicy, QToolButton, QWidget
 
 from app.gui.actions import COMMANDS, SEPARATOR
-from app.gui.choice import Choice
+from app.gui.against import AgainstBar
+from app.gui.picker import Picker
 from app.gui.view import Shown
 from app.units import SYSTEM_NAMES
 from app.words import later, tr
@@ -30,30 +31,6 @@ def shown_text(shown: Shown) -> str:
     return shown.name if shown.kind == "combination" else tr("Unloaded")
 
 
-class Picker(Choice):
-    """A choice among values; tells only what a person picks."""
-
-    picked = Signal(object)
-
-    def __init__(self, name: str, digits: int, parent: QWidget | None = None) -> None:
-        super().__init__(parent)
-        self.setAccessibleName(name)
-        self.setSizeAdjustPolicy(QComboBox.SizeAdjustPolicy.AdjustToMinimumContentsLengthWithIcon)
-        self.setMinimumContentsLength(digits)
-        self._values: list[object] = []
-        self.activated.connect(lambda index: self.picked.emit(self._values[index]))
-
-    def offer(self, choices: Sequence[tuple[object, str]], chosen: object) -> None:
-        """List the choices, as (value, words), with one of them chosen."""
-        values = [value for value, _words in choices]
-        with QSignalBlocker(self):
-            if [self.itemText(i) for i in range(self.count())] != [words for _value, words in choices]:
-                self.clear()
-                self.addItems([words for _value, words in choices])
-            self._values = values
-            self.setCurrentIndex(values.index(chosen))
-
-
 class TopBar(QWidget):
     """Buttons and pickers."""
 
@@ -61,7 +38,9 @@ class TopBar(QWidget):
     units_picked = Signal(object)  # UnitSystemName
     layout_picked = Signal(object)  # Orientation
 
-    def __init__(self, actions: Mapping[str, QAction], parent: QWidget | None = None) -> None:
+    def __init__(
+        self, actions: Mapping[str, QAction], against: AgainstBar, parent: QWidget | None = None
+    ) -> None:
         super().__init__(parent)
         self.setObjectName("top_bar")
         self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
@@ -70,6 +49,7 @@ class TopBar(QWidget):
         self._row.setSpacing(4)
         self._add_buttons(actions)
         self._row.addStretch(1)
+        self._row.addWidget(against)
         self.show_picker = self._add_picker(tr("Show"), 16)
         self.units_picker = self._add_picker(tr("Units"), 12)
         self.layout_picker = self._add_picker(tr("Lay"), 8)

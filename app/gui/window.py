@@ -11,6 +11,8 @@ from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
 from PySide6.QtWidgets import QMainWindow
 
 from app.gui.actions import RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
+from app.gui.against import AgainstBar
+from app.gui.comparing import Comparing
 from app.gui.document import Document
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
@@ -67,6 +69,8 @@ class Window(QMainWindow):
         commit = self.tables.commit_open_editor
         self.files = Files(self, self.document, self.store, commit)
         self.printing = Printing(self, self.document, self.store, commit)
+        self.against = AgainstBar()
+        self.comparing = Comparing(self.document, self.showing, self.against, commit, self)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)
@@ -78,7 +82,7 @@ class Window(QMainWindow):
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
         menus = {RECENT: self.recent_menu, SAMPLES: self.samples_menu, TYPICAL: self.typical_menu}
         fill_menus(self.menuBar(), self.actions_by_key, menus)
-        self.top_bar = TopBar(self.actions_by_key)
+        self.top_bar = TopBar(self.actions_by_key, self.against)
         self.panes = Panes(self.top_bar, self.sheet, self.findings, self.tables, self.status)
         self.setCentralWidget(self.panes)
 
@@ -106,6 +110,8 @@ class Window(QMainWindow):
             "reverse": self.edits.reverse,
             "next_pane": lambda: self.panes.go_to(1),
             "previous_pane": lambda: self.panes.go_to(-1),
+            "keep_reference": self.comparing.keep,
+            "forget_reference": self.comparing.forget,
             "keys": self.help.show_keys,
             "log": self.help.show_log,
             "about": self.help.show_about,
@@ -120,7 +126,7 @@ class Window(QMainWindow):
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
-        for room in (self.files, self.printing, self.edits, self.recovery):
+        for room in (self.files, self.printing, self.edits, self.recovery, self.comparing):
             room.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
 

@@ -13,6 +13,7 @@ from app.gui.theme import Theme, colour
 PAD = 7.0
 ABOVE = 10.0
 LINE = 1.35  # of the text's height
+MOST = 0.75  # of a line that its value takes where it has a name
 
 
 class LinesBlock(QWidget):
@@ -33,8 +34,9 @@ class LinesBlock(QWidget):
     def show_block(self, block: Block) -> None:
         """Show something else."""
         self._block = block
-        lines = [f"{line.name}: {line.value}" for line in block.lines]
+        lines = [": ".join(filter(None, (line.name, line.value))) for line in block.lines]
         self.setAccessibleName("; ".join([block.title, *lines]))
+        self.setToolTip("\n".join([block.title, *lines]))  # whole, where the panel is narrow
         self.updateGeometry()
         self.update()
 
@@ -70,12 +72,15 @@ class LinesBlock(QWidget):
         row = QRectF(PAD, ABOVE, self.width() - 2 * PAD, height)
         painter.setFont(self._fonts.font("strong"))
         painter.setPen(colour(self._theme.ink))
-        painter.drawText(row, Qt.AlignmentFlag.AlignVCenter, self._block.title)
+        painter.drawText(
+            row, Qt.AlignmentFlag.AlignVCenter, self._fonts.elided(self._block.title, "strong", row.width())
+        )
         painter.setFont(self._fonts.font("plain"))
         for line in self._block.lines:
             row.translate(0.0, height)
             painter.setPen(colour(self._theme.quiet if line.quiet else self._theme.ink))
-            painter.drawText(row, Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignRight, line.value)
-            room = row.width() - self._fonts.measure(line.value, "plain").width() - 8.0
+            value = self._fonts.elided(line.value, "plain", (MOST if line.name else 1.0) * row.width())
+            painter.drawText(row, Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignRight, value)
+            room = row.width() - self._fonts.measure(value, "plain").width() - 8.0
             name = self._fonts.elided(line.name, "plain", room)
             painter.drawText(row, Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignLeft, name)

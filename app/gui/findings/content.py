@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
-from app.findings import Band, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
+from app.findings import Band, Change, Comparison, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
 from app.gui.view import Shown
 from app.units import unbroken
 from app.words import tr
@@ -124,6 +125,36 @@ def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:
         for m in findings.displacements
     )
     return (*reactions, Block(tr("Largest displacements"), moved), _rest(findings, chosen or findings.books))
+
+
+def overall_block(compared: Comparison) -> Block:
+    """What has changed as a whole against a reference, and what could not be compared."""
+    lines = (*map(_change, compared.overall), *(_change(note, quiet=True) for note in compared.notes))
+    return Block(tr("Against {name}").format(name=compared.name), lines)
+
+
+def detail_blocks(compared: Comparison) -> tuple[Block, ...]:
+    """The displacements and reactions that changed most against a reference."""
+    parts = (
+        (tr("Displacements against {name}"), compared.displacements),
+        (tr("Reactions against {name}"), compared.reactions),
+    )
+    nothing = (Line(tr("none has changed"), "", quiet=True),)
+    return tuple(
+        Block(title.format(name=compared.name), tuple(_two_lines(changes)) or nothing)
+        for title, changes in parts
+    )
+
+
+def _two_lines(changes: tuple[Change, ...]) -> Iterator[Line]:
+    """A place and two values are too long for one line of a narrow panel."""
+    for change in changes:
+        yield Line(change.name, "", quiet=True)
+        yield Line("", change.text)
+
+
+def _change(change: Change, *, quiet: bool = False) -> Line:
+    return Line(change.name, change.text, quiet=quiet)
 
 
 def _reactions(book: StateBooks) -> Block:

@@ -10,9 +10,9 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QPalette
 from PySide6.QtWidgets import QFrame, QLabel, QScrollArea, QVBoxLayout, QWidget
 
-from app.findings import Findings
+from app.findings import Comparison, Findings
 from app.gui.findings.block import LinesBlock
-from app.gui.findings.content import Row, blocks, problem_rows, rows
+from app.gui.findings.content import Row, blocks, detail_blocks, overall_block, problem_rows, rows
 from app.gui.findings.row import FindingRow
 from app.gui.fonts import Fonts
 from app.gui.theme import colour, greyed, theme_for
@@ -29,6 +29,7 @@ class FindingsPanel(QScrollArea):
         self._theme = theme_for(self.palette())
         self._fonts = Fonts(self.font())  # of all rows, so that what is measured for one is kept for all
         self._findings: Findings | None = None
+        self._compared: Comparison | None = None
         self._current = True
         self._has_problems = False
         self._rows: list[FindingRow] = []
@@ -57,7 +58,9 @@ class FindingsPanel(QScrollArea):
             label.setMargin(5)
             label.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
         self._problems_box, self._rows_box, self._blocks_box = QVBoxLayout(), QVBoxLayout(), QVBoxLayout()
-        for part in (self._headline, self._detail, self._stale):
+        self._against = LinesBlock(self._theme, self._fonts)
+        self._against.hide()
+        for part in (self._headline, self._detail, self._stale, self._against):
             column.addWidget(part)
         for box in (self._problems_box, self._rows_box, self._blocks_box):
             box.setSpacing(2)
@@ -85,12 +88,22 @@ class FindingsPanel(QScrollArea):
 
     @property
     def blocks(self) -> tuple[LinesBlock, ...]:
-        """The blocks of the books that are shown."""
-        return tuple(block for block in self._blocks if not block.isHidden())
+        """The blocks that are shown: what has changed against a reference, then the books."""
+        return tuple(block for block in (self._against, *self._blocks) if not block.isHidden())
 
-    def show_findings(self, findings: Findings | None, problems: tuple[str, ...], current: bool) -> None:
-        """Show findings (`current`, or of an earlier edit), and the problems that keep from solving."""
+    def show_findings(
+        self,
+        findings: Findings | None,
+        problems: tuple[str, ...],
+        current: bool,
+        compared: Comparison | None = None,
+    ) -> None:
+        """Show findings (`current`, or of an earlier edit), and the problems that keep from solving.
+
+        `compared` is what has changed against a reference.
+        """
         self._findings = findings
+        self._compared = compared if findings is not None else None
         self._current = current
         self._has_problems = bool(problems)
         shown = problem_rows(problems) + (rows(findings) if findings is not None else ())
@@ -119,6 +132,10 @@ class FindingsPanel(QScrollArea):
 
     def _show_blocks(self) -> None:
         shown = blocks(self._findings, self._view.shown) if self._findings is not None else ()
+        if self._compared is not None:
+            self._against.show_block(overall_block(self._compared))
+            shown = (*detail_blocks(self._compared), *shown)
+        self._against.setVisible(self._compared is not None)
         while len(self._blocks) < len(shown):
             block = LinesBlock(self._theme, self._fonts)
             self._blocks.append(block)
@@ -142,7 +159,7 @@ class FindingsPanel(QScrollArea):
         self._theme = theme_for(self.palette())
         stale = self._findings is not None and not self._current
         dressed = greyed(self._theme) if stale else self._theme
-        for widget in (*self._rows, *self._blocks):
+        for widget in (*self._rows, self._against, *self._blocks):
             widget.set_theme(dressed)
         for widget in self._rows:
             if widget.row is not None and widget.row.tone == "problem":
@@ -195,7 +212,7 @@ class FindingsPanel(QScrollArea):
             self._dress()
         elif event.type() == QEvent.Type.FontChange:
             self._fonts = Fonts(self.font())
-            for widget in (*self._rows, *self._blocks):
+            for widget in (*self._rows, self._against, *self._blocks):
                 widget.set_fonts(self._fonts)
             self._dress()
 

@@ -18,7 +18,7 @@ from app.units import format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray, IntArray
 from solver.checks import PASS_MARGIN
-from solver.fields import curves, envelope
+from solver.fields import Curves, Envelope, curves, envelope
 from solver.model import UnitSystemName
 from solver.results import Results
 
@@ -57,8 +57,20 @@ class Extreme:
 
 
 @dataclass(frozen=True, slots=True)
+class Earlier:
+    """The same curves of a reference: its name, places (k,) and values; empty where it has no such state."""
+
+    name: str
+    x: FloatArray
+    values: Values
+
+
+@dataclass(frozen=True, slots=True)
 class StripContent:
-    """One strip: traces over a range `low`…`high`, limits, extremes, and stretches that were not checked."""
+    """One strip: traces over a range `low`…`high`, limits, extremes, and stretches that were not checked.
+
+    `earlier` are the traces of a reference, `legend` says which in the strip that is to say it.
+    """
 
     kind: Kind
     title: str
@@ -71,6 +83,8 @@ class StripContent:
     extremes: tuple[Extreme, ...] = ()
     unchecked: tuple[tuple[float, float], ...] = ()
     filled: bool = True
+    earlier: tuple[Trace, ...] = ()
+    legend: str = ""
 
 
 def titles() -> dict[Kind, str]:
@@ -101,29 +115,46 @@ def of_unit_strain(results: Results) -> dict[Kind, float]:
     }
 
 
-def state_contents(results: Results, state: int) -> tuple[StripContent, ...]:
+def state_contents(results: Results, state: int, earlier: Earlier | None = None) -> tuple[StripContent, ...]:
     """The strips of one state."""
     shown = curves(results, state)
-    values: Values = {
+    builder = _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress, earlier)
+    return builder.build(_of_state(shown))
+
+
+def envelope_contents(results: Results, earlier: Earlier | None = None) -> tuple[StripContent, ...]:
+    """The strips of the envelope: largest and smallest of the checked states."""
+    shown = envelope(results)
+    states = tuple(index for index, state in enumerate(results.states) if state.checked)
+    builder = _Builder(results, states, shown.x, shown.segment, shown.utilisation, None, earlier)
+    return builder.build(_of_envelope(shown))
+
+
+def earlier_curves(name: str, results: Results, state: int | None) -> Earlier:
+    """The curves of a reference in one state, or of its envelope."""
+    if state is None:
+        whole = envelope(results)
+        return Earlier(name, whole.x, _of_envelope(whole))
+    shown = curves(results, state)
+    return Earlier(name, shown.x, _of_state(shown))
+
+
+def _of_state(shown: Curves) -> Values:
+    return {
         "displacement": (shown.displacement,),
         "force": (shown.force,),
         "stress": (shown.stress,),
         "utilisation": (shown.utilisation,),
     }
-    return _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress).build(values)
 
 
-def envelope_contents(results: Results) -> tuple[StripContent, ...]:
-    """The strips of the envelope: largest and smallest of the checked states."""
-    shown = envelope(results)
-    values: Values = {
+def _of_envelope(shown: Envelope) -> Values:
+    return {
         "displacement": (shown.displacement_max, shown.displacement_min),
         "force": (shown.force_max, shown.force_min),
         "stress": (shown.stress_max, shown.stress_min),
         "utilisation": (shown.utilisation,),
     }
-    states = tuple(index for index, state in enumerate(results.states) if state.checked)
-    return _Builder(results, states, shown.x, shown.segment, shown.utilisation, None).build(values)
 
 
 class _Builder:
@@ -137,20 +168,23 @@ class _Builder:
         segment: IntArray,
         utilisation: FloatArray,
         stress: FloatArray | None,
+        earlier: Earlier | None,
     ) -> None:
         self._results = results
         self._system = results.project.display.unit_system
         self._states = states
         self._x, self._segment = x, segment
         self._utilisation, self._stress = utilisation, stress
+        self._earlier = earlier
 
     def build(self, values: Values) -> tuple[StripContent, ...]:
         return tuple(self._content(kind, title, values[kind]) for kind, title in titles().items())
 
     def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
         least = self._nothing(kind)
-        drawn, beyond = self._limits(kind, columns)
-        low, high = _range(columns, drawn, least)
+        before = self._earlier.values.get(kind, ()) if self._earlier else ()
+        drawn, beyond = self._limits(kind, columns + before)
+        low, high = _range(columns + before, drawn, least)
         return StripContent(
             kind=kind,
             title=title,
@@ -163,7 +197,23 @@ class _Builder:
             extremes=self._extremes(kind, columns, least),
             unchecked=self._unchecked() if kind == "utilisation" else (),
             filled=kind != "displacement",
+            earlier=tuple(self._earlier_trace(value) for value in before),
+            legend=self._legend() if kind == "displacement" else "",
         )
+
+    def _earlier_trace(self, value: FloatArray) -> Trace:
+        """A line and no more: where it jumps or has no value it breaks."""
+        assert self._earlier is not None  # noqa: S101 - it has the value
+        x = self._earlier.x
+        joined = (np.diff(x) > 0) & np.isfinite(value[1:] + value[:-1])
+        return Trace(x, value, np.where(joined, PLAIN, NONE))
+
+    def _legend(self) -> str:
+        """What the dashed lines are; said once, in the first strip."""
+        if self._earlier is None:
+            return ""
+        words = tr("dashed: {name}") if self._earlier.values else tr("{name}: no state of this name")
+        return words.format(name=self._earlier.name)
 
     def _nothing(self, kind: Kind) -> float:
         """The least range of a strip, from the member's own stiffness."""

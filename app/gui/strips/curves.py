@@ -20,8 +20,10 @@ from app.gui.theme import Theme, colour
 
 LINES = {TENSION: "tension", COMPRESSION: "compression", OVER: "over"}
 FILLS = {PLAIN: "load_fill", TENSION: "tension_fill", COMPRESSION: "compression_fill", OVER: "over_fill"}
-FILL_Z, LINE_Z = 1.0, 3.0
+FILL_Z, EARLIER_Z, LINE_Z = 1.0, 2.5, 3.0
 WIDTH = 1.8
+THIN = 1.1  # of a reference, with dashes of its own, not those of the limits
+DASHES = (6.0, 4.0)  # in widths of the line
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,10 +34,25 @@ class Shape:
     ink: str = ""
     fill: str = ""
     hatched: bool = False
+    dashed: bool = False
+
+    @property
+    def height(self) -> float:
+        """Fills lie below, then the dashed lines of a reference, then the lines."""
+        return FILL_Z if self.fill else EARLIER_Z if self.dashed else LINE_Z
+
+    def pen(self, theme: Theme) -> QPen | None:
+        """The pen of a line."""
+        if self.fill:
+            return None
+        pen = QPen(colour(getattr(theme, self.ink)), THIN if self.dashed else WIDTH)
+        if self.dashed:
+            pen.setDashPattern(DASHES)
+        return pen
 
 
 def shapes(content: StripContent, place: Place, scale: Scale) -> tuple[Shape, ...]:
-    """What is drawn of a content: the fills of all traces, then their lines."""
+    """What is drawn of a content: the fills of all traces, a reference dashed, then the traces' lines."""
     where = place.ruler, scale, place.axes
     drawn: list[Shape] = []
     for trace in content.traces if content.filled else ():
@@ -43,6 +60,8 @@ def shapes(content: StripContent, place: Place, scale: Scale) -> tuple[Shape, ..
             drawn.append(Shape(outline, fill=FILLS[way]))
             if way == OVER:
                 drawn.append(Shape(outline, fill="over", hatched=True))
+    for trace in content.earlier:
+        drawn += [Shape(line, ink="quiet", dashed=True) for line in lines(trace, *where).values()]
     plain = "displacement" if content.kind == "displacement" else "quiet"
     for trace in content.traces:
         drawn += [Shape(line, ink=LINES.get(way, plain)) for way, line in lines(trace, *where).items()]
@@ -71,14 +90,14 @@ class Curve(pg.PlotCurveItem):
 
     def show_shape(self, shape: Shape, theme: Theme) -> None:
         """Draw this."""
-        self.setZValue(FILL_Z if shape.fill else LINE_Z)
+        self.setZValue(shape.height)
         pattern = Qt.BrushStyle.BDiagPattern if shape.hatched else Qt.BrushStyle.SolidPattern
         filled = bool(shape.fill)
         self.setData(
             shape.points.x,
             shape.points.y,
             connect="all" if filled else shape.points.joined,  # which the library makes a path of much faster
-            pen=None if filled else QPen(colour(getattr(theme, shape.ink)), WIDTH),
+            pen=shape.pen(theme),
             fillLevel="enclosed" if filled else None,
             brush=QBrush(colour(getattr(theme, shape.fill)), pattern) if filled else None,
         )

@@ -1,0 +1,34 @@
+"""A picker of the top bar: values under words, of which a person picks one."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from PySide6.QtCore import QSignalBlocker, Signal
+from PySide6.QtWidgets import QComboBox, QWidget
+
+from app.gui.choice import Choice
+
+
+class Picker(Choice):
+    """A choice among values; tells only what a person picks."""
+
+    picked = Signal(object)
+
+    def __init__(self, name: str, digits: int, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.setAccessibleName(name)
+        self.setSizeAdjustPolicy(QComboBox.SizeAdjustPolicy.AdjustToMinimumContentsLengthWithIcon)
+        self.setMinimumContentsLength(digits)
+        self._values: list[object] = []
+        self.activated.connect(lambda index: self.picked.emit(self._values[index]))
+
+    def offer(self, choices: Sequence[tuple[object, str]], chosen: object) -> None:
+        """List the choices, as (value, words), with one of them chosen."""
+        values = [value for value, _words in choices]
+        with QSignalBlocker(self):
+            if [self.itemText(i) for i in range(self.count())] != [words for _value, words in choices]:
+                self.clear()
+                self.addItems([words for _value, words in choices])
+            self._values = values
+            self.setCurrentIndex(values.index(chosen))
