@@ -11,8 +11,8 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QToolButton
 
 from app import samples
+from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
-from app.gui.ruler import Ruler
 from app.gui.sheet_layout import Place
 from app.gui.strips.content import earlier_curves, envelope_contents, state_contents
 from app.gui.strips.curves import DASHES, THIN
