@@ -108,9 +108,9 @@ def _note(frame: Frame, picture: Picture) -> str:
 def _scale_note(ruler: Ruler, factor: float) -> str:
     lengths = 72 / 0.0254 / (POINT * ruler.pixels_per_metre)
     if abs(factor - 1.0) < 1e-9:
-        return tr("Drawn to scale, about 1 : {scale}.").format(scale=f"{lengths:.3g}")
+        return tr("Drawn to scale, about 1:{scale}.").format(scale=f"{lengths:.3g}")
     return tr(
-        "Lengths to scale, about 1 : {lengths}; depths to a scale of their own, about 1 : {depths}."
+        "Lengths to scale, about 1:{lengths}; depths to a scale of their own, about 1:{depths}."
     ).format(lengths=f"{lengths:.3g}", depths=f"{lengths / factor:.3g}")
 
 
