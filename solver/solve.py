@@ -9,7 +9,7 @@ import numpy as np
 
 from solver.allowables import StressChecks, allowables, check_stresses
 from solver.arrays import BoolArray, FloatArray, frozen
-from solver.axial import solve_axial
+from solver.axial import never, solve_axial
 from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
 from solver.errors import Cancelled, NotSolvable, OutOfRange
@@ -20,11 +20,6 @@ from solver.packing import pack, states_of
 from solver.results import Results, SegmentResults, State
 from solver.solution import Solution
 from solver.validation import unsolvable
-
-
-def never() -> bool:
-    """The answer to "cancelled?" of a caller who never cancels."""
-    return False
 
 
 def solve(
