@@ -309,8 +309,9 @@ def test_a_failure_stands_on_the_first_page_and_beside_its_numbers() -> None:
 
 
 def test_buckling_is_named_where_something_is_compressed() -> None:
-    assert read(sample_sheet("quay_pile")).count("Buckling in compression is not covered by this version") == 1
-    assert "no slip limit" in read(sample_sheet("quay_pile"))
+    text = read(sample_sheet("quay_pile"))
+    assert text.count("Buckling in compression is not covered by this version") == 1
+    assert "no slip limit" in text
 
 
 def test_what_was_not_checked_never_reads_as_passed() -> None:
