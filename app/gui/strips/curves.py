@@ -9,20 +9,20 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import pyqtgraph as pg
-from PySide6.QtCore import QRectF, Qt
-from PySide6.QtGui import QBrush, QPen
-from PySide6.QtWidgets import QGraphicsItem
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QBrush, QPainter, QPen
 
 from app.gui.sheet_layout import Place
 from app.gui.strips.content import COMPRESSION, OVER, PLAIN, TENSION, StripContent
-from app.gui.strips.paths import Polyline, Scale, fills, lines
+from app.gui.strips.paths import Pixels, Polyline, Scale
 from app.gui.theme import Theme, colour
 
 LINES = {TENSION: "tension", COMPRESSION: "compression", OVER: "over"}
 FILLS = {PLAIN: "load_fill", TENSION: "tension_fill", COMPRESSION: "compression_fill", OVER: "over_fill"}
 FILL_Z, EARLIER_Z, LINE_Z = 1.0, 2.5, 3.0
-WIDTH = 1.8
-THIN = 1.1  # of a reference, with dashes of its own, not those of the limits
+HAIRLINE = 1.0
+BESIDE = ((-0.4, -0.4), (0.4, 0.4), (-0.4, 0.4), (0.4, -0.4))  # hairlines that make one of 1.8 pixels
+THIN = 1.0  # of a reference, with dashes of its own, not those of the limits
 DASHES = (6.0, 4.0)  # in widths of the line
 
 
@@ -45,7 +45,7 @@ class Shape:
         """The pen of a line."""
         if self.fill:
             return None
-        pen = QPen(colour(getattr(theme, self.ink)), THIN if self.dashed else WIDTH)
+        pen = QPen(colour(getattr(theme, self.ink)), THIN if self.dashed else HAIRLINE)
         if self.dashed:
             pen.setDashPattern(DASHES)
         return pen
@@ -54,39 +54,31 @@ class Shape:
 def shapes(content: StripContent, place: Place, scale: Scale) -> tuple[Shape, ...]:
     """What is drawn of a content: the fills of all traces, a reference dashed, then the traces' lines."""
     where = place.ruler, scale, place.axes
+    traces = [Pixels.of(trace, *where) for trace in content.traces]
     drawn: list[Shape] = []
-    for trace in content.traces if content.filled else ():
-        for way, outline in fills(trace, *where).items():
+    for trace in traces if content.filled else ():
+        for way, outline in trace.fills().items():
             drawn.append(Shape(outline, fill=FILLS[way]))
             if way == OVER:
                 drawn.append(Shape(outline, fill="over", hatched=True))
-    for trace in content.earlier:
-        drawn += [Shape(line, ink="quiet", dashed=True) for line in lines(trace, *where).values()]
+    for earlier in content.earlier:
+        lines = Pixels.of(earlier, *where).lines().values()
+        drawn += [Shape(line, ink="quiet", dashed=True) for line in lines]
     plain = "displacement" if content.kind == "displacement" else "quiet"
-    for trace in content.traces:
-        drawn += [Shape(line, ink=LINES.get(way, plain)) for way, line in lines(trace, *where).items()]
+    for trace in traces:
+        drawn += [Shape(line, ink=LINES.get(way, plain)) for way, line in trace.lines().items()]
     return tuple(drawn)
 
 
 class Curve(pg.PlotCurveItem):
-    """A curve in pixels of the sheet."""
+    """A curve in pixels of the sheet; its strip paints it, so that a strip is one picture that is kept."""
 
-    def __init__(self, strip: QGraphicsItem) -> None:
-        super().__init__(antialias=True, parent=strip)
+    def __init__(self) -> None:
+        super().__init__(antialias=True)
         self.setSegmentedLineMode("off")
-        self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
-        self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     def getViewBox(self) -> None:
         """None: it lies in no view box of the library."""
-
-    def pixelVectors(self, _direction: object = None) -> tuple[None, None]:
-        """None: the bounds are widened by `boundingRect`."""
-        return None, None
-
-    def boundingRect(self) -> QRectF:
-        """Around all points, and half the line's width."""
-        return super().boundingRect().adjusted(-WIDTH, -WIDTH, WIDTH, WIDTH)
 
     def show_shape(self, shape: Shape, theme: Theme) -> None:
         """Draw this."""
@@ -101,26 +93,42 @@ class Curve(pg.PlotCurveItem):
             fillLevel="enclosed" if filled else None,
             brush=QBrush(colour(getattr(theme, shape.fill)), pattern) if filled else None,
         )
-        self.setVisible(True)
+
+    def paint_on(self, painter: QPainter) -> None:
+        """A fill with hard edges, which lie under its line; a line as hairlines beside each other.
+
+        Qt draws a line of one pixel twenty times as fast as any wider one.
+        """
+        path, brush, pen = self.getPath(), self.opts["brush"], self.opts["pen"]
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, brush is None)
+        if brush is not None:
+            painter.fillPath(path, brush)
+            return
+        painter.setPen(pen)
+        for x, y in BESIDE if pen.style() == Qt.PenStyle.SolidLine else ((0.0, 0.0),):
+            painter.translate(x, y)
+            painter.drawPath(path)
+            painter.translate(-x, -y)
 
 
 class Curves:
-    """As many curve items as are needed, children of a strip."""
+    """As many curves as a strip needs, kept from one result to the next."""
 
-    def __init__(self, strip: QGraphicsItem) -> None:
-        self._strip = strip
+    def __init__(self) -> None:
         self._items: list[Curve] = []
-
-    @property
-    def shown(self) -> list[Curve]:
-        """The items that are drawn."""
-        return [item for item in self._items if item.isVisible()]
+        self.shown: list[Curve] = []
 
     def show_shapes(self, shown: tuple[Shape, ...], theme: Theme) -> None:
         """Draw these and nothing else; among fills and among lines the later lie above."""
         while len(self._items) < len(shown):
-            self._items.append(Curve(self._strip))
-        for item, shape in zip(self._items, shown, strict=False):
+            self._items.append(Curve())
+        self.shown = self._items[: len(shown)]
+        for item, shape in zip(self.shown, shown, strict=True):
             item.show_shape(shape, theme)
-        for item in self._items[len(shown) :]:
-            item.setVisible(False)
+
+    def paint(self, painter: QPainter, *, lines: bool) -> None:
+        """The fills, or the lines, the lower ones first."""
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        for curve in sorted(self.shown, key=Curve.zValue):
+            if (curve.opts["brush"] is None) is lines:
+                curve.paint_on(painter)

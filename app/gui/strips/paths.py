@@ -1,4 +1,6 @@
-"""From a strip's traces to points in pixels: one line and one outline of a fill for each way of drawing."""
+"""From a strip's traces to points in pixels: one line and one outline of a fill for each way of drawing.
+
+No more points than the pixels can show are painted, and no extreme is left out (`app.thinning`)."""
 
 from __future__ import annotations
 
@@ -11,6 +13,7 @@ from PySide6.QtCore import QRectF
 from app.drawing.ruler import Ruler
 from app.gui.sheet_layout import Axes
 from app.gui.strips.content import NONE, StripContent, Trace
+from app.thinning import Chain, chain_of, thinned
 from solver.arrays import BoolArray, FloatArray, IntArray
 
 
@@ -65,37 +68,62 @@ class Polyline:
     joined: IntArray
 
 
-def lines(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, Polyline]:
-    """The curve, by way of drawing; it breaks at jumps. One each, however many segments there are."""
-    along, across = ruler.pixel(trace.x), scale.pixels(trace.value)
-    return {
-        int(way): _polyline(along, across, axes, np.append(trace.drawn == way, False))
-        for way in np.unique(trace.drawn)
-        if way != NONE
-    }
+@dataclass(frozen=True, slots=True)
+class Pixels:
+    """A trace in pixels, thinned to what they can show: a chain of points for each way of drawing."""
+
+    along: FloatArray
+    across: FloatArray
+    zero: float
+    chains: dict[int, Chain]
+    axes: Axes
+
+    @classmethod
+    def of(cls, trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> Pixels:
+        """Those of a trace that lie in the ruler's window."""
+        along, across = ruler.pixel(trace.x), scale.pixels(trace.value)
+        drawn = np.where(_in_window(along, ruler), trace.drawn, NONE)
+        chains = {
+            int(way): thinned(chain_of(drawn == way), along, across)
+            for way in np.unique(drawn)
+            if way != NONE
+        }
+        return cls(along, across, scale.pixel(0.0), chains, axes)
+
+    def lines(self) -> dict[int, Polyline]:
+        """The curve, by way of drawing; it breaks at jumps. One each, however many segments there are."""
+        return {way: self._line(chain) for way, chain in self.chains.items()}
+
+    def fills(self) -> dict[int, Polyline]:
+        """The area between the curve and 0, by way of drawing, as one outline along 0 between runs."""
+        return {way: self._outline(chain) for way, chain in self.chains.items()}
+
+    def _line(self, chain: Chain) -> Polyline:
+        return polyline(self.along[chain.index], self.across[chain.index], self.axes, chain.joined)
+
+    def _outline(self, chain: Chain) -> Polyline:
+        """The points of the chain, from 0 and to 0 where there is a gap; at a jump straight on."""
+        along = self.along[chain.index]
+        closes = np.append(~chain.joined[:-1] & (np.diff(along) != 0.0), True)
+        opens = np.append(True, closes[:-1])
+        times = 1 + opens + closes
+        at = np.repeat(chain.index, times)
+        first = np.cumsum(times) - times
+        across = self.across[at]
+        across[first[opens]] = self.zero
+        across[(first + times - 1)[closes]] = self.zero
+        return polyline(self.along[at], across, self.axes, np.ones(len(at), dtype=np.bool_))
 
 
-def fills(trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> dict[int, Polyline]:
-    """The area between the curve and 0, by way of drawing, as one outline that goes along 0 between runs."""
-    along, across, zero = ruler.pixel(trace.x), scale.pixels(trace.value), scale.pixel(0.0)
-    return {
-        int(way): _outline(along, across, zero, trace.drawn == way, axes)
-        for way in np.unique(trace.drawn)
-        if way != NONE
-    }
+def _in_window(along: FloatArray, ruler: Ruler) -> BoolArray:
+    """Whether an interval (k − 1,) reaches into the pixels that are shown."""
+    first, last = sorted((ruler.begin, ruler.end))
+    low, high = np.minimum(along[:-1], along[1:]), np.maximum(along[:-1], along[1:])
+    inside: BoolArray = (high >= first) & (low <= last)
+    return inside
 
 
-def _outline(along: FloatArray, across: FloatArray, zero: float, chosen: BoolArray, axes: Axes) -> Polyline:
-    """Each chosen interval from start to end, from 0 or to 0 where its neighbour is not chosen."""
-    at = np.flatnonzero(chosen)
-    opens = np.append(True, np.diff(at) > 1)
-    closes = np.append(np.diff(at) > 1, True)
-    first, last = across[at], across[at + 1]
-    corners = np.column_stack([np.where(opens, zero, first), first, last, np.where(closes, zero, last)])
-    places = np.column_stack([along[at], along[at], along[at + 1], along[at + 1]])
-    return _polyline(places.ravel(), corners.ravel(), axes, np.ones(corners.size, dtype=np.bool_))
-
-
-def _polyline(along: FloatArray, across: FloatArray, axes: Axes, joined: BoolArray) -> Polyline:
+def polyline(along: FloatArray, across: FloatArray, axes: Axes, joined: BoolArray) -> Polyline:
+    """Points along and across the axis as those of the sheet."""
     x, y = (across, along) if axes.upright else (along, across)
     return Polyline(np.ascontiguousarray(x), np.ascontiguousarray(y), joined.astype(np.int32))

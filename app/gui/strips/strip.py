@@ -1,14 +1,15 @@
 """One strip as scene items: its ground, the curves, the marks between them, and the texts above all.
 
-From below: frame and allowable band (`Strip`), fills, `Marks`, lines (`curves`), and above the joint lines
-of the sheet the `Labels`, which the sheet adds beside the strip. Only the strip clips its children.
+From below: ground and allowable band, fills, marks, lines (`curves`), all painted into one picture that is
+kept while the cursor moves over it; and above the joint lines of the sheet the `Labels`, which the sheet adds
+beside the strip.
 """
 
 from __future__ import annotations
 
 from PySide6.QtCore import QRectF, Qt
-from PySide6.QtGui import QBrush, QPainter, QPainterPath, QPen
-from PySide6.QtWidgets import QGraphicsItem, QStyleOptionGraphicsItem, QWidget
+from PySide6.QtGui import QBrush, QPainter, QPen
+from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
 from app.gui.sheet_items import Painted
 from app.gui.sheet_layout import Place
@@ -18,7 +19,6 @@ from app.gui.strips.labels import Label, strip_labels
 from app.gui.strips.paths import Scale
 from app.gui.theme import Theme, colour
 
-MARKS_Z = 2.0  # between fills and lines
 LABELS_Z = 6.0  # above the joint lines
 
 
@@ -30,10 +30,9 @@ class Strip(Painted):
         self._content: StripContent | None = None
         self._place: Place | None = None
         self._spoilt = True
-        self._curves = Curves(self)
-        self._marks = Marks(theme, self)
+        self._scale: Scale | None = None
+        self._curves = Curves()
         self.label_layer = Labels(theme)
-        self.setFlag(QGraphicsItem.GraphicsItemFlag.ItemClipsChildrenToShape)
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
 
     @property
@@ -60,7 +59,6 @@ class Strip(Painted):
         """Other colours."""
         if theme != self._theme:
             super().set_theme(theme)
-            self._marks.set_theme(theme)
             self.label_layer.set_theme(theme)
             self._spoilt = True
 
@@ -85,7 +83,7 @@ class Strip(Painted):
         scale = None if content is None else Scale.of(content, place.rect, place.axes)
         drawn = () if content is None or scale is None else shapes(content, place, scale)
         self._curves.show_shapes(drawn, self._theme)
-        self._marks.show_marks(content, place, scale)
+        self._scale = scale
         self.label_layer.show_labels(content, place, scale)
         self.update()
 
@@ -93,64 +91,46 @@ class Strip(Painted):
         """The frame with its line."""
         return self._rect.adjusted(-1, -1, 1, 1)
 
-    def shape(self) -> QPainterPath:
-        """The frame, which clips the curves."""
-        path = QPainterPath()
-        path.addRect(self._rect)
-        return path
-
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """Ground, allowable band, frame."""
+        """Ground, allowable band, fills, marks, lines, frame."""
         painter.fillRect(self._rect, colour(self._theme.card))
-        if self._content is not None and self._place is not None and self._content.kind == "stress":
-            self._paint_band(painter, self._content, self._place)
+        if self._content is not None and self._place is not None and self._scale is not None:
+            painter.save()
+            painter.setClipRect(self._rect)
+            if self._content.kind == "stress":
+                self._paint_band(painter, self._content, self._place, self._scale)
+            self._curves.paint(painter, lines=False)
+            self._paint_marks(painter, self._content, self._place, self._scale)
+            self._curves.paint(painter, lines=True)
+            painter.restore()
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setPen(QPen(colour(self._theme.edge), 1.0))
         painter.drawRect(self._rect)
 
-    def _paint_band(self, painter: QPainter, content: StripContent, place: Place) -> None:
+    def _paint_band(self, painter: QPainter, content: StripContent, place: Place, scale: Scale) -> None:
         """The allowable band, between 0 and each allowable."""
-        scale = Scale.of(content, place.rect, place.axes)
         for limit in (*content.limits, *content.beyond):
             span = place.ruler.pixel(limit.first), place.ruler.pixel(limit.last)
             across = scale.pixel(0.0), scale.pixel(limit.value)
             painter.fillRect(place.axes.rect(span, across) & place.rect, colour(self._theme.band_fill))
 
-
-class Marks(Painted):
-    """The line of 0, the dashed limits, and the hatch of what was not checked."""
-
-    def __init__(self, theme: Theme, strip: QGraphicsItem) -> None:
-        super().__init__(theme, MARKS_Z)
-        self.setParentItem(strip)
-        self._content: StripContent | None = None
-        self._place: Place | None = None
-        self._scale: Scale | None = None
-
-    def show_marks(self, content: StripContent | None, place: Place, scale: Scale | None) -> None:
-        """Draw those of this content."""
-        self._content, self._place, self._scale = content, place, scale
-        self.set_rect(place.rect)
-
-    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """Hatch, then lines."""
-        if self._content is None or self._place is None or self._scale is None:
-            return
-        place = self._place
+    def _paint_marks(self, painter: QPainter, content: StripContent, place: Place, scale: Scale) -> None:
+        """The hatch of what was not checked, the line of 0, the dashed limits."""
         brush = QBrush(colour(self._theme.joint), Qt.BrushStyle.FDiagPattern)
-        for first, last in self._content.unchecked:
+        for first, last in content.unchecked:
             span = place.ruler.pixel(first), place.ruler.pixel(last)
             painter.fillRect(place.axes.rect(span, place.axes.across_of(place.rect)) & place.rect, brush)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setPen(QPen(colour(self._theme.quiet), 1.0))
-        self._line(painter, place, place.axes.along_of(place.rect), self._scale.pixel(0.0))
+        _draw_line(painter, place, place.axes.along_of(place.rect), scale.pixel(0.0))
         painter.setPen(QPen(colour(self._theme.ink), 1.2, Qt.PenStyle.DashLine))
-        for limit in self._content.limits:
+        for limit in content.limits:
             span = place.ruler.pixel(limit.first), place.ruler.pixel(limit.last)
-            self._line(painter, place, span, self._scale.pixel(limit.value))
+            _draw_line(painter, place, span, scale.pixel(limit.value))
 
-    def _line(self, painter: QPainter, place: Place, span: tuple[float, float], across: float) -> None:
-        painter.drawLine(place.axes.point(span[0], across), place.axes.point(span[1], across))
+
+def _draw_line(painter: QPainter, place: Place, span: tuple[float, float], across: float) -> None:
+    painter.drawLine(place.axes.point(span[0], across), place.axes.point(span[1], across))
 
 
 class Labels(Painted):
