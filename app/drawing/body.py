@@ -76,7 +76,7 @@ def _draw_marks(sketch: Sketch) -> None:
         span = sketch.shown_span(index)
         if span is not None:
             along = 0.5 * (span[0] + span[1])
-            wish = sketch.wish(segment.mark, along, Part("segment", index), face="strong")
+            wish = sketch.wish(segment.mark, along, Part("mark", index), face="strong")
             wishes.append(wish)
     placed = place(wishes, 1, sketch.room, TIGHT)
     sketch.picture.left_out += len(wishes) - len(placed)

@@ -79,7 +79,7 @@ def section_wishes(sketch: Sketch) -> list[Wish]:
             if sketch.frame.upright:
                 text = text.replace("→", "\n→")
             middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))
-            wishes.append(sketch.wish(text, middle, Part("length", members[0])))
+            wishes.append(sketch.wish(text, middle, Part("section", members[0])))
     return wishes
 
 

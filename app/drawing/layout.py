@@ -11,7 +11,7 @@ from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
 from app.drawing.rows import Wishes, no_rows, round_factor, rows_in, thickest
-from app.drawing.shapes import Box, Part, Picture, Text
+from app.drawing.shapes import LOADS, Box, Part, Picture, Target, Text
 from app.drawing.sketch import Sketch
 from app.drawing.supports import draw_supports
 from app.units import format_value
@@ -31,11 +31,19 @@ def lay_out(member: Member, frame: Frame) -> Picture:
     draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
+    _aim_at_labels(sketch.picture)
     aim_at_joints(sketch)
     if frame.detail.factor:
         _draw_factor(sketch)
     _set_edge(sketch)
     return sketch.picture
+
+
+def _aim_at_labels(picture: Picture) -> None:
+    """What acts is pointed at by its label as well; some of it is said in words only."""
+    for text in picture.texts:
+        if text.part is not None and text.part.kind in LOADS | {"bedding", "support"}:
+            picture.targets.append(Target(text.box, text.part))
 
 
 def _set_edge(sketch: Sketch) -> None:

@@ -11,7 +11,7 @@ import numpy as np
 from msgspec.structs import replace
 
 from app.drawing.placing import Span, Wish
-from app.drawing.shapes import Part
+from app.drawing.shapes import Part, PartKind
 from app.drawing.sketch import Sketch
 from app.drawing.supports import support_of
 from app.drawing.words import (
@@ -61,8 +61,8 @@ def load_wishes(sketch: Sketch) -> list[Wish]:
     wishes += _distributed_wishes(sketch, loads.distributed[0])
     wishes += _movement_wishes(sketch, loads.movement[0])
     system = sketch.member.system
-    wishes += _run_wishes(sketch, _misfits(loads, system), rank=2)
-    wishes += _run_wishes(sketch, _warmths(loads, system), rank=3)
+    wishes += _run_wishes(sketch, _misfits(loads, system), "fit", rank=2)
+    wishes += _run_wishes(sketch, _warmths(loads, system), "warmth", rank=3)
     return wishes + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
@@ -76,6 +76,16 @@ def _draw_distributed(sketch: Sketch, distributed: FloatArray) -> None:
         if span is not None and (start or end):
             _draw_band(sketch, index, start / largest, end / largest)
             sketch.target(span, sketch.rows.band, Part("distributed", index))
+            if start != end:
+                _aim_at_end(sketch, index, span)
+
+
+def _aim_at_end(sketch: Sketch, index: int, span: Span) -> None:
+    """Of a load that varies, the half towards its end is pointed at by itself."""
+    low, high = span
+    half = 0.5 * (low + high)
+    last = (half, high) if sketch.forward > 0 else (low, half)
+    sketch.target(last, sketch.rows.band, Part("distributed_end", index))
 
 
 def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
@@ -200,7 +210,7 @@ def _movement_wishes(sketch: Sketch, movement: FloatArray) -> list[Wish]:
     for joint, value in enumerate(movement.tolist()):
         if value and sketch.holds(joint):
             text = tr("moved {value}").format(value=signed_text(value, "displacement", sketch.member.system))
-            wishes.append(sketch.wish(text, sketch.along(joint), Part("note", joint), rank=1, slide=60.0))
+            wishes.append(sketch.wish(text, sketch.along(joint), Part("movement", joint), rank=1, slide=60.0))
     return wishes
 
 
@@ -212,22 +222,22 @@ def _warmths(loads: Loads, system: UnitSystemName) -> list[str]:
     return [warmth_text(first, last, system) for first, last in loads.temperature[0].tolist()]
 
 
-def _runs(sketch: Sketch, texts: list[str]) -> list[tuple[str, Span]]:
-    """What is said of neighbours that say the same, and the pixels of them that are shown."""
+def _runs(sketch: Sketch, texts: list[str]) -> list[tuple[str, int, Span]]:
+    """What is said of neighbours that say the same, the first of them, the pixels of them that are shown."""
     runs = []
     for text, group in groupby(range(len(texts)), key=lambda index: texts[index]):
-        spans = [span for index in group if (span := sketch.shown_span(index)) is not None]
+        members = list(group)
+        spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
         if text and spans:
-            runs.append((text, (min(s[0] for s in spans), max(s[1] for s in spans))))
+            runs.append((text, members[0], (min(s[0] for s in spans), max(s[1] for s in spans))))
     return runs
 
 
-def _run_wishes(sketch: Sketch, texts: list[str], rank: int) -> list[Wish]:
+def _run_wishes(sketch: Sketch, texts: list[str], kind: PartKind, rank: int) -> list[Wish]:
     """One label for neighbours that say the same, in the middle of what is shown of them."""
-    part = Part("note", rank)
     return [
-        sketch.wish(text, 0.5 * (low + high), part, rank=rank, slide=0.5 * (high - low))
-        for text, (low, high) in _runs(sketch, texts)
+        sketch.wish(text, 0.5 * (low + high), Part(kind, first), rank=rank, slide=0.5 * (high - low))
+        for text, first, (low, high) in _runs(sketch, texts)
     ]
 
 
@@ -237,7 +247,7 @@ def bracketed(sketch: Sketch) -> list[list[Span]]:
     if loads is None or not sketch.frame.detail.explained:
         return []
     rows = (_runs(sketch, texts) for texts in (_misfits(loads, system), _warmths(loads, system)))
-    return [[span for _, span in row] for row in rows if row]
+    return [[span for _, _, span in row] for row in rows if row]
 
 
 def _draw_brackets(sketch: Sketch) -> None:
@@ -255,7 +265,7 @@ def _bedding_wishes(sketch: Sketch) -> list[Wish]:
     for segment in sketch.member.project.segments:
         end = end_of(segment.bedding, segment.bedding_end)
         texts.append(bedding_text(segment.bedding, end, sketch.member.system))
-    return _run_wishes(sketch, texts, rank=4)
+    return _run_wishes(sketch, texts, "bedding", rank=4)
 
 
 def _draw_bedding(sketch: Sketch) -> None:
@@ -279,4 +289,4 @@ def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
     if not text:
         return []
     middle = 0.5 * (sketch.window[0] + sketch.window[1])
-    return [sketch.wish(text, middle, Part("note", 5), rank=5, slide=sketch.window[1] - sketch.window[0])]
+    return [sketch.wish(text, middle, Part("gravity", 0), rank=5, slide=sketch.window[1] - sketch.window[0])]

@@ -15,7 +15,30 @@ HAIR = 1e-6  # px
 Point: TypeAlias = tuple[float, float]  # (x, y), y downward
 Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
 Anchor: TypeAlias = Literal["start", "middle", "end"]
-PartKind: TypeAlias = Literal["segment", "joint", "support", "force", "distributed", "length", "note"]
+PartKind: TypeAlias = Literal[
+    "segment",
+    "mark",
+    "length",
+    "section",
+    "distributed",
+    "distributed_end",
+    "warmth",
+    "fit",
+    "bedding",
+    "joint",
+    "support",
+    "force",
+    "movement",
+    "gravity",
+    "note",
+]
+OF_SEGMENT: frozenset[PartKind] = frozenset(
+    ("segment", "mark", "length", "section", "distributed", "distributed_end", "warmth", "fit", "bedding")
+)
+OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "force", "movement"))
+LOADS: frozenset[PartKind] = frozenset(  # of the shown state
+    ("distributed", "distributed_end", "warmth", "fit", "force", "movement", "gravity")
+)
 Ink: TypeAlias = Literal["ink", "quiet", "joint", "select"]
 Fill: TypeAlias = Literal["", "body_fill", "band_fill", "select_fill", "load_fill", "paper", "ink"]
 
@@ -61,7 +84,10 @@ class Box(Struct, frozen=True):
 
 
 class Part(Struct, frozen=True):
-    """What a point of the drawing stands for: `index` along the chain, of segments or of joints."""
+    """What a point of the drawing stands for: `index` along the chain, of segments or of joints.
+
+    A label that stands for neighbours alike has the first one's index.
+    """
 
     kind: PartKind
     index: int
@@ -124,3 +150,16 @@ class Picture:
             if target.box.contains(point):
                 return target
         return None
+
+    def label_at(self, point: Point) -> Target | None:
+        """The label at a point, else the topmost target: what is typed in place there."""
+        for text in self.texts:
+            if text.part is not None and text.part.kind != "note" and text.box.contains(point):
+                return Target(text.box, text.part)
+        return self.target_at(point)
+
+    def box_of(self, part: Part) -> Box | None:
+        """Where a part's label stands, else where it is pointed at; None where it is not drawn."""
+        texts = (text.box for text in self.texts if text.part == part)
+        targets = (target.box for target in reversed(self.targets) if target.part == part)
+        return next(texts, next(targets, None))

@@ -5,7 +5,7 @@ from __future__ import annotations
 from msgspec import UnsetType
 
 from app.drawing.member import Member
-from app.drawing.shapes import Part
+from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Part
 from app.drawing.words import (
     bedding_text,
     distributed_text,
@@ -23,9 +23,11 @@ from solver.model import end_of
 
 def tip(member: Member, part: Part) -> str:
     """The tooltip of a part."""
-    if part.kind in ("segment", "length", "distributed"):
+    if part.kind in OF_SEGMENT:
         return _segment_tip(member, part.index)
-    return _joint_tip(member, part.index)
+    if part.kind in OF_JOINT:
+        return _joint_tip(member, part.index)
+    return "" if member.loads is None else gravity_text(float(member.loads.gravity[0]), member.system)
 
 
 def _segment_tip(member: Member, index: int) -> str:

@@ -5,12 +5,12 @@ from __future__ import annotations
 import bisect
 from collections.abc import Callable
 
-from PySide6.QtCore import QEvent, QPointF, QRectF, QSizeF, Qt
+from PySide6.QtCore import QEvent, QPointF, QRectF, QSizeF, Qt, Signal
 from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
 from app.drawing.ruler import Ruler
-from app.drawing.shapes import Part
+from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Box, Part
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import SheetLayout, least_height
@@ -47,6 +47,8 @@ class Drag:
 
 class SheetView(QGraphicsView):
     """Drawing, strips and cursor; listens to `View` and sets its cursor and selection."""
+
+    opened = Signal(object, object)  # Part, Box: to be typed in place
 
     def __init__(self, view: View, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -170,6 +172,23 @@ class SheetView(QGraphicsView):
             index = min(max(index, 0), len(positions) - 2)
             self._view.set_selection(Selection(segments=frozenset((index,))))
 
+    def _open_selected(self) -> None:
+        """Type the selected part in place: a length, a support; else of the segment at the cursor."""
+        if not (self._view.selection.segments or self._view.selection.joints):
+            self._select_at_cursor()
+        chosen = self._view.selection
+        parts = [Part("length", index) for index in sorted(chosen.segments)]
+        parts += [Part("support", index) for index in sorted(chosen.joints)]
+        if parts:
+            self.opened.emit(parts[0], self.box_of(parts[0]))
+
+    def box_of(self, part: Part) -> Box:
+        """Where a part is drawn; else its segment or joint, else the middle of the drawing."""
+        body = Part("segment" if part.kind in OF_SEGMENT else "joint", part.index)
+        found = self.drawing.picture.box_of(part) or self.drawing.picture.box_of(body)
+        middle = self.places.drawing.center()
+        return found or Box.around((middle.x(), middle.y()), 0.0, 0.0)
+
     # What happened
 
     def _on_cursor_changed(self, cursor: Cursor | None) -> None:
@@ -189,9 +208,9 @@ class SheetView(QGraphicsView):
             self._move_cursor(nearest if near else ruler.position_at(pixel))
 
     def _on_part_clicked(self, part: Part) -> None:
-        if part.kind in ("segment", "length", "distributed"):
+        if part.kind in OF_SEGMENT:
             self._view.set_selection(Selection(segments=frozenset((part.index,))))
-        elif part.kind in ("joint", "support", "force"):
+        elif part.kind in OF_JOINT:
             self._view.set_selection(Selection(joints=frozenset((part.index,))))
 
     # Qt's own
@@ -222,9 +241,13 @@ class SheetView(QGraphicsView):
         event.accept()
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
-        """Show the whole member."""
+        """Type what is shown there; show the whole member where nothing is."""
         super().mouseDoubleClickEvent(event)
-        self.fit()
+        found = self.drawing.label_at(event.position())
+        if found is None:
+            self.fit()
+        elif event.button() == Qt.MouseButton.LeftButton:
+            self.opened.emit(found.part, found.box)
         event.accept()
 
     def wheelEvent(self, event: QWheelEvent) -> None:
@@ -255,6 +278,9 @@ class SheetView(QGraphicsView):
             Qt.Key.Key_Minus: lambda: self.zoom(1.0 / ZOOM_STEP),
             Qt.Key.Key_0: self.fit,
             Qt.Key.Key_Space: self._select_at_cursor,
+            Qt.Key.Key_F2: self._open_selected,
+            Qt.Key.Key_Return: self._open_selected,
+            Qt.Key.Key_Enter: self._open_selected,
         }
         return actions.get(event.key())
 

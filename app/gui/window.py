@@ -17,6 +17,7 @@ from app.gui.document import Document
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
 from app.gui.findings.panel import FindingsPanel
+from app.gui.hand.in_place import InPlace
 from app.gui.help import Help
 from app.gui.member_edits import MemberEdits
 from app.gui.outcome import shown_states
@@ -71,6 +72,7 @@ class Window(QMainWindow):
         self.printing = Printing(self, self.document, self.store, commit)
         self.against = AgainstBar()
         self.comparing = Comparing(self.document, self.showing, self.against, commit, self)
+        self.in_place = InPlace(self.document, self.view, self.sheet, self.tables, self)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)
@@ -126,7 +128,7 @@ class Window(QMainWindow):
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
-        for room in (self.files, self.printing, self.edits, self.recovery, self.comparing):
+        for room in (self.files, self.printing, self.edits, self.recovery, self.comparing, self.in_place):
             room.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
 

@@ -29,7 +29,7 @@ _FILLS: Final[dict[Fill, str]] = {
 }
 _LINE: Final = 1.2  # height of a line in sizes of its letters
 _BASELINE: Final = 0.34  # of the baseline under the middle of a line, in sizes
-_ON_LINES: Final = frozenset({"joint", "length", "support"})  # what stands where thin lines run
+_ON_LINES: Final = frozenset({"joint", "length", "section", "support"})  # what stands where thin lines run
 
 
 def measure(text: str, face: Face) -> tuple[float, float]:

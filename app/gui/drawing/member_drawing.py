@@ -20,7 +20,7 @@ from PySide6.QtWidgets import (
 
 from app.drawing.layout import lay_out
 from app.drawing.member import Member
-from app.drawing.shapes import Box, Circle, Part, Picture, Stroke
+from app.drawing.shapes import Box, Circle, Part, Picture, Stroke, Target
 from app.drawing.tips import tip
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
@@ -88,6 +88,10 @@ class MemberDrawing(QGraphicsObject):
         """The part under a point, or None."""
         target = self.picture.target_at((point.x(), point.y()))
         return None if target is None else target.part
+
+    def label_at(self, point: QPointF) -> Target | None:
+        """What is typed in place at a point, or None."""
+        return self.picture.label_at((point.x(), point.y()))
 
     # Qt's own
 

@@ -14,9 +14,14 @@ from solver.model import UnitSystemName, end_of
 _ARROW = re.compile(r"->|→")
 
 
+def parts_of_pair(text: str) -> list[str]:
+    """The texts on either side of the arrow; the whole text where there is none."""
+    return _ARROW.split(text)
+
+
 def parse_pair(text: str, quantity: Quantity, system: UnitSystemName) -> tuple[float, float | UnsetType]:
     """Start and end of "10 -> 20"; the end is UNSET where one number says both."""
-    parts = _ARROW.split(text)
+    parts = parts_of_pair(text)
     if len(parts) > 2:
         raise EntryError(tr("at most two values, such as 10 -> 20"))
     values = [parse_entry(part.strip(), quantity, system) for part in parts]

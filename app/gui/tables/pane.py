@@ -35,6 +35,7 @@ class TablesPane(QWidget):
     """All tables of one document; their selection is the view's."""
 
     noted = Signal(str)
+    committing = Signal()  # whoever types into a cell elsewhere takes in what it holds
     current_table_changed = Signal()
 
     def __init__(self, document: Document, view: View, theme: Theme, parent: QWidget | None = None) -> None:
@@ -166,6 +167,7 @@ class TablesPane(QWidget):
         """Take in what an open editor holds."""
         for view in self.views.values():
             view.commit_open_editor()
+        self.committing.emit()
 
     # Selection
 

@@ -18,7 +18,7 @@ from app.entry import parse_entry
 from app.gui.tables.column import Change, Figures, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
-from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
+from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
 from app.section_entry import parse_section
 from app.support_entry import parse_support, support_entry, support_text
 from app.typical_materials import typical_named, with_typical
@@ -217,12 +217,22 @@ def one_end(ends: Ends, which: int) -> dict[str, Any]:
         return entry_text(total[which], ends.quantity, sight.system) if editable and total else None
 
     def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        if which == 0 and len(parts_of_pair(text)) == 2:
+            return _put_ends(ends, project, index, text, sight)
         value = parse_entry(text, ends.quantity, sight.system) if text.strip() else UNSET
         key = ends.start if which == 0 else ends.end
         case, mark = needed_case(project, sight).name, project.segments[index].mark
         return Change(edits.set_segment_load(project, case, mark, key, value))
 
     return {"show": in_segments(show, ""), "entry": in_segments(entry, None), "put": put}
+
+
+def _put_ends(ends: Ends, project: Project, index: int, text: str, sight: Sight) -> Change:
+    """Both ends at once, "3 -> 5"; an empty text takes both away."""
+    start, end = parse_pair(text, ends.quantity, sight.system) if text.strip() else (UNSET, UNSET)
+    case, mark = needed_case(project, sight).name, project.segments[index].mark
+    begun = edits.set_segment_load(project, case, mark, ends.start, start)
+    return Change(edits.set_segment_load(begun, case, mark, ends.end, end))
 
 
 def show_heat(row: SegmentRow, sight: Sight) -> str:
@@ -241,10 +251,7 @@ def heat_entry(row: SegmentRow, sight: Sight) -> str | None:
 
 def put_heat(project: Project, index: int, text: str, sight: Sight) -> Change:
     """Both ends of the temperature rise; an empty text takes it away."""
-    start, end = parse_pair(text, HEAT.quantity, sight.system) if text.strip() else (UNSET, UNSET)
-    case, mark = needed_case(project, sight).name, project.segments[index].mark
-    heated = edits.set_segment_load(project, case, mark, HEAT.start, start)
-    return Change(edits.set_segment_load(heated, case, mark, HEAT.end, end))
+    return _put_ends(HEAT, project, index, text, sight)
 
 
 # Results

@@ -62,11 +62,11 @@ class TestLabels:
     def test_a_sample_loses_none_of_its_lengths_sections_and_forces(self, upright):
         project = read_sample("quay_pile")
         shown = picture(project, upright=upright, size=SIZES[1]).texts
-        lengths = [t for t in shown if t.part is not None and t.part.kind == "length"]
+        lengths = [t for t in shown if t.part is not None and t.part.kind in ("length", "section")]
         forces = [t for t in shown if t.part is not None and t.part.kind == "force"]
         assert len(lengths) == 2 * len(project.segments)
         assert len(forces) == 3
-        marks = {t.text for t in shown if t.part is not None and t.part.kind == "segment"}
+        marks = {t.text for t in shown if t.part is not None and t.part.kind == "mark"}
         assert marks == {segment.mark for segment in project.segments}
 
     @BOTH_WAYS
@@ -184,7 +184,7 @@ def test_zoomed_in_only_what_is_in_the_window_is_labelled(upright):
     whole = window_frame(member, SIZES[0], upright=upright)
     ruler = whole.ruler.zoomed(6.0, whole.ruler.begin)
     shown = lay_out(member, replace(whole, ruler=ruler))
-    marked = {t.part.index for t in shown.texts if t.part is not None and t.part.kind == "segment"}
+    marked = {t.part.index for t in shown.texts if t.part is not None and t.part.kind == "mark"}
     inside = {i for i in range(25) if member.position[i] < ruler.last}
     assert marked == inside
     assert overlapping(shown.texts) == []

@@ -1,0 +1,1 @@
+"""The hand on the drawing: editors, symbols and gestures over the sheet."""

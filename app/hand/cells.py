@@ -1,0 +1,187 @@
+"""Which table cell holds what a part of the drawing shows, and which part shows a cell.
+
+The drawing is typed into through the tables' own cells, so that a value has one way in: the same reading of
+what is typed, the same reasons, drafts and undo steps. A label that stands for neighbours alike holds the
+cells of all of them. Loads are those of the case that is edited, whatever state is shown.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Hashable
+from dataclasses import dataclass
+from itertools import takewhile
+from typing import Final
+
+from app.drawing.shapes import LOADS, Part, PartKind
+from app.shown import Shown
+from solver.model import Project, SegmentLoad, end_of
+
+
+@dataclass(frozen=True, slots=True)
+class Cell:
+    """A cell: the table's key, the index of the record (not of the row), the column's key."""
+
+    table: str
+    record: int
+    column: str
+
+
+_SEGMENT_COLUMNS: Final[dict[PartKind, str]] = {
+    "length": "length",
+    "segment": "section",
+    "section": "section",
+    "mark": "mark",
+    "distributed": "load_start",
+    "distributed_end": "load_end",
+    "warmth": "heat",
+    "bedding": "bedding",
+}
+_JOINT_COLUMNS: Final[dict[PartKind, str]] = {
+    "joint": "support",
+    "support": "support",
+    "force": "force",
+    "movement": "movement",
+}
+# The order in which Tab goes from cell to cell of one segment or joint
+ORDER: Final[dict[str, tuple[str, ...]]] = {
+    "segments": ("length", "section", "material", "load_start", "load_end", "heat", "bedding", "mark"),
+    "joints": ("support", "force", "movement", "mark"),
+}
+
+
+def cell_of(part: Part, project: Project, case: int | None) -> Cell | None:
+    """The cell that holds what a part shows; None where no single one does.
+
+    `case` is the index of the case whose loads are edited, None where there is none. A lack of fit has its
+    cell in the loads on segments: None where no record, or several, hold one.
+    """
+    if part.kind in _SEGMENT_COLUMNS:
+        return Cell("segments", part.index, _SEGMENT_COLUMNS[part.kind])
+    if part.kind in _JOINT_COLUMNS:
+        return Cell("joints", part.index, _JOINT_COLUMNS[part.kind])
+    if case is None:
+        return None
+    if part.kind == "gravity":
+        return Cell("load_cases", case, "gravity")
+    records = loads_behind(part, project, case) if part.kind == "fit" else ()
+    return Cell("segment_loads", records[0], "lack_of_fit") if len(records) == 1 else None
+
+
+def cells_of(part: Part, project: Project, case: int | None) -> tuple[Cell, ...]:
+    """The cells of all neighbours that a label stands for; those of one part alone otherwise."""
+    marks = (Part(part.kind, index) for index in neighbours_alike(part, project, case))
+    found = (cell_of(one, project, case) for one in marks)
+    return tuple(cell for cell in found if cell is not None)
+
+
+def neighbours_alike(part: Part, project: Project, case: int | None) -> range:
+    """The segments from the part's own on that say the same as it; its own index alone for other parts."""
+    says = _SAYINGS.get(part.kind)
+    if says is None:
+        return range(part.index, part.index + 1)
+    told = [says(project, case, index) for index in range(part.index, len(project.segments))]
+    alike = len(list(takewhile(lambda other: other == told[0], told)))
+    return range(part.index, part.index + alike)
+
+
+def _section(project: Project, _case: int | None, index: int) -> Hashable:
+    return project.segments[index].section
+
+
+def _bedding(project: Project, _case: int | None, index: int) -> Hashable:
+    segment = project.segments[index]
+    return segment.bedding, end_of(segment.bedding, segment.bedding_end)
+
+
+def _warmth(project: Project, case: int | None, index: int) -> Hashable:
+    return tuple(
+        (load.temperature_start, end_of(load.temperature_start, load.temperature_end))
+        for load in _loads_on(project, case, index)
+    )
+
+
+def _fit(project: Project, case: int | None, index: int) -> Hashable:
+    return tuple(load.lack_of_fit for load in _loads_on(project, case, index))
+
+
+_SAYINGS: Final[dict[PartKind, Callable[[Project, int | None, int], Hashable]]] = {
+    "section": _section,
+    "bedding": _bedding,
+    "warmth": _warmth,
+    "fit": _fit,
+}
+
+
+def _loads_on(project: Project, case: int | None, segment: int) -> tuple[SegmentLoad, ...]:
+    if case is None:
+        return ()
+    mark = project.segments[segment].mark
+    return tuple(load for load in project.load_cases[case].segment_loads if load.segment == mark)
+
+
+def loads_behind(part: Part, project: Project, case: int | None) -> tuple[int, ...]:
+    """The records of the edited case behind a load on the drawing, by their index in its list."""
+    if case is None or part.kind not in LOADS or part.kind == "gravity":
+        return ()
+    loads = project.load_cases[case]
+    if part.kind in _JOINT_COLUMNS:
+        mark = project.joints[part.index].mark
+        return tuple(i for i, load in enumerate(loads.joint_loads) if load.joint == mark)
+    mark = project.segments[part.index].mark
+    own = [i for i, load in enumerate(loads.segment_loads) if load.segment == mark]
+    if part.kind == "fit":
+        return tuple(i for i in own if loads.segment_loads[i].lack_of_fit)
+    return tuple(own)
+
+
+def case_share(project: Project, shown: Shown, case: int | None) -> float:
+    """How much of the edited case is in what is shown: its factor there, 0 where it takes no part."""
+    if case is None:
+        return 0.0
+    name = project.load_cases[case].name
+    if shown.kind == "case":
+        return 1.0 if shown.name == name else 0.0
+    together = (c for c in project.combinations if shown.kind == "combination" and c.name == shown.name)
+    return next((float(c.factors.get(name, 0.0)) for c in together), 0.0)
+
+
+_SEGMENT_PARTS: Final[dict[str, PartKind]] = {
+    "length": "length",
+    "section": "section",
+    "mark": "mark",
+    "load_start": "distributed",
+    "load_end": "distributed_end",
+    "heat": "warmth",
+    "bedding": "bedding",
+    "lack_of_fit": "fit",
+}
+_JOINT_PARTS: Final[dict[str, PartKind]] = {"support": "support", "force": "force", "movement": "movement"}
+
+
+def part_of(cell: Cell, project: Project, case: int | None) -> Part | None:
+    """The part that shows a cell, in its plainest place; None for a cell that the drawing does not show."""
+    if cell.table == "segments":
+        return Part(_SEGMENT_PARTS.get(cell.column, "segment"), cell.record)
+    if cell.table == "joints":
+        return Part(_JOINT_PARTS.get(cell.column, "joint"), cell.record)
+    if cell.table == "load_cases":
+        return Part("gravity", 0) if cell.column == "gravity" and cell.record == case else None
+    return _part_of_load(cell, project, case)
+
+
+def _part_of_load(cell: Cell, project: Project, case: int | None) -> Part | None:
+    if case is None or cell.table not in ("segment_loads", "joint_loads"):
+        return None
+    records = getattr(project.load_cases[case], cell.table)
+    if not 0 <= cell.record < len(records):
+        return None
+    if cell.table == "joint_loads":
+        return _marked(project.joints, records[cell.record].joint, _JOINT_PARTS.get(cell.column, "joint"))
+    kind = _SEGMENT_PARTS.get(cell.column, "segment")
+    return _marked(project.segments, records[cell.record].segment, kind)
+
+
+def _marked(records: tuple[object, ...], mark: str, kind: PartKind) -> Part | None:
+    found = (i for i, record in enumerate(records) if getattr(record, "mark", None) == mark)
+    index = next(found, None)
+    return None if index is None else Part(kind, index)
