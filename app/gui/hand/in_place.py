@@ -40,7 +40,6 @@ class EditorFrame(QFrame):
         self.reason = QLabel()
         self.line = CellEditor(self, theme, entry.model.offers(entry.index))
         self.line.setAccessibleName(entry.caption)
-        self.line.setMinimumWidth(LEAST_WIDTH)
         self.reason.hide()
         for label in (self.caption, self.reason):
             label.setTextFormat(Qt.TextFormat.PlainText)
@@ -159,6 +158,8 @@ class InPlace(QObject):
         self._frame = frame = EditorFrame(self._sheet.viewport(), theme_for(self._sheet.palette()), entry)
         line = frame.line
         line.setText(entry.text)
+        room = line.fontMetrics().horizontalAdvance(entry.text or "") + 28
+        line.setMinimumWidth(min(max(LEAST_WIDTH, room), self._sheet.viewport().width() // 2))
         line.installEventFilter(self)
         for typed in (line.textEdited, line.offered):
             typed.connect(self._on_typed)
