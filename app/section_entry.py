@@ -3,10 +3,10 @@
     section := end [→ end]      end := [shape] dimension [(× | bore) dimension]      (dimension: `app.entry`)
 
 On a plain keyboard: d40, r20x30, 75->52. One unit at the end counts for every dimension. A bare number is an
-area where the section was one, else a diameter. Two without a shape could be a tube or a flat bar: they are
-taken as what the section was before, and refused where that says nothing, since a wrong guess would change
-the area silently. A wall becomes the inside diameter exactly, before anything is rounded; where that makes a
-long number of the wall, the bore is written instead.
+area where the section was one, else a diameter. Two without a shape are a rectangle where the section was
+one, else a tube, as the trade writes them; `taken_as` says which, so that no guess goes unsaid. A wall becomes
+the inside diameter exactly, before anything is rounded; where that makes a long number of the wall, the bore is
+written instead.
 """
 
 from __future__ import annotations
@@ -67,6 +67,8 @@ def parse_section(text: str, system: UnitSystemName, previous: AnySection | None
         return previous
     ends = _read_ends(text.strip())
     shape = _shape_of(ends, previous)
+    if _is_bare_pair(ends) and shape == "tube":
+        _refuse_bare_flat(ends, _sizes(ends, "size", system))
     for end in ends:
         _refuse_wrong_count(end, shape)
     sizes = _sizes(ends, "area" if shape == "area" else "size", system)
@@ -110,11 +112,26 @@ def _shape_of(ends: Sequence[_End], previous: AnySection | None) -> _Shape:
 
 def _bare_pair(end: _End, previous: AnySection | None) -> _Shape:
     """What two dimensions without a shape are."""
-    if end.bore or isinstance(previous, TubeSection):
-        return "tube"
-    if isinstance(previous, RectangleSection):
-        return "rectangle"
-    raise refusal("section_ambiguous", found="x".join(end.dimensions)[:30])
+    return "rectangle" if isinstance(previous, RectangleSection) and not end.bore else "tube"
+
+
+def _is_bare_pair(ends: Sequence[_End]) -> bool:
+    """Whether two dimensions are given without a word or sign of what they are."""
+    return len(ends[0].dimensions) == 2 and not any(end.shape or end.bore for end in ends)
+
+
+def _refuse_bare_flat(ends: Sequence[_End], sizes: Sequence[Sequence[Fraction]]) -> None:
+    """A bare "20x30" can be no tube: say how a rectangle is typed instead."""
+    for end, dimensions in zip(ends, sizes, strict=True):
+        if len(dimensions) == 2 and dimensions[0] < 2 * dimensions[1]:
+            raise refusal("section_flat", found="x".join(end.dimensions)[:30])
+
+
+def taken_as(text: str, previous: AnySection | None) -> Literal["tube", "rectangle", ""]:
+    """What a valid text with a bare pair, such as 60x5, was taken as; empty where it needed no guess."""
+    if not _is_bare_pair(_read_ends(text.strip())):
+        return ""
+    return "rectangle" if isinstance(previous, RectangleSection) else "tube"
 
 
 def _refuse_wrong_count(end: _End, shape: _Shape) -> None:

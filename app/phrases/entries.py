@@ -10,7 +10,7 @@ from app.words import later, tr
 EntryRule: TypeAlias = Literal[
     "empty", "too_long", "too_deep", "not_a_number", "two_decimal_signs", "two_numbers", "number_missing",
     "bracket_open", "bracket_stray", "zero_divisor", "too_large", "too_small", "unknown_unit", "near_unit",
-    "no_unit", "section_unknown", "section_ambiguous", "section_dimensions", "section_units",
+    "no_unit", "section_unknown", "section_flat", "section_dimensions", "section_units",
     "wall_too_thick", "bore_too_wide", "size_not_positive", "section_change",
 ]  # fmt: skip
 
@@ -35,7 +35,10 @@ ENTRIES: Final[Mapping[EntryRule, str]] = {
     "section_unknown": later(
         "“{found}” is no section; type one such as d40, d60x5 (a tube), r20x30 or A 1200"
     ),
-    "section_ambiguous": later("A tube or a rectangle? Type d{found} or r{found}"),
+    "section_flat": later(
+        "“{found}” is taken as outside × wall of a tube, and the wall is thicker than half of it;"
+        " type r{found} for a rectangle"
+    ),
     "section_dimensions": later("“{found}” needs {wanted} dimensions, such as {example}"),
     "section_units": later("Give the unit once, at the end, or with every dimension"),
     "wall_too_thick": later("The wall is thicker than half the outside diameter"),

@@ -8,7 +8,7 @@ from hypothesis import strategies as st
 from msgspec import UNSET
 
 from app.entry import EntryError
-from app.section_entry import parse_section, section_label, section_text
+from app.section_entry import parse_section, section_label, section_text, taken_as
 from app.units import SYSTEM_NAMES
 from solver.model import AreaSection, RectangleSection, RoundSection, TubeSection, end_of
 from tests.strategies import area_sections, rectangle_sections, round_sections, tube_sections
@@ -56,7 +56,8 @@ def test_spellings(text: str, section: object) -> None:
         ("⌀", "is no section"),
         ("beam 200", "is no section"),
         ("⌀1→2→3", "is no section"),
-        ("60x5", "A tube or a rectangle?"),
+        ("20x30", "type r20x30 for a rectangle"),
+        ("60x5->20x30", "type r20x30 for a rectangle"),
         ("▭20", "needs 2 dimensions"),
         ("⌀60×5→⌀50", "needs 2 dimensions"),
         ("⌀60×5×3", "needs 2 dimensions"),
@@ -81,6 +82,9 @@ def test_what_is_refused_is_said_in_words(text: str, said: str) -> None:
 @pytest.mark.parametrize(
     ("text", "previous", "section"),
     [
+        ("60x5", None, TUBE),
+        ("60x5", RoundSection(diameter=1.0), TUBE),
+        ("60x5", AreaSection(area=1.0), TUBE),
         ("60x5", TubeSection(outer=1.0, inner=0.5), TUBE),
         ("60x5", RectangleSection(width=1.0, depth=1.0), FLAT),
         ("1500", AreaSection(area=1.0, second_moment=2.0), AreaSection(area=0.0015, second_moment=2.0)),
@@ -90,6 +94,30 @@ def test_what_is_refused_is_said_in_words(text: str, said: str) -> None:
 )
 def test_bare_numbers_are_what_the_section_was(text: str, previous: object, section: object) -> None:
     assert parse_section(text, MM, previous) == section
+
+
+@pytest.mark.parametrize(
+    ("text", "previous", "said"),
+    [
+        ("60x5", TUBE, "tube"),
+        ("60 × 5 mm", None, "tube"),
+        ("60x5->50x5", RoundSection(diameter=1.0), "tube"),
+        ("60x5", FLAT, "rectangle"),
+        ("d60x5", FLAT, ""),
+        ("60 bore 50", FLAT, ""),
+        ("40", TUBE, ""),
+    ],
+)
+def test_what_a_bare_pair_was_taken_as_is_known(text: str, previous: object, said: str) -> None:
+    assert taken_as(text, previous) == said
+
+
+@given(st.integers(1, 900), st.integers(1, 900), st.sampled_from([None, TUBE, FLAT]))
+def test_a_bare_pair_is_what_it_is_said_to_be(first: int, second: int, previous: object) -> None:
+    text = f"{first}x{second}"
+    shape = {"tube": "d", "rectangle": "r"}[taken_as(text, previous)]
+    if shape == "r" or 2 * second <= first:
+        assert parse_section(text, MM, previous) == parse_section(shape + text, MM)
 
 
 SECTIONS = st.one_of(area_sections(), round_sections(), tube_sections(), rectangle_sections())

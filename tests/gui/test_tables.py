@@ -26,10 +26,12 @@ from solver.model import (
     FixedSupport,
     Limits,
     LoadCase,
+    RectangleSection,
     RelativeLimit,
     RoundSection,
     SegmentLoad,
     SpringSupport,
+    TubeSection,
 )
 from tests.gui.hand import begin, cell, editor, enter, go_to, text_at
 from tests.members import Part, case, member, round_bar
@@ -179,6 +181,22 @@ def test_a_typed_area_makes_the_section_known_by_its_area_alone_and_says_so(tabl
     assert document.project.segments[0].section == AreaSection(area=0.0012)
 
 
+@pytest.mark.parametrize(
+    ("before", "section", "told"),
+    [
+        ("d40", TubeSection(outer=0.06, inner=0.05), "“60x5” is taken as a tube, outside × wall"),
+        ("r20x30", RectangleSection(width=0.06, depth=0.005), "“60x5” is taken as a rectangle"),
+    ],
+)
+def test_two_bare_dimensions_say_what_they_were_taken_as(pane, table, document, before, section, told):
+    enter(table, 1, "section", before)
+    lines = []
+    pane.noted.connect(lines.append)
+    enter(table, 1, "section", "60x5")
+    assert document.project.segments[0].section == section
+    assert lines[-1].startswith(told)
+
+
 def test_looking_at_the_area_changes_nothing(table, document):
     go_to(table, 1, "area")
     QTest.keyClick(table, KEY.Key_F2)
@@ -189,13 +207,16 @@ def test_looking_at_the_area_changes_nothing(table, document):
 
 def test_a_shared_materials_modulus_becomes_the_rows_own(qtbot, qapp, view):
     project = edits.set_value(shaft(), ("segments", 1, "material"), "of A")
+    project = edits.set_value(project, ("materials", 0, "allowable_tension"), 160e6)
     document = Document(project)
     pane = TablesPane(document, view, LIGHT)
     qtbot.addWidget(pane)
     table = pane.views["segments"]
     model = table.table_model
-    with qtbot.waitSignal(model.noted, check_params_cb=lambda note: "B" in note and "of A B" in note):
+    told = "B now has a material of its own, of A B; its allowable stresses are those of of A: verify"
+    with qtbot.waitSignal(model.noted, check_params_cb=lambda note: note == told):
         model.setData(cell(table, 2, "modulus"), "70000")
+    assert document.project.materials[-1].allowable_tension == 160e6
     moduli = {material.name: material.modulus for material in document.project.materials}
     assert document.project.segments[1].material == "of A B"
     assert (moduli["of A B"], moduli["of A"]) == (7e10, 2.1e11)

@@ -34,7 +34,14 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
     own = replace(project.materials[place], name=name, modulus=modulus)
     with_own = edits.add_record(project, ("materials",), own)
     note = tr("{mark} now has a material of its own, {name}").format(mark=segment.mark, name=name)
+    if has_allowables(own):
+        note += tr("; its allowable stresses are those of {name}: verify").format(name=segment.material)
     return Change(edits.set_value(with_own, ("segments", index, "material"), name), note)
+
+
+def has_allowables(material: Material) -> bool:
+    """Whether an allowable stress is given for it."""
+    return not (material.allowable_tension is UNSET and material.allowable_compression is UNSET)
 
 
 def free_name(wished: str, taken: set[str]) -> str:

@@ -19,13 +19,13 @@ from app.gui.tables.column import Change, Figures, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
-from app.section_entry import parse_section
+from app.section_entry import parse_section, taken_as
 from app.support_entry import parse_support, support_entry, support_text
 from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value, utilisation_text
 from app.words import tr
 from solver.checks import PASS_MARGIN
-from solver.model import AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
+from solver.model import AnySection, AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
 from solver.sections import area_coefficients
 
 
@@ -101,8 +101,19 @@ def end_areas(row: SegmentRow) -> tuple[float, float]:
 
 def put_section(project: Project, index: int, text: str, sight: Sight) -> Change:
     """The old section settles what bare numbers are, and keeps second moments that no text shows."""
-    section = parse_section(text, sight.system, project.segments[index].section)
-    return Change(edits.set_value(project, ("segments", index, "section"), section))
+    old = project.segments[index].section
+    section = parse_section(text, sight.system, old)
+    return Change(edits.set_value(project, ("segments", index, "section"), section), _guess(text, old))
+
+
+def _guess(text: str, old: AnySection) -> str:
+    """What a bare "60x5" was taken as, and how to type the other."""
+    notes = {
+        "tube": tr("“{text}” is taken as a tube, outside × wall; type r{text} for a rectangle"),
+        "rectangle": tr("“{text}” is taken as a rectangle; type d{text} for a tube, outside × wall"),
+        "": "",
+    }
+    return notes[taken_as(text, old)].format(text=text.strip())
 
 
 def _with_second_moments(section: AreaSection, old: AreaSection) -> AreaSection:
