@@ -4,9 +4,9 @@
 
 On a plain keyboard: d40, r20x30, 75->52. One unit at the end counts for every dimension. A bare number is an
 area where the section was one, else a diameter. Two without a shape are a rectangle where the section was
-one, else a tube, as the trade writes them; `taken_as` says which, so that no guess goes unsaid. A wall becomes
-the inside diameter exactly, before anything is rounded; where that makes a long number of the wall, the bore is
-written instead.
+one, else a tube, as the trade writes them; `taken_as` says which, so that no guess goes unsaid. A wall
+becomes the inside diameter exactly, before anything is rounded; where that makes a long number of the wall,
+the bore is written instead.
 """
 
 from __future__ import annotations

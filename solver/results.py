@@ -82,6 +82,7 @@ class Results:
     checks: tuple[Check, ...]
     verdict: Verdict
     governing: Check | None
+    segment_mass: FloatArray  # (n,) kg
     mass: float  # kg
 
     @property

@@ -56,6 +56,7 @@ def _results(
     limits = allowables(project, states)
     stress_checks = check_stresses(stress, force, solution.force_bound, limits)
     checks = Checker(project, states, solution, position, stress_checks).checks()
+    segment_mass = frozen(_segment_mass(chain))
     return Results(
         project=project,
         chain=chain,
@@ -68,7 +69,8 @@ def _results(
         checks=checks,
         verdict=verdict_of(checks),
         governing=governing_of(checks),
-        mass=_mass(chain),
+        segment_mass=segment_mass,
+        mass=float(np.sum(segment_mass)),
     )
 
 
@@ -142,6 +144,7 @@ def _segment_results(
     )
 
 
-def _mass(chain: Chain) -> float:
-    """∫ ρ A dx in kg; the mean of an area is that of its Bernstein coefficients."""
-    return float(np.sum(chain.density * chain.length * np.mean(chain.area, axis=-1)))
+def _segment_mass(chain: Chain) -> FloatArray:
+    """∫ ρ A dx of each segment (n,) in kg; the mean of an area is that of its Bernstein coefficients."""
+    masses: FloatArray = chain.density * chain.length * np.mean(chain.area, axis=-1)
+    return masses

@@ -37,7 +37,8 @@ MENUS: Final = (later("&File"), later("&Edit"), later("&Member"), later("&View")
 RECENT: Final = "recent"  # submenus filled when they open
 SAMPLES: Final = "samples"
 TYPICAL: Final = "typical"
-SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL)
+COLUMNS: Final = "columns"
+SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS)
 
 COMMANDS: Final[tuple[Command, ...]] = (
     Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
@@ -75,6 +76,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("reverse", "&Member", later("&Reverse the member")),
     SEPARATOR,
     Command(TYPICAL, "&Member", later("Add &typical material")),
+    Command(COLUMNS, "&View", later("&Columns of the table")),
+    SEPARATOR,
     Command("next_pane", "&View", later("&Next pane"), "F6"),
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
     SEPARATOR,

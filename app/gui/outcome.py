@@ -100,8 +100,17 @@ def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figur
         displacement=nothing if state is None else results.solution.joint_displacement[state],
         reaction=nothing if state is None else results.solution.reaction[state],
         mass=results.mass,
+        segment_mass=results.segment_mass,
+        force=_between(results, state, results.segments.force_min, results.segments.force_max),
+        stress=_between(results, state, results.segments.stress_min, results.segments.stress_max),
         current=current,
     )
+
+
+def _between(results: Results, state: int | None, least: FloatArray, most: FloatArray) -> FloatArray:
+    """The least and the largest of each segment (n, 2) in the state, or over the checked ones."""
+    states = [i for i, one in enumerate(results.states) if one.checked] if state is None else [state]
+    return np.column_stack((least[states].min(axis=0), most[states].max(axis=0)))
 
 
 def _index(results: Results, shown: Shown) -> int | None:

@@ -65,11 +65,13 @@ class Panes(QWidget):
         self.down.setSizes([480, 230])
         for key, splitter in (("across", self.across), ("down", self.down)):
             splitter.restoreState(store.bytes_of(key))
+        self._tables.restore(store)
 
     def remember(self, store: Settings) -> None:
         """Keep the sizes for the next time."""
         for key, splitter in (("across", self.across), ("down", self.down)):
             store.set_bytes(key, splitter.saveState())
+        self._tables.remember(store)
 
     def go_to(self, by: int) -> None:
         """Give the keyboard to the next pane, or to the one before."""

@@ -76,6 +76,15 @@ class Settings:
         """Remember the display units."""
         self._store.setValue("units", system)
 
+    def columns(self, table: str) -> tuple[str, ...]:
+        """The columns of a table that are shown or hidden other than at first."""
+        stored = self._store.value(f"columns/{table}", [])
+        return tuple(map(str, stored if isinstance(stored, list) else [stored]))
+
+    def set_columns(self, table: str, keys: tuple[str, ...]) -> None:
+        """Remember them."""
+        self._store.setValue(f"columns/{table}", list(keys))
+
     def sync(self) -> None:
         """Write what has changed to the file."""
         self._store.sync()

@@ -10,7 +10,7 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
 from PySide6.QtWidgets import QMainWindow
 
-from app.gui.actions import RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
+from app.gui.actions import COLUMNS, RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
 from app.gui.against import AgainstBar
 from app.gui.comparing import Comparing
 from app.gui.document import Document
@@ -30,6 +30,7 @@ from app.gui.show import Showing
 from app.gui.status_line import StatusLine
 from app.gui.style import style_sheet
 from app.gui.tables.pane import TablesPane
+from app.gui.tables.shown_columns import ColumnsMenu
 from app.gui.theme import theme_for
 from app.gui.title_block import TitleBlockDialog
 from app.gui.top_bar import TopBar
@@ -82,7 +83,12 @@ class Window(QMainWindow):
         self.recent_menu = RecentMenu(self.store, self.files.open_path, self)
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
-        menus = {RECENT: self.recent_menu, SAMPLES: self.samples_menu, TYPICAL: self.typical_menu}
+        menus = {
+            RECENT: self.recent_menu,
+            SAMPLES: self.samples_menu,
+            TYPICAL: self.typical_menu,
+            COLUMNS: ColumnsMenu(self.tables, self),
+        }
         fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)
         self.panes = Panes(self.top_bar, self.sheet, self.findings, self.tables, self.status)
@@ -99,9 +105,9 @@ class Window(QMainWindow):
             "quit": lambda: self.close() and None,
             "undo": self.on_undo,
             "redo": self.on_redo,
-            "copy": lambda: self.tables.current_view().copy(),
-            "paste": lambda: self.tables.current_view().paste(),
-            "fill_down": lambda: self.tables.current_view().fill_down(),
+            "copy": lambda: self.tables.blocks().copy(),
+            "paste": lambda: self.tables.blocks().paste(),
+            "fill_down": lambda: self.tables.blocks().fill_down(),
             "clear": lambda: self.tables.current_view().clear_selected(),
             "delete_rows": self.edits.delete_rows,
             "insert_before": self.edits.insert_before,

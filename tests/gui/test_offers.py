@@ -121,14 +121,14 @@ def test_the_adding_row_of_materials_takes_a_name_of_the_list(pane, document, to
 
 def test_a_paste_says_that_it_brought_typical_values(pane, table, document, told):
     QGuiApplication.clipboard().setText("Brass\nCopper")
-    table.paste()
+    table.blocks.paste()
     assert made_of(document) == ["Brass", "Copper"]
     assert told == [ADDED.format("Brass") + " (and 1 thing more)"]
     pane.tabs.setCurrentIndex(4)
     view = pane.views["materials"]
     view.setCurrentIndex(view.table_model.index(view.table_model.rowCount() - 1, 0))
     QGuiApplication.clipboard().setText("Titanium\t114000\nGunmetal\t95000")
-    view.paste()
+    view.blocks.paste()
     assert told[1:] == [ADDED.format("Titanium")], "Gunmetal's modulus is its own, not that of the row above"
 
 

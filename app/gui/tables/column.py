@@ -42,8 +42,9 @@ class Figures:
     """What the tables show of the results of the state that is looked at; empty arrays where there is none.
 
     `utilisation` (n,), NaN where no check was made; `governs` (n,) the sign of the stress that governs it;
-    `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support. `current` is
-    False for results of an earlier edit.
+    `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support.
+    `segment_mass` (n,) in kg; `force` and `stress` (n, 2), the least and the largest within the segment.
+    `current` is False for results of an earlier edit.
     """
 
     utilisation: FloatArray = field(default_factory=lambda: np.zeros(0))
@@ -51,6 +52,9 @@ class Figures:
     displacement: FloatArray = field(default_factory=lambda: np.zeros(0))
     reaction: FloatArray = field(default_factory=lambda: np.zeros(0))
     mass: float | None = None
+    segment_mass: FloatArray = field(default_factory=lambda: np.zeros(0))
+    force: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
+    stress: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
     current: bool = True
 
     @staticmethod
@@ -111,6 +115,7 @@ class Column:
     of_case: bool = False  # the cell belongs to the load case that is edited
     named_by_user: bool = False  # the title is the user's own word
     offers: Offers | None = None  # names for a cell that refers to something
+    at_first: bool = True  # whether it is shown before anyone has chosen
 
     @property
     def words(self) -> str:

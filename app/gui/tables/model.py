@@ -33,6 +33,9 @@ class TableModel(RowsModel):
         super().__init__(table, document, sight, parent)
         self._figures = Figures()
         self._lit: frozenset[int] = frozenset()
+        self.total_column = (
+            len(self._columns) // 2
+        )  # where the adding row's second half begins, with the totals
 
     def set_figures(self, figures: Figures) -> None:
         """Show these results; touches the columns of results only."""
@@ -95,11 +98,6 @@ class TableModel(RowsModel):
         if column == self.total_column and self.table.total is not None:
             return self.table.total(self._document.project, self._figures, self._sight)
         return ""
-
-    @property
-    def total_column(self) -> int:
-        """Where the adding row's second half begins, with the totals."""
-        return len(self._columns) // 2
 
     def _error(self, index: Index) -> str:
         draft = self.draft(index)
@@ -237,13 +235,13 @@ class TableModel(RowsModel):
         """A cell's own text with all digits; None where it is not for typing."""
         return None if self.is_adding(row) else self.entry(self.index(row, column))
 
-    def put_block(self, top: int, left: int, texts: Sequence[Texts], name: str) -> None:
-        """Type a block of texts into the cells from `top`, `left` on, rows past the end added: one undo step.
+    def put_block(self, top: int, texts: Sequence[Texts], name: str) -> None:
+        """Type a block of texts into the rows from `top` on, rows past the end added: one undo step.
 
         What is no valid entry becomes a draft of its cell; cells that are not for typing are passed over.
         """
         block = Block(self, self._document.snapshot)
-        self._document.commit_snapshot(block.typed(top, left, texts), name)
+        self._document.commit_snapshot(block.typed(top, texts), name)
         if block.note:
             self.noted.emit(block.note)
 

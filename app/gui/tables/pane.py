@@ -7,6 +7,8 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxL
 
 from app.gui.choice import Choice
 from app.gui.document import Document, Snapshot
+from app.gui.settings import Settings
+from app.gui.tables.blocks import Blocks
 from app.gui.tables.column import Figures, Sight, Table
 from app.gui.tables.combinations import COMBINATIONS
 from app.gui.tables.joints import JOINTS
@@ -102,6 +104,16 @@ class TablesPane(QWidget):
         whole.setContentsMargins(0, 0, 0, 0)
         whole.addWidget(self.tabs)
 
+    def restore(self, store: Settings) -> None:
+        """The columns chosen last time."""
+        for key, view in self.views.items():
+            view.columns_choice.restore(store.columns(key))
+
+    def remember(self, store: Settings) -> None:
+        """Keep the choice of columns for the next time."""
+        for key, view in self.views.items():
+            store.set_columns(key, view.columns_choice.turned)
+
     # What is shown
 
     @property
@@ -115,6 +127,10 @@ class TablesPane(QWidget):
         shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
         last = page.focusWidget()
         return next((view for view in shown if view is last or view.isAncestorOf(last)), shown[0])
+
+    def blocks(self) -> Blocks:
+        """The commands on the chosen block of that table."""
+        return self.current_view().blocks
 
     def show_record(self, key: str, record: int) -> None:
         """Bring a record's row to the front, with the keyboard in it."""
@@ -150,13 +166,13 @@ class TablesPane(QWidget):
         self._sight = sight
         for view in self.views.values():
             view.table_model.set_sight(sight)
-            view.widen_if_needed()
+            view.widths.widen_if_needed()
 
     def set_figures(self, figures: Figures) -> None:
         """Show results in the columns that have them."""
         for view in self.views.values():
             view.table_model.set_figures(figures)
-            view.widen_for_figures()
+            view.widths.widen_for_figures()
 
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""

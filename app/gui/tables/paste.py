@@ -16,7 +16,7 @@ from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import RowsModel
 from app.words import tr, trn
 
-Texts = Sequence[str | None]  # None: nothing for that cell
+Texts = Mapping[int, str | None]  # by column; None: nothing for that cell
 
 
 class Block:
@@ -29,10 +29,10 @@ class Block:
         self._refused: list[Draft] = []  # rows that could not be added
         self._notes: dict[str, None] = {}  # of the cells and rows, each once, in order
 
-    def typed(self, top: int, left: int, block: Sequence[Texts]) -> Snapshot:
-        """The document with the texts typed from the cell `top`, `left` on."""
+    def typed(self, top: int, block: Sequence[Texts]) -> Snapshot:
+        """The document with the texts typed from the row `top` on."""
         for row, texts in enumerate(block, top):
-            self._type_row(row, dict(enumerate(texts, left)))
+            self._type_row(row, texts)
         if self._refused:
             self._drafts[self._adding_place()] = self._refused[0]
         return Snapshot(self._project, MappingProxyType(self._drafts))
@@ -51,7 +51,7 @@ class Block:
             return first
         return first + trn(" (and {count} thing more)", " (and {count} things more)", more)
 
-    def _type_row(self, row: int, texts: Mapping[int, str | None]) -> None:
+    def _type_row(self, row: int, texts: Texts) -> None:
         """One row; past the end, a record is added by the column that can, and the others find its row."""
         records = self._model.table.rows(self._project, self._model.sight)
         row = min(row, len(records))  # rows that were refused leave no gap
@@ -93,7 +93,7 @@ class Block:
         records = model.table.rows(self._project, model.sight)
         return (*model.table.records(model.sight), model.record_of(len(records)), model.columns[0].key)
 
-    def _add(self, texts: Mapping[int, str | None]) -> bool:
+    def _add(self, texts: Texts) -> bool:
         """Add a record by the text in the column that can; whether there is one now."""
         adding = self._model.table.adding
         if adding is None or not any(texts.values()):

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Callable
 from dataclasses import dataclass
 from math import fsum
-from typing import Any
+from typing import Any, Literal
 
 from msgspec import UNSET
 
@@ -24,6 +24,7 @@ from app.support_entry import parse_support, support_entry, support_text
 from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value, utilisation_text
 from app.words import tr
+from solver.arrays import FloatArray
 from solver.checks import PASS_MARGIN
 from solver.model import AnySection, AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
 from solver.sections import area_coefficients
@@ -272,6 +273,25 @@ def utilisation(index: int, figures: Figures, _sight: Sight) -> str:
     """The utilisation in words, with the digits that its verdict needs."""
     value = figures.value(figures.utilisation, index)
     return "" if value is None else utilisation_text(value, "pass" if value <= 1 + PASS_MARGIN else "fail")
+
+
+def mass(index: int, figures: Figures, sight: Sight) -> str:
+    """The mass of the segment."""
+    value = figures.value(figures.segment_mass, index)
+    return "" if value is None else format_value(value, "mass", sight.system, 3)
+
+
+def between(name: Literal["force", "stress"]) -> Callable[[int, Figures, Sight], str]:
+    """The least and the largest force or stress within the segment in the shown state."""
+
+    def text(index: int, figures: Figures, sight: Sight) -> str:
+        values: FloatArray = getattr(figures, name)
+        if not 0 <= index < len(values):
+            return ""
+        ends = [format_value(float(value), name, sight.system, 3) for value in values[index]]
+        return ends[0] if ends[0] == ends[1] else "…".join(ends)
+
+    return text
 
 
 def bar(index: int, figures: Figures) -> tuple[float, float] | None:

@@ -15,10 +15,12 @@ from app.gui.tables.segment_cells import (
     SegmentRow,
     bar,
     bedding_entry,
+    between,
     end_areas,
     entry_of_support,
     heat_entry,
     in_segments,
+    mass,
     one_end,
     put_area,
     put_bedding,
@@ -157,6 +159,11 @@ COLUMNS = (
         optional=True,
         width=17,
     ),
+    Column("mass", later("Mass"), quantity="mass", figure=mass, width=7, at_first=False),
+    Column(
+        "force", later("Axial force"), quantity="force", figure=between("force"), width=13, at_first=False
+    ),
+    Column("stress", later("Stress"), quantity="stress", figure=between("stress"), width=13, at_first=False),
     Column("utilisation", later("Utilisation"), figure=utilisation, bar=bar, width=6),
 )
 

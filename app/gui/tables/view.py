@@ -6,10 +6,8 @@ can be empty, Escape restores.
 
 from __future__ import annotations
 
-from collections.abc import Iterable
-
 from PySide6.QtCore import QItemSelection, QItemSelectionModel, Qt, Signal
-from PySide6.QtGui import QGuiApplication, QKeyEvent, QResizeEvent, QShowEvent
+from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QAbstractItemView,
@@ -18,15 +16,16 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_editor import CellEditor
-from app.gui.tables.clipboard import block_of, block_text, tiled
-from app.gui.tables.delegate import BAR_WIDTH, ENTER, MARGIN, CellDelegate
+from app.gui.tables.delegate import ENTER, MARGIN, CellDelegate
 from app.gui.tables.model import TableModel
+from app.gui.tables.shown_columns import ShownColumns
+from app.gui.tables.widths import Widths
 from app.gui.theme import Theme
 from app.words import tr
 
 ROW_HEIGHT = 26
-MEASURED = 60  # rows whose texts are measured for the widths
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
 
@@ -43,12 +42,14 @@ class TableView(QTableView):
         self._cells.closeEditor.connect(self.on_editor_closed)
         self.setItemDelegate(self._cells)
         self.setModel(model)
+        self.widths, self.blocks = Widths(self), Blocks(self)
         self.setAccessibleName(tr(model.table.title))
         self.horizontalHeader().setAccessibleName(
             tr("Columns of {table}").format(table=tr(model.table.title))
         )
         self._dress()
         self.set_theme(theme)
+        self.columns_choice = ShownColumns(self)
         for came in (model.rowsInserted, model.rowsRemoved, model.columnsInserted, model.columnsRemoved):
             came.connect(self.on_shape_changed)
         model.modelReset.connect(self.on_shape_changed)
@@ -88,13 +89,18 @@ class TableView(QTableView):
 
     # The shape of the table
 
+    def shown_columns(self) -> list[int]:
+        """The columns that are not hidden, in order; the first one always is among them."""
+        return [place for place in range(self.table_model.columnCount()) if not self.isColumnHidden(place)]
+
     def on_shape_changed(self) -> None:
-        """Span the adding row's hint and totals, and share the width out."""
-        self.share_width()
-        model = self.table_model
+        """Span the adding row's hint and totals over the columns that are shown, and share the width out."""
+        self.columns_choice.hide_others()
+        self.widths.share()
+        model, shown = self.table_model, self.shown_columns()
         self.clearSpans()
         last, columns = model.rowCount() - 1, model.columnCount()
-        half = model.total_column
+        half = model.total_column = shown[len(shown) // 2] if len(shown) > 1 else columns
         if model.table.adding is None:
             return
         if model.table.total is None:
@@ -107,55 +113,15 @@ class TableView(QTableView):
         if count > 1:  # Qt complains about a span of one cell
             self.setSpan(row, column, 1, count)
 
-    def share_width(self) -> None:
-        """Give each column what its texts need, towards its usual width, and then more in proportion."""
-        needed = self._needed_widths()
-        usual = [max(width, self._usual_width(place)) for place, width in enumerate(needed)]
-        room, least, most = self.viewport().width(), sum(needed), sum(usual)
-        grown = min(max((room - least) / max(1, most - least), 0.0), 1.0)
-        share = min(max(room / max(1, most), 1.0), 3.0)
-        for place, (need, wish) in enumerate(zip(needed, usual, strict=True)):
-            self.setColumnWidth(place, int((need + grown * (wish - need)) * share))
-
-    def widen_if_needed(self) -> None:
-        """After a change: share the width out anew only where a text would be cut off."""
-        self._widen(range(self.table_model.columnCount()))
-
-    def widen_for_figures(self) -> None:
-        """The same after new results, which change their own columns only."""
-        self._widen(p for p, column in enumerate(self.table_model.columns) if column.figure is not None)
-
-    def _widen(self, places: Iterable[int]) -> None:
-        if self.isVisible() and any(self.columnWidth(place) < self._needed_width(place) for place in places):
-            self.share_width()
-
-    def _usual_width(self, place: int) -> int:
-        return self.table_model.columns[place].width * self.fontMetrics().horizontalAdvance("0") + 2 * MARGIN
-
-    def _needed_widths(self) -> list[int]:
-        return [self._needed_width(place) for place in range(self.table_model.columnCount())]
-
-    def _needed_width(self, place: int) -> int:
-        """Wide enough for the heading and the texts, but no text takes more than three usual widths."""
-        model, metrics = self.table_model, self.fontMetrics()
-        texts = [str(model.index(row, place).data()) for row in range(min(model.record_rows, MEASURED))]
-        widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
-        column = model.columns[place]
-        if column.figure is not None:  # room for results before they are there, so that nothing jumps
-            widest = max(widest, column.width * metrics.horizontalAdvance("0"))
-        bar = BAR_WIDTH + 10 if column.bar is not None else 0
-        heading = max(metrics.horizontalAdvance(text) for text in model.heading(place))
-        return max(min(widest, 3 * self._usual_width(place)) + bar, heading) + 2 * MARGIN + 2
-
     def showEvent(self, event: QShowEvent) -> None:
         """Texts may have changed while the table was hidden."""
         super().showEvent(event)
-        self.widen_if_needed()
+        self.widths.widen_if_needed()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The width is shared out anew."""
         super().resizeEvent(event)
-        self.share_width()
+        self.widths.share()
 
     # Keys
 
@@ -181,8 +147,8 @@ class TableView(QTableView):
             return True
         if not forward:
             return current.row() == 0 and current.column() == 0
-        reach = current.column() + self.columnSpan(current.row(), current.column())
-        return current.row() == model.rowCount() - 1 and reach >= model.columnCount() - 1
+        reach = current.column() + self.columnSpan(current.row(), current.column()) - 1
+        return current.row() == model.rowCount() - 1 and reach >= self.shown_columns()[-1]
 
     def _leave(self, *, forward: bool) -> None:
         self.setTabKeyNavigation(False)  # with navigation on, focusNextPrevChild comes back here
@@ -214,49 +180,6 @@ class TableView(QTableView):
         """Empty the selected cells that may be empty, as one undo step."""
         self.commit_open_editor()
         self.table_model.clear(self.selectedIndexes())
-
-    # Blocks
-
-    def _selected_block(self) -> tuple[int, int, int, int] | None:
-        """Top, left, rows and columns of the selection's bounding block."""
-        chosen = self.selectedIndexes()
-        if not chosen:
-            return None
-        rows, columns = [i.row() for i in chosen], [i.column() for i in chosen]
-        return min(rows), min(columns), max(rows) - min(rows) + 1, max(columns) - min(columns) + 1
-
-    def copy(self) -> None:
-        """The selected block to the clipboard, with all digits; the row that adds another stays behind."""
-        self.commit_open_editor()
-        block = self._selected_block()
-        if block is None:
-            return
-        top, left, rows, columns = block
-        texts = [
-            [self.table_model.text_to_copy(row, column) for column in range(left, left + columns)]
-            for row in range(top, min(top + rows, self.table_model.record_rows))
-        ]
-        QGuiApplication.clipboard().setText(block_text(texts))
-
-    def paste(self) -> None:
-        """The clipboard's block from the selection's corner on, one undo step."""
-        self.commit_open_editor()
-        block, selected = block_of(QGuiApplication.clipboard().text()), self._selected_block()
-        if block and selected is not None:
-            top, left, rows, columns = selected
-            self.table_model.put_block(top, left, tiled(block, rows, columns), tr("Paste"))
-
-    def fill_down(self) -> None:
-        """The selection's first row into the rows below it, one undo step; no row is added."""
-        self.commit_open_editor()
-        selected = self._selected_block()
-        if selected is None:
-            return
-        top, left, rows, columns = selected
-        below = min(top + rows, self.table_model.record_rows) - top - 1
-        if below > 0:
-            first = [self.table_model.text_to_fill(top, column) for column in range(left, left + columns)]
-            self.table_model.put_block(top + 1, left, [first] * below, tr("Fill down"))
 
     # Selection
 

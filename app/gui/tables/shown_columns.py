@@ -1,0 +1,92 @@
+"""Which columns of a table are shown: those of the table's own choice until a person takes another.
+
+Only what differs from the table's own choice is remembered, so that a column that comes later is seen. The
+first column always stays, and so do columns named by the user: a combination's factors stand in them.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from typing import TYPE_CHECKING
+
+from PySide6.QtCore import QPoint, Qt
+from PySide6.QtWidgets import QMenu, QWidget
+
+from app.gui.tables.column import Column
+from app.words import tr
+
+if TYPE_CHECKING:
+    from app.gui.tables.pane import TablesPane
+    from app.gui.tables.view import TableView
+
+
+class ShownColumns:
+    """The choice for one table, offered in the menu of its headings and in View > Columns."""
+
+    def __init__(self, view: TableView) -> None:
+        self._view = view
+        self._turned: frozenset[str] = frozenset()  # keys that are not as the table has them at first
+        head = view.horizontalHeader()
+        head.setContextMenuPolicy(Qt.ContextMenuPolicy.CustomContextMenu)
+        head.customContextMenuRequested.connect(self.on_asked)
+
+    @property
+    def turned(self) -> tuple[str, ...]:
+        """The columns that are shown or hidden other than at first, to be remembered."""
+        return tuple(sorted(self._turned))
+
+    def restore(self, turned: Iterable[str]) -> None:
+        """Take up a choice that was remembered."""
+        self._turned = frozenset(turned)
+        self._view.on_shape_changed()
+
+    def choices(self) -> tuple[Column, ...]:
+        """The columns that can be shown and hidden."""
+        return tuple(column for column in self._view.table_model.columns[1:] if not column.named_by_user)
+
+    def is_shown(self, column: Column) -> bool:
+        """Whether a column is shown."""
+        return column not in self.choices() or column.at_first != (column.key in self._turned)
+
+    def turn(self, key: str) -> None:
+        """Show a column that is hidden, hide one that is shown."""
+        self._view.commit_open_editor()
+        self._turned ^= {key}
+        self._view.on_shape_changed()
+        current = self._view.currentIndex()
+        if current.isValid() and self._view.isColumnHidden(current.column()):
+            self._view.setCurrentIndex(current.siblingAtColumn(0))
+
+    def hide_others(self) -> None:
+        """Bring the table in line with the choice."""
+        for place, column in enumerate(self._view.table_model.columns):
+            self._view.setColumnHidden(place, not self.is_shown(column))
+
+    def fill(self, menu: QMenu) -> None:
+        """An entry with a tick for each column, and one to go back to the table's own choice."""
+        menu.clear()
+        for column in self.choices():
+            action = menu.addAction(column.words.replace("&", "&&"))
+            action.setCheckable(True)
+            action.setChecked(self.is_shown(column))
+            action.triggered.connect(lambda _checked, key=column.key: self.turn(key))
+        if menu.isEmpty():
+            menu.addAction(tr("all columns are shown")).setEnabled(False)
+            return
+        menu.addSeparator()
+        menu.addAction(tr("As at first"), lambda: self.restore(())).setEnabled(bool(self._turned))
+
+    def on_asked(self, at: QPoint) -> None:
+        """The menu of the headings."""
+        menu = QMenu(self._view)
+        menu.aboutToHide.connect(menu.deleteLater)
+        self.fill(menu)
+        menu.popup(self._view.horizontalHeader().mapToGlobal(at))
+
+
+class ColumnsMenu(QMenu):
+    """View > Columns: those of the table in front, listed anew each time."""
+
+    def __init__(self, tables: TablesPane, parent: QWidget) -> None:
+        super().__init__(parent)
+        self.aboutToShow.connect(lambda: tables.current_view().columns_choice.fill(self))

@@ -1,0 +1,142 @@
+"""The column chooser: what is shown, hidden, remembered, and what goes by the columns that are shown."""
+
+import pytest
+from PySide6.QtCore import QPoint, Qt
+from PySide6.QtGui import QContextMenuEvent, QGuiApplication
+from PySide6.QtTest import QTest
+from PySide6.QtWidgets import QApplication
+
+from app.gui.settings import Settings
+from app.gui.tables.shown_columns import ColumnsMenu
+from app.gui.view import Shown
+from tests.gui.hand import cell, go_to, text_at
+
+KEY = Qt.Key
+
+
+def shown(view):
+    return [view.table_model.columns[place].key for place in view.shown_columns()]
+
+
+def hide(view, *keys):
+    for key in keys:
+        view.columns_choice.turn(key)
+
+
+def test_new_columns_wait_until_they_are_chosen(table):
+    assert not {"mass", "force", "stress"} & set(shown(table))
+    hide(table, "mass", "force", "stress")
+    assert shown(table)[-4:] == ["mass", "force", "stress", "utilisation"]
+
+
+def test_the_headings_menu_hides_a_column_and_shows_it_again(table, qtbot):
+    head = table.horizontalHeader().viewport()
+    for wanted in (False, True):
+        at = QPoint(40, 10)
+        reason = QContextMenuEvent.Reason.Mouse
+        QApplication.sendEvent(head, QContextMenuEvent(reason, at, head.mapToGlobal(at)))
+        menu = QApplication.activePopupWidget()
+        (entry,) = [action for action in menu.actions() if action.text() == "Bedding"]
+        assert entry.isChecked() is not wanted
+        with qtbot.waitSignal(menu.destroyed):
+            menu.setActiveAction(entry)
+            QTest.keyClick(menu, KEY.Key_Return)
+        assert ("bedding" in shown(table)) is wanted
+
+
+def test_the_first_column_is_not_for_hiding_nor_is_one_that_a_user_named(window):
+    for view in window.tables.views.values():
+        keys = {column.key for column in view.columns_choice.choices()}
+        assert view.table_model.columns[0].key not in keys
+        assert not any(key.startswith("factor of") for key in keys)
+
+
+def test_view_columns_is_of_the_table_in_front(window):
+    (menu,) = window.findChildren(ColumnsMenu)
+    for tab, title in ((0, "Bedding"), (1, "Reaction"), (4, "Density")):
+        window.tables.tabs.setCurrentIndex(tab)
+        menu.aboutToShow.emit()
+        assert title in [action.text() for action in menu.actions()]
+
+
+def test_the_menu_goes_back_to_the_columns_of_the_beginning(window, table):
+    before = shown(table)
+    hide(table, "bedding", "mass")
+    (menu,) = window.findChildren(ColumnsMenu)
+    menu.aboutToShow.emit()
+    menu.actions()[-1].trigger()
+    assert shown(table) == before
+
+
+def test_the_choice_is_remembered(window, table, store, tmp_path):
+    hide(table, "bedding", "mass")
+    chosen = shown(table)
+    window._remember()
+    hide(table, "bedding", "mass")
+    window.tables.restore(Settings(tmp_path / "settings.ini"))
+    assert shown(table) == chosen
+
+
+def test_a_column_that_is_no_more_is_forgotten_without_a_word(window, table, store):
+    before = shown(table)
+    store.set_columns("segments", ("weight",))
+    window.tables.restore(store)
+    assert shown(table) == before
+
+
+def test_the_keyboard_leaves_a_column_that_is_hidden(table):
+    go_to(table, 2, "bedding")
+    hide(table, "bedding")
+    assert table.currentIndex() == cell(table, 2, "mark")
+
+
+def test_tab_and_arrows_pass_over_hidden_columns(table):
+    hide(table, "section", "area")
+    go_to(table, 1, "length")
+    for key, wanted in ((KEY.Key_Tab, "material"), (KEY.Key_Left, "length"), (KEY.Key_Right, "material")):
+        QTest.keyClick(table, key)
+        assert table.currentIndex() == cell(table, 1, wanted)
+
+
+@pytest.mark.parametrize("hidden", [(), ("load_start", "load_end", "heat"), ("heat", "bedding", "support")])
+def test_the_totals_stay_whichever_columns_are_hidden(table, hidden):
+    hide(table, *hidden)
+    model = table.table_model
+    last = model.rowCount() - 1
+    (place,) = [p for p in table.shown_columns() if model.index(last, p).data() not in ("", None)][1:]
+    assert model.index(last, place).data().startswith("total 3560 mm, 35")
+    assert table.columnSpan(last, place) > 1
+    drawn = table.visualRect(model.index(last, place))
+    wanted = sum(table.columnWidth(p) for p in table.shown_columns() if p >= place)
+    assert abs(drawn.width() - wanted) <= 1
+
+
+def test_copy_and_paste_go_by_the_columns_that_are_shown(window, table):
+    hide(table, "section", "area")
+    go_to(table, 1, "length")
+    table.setCurrentIndex(cell(table, 1, "length"))
+    QTest.keyClick(table, KEY.Key_Right, Qt.KeyboardModifier.ShiftModifier)
+    table.blocks.copy()
+    length, material = QGuiApplication.clipboard().text().split("\t")
+    assert (length, material) == (text_at(table, 1, "length"), text_at(table, 1, "material"))
+    QGuiApplication.clipboard().setText(f"123\t{material}")
+    go_to(table, 1, "length")
+    section = window.document.project.segments[0].section
+    table.blocks.paste()
+    assert window.document.project.segments[0].length == 0.123
+    assert window.document.project.segments[0].section == section
+    assert not window.document.snapshot.drafts
+
+
+def test_the_new_columns_show_the_results_of_the_shown_state(window, table, qtbot):
+    hide(table, "mass", "force", "stress")
+    outcome = window.showing.outcome.results
+    masses = [float(text_at(table, row, "mass")) for row in range(1, table.table_model.record_rows)]
+    assert sum(masses) == pytest.approx(outcome.mass, rel=0.01)
+    state = outcome.state_index("Storm surge")
+    assert text_at(table, 1, "force").replace("\u202f", "") == f"{outcome.segments.force_max[state][0]:.0f}"
+    assert text_at(table, 4, "stress") == f"{outcome.segments.stress_max[state][3] / 1e6:.0f}"
+    window.view.set_shown(Shown("envelope"))
+    checked = [i for i, one in enumerate(outcome.states) if one.checked]
+    ends = outcome.segments.stress_min[checked, 3].min(), outcome.segments.stress_max[checked, 3].max()
+    assert text_at(table, 4, "stress") == f"{ends[0] / 1e6:.1f}…{ends[1] / 1e6:.0f}"
