@@ -1,7 +1,8 @@
 """The command `barwright`: reads the command line and hands over to `app.commands`.
 
 `barwright FILE` means `barwright open FILE`, because opening a member is what one does most; a file called
-like a command is opened by `barwright open check` or `barwright ./check`.
+like a command is opened by `barwright open check` or `barwright ./check`. The language is chosen before
+anything else, because the help is worded in it too.
 """
 
 from __future__ import annotations
@@ -15,23 +16,30 @@ import traceback
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
-from app import commands
+from app import argparse_words, commands
 from app.columns import one_line
 from app.exit_codes import BROKEN_PIPE, INTERRUPTED, OUR_FAULT
 from app.version import PROGRAM
-from app.words import tr
+from app.words import LANGUAGES, system_language, tr, use_language
 from solver.nearest import nearest
 
 HELP_WIDTH = 90
+OPTION = "--language"
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run the command; gives its exit code."""
     speak_utf8()
-    typed = sys.argv[1:] if arguments is None else list(arguments)
+    use_language(system_language())
+    language, typed = with_language(sys.argv[1:] if arguments is None else list(arguments))
+    if language and language not in LANGUAGES:
+        return commands.refuse(no_language(language))
+    use_language(language or system_language())
+    argparse_words.install()
     if slip := misnamed(typed):
         return commands.refuse(slip)
     options = parser().parse_args(with_command(typed))
+    options.language = language
     try:
         code: int = options.run(options)
         sys.stdout.flush()
@@ -59,6 +67,29 @@ def speak_utf8() -> None:
 def hush() -> None:
     """Nobody reads our output any more: drop the rest, so that the exit does not complain about it."""
     os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+
+
+def with_language(arguments: list[str]) -> tuple[str, list[str]]:
+    """The language asked for by `--language`, empty for none, and the other arguments."""
+    end = arguments.index("--") if "--" in arguments else len(arguments)
+    ours, rest = [], []
+    words = iter(arguments[:end])
+    for word in words:
+        if word == OPTION:
+            ours.append(next(words, "?"))
+        elif word.startswith(f"{OPTION}="):
+            ours.append(word.partition("=")[2])
+        else:
+            rest.append(word)
+    return (ours[-1] if ours else ""), rest + arguments[end:]
+
+
+def no_language(wanted: str) -> str:
+    """A sentence on a language that there is not."""
+    known = ", ".join(f"{code} ({name})" for code, name in LANGUAGES.items())
+    return tr("There is no language {wanted}; there are: {known}").format(
+        wanted=commands.shown(one_line(wanted)), known=known
+    )
 
 
 def with_command(arguments: list[str]) -> list[str]:
@@ -105,7 +136,14 @@ def parser() -> argparse.ArgumentParser:
         )
         added.set_defaults(run=command.run)
         command.take(added)
+        take_language(added)
+    take_language(top)
     return top
+
+
+def take_language(command: argparse.ArgumentParser) -> None:
+    """The option that every command has; it was taken off before, so this is for the help page."""
+    command.add_argument(OPTION, metavar="|".join(LANGUAGES), help=tr("the language, not the system's"))
 
 
 def filled(text: str) -> str:

@@ -41,9 +41,10 @@ def open_windows(options: Namespace) -> int:
     """One window a process, so that a fault in one leaves the others alone."""
     from app.gui.main import run
 
+    asked = [f"--language={options.language}"] if options.language else []
     for file in options.files[1:]:
-        subprocess.Popen([sys.executable, "-m", "app", "open", "--", file])  # noqa: S603 - ourselves
-    code: int = run(Path(options.files[0]) if options.files else None)
+        subprocess.Popen([sys.executable, "-m", "app", "open", *asked, "--", file])  # noqa: S603 - ourselves
+    code: int = run(Path(options.files[0]) if options.files else None, options.language)
     return code
 
 

@@ -15,9 +15,10 @@ import re
 from fractions import Fraction
 from typing import Final
 
+from app.numerals import localised
 from app.phrases.entries import EntryRule, entry_sentence
 from app.unit_names import UnknownUnitError, nearest_unit, unit_factor
-from app.units import Quantity, entry_text, symbol, unit
+from app.units import Quantity, decimal_text, symbol, unit
 from solver.model import UnitSystemName
 
 MOST_CHARACTERS: Final = 300
@@ -96,7 +97,7 @@ def nearest_double(exact: Fraction) -> float:
 def _example(quantity: Quantity, system: UnitSystemName) -> str:
     """A number of the usual size, as it would be typed."""
     value = _EXAMPLES.get(quantity)
-    number = "25" if value is None else f"{float(entry_text(value, quantity, system)):.4g}"
+    number = "25" if value is None else localised(f"{float(decimal_text(value, quantity, system)):.4g}")
     return f"{number} {symbol(quantity, system)}".strip()
 
 

@@ -2,7 +2,8 @@
 
 Entries must show what was typed, to the last digit, so they are written by exact integer arithmetic; readings
 are rounded to a few significant digits. Two different jobs that must not be mixed: what is edited is never
-rounded, what is read never shows seventeen digits.
+rounded, what is read never shows seventeen digits. The decimal sign is put in here and nowhere else: a text
+for eyes or fingers has that of the user's language, a text to compute with has a point.
 """
 
 from __future__ import annotations
@@ -12,6 +13,8 @@ from collections.abc import Callable
 from fractions import Fraction
 from functools import lru_cache
 from typing import Final
+
+from app.words import decimal_sign
 
 MINUS: Final = "\u2212"
 GROUP: Final = "\u202f"  # the narrow no-break space: a thin space at which no line ends
@@ -77,19 +80,34 @@ def _written(mantissa: int, power: int) -> str:
     return f"{sign}{digits[:power]}.{digits[power:]}"
 
 
-@lru_cache(4096)  # numbers are written in several places, and most stay from one keystroke to the next
+def localised(text: str) -> str:
+    """A number with a point as its decimal sign, with that of the user's language instead."""
+    return text.replace(".", decimal_sign())
+
+
+def decimals_of(text: str) -> int:
+    """How many decimals a number for reading shows."""
+    return len(text.partition(decimal_sign())[2])
+
+
 def reading(value: float, digits: int, *, strip: bool = False) -> str:
     """`value` to `digits` significant digits for reading: real minus, thin spaces, no rounding above units.
 
     `strip` takes needless zeros off the decimals. Not finite reads "–" (nothing to show) or "∞".
     """
+    return localised(_reading(value, digits, strip))
+
+
+@lru_cache(4096)  # numbers are written in several places, and most stay from one keystroke to the next
+def _reading(value: float, digits: int, strip: bool) -> str:
+    """`reading` with a decimal point."""
     if math.isnan(value):
         return "–"
     if math.isinf(value):
         return "∞" if value > 0 else MINUS + "∞"
     if value != 0 and not 1e-4 <= abs(value) < 1e9:
         return _with_power(value, digits, strip=strip)
-    return fixed(value, decimals_for(value, digits), strip=strip)
+    return _fixed(value, decimals_for(value, digits), strip=strip)
 
 
 def rounded(value: float, digits: int) -> float:
@@ -109,6 +127,11 @@ def at_most(bound: float) -> str:
 
 def fixed(value: float, decimals: int, *, strip: bool = False) -> str:
     """`value` with that many decimals for reading; what rounds to nothing has no sign."""
+    return localised(_fixed(value, decimals, strip=strip))
+
+
+def _fixed(value: float, decimals: int, *, strip: bool) -> str:
+    """`fixed` with a decimal point."""
     text = f"{abs(value):.{decimals}f}"
     sign = MINUS if value < 0 and text.strip("0.") else ""
     whole, point, part = text.partition(".")
@@ -120,7 +143,7 @@ def laid_out(entry: str) -> str:
     """An entry's decimal, such as "-210000" or "1.2e-5", written as readings are, with every digit kept."""
     mantissa, _, power = entry.partition("e")
     whole, point, part = mantissa.lstrip("-").partition(".")
-    text = (MINUS if entry.startswith("-") else "") + _grouped(whole) + point + part
+    text = localised((MINUS if entry.startswith("-") else "") + _grouped(whole) + point + part)
     return text + _power_of_ten(int(power)) if power else text
 
 

@@ -20,8 +20,9 @@ from typing import Final, Literal, TypeAlias
 from msgspec import UNSET, UnsetType, structs
 
 from app.entry import MOST_CHARACTERS, factor_of, nearest_double, read_number, refusal
-from app.numerals import shortest_decimal
-from app.units import Quantity, entry_text, format_value, input_text, rounds_to, unit
+from app.numerals import localised, shortest_decimal
+from app.units import Quantity, decimal_text, entry_text, format_value, input_text, rounds_to, unit
+from app.words import tr
 from solver.model import (
     AnySection,
     AreaSection,
@@ -90,10 +91,16 @@ def _read_ends(text: str) -> list[_End]:
 
 def _read_end(text: str) -> _End:
     shape = _SHAPES.get(text[:1], "")
-    rest = text[1:] if shape else text
+    rest = _in_english(text[1:] if shape else text)
     if not _NUMBER_START.match(rest):
         raise refusal("section_unknown", found=text[:30])
     return _End(shape, "bore" in rest, tuple(part.strip() for part in _SECOND.split(rest)))
+
+
+def _in_english(text: str) -> str:
+    """The text with the word for a bore as the file has it; it is understood in the user's language too."""
+    ours = rf"\b{re.escape(tr('bore'))}\b"
+    return re.sub(ours, "bore", text, flags=re.IGNORECASE)
 
 
 def _shape_of(ends: Sequence[_End], previous: AnySection | None) -> _Shape:
@@ -215,7 +222,7 @@ def section_text(section: AnySection, system: UnitSystemName) -> str:
 
     def second(outer: float, inner: float) -> str:
         wall = _wall_text(outer, inner, system)
-        return f"×{wall}" if len(wall) <= _LONGEST_WALL else f" bore {number(inner, 'size')}"
+        return f"×{wall}" if len(wall) <= _LONGEST_WALL else f" {tr('bore')} {number(inner, 'size')}"
 
     return _worded(section, number, second)
 
@@ -271,6 +278,6 @@ def _ends(section: AnySection) -> list[_Sizes]:
 def _wall_text(outer: float, inner: float, system: UnitSystemName) -> str:
     """The shortest wall that with the outside diameter as typed gives this inside diameter."""
     factor = unit("size", system).factor
-    typed = Fraction(entry_text(outer, "size", system)) * factor
+    typed = Fraction(decimal_text(outer, "size", system)) * factor
     wall = (typed - Fraction(inner)) / 2 / factor
-    return shortest_decimal(wall, lambda decimal: rounds_to(typed - 2 * decimal * factor, inner))
+    return localised(shortest_decimal(wall, lambda decimal: rounds_to(typed - 2 * decimal * factor, inner)))

@@ -13,7 +13,7 @@ from pathlib import Path
 from app.environment import ROOT, SetupFailed, prepare
 from app.qt_libraries import DRAWING, WINDOW, has_display, missing_packages
 from app.samples import sample_path
-from app.words import tr
+from app.words import system_language, tr, use_language
 
 TRY_A_WINDOW = "from PySide6.QtWidgets import QApplication; QApplication([])"
 CHECK_PRINTED = (0, 1, 3)  # exit codes of `check` with the check on standard output
@@ -21,6 +21,7 @@ CHECK_PRINTED = (0, 1, 3)  # exit codes of `check` with the check on standard ou
 
 def main() -> int:
     """Set up, then open the window, or print the sample's check where there is none; gives the exit code."""
+    use_language(system_language())
     try:
         python = prepare()
     except SetupFailed as failure:

@@ -15,7 +15,7 @@ from fractions import Fraction
 from functools import cache, lru_cache
 from typing import Final, Literal, TypeAlias, get_args, overload
 
-from app.numerals import fixed, reading, shortest_decimal
+from app.numerals import fixed, localised, reading, shortest_decimal
 from solver.arrays import FloatArray
 from solver.checks import Status
 from solver.model import UnitSystemName
@@ -167,13 +167,18 @@ def from_display(value: float | FloatArray, quantity: Quantity, system: UnitSyst
 
 
 @lru_cache(maxsize=8192)
-def entry_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
-    """The shortest decimal in the display unit that converts back to the same double; no unit, "-" for minus.
+def decimal_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """The shortest decimal in the display unit that converts back to the same double, to compute with.
 
-    `value` is finite, in SI. ASCII only, so that it can be copied into a spreadsheet; −0 reads "0".
+    `value` is finite, in SI. "-" for minus, a point in every language; −0 reads "0".
     """
     factor = unit(quantity, system).factor
     return shortest_decimal(Fraction(value) / factor, lambda decimal: rounds_to(decimal * factor, value))
+
+
+def entry_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
+    """The same as it is typed: what an editor starts from and a spreadsheet of the user's language reads."""
+    return localised(decimal_text(value, quantity, system))
 
 
 def rounds_to(exact: Fraction, value: float) -> bool:
@@ -203,7 +208,7 @@ def format_value(
 
 def input_text(value: float, quantity: Quantity, system: UnitSystemName) -> str:
     """An input for reading: to the last digit as typed where that is short, else rounded to five digits."""
-    typed = entry_text(value, quantity, system)
+    typed = decimal_text(value, quantity, system)
     if "e" in typed or len(typed.lstrip("-")) > _LONGEST_INPUT:
         return format_value(value, quantity, system, 5, strip=True)
     return fixed(to_display(value, quantity, system), len(typed.partition(".")[2]))
@@ -218,9 +223,9 @@ def utilisation_text(value: float, status: Status) -> str:
         return reading(value, 3)
     for decimals in range(2, 17):
         text = fixed(value, decimals)
-        if (float(text) > 1) == (status == "fail"):
+        if (float(f"{value:.{decimals}f}") > 1) == (status == "fail"):
             return text
-    return repr(value)
+    return localised(repr(value))
 
 
 @cache

@@ -1,32 +1,77 @@
 """Words in the user's language: gettext for window, terminal and sheet alike, without Qt.
 
-English is the language of the sources; catalogues of other languages lie in `app/locale`.
+English is the language of the sources; catalogues of other languages lie in `app/locale`. One language holds
+for the whole process and is chosen at its start: the one asked for, else that of the system.
 """
 
 from __future__ import annotations
 
-import gettext as _gettext
+import locale
+import os
+from collections.abc import Mapping
 from pathlib import Path
+from typing import Final
 
-_DOMAIN = "barwright"
-_LOCALE = Path(__file__).parent / "locale"
-_catalogue: _gettext.NullTranslations = _gettext.NullTranslations()
+from app.catalogue import Catalogue, read_catalogue
+
+SOURCE: Final = "en"
+LANGUAGES: Final[Mapping[str, str]] = {SOURCE: "English", "de": "Deutsch"}  # each by its own name
+_DECIMAL_SIGNS: Final[Mapping[str, str]] = {"de": ","}
+_VARIABLES: Final = ("LANGUAGE", "LC_ALL", "LC_MESSAGES", "LANG")  # in gettext's order
+_LOCALE: Final = Path(__file__).parent / "locale"
+
+_language = SOURCE
+_catalogue = Catalogue()
 
 
 def use_language(language: str) -> None:
-    """Take words from the catalogue of `language` (such as "de"); English where there is none."""
-    global _catalogue  # noqa: PLW0603 - one language for the process, as gettext has it
-    _catalogue = _gettext.translation(_DOMAIN, _LOCALE, languages=[language], fallback=True)
+    """Take words and decimal sign from `language`, a key of LANGUAGES, from now on."""
+    global _language, _catalogue  # noqa: PLW0603 - one language for the process, as gettext has it
+    _catalogue = Catalogue() if language == SOURCE else read_catalogue(catalogue_path(language))
+    _language = language
+
+
+def catalogue_path(language: str) -> Path:
+    """The catalogue of a language other than that of the sources."""
+    return _LOCALE / language / "LC_MESSAGES" / "barwright.po"
+
+
+def language() -> str:
+    """The language in use."""
+    return _language
+
+
+def decimal_sign() -> str:
+    """The sign between units and tenths in the language in use."""
+    return _DECIMAL_SIGNS.get(_language, ".")
+
+
+def system_language(environment: Mapping[str, str] = os.environ) -> str:
+    """The language that the system is set to, English where it is none of ours."""
+    said = next((environment[name] for name in _VARIABLES if environment.get(name)), None)
+    wanted = [locale.getlocale()[0] or ""] if said is None else said.split(":")
+    return next((code for code in map(_code, wanted) if code in LANGUAGES), SOURCE)
+
+
+def _code(name: str) -> str:
+    """The code of a locale's name: "de" for de_AT.UTF-8, de-CH or Windows's German_Germany."""
+    word = name.replace("-", "_").partition("_")[0].partition(".")[0].casefold()
+    return {"german": "de", "english": "en"}.get(word, word)
 
 
 def tr(message: str) -> str:
     """The message in the user's language."""
-    return _catalogue.gettext(message)
+    return _catalogue.text(message)
+
+
+def trc(context: str, message: str) -> str:
+    """The message where one English word means several things; the context tells the translator which."""
+    return _catalogue.text(message, context)
 
 
 def trn(one: str, many: str, count: int) -> str:
     """The message for `count` things, with {count} filled in."""
-    return _catalogue.ngettext(one, many, count).format(count=count)
+    return _catalogue.counted(one, many, count).format(count=count)
 
 
 def later(message: str) -> str:

@@ -67,12 +67,12 @@ def test_the_window_is_entered_by_its_door_only_when_wanted() -> None:
     assert WINDOW_DOOR not in at_top
 
 
-@pytest.mark.parametrize("name", ["start", "environment", "qt_libraries", "words", "__init__"])
+@pytest.mark.parametrize("name", ["start", "environment", "qt_libraries", "words", "catalogue", "__init__"])
 def test_what_a_bare_python_runs_needs_only_the_standard_library(name: str) -> None:
     top_level = ast.parse((ROOT / "app" / f"{name}.py").read_text("utf-8")).body
     names = {node.module for node in top_level if isinstance(node, ast.ImportFrom) and node.module}
     names |= {alias.name for node in top_level if isinstance(node, ast.Import) for alias in node.names}
-    bare = {"app.environment", "app.qt_libraries", "app.words", "app.samples"}
+    bare = {"app.environment", "app.qt_libraries", "app.words", "app.catalogue", "app.samples"}
     assert {module for module in names if module.partition(".")[0] not in sys.stdlib_module_names} <= bare
 
 

@@ -6,13 +6,17 @@ from functools import lru_cache
 
 from app.section_entry import section_label
 from app.units import Quantity, format_value
-from app.words import tr
+from app.words import language, tr
 from solver.model import AnySection, UnitSystemName
 
 
-@lru_cache(maxsize=4096)
 def section_text(section: AnySection, system: UnitSystemName) -> str:
     """A section for reading; kept, because it is asked for at every keystroke and every step of a zoom."""
+    return _section_text(section, system, language())
+
+
+@lru_cache(maxsize=4096)
+def _section_text(section: AnySection, system: UnitSystemName, _language: str) -> str:
     return section_label(section, system)
 
 

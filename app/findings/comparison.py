@@ -13,7 +13,7 @@ from typing import Final
 
 import numpy as np
 
-from app.numerals import decimals_for, fixed, reading
+from app.numerals import decimals_for, decimals_of, fixed, reading
 from app.phrases.checks import verdict_line
 from app.references import Reference
 from app.units import Quantity, format_value, symbol, to_display, utilisation_text
@@ -88,7 +88,7 @@ def _utilisation_change(old: Results, new: Results) -> str:
         return _arrow(then[1] if then else none, now[1] if now else none)
     if _same(then[0], now[0], 1.0):
         return tr("{value}, unchanged").format(value=now[1])
-    decimals = max(len(text.partition(".")[2]) for text in (then[1], now[1]))
+    decimals = max(decimals_of(text) for text in (then[1], now[1]))
     return _with_difference(_arrow(then[1], now[1]), now[0] - then[0], decimals)
 
 

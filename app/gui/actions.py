@@ -38,7 +38,8 @@ RECENT: Final = "recent"  # submenus filled when they open
 SAMPLES: Final = "samples"
 TYPICAL: Final = "typical"
 COLUMNS: Final = "columns"
-SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS)
+LANGUAGE: Final = "language"
+SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS, LANGUAGE)
 
 COMMANDS: Final[tuple[Command, ...]] = (
     Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
@@ -90,6 +91,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
         later("Keep these results as a reference, to see later ones against them"),
     ),
     Command("forget_reference", "&View", later("&Forget reference"), "Ctrl+Shift+K"),
+    SEPARATOR,
+    Command(LANGUAGE, "&View", later("&Language")),
     Command("keys", "&Help", later("&Keys"), KEYS.HelpContents, fallback="F1"),
     Command("log", "&Help", later("Where the &log is")),
     Command("about", "&Help", later("&About Barwright"), role=Role.AboutRole),

@@ -6,7 +6,7 @@ import os
 import sys
 from pathlib import Path
 
-from PySide6.QtCore import QTimer
+from PySide6.QtCore import QCoreApplication, QLibraryInfo, QLocale, QTimer, QTranslator
 from PySide6.QtWidgets import QApplication
 
 from app import samples
@@ -15,17 +15,32 @@ from app.gui.files import blank_project, read_or_say
 from app.gui.recovery import Recovered, left_behind
 from app.gui.settings import Settings
 from app.gui.window import Window
-from app.words import tr
+from app.words import SOURCE, language, system_language, tr, use_language
+
+
+def name_application() -> None:
+    """The name that decides where settings and log lie."""
+    QCoreApplication.setApplicationName("barwright")
 
 
 def application() -> QApplication:
-    """The application, with the names that settings and desktops know it by."""
+    """The application in the language in use, with the names that settings and desktops know it by."""
     existing = QApplication.instance()
     made = existing if isinstance(existing, QApplication) else QApplication(sys.argv[:1])
-    made.setApplicationName("barwright")
+    name_application()
     made.setApplicationDisplayName("Barwright")
     made.setDesktopFileName("barwright")
+    speak(made)
     return made
+
+
+def speak(app: QApplication) -> None:
+    """Have Qt's own buttons, menus and file dialogs speak the language in use, as far as Qt has it."""
+    QLocale.setDefault(QLocale(language()))
+    translator = QTranslator(app)
+    folder = QLibraryInfo.path(QLibraryInfo.LibraryPath.TranslationsPath)
+    if language() != SOURCE and translator.load(f"qtbase_{language()}", folder):
+        app.installTranslator(translator)
 
 
 def open_window(path: str | os.PathLike[str] | None, store: Settings, recovery_folder: Path) -> Window:
@@ -71,12 +86,17 @@ def offer_recovery(window: Window, found: tuple[Recovered, ...]) -> None:
     dialogs.ask_recover(window, name, on_answer)
 
 
-def run(path: str | os.PathLike[str] | None = None) -> int:
-    """Open the window on a file or on a new project; returns the exit code when it is closed."""
-    app = application()
+def run(path: str | os.PathLike[str] | None = None, asked: str = "") -> int:
+    """Open the window on a file or on a new project; returns the exit code when it is closed.
+
+    `asked` is a language that goes before the one chosen in the window and that of the system.
+    """
+    name_application()
     folder = settings.folder()
     log.start(folder)
     store = Settings()
+    use_language(asked or store.language or system_language())
+    app = application()
     recovery_folder = folder / "recovery"
     found = left_behind(recovery_folder)
     window = open_window(path, store, recovery_folder)

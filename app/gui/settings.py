@@ -8,6 +8,7 @@ from typing import Final, cast, get_args
 
 from PySide6.QtCore import QByteArray, QSettings, QStandardPaths
 
+from app.words import LANGUAGES
 from solver.model import DEFAULT_UNITS, UnitSystemName
 
 MOST_RECENT: Final = 10
@@ -84,6 +85,16 @@ class Settings:
     def set_columns(self, table: str, keys: tuple[str, ...]) -> None:
         """Remember them."""
         self._store.setValue(f"columns/{table}", list(keys))
+
+    @property
+    def language(self) -> str:
+        """The language chosen for the window; empty where it is the system's."""
+        stored = str(self._store.value("language", ""))
+        return stored if stored in LANGUAGES else ""
+
+    def set_language(self, language: str) -> None:
+        """Remember a language, empty for the system's."""
+        self._store.setValue("language", language)
 
     def sync(self) -> None:
         """Write what has changed to the file."""

@@ -26,6 +26,7 @@ from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.view import Shown, View
 from app.gui.worker import Delivery, LatestSolver
+from app.numerals import fixed
 from app.references import Reference
 from app.words import tr, trn
 from solver.model import Project
@@ -241,5 +242,5 @@ def outcome_line(outcome: Outcome) -> str:
 
     if outcome.results is None:
         return outcome.problems[0] if outcome.problems else tr("No results")
-    solved = tr("Solved in {time} ms.").format(time=f"{1000 * outcome.seconds:.1f}")
+    solved = tr("Solved in {time} ms.").format(time=fixed(1000 * outcome.seconds, 1))
     return f"{solved} {numerical_error_sentence(largest_bound(outcome.results))}"

@@ -10,7 +10,7 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
 from PySide6.QtWidgets import QMainWindow
 
-from app.gui.actions import COLUMNS, RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
+from app.gui.actions import COLUMNS, LANGUAGE, RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
 from app.gui.against import AgainstBar
 from app.gui.comparing import Comparing
 from app.gui.document import Document
@@ -19,6 +19,7 @@ from app.gui.files import Files
 from app.gui.findings.panel import FindingsPanel
 from app.gui.hand.in_place import InPlace
 from app.gui.help import Help
+from app.gui.language_menu import LanguageMenu
 from app.gui.member_edits import MemberEdits
 from app.gui.outcome import shown_states
 from app.gui.panes import Panes
@@ -83,11 +84,13 @@ class Window(QMainWindow):
         self.recent_menu = RecentMenu(self.store, self.files.open_path, self)
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
+        self.language_menu = LanguageMenu(self.store, self.status.tell, self)
         menus = {
             RECENT: self.recent_menu,
             SAMPLES: self.samples_menu,
             TYPICAL: self.typical_menu,
             COLUMNS: ColumnsMenu(self.tables, self),
+            LANGUAGE: self.language_menu,
         }
         fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)

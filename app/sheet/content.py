@@ -15,7 +15,7 @@ from app.sheet.printable import shortened
 from app.sheet.proof import proof_blocks
 from app.sheet.readings import Readings
 from app.sheet.title import Origin, title_block
-from app.words import tr
+from app.words import language, tr, trc
 from solver.model import Project
 from solver.results import Results
 
@@ -25,7 +25,7 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
     units = project.display.unit_system
     say = Readings(units)
     return {
-        "language": "en",
+        "language": language(),
         "kind": tr("Calc sheet, member under axial load"),
         "figure": tr("Figure"),
         "attachment": tr("The project of this sheet, as saved"),
@@ -42,6 +42,21 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
         "signs": [tr("Made by"), tr("Checked by"), tr("Released by")],
         "sign_columns": [tr("Name"), tr("Date"), tr("Signature")],
         "sign_title": tr("Sign-off"),
+        "math": _math_words(),
+    }
+
+
+def _math_words() -> dict[str, Value]:
+    """The words in formulas: indices, and what stands between two of them."""
+    return {
+        "left": trc("index in a formula", "left"),
+        "right": trc("index in a formula", "right"),
+        "tension": trc("index in a formula", "t,allow"),
+        "compression": trc("index in a formula", "c,allow"),
+        "limit": trc("index in a formula", "limit"),
+        "from": trc("index in a formula", "from"),
+        "to": trc("index in a formula", "to"),
+        "or": trc("between two formulas", "or"),
     }
 
 

@@ -17,6 +17,7 @@ from app.drawing.member import Member
 from app.drawing.rows import depth_for, round_factor, thickest
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Picture
+from app.numerals import reading
 from app.sheet.picture_svg import draw_picture, measure
 from app.sheet.svg import Canvas, fitted
 from app.units import format_value
@@ -108,10 +109,15 @@ def _note(frame: Frame, picture: Picture) -> str:
 def _scale_note(ruler: Ruler, factor: float) -> str:
     lengths = 72 / 0.0254 / (POINT * ruler.pixels_per_metre)
     if abs(factor - 1.0) < 1e-9:
-        return tr("Drawn to scale, about 1:{scale}.").format(scale=f"{lengths:.3g}")
+        return tr("Drawn to scale, about 1:{scale}.").format(scale=_ratio(lengths))
     return tr(
         "Lengths to scale, about 1:{lengths}; depths to a scale of their own, about 1:{depths}."
-    ).format(lengths=f"{lengths:.3g}", depths=f"{lengths / factor:.3g}")
+    ).format(lengths=_ratio(lengths), depths=_ratio(lengths / factor))
+
+
+def _ratio(value: float) -> str:
+    """How many times smaller than the member the drawing is, to three digits."""
+    return reading(float(f"{value:.3g}"), 3, strip=True)
 
 
 def _alt(project: Project, units: UnitSystemName) -> str:

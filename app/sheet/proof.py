@@ -12,6 +12,7 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.findings import findings
+from app.numerals import decimals_of, fixed, reading
 from app.phrases.checks import has_compression
 from app.phrases.notes import BUCKLING
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
@@ -73,7 +74,9 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
     values = _in_segment(results, state, x, place)
     area = float(area_at(results.chain.area[place], np.array(s)))
     yield paragraph(
-        _place_words(s).format(x=say.plain(x, "length", unit=True), share=f"{s:.6g}", mark=check.segment),
+        _place_words(s).format(
+            x=say.plain(x, "length", unit=True), share=reading(s, 6, strip=True), mark=check.segment
+        ),
         "lead",
     )
     stress = say.plain(values.stress, "stress", unit=True, digits=6)
@@ -165,7 +168,7 @@ def utilisation_by_hand(check: Check) -> str:
     """The utilisation to four decimals at least, more where its verdict needs them."""
     value = check.utilisation or 0.0
     shown = utilisation_text(value, check.status)
-    return shown if len(shown.partition(".")[2]) >= 4 else f"{value:.4f}"
+    return shown if decimals_of(shown) >= 4 else fixed(value, 4)
 
 
 def _joint_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:

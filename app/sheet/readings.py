@@ -10,7 +10,7 @@ import re
 from dataclasses import dataclass
 
 from app.numerals import laid_out
-from app.units import Quantity, entry_text, format_value, symbol
+from app.units import Quantity, decimal_text, format_value, symbol
 from solver.model import UnitSystemName
 
 NOTHING = "–"
@@ -22,12 +22,16 @@ _ROUNDING = 1e-10  # of the largest value beside it: less than this is rounding 
 
 def legible(text: str) -> str:
     """The text with each decimal number of more than ten significant digits rounded to nine."""
-    return re.sub(r"\d+\.\d+", lambda found: _rounded(found.group()), text)
+    return re.sub(r"\d+[.,]\d+", lambda found: _rounded(found.group()), text)
 
 
 def _rounded(number: str) -> str:
-    digits = number.replace(".", "").lstrip("0")
-    return number if len(digits) <= _MOST_DIGITS else f"{float(number):.9g}"
+    plain = number.replace(",", ".")
+    digits = plain.replace(".", "").lstrip("0")
+    if len(digits) <= _MOST_DIGITS:
+        return number
+    rounded = f"{float(plain):.9g}"
+    return rounded if plain == number else rounded.replace(".", ",")
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,7 +46,7 @@ class Readings:
 
     def exact(self, value: float, quantity: Quantity, *, unit: bool = False) -> str:
         """An entry to its last digit, as far as `legible` lets it."""
-        text = laid_out(legible(entry_text(float(value), quantity, self.units)))
+        text = laid_out(legible(decimal_text(float(value), quantity, self.units)))
         return f"{text} {self.unit(quantity)}".rstrip() if unit else text
 
     def pair(self, start: float, end: float, quantity: Quantity) -> str:

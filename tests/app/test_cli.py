@@ -278,7 +278,7 @@ def test_several_files_open_a_window_each(monkeypatch: pytest.MonkeyPatch, tmp_p
     Path("a.barwright.json").touch()
     opened: list[object] = []
     door = ModuleType("app.gui.main")
-    door.run = lambda path: opened.append(path) or 0  # type: ignore[attr-defined]
+    door.run = lambda path, language: opened.append(path) or 0  # type: ignore[attr-defined]
     monkeypatch.setitem(sys.modules, "app.gui.main", door)
     monkeypatch.setattr(subprocess, "Popen", lambda command: opened.append(command[-1]))
     monkeypatch.setattr(qt_libraries, "missing_packages", lambda table: ())
