@@ -157,8 +157,10 @@ def take_open(command: argparse.ArgumentParser) -> None:
 
 
 def take_check(command: argparse.ArgumentParser) -> None:
-    """`barwright check FILE … [--json]`."""
+    """`barwright check FILE … [--json] [--no-cures]`."""
+    without = tr("do not seek what would make a failing check pass")
     command.add_argument("files", nargs="+", metavar=tr("FILE"), help=tr("project files"))
+    command.add_argument("--no-cures", dest="cures", action="store_false", help=without)
     command.add_argument("--json", action="store_true", help=tr("print the results file, one line each"))
 
 

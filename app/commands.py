@@ -60,7 +60,7 @@ def run_check(options: Namespace) -> int:
 
     codes, printed = [], False
     for file in options.files:
-        result = outcome(file, check_json if options.json else check_text)
+        result = outcome(file, check_json if options.json else partial(check_text, cures=options.cures))
         if printed and result.out and not options.json:
             sys.stdout.write("\n")
         tell(result)
@@ -115,13 +115,18 @@ def check_json(file: str) -> Outcome:
     return Outcome(verdict_code(results), line + "\n")
 
 
-def check_text(file: str) -> Outcome:
-    """The check as a table to read."""
+MOST_CURED = 8  # findings, the worst first; a member in which more fail wants another look than this
+
+
+def check_text(file: str, *, cures: bool = True) -> Outcome:
+    """The check as a table to read, with what would make the worst failing checks pass."""
+    from app.cures import failing, seek
     from app.outcome import Outcome
     from app.terminal import report
 
     project, results = solved(file)
-    return Outcome(verdict_code(results), shown(report(project, results, file)))
+    cured = [seek(results, subject) for subject in failing(results)[:MOST_CURED]] if cures else []
+    return Outcome(verdict_code(results), shown(report(project, results, file, cured)))
 
 
 def run_sheet(options: Namespace) -> int:

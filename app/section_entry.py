@@ -221,8 +221,8 @@ def section_text(section: AnySection, system: UnitSystemName) -> str:
         return entry_text(value, quantity, system)
 
     def second(outer: float, inner: float) -> str:
-        wall = _wall_text(outer, inner, system)
-        return f"×{wall}" if len(wall) <= _LONGEST_WALL else f" {tr('bore')} {number(inner, 'size')}"
+        wall = wall_text(outer, inner, system)
+        return f"×{wall}" if 0 < len(wall) <= _LONGEST_WALL else f" {tr('bore')} {number(inner, 'size')}"
 
     return _worded(section, number, second)
 
@@ -234,9 +234,9 @@ def section_label(section: AnySection, system: UnitSystemName) -> str:
         return input_text(value, quantity, system)
 
     def second(outer: float, inner: float) -> str:
-        wall = _wall_text(outer, inner, system)
+        wall = wall_text(outer, inner, system)
         rounded = format_value((outer - inner) / 2, "size", system, strip=True)
-        return f"×{wall if len(wall) <= _LONGEST_WALL else rounded}"
+        return f"×{wall if 0 < len(wall) <= _LONGEST_WALL else rounded}"
 
     return _worded(section, number, second)
 
@@ -275,9 +275,16 @@ def _ends(section: AnySection) -> list[_Sizes]:
     return [start, tuple(end_of(*pair) for pair in pairs)] if varies else [start]
 
 
-def _wall_text(outer: float, inner: float, system: UnitSystemName) -> str:
-    """The shortest wall that with the outside diameter as typed gives this inside diameter."""
+def wall_text(outer: float, inner: float, system: UnitSystemName) -> str:
+    """The shortest wall that with the outside diameter as typed gives this inside diameter.
+
+    Empty where no decimal of a reasonable length does, as for a bore of a thousandth of a millimetre.
+    """
     factor = unit("size", system).factor
     typed = Fraction(decimal_text(outer, "size", system)) * factor
     wall = (typed - Fraction(inner)) / 2 / factor
-    return localised(shortest_decimal(wall, lambda decimal: rounds_to(typed - 2 * decimal * factor, inner)))
+    try:
+        text = shortest_decimal(wall, lambda decimal: rounds_to(typed - 2 * decimal * factor, inner))
+    except ValueError:
+        return ""
+    return localised(text)

@@ -10,9 +10,11 @@ from collections.abc import Callable, Iterator, Sequence
 from pathlib import Path
 
 from app.columns import one_line, table
+from app.cures import Cures
 from app.findings import Findings, StateBooks, findings
 from app.phrases import caution, check_sentence
 from app.phrases.checks import SUBJECTS
+from app.phrases.cures import cures_sentences, subject_words
 from app.units import utilisation_text
 from app.words import tr
 from solver.checks import Check
@@ -24,8 +26,8 @@ NOT_MADE = "?"  # beside a utilisation: another check of the same thing could no
 NOTHING = "–"
 
 
-def report(project: Project, results: Results, file: str) -> str:
-    """The check of one file as lines, in the project's display units."""
+def report(project: Project, results: Results, file: str, cured: Sequence[Cures] = ()) -> str:
+    """The check of one file as lines, in the project's display units; `cured` is for what fails."""
     system = project.display.unit_system
     found = findings(results, system)
     blocks = [
@@ -33,6 +35,7 @@ def report(project: Project, results: Results, file: str) -> str:
         verdict(results, found, system),
         *utilisations(results),
         *limits(results),
+        *cures(cured),
         forces(found.books),
         remarks(found),
     ]
@@ -70,6 +73,20 @@ def limits(results: Results) -> Iterator[str]:
         rows = by_combination(results, others, subject)
         head = [tr("Utilisation of limits"), *checked(results)]
         yield table(head, [[name, *row] for name, row in rows.items()])
+
+
+def cures(cured: Sequence[Cures]) -> Iterator[str]:
+    """What would make the failing checks pass, the worst first."""
+    lines = [
+        tr("{subject}: {sentence}").format(subject=subject_words(item.subject), sentence=sentence)
+        for item in cured
+        for sentence in cures_sentences(item)
+    ]
+    if lines:
+        yield "".join(
+            f"{one_line(line)}\n"
+            for line in (tr("What one changed number would cure, proved by a new solve"), *lines)
+        )
 
 
 def subject(check: Check) -> str:

@@ -6,7 +6,7 @@ numbers were made and compared by the solver.
 """
 
 from app.findings.comparison import Change, Comparison, comparison
-from app.findings.make import findings
+from app.findings.make import findings, findings_in
 from app.findings.records import (
     Band,
     Findings,
@@ -31,4 +31,5 @@ __all__ = [
     "StateBooks",
     "comparison",
     "findings",
+    "findings_in",
 ]

@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 
 from app.findings.listing import listed
 from app.findings.records import LimitFinding, NotMade
-from app.findings.stress import worst_by
+from app.findings.subjects import subject_of, worst_first
 from app.phrases.checks import NOT_MADE, check_sentence, remedy_text
 from app.units import utilisation_text
 from app.words import tr
@@ -15,21 +15,20 @@ from solver.model import Project, UnitSystemName
 from solver.results import Results
 
 
-def limit_findings(results: Results, system: UnitSystemName) -> tuple[LimitFinding, ...]:
-    """One finding for each limit that was checked."""
+def limit_findings(
+    results: Results, system: UnitSystemName, checks: Iterable[Check]
+) -> tuple[LimitFinding, ...]:
+    """One finding for each limit that was checked among `checks` of the results."""
     places = {joint.mark: index for index, joint in enumerate(results.project.joints)}
-    limits = (
-        ((check.check, check.joint, check.start, check.end), check)
-        for check in results.checks
-        if check.segment is None
-    )
-    return tuple(_finding(check, places, system) for check in worst_by(limits))
+    worst = worst_first(check for check in checks if check.segment is None)
+    return tuple(_finding(check, places, system) for check in worst)
 
 
 def _finding(check: Check, places: Mapping[str, int], system: UnitSystemName) -> LimitFinding:
     marks = (check.joint, check.start, check.end)
     utilisation = check.utilisation or 0.0
     return LimitFinding(
+        subject=subject_of(check),
         joints=tuple(places[mark] for mark in marks if mark is not None),
         sentence=check_sentence(check, system),
         state=check.combination,
@@ -40,11 +39,11 @@ def _finding(check: Check, places: Mapping[str, int], system: UnitSystemName) ->
     )
 
 
-def not_made(results: Results) -> tuple[NotMade, ...]:
-    """The checks not made, together by reason and material, in the order of their first."""
+def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:
+    """The checks not made `among` those of the results, together by reason and material, as they come up."""
     materials = {segment.mark: segment.material for segment in results.project.segments}
     groups: dict[tuple[Reason, str], list[Check]] = {}
-    for check in results.checks:
+    for check in among:
         if check.reason is not None:
             groups.setdefault((check.reason, materials.get(check.segment or "", "")), []).append(check)
     return tuple(
@@ -59,6 +58,8 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: P
     places = [s.mark for s in project.segments if s.mark in segments]
     places += [j.mark for j in project.joints if j.mark in joints]
     return NotMade(
+        reason=reason,
+        material=material,
         sentence=tr(NOT_MADE[reason]).format(places=listed(places), states=listed(states)),
         remedy=remedy_text(reason, material),
         count=len(checks),

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from app.findings.books import displacements, state_books
 from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
@@ -23,15 +25,26 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
         verdict=results.verdict,
         headline=verdict_line(results),
         detail=verdict_detail(results),
-        segments=segment_findings(results, system),
-        limits=limit_findings(results, system),
-        not_made=not_made(results),
+        segments=segment_findings(results, system, results.checks),
+        limits=limit_findings(results, system, results.checks),
+        not_made=not_made(results, results.checks),
         notes=notes(results),
         books=state_books(results, system),
         displacements=moved,
         largest_displacement=max(moved, key=lambda joint: abs(joint.value)),
         mass_text=format_value(results.mass, "mass", system, with_unit=True),
         numerical_error=numerical_error_sentence(float(results.solution.error_bound[checked].max())),
+    )
+
+
+def findings_in(found: Findings, results: Results, state: str, system: UnitSystemName) -> Findings:
+    """The findings with only those checks listed that one state has; the verdict stays that of all states."""
+    checks = [check for check in results.checks if check.combination == state]
+    return replace(
+        found,
+        segments=segment_findings(results, system, checks),
+        limits=limit_findings(results, system, checks),
+        not_made=not_made(results, checks),
     )
 
 

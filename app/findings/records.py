@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from solver.checks import Status, Verdict
+from app.findings.subjects import Subject
+from solver.checks import Reason, Status, Verdict
 from solver.results import StateKind
 
 
@@ -29,6 +30,7 @@ class Band:
 class SegmentFinding:
     """The worst made check of stress in one segment."""
 
+    subject: Subject
     segment: int
     mark: str
     sentence: str  # the whole: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"
@@ -45,6 +47,7 @@ class SegmentFinding:
 class LimitFinding:
     """The worst made check of one limit; `joints` are one index, or two for a relative displacement."""
 
+    subject: Subject
     joints: tuple[int, ...]
     sentence: str
     state: str
@@ -58,6 +61,8 @@ class LimitFinding:
 class NotMade:
     """Checks that were not made for one reason: what, and what to enter for it."""
 
+    reason: Reason
+    material: str
     sentence: str
     remedy: str
     count: int

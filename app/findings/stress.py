@@ -8,6 +8,7 @@ from collections.abc import Iterable, Mapping
 import numpy as np
 
 from app.findings.records import Band, SegmentFinding
+from app.findings.subjects import subject_of, utilisation_of, worst_first
 from app.phrases.checks import check_sentence, short_sentence
 from app.units import format_value, utilisation_text
 from solver.checks import Check
@@ -15,33 +16,23 @@ from solver.model import UnitSystemName
 from solver.results import Results
 
 
-def worst_by(checks: Iterable[tuple[object, Check]]) -> list[Check]:
-    """The made check of largest utilisation for each key, the first of equals; the worst first."""
-    worst: dict[object, Check] = {}
-    for key, check in checks:
-        if check.utilisation is not None and check.utilisation > _utilisation(worst.get(key)):
-            worst[key] = check
-    return sorted(worst.values(), key=_utilisation, reverse=True)
-
-
-def _utilisation(check: Check | None) -> float:
-    return -1.0 if check is None or check.utilisation is None else check.utilisation
-
-
-def segment_findings(results: Results, system: UnitSystemName) -> tuple[SegmentFinding, ...]:
-    """One finding for each segment with a made check of stress."""
+def segment_findings(
+    results: Results, system: UnitSystemName, checks: Iterable[Check]
+) -> tuple[SegmentFinding, ...]:
+    """One finding for each segment with a made check of stress among `checks` of the results."""
     places = {segment.mark: index for index, segment in enumerate(results.project.segments)}
     bands = _Bands(results, system)
-    stresses = ((check.segment, check) for check in results.checks if check.segment is not None)
-    return tuple(_finding(check, places, bands, system) for check in worst_by(stresses))
+    worst = worst_first(check for check in checks if check.segment is not None)
+    return tuple(_finding(check, places, bands, system) for check in worst)
 
 
 def _finding(
     check: Check, places: Mapping[str, int], bands: _Bands, system: UnitSystemName
 ) -> SegmentFinding:
-    utilisation = _utilisation(check)
+    utilisation = utilisation_of(check)
     mark = str(check.segment)
     return SegmentFinding(
+        subject=subject_of(check),
         segment=places[mark],
         mark=mark,
         sentence=check_sentence(check, system),

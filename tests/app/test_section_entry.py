@@ -164,3 +164,11 @@ def test_any_text_is_a_section_or_an_entry_error(text: str) -> None:
     except EntryError:
         return
     assert section_text(section, MM)
+
+
+def test_a_bore_too_small_for_any_wall_is_written_as_a_bore():
+    """Six inches of outside less a micrometre: no wall of twenty digits gives that very double."""
+    tube = TubeSection(outer=0.25, inner=1e-06)
+    text = section_text(tube, "in-lbf-psi")
+    assert "bore" in text
+    assert parse_section(text, "in-lbf-psi") == tube

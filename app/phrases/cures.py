@@ -1,0 +1,79 @@
+"""The sentences of cures: what passes with which change, and what does not pass then.
+
+Only what a solve of the changed member has shown is said.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping, Sequence
+from typing import Final
+
+from app.cures import Change, Cure, Cures
+from app.findings.listing import listed
+from app.findings.subjects import Subject, SubjectKind, subject_of
+from app.units import utilisation_text
+from app.words import later, tr
+from solver.checks import Check
+
+# A change elsewhere than in the section of the segment that does not pass.
+CHANGES: Final[Mapping[str, str]] = {
+    "section": later("{value} in {mark}"),
+    "spring": later("a spring of {value} at joint {mark}"),
+}
+
+SUBJECTS: Final[Mapping[SubjectKind, str]] = {
+    "displacement": later("displacement of joint {mark}"),
+    "relative": later("relative displacement of joints {mark} to {end}"),
+    "reaction": later("reaction at joint {mark}"),
+}
+
+
+def subject_words(subject: Subject) -> str:
+    """What a check is of, in the middle of a sentence."""
+    if subject.kind == "stress":
+        return subject.marks[0]
+    return tr(SUBJECTS[subject.kind]).format(mark=subject.marks[0], end=subject.marks[-1])
+
+
+def change_words(change: Change, subject: Subject) -> str:
+    """The change: "⌀42.5 mm", or with its place where that is not the subject's own section."""
+    if change.kind == "section" and subject == Subject("stress", (change.mark,)):
+        return change.text
+    return tr(CHANGES[change.kind]).format(value=change.text, mark=change.mark)
+
+
+def cure_sentence(cure: Cure) -> str:
+    """What passes, and what does not: "Passes with ⌀42.5 mm, 0.99; then B does not pass, 1.03"."""
+    passes = tr("Passes with {change}, {utilisation}").format(
+        change=change_words(cure.change, cure.subject), utilisation=_utilisation(cure.worst)
+    )
+    return "; ".join((passes, *_reservations(cure)))
+
+
+def cures_sentences(cures: Cures) -> tuple[str, ...]:
+    """A sentence for each cure; for a stress without any, how far the search went."""
+    if cures.found or cures.tried is None:
+        return tuple(map(cure_sentence, cures.found))
+    return (tr("None tried up to {value} passes").format(value=cures.tried.text),)
+
+
+def _reservations(cure: Cure) -> Iterator[str]:
+    if cure.fails_then:
+        one = tr("then {subjects} does not pass, {utilisation}")
+        yield _failing(cure.fails_then, one, tr("then these do not pass: {subjects}"))
+    if cure.still_fails:
+        one = tr("{subjects} still does not pass, {utilisation}")
+        yield _failing(cure.still_fails, one, tr("these still do not pass: {subjects}"))
+    if cure.unchecked_then:
+        names = list(dict.fromkeys(subject_words(subject_of(check)) for check in cure.unchecked_then))
+        yield tr("then not checked: {subjects}").format(subjects=listed(names))
+
+
+def _failing(checks: Sequence[Check], one: str, many: str) -> str:
+    names = [subject_words(subject_of(check)) for check in checks]
+    template = one if len(checks) == 1 else many
+    return template.format(subjects=listed(names), utilisation=_utilisation(checks[0]))
+
+
+def _utilisation(check: Check) -> str:
+    return utilisation_text(check.utilisation or 0.0, check.status)
