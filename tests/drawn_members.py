@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from msgspec import UNSET
+from msgspec.structs import replace
 
 from app.drawing.member import Member
 from app.samples import names, read_sample
@@ -102,11 +103,19 @@ def stopped_member() -> Project:
     )
 
 
+def uneven_member(count: int = 12) -> Project:
+    """A busy member of which some segments are a thousand times as long as others."""
+    project = busy_member(count)
+    lengths = (0.005, 2.0, 0.010, 6.0, 0.020)
+    segments = (replace(s, length=lengths[i % 5]) for i, s in enumerate(project.segments))
+    return replace(project, segments=tuple(segments))
+
+
 def all_members() -> dict[str, Project]:
     """The samples, busy members of 1 to 40 segments, and one with stops."""
     found = {name: read_sample(name) for name in names()}
     found |= {f"busy {count}": busy_member(count) for count in (1, 12, 25, 40)}
-    return found | {"stops": stopped_member()}
+    return found | {"stops": stopped_member(), "uneven": uneven_member()}
 
 
 def first_state(project: Project) -> Shown:

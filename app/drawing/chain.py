@@ -14,6 +14,8 @@ from app.drawing.words import section_text
 from app.units import format_value
 
 TICK = 4.0
+BREAK = ((-3.0, 0.0), (-1.5, -5.0), (1.5, 5.0), (3.0, 0.0))  # the zigzag of what is not to scale
+LEAST_BREAK = 9.0  # px of the segment
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 
@@ -21,7 +23,7 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
     """Line, ticks, lengths and sections of all segments inside the window."""
     rows = sketch.rows
     low, high = sketch.window
-    sketch.line((low, rows.chain), (high, rows.chain), ink="quiet", clip=True)
+    sketch.line((low, rows.chain), *_breaks(sketch), (high, rows.chain), ink="quiet", clip=True)
     for joint in range(len(sketch.member.position)):
         if sketch.holds(joint):
             along = sketch.along(joint)
@@ -33,6 +35,17 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
         if span is not None:
             across = rows.lengths[0][0], rows.sections[-1][1]
             sketch.target(span, across, Part("length", index))
+
+
+def _breaks(sketch: Sketch) -> list[tuple[float, float]]:
+    """The zigzag on the dimension line of every segment that is not to scale and has room for it."""
+    spans = [sketch.shown_span(index) for index in sketch.frame.ruler.widened]
+    chain, points = sketch.rows.chain, []
+    for low, high in sorted(span for span in spans if span is not None):
+        if high - low >= LEAST_BREAK:
+            middle = 0.5 * (low + high)
+            points += [(middle + a, chain + c) for a, c in BREAK]
+    return points
 
 
 def draw_joint_marks(sketch: Sketch, wishes: list[Wish]) -> None:

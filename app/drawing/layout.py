@@ -10,12 +10,14 @@ from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_leve
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
-from app.drawing.rows import Wishes, no_rows, round_factor, rows_in, thickest
+from app.drawing.rows import Wishes, no_rows, not_to_scale_text, round_factor, rows_in, thickest
 from app.drawing.shapes import LOADS, Box, Part, Picture, Target, Text
 from app.drawing.sketch import Sketch
 from app.drawing.supports import draw_supports
 from app.units import format_value
 from app.words import tr
+
+BESIDE_AXIS = 24.0  # upright, from what is said under the member to its axis
 
 
 def lay_out(member: Member, frame: Frame) -> Picture:
@@ -28,13 +30,13 @@ def lay_out(member: Member, frame: Frame) -> Picture:
     if frame.detail.dimensions:
         draw_chain(sketch, wishes.lengths, wishes.sections)
     draw_body(sketch)
+    if frame.detail.factor:
+        _draw_scales(sketch)
     draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
     _aim_at_labels(sketch.picture)
     aim_at_joints(sketch)
-    if frame.detail.factor:
-        _draw_factor(sketch)
     _set_edge(sketch)
     return sketch.picture
 
@@ -76,13 +78,18 @@ def _give_rows(sketch: Sketch, wishes: Wishes) -> None:
     sketch.scale = sketch.picture.factor * sketch.frame.ruler.pixels_per_metre
 
 
-def _draw_factor(sketch: Sketch) -> None:
-    """How much the drawing is stretched across the axis, in its corner away from the loads."""
-    text = tr("across ×{factor}").format(
-        factor=format_value(sketch.picture.factor, "factor", sketch.member.system, strip=True)
-    )
-    corner = sketch.frame.box
-    _note(sketch, text, corner.bottom - sketch.frame.measure(text, "small")[1] - 2.0, index=-1)
+def _draw_scales(sketch: Sketch) -> None:
+    """How the drawing departs from one scale, in its corner away from the loads."""
+    factor = format_value(sketch.picture.factor, "factor", sketch.member.system, strip=True)
+    text = tr("across ×{factor}").format(factor=factor)
+    foot = sketch.frame.box.bottom - 2.0
+    unlike = not_to_scale_text(sketch)
+    if sketch.frame.upright:
+        unlike = sketch.in_lines(unlike, "small", sketch.point(0.0, sketch.rows.axis)[0] - BESIDE_AXIS)
+    for line in (*reversed(unlike.split("\n")), text):
+        if line:
+            foot -= sketch.frame.measure(line, "small")[1]
+            _note(sketch, line, foot, index=-1)
 
 
 def _draw_no_loads(sketch: Sketch) -> None:

@@ -15,6 +15,7 @@ from app.drawing.member import Member
 from app.drawing.placing import TIGHT, Span, Wish, fits
 from app.drawing.sketch import Rows, Sketch
 from app.drawing.supports import hanging_wishes, hangs, support_of
+from app.drawing.words import not_to_scale
 from solver.model import end_of
 from solver.sections import outline
 
@@ -86,7 +87,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int) -> Rows:
     top = brackets[-1][1] if brackets else labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    edge = EDGE if sketch.frame.upright else 4.0
+    edge = EDGE if sketch.frame.upright else 4.0 + _foot(sketch)
     sections = _text_rows(sketch, wishes.sections, room - edge, most)
     chain = sections[0][0] - CHAIN
     lengths = _text_rows(sketch, wishes.lengths, chain - CHAIN, most)
@@ -178,6 +179,20 @@ def _has_hanging(sketch: Sketch) -> bool:
 def _note_height(sketch: Sketch) -> float:
     text = no_loads_text(sketch)
     return sketch.frame.measure(text, "small")[1] if text else 0.0
+
+
+def _foot(sketch: Sketch) -> float:
+    """Across, the row under everything that names what is not to scale."""
+    text = not_to_scale_text(sketch)
+    return sketch.frame.measure(text, "small")[1] if text else 0.0
+
+
+def not_to_scale_text(sketch: Sketch) -> str:
+    """The segments that are not to scale; empty where there are none, or where nothing is said."""
+    if not sketch.frame.detail.factor:
+        return ""
+    segments = sketch.member.project.segments
+    return not_to_scale([segments[index].mark for index in sketch.frame.ruler.widened])
 
 
 def thickest(member: Member) -> float:

@@ -149,13 +149,12 @@ class Sketch:
     ) -> Wish:
         """A label that wants a place; upright a long one takes several lines."""
         if self.frame.upright:
-            text = self._in_lines(text, face)
+            text = self.in_lines(text, face, LONGEST_LINE * self.frame.measure("0", face)[0])
         extent, depth = self.extents(text, face)
         return Wish(text, along, extent, depth, part, rank, slide)
 
-    def _in_lines(self, text: str, face: Face) -> str:
-        """The text with line breaks at spaces, so that it stays within the widest column."""
-        widest = LONGEST_LINE * self.frame.measure("0", face)[0]
+    def in_lines(self, text: str, face: Face, widest: float) -> str:
+        """The text with line breaks at spaces, so that it stays within a width."""
         lines = [""]
         for word in text.split(" "):
             longer = f"{lines[-1]} {word}".strip()

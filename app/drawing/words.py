@@ -2,12 +2,30 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from functools import lru_cache
 
 from app.section_entry import section_label
 from app.units import Quantity, format_value
-from app.words import language, tr
+from app.words import language, tr, trn
 from solver.model import AnySection, UnitSystemName
+
+NAMED = 4  # segments that are named before the others are counted
+
+
+def not_to_scale(marks: Sequence[str]) -> str:
+    """Which segments are drawn longer than to scale."""
+    if not marks:
+        return ""
+    named, others = ", ".join(marks[:NAMED]), len(marks) - NAMED
+    if others <= 0:
+        return tr("{marks}: not to scale along").format(marks=named)
+    text = trn(
+        "{{marks}} and {count} other: not to scale along",
+        "{{marks}} and {count} others: not to scale along",
+        others,
+    )
+    return text.format(marks=named)
 
 
 def section_text(section: AnySection, system: UnitSystemName) -> str:

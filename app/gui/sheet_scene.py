@@ -111,7 +111,7 @@ class SheetScene(QGraphicsScene):
         self._current = current and results is not None
         lengths = (segment.length for segment in project.segments)
         self._positions = tuple(accumulate(lengths, initial=0.0))
-        self._ruler = self._ruler.of(self._positions[-1])
+        self._ruler = self._ruler.of(self._positions)
         if fresh:
             self._show_curves()
         self.drawing.show_member(Member.of(project, self._shown))

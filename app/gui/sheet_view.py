@@ -151,10 +151,11 @@ class SheetView(QGraphicsView):
     def _step(self, direction: int) -> None:
         """A step of the arrow keys; it halts at every joint."""
         start = self._view.cursor.x if self._view.cursor else 0.0
-        step = direction * (self.ruler.last - self.ruler.first) / STEPS
-        low, high = sorted((start, start + step))
+        ruler = self.ruler
+        target = ruler.position_at(ruler.pixel(start) + direction * (ruler.end - ruler.begin) / STEPS)
+        low, high = sorted((start, target))
         passed = [x for x in self._sheet.positions if low < x < high]
-        self._move_cursor(passed[0 if direction > 0 else -1] if passed else start + step)
+        self._move_cursor(passed[0 if direction > 0 else -1] if passed else target)
 
     def _to_joint(self, direction: int) -> None:
         """The next joint in a direction."""
@@ -203,9 +204,16 @@ class SheetView(QGraphicsView):
         ruler, pixel = self.ruler, self.places.axes.along(point)
         low, high = sorted((ruler.begin, ruler.end))
         if not self._sheet.is_empty and low - SNAP <= pixel <= high + SNAP:
-            nearest = min(self._sheet.positions, key=lambda x: abs(ruler.pixel(x) - pixel))
+            nearest = self._joint_near(ruler.position_at(pixel), pixel)
             near = abs(ruler.pixel(nearest) - pixel) <= SNAP
             self._move_cursor(nearest if near else ruler.position_at(pixel))
+
+    def _joint_near(self, x: float, pixel: float) -> float:
+        """The position of the joint nearest to a pixel, which is one of the two around it."""
+        positions = self._sheet.positions
+        after = bisect.bisect_left(positions, x)
+        around = positions[max(after - 1, 0) : after + 1]
+        return min(around, key=lambda joint: abs(self.ruler.pixel(joint) - pixel))
 
     def _on_part_clicked(self, part: Part) -> None:
         if part.kind in OF_SEGMENT:

@@ -105,7 +105,7 @@ def _boxes(ruler: Ruler, scale: Scale, limit: Limit) -> Iterator[_Box]:
 def _hides(ruler: Ruler, scale: Scale, box: _Box, curves: tuple[FloatArray, tuple[FloatArray, ...]]) -> bool:
     """Whether a box lies on a curve or on the fill between a curve and 0."""
     x, values = curves
-    along = x / x[-1] * ruler.extent
+    along = ruler.along(x)
     inside = (along >= box.along[0]) & (along <= box.along[1])
     for curve in values:
         ends = np.interp(box.along, along, curve)

@@ -17,6 +17,7 @@ from app.drawing.member import Member
 from app.drawing.rows import depth_for, round_factor, thickest
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Picture
+from app.drawing.words import not_to_scale
 from app.numerals import reading
 from app.sheet.picture_svg import draw_picture, measure
 from app.sheet.svg import Canvas, fitted
@@ -60,7 +61,7 @@ def member_figure(
     canvas = Canvas(scale=POINT)
     draw_picture(canvas, picture)
     alt = _alt(project, project.display.unit_system)
-    return Figure(canvas.render(alt), *canvas.size, alt, _note(frame, picture))
+    return Figure(canvas.render(alt), *canvas.size, alt, _note(project, frame, picture))
 
 
 def _with_short_marks(project: Project) -> Project:
@@ -82,7 +83,7 @@ def _frame(member: Member, *, whole: bool) -> Frame:
     upright = member.project.display.layout == "vertical"
     extent = (_UPRIGHT if whole else _SMALL) if upright else _ACROSS
     ends = (_BEYOND + extent, _BEYOND) if upright else (_BEYOND, _BEYOND + extent)
-    ruler = Ruler.whole(member.position[-1], *ends)
+    ruler = Ruler.fitting(member.position, *ends)
     detail = _WHOLE if whole else _LOADS_ONLY
     along = extent + 2.0 * _BEYOND
     endless = Frame(_box(along, 0.0, upright=upright), ruler, upright, measure, detail)
@@ -101,9 +102,11 @@ def _half(member: Member, ruler: Ruler, most: float) -> float:
     return factor * true * (1.0 + 1e-9)  # so that rounding does not take the next smaller factor
 
 
-def _note(frame: Frame, picture: Picture) -> str:
+def _note(project: Project, frame: Frame, picture: Picture) -> str:
     left_out = tr("Labels without room are left out; the tables hold them.") if picture.left_out else ""
-    return f"{_scale_note(frame.ruler, picture.factor)} {left_out}".strip()
+    marks = [project.segments[index].mark for index in frame.ruler.widened]
+    unlike = f"{not_to_scale(marks)}." if marks else ""
+    return " ".join(said for said in (_scale_note(frame.ruler, picture.factor), unlike, left_out) if said)
 
 
 def _scale_note(ruler: Ruler, factor: float) -> str:

@@ -9,21 +9,36 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from typing import overload
 
+from app.drawing.ruler import Ruler as Positions
 from app.sheet.svg import Point
+from solver.arrays import FloatArray
 
 
 @dataclass(frozen=True, slots=True)
 class Ruler:
-    """Maps positions x in m to points on paper; `extent` is the drawn length of the member in points."""
+    """Maps positions x in m to points on paper; `extent` is the drawn length of the member in points.
+
+    Short segments are as wide as `positions` makes them, which is the ruler of drawing and window.
+    """
 
     upright: bool
-    length: float
-    extent: float
+    positions: Positions
 
-    def along(self, x: float) -> float:
-        """Points along the axis at the position x (m)."""
-        return x / self.length * self.extent
+    @property
+    def extent(self) -> float:
+        """The drawn length of the member in points."""
+        return self.positions.end
+
+    @overload
+    def along(self, x: float) -> float: ...
+    @overload
+    def along(self, x: FloatArray) -> FloatArray: ...
+
+    def along(self, x: float | FloatArray) -> float | FloatArray:
+        """Points along the axis at positions x (m), any shape."""
+        return self.positions.pixel(x)
 
     def point(self, along: float, aside: float) -> Point:
         """The place on paper."""

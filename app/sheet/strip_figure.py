@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from app.allowable_lines import allowable_lines, allowable_texts, over_least
+from app.drawing.ruler import Ruler as Positions
 from app.sheet.colours import QUIET
 from app.sheet.limit_labels import Limit
 from app.sheet.member_figure import Figure
@@ -99,7 +100,8 @@ def _allowables(
 def _figure(results: Results, strips: list[Strip], title: str) -> Figure:
     upright = results.project.display.layout == "vertical"
     units = results.project.display.unit_system
-    ruler = Ruler(upright, float(results.position[-1]), _UPRIGHT if upright else _ACROSS)
+    extent = _UPRIGHT if upright else _ACROSS
+    ruler = Ruler(upright, Positions.fitting(results.position.tolist(), 0.0, extent))
     canvas, place = Canvas(), 0.0
     for strip in strips:
         depth = DEPTH_UPRIGHT if upright else DEPTH_ACROSS[strip.kind]

@@ -125,15 +125,20 @@ def _with_crossings(
     x: FloatArray, value: FloatArray, over: FloatArray
 ) -> tuple[FloatArray, FloatArray, FloatArray]:
     """The points with those added where the value crosses 0 or the utilisation crosses its limit."""
-    for watched, level in ((value, 0.0), (over, 1 + PASS_MARGIN)):
-        above = watched - level
-        with np.errstate(invalid="ignore", divide="ignore"):
-            at = np.flatnonzero(above[:-1] * above[1:] < 0)
-            t = above[at] / (above[at] - above[at + 1])
-        x, value, over = (np.insert(a, at + 1, (1 - t) * a[at] + t * a[at + 1]) for a in (x, value, over))
-        exact = at + 1 + np.arange(len(at))
-        (value if level == 0.0 else over)[exact] = level
+    columns = _crossed(np.vstack([x, value, over]), 1, 0.0)
+    x, value, over = _crossed(columns, 2, 1 + PASS_MARGIN)
     return x, value, over
+
+
+def _crossed(columns: FloatArray, row: int, level: float) -> FloatArray:
+    """Points (c, k) with one put in wherever a row crosses a level on its way; where it jumps it does not."""
+    above = columns[row] - level
+    with np.errstate(invalid="ignore"):
+        at = np.flatnonzero((above[:-1] * above[1:] < 0) & (np.diff(columns[0]) > 0))
+    t = above[at] / (above[at] - above[at + 1])
+    between = (1 - t) * columns[:, at] + t * columns[:, at + 1]
+    between[row] = level
+    return np.insert(columns, at + 1, between, axis=1)
 
 
 def _runs(mask: BoolArray) -> list[tuple[int, int]]:
@@ -172,8 +177,9 @@ def _draw_signs(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, number
     x, value = strip.x, strip.curves[number]
     for sign in (1, -1) if len(strip.curves) == 1 else ((1,), (-1,))[number]:
         for low, high in _runs(sign * value > 0):
-            a, b = ruler.along(float(x[low])), ruler.along(float(x[high - 1]))
-            middle = float(np.interp((x[low] + x[high - 1]) / 2, x[low:high], value[low:high]))
+            along = ruler.along(x[low:high])
+            a, b = float(along[0]), float(along[-1])
+            middle = float(np.interp((a + b) / 2, along, value[low:high]))
             if b - a > 14 and abs(middle * scale.factor) > 11:
                 _draw_sign(canvas, ruler, ((a + b) / 2, scale.zero + middle * scale.factor / 2), sign)
 

@@ -20,5 +20,5 @@ def laid_out(size: tuple[int, int], *, upright: bool) -> SheetLayout:
 def drawing_place(member: Member, size: tuple[int, int], *, upright: bool) -> Place:
     """The place of the drawing on a sheet of a size."""
     layout = laid_out(size, upright=upright)
-    ruler = Ruler.whole(member.position[-1], layout.begin, layout.end)
+    ruler = Ruler.fitting(member.position, layout.begin, layout.end)
     return Place(layout.drawing, ruler, layout.axes, Fonts(QFont()))

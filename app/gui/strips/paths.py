@@ -81,6 +81,7 @@ class Pixels:
     @classmethod
     def of(cls, trace: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> Pixels:
         """Those of a trace that lie in the ruler's window."""
+        trace = bent(trace, ruler)
         along, across = ruler.pixel(trace.x), scale.pixels(trace.value)
         drawn = np.where(_in_window(along, ruler), trace.drawn, NONE)
         chains = {
@@ -121,6 +122,28 @@ def _in_window(along: FloatArray, ruler: Ruler) -> BoolArray:
     low, high = np.minimum(along[:-1], along[1:]), np.maximum(along[:-1], along[1:])
     inside: BoolArray = (high >= first) & (low <= last)
     return inside
+
+
+def bent(trace: Trace, ruler: Ruler) -> Trace:
+    """The trace with a point at every joint where the ruler bends.
+
+    Curves of the member shown have them already; those of an earlier edit or of a reference may not.
+    """
+    if ruler.to_scale or not len(trace.x):
+        return trace
+    joints = np.asarray(ruler.joints)
+    after = np.searchsorted(trace.x, joints)
+    inside = (after > 0) & (after < len(trace.x)) & (trace.x[np.minimum(after, len(trace.x) - 1)] != joints)
+    if not inside.any():
+        return trace
+    joints, after = joints[inside], after[inside]
+    share = (joints - trace.x[after - 1]) / (trace.x[after] - trace.x[after - 1])
+    value = trace.value[after - 1] + share * (trace.value[after] - trace.value[after - 1])
+    return Trace(
+        np.insert(trace.x, after, joints),
+        np.insert(trace.value, after, value),
+        np.insert(trace.drawn, after, trace.drawn[after - 1]),
+    )
 
 
 def polyline(along: FloatArray, across: FloatArray, axes: Axes, joined: BoolArray) -> Polyline:

@@ -26,4 +26,4 @@ def window_frame(member: Member, size: tuple[float, float], *, upright: bool) ->
         box, ends = Box(0.0, 0.0, 0.45 * width, height - 44.0), (height - 96.0, 48.0)
     else:
         box, ends = Box(0.0, 4.0, width, 4.0 + 0.4 * (height - 44.0)), (7.2 * HEIGHT, width - 5.2 * HEIGHT)
-    return Frame(box, Ruler.whole(member.position[-1], *ends), upright, measure)
+    return Frame(box, Ruler.fitting(member.position, *ends), upright, measure)

@@ -16,7 +16,7 @@ from app.shown import Shown
 from solver.model import Project
 from solver.sections import outline
 from tests.app.drawing.frames import SIZES, window_frame
-from tests.drawn_members import all_members, busy_member, drawn, first_state, stopped_member
+from tests.drawn_members import all_members, busy_member, drawn, first_state, stopped_member, uneven_member
 
 MEMBERS = all_members()
 EVERY_MEMBER = pytest.mark.parametrize("name", MEMBERS)
@@ -110,6 +110,26 @@ class TestScale:
             next(s for s in shown.strokes if s.part == Part("segment", i) and s.closed) for i in (0, 4)
         )
         assert around(first).bottom > around(last).bottom
+
+
+class TestNotToScale:
+    @BOTH_WAYS
+    def test_is_said_by_the_marks_of_the_segments(self, upright):
+        shown = picture(uneven_member(), upright=upright, size=SIZES[1])
+        lines = [t for t in shown.texts if t.part == Part("note", -1) and "×" not in t.text]
+        note = " ".join(t.text for t in sorted(lines, key=lambda t: t.box.top))
+        assert note == "S0, S2, S4, S5 and 3 others: not to scale along"
+
+    @BOTH_WAYS
+    def test_is_marked_by_a_break_of_the_dimension_line(self, upright):
+        lines = [
+            picture(p, upright=upright, size=SIZES[1]).strokes for p in (uneven_member(), busy_member(4))
+        ]
+        breaks = [max(len(s.points) for s in strokes if s.ink == "quiet") for strokes in lines]
+        assert breaks == [2 + 4 * 7, 4]  # else that of a distributed load
+
+    def test_is_not_said_where_there_is_none(self):
+        assert not any("to scale" in t.text for t in picture(busy_member(12)).texts)
 
 
 class TestParts:

@@ -70,7 +70,7 @@ def test_positions_stay_on_the_member():
 
 def test_another_length_keeps_a_close_window_but_not_beyond_the_end():
     ruler = Ruler.whole(10.0, 0.0, 100.0)
-    assert ruler.of(12.0) == Ruler.whole(12.0, 0.0, 100.0)
+    assert ruler.of((0.0, 12.0)) == Ruler.whole(12.0, 0.0, 100.0)
     close = ruler.zoomed(5.0, 0.0)
-    assert (close.of(12.0).first, close.of(12.0).last) == (close.first, close.last)
-    assert close.of(1.0).whole_shown
+    assert (close.of((0.0, 12.0)).first, close.of((0.0, 12.0)).last) == (close.first, close.last)
+    assert close.of((0.0, 1.0)).whole_shown

@@ -17,13 +17,13 @@ from app.samples import names, read_sample
 from app.sheet import colours
 from app.sheet.figures import Figure, envelope_figure, member_figure, state_figure
 from app.sheet.printable import printable_in_figure
-from app.sheet.strips import Strip
+from app.sheet.strips import Strip, _with_crossings
 from app.sheet.strips import _scale as _scale_of
 from app.sheet.svg import Canvas, Ink, text_width
 from solver.model import Display, Project, SpringSupport
 from solver.results import Results
 from solver.solve import solve
-from tests.drawn_members import busy_member
+from tests.drawn_members import busy_member, uneven_member
 from tests.strategies import projects
 
 SVG = "{http://www.w3.org/2000/svg}"
@@ -56,6 +56,20 @@ def figures(results: Results) -> list[Figure]:
         state_figure(results, 0),
         envelope_figure(results),
     ]
+
+
+def test_what_is_not_to_scale_is_named_under_the_drawing() -> None:
+    results = solve(uneven_member())
+    note = member_figure(results.project, results.position).note
+    assert "S0, S2, S4, S5 and 3 others: not to scale along." in note
+
+
+def test_a_curve_that_ends_at_a_joint_and_changes_sign_elsewhere_is_drawn_whole() -> None:
+    x = np.array([0.0, 1.0, 1.0, 2.0])
+    value, over = np.array([-1.0, 1.0, np.nan, np.nan]), np.array([0.5, 1.5, 0.0, 0.0])
+    crossed = _with_crossings(x, value, over)
+    np.testing.assert_allclose(crossed[0], [0.0, 0.5, 0.5, 1.0, 1.0, 2.0], atol=1e-8)
+    assert np.isfinite(crossed[1][:4]).all()
 
 
 @pytest.mark.parametrize("orientation", ["horizontal", "vertical"])
