@@ -93,7 +93,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("forget_reference", "&View", later("&Forget reference"), "Ctrl+Shift+K"),
     SEPARATOR,
     Command(LANGUAGE, "&View", later("&Language")),
-    Command("keys", "&Help", later("&Keys"), KEYS.HelpContents, fallback="F1"),
+    Command("help", "&Help", later("&Help on this pane"), KEYS.HelpContents, fallback="F1"),
+    Command("keys", "&Help", later("&Keys")),
     Command("log", "&Help", later("Where the &log is")),
     Command("about", "&Help", later("&About Barwright"), role=Role.AboutRole),
 )
@@ -145,14 +146,14 @@ def fill_menus(bar: QMenuBar, actions: Mapping[str, QAction], submenus: Mapping[
             current.addAction(actions[command.key])
 
 
-def keys_text() -> str:
-    """The keys for the help page, a line each."""
-    lines = []
+def command_keys() -> tuple[tuple[str, str], ...]:
+    """Each command that has keys: the keys, and what it is called."""
+    found = []
     for command in COMMANDS:
         keys = [text for key in shortcuts_of(command) if (text := keyboard_text(key))]
         if keys:
-            lines.append(f"{', '.join(keys)}\t{tr(command.text).replace('&', '').rstrip('…')}")
-    return "\n".join(lines)
+            found.append((", ".join(keys), tr(command.text).replace("&", "").rstrip("…")))
+    return tuple(found)
 
 
 def keyboard_text(key: QKeySequence) -> str:

@@ -1,15 +1,18 @@
-"""Texts to read and copy: the keys, where the log is, about the program, the report of a fault."""
+"""What is read beside the work: pages of help, where the log is, about the program, the report of a fault."""
 
 from __future__ import annotations
 
-from typing import Final
+from typing import TYPE_CHECKING, Final
 
 from PySide6.QtWidgets import QWidget
 
 from app.gui import dialogs, settings
-from app.gui.actions import keys_text
+from app.gui.actions import command_keys
 from app.version import VERSION
 from app.words import later, tr
+
+if TYPE_CHECKING:
+    from app.gui.help_window import HelpWindow
 
 SHEET_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("← →", later("Move the cursor along the member (↑ ↓ where it is upright)")),
@@ -33,16 +36,18 @@ FINDINGS_KEYS: Final[tuple[tuple[str, str], ...]] = (
 )
 
 
-def all_keys() -> str:
-    """The keys of the commands and of each pane, a line each."""
-    parts = [f"{tr('Everywhere')}\n{keys_text()}"]
-    for title, keys in (
+KeyGroup = tuple[str, tuple[tuple[str, str], ...]]
+
+
+def key_groups() -> tuple[KeyGroup, ...]:
+    """The keys of the commands and of each pane, with their words, under a title each."""
+    panes = (
         (tr("In the sheet"), SHEET_KEYS),
         (tr("In the tables"), TABLE_KEYS),
         (tr("In the findings"), FINDINGS_KEYS),
-    ):
-        parts.append("\n".join([title, *(f"{key}\t{tr(words)}" for key, words in keys)]))
-    return "\n\n".join(parts)
+    )
+    own = tuple((title, tuple((key, tr(words)) for key, words in keys)) for title, keys in panes)
+    return ((tr("Everywhere"), command_keys()), *own)
 
 
 class Help:
@@ -51,10 +56,17 @@ class Help:
     def __init__(self, window: QWidget) -> None:
         self._window = window
         self._fault_told = False
+        self._pages: HelpWindow | None = None
 
-    def show_keys(self) -> None:
-        """The keys."""
-        dialogs.show_text(self._window, tr("Keys"), tr("Keys of the commands and the panes"), all_keys())
+    def show_page(self, page: str, heading: str = "") -> None:
+        """A page of help, in a window of its own that stays open beside the work."""
+        from app.gui.help_window import HelpWindow
+
+        if self._pages is None:
+            self._pages = HelpWindow(self._window)
+        self._pages.show_page(page, heading)
+        self._pages.show()
+        self._pages.activateWindow()
 
     def show_log(self) -> None:
         """Where the log is."""

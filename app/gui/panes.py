@@ -12,6 +12,17 @@ from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.top_bar import TopBar
 
+_TABLES = ("entering", "")
+_TABLE_TOPICS = {
+    "joints": ("loads", "supports"),
+    "load_cases": ("loads", "cases"),
+    "segment_loads": ("loads", "cases"),
+    "joint_loads": ("loads", "cases"),
+    "combinations": ("loads", "combinations"),
+    "materials": ("entering", "materials"),
+    **dict.fromkeys(("limits displacement", "limits relative", "limits reaction"), ("loads", "limits")),
+}
+
 
 class Panes(QWidget):
     """The middle of the window."""
@@ -81,9 +92,17 @@ class Panes(QWidget):
             self._tables.current_view(),
             self._top_bar.show_picker,
         )
+        panes[(self._here() + by) % len(panes)].setFocus(Qt.FocusReason.ShortcutFocusReason)
+
+    def _here(self) -> int:
+        """Which pane has the keyboard, in the order of F6; −1 for none."""
         around = (self._sheet, self._findings, self._tables, self._top_bar)
         focus = QApplication.focusWidget()
-        here = next(
+        return next(
             (i for i, pane in enumerate(around) if focus and (pane is focus or pane.isAncestorOf(focus))), -1
         )
-        panes[(here + by) % len(panes)].setFocus(Qt.FocusReason.ShortcutFocusReason)
+
+    def topic(self) -> tuple[str, str]:
+        """The page and heading of help on the pane that has the keyboard."""
+        tables = _TABLE_TOPICS.get(self._tables.current_view().table_model.table.key, _TABLES)
+        return {0: ("reading", "strips"), 1: ("reading", "findings"), 2: tables}.get(self._here(), _TABLES)

@@ -123,7 +123,8 @@ class Window(QMainWindow):
             "previous_pane": lambda: self.panes.go_to(-1),
             "keep_reference": self.comparing.keep,
             "forget_reference": self.comparing.forget,
-            "keys": self.help.show_keys,
+            "help": lambda: self.help.show_page(*self.panes.topic()),
+            "keys": lambda: self.help.show_page("keys"),
             "log": self.help.show_log,
             "about": self.help.show_about,
         }

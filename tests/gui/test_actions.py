@@ -12,7 +12,6 @@ from app.gui.actions import (
     SEPARATOR,
     SUBMENUS,
     fill_menus,
-    keys_text,
     make_actions,
     shortcuts_of,
 )
@@ -64,14 +63,6 @@ def test_each_command_calls_its_own_handler(menu_bar):
     for key, action in actions.items():
         action.trigger()
         assert called[-1] == key
-
-
-def test_the_help_page_lists_the_keys_that_a_keyboard_has(qapp):
-    text = keys_text()
-    for command in REAL:
-        for key in shortcuts_of(command)[:1]:
-            assert key.toString(QKeySequence.SequenceFormat.NativeText) in text
-    assert not any(odd in text for odd in ("F14", "F16", "F18", ", New", ", Exit", "Shift+Save"))
 
 
 def test_the_columns_of_a_shown_text_stand_under_each_other(qtbot):

@@ -44,6 +44,11 @@ class Widths:
         if view.isVisible() and any(view.columnWidth(place) < self._needed(place) for place in places):
             self.share()
 
+    @property
+    def needed(self) -> int:
+        """The width of the whole table at which none of its texts is cut off."""
+        return sum(self._needed(place) for place in self._view.shown_columns())
+
     def _usual(self, place: int) -> int:
         digits = self._view.table_model.columns[place].width
         return digits * self._view.fontMetrics().horizontalAdvance("0") + 2 * MARGIN
