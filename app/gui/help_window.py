@@ -78,7 +78,7 @@ class HelpWindow(QDialog):
         parts.addWidget(self.list)
         parts.addWidget(self.page)
         parts.setStretchFactor(1, 1)
-        parts.setSizes([13 * self.fontMetrics().height(), SIZE[0]])
+        parts.setSizes([self.list.sizeHintForColumn(0) + 16, SIZE[0]])
         rows = QVBoxLayout(self)
         rows.setContentsMargins(0, 0, 0, 0)
         rows.addLayout(top)
