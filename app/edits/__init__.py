@@ -7,7 +7,7 @@ from app.edits.cases import remove_case, set_factor
 from app.edits.cells import add_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
 from app.edits.loads import set_joint_load, set_segment_load
-from app.edits.member import delete_segments, insert_segment, reverse_member
+from app.edits.member import delete_segments, insert_segment, move_segments, reverse_member
 from app.edits.parts import join_segments, split_segment
 from app.edits.renaming import (
     rename_case,
@@ -23,6 +23,7 @@ __all__ = [
     "delete_segments",
     "insert_segment",
     "join_segments",
+    "move_segments",
     "remove_case",
     "remove_records",
     "rename_case",

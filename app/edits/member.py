@@ -1,4 +1,4 @@
-"""Edits of the chain itself: insert, delete and reverse. Split and join are in `parts`.
+"""Edits of the chain itself: insert, move, delete and reverse. Split and join are in `parts`.
 
 A segment's own joint is the one at its far end, as in a row of the segment table: it comes and goes with the
 segment, so the first joint always stays.
@@ -71,6 +71,20 @@ def _prismatic(section: AnySection, *, at_start: bool) -> AnySection:
     if at_start:
         return type(section)(**sizes)
     return type(section)(**{name: end_of(size, ends[name]) for name, size in sizes.items()})
+
+
+def move_segments(project: Project, indices: Iterable[int], before: int) -> Project:
+    """The project with these segments, in their order, put before the one that is now at `before` (0…n).
+
+    A segment travels with its section, material, bedding and loads, as they belong to its mark. The joints
+    stay where they are in the chain, by their order, with their marks, supports, loads and limits: a bearing
+    that was the second from the start still is, wherever that lies now. No support comes or goes by a move.
+    """
+    moving = set(indices)
+    taken = [segment for index, segment in enumerate(project.segments) if index in moving]
+    front = [segment for index, segment in enumerate(project.segments[:before]) if index not in moving]
+    back = [s for index, s in enumerate(project.segments[before:], before) if index not in moving]
+    return checked(structs.replace(project, segments=(*front, *taken, *back)))
 
 
 def delete_segments(project: Project, indices: Iterable[int]) -> Project:

@@ -71,6 +71,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("insert_before", "&Member", later("Insert segment &before"), "Ctrl+Shift+B"),
     Command("insert_after", "&Member", later("Insert segment &after"), "Ctrl+B"),
     Command("delete_segments", "&Member", later("&Delete segments"), "Ctrl+Delete"),
+    Command("move_up", "&Member", later("Move segments to&wards the start"), "Ctrl+Shift+Up"),
+    Command("move_down", "&Member", later("Move segments towards the &end"), "Ctrl+Shift+Down"),
     SEPARATOR,
     Command("split", "&Member", later("&Split segment in the middle"), "Ctrl+Shift+D"),
     Command("join", "&Member", later("&Join segments"), "Ctrl+J"),
@@ -160,4 +162,4 @@ def keyboard_text(key: QKeySequence) -> str:
     """The key as it is written; empty for one of old workstations or media keyboards, which Qt lists too."""
     text = key.toString(QKeySequence.SequenceFormat.NativeText)
     last = text.split("+")[-1]
-    return text if re.fullmatch(r".?|F[1-9]|F1[0-2]|Ins|Del|Backspace", last) else ""
+    return text if re.fullmatch(r".?|F[1-9]|F1[0-2]|Ins|Del|Backspace|Up|Down", last) else ""

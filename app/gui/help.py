@@ -27,6 +27,7 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("Tab, Shift+Tab", later("The next cell or the one before, and out of the table at its ends")),
     ("F2", later("Edit the cell")),
     ("↓ ↑", later("While a cell is edited: go through the names that it offers")),
+    ("Ctrl+Enter", later("Take in what is typed, in all chosen cells of the column")),
     ("Esc", later("Leave the cell as it was")),
     ("Delete", later("Clear cells")),
 )

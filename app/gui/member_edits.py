@@ -1,4 +1,4 @@
-"""The commands that change the member as a whole: insert, delete, split, join, reverse, rows of any table.
+"""The commands that change the member as a whole: insert, move, delete, split, join, reverse; rows of tables.
 
 Each is one undo step on the records chosen in the tables; what cannot be done is said in the status line.
 """
@@ -58,6 +58,34 @@ class MemberEdits(QObject):
         index = max(chosen, default=last) + 1
         self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
         self._choose(index)
+
+    def move_up(self) -> None:
+        """The chosen segments one place towards the start."""
+        chosen = self._chosen()
+        self.move_before(min(chosen, default=0) - 1)
+
+    def move_down(self) -> None:
+        """The chosen segments one place towards the end."""
+        chosen = self._chosen()
+        self.move_before(max(chosen, default=-1) + 2)
+
+    def move_before(self, place: int) -> None:
+        """The chosen segments before the one at `place`; the joints stay, which is said where it matters."""
+        chosen, before = self._chosen(), self._document.project
+        if not chosen:
+            self.told.emit(tr("choose segments to move in the table first"))
+        elif not 0 <= place <= len(before.segments):
+            at_start = tr("nothing lies before it")
+            self.told.emit(at_start if place < 0 else tr("nothing lies behind it"))
+        else:
+            self._do(tr("Move segments"), lambda project: edits.move_segments(project, chosen, place))
+            first = place - sum(index < place for index in chosen)
+            moved = frozenset(range(first, first + len(chosen)))
+            self._tables.views["segments"].choose_records(moved)
+            if self._document.project is not before and _joints_carry(before, {*chosen, *moved}):
+                self.told.emit(
+                    tr("supports and loads of joints stay at their joints, in the order of the chain")
+                )
 
     def delete_segments(self) -> None:
         """The chosen segments, with their loads."""
@@ -121,6 +149,13 @@ class MemberEdits(QObject):
         else:
             delete, sight = table.delete, view.table_model.sight
             self._do(tr(table.delete_name), lambda project: delete(project, chosen, sight))
+
+
+def _joints_carry(project: Project, segments: set[int]) -> bool:
+    """Whether a joint between these segments is held or loaded."""
+    between = project.joints[min(segments) + 1 : max(segments) + 1]
+    loaded = {load.joint for case in project.load_cases for load in case.joint_loads}
+    return any(joint.mark in loaded or not isinstance(joint.support, UnsetType) for joint in between)
 
 
 def also_gone(before: Project, after: Project) -> str:

@@ -115,6 +115,8 @@ class Window(QMainWindow):
             "delete_rows": self.edits.delete_rows,
             "insert_before": self.edits.insert_before,
             "insert_after": self.edits.insert_after,
+            "move_up": self.edits.move_up,
+            "move_down": self.edits.move_down,
             "delete_segments": self.edits.delete_segments,
             "split": self.edits.split,
             "join": self.edits.join,
@@ -141,6 +143,7 @@ class Window(QMainWindow):
         for room in (self.files, self.printing, self.edits, self.recovery, self.comparing, self.in_place):
             room.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
+        self.tables.rows_moved.connect(self.edits.move_before)
 
     # The document
 

@@ -422,3 +422,28 @@ EDITS: list[Any] = [
     lambda member, index: edits.rename_material(member, member.segments[index].material, "renamed"),
     lambda member, _: edits.remove_case(member, "name 0"),
 ]
+
+
+# --- move ---
+
+
+@given(projects(max_segments=6), st.data())
+def test_moving_segments_keeps_them_and_leaves_the_joints(member: Project, data: st.DataObject) -> None:
+    count = len(member.segments)
+    taken = sorted(data.draw(st.sets(st.integers(0, count - 1))))
+    before = data.draw(st.integers(0, count))
+    moved = edits.move_segments(member, taken, before)
+    others = [segment for index, segment in enumerate(member.segments) if index not in taken]
+    first = sum(index not in taken for index in range(before))
+    assert [member.segments[index] for index in taken] == list(moved.segments[first : first + len(taken)])
+    assert [*moved.segments[:first], *moved.segments[first + len(taken) :]] == others
+    assert (moved.joints, moved.load_cases, moved.limits) == (member.joints, member.load_cases, member.limits)
+
+
+@given(projects(max_segments=6), st.data())
+def test_a_segment_moved_back_gives_the_same_bytes(member: Project, data: st.DataObject) -> None:
+    index = data.draw(st.integers(0, len(member.segments) - 1))
+    to = data.draw(st.integers(0, len(member.segments) - 1))
+    there = edits.move_segments(member, (index,), to + (to > index))
+    assert there.segments[to] is member.segments[index]
+    assert dump(edits.move_segments(there, (to,), index + (index > to))) == dump(member)

@@ -149,3 +149,4 @@ class Table:
     total: Callable[[Project, Figures, Sight], str] | None = None
     delete: Callable[[Project, tuple[int, ...], Sight], Project] | None = None
     delete_name: str = ""
+    movable: bool = False  # whether the order of the rows is a person's to change

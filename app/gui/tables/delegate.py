@@ -34,6 +34,8 @@ class CellDelegate(QStyledItemDelegate):
     """Paints cells by the model's roles, in the theme's colours."""
 
     stepped = Signal(int)  # Enter in an editor: rows to move by
+    began = Signal()  # a cell is being typed into
+    meant_for_all = Signal(str)  # Ctrl+Enter: the text, for all chosen cells of the column
 
     def __init__(self, theme: Theme, parent: QObject | None = None) -> None:
         super().__init__(parent)
@@ -118,6 +120,7 @@ class CellDelegate(QStyledItemDelegate):
             kept = QPersistentModelIndex(index)
             for typed in (editor.textEdited, editor.offered):
                 typed.connect(lambda text: model.preview(kept, text) if kept.isValid() else None)
+            self.began.emit()
         return editor
 
     def setEditorData(self, editor: QWidget, index: Index) -> None:
@@ -131,14 +134,21 @@ class CellDelegate(QStyledItemDelegate):
             model.setData(index, editor.text())
 
     def eventFilter(self, editor: QObject, event: QEvent) -> bool:
-        """Enter commits and moves down (up with Shift); the rest is Qt's."""
+        """Enter commits and moves down (up with Shift), with Ctrl into all chosen cells; the rest is Qt's."""
         pressed = isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress
         if pressed and event.key() in ENTER and isinstance(editor, QWidget):
-            back = bool(event.modifiers() & Qt.KeyboardModifier.ShiftModifier)
-            self._take_in(editor)
-            self.stepped.emit(-1 if back else 1)
+            self._on_enter(editor, event.modifiers())
             return True
         return super().eventFilter(editor, event)
+
+    def _on_enter(self, editor: QWidget, modifiers: Qt.KeyboardModifier) -> None:
+        if modifiers & Qt.KeyboardModifier.ControlModifier and isinstance(editor, QLineEdit):
+            text = editor.text()
+            self.closeEditor.emit(editor, QAbstractItemDelegate.EndEditHint.RevertModelCache)
+            self.meant_for_all.emit(text)
+            return
+        self._take_in(editor)
+        self.stepped.emit(-1 if modifiers & Qt.KeyboardModifier.ShiftModifier else 1)
 
     def _take_in(self, editor: QWidget) -> None:
         self.commitData.emit(editor)

@@ -141,7 +141,10 @@ class TableModel(RowsModel):
     def headerData(
         self, section: int, orientation: Qt.Orientation, role: int = Qt.ItemDataRole.DisplayRole
     ) -> Any:
-        """The column's title over its unit; rows have no header."""
+        """The column's title over its unit; a row's name is for screen readers only."""
+        if orientation == Qt.Orientation.Vertical and self.is_record(section):
+            name = self.table.row_name(self._document.project, self.record_of(section), self._sight)
+            return name if role == Qt.ItemDataRole.AccessibleTextRole else None
         if orientation != Qt.Orientation.Horizontal or not 0 <= section < len(self._columns):
             return None
         title, unit = self.heading(section)

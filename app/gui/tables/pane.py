@@ -37,6 +37,7 @@ class TablesPane(QWidget):
     """All tables of one document; their selection is the view's."""
 
     noted = Signal(str)
+    rows_moved = Signal(int)  # the chosen segments were dragged before the one at this place
     committing = Signal()  # whoever types into a cell elsewhere takes in what it holds
     current_table_changed = Signal()
 
@@ -74,6 +75,8 @@ class TablesPane(QWidget):
         model.noted.connect(self.noted)
         view = TableView(model, theme)
         self.views[table.key] = view
+        if view.grips is not None:
+            view.grips.moved.connect(self.rows_moved)
         return view
 
     @staticmethod

@@ -98,6 +98,11 @@ class RowsModel(QAbstractTableModel):
     # What stands where
 
     @property
+    def document(self) -> Document:
+        """What the table shows a part of."""
+        return self._document
+
+    @property
     def columns(self) -> tuple[Column, ...]:
         """The columns as they are now."""
         return self._columns

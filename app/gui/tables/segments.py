@@ -181,4 +181,5 @@ SEGMENTS = Table(
     total=total_line,
     delete=lambda project, indexes, _sight: edits.delete_segments(project, indexes),
     delete_name=later("Delete segments"),
+    movable=True,
 )

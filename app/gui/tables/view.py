@@ -6,7 +6,7 @@ can be empty, Escape restores.
 
 from __future__ import annotations
 
-from PySide6.QtCore import QItemSelection, QItemSelectionModel, Qt, Signal
+from PySide6.QtCore import QItemSelection, QItemSelectionModel, QModelIndex, Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
@@ -16,9 +16,11 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.gui.hand.cell_entry import CellEntry
 from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.delegate import ENTER, MARGIN, CellDelegate
+from app.gui.tables.grips import RowGrips
 from app.gui.tables.model import TableModel
 from app.gui.tables.shown_columns import ShownColumns
 from app.gui.tables.widths import Widths
@@ -26,6 +28,7 @@ from app.gui.theme import Theme
 from app.words import tr
 
 ROW_HEIGHT = 26
+ONE_BY_ONE = ("mark", "name")  # columns of what no two records can share
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
 
@@ -40,6 +43,8 @@ class TableView(QTableView):
         self._cells = CellDelegate(theme, self)
         self._cells.stepped.connect(self.step)
         self._cells.closeEditor.connect(self.on_editor_closed)
+        self._cells.began.connect(self.on_editor_begun)
+        self._cells.meant_for_all.connect(self.put_in_chosen)
         self.setItemDelegate(self._cells)
         self.setModel(model)
         self.widths, self.blocks = Widths(self), Blocks(self)
@@ -47,6 +52,9 @@ class TableView(QTableView):
         self.horizontalHeader().setAccessibleName(
             tr("Columns of {table}").format(table=tr(model.table.title))
         )
+        self.grips = RowGrips(self, theme) if model.table.movable else None
+        if self.grips is not None:
+            self.setVerticalHeader(self.grips)
         self._dress()
         self.set_theme(theme)
         self.columns_choice = ShownColumns(self)
@@ -65,8 +73,8 @@ class TableView(QTableView):
         triggers = QAbstractItemView.EditTrigger
         self.setEditTriggers(triggers.DoubleClicked | triggers.EditKeyPressed | triggers.AnyKeyPressed)
         self.setHorizontalScrollMode(QAbstractItemView.ScrollMode.ScrollPerPixel)
-        self.verticalHeader().hide()
         rows = self.verticalHeader()
+        rows.setVisible(self.grips is not None)
         rows.setMinimumSectionSize(24)
         rows.setDefaultSectionSize(max(ROW_HEIGHT, self.fontMetrics().height() + 10))
         head = self.horizontalHeader()
@@ -79,11 +87,17 @@ class TableView(QTableView):
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""
         self._cells.theme = theme
+        if self.grips is not None:
+            self.grips.theme = theme
         self.horizontalHeader().setStyleSheet(
             f"QHeaderView {{ background: {theme.card}; border: none;"
             f" border-bottom: 1px solid {theme.edge}; }}"
             f"QHeaderView::section {{ background: {theme.card}; color: {theme.quiet}; border: none;"
             f" border-bottom: 1px solid {theme.edge}; padding: 2px {MARGIN}px; }}"
+        )
+        self.setStyleSheet(
+            f"QTableCornerButton::section {{ background: {theme.card}; border: none;"
+            f" border-bottom: 1px solid {theme.edge}; }}"
         )
         self.viewport().update()
 
@@ -166,6 +180,35 @@ class TableView(QTableView):
         """Escape takes the preview back."""
         if hint == QAbstractItemDelegate.EndEditHint.RevertModelCache:
             self.table_model.drop_preview()
+
+    def _chosen_for(self, current: QModelIndex) -> tuple[int, ...]:
+        """The records of the chosen cells in the current cell's column that are for typing, its own first."""
+        model = self.table_model
+        alone = (
+            not 0 <= current.row() < model.record_rows or model.columns[current.column()].key in ONE_BY_ONE
+        )
+        rows = (
+            {} if alone else dict.fromkeys((current.row(), *sorted(i.row() for i in self.selectedIndexes())))
+        )
+        typed = (row for row in rows if model.text_to_fill(row, current.column()) is not None)
+        return tuple(model.record_of(row) for row in typed if self.selectionModel().isSelected(current))
+
+    def on_editor_begun(self) -> None:
+        """Say what Ctrl+Enter does where it does more than Enter."""
+        count = len(self._chosen_for(self.currentIndex()))
+        if count > 1:
+            self.table_model.noted.emit(
+                tr("Ctrl+Enter puts it into all {count} chosen cells").format(count=count)
+            )
+
+    def put_in_chosen(self, text: str) -> None:
+        """What was typed into the current cell, into all chosen cells of its column: one undo step."""
+        current, model = self.currentIndex(), self.table_model
+        records = self._chosen_for(current)
+        if len(records) > 1:
+            CellEntry(model.document, model, current.column(), records).commit(text)
+        else:
+            model.setData(current, text)
 
     def commit_open_editor(self) -> None:
         """Take in what an open editor holds, before saving or closing."""
