@@ -39,7 +39,8 @@ SAMPLES: Final = "samples"
 TYPICAL: Final = "typical"
 COLUMNS: Final = "columns"
 LANGUAGE: Final = "language"
-SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS, LANGUAGE)
+STRIPS: Final = "strips"
+SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS, LANGUAGE, STRIPS)
 
 COMMANDS: Final[tuple[Command, ...]] = (
     Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
@@ -83,6 +84,8 @@ COMMANDS: Final[tuple[Command, ...]] = (
     SEPARATOR,
     Command("next_pane", "&View", later("&Next pane"), "F6"),
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
+    SEPARATOR,
+    Command(STRIPS, "&View", later("&Strips")),
     SEPARATOR,
     Command(
         "keep_reference",

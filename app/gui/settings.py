@@ -8,6 +8,7 @@ from typing import Final, cast, get_args
 
 from PySide6.QtCore import QByteArray, QSettings, QStandardPaths
 
+from app.strip_choice import StripChoice
 from app.words import LANGUAGES
 from solver.model import DEFAULT_UNITS, UnitSystemName
 
@@ -95,6 +96,24 @@ class Settings:
     def set_language(self, language: str) -> None:
         """Remember a language, empty for the system's."""
         self._store.setValue("language", language)
+
+    @property
+    def strips(self) -> StripChoice:
+        """The strips chosen last, in their order."""
+        return StripChoice.of_text(str(self._store.value("strips", "")))
+
+    def set_strips(self, strips: StripChoice) -> None:
+        """Remember the strips."""
+        self._store.setValue("strips", strips.text)
+
+    @property
+    def together(self) -> bool:
+        """Whether single states and envelope were drawn together last."""
+        return str(self._store.value("together", "")) == "yes"
+
+    def set_together(self, together: bool) -> None:
+        """Remember whether they are."""
+        self._store.setValue("together", "yes" if together else "no")
 
     def sync(self) -> None:
         """Write what has changed to the file."""

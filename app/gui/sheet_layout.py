@@ -6,7 +6,9 @@ beside it. Both share the pixels `begin`…`end` along the member's axis.
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
+from typing import TypeAlias
 
 from PySide6.QtCore import QPointF, QRectF
 
@@ -14,9 +16,11 @@ from app.drawing.frame import Frame
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box
 from app.gui.fonts import Fonts
+from app.strip_choice import KINDS, Kind
 
-SHARES_ACROSS = (0.22, 0.26, 0.31, 0.21)  # u, N, σ, utilisation: stress carries the most
-SHARES_UPRIGHT = (0.23, 0.25, 0.29, 0.23)  # side by side each needs room for its words
+Shares: TypeAlias = Mapping[Kind, float]
+SHARES_ACROSS: Shares = dict(zip(KINDS, (0.22, 0.26, 0.31, 0.21), strict=True))  # stress carries the most
+SHARES_UPRIGHT: Shares = dict(zip(KINDS, (0.23, 0.25, 0.29, 0.23), strict=True))  # each has words above it
 GAP = 12.0
 READOUT_LINES, LINE_EDGES = 2, 0.6  # lines kept free for the readout; above and below them, in text heights
 LEAST_STRIP = 1.9  # across, the least depth of a strip in heights of the text: its title and one value
@@ -90,41 +94,50 @@ def least_height(text_height: float) -> float:
     return (9.0 + 4 * LEAST_STRIP + READOUT_LINES + LINE_EDGES) * text_height + 5 * GAP
 
 
-def sheet_layout(width: float, height: float, upright: bool, text_height: float) -> SheetLayout:
-    """The layout on a sheet of the given pixels; margins follow the height of the text."""
+def sheet_layout(
+    width: float, height: float, upright: bool, text_height: float, kinds: tuple[Kind, ...] = KINDS
+) -> SheetLayout:
+    """The layout with some strips on a sheet of the given pixels; margins follow the height of the text.
+
+    The room of a strip that is not shown goes to the others.
+    """
     readout_height = round((READOUT_LINES + LINE_EDGES) * text_height)
     place = _upright if upright else _across
-    return place(width, height - readout_height - 8.0, readout_height, text_height)
+    return place(width, height - readout_height - 8.0, readout_height, text_height, kinds)
 
 
-def _across(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
+def _across(
+    width: float, height: float, readout_height: float, text_height: float, kinds: tuple[Kind, ...]
+) -> SheetLayout:
     left, right = 7.2 * text_height, 5.2 * text_height
     begin, end = left, max(width - right, left + 50.0)
     drawing_height = min(max(0.40 * height, 11.0 * text_height), 26.0 * text_height)
     drawing_height = min(drawing_height, height - 4 * (LEAST_STRIP * text_height + GAP))
     drawing = QRectF(0.0, 4.0, width, drawing_height)
-    spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS)
+    spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS, kinds)
     strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)
     readout = QRectF(GAP, height + 4.0, width - 2 * GAP, readout_height)
     return SheetLayout(Axes(upright=False), drawing, strips, readout, begin, end)
 
 
-def _upright(width: float, height: float, readout_height: float, text_height: float) -> SheetLayout:
+def _upright(
+    width: float, height: float, readout_height: float, text_height: float, kinds: tuple[Kind, ...]
+) -> SheetLayout:
     top, bottom = max(3.4 * text_height, ABOVE), max(3.2 * text_height, BELOW)
     begin, end = max(height - bottom, top + 50.0), top
     drawing_width = min(max(0.45 * width, min(25.0 * text_height, 0.52 * width)), 40.0 * text_height)
     drawing = QRectF(0.0, 0.0, drawing_width, height)
-    spans = _spans(drawing.right() + GAP, width - GAP, SHARES_UPRIGHT)
+    spans = _spans(drawing.right() + GAP, width - GAP, SHARES_UPRIGHT, kinds)
     strips = tuple(QRectF(QPointF(a, end), QPointF(b, begin)) for a, b in spans)
     readout = QRectF(GAP, height + 4.0, width - 2 * GAP, readout_height)
     return SheetLayout(Axes(upright=True), drawing, strips, readout, begin, end)
 
 
-def _spans(first: float, last: float, shares: tuple[float, ...]) -> list[tuple[float, float]]:
-    """The four strips' spans across the axis, with gaps between them."""
-    room = max(last - first - 3 * GAP, 4.0)
+def _spans(first: float, last: float, shares: Shares, kinds: tuple[Kind, ...]) -> list[tuple[float, float]]:
+    """The strips' spans across the axis, with gaps between them."""
+    room = max(last - first - (len(kinds) - 1) * GAP, 4.0) / sum(shares[kind] for kind in kinds)
     spans, at = [], first
-    for share in shares:
-        spans.append((at, at + share * room))
-        at += share * room + GAP
+    for kind in kinds:
+        spans.append((at, at + shares[kind] * room))
+        at += shares[kind] * room + GAP
     return spans

@@ -23,6 +23,7 @@ from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
 from app.references import Reference
+from app.strip_choice import KINDS, StripChoice
 from app.words import tr
 from solver.model import Project
 from solver.results import Results
@@ -43,6 +44,7 @@ class SheetScene(QGraphicsScene):
         self._upright = False
         self._size = QSizeF(900.0, 500.0)
         self._shown = Shown("envelope")
+        self._choice = StripChoice()
         self._cursor: Cursor | None = None
         self._positions: tuple[float, ...] = (0.0, 1.0)
         self._make_items()
@@ -52,17 +54,22 @@ class SheetScene(QGraphicsScene):
 
     def _make_items(self) -> None:
         self.drawing = MemberDrawing(self._theme)
-        self.strips = tuple(Strip(self._theme) for _ in range(4))
+        self._strips = {kind: Strip(self._theme) for kind in KINDS}
         self.joint_lines = JointLines(self._theme)
         self.cursor_line = CursorLine(self._theme)
         self._readout = Message(self._theme)
         self._notice = Message(self._theme, ground="paper", ink="quiet")
-        labels = [strip.label_layer for strip in self.strips]
-        for item in (self.drawing, *self.strips, *labels, *self._over()):
+        labels = [strip.label_layer for strip in self._strips.values()]
+        for item in (self.drawing, *self._strips.values(), *labels, *self._over()):
             self.addItem(item)
 
     def _over(self) -> tuple[JointLines, CursorLine, Message, Message]:
         return self.joint_lines, self.cursor_line, self._readout, self._notice
+
+    @property
+    def strips(self) -> tuple[Strip, ...]:
+        """The strips that are shown, in order."""
+        return tuple(self._strips[kind] for kind in self._choice.shown)
 
     @property
     def ruler(self) -> Ruler:
@@ -127,6 +134,14 @@ class SheetScene(QGraphicsScene):
             self.drawing.show_member(Member.of(self._project, shown))
         self._place_all()
 
+    def set_strips(self, choice: StripChoice) -> None:
+        """Show these strips in their order."""
+        self._choice = choice
+        for kind, strip in self._strips.items():
+            strip.setVisible(kind in choice.shown)
+            strip.label_layer.setVisible(kind in choice.shown)
+        self._place_all()
+
     def set_reference(self, reference: Reference | None) -> None:
         """Show a reference's curves as well, or none."""
         if reference is not self._reference:
@@ -154,8 +169,8 @@ class SheetScene(QGraphicsScene):
                 if state is None
                 else state_contents(self._results, state, self._earlier)
             )
-        for index, strip in enumerate(self.strips):
-            strip.show_content(None if contents is None else contents[index])
+        for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
+            self._strips[kind].show_content(content)
 
     def _state(self, results: Results) -> int | None:
         """The index of the shown state; None for the envelope, and for a state the results do not have."""
@@ -191,13 +206,15 @@ class SheetScene(QGraphicsScene):
         self._place_all()
 
     def _laid_out(self) -> SheetLayout:
-        return sheet_layout(self._size.width(), self._size.height(), self._upright, self._fonts.text_height)
+        size, text_height = self._size, self._fonts.text_height
+        return sheet_layout(size.width(), size.height(), self._upright, text_height, self._choice.shown)
 
     def _place_all(self) -> None:
         self._layout = layout = self._laid_out()
         self._ruler = ruler = self._ruler.on(layout.begin, layout.end)
         self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
         for strip, rect in zip(self.strips, layout.strips, strict=True):
+            strip.set_legend(shown=strip is self.strips[0])
             strip.set_place(Place(rect, ruler, layout.axes, self._fonts))
             strip.refresh()
         self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
@@ -231,7 +248,7 @@ class SheetScene(QGraphicsScene):
         of_results = theme if self._current else greyed(theme)
         for item in (self.drawing, *self._over()):
             item.set_theme(theme)
-        for item in (*self.strips, self._readout):
+        for item in (*self._strips.values(), self._readout):
             item.set_theme(of_results)
 
     # The cursor

@@ -60,6 +60,7 @@ class SheetView(QGraphicsView):
         self._set_up()
         self._sheet.drawing.clicked.connect(self._on_part_clicked)
         view.shown_changed.connect(self._sheet.show_state)
+        view.strips_changed.connect(self._sheet.set_strips)
         view.cursor_changed.connect(self._on_cursor_changed)
         view.selection_changed.connect(self._sheet.drawing.set_selection)
 
@@ -96,7 +97,7 @@ class SheetView(QGraphicsView):
 
     @property
     def strips(self) -> tuple[Strip, ...]:
-        """The strips for u, N, σ and utilisation."""
+        """The strips that are shown, in order."""
         return self._sheet.strips
 
     @property

@@ -1,4 +1,4 @@
-"""What is being looked at: the shown state, the cursor and the selection; not part of the document.
+"""What is being looked at: the shown state and strips, the cursor, the selection; not part of the document.
 
 The rooms of the window do not know each other; they share this one object, set its values, hear its signals.
 Lives in the GUI thread.
@@ -12,6 +12,7 @@ from typing import Literal
 from PySide6.QtCore import QObject, Signal
 
 from app.shown import Shown
+from app.strip_choice import StripChoice
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,17 +32,21 @@ class Selection:
 
 
 class View(QObject):
-    """Holds the three values; a setter emits only when the value changes, so an echo ends by itself."""
+    """Holds the values; a setter emits only when the value changes, so an echo ends by itself."""
 
     shown_changed = Signal(object)  # Shown
     cursor_changed = Signal(object)  # Cursor or None
     selection_changed = Signal(object)  # Selection
+    strips_changed = Signal(object)  # StripChoice
+    together_changed = Signal(bool)
 
     def __init__(self, parent: QObject | None = None) -> None:
         super().__init__(parent)
         self._shown = Shown("envelope")
         self._cursor: Cursor | None = None
         self._selection = Selection()
+        self._strips = StripChoice()
+        self._together = False
 
     @property
     def shown(self) -> Shown:
@@ -75,3 +80,25 @@ class View(QObject):
         if selection != self._selection:
             self._selection = selection
             self.selection_changed.emit(selection)
+
+    @property
+    def strips(self) -> StripChoice:
+        """The strips that are shown."""
+        return self._strips
+
+    def set_strips(self, strips: StripChoice) -> None:
+        """Show other strips, or in another order."""
+        if strips != self._strips:
+            self._strips = strips
+            self.strips_changed.emit(strips)
+
+    @property
+    def together(self) -> bool:
+        """Whether the single states are drawn with the envelope, and the envelope with a single state."""
+        return self._together
+
+    def set_together(self, together: bool) -> None:
+        """Draw them together, or the shown one alone."""
+        if together != self._together:
+            self._together = together
+            self.together_changed.emit(together)

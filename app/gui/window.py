@@ -10,7 +10,16 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent
 from PySide6.QtWidgets import QMainWindow
 
-from app.gui.actions import COLUMNS, LANGUAGE, RECENT, SAMPLES, TYPICAL, fill_menus, make_actions
+from app.gui.actions import (
+    COLUMNS,
+    LANGUAGE,
+    RECENT,
+    SAMPLES,
+    STRIPS,
+    TYPICAL,
+    fill_menus,
+    make_actions,
+)
 from app.gui.against import AgainstBar
 from app.gui.comparing import Comparing
 from app.gui.document import Document
@@ -29,6 +38,8 @@ from app.gui.settings import Settings
 from app.gui.sheet_view import SheetView
 from app.gui.show import Showing
 from app.gui.status_line import StatusLine
+from app.gui.strips.hand import StripHand
+from app.gui.strips.menu import StripMenu, StripsMenu
 from app.gui.style import style_sheet
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.shown_columns import ColumnsMenu
@@ -85,12 +96,16 @@ class Window(QMainWindow):
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
         self.language_menu = LanguageMenu(self.store, self.status.tell, self)
+        self.strip_menu = StripMenu(self.view, lambda: self.sheet.places.axes.upright, self)
+        self.strip_hand = StripHand(self.sheet, self.view, self.strip_menu)
+        self.strips_menu = StripsMenu(self.view, self.strip_menu, self)
         menus = {
             RECENT: self.recent_menu,
             SAMPLES: self.samples_menu,
             TYPICAL: self.typical_menu,
             COLUMNS: ColumnsMenu(self.tables, self),
             LANGUAGE: self.language_menu,
+            STRIPS: self.strips_menu,
         }
         fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)
@@ -137,6 +152,8 @@ class Window(QMainWindow):
         self.document.modified_changed.connect(lambda _modified: self.on_file_changed())
         self.document.path_changed.connect(lambda _path: self.on_file_changed())
         self.view.shown_changed.connect(lambda _shown: self._show_pickers())
+        self.view.strips_changed.connect(self.store.set_strips)
+        self.view.together_changed.connect(self.store.set_together)
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
@@ -214,6 +231,8 @@ class Window(QMainWindow):
         if not self.restoreGeometry(self.store.bytes_of("geometry")):
             self.resize(1280, 800)
         self.panes.restore(self.store)
+        self.view.set_strips(self.store.strips)
+        self.view.set_together(self.store.together)
 
     def _remember(self) -> None:
         self.store.set_bytes("geometry", self.saveGeometry())

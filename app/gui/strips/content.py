@@ -9,11 +9,12 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from typing import Literal, TypeAlias
+from typing import TypeAlias
 
 import numpy as np
 
 from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, over_least
+from app.strip_choice import Kind
 from app.units import format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray, IntArray
@@ -22,7 +23,6 @@ from solver.fields import Curves, Envelope, curves, envelope
 from solver.model import UnitSystemName
 from solver.results import Results
 
-Kind: TypeAlias = Literal["displacement", "force", "stress", "utilisation"]
 Values: TypeAlias = dict[Kind, tuple[FloatArray, ...]]
 
 NONE, PLAIN, TENSION, COMPRESSION, OVER = -1, 0, 1, 2, 3  # how an interval of a curve is drawn
@@ -69,7 +69,7 @@ class Earlier:
 class StripContent:
     """One strip: traces over a range `low`…`high`, limits, extremes, and stretches that were not checked.
 
-    `earlier` are the traces of a reference, `legend` says which in the strip that is to say it.
+    `earlier` are the traces of a reference, `legend` says which; the first of the shown strips says it.
     """
 
     kind: Kind
@@ -198,7 +198,7 @@ class _Builder:
             unchecked=self._unchecked() if kind == "utilisation" else (),
             filled=kind != "displacement",
             earlier=tuple(self._earlier_trace(value) for value in before),
-            legend=self._legend() if kind == "displacement" else "",
+            legend=self._legend(),
         )
 
     def _earlier_trace(self, value: FloatArray) -> Trace:
@@ -209,7 +209,7 @@ class _Builder:
         return Trace(x, value, np.where(joined, PLAIN, NONE))
 
     def _legend(self) -> str:
-        """What the dashed lines are; said once, in the first strip."""
+        """What the dashed lines are."""
         if self._earlier is None:
             return ""
         words = tr("dashed: {name}") if self._earlier.values else tr("{name}: no state of this name")

@@ -6,7 +6,8 @@ import math
 
 import numpy as np
 
-from app.gui.strips.content import Kind, number, of_unit_strain, titles, unit_of
+from app.gui.strips.content import number, of_unit_strain, titles, unit_of
+from app.strip_choice import Kind
 from app.units import format_value
 from app.words import tr
 from solver.fields import EnvelopePoint, PointValues, Readout, at, envelope_at

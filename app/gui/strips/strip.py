@@ -7,6 +7,8 @@ beside the strip.
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPen
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
@@ -30,6 +32,7 @@ class Strip(Painted):
         self._content: StripContent | None = None
         self._place: Place | None = None
         self._spoilt = True
+        self._has_legend = True
         self._scale: Scale | None = None
         self._curves = Curves()
         self.label_layer = Labels(theme)
@@ -74,6 +77,12 @@ class Strip(Painted):
             self._spoilt = True
             self.set_rect(place.rect)
 
+    def set_legend(self, *, shown: bool) -> None:
+        """Whether this is the strip that says what the dashed lines are."""
+        if shown != self._has_legend:
+            self._has_legend = shown
+            self._spoilt = True
+
     def refresh(self) -> None:
         """Draw what has changed since the last time."""
         if not self._spoilt or self._place is None:
@@ -84,6 +93,8 @@ class Strip(Painted):
         drawn = () if content is None or scale is None else shapes(content, place, scale)
         self._curves.show_shapes(drawn, self._theme)
         self._scale = scale
+        if content is not None and not self._has_legend:
+            content = replace(content, legend="")
         self.label_layer.show_labels(content, place, scale)
         self.update()
 
