@@ -65,6 +65,7 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("redo", "&Edit", later("&Redo"), KEYS.Redo, later("Redo"), fallback="Ctrl+Shift+Z"),
     SEPARATOR,
     Command("copy", "&Edit", later("&Copy"), KEYS.Copy),
+    Command("copy_with_headings", "&Edit", later("Copy with &headings"), "Ctrl+Shift+C"),
     Command("paste", "&Edit", later("&Paste"), KEYS.Paste),
     Command("fill_down", "&Edit", later("Fill &down"), "Ctrl+D"),
     Command("clear", "&Edit", later("C&lear cells")),

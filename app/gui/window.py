@@ -124,6 +124,7 @@ class Window(QMainWindow):
             "undo": self.on_undo,
             "redo": self.on_redo,
             "copy": lambda: self.tables.blocks().copy(),
+            "copy_with_headings": lambda: self.tables.blocks().copy_with_headings(),
             "paste": lambda: self.tables.blocks().paste(),
             "fill_down": lambda: self.tables.blocks().fill_down(),
             "clear": lambda: self.tables.current_view().clear_selected(),

@@ -7,6 +7,8 @@ from typing import TYPE_CHECKING
 from PySide6.QtGui import QGuiApplication
 
 from app.gui.tables.clipboard import block_of, block_text, tiled
+from app.gui.tables.headings import HeadedBlock, headed_block
+from app.gui.tables.reasons import NotTaken
 from app.words import tr
 
 if TYPE_CHECKING:
@@ -36,19 +38,47 @@ class Blocks:
         if selected is not None:
             QGuiApplication.clipboard().setText(block_text(self._texts(*selected)))
 
+    def copy_with_headings(self) -> None:
+        """The same below a row of the columns' titles with their units."""
+        selected = self._selected()
+        if selected is not None:
+            texts = [[self._model.titled(column) for column in selected[1]], *self._texts(*selected)]
+            QGuiApplication.clipboard().setText(block_text(texts))
+
     def _texts(self, rows: range, columns: list[int]) -> list[list[str]]:
         records = range(rows.start, min(rows.stop, self._model.record_rows))
         return [[self._model.text_to_copy(row, column) for column in columns] for row in records]
 
     def paste(self) -> None:
-        """The clipboard's block from the selection's corner on."""
+        """The clipboard's block from the selection's corner on; by its headings where it has some."""
         selected, block = self._selected(), block_of(QGuiApplication.clipboard().text())
-        if block and selected is not None:
-            rows, columns = selected
-            texts = tiled(block, len(rows), len(columns))
-            places = [place for place in self._view.shown_columns() if place >= columns[0]]
-            typed = [dict(zip(places, line, strict=False)) for line in texts]
-            self._model.put_block(rows.start, typed, tr("Paste"))
+        if not block or selected is None:
+            return
+        try:
+            headed = headed_block(block, self._model.columns, self._model.sight)
+        except NotTaken as error:
+            self._model.noted.emit(str(error))
+            return
+        if headed is not None:
+            self._put_headed(selected[0].start, headed)
+        else:
+            self._put_plain(*selected, block)
+
+    def _put_plain(self, rows: range, columns: list[int], block: list[list[str]]) -> None:
+        texts = tiled(block, len(rows), len(columns))
+        places = [place for place in self._view.shown_columns() if place >= columns[0]]
+        typed = [dict(zip(places, line, strict=False)) for line in texts]
+        self._model.put_block(rows.start, typed, tr("Paste"))
+
+    def _put_headed(self, top: int, headed: HeadedBlock) -> None:
+        """Headings say the columns; a row before the first record takes only one copied from it."""
+        lead = self._model.table.lead
+        if top <= lead and headed.rows:
+            its_own = lead and headed.rows[0].get(0) == self._model.text_to_copy(0, 0)
+            top = 0 if its_own else lead
+        names = ", ".join(f"“{heading}”" for heading in headed.unknown)
+        note = tr("left out, as this table has no such column: {headings}").format(headings=names)
+        self._model.put_block(top, headed.rows, tr("Paste"), note if names else "")
 
     def fill_down(self) -> None:
         """The selection's first row into the rows below it; no row is added."""

@@ -115,6 +115,7 @@ class Column:
     of_case: bool = False  # the cell belongs to the load case that is edited
     named_by_user: bool = False  # the title is the user's own word
     offers: Offers | None = None  # names for a cell that refers to something
+    settled_by: str = ""  # the column that says more, where a pasted row brings both
     at_first: bool = True  # whether it is shown before anyone has chosen
 
     @property

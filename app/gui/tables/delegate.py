@@ -114,9 +114,8 @@ class CellDelegate(QStyledItemDelegate):
         editor.setTextMargins(MARGIN - 5, 0, 0, 0)
         editor.picked.connect(lambda: self._take_in(editor))
         if isinstance(model, TableModel):
-            title, unit = model.heading(index.column())
-            name = f"{title} ({unit})" if unit else title
-            editor.setAccessibleName(tr("{column}, row {row}").format(column=name, row=index.row() + 1))
+            name = tr("{column}, row {row}")
+            editor.setAccessibleName(name.format(column=model.titled(index.column()), row=index.row() + 1))
             kept = QPersistentModelIndex(index)
             for typed in (editor.textEdited, editor.offered):
                 typed.connect(lambda text: model.preview(kept, text) if kept.isValid() else None)

@@ -147,11 +147,10 @@ class TableModel(RowsModel):
             return name if role == Qt.ItemDataRole.AccessibleTextRole else None
         if orientation != Qt.Orientation.Horizontal or not 0 <= section < len(self._columns):
             return None
-        title, unit = self.heading(section)
         if role == Qt.ItemDataRole.DisplayRole:
-            return f"{title}\n{unit}"
+            return "\n".join(self.heading(section))
         if role in (Qt.ItemDataRole.AccessibleTextRole, Qt.ItemDataRole.ToolTipRole):
-            return f"{title} ({unit})" if unit else title
+            return self.titled(section)
         if role == Qt.ItemDataRole.TextAlignmentRole:
             return int(Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)
         return None
@@ -160,6 +159,11 @@ class TableModel(RowsModel):
         """A column's title and unit."""
         quantity = self._columns[column].quantity
         return self._columns[column].words, symbol(quantity, self._sight.system) if quantity else ""
+
+    def titled(self, column: int) -> str:
+        """Both in one line."""
+        title, unit = self.heading(column)
+        return f"{title} ({unit})" if unit else title
 
     # Typing
 
@@ -238,15 +242,15 @@ class TableModel(RowsModel):
         """A cell's own text with all digits; None where it is not for typing."""
         return None if self.is_adding(row) else self.entry(self.index(row, column))
 
-    def put_block(self, top: int, texts: Sequence[Texts], name: str) -> None:
+    def put_block(self, top: int, texts: Sequence[Texts], name: str, note: str = "") -> None:
         """Type a block of texts into the rows from `top` on, rows past the end added: one undo step.
 
         What is no valid entry becomes a draft of its cell; cells that are not for typing are passed over.
         """
         block = Block(self, self._document.snapshot)
         self._document.commit_snapshot(block.typed(top, texts), name)
-        if block.note:
-            self.noted.emit(block.note)
+        if block.note or note:
+            self.noted.emit("; ".join(filter(None, (block.note, note))))
 
     def setData(self, index: Index, value: Any, role: int = Qt.ItemDataRole.EditRole) -> bool:
         """Commit what was typed as one undo step, as a draft where it is no valid entry."""

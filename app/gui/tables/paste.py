@@ -52,14 +52,20 @@ class Block:
         return first + trn(" (and {count} thing more)", " (and {count} things more)", more)
 
     def _type_row(self, row: int, texts: Texts) -> None:
-        """One row; past the end, a record is added by the column that can, and the others find its row."""
+        """One row; past the end, a record is added by the column that can, and the others find its row.
+
+        A blank row empties what may be empty and leaves the rest as it is.
+        """
         records = self._model.table.rows(self._project, self._model.sight)
         row = min(row, len(records))  # rows that were refused leave no gap
         if row == len(records) and not self._add(texts):
             return
-        for column, text in texts.items():
-            if text is not None and 0 <= column < len(self._model.columns):
-                self._type_in(row, column, text)
+        blank = not any(text and text.strip() for text in texts.values())
+        said = {c.key for i, c in enumerate(self._model.columns) if (texts.get(i) or "").strip()}
+        for place, text in texts.items():
+            column = self._model.columns[place]
+            if text is not None and column.settled_by not in said and not (blank and not column.optional):
+                self._type_in(row, place, text)
 
     def _type_in(self, row: int, column: int, text: str) -> None:
         """One cell; those that are not for typing are passed over."""
@@ -96,7 +102,7 @@ class Block:
     def _add(self, texts: Texts) -> bool:
         """Add a record by the text in the column that can; whether there is one now."""
         adding = self._model.table.adding
-        if adding is None or not any(texts.values()):
+        if adding is None or not any(text and text.strip() for text in texts.values()):
             return False
         keys = [column.key for column in self._model.columns]
         text = texts.get(keys.index(adding.column)) or ""

@@ -96,7 +96,12 @@ def put_mark(project: Project, index: int, text: str, _sight: Sight) -> Change:
 
 def end_areas(row: SegmentRow) -> tuple[float, float]:
     """The areas at start and end, m²."""
-    first, _middle, last = area_coefficients(row.segment.section)
+    return areas_of(row.segment.section)
+
+
+def areas_of(section: AnySection) -> tuple[float, float]:
+    """A section's areas at start and end, m²."""
+    first, _middle, last = area_coefficients(section)
     return first, last
 
 
@@ -131,6 +136,8 @@ def put_area(project: Project, index: int, text: str, sight: Sight) -> Change:
     """A typed area is known by its area alone from then on, which the note says."""
     start, end = parse_pair(text, "area", sight.system)
     old = project.segments[index].section
+    if (start, end_of(start, end)) == areas_of(old):
+        return Change(project)
     section = AreaSection(area=start, area_end=end)
     note = ""
     if isinstance(old, AreaSection):

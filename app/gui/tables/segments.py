@@ -88,6 +88,7 @@ COLUMNS = (
         in_segments(lambda row, s: pair_entry(*end_areas(row), "area", s.system), None),
         put_area,
         quantity="area",
+        settled_by="section",
         width=11,
     ),
     Column(
