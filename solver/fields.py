@@ -61,6 +61,18 @@ class Envelope:
 
 
 @dataclass(frozen=True, slots=True)
+class Bundle:
+    """The checked states one by one, all (s, k) over x (k,); `states` (s,) are their indices."""
+
+    states: IntArray
+    x: FloatArray
+    displacement: FloatArray
+    force: FloatArray
+    stress: FloatArray
+    utilisation: FloatArray
+
+
+@dataclass(frozen=True, slots=True)
 class PointValues:
     """What one state has at one place; `utilisation` is NaN where there is no allowable for the stress."""
 
@@ -129,6 +141,21 @@ def envelope(results: Results, points: int = 600) -> Envelope:
     """The envelope over the checked states, at places chosen as for `curves`."""
     states = checked_states(results)
     return _envelope(results, states, places_for(results, states, points))
+
+
+def bundle(results: Results, points: int = 600) -> Bundle:
+    """The curves of all checked states, at the places of their envelope."""
+    states = checked_states(results)
+    places = places_for(results, states, points)
+    values = _evaluate(results, states, places)
+    return Bundle(
+        states,
+        places.x,
+        frozen(values.displacement),
+        frozen(values.force),
+        frozen(values.stress),
+        frozen(values.utilisation),
+    )
 
 
 def at(results: Results, state_index: int, x: float) -> Readout:

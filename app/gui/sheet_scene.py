@@ -17,8 +17,9 @@ from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_items import CursorLine, JointLines, Message
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
-from app.gui.strips.content import Earlier, earlier_curves, envelope_contents, state_contents
-from app.gui.strips.readout import BETWEEN, envelope_readout, state_readout
+from app.gui.strips.company import Earlier, earlier_curves
+from app.gui.strips.content import envelope_contents, state_contents
+from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
@@ -27,6 +28,8 @@ from app.strip_choice import KINDS, StripChoice
 from app.words import tr
 from solver.model import Project
 from solver.results import Results
+
+BESIDE = 6.0  # pixels that the pointer may be from the cursor, which takes joints
 
 
 class SheetScene(QGraphicsScene):
@@ -45,6 +48,9 @@ class SheetScene(QGraphicsScene):
         self._size = QSizeF(900.0, 500.0)
         self._shown = Shown("envelope")
         self._choice = StripChoice()
+        self._together = False
+        self._pointer: QPointF | None = None
+        self._values = ""  # of the readout, before what the pointer adds
         self._cursor: Cursor | None = None
         self._positions: tuple[float, ...] = (0.0, 1.0)
         self._make_items()
@@ -142,6 +148,12 @@ class SheetScene(QGraphicsScene):
             strip.label_layer.setVisible(kind in choice.shown)
         self._place_all()
 
+    def set_together(self, together: bool) -> None:
+        """Draw single states with the envelope, and the envelope around a single state, or not."""
+        self._together = together
+        self._show_curves()
+        self._place_all()
+
     def set_reference(self, reference: Reference | None) -> None:
         """Show a reference's curves as well, or none."""
         if reference is not self._reference:
@@ -165,9 +177,9 @@ class SheetScene(QGraphicsScene):
         if self._results is not None:
             state = self._state(self._results)
             contents = (
-                envelope_contents(self._results, self._earlier)
+                envelope_contents(self._results, self._earlier, together=self._together)
                 if state is None
-                else state_contents(self._results, state, self._earlier)
+                else state_contents(self._results, state, self._earlier, together=self._together)
             )
         for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
             self._strips[kind].show_content(content)
@@ -258,10 +270,32 @@ class SheetScene(QGraphicsScene):
         self._cursor = cursor
         held = cursor is not None and self._ruler.holds(cursor.x)
         self.cursor_line.set_pixel(self._ruler.pixel(cursor.x) if held else None, self._layout)
-        self._say_values("" if cursor is None else self._values_at(cursor.x))
+        self._values = "" if cursor is None else self._values_at(cursor.x)
+        self._say_values()
 
-    def _say_values(self, text: str) -> None:
+    def set_pointer(self, point: QPointF | None) -> None:
+        """Where the mouse is: of states drawn with their envelope the nearest is named."""
+        self._pointer = point
+        if self._together:
+            self._say_values()
+
+    def _nearest(self) -> str:
+        """The state drawn nearest to the pointer, where it is on a strip of an envelope."""
+        point, cursor, results = self._pointer, self._cursor, self._results
+        if point is None or cursor is None or results is None or self._state(results) is not None:
+            return ""
+        strip = next((s for s in self.strips if s.place and s.place.rect.contains(point)), None)
+        if not self._together or strip is None or strip.scale is None or strip.content is None:
+            return ""
+        axes = self._layout.axes
+        if abs(axes.along(point) - self._ruler.pixel(cursor.x)) > BESIDE:  # keys have moved the cursor
+            return ""
+        across = axes.across_of(QRectF(point, point))[0]
+        return nearest_state(results, strip.content.kind, cursor.x, strip.scale.value(across))
+
+    def _say_values(self) -> None:
         """At the foot of the sheet, in as many lines as it takes."""
+        text = BETWEEN.join(part for part in (self._values, self._nearest()) if part)
         room = self._layout.readout
         text = self._fonts.wrapped(text, "plain", room.width() - 16.0, BETWEEN)
         size = self._fonts.measure(text, "plain")

@@ -61,6 +61,7 @@ class SheetView(QGraphicsView):
         self._sheet.drawing.clicked.connect(self._on_part_clicked)
         view.shown_changed.connect(self._sheet.show_state)
         view.strips_changed.connect(self._sheet.set_strips)
+        view.together_changed.connect(self._sheet.set_together)
         view.cursor_changed.connect(self._on_cursor_changed)
         view.selection_changed.connect(self._sheet.drawing.set_selection)
 
@@ -208,6 +209,7 @@ class SheetView(QGraphicsView):
             nearest = self._joint_near(ruler.position_at(pixel), pixel)
             near = abs(ruler.pixel(nearest) - pixel) <= SNAP
             self._move_cursor(nearest if near else ruler.position_at(pixel))
+        self._sheet.set_pointer(point)
 
     def _joint_near(self, x: float, pixel: float) -> float:
         """The position of the joint nearest to a pixel, which is one of the two around it."""

@@ -14,11 +14,8 @@ from PySide6.QtGui import QColor, QFont, QPainterPath
 from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
+from app.gui.strips.company import COMPRESSION, NONE, OVER, TENSION
 from app.gui.strips.content import (
-    COMPRESSION,
-    NONE,
-    OVER,
-    TENSION,
     StripContent,
     _range,
     envelope_contents,

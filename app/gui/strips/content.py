@@ -9,32 +9,33 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from typing import TypeAlias
 
 import numpy as np
 
 from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, over_least
+from app.gui.strips.company import (
+    COMPRESSION,
+    NONE,
+    OVER,
+    PLAIN,
+    TENSION,
+    Company,
+    Earlier,
+    Trace,
+    Values,
+    envelope_beside,
+    of_envelope,
+    of_state,
+    singles_beside,
+)
 from app.strip_choice import Kind
 from app.units import format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray, IntArray
 from solver.checks import PASS_MARGIN
-from solver.fields import Curves, Envelope, curves, envelope
+from solver.fields import curves, envelope
 from solver.model import UnitSystemName
 from solver.results import Results
-
-Values: TypeAlias = dict[Kind, tuple[FloatArray, ...]]
-
-NONE, PLAIN, TENSION, COMPRESSION, OVER = -1, 0, 1, 2, 3  # how an interval of a curve is drawn
-
-
-@dataclass(frozen=True, slots=True)
-class Trace:
-    """One curve of k points and how each of its k − 1 intervals is drawn (NONE: a jump or no value)."""
-
-    x: FloatArray  # (k,) m
-    value: FloatArray  # (k,) SI
-    drawn: IntArray  # (k − 1,)
 
 
 @dataclass(frozen=True, slots=True)
@@ -57,19 +58,11 @@ class Extreme:
 
 
 @dataclass(frozen=True, slots=True)
-class Earlier:
-    """The same curves of a reference: its name, places (k,) and values; empty where it has no such state."""
-
-    name: str
-    x: FloatArray
-    values: Values
-
-
-@dataclass(frozen=True, slots=True)
 class StripContent:
     """One strip: traces over a range `low`…`high`, limits, extremes, and stretches that were not checked.
 
-    `earlier` are the traces of a reference, `legend` says which; the first of the shown strips says it.
+    `singles` are the states an envelope is of, `around` is the envelope around a state, `earlier` are the
+    traces of a reference; `legend` says which is which, in the first of the shown strips.
     """
 
     kind: Kind
@@ -84,6 +77,8 @@ class StripContent:
     unchecked: tuple[tuple[float, float], ...] = ()
     filled: bool = True
     earlier: tuple[Trace, ...] = ()
+    singles: tuple[Trace, ...] = ()
+    around: tuple[Trace, ...] = ()
     legend: str = ""
 
 
@@ -115,46 +110,25 @@ def of_unit_strain(results: Results) -> dict[Kind, float]:
     }
 
 
-def state_contents(results: Results, state: int, earlier: Earlier | None = None) -> tuple[StripContent, ...]:
-    """The strips of one state."""
+def state_contents(
+    results: Results, state: int, earlier: Earlier | None = None, *, together: bool = False
+) -> tuple[StripContent, ...]:
+    """The strips of one state; `together` with the envelope around it."""
     shown = curves(results, state)
-    builder = _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress, earlier)
-    return builder.build(_of_state(shown))
+    company = Company(earlier, envelope_beside(results) if together else None)
+    builder = _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress, company)
+    return builder.build(of_state(shown))
 
 
-def envelope_contents(results: Results, earlier: Earlier | None = None) -> tuple[StripContent, ...]:
-    """The strips of the envelope: largest and smallest of the checked states."""
+def envelope_contents(
+    results: Results, earlier: Earlier | None = None, *, together: bool = False
+) -> tuple[StripContent, ...]:
+    """The strips of the envelope of the checked states; `together` with each of these states."""
     shown = envelope(results)
     states = tuple(index for index, state in enumerate(results.states) if state.checked)
-    builder = _Builder(results, states, shown.x, shown.segment, shown.utilisation, None, earlier)
-    return builder.build(_of_envelope(shown))
-
-
-def earlier_curves(name: str, results: Results, state: int | None) -> Earlier:
-    """The curves of a reference in one state, or of its envelope."""
-    if state is None:
-        whole = envelope(results)
-        return Earlier(name, whole.x, _of_envelope(whole))
-    shown = curves(results, state)
-    return Earlier(name, shown.x, _of_state(shown))
-
-
-def _of_state(shown: Curves) -> Values:
-    return {
-        "displacement": (shown.displacement,),
-        "force": (shown.force,),
-        "stress": (shown.stress,),
-        "utilisation": (shown.utilisation,),
-    }
-
-
-def _of_envelope(shown: Envelope) -> Values:
-    return {
-        "displacement": (shown.displacement_max, shown.displacement_min),
-        "force": (shown.force_max, shown.force_min),
-        "stress": (shown.stress_max, shown.stress_min),
-        "utilisation": (shown.utilisation,),
-    }
+    company = Company(earlier, singles_beside(results) if together else None)
+    builder = _Builder(results, states, shown.x, shown.segment, shown.utilisation, None, company)
+    return builder.build(of_envelope(shown))
 
 
 class _Builder:
@@ -168,23 +142,23 @@ class _Builder:
         segment: IntArray,
         utilisation: FloatArray,
         stress: FloatArray | None,
-        earlier: Earlier | None,
+        company: Company,
     ) -> None:
         self._results = results
         self._system = results.project.display.unit_system
         self._states = states
         self._x, self._segment = x, segment
         self._utilisation, self._stress = utilisation, stress
-        self._earlier = earlier
+        self._company = company
 
     def build(self, values: Values) -> tuple[StripContent, ...]:
         return tuple(self._content(kind, title, values[kind]) for kind, title in titles().items())
 
     def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
         least = self._nothing(kind)
-        before = self._earlier.values.get(kind, ()) if self._earlier else ()
-        drawn, beyond = self._limits(kind, columns + before)
-        low, high = _range(columns + before, drawn, least)
+        others = self._company.values(kind)
+        drawn, beyond = self._limits(kind, columns + others)
+        low, high = _range(columns + others, drawn, least)
         return StripContent(
             kind=kind,
             title=title,
@@ -197,23 +171,11 @@ class _Builder:
             extremes=self._extremes(kind, columns, least),
             unchecked=self._unchecked() if kind == "utilisation" else (),
             filled=kind != "displacement",
-            earlier=tuple(self._earlier_trace(value) for value in before),
-            legend=self._legend(),
+            earlier=self._company.of_earlier(kind),
+            singles=self._company.singles(kind),
+            around=self._company.around(kind),
+            legend=self._company.legend,
         )
-
-    def _earlier_trace(self, value: FloatArray) -> Trace:
-        """A line and no more: where it jumps or has no value it breaks."""
-        assert self._earlier is not None  # noqa: S101 - it has the value
-        x = self._earlier.x
-        joined = (np.diff(x) > 0) & np.isfinite(value[1:] + value[:-1])
-        return Trace(x, value, np.where(joined, PLAIN, NONE))
-
-    def _legend(self) -> str:
-        """What the dashed lines are."""
-        if self._earlier is None:
-            return ""
-        words = tr("dashed: {name}") if self._earlier.values else tr("{name}: no state of this name")
-        return words.format(name=self._earlier.name)
 
     def _nothing(self, kind: Kind) -> float:
         """The least range of a strip, from the member's own stiffness."""

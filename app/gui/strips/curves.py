@@ -13,17 +13,18 @@ from PySide6.QtCore import Qt
 from PySide6.QtGui import QBrush, QPainter, QPen
 
 from app.gui.sheet_layout import Place
-from app.gui.strips.content import COMPRESSION, OVER, PLAIN, TENSION, StripContent
-from app.gui.strips.paths import Pixels, Polyline, Scale
+from app.gui.strips.company import COMPRESSION, OVER, PLAIN, TENSION
+from app.gui.strips.content import StripContent
+from app.gui.strips.paths import Pixels, Polyline, Scale, band
 from app.gui.theme import Theme, colour
 
 LINES = {TENSION: "tension", COMPRESSION: "compression", OVER: "over"}
 FILLS = {PLAIN: "load_fill", TENSION: "tension_fill", COMPRESSION: "compression_fill", OVER: "over_fill"}
-FILL_Z, EARLIER_Z, LINE_Z = 1.0, 2.5, 3.0
+FILL_Z, THIN_Z, LINE_Z = 1.0, 2.5, 3.0
 HAIRLINE = 1.0
 BESIDE = ((-0.4, -0.4), (0.4, 0.4), (-0.4, 0.4), (0.4, -0.4))  # hairlines that make one of 1.8 pixels
-THIN = 1.0  # of a reference, with dashes of its own, not those of the limits
-DASHES = (6.0, 4.0)  # in widths of the line
+DASHES = (6.0, 4.0)  # of a reference, unlike those of the limits
+DOTS = (1.5, 2.5)  # of the envelope around a state
 
 
 @dataclass(frozen=True, slots=True)
@@ -34,40 +35,53 @@ class Shape:
     ink: str = ""
     fill: str = ""
     hatched: bool = False
-    dashed: bool = False
+    thin: bool = False
+    dashes: tuple[float, float] | None = None
 
     @property
     def height(self) -> float:
-        """Fills lie below, then the dashed lines of a reference, then the lines."""
-        return FILL_Z if self.fill else EARLIER_Z if self.dashed else LINE_Z
+        """Fills lie below, then the thin lines, then the lines."""
+        return FILL_Z if self.fill else THIN_Z if self.thin else LINE_Z
 
     def pen(self, theme: Theme) -> QPen | None:
         """The pen of a line."""
         if self.fill:
             return None
-        pen = QPen(colour(getattr(theme, self.ink)), THIN if self.dashed else HAIRLINE)
-        if self.dashed:
-            pen.setDashPattern(DASHES)
+        pen = QPen(colour(getattr(theme, self.ink)), HAIRLINE)
+        if self.dashes is not None:
+            pen.setDashPattern(self.dashes)
         return pen
 
 
 def shapes(content: StripContent, place: Place, scale: Scale) -> tuple[Shape, ...]:
-    """What is drawn of a content: the fills of all traces, a reference dashed, then the traces' lines."""
+    """What is drawn of a content: the envelope around it, the fills of all traces, thin lines, the lines."""
     where = place.ruler, scale, place.axes
     traces = [Pixels.of(trace, *where) for trace in content.traces]
-    drawn: list[Shape] = []
+    drawn = [Shape(outline, fill="load_fill") for outline in _bands(content, place, scale)]
     for trace in traces if content.filled else ():
         for way, outline in trace.fills().items():
             drawn.append(Shape(outline, fill=FILLS[way]))
             if way == OVER:
                 drawn.append(Shape(outline, fill="over", hatched=True))
-    for earlier in content.earlier:
-        lines = Pixels.of(earlier, *where).lines().values()
-        drawn += [Shape(line, ink="quiet", dashed=True) for line in lines]
+    manners = (
+        (content.singles, "joint", None),
+        (content.around, "quiet", DOTS),
+        (content.earlier, "quiet", DASHES),
+    )
+    for others, ink, dashes in manners:
+        lines = [line for other in others for line in Pixels.of(other, *where).lines().values()]
+        drawn += [Shape(line, ink=ink, thin=True, dashes=dashes) for line in lines]
     plain = "displacement" if content.kind == "displacement" else "quiet"
     for trace in traces:
         drawn += [Shape(line, ink=LINES.get(way, plain)) for way, line in trace.lines().items()]
     return tuple(drawn)
+
+
+def _bands(content: StripContent, place: Place, scale: Scale) -> list[Polyline]:
+    """The area between the largest and the smallest values of the envelope around a state."""
+    if len(content.around) < 2:
+        return []
+    return [band(*content.around, place.ruler, scale, place.axes)]
 
 
 class Curve(pg.PlotCurveItem):
@@ -105,7 +119,7 @@ class Curve(pg.PlotCurveItem):
             painter.fillPath(path, brush)
             return
         painter.setPen(pen)
-        for x, y in BESIDE if pen.style() == Qt.PenStyle.SolidLine else ((0.0, 0.0),):
+        for x, y in ((0.0, 0.0),) if self.zValue() == THIN_Z else BESIDE:
             painter.translate(x, y)
             painter.drawPath(path)
             painter.translate(-x, -y)

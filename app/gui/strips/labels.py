@@ -18,7 +18,8 @@ from PySide6.QtCore import QPointF, QRectF, QSizeF
 from app.drawing.ruler import Ruler
 from app.gui.fonts import Face
 from app.gui.sheet_layout import GAP, Axes
-from app.gui.strips.content import COMPRESSION, TENSION, Extreme, Limit, StripContent, Trace
+from app.gui.strips.company import COMPRESSION, TENSION, Trace
+from app.gui.strips.content import Extreme, Limit, StripContent
 from app.gui.strips.paths import Scale, runs
 from app.words import tr
 

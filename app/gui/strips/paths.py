@@ -12,7 +12,8 @@ from PySide6.QtCore import QRectF
 
 from app.drawing.ruler import Ruler
 from app.gui.sheet_layout import Axes
-from app.gui.strips.content import NONE, StripContent, Trace
+from app.gui.strips.company import NONE, Trace
+from app.gui.strips.content import StripContent
 from app.thinning import Chain, chain_of, thinned
 from solver.arrays import BoolArray, FloatArray, IntArray
 
@@ -36,6 +37,10 @@ class Scale:
     def pixel(self, value: float) -> float:
         """The pixel of a value."""
         return self.begin + (value - self.low) / (self.high - self.low) * (self.end - self.begin)
+
+    def value(self, pixel: float) -> float:
+        """The value at a pixel."""
+        return self.low + (pixel - self.begin) / (self.end - self.begin) * (self.high - self.low)
 
     def pixels(self, value: FloatArray) -> FloatArray:
         """The pixels of values, any shape."""
@@ -114,6 +119,19 @@ class Pixels:
         across[first[opens]] = self.zero
         across[(first + times - 1)[closes]] = self.zero
         return polyline(self.along[at], across, self.axes, np.ones(len(at), dtype=np.bool_))
+
+
+def band(upper: Trace, lower: Trace, ruler: Ruler, scale: Scale, axes: Axes) -> Polyline:
+    """The outline between two traces over the same places: there along one of them, back along the other."""
+    along, turned = [], []
+    for trace, step in ((upper, 1), (lower, -1)):
+        pixels, across = ruler.pixel(trace.x), scale.pixels(trace.value)
+        whole = Chain(np.arange(len(pixels)), np.ones(len(pixels), dtype=np.bool_))
+        kept = thinned(whole, pixels, across).index[::step]
+        along.append(pixels[kept])
+        turned.append(across[kept])
+    corners = np.concatenate(along)
+    return polyline(corners, np.concatenate(turned), axes, np.ones(len(corners), dtype=np.bool_))
 
 
 def _in_window(along: FloatArray, ruler: Ruler) -> BoolArray:

@@ -10,7 +10,7 @@ from app.gui.strips.content import number, of_unit_strain, titles, unit_of
 from app.strip_choice import Kind
 from app.units import format_value
 from app.words import tr
-from solver.fields import EnvelopePoint, PointValues, Readout, at, envelope_at
+from solver.fields import EnvelopePoint, PointValues, Readout, at, checked_states, envelope_at
 from solver.results import Results
 
 ROUNDING = 1e-15  # a strain this small is rounding and reads as 0
@@ -32,6 +32,22 @@ def envelope_readout(results: Results, x: float) -> str:
         x,
         [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in titles()],
     )
+
+
+def nearest_state(results: Results, kind: Kind, x: float, value: float) -> str:
+    """The checked state whose value at x is nearest to a value, on either side of a joint, in words."""
+    x = min(max(x, 0.0), float(results.position[-1]))
+    found = []
+    for state in checked_states(results).tolist():
+        readout = at(results, state, x)
+        sides = [getattr(side, kind) for side in (readout.left, readout.right) if side is not None]
+        found += [(abs(own - value), own, state) for own in sides if not math.isnan(own)]
+    if not found:
+        return ""
+    _distance, own, state = min(found)
+    text = f"{_number(kind, own, results)} {unit_of(kind, results.project.display.unit_system)}".rstrip()
+    words = tr("nearest in {strip}: {state}, {value}")
+    return words.format(strip=titles()[kind], state=results.states[state].name, value=text)
 
 
 def _line(results: Results, readout: Readout) -> str:

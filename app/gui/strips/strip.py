@@ -58,6 +58,11 @@ class Strip(Painted):
         """Where the strip lies."""
         return self._place
 
+    @property
+    def scale(self) -> Scale | None:
+        """How values lie on it; None where it shows nothing."""
+        return self._scale
+
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
         if theme != self._theme:
