@@ -81,7 +81,23 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("reverse", "&Member", later("&Reverse the member")),
     SEPARATOR,
     Command(TYPICAL, "&Member", later("Add &typical material")),
+    Command("choose_case", "&Member", later("Edit &loads of another case"), "Ctrl+L"),
     Command(COLUMNS, "&View", later("&Columns of the table")),
+    SEPARATOR,
+    *(
+        Command(f"table_{number}", "&View", text, f"Ctrl+{number}")
+        for number, text in enumerate(
+            (
+                later("&1 Segments"),
+                later("&2 Joints"),
+                later("&3 Loads"),
+                later("&4 Combinations"),
+                later("&5 Materials"),
+                later("&6 Limits"),
+            ),
+            1,
+        )
+    ),
     SEPARATOR,
     Command("next_pane", "&View", later("&Next pane"), "F6"),
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),

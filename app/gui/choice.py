@@ -5,13 +5,15 @@ Scrolling over the window must never edit: not the units, and not the load case 
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt
-from PySide6.QtGui import QWheelEvent
+from PySide6.QtCore import Qt, Signal
+from PySide6.QtGui import QKeyEvent, QWheelEvent
 from PySide6.QtWidgets import QComboBox, QWidget
 
 
 class Choice(QComboBox):
-    """Takes the wheel only while it has the keyboard."""
+    """Takes the wheel only while it has the keyboard; Enter and Escape say that the choosing is over."""
+
+    left = Signal()
 
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -23,3 +25,10 @@ class Choice(QComboBox):
             super().wheelEvent(event)
         else:
             event.ignore()
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        """Enter and Escape on the closed list mean nothing to Qt."""
+        if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter, Qt.Key.Key_Escape):
+            self.left.emit()
+        else:
+            super().keyPressEvent(event)

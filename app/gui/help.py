@@ -30,6 +30,7 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("Ctrl+Enter", later("Take in what is typed, in all chosen cells of the column")),
     ("Esc", later("Leave the cell as it was")),
     ("Delete", later("Clear cells")),
+    ("Ctrl+1 … Ctrl+6", later("A table; once more: the next one beside it")),
 )
 FINDINGS_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("Tab, Shift+Tab", later("The next finding or the one before")),

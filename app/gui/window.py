@@ -137,6 +137,11 @@ class Window(QMainWindow):
             "split": self.edits.split,
             "join": self.edits.join,
             "reverse": self.edits.reverse,
+            "choose_case": self.tables.choose_case,
+            **{
+                f"table_{place + 1}": lambda place=place: self.tables.open_tab(place)
+                for place in range(self.tables.tabs.count())
+            },
             "next_pane": lambda: self.panes.go_to(1),
             "previous_pane": lambda: self.panes.go_to(-1),
             "keep_reference": self.comparing.keep,

@@ -55,6 +55,7 @@ class TablesPane(QWidget):
         self.on_document_changed(document.snapshot)
         document.changed.connect(self.on_document_changed)
         self.case_picker.activated.connect(self.on_case_picked)
+        self.case_picker.left.connect(lambda: self.current_view().setFocus())
         view.selection_changed.connect(self.on_selection_changed)
         for key in ("segments", "joints"):
             self.views[key].record_chosen.connect(self.on_record_chosen)
@@ -134,6 +135,21 @@ class TablesPane(QWidget):
     def blocks(self) -> Blocks:
         """The commands on the chosen block of that table."""
         return self.current_view().blocks
+
+    def open_tab(self, place: int) -> None:
+        """Bring a tab to the front and give its table the keyboard, its next one if a table there has it."""
+        self.commit_open_editor()
+        had_it = self.tabs.currentIndex() == place and self.current_view().hasFocus()
+        self.tabs.setCurrentIndex(place)
+        page, last = self.tabs.currentWidget(), self.current_view()
+        shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
+        chosen = shown[(shown.index(last) + 1) % len(shown)] if had_it else last
+        chosen.setFocus(Qt.FocusReason.ShortcutFocusReason)
+
+    def choose_case(self) -> None:
+        """Give the keyboard to the picker of the edited case; Enter gives it back."""
+        self.commit_open_editor()
+        self.case_picker.setFocus(Qt.FocusReason.ShortcutFocusReason)
 
     def show_record(self, key: str, record: int) -> None:
         """Bring a record's row to the front, with the keyboard in it."""

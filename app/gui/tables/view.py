@@ -169,6 +169,16 @@ class TableView(QTableView):
         self.focusNextPrevChild(forward)
         self.setTabKeyNavigation(True)
 
+    def closeEditor(self, editor: QWidget, hint: QAbstractItemDelegate.EndEditHint) -> None:
+        """Tab in an editor goes on to the next cell, and out of the table after the last one as well."""
+        forward = hint == QAbstractItemDelegate.EndEditHint.EditNextItem
+        back = hint == QAbstractItemDelegate.EndEditHint.EditPreviousItem
+        if (forward or back) and self._leaves(forward=forward):
+            super().closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+            self._leave(forward=forward)
+        else:
+            super().closeEditor(editor, hint)
+
     def step(self, rows: int) -> None:
         """Move the current cell down (or up)."""
         current = self.currentIndex()
