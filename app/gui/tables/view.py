@@ -175,12 +175,17 @@ class TableView(QTableView):
         back = hint == QAbstractItemDelegate.EndEditHint.EditPreviousItem
         if (forward or back) and self._leaves(forward=forward):
             super().closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+            self.setFocus()
             self._leave(forward=forward)
         else:
             super().closeEditor(editor, hint)
 
     def step(self, rows: int) -> None:
-        """Move the current cell down (or up)."""
+        """Move the current cell down (or up).
+
+        An editor that a new row has pushed out of sight was hidden by Qt, and gave the keyboard to anyone.
+        """
+        self.setFocus()
         current = self.currentIndex()
         row = min(max(current.row() + rows, 0), self.table_model.rowCount() - 1)
         column = 0 if self.table_model.is_adding(row) else max(current.column(), 0)
