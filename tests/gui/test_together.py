@@ -1,4 +1,4 @@
-"""Single states drawn thin with their envelope, the envelope dotted around a single state, the nearest named."""
+"""Single states thin with their envelope, the envelope dotted around a single state, the nearest named."""
 
 import numpy as np
 import pytest
