@@ -21,6 +21,11 @@ def kind_names() -> dict[Kind, str]:
     }
 
 
+def kind_symbols() -> dict[Kind, str]:
+    """The strips' symbols, in their usual order."""
+    return {"displacement": "u", "force": "N", "stress": "σ", "utilisation": tr("utilisation")}
+
+
 @dataclass(frozen=True, slots=True)
 class StripChoice:
     """The shown strips in order, each once and at least one."""

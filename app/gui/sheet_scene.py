@@ -88,6 +88,11 @@ class SheetScene(QGraphicsScene):
         return self._layout
 
     @property
+    def shown_state(self) -> int | None:
+        """The index of the state whose curves are shown; None for the envelope."""
+        return None if self._results is None else self._state(self._results)
+
+    @property
     def positions(self) -> tuple[float, ...]:
         """The positions of the joints, m."""
         return self._positions

@@ -102,6 +102,11 @@ class SheetView(QGraphicsView):
         return self._sheet.strips
 
     @property
+    def shown_state(self) -> int | None:
+        """The index of the state whose curves are shown; None for the envelope."""
+        return self._sheet.shown_state
+
+    @property
     def readout(self) -> str:
         """The readout line."""
         return self._sheet.readout

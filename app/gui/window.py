@@ -40,6 +40,7 @@ from app.gui.show import Showing
 from app.gui.status_line import StatusLine
 from app.gui.strips.hand import StripHand
 from app.gui.strips.menu import StripMenu, StripsMenu
+from app.gui.strips.taking import StripTaking
 from app.gui.style import style_sheet
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.shown_columns import ColumnsMenu
@@ -86,6 +87,7 @@ class Window(QMainWindow):
         self.against = AgainstBar()
         self.comparing = Comparing(self.document, self.showing, self.against, commit, self)
         self.in_place = InPlace(self.document, self.view, self.sheet, self.tables, self)
+        self.taking = StripTaking(self, self.sheet, self.view, self.showing, self.store)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)
@@ -96,7 +98,7 @@ class Window(QMainWindow):
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
         self.language_menu = LanguageMenu(self.store, self.status.tell, self)
-        self.strip_menu = StripMenu(self.view, lambda: self.sheet.places.axes.upright, self)
+        self.strip_menu = StripMenu(self.view, lambda: self.sheet.places.axes.upright, self.taking, self)
         self.strip_hand = StripHand(self.sheet, self.view, self.strip_menu)
         self.strips_menu = StripsMenu(self.view, self.strip_menu, self)
         menus = {
@@ -128,6 +130,10 @@ class Window(QMainWindow):
             "paste": lambda: self.tables.blocks().paste(),
             "fill_down": lambda: self.tables.blocks().fill_down(),
             "clear": lambda: self.tables.current_view().clear_selected(),
+            "copy_numbers": lambda: self.taking.copy_numbers(self.view.strips.shown),
+            "save_numbers": lambda: self.taking.save_numbers(self.view.strips.shown),
+            "copy_picture": self.taking.copy_picture,
+            "save_picture": self.taking.save_picture,
             "delete_rows": self.edits.delete_rows,
             "insert_before": self.edits.insert_before,
             "insert_after": self.edits.insert_after,
@@ -163,8 +169,17 @@ class Window(QMainWindow):
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
-        for room in (self.files, self.printing, self.edits, self.recovery, self.comparing, self.in_place):
+        for room in (
+            self.files,
+            self.printing,
+            self.edits,
+            self.recovery,
+            self.comparing,
+            self.taking,
+            self.in_place,
+        ):
             room.told.connect(self.status.tell)
+        self.taking.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
         self.tables.rows_moved.connect(self.edits.move_before)
 

@@ -14,6 +14,7 @@ from app.sheet.member_figure import Figure
 from app.sheet.ruler import Ruler
 from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Strip, draw_strip
 from app.sheet.svg import Canvas, fitted, text_width
+from app.strip_choice import KINDS, Kind
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.fields import curves, envelope
@@ -27,8 +28,8 @@ _GAP = 7.0
 _SIZE = 7.0
 
 
-def state_figure(results: Results, state: int) -> Figure:
-    """u, N, σ and utilisation of one state; σ with the allowable band where the state is checked."""
+def state_figure(results: Results, state: int, kinds: tuple[Kind, ...] = KINDS) -> Figure:
+    """The strips of one state, these in this order; σ with the allowable band where the state is checked."""
     field = curves(results, state, points=POINTS)
     checked = results.states[state].checked
     strips = [
@@ -48,11 +49,13 @@ def state_figure(results: Results, state: int) -> Figure:
         strips.append(_utilisation(results, field.x, field.utilisation))
     name = results.states[state].name
     return _figure(
-        results, strips, tr("Displacement, axial force, stress and utilisation, {name}").format(name=name)
+        results,
+        _chosen(strips, kinds),
+        tr("Displacement, axial force, stress and utilisation, {name}").format(name=name),
     )
 
 
-def envelope_figure(results: Results) -> Figure:
+def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS) -> Figure:
     """The largest and smallest values over all checked states; extremes, not one state in equilibrium."""
     field = envelope(results, points=POINTS)
     x, stress = field.x, (field.stress_max, field.stress_min)
@@ -71,7 +74,15 @@ def envelope_figure(results: Results) -> Figure:
         ),
         _utilisation(results, x, field.utilisation),
     ]
-    return _figure(results, strips, tr("Envelope of displacement, axial force, stress and utilisation"))
+    return _figure(
+        results, _chosen(strips, kinds), tr("Envelope of displacement, axial force, stress and utilisation")
+    )
+
+
+def _chosen(strips: list[Strip], kinds: tuple[Kind, ...]) -> list[Strip]:
+    """Those of these kinds that there are, in the order of the kinds."""
+    made = {strip.kind: strip for strip in strips}
+    return [made[kind] for kind in kinds if kind in made]
 
 
 def _utilisation(results: Results, x: FloatArray, values: FloatArray) -> Strip:

@@ -28,9 +28,8 @@ from app.gui.strips.company import (
     of_state,
     singles_beside,
 )
-from app.strip_choice import Kind
+from app.strip_choice import Kind, kind_symbols
 from app.units import format_value, symbol, utilisation_text
-from app.words import tr
 from solver.arrays import FloatArray, IntArray
 from solver.checks import PASS_MARGIN
 from solver.fields import curves, envelope
@@ -80,11 +79,6 @@ class StripContent:
     singles: tuple[Trace, ...] = ()
     around: tuple[Trace, ...] = ()
     legend: str = ""
-
-
-def titles() -> dict[Kind, str]:
-    """The strips' symbols, in their order."""
-    return {"displacement": "u", "force": "N", "stress": "σ", "utilisation": tr("utilisation")}
 
 
 def unit_of(kind: Kind, system: UnitSystemName) -> str:
@@ -152,7 +146,7 @@ class _Builder:
         self._company = company
 
     def build(self, values: Values) -> tuple[StripContent, ...]:
-        return tuple(self._content(kind, title, values[kind]) for kind, title in titles().items())
+        return tuple(self._content(kind, title, values[kind]) for kind, title in kind_symbols().items())
 
     def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
         least = self._nothing(kind)

@@ -6,6 +6,7 @@ Both are filled when they open, so that they say what holds now.
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
+from typing import Protocol
 
 from PySide6.QtCore import QPoint
 from PySide6.QtGui import QAction
@@ -16,12 +17,28 @@ from app.strip_choice import KINDS, Kind, StripChoice, kind_names
 from app.words import tr
 
 
+class Taking(Protocol):
+    """Takes strips elsewhere."""
+
+    def copy_numbers(self, kinds: tuple[Kind, ...]) -> None:
+        """To the clipboard."""
+
+    def save_numbers(self, kinds: tuple[Kind, ...]) -> None:
+        """To a file."""
+
+    def copy_picture(self, kinds: tuple[Kind, ...]) -> None:
+        """To the clipboard."""
+
+    def save_picture(self, kinds: tuple[Kind, ...]) -> None:
+        """To a file."""
+
+
 class StripMenu(QMenu):
     """Of one strip."""
 
-    def __init__(self, view: View, is_upright: Callable[[], bool], parent: QWidget) -> None:
+    def __init__(self, view: View, is_upright: Callable[[], bool], taking: Taking, parent: QWidget) -> None:
         super().__init__(parent)
-        self._view, self._is_upright = view, is_upright
+        self._view, self._is_upright, self._taking = view, is_upright, taking
 
     def open_for(self, kind: Kind, place: QPoint) -> None:
         """Offer what holds for this strip."""
@@ -34,8 +51,21 @@ class StripMenu(QMenu):
             show = self.addAction(tr("Show {strip}").format(strip=kind_names()[other]))
             show.triggered.connect(lambda _on=False, o=other: self._choose(self._view.strips.with_added(o)))
         self.addSeparator()
+        self._add_taking(kind)
+        self.addSeparator()
         self.addAction(together_action(self._view, self))
         self.popup(place)
+
+    def _add_taking(self, kind: Kind) -> None:
+        """What takes this strip elsewhere."""
+        taking = self._taking
+        for text, take in (
+            (tr("&Copy numbers"), taking.copy_numbers),
+            (tr("Copy &picture"), taking.copy_picture),
+            (tr("Save &numbers…"), taking.save_numbers),
+            (tr("&Save picture…"), taking.save_picture),
+        ):
+            self.addAction(text, lambda take=take: take((kind,)))
 
     def add_moves(self, menu: QMenu, kind: Kind) -> None:
         """One place back and one on, as far as there is one."""

@@ -6,8 +6,8 @@ import math
 
 import numpy as np
 
-from app.gui.strips.content import number, of_unit_strain, titles, unit_of
-from app.strip_choice import Kind
+from app.gui.strips.content import number, of_unit_strain, unit_of
+from app.strip_choice import Kind, kind_symbols
 from app.units import format_value
 from app.words import tr
 from solver.fields import EnvelopePoint, PointValues, Readout, at, checked_states, envelope_at
@@ -30,7 +30,7 @@ def envelope_readout(results: Results, x: float) -> str:
     return _joined(
         results,
         x,
-        [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in titles()],
+        [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in kind_symbols()],
     )
 
 
@@ -47,12 +47,12 @@ def nearest_state(results: Results, kind: Kind, x: float, value: float) -> str:
     _distance, own, state = min(found)
     text = f"{_number(kind, own, results)} {unit_of(kind, results.project.display.unit_system)}".rstrip()
     words = tr("nearest in {strip}: {state}, {value}")
-    return words.format(strip=titles()[kind], state=results.states[state].name, value=text)
+    return words.format(strip=kind_symbols()[kind], state=results.states[state].name, value=text)
 
 
 def _line(results: Results, readout: Readout) -> str:
     sides = [side for side in (readout.left, readout.right) if side is not None]
-    pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in titles()]
+    pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in kind_symbols()]
     return _joined(results, readout.x, pairs)
 
 
@@ -79,7 +79,7 @@ def joint_at(results: Results, x: float) -> int | None:
 def _joint_pair(kind: Kind, texts: list[str], results: Results) -> str:
     """Symbol, value (left | right of a joint where they differ) and unit."""
     unit = unit_of(kind, results.project.display.unit_system)
-    return f"{titles()[kind]} {' | '.join(dict.fromkeys(texts))} {unit}".rstrip()
+    return f"{kind_symbols()[kind]} {' | '.join(dict.fromkeys(texts))} {unit}".rstrip()
 
 
 def _value(kind: Kind, side: PointValues, results: Results) -> str:

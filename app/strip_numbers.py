@@ -1,0 +1,84 @@
+"""The strips' curves as numbers for spreadsheets: places, segments, values, units in the head.
+
+A joint stands in two rows, one for each side, told apart by the segment. The points are those of the drawn
+curve, exact extremes included. Numbers have no thin spaces and a plain minus, so that they can be computed
+with, and the decimal sign of the user's language, as spreadsheets in that language read it.
+"""
+
+from __future__ import annotations
+
+import csv
+import io
+import math
+from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+from app.numerals import localised
+from app.strip_choice import KINDS, Kind, kind_symbols
+from app.units import Quantity, symbol, to_display
+from app.words import decimal_sign, tr
+from solver.arrays import FloatArray, IntArray
+from solver.fields import curves, envelope
+from solver.model import UnitSystemName
+
+if TYPE_CHECKING:
+    from solver.results import Results
+
+Rows = list[list[str]]
+_DIGITS = 15  # all that survive a change of units
+
+
+def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = KINDS) -> Rows:
+    """Head and rows of one state, or of the envelope where `state` is None."""
+    units = results.project.display.unit_system
+    x, segment, columns = _envelope_columns(results) if state is None else _state_columns(results, state)
+    shown = [(head, kind, values) for kind in kinds for head, values in columns[kind]]
+    heads = [_head("x", "length", units), tr("Segment")]
+    heads += [_head(head, quantity_of(kind), units) for head, kind, _values in shown]
+    marks = [results.project.segments[index].mark for index in segment.tolist()]
+    written = [_written(x, "length", units), marks]
+    written += [_written(values, quantity_of(kind), units) for _head, kind, values in shown]
+    return [heads, *map(list, zip(*written, strict=True))]
+
+
+def csv_text(rows: Rows) -> str:
+    """The rows as a file: separated by commas, by semicolons where the comma is the decimal sign."""
+    out = io.StringIO()
+    between = ";" if decimal_sign() == "," else ","
+    csv.writer(out, delimiter=between, lineterminator="\r\n").writerows(rows)
+    return out.getvalue()
+
+
+def quantity_of(kind: Kind) -> Quantity:
+    """What a strip is measured in."""
+    return "factor" if kind == "utilisation" else kind
+
+
+_Columns = dict[Kind, list[tuple[str, FloatArray]]]
+
+
+def _state_columns(results: Results, state: int) -> tuple[FloatArray, IntArray, _Columns]:
+    shown, symbols = curves(results, state), kind_symbols()
+    columns: _Columns = {kind: [(symbols[kind], getattr(shown, kind))] for kind in KINDS}
+    return shown.x, shown.segment, columns
+
+
+def _envelope_columns(results: Results) -> tuple[FloatArray, IntArray, _Columns]:
+    """Largest and smallest; of utilisation the largest."""
+    shown, columns = envelope(results), _Columns()
+    for kind, name in kind_symbols().items():
+        ends = ("max", "min") if kind != "utilisation" else ()
+        columns[kind] = [(f"{name} {end}", getattr(shown, f"{kind}_{end}")) for end in ends]
+    columns["utilisation"] = [(kind_symbols()["utilisation"], shown.utilisation)]
+    return shown.x, shown.segment, columns
+
+
+def _head(name: str, quantity: Quantity, units: UnitSystemName) -> str:
+    unit = symbol(quantity, units)
+    return f"{name} ({unit})" if unit else name
+
+
+def _written(values: FloatArray, quantity: Quantity, units: UnitSystemName) -> list[str]:
+    """Numbers in display units; empty where there is none, as where nothing was checked."""
+    shown = to_display(values, quantity, units).tolist()
+    return ["" if math.isnan(value) else localised(f"{value + 0.0:.{_DIGITS}g}") for value in shown]
