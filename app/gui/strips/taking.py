@@ -19,6 +19,7 @@ from PySide6.QtWidgets import QFileDialog, QWidget
 from app.atomic import write_bytes
 from app.gui.outcome import Outcome
 from app.gui.settings import Settings
+from app.gui.sheet_layout import GAP
 from app.gui.sheet_view import SheetView
 from app.gui.strips.hand import Grips
 from app.gui.tables.clipboard import block_text
@@ -30,7 +31,7 @@ from app.words import tr
 from solver.results import Results
 
 FINENESS = 2.0  # pixels of a picture for one of the window
-ROOM = 12.0  # pixels around a strip that its labels may reach into
+ROOM = 0.5 * GAP  # around a strip, for what reaches over its edges
 
 
 class Shown(Protocol):
@@ -140,8 +141,7 @@ class StripTaking(QObject):
         for index, kind in enumerate(self._view.strips.shown):
             if kind in kinds:
                 area |= grips.grip(index) | self._sheet.places.strips[index]
-        around = area.adjusted(-ROOM, -ROOM / 2, 5 * ROOM, ROOM / 2)
-        return around & self._sheet.scene().sceneRect()
+        return area.adjusted(-ROOM, -ROOM, ROOM, ROOM) & self._sheet.scene().sceneRect()
 
     # Both
 
