@@ -28,6 +28,10 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("F2", later("Edit the cell")),
     ("↓ ↑", later("While a cell is edited: go through the names that it offers")),
     ("Ctrl+Enter", later("Take in what is typed, in all chosen cells of the column")),
+    (
+        "Alt+↑, Alt+↓",
+        later("Run the cell's number up or down, with Shift in larger steps; Ctrl and the wheel too"),
+    ),
     ("Esc", later("Leave the cell as it was")),
     ("Delete", later("Clear cells")),
     ("Ctrl+1 … Ctrl+6", later("A table; once more: the next one beside it")),

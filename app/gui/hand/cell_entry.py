@@ -15,6 +15,7 @@ from app.gui.tables.column import Change
 from app.gui.tables.model import TableModel
 from app.gui.tables.reasons import TypingError, reason_of
 from app.hand.many import put_in_all
+from app.sweep import sweep_of
 from app.words import tr, trn
 from solver.model import Project
 
@@ -77,6 +78,25 @@ class CellEntry:
     def refusal(self) -> str:
         """Why one of the cells is not for typing; empty where all are."""
         return next((reason for cell in self._cells if (reason := self.model.why_not(cell))), "")
+
+    @property
+    def can_be_swept(self) -> bool:
+        """Whether the text holds a number to run up and down; a mark or a name is none, even "2"."""
+        text, named = self.text, self.model.columns[self._column].holds_a_name
+        return not (named or self.refusal or text is None) and sweep_of(text) is not None
+
+    def accepts(self, text: str) -> bool:
+        """Whether the text is a valid entry of all of them."""
+        try:
+            self._put_in_all(text)
+        except TypingError:
+            return False
+        return True
+
+    def show_swept(self, text: str | None) -> None:
+        """Show the text in the table's cells until it is taken in or given up (None)."""
+        rows = frozenset(cell.row() for cell in self._cells if cell.isValid())
+        self.model.show_swept(rows, self._column, text)
 
     def preview(self, text: str) -> None:
         """Show what the text would give."""

@@ -119,6 +119,11 @@ class Column:
     at_first: bool = True  # whether it is shown before anyone has chosen
 
     @property
+    def holds_a_name(self) -> bool:
+        """Whether its cells name something, be it by a mark such as "2"."""
+        return self.key in ("mark", "name") or self.offers is not None
+
+    @property
     def words(self) -> str:
         """The title in the user's language."""
         return self.title if self.named_by_user else tr(self.title)

@@ -33,6 +33,7 @@ class TableModel(RowsModel):
         super().__init__(table, document, sight, parent)
         self._figures = Figures()
         self._lit: frozenset[int] = frozenset()
+        self._swept: tuple[frozenset[int], int, str] | None = None  # rows, column, the text while it runs
         self.total_column = (
             len(self._columns) // 2
         )  # where the adding row's second half begins, with the totals
@@ -56,6 +57,17 @@ class TableModel(RowsModel):
             if rows:
                 last = len(self._columns) - 1
                 self.dataChanged.emit(self.index(min(rows), 0), self.index(max(rows), last), [LIT_ROLE])
+
+    def show_swept(self, rows: frozenset[int], column: int, text: str | None) -> None:
+        """Show a text in the cells of these rows while their number runs; None for their own again."""
+        self._swept = None if text is None else (rows, column, text)
+        last = self.rowCount() - 1
+        for row in rows:
+            self.dataChanged.emit(self.index(min(row, last), column), self.index(min(row, last), column))
+
+    def _is_swept(self, index: Index) -> bool:
+        swept = self._swept
+        return swept is not None and index.row() in swept[0] and index.column() == swept[1]
 
     def flags(self, index: Index) -> Qt.ItemFlag:
         """Every cell can be chosen, those with an entry can be edited."""
@@ -82,6 +94,8 @@ class TableModel(RowsModel):
         return None if answer is None else answer(self, index)
 
     def _display(self, index: Index) -> str:
+        if self._swept is not None and self._is_swept(index):
+            return self._swept[2]
         draft = self.draft(index)
         if draft is not None:
             return draft.text
@@ -124,6 +138,8 @@ class TableModel(RowsModel):
         return self.draft(index) is None and (self.is_adding(index.row()) or lead)
 
     def _is_lit(self, index: Index) -> bool:
+        if self._is_swept(index):
+            return True
         return self.is_record(index.row()) and self.record_of(index.row()) in self._lit
 
     _ANSWERS: ClassVar[dict[int, Callable[[TableModel, Index], Any]]] = {

@@ -7,8 +7,10 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxL
 
 from app.gui.choice import Choice
 from app.gui.document import Document, Snapshot
+from app.gui.hand.sweeper import Sweeper
 from app.gui.settings import Settings
 from app.gui.tables.blocks import Blocks
+from app.gui.tables.cell_sweeps import CellSweeps
 from app.gui.tables.column import Figures, Sight, Table
 from app.gui.tables.combinations import COMBINATIONS
 from app.gui.tables.joints import JOINTS
@@ -48,6 +50,8 @@ class TablesPane(QWidget):
         self._document = document
         self._view = view
         self.views: dict[str, TableView] = {}
+        self.sweeper = Sweeper(document, self)
+        self.sweeper.told.connect(self.noted)
         self._sight = Sight(document.project.display.unit_system, 0 if document.project.load_cases else None)
         self.case_picker = Choice()
         self.tabs = self._make_tabs(theme)
@@ -76,6 +80,7 @@ class TablesPane(QWidget):
         model.noted.connect(self.noted)
         view = TableView(model, theme)
         self.views[table.key] = view
+        CellSweeps(view, self.sweeper)
         if view.grips is not None:
             view.grips.moved.connect(self.rows_moved)
         return view
@@ -199,7 +204,8 @@ class TablesPane(QWidget):
             view.set_theme(theme)
 
     def commit_open_editor(self) -> None:
-        """Take in what an open editor holds."""
+        """Take in what an open editor holds, and a number that is run up and down."""
+        self.sweeper.commit()
         for view in self.views.values():
             view.commit_open_editor()
         self.committing.emit()
