@@ -99,7 +99,7 @@ def _draw_frame(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, joints
 
 def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, number: int) -> None:
     curve = strip.curves[number]
-    over = np.nan_to_num(strip.over[number]) if strip.over else np.zeros_like(curve)
+    over = strip.over[number] if strip.over else np.zeros_like(curve)
     x, value, over = _with_crossings(strip.x, curve, over)
     for held, colour, fill in _colours(strip, value):
         for low, high in _runs(np.isfinite(value) & held):

@@ -10,7 +10,7 @@ import hypothesis
 import numpy as np
 import pytest
 from hypothesis import given
-from msgspec import structs
+from msgspec import UNSET, structs
 
 from app.drawing.shapes import Box
 from app.samples import names, read_sample
@@ -20,7 +20,7 @@ from app.sheet.printable import printable_in_figure
 from app.sheet.strips import Strip, _with_crossings
 from app.sheet.strips import _scale as _scale_of
 from app.sheet.svg import Canvas, Ink, text_width
-from solver.model import Display, Project, SpringSupport
+from solver.model import Display, FixedSupport, JointLoad, Limits, LoadCase, Project, SpringSupport
 from solver.results import Results
 from solver.solve import solve
 from tests.drawn_members import busy_member, uneven_member
@@ -264,3 +264,21 @@ def test_rounding_at_a_held_end_is_no_value_to_label() -> None:
     strip = Strip("u", "displacement", "displacement", x, (np.array([-4e-21, 2e-4, 1e-4]),))
     _scale, least, most = _scale_of(strip, 0.0, 44.0)
     assert (least, most) == (0.0, 2e-4)
+
+
+def test_a_utilisation_that_starts_beyond_its_limit_is_hatched_from_where_it_was_checked() -> None:
+    """Beside it stands tension without an allowable: no check there, so nothing to draw a line from."""
+    sample = read_sample("tie_rod")
+    steel = structs.replace(sample.materials[0], allowable_compression=1e5, allowable_tension=UNSET)
+    held = [structs.replace(joint, support=FixedSupport()) for joint in sample.joints]
+    pulled = JointLoad(joint=sample.joints[1].mark, movement=1e-3)
+    project = structs.replace(
+        sample,
+        materials=(steel, *sample.materials[1:]),
+        joints=tuple(held),
+        load_cases=(LoadCase(name="moved", joint_loads=(pulled,)),),
+        combinations=(),
+        limits=Limits(),
+    )
+    for figure in figures(solve(project)):
+        assert "nan" not in figure.svg
