@@ -7,7 +7,7 @@ cells of all of them. Loads are those of the case that is edited, whatever state
 
 from __future__ import annotations
 
-from collections.abc import Callable, Hashable
+from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass
 from itertools import takewhile
 from typing import Final
@@ -185,3 +185,17 @@ def _marked(records: tuple[object, ...], mark: str, kind: PartKind) -> Part | No
     found = (i for i, record in enumerate(records) if getattr(record, "mark", None) == mark)
     index = next(found, None)
     return None if index is None else Part(kind, index)
+
+
+def part_at(place: Sequence[str | int], project: Project) -> Part | None:
+    """The part that shows the cell at a place of the project (of a draft); None where none does."""
+    match place:
+        case ("segments" | "joints" as table, int(record), str(column), *_):
+            return part_of(Cell(table, record, column), project, None)
+        case ("load_cases", int(case), str(column)) if case < len(project.load_cases):
+            return part_of(Cell("load_cases", case, column), project, case)
+        case ("load_cases", int(case), str(table), int(record), str(column)) if case < len(
+            project.load_cases
+        ):
+            return part_of(Cell(table, record, column), project, case)
+    return None

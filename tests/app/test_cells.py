@@ -4,7 +4,7 @@ import pytest
 from msgspec.structs import replace
 
 from app.drawing.shapes import Part
-from app.hand.cells import Cell, case_share, cell_of, cells_of, loads_behind, part_of
+from app.hand.cells import Cell, case_share, cell_of, cells_of, loads_behind, part_at, part_of
 from app.shown import Shown
 from solver.model import Combination, SegmentLoad
 from tests.drawn_members import busy_member
@@ -66,3 +66,20 @@ def test_the_share_of_a_case_in_what_is_shown():
     assert case_share(project, Shown("combination", "Both"), 0) == 1.5
     assert case_share(project, Shown("combination", "Both"), 1) == 0.0
     assert case_share(project, Shown("envelope"), 0) == 0.0
+
+
+@pytest.mark.parametrize(
+    ("place", "part"),
+    [
+        (("segments", 2, "length"), Part("length", 2)),
+        (("segments", 2, "area"), Part("segment", 2)),
+        (("segments", 2, "load_start", "load_cases", 0), Part("distributed", 2)),
+        (("joints", 1, "support"), Part("support", 1)),
+        (("load_cases", 1, "gravity"), Part("gravity", 0)),
+        (("load_cases", 0, "segment_loads", 0, "lack_of_fit"), Part("fit", 1)),
+        (("load_cases", 0, "segment_loads", 9, "segment"), None),
+        (("materials", 0, "name"), None),
+    ],
+)
+def test_a_draft_s_place_leads_to_the_part_that_shows_it(place, part):
+    assert part_at(place, with_loads(SegmentLoad("S1", lack_of_fit=1e-3))) == part

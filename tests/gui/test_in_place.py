@@ -79,6 +79,12 @@ def test_a_wrong_text_says_why_and_stays_a_draft_of_the_cell(window):
     assert "abc" in window.in_place.reason
     QTest.keyClick(line, Qt.Key.Key_Return)
     assert window.document.snapshot.drafts[place].text == "abc"
+    marked = window.sheet.grab().toImage()
+    window.sheet.drawing.set_drafts({})
+    assert window.sheet.grab().toImage() != marked
+    window.document.undo()
+    window.document.redo()
+    assert window.sheet.grab().toImage() == marked
     line = double_click(window, Part("length", 2))
     assert line.text() == "abc"
     assert window.in_place.reason

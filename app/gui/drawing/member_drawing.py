@@ -5,6 +5,7 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from functools import lru_cache
 
 from PySide6.QtCore import QPointF, QRectF, Qt, Signal
@@ -20,8 +21,9 @@ from PySide6.QtWidgets import (
 
 from app.drawing.layout import lay_out
 from app.drawing.member import Member
-from app.drawing.shapes import Box, Circle, Part, Picture, Stroke, Target
+from app.drawing.shapes import OF_SEGMENT, Box, Circle, Part, Picture, Stroke, Target
 from app.drawing.tips import tip
+from app.gui.drawing.draft_marks import paint_marks
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
@@ -42,6 +44,7 @@ class MemberDrawing(QGraphicsObject):
         self._picture: Picture | None = None  # None: to be made when next asked for
         self._selection = Selection()
         self._under_mouse: Part | None = None
+        self._drafts: Mapping[Part, str] = {}
         self.setZValue(10.0)
         self.setAcceptHoverEvents(True)
         self.setAcceptedMouseButtons(Qt.MouseButton.LeftButton)
@@ -84,6 +87,12 @@ class MemberDrawing(QGraphicsObject):
         self._selection = selection
         self.update()
 
+    def set_drafts(self, drafts: Mapping[Part, str]) -> None:
+        """Mark the parts whose cells hold a text that was not taken in, and say why in their tooltips."""
+        if drafts != self._drafts:
+            self._drafts = drafts
+            self.update()
+
     def part_at(self, point: QPointF) -> Part | None:
         """The part under a point, or None."""
         target = self.picture.target_at((point.x(), point.y()))
@@ -110,8 +119,18 @@ class MemberDrawing(QGraphicsObject):
     def _set_under_mouse(self, part: Part | None) -> None:
         if part != self._under_mouse:
             self._under_mouse = part
-            self.setToolTip("" if part is None or self._member is None else tip(self._member, part))
+            self.setToolTip(self._tip(part))
             self.hovered.emit(part)
+
+    def _tip(self, part: Part | None) -> str:
+        if part is None or self._member is None:
+            return ""
+        drafts = [
+            words
+            for marked, words in self._drafts.items()
+            if (marked.kind in OF_SEGMENT, marked.index) == (part.kind in OF_SEGMENT, part.index)
+        ]
+        return "\n".join([tip(self._member, part), *drafts])
 
     def mousePressEvent(self, event: QGraphicsSceneMouseEvent) -> None:
         """Take the mouse on a part only; elsewhere the sheet pans."""
@@ -137,6 +156,7 @@ class MemberDrawing(QGraphicsObject):
         for circle in self.picture.circles:
             self._paint_circle(painter, circle)
         self._paint_texts(painter, self._place.fonts)
+        paint_marks(painter, self.picture, self._drafts, self._theme, self._place.fonts.font("small"))
 
     def _is_selected(self, part: Part | None) -> bool:
         if part is None:

@@ -14,8 +14,9 @@ from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QFrame, QLabel, QVBoxLayout, QWidget
 
 from app.drawing.shapes import LOADS, OF_JOINT, OF_SEGMENT, Box, Part
-from app.gui.document import Document
+from app.gui.document import Document, Snapshot
 from app.gui.hand.cell_entry import CellEntry
+from app.gui.hand.drafts import drafts_on_drawing
 from app.gui.sheet_view import SheetView
 from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.pane import TablesPane
@@ -99,7 +100,13 @@ class InPlace(QObject):
         sheet.opened.connect(self.open_part)
         tables.committing.connect(self.commit)
         document.opened.connect(self.cancel)
+        document.changed.connect(self._mark_drafts)
         document.preview_changed.connect(lambda _preview: self._say_reason())
+
+        self._mark_drafts(document.snapshot)
+
+    def _mark_drafts(self, snapshot: Snapshot) -> None:
+        self._sheet.drawing.set_drafts(drafts_on_drawing(snapshot))
 
     @property
     def editor(self) -> CellEditor | None:
