@@ -1,0 +1,151 @@
+"""Putting things of the table of kinds on joints and segments, and taking them off again: pure edits.
+
+A load goes into the case whose loads are edited; where there is none yet, one is made. What is there already
+stays as it is, so that putting the same on again only leads to its value. Self-weight points down: against
++x where the member stands upright, along +x where it lies across (a member that hangs).
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from msgspec import UNSET, UnsetType
+
+from app import edits
+from app.drawing.shapes import Part
+from app.entry import parse_entry
+from app.hand.cells import Cell, cell_of
+from app.hand.kinds import Kind
+from app.support_entry import parse_support
+from app.words import tr
+from solver.model import LoadCase, Project
+
+
+class NotPut(ValueError):  # noqa: N818 - its message is the sentence for the status line
+    """Something cannot be put there."""
+
+
+@dataclass(frozen=True, slots=True)
+class Put:
+    """The project with it, its case, the cells that hold it, and what else was done, in words."""
+
+    project: Project
+    case: int | None
+    cells: tuple[Cell, ...]
+    note: str = ""
+
+
+def put_on(kind: Kind, project: Project, indexes: Iterable[int], case: int | None) -> Put:
+    """The project with a thing of this kind on each of the joints or segments (on the member: once).
+
+    NotPut or EditError where one of them cannot take it; then nothing is changed.
+    """
+    where = (0,) if kind.on == "member" else tuple(indexes)
+    note = ""
+    if kind.of_case and case is None:
+        project, case, note = _with_case(project)
+    for index in where:
+        if not _is_there(kind, project, index, case):
+            project = _put(kind, project, index, case)
+    found = (cell_of(Part(kind.part, index), project, case) for index in where)
+    return Put(project, case, tuple(cell for cell in found if cell is not None), note)
+
+
+def _with_case(project: Project) -> tuple[Project, int, str]:
+    """A first load case, and a line that says so; where combinations are checked it has no factor yet."""
+    name = tr("Loads")
+    made = edits.add_record(project, ("load_cases",), LoadCase(name))
+    words = tr("load case {name} was made for it")
+    if project.combinations:
+        words = tr("load case {name} was made for it; give it its factors in Combinations")
+    return made, 0, words.format(name=name)
+
+
+def _is_there(kind: Kind, project: Project, index: int, case: int | None) -> bool:
+    """Whether such a thing is there already."""
+    if kind.part == "support":
+        return type(project.joints[index].support) is type(_support(kind, project))
+    if kind.part == "bedding":
+        return any(_written(getattr(project.segments[index], key)) for key in kind.keys)
+    if kind.part == "gravity":
+        return case is not None and project.load_cases[case].gravity != 0.0
+    loads = loads_of(kind, project, index, case)
+    return any(_written(getattr(load, key)) for load in loads for key in kind.keys)
+
+
+def _written(value: float | UnsetType) -> bool:
+    return not isinstance(value, UnsetType) and value != 0.0
+
+
+def loads_of(kind: Kind, project: Project, index: int, case: int | None) -> tuple[object, ...]:
+    """The records of the case on a joint or a segment."""
+    if case is None:
+        return ()
+    if kind.on == "joint":
+        joints, mark = project.load_cases[case].joint_loads, project.joints[index].mark
+        return tuple(load for load in joints if load.joint == mark)
+    mark = project.segments[index].mark
+    return tuple(load for load in project.load_cases[case].segment_loads if load.segment == mark)
+
+
+def _support(kind: Kind, project: Project) -> object:
+    system = project.display.unit_system
+    return parse_support(kind.begins_in(system), system)
+
+
+def _begins(kind: Kind, project: Project) -> float:
+    system = project.display.unit_system
+    value = parse_entry(kind.begins_in(system), kind.quantity, system)
+    upright = project.display.layout == "vertical"
+    return -value if kind.part == "gravity" and upright else value
+
+
+def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
+    if kind.part == "support":
+        return edits.set_value(project, ("joints", index, "support"), _support(kind, project))
+    if kind.part == "bedding":
+        return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
+    if kind.part == "movement" and isinstance(project.joints[index].support, UnsetType):
+        words = tr("joint {mark} has no support that could move: put one on first")
+        raise NotPut(words.format(mark=project.joints[index].mark))
+    return _set_load(kind, project, index, case, kind.keys[0], _begins(kind, project))
+
+
+def _set_load(
+    kind: Kind, project: Project, index: int, case: int | None, key: str, value: float | UnsetType
+) -> Project:
+    """One key of the load in the case."""
+    if case is None:
+        return project
+    name = project.load_cases[case].name
+    if kind.on == "member":
+        return edits.set_value(project, ("load_cases", case, key), value)
+    if kind.on == "joint":
+        return edits.set_joint_load(project, name, project.joints[index].mark, key, value)
+    return edits.set_segment_load(project, name, project.segments[index].mark, key, value)
+
+
+def take_off(kind: Kind, project: Project, indexes: Iterable[int], case: int | None) -> Project:
+    """The project without such a thing on each of them; EditError where several loads stand behind one."""
+    for index in (0,) if kind.on == "member" else tuple(indexes):
+        if not has(kind, project, index, case):
+            continue
+        for key in reversed(kind.keys):  # the end before the start that it would follow
+            project = _taken_off(kind, project, index, case, key)
+    return project
+
+
+def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: str) -> Project:
+    if kind.of_case:
+        return _set_load(kind, project, index, case, key, UNSET)
+    records = "joints" if kind.on == "joint" else "segments"
+    return edits.set_value(project, (records, index, key), UNSET)
+
+
+def has(kind: Kind, project: Project, index: int, case: int | None) -> bool:
+    """Whether there is something of this kind that can be taken off."""
+    if kind.part == "support":
+        support = project.joints[index].support
+        return not isinstance(support, UnsetType) and type(support) is type(_support(kind, project))
+    return _is_there(kind, project, index, case)
