@@ -37,6 +37,7 @@ Rule: TypeAlias = Literal[
     "not_inside",  # facts: length, value: a split must lie inside the segment
     "parts_differ",  # facts: kind (material, section): segments to be joined are unlike in it
     "joint_carries",  # facts: joint, kind (support, load, limit): joining would lose it
+    "repeats",  # facts: count, most: how often segments can be repeated at once
     "several_records",  # facts: count: the cell stands for more than one load record
     # of solvability (place is the part of the model; facts name the combination where it matters)
     "not_held",

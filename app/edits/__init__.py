@@ -8,6 +8,7 @@ from app.edits.cells import add_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
 from app.edits.loads import set_joint_load, set_segment_load
 from app.edits.member import delete_segments, insert_segment, move_segments, reverse_member
+from app.edits.mirroring import mirror_member
 from app.edits.parts import join_segments, split_segment
 from app.edits.renaming import (
     rename_case,
@@ -16,13 +17,17 @@ from app.edits.renaming import (
     rename_material,
     rename_segment,
 )
+from app.edits.repeating import repeat_segments
+from app.edits.uniting import join_equal_neighbours
 
 __all__ = [
     "EditError",
     "add_record",
     "delete_segments",
     "insert_segment",
+    "join_equal_neighbours",
     "join_segments",
+    "mirror_member",
     "move_segments",
     "remove_case",
     "remove_records",
@@ -31,6 +36,7 @@ __all__ = [
     "rename_joint",
     "rename_material",
     "rename_segment",
+    "repeat_segments",
     "reverse_member",
     "set_factor",
     "set_joint_load",

@@ -121,36 +121,40 @@ def reverse_member(project: Project) -> Project:
     """The same member described from its other end; twice gives the project back."""
     fresh = structs.replace(
         project,
-        joints=tuple(_joint_turned(joint) for joint in reversed(project.joints)),
-        segments=tuple(_segment_turned(segment) for segment in reversed(project.segments)),
+        joints=tuple(joint_turned(joint) for joint in reversed(project.joints)),
+        segments=tuple(segment_turned(segment) for segment in reversed(project.segments)),
     )
     return checked(with_cases(fresh, _case_turned))
 
 
-def _joint_turned(joint: Joint) -> Joint:
+def joint_turned(joint: Joint) -> Joint:
+    """The joint seen from the other end: a stop changes its side."""
     if not isinstance(joint.support, StopSupport):
         return joint
     side = "minus" if joint.support.side == "plus" else "plus"
     return structs.replace(joint, support=structs.replace(joint.support, side=side))
 
 
-def _segment_turned(segment: Segment) -> Segment:
+def segment_turned(segment: Segment) -> Segment:
+    """The segment seen from its other end."""
     return structs.replace(turned(segment), section=turned(segment.section))
 
 
 def _case_turned(case: LoadCase) -> LoadCase:
     return structs.replace(
         _negated(case, "gravity"),
-        segment_loads=mapped(case.segment_loads, _segment_load_turned),
-        joint_loads=mapped(case.joint_loads, _joint_load_turned),
+        segment_loads=mapped(case.segment_loads, segment_load_turned),
+        joint_loads=mapped(case.joint_loads, joint_load_turned),
     )
 
 
-def _segment_load_turned(load: SegmentLoad) -> SegmentLoad:
+def segment_load_turned(load: SegmentLoad) -> SegmentLoad:
+    """The load seen from the segment's other end: what acts along x changes sign."""
     return _negated(turned(load), "load_start", "load_end")
 
 
-def _joint_load_turned(load: JointLoad) -> JointLoad:
+def joint_load_turned(load: JointLoad) -> JointLoad:
+    """The load seen from the other end: what acts along x changes sign."""
     return _negated(load, "force", "movement")
 
 

@@ -86,12 +86,13 @@ def _hindrances(project: Project, first: int, last: int) -> Iterator[Fault]:
             yield Fault(place_text(("segments", other, "material")), "parts_differ", {"kind": "material"})
         if type(a.section) is not type(b.section):
             yield Fault(place_text(("segments", other, "section")), "parts_differ", {"kind": "section"})
-        for what in _carried(project, other):
+        for what in carried(project, other):
             facts = {"joint": project.joints[other].mark, "kind": what}
             yield Fault(place_text(("joints", other)), "joint_carries", facts)
 
 
-def _carried(project: Project, index: int) -> Iterator[str]:
+def carried(project: Project, index: int) -> Iterator[str]:
+    """What the joint carries, by kind; nothing where joining over it loses nothing."""
     joint = project.joints[index]
     if joint.support is not UNSET:
         yield "support"

@@ -70,6 +70,10 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("joint {joint} has a {kind}, which joining would lose"),
         later("take it out first"),
     ),
+    "repeats": (
+        later("segments are repeated between 1 and {most} times at once; given is {count}"),
+        later("choose a number in between"),
+    ),
     "several_records": (
         later("{count} load records stand behind this cell"),
         later("edit them one by one in the Loads table"),

@@ -65,6 +65,7 @@ FACTS: dict[str, dict[str, object]] = {
     "not_inside": {"length": 0.35, "value": 0.4},
     "parts_differ": {"kind": "material"},
     "joint_carries": {"kind": "support", "joint": "2"},
+    "repeats": {"count": 0, "most": 200},
     "several_records": {"count": 2},
     "not_held": {},
     "stop_not_yet": {"joint": "2"},

@@ -1,0 +1,72 @@
+"""Mirroring the half: the member becomes symmetrical about its far end, which is then its middle.
+
+Segments and joints follow in reverse order with start and end swapped. Forces, loads and movements turn round
+with the side they are on; temperatures, lack of fit and bedding stay. Limits of joints are those of their
+mirror images too. The middle joint keeps its support; a force or movement of its own would push the halves
+the same way, which no symmetry has, so it is taken off. Gravity acts on both halves alike and stays.
+"""
+
+from __future__ import annotations
+
+from msgspec import structs
+
+from app.edits.checking import checked
+from app.edits.copying import Marks, fresh_marks, with_loads_copied
+from app.edits.member import joint_load_turned, joint_turned, segment_load_turned, segment_turned
+from app.edits.records import kept, with_cases
+from app.encode import is_absent
+from solver.model import Limits, LoadCase, Project
+
+
+def mirror_member(project: Project) -> Project:
+    """The project with the whole member's mirror image put behind its far end."""
+    middle = project.joints[-1].mark
+    segment_marks = [segment.mark for segment in reversed(project.segments)]
+    joint_marks = [joint.mark for joint in reversed(project.joints[:-1])]
+    segments = fresh_marks(segment_marks, segment_marks[::-1])
+    joints = fresh_marks(joint_marks, [joint.mark for joint in project.joints])
+    fresh = structs.replace(
+        project,
+        segments=(*project.segments, *_images(project, segments)),
+        joints=(*project.joints, *_joint_images(project, joints)),
+        limits=_limits_mirrored(project.limits, joints, middle),
+    )
+    fresh = with_cases(fresh, lambda case: _without_joint(case, middle))
+    return checked(with_loads_copied(fresh, segments, joints, segment_load_turned, joint_load_turned))
+
+
+def _images(project: Project, marks: Marks) -> tuple[object, ...]:
+    turned = (segment_turned(segment) for segment in reversed(project.segments))
+    return tuple(structs.replace(segment, mark=marks[segment.mark]) for segment in turned)
+
+
+def _joint_images(project: Project, marks: Marks) -> tuple[object, ...]:
+    turned = (joint_turned(joint) for joint in reversed(project.joints[:-1]))
+    return tuple(structs.replace(joint, mark=marks[joint.mark]) for joint in turned)
+
+
+def _without_joint(case: LoadCase, mark: str) -> LoadCase:
+    return structs.replace(case, joint_loads=kept(case.joint_loads, lambda load: load.joint != mark))
+
+
+def _limits_mirrored(limits: Limits, marks: Marks, middle: str) -> Limits:
+    """The limits, and those of the mirror images; one between a joint and the middle has an image too."""
+    if is_absent(limits):
+        return limits
+    images = {**marks, middle: middle}
+    moved = [x for x in limits.displacement if x.joint in marks]
+    apart = [x for x in limits.relative if x.start in marks or x.end in marks]
+    held = [x for x in limits.reaction if x.joint in marks]
+    return structs.replace(
+        limits,
+        displacement=_with(limits.displacement, [structs.replace(x, joint=marks[x.joint]) for x in moved]),
+        relative=_with(
+            limits.relative,
+            [structs.replace(x, start=images[x.start], end=images[x.end]) for x in apart],
+        ),
+        reaction=_with(limits.reaction, [structs.replace(x, joint=marks[x.joint]) for x in held]),
+    )
+
+
+def _with(limits: tuple[object, ...], images: list[object]) -> tuple[object, ...]:
+    return (*limits, *images) if images else limits
