@@ -63,6 +63,7 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: P
         sentence=tr(NOT_MADE[reason]).format(places=listed(places), states=listed(states)),
         remedy=remedy_text(reason, material),
         count=len(checks),
+        marks=tuple(places),
         segments=tuple(i for i, s in enumerate(project.segments) if s.mark in segments),
         joints=tuple(i for i, j in enumerate(project.joints) if j.mark in joints),
     )

@@ -25,7 +25,7 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
         verdict=results.verdict,
         headline=verdict_line(results),
         detail=verdict_detail(results),
-        segments=segment_findings(results, system, results.checks),
+        segments=segment_findings(results, system),
         limits=limit_findings(results, system, results.checks),
         not_made=not_made(results, results.checks),
         notes=notes(results),
@@ -42,7 +42,7 @@ def findings_in(found: Findings, results: Results, state: str, system: UnitSyste
     checks = [check for check in results.checks if check.combination == state]
     return replace(
         found,
-        segments=segment_findings(results, system, checks),
+        segments=segment_findings(results, system, state),
         limits=limit_findings(results, system, checks),
         not_made=not_made(results, checks),
     )

@@ -66,6 +66,7 @@ class NotMade:
     sentence: str
     remedy: str
     count: int
+    marks: tuple[str, ...]  # of segments and joints
     segments: tuple[int, ...]
     joints: tuple[int, ...]
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Mapping
+from collections.abc import Mapping
 
 import numpy as np
 
@@ -17,11 +17,12 @@ from solver.results import Results
 
 
 def segment_findings(
-    results: Results, system: UnitSystemName, checks: Iterable[Check]
+    results: Results, system: UnitSystemName, state: str | None = None
 ) -> tuple[SegmentFinding, ...]:
-    """One finding for each segment with a made check of stress among `checks` of the results."""
+    """One finding for each segment with a made check of stress, in one checked state or in all of them."""
+    checks = (check for check in results.checks if state in (None, check.combination))
     places = {segment.mark: index for index, segment in enumerate(results.project.segments)}
-    bands = _Bands(results, system)
+    bands = _Bands(results, system, state)
     worst = worst_first(check for check in checks if check.segment is not None)
     return tuple(_finding(check, places, bands, system) for check in worst)
 
@@ -47,17 +48,18 @@ def _finding(
 
 
 class _Bands:
-    """The scales of all segments; stresses of checked states divided by their allowable factor."""
+    """The scales of all segments; stresses of checked states (or one) divided by their allowable factor."""
 
-    def __init__(self, results: Results, system: UnitSystemName) -> None:
+    def __init__(self, results: Results, system: UnitSystemName, only: str | None) -> None:
         self._results = results
         self._system = system
         states = [state for state in results.states if state.checked]
         self._factors = {state.name: state.allowable_factor for state in states}
         factors = np.array([state.allowable_factor for state in states])[:, np.newaxis]
-        checked = len(states)  # the checked states come first
-        self._high = np.max(results.segments.stress_max[:checked] / factors, axis=0)
-        self._low = np.min(results.segments.stress_min[:checked] / factors, axis=0)
+        chosen = [index for index, state in enumerate(states) if only in (None, state.name)]
+        high, low = results.segments.stress_max, results.segments.stress_min  # the checked states come first
+        self._high = np.max(high[chosen] / factors[chosen], axis=0)
+        self._low = np.min(low[chosen] / factors[chosen], axis=0)
 
     def of(self, segment: int, state: str) -> Band:
         """The scale of a segment at the allowable factor of a state."""

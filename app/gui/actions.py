@@ -109,6 +109,10 @@ COMMANDS: Final[tuple[Command, ...]] = (
     SEPARATOR,
     Command(STRIPS, "&View", later("&Strips")),
     SEPARATOR,
+    Command("there_and_back", "&View", later("From a finding to its cell and &back"), "Ctrl+G"),
+    Command("findings_of_selected", "&View", later("Findings of what is selecte&d"), "Ctrl+Shift+F"),
+    Command("all_findings", "&View", later("&All findings"), "Ctrl+Shift+A"),
+    SEPARATOR,
     Command(
         "keep_reference",
         "&View",

@@ -52,6 +52,20 @@ def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
     return Outcome(project, results, findings(results, project.display.unit_system), (), seconds)
 
 
+def narrow_of(outcome: Outcome) -> Callable[[str], Findings] | None:
+    """What gives the findings of one combination; None where there are none."""
+    results, found = outcome.results, outcome.findings
+    if results is None or found is None:
+        return None
+
+    def narrow(state: str) -> Findings:
+        from app.findings import findings_in
+
+        return findings_in(found, results, state, results.project.display.unit_system)
+
+    return narrow
+
+
 def shown_states(project: Project) -> tuple[Shown, ...]:
     """What the strips can show: the envelope where several states are checked, then each state."""
     combinations = [Shown("combination", combination.name) for combination in project.combinations]

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import bisect
-from collections.abc import Callable
+from collections.abc import Callable, Collection
 
 from PySide6.QtCore import QEvent, QPointF, QRectF, QSizeF, Qt, Signal
 from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
@@ -26,6 +26,7 @@ from solver.results import Results
 SNAP = 4.0  # pixels within which the mouse takes the joint itself
 STEPS = 200  # arrow-key steps across the window
 ZOOM_STEP = 1.25
+SMALLEST = 10.0  # pixels; a segment below is zoomed to when one goes there
 WHEEL_STEP = 1.0015  # zoom for each eighth of a degree that the wheel turns
 
 
@@ -149,6 +150,22 @@ class SheetView(QGraphicsView):
             held = cursor is not None and self.ruler.holds(cursor.x)
             pixel = self.ruler.pixel(cursor.x) if held else 0.5 * (self.ruler.begin + self.ruler.end)
         self._sheet.set_ruler(self.ruler.zoomed(factor, pixel))
+
+    def bring_into_view(self, segments: Collection[int], joints: Collection[int]) -> None:
+        """Zoom or pan where not all of these parts are seen, or too small to be looked at."""
+        positions = self._sheet.positions
+        numbers = [*joints, *segments, *(index + 1 for index in segments)]
+        places = [positions[index] for index in numbers if index < len(positions)]
+        if not places:
+            return
+        low, high = min(places), max(places)
+        seen = self.ruler.holds(low) and self.ruler.holds(high)
+        small = low < high and abs(self.ruler.pixel(high) - self.ruler.pixel(low)) < SMALLEST
+        if (not seen or small) and low < high:
+            self._sheet.set_ruler(self.ruler.showing(low, high, air=1.0))
+        elif not seen:
+            away = self.ruler.pixel(low) - 0.5 * (self.ruler.begin + self.ruler.end)
+            self._sheet.set_ruler(self.ruler.panned(-away))
 
     # The cursor
 

@@ -6,10 +6,10 @@ project with no unfinished entry counts as current.
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from typing import TYPE_CHECKING, Protocol
 
-from PySide6.QtCore import QObject, QTimer
+from PySide6.QtCore import QObject, QTimer, Signal
 
 from app.gui import log
 from app.gui.document import Document, Draft
@@ -20,6 +20,7 @@ from app.gui.outcome import (
     first_shown,
     governing,
     largest_bound,
+    narrow_of,
     still_shown,
 )
 from app.gui.status_line import StatusLine
@@ -33,7 +34,7 @@ from solver.model import Project
 from solver.results import Results
 
 if TYPE_CHECKING:
-    from app.findings import Comparison
+    from app.findings import Comparison, Findings
 
 GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
 
@@ -54,13 +55,20 @@ class Panel(Protocol):
     """The findings."""
 
     def show_findings(
-        self, findings: object, problems: tuple[str, ...], current: bool, compared: object = None
+        self,
+        findings: object,
+        problems: tuple[str, ...],
+        current: bool,
+        compared: object = None,
+        narrow: Callable[[str], Findings] | None = None,
     ) -> None:
         """Show these."""
 
 
 class Showing(QObject):
     """Keeps the screens at the document's latest edit."""
+
+    shown = Signal()  # after every change of what the screens show
 
     def __init__(
         self,
@@ -192,9 +200,12 @@ class Showing(QObject):
         problems = (self._fault,) if self._fault else outcome.problems if outcome else ()
         waiting = outcome is None and not self._fault  # for the very first outcome
         self._sheet.show_results(self._document.shown_project, results, self.current, waiting)
-        self._panel.show_findings(findings, problems, self.current, self._compared(results))
+        self._panel.show_findings(
+            findings, problems, self.current, self._compared(results), narrow_of(outcome) if outcome else None
+        )
         self._tables.set_figures(self._figures())
         self._tell()
+        self.shown.emit()
 
     def set_reference(self, reference: Reference | None) -> None:
         """Hold what is shown against a reference, or against none."""

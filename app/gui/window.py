@@ -25,6 +25,8 @@ from app.gui.comparing import Comparing
 from app.gui.document import Document
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
+from app.gui.findings.curing import Curing
+from app.gui.findings.jump import Jump
 from app.gui.findings.panel import FindingsPanel
 from app.gui.hand.in_place import InPlace
 from app.gui.help import Help
@@ -88,6 +90,8 @@ class Window(QMainWindow):
         self.comparing = Comparing(self.document, self.showing, self.against, commit, self)
         self.in_place = InPlace(self.document, self.view, self.sheet, self.tables, self)
         self.taking = StripTaking(self, self.sheet, self.view, self.showing, self.store)
+        self.jump = Jump(self.document, self.view, self.sheet, self.findings, self.tables, self)
+        self.curing = Curing(self.document, self.showing, self.findings, commit, self)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)
@@ -150,6 +154,9 @@ class Window(QMainWindow):
             },
             "next_pane": lambda: self.panes.go_to(1),
             "previous_pane": lambda: self.panes.go_to(-1),
+            "there_and_back": self.jump.there_and_back,
+            "findings_of_selected": self.jump.only_selected,
+            "all_findings": self.findings.filter.clear,
             "keep_reference": self.comparing.keep,
             "forget_reference": self.comparing.forget,
             "help": lambda: self.help.show_page(*self.panes.topic()),
@@ -162,6 +169,7 @@ class Window(QMainWindow):
         self.document.changed.connect(lambda _snapshot: self.on_document_changed())
         self.document.history_changed.connect(self.on_history_changed)
         self.document.modified_changed.connect(lambda _modified: self.on_file_changed())
+        self.document.opened.connect(self.findings.filter.clear)
         self.document.path_changed.connect(lambda _path: self.on_file_changed())
         self.view.shown_changed.connect(lambda _shown: self._show_pickers())
         self.view.strips_changed.connect(self.store.set_strips)
@@ -177,6 +185,8 @@ class Window(QMainWindow):
             self.comparing,
             self.taking,
             self.in_place,
+            self.jump,
+            self.curing,
         ):
             room.told.connect(self.status.tell)
         self.taking.told.connect(self.status.tell)
@@ -265,6 +275,7 @@ class Window(QMainWindow):
         if self._may_close():
             self._remember()
             self.showing.close()
+            self.curing.close()
             self.printing.close()
             self.recovery.close()
             event.accept()

@@ -81,6 +81,13 @@ class LatestSolver(QObject):
             self._impatient.start(max(0, round(1000 * left)))
         return self._newest
 
+    def cancel(self) -> None:
+        """Give up what runs and what waits; what still comes of it is not of the newest request."""
+        self._newest += 1
+        self._waiting = None
+        self._impatient.stop()
+        self._stop.set()
+
     def close(self) -> None:
         """Give up what runs and wait for the thread to end; nothing is delivered afterwards."""
         self._closed = True

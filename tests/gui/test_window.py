@@ -309,17 +309,20 @@ def test_the_wheel_changes_a_picker_only_while_it_has_the_keyboard(qapp, window,
     assert picker.currentIndex() == 1
 
 
-def test_tab_goes_from_the_findings_through_their_rows_and_only_then_on(window):
+def test_tab_goes_from_the_findings_through_filter_rows_and_cures_and_only_then_on(qtbot, window):
     def focused():
         return window.focusWidget()
 
     findings = window.findings
     rows = [row for row in findings.rows if row.row.leads_somewhere]
     assert len(rows) > 2
+    qtbot.waitUntil(lambda: len(findings.cure_lines) == 2, timeout=10_000)
+    cured = dict(zip(rows, findings.cure_lines, strict=False))  # the worst two fail
+    bar = findings.filter
     findings.setFocus()
-    for row in rows:
+    for part in (bar.kind, bar.state, bar.marks, *(p for row in rows for p in (row, cured.get(row)) if p)):
         QTest.keyClick(focused(), KEY.Key_Tab)
-        assert focused() is row
+        assert focused() is part
     QTest.keyClick(focused(), KEY.Key_Tab)
     assert not findings.isAncestorOf(focused())
     QTest.keyClick(focused(), KEY.Key_Backtab)

@@ -2,16 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
-from dataclasses import dataclass
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass, replace
 from typing import Literal, TypeAlias
 
 from app.findings import Band, Change, Comparison, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
+from app.findings.subjects import Subject, SubjectKind
 from app.gui.view import Shown
 from app.units import unbroken
 from app.words import tr
 
 Tone: TypeAlias = Literal["pass", "fail", "not_made", "problem", "note"]
+RowKind: TypeAlias = SubjectKind | Literal["fails", "not_made", "note", "problem"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -19,6 +21,7 @@ class Row:
     """One finding: what it says, and where choosing it leads (nowhere where there is no index)."""
 
     tone: Tone
+    kind: RowKind
     mark: str
     text: str
     spoken: str  # the whole sentence, for those who hear it
@@ -29,6 +32,8 @@ class Row:
     position: float | None = None
     segments: frozenset[int] = frozenset()
     joints: frozenset[int] = frozenset()
+    marks: frozenset[str] = frozenset()  # of the segments and joints it is about
+    about: Subject | NotMade | None = None
 
     @property
     def leads_somewhere(self) -> bool:
@@ -55,40 +60,50 @@ class Block:
 
 def rows(findings: Findings) -> tuple[Row, ...]:
     """Checks, the worst first, then what was not checked, then what the calculation does not say."""
-    checked = sorted([*_segment_rows(findings), *map(_limit_row, findings.limits)], key=lambda pair: -pair[0])
+    found = [*map(_segment_row, findings.segments), *map(_limit_row, findings.limits)]
+    checked = sorted(found, key=lambda pair: -pair[0])
     not_made = [_not_made_row(item) for item in findings.not_made]
-    notes = [Row("note", "!", unbroken(text), text) for text in findings.notes]
-    return (*(row for _, row in checked), *not_made, *notes)
+    notes = [Row("note", "note", "!", unbroken(text), text) for text in findings.notes]
+    return with_named_scales((*(row for _, row in checked), *not_made, *notes))
 
 
-def _segment_rows(findings: Findings) -> list[tuple[float, Row]]:
-    """The scales' numbers stand only where they differ from those of the row above."""
-    found: list[tuple[float, Row]] = []
+def with_named_scales(listed: Iterable[Row]) -> tuple[Row, ...]:
+    """The rows as they are listed: a scale's numbers stand only where they differ from those above."""
+    found: list[Row] = []
     above: tuple[str, str] | None = None
-    for item in findings.segments:
-        ends = item.band.compression_text, item.band.tension_text
-        found.append((item.utilisation, _segment_row(item, named=ends != above)))
+    for row in listed:
+        if row.band is None:
+            found.append(row)
+            continue
+        ends = row.band.compression_text, row.band.tension_text
+        found.append(replace(row, band_named=ends != above))
         above = ends
-    return found
+    return tuple(found)
 
 
-def _segment_row(item: SegmentFinding, *, named: bool) -> Row:
-    return Row(
+def _segment_row(item: SegmentFinding) -> tuple[float, Row]:
+    row = Row(
         tone=item.status,
+        kind="stress",
+        marks=frozenset(item.subject.marks),
+        about=item.subject,
         mark=item.mark,
         text=unbroken(item.short),
         spoken=item.sentence,
         value=item.utilisation_text,
         band=item.band,
-        band_named=named,
         position=item.position,
         segments=frozenset((item.segment,)),
     )
+    return item.utilisation, row
 
 
 def _limit_row(item: LimitFinding) -> tuple[float, Row]:
     row = Row(
         tone=item.status,
+        kind=item.subject.kind,
+        marks=frozenset(item.subject.marks),
+        about=item.subject,
         mark="",
         text=unbroken(item.sentence),
         spoken=item.sentence,
@@ -102,6 +117,9 @@ def _limit_row(item: LimitFinding) -> tuple[float, Row]:
 def _not_made_row(item: NotMade) -> Row:
     return Row(
         tone="not_made",
+        kind="not_made",
+        marks=frozenset(item.marks),
+        about=item,
         mark="!",
         text=unbroken(item.sentence),
         spoken=f"{item.sentence}. {item.remedy}",
@@ -113,7 +131,7 @@ def _not_made_row(item: NotMade) -> Row:
 
 def problem_rows(problems: tuple[str, ...]) -> tuple[Row, ...]:
     """Why there are no results."""
-    return tuple(Row("problem", "!", unbroken(text), text) for text in problems)
+    return tuple(Row("problem", "problem", "!", unbroken(text), text) for text in problems)
 
 
 def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:

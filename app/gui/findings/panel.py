@@ -1,27 +1,50 @@
 """The findings beside the sheet: verdict, findings the worst first, what was not checked, the books.
 
-Widgets are kept and given new contents, so that a result after every keystroke costs no new widgets and a row
-keeps the keyboard's focus.
+The verdict is never filtered; which of the findings below it are listed is a person's choice, kept here
+and in no file.
 """
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, Qt
+from collections.abc import Callable, Mapping
+from typing import TypeAlias
+
+from PySide6.QtCore import QEvent, Qt, Signal
 from PySide6.QtGui import QPalette
 from PySide6.QtWidgets import QFrame, QLabel, QScrollArea, QVBoxLayout, QWidget
 
+from app.cures import Cures
 from app.findings import Comparison, Findings
+from app.findings.subjects import Subject
 from app.gui.findings.block import LinesBlock
-from app.gui.findings.content import Row, blocks, detail_blocks, overall_block, problem_rows, rows
+from app.gui.findings.content import (
+    Row,
+    blocks,
+    detail_blocks,
+    overall_block,
+    problem_rows,
+    rows,
+    with_named_scales,
+)
+from app.gui.findings.cure_line import CureLine
+from app.gui.findings.filter_bar import FilterBar
 from app.gui.findings.row import FindingRow
+from app.gui.findings.row_list import RowList
+from app.gui.findings.sift import count_line, sifted
 from app.gui.fonts import Fonts
 from app.gui.theme import colour, greyed, theme_for
 from app.gui.view import Cursor, Selection, Shown, View
 from app.words import tr
 
+Narrow: TypeAlias = Callable[[str], Findings]  # of one combination, by its name
+
 
 class FindingsPanel(QScrollArea):
     """Shows findings; choosing one sets the cursor and the selection of the `View`."""
+
+    row_chosen = Signal(object)  # Row, before cursor and selection follow
+    row_entered = Signal(object)  # Row whose cell is wanted
+    cure_wanted = Signal(object)  # Cure
 
     def __init__(self, view: View, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -32,7 +55,10 @@ class FindingsPanel(QScrollArea):
         self._compared: Comparison | None = None
         self._current = True
         self._has_problems = False
-        self._rows: list[FindingRow] = []
+        self._narrow: Narrow | None = None
+        self._problem_rows: tuple[Row, ...] = ()
+        self._all_rows: tuple[Row, ...] = ()
+        self._cures: Mapping[Subject, Cures] = {}
         self._blocks: list[LinesBlock] = []
         self._make_widgets()
         self.setFrameShape(QFrame.Shape.NoFrame)
@@ -57,17 +83,23 @@ class FindingsPanel(QScrollArea):
             label.setTextFormat(Qt.TextFormat.PlainText)
             label.setMargin(5)
             label.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
-        self._problems_box, self._rows_box, self._blocks_box = QVBoxLayout(), QVBoxLayout(), QVBoxLayout()
+        rows_box, self._blocks_box = QVBoxLayout(), QVBoxLayout()
         self._against = LinesBlock(self._theme, self._fonts)
         self._against.hide()
-        for part in (self._headline, self._detail, self._stale, self._against):
+        self.filter = FilterBar()
+        for part in (self._headline, self._detail, self._stale, self._against, self.filter):
             column.addWidget(part)
-        for box in (self._problems_box, self._rows_box, self._blocks_box):
+        for box in (rows_box, self._blocks_box):
             box.setSpacing(2)
             column.addLayout(box)
         column.addWidget(self._error)
         column.addStretch(1)
         self.setWidget(self._body)
+        self._list = RowList(rows_box, self._theme, self._fonts, self.filter.last)
+        self._list.chosen.connect(self._on_row_chosen)
+        self._list.entered.connect(self.row_entered)
+        self._list.cure_wanted.connect(self.cure_wanted)
+        self.filter.changed.connect(self._on_filter_changed)
 
     # What is shown
 
@@ -84,7 +116,12 @@ class FindingsPanel(QScrollArea):
     @property
     def rows(self) -> tuple[FindingRow, ...]:
         """The rows that are shown, problems first."""
-        return tuple(row for row in self._rows if not row.isHidden())
+        return self._list.shown
+
+    @property
+    def cure_lines(self) -> tuple[CureLine, ...]:
+        """The cures that are shown."""
+        return self._list.cure_lines
 
     @property
     def blocks(self) -> tuple[LinesBlock, ...]:
@@ -97,17 +134,23 @@ class FindingsPanel(QScrollArea):
         problems: tuple[str, ...],
         current: bool,
         compared: Comparison | None = None,
+        narrow: Narrow | None = None,
     ) -> None:
         """Show findings (`current`, or of an earlier edit), and the problems that keep from solving.
 
-        `compared` is what has changed against a reference.
+        `compared` is what has changed against a reference; `narrow` gives the findings of one combination.
         """
+        if findings is not self._findings or not current:
+            self._cures = {}
         self._findings = findings
         self._compared = compared if findings is not None else None
         self._current = current
         self._has_problems = bool(problems)
-        shown = problem_rows(problems) + (rows(findings) if findings is not None else ())
-        self._show_rows(shown)
+        self._narrow = narrow
+        self._problem_rows = problem_rows(problems)
+        self._all_rows = rows(findings) if findings is not None else ()
+        self.filter.offer_states([book.name for book in findings.books] if findings is not None else ())
+        self._show_rows()
         self._headline.setText(_headline(findings, problems))
         self._detail.setText(findings.detail if findings is not None and not problems else "")
         self._error.setText(findings.numerical_error if findings is not None else "")
@@ -115,20 +158,25 @@ class FindingsPanel(QScrollArea):
         for label in (self._detail, self._error):
             label.setVisible(bool(label.text()))
         self._show_blocks()
-        self._light()
+        self._list.light(self._view.selection)
         self._dress()
 
-    def _show_rows(self, shown: tuple[Row, ...]) -> None:
-        while len(self._rows) < len(shown):
-            row = FindingRow(self._theme, self._fonts)
-            row.clicked.connect(self._on_row_clicked)
-            self._rows_box.addWidget(row)
-            self.setTabOrder(self._rows[-1] if self._rows else self, row)  # else after the whole window
-            self._rows.append(row)
-        for index, widget in enumerate(self._rows):
-            if index < len(shown):
-                widget.show_row(shown[index])
-            widget.setVisible(index < len(shown))
+    def show_cures(self, cures: Mapping[Subject, Cures]) -> None:
+        """Show what would cure the findings that are shown now."""
+        self._cures = cures if self._current else {}
+        self._list.show_cures(self._cures)
+        self._dress()
+
+    def _show_rows(self) -> None:
+        sift = self.filter.sift
+        self.filter.setVisible(bool(self._all_rows))
+        found = self._all_rows
+        if sift.state is not None and self._narrow is not None:
+            found = rows(self._narrow(sift.state))
+        listed = sifted(found, sift)
+        self.filter.say_count("" if sift.is_open else count_line(listed, self._all_rows, sift.state))
+        self._list.show(self._problem_rows + with_named_scales(listed))
+        self._list.show_cures(self._cures)
 
     def _show_blocks(self) -> None:
         shown = blocks(self._findings, self._view.shown) if self._findings is not None else ()
@@ -145,30 +193,21 @@ class FindingsPanel(QScrollArea):
                 widget.show_block(shown[index])
             widget.setVisible(index < len(shown))
 
-    def _light(self) -> None:
-        """Light the rows of what is selected."""
-        selection = self._view.selection
-        for widget in self._rows:
-            row = widget.row
-            lit = row is not None and bool(row.segments & selection.segments or row.joints & selection.joints)
-            widget.set_lit(lit)
-
     # Colours
 
     def _dress(self) -> None:
         self._theme = theme_for(self.palette())
         stale = self._findings is not None and not self._current
         dressed = greyed(self._theme) if stale else self._theme
-        for widget in (*self._rows, self._against, *self._blocks):
+        self._list.dress(dressed, self._theme)
+        for widget in (self._against, *self._blocks):
             widget.set_theme(dressed)
-        for widget in self._rows:
-            if widget.row is not None and widget.row.tone == "problem":
-                widget.set_theme(self._theme)
         ground = QPalette(self.palette())
         ground.setColor(QPalette.ColorRole.Window, colour(self._theme.panel))
         self._body.setPalette(ground)
         self._body.setAutoFillBackground(True)
         self.viewport().setPalette(ground)
+        self.filter.set_theme(self._theme)
         self._dress_labels(dressed.ink)
 
     def _dress_labels(self, ink: str) -> None:
@@ -187,17 +226,21 @@ class FindingsPanel(QScrollArea):
 
     # What happened
 
-    def _on_row_clicked(self) -> None:
-        widget = self.sender()
-        row = widget.row if isinstance(widget, FindingRow) else None
-        if row is None or not row.leads_somewhere:
+    def _on_row_chosen(self, row: Row) -> None:
+        if not row.leads_somewhere:
             return
+        self.row_chosen.emit(row)
         self._view.set_selection(Selection(row.segments, row.joints))
         if row.position is not None:
             self._view.set_cursor(Cursor(row.position))
 
+    def _on_filter_changed(self) -> None:
+        self._show_rows()
+        self._list.light(self._view.selection)
+        self._dress()
+
     def _on_selection_changed(self, _selection: Selection) -> None:
-        self._light()
+        self._list.light(self._view.selection)
 
     def _on_shown_changed(self, _shown: Shown) -> None:
         self._show_blocks()
@@ -212,7 +255,8 @@ class FindingsPanel(QScrollArea):
             self._dress()
         elif event.type() == QEvent.Type.FontChange:
             self._fonts = Fonts(self.font())
-            for widget in (*self._rows, self._against, *self._blocks):
+            self._list.set_fonts(self._fonts)
+            for widget in (self._against, *self._blocks):
                 widget.set_fonts(self._fonts)
             self._dress()
 

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QRectF, QSize, Qt
-from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen, QResizeEvent
+from PySide6.QtCore import QRectF, QSize, Qt, Signal
+from PySide6.QtGui import QKeyEvent, QMouseEvent, QPainter, QPaintEvent, QPen, QResizeEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
 
 from app.gui.findings.content import Row
@@ -17,7 +17,9 @@ LINES = Qt.TextFlag.TextDontClip | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag
 
 
 class FindingRow(QAbstractButton):
-    """A row; clicking it, Space or Enter chooses it."""
+    """A row; clicking it or Space chooses it, Enter or a double click goes on to what is to be changed."""
+
+    entered = Signal()
 
     def __init__(self, theme: Theme, fonts: Fonts, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -25,6 +27,7 @@ class FindingRow(QAbstractButton):
         self._row: Row | None = None
         self._fonts = fonts
         self._lit = False
+        self._twice = False
         self.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
 
     @property
@@ -110,11 +113,24 @@ class FindingRow(QAbstractButton):
         self._fit_height()
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
-        """Enter chooses, as Space does by itself."""
+        """Enter chooses, as Space does by itself, and goes on."""
         if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
             self.click()
+            self.entered.emit()
         else:
             super().keyPressEvent(event)
+
+    def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
+        """The second press of a double click."""
+        super().mouseDoubleClickEvent(event)
+        self._twice = event.button() == Qt.MouseButton.LeftButton
+
+    def mouseReleaseEvent(self, event: QMouseEvent) -> None:
+        """After a double click, go on once the row is done with the mouse."""
+        super().mouseReleaseEvent(event)
+        twice, self._twice = self._twice, False
+        if twice:
+            self.entered.emit()
 
     def paintEvent(self, _event: QPaintEvent) -> None:
         """Card, mark, sentence, value, remedy, scale, focus."""

@@ -22,6 +22,7 @@ from app.gui.tables.segments import SEGMENTS
 from app.gui.tables.view import TableView
 from app.gui.theme import Theme
 from app.gui.view import Selection, View
+from app.hand.cells import Cell
 from app.words import later, tr
 
 # Each tab with the tables that stand in it side by side, and their shares of its width
@@ -164,6 +165,15 @@ class TablesPane(QWidget):
         self.tabs.setCurrentIndex(page)
         view.choose_record(record)
         view.setFocus()
+
+    def show_cell(self, cell: Cell) -> None:
+        """Bring one cell to the front, with the keyboard in it; its row where the column is hidden."""
+        self.show_record(cell.table, cell.record)
+        view = self.views[cell.table]
+        model = view.table_model
+        place = next((i for i, column in enumerate(model.columns) if column.key == cell.column), None)
+        if place is not None and not view.isColumnHidden(place):
+            view.setCurrentIndex(model.index(model.row_of(cell.record), place))
 
     def on_document_changed(self, snapshot: Snapshot) -> None:
         """The picker lists the cases of now; the edited case is kept by its name."""

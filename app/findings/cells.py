@@ -1,0 +1,45 @@
+"""The table cell that is to be changed for a finding: a section, a limit, an allowable stress, a support."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterable
+from typing import Final
+
+from app.findings.records import NotMade
+from app.findings.subjects import Subject
+from app.hand.cells import Cell
+from solver.checks import Reason
+from solver.model import Project
+
+_ALLOWABLES: Final[dict[Reason, str]] = {
+    "no_allowable_tension": "allowable_tension",
+    "no_allowable_compression": "allowable_compression",
+}
+
+
+def cell_of_finding(of: Subject | NotMade, project: Project) -> Cell | None:
+    """The cell; None where this project has no such thing (any more)."""
+    return _of_missing(of, project) if isinstance(of, NotMade) else _of_subject(of, project)
+
+
+def _of_subject(subject: Subject, project: Project) -> Cell | None:
+    marks = subject.marks
+    if subject.kind == "stress":
+        return _cell("segments", "section", project.segments, lambda segment: (segment.mark,) == marks)
+    limits = getattr(project.limits, subject.kind)
+    if subject.kind == "relative":
+        return _cell("limits relative", "limit", limits, lambda limit: (limit.start, limit.end) == marks)
+    return _cell(f"limits {subject.kind}", "limit", limits, lambda limit: (limit.joint,) == marks)
+
+
+def _of_missing(missing: NotMade, project: Project) -> Cell | None:
+    if missing.reason in _ALLOWABLES:
+        column = _ALLOWABLES[missing.reason]
+        return _cell("materials", column, project.materials, lambda found: found.name == missing.material)
+    return Cell("joints", missing.joints[0], "support") if missing.joints else None
+
+
+def _cell(table: str, column: str, records: Iterable[object], is_it: Callable[..., bool]) -> Cell | None:
+    found = (index for index, record in enumerate(records) if is_it(record))
+    index = next(found, None)
+    return None if index is None else Cell(table, index, column)
