@@ -29,6 +29,7 @@ from app.gui.findings.curing import Curing
 from app.gui.findings.jump import Jump
 from app.gui.findings.panel import FindingsPanel
 from app.gui.hand.in_place import InPlace
+from app.gui.hand.sheet_sweeps import SheetSweeps
 from app.gui.help import Help
 from app.gui.language_menu import LanguageMenu
 from app.gui.member_edits import MemberEdits
@@ -92,6 +93,7 @@ class Window(QMainWindow):
         self.taking = StripTaking(self, self.sheet, self.view, self.showing, self.store)
         self.jump = Jump(self.document, self.view, self.sheet, self.findings, self.tables, self)
         self.curing = Curing(self.document, self.showing, self.findings, commit, self)
+        self.sweeps = SheetSweeps(self.sheet, self.view, self.tables, self.in_place)
         self.edits = MemberEdits(self.document, self.tables, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)

@@ -6,6 +6,8 @@ from PySide6.QtGui import QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 
+from app.drawing.shapes import LOADS, Part
+from app.gui.view import Shown
 from tests.gui.hand import begin, cell, chord, enter, go_to, text_at
 
 KEY = Qt.Key
@@ -190,6 +192,76 @@ def test_a_plain_click_with_ctrl_still_chooses_and_lets_go(window, table):
         QTest.mouseClick(table.viewport(), LEFT, CTRL, over(table, 3, "length"))
         assert table.chosen_records() == wanted
     assert table.currentIndex() == cell(table, 3, "length")
+
+
+# On the drawing
+
+
+def label(window, kind, index=0):
+    """The middle of a label of the drawing."""
+    (box,) = [t.box for t in window.sheet.drawing.picture.texts if t.part == Part(kind, index)]
+    return QPoint(*map(round, box.centre))
+
+
+@pytest.fixture
+def painted(window, qtbot):
+    qtbot.waitUntil(lambda: bool(window.sheet.drawing.picture.texts))
+    return window
+
+
+def test_the_wheel_with_ctrl_over_a_dimension_runs_the_length(painted):
+    window, at = painted, label(painted, "length", 3)
+    before = length(window, 3)
+    for _ in range(3):  # the dimension moves away from under the pointer meanwhile
+        turn(window.sheet.viewport(), at, 1)
+    assert window.document.shown_project.segments[3].length > before
+    assert window.tables.views["segments"].table_model.index(4, 1).data() != str(round(before * 1000))
+    QTest.keyRelease(window.sheet, KEY.Key_Control)
+    assert window.document.undo_name == "Length of D"
+    window.document.undo()
+    assert length(window, 3) == before
+
+
+def test_a_pull_over_a_section_runs_it_and_escape_restores(painted):
+    window, at = painted, label(painted, "section", 1)
+    sheet = window.sheet.viewport()
+    before = window.document.project
+    QTest.mousePress(sheet, LEFT, CTRL, at)
+    QTest.mouseMove(sheet, at - QPoint(0, 10))
+    QTest.mouseMove(sheet, at - QPoint(0, 25))
+    assert window.document.preview is not None
+    assert window.document.preview.project.segments[1].section != before.segments[1].section
+    QTest.keyClick(window.sheet, KEY.Key_Escape)
+    QTest.mouseRelease(sheet, LEFT, CTRL, at)
+    assert window.document.project == before
+    assert window.document.undo_name is None
+
+
+def test_the_wheel_beside_the_labels_zooms_with_or_without_ctrl(painted):
+    window = painted
+    body = window.sheet.drawing.picture.box_of(Part("segment", 2))
+    at = QPoint(round(body.left + 3), round(body.top + 2))
+    for modifiers in (CTRL, NONE):
+        before = window.sheet.ruler.scale
+        turn(window.sheet.viewport(), at, 1, modifiers)
+        assert window.sheet.ruler.scale > before
+        assert not window.tables.sweeper.is_running
+
+
+def test_a_click_with_ctrl_on_a_label_goes_through_to_the_drawing(painted):
+    window = painted
+    QTest.mouseClick(window.sheet.viewport(), LEFT, CTRL, label(window, "length", 2))
+    assert window.view.selection.segments == {2}
+
+
+def test_a_load_whose_case_is_not_shown_does_not_run(painted, qtbot):
+    window = painted
+    window.on_layout_picked("horizontal")
+    window.view.set_shown(Shown("case", window.document.project.load_cases[1].name))
+    at = next(t for t in window.sheet.drawing.picture.texts if t.part is not None and t.part.kind in LOADS)
+    turn(window.sheet.viewport(), QPoint(*map(round, at.box.centre)), 1)
+    assert "takes no part in what is shown" in window.status.news.text()
+    assert window.document.preview is None
 
 
 # Keys

@@ -130,7 +130,7 @@ class InPlace(QObject):
         self.commit()
         project, case = self._document.project, self._tables.sight.case
         if part.kind in LOADS and case_share(project, self._view.shown, case) == 0.0:
-            self.told.emit(self._why_no_part(case))
+            self.told.emit(self.why_no_part(case))
             return
         cells = cells_of(part, project, case)
         if not cells:
@@ -194,7 +194,8 @@ class InPlace(QObject):
 
     # What cannot be typed
 
-    def _why_no_part(self, case: int | None) -> str:
+    def why_no_part(self, case: int | None) -> str:
+        """Why a load on the drawing cannot be edited where the edited case is not in what is shown."""
         if case is None:
             return tr("add a load case in the Loads table first")
         name = self._document.project.load_cases[case].name

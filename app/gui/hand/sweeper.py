@@ -8,7 +8,7 @@ Escape restores.
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QObject, Qt, Signal
-from PySide6.QtGui import QKeyEvent
+from PySide6.QtGui import QKeyEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication
 
 from app.gui.document import Document
@@ -18,7 +18,25 @@ from app.words import tr
 
 MODIFIERS = (Qt.Key.Key_Control, Qt.Key.Key_Alt, Qt.Key.Key_Shift, Qt.Key.Key_Meta)
 HOLDERS = MODIFIERS[:2]  # what is held down during a sweep
+CONTROL = Qt.KeyboardModifier.ControlModifier
+NOTCH = 120  # eighths of a degree, of a wheel
+PULL = 6  # px of a pull for a step
 ENDS = (QEvent.Type.MouseButtonPress, QEvent.Type.WindowDeactivate, QEvent.Type.ApplicationDeactivate)
+
+
+class Wheel:
+    """Whole notches out of the turns of a wheel, also of one that turns smoothly."""
+
+    def __init__(self) -> None:
+        self._turned = 0
+
+    def notches(self, event: QWheelEvent) -> int:
+        """The notches that are full by now; positive away from the hand."""
+        turn = event.angleDelta()
+        self._turned += turn.y() or turn.x()
+        whole = int(self._turned / NOTCH)
+        self._turned -= whole * NOTCH
+        return whole
 
 
 class Sweeper(QObject):

@@ -10,31 +10,12 @@ from PySide6.QtGui import QKeyEvent, QMouseEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication
 
 from app.gui.hand.cell_entry import CellEntry
-from app.gui.hand.sweeper import Sweeper, is_step
+from app.gui.hand.sweeper import CONTROL, PULL, Sweeper, Wheel, is_step
 from app.gui.tables.delegate import BAR_WIDTH, MARGIN
 from app.sweep import place_in_entry
 
 if TYPE_CHECKING:
     from app.gui.tables.view import TableView
-
-CONTROL = Qt.KeyboardModifier.ControlModifier
-NOTCH = 120  # eighths of a degree, of a wheel
-PULL = 6  # px of a pull for a step
-
-
-class Wheel:
-    """Whole notches out of the turns of a wheel, also of one that turns smoothly."""
-
-    def __init__(self) -> None:
-        self._turned = 0
-
-    def notches(self, event: QWheelEvent) -> int:
-        """The notches that are full by now; positive away from the hand."""
-        turn = event.angleDelta()
-        self._turned += turn.y() or turn.x()
-        whole = int(self._turned / NOTCH)
-        self._turned -= whole * NOTCH
-        return whole
 
 
 class CellSweeps(QObject):

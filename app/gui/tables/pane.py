@@ -127,6 +127,11 @@ class TablesPane(QWidget):
     # What is shown
 
     @property
+    def document(self) -> Document:
+        """What the tables show."""
+        return self._document
+
+    @property
     def sight(self) -> Sight:
         """Units and edited case."""
         return self._sight
