@@ -78,7 +78,7 @@ def with_language(arguments: list[str]) -> tuple[str, list[str]]:
         if word == OPTION:
             ours.append(next(words, "?"))
         elif word.startswith(f"{OPTION}="):
-            ours.append(word.partition("=")[2])
+            ours.append(word.partition("=")[2] or "?")
         else:
             rest.append(word)
     return (ours[-1] if ours else ""), rest + arguments[end:]

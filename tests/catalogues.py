@@ -10,6 +10,7 @@ from __future__ import annotations
 import ast
 import sys
 from collections.abc import Iterator
+from functools import cache
 from pathlib import Path
 from typing import NamedTuple
 
@@ -53,6 +54,7 @@ def sources() -> Iterator[Found]:
             yield from messages_of(path.read_text("utf-8"), path.relative_to(ROOT).as_posix())
 
 
+@cache
 def wanted() -> dict[Key, Found]:
     """Every message once, at the first place where it stands."""
     found: dict[Key, Found] = {}

@@ -15,6 +15,7 @@ from msgspec.structs import replace
 
 from app import samples
 from app.units import SYSTEM_NAMES
+from app.words import LANGUAGES, SOURCE, use_language
 from solver.model import Project, UnitSystemName
 
 os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
@@ -35,15 +36,18 @@ def main(arguments: list[str]) -> int:
     """Take the pictures asked for and name each file."""
     options = parser().parse_args(arguments)
     options.folder.mkdir(parents=True, exist_ok=True)
+    use_language(options.language)
     app = application()
     if options.dark:
         app.setPalette(dark_palette())
     for name in options.sample:
         for units in options.units:
             for size in options.size:
-                theme = "-dark" if options.dark else ""
-                target = options.folder / f"{name}-{units}-{size}{theme}.png"
-                take(in_units(samples.read_sample(name), units), size_of(size), target, options.show)
+                target = options.folder / f"{name}-{units}-{size}{kind_of(options)}.png"
+                project = in_units(samples.read_sample(name), units)
+                if options.upright:
+                    project = upright(project)
+                take(project, size_of(size), target, options.show)
                 sys.stdout.write(f"{target}\n")
     return 0
 
@@ -56,6 +60,8 @@ def parser() -> argparse.ArgumentParser:
     asked.add_argument("--units", nargs="+", default=SYSTEM_NAMES, choices=SYSTEM_NAMES)
     asked.add_argument("--size", nargs="+", default=SIZES, metavar="WIDTHxHEIGHT")
     asked.add_argument("--dark", action="store_true", help="with a dark palette")
+    asked.add_argument("--language", default=SOURCE, choices=LANGUAGES)
+    asked.add_argument("--upright", action="store_true", help="with the member upright")
     asked.add_argument("--show", metavar="COMBINATION", help="show this one instead of the one that governs")
     return asked
 
@@ -64,6 +70,17 @@ def size_of(text: str) -> QSize:
     """A size such as 1280x800."""
     width, _, height = text.partition("x")
     return QSize(int(width), int(height))
+
+
+def kind_of(options: argparse.Namespace) -> str:
+    """What sets the picture apart from the plain one, for its file's name."""
+    language = "" if options.language == SOURCE else f"-{options.language}"
+    return f"{'-dark' * options.dark}{'-upright' * options.upright}{language}"
+
+
+def upright(project: Project) -> Project:
+    """The project with its member upright."""
+    return replace(project, display=replace(project.display, orientation="vertical"))
 
 
 def in_units(project: Project, units: UnitSystemName) -> Project:

@@ -7,7 +7,7 @@ import json
 import os
 import subprocess
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
 from pathlib import Path
 from types import ModuleType
 
@@ -15,7 +15,8 @@ import pytest
 
 from app import cli, commands, qt_libraries
 from app.exit_codes import BROKEN_PIPE, WORST_FIRST, worst
-from app.samples import sample_path
+from app.samples import names, sample_path
+from app.words import LANGUAGES, use_language
 
 ROOT = Path(__file__).resolve().parents[2]
 PASSING, FAILING = str(sample_path("hoist_shaft")), str(sample_path("tie_rod"))
@@ -495,3 +496,65 @@ def test_the_version_is_the_one_of_the_package(capsys: pytest.CaptureFixture[str
     name, number = capsys.readouterr().out.split()
     assert name == "barwright"
     assert all(part.isdigit() for part in number.split("."))
+
+
+class TestLanguage:
+    """The terminal speaks the environment's language, or the one that was asked for."""
+
+    @pytest.fixture(autouse=True)
+    def english_again(self) -> Iterator[None]:
+        yield
+        use_language("en")
+
+    @pytest.mark.parametrize("asked", [["--language", "de"], ["--language=de"]])
+    @pytest.mark.parametrize("behind", [True, False])
+    def test_asked_for(self, asked: list[str], behind: bool, capsys: pytest.CaptureFixture[str]) -> None:
+        rest = ["check", str(sample_path("tie_rod"))]
+        assert cli.main([*rest, *asked] if behind else [*asked, *rest]) == 1
+        said = capsys.readouterr().out
+        assert "Nicht erfüllt" in said
+        assert "D: 208 von 198 MPa auf Zug (1,05) bei 1380 mm, Storm surge" in said
+
+    def test_of_the_environment(
+        self, monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+    ) -> None:
+        monkeypatch.setenv("LANGUAGE", "de_DE")
+        assert cli.main(["check", "--language=en", str(sample_path("tie_rod"))]) == 1
+        assert "Does not pass" in capsys.readouterr().out
+        assert cli.main(["check", "gone.json"]) == 2
+        assert "keine solche Datei" in capsys.readouterr().err
+
+    def test_of_the_help_and_of_a_slip(self, capsys: pytest.CaptureFixture[str]) -> None:
+        with pytest.raises(SystemExit):
+            cli.main(["check", "--help", "--language", "de"])
+        assert "Aufruf: barwright check" in capsys.readouterr().out
+        with pytest.raises(SystemExit):
+            cli.main(["check", "--language", "de"])
+        assert "Fehler: diese Argumente fehlen: DATEI" in capsys.readouterr().err
+
+    @pytest.mark.parametrize("typed", [["--language", "tlh"], ["--language="], ["--language"]])
+    def test_that_there_is_not(self, typed: list[str], capsys: pytest.CaptureFixture[str]) -> None:
+        assert cli.main(["check", "x.json", *typed]) == 2
+        assert "there are: en (English), de (Deutsch)" in capsys.readouterr().err
+
+    def test_behind_two_dashes_it_is_a_file(self, capsys: pytest.CaptureFixture[str]) -> None:
+        assert cli.main(["check", "--", "--language=de"]) == 2
+        assert "--language=de cannot be used" in capsys.readouterr().err
+
+    def test_the_results_file_has_none(self, capsys: pytest.CaptureFixture[str]) -> None:
+        printed = []
+        for code in LANGUAGES:
+            cli.main(["check", "--json", "--language", code, *(str(sample_path(name)) for name in names())])
+            printed.append(capsys.readouterr().out)
+        assert printed[0] == printed[1] != ""
+
+    def test_further_windows_speak_it_too(self, monkeypatch: pytest.MonkeyPatch) -> None:
+        opened: list[object] = []
+        door = ModuleType("app.gui.main")
+        door.run = lambda path, language: opened.append(language) or 0  # type: ignore[attr-defined]
+        monkeypatch.setitem(sys.modules, "app.gui.main", door)
+        monkeypatch.setattr(subprocess, "Popen", lambda command: opened.append(command[-3:]))
+        monkeypatch.setattr(qt_libraries, "missing_packages", lambda table: ())
+        monkeypatch.setenv("QT_QPA_PLATFORM", "offscreen")
+        assert cli.main(["open", "--language", "de", "a.json", "b.json"]) == 0
+        assert opened == [["--language=de", "--", "b.json"], "de"]

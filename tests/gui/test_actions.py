@@ -17,6 +17,7 @@ from app.gui.actions import (
 )
 from app.gui.dialogs import TextDialog
 from app.gui.status_line import StatusLine
+from app.words import LANGUAGES, tr, use_language
 
 REAL = [command for command in COMMANDS if command is not SEPARATOR]
 
@@ -26,10 +27,16 @@ def test_no_two_commands_share_a_key(qapp):
     assert [key for key, count in Counter(keys).items() if count > 1] == []
 
 
-def test_no_two_entries_of_a_menu_share_a_mnemonic(qapp):
-    for menu in MENUS:
-        letters = [c.text[c.text.index("&") + 1].lower() for c in REAL if c.menu == menu]
-        assert sorted(letters) == sorted(set(letters)), menu
+@pytest.mark.parametrize("language", LANGUAGES)
+def test_no_two_entries_of_a_menu_share_a_mnemonic(qapp, language):
+    use_language(language)
+    try:
+        menus = [[tr(c.text) for c in REAL if c.menu == menu] for menu in MENUS] + [[tr(m) for m in MENUS]]
+    finally:
+        use_language("en")
+    for texts in menus:
+        letters = [text[text.index("&") + 1].lower() for text in texts]
+        assert [letter for letter, count in Counter(letters).items() if count > 1] == [], texts
 
 
 def test_every_standard_key_has_a_fallback_or_a_binding(qapp):

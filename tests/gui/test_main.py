@@ -18,7 +18,7 @@ def folder(tmp_path, monkeypatch):
     return tmp_path
 
 
-def run_and_look(path, look):
+def run_and_look(path, look, language=""):
     """Run the program, look at its window from inside its event loop, and close it."""
     seen = []
 
@@ -30,7 +30,7 @@ def run_and_look(path, look):
         window.close()
 
     QTimer.singleShot(0, act)
-    code = main.run(path)
+    code = main.run(path, language)
     return code, seen[0]
 
 

@@ -33,9 +33,13 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
     name = free_name(f"{segment.material} {segment.mark}", {m.name for m in project.materials})
     own = replace(project.materials[place], name=name, modulus=modulus)
     with_own = edits.add_record(project, ("materials",), own)
-    note = tr("{mark} now has a material of its own, {name}").format(mark=segment.mark, name=name)
+    note = tr("{mark} now has a material of its own, {name}")
     if has_allowables(own):
-        note += tr("; its allowable stresses are those of {name}: verify").format(name=segment.material)
+        note = tr(
+            "{mark} now has a material of its own, {name}; its allowable stresses are "
+            "those of {material}: verify"
+        )
+    note = note.format(mark=segment.mark, name=name, material=segment.material)
     return Change(edits.set_value(with_own, ("segments", index, "material"), name), note)
 
 
