@@ -22,9 +22,20 @@ BESIDE_AXIS = 24.0  # upright, from what is said under the member to its axis
 
 def lay_out(member: Member, frame: Frame) -> Picture:
     """The picture of a member in its frame."""
+    return sketched(member, frame).picture
+
+
+def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch:
+    """The finished sketch of a member in its frame, with the rows and proportions of another one if given.
+
+    So what is pulled by hand stays under the pointer, where the drawing would else share its room anew.
+    """
     sketch = Sketch(member, frame, no_rows(), zero=0.0, scale=0.0)
     wishes = Wishes.of(sketch)
-    _give_rows(sketch, wishes)
+    if like is None:
+        _give_rows(sketch, wishes)
+    else:
+        sketch.take_proportions(like)
     if frame.detail.explained:
         draw_joint_marks(sketch, wishes.joints)
     if frame.detail.dimensions:
@@ -38,7 +49,7 @@ def lay_out(member: Member, frame: Frame) -> Picture:
     _aim_at_labels(sketch.picture)
     aim_at_joints(sketch)
     _set_edge(sketch)
-    return sketch.picture
+    return sketch
 
 
 def _aim_at_labels(picture: Picture) -> None:

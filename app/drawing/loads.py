@@ -11,7 +11,7 @@ import numpy as np
 from msgspec.structs import replace
 
 from app.drawing.placing import Span, Wish
-from app.drawing.shapes import Part, PartKind
+from app.drawing.shapes import Part, PartKind, Point
 from app.drawing.sketch import Sketch
 from app.drawing.supports import support_of
 from app.drawing.words import (
@@ -32,6 +32,7 @@ ARROW = 32.0  # length of the arrow of a joint force, px
 LEAST_ARROW = 13.0
 HEAD = 5.0
 LEAST_BAND = 5.0  # height of the smallest distributed load, px
+HIGHEST_BAND = 60.0  # while a load is pulled beyond its row
 
 
 def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
@@ -70,11 +71,11 @@ def load_wishes(sketch: Sketch) -> list[Wish]:
 
 
 def _draw_distributed(sketch: Sketch, distributed: FloatArray) -> None:
-    largest = float(np.max(np.abs(distributed)))
+    heights = band_heights(sketch, distributed)
     for index, (start, end) in enumerate(distributed.tolist()):
-        span = sketch.shown_span(index)
-        if span is not None and (start or end):
-            _draw_band(sketch, index, start / largest, end / largest)
+        span, pair = sketch.shown_span(index), heights[index]
+        if span is not None and pair is not None:
+            _draw_band(sketch, index, (start, end), pair)
             sketch.target(span, sketch.rows.band, Part("distributed", index))
             if start != end:
                 _aim_at_end(sketch, index, span)
@@ -86,6 +87,15 @@ def _aim_at_end(sketch: Sketch, index: int, span: Span) -> None:
     half = 0.5 * (low + high)
     last = (half, high) if sketch.forward > 0 else (low, half)
     sketch.target(last, sketch.rows.band, Part("distributed_end", index))
+
+
+def band_heights(sketch: Sketch, distributed: FloatArray) -> list[tuple[float, float] | None]:
+    """How high the band of each segment is at its start and end, px, by its share of the largest load."""
+    room = sketch.rows.band[1] - sketch.rows.band[0] - LEAST_BAND
+    largest = sketch.largest or sketch.largest_load or 1.0
+    heights = np.where(distributed == 0.0, 0.0, LEAST_BAND + np.abs(distributed) / largest * room)
+    pairs: list[tuple[float, float]] = [(a, b) for a, b in np.minimum(heights, HIGHEST_BAND).tolist()]
+    return [pair if pair[0] or pair[1] else None for pair in pairs]
 
 
 def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
@@ -101,12 +111,11 @@ def _distributed_wishes(sketch: Sketch, distributed: FloatArray) -> list[Wish]:
     return wishes
 
 
-def _draw_band(sketch: Sketch, index: int, start: float, end: float) -> None:
+def _draw_band(sketch: Sketch, index: int, load: tuple[float, float], heights: tuple[float, float]) -> None:
     """A band as high as the load's share of the largest, with arrows of its direction."""
-    base, room = sketch.rows.band[1], sketch.rows.band[1] - sketch.rows.band[0]
+    base, (start, end) = sketch.rows.band[1], load
     ends = sketch.along(index), sketch.along(index + 1)
     part = Part("distributed", index)
-    heights = [LEAST_BAND + abs(v) * (room - LEAST_BAND) if v else 0.0 for v in (start, end)]
     top = [(a, base - h) for a, h in zip(ends, heights, strict=True)]
     outline = [(ends[0], base), *top, (ends[1], base)]
     sketch.line(*outline, ink="quiet", fill="load_fill", closed=True, part=part, clip=True)
@@ -141,11 +150,17 @@ def _draw_forces(sketch: Sketch, forces: FloatArray) -> None:
             _draw_force(sketch, joint, force)
 
 
+def force_line(sketch: Sketch, joint: int, force: float) -> tuple[Point, Point]:
+    """Tail and tip of the arrow of a force, (along, across)."""
+    tail, tip_at = _force_span(sketch, joint, force)
+    across = sketch.rows.axis if lies_outside(sketch, joint) else sketch.rows.arrows
+    return (tail, across), (tip_at, across)
+
+
 def _draw_force(sketch: Sketch, joint: int, force: float) -> None:
     part = Part("force", joint)
-    tail, tip_at = _force_span(sketch, joint, force)
+    (tail, across), (tip_at, _) = force_line(sketch, joint, force)
     outside = lies_outside(sketch, joint)
-    across = sketch.rows.axis if outside else sketch.rows.arrows
     _arrow(sketch, tail, tip_at - tail, across, 2.4, HEAD + 3.0, part)
     below = 12.0 if outside else 9.0  # the row of arrows is near the member, which must stay within reach
     sketch.target((tail, tip_at), (across + below - 24.0, across + below), part)

@@ -11,6 +11,8 @@ from functools import cached_property
 from itertools import pairwise
 from typing import Literal, TypeAlias
 
+import numpy as np
+
 from app.drawing.frame import Frame
 from app.drawing.member import Member
 from app.drawing.placing import CLEAR, Placed, Span, Wish, place
@@ -48,7 +50,20 @@ class Sketch:
     rows: Rows
     zero: float  # the pixel across the axis where `across` is 0
     scale: float  # pixels per metre across the axis
+    largest: float = 0.0  # distributed load that fills its row, where that is held; else the largest there is
     picture: Picture = field(default_factory=Picture)
+
+    def take_proportions(self, other: Sketch) -> None:
+        """Lie in the rows of another sketch, as large across and with loads as high as there."""
+        self.rows, self.zero, self.scale = other.rows, other.zero, other.scale
+        self.picture.factor = other.picture.factor
+        self.largest = other.largest or other.largest_load
+
+    @property
+    def largest_load(self) -> float:
+        """The largest distributed load, N/m; 0 where there is none."""
+        loads = self.member.loads
+        return 0.0 if loads is None else float(np.max(np.abs(loads.distributed), initial=0.0))
 
     @cached_property
     def window(self) -> Span:

@@ -86,6 +86,7 @@ class Document(QObject):
         self._path = path
         self._preview: Preview | None = None
         self._was_modified = False
+        self._gesture: object = None  # whose undo step may still be amended
 
     @property
     def snapshot(self) -> Snapshot:
@@ -140,6 +141,7 @@ class Document(QObject):
         self._steps = [Step("", Snapshot(project, MappingProxyType(dict(drafts))))]
         self._index = 0
         self._saved = project
+        self._gesture = None
         self._preview = None
         self._path = path
         self.path_changed.emit(path)
@@ -166,6 +168,24 @@ class Document(QObject):
         drafts = moved(unsettled, old.project, project)
         self.commit_snapshot(Snapshot(project, MappingProxyType(drafts)), name)
 
+    def commit_gesture(self, project: Project, name: str, gesture: object) -> None:
+        """One undo step for a whole gesture: its first commit makes it, and later ones amend it, as long as
+        nothing else has been done. What comes back to where it began leaves no step.
+        """
+        if self._gesture is not None and self._gesture == gesture:
+            self._index -= 1  # the amended step takes the place of the one there was
+            if alike(project, self.project):
+                del self._steps[self._index + 1 :]
+                self._gesture = None
+                self._announce()
+                return
+        self.commit(project, name)
+        self._gesture = gesture if self.project is project else None
+
+    def may_amend(self, gesture: object) -> bool:
+        """Whether a gesture's undo step is the last thing that was done."""
+        return self._gesture is not None and self._gesture == gesture
+
     def commit_draft(self, place: Place, draft: Draft, name: str) -> None:
         """One undo step that keeps a cell's text as typed."""
         drafts = dict(self.snapshot.drafts)
@@ -175,6 +195,7 @@ class Document(QObject):
 
     def commit_snapshot(self, snapshot: Snapshot, name: str) -> None:
         """One undo step to `snapshot`; none where nothing differs."""
+        self._gesture = None
         old = self.snapshot
         if alike(snapshot.project, old.project):
             snapshot = Snapshot(old.project, snapshot.drafts)  # an entry that says the same changes nothing
@@ -206,6 +227,7 @@ class Document(QObject):
 
     def _go_to(self, index: int) -> None:
         if 0 <= index < len(self._steps) and index != self._index:
+            self._gesture = None
             self._index = index
             self._announce()
 

@@ -8,6 +8,7 @@ from PySide6.QtWidgets import QWidget
 
 from app.gui import dialogs, settings
 from app.gui.actions import command_keys
+from app.gui.hand.keys import HAND_KEYS
 from app.version import VERSION
 from app.words import later, tr
 
@@ -48,7 +49,7 @@ KeyGroup = tuple[str, tuple[tuple[str, str], ...]]
 def key_groups() -> tuple[KeyGroup, ...]:
     """The keys of the commands and of each pane, with their words, under a title each."""
     panes = (
-        (tr("In the sheet"), SHEET_KEYS),
+        (tr("In the sheet"), SHEET_KEYS + HAND_KEYS),
         (tr("In the tables"), TABLE_KEYS),
         (tr("In the findings"), FINDINGS_KEYS),
     )

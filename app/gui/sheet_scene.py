@@ -15,7 +15,9 @@ from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
-from app.gui.sheet_items import CursorLine, JointLines, Message
+from app.gui.hand.bubble import Bubble
+from app.gui.hand.marks import HandMarks
+from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import envelope_contents, state_contents
@@ -52,6 +54,7 @@ class SheetScene(QGraphicsScene):
         self._pointer: QPointF | None = None
         self._values = ""  # of the readout, before what the pointer adds
         self._cursor: Cursor | None = None
+        self._held = False  # while something is pulled by hand, the ruler stays
         self._positions: tuple[float, ...] = (0.0, 1.0)
         self._make_items()
         self._layout = self._laid_out()
@@ -63,14 +66,23 @@ class SheetScene(QGraphicsScene):
         self._strips = {kind: Strip(self._theme) for kind in KINDS}
         self.joint_lines = JointLines(self._theme)
         self.cursor_line = CursorLine(self._theme)
+        self.hand_marks = HandMarks(self._theme, self.drawing)
+        self.bubble = Bubble(self._theme)
         self._readout = Message(self._theme)
         self._notice = Message(self._theme, ground="paper", ink="quiet")
         labels = [strip.label_layer for strip in self._strips.values()]
         for item in (self.drawing, *self._strips.values(), *labels, *self._over()):
             self.addItem(item)
 
-    def _over(self) -> tuple[JointLines, CursorLine, Message, Message]:
-        return self.joint_lines, self.cursor_line, self._readout, self._notice
+    def _over(self) -> tuple[Painted, ...]:
+        return (
+            self.joint_lines,
+            self.cursor_line,
+            self._readout,
+            self._notice,
+            self.hand_marks,
+            self.bubble,
+        )
 
     @property
     def strips(self) -> tuple[Strip, ...]:
@@ -117,6 +129,11 @@ class SheetScene(QGraphicsScene):
         """Why the strips show nothing, or that they are out of date; else empty."""
         return self._notice.text
 
+    @property
+    def fonts(self) -> Fonts:
+        """The fonts that everything is written with."""
+        return self._fonts
+
     # What is shown
 
     def show_results(
@@ -125,16 +142,42 @@ class SheetScene(QGraphicsScene):
         """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
         self._waiting = waiting
         fresh = results is not self._results
-        self._project, self._results = project, results
+        self._results = results
         self._current = current and results is not None
-        lengths = (segment.length for segment in project.segments)
-        self._positions = tuple(accumulate(lengths, initial=0.0))
-        self._ruler = self._ruler.of(self._positions)
+        self._take(project)
         if fresh:
             self._show_curves()
-        self.drawing.show_member(Member.of(project, self._shown))
         self._hand_out_colours()
         self._place_all()
+
+    def show_member(self, project: Project) -> None:
+        """Draw a member at once, before there are results of it; the curves stay as they are until then."""
+        self._take(project)
+        self._place_drawing()
+
+    def _take(self, project: Project) -> None:
+        if project is not self._project:
+            self._project = project
+            lengths = (segment.length for segment in project.segments)
+            self._positions = tuple(accumulate(lengths, initial=0.0))
+            self.drawing.show_member(Member.of(project, self._shown))
+        if self._held:
+            self._ruler = self._ruler.held(self._positions[-1])
+        else:
+            self._ruler = self._ruler.of(self._positions)
+
+    def hold(self) -> None:
+        """Keep ruler, rows and proportions, so that what is pulled stays under the pointer."""
+        self._held = True
+        self.drawing.hold()
+
+    def let_go(self) -> None:
+        """Fit the sheet to the member again."""
+        if self._held:
+            self._held = False
+            self.drawing.let_go()
+            self._ruler = self._ruler.of(self._positions)
+            self._place_all()
 
     def show_state(self, shown: Shown) -> None:
         """Show the curves and loads of another state."""
@@ -229,14 +272,19 @@ class SheetScene(QGraphicsScene):
     def _place_all(self) -> None:
         self._layout = layout = self._laid_out()
         self._ruler = ruler = self._ruler.on(layout.begin, layout.end)
-        self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
+        self._place_drawing()
         for strip, rect in zip(self.strips, layout.strips, strict=True):
             strip.set_legend(shown=strip is self.strips[0])
             strip.set_place(Place(rect, ruler, layout.axes, self._fonts))
             strip.refresh()
-        self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
         self._say_notice()
         self.show_cursor(self._cursor)
+
+    def _place_drawing(self) -> None:
+        layout, ruler = self._layout, self._ruler
+        self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
+        self.hand_marks.set_rect(layout.drawing)
+        self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
 
     def _say_notice(self) -> None:
         text = ""

@@ -93,6 +93,11 @@ class SheetView(QGraphicsView):
         return self._sheet.places
 
     @property
+    def paper(self) -> SheetScene:
+        """The scene itself, for what is put over the sheet."""
+        return self._sheet
+
+    @property
     def drawing(self) -> MemberDrawing:
         """The interactive drawing."""
         return self._sheet.drawing

@@ -28,6 +28,8 @@ from app.gui.files import Files
 from app.gui.findings.curing import Curing
 from app.gui.findings.jump import Jump
 from app.gui.findings.panel import FindingsPanel
+from app.gui.hand.grasp import Grasp
+from app.gui.hand.hand import Hand
 from app.gui.hand.in_place import InPlace
 from app.gui.hand.sheet_sweeps import SheetSweeps
 from app.gui.help import Help
@@ -95,6 +97,8 @@ class Window(QMainWindow):
         self.curing = Curing(self.document, self.showing, self.findings, commit, self)
         self.sweeps = SheetSweeps(self.sheet, self.view, self.tables, self.in_place)
         self.edits = MemberEdits(self.document, self.tables, self)
+        grasp = Grasp(self.document, self.view, self.sheet, self._edited_case, commit, self)
+        self.hand = Hand(grasp, self.view, self)
         self.recovery = Recovery(self.document, recovery_folder, self)
         self.help = Help(self)
 
@@ -192,8 +196,14 @@ class Window(QMainWindow):
         ):
             room.told.connect(self.status.tell)
         self.taking.told.connect(self.status.tell)
+        self.hand.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
         self.tables.rows_moved.connect(self.edits.move_before)
+
+    def _edited_case(self) -> str | None:
+        """The load case whose loads are edited, by name."""
+        case = self.tables.sight.load_case(self.document.project)
+        return None if case is None else case.name
 
     # The document
 
@@ -231,7 +241,9 @@ class Window(QMainWindow):
         self.status.file.setText(tr("{name}, changed").format(name=name) if modified else name)
 
     def on_undo(self) -> None:
-        """Back one step; an open editor's text is the step taken back first."""
+        """Back one step; what is in the hand or in an open editor is the step taken back first."""
+        if self.hand.cancel():
+            return
         self.tables.commit_open_editor()
         self.document.undo()
 
@@ -276,6 +288,7 @@ class Window(QMainWindow):
         """Ask about unsaved changes, then end cleanly, also while the solver runs."""
         if self._may_close():
             self._remember()
+            self.hand.close()
             self.showing.close()
             self.curing.close()
             self.printing.close()
@@ -288,6 +301,7 @@ class Window(QMainWindow):
     _closing = False
 
     def _may_close(self) -> bool:
+        self.hand.cancel()
         self.tables.commit_open_editor()
         return self._closing or not self.document.modified
 

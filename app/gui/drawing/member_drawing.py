@@ -19,9 +19,11 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from app.drawing.layout import lay_out
+from app.drawing.handles import Handle, handles_of
+from app.drawing.layout import sketched
 from app.drawing.member import Member
 from app.drawing.shapes import OF_SEGMENT, Box, Circle, Part, Picture, Stroke, Target
+from app.drawing.sketch import Sketch
 from app.drawing.tips import tip
 from app.gui.drawing.draft_marks import paint_marks
 from app.gui.fonts import Fonts
@@ -41,7 +43,9 @@ class MemberDrawing(QGraphicsObject):
         self._theme = theme
         self._member: Member | None = None
         self._place: Place | None = None
-        self._picture: Picture | None = None  # None: to be made when next asked for
+        self._sketch: Sketch | None = None  # None: to be made when next asked for
+        self._handles: list[Handle] | None = None  # likewise
+        self._held: Sketch | None = None  # whose rows and proportions are kept while something is pulled
         self._selection = Selection()
         self._under_mouse: Part | None = None
         self._drafts: Mapping[Part, str] = {}
@@ -53,10 +57,40 @@ class MemberDrawing(QGraphicsObject):
     @property
     def picture(self) -> Picture:
         """What is drawn."""
-        if self._picture is None:
-            ready = self._member is not None and self._place is not None
-            self._picture = lay_out(self._member, self._place.frame) if ready else Picture()
-        return self._picture
+        sketch = self.sketch
+        return Picture() if sketch is None else sketch.picture
+
+    @property
+    def sketch(self) -> Sketch | None:
+        """The member as it is laid out; None while there is nothing to draw."""
+        if self._sketch is None and self._member is not None and self._place is not None:
+            self._sketch = sketched(self._member, self._place.frame, self._held)
+        return self._sketch
+
+    @property
+    def handles(self) -> list[Handle]:
+        """Where numbers can be taken hold of."""
+        if self._handles is None:
+            self._handles = [] if self.sketch is None else handles_of(self.sketch)
+        return self._handles
+
+    @property
+    def member(self) -> Member | None:
+        """What is drawn, as it was given."""
+        return self._member
+
+    def hold(self) -> None:
+        """Keep rows and proportions from now on."""
+        self._held = self.sketch
+
+    def let_go(self) -> None:
+        """Share the room anew."""
+        self._held = None
+        self._forget()
+
+    def _forget(self) -> None:
+        self._sketch = self._handles = None
+        self.update()
 
     @property
     def chain_edge(self) -> float:
@@ -66,15 +100,14 @@ class MemberDrawing(QGraphicsObject):
     def show_member(self, member: Member) -> None:
         """Draw another member, or other loads on it."""
         self._member = member
-        self._picture = None
-        self.update()
+        self._forget()
 
     def set_place(self, place: Place) -> None:
         """Another place or another window of the ruler."""
-        self.prepareGeometryChange()
-        self._place = place
-        self._picture = None
-        self.update()
+        if place != self._place:
+            self.prepareGeometryChange()
+            self._place = place
+            self._forget()
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""

@@ -1,0 +1,46 @@
+"""From a handle of the drawing to the number it holds: which grip, or why the hand cannot take it."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Final
+
+from app.drawing.handles import Handle
+from app.drawing.sketch import Sketch
+from app.hand.grip import Grip, Refusal
+from app.hand.lengths import joint_grip
+from app.hand.loads import Aim, aim_at, distributed_grip, force_grip
+from app.hand.sections import edge_grip
+from app.shown import Shown
+
+
+def take(
+    handle: Handle, sketch: Sketch, shown: Shown, case: str | None, *, total_stays: bool = False
+) -> Grip | Refusal:
+    """The grip of a handle, for the project and the loads that were sketched and the case that is edited."""
+    project = sketch.member.project
+    if handle.kind == "joint":
+        return joint_grip(project, handle.index, sketch.frame.ruler, total_stays=total_stays)
+    if handle.kind in ("edge", "bore"):
+        inner = handle.kind == "bore"
+        return edge_grip(project, handle.index, handle.where, 1.0 / sketch.scale, inner=inner)
+    aim = aim_at(project, shown, case)
+    return aim if isinstance(aim, Refusal) else _LOADS[handle.kind](handle, sketch, aim)
+
+
+def _force(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
+    loads = sketch.member.loads
+    total = 0.0 if loads is None else float(loads.joint_force[0, handle.index])
+    return force_grip(sketch.member.project, handle.index, aim, total)
+
+
+def _distributed(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
+    loads = sketch.member.loads
+    start, end = (0.0, 0.0) if loads is None else loads.distributed[0, handle.index].tolist()
+    return distributed_grip(sketch.member.project, handle.index, handle.where, aim, (start, end))
+
+
+_LOADS: Final[dict[str, Callable[[Handle, Sketch, Aim], Grip]]] = {
+    "force": _force,
+    "distributed": _distributed,
+}
