@@ -51,8 +51,12 @@ class Pointer:
     def pull(self, pixels, modifiers=PLAIN):
         """Outward by so many pixels, in a few moves."""
         for _ in range(4):
-            self.at += self.outward * (pixels / 4.0)
-            self.send(QEvent.Type.MouseMove, NONE, LEFT, modifiers)
+            self.move(pixels / 4.0, modifiers)
+
+    def move(self, pixels, modifiers=PLAIN):
+        """Outward in a single move."""
+        self.at += self.outward * pixels
+        self.send(QEvent.Type.MouseMove, NONE, LEFT, modifiers)
 
     def let_go(self, modifiers=PLAIN):
         self.send(QEvent.Type.MouseButtonRelease, LEFT, NONE, modifiers)
