@@ -44,8 +44,9 @@ class Near:
         self._viewport.setCursor(SPLIT[upright] if both else SHAPES[upright, handle.direction])
 
     def plain(self) -> None:
-        """The pointer as it is elsewhere."""
-        self._viewport.unsetCursor()
+        """The pointer as it is elsewhere, unless another hand has given it a shape of its own."""
+        if self._viewport.cursor().shape() in (*SHAPES.values(), *SPLIT.values()):
+            self._viewport.unsetCursor()
 
     def leave(self) -> None:
         """Over no handle."""
