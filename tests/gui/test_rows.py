@@ -127,3 +127,61 @@ def test_ctrl_enter_with_one_cell_or_a_mark_takes_in_that_one(window, table):
     chord(line, KEY.Key_Return)
     assert marks(window)[:3] == "AQC"
     assert not window.document.snapshot.drafts
+
+
+# The keys of a spreadsheet
+
+FIRST, LAST = "mark", "utilisation"
+
+
+@pytest.mark.parametrize(
+    ("keys", "modifier", "row", "key"),
+    [
+        ([KEY.Key_Right], 0, 3, "area"),
+        ([KEY.Key_Left], 0, 3, "length"),
+        ([KEY.Key_Up], 0, 2, "section"),
+        ([KEY.Key_Down, KEY.Key_Down], 0, 5, "section"),
+        ([KEY.Key_Home], 0, 3, FIRST),
+        ([KEY.Key_End], 0, 3, LAST),
+        ([KEY.Key_Right], CTRL, 3, LAST),
+        ([KEY.Key_Left], CTRL, 3, FIRST),
+        ([KEY.Key_Up], CTRL, 0, "section"),
+        ([KEY.Key_Down], CTRL, 8, "section"),
+        ([KEY.Key_Home], CTRL, 0, FIRST),
+        ([KEY.Key_End], CTRL, 8, LAST),
+    ],
+)
+def test_arrows_home_and_end_go_as_in_a_spreadsheet(table, keys, modifier, row, key):
+    go_to(table, 3, "section")
+    for pressed in keys:
+        chord(table, pressed, modifier or Qt.KeyboardModifier.NoModifier)
+    assert table.currentIndex() == cell(table, row, key)
+    assert table.selectedIndexes() == [table.currentIndex()]
+
+
+def test_shift_with_arrows_chooses_a_block(table):
+    go_to(table, 2, "length")
+    for key in (KEY.Key_Down, KEY.Key_Right, KEY.Key_Down):
+        QTest.keyClick(table, key, SHIFT)
+    places = {(index.row(), index.column()) for index in table.selectedIndexes()}
+    assert places == {(row, column) for row in (2, 3, 4) for column in (1, 2)}
+
+
+def test_ctrl_d_fills_down_and_delete_empties(window, table):
+    go_to(table, 1, "load_start")
+    QTest.keyClick(begin(table, "7"), KEY.Key_Return)
+    choose_down(table, 1, "load_start", 3)
+    chord(table, KEY.Key_D)
+    assert [text_at(table, row, "load_start") for row in (1, 2, 3)] == ["7", "7", "7"]
+    choose_down(table, 2, "load_start", 2)
+    QTest.keyClick(table, KEY.Key_Delete)
+    assert [text_at(table, row, "load_start") for row in (1, 2, 3)] == ["7", "0", "0"]
+
+
+def test_tab_and_shift_tab_go_on_and_back_within_the_row(table):
+    go_to(table, 2, "length")
+    QTest.keyClick(begin(table, "321"), KEY.Key_Tab)
+    assert text_at(table, 2, "length") == "321"
+    line = editor(table)
+    QTest.keyClick(line, KEY.Key_Backtab, SHIFT)
+    assert table.currentIndex() == cell(table, 2, "length")

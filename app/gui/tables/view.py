@@ -141,7 +141,11 @@ class TableView(QTableView):
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """The keys that Qt's table lacks or traps."""
-        if event.key() in ENTER and not self._is_editing():
+        edge = self._edge(event)
+        if edge is not None and not self._is_editing():
+            flags = QItemSelectionModel.SelectionFlag
+            self.selectionModel().setCurrentIndex(edge, flags.ClearAndSelect)
+        elif event.key() in ENTER and not self._is_editing():
             self.step(-1 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1)
         elif event.key() == Qt.Key.Key_Delete or event.key() == Qt.Key.Key_Backspace:
             self.clear_selected()
@@ -151,6 +155,23 @@ class TableView(QTableView):
             if event.text().isprintable() and event.text() and not self._is_editing():
                 self.table_model.tell_why_not(self.currentIndex())
             super().keyPressEvent(event)
+
+    def _edge(self, event: QKeyEvent) -> QModelIndex | None:
+        """Where Ctrl with an arrow, Home or End leads: to the edge of the records; None for other keys."""
+        current, shown = self.currentIndex(), self.shown_columns()
+        if event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier != Qt.KeyboardModifier.ControlModifier:
+            return None
+        row, column, last = max(current.row(), 0), max(current.column(), 0), self.table_model.record_rows - 1
+        edges = {
+            Qt.Key.Key_Left: (row, shown[0]),
+            Qt.Key.Key_Right: (row, shown[-1]),
+            Qt.Key.Key_Up: (0, column),
+            Qt.Key.Key_Down: (max(last, 0), column),
+            Qt.Key.Key_Home: (0, shown[0]),
+            Qt.Key.Key_End: (max(last, 0), shown[-1]),
+        }
+        edge = edges.get(Qt.Key(event.key()))
+        return None if edge is None else self.table_model.index(*edge)
 
     def _is_editing(self) -> bool:
         return self.state() == QAbstractItemView.State.EditingState
