@@ -40,6 +40,11 @@ class RowGrips(QHeaderView):
         self.setAccessibleName(tr("Grips to move segments"))
         self.setToolTip(tr("Drag to move the chosen segments (Ctrl+Shift+Up, Ctrl+Shift+Down)"))
 
+    def dress(self, theme: Theme) -> None:
+        """Take over the colours."""
+        self.theme = theme
+        self.setStyleSheet(f"QHeaderView {{ background: {theme.card}; border: none; }}")
+
     def sizeHint(self) -> QSize:
         """Just wide enough for the dots."""
         return QSize(WIDTH, super().sizeHint().height())

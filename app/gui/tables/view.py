@@ -88,7 +88,7 @@ class TableView(QTableView):
         """Take over the colours."""
         self._cells.theme = theme
         if self.grips is not None:
-            self.grips.theme = theme
+            self.grips.dress(theme)
         self.horizontalHeader().setStyleSheet(
             f"QHeaderView {{ background: {theme.card}; border: none;"
             f" border-bottom: 1px solid {theme.edge}; }}"
