@@ -1,8 +1,9 @@
 """Where curves are drawn through: both sides of every joint, the extremes, and an even filling between.
 
 A place is a segment and a fraction 0…1 of it, so that the two sides of a joint are two places. The number of
-places keeps to a budget, whatever the number of segments: the ends are always there, the extremes as far as
-they fit (those of the whole member always), and what is left is shared out by length.
+places keeps to a budget: the ends are there, the extremes of every segment, and what is left is shared out by
+length. Where ends and extremes alone take more than that, the most extreme of each of many even stretches are
+kept, so that a drawing with no more columns of pixels than stretches still shows every extreme.
 """
 
 from __future__ import annotations
@@ -14,6 +15,7 @@ import numpy as np
 from solver.arrays import FloatArray, IntArray
 from solver.results import Results, SegmentResults
 
+FINENESS = 8  # stretches for each point of the budget: more than a screen or a sheet has columns of pixels
 _CLOSE = 1e-9  # a place nearer than this part of the segment to the one before adds nothing to a curve
 
 
@@ -47,13 +49,17 @@ def peaks_of(segments: SegmentResults) -> tuple[Peaks, ...]:
 
 
 def places_for(results: Results, states: IntArray, points: int) -> Places:
-    """Places for curves of these states; about `points` of them, more only where the ends alone take more."""
+    """Places for curves of these states: about `points`, and more where ends and extremes take more."""
     n = len(results.chain.length)
     peaks = [Peaks(peak.size[states], peak.x[states]) for peak in peaks_of(results.segments)]
     extremes = _inside(results, [_governing(peak) for peak in peaks])
-    if 2 * n + len(extremes) > points:
-        extremes = _inside(results, [_of_member(peak) for peak in peaks])
-    filling = _filling(results.chain.length, points - 2 * n - len(extremes))
+    room = points - 2 * n - len(extremes)
+    if room < 0:
+        extremes = _inside(
+            results, [_of_stretches(peak, results.position, FINENESS * points) for peak in peaks]
+        )
+        room = max(points - 2 * n - len(extremes), points // 2 - 2 * n)
+    filling = _filling(results.chain.length, room)
     segment = np.concatenate([np.repeat(np.arange(n), 2), extremes.segment, filling.segment])
     fraction = np.concatenate([np.tile([0.0, 1.0], n), extremes.fraction, filling.fraction])
     return _in_order(results, _Inside(segment, fraction))
@@ -76,9 +82,14 @@ def _governing(peak: Peaks) -> _Inside:
     return _Inside(segment, peak.x[np.argmax(peak.size, axis=0), segment])
 
 
-def _of_member(peak: Peaks) -> _Inside:
-    state, segment = np.unravel_index(np.argmax(peak.size), peak.size.shape)
-    return _Inside(np.array([segment]), peak.x[state, segment].reshape(1))
+def _of_stretches(peak: Peaks, position: FloatArray, stretches: int) -> _Inside:
+    """The most extreme of each of many even stretches of the member, so those of the whole member too."""
+    found = _governing(peak)
+    size = peak.size.max(axis=0)
+    stretch = np.floor(found.fraction / position[-1] * stretches)  # `fraction` is still x
+    order = np.lexsort((size, stretch))
+    last = order[np.append(np.diff(stretch[order]) > 0, True)]
+    return _Inside(found.segment[last], found.fraction[last])
 
 
 def _inside(results: Results, found: list[_Inside]) -> _Inside:

@@ -24,7 +24,7 @@ from app.gui.strips.content import (
     with_crossings,
 )
 from app.gui.strips.labels import spread
-from app.gui.strips.paths import Scale, runs
+from app.gui.strips.paths import Scale, stretches
 from app.gui.strips.readout import envelope_readout, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import LIGHT
@@ -345,10 +345,9 @@ class TestSpread:
         assert spread([0.0, 0.0], [12.0, 12.0], 0.0, 20.0) == [0.0]
 
 
-def test_runs_are_the_stretches_drawn_alike():
-    drawn = np.array([TENSION, TENSION, NONE, COMPRESSION, OVER, OVER])
-    found = [(run.first, run.last, run.drawn) for run in runs(drawn)]
-    assert found == [(0, 2, TENSION), (3, 4, COMPRESSION), (4, 6, OVER)]
+def test_stretches_are_the_runs_of_chosen_intervals():
+    first, last = stretches(np.array([TENSION, TENSION, NONE, COMPRESSION, TENSION]) == TENSION)
+    assert (first.tolist(), last.tolist()) == ([0, 4], [2, 5])
 
 
 class TestReadout:

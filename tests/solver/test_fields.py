@@ -11,6 +11,7 @@ from numpy.testing import assert_allclose, assert_array_equal
 
 from solver.fields import at, checked_states, curves, envelope, envelope_at
 from solver.model import Combination, FixedSupport, JointLoad, SegmentLoad
+from solver.sampling import FINENESS
 from solver.solve import solve
 from tests.members import Part, area, case, member, round_bar, segment_mark
 from tests.strategies import projects
@@ -190,7 +191,7 @@ def test_many_segments_keep_both_ends_of_each(count):
     )
     found = curves(results, 0)
     assert np.all(np.bincount(found.segment, minlength=count) >= 2)
-    assert len(found.x) <= max(600, 2 * count + 6)
+    assert len(found.x) <= max(600, 2 * count + 6 * min(count, FINENESS * 600))
     for name in NAMES:  # the extremes of the whole member are on it at any budget
         assert_allclose(
             getattr(found, name).max(), getattr(results.segments, f"{name}_max").max(), rtol=1e-11

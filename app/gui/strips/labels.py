@@ -18,10 +18,11 @@ from PySide6.QtCore import QPointF, QRectF, QSizeF
 from app.drawing.ruler import Ruler
 from app.gui.fonts import Face
 from app.gui.sheet_layout import GAP, Axes
-from app.gui.strips.company import COMPRESSION, TENSION, Trace
+from app.gui.strips.company import COMPRESSION, NONE, TENSION, Trace
 from app.gui.strips.content import Extreme, Limit, StripContent
-from app.gui.strips.paths import Scale, runs
+from app.gui.strips.paths import Scale, stretches
 from app.words import tr
+from solver.arrays import BoolArray
 
 Measure: TypeAlias = Callable[[str, Face], QSizeF]
 EDGE = 6.0  # between a strip and its labels
@@ -258,13 +259,23 @@ class _Placer:
 
     def _signs_of(self, trace: Trace, drawn: int) -> list[Label]:
         """Of the largest values the + , of the smallest the − (the same curve, except of an envelope)."""
-        ends = [(trace.x[run.first], trace.x[run.last]) for run in runs(trace.drawn) if run.drawn == drawn]
-        spans = [(self._shown(first), self._shown(last)) for first, last in ends]
-        middles = [0.5 * (first + last) for first, last in spans if abs(last - first) >= SIGN_ROOM]
+        chosen = trace.drawn == drawn
+        middles = self._middles(trace, chosen)
+        if not middles:  # many short segments: once for each stretch, across the jumps between them
+            chosen = chosen | ((trace.drawn == NONE) & (np.diff(trace.x) == 0.0))
+            middles = self._middles(trace, chosen)
         signs = zip(middles, self._sign_spans(trace, middles), strict=True)
         return [
             self._sign(drawn, a, 0.5 * (low + high)) for a, (low, high) in signs if high - low >= SIGN_ROOM
         ]
+
+    def _middles(self, trace: Trace, chosen: BoolArray) -> list[float]:
+        """The pixels along the axis in the middle of the runs of chosen intervals that are wide enough."""
+        low, high = self.axes.along_of(self.rect)
+        first, last = (np.clip(self.ruler.pixel(trace.x[at]), low, high) for at in stretches(chosen))
+        wide = np.abs(last - first) >= SIGN_ROOM
+        middles: list[float] = (0.5 * (first + last))[wide].tolist()
+        return middles
 
     def _sign_spans(self, trace: Trace, along: list[float]) -> list[tuple[float, float]]:
         """Between 0 and the curve; where the other curve of an envelope runs between them, the wider part."""

@@ -5,7 +5,6 @@ No more points than the pixels can show are painted, and no extreme is left out 
 from __future__ import annotations
 
 from dataclasses import dataclass
-from itertools import pairwise
 
 import numpy as np
 from PySide6.QtCore import QRectF
@@ -47,21 +46,10 @@ class Scale:
         return self.begin + (value - self.low) / (self.high - self.low) * (self.end - self.begin)
 
 
-@dataclass(frozen=True, slots=True)
-class Run:
-    """Consecutive intervals of a trace drawn alike: points `first`…`last`, both included."""
-
-    first: int
-    last: int
-    drawn: int
-
-
-def runs(drawn: IntArray) -> list[Run]:
-    """The runs of a trace's intervals, without those that are not drawn."""
-    if len(drawn) == 0:
-        return []
-    starts = [0, *(np.flatnonzero(np.diff(drawn)) + 1).tolist(), len(drawn)]
-    return [Run(first, stop, int(drawn[first])) for first, stop in pairwise(starts) if drawn[first] != NONE]
+def stretches(chosen: BoolArray) -> tuple[IntArray, IntArray]:
+    """First and last points of the runs of chosen intervals (k − 1,)."""
+    edges = np.flatnonzero(np.diff(np.concatenate([[False], chosen, [False]])))
+    return edges[::2], edges[1::2]
 
 
 @dataclass(frozen=True, slots=True)
