@@ -45,7 +45,7 @@ def _draw_segment(sketch: Sketch, index: int) -> None:
     halves = [(start + s * (end - start), half_depth(sketch, segment, s)) for s in fractions]
     upper = [(a, axis - h) for a, h in halves]
     lower = [(a, axis + h) for a, h in reversed(halves)]
-    fill: Fill = "band_fill" if bare else "body_fill"
+    fill: Fill = "" if sketch.frame.detail.hollow else "band_fill" if bare else "body_fill"
     dash = (5.0, 3.0) if bare else ()
     sketch.line(*upper, *lower, width=1.4, fill=fill, closed=True, dash=dash, part=part, clip=True)
     if isinstance(segment.section, TubeSection):

@@ -10,7 +10,7 @@ from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_leve
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
-from app.drawing.rows import Wishes, no_rows, not_to_scale_text, round_factor, rows_in, thickest
+from app.drawing.rows import Wishes, foot_of, legend_below, no_rows, round_factor, rows_in, said_of, thickest
 from app.drawing.shapes import LOADS, Box, Part, Picture, Target, Text
 from app.drawing.sketch import Sketch
 from app.drawing.supports import draw_supports
@@ -36,6 +36,8 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
         _give_rows(sketch, wishes)
     else:
         sketch.take_proportions(like)
+    sketch.picture.scale = sketch.scale
+    sketch.picture.axis = sketch.point(0.0, sketch.rows.axis)[0 if frame.upright else 1]
     if frame.detail.explained:
         draw_joint_marks(sketch, wishes.joints)
     if frame.detail.dimensions:
@@ -43,6 +45,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     draw_body(sketch)
     if frame.detail.factor:
         _draw_scales(sketch)
+    _keep_legend(sketch)
     draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
@@ -66,7 +69,7 @@ def _set_edge(sketch: Sketch) -> None:
         if sketch.frame.detail.levels:
             draw_levels(sketch, column)
     else:
-        sketch.picture.chain_edge = sketch.point(0.0, sketch.rows.sections[-1][1])[1]
+        sketch.picture.chain_edge = sketch.point(0.0, sketch.rows.sections[-1][1] + foot_of(sketch))[1]
 
 
 def _level_column(sketch: Sketch) -> float:
@@ -93,14 +96,27 @@ def _draw_scales(sketch: Sketch) -> None:
     """How the drawing departs from one scale, in its corner away from the loads."""
     factor = format_value(sketch.picture.factor, "factor", sketch.member.system, strip=True)
     text = tr("across ×{factor}").format(factor=factor)
-    foot = sketch.frame.box.bottom - 2.0
-    unlike = not_to_scale_text(sketch)
+    foot = sketch.frame.box.bottom - 2.0 - (sketch.frame.detail.legend[1] if legend_below(sketch) else 0.0)
+    said = said_of(sketch)
     if sketch.frame.upright:
-        unlike = sketch.in_lines(unlike, "small", sketch.point(0.0, sketch.rows.axis)[0] - BESIDE_AXIS)
-    for line in (*reversed(unlike.split("\n")), text):
+        said = sketch.in_lines(said, "small", sketch.point(0.0, sketch.rows.axis)[0] - BESIDE_AXIS)
+    for line in (*reversed(said.split("\n")), text):
         if line:
             foot -= sketch.frame.measure(line, "small")[1]
             _note(sketch, line, foot, index=-1)
+
+
+def _keep_legend(sketch: Sketch) -> None:
+    """Room for a scale of colours: at the foot right; upright at the top left, under the note on loads."""
+    width, height = sketch.frame.detail.legend
+    if not width:
+        return
+    box = sketch.frame.box
+    left, top = box.right - 6.0 - width, box.bottom - 2.0 - height
+    if sketch.frame.upright:
+        left, top = box.left + 6.0, box.top + 6.0
+        top += height if no_loads_text(sketch) else 0.0
+    sketch.picture.legend = Box(left, top, left + width, top + height)
 
 
 def _draw_no_loads(sketch: Sketch) -> None:

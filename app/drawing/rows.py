@@ -87,7 +87,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int) -> Rows:
     top = brackets[-1][1] if brackets else labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    edge = EDGE if sketch.frame.upright else 4.0 + _foot(sketch)
+    edge = EDGE if sketch.frame.upright else 4.0 + foot_of(sketch)
     sections = _text_rows(sketch, wishes.sections, room - edge, most)
     chain = sections[0][0] - CHAIN
     lengths = _text_rows(sketch, wishes.lengths, chain - CHAIN, most)
@@ -181,18 +181,27 @@ def _note_height(sketch: Sketch) -> float:
     return sketch.frame.measure(text, "small")[1] if text else 0.0
 
 
-def _foot(sketch: Sketch) -> float:
-    """Across, the row under everything that names what is not to scale."""
-    text = not_to_scale_text(sketch)
-    return sketch.frame.measure(text, "small")[1] if text else 0.0
+def foot_of(sketch: Sketch) -> float:
+    """Across, the row under everything that says what is special about the drawing, and holds its scale."""
+    text, legend = said_of(sketch), sketch.frame.detail.legend[1]
+    said = sketch.frame.measure(text, "small")[1] if text else 0.0
+    return said + legend if legend_below(sketch) else max(said, legend)
 
 
-def not_to_scale_text(sketch: Sketch) -> str:
-    """The segments that are not to scale; empty where there are none, or where nothing is said."""
+def legend_below(sketch: Sketch) -> bool:
+    """Across, whether the scale of colours needs a row of its own under what is said."""
+    room = sketch.frame.box.right - sketch.frame.box.left - 24.0
+    said, legend = sketch.frame.measure(said_of(sketch), "small")[0], sketch.frame.detail.legend[0]
+    return not sketch.frame.upright and legend > 0.0 and said + legend > room
+
+
+def said_of(sketch: Sketch) -> str:
+    """Which segments are not to scale, and what else is to be said; empty where nothing is."""
     if not sketch.frame.detail.factor:
         return ""
     segments = sketch.member.project.segments
-    return not_to_scale([segments[index].mark for index in sketch.frame.ruler.widened])
+    unlike = not_to_scale([segments[index].mark for index in sketch.frame.ruler.widened])
+    return "; ".join(text for text in (sketch.frame.detail.words, unlike) if text)
 
 
 def thickest(member: Member) -> float:

@@ -138,6 +138,9 @@ class Picture:
 
     factor: float = 1.0  # how much larger the drawing is across the axis than along it
     chain_edge: float = 0.0  # across the axis: where joint lines begin
+    axis: float = 0.0  # the pixel across of the member's axis
+    scale: float = 0.0  # pixels per metre across
+    legend: Box | None = None  # kept free for the scale of colours
     strokes: list[Stroke] = field(default_factory=list)
     circles: list[Circle] = field(default_factory=list)
     left_out: int = 0  # labels that found no room

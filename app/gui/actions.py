@@ -40,7 +40,8 @@ TYPICAL: Final = "typical"
 COLUMNS: Final = "columns"
 LANGUAGE: Final = "language"
 STRIPS: Final = "strips"
-SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS, LANGUAGE, STRIPS)
+DRAWING: Final = "drawing"
+SUBMENUS: Final = (RECENT, SAMPLES, TYPICAL, COLUMNS, LANGUAGE, STRIPS, DRAWING)
 
 COMMANDS: Final[tuple[Command, ...]] = (
     Command("new", "&File", later("&New"), KEYS.New, later("New"), later("Start an empty project")),
@@ -108,6 +109,9 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
     SEPARATOR,
     Command(STRIPS, "&View", later("&Strips")),
+    Command(DRAWING, "&View", later("&Drawing")),
+    Command("fit", "&View", later("Show the &whole member"), "Ctrl+0"),
+    Command("zoom_to_selection", "&View", later("&Zoom to the selection"), "Ctrl+9"),
     SEPARATOR,
     Command("there_and_back", "&View", later("From a finding to its cell and &back"), "Ctrl+G"),
     Command("findings_of_selected", "&View", later("Findings of what is selecte&d"), "Ctrl+Shift+F"),

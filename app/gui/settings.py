@@ -8,6 +8,7 @@ from typing import Final, cast, get_args
 
 from PySide6.QtCore import QByteArray, QSettings, QStandardPaths
 
+from app.looks import Looks
 from app.strip_choice import StripChoice
 from app.words import LANGUAGES
 from solver.model import DEFAULT_UNITS, UnitSystemName
@@ -114,6 +115,15 @@ class Settings:
     def set_together(self, together: bool) -> None:
         """Remember whether they are."""
         self._store.setValue("together", "yes" if together else "no")
+
+    @property
+    def looks(self) -> Looks:
+        """What was last shown of the results on the drawing."""
+        return Looks.of_text(str(self._store.value("looks", "")))
+
+    def set_looks(self, looks: Looks) -> None:
+        """Remember it."""
+        self._store.setValue("looks", looks.text)
 
     def sync(self) -> None:
         """Write what has changed to the file."""

@@ -14,6 +14,7 @@ from PySide6.QtWidgets import QGraphicsScene
 from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.gui.drawing.member_drawing import MemberDrawing
+from app.gui.drawing.results_layer import ResultsOnDrawing
 from app.gui.fonts import Fonts
 from app.gui.hand.bubble import Bubble
 from app.gui.hand.marks import HandMarks
@@ -25,6 +26,7 @@ from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, sta
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
+from app.looks import Looks
 from app.references import Reference
 from app.strip_choice import KINDS, StripChoice
 from app.words import tr
@@ -53,6 +55,7 @@ class SheetScene(QGraphicsScene):
         self._together = False
         self._pointer: QPointF | None = None
         self._values = ""  # of the readout, before what the pointer adds
+        self._looks = Looks()
         self._cursor: Cursor | None = None
         self._held = False  # while something is pulled by hand, the ruler stays
         self._positions: tuple[float, ...] = (0.0, 1.0)
@@ -63,6 +66,7 @@ class SheetScene(QGraphicsScene):
 
     def _make_items(self) -> None:
         self.drawing = MemberDrawing(self._theme)
+        self.on_drawing = ResultsOnDrawing(self._theme, self.drawing)
         self._strips = {kind: Strip(self._theme) for kind in KINDS}
         self.joint_lines = JointLines(self._theme)
         self.cursor_line = CursorLine(self._theme)
@@ -71,7 +75,8 @@ class SheetScene(QGraphicsScene):
         self._readout = Message(self._theme)
         self._notice = Message(self._theme, ground="paper", ink="quiet")
         labels = [strip.label_layer for strip in self._strips.values()]
-        for item in (self.drawing, *self._strips.values(), *labels, *self._over()):
+        on_drawing = self.on_drawing.items
+        for item in (self.drawing, *on_drawing, *self._strips.values(), *labels, *self._over()):
             self.addItem(item)
 
     def _over(self) -> tuple[Painted, ...]:
@@ -188,6 +193,17 @@ class SheetScene(QGraphicsScene):
             self.drawing.show_member(Member.of(self._project, shown))
         self._place_all()
 
+    def set_looks(self, looks: Looks) -> None:
+        """Show other results on the drawing, or another scale along."""
+        self._looks = looks
+        self._ruler = self._ruler.truly(true=looks.true)
+        self._show_on_drawing()
+        self._place_all()
+
+    def _show_on_drawing(self) -> None:
+        state = None if self._results is None else self._state(self._results)
+        self.on_drawing.show(self._looks, self._results, state)
+
     def set_strips(self, choice: StripChoice) -> None:
         """Show these strips in their order."""
         self._choice = choice
@@ -231,6 +247,7 @@ class SheetScene(QGraphicsScene):
             )
         for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
             self._strips[kind].show_content(content)
+        self._show_on_drawing()
 
     def _state(self, results: Results) -> int | None:
         """The index of the shown state; None for the envelope, and for a state the results do not have."""
@@ -282,7 +299,10 @@ class SheetScene(QGraphicsScene):
 
     def _place_drawing(self) -> None:
         layout, ruler = self._layout, self._ruler
-        self.drawing.set_place(Place(layout.drawing, ruler, layout.axes, self._fonts))
+        place = Place(layout.drawing, ruler, layout.axes, self._fonts)
+        self.drawing.set_place(place)
+        if self.drawing.member is not None:
+            self.on_drawing.place(self.drawing.member, place)
         self.hand_marks.set_rect(layout.drawing)
         self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
 
@@ -313,7 +333,7 @@ class SheetScene(QGraphicsScene):
         of_results = theme if self._current else greyed(theme)
         for item in (self.drawing, *self._over()):
             item.set_theme(theme)
-        for item in (*self._strips.values(), self._readout):
+        for item in (*self._strips.values(), self._readout, self.on_drawing):
             item.set_theme(of_results)
 
     # The cursor

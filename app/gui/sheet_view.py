@@ -65,6 +65,7 @@ class SheetView(QGraphicsView):
         view.together_changed.connect(self._sheet.set_together)
         view.cursor_changed.connect(self._on_cursor_changed)
         view.selection_changed.connect(self._sheet.drawing.set_selection)
+        view.looks_changed.connect(self._sheet.set_looks)
 
     def _set_up(self) -> None:
         self.setScene(self._sheet)
@@ -171,6 +172,18 @@ class SheetView(QGraphicsView):
         elif not seen:
             away = self.ruler.pixel(low) - 0.5 * (self.ruler.begin + self.ruler.end)
             self._sheet.set_ruler(self.ruler.panned(-away))
+
+    def zoom_to_selection(self) -> None:
+        """Show what is selected as large as it goes, a joint with its segments; else that at the cursor."""
+        if not (self._view.selection.segments or self._view.selection.joints):
+            self._select_at_cursor()
+        chosen, positions = self._view.selection, self._sheet.positions
+        last = len(positions) - 1
+        ends = [end for index in chosen.segments for end in (index, index + 1)]
+        ends += [end for index in chosen.joints for end in (index - 1, index + 1)]
+        if ends:
+            places = [positions[min(max(end, 0), last)] for end in ends]
+            self._sheet.set_ruler(self.ruler.showing(min(places), max(places)))
 
     # The cursor
 

@@ -11,6 +11,7 @@ from typing import Literal
 
 from PySide6.QtCore import QObject, Signal
 
+from app.looks import Looks
 from app.shown import Shown
 from app.strip_choice import StripChoice
 
@@ -38,6 +39,7 @@ class View(QObject):
     cursor_changed = Signal(object)  # Cursor or None
     selection_changed = Signal(object)  # Selection
     strips_changed = Signal(object)  # StripChoice
+    looks_changed = Signal(object)  # Looks
     together_changed = Signal(bool)
 
     def __init__(self, parent: QObject | None = None) -> None:
@@ -46,6 +48,7 @@ class View(QObject):
         self._cursor: Cursor | None = None
         self._selection = Selection()
         self._strips = StripChoice()
+        self._looks = Looks()
         self._together = False
 
     @property
@@ -102,3 +105,14 @@ class View(QObject):
         if together != self._together:
             self._together = together
             self.together_changed.emit(together)
+
+    @property
+    def looks(self) -> Looks:
+        """What of the results is shown on the drawing."""
+        return self._looks
+
+    def set_looks(self, looks: Looks) -> None:
+        """Show other results on the drawing."""
+        if looks != self._looks:
+            self._looks = looks
+            self.looks_changed.emit(looks)

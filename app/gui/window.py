@@ -12,6 +12,7 @@ from PySide6.QtWidgets import QMainWindow
 
 from app.gui.actions import (
     COLUMNS,
+    DRAWING,
     LANGUAGE,
     RECENT,
     SAMPLES,
@@ -23,6 +24,7 @@ from app.gui.actions import (
 from app.gui.against import AgainstBar
 from app.gui.comparing import Comparing
 from app.gui.document import Document
+from app.gui.drawing_menu import DrawingMenu
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
 from app.gui.findings.curing import Curing
@@ -118,6 +120,7 @@ class Window(QMainWindow):
             COLUMNS: ColumnsMenu(self.tables, self),
             LANGUAGE: self.language_menu,
             STRIPS: self.strips_menu,
+            DRAWING: DrawingMenu(self.view, self),
         }
         fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)
@@ -158,6 +161,8 @@ class Window(QMainWindow):
                 f"table_{place + 1}": lambda place=place: self.tables.open_tab(place)
                 for place in range(self.tables.tabs.count())
             },
+            "fit": self.sheet.fit,
+            "zoom_to_selection": self.sheet.zoom_to_selection,
             "next_pane": lambda: self.panes.go_to(1),
             "previous_pane": lambda: self.panes.go_to(-1),
             "there_and_back": self.jump.there_and_back,
@@ -179,6 +184,7 @@ class Window(QMainWindow):
         self.document.path_changed.connect(lambda _path: self.on_file_changed())
         self.view.shown_changed.connect(lambda _shown: self._show_pickers())
         self.view.strips_changed.connect(self.store.set_strips)
+        self.view.looks_changed.connect(self.store.set_looks)
         self.view.together_changed.connect(self.store.set_together)
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
@@ -277,6 +283,7 @@ class Window(QMainWindow):
             self.resize(1280, 800)
         self.panes.restore(self.store)
         self.view.set_strips(self.store.strips)
+        self.view.set_looks(self.store.looks)
         self.view.set_together(self.store.together)
 
     def _remember(self) -> None:

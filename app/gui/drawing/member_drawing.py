@@ -6,6 +6,7 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 from __future__ import annotations
 
 from collections.abc import Mapping
+from dataclasses import replace
 from functools import lru_cache
 
 from PySide6.QtCore import QPointF, QRectF, Qt, Signal
@@ -19,6 +20,7 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.drawing.frame import Detail, Frame
 from app.drawing.handles import Handle, handles_of
 from app.drawing.layout import sketched
 from app.drawing.member import Member
@@ -43,6 +45,7 @@ class MemberDrawing(QGraphicsObject):
         self._theme = theme
         self._member: Member | None = None
         self._place: Place | None = None
+        self._detail = Detail()
         self._sketch: Sketch | None = None  # None: to be made when next asked for
         self._handles: list[Handle] | None = None  # likewise
         self._held: Sketch | None = None  # whose rows and proportions are kept while something is pulled
@@ -64,7 +67,7 @@ class MemberDrawing(QGraphicsObject):
     def sketch(self) -> Sketch | None:
         """The member as it is laid out; None while there is nothing to draw."""
         if self._sketch is None and self._member is not None and self._place is not None:
-            self._sketch = sketched(self._member, self._place.frame, self._held)
+            self._sketch = sketched(self._member, self.frame, self._held)
         return self._sketch
 
     @property
@@ -93,6 +96,11 @@ class MemberDrawing(QGraphicsObject):
         self.update()
 
     @property
+    def frame(self) -> Frame:
+        """Where it is drawn, and with what detail."""
+        return replace(self._place.frame, detail=self._detail)
+
+    @property
     def chain_edge(self) -> float:
         """The pixel across the axis where joint lines begin."""
         return self.picture.chain_edge
@@ -107,6 +115,12 @@ class MemberDrawing(QGraphicsObject):
         if place != self._place:
             self.prepareGeometryChange()
             self._place = place
+            self._forget()
+
+    def set_detail(self, detail: Detail) -> None:
+        """Other things drawn beside the member."""
+        if detail != self._detail:
+            self._detail = detail
             self._forget()
 
     def set_theme(self, theme: Theme) -> None:

@@ -1,0 +1,193 @@
+"""The shapes of results on the drawing, in pixels: tinted stretches of the body, signs, scale, outline.
+
+They are laid over what `layout` has made of the same member in the same frame, by its axis and scale.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from msgspec import Struct
+
+from app.drawing.frame import Frame
+from app.drawing.member import Member
+from app.drawing.overlay import STEPS, Graded, Shade, Sign, shades
+from app.drawing.shapes import Box, Picture, Point, Stroke, Text
+from app.units import format_value, symbol
+from app.words import tr
+from solver.arrays import FloatArray
+from solver.sections import outline
+
+LEAST_HALF = 2.0  # pixels, as the body is drawn
+SIGN = 12.0  # px, of a sign on its ground and a gap
+STEP_WIDTH, BAR = 9.0, 8.0  # of the scale, px
+SAMPLES = 6  # of a stretch whose edge may be curved
+
+
+class Tint(Struct, frozen=True):
+    """A filled polygon: the colour of tension or compression in some strength, hatched where over 1."""
+
+    points: tuple[Point, ...]
+    sign: Sign
+    step: int
+    over: bool = False
+
+
+class Mark(Struct, frozen=True):
+    """A + or − on a ground of its own."""
+
+    centre: Point
+    sign: Sign
+
+
+class Tinting(Struct, frozen=True):
+    """All that is tinted."""
+
+    tints: tuple[Tint, ...] = ()
+    marks: tuple[Mark, ...] = ()
+    scale: tuple[Tint, ...] = ()
+    texts: tuple[Text, ...] = ()
+
+
+def tinted(member: Member, frame: Frame, picture: Picture, shown: Graded) -> Tinting:
+    """The body's stretches in their shades, with signs, and the scale where there is room for it."""
+    body = _Body(member, frame, picture)
+    low, high = sorted((frame.ruler.begin, frame.ruler.end))
+    tints, marks = [], []
+    last = len(member.project.segments)
+    for shade in shades(shown, frame.ruler):
+        a, b = sorted((frame.ruler.pixel(shade.first), frame.ruler.pixel(shade.last)))
+        if shade.segment < last and shade.sign and b > low and a < high:
+            tints.append(Tint(body.stretch(shade), shade.sign, shade.step, shade.over))
+    for index in range(min(last, len(shown.position) - 1)):
+        marks += body.signs(shown, index, (low, high))
+    scale, words = _scale(frame, picture, shown, member)
+    return Tinting(tuple(tints), tuple(marks), tuple(scale), words)
+
+
+class _Body:
+    """Turns places of segments into points of the drawing."""
+
+    def __init__(self, member: Member, frame: Frame, picture: Picture) -> None:
+        self._member, self._frame, self._picture = member, frame, picture
+
+    def point(self, along: float, aside: float) -> Point:
+        across = self._picture.axis + aside
+        return (across, along) if self._frame.upright else (along, across)
+
+    def stretch(self, shade: Shade) -> tuple[Point, ...]:
+        """The part of a segment's outline between two places; results may be of an earlier, longer one."""
+        segment = self._member.project.segments[shade.segment]
+        start, end = self._member.position[shade.segment : shade.segment + 2]
+        places = np.clip(np.linspace(shade.first, shade.last, SAMPLES), start, end).tolist()
+        edge = []
+        for x in places:
+            depth = outline(segment.section, (x - start) / (end - start)).outer * self._picture.scale
+            edge.append((self._frame.ruler.pixel(x), max(depth, LEAST_HALF)))
+        upper = [self.point(a, -h) for a, h in edge]
+        return (*upper, *(self.point(a, h) for a, h in reversed(edge)))
+
+    def signs(self, shown: Graded, index: int, window: tuple[float, float]) -> list[Mark]:
+        """+ or − on both sides of a segment's mark, where it has room for them."""
+        ends = sorted(self._frame.ruler.pixel(x) for x in self._member.position[index : index + 2])
+        low, high = max(ends[0], window[0]), min(ends[1], window[1])
+        extent = max(self._frame.measure(self._member.project.segments[index].mark, "strong"))
+        aside = max(0.25 * (high - low), 0.5 * extent + SIGN)
+        if 0.5 * (high - low) < aside + 0.6 * SIGN:
+            return []
+        marks = []
+        for along in (0.5 * (low + high) - aside, 0.5 * (low + high) + aside):
+            x = self._frame.ruler.position_at(along)
+            sign = int(np.sign(np.interp(x, shown.x, shown.value)))
+            if sign:
+                marks.append(Mark(self.point(along, 0.0), 1 if sign > 0 else -1))
+        return marks
+
+
+def _scale(
+    frame: Frame, picture: Picture, shown: Graded, member: Member
+) -> tuple[list[Tint], tuple[Text, ...]]:
+    """From the largest compression through 0 to the largest tension, numbers at the ends."""
+    if picture.legend is None:
+        return [], ()
+    box = picture.legend
+    height = frame.measure("0", "small")[1]
+    middle = box.bottom - 0.5 * height
+    ends = _ends(shown)
+    number = format_value(shown.largest, shown.quantity, member.system, strip=True)
+    before, after = (f"{sign}{number}" if of in ends else "" for sign, of in (("−", -1), ("+", 1)))
+    title = scale_title(shown, member)
+    width = frame.measure(title, "small")[0]
+    found = [Text(Box(box.left, box.top, box.left + width, box.top + height), title, "small", "quiet")]
+    at = box.left if frame.upright else box.left + width + 5.0
+    tints: list[Tint] = []
+    for text in (before or "0", None, after or "0"):
+        if text is None:
+            tints, at = _bar(at, middle, ends)
+        else:
+            width = frame.measure(text, "small")[0]
+            place = Box(at, middle - 0.5 * height, at + width, middle + 0.5 * height)
+            found.append(Text(place, text, "small", "quiet"))
+            at += width
+        at += 5.0
+    return tints, tuple(found)
+
+
+def _ends(shown: Graded) -> tuple[Sign, ...]:
+    signs: tuple[Sign, ...] = (-1, 1)
+    return tuple(sign for sign in signs if (shown.value * sign > 0).any())
+
+
+def _bar(left: float, middle: float, ends: tuple[Sign, ...]) -> tuple[list[Tint], float]:
+    """The steps of the scale, from compression to tension."""
+    steps = [(sign, step) for sign in ends for step in _steps(sign)]
+    tints = []
+    for index, (sign, step) in enumerate(steps):
+        a, b = left + index * STEP_WIDTH, left + (index + 1) * STEP_WIDTH
+        top, foot = middle - 0.5 * BAR, middle + 0.5 * BAR
+        tints.append(Tint(((a, top), (b, top), (b, foot), (a, foot)), sign, step))
+    return tints, left + len(steps) * STEP_WIDTH
+
+
+def _steps(sign: Sign) -> list[int]:
+    return list(range(STEPS, 0, -1)) if sign < 0 else list(range(1, STEPS + 1))
+
+
+def scale_title(shown: Graded, member: Member) -> str:
+    """What the colours mean, with its unit; of an envelope that it is the governing value."""
+    unit = symbol(shown.quantity, member.system)
+    name = "N" if shown.quantity == "force" else "σ"
+    if shown.governing:
+        return tr("{name} {unit}, largest of all:").format(name=name, unit=unit)
+    return f"{name} {unit}:"
+
+
+def legend_size(member: Member, frame: Frame, shown: Graded) -> tuple[float, float]:
+    """The room that the scale takes: beside its title, upright under it."""
+    number = format_value(shown.largest, shown.quantity, member.system, strip=True)
+    ends = len(_ends(shown))
+    texts = [*([f"+{number}"] * ends), *(["0"] * (2 - ends))]
+    title, height = frame.measure(scale_title(shown, member), "small")
+    bar = sum(frame.measure(text, "small")[0] for text in texts) + ends * STEPS * STEP_WIDTH + 10.0
+    return (max(title, bar), 2.0 * height) if frame.upright else (title + 5.0 + bar, height)
+
+
+def displaced_outline(
+    member: Member, frame: Frame, picture: Picture, moved: FloatArray, factor: float
+) -> tuple[Stroke, ...]:
+    """The outline of every segment and the line of every joint, moved along the axis by `factor` times u."""
+    body, ruler = _Body(member, frame, picture), frame.ruler
+    shifts = (moved * factor * ruler.scale).tolist()
+    along = [ruler.pixel(x) + shift for x, shift in zip(member.position, shifts, strict=False)]
+    strokes = []
+    for segment, a, b in zip(member.project.segments, along[:-1], along[1:], strict=False):
+        ends = [max(outline(segment.section, s).outer * picture.scale, LEAST_HALF) for s in (0.0, 1.0)]
+        corners = ((a, -ends[0]), (b, -ends[1]), (b, ends[1]), (a, ends[0]))
+        points = tuple(body.point(*corner) for corner in corners)
+        if _near(a, b, frame):
+            strokes.append(Stroke(points, "quiet", 1.3, closed=True))
+    return tuple(strokes)
+
+
+def _near(a: float, b: float, frame: Frame) -> bool:
+    low, high = sorted((frame.ruler.begin, frame.ruler.end))
+    return max(a, b) >= low - 40.0 and min(a, b) <= high + 40.0

@@ -1,0 +1,162 @@
+"""Results on the drawing: graded as the solver has them, the displaced shape clear and harmless."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from itertools import pairwise
+
+import numpy as np
+import pytest
+from hypothesis import given
+from hypothesis import strategies as st
+
+from app.drawing.frame import Detail, Frame
+from app.drawing.layout import lay_out
+from app.drawing.member import Member
+from app.drawing.overlay import (
+    LARGEST_SHIFT,
+    LEAST_LEFT,
+    STEPS,
+    displaced_factor,
+    displacements,
+    graded,
+    shades,
+)
+from app.drawing.ruler import Ruler
+from app.drawing.tinting import displaced_outline, legend_size, tinted
+from app.looks import Looks
+from app.samples import read_sample
+from app.shown import Shown
+from solver.model import Project
+from solver.solve import solve
+from tests.app.drawing.frames import SIZES, window_frame
+from tests.drawn_members import busy_member, drawn, uneven_member
+
+ROD = solve(read_sample("tie_rod"))
+STORM = next(i for i, state in enumerate(ROD.states) if state.name == "Storm surge")
+BUSY = solve(uneven_member())
+BOTH_WAYS = pytest.mark.parametrize("upright", [False, True], ids=["across", "upright"])
+
+
+def coloured(project: Project, results, state: int | None, *, upright: bool):
+    member = drawn(project)
+    frame = window_frame(member, SIZES[1], upright=upright)
+    shown = graded(results, state, "stress")
+    detail = Detail(hollow=True, legend=legend_size(member, frame, shown))
+    frame = replace(frame, detail=detail)
+    picture = lay_out(member, frame)
+    return frame, picture, tinted(member, frame, picture, shown)
+
+
+class TestShades:
+    def test_cover_the_member_once_and_in_order(self):
+        ruler = Ruler.fitting(ROD.position.tolist(), 0.0, 800.0)
+        found = shades(graded(ROD, STORM, "stress"), ruler)
+        assert [found[0].first, found[-1].last] == pytest.approx([0.0, ROD.position[-1]])
+        assert all(a.last == pytest.approx(b.first) for a, b in pairwise(found))
+
+    def test_the_darkest_is_where_the_largest_is_and_hatched_where_it_does_not_pass(self):
+        ruler = Ruler.fitting(ROD.position.tolist(), 0.0, 800.0)
+        found = shades(graded(ROD, STORM, "stress"), ruler)
+        assert {s.segment for s in found if s.step == STEPS} == {3, 5}
+        assert {s.segment for s in found if s.over} == {3, 5}
+        assert {s.sign for s in found} == {1}
+
+    def test_of_an_envelope_the_governing_value_is_shown(self):
+        whole = graded(BUSY, None, "force")
+        singles = [graded(BUSY, i, "force") for i, s in enumerate(BUSY.states) if s.checked]
+        assert whole.governing
+        assert whole.largest == pytest.approx(max(one.largest for one in singles))
+
+    def test_nothing_is_coloured_where_nothing_acts(self):
+        project = busy_member(2)
+        idle = replace_loads(project)
+        assert graded(solve(idle), 0, "stress") is None
+        assert graded(ROD, STORM, "none") is None
+
+
+def replace_loads(project: Project) -> Project:
+    from msgspec.structs import replace as changed
+
+    cases = tuple(changed(c, gravity=0.0, segment_loads=(), joint_loads=()) for c in project.load_cases)
+    return changed(project, load_cases=cases)
+
+
+class TestTinting:
+    @BOTH_WAYS
+    def test_every_segment_is_tinted_inside_its_outline(self, upright):
+        project = read_sample("tie_rod")
+        frame, picture, found = coloured(project, ROD, STORM, upright=upright)
+        way = 1 if upright else 0
+        along = [p[way] for tint in found.tints for p in tint.points]
+        assert [min(along), max(along)] == pytest.approx(sorted((frame.ruler.begin, frame.ruler.end)))
+        bodies = [s for s in picture.strokes if s.part is not None and s.part.kind == "segment" and s.closed]
+        deepest = max(p[1 - way] for s in bodies for p in s.points)
+        assert max(p[1 - way] for t in found.tints for p in t.points) == pytest.approx(deepest)
+        assert not any(s.fill for s in bodies)
+
+    @BOTH_WAYS
+    @pytest.mark.parametrize("state", [0, None], ids=["state", "envelope"])
+    def test_the_scale_meets_no_other_text(self, upright, state):
+        project = uneven_member()
+        _frame, picture, found = coloured(project, BUSY, state, upright=upright)
+        assert len(found.texts) == 3
+        assert not any(a.box.meets(b.box) for a in found.texts for b in picture.texts)
+        assert ("largest of all" in found.texts[0].text) is (state is None)
+
+    def test_signs_keep_off_the_marks(self):
+        _frame, picture, found = coloured(read_sample("tie_rod"), ROD, STORM, upright=False)
+        assert {mark.sign for mark in found.marks} == {1}
+        gaps = [abs(m.centre[0] - c.centre[0]) - c.radius for m in found.marks for c in picture.circles]
+        assert min(gaps) > 6.5
+
+
+class TestDisplaced:
+    @given(
+        st.lists(st.floats(0.01, 10.0), min_size=1, max_size=20),
+        st.lists(st.floats(-0.1, 0.1), min_size=21, max_size=21),
+    )
+    def test_is_clear_and_no_segment_overlaps_another(self, lengths, moves):
+        joints = tuple(np.concatenate([[0.0], np.cumsum(lengths)]).tolist())
+        member = Member(busy_member(1), joints, None)
+        ruler = Ruler.fitting(joints, 0.0, 800.0)
+        moved = np.array(moves[: len(joints)])
+        factor = displaced_factor(member, ruler, moved)
+        pixels = np.asarray(ruler.pixel(np.array(joints))) + moved * factor * ruler.pixels_per_metre
+        widths = np.diff(ruler.pixel(np.array(joints)))
+        assert (np.diff(pixels) >= LEAST_LEFT * widths * (1 - 1e-6)).all()
+        assert np.abs(moved * factor * ruler.pixels_per_metre).max() <= LARGEST_SHIFT * 800.0 * (1 + 1e-6)
+
+    def test_the_factor_is_round_and_stays_while_zooming(self):
+        member = drawn(read_sample("tie_rod"))
+        ruler = Ruler.fitting(member.position, 0.0, 800.0)
+        moved = displacements(ROD, STORM)
+        assert displaced_factor(member, ruler, moved) == 20.0
+        assert displaced_factor(member, ruler.zoomed(5.0, 100.0), moved) == 20.0
+
+    def test_of_what_does_not_move_there_is_none(self):
+        member = drawn(read_sample("tie_rod"))
+        ruler = Ruler.fitting(member.position, 0.0, 800.0)
+        assert displaced_factor(member, ruler, np.zeros(9)) == 0.0
+
+    @BOTH_WAYS
+    def test_joints_lie_where_they_have_moved_to(self, upright):
+        member = drawn(read_sample("tie_rod"))
+        frame: Frame = window_frame(member, SIZES[1], upright=upright)
+        moved = displacements(ROD, STORM)
+        strokes = displaced_outline(member, frame, lay_out(member, frame), moved, 20.0)
+        place = strokes[3].points[0][1 if upright else 0]
+        still = frame.ruler.pixel(member.position[3])
+        assert place == pytest.approx(still + moved[3] * 20.0 * frame.ruler.scale)
+
+
+@pytest.mark.parametrize("looks", [Looks(), Looks("stress", displaced=True), Looks("force", true=True)])
+def test_looks_are_remembered_as_text(looks):
+    assert Looks.of_text(looks.text) == looks
+    assert Looks.of_text("nonsense") == Looks()
+
+
+def test_what_is_said_stands_under_the_drawing():
+    member = Member.of(read_sample("tie_rod"), Shown("envelope"))
+    frame = replace(window_frame(member, SIZES[0], upright=False), detail=Detail(words="displaced ×50"))
+    assert "displaced ×50" in {text.text for text in lay_out(member, frame).texts}
