@@ -109,7 +109,7 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("previous_pane", "&View", later("&Previous pane"), "Shift+F6"),
     SEPARATOR,
     Command(STRIPS, "&View", later("&Strips")),
-    Command(DRAWING, "&View", later("&Drawing")),
+    Command(DRAWING, "&View", later("D&rawing")),
     Command("fit", "&View", later("Show the &whole member"), "Ctrl+0"),
     Command("zoom_to_selection", "&View", later("&Zoom to the selection"), "Ctrl+9"),
     SEPARATOR,
