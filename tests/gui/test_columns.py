@@ -9,6 +9,7 @@ from PySide6.QtWidgets import QApplication
 from app.gui.settings import Settings
 from app.gui.tables.shown_columns import ColumnsMenu
 from app.gui.view import Shown
+from app.hand.cells import Cell
 from tests.gui.hand import cell, go_to, text_at
 
 KEY = Qt.Key
@@ -140,3 +141,20 @@ def test_the_new_columns_show_the_results_of_the_shown_state(window, table, qtbo
     checked = [i for i, one in enumerate(outcome.states) if one.checked]
     ends = outcome.segments.stress_min[checked, 3].min(), outcome.segments.stress_max[checked, 3].max()
     assert text_at(table, 4, "stress") == f"{ends[0] / 1e6:.1f}…{ends[1] / 1e6:.0f}"
+
+
+def test_an_entry_that_is_not_taken_in_is_never_out_of_sight(window, table):
+    hide(table, "length")
+    QGuiApplication.clipboard().setText("Length\nlong")
+    go_to(table, 2, "mark")
+    table.blocks.paste()
+    assert "length" in shown(table)
+    window.document.undo()
+    assert "length" not in shown(table)
+
+
+def test_a_cell_that_is_gone_to_is_shown(window, table):
+    hide(table, "section")
+    window.tables.show_cell(Cell("segments", 2, "section"))
+    assert table.currentIndex() == cell(table, 3, "section")
+    assert "section" in shown(table)

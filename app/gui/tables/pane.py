@@ -172,12 +172,13 @@ class TablesPane(QWidget):
         view.setFocus()
 
     def show_cell(self, cell: Cell) -> None:
-        """Bring one cell to the front, with the keyboard in it; its row where the column is hidden."""
+        """Bring one cell to the front, with the keyboard in it; a hidden column is shown for it."""
         self.show_record(cell.table, cell.record)
         view = self.views[cell.table]
+        view.columns_choice.reveal(cell.column)
         model = view.table_model
         place = next((i for i, column in enumerate(model.columns) if column.key == cell.column), None)
-        if place is not None and not view.isColumnHidden(place):
+        if place is not None:
             view.setCurrentIndex(model.index(model.row_of(cell.record), place))
 
     def on_document_changed(self, snapshot: Snapshot) -> None:
@@ -205,6 +206,7 @@ class TablesPane(QWidget):
         self._sight = sight
         for view in self.views.values():
             view.table_model.set_sight(sight)
+            view.columns_choice.follow_drafts()
             view.widths.widen_if_needed()
 
     def set_figures(self, figures: Figures) -> None:

@@ -45,7 +45,7 @@ class ShownColumns:
         return tuple(column for column in self._view.table_model.columns[1:] if not column.named_by_user)
 
     def is_shown(self, column: Column) -> bool:
-        """Whether a column is shown."""
+        """Whether a column is chosen to be shown."""
         return column not in self.choices() or column.at_first != (column.key in self._turned)
 
     def turn(self, key: str) -> None:
@@ -57,10 +57,31 @@ class ShownColumns:
         if current.isValid() and self._view.isColumnHidden(current.column()):
             self._view.setCurrentIndex(current.siblingAtColumn(0))
 
+    def reveal(self, key: str) -> None:
+        """Show a column that is to be worked in."""
+        hidden = any(c.key == key and not self.is_shown(c) for c in self._view.table_model.columns)
+        if hidden:
+            self.turn(key)
+
     def hide_others(self) -> None:
-        """Bring the table in line with the choice."""
-        for place, column in enumerate(self._view.table_model.columns):
-            self._view.setColumnHidden(place, not self.is_shown(column))
+        """Bring the table in line with the choice; an entry that is not taken in is never out of sight."""
+        for place, hide in enumerate(self._hidden()):
+            self._view.setColumnHidden(place, hide)
+
+    def follow_drafts(self) -> None:
+        """The same where an entry that is not taken in came or went."""
+        columns = range(self._view.table_model.columnCount())
+        if [self._view.isColumnHidden(place) for place in columns] != self._hidden():
+            self._view.on_shape_changed()
+
+    def _hidden(self) -> list[bool]:
+        columns = enumerate(self._view.table_model.columns)
+        return [not (self.is_shown(column) or self._holds_draft(place)) for place, column in columns]
+
+    def _holds_draft(self, place: int) -> bool:
+        model = self._view.table_model
+        rows = range(model.rowCount() if model.document.snapshot.drafts else 0)
+        return any(model.draft(model.index(row, place)) is not None for row in rows)
 
     def fill(self, menu: QMenu) -> None:
         """An entry with a tick for each column, and one to go back to the table's own choice."""
