@@ -110,6 +110,13 @@ class TestFilter:
         assert sifted(problem, Sift("stress", None, "B")) == problem
         assert count_line(problem, problem, None) == "0 of 0 shown"
 
+    def test_a_mark_means_itself_before_those_that_begin_so(self, window):
+        everything = rows(window.showing.outcome.findings)
+        one = replace(everything[0], marks=frozenset({"1"}))
+        ten = replace(everything[1], marks=frozenset({"10"}))
+        assert sifted((one, ten), Sift(marks="1")) == (one,)
+        assert sifted((ten,), Sift(marks="1")) == (ten,)
+
 
 class TestJump:
     def test_enter_goes_to_the_section_and_back(self, qtbot, window):
@@ -230,6 +237,34 @@ class TestCures:
         with pytest.raises(Cancelled):
             compute_cures((results, subject), lambda: True)
 
+    def test_closing_while_it_seeks_is_clean(self, qtbot, window):
+        cured(qtbot, window)
+        results, subject = window.showing.outcome.results, window.findings.rows[0].row.about
+        window.curing.solver.request((results, subject))
+        assert window.curing.solver.busy
+        window.curing.close()
+        assert not window.curing.solver.busy
+
+    def test_a_fault_of_ours_goes_to_the_log_and_the_next_is_sought(self, qtbot, window, monkeypatch):
+        cured(qtbot, window)
+        logged = []
+        monkeypatch.setattr(
+            "app.gui.findings.curing.log.log_error", lambda where, error: logged.append(where)
+        )
+        real = window.curing.solver._compute
+        worst = window.findings.rows[0].row.about
+
+        def fails_first(job, cancelled):
+            if job[1] == worst:
+                raise ZeroDivisionError("a fault of ours")
+            return real(job, cancelled)
+
+        window.curing.solver._compute = fails_first
+        window.document.commit(edits.set_value(window.document.project, ("title",), "Rod"), "Title")
+        cured(qtbot, window)
+        assert logged == ["cures"]
+        assert [line.cure.subject.marks for line in window.findings.cure_lines] == [("F",)]
+
     def test_a_cure_for_an_earlier_member_is_not_made(self, qtbot, window):
         cured(qtbot, window)
         cure = window.findings.cure_lines[0].cure
@@ -237,6 +272,23 @@ class TestCures:
         window.document.commit(project, "Test")
         window.curing.on_wanted(cure)
         assert window.document.project is project
+        cured(qtbot, window)
+        window.curing.on_wanted(cure)
+        assert window.document.project is project
+        assert window.status.news.text()
+
+    def test_no_cure_stands_under_other_or_older_findings(self, qtbot, window):
+        cured(qtbot, window)
+        panel, findings = window.findings, window.showing.outcome.findings
+        panel.show_findings(findings, (), False)
+        assert panel.cure_lines == ()
+        panel.show_cures(window.curing._found)
+        assert panel.cure_lines == ()
+        panel.show_findings(findings, (), True)
+        panel.show_cures(window.curing._found)
+        assert len(panel.cure_lines) == 2
+        panel.show_findings(replace(findings), (), True)
+        assert panel.cure_lines == ()
 
 
 def test_a_band_named_once_stays_named_when_the_first_is_hidden(window):

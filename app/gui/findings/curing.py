@@ -126,12 +126,11 @@ class Curing(QObject):
     def on_wanted(self, cure: Cure) -> None:
         """Make the change, as one undo step, in the very project for which it was proved."""
         self._commit_open_editor()
-        results = self._results
-        if results is None or self._document.has_drafts or results.project != self._document.project:
+        if not any(cure is known for cures in self._found.values() for known in cures.found):
             self.told.emit(tr("the member has changed since: a cure for it is being sought"))
             return
         name = tr("Section of {mark}") if cure.change.kind == "section" else tr("Spring at joint {mark}")
-        self._document.commit(cure.change.applied(results.project), name.format(mark=cure.change.mark))
+        self._document.commit(cure.change.applied(self._document.project), name.format(mark=cure.change.mark))
 
     def close(self) -> None:
         """End cleanly, also while it seeks."""

@@ -163,9 +163,10 @@ class FindingsPanel(QScrollArea):
 
     def show_cures(self, cures: Mapping[Subject, Cures]) -> None:
         """Show what would cure the findings that are shown now."""
-        self._cures = cures if self._current else {}
-        self._list.show_cures(self._cures)
-        self._dress()
+        shown, self._cures = self._cures, cures if self._current else {}
+        if shown or self._cures:  # most often there were none and are none
+            self._list.show_cures(self._cures)
+            self._dress()
 
     def _show_rows(self) -> None:
         sift = self.filter.sift
