@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QApplication, QSplitter, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QApplication, QHBoxLayout, QSplitter, QVBoxLayout, QWidget
 
 from app.gui.findings.panel import FindingsPanel
+from app.gui.hand.symbol_strip import SymbolStrip
 from app.gui.settings import Settings
 from app.gui.sheet_view import SheetView
 from app.gui.status_line import StatusLine
@@ -30,6 +31,7 @@ class Panes(QWidget):
     def __init__(
         self,
         top_bar: TopBar,
+        symbols: SymbolStrip,
         sheet: SheetView,
         findings: FindingsPanel,
         tables: TablesPane,
@@ -38,6 +40,7 @@ class Panes(QWidget):
     ) -> None:
         super().__init__(parent)
         self._top_bar = top_bar
+        self._symbols = symbols
         self._sheet = sheet
         self._findings = findings
         self._tables = tables
@@ -47,7 +50,7 @@ class Panes(QWidget):
         self._lay_out()
 
     def _lay_out(self) -> None:
-        self.across.addWidget(self._sheet)
+        self.across.addWidget(self._beside(self._symbols, self._sheet))
         self.across.addWidget(self._findings)
         self.across.setStretchFactor(0, 1)
         self.down.addWidget(self.across)
@@ -63,6 +66,17 @@ class Panes(QWidget):
         for widget in (self._top_bar, self.down, self._status):
             rows.addWidget(widget)
         rows.setStretch(1, 1)
+
+    @staticmethod
+    def _beside(symbols: SymbolStrip, sheet: SheetView) -> QWidget:
+        """The strip of symbols at the edge of the sheet."""
+        both = QWidget()
+        row = QHBoxLayout(both)
+        row.setContentsMargins(0, 0, 0, 0)
+        row.setSpacing(0)
+        row.addWidget(symbols)
+        row.addWidget(sheet, 1)
+        return both
 
     def dress(self, style: str) -> None:
         """Colours for the window's own panels; sheet and findings follow the palette by themselves."""
@@ -91,12 +105,13 @@ class Panes(QWidget):
             self._findings,
             self._tables.current_view(),
             self._top_bar.show_picker,
+            self._symbols,
         )
         panes[(self._here() + by) % len(panes)].setFocus(Qt.FocusReason.ShortcutFocusReason)
 
     def _here(self) -> int:
         """Which pane has the keyboard, in the order of F6; −1 for none."""
-        around = (self._sheet, self._findings, self._tables, self._top_bar)
+        around = (self._sheet, self._findings, self._tables, self._top_bar, self._symbols)
         focus = QApplication.focusWidget()
         return next(
             (i for i, pane in enumerate(around) if focus and (pane is focus or pane.isAncestorOf(focus))), -1

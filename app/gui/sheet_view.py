@@ -99,6 +99,11 @@ class SheetView(QGraphicsView):
         return self._sheet
 
     @property
+    def positions(self) -> tuple[float, ...]:
+        """The positions of the joints, m."""
+        return self._sheet.positions
+
+    @property
     def drawing(self) -> MemberDrawing:
         """The interactive drawing."""
         return self._sheet.drawing
@@ -207,13 +212,25 @@ class SheetView(QGraphicsView):
         index = find(positions, start) - (0 if direction > 0 else 1)
         self._move_cursor(positions[min(max(index, 0), len(positions) - 1)])
 
+    def segment_at(self, x: float) -> int:
+        """The segment at a position; at a joint the one behind it, if there is one."""
+        positions = self._sheet.positions
+        return min(max(bisect.bisect_right(positions, x) - 1, 0), len(positions) - 2)
+
+    def joint_near(self, pixel: float) -> int:
+        """The joint nearest to a pixel along the axis."""
+        ruler, positions = self.ruler, self._sheet.positions
+        return min(range(len(positions)), key=lambda joint: abs(ruler.pixel(positions[joint]) - pixel))
+
     def _select_at_cursor(self) -> None:
-        """Select the segment the cursor is in."""
-        if self._view.cursor is not None:
-            positions = self._sheet.positions
-            index = bisect.bisect_right(positions, self._view.cursor.x) - 1
-            index = min(max(index, 0), len(positions) - 2)
-            self._view.set_selection(Selection(segments=frozenset((index,))))
+        """Select the segment the cursor is in; at a joint that joint, the next time the segment there."""
+        if self._view.cursor is None:
+            return
+        x, positions = self._view.cursor.x, self._sheet.positions
+        segment = Selection(segments=frozenset((self.segment_at(x),)))
+        joint = Selection(joints=frozenset(i for i, place in enumerate(positions) if place == x))
+        at_joint = bool(joint.joints) and self._view.selection != joint
+        self._view.set_selection(joint if at_joint else segment)
 
     def _open_selected(self) -> None:
         """Type the selected part in place: a length, a support; else of the segment at the cursor."""
@@ -258,11 +275,21 @@ class SheetView(QGraphicsView):
         around = positions[max(after - 1, 0) : after + 1]
         return min(around, key=lambda joint: abs(self.ruler.pixel(joint) - pixel))
 
-    def _on_part_clicked(self, part: Part) -> None:
+    def _on_part_clicked(self, part: Part, modifiers: Qt.KeyboardModifier) -> None:
+        """Select the part; with Ctrl in or out, with Shift all up to it as well."""
+        one = frozenset((part.index,))
         if part.kind in OF_SEGMENT:
-            self._view.set_selection(Selection(segments=frozenset((part.index,))))
+            clicked = Selection(segments=one)
         elif part.kind in OF_JOINT:
-            self._view.set_selection(Selection(joints=frozenset((part.index,))))
+            clicked = Selection(joints=one)
+        else:
+            return
+        chosen = self._view.selection
+        if modifiers & Qt.KeyboardModifier.ControlModifier:
+            clicked = chosen.toggled(clicked)
+        elif modifiers & Qt.KeyboardModifier.ShiftModifier:
+            clicked = chosen.extended(clicked)
+        self._view.set_selection(clicked)
 
     # Qt's own
 

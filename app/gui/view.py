@@ -31,6 +31,27 @@ class Selection:
     segments: frozenset[int] = field(default_factory=frozenset)
     joints: frozenset[int] = field(default_factory=frozenset)
 
+    def toggled(self, part: Selection) -> Selection:
+        """With these taken in, or out where they are in already."""
+        return Selection(self.segments ^ part.segments, self.joints ^ part.joints)
+
+    def joined(self, part: Selection) -> Selection:
+        """With these as well."""
+        return Selection(self.segments | part.segments, self.joints | part.joints)
+
+    def extended(self, part: Selection) -> Selection:
+        """With these as well, and all between them and the nearest of their kind."""
+        return Selection(_up_to(self.segments, part.segments), _up_to(self.joints, part.joints))
+
+
+def _up_to(chosen: frozenset[int], wanted: frozenset[int]) -> frozenset[int]:
+    """The chosen and the wanted, and what lies between."""
+    if not chosen or not wanted:
+        return chosen | wanted
+    (index, *_) = sorted(wanted)
+    nearest = min(chosen, key=lambda other: abs(other - index))
+    return chosen | wanted | frozenset(range(min(nearest, index), max(nearest, index) + 1))
+
 
 class View(QObject):
     """Holds the values; a setter emits only when the value changes, so an echo ends by itself."""

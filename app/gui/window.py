@@ -33,7 +33,12 @@ from app.gui.findings.panel import FindingsPanel
 from app.gui.hand.grasp import Grasp
 from app.gui.hand.hand import Hand
 from app.gui.hand.in_place import InPlace
+from app.gui.hand.placing import Placing
+from app.gui.hand.selecting import Selecting
+from app.gui.hand.shaping import Shaping
+from app.gui.hand.sheet_menu import SheetMenu
 from app.gui.hand.sheet_sweeps import SheetSweeps
+from app.gui.hand.symbol_strip import SymbolStrip
 from app.gui.help import Help
 from app.gui.language_menu import LanguageMenu
 from app.gui.member_edits import MemberEdits
@@ -98,6 +103,10 @@ class Window(QMainWindow):
         self.jump = Jump(self.document, self.view, self.sheet, self.findings, self.tables, self)
         self.curing = Curing(self.document, self.showing, self.findings, commit, self)
         self.sweeps = SheetSweeps(self.sheet, self.view, self.tables, self.in_place)
+        self.symbols = SymbolStrip()
+        self.placing = Placing(self.document, self.view, self.sheet, self.tables, self.in_place, self)
+        self.shaping = Shaping(self.document, self.view, self.sheet, self.tables, self)
+        self.selecting = Selecting(self.view, self.sheet, self)
         self.edits = MemberEdits(self.document, self.tables, self)
         grasp = Grasp(self.document, self.view, self.sheet, self._edited_case, commit, self)
         self.hand = Hand(grasp, self.view, self)
@@ -124,8 +133,22 @@ class Window(QMainWindow):
         }
         fill_menus(self.menuBar(), self.actions_by_key, menus)
         self.top_bar = TopBar(self.actions_by_key, self.against)
-        self.panes = Panes(self.top_bar, self.sheet, self.findings, self.tables, self.status)
+        self.panes = Panes(self.top_bar, self.symbols, self.sheet, self.findings, self.tables, self.status)
         self.setCentralWidget(self.panes)
+        self.sheet_menu = SheetMenu(
+            self.document,
+            self.view,
+            self.sheet,
+            self.tables,
+            self.in_place,
+            self.placing,
+            self.shaping,
+            self.selecting,
+            self.actions_by_key,
+            self,
+        )
+        self.symbols.chosen.connect(self.placing.choose)
+        self.placing.kind_changed.connect(self.symbols.show_chosen)
 
     def _handlers(self) -> dict[str, Callable[[], None]]:
         return {
@@ -155,6 +178,10 @@ class Window(QMainWindow):
             "delete_segments": self.edits.delete_segments,
             "split": self.edits.split,
             "join": self.edits.join,
+            "split_at_cursor": self.shaping.split_at_cursor,
+            "join_equal": self.shaping.join_equal,
+            "repeat": self.shaping.repeat,
+            "mirror": self.shaping.mirror,
             "reverse": self.edits.reverse,
             "choose_case": self.tables.choose_case,
             **{
@@ -199,9 +226,10 @@ class Window(QMainWindow):
             self.in_place,
             self.jump,
             self.curing,
+            self.placing,
+            self.shaping,
         ):
             room.told.connect(self.status.tell)
-        self.taking.told.connect(self.status.tell)
         self.hand.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
         self.tables.rows_moved.connect(self.edits.move_before)

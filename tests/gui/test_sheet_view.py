@@ -171,7 +171,9 @@ class TestSelection:
     def test_a_click_on_a_segment_selects_it(self, qtbot, sheet, view, orientation):
         sheet.set_orientation(orientation)
         target = next(t for t in sheet.drawing.picture.targets if t.part == Part("segment", 2))
-        with qtbot.waitSignal(sheet.drawing.clicked, check_params_cb=lambda part: part == Part("segment", 2)):
+        with qtbot.waitSignal(
+            sheet.drawing.clicked, check_params_cb=lambda part, _mods: part == Part("segment", 2)
+        ):
             place = _beside_mark(QPointF(*target.box.centre), sheet)
             qtbot.mouseClick(sheet.viewport(), Qt.MouseButton.LeftButton, pos=place)
         assert view.selection == Selection(segments=frozenset({2}))

@@ -28,6 +28,7 @@ from app.drawing.shapes import OF_SEGMENT, Box, Circle, Part, Picture, Stroke, T
 from app.drawing.sketch import Sketch
 from app.drawing.tips import tip
 from app.gui.drawing.draft_marks import paint_marks
+from app.gui.drawing.outlines import paint_lit, paint_selected_joints
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
@@ -37,7 +38,7 @@ from app.gui.view import Selection
 class MemberDrawing(QGraphicsObject):
     """The member with supports, loads and dimension chain."""
 
-    clicked = Signal(object)  # Part
+    clicked = Signal(object, object)  # Part, the keyboard's modifiers
     hovered = Signal(object)  # Part, or None
 
     def __init__(self, theme: Theme) -> None:
@@ -52,6 +53,7 @@ class MemberDrawing(QGraphicsObject):
         self._selection = Selection()
         self._under_mouse: Part | None = None
         self._drafts: Mapping[Part, str] = {}
+        self._lit: Part | None = None
         self.setZValue(10.0)
         self.setAcceptHoverEvents(True)
         self.setAcceptedMouseButtons(Qt.MouseButton.LeftButton)
@@ -140,6 +142,12 @@ class MemberDrawing(QGraphicsObject):
             self._drafts = drafts
             self.update()
 
+    def set_lit(self, part: Part | None) -> None:
+        """Light the joint or segment that a symbol would be put on, or none."""
+        if part != self._lit:
+            self._lit = part
+            self.update()
+
     def part_at(self, point: QPointF) -> Part | None:
         """The part under a point, or None."""
         target = self.picture.target_at((point.x(), point.y()))
@@ -189,7 +197,7 @@ class MemberDrawing(QGraphicsObject):
         moved = event.screenPos() - event.buttonDownScreenPos(Qt.MouseButton.LeftButton)
         part = self.part_at(event.pos())
         if part is not None and moved.manhattanLength() < QApplication.startDragDistance():
-            self.clicked.emit(part)
+            self.clicked.emit(part, event.modifiers())
 
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
         """Strokes, circles, texts."""
@@ -203,6 +211,9 @@ class MemberDrawing(QGraphicsObject):
         for circle in self.picture.circles:
             self._paint_circle(painter, circle)
         self._paint_texts(painter, self._place.fonts)
+        paint_selected_joints(painter, self.picture, self._selection.joints, self._theme)
+        if self._lit is not None:
+            paint_lit(painter, self.picture, self._lit, self._theme)
         paint_marks(painter, self.picture, self._drafts, self._theme, self._place.fonts.font("small"))
 
     def _is_selected(self, part: Part | None) -> bool:

@@ -160,6 +160,10 @@ class InPlace(QObject):
             return
         self._show(entry, box, text)
 
+    def open_cell(self, cell: Cell, records: tuple[int, ...] = ()) -> None:
+        """Type into a cell where the drawing shows it, for these records together."""
+        self.open(cell, self._box_of(cell), None, records)
+
     def _show(self, entry: CellEntry, box: Box, text: str | None) -> None:
         self._entry = entry
         self._frame = frame = EditorFrame(self._sheet.viewport(), theme_for(self._sheet.palette()), entry)
@@ -277,7 +281,7 @@ class InPlace(QObject):
             column = keys.index(key) if key in keys else -1
             row = entry.model.row_of(records[0])
             if column >= 0 and entry.model.entry(entry.model.index(row, column)) is not None:
-                self.open(cell, self._box_of(cell), None, records)
+                self.open_cell(cell, records)
                 return
 
     def _box_of(self, cell: Cell) -> Box:

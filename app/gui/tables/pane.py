@@ -54,6 +54,7 @@ class TablesPane(QWidget):
         self.sweeper = Sweeper(document, self)
         self.sweeper.told.connect(self.noted)
         self._sight = Sight(document.project.display.unit_system, 0 if document.project.load_cases else None)
+        self._following = False
         self.case_picker = Choice()
         self.tabs = self._make_tabs(theme)
         self._lay_out()
@@ -231,6 +232,8 @@ class TablesPane(QWidget):
 
     def on_record_chosen(self, records: frozenset[int]) -> None:
         """The rows chosen in the tables are what the view has selected."""
+        if self._following:
+            return
         if self.sender() is self.views["segments"]:
             self._view.set_selection(Selection(segments=records))
         else:
@@ -238,6 +241,8 @@ class TablesPane(QWidget):
 
     def on_selection_changed(self, selection: Selection) -> None:
         """Light what is selected elsewhere, and choose its rows, as commands work on the rows chosen."""
+        self._following = True  # the rows chosen here are no choice of a person's
         for key, records in (("segments", selection.segments), ("joints", selection.joints)):
             self.views[key].table_model.set_lit(records)
             self.views[key].choose_records(records)
+        self._following = False
