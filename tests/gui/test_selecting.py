@@ -111,12 +111,13 @@ def test_a_joint_is_inserted_at_the_cursor_and_equal_neighbours_joined_again(qtb
     before = window.document.project
     plain = replace(before, load_cases=(), combinations=())
     window.document.commit(plain, "no loads")
-    window.view.set_cursor(Cursor(0.4 * before.segments[0].length))
+    neck = sum(segment.length for segment in before.segments[:2]) + 0.4 * before.segments[2].length
+    window.view.set_cursor(Cursor(neck))
     window.sheet.setFocus()
     QTest.keyClick(window, Qt.Key.Key_I, CTRL)
     QTest.keyClick(window, Qt.Key.Key_Control)
     assert len(window.document.project.segments) == len(before.segments) + 1
-    assert window.view.selection == Selection(joints=frozenset((1,)))
+    assert window.view.selection == Selection(joints=frozenset((3,)))
     window.actions_by_key["join_equal"].trigger()
     assert window.document.project.segments == before.segments
     window.view.set_cursor(Cursor(before.segments[0].length))
