@@ -70,18 +70,24 @@ class SheetMenu(QObject):
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
         """The right button and the keys that open menus."""
         if isinstance(event, QContextMenuEvent):
-            by_mouse = event.reason() == QContextMenuEvent.Reason.Mouse
-            if by_mouse and watched is self._sheet.viewport():
-                self._open_at(QPointF(event.pos()))
-            elif not by_mouse:
-                self._open_by_key()
-            return True
+            return self._on_asked(watched, event)
         if watched is self._sheet and isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress:
             shifted = event.modifiers() & Qt.KeyboardModifier.ShiftModifier
             if event.key() == Qt.Key.Key_Menu or (event.key() == Qt.Key.Key_F10 and shifted):
                 self._open_by_key()
                 return True
         return super().eventFilter(watched, event)
+
+    def _on_asked(self, watched: QObject, event: QContextMenuEvent) -> bool:
+        """By mouse on the drawing only: the strips have menus of their own."""
+        if event.reason() != QContextMenuEvent.Reason.Mouse:
+            self._open_by_key()
+            return True
+        point = QPointF(event.pos())
+        if watched is not self._sheet.viewport() or not self._sheet.places.drawing.contains(point):
+            return False
+        self._open_at(point)
+        return True
 
     def _open_at(self, point: QPointF) -> None:
         """For what is under the pointer; on the paper beside the member, for the whole."""
