@@ -80,7 +80,7 @@ class SheetView(QGraphicsView):
 
     def _set_least_size(self) -> None:
         """As small as its texts can still be read, but never so large as to push all else off a screen."""
-        height = min(max(round(least_height(Fonts(self.font()).text_height)), 320), 560)
+        height = min(max(round(least_height(Fonts(self.font()).text_height)), 320), 490)
         self.setMinimumSize(420, height)
 
     @property

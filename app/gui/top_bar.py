@@ -10,6 +10,7 @@ from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QSizePolicy, QToolBut
 
 from app.gui.actions import COMMANDS, SEPARATOR
 from app.gui.against import AgainstBar
+from app.gui.folding import FoldingRow
 from app.gui.picker import Picker
 from app.gui.view import Shown
 from app.units import SYSTEM_NAMES
@@ -47,8 +48,9 @@ class TopBar(QWidget):
         self._row = QHBoxLayout(self)
         self._row.setContentsMargins(10, 4, 10, 4)
         self._row.setSpacing(4)
+        self.commands = FoldingRow()
+        self._row.addWidget(self.commands, 1)
         self._add_buttons(actions)
-        self._row.addStretch(1)
         self._row.addWidget(against)
         self.show_picker = self._add_picker(tr("Show"), 16)
         self.units_picker = self._add_picker(tr("Units"), 12)
@@ -64,10 +66,11 @@ class TopBar(QWidget):
                 pending_rule = True
             if not command.bar:
                 continue
-            if pending_rule and self._row.count():
-                self._row.addWidget(_rule())
+            if pending_rule and not self.commands.is_empty:
+                self.commands.add(_rule())
             pending_rule = False
-            self._row.addWidget(_button(actions[command.key], tr(command.bar)))
+            action = actions[command.key]
+            self.commands.add(_button(action, tr(command.bar)), action)
 
     def _add_picker(self, name: str, digits: int) -> Picker:
         picker = Picker(name, digits)

@@ -363,8 +363,10 @@ class Window(QMainWindow):
         self.panes.dress(style)
 
     def changeEvent(self, event: QEvent) -> None:
-        """Follow the system between light and dark."""
+        """Follow the system between light and dark, and its font, which style sheets hold fast until set anew."""
         super().changeEvent(event)
+        if event.type() == QEvent.Type.FontChange and hasattr(self, "panes"):
+            self._dress()
         if event.type() == QEvent.Type.PaletteChange and hasattr(self, "status"):
             theme = theme_for(self.palette())
             if theme != self._theme:

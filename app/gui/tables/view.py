@@ -6,7 +6,7 @@ can be empty, Escape restores.
 
 from __future__ import annotations
 
-from PySide6.QtCore import QItemSelection, QItemSelectionModel, QModelIndex, Qt, Signal
+from PySide6.QtCore import QEvent, QItemSelection, QItemSelectionModel, QModelIndex, QSize, Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
@@ -28,6 +28,7 @@ from app.gui.theme import Theme
 from app.words import tr
 
 ROW_HEIGHT = 26
+LEAST_ROWS = 2  # in sight, however small the window
 ONE_BY_ONE = ("mark", "name")  # columns of what no two records can share
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
@@ -76,13 +77,30 @@ class TableView(QTableView):
         rows = self.verticalHeader()
         rows.setVisible(self.grips is not None)
         rows.setMinimumSectionSize(24)
-        rows.setDefaultSectionSize(max(ROW_HEIGHT, self.fontMetrics().height() + 10))
+        self._fit_rows()
         head = self.horizontalHeader()
         head.setHighlightSections(False)
         head.setSectionsClickable(False)
         head.setSectionResizeMode(QHeaderView.ResizeMode.Fixed)
         head.setMinimumSectionSize(40)
         head.setDefaultAlignment(Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)
+
+    def _fit_rows(self) -> None:
+        """Rows as high as the font needs."""
+        self.verticalHeader().setDefaultSectionSize(max(ROW_HEIGHT, self.fontMetrics().height() + 10))
+
+    def minimumSizeHint(self) -> QSize:
+        """The headings and a few rows, in any font."""
+        rows = LEAST_ROWS * self.verticalHeader().defaultSectionSize()
+        height = self.horizontalHeader().sizeHint().height() + rows
+        return QSize(super().minimumSizeHint().width(), height)
+
+    def changeEvent(self, event: QEvent) -> None:
+        """Follow the font."""
+        super().changeEvent(event)
+        if event.type() == QEvent.Type.FontChange and hasattr(self, "widths"):
+            self._fit_rows()
+            self.widths.share()
 
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""
