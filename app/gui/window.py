@@ -363,7 +363,7 @@ class Window(QMainWindow):
         self.panes.dress(style)
 
     def changeEvent(self, event: QEvent) -> None:
-        """Follow the system between light and dark, and its font, which style sheets hold fast until set anew."""
+        """Follow the system between light and dark, and its font, which style sheets hold fast."""
         super().changeEvent(event)
         if event.type() == QEvent.Type.FontChange and hasattr(self, "panes"):
             self._dress()
