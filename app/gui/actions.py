@@ -197,6 +197,6 @@ def command_keys() -> tuple[tuple[str, str], ...]:
 
 def keyboard_text(key: QKeySequence) -> str:
     """The key as it is written; empty for one of old workstations or media keyboards, which Qt lists too."""
-    text = key.toString(QKeySequence.SequenceFormat.NativeText)
-    last = text.split("+")[-1]
-    return text if re.fullmatch(r".?|F[1-9]|F1[0-2]|Ins|Del|Backspace|Up|Down", last) else ""
+    last = key.toString(QKeySequence.SequenceFormat.PortableText).split("+")[-1]
+    known = re.fullmatch(r".?|F[1-9]|F1[0-2]|Ins|Del|Backspace|Up|Down", last)
+    return key.toString(QKeySequence.SequenceFormat.NativeText) if known else ""

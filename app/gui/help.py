@@ -17,31 +17,31 @@ if TYPE_CHECKING:
 
 SHEET_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("← →", later("Move the cursor along the member (↑ ↓ where it is upright)")),
-    ("Ctrl+← Ctrl+→", later("Cursor to the next joint")),
-    ("Home, End", later("Cursor to the first or last joint")),
-    ("Space", later("Select the segment under the cursor")),
+    (later("Ctrl+← Ctrl+→"), later("Cursor to the next joint")),
+    (later("Home, End"), later("Cursor to the first or last joint")),
+    (later("Space"), later("Select the segment under the cursor")),
     ("+ −", later("Zoom in and out")),
     ("0", later("Show the whole member")),
 )
 TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
-    ("Enter, Shift+Enter", later("Take in what is typed, one cell down or up")),
-    ("Tab, Shift+Tab", later("The next cell or the one before, and out of the table at its ends")),
+    (later("Enter, Shift+Enter"), later("Take in what is typed, one cell down or up")),
+    (later("Tab, Shift+Tab"), later("The next cell or the one before, and out of the table at its ends")),
     ("F2", later("Edit the cell")),
     ("Home, End", later("The first or last cell of the row")),
     ("Ctrl+← → ↑ ↓ Home End", later("To the edge of the table")),
     ("Shift+← → ↑ ↓", later("Choose cells")),
     ("↓ ↑", later("While a cell is edited: go through the names that it offers")),
-    ("Ctrl+Enter", later("Take in what is typed, in all chosen cells of the column")),
+    (later("Ctrl+Enter"), later("Take in what is typed, in all chosen cells of the column")),
     (
         "Alt+↑, Alt+↓",
         later("Run the cell's number up or down, with Shift in larger steps; Ctrl and the wheel too"),
     ),
     ("Esc", later("Leave the cell as it was")),
-    ("Delete", later("Clear cells")),
-    ("Ctrl+1 … Ctrl+6", later("A table; once more: the next one beside it")),
+    (later("Delete"), later("Clear cells")),
+    (later("Ctrl+1 … Ctrl+6"), later("A table; once more: the next one beside it")),
 )
 FINDINGS_KEYS: Final[tuple[tuple[str, str], ...]] = (
-    ("Tab, Shift+Tab", later("The next finding or the one before")),
+    (later("Tab, Shift+Tab"), later("The next finding or the one before")),
     ("Enter", later("Show the finding's place in the sheet")),
 )
 
@@ -56,7 +56,7 @@ def key_groups() -> tuple[KeyGroup, ...]:
         (tr("In the tables"), TABLE_KEYS),
         (tr("In the findings"), FINDINGS_KEYS),
     )
-    own = tuple((title, tuple((key, tr(words)) for key, words in keys)) for title, keys in panes)
+    own = tuple((title, tuple((tr(key), tr(words)) for key, words in keys)) for title, keys in panes)
     return ((tr("Everywhere"), command_keys()), *own)
 
 

@@ -7,12 +7,13 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QAbstractButton, QLabel
 
 from app.gui import main, settings
+from app.gui.actions import command_keys
 from app.gui.settings import Settings
 from app.gui.title_block import TitleBlockDialog
-from app.words import language, use_language
+from app.words import LANGUAGES, language, use_language
 from tests.gui.hand import chord, editor, enter, go_to, text_at
 from tests.gui.test_main import run_and_look
-from tests.gui.windows import dialog_of
+from tests.gui.windows import dialog_of, end
 
 
 @pytest.fixture
@@ -132,3 +133,28 @@ def test_the_program_starts_in_the_language_asked_for_else_chosen_else_the_syste
     assert seen.startswith(title)
     store.set_language("")
     store.sync()
+
+
+@pytest.mark.parametrize("code", LANGUAGES)
+def test_the_top_bar_fits_the_smallest_window(qtbot, store, rod, tmp_path, code):
+    """Also with a reference, and while a name is asked for one: longer words must not widen the window."""
+    use_language(code)
+    try:
+        made = main.open_window(rod, store, tmp_path / "recovery")
+    finally:
+        use_language("en")
+    made.against.show_references(("Before 1",), "Before 1")
+    widths = [made.top_bar.minimumSizeHint().width()]
+    made.against.ask("Before 2")
+    widths.append(made.top_bar.minimumSizeHint().width())
+    end(qtbot, made)
+    assert max(widths) <= 1280
+
+
+def test_keys_are_called_as_on_the_keyboard(german, qapp):
+    """With Qt's words for them, and none is lost that English has."""
+    english = [keys.split(", ") for keys, _words in command_keys()]
+    main.speak(qapp)
+    keys = [keys.split(", ") for keys, _words in command_keys()]
+    assert list(map(len, keys)) == list(map(len, english))
+    assert ["Strg+Entf"] in keys
