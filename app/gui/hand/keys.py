@@ -24,11 +24,11 @@ ARROWS: Final = {
 }
 
 HAND_KEYS: Final[tuple[tuple[str, str], ...]] = (
-    ("H, Shift+H", later("Take the next or previous handle of what is selected in hand")),
+    (later("H, Shift+H"), later("Take the next or previous handle of what is selected in hand")),
     ("Alt+← → ↑ ↓", later("Nudge the handle in hand by a step, or the selected segment's length and size")),
-    ("Alt+Shift+← → ↑ ↓", later("Nudge by ten steps")),
+    (later("Alt+Shift+← → ↑ ↓"), later("Nudge by ten steps")),
     ("0 … 9", later("While or after something is dragged or nudged: type its exact value, Enter takes it")),
-    ("Shift", later("While a joint is dragged: the total stays, the next segment gives")),
-    ("Ctrl", later("While something is dragged: free of the round steps")),
+    (later("Shift"), later("While a joint is dragged: the total stays, the next segment gives")),
+    (later("Ctrl"), later("While something is dragged: free of the round steps")),
     ("Esc", later("While something is dragged or typed: as it was before")),
 )
