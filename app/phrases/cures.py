@@ -5,14 +5,14 @@ Only what a solve of the changed member has shown is said.
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Mapping
 from typing import Final
 
 from app.cures import Change, Cure, Cures
 from app.findings.listing import listed
 from app.findings.subjects import Subject, SubjectKind, subject_of
 from app.units import utilisation_text
-from app.words import later, tr
+from app.words import later, tr, trn
 from solver.checks import Check
 
 # A change elsewhere than in the section of the segment that does not pass.
@@ -58,21 +58,24 @@ def cures_sentences(cures: Cures) -> tuple[str, ...]:
 
 
 def _reservations(cure: Cure) -> Iterator[str]:
-    if cure.fails_then:
-        one = tr("then {subjects} does not pass, {utilisation}")
-        yield _failing(cure.fails_then, one, tr("then these do not pass: {subjects}"))
-    if cure.still_fails:
-        one = tr("{subjects} still does not pass, {utilisation}")
-        yield _failing(cure.still_fails, one, tr("these still do not pass: {subjects}"))
+    """What fails only then is named; of what fails as before, which is listed anyway, how much it is."""
+    if len(cure.fails_then) == 1:
+        yield _one(tr("then {subject} does not pass, {utilisation}"), cure.fails_then[0])
+    elif cure.fails_then:
+        names = [subject_words(subject_of(check)) for check in cure.fails_then]
+        yield tr("then these do not pass: {subjects}").format(subjects=listed(names))
+    if len(cure.still_fails) == 1:
+        yield _one(tr("{subject} still does not pass, {utilisation}"), cure.still_fails[0])
+    elif cure.still_fails:
+        count = len(cure.still_fails)
+        yield trn("{count} other still does not pass", "{count} others still do not pass", count)
     if cure.unchecked_then:
         names = list(dict.fromkeys(subject_words(subject_of(check)) for check in cure.unchecked_then))
         yield tr("then not checked: {subjects}").format(subjects=listed(names))
 
 
-def _failing(checks: Sequence[Check], one: str, many: str) -> str:
-    names = [subject_words(subject_of(check)) for check in checks]
-    template = one if len(checks) == 1 else many
-    return template.format(subjects=listed(names), utilisation=_utilisation(checks[0]))
+def _one(template: str, check: Check) -> str:
+    return template.format(subject=subject_words(subject_of(check)), utilisation=_utilisation(check))
 
 
 def _utilisation(check: Check) -> str:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 from fractions import Fraction
 
 import pytest
@@ -249,3 +250,16 @@ def test_whatever_is_said_holds_when_it_is_typed(project):
             assert told == set(failing(fresh))
             assert math.isfinite(cure.worst.utilisation)
             assert cure_sentence(cure)
+
+
+def test_many_that_fail_anyway_are_counted_and_new_ones_named():
+    project = read_sample("tie_rod")
+    weak = tuple(structs.replace(material, allowable_tension=9e7) for material in project.materials)
+    results = solve(structs.replace(project, materials=weak), cases=False)
+    subjects = failing(results)
+    (cure,) = seek(results, Subject("stress", ("D",))).found
+    assert len(cure.still_fails) == len(subjects) - 1
+    assert cure_sentence(cure).endswith(f"; {len(subjects) - 1} others still do not pass")
+    two = replace(cure, fails_then=cure.still_fails[:2], still_fails=())
+    names = ", ".join(str(check.segment) for check in two.fails_then)
+    assert cure_sentence(two).endswith(f"; then these do not pass: {names}")
