@@ -97,22 +97,24 @@ def section_wishes(sketch: Sketch) -> list[Wish]:
 
 
 def level_texts(sketch: Sketch) -> list[str]:
-    """The position of every joint as a level."""
+    """The position of every joint as a level above the first, which is the datum."""
     texts = []
     for x in sketch.member.position:
         text = format_value(x, "length", sketch.member.system, strip=True)
-        texts.append(f"+{text}" if x > 0 else text)
+        texts.append(f"+{text}" if x > 0 else f"±{text}")
     return texts
 
 
 def draw_levels(sketch: Sketch, column: float) -> None:
     """A triangle standing on each joint's line, its level beside it, from the pixel `column`."""
     left, wishes = column + 4.0, []
+    ends = (0, len(sketch.member.position) - 1)  # these are written whatever else has no room
     for joint, text in enumerate(level_texts(sketch)):
         if sketch.holds(joint):
             width, height = sketch.frame.measure(text, "small")
             middle = sketch.along(joint) - 0.5 * height
-            wishes.append(Wish(text, middle, height, width, Part("joint", joint)))
+            rank = 0 if joint in ends else 1
+            wishes.append(Wish(text, middle, height, width, Part("joint", joint), rank))
     for label in place(wishes, 1, sketch.room, TIGHT):
         foot = label.span[1]
         first = left + LEVEL_GAP

@@ -111,7 +111,7 @@ def _across(
 ) -> SheetLayout:
     left, right = 7.2 * text_height, 5.2 * text_height
     begin, end = left, max(width - right, left + 50.0)
-    drawing_height = min(max(0.40 * height, 11.0 * text_height), 26.0 * text_height)
+    drawing_height = min(max(0.45 * height, 11.0 * text_height), 28.0 * text_height)
     drawing_height = min(drawing_height, height - 4 * (LEAST_STRIP * text_height + GAP))
     drawing = QRectF(0.0, 4.0, width, drawing_height)
     spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS, kinds)

@@ -13,6 +13,7 @@ from app.drawing.shapes import Box, Part, Picture, Stroke, Text
 from app.drawing.tips import tip
 from app.samples import names, read_sample
 from app.shown import Shown
+from app.units import format_value
 from solver.model import Project
 from solver.sections import outline
 from tests.app.drawing.frames import SIZES, window_frame
@@ -110,6 +111,23 @@ class TestScale:
             next(s for s in shown.strokes if s.part == Part("segment", i) and s.closed) for i in (0, 4)
         )
         assert around(first).bottom > around(last).bottom
+
+
+class TestLevels:
+    @BOTH_SIZES
+    def test_datum_and_top_are_written_however_many_joints_there_are(self, size):
+        member = drawn(busy_member(40))
+        shown = picture(busy_member(40), upright=True, size=size)
+        levels = {t.text for t in shown.texts if t.part is not None and t.part.kind == "joint"}
+        assert {"±0", f"+{format_value(member.position[-1], 'length', member.system, strip=True)}"} <= levels
+
+    def test_each_is_on_the_line_of_its_joint(self):
+        member = drawn(read_sample("quay_pile"))
+        frame = window_frame(member, SIZES[1], upright=True)
+        shown = lay_out(member, frame)
+        for text in shown.texts:
+            if text.part is not None and text.part.kind == "joint":
+                assert text.box.bottom == pytest.approx(frame.ruler.pixel(member.position[text.part.index]))
 
 
 class TestNotToScale:
