@@ -28,6 +28,7 @@ class Detail(Struct, frozen=True):
     levels: bool = True  # upright, beside the drawing
     explained: bool = False  # marks of joints, brackets under labels: where nothing can be pointed at
     factor: bool = True  # whether the drawing itself says how it is stretched
+    least_half: float = 20.0  # of the thickest section, before labels of loads give way, px
     hollow: bool = False  # bodies without their fill, where results colour them
     words: str = ""  # more to be said of the drawing
     legend: tuple[float, float] = (0.0, 0.0)  # room for a scale of colours, px

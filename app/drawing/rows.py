@@ -23,8 +23,7 @@ BAND = 17.0  # distributed loads at their largest, px
 BRACKET = 7.0  # a row of brackets and the gap under it
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
-LEAST_HALF = 20.0  # of the thickest section, before labels of loads give way, px
-THINNEST = 10.0  # before lengths and sections do
+THINNEST = 10.0  # of the thickest section, before lengths and sections give way, px
 EDGE = 10.0  # upright, between sections and the edge of the sheet
 BEDDING = 6.0  # for the hatch along the member
 BESIDE = 6.0  # between labels of hanging supports and lengths
@@ -65,7 +64,7 @@ def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
     """As many rows of labels as leave the member enough of the room across."""
     for most in range(sketch.frame.detail.load_rows, 0, -1):
         rows = _rows_with(sketch, wishes, room, most)
-        if rows.half >= (LEAST_HALF if most > 1 else THINNEST):
+        if rows.half >= (sketch.frame.detail.least_half if most > 1 else THINNEST):
             return rows
     return _rows_with(sketch, wishes, room, 0)
 

@@ -32,7 +32,9 @@ _ACROSS, _UPRIGHT, _SMALL = 386.0 / POINT, 300.0 / POINT, 190.0 / POINT  # drawn
 _MARK, _WIDEST_MARK = 12.0, 80.0  # size and width of the longest mark
 _BEYOND = 76.0  # room beyond the member's ends
 _LEAST_HALF, _MOST_HALF, _SMALL_HALF = 11.0 / POINT, 34.0 / POINT, 20.0 / POINT
-_WHOLE = Detail(load_rows=8, text_rows=5, column=1.0, levels=False, explained=True, factor=False)
+_WHOLE = Detail(
+    load_rows=8, text_rows=5, column=1.0, levels=False, explained=True, factor=False, least_half=0.0
+)
 _LOADS_ONLY = replace(_WHOLE, dimensions=False)
 
 

@@ -8,6 +8,7 @@ import numpy as np
 
 from app.allowable_lines import allowable_lines, allowable_texts, over_least
 from app.drawing.ruler import Ruler as Positions
+from app.drawing.words import not_to_scale
 from app.sheet.colours import QUIET
 from app.sheet.limit_labels import Limit
 from app.sheet.member_figure import Figure
@@ -120,7 +121,16 @@ def _figure(results: Results, strips: list[Strip], title: str) -> Figure:
         draw_strip(canvas, ruler, strip, start, depth, results.position, units)
         place += depth + _GAP + (10.0 if upright else 0.0)
     _draw_places(canvas, ruler, results, place)
+    _say_scale(canvas, ruler, results, place)
     return Figure(canvas.render(title), *canvas.size, title)
+
+
+def _say_scale(canvas: Canvas, ruler: Ruler, results: Results, place: float) -> None:
+    """Which segments are wider than to scale, under the strips."""
+    text = not_to_scale([results.project.segments[index].mark for index in ruler.positions.widened])
+    if text:
+        x, y = ruler.point(-14.0, 0.0) if ruler.upright else ruler.point(0.0, -place - 12.0)
+        canvas.text((x, y + 2.5), text, size=_SIZE, fill=QUIET)
 
 
 def _draw_places(canvas: Canvas, ruler: Ruler, results: Results, place: float) -> None:

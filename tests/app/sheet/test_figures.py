@@ -62,6 +62,7 @@ def test_what_is_not_to_scale_is_named_under_the_drawing() -> None:
     results = solve(uneven_member())
     note = member_figure(results.project, results.position).note
     assert "S0, S2, S4, S5 and 3 others: not to scale along." in note
+    assert "S0, S2, S4, S5 and 3 others: not to scale along" in texts(state_figure(results, 0))
 
 
 def test_a_curve_that_ends_at_a_joint_and_changes_sign_elsewhere_is_drawn_whole() -> None:
