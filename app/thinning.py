@@ -16,6 +16,7 @@ from solver.arrays import BoolArray, FloatArray, IntArray
 MOST: Final = 4  # points of a column of pixels that are drawn as they are
 STRAIGHT: Final = 0.03  # pixels across the axis that a point left out may lie off the line, in each pass
 PASSES: Final = 6
+FEW: Final = 40  # points that are painted as fast as they are thinned
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,7 +44,7 @@ def thinned(chain: Chain, along: FloatArray, across: FloatArray) -> Chain:
     if len(chain.index) <= 2:
         return chain
     found = _by_columns(chain, along, across)
-    for _ in range(PASSES):
+    for _ in range(PASSES if len(found.index) > FEW else 0):
         fewer = _without_straight(found, along[found.index], across[found.index])
         if 8 * len(fewer.index) > 7 * len(found.index):  # hardly any left to take out
             return fewer

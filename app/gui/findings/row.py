@@ -37,11 +37,14 @@ class FindingRow(QAbstractButton):
 
     def show_row(self, row: Row) -> None:
         """Say something else; what leads nowhere cannot be chosen."""
-        self._row = row
+        before, self._row = self._row, row
+        if row == before:
+            return
         self.setAccessibleName(row.spoken)
         leads = row.leads_somewhere
-        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
-        self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
+        if before is None or leads != before.leads_somewhere:
+            self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
+            self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
         self._fit_height()
         self.update()
 
@@ -99,7 +102,9 @@ class FindingRow(QAbstractButton):
 
     def _fit_height(self) -> None:
         """Set the height itself: box layouts keep heights for width that they were told before a resize."""
-        self.setFixedHeight(self.needed_height(self.width()))
+        needed = self.needed_height(self.width())
+        if needed != self.minimumHeight():
+            self.setFixedHeight(needed)
 
     def sizeHint(self) -> QSize:
         """Any width, the height that was set."""
