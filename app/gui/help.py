@@ -19,7 +19,16 @@ SHEET_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ("← →", later("Move the cursor along the member (↑ ↓ where it is upright)")),
     (later("Ctrl+← Ctrl+→"), later("Cursor to the next joint")),
     (later("Home, End"), later("Cursor to the first or last joint")),
-    (later("Space"), later("Select the segment under the cursor")),
+    (later("Space"), later("Select the joint or segment at the cursor")),
+    (later("Shift+← →, Ctrl+Shift+← →"), later("Select the segments that the cursor goes over")),
+    (later("Ctrl+A"), later("Select all")),
+    (later("F2, Enter"), later("Type what is selected in place; Tab goes on to its next cell")),
+    (
+        later("F S R V L D T K B G"),
+        later("Put a symbol on what is selected, or take it in hand: its letter is in the tip"),
+    ),
+    (later("Shift+F10"), later("The menu of what is selected")),
+    (later("Delete"), later("Delete the selected segments, or take the supports of joints off")),
     ("+ −", later("Zoom in and out")),
     ("0", later("Show the whole member")),
 )

@@ -148,6 +148,7 @@ class Window(QMainWindow):
             self,
         )
         self.symbols.chosen.connect(self.placing.choose)
+        self.placing.delete_asked.connect(self.edits.delete_segments)
         self.placing.kind_changed.connect(self.symbols.show_chosen)
 
     def _handlers(self) -> dict[str, Callable[[], None]]:

@@ -11,6 +11,7 @@ from PySide6.QtWidgets import QApplication
 from app.gui.view import Selection, Shown
 from app.hand.kinds import KINDS
 from solver.model import FixedSupport, SpringSupport
+from tests.gui.test_sheet_view import move_mouse
 from tests.gui.windows import solved
 
 LEFT = Qt.MouseButton.LeftButton
@@ -230,3 +231,27 @@ def test_the_menu_opens_by_key_on_the_selection_and_on_paper(window):
     entry(menu, "Select all").trigger()
     menu.close()
     assert len(window.view.selection.segments) == len(window.document.project.segments)
+
+
+def test_delete_takes_segments_out_and_supports_off(window):
+    window.sheet.setFocus()
+    held = next(i for i, j in enumerate(window.document.project.joints) if j.support is not UNSET)
+    window.view.set_selection(Selection(joints=frozenset((held,))))
+    QTest.keyClick(window.sheet, Qt.Key.Key_Delete)
+    assert window.document.project.joints[held].support is UNSET
+    count = len(window.document.project.segments)
+    window.view.set_selection(Selection(segments=frozenset((2, 3))))
+    QTest.keyClick(window.sheet, Qt.Key.Key_Delete)
+    assert len(window.document.project.segments) == count - 2
+
+
+def test_a_symbol_in_the_hand_comes_before_what_could_be_pulled(window):
+    """A joint is also a handle: a click with the symbol, and a small slip of the hand, only puts it on."""
+    lengths = [segment.length for segment in window.document.project.segments]
+    press(window, "fixed")
+    viewport, at = window.sheet.viewport(), joint_at(window, 4)
+    QTest.mousePress(viewport, LEFT, pos=at)
+    move_mouse(window.sheet, at + QPoint(14, 0), LEFT)
+    QTest.mouseRelease(viewport, LEFT, pos=at + QPoint(4, 0))
+    assert window.document.project.joints[4].support == FixedSupport()
+    assert [segment.length for segment in window.document.project.segments] == lengths

@@ -24,6 +24,7 @@ from app.words import later, tr
 from solver.model import Project
 
 LETTERS = {kind.letter: kind for kind in KINDS}
+FREE = next(kind for kind in KINDS if kind.key == "free")
 HINTS = {
     "joint": later("{name}: click a joint, Escape puts it down"),
     "segment": later("{name}: click a segment, Escape puts it down"),
@@ -35,6 +36,7 @@ class Placing(QObject):
 
     told = Signal(str)
     kind_changed = Signal(object)  # Kind or None
+    delete_asked = Signal()  # of the selected segments
 
     def __init__(
         self,
@@ -84,9 +86,16 @@ class Placing(QObject):
             self._sheet.viewport().unsetCursor()
             self.told.emit("")
         else:
+            self._listen_first()
             self._sheet.viewport().setCursor(Qt.CursorShape.CrossCursor)
             self._sheet.setFocus(Qt.FocusReason.OtherFocusReason)
             self.told.emit(tr(HINTS[kind.on]).format(name=tr(kind.name)))
+
+    def _listen_first(self) -> None:
+        """Hear the mouse before whoever pulls and selects: the symbol in the hand comes first."""
+        viewport = self._sheet.viewport()
+        viewport.removeEventFilter(self)
+        viewport.installEventFilter(self)
 
     # Putting on and taking off
 
@@ -140,6 +149,16 @@ class Placing(QObject):
         else:
             self._document.commit(project, tr("Take off: {what}").format(what=tr(kind.name)))
 
+    def _delete(self) -> None:
+        """The selected segments with their loads; of joints, where no segment is selected, the supports."""
+        chosen = self._view.selection
+        if chosen.segments:
+            self.delete_asked.emit()
+        elif chosen.joints:
+            self.put(FREE, tuple(sorted(chosen.joints)))
+        else:
+            self.told.emit(tr("select segments to delete first, or joints to take their supports off"))
+
     # Mouse and keys
 
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
@@ -153,6 +172,9 @@ class Placing(QObject):
     def _on_key(self, event: QKeyEvent) -> bool:
         if event.key() == Qt.Key.Key_Escape and self._kind is not None:
             self.take(None)
+            return True
+        if event.key() in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace) and not event.modifiers():
+            self._delete()
             return True
         kind = LETTERS.get(event.text().upper()) if event.text() else None
         held = Qt.KeyboardModifier.ControlModifier | Qt.KeyboardModifier.AltModifier
