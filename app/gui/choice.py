@@ -6,8 +6,10 @@ Scrolling over the window must never edit: not the units, and not the load case 
 from __future__ import annotations
 
 from PySide6.QtCore import Qt, Signal
-from PySide6.QtGui import QKeyEvent, QWheelEvent
+from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QPen, QWheelEvent
 from PySide6.QtWidgets import QComboBox, QWidget
+
+from app.gui.theme import colour, theme_for
 
 
 class Choice(QComboBox):
@@ -32,3 +34,11 @@ class Choice(QComboBox):
             self.left.emit()
         else:
             super().keyPressEvent(event)
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        """A frame where the keyboard is: under a style sheet the system's own is not drawn."""
+        super().paintEvent(event)
+        if self.hasFocus():
+            painter = QPainter(self)
+            painter.setPen(QPen(colour(theme_for(self.palette()).select), 2))
+            painter.drawRect(self.rect().adjusted(1, 1, -1, -1))

@@ -7,6 +7,7 @@ from typing import Any, Final
 
 from PySide6.QtCore import QEvent, QTimer, QUrl, Signal
 from PySide6.QtGui import (
+    QFocusEvent,
     QFont,
     QPalette,
     QResizeEvent,
@@ -17,7 +18,7 @@ from PySide6.QtGui import (
     QTextDocument,
     QTextFrameFormat,
 )
-from PySide6.QtWidgets import QFrame, QTextBrowser, QTextEdit, QWidget
+from PySide6.QtWidgets import QApplication, QFrame, QTextBrowser, QTextEdit, QWidget
 
 from app.gui.help_pictures import Pictures
 from app.gui.help_words import fillers, keys_page
@@ -54,7 +55,8 @@ class HelpPage(QTextBrowser):
         self._late.setInterval(SETTLE)
         self._late.timeout.connect(self.renew)
         self.setOpenLinks(False)
-        self.setFrameShape(QFrame.Shape.NoFrame)
+        self.setFrameStyle(QFrame.Shape.Box.value | QFrame.Shadow.Plain.value)
+        self.setLineWidth(2)  # seen where the keyboard is here
         self.setLineWrapMode(QTextEdit.LineWrapMode.FixedPixelWidth)
         self.document().setDocumentMargin(16)
         self.anchorClicked.connect(self.on_link)
@@ -96,13 +98,15 @@ class HelpPage(QTextBrowser):
     # How it looks
 
     def _dress(self) -> None:
-        theme = theme_for(self.palette())
+        """The colours of a page; its frame shows where the keyboard is."""
+        self._theme = theme_for(QApplication.palette())  # its own has the colours of its frame
         palette = QPalette(self.palette())
         for role, name in (
-            (QPalette.ColorRole.Base, theme.card),
-            (QPalette.ColorRole.Text, theme.ink),
-            (QPalette.ColorRole.Link, theme.select),
-            (QPalette.ColorRole.LinkVisited, theme.select),
+            (QPalette.ColorRole.Base, self._theme.card),
+            (QPalette.ColorRole.Text, self._theme.ink),
+            (QPalette.ColorRole.Link, self._theme.select),
+            (QPalette.ColorRole.LinkVisited, self._theme.select),
+            (QPalette.ColorRole.WindowText, self._theme.select if self.hasFocus() else self._theme.card),
         ):
             palette.setColor(role, colour(name))
         if palette != self.palette():
@@ -136,14 +140,14 @@ class HelpPage(QTextBrowser):
     def _caption_text(self) -> QTextCharFormat:
         made = QTextCharFormat()
         made.setFontPointSize(0.9 * max(self.font().pointSizeF(), 1.0))
-        made.setForeground(colour(theme_for(self.palette()).quiet))
+        made.setForeground(colour(self._theme.quiet))
         return made
 
     def _draw_tables(self) -> None:
         for frame in self.document().rootFrame().childFrames():
             shape = frame.frameFormat()
             shape.setBorderStyle(QTextFrameFormat.BorderStyle.BorderStyle_Solid)
-            shape.setBorderBrush(colour(theme_for(self.palette()).edge))
+            shape.setBorderBrush(colour(self._theme.edge))
             shape.setTopMargin(0.3 * self.fontMetrics().height())
             shape.setBottomMargin(0.6 * self.fontMetrics().height())
             frame.setFrameFormat(shape)
@@ -151,7 +155,7 @@ class HelpPage(QTextBrowser):
     def _colour_links(self) -> None:
         """Markdown took the colour of links from the application, not from the page."""
         made = QTextCharFormat()
-        made.setForeground(colour(theme_for(self.palette()).select))
+        made.setForeground(colour(self._theme.select))
         cursor, block = QTextCursor(self.document()), self.document().begin()
         while block.isValid():
             for place, length in _links(block):
@@ -201,11 +205,24 @@ class HelpPage(QTextBrowser):
             self.setLineWrapColumnOrWidth(self._room())
             self._late.start()
 
+    def focusInEvent(self, event: QFocusEvent) -> None:
+        """The frame is seen."""
+        super().focusInEvent(event)
+        self._dress()
+
+    def focusOutEvent(self, event: QFocusEvent) -> None:
+        """It is not any more."""
+        super().focusOutEvent(event)
+        self._dress()
+
     def changeEvent(self, event: QEvent) -> None:
         """Follow the palette and the font."""
         super().changeEvent(event)
-        if event.type() in (QEvent.Type.PaletteChange, QEvent.Type.FontChange) and hasattr(self, "_late"):
-            self._dress()
+        if not hasattr(self, "_theme"):
+            return
+        before = self._theme
+        self._dress()
+        if event.type() == QEvent.Type.FontChange or self._theme != before:
             self._late.start(0)
 
 

@@ -77,6 +77,7 @@ class SheetView(QGraphicsView):
         self.setMouseTracking(True)
         self._set_least_size()
         self.setAccessibleName(tr("Sheet: drawing and strips"))
+        self.viewport().setAccessibleName(self.accessibleName())
 
     def _set_least_size(self) -> None:
         """As small as its texts can still be read, but never so large as to push all else off a screen."""

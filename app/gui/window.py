@@ -48,6 +48,7 @@ from app.gui.printing import Printing
 from app.gui.recovery import Recovery
 from app.gui.settings import Settings
 from app.gui.sheet_view import SheetView
+from app.gui.sheet_voice import SheetVoice
 from app.gui.show import Showing
 from app.gui.status_line import StatusLine
 from app.gui.strips.hand import StripHand
@@ -93,6 +94,7 @@ class Window(QMainWindow):
         self.tables = TablesPane(self.document, self.view, self._theme)
         self.status = StatusLine()
         self.showing = Showing(self.document, self.view, self.sheet, self.findings, self.tables, self.status)
+        self.voice = SheetVoice(self.sheet, self.findings, self.showing, self.document, self.view)
         commit = self.tables.commit_open_editor
         self.files = Files(self, self.document, self.store, commit)
         self.printing = Printing(self, self.document, self.store, commit)

@@ -118,7 +118,7 @@ class TableModel(RowsModel):
         return draft.reason if draft is not None else ""
 
     def _spoken(self, index: Index) -> str:
-        text, error = self._display(index), self._error(index)
+        text, error = self._display(index) or tr("empty"), self._error(index)
         return tr("{text}, not taken in: {reason}").format(text=text, reason=error) if error else text
 
     def _tip(self, index: Index) -> str | None:
