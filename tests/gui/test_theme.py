@@ -49,6 +49,32 @@ def test_labels_on_the_member_can_be_read(theme: Theme):
         assert contrast(theme.ink, getattr(theme, fill)) >= 4.5, fill
 
 
+# Where else a colour stands on another: who paints it so, what, on which ground, and how much it needs.
+PAIRS = {
+    "cell of a chosen row": ("ink", "select_fill", 4.5),
+    "figure or hint of a chosen row": ("quiet", "select_fill", 4.5),
+    "entry not taken in, in a chosen row": ("over", "select_fill", 4.5),
+    "the ! beside it": ("card", "over", 4.5),
+    "name of the tab with the keyboard, link of help": ("select", "card", 4.5),
+    "frame of the current cell, of a picker": ("select", "select_fill", 3.0),
+    "frame in the top bar": ("select", "panel", 3.0),
+    "bar of utilisation, tension": ("tension", "body_fill", 3.0),
+    "bar of utilisation, compression": ("compression", "body_fill", 3.0),
+    "bar of utilisation, over": ("over", "body_fill", 3.0),
+    "bar of utilisation, out of date": ("quiet", "body_fill", 3.0),
+    "bar of utilisation in a chosen row": ("compression", "select_fill", 3.0),
+    "hatching over the limit": ("over", "over_fill", 3.0),
+    "joint lines across the member": ("joint", "body_fill", 3.0),
+}
+
+
+@pytest.mark.parametrize("theme", [LIGHT, DARK])
+@pytest.mark.parametrize("where", PAIRS)
+def test_what_stands_on_other_grounds_can_be_seen(theme: Theme, where: str):
+    mark, ground, least = PAIRS[where]
+    assert contrast(getattr(theme, mark), getattr(theme, ground)) >= least
+
+
 def test_the_palette_decides():
     dark = QPalette()
     dark.setColor(QPalette.ColorRole.Window, QColor("#202020"))
