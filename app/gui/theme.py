@@ -53,7 +53,7 @@ def _theme(paper: str, panel: str, card: str, inks: dict[str, str]) -> Theme:
         compression_fill=mixed(inks["compression"], paper, 0.17),
         over_fill=mixed(inks["over"], paper, 0.12),
         body_fill=mixed(inks["quiet"], paper, 0.14),
-        select_fill=mixed(inks["select"], paper, 0.1),
+        select_fill=mixed(inks["select"], paper, 0.09),
         band_fill=mixed(inks["quiet"], paper, 0.05),
         load_fill=mixed(inks["quiet"], paper, 0.22),
     )
