@@ -76,7 +76,7 @@ def test_the_window_draws_them_and_names_the_nearest(window):
     window.view.set_together(True)
     strip = window.sheet.strips[1]
     assert len(thin(strip)) == len(strip.content.singles) > 1
-    assert "thin: single states" in [label.text for label in window.sheet.strips[0].labels]
+    assert "thin: states" in [label.text for label in window.sheet.strips[0].labels]
     for corner in (strip.place.rect.topLeft(), strip.place.rect.center()):  # it may be there already
         QTest.mouseMove(window.sheet.viewport(), corner.toPoint())
     assert "nearest in N: " in window.sheet.readout

@@ -79,7 +79,7 @@ class Company:
             words = tr("dashed: {name}") if self.earlier.values else tr("{name}: no state of this name")
             parts.append(words.format(name=self.earlier.name))
         if self.beside is not None:
-            parts.append(tr("dotted: envelope") if self.beside.is_envelope else tr("thin: single states"))
+            parts.append(tr("dotted: envelope") if self.beside.is_envelope else tr("thin: states"))
         return " · ".join(parts)
 
 
