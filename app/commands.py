@@ -120,12 +120,13 @@ MOST_CURED = 8  # findings, the worst first; a member in which more fail wants a
 
 def check_text(file: str, *, cures: bool = True) -> Outcome:
     """The check as a table to read, with what would make the worst failing checks pass."""
-    from app.cures import failing, seek
+    from app.cures import failing, is_small, seek
     from app.outcome import Outcome
     from app.terminal import report
 
     project, results = solved(file)
-    cured = [seek(results, subject) for subject in failing(results)[:MOST_CURED]] if cures else []
+    subjects = failing(results)[:MOST_CURED] if cures and is_small(results) else ()
+    cured = [seek(results, subject) for subject in subjects]
     return Outcome(verdict_code(results), shown(report(project, results, file, cured)))
 
 

@@ -7,6 +7,6 @@ else fails in that very solve is told with it. A limit or an allowable is never 
 """
 
 from app.cures.changes import Change
-from app.cures.seek import Cure, Cures, failing, seek
+from app.cures.seek import Cure, Cures, failing, is_small, seek
 
-__all__ = ["Change", "Cure", "Cures", "failing", "seek"]
+__all__ = ["Change", "Cure", "Cures", "failing", "is_small", "seek"]

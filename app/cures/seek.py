@@ -27,6 +27,7 @@ from solver.solve import solve
 MOST_SPRINGS: Final = 3
 MOST_SECTIONS: Final = 3
 MOST_CURES: Final = 2
+MOST_CHECKS: Final = 5000  # above, a search of some dozens of solves takes longer than anyone waits
 
 
 @dataclass(frozen=True, slots=True)
@@ -54,6 +55,11 @@ def failing(results: Results) -> tuple[Subject, ...]:
     """The subjects with a check that fails, the worst first."""
     worst = sorted(worst_by_subject(results.checks).items(), key=lambda item: -utilisation_of(item[1]))
     return tuple(subject for subject, check in worst if check.status == "fail")
+
+
+def is_small(results: Results) -> bool:
+    """Whether the member is small enough for a search."""
+    return len(results.checks) <= MOST_CHECKS
 
 
 def seek(results: Results, subject: Subject, cancelled: Callable[[], bool] = never) -> Cures:

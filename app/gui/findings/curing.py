@@ -12,7 +12,7 @@ from typing import Final
 
 from PySide6.QtCore import QObject, QTimer, Signal
 
-from app.cures import Cure, Cures
+from app.cures import Cure, Cures, is_small
 from app.findings import Findings
 from app.findings.subjects import Subject
 from app.gui import log
@@ -86,7 +86,7 @@ class Curing(QObject):
         self._pause.stop()
         self.solver.cancel()
         self._panel.show_cures({})
-        if results is not None and results.verdict == "fail":
+        if results is not None and results.verdict == "fail" and is_small(results):
             self._pause.start()
 
     def _to_cure(self) -> Results | None:

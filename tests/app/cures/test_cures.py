@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 from msgspec import UNSET, structs
 
 from app import edits
-from app.cures import failing, seek
+from app.cures import failing, is_small, seek
 from app.cures.changes import section_knobs, spring_knobs
 from app.cures.rounds import above, round_numbers
 from app.cures.search import first_passing
@@ -263,3 +263,10 @@ def test_many_that_fail_anyway_are_counted_and_new_ones_named():
     two = replace(cure, fails_then=cure.still_fails[:2], still_fails=())
     names = ", ".join(str(check.segment) for check in two.fails_then)
     assert cure_sentence(two).endswith(f"; then these do not pass: {names}")
+
+
+def test_a_very_large_member_is_left_alone(monkeypatch):
+    results = solve(read_sample("tie_rod"), cases=False)
+    assert is_small(results)
+    monkeypatch.setattr("app.cures.seek.MOST_CHECKS", len(results.checks) - 1)
+    assert not is_small(results)
