@@ -9,23 +9,21 @@ from __future__ import annotations
 from collections.abc import Callable
 from dataclasses import dataclass
 from math import fsum
-from typing import Any, Literal
+from typing import Any
 
 from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.tables.column import Change, Figures, Sight
+from app.gui.tables.column import Change, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
 from app.section_entry import parse_section, taken_as
 from app.support_entry import parse_support, support_entry, support_text
 from app.typical_materials import typical_named, with_typical
-from app.units import Quantity, entry_text, format_value, utilisation_text
+from app.units import Quantity, entry_text, format_value
 from app.words import tr
-from solver.arrays import FloatArray
-from solver.checks import PASS_MARGIN
 from solver.model import AnySection, AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
 from solver.sections import area_coefficients
 
@@ -271,47 +269,3 @@ def heat_entry(row: SegmentRow, sight: Sight) -> str | None:
 def put_heat(project: Project, index: int, text: str, sight: Sight) -> Change:
     """Both ends of the temperature rise; an empty text takes it away."""
     return _put_ends(HEAT, project, index, text, sight)
-
-
-# Results
-
-
-def utilisation(index: int, figures: Figures, _sight: Sight) -> str:
-    """The utilisation in words, with the digits that its verdict needs."""
-    value = figures.value(figures.utilisation, index)
-    return "" if value is None else utilisation_text(value, "pass" if value <= 1 + PASS_MARGIN else "fail")
-
-
-def mass(index: int, figures: Figures, sight: Sight) -> str:
-    """The mass of the segment."""
-    value = figures.value(figures.segment_mass, index)
-    return "" if value is None else format_value(value, "mass", sight.system, 3)
-
-
-def between(name: Literal["force", "stress"]) -> Callable[[int, Figures, Sight], str]:
-    """The least and the largest force or stress within the segment in the shown state."""
-
-    def text(index: int, figures: Figures, sight: Sight) -> str:
-        values: FloatArray = getattr(figures, name)
-        if not 0 <= index < len(values):
-            return ""
-        ends = [format_value(float(value), name, sight.system, 3) for value in values[index]]
-        return ends[0] if ends[0] == ends[1] else "…".join(ends)
-
-    return text
-
-
-def bar(index: int, figures: Figures) -> tuple[float, float] | None:
-    """Utilisation and sign of the stress for the bar."""
-    value = figures.value(figures.utilisation, index)
-    return None if value is None else (value, float(figures.governs[index]))
-
-
-def total_line(project: Project, figures: Figures, sight: Sight) -> str:
-    """Length and mass of the whole member."""
-    length = fsum(segment.length for segment in project.segments)
-    text = format_value(length, "length", sight.system, with_unit=True, strip=True)
-    if figures.mass is None:
-        return tr("total {length}").format(length=text)
-    mass = format_value(figures.mass, "mass", sight.system, 3, with_unit=True)
-    return tr("total {length}, {mass}").format(length=text, mass=mass)

@@ -13,14 +13,11 @@ from app.gui.tables.numbers import pair_entry, pair_text
 from app.gui.tables.segment_cells import (
     FORCE,
     SegmentRow,
-    bar,
     bedding_entry,
-    between,
     end_areas,
     entry_of_support,
     heat_entry,
     in_segments,
-    mass,
     one_end,
     put_area,
     put_bedding,
@@ -36,9 +33,8 @@ from app.gui.tables.segment_cells import (
     show_heat,
     show_mark,
     show_support,
-    total_line,
-    utilisation,
 )
+from app.gui.tables.segment_figures import bar, between, mass, total_line, utilisation
 from app.section_entry import section_label, section_text
 from app.units import entry_text, format_value
 from app.words import later
