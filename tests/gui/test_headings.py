@@ -188,7 +188,7 @@ def test_what_is_copied_with_headings_is_the_same_member_in_other_units(window, 
 
 
 def test_a_rounded_area_beside_a_section_does_not_replace_it(window, table):
-    paste(table, "Area\tSection\tMark\n1257\td40\tQ\n1234\t\tR")
+    paste(table, "Section\tArea\tMark\nd40\t1257\tQ\n\t1234\tR")
     first, second = window.document.project.segments[:2]
     assert (first.mark, first.section) == ("Q", RoundSection(diameter=0.04))
     assert [draft.text for draft in window.document.snapshot.drafts.values()] == [""]
