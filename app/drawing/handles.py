@@ -8,7 +8,7 @@ Only the screen asks for handles; paper has none.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from typing import Literal, TypeAlias
 
 from msgspec import Struct
@@ -76,15 +76,17 @@ def handle_at(handles: list[Handle], point: Point) -> Handle | None:
     return None if best is None else best[1]
 
 
-def handles_of(sketch: Sketch) -> list[Handle]:
-    """All handles inside the window."""
-    handles = _joints(sketch)
-    for index, segment in enumerate(sketch.member.project.segments):
-        if sketch.shown_span(index) is not None:
+def handles_of(sketch: Sketch, only: frozenset[int] | None = None) -> list[Handle]:
+    """All handles inside the window; or only those whose segment or joint has one of these indices."""
+    segments = sketch.member.project.segments
+    chosen = range(len(segments) + 1) if only is None else sorted(only)
+    handles = _joints(sketch, chosen)
+    for index in chosen:
+        if index < len(segments) and sketch.shown_span(index) is not None:
             handles += _edges(sketch, index)
-            if isinstance(segment.section, TubeSection):
+            if isinstance(segments[index].section, TubeSection):
                 handles += _bores(sketch, index)
-    return handles + _loads(sketch)
+    return handles + _loads(sketch, chosen)
 
 
 def _make(
@@ -104,11 +106,11 @@ def _make(
     return Handle(kind, index, where, ends, reach, vector, direction)
 
 
-def _joints(sketch: Sketch) -> list[Handle]:
+def _joints(sketch: Sketch, chosen: Sequence[int]) -> list[Handle]:
     """Every joint but the first, whose place is no number."""
     handles = []
-    for joint in range(1, len(sketch.member.position)):
-        if sketch.holds(joint):
+    for joint in chosen:
+        if joint > 0 and sketch.holds(joint):
             along, axis = sketch.along(joint), sketch.rows.axis
             half = max(_half_at(sketch, joint), 10.0)
             line = (along, axis - half), (along, axis + half)
@@ -171,17 +173,19 @@ def _zones(sketch: Sketch, index: int) -> list[tuple[Where, float, float]]:
     return [(where, max(a, first), min(b, last)) for where, a, b in zones if max(a, first) < min(b, last)]
 
 
-def _loads(sketch: Sketch) -> list[Handle]:
+def _loads(sketch: Sketch, chosen: Sequence[int]) -> list[Handle]:
     """The arrows and bands of the shown state."""
     loads = sketch.member.loads
     if loads is None:
         return []
     handles = []
     heights = band_heights(sketch, loads.distributed[0])
-    for index, pair in enumerate(heights):
+    for index in chosen:
+        pair = heights[index] if index < len(heights) else None
         if pair is not None and sketch.shown_span(index) is not None:
             handles += _bands(sketch, index, pair)
-    for joint, force in enumerate(loads.joint_force[0].tolist()):
+    for joint in chosen:
+        force = float(loads.joint_force[0, joint])
         if force and sketch.holds(joint):
             line = force_line(sketch, joint, force)
             handles.append(_make(sketch, "force", joint, "both", line, ARROW_REACH, (sketch.forward, 0.0)))

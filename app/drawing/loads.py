@@ -43,8 +43,9 @@ def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
         _draw_distributed(sketch, sketch.member.loads.distributed[0])
         _draw_forces(sketch, sketch.member.loads.joint_force[0])
     rows = sketch.rows.labels
+    others = sketch.texts_in(rows)
     for label in sketch.placed(wishes, rows):
-        if not sketch.is_free(label.wish, label.span, rows[label.row], "high"):
+        if not sketch.is_free(label.wish, label.span, rows[label.row], "high", others):
             sketch.picture.left_out += 1
         elif label.wish.part.kind == "force":
             sketch.text(label.wish, label.span, rows[label.row], "high", "small_strong", "ink")

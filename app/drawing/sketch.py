@@ -20,6 +20,7 @@ from app.drawing.shapes import Anchor, Box, Face, Fill, Ink, Part, Picture, Poin
 
 Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, across
 ANCHORS: dict[Toward, Anchor] = {"low": "end", "middle": "middle", "high": "start"}
+FAR = 1e6  # px along the axis: beyond every label
 LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
@@ -206,10 +207,22 @@ class Sketch:
         anchor = ANCHORS[toward] if self.frame.upright else "middle"
         self.picture.texts.append(Text(box, wish.text, face, ink, wish.part, anchor))
 
-    def is_free(self, wish: Wish, along: Span, across: Span, toward: Toward) -> bool:
-        """Whether a label would meet none that stands outside the rows, such as that of an end force."""
+    def is_free(
+        self, wish: Wish, along: Span, across: Span, toward: Toward, others: list[Box] | None = None
+    ) -> bool:
+        """Whether a label would meet none that stands outside the rows, such as that of an end force.
+
+        `others` are the boxes of those, where they are known; else all texts so far.
+        """
         box = self._box(wish, along, across, toward, "small")
-        return not any(text.box.meets(box) for text in self.picture.texts)
+        standing = [text.box for text in self.picture.texts] if others is None else others
+        return not any(other.meets(box) for other in standing)
+
+    def texts_in(self, rows: tuple[Span, ...]) -> list[Box]:
+        """The boxes of the texts so far that reach into any of these rows."""
+        low, high = min(row[0] for row in rows), max(row[1] for row in rows)
+        room = self.box((-FAR, FAR), (low, high))
+        return [text.box for text in self.picture.texts if text.box.meets(room)]
 
     def _box(self, wish: Wish, along: Span, across: Span, toward: Toward, face: Face) -> Box:
         spare = across[1] - across[0] - wish.depth

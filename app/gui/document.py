@@ -66,6 +66,7 @@ class Preview:
 
     project: Project | None
     reason: str = ""
+    moving: bool = False  # under a hand that has not come to rest
 
 
 class Document(QObject):

@@ -33,10 +33,29 @@ class Outcome:
     findings: Findings | None
     problems: tuple[str, ...]
     seconds: float
+    wording: float = 0.0  # seconds of work that the findings took to word
+
+    @property
+    def is_worded(self) -> bool:
+        """Whether results come with their findings, where there are results."""
+        return self.results is None or self.findings is not None
 
 
-def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
-    """Solve the project and word its findings. Raises Cancelled."""
+@dataclass(frozen=True, slots=True)
+class Wanted:
+    """A project to solve; not `worded`, its results alone are wanted, while a number is still moving."""
+
+    project: Project
+    worded: bool = True
+
+
+def answer(wanted: Wanted, cancelled: Callable[[], bool]) -> Outcome:
+    """What is wanted, for the solver's thread."""
+    return compute(wanted.project, cancelled, worded=wanted.worded)
+
+
+def compute(project: Project, cancelled: Callable[[], bool], *, worded: bool = True) -> Outcome:
+    """Solve the project and word its findings, if wanted. Raises Cancelled."""
     from app.findings import findings
     from app.phrases import error_sentences
     from solver.solve import solve
@@ -48,8 +67,9 @@ def compute(project: Project, cancelled: Callable[[], bool]) -> Outcome:
         return Outcome(
             project, None, None, error_sentences(error, project=project), time.perf_counter() - start
         )
-    seconds = time.perf_counter() - start
-    return Outcome(project, results, findings(results, project.display.unit_system), (), seconds)
+    seconds, begun = time.perf_counter() - start, time.thread_time()
+    found = findings(results, project.display.unit_system) if worded else None
+    return Outcome(project, results, found, (), seconds, time.thread_time() - begun)
 
 
 def narrow_of(outcome: Outcome) -> Callable[[str], Findings] | None:

@@ -15,7 +15,8 @@ from app.gui import log
 from app.gui.document import Document, Draft
 from app.gui.outcome import (
     Outcome,
-    compute,
+    Wanted,
+    answer,
     figures_of,
     first_shown,
     governing,
@@ -36,6 +37,8 @@ from solver.results import Results
 if TYPE_CHECKING:
     from app.findings import Comparison, Findings
 
+REST = 150  # ms without a move until the findings of what is pulled are worded
+HURRY = 0.003  # s of wording from which it waits for that
 GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
 
 
@@ -98,7 +101,13 @@ class Showing(QObject):
         self._late.setSingleShot(True)
         self._late.setInterval(GRACE)
         self._late.timeout.connect(self.on_late)
-        self.solver = LatestSolver(compute, self)
+        self._worded: Outcome | None = None  # the last that came with its findings
+        self._dimmed = False  # whether those are shown as of an earlier member
+        self._rest = QTimer(self)
+        self._rest.setSingleShot(True)
+        self._rest.setInterval(REST)
+        self._rest.timeout.connect(self.on_rest)
+        self.solver = LatestSolver(answer, self)
         self.solver.ready.connect(self.on_ready)
         self.solver.failed.connect(self.on_failed)
         document.opened.connect(self.on_opened)
@@ -116,6 +125,11 @@ class Showing(QObject):
         """Whether what is shown is of everything that has been typed."""
         return self._newest and not self._document.has_drafts
 
+    @property
+    def complete(self) -> bool:
+        """Whether the findings too are of everything that has been typed or pulled."""
+        return self.current and self._outcome is self._worded
+
     def follow(self) -> None:
         """The document or its preview changed: solve another project, and show what is known."""
         project = self._document.shown_project
@@ -123,13 +137,14 @@ class Showing(QObject):
         self._seen = project
         if project == self._asked:
             self._show()
+            self._word()
             return
         self._asked = project
         self._newest = False
         self._fault = ""
         if not self._late.isActive():  # a burst of edits does not put the mark off
             self._late.start()
-        self.solver.request(project)
+        self.solver.request(Wanted(project, worded=not self._hurries()))
         if self._document.has_drafts:  # nothing that comes will be current, so there is nothing to wait for
             self._show()
 
@@ -159,6 +174,8 @@ class Showing(QObject):
         assert isinstance(delivery.value, Outcome)  # noqa: S101 - what `compute` gives
         self._outcome = delivery.value
         self._newest = delivery.newest
+        if delivery.value.is_worded:
+            self._worded = delivery.value
         if delivery.newest:
             self._late.stop()
             self._settle(delivery.value.results)
@@ -169,9 +186,29 @@ class Showing(QObject):
         if not self._newest:
             self._show()
 
+    def _hurries(self) -> bool:
+        """Whether a number is moving under a hand, so that findings which take long to word wait for rest."""
+        preview, worded = self._document.preview, self._worded
+        moving = preview is not None and preview.moving
+        if moving and worded is not None and worded.wording > HURRY:
+            self._rest.start()
+            return True
+        return False
+
+    def on_rest(self) -> None:
+        """The hand has come to rest."""
+        self._word()
+
+    def _word(self) -> None:
+        """Ask for the findings of what was only solved until now."""
+        self._rest.stop()
+        if self._outcome is not self._worded and self._asked is not None:
+            self.solver.request(Wanted(self._asked))
+
     def close(self) -> None:
         """Stop solving; clean also while it runs."""
         self._late.stop()
+        self._rest.stop()
         self.solver.close()
 
     def on_failed(self, delivery: Delivery) -> None:
@@ -196,16 +233,28 @@ class Showing(QObject):
     def _show(self) -> None:
         outcome = self._outcome
         results = outcome.results if outcome else None
-        findings = outcome.findings if outcome else None
         problems = (self._fault,) if self._fault else outcome.problems if outcome else ()
         waiting = outcome is None and not self._fault  # for the very first outcome
         self._sheet.show_results(self._document.shown_project, results, self.current, waiting)
-        self._panel.show_findings(
-            findings, problems, self.current, self._compared(results), narrow_of(outcome) if outcome else None
-        )
+        self._show_findings(problems)
         self._tables.set_figures(self._figures())
         self._tell()
         self.shown.emit()
+
+    def _show_findings(self, problems: tuple[str, ...]) -> None:
+        """The findings; while a hand is moving those of before stand there, marked as out of date."""
+        worded = self._worded
+        dimmed = self._outcome is not worded
+        if dimmed and self._dimmed:
+            return  # they stand there so already
+        self._dimmed = dimmed
+        self._panel.show_findings(
+            worded.findings if worded else None,
+            problems,
+            self.current and not dimmed,
+            self._compared(worded.results if worded else None),
+            narrow_of(worded) if worded else None,
+        )
 
     def set_reference(self, reference: Reference | None) -> None:
         """Hold what is shown against a reference, or against none."""

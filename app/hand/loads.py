@@ -74,8 +74,9 @@ def force_grip(project: Project, joint: int, aim: Aim, total: float) -> Grip:
 
     def tell(force: float) -> str:
         words = tr("Force at {mark}: {value} {unit}, {case}")
+        shown = total + aim.factor * (force - value)
         return _told(project, aim, words, mark, "force", (force,)) + _as_shown(
-            project, aim, "force", total + aim.factor * (force - value)
+            project, aim, "force", force, shown
         )
 
     return Grip(
@@ -115,7 +116,8 @@ def distributed_grip(
     def tell(value: float) -> str:
         words = tr(DISTRIBUTED["plain" if where == "both" and start == end else where])
         text = _told(project, aim, words, mark, "distributed", ends(value))
-        return text + _as_shown(project, aim, "distributed", here + aim.factor * (value - at_hand))
+        shown = here + aim.factor * (value - at_hand)
+        return text + _as_shown(project, aim, "distributed", value, shown)
 
     return Grip(
         name=tr("Load on {mark}, {case}").format(mark=mark, case=aim.case.name),
@@ -162,12 +164,12 @@ def _told(
     return words.format(mark=mark, value=texts[0], last=texts[-1], unit=unit, case=aim.case.name)
 
 
-def _as_shown(project: Project, aim: Aim, quantity: Quantity, value: float) -> str:
-    """What the state that is shown comes to, where that is another number."""
-    if aim.alone:
-        return ""
+def _as_shown(project: Project, aim: Aim, quantity: Quantity, value: float, in_state: float) -> str:
+    """What the state that is shown comes to, where that is another number than the case's own."""
     system = project.display.unit_system
-    shown, factor = input_text(value, quantity, system), input_text(aim.factor, "factor", system)
+    shown, factor = input_text(in_state, quantity, system), input_text(aim.factor, "factor", system)
+    if aim.alone or shown == input_text(value, quantity, system):
+        return ""
     return "\n" + tr("counts ×{factor}: {value} {unit} in {shown}").format(
         factor=factor, value=shown, unit=symbol(quantity, system), shown=aim.shown.name
     )

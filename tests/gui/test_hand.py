@@ -534,3 +534,25 @@ class TestKeys:
         QTest.keyClick(window.sheet, Qt.Key.Key_Escape)
         assert window.hand.phase is Phase.IDLE
         assert window.sheet.paper.bubble.text == ""
+
+
+class TestSlowFindings:
+    """Findings that take long to word wait until the hand rests, and do not look current meanwhile."""
+
+    def test_they_wait_marked_and_are_settled_at_rest(self, qtbot, window, pointer, monkeypatch):
+        monkeypatch.setattr("app.gui.show.HURRY", -1.0)
+        pointer.grab("joint", 1, "end")
+        pointer.pull(60)
+        solved(qtbot, window)
+        assert not window.showing.complete
+        assert window.findings.is_marked_out_of_date
+        qtbot.waitUntil(lambda: window.showing.complete)
+        assert not window.findings.is_marked_out_of_date
+        pointer.let_go()
+
+    def test_the_release_words_them_at_once(self, qtbot, window, pointer, monkeypatch):
+        monkeypatch.setattr("app.gui.show.HURRY", -1.0)
+        monkeypatch.setattr("app.gui.show.REST", 10_000)
+        pointer.drag("joint", 1, "end", 60)
+        qtbot.waitUntil(lambda: window.showing.complete)
+        assert window.showing.outcome.project is window.document.project

@@ -18,6 +18,7 @@ from app.gui.sheet_view import SheetView
 from app.gui.view import View
 from app.hand.grip import Refusal
 from app.words import tr
+from solver.model import Project
 
 
 class Phase(Enum):
@@ -88,8 +89,13 @@ class Grasp(QObject):
         """What has come of it so far, drawn at once; its results come as they are solved."""
         project = None if self.pull is None else self.pull.outcome.project
         if project is not None:
-            self._document.set_preview(None if project is self._document.project else Preview(project))
+            self._document.set_preview(self._preview_of(project))
             self.paper.show_member(project)
+
+    def _preview_of(self, project: Project) -> Preview | None:
+        """None where it is what is committed."""
+        moving = self.phase is Phase.PULLING
+        return None if project is self._document.project else Preview(project, moving=moving)
 
     def preview_reason(self, reason: str) -> None:
         """What is typed makes no project: the results are not of it."""

@@ -6,7 +6,7 @@ from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPen, QPolygonF
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
-from app.drawing.handles import Handle, HandleKey
+from app.drawing.handles import Handle, HandleKey, handles_of
 from app.drawing.shapes import Point, Stroke
 from app.drawing.sketch import Sketch
 from app.gui.drawing.member_drawing import MemberDrawing
@@ -38,14 +38,22 @@ class HandMarks(Painted):
         """The handle in the hand or under the pointer."""
         if self._key is None:
             return None
-        return next((handle for handle in self._drawing.handles if handle.key == self._key), None)
+        return next((h for h in self._of(frozenset((self._key[1],))) if h.key == self._key), None)
 
     @property
     def quiet(self) -> tuple[Handle, ...]:
         """The handles of what is selected."""
-        if self._selection == Selection():
+        chosen = self._selection
+        if chosen == Selection():
             return ()
-        return tuple(h for h in self._drawing.handles if belongs(h, self._selection))
+        indices = chosen.segments | chosen.joints | {index + 1 for index in chosen.segments}
+        return tuple(handle for handle in self._of(indices) if belongs(handle, chosen))
+
+    def _of(self, indices: frozenset[int]) -> list[Handle]:
+        """Handles of these segments and joints alone: while one is pulled there are others every time."""
+        sketch = self._drawing.sketch
+        last = -1 if sketch is None else len(sketch.member.project.segments)
+        return [] if sketch is None else handles_of(sketch, frozenset(i for i in indices if i <= last))
 
     @property
     def way(self) -> tuple[Line, ...]:
