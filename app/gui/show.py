@@ -93,6 +93,7 @@ class Showing(QObject):
         self._reference: Reference | None = None
         self._fault = ""
         self._asked: Project | None = None
+        self._wanted: Wanted | None = None  # what of it was asked for
         self._newest = False
         self._seen = document.project  # whose state the view shows
         self._own_choice = self._view.shown
@@ -144,7 +145,8 @@ class Showing(QObject):
         self._fault = ""
         if not self._late.isActive():  # a burst of edits does not put the mark off
             self._late.start()
-        self.solver.request(Wanted(project, worded=not self._hurries()))
+        self._wanted = Wanted(project, worded=not self._hurries())
+        self.solver.request(self._wanted)
         if self._document.has_drafts:  # nothing that comes will be current, so there is nothing to wait for
             self._show()
 
@@ -202,8 +204,9 @@ class Showing(QObject):
     def _word(self) -> None:
         """Ask for the findings of what was only solved until now."""
         self._rest.stop()
-        if self._outcome is not self._worded and self._asked is not None:
-            self.solver.request(Wanted(self._asked))
+        if self._wanted is not None and not self._wanted.worded:
+            self._wanted = Wanted(self._wanted.project)
+            self.solver.request(self._wanted)
 
     def close(self) -> None:
         """Stop solving; clean also while it runs."""
