@@ -15,6 +15,7 @@ FALLBACK: Final = "en"
 KEYS: Final = "keys"  # made from the table of commands, in every language
 PAGES: Final[tuple[tuple[str, str], ...]] = (
     ("entering", later("Entering a member")),
+    ("shaping", later("Shaping it on the drawing")),
     ("loads", later("Supports, loads and limits")),
     ("reading", later("Reading the results")),
     ("guarantee", later("What the solver guarantees")),

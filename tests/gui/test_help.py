@@ -141,7 +141,7 @@ def test_a_link_leads_on_and_back_returns_to_where_one_was(qtbot, help_window):
         page.viewport(), Qt.MouseButton.LeftButton, pos=place_of(page, "what the solver guarantees")
     )
     assert page.page == "guarantee"
-    assert help_window.list.currentRow() == 3
+    assert help_window.list.currentItem().text() == "What the solver guarantees"
     chord(help_window, Qt.Key.Key_Left, Qt.KeyboardModifier.AltModifier)
     assert page.page == "limits"
     assert not help_window.back.isEnabled()
@@ -160,7 +160,7 @@ def test_the_list_goes_by_keys(help_window):
     help_window.show_page("entering")
     help_window.list.setFocus()
     QTest.keyClick(help_window.list, Qt.Key.Key_Down)
-    assert help_window.page.page == "loads"
+    assert help_window.page.page == "shaping"
 
 
 def test_search_goes_through_all_pages_and_says_where_nothing_is(help_window):
