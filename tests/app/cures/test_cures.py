@@ -265,8 +265,7 @@ def test_many_that_fail_anyway_are_counted_and_new_ones_named():
     assert cure_sentence(two).endswith(f"; then these do not pass: {names}")
 
 
-def test_a_very_large_member_is_left_alone(monkeypatch):
+def test_a_very_large_member_is_left_alone():
     results = solve(read_sample("tie_rod"), cases=False)
     assert is_small(results)
-    monkeypatch.setattr("app.cures.seek.MOST_CHECKS", len(results.checks) - 1)
-    assert not is_small(results)
+    assert not is_small(replace(results, checks=results.checks * 200))
