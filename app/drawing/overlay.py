@@ -116,9 +116,8 @@ def displaced_factor(member: Member, ruler: Ruler, moved: FloatArray) -> float:
 
     The largest displacement becomes a small part of the drawing, and no segment loses more than half.
     """
-    whole = ruler.fitted()
-    pixels = moved * whole.pixels_per_metre
-    widths = np.abs(np.diff(whole.pixel(np.asarray(member.position))))
+    pixels = moved * ruler.pixels_per_metre
+    widths = np.abs(np.diff(ruler.pixel(np.asarray(member.position))))
     shrinks = np.maximum(pixels[:-1] - pixels[1:], 0.0)
     with np.errstate(divide="ignore"):
         limits = np.append(LEAST_LEFT * widths / shrinks, _safe(LARGEST_SHIFT * widths.sum(), pixels))

@@ -39,7 +39,7 @@ BOTH_WAYS = pytest.mark.parametrize("upright", [False, True], ids=["across", "up
 
 
 def coloured(project: Project, results, state: int | None, *, upright: bool):
-    member = drawn(project)
+    member = Member.of(project, Shown("envelope")) if state is None else drawn(project)
     frame = window_frame(member, SIZES[1], upright=upright)
     shown = graded(results, state, "stress")
     detail = Detail(hollow=True, legend=legend_size(member, frame, shown))
