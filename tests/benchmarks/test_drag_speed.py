@@ -72,10 +72,10 @@ def seconds_of_updates(window, kind, index, where):
         start = time.perf_counter()
         pointer.move(STRIDE if number % 10 < 5 else -STRIDE)
         until_shown(window)
+        times.append(time.perf_counter() - start)
         assert window.document.shown_project is not before
     work = (time.process_time() - work) / UPDATES
     sys.stdout.write(f"work of both threads: {1e3 * work:.1f} ms an update, whatever else the machine does\n")
-        times.append(time.perf_counter() - start)
     pointer.let_go()
     until_shown(window)
     return times
