@@ -78,7 +78,7 @@ class HelpWindow(QDialog):
         parts.addWidget(self.list)
         parts.addWidget(self.page)
         parts.setStretchFactor(1, 1)
-        parts.setSizes([self.list.sizeHintForColumn(0) + 16, SIZE[0]])
+        parts.setSizes([self._list_width(), SIZE[0]])
         rows = QVBoxLayout(self)
         rows.setContentsMargins(0, 0, 0, 0)
         rows.addLayout(top)
@@ -104,6 +104,10 @@ class HelpWindow(QDialog):
         super().changeEvent(event)
         if event.type() == QEvent.Type.PaletteChange and hasattr(self, "told"):
             self._dress()
+
+    def _list_width(self) -> int:
+        """Room for the longest title."""
+        return max(self.list.fontMetrics().horizontalAdvance(tr(title)) for _page, title in PAGES) + 28
 
     def done(self, result: int) -> None:
         """Closed: the keyboard goes back to where it was."""
