@@ -9,6 +9,7 @@ from __future__ import annotations
 from PySide6.QtCore import QEvent, QItemSelection, QItemSelectionModel, QModelIndex, QSize, Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
+    QAbstractButton,
     QAbstractItemDelegate,
     QAbstractItemView,
     QHeaderView,
@@ -56,6 +57,7 @@ class TableView(QTableView):
         self.grips = RowGrips(self, theme) if model.table.movable else None
         if self.grips is not None:
             self.setVerticalHeader(self.grips)
+            self.findChild(QAbstractButton).setAccessibleName(self.grips.accessibleName())  # above them
         self._dress()
         self.set_theme(theme)
         self.columns_choice = ShownColumns(self)
