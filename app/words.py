@@ -9,6 +9,7 @@ from __future__ import annotations
 import locale
 import os
 from collections.abc import Mapping
+from functools import cache
 from pathlib import Path
 from typing import Final
 
@@ -27,7 +28,7 @@ _catalogue = Catalogue()
 def use_language(language: str) -> None:
     """Take words and decimal sign from `language`, a key of LANGUAGES, from now on."""
     global _language, _catalogue  # noqa: PLW0603 - one language for the process, as gettext has it
-    _catalogue = Catalogue() if language == SOURCE else read_catalogue(catalogue_path(language))
+    _catalogue = Catalogue() if language == SOURCE else _read_once(language)
     _language = language
 
 
@@ -62,6 +63,17 @@ def _code(name: str) -> str:
 def tr(message: str) -> str:
     """The message in the user's language."""
     return _catalogue.text(message)
+
+
+def in_every_language(message: str) -> tuple[str, ...]:
+    """The message as it may stand in what others wrote, that of the sources first."""
+    others = (_read_once(code).text(message) for code in LANGUAGES if code != SOURCE)
+    return tuple(dict.fromkeys((message, *others)))
+
+
+@cache
+def _read_once(language: str) -> Catalogue:
+    return read_catalogue(catalogue_path(language))
 
 
 def trc(context: str, message: str) -> str:

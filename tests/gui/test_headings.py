@@ -7,6 +7,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QGuiApplication
+from PySide6.QtTest import QTest
 
 from app import words
 from app.gui.tables.column import Sight
@@ -16,7 +17,7 @@ from app.gui.tables.reasons import NotTaken
 from app.gui.tables.segments import COLUMNS
 from app.units import SYSTEM_NAMES, symbol
 from solver.model import AreaSection, RoundSection
-from tests.gui.hand import chord, go_to, text_at
+from tests.gui.hand import cell, chord, go_to, text_at
 
 SIGHT = Sight("mm-kN-MPa", 0)
 PLACES = {column.key: place for place, column in enumerate(COLUMNS)}
@@ -206,3 +207,103 @@ def test_a_text_beyond_all_measure_is_a_block_all_the_same():
     from app.gui.tables.clipboard import block_of
 
     assert block_of('"' + "1\t2\n" * 60_000)[1] == ["1", "2"]
+
+
+@pytest.mark.parametrize(
+    "above",
+    ["\ufeff", "\t\t\n\n", "Rods of the gate\t\t\n", "\n\tRods\t\n\t\t\n"],
+    ids=["mark of order", "blank", "title", "both"],
+)
+def test_blank_rows_and_a_title_above_the_headings_are_passed_over(window, table, above):
+    paste(table, f"{above}Mark\tLength (cm)\tMaterial\r\nQ\t35\tForged steel\r\n")
+    first, second = window.document.project.segments[:2]
+    assert (first.mark, first.length, second.mark) == ("Q", 0.35, "B")
+    assert not window.document.snapshot.drafts
+
+
+def test_headings_alone_are_typed_nowhere(window, table):
+    paste(table, "Mark\tLength (mm)\tSection\n\t\t\n")
+    assert window.document.undo_name is None
+    assert window.status.news.text() == "nothing was pasted: there is nothing below the headings"
+
+
+def test_german_headings_are_known_in_an_english_window():
+    german = words.in_every_language("Length")[1]
+    assert german != "Length"
+    assert only(f"{german} [cm]\n35") == "35 cm"
+
+
+@pytest.mark.parametrize(
+    ("text", "said"),
+    [
+        ("Length\n1,500", "“1,500” was read as 1.5"),
+        ("Length\n12,345 mm", "“12,345 mm” was read as 12.345"),
+        ("Length\n1.500\n0,25", "“1.500” was read as 1.5"),
+        ("Length\n1.500\n0.25", ""),
+        ("Length\n1,5", ""),
+        ("Length\n0,250", ""),
+    ],
+)
+def test_what_may_be_meant_as_thousands_is_said(window, table, text, said):
+    paste(table, text)
+    news = window.status.news.text()
+    assert news.startswith(said)
+    assert bool(news) == bool(said)
+
+
+def test_columns_past_the_end_are_counted(window, table):
+    paste(table, "0.5\tx\ty", 1, "utilisation")
+    assert window.status.news.text() == "2 columns were left out: the table ends there"
+
+
+# Rows that lie apart
+
+
+def choose_apart(table, *rows, key="length"):
+    go_to(table, rows[0], key)
+    for row in rows[1:]:
+        spot = table.visualRect(cell(table, row, key)).center()
+        QTest.mouseClick(table.viewport(), Qt.MouseButton.LeftButton, CTRL, spot)
+
+
+def lengths(window):
+    return [round(1e3 * segment.length, 6) for segment in window.document.project.segments[:5]]
+
+
+def test_a_cell_goes_into_chosen_rows_only(window, table):
+    between = lengths(window)[1:3]
+    choose_apart(table, 1, 4)
+    QGuiApplication.clipboard().setText("777")
+    chord(table, Qt.Key.Key_V)
+    assert lengths(window)[:4] == [777, *between, 777]
+
+
+def test_as_many_rows_as_are_chosen_go_into_these_and_others_nowhere(window, table):
+    before = lengths(window)
+    choose_apart(table, 1, 4)
+    QGuiApplication.clipboard().setText("1\n2\n3")
+    chord(table, Qt.Key.Key_V)
+    assert lengths(window) == before
+    assert "lie apart" in window.status.news.text()
+    QGuiApplication.clipboard().setText("701\n702")
+    chord(table, Qt.Key.Key_V)
+    assert lengths(window) == [701, *before[1:3], 702, before[4]]
+
+
+def test_chosen_rows_are_copied_and_filled_without_those_between(window, table):
+    before = lengths(window)
+    choose_apart(table, 1, 4)
+    chord(table, Qt.Key.Key_C)
+    assert QGuiApplication.clipboard().text() == f"{before[0]:g}\n{before[3]:g}"
+    chord(table, Qt.Key.Key_D)
+    assert lengths(window) == [before[0], *before[1:3], before[0], before[4]]
+
+
+def test_cells_that_make_no_block_are_not_copied(window, table):
+    choose_apart(table, 1)
+    choose = table.visualRect(cell(table, 2, "section")).center()
+    QTest.mouseClick(table.viewport(), Qt.MouseButton.LeftButton, CTRL, choose)
+    QGuiApplication.clipboard().setText("as before")
+    chord(table, Qt.Key.Key_C)
+    assert QGuiApplication.clipboard().text() == "as before"
+    assert window.status.news.text() == "choose the same columns in every row"

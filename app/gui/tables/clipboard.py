@@ -16,7 +16,7 @@ def block_text(rows: Sequence[Sequence[str]]) -> str:
 
 def block_of(text: str) -> list[list[str]]:
     """The block in a copied text; empty where there is none."""
-    plain = text.replace("\r\n", "\n").replace("\r", "\n").removesuffix("\n")
+    plain = text.removeprefix("\ufeff").replace("\r\n", "\n").replace("\r", "\n").removesuffix("\n")
     try:
         return [row or [""] for row in csv.reader(io.StringIO(plain), "excel-tab")] if plain else []
     except csv.Error:  # a cell beyond all measure, as an unclosed quote makes of the rest of a long text

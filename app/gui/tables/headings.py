@@ -1,9 +1,9 @@
 """A pasted block whose first row names the columns, in any order, with or without units.
 
-Titles are known in English and in the user's language: "Length", "Length (mm)", "Length [mm]", "Length, mm",
+Titles are known in every language of the program: "Length", "Length (mm)", "Length [mm]", "Length, mm",
 "Length mm", or with the units in a row of their own. A unit goes to each number of its column that has none,
 so that the cell reads it as if it had been typed. A unit of another quantity is refused: the numbers below
-it would be taken for something else.
+it would be taken for something else. Blank rows and a title above the headings are passed over.
 """
 
 from __future__ import annotations
@@ -18,11 +18,12 @@ from app.gui.tables.column import Column, Sight
 from app.gui.tables.reasons import NotTaken
 from app.unit_names import UnknownUnitError, unit_factor
 from app.units import QUANTITIES, symbol
-from app.words import tr
+from app.words import in_every_language, tr
 
 _NUMBER: Final = re.compile(r"[-+−]?(?:[0-9]+[.,]?[0-9]*|[.,][0-9]+)(?:\s*[^\W\d_]{1,3})?")
 _BRACKETS: Final = re.compile(r"[\[(](.*)[\])]")
 _ARROW: Final = re.compile(r"(->|→)")
+MOST_ABOVE: Final = 10  # rows above the first data, blank ones and a title among them
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,12 +45,17 @@ class HeadedBlock:
 def headed_block(
     block: Sequence[Sequence[str]], columns: Sequence[Column], sight: Sight
 ) -> HeadedBlock | None:
-    """The block by its headings; None where its first row holds none. NotTaken for a unit that cannot be."""
-    first, *below = block
-    found = [_heading(text, columns) for text in first]
-    if not below or not any(found) or any(_NUMBER.fullmatch(text.strip()) for text in first):
+    """The block by its headings; None where it has none. NotTaken for a unit that cannot be, or no rows."""
+    at = _row_of_headings(block, columns)
+    if at is None:
         return None
-    found, unknown = _each_once(found, first)
+    first, below = block[at], block[at + 1 :]
+    alone = sum(map(bool, _headings(first, columns))) == 1
+    if alone and not below:
+        return None  # a single word may be an entry
+    if not alone and not any(map(_is_filled, below)):
+        raise NotTaken(tr("nothing was pasted: there is nothing below the headings"))
+    found, unknown = _each_once(_headings(first, columns), first)
     units = _unit_row(below[0], found, columns)
     if units is not None:
         below = below[1:]
@@ -59,15 +65,40 @@ def headed_block(
     return HeadedBlock(tuple(_row(texts, found, columns, sight) for texts in below), unknown)
 
 
+def _row_of_headings(block: Sequence[Sequence[str]], columns: Sequence[Column]) -> int | None:
+    """The first row that is filled, or below a title of the whole block the next one."""
+    filled = [at for at, texts in enumerate(block[:MOST_ABOVE]) if _is_filled(texts)]
+    for rank, at in enumerate(filled[:2]):
+        count = sum(map(bool, _headings(block[at], columns)))
+        if count > rank and not any(_NUMBER.fullmatch(text.strip()) for text in block[at]):
+            return at
+        if sum(map(bool, map(str.strip, block[at]))) > 1:
+            return None
+    return None
+
+
+def _is_filled(texts: Sequence[str]) -> bool:
+    return any(text.strip() for text in texts)
+
+
+def _headings(texts: Sequence[str], columns: Sequence[Column]) -> list[Heading | None]:
+    return [_heading(text, columns) for text in texts]
+
+
 def _heading(text: str, columns: Sequence[Column]) -> Heading | None:
     """The column with the longest title that the text begins with, where the rest is nothing or a unit."""
     words = " ".join(text.split())
-    titles = ((t, i) for i, column in enumerate(columns) for t in (column.title, column.words))
+    titles = ((t, i) for i, column in enumerate(columns) for t in _titles(column))
     for title, place in sorted(titles, key=lambda pair: -len(pair[0])):
         if words.lower().startswith(title.lower()):
             unit = _unit_behind(words[len(title) :])
             return None if unit is None else Heading(place, unit)
     return None
+
+
+def _titles(column: Column) -> tuple[str, ...]:
+    """A column's title in every language; the user's own word is in none."""
+    return (column.title,) if column.named_by_user else in_every_language(column.title)
 
 
 def _unit_behind(rest: str) -> str | None:

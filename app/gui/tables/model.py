@@ -258,13 +258,13 @@ class TableModel(RowsModel):
         """A cell's own text with all digits; None where it is not for typing."""
         return None if self.is_adding(row) else self.entry(self.index(row, column))
 
-    def put_block(self, top: int, texts: Sequence[Texts], name: str, note: str = "") -> None:
-        """Type a block of texts into the rows from `top` on, rows past the end added: one undo step.
+    def put_block(self, rows: Sequence[int], texts: Sequence[Texts], name: str, note: str = "") -> None:
+        """Type a block of texts into these rows, those past the end added: one undo step.
 
         What is no valid entry becomes a draft of its cell; cells that are not for typing are passed over.
         """
         block = Block(self, self._document.snapshot)
-        self._document.commit_snapshot(block.typed(top, texts), name)
+        self._document.commit_snapshot(block.typed(rows, texts), name)
         if block.note or note:
             self.noted.emit("; ".join(filter(None, (block.note, note))))
 

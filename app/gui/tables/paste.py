@@ -29,9 +29,9 @@ class Block:
         self._refused: list[Draft] = []  # rows that could not be added
         self._notes: dict[str, None] = {}  # of the cells and rows, each once, in order
 
-    def typed(self, top: int, block: Sequence[Texts]) -> Snapshot:
-        """The document with the texts typed from the row `top` on."""
-        for row, texts in enumerate(block, top):
+    def typed(self, rows: Sequence[int], block: Sequence[Texts]) -> Snapshot:
+        """The document with the texts typed into these rows, from top to bottom."""
+        for row, texts in zip(rows, block, strict=True):
             self._type_row(row, texts)
         if self._refused:
             self._drafts[self._adding_place()] = self._refused[0]
