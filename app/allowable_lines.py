@@ -6,6 +6,7 @@ them, and the words say that it is the least where the states' factors differ.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 from itertools import pairwise
 from typing import Final
@@ -55,6 +56,16 @@ def over_least(
     least = np.where(stress > 0, tension[segment], compression[segment])
     over: FloatArray = np.minimum(utilisation, np.abs(stress) / least)
     return over
+
+
+def unchecked_segments(
+    results: Results, states: Sequence[int], segment: IntArray, utilisation: FloatArray
+) -> frozenset[int]:
+    """Segments with a check of stress not made in one of the states, or without any utilisation (k,)."""
+    missing = {int(i) for i in np.unique(segment[np.isnan(utilisation)])}
+    names = {results.states[i].name for i in states if results.states[i].checked}
+    marks = {c.segment for c in results.checks if c.status == "not_made" and c.combination in names}
+    return frozenset(missing | {i for i, s in enumerate(results.project.segments) if s.mark in marks})
 
 
 def allowable_lines(

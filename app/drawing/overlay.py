@@ -13,13 +13,13 @@ from typing import Literal, TypeAlias
 import numpy as np
 from msgspec import Struct
 
-from app.allowable_lines import NOTHING
+from app.allowable_lines import NOTHING, unchecked_segments
 from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.looks import Colour
-from solver.arrays import FloatArray, IntArray
+from solver.arrays import BoolArray, FloatArray, IntArray
 from solver.checks import PASS_MARGIN
-from solver.fields import curves, envelope
+from solver.fields import checked_states, curves, envelope
 from solver.results import Results
 
 STEPS = 5  # shades from 0 to the largest magnitude
@@ -41,7 +41,9 @@ class Graded:
     segment: IntArray  # (k,)
     value: FloatArray  # (k,) SI
     utilisation: FloatArray  # (k,), NaN where there is none
+    unchecked: BoolArray  # (n,) segments of which a check of stress was not made, in a state that is checked
     governing: bool  # of an envelope
+    checked: bool  # whether any check is made of what is shown
 
     @property
     def largest(self) -> float:
@@ -50,14 +52,19 @@ class Graded:
 
 
 class Shade(Struct, frozen=True):
-    """A stretch of one shade: its segment, from where to where (m), sign, step, and whether over 1."""
+    """A stretch of one shade from where to where (m), with its sign and step, and whether over 1.
+
+    It lies in `segment`, or where segments are narrower than a pixel goes on through those up to `until`.
+    """
 
     segment: int
+    until: int
     first: float
     last: float
     sign: Sign
     step: int
     over: bool
+    unchecked: bool
 
 
 def graded(results: Results, state: int | None, colour: Colour) -> Graded | None:
@@ -68,41 +75,106 @@ def graded(results: Results, state: int | None, colour: Colour) -> Graded | None
         whole = envelope(results)
         high, low = (getattr(whole, f"{colour}_{side}") for side in ("max", "min"))
         value = np.where(np.abs(high) >= np.abs(low), high, low)
-        made = Graded(colour, results.position, whole.x, whole.segment, value, whole.utilisation, True)
+        states, curve = checked_states(results).tolist(), whole
     else:
-        one = curves(results, state)
-        value = getattr(one, colour)
-        made = Graded(colour, results.position, one.x, one.segment, value, one.utilisation, False)
+        states, curve = [state], curves(results, state)
+        value = getattr(curve, colour)
     stiffness = float(results.chain.modulus.max())
     stiffness *= float(results.chain.area.max()) if colour == "force" else 1.0
-    return made if made.value.size and made.largest > NOTHING * stiffness else None
+    if not value.size or np.abs(value).max() <= NOTHING * stiffness:
+        return None
+    checked = any(results.states[index].checked for index in states)
+    unchecked = np.zeros(len(results.position) - 1, dtype=np.bool_)
+    if checked:
+        unchecked[list(unchecked_segments(results, states, curve.segment, curve.utilisation))] = True
+    return Graded(
+        colour,
+        results.position,
+        curve.x,
+        curve.segment,
+        value,
+        curve.utilisation,
+        unchecked,
+        governing=state is None,
+        checked=checked,
+    )
 
 
 def shades(shown: Graded, ruler: Ruler) -> list[Shade]:
-    """The stretches of one shade each, in order along the member."""
-    found: list[Shade] = []
-    ends = np.searchsorted(shown.segment, np.arange(len(shown.position)))
-    for index in range(len(shown.position) - 1):
-        found += _shades_of(shown, ruler, index, slice(ends[index], ends[index + 1]))
-    return found
+    """The stretches of one shade each that are in the window, in order along the member."""
+    pixels = ruler.pixel(shown.position)
+    low, high = sorted((ruler.begin, ruler.end))
+    ends = np.sort(np.stack([pixels[:-1], pixels[1:]]), axis=0)
+    inside, width = (ends[1] > low) & (ends[0] < high), ends[1] - ends[0]
+    bounds = np.searchsorted(shown.segment, np.arange(len(shown.position)))
+    found = _narrow_shades(shown, bounds, pixels, np.flatnonzero(inside & (width < SLICE)))
+    for index in np.flatnonzero(inside & (width >= SLICE)).tolist():
+        at = slice(bounds[index], bounds[index + 1])
+        found += _shades_of(shown, index, at, int(np.clip(width[index] / SLICE, 1, MOST_SLICES)))
+    return sorted(found, key=lambda shade: shade.first)
 
 
-def _shades_of(shown: Graded, ruler: Ruler, index: int, at: slice) -> list[Shade]:
-    low, high = float(shown.position[index]), float(shown.position[index + 1])
-    width = abs(ruler.pixel(high) - ruler.pixel(low))
-    count = int(np.clip(width / SLICE, 1, MOST_SLICES))
-    places = np.linspace(low, high, count + 1)
-    middle = 0.5 * (places[1:] + places[:-1])
-    value = np.interp(middle, shown.x[at], shown.value[at]) / shown.largest
-    over = np.interp(middle, shown.x[at], np.nan_to_num(shown.utilisation[at])) > 1 + PASS_MARGIN
-    steps = np.ceil(np.abs(value) * STEPS - 1e-9).astype(int)
-    keys = zip(np.sign(value).astype(int).tolist(), steps.tolist(), over.tolist(), strict=True)
+def _narrow_shades(shown: Graded, bounds: IntArray, pixels: FloatArray, chosen: IntArray) -> list[Shade]:
+    """One shade for each of the segments, and for all in one column of pixels: that of the most stressed."""
+    if not len(chosen):
+        return []
+    starts = bounds[chosen]
+    peaks = np.maximum.reduceat(np.abs(shown.value), bounds[:-1])[chosen] / shown.largest
+    first = shown.value[starts]  # the sign of segments so short
+    over = np.maximum.reduceat(np.nan_to_num(shown.utilisation), bounds[:-1])[chosen] > 1 + PASS_MARGIN
+    column = np.floor(pixels[chosen])
+    begins = np.flatnonzero(np.append(True, (np.diff(column) != 0) | (np.diff(chosen) > 1)))
+    ends = np.append(begins[1:], len(chosen)) - 1
+    group = np.repeat(np.arange(len(begins)), ends - begins + 1)
+    worst = np.lexsort((peaks, over, group))[ends]
+    unchecked = np.logical_or.reduceat(shown.unchecked[chosen], begins)
+    position = shown.position
+    return [
+        Shade(
+            int(chosen[a]), int(chosen[b]), float(position[chosen[a]]), float(position[chosen[b] + 1]), *how
+        )
+        for a, b, how in zip(
+            begins,
+            ends,
+            zip(
+                np.sign(first[worst]).astype(int).tolist(),
+                _steps(peaks[worst]),
+                over[worst].tolist(),
+                unchecked.tolist(),
+                strict=True,
+            ),
+            strict=True,
+        )
+    ]
+
+
+def _shades_of(shown: Graded, index: int, at: slice, count: int) -> list[Shade]:
+    """Of one segment in so many slices; a slice is over where any point of it is."""
+    places = np.linspace(float(shown.position[index]), float(shown.position[index + 1]), count + 1)
+    x, utilisation = shown.x[at], np.nan_to_num(shown.utilisation[at])
+    value = np.interp(0.5 * (places[1:] + places[:-1]), x, shown.value[at]) / shown.largest
+    over = _largest_in(places, x, utilisation) > 1 + PASS_MARGIN
+    keys = zip(np.sign(value).astype(int).tolist(), _steps(np.abs(value)), over.tolist(), strict=True)
     found, first = [], 0
-    for (sign, step, is_over), run in groupby(keys):
+    unchecked = bool(shown.unchecked[index])
+    for how, run in groupby(keys):
         last = first + len(list(run))
-        found.append(Shade(index, float(places[first]), float(places[last]), sign, step, is_over))
+        found.append(Shade(index, index, float(places[first]), float(places[last]), *how, unchecked))
         first = last
     return found
+
+
+def _largest_in(places: FloatArray, x: FloatArray, value: FloatArray) -> FloatArray:
+    """The largest value between each two places, those at both of them included."""
+    at_places = np.interp(places, x, value)
+    inside = np.full(len(places) - 1, -np.inf)
+    np.maximum.at(inside, np.clip(np.searchsorted(places, x, "right") - 1, 0, len(inside) - 1), value)
+    return np.maximum(inside, np.maximum(at_places[:-1], at_places[1:]))
+
+
+def _steps(share: FloatArray) -> list[int]:
+    steps: list[int] = np.ceil(share * STEPS - 1e-9).astype(int).tolist()
+    return steps
 
 
 def displacements(results: Results, state: int) -> FloatArray:
@@ -116,18 +188,14 @@ def displaced_factor(member: Member, ruler: Ruler, moved: FloatArray) -> float:
 
     The largest displacement becomes a small part of the drawing, and no segment loses more than half.
     """
+    if np.abs(moved).max() <= NOTHING * member.position[-1]:
+        return 0.0
     pixels = moved * ruler.pixels_per_metre
     widths = np.abs(np.diff(ruler.pixel(np.asarray(member.position))))
     shrinks = np.maximum(pixels[:-1] - pixels[1:], 0.0)
     with np.errstate(divide="ignore"):
-        limits = np.append(LEAST_LEFT * widths / shrinks, _safe(LARGEST_SHIFT * widths.sum(), pixels))
-    least = float(limits.min())
-    return _round_down(least) if np.isfinite(least) else 0.0
-
-
-def _safe(room: float, pixels: FloatArray) -> float:
-    largest = float(np.abs(pixels).max())
-    return room / largest if largest > 0.0 else np.inf
+        limits = np.append(LEAST_LEFT * widths / shrinks, LARGEST_SHIFT * widths.sum() / np.abs(pixels).max())
+    return _round_down(float(limits.min()))
 
 
 def _round_down(value: float) -> float:

@@ -12,31 +12,28 @@ from app.drawing.frame import Frame
 from app.drawing.member import Member
 from app.drawing.overlay import STEPS, Graded, Shade, Sign, shades
 from app.drawing.shapes import Box, Picture, Point, Stroke, Text
+from app.drawing.signs import Mark, sign_marks
 from app.units import format_value, symbol
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.sections import outline
 
 LEAST_HALF = 2.0  # pixels, as the body is drawn
-SIGN = 12.0  # px, of a sign on its ground and a gap
 STEP_WIDTH, BAR = 9.0, 8.0  # of the scale, px
 SAMPLES = 6  # of a stretch whose edge may be curved
 
 
 class Tint(Struct, frozen=True):
-    """A filled polygon: the colour of tension or compression in some strength, hatched where over 1."""
+    """A filled polygon: the colour of tension or compression in some strength.
+
+    It is hatched where over 1, and the other way where a check was not made.
+    """
 
     points: tuple[Point, ...]
     sign: Sign
     step: int
     over: bool = False
-
-
-class Mark(Struct, frozen=True):
-    """A + or − on a ground of its own."""
-
-    centre: Point
-    sign: Sign
+    unchecked: bool = False
 
 
 class Tinting(Struct, frozen=True):
@@ -51,17 +48,15 @@ class Tinting(Struct, frozen=True):
 def tinted(member: Member, frame: Frame, picture: Picture, shown: Graded) -> Tinting:
     """The body's stretches in their shades, with signs, and the scale where there is room for it."""
     body = _Body(member, frame, picture)
-    low, high = sorted((frame.ruler.begin, frame.ruler.end))
-    tints, marks = [], []
     last = len(member.project.segments)
-    for shade in shades(shown, frame.ruler):
-        a, b = sorted((frame.ruler.pixel(shade.first), frame.ruler.pixel(shade.last)))
-        if shade.segment < last and shade.sign and b > low and a < high:
-            tints.append(Tint(body.stretch(shade), shade.sign, shade.step, shade.over))
-    for index in range(min(last, len(shown.position) - 1)):
-        marks += body.signs(shown, index, (low, high))
+    found = [shade for shade in shades(shown, frame.ruler) if shade.until < last]
+    tints = tuple(
+        Tint(body.stretch(shade), shade.sign, shade.step, shade.over, shade.unchecked)
+        for shade in found
+        if shade.sign or shade.unchecked
+    )
     scale, words = _scale(frame, picture, shown, member)
-    return Tinting(tuple(tints), tuple(marks), tuple(scale), words)
+    return Tinting(tints, sign_marks(member, frame, picture, shown, found), tuple(scale), words)
 
 
 class _Body:
@@ -78,29 +73,16 @@ class _Body:
         """The part of a segment's outline between two places; results may be of an earlier, longer one."""
         segment = self._member.project.segments[shade.segment]
         start, end = self._member.position[shade.segment : shade.segment + 2]
-        places = np.clip(np.linspace(shade.first, shade.last, SAMPLES), start, end).tolist()
+        until = self._member.position[shade.until + 1]
+        samples = SAMPLES if shade.until == shade.segment else 2
+        places = np.clip(np.linspace(shade.first, shade.last, samples), start, until).tolist()
         edge = []
         for x in places:
-            depth = outline(segment.section, (x - start) / (end - start)).outer * self._picture.scale
+            share = min((x - start) / (end - start), 1.0)
+            depth = outline(segment.section, share).outer * self._picture.scale
             edge.append((self._frame.ruler.pixel(x), max(depth, LEAST_HALF)))
         upper = [self.point(a, -h) for a, h in edge]
         return (*upper, *(self.point(a, h) for a, h in reversed(edge)))
-
-    def signs(self, shown: Graded, index: int, window: tuple[float, float]) -> list[Mark]:
-        """+ or − on both sides of a segment's mark, where it has room for them."""
-        ends = sorted(self._frame.ruler.pixel(x) for x in self._member.position[index : index + 2])
-        low, high = max(ends[0], window[0]), min(ends[1], window[1])
-        extent = max(self._frame.measure(self._member.project.segments[index].mark, "strong"))
-        aside = max(0.25 * (high - low), 0.5 * extent + SIGN)
-        if 0.5 * (high - low) < aside + 0.6 * SIGN:
-            return []
-        marks = []
-        for along in (0.5 * (low + high) - aside, 0.5 * (low + high) + aside):
-            x = self._frame.ruler.position_at(along)
-            sign = int(np.sign(np.interp(x, shown.x, shown.value)))
-            if sign:
-                marks.append(Mark(self.point(along, 0.0), 1 if sign > 0 else -1))
-        return marks
 
 
 def _scale(
@@ -158,6 +140,8 @@ def scale_title(shown: Graded, member: Member) -> str:
     name = "N" if shown.quantity == "force" else "σ"
     if shown.governing:
         return tr("{name} {unit}, largest of all:").format(name=name, unit=unit)
+    if not shown.checked:
+        return tr("{name} {unit}, not checked:").format(name=name, unit=unit)
     return f"{name} {unit}:"
 
 
@@ -180,11 +164,12 @@ def displaced_outline(
     along = [ruler.pixel(x) + shift for x, shift in zip(member.position, shifts, strict=False)]
     strokes = []
     for segment, a, b in zip(member.project.segments, along[:-1], along[1:], strict=False):
+        if not _near(a, b, frame):
+            continue
         ends = [max(outline(segment.section, s).outer * picture.scale, LEAST_HALF) for s in (0.0, 1.0)]
         corners = ((a, -ends[0]), (b, -ends[1]), (b, ends[1]), (a, ends[0]))
         points = tuple(body.point(*corner) for corner in corners)
-        if _near(a, b, frame):
-            strokes.append(Stroke(points, "quiet", 1.3, closed=True))
+        strokes.append(Stroke(points, "quiet", 1.3, closed=True))
     return tuple(strokes)
 
 

@@ -16,7 +16,8 @@ from app.drawing.frame import Detail
 from app.drawing.member import Member
 from app.drawing.overlay import STEPS, Graded, displaced_factor, displacements, graded
 from app.drawing.shapes import Stroke
-from app.drawing.tinting import Mark, Tint, Tinting, displaced_outline, legend_size, tinted
+from app.drawing.signs import GROUND, Mark
+from app.drawing.tinting import Tint, Tinting, displaced_outline, legend_size, tinted
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.sheet_items import Painted
 from app.gui.sheet_layout import Place
@@ -30,7 +31,6 @@ from solver.results import Results
 UNDER_Z, OVER_Z = 9.0, 11.0  # of the drawing, which has 10
 STRONGEST = 0.42  # share of the ink in the darkest shade, on which marks still stand out
 BEYOND = 40.0  # px, as far as the displaced shape may reach out of the window
-GROUND = 6.5  # radius of the ground of a sign, px
 
 
 class ResultsOnDrawing:
@@ -97,7 +97,7 @@ class ResultsOnDrawing:
         if self._moved is None:
             return tr("displaced shape: choose a single state at Show")
         if not self._factor:
-            return tr("displaced shape: nothing moves")
+            return tr("displaced shape: no joint moves")
         factor = format_value(self._factor, "factor", member.system, strip=True)
         return tr("displaced ×{factor}").format(factor=factor)
 
@@ -150,6 +150,9 @@ class Colours(Painted):
         painter.drawPolygon(shape)
         if tint.over:
             painter.setBrush(QBrush(colour(self._theme.over), Qt.BrushStyle.BDiagPattern))
+            painter.drawPolygon(shape)
+        if tint.unchecked:
+            painter.setBrush(QBrush(colour(self._theme.joint), Qt.BrushStyle.FDiagPattern))
             painter.drawPolygon(shape)
 
 

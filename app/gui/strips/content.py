@@ -12,7 +12,13 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from app.allowable_lines import NOTHING, allowable_lines, allowable_texts, over_least
+from app.allowable_lines import (
+    NOTHING,
+    allowable_lines,
+    allowable_texts,
+    over_least,
+    unchecked_segments,
+)
 from app.gui.strips.company import (
     COMPRESSION,
     NONE,
@@ -230,13 +236,10 @@ class _Builder:
         return Extreme(float(self._x[at]), value, number(kind, value, self._system))
 
     def _unchecked(self) -> tuple[tuple[float, float], ...]:
-        """Segments with a check of stress not made in a shown state, or without any utilisation."""
-        missing = {int(i) for i in np.unique(self._segment[np.isnan(self._utilisation)])}
-        names = {self._results.states[i].name for i in self._states if self._results.states[i].checked}
-        marks = {c.segment for c in self._results.checks if c.status == "not_made" and c.combination in names}
-        missing |= {i for i, s in enumerate(self._results.project.segments) if s.mark in marks}
+        """Where a check of stress was not made, or there is no utilisation."""
+        found = unchecked_segments(self._results, self._states, self._segment, self._utilisation)
         position = self._results.position
-        return tuple((float(position[i]), float(position[i + 1])) for i in sorted(missing))
+        return tuple((float(position[i]), float(position[i + 1])) for i in sorted(found))
 
 
 def _range(columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float) -> tuple[float, float]:

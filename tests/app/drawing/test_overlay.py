@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from itertools import pairwise
+from itertools import groupby, pairwise
 
 import numpy as np
 import pytest
@@ -17,6 +17,7 @@ from app.drawing.overlay import (
     LARGEST_SHIFT,
     LEAST_LEFT,
     STEPS,
+    Graded,
     displaced_factor,
     displacements,
     graded,
@@ -68,6 +69,45 @@ class TestShades:
         assert whole.governing
         assert whole.largest == pytest.approx(max(one.largest for one in singles))
 
+    def test_a_peak_that_is_narrower_than_a_slice_is_over(self):
+        x = np.array([0.0, 0.5, 0.999, 1.0])
+        shown = by_hand(x, utilisation=np.array([0.5, 0.5, 0.9, 1.2]))
+        found = shades(shown, Ruler.fitting((0.0, 1.0), 0.0, 800.0))
+        assert [shade.over for shade in found] == [False, True]
+        assert found[-1].last == 1.0
+
+    @pytest.mark.parametrize("count", [700, 3000])
+    def test_of_many_short_segments_the_worst_of_a_pixel_is_shown(self, count):
+        joints = np.linspace(0.0, 1.0, count + 1)
+        segment = np.repeat(np.arange(count), 2)
+        x = np.stack([joints[:-1], joints[1:]], axis=1).ravel()
+        value, utilisation = np.ones(2 * count), np.full(2 * count, 0.5)
+        value[600:602], utilisation[600:602] = 10.0, 1.2
+        shown = replace(by_hand(x, value, utilisation), position=joints, segment=segment)
+        shown = replace(shown, unchecked=np.arange(count) == 400)
+        found = shades(shown, Ruler.fitting(tuple(joints.tolist()), 0.0, 800.0))
+        assert len(found) <= 801
+        (over,) = (shade for shade in found if shade.over)
+        assert over.first <= joints[300]
+        assert over.last >= joints[301]
+        assert over.step == STEPS
+        (missing,) = (shade for shade in found if shade.unchecked)
+        assert missing.segment - count / 800.0 <= 400 <= missing.until + count / 800.0
+        assert all(a.last == pytest.approx(b.first) for a, b in pairwise(found))
+
+    def test_only_what_the_window_shows_is_made(self):
+        results = solve(busy_member(100))
+        whole = Ruler.fitting(results.position.tolist(), 0.0, 800.0)
+        closer = whole.showing(*results.position[[40, 42]].tolist())
+        found = shades(graded(results, 0, "stress"), closer)
+        assert {40, 41} <= {s.segment for s in found} <= {39, 40, 41, 42}
+
+    @pytest.mark.parametrize("state", [0, None], ids=["state", "envelope"])
+    def test_a_segment_without_an_allowable_is_marked_as_not_checked(self, state):
+        found = graded(solve(without_allowables(read_sample("tie_rod"), "C")), state, "stress")
+        ruler = Ruler.fitting(ROD.position.tolist(), 0.0, 800.0)
+        assert {shade.segment for shade in shades(found, ruler) if shade.unchecked} == {2}
+
     def test_nothing_is_coloured_where_nothing_acts(self):
         project = busy_member(2)
         idle = replace_loads(project)
@@ -75,11 +115,47 @@ class TestShades:
         assert graded(ROD, STORM, "none") is None
 
 
+def by_hand(x, value=None, utilisation=None):
+    return Graded(
+        quantity="stress",
+        position=x[[0, -1]],
+        x=x,
+        segment=np.zeros(len(x), dtype=int),
+        value=np.ones(len(x)) if value is None else value,
+        utilisation=utilisation,
+        unchecked=np.zeros(1, dtype=bool),
+        governing=False,
+        checked=True,
+    )
+
+
+def without_allowables(project: Project, mark: str) -> Project:
+    """The project with a segment whose material has no allowable stress."""
+    from msgspec import UNSET
+    from msgspec.structs import replace as changed
+
+    index = next(i for i, s in enumerate(project.segments) if s.mark == mark)
+    segment = project.segments[index]
+    kind = next(m for m in project.materials if m.name == segment.material)
+    bare = changed(kind, name="bare", allowable_tension=UNSET, allowable_compression=UNSET)
+    segments = list(project.segments)
+    segments[index] = changed(segment, material="bare")
+    return changed(project, materials=(*project.materials, bare), segments=tuple(segments))
+
+
 def replace_loads(project: Project) -> Project:
     from msgspec.structs import replace as changed
 
     cases = tuple(changed(c, gravity=0.0, segment_loads=(), joint_loads=()) for c in project.load_cases)
     return changed(project, load_cases=cases)
+
+
+def runs(found, ruler, sign):
+    """The pixels of the runs of shades of one sign."""
+    for own, run in groupby(found, key=lambda shade: shade.sign):
+        stretch = list(run)
+        if own == sign:
+            yield tuple(sorted((ruler.pixel(stretch[0].first), ruler.pixel(stretch[-1].last))))
 
 
 class TestTinting:
@@ -103,6 +179,40 @@ class TestTinting:
         assert len(found.texts) == 3
         assert not any(a.box.meets(b.box) for a in found.texts for b in picture.texts)
         assert ("largest of all" in found.texts[0].text) is (state is None)
+
+    @BOTH_WAYS
+    def test_what_was_not_checked_is_hatched_another_way(self, upright):
+        project = without_allowables(read_sample("tie_rod"), "C")
+        _frame, _picture, found = coloured(project, solve(project), STORM, upright=upright)
+        assert 0 < sum(tint.unchecked for tint in found.tints) < len(found.tints)
+        assert not any(tint.unchecked and tint.over for tint in found.tints)
+
+    def test_a_state_that_is_not_checked_says_so_with_its_scale(self):
+        results = solve(uneven_member())
+        state = next((i for i, s in enumerate(results.states) if not s.checked), None)
+        assert state is not None
+        _frame, _picture, found = coloured(uneven_member(), results, state, upright=False)
+        assert "not checked" in found.texts[0].text
+
+    @BOTH_WAYS
+    @pytest.mark.parametrize("count", [12, 60, 200])
+    def test_short_segments_carry_a_sign_for_each_run(self, upright, count):
+        project = busy_member(count)
+        results = solve(project)
+        frame, picture, found = coloured(project, results, 0, upright=upright)
+        way = 1 if upright else 0
+        for sign in (-1, 1):
+            wide = [
+                span
+                for span in runs(shades(graded(results, 0, "stress"), frame.ruler), frame.ruler, sign)
+                if span[1] - span[0] > 15.0
+            ]
+            places = [mark.centre[way] for mark in found.marks if mark.sign == sign]
+            assert all(any(low <= at <= high for at in places) for low, high in wide)
+        axis = picture.axis
+        for mark in found.marks:
+            if mark.centre[1 - way] == axis:
+                assert all(abs(mark.centre[way] - c.centre[way]) > c.radius for c in picture.circles)
 
     def test_signs_keep_off_the_marks(self):
         _frame, picture, found = coloured(read_sample("tie_rod"), ROD, STORM, upright=False)
@@ -138,6 +248,11 @@ class TestDisplaced:
         member = drawn(read_sample("tie_rod"))
         ruler = Ruler.fitting(member.position, 0.0, 800.0)
         assert displaced_factor(member, ruler, np.zeros(9)) == 0.0
+
+    def test_rounding_is_no_displacement(self):
+        member = drawn(read_sample("tie_rod"))
+        ruler = Ruler.fitting(member.position, 0.0, 800.0)
+        assert displaced_factor(member, ruler, np.full(9, 1e-19)) == 0.0
 
     @BOTH_WAYS
     def test_joints_lie_where_they_have_moved_to(self, upright):
