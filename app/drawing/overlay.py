@@ -19,7 +19,7 @@ from app.drawing.ruler import Ruler
 from app.looks import Colour
 from solver.arrays import BoolArray, FloatArray, IntArray
 from solver.checks import PASS_MARGIN
-from solver.fields import checked_states, curves, envelope
+from solver.fields import Curves, Envelope, checked_states, curves, envelope
 from solver.results import Results
 
 STEPS = 5  # shades from 0 to the largest magnitude
@@ -71,6 +71,7 @@ def graded(results: Results, state: int | None, colour: Colour) -> Graded | None
     """What is shown as colour of a state, or of the envelope (None); None where it is nothing everywhere."""
     if colour == "none":
         return None
+    curve: Curves | Envelope
     if state is None:
         whole = envelope(results)
         high, low = (getattr(whole, f"{colour}_{side}") for side in ("max", "min"))
@@ -169,7 +170,8 @@ def _largest_in(places: FloatArray, x: FloatArray, value: FloatArray) -> FloatAr
     at_places = np.interp(places, x, value)
     inside = np.full(len(places) - 1, -np.inf)
     np.maximum.at(inside, np.clip(np.searchsorted(places, x, "right") - 1, 0, len(inside) - 1), value)
-    return np.maximum(inside, np.maximum(at_places[:-1], at_places[1:]))
+    largest: FloatArray = np.maximum(inside, np.maximum(at_places[:-1], at_places[1:]))
+    return largest
 
 
 def _steps(share: FloatArray) -> list[int]:
