@@ -122,12 +122,14 @@ def check_text(file: str, *, cures: bool = True) -> Outcome:
     """The check as a table to read, with what would make the worst failing checks pass."""
     from app.cures import failing, is_small, seek
     from app.outcome import Outcome
+    from app.phrases.cures import unsought_sentence
     from app.terminal import report
 
     project, results = solved(file)
-    subjects = failing(results)[:MOST_CURED] if cures and is_small(results) else ()
-    cured = [seek(results, subject) for subject in subjects]
-    return Outcome(verdict_code(results), shown(report(project, results, file, cured)))
+    failed, small = failing(results) if cures else (), is_small(results)
+    cured = [seek(results, subject) for subject in failed[:MOST_CURED] if small]
+    unsought = unsought_sentence(len(failed), MOST_CURED, small=small) if failed else ""
+    return Outcome(verdict_code(results), shown(report(project, results, file, cured, unsought)))
 
 
 def run_sheet(options: Namespace) -> int:

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections import defaultdict
 from collections.abc import Callable, Iterator, Sequence
+from itertools import zip_longest
 from pathlib import Path
 
 from app.columns import one_line, table
@@ -26,8 +27,13 @@ NOT_MADE = "?"  # beside a utilisation: another check of the same thing could no
 NOTHING = "–"
 
 
-def report(project: Project, results: Results, file: str, cured: Sequence[Cures] = ()) -> str:
-    """The check of one file as lines, in the project's display units; `cured` is for what fails."""
+def report(
+    project: Project, results: Results, file: str, cured: Sequence[Cures] = (), unsought: str = ""
+) -> str:
+    """The check of one file as lines, in the project's display units; `cured` is for what fails.
+
+    `unsought` says why there are cures for none or not all of it.
+    """
     system = project.display.unit_system
     found = findings(results, system)
     blocks = [
@@ -35,7 +41,7 @@ def report(project: Project, results: Results, file: str, cured: Sequence[Cures]
         verdict(results, found, system),
         *utilisations(results),
         *limits(results),
-        *cures(cured),
+        *cures(cured, unsought),
         forces(found.books),
         remarks(found),
     ]
@@ -75,18 +81,21 @@ def limits(results: Results) -> Iterator[str]:
         yield table(head, [[name, *row] for name, row in rows.items()])
 
 
-def cures(cured: Sequence[Cures]) -> Iterator[str]:
-    """What would make the failing checks pass, the worst first."""
-    lines = [
-        tr("{subject}: {sentence}").format(subject=subject_words(item.subject), sentence=sentence)
-        for item in cured
-        for sentence in cures_sentences(item)
-    ]
-    if lines:
-        yield "".join(
-            f"{one_line(line)}\n"
-            for line in (tr("What one changed number would cure, proved by a new solve"), *lines)
-        )
+def cures(cured: Sequence[Cures], unsought: str) -> Iterator[str]:
+    """What would make the failing checks pass, the worst first; what cures several together is said once."""
+    lines = dict.fromkeys(line for item in cured for line in map(one_line, _cure_lines(item)))
+    head = [tr("What one changed number would cure, proved by a new solve")] if lines else []
+    whole = [*head, *lines, *filter(None, (unsought,))]
+    if whole:
+        yield "".join(f"{line}\n" for line in whole)
+
+
+def _cure_lines(item: Cures) -> Iterator[str]:
+    for cure, sentence in zip_longest(item.found, cures_sentences(item)):
+        if cure is not None and len(cure.subjects) > 1:
+            yield sentence  # which names them
+        else:
+            yield tr("{subject}: {sentence}").format(subject=subject_words(item.subject), sentence=sentence)
 
 
 def subject(check: Check) -> str:

@@ -35,26 +35,37 @@ def solve(
     Raises an `InputError` (`NotSolvable`, `StiffnessContrast`, `BoundNotMet`, `OutOfRange`) or `Cancelled`.
     """
     _refuse_unsolvable(project)
+    _ask(cancelled)
     chain, loads, states = pack(project, cases=cases)
     _refuse_out_of_range(chain, states)
     names = tuple(state.name for state in states)
     solution = solve_axial(chain, loads, names=names, tolerance=tolerance, cancelled=cancelled)
-    if cancelled():
-        raise Cancelled
+    _ask(cancelled)
     with np.errstate(all="ignore"):  # what overflows is found by its result
-        results = _results(project, chain, loads, states, solution)
+        results = _results(project, chain, loads, states, solution, cancelled)
     _refuse_overflow(results)
     return results
 
 
+def _ask(cancelled: Callable[[], bool]) -> None:
+    if cancelled():
+        raise Cancelled
+
+
 def _results(
-    project: Project, chain: Chain, loads: Loads, states: tuple[State, ...], solution: Solution
+    project: Project,
+    chain: Chain,
+    loads: Loads,
+    states: tuple[State, ...],
+    solution: Solution,
+    cancelled: Callable[[], bool],
 ) -> Results:
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
     finder = ExtremeFinder(chain, solution, position)
     stress, force = finder.stress(), finder.force()
     limits = allowables(project, states)
     stress_checks = check_stresses(stress, force, solution.force_bound, limits)
+    _ask(cancelled)
     checks = Checker(project, states, solution, position, stress_checks).checks()
     segment_mass = frozen(_segment_mass(chain))
     return Results(

@@ -40,17 +40,19 @@ _Ends: TypeAlias = tuple[str, ...]  # a dimension's text at the start, and at th
 
 @dataclass(frozen=True, slots=True)
 class Change:
-    """Another section or spring at a place of the project, with its text and unit as a person types it."""
+    """Another section or spring at places of the project, with its text and unit as a person types it."""
 
-    place: Place
+    places: tuple[Place, ...]
     value: AnySection | SpringSupport
     text: str
-    mark: str
+    marks: tuple[str, ...]
     kind: Literal["section", "spring"]
 
     def applied(self, project: Project) -> Project:
         """The project with it; EditError where that is not well formed."""
-        return edits.set_value(project, self.place, self.value)
+        for place in self.places:
+            project = edits.set_value(project, place, self.value)
+        return project
 
 
 @dataclass(frozen=True, slots=True)
@@ -61,20 +63,22 @@ class Knob:
     change: Callable[[float], Change]
 
 
-def section_knobs(project: Project, index: int) -> tuple[Knob, ...]:
-    """The dimensions of a segment's section, each made larger by itself."""
-    segment, system = project.segments[index], project.display.unit_system
+def section_knobs(project: Project, *indices: int) -> tuple[Knob, ...]:
+    """The dimensions of the one section that these segments have, each made larger by itself."""
+    section_now, system = project.segments[indices[0]].section, project.display.unit_system
+    places = tuple(("segments", index, "section") for index in indices)
+    marks = tuple(project.segments[index].mark for index in indices)
 
     def knob(dimension: _Dimension) -> Knob:
         def change(value: float) -> Change:
-            section = parse_section(dimension.text(value), system, segment.section)
+            section = parse_section(dimension.text(value), system, section_now)
             shown = f"{section_text(section, system)} {symbol(dimension.quantity, system)}"
-            return Change(("segments", index, "section"), section, shown, segment.mark, "section")
+            return Change(places, section, shown, marks, "section")
 
         reach = LARGEST**2 if dimension.quantity == "area" else LARGEST
         return Knob(round_numbers(dimension.start, reach, dimension.quantity, system), change)
 
-    return tuple(map(knob, _dimensions(segment.section, system)))
+    return tuple(map(knob, _dimensions(section_now, system)))
 
 
 @dataclass(frozen=True, slots=True)
@@ -158,7 +162,7 @@ def spring_knobs(project: Project, index: int) -> tuple[Knob, ...]:
     def change(value: float) -> Change:
         text = format_value(value, "spring", system, 6, strip=True, with_unit=True)
         support = SpringSupport(stiffness=value)
-        return Change(("joints", index, "support"), support, text, joint.mark, "spring")
+        return Change((("joints", index, "support"),), support, text, (joint.mark,), "spring")
 
     start = joint.support.stiffness
     reaches = (SPRING, 1.0 / SPRING)

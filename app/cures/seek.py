@@ -1,8 +1,9 @@
 """The search for cures of one finding: knobs tried one after the other, each answer proved by its own solve.
 
-For a stress the dimensions of the segment's own section; for a limit the springs of the supports and, for
-displacements, the sections of those segments that stretch most. A changed member that cannot be solved, or in
-which a check of the subject can no longer be made, does not pass.
+For a stress the dimensions of the segment's own section; where others of the very same section fail too,
+that of all of them at once, since they are parts of one kind. For a limit the springs of the supports and,
+for displacements, the sections of those segments that stretch most. A changed member that cannot be solved,
+or in which a check of the subject can no longer be made, does not pass.
 """
 
 from __future__ import annotations
@@ -32,11 +33,11 @@ MOST_CHECKS: Final = 5000  # above, a search of some dozens of solves takes long
 
 @dataclass(frozen=True, slots=True)
 class Cure:
-    """A change with which every check of the subject passes, and what the solve that proves it says else."""
+    """A change with which every check of its subjects passes, and what the solve that proves it says else."""
 
-    subject: Subject
+    subjects: tuple[Subject, ...]  # the one it was sought for, and all that are changed alike
     change: Change
-    worst: Check  # of the subject, with the change
+    worst: Check  # of the subjects, with the change
     fails_then: tuple[Check, ...]  # the worst of every other subject that fails only with the change
     still_fails: tuple[Check, ...]  # the same of those that failed before as well
     unchecked_then: tuple[Check, ...]  # checks elsewhere that the change keeps from being made
@@ -64,12 +65,36 @@ def is_small(results: Results) -> bool:
 
 def seek(results: Results, subject: Subject, cancelled: Callable[[], bool] = never) -> Cures:
     """The cures of a subject that fails in these results. Raises Cancelled."""
-    trials = _Trials(results, subject, cancelled)
-    groups = _knobs(results, subject)
-    found = [cure for knobs in groups if (cure := _nearest(map(trials.cure, knobs))) is not None]
-    found.sort(key=lambda pair: pair[0])
+    trials = _Trials(results, (subject,), cancelled)
+    alone = _nearest_first(trials, _knobs(results, subject))
+    alike = _fail_alike(results, subject)
+    together = _together(results, alike, cancelled) if len(alike) > 1 else []
+    same = {cure.change.value for cure in together}  # what all need is no news of one of them
+    found = [*together, *(cure for cure in alone if cure.change.value not in same)]
     tried = trials.largest if not found and subject.kind == "stress" else None
-    return Cures(subject, tuple(cure for _, cure in found[:MOST_CURES]), tried)
+    return Cures(subject, tuple(found[:MOST_CURES]), tried)
+
+
+def _fail_alike(results: Results, subject: Subject) -> list[int]:
+    """The segments with the very section of the subject's that do not pass, in order."""
+    if subject.kind != "stress":
+        return []
+    failed = {mark for found in failing(results) if found.kind == "stress" for mark in found.marks}
+    segments = results.project.segments
+    section = next(segment.section for segment in segments if segment.mark == subject.marks[0])
+    return [i for i, one in enumerate(segments) if one.mark in failed and one.section == section]
+
+
+def _together(results: Results, alike: Sequence[int], cancelled: Callable[[], bool]) -> list[Cure]:
+    """The nearest cure of all these segments at once, as the only one."""
+    subjects = tuple(Subject("stress", (results.project.segments[index].mark,)) for index in alike)
+    trials = _Trials(results, subjects, cancelled)
+    return _nearest_first(trials, [(knob,) for knob in section_knobs(results.project, *alike)])[:1]
+
+
+def _nearest_first(trials: _Trials, groups: Sequence[tuple[Knob, ...]]) -> list[Cure]:
+    found = [cure for knobs in groups if (cure := _nearest(map(trials.cure, knobs))) is not None]
+    return [cure for _, cure in sorted(found, key=lambda pair: pair[0])]
 
 
 _Ranked = tuple[float, Cure]  # how far away, and the cure
@@ -110,17 +135,22 @@ def _most_stretched(results: Results, subject: Subject) -> list[int]:
 
 
 class _Trials:
-    """Solves of the changed project, and what they say of the subject."""
+    """Solves of the changed project, and what they say of the subjects."""
 
-    def __init__(self, results: Results, subject: Subject, cancelled: Callable[[], bool]) -> None:
+    def __init__(
+        self, results: Results, subjects: tuple[Subject, ...], cancelled: Callable[[], bool]
+    ) -> None:
         self._before = results
-        self._subject = subject
+        self._subjects = subjects
         self._cancelled = cancelled
         self._missing = _not_made(results.checks)
         self.largest: Change | None = None  # of the first knob
 
     def cure(self, knob: Knob) -> _Ranked | None:
-        """The nearest value found to cure the subject, with how far away it is as a share of the reach."""
+        """The nearest value found to cure the subjects, with how far away it is as a share of the reach.
+
+        It is solved once more with every case alone as well, as the window does: these can keep from solving.
+        """
         proved: list[tuple[Change, Results]] = []
 
         def passes(index: int) -> bool:
@@ -132,7 +162,7 @@ class _Trials:
             return True
 
         index = first_passing(len(knob.values), passes)
-        if index is None:
+        if index is None or self._solved(proved[0][0], cases=True) is None:
             return None
         return (index + 1) / len(knob.values), self._told(*proved[0])
 
@@ -146,17 +176,20 @@ class _Trials:
             self.largest = change
         return change
 
-    def _solved(self, change: Change | None) -> Results | None:
+    def _solved(self, change: Change | None, *, cases: bool = False) -> Results | None:
         """The results with the change; None where there are none."""
         try:
             changed = change.applied(self._before.project) if change else None
-            return solve(changed, cases=False, cancelled=self._cancelled) if changed else None
+            return solve(changed, cases=cases, cancelled=self._cancelled) if changed else None
         except (EditError, InputError):
             return None
 
     def _cured(self, results: Results) -> bool:
-        """Whether all of the subject's checks pass, none of them is lost, and there is one."""
-        own = [check for check in results.checks if subject_of(check) == self._subject]
+        """Whether all checks of each subject pass, none of them is lost, and there is one."""
+        return all(self._passes(results, subject) for subject in self._subjects)
+
+    def _passes(self, results: Results, subject: Subject) -> bool:
+        own = [check for check in results.checks if subject_of(check) == subject]
         lost = _not_made(own) - self._missing
         return not lost and any(c.status == "pass" for c in own) and all(c.status != "fail" for c in own)
 
@@ -165,9 +198,9 @@ class _Trials:
         before = set(failing(self._before))
         fails = {subject: worst[subject] for subject in failing(results)}
         return Cure(
-            subject=self._subject,
+            subjects=self._subjects,
             change=change,
-            worst=worst[self._subject],
+            worst=max((worst[subject] for subject in self._subjects), key=utilisation_of),
             fails_then=tuple(check for subject, check in fails.items() if subject not in before),
             still_fails=tuple(check for subject, check in fails.items() if subject in before),
             unchecked_then=tuple(_not_made_checks(results.checks, self._missing)),

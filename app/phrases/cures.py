@@ -37,17 +37,24 @@ def subject_words(subject: Subject) -> str:
 
 def change_words(change: Change, subject: Subject) -> str:
     """The change: "⌀42.5 mm", or with its place where that is not the subject's own section."""
-    if change.kind == "section" and subject == Subject("stress", (change.mark,)):
+    if change.kind == "section" and subject == Subject("stress", change.marks):
         return change.text
-    return tr(CHANGES[change.kind]).format(value=change.text, mark=change.mark)
+    return tr(CHANGES[change.kind]).format(value=change.text, mark=listed(change.marks))
 
 
 def cure_sentence(cure: Cure) -> str:
     """What passes, and what does not: "Passes with ⌀42.5 mm, 0.99; then B does not pass, 1.03"."""
-    passes = tr("Passes with {change}, {utilisation}").format(
-        change=change_words(cure.change, cure.subject), utilisation=_utilisation(cure.worst)
-    )
-    return "; ".join((passes, *_reservations(cure)))
+    return "; ".join((_passes(cure), *_reservations(cure)))
+
+
+def _passes(cure: Cure) -> str:
+    utilisation = _utilisation(cure.worst)
+    if len(cure.subjects) > 1:
+        said = tr("{subjects} pass with {change} each, {utilisation}")
+        names = listed([subject_words(subject) for subject in cure.subjects])
+        return said.format(subjects=names, change=cure.change.text, utilisation=utilisation)
+    said = tr("Passes with {change}, {utilisation}")
+    return said.format(change=change_words(cure.change, cure.subjects[0]), utilisation=utilisation)
 
 
 def cures_sentences(cures: Cures) -> tuple[str, ...]:
@@ -80,3 +87,12 @@ def _one(template: str, check: Check) -> str:
 
 def _utilisation(check: Check) -> str:
     return utilisation_text(check.utilisation or 0.0, check.status)
+
+
+def unsought_sentence(count: int, most: int, *, small: bool) -> str:
+    """Why cures stand under none or not all of the `count` that fail; empty where they are sought for all."""
+    if not small:
+        return tr("No cures are sought: the member has too many checks")
+    if count > most:
+        return tr("Cures are sought for the {most} worst only").format(most=most)
+    return ""

@@ -171,21 +171,34 @@ class TestJump:
 class TestCures:
     def test_a_cure_is_shown_and_applied_as_one_step(self, qtbot, window):
         cured(qtbot, window)
-        first, _ = window.findings.cure_lines
-        assert (
-            first.sentence.replace("\u00a0", " ")
-            == "Passes with A 860 mm², 1.00; F still does not pass, 1.05"
-        )
-        assert first.accessibleName().startswith("Apply: Passes with")
+        first, second = window.findings.cure_lines
+        assert first.sentence.replace("\u00a0", " ") == "D, F pass with A 860 mm² each, 1.00"
+        assert second.sentence == first.sentence, "under F as well"
+        assert first.accessibleName().startswith("Apply: D, F pass with")
         window.findings.ensureWidgetVisible(first)
         qtbot.mouseClick(first, Qt.MouseButton.LeftButton, pos=first._control().center().toPoint())
-        assert window.document.project.segments[3].section == AreaSection(area=8.6e-4)
-        assert window.document.undo_name == "Section of D"
+        sections = [window.document.project.segments[index].section for index in (3, 5)]
+        assert sections == [AreaSection(area=8.6e-4)] * 2
+        assert window.document.undo_name == "Section of D, F"
         assert window.findings.cure_lines == (), "of the member before"
         cured(qtbot, window)
-        assert [line.cure.subject.marks for line in window.findings.cure_lines] == [("F",)]
+        assert window.findings.cure_lines == ()
+        assert window.findings.headline != "Does not pass"
         window.on_undo()
         assert window.document.project == read_sample("tie_rod")
+
+    def test_where_none_are_sought_that_is_said(self, qtbot, window, monkeypatch):
+        cured(qtbot, window)
+        said = window.findings._uncured
+        assert said.isHidden()
+        monkeypatch.setattr("app.gui.findings.curing.is_small", lambda _results: False)
+        window.document.commit(edits.set_value(window.document.project, ("title",), "Rod"), "Title")
+        cured(qtbot, window)
+        assert said.isVisible()
+        assert "too many checks" in said.text()
+        window.document.load(read_sample("hoist_shaft"), None)
+        cured(qtbot, window)
+        assert said.isHidden()
 
     def test_the_sentence_itself_is_no_button(self, qtbot, window):
         cured(qtbot, window)
@@ -200,7 +213,7 @@ class TestCures:
         qtbot.keyClick(row, Qt.Key.Key_Tab)
         assert window.focusWidget() is window.findings.cure_lines[0]
         qtbot.keyClick(window.focusWidget(), Qt.Key.Key_Return)
-        assert window.document.undo_name == "Section of D"
+        assert window.document.undo_name == "Section of D, F"
         assert row.hasFocus()
 
     def test_an_edit_takes_the_cures_away_at_once_and_new_ones_come(self, qtbot, window, table):
@@ -263,7 +276,7 @@ class TestCures:
         window.document.commit(edits.set_value(window.document.project, ("title",), "Rod"), "Title")
         cured(qtbot, window)
         assert logged == ["cures"]
-        assert [line.cure.subject.marks for line in window.findings.cure_lines] == [("F",)]
+        assert [line.cure.change.marks for line in window.findings.cure_lines] == [("D", "F")]
 
     def test_a_cure_for_an_earlier_member_is_not_made(self, qtbot, window):
         cured(qtbot, window)

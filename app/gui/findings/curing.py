@@ -13,13 +13,16 @@ from typing import Final
 from PySide6.QtCore import QObject, QTimer, Signal
 
 from app.cures import Cure, Cures, is_small
+from app.cures import failing as failing_of
 from app.findings import Findings
+from app.findings.listing import listed
 from app.findings.subjects import Subject
 from app.gui import log
 from app.gui.document import Document
 from app.gui.findings.panel import FindingsPanel
 from app.gui.show import Showing
 from app.gui.worker import Delivery, LatestSolver
+from app.phrases.cures import unsought_sentence
 from app.words import tr
 from solver.results import Results
 
@@ -86,6 +89,7 @@ class Curing(QObject):
         self._pause.stop()
         self.solver.cancel()
         self._panel.show_cures({})
+        self._panel.say_what_is_unsought(_unsought(results))
         if results is not None and results.verdict == "fail" and is_small(results):
             self._pause.start()
 
@@ -130,12 +134,19 @@ class Curing(QObject):
             self.told.emit(tr("the member has changed since: a cure for it is being sought"))
             return
         name = tr("Section of {mark}") if cure.change.kind == "section" else tr("Spring at joint {mark}")
-        self._document.commit(cure.change.applied(self._document.project), name.format(mark=cure.change.mark))
+        project = cure.change.applied(self._document.project)
+        self._document.commit(project, name.format(mark=listed(cure.change.marks)))
 
     def close(self) -> None:
         """End cleanly, also while it seeks."""
         self._pause.stop()
         self.solver.close()
+
+
+def _unsought(results: Results | None) -> str:
+    if results is None or results.verdict != "fail":
+        return ""
+    return unsought_sentence(len(failing_of(results)), MOST, small=is_small(results))
 
 
 def failing(findings: Findings) -> list[Subject]:

@@ -77,7 +77,9 @@ class FindingsPanel(QScrollArea):
         column.setSpacing(2)
         self._headline, self._detail = QLabel(), QLabel()
         self._stale, self._error = QLabel(tr("out of date")), QLabel()
-        self._labels = (self._headline, self._detail, self._stale, self._error)
+        self._uncured = QLabel()
+        self._uncured.hide()
+        self._labels = (self._headline, self._detail, self._stale, self._uncured, self._error)
         for label in self._labels:
             label.setWordWrap(True)
             label.setTextFormat(Qt.TextFormat.PlainText)
@@ -87,7 +89,7 @@ class FindingsPanel(QScrollArea):
         self._against = LinesBlock(self._theme, self._fonts)
         self._against.hide()
         self.filter = FilterBar()
-        for part in (self._headline, self._detail, self._stale, self._against, self.filter):
+        for part in (self._headline, self._detail, self._stale, self._against, self.filter, self._uncured):
             column.addWidget(part)
         for box in (rows_box, self._blocks_box):
             box.setSpacing(2)
@@ -160,6 +162,11 @@ class FindingsPanel(QScrollArea):
         self._show_blocks()
         self._list.light(self._view.selection)
         self._dress()
+
+    def say_what_is_unsought(self, sentence: str) -> None:
+        """Say why cures stand under none or not all of what fails; nothing where they are sought for all."""
+        self._uncured.setText(sentence)
+        self._uncured.setVisible(bool(sentence))
 
     def show_cures(self, cures: Mapping[Subject, Cures]) -> None:
         """Show what would cure the findings that are shown now."""

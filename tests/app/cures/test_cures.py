@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from dataclasses import replace
 from fractions import Fraction
+from importlib import import_module
 
 import pytest
 from hypothesis import assume, given, settings
@@ -18,11 +19,11 @@ from app.cures.rounds import above, round_numbers
 from app.cures.search import first_passing
 from app.entry import parse_entry
 from app.findings.subjects import Subject, subject_of
-from app.phrases.cures import cure_sentence, cures_sentences
+from app.phrases.cures import cure_sentence, cures_sentences, unsought_sentence
 from app.samples import read_sample
 from app.section_entry import parse_section
 from app.units import SYSTEM_NAMES, entry_text
-from solver.errors import Cancelled
+from solver.errors import Cancelled, OutOfRange
 from solver.model import (
     DisplacementLimit,
     FixedSupport,
@@ -62,12 +63,15 @@ def sought(project, subject=None):
 
 def typed(project, change):
     """The project with the change typed as its text, as a person would."""
-    old = edits.value_at(project, change.place)
     system = project.display.unit_system
-    if change.kind == "section":
-        return edits.set_value(project, change.place, parse_section(change.text, system, old))
-    stiffness = parse_entry(change.text.replace("\u202f", ""), "spring", system)
-    return edits.set_value(project, (*change.place, "stiffness"), stiffness)
+    for place in change.places:
+        old = edits.value_at(project, place)
+        if change.kind == "section":
+            project = edits.set_value(project, place, parse_section(change.text, system, old))
+        else:
+            stiffness = parse_entry(change.text.replace("\u202f", ""), "spring", system)
+            project = edits.set_value(project, (*place, "stiffness"), stiffness)
+    return project
 
 
 class TestRoundNumbers:
@@ -144,15 +148,49 @@ class TestStress:
         found = {cure.change.text for cure in sought(pulled(tube)).found}
         assert found == {"⌀50×7.3→⌀40×5.85 mm", "⌀67×5→⌀54×4 mm"}  # 628 mm² each at the end
 
-    def test_the_tie_rod_is_cured_one_thread_at_a_time(self):
+    def test_equal_sections_that_fail_alike_are_changed_together(self):
         results = solve(read_sample("tie_rod"), cases=False)
         first, second = failing(results)
         (cure,) = seek(results, first).found
         assert cure.change.text == "A 860 mm²"
-        assert [subject_of(check) for check in cure.still_fails] == [second]
-        assert cure_sentence(cure) == "Passes with A 860 mm², 1.00; F still does not pass, 1.05"
-        again = solve(cure.change.applied(results.project), cases=False)
-        assert failing(again) == (second,)
+        assert set(cure.subjects) == {first, second}
+        assert cure_sentence(cure) == "D, F pass with A 860 mm² each, 1.00"
+        assert solve(cure.change.applied(results.project)).verdict == "pass"
+
+    def test_what_one_of_equal_sections_needs_by_itself_is_said_too(self):
+        parts = [
+            Part(1.0, area(6e-4), **STEEL),
+            Part(1.0, area(6e-4), **{**STEEL, "allowable_tension": 1.2e8}),
+        ]
+        bar = member(parts, {0: FixedSupport()}, [case("Pull", on_joints=[JointLoad("2", 100e3)])])
+        together, alone = sought(bar, Subject("stress", ("A",))).found
+        assert cure_sentence(together) == "A, B pass with A 840 mm² each, 0.99"
+        assert cure_sentence(alone) == "Passes with A 625 mm², 1.00; B still does not pass, 1.39"
+
+    def test_equal_sections_that_pass_are_left_as_they_are(self):
+        parts = [Part(1.0, area(6e-4), **STEEL), Part(1.0, area(6e-4), **{**STEEL, "allowable_tension": 3e8})]
+        bar = member(parts, {0: FixedSupport()}, [case("Pull", on_joints=[JointLoad("2", 100e3)])])
+        (cure,) = sought(bar).found
+        assert cure.change.marks == ("A",)
+
+    def test_where_no_section_cures_all_one_alone_is_said(self):
+        """Heated and held, both; the second also pulled: only that is cured by a larger section."""
+        parts = [Part(1.0, area(6e-4), **{**STEEL, "allowable_tension": 1.0}), Part(1.0, area(6e-4), **STEEL)]
+        held = {0: FixedSupport(), 1: FixedSupport()}
+        bar = member(
+            parts,
+            held,
+            [
+                case(
+                    "Pull",
+                    on_segments=[SegmentLoad("A", temperature_start=-9.0)],
+                    on_joints=[JointLoad("2", 100e3)],
+                )
+            ],
+        )
+        (cure,) = sought(bar, Subject("stress", ("B",))).found
+        assert cure.change.marks == ("B",)
+        assert sought(bar, Subject("stress", ("A",))).found == ()
 
     def test_a_single_heated_bar_has_no_cure(self):
         heat = case("Heat", on_segments=[SegmentLoad("A", temperature_start=70.0)])
@@ -216,6 +254,21 @@ def test_a_change_that_keeps_a_check_from_being_made_is_no_cure():
     assert cures.tried is not None
 
 
+def test_a_cure_stands_only_where_each_case_alone_is_solved_too(monkeypatch):
+    """The window solves every case alone as well, and has no results where one of them cannot be."""
+    bar = pulled(area(6e-4))
+    assert sought(bar).found
+
+    def refusing(project, *, cases=True, cancelled):
+        if cases:
+            raise OutOfRange("Pull", "stress")
+        return solve(project, cases=False, cancelled=cancelled)
+
+    results = solve(bar, cases=False)
+    monkeypatch.setattr(import_module("app.cures.seek"), "solve", refusing)
+    assert seek(results, failing(results)[0]).found == ()
+
+
 def test_a_search_can_be_cancelled():
     results = solve(pulled(area(6e-4)), cases=False)
     with pytest.raises(Cancelled):
@@ -241,8 +294,9 @@ def test_whatever_is_said_holds_when_it_is_typed(project):
             rest = [structs.replace(one, segments=(), joints=()) for one in (changed, project)]
             assert rest[0] == rest[1]
             fresh = solve(changed)
-            own = [check for check in fresh.checks if subject_of(check) == subject]
-            assert own
+            assert subject in cure.subjects
+            own = [check for check in fresh.checks if subject_of(check) in cure.subjects]
+            assert {subject_of(check) for check in own} == set(cure.subjects)
             assert all(check.status != "fail" for check in own)
             made = [check.utilisation for check in own if check.utilisation is not None]
             assert max(made) == cure.worst.utilisation
@@ -258,8 +312,8 @@ def test_many_that_fail_anyway_are_counted_and_new_ones_named():
     results = solve(structs.replace(project, materials=weak), cases=False)
     subjects = failing(results)
     (cure,) = seek(results, Subject("stress", ("D",))).found
-    assert len(cure.still_fails) == len(subjects) - 1
-    assert cure_sentence(cure).endswith(f"; {len(subjects) - 1} others still do not pass")
+    assert len(cure.still_fails) == len(subjects) - 2
+    assert cure_sentence(cure).endswith(f"; {len(subjects) - 2} others still do not pass")
     two = replace(cure, fails_then=cure.still_fails[:2], still_fails=())
     names = ", ".join(str(check.segment) for check in two.fails_then)
     assert cure_sentence(two).endswith(f"; then these do not pass: {names}")
@@ -269,3 +323,9 @@ def test_a_very_large_member_is_left_alone():
     results = solve(read_sample("tie_rod"), cases=False)
     assert is_small(results)
     assert not is_small(replace(results, checks=results.checks * 200))
+
+
+def test_what_is_not_sought_is_said():
+    assert unsought_sentence(8, 8, small=True) == ""
+    assert unsought_sentence(9, 8, small=True) == "Cures are sought for the 8 worst only"
+    assert unsought_sentence(1, 8, small=False) == "No cures are sought: the member has too many checks"
