@@ -131,7 +131,11 @@ def _segment_values(project: Project) -> FloatArray:
     for case, row in zip(project.load_cases, values, strict=True):
         loads = case.segment_loads
         places = np.fromiter((index_of[load.segment] for load in loads), dtype=np.intp, count=len(loads))
-        np.add.at(row, places, _array(_numbers(loads)).reshape(-1, 5))
+        numbers = _array(_numbers(loads)).reshape(-1, 5)
+        if len(np.unique(places)) == len(places):  # which is most often so, and much faster
+            row[places] += numbers
+        else:
+            np.add.at(row, places, numbers)
     return values
 
 

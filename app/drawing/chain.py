@@ -24,10 +24,13 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
     rows = sketch.rows
     low, high = sketch.window
     sketch.line((low, rows.chain), *_breaks(sketch), (high, rows.chain), ink="quiet", clip=True)
-    for joint in range(len(sketch.member.position)):
-        if sketch.holds(joint):
-            along = sketch.along(joint)
-            sketch.line((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK), width=1.6)
+    shown = [sketch.along(joint) for joint in range(len(sketch.member.position)) if sketch.holds(joint)]
+    ticks = [
+        end
+        for along in shown
+        for end in ((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK))
+    ]
+    sketch.lines(ticks, width=1.6)
     sketch.put(lengths, rows.lengths, "high", TIGHT)
     sketch.put(sections, rows.sections, "low", TIGHT)
     for index in range(len(sketch.member.project.segments)):

@@ -121,13 +121,21 @@ def _draw_band(sketch: Sketch, index: int, load: tuple[float, float], heights: t
     outline = [(ends[0], base), *top, (ends[1], base)]
     sketch.line(*outline, ink="quiet", fill="load_fill", closed=True, part=part, clip=True)
     count = max(int(abs(ends[1] - ends[0]) / 26.0), 1)
+    arrows: list[tuple[float, float]] = []
     for i in range(count):
         share = (i + 0.5) / count
         value = start + share * (end - start)
         if value:
-            direction = sketch.forward * np.sign(value)
-            middle = ends[0] + share * (ends[1] - ends[0])
-            _arrow(sketch, middle - 6.0 * direction, 12.0 * direction, base - 3.5, 1.0, 3.0, part)
+            direction = sketch.forward if value > 0.0 else -sketch.forward
+            arrows += _little_arrow(ends[0] + share * (ends[1] - ends[0]), base - 3.5, direction)
+    sketch.lines(arrows, part=part, clip=True)
+
+
+def _little_arrow(middle: float, across: float, direction: float) -> list[tuple[float, float]]:
+    """The lines of an arrow of a distributed load, point by point."""
+    tail, tip = (middle - 6.0 * direction, across), (middle + 6.0 * direction, across)
+    back = tip[0] - 3.0 * direction
+    return [tail, tip, (back, across - 2.1), tip, tip, (back, across + 2.1)]
 
 
 def _arrow(
@@ -136,10 +144,9 @@ def _arrow(
     """An arrow along the axis from its tail."""
     tip = tail + length
     back = tip - np.sign(length) * head
-    clip = part.kind == "distributed"
-    sketch.line((tail, across), (tip, across), width=width, part=part, clip=clip)
+    sketch.line((tail, across), (tip, across), width=width, part=part)
     wings = (back, across - 0.7 * head), (tip, across), (back, across + 0.7 * head)
-    sketch.line(*wings, width=width, part=part, clip=clip)
+    sketch.line(*wings, width=width, part=part)
 
 
 # Forces at joints

@@ -195,7 +195,7 @@ def displaced_factor(member: Member, ruler: Ruler, moved: FloatArray) -> float:
     pixels = moved * ruler.pixels_per_metre
     widths = np.abs(np.diff(ruler.pixel(np.asarray(member.position))))
     shrinks = np.maximum(pixels[:-1] - pixels[1:], 0.0)
-    with np.errstate(divide="ignore"):
+    with np.errstate(divide="ignore", over="ignore"):  # beyond all numbers is no limit
         limits = np.append(LEAST_LEFT * widths / shrinks, LARGEST_SHIFT * widths.sum() / np.abs(pixels).max())
     return _round_down(float(limits.min()))
 

@@ -8,7 +8,9 @@ Everything here is in (along, across) pixels, so that it serves both layouts.
 from __future__ import annotations
 
 import bisect
+import math
 from collections.abc import Iterable, Sequence
+from itertools import pairwise
 from operator import itemgetter
 
 from msgspec import Struct
@@ -64,7 +66,10 @@ def fits(wishes: Sequence[Wish], rows: int, room: Span, clear: float = CLEAR) ->
 def _free_span(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> Span | None:
     """The free span nearest to where the label wants to be, or None; `taken` grows along the row."""
     half = 0.5 * wish.extent
-    for centre in _centres(wish, taken, room, clear) if wish.slide else (wish.along,):
+    own = wish.along - half, wish.along + half
+    if _inside(own, room) and _is_free(own, taken, clear):
+        return own
+    for centre in _centres(wish, taken, room, clear) if wish.slide else ():
         span = centre - half, centre + half
         if _inside(span, room) and _is_free(span, taken, clear):
             return span
@@ -72,16 +77,25 @@ def _free_span(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> S
 
 
 def _centres(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> list[float]:
-    """Where the label may slide: its own place, the ends of the room, beside what stands; nearest first."""
+    """Where the label may slide: the ends of the room, beside what stands; nearest first."""
     half, reach = 0.5 * wish.extent, wish.slide + 1e-6
     far = reach + clear + half
     first = bisect.bisect_left(taken, wish.along - far, key=itemgetter(1))
     last = bisect.bisect_right(taken, wish.along + far, key=itemgetter(0))
     beside = taken[first:last]
-    centres = [wish.along, room[0] + half, room[1] - half]
-    centres += [low - clear - half for low, _ in beside] + [high + clear + half for _, high in beside]
+    centres = [room[0] + half, room[1] - half]
+    for low, high in _gaps(beside, wish.extent + 2.0 * clear - 1e-5):
+        centres += [high - clear - half, low + clear + half]
     near = [centre for centre in centres if abs(centre - wish.along) <= reach]
     return sorted(near, key=lambda centre: abs(centre - wish.along))
+
+
+def _gaps(standing: Sequence[Span], least: float) -> list[Span]:
+    """What is free before, between and after labels in a row, where it is wide enough."""
+    if not standing:
+        return []
+    inner = [(one[1], other[0]) for one, other in pairwise(standing) if other[0] - one[1] >= least]
+    return [(-math.inf, standing[0][0]), *inner, (standing[-1][1], math.inf)]
 
 
 def _is_free(span: Span, taken: Sequence[Span], clear: float) -> bool:

@@ -109,8 +109,14 @@ class Ruler:
 
     def holds(self, x: float) -> bool:
         """Whether a position is inside the window, with half a pixel to spare."""
+        low, high = self.held_pixels
+        return low <= self.pixel(x) <= high
+
+    @property
+    def held_pixels(self) -> tuple[float, float]:
+        """The pixels of positions inside the window, with half a pixel to spare, growing."""
         low, high = sorted((self.begin, self.end))
-        return low - 0.5 <= self.pixel(x) <= high + 0.5
+        return low - 0.5, high + 0.5
 
     def on(self, begin: float, end: float) -> Ruler:
         """The same window on other pixels, where other segments may need a least width."""

@@ -6,6 +6,7 @@ The parts (body, supports, loads, chain) draw in these coordinates and need not 
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, field
 from functools import cached_property
 from itertools import pairwise
@@ -107,7 +108,12 @@ class Sketch:
 
     def holds(self, joint: int) -> bool:
         """Whether a joint is inside the window."""
-        return self.frame.ruler.holds(self.member.position[joint])
+        low, high = self._held
+        return low <= self.joints[joint] <= high
+
+    @cached_property
+    def _held(self) -> Span:
+        return self.frame.ruler.held_pixels
 
     def shown_span(self, segment: int) -> Span | None:
         """The pixels of a segment inside the window, growing; None where it is outside."""
@@ -147,8 +153,28 @@ class Sketch:
         clip: bool = False,
     ) -> None:
         """A stroke through points (along, across)."""
-        turned = tuple(self.point(*point) for point in points)
+        turned = self.points(points)
         self.picture.strokes.append(Stroke(turned, ink, width, closed, fill, dash, part, clip))
+
+    def lines(
+        self,
+        points: Sequence[tuple[float, float]],
+        *,
+        width: float = 1.0,
+        part: Part | None = None,
+        clip: bool = False,
+    ) -> None:
+        """Many short strokes as one, from every first of two points (along, across) to the second."""
+        if points:
+            turned = self.points(points)
+            self.picture.strokes.append(Stroke(turned, width=width, part=part, clip=clip, pairs=True))
+
+    def points(self, places: Sequence[tuple[float, float]]) -> tuple[Point, ...]:
+        """The points (x, y) of many (along, across)."""
+        zero = self.zero
+        if self.frame.upright:
+            return tuple([(zero - across, along) for along, across in places])
+        return tuple([(along, zero + across) for along, across in places])
 
     def hatch(self, along: Span, across: Span, step: tuple[float, float]) -> None:
         """Short slanted strokes along a line from one end to the other: ground that does not move."""

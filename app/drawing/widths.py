@@ -7,6 +7,7 @@ The sheet coordinate is measured in metres of those others; where all are wide e
 from __future__ import annotations
 
 from collections.abc import Sequence
+from functools import lru_cache
 from itertools import accumulate, pairwise
 
 LEAST = 14.0  # px, of a segment where the whole member is shown
@@ -23,7 +24,8 @@ def sheet_of(joints: Sequence[float], pixels: float) -> tuple[float, ...]:
     return tuple(accumulate((max(length, least) for length in lengths), initial=joints[0]))
 
 
-def widened(joints: Sequence[float], sheet: Sequence[float]) -> tuple[int, ...]:
+@lru_cache(8)  # asked for several times while a drawing is laid out
+def widened(joints: tuple[float, ...], sheet: tuple[float, ...]) -> tuple[int, ...]:
     """The segments that are drawn wider than in proportion to their length."""
     if joints is sheet:
         return ()

@@ -8,12 +8,13 @@ from __future__ import annotations
 import bisect
 from functools import lru_cache
 
-from PySide6.QtCore import QSizeF, Qt
-from PySide6.QtGui import QFont, QFontMetricsF
+from PySide6.QtCore import QPointF, QRectF, QSizeF, Qt
+from PySide6.QtGui import QFont, QFontMetricsF, QPainter, QStaticText, QTransform
 
 from app.drawing.shapes import Face
 
 _KEPT = 8192  # measures of texts
+CENTRED = Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip
 _SIZES: dict[Face, float] = {"plain": 1.0, "strong": 1.06, "small": 0.9, "small_strong": 0.9, "mark": 1.25}
 
 
@@ -25,6 +26,7 @@ class Fonts:
         self._metrics = {face: QFontMetricsF(font) for face, font in self._fonts.items()}
         self._width = lru_cache(_KEPT)(lambda text, face: self._metrics[face].horizontalAdvance(text))
         self._height = {face: metrics.height() for face, metrics in self._metrics.items()}
+        self._laid_out = lru_cache(_KEPT)(self._lay_out)
 
     @property
     def text_height(self) -> float:
@@ -45,6 +47,24 @@ class Fonts:
             return self._width(text, face), self._height[face]
         lines = text.split("\n")
         return max(self._width(line, face) for line in lines), len(lines) * self._height[face]
+
+    def write(self, painter: QPainter, text: str, face: Face, box: QRectF) -> None:
+        """Write a text in the middle of a box, whatever its size; the painter has the font of the face.
+
+        A line is laid out once and kept, which is what takes time; several lines are left to Qt.
+        """
+        if "\n" in text:
+            painter.drawText(box, CENTRED, text)
+            return
+        left = box.left() + 0.5 * (box.width() - self._width(text, face))
+        top = box.top() + 0.5 * (box.height() - self._height[face])
+        painter.drawStaticText(QPointF(left, top), self._laid_out(text, face))
+
+    def _lay_out(self, text: str, face: Face) -> QStaticText:
+        line = QStaticText(text)
+        line.setTextFormat(Qt.TextFormat.PlainText)
+        line.prepare(QTransform(), self._fonts[face])
+        return line
 
     def wrapped(self, text: str, face: Face, width: float, between: str = " ") -> str:
         """The text with line breaks at spaces (or at what else stands `between` its parts), so that no line

@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from PySide6.QtCore import QPointF, QRectF, Qt
+from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QPainter, QPainterPath, QPen
 from PySide6.QtWidgets import QGraphicsObject, QStyleOptionGraphicsItem, QWidget
 
@@ -35,8 +35,9 @@ class Painted(QGraphicsObject):
 
     def set_rect(self, rect: QRectF) -> None:
         """Another place."""
-        self.prepareGeometryChange()
-        self._rect = rect
+        if rect != self._rect:
+            self.prepareGeometryChange()
+            self._rect = rect
         self.update()
 
     def boundingRect(self) -> QRectF:
@@ -53,14 +54,18 @@ class JointLines(Painted):
 
     def __init__(self, theme: Theme) -> None:
         super().__init__(theme, 5.0)
-        self._lines: list[tuple[QPointF, QPointF]] = []
+        self._lines: list[QLineF] = []
+        self._of: tuple[object, ...] = ()  # what the lines follow from
 
     def set_joints(self, positions: Sequence[float], ruler: Ruler, layout: SheetLayout, first: float) -> None:
         """The joints of the member, on this ruler, from the pixel `first` across the sheet."""
-        axes = layout.axes
+        if (positions, ruler, layout, first) == self._of:
+            return
+        self._of = (positions, ruler, layout, first)
+        axes, (low, high) = layout.axes, ruler.held_pixels
         last = axes.across_of(layout.strips[-1])[1]
-        shown = [ruler.pixel(x) for x in positions if ruler.holds(x)]
-        self._lines = [(axes.point(a, first), axes.point(a, last)) for a in shown]
+        shown = [a for a in map(ruler.pixel, positions) if low <= a <= high]
+        self._lines = [QLineF(axes.point(a, first), axes.point(a, last)) for a in shown]
         self.set_rect(layout.crossing.adjusted(-1, -1, 1, 1))
 
     @property
@@ -72,8 +77,7 @@ class JointLines(Painted):
         """Dotted lines, crisp."""
         painter.setRenderHint(QPainter.RenderHint.Antialiasing, False)
         painter.setPen(QPen(colour(self._theme.joint), 1.0, Qt.PenStyle.DotLine))
-        for first, last in self._lines:
-            painter.drawLine(first, last)
+        painter.drawLines(self._lines)
 
 
 class CursorLine(Painted):

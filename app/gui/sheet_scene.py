@@ -85,6 +85,7 @@ class SheetScene(QGraphicsScene):
             self.cursor_line,
             self._readout,
             self._notice,
+            self.hand_marks.ghost_layer,
             self.hand_marks,
             self.bubble,
         )

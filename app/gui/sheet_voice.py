@@ -43,7 +43,7 @@ class SheetVoice(QObject):
     def on_results(self) -> None:
         """Other results, or results that are out of date by now; another verdict is announced."""
         self.describe()
-        if self._showing.current and self._findings.headline != self._verdict:
+        if self._showing.complete and self._findings.headline != self._verdict:
             changed, self._verdict = bool(self._verdict), self._findings.headline
             if changed:
                 QAccessible.updateAccessibility(QAccessibleAnnouncementEvent(self._sheet, self._verdict))
@@ -69,7 +69,7 @@ class SheetVoice(QObject):
 
     def _verdict_line(self) -> str:
         headline = self._findings.headline
-        if headline and not self._showing.current:
+        if headline and not self._showing.complete:
             return tr("{verdict}, out of date").format(verdict=headline)
         return headline
 

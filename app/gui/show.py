@@ -181,6 +181,8 @@ class Showing(QObject):
         if delivery.newest:
             self._late.stop()
             self._settle(delivery.value.results)
+            if self._rest.isActive():  # rest begins once the hand can see where it is
+                self._rest.start()
         self._show()
 
     def on_late(self) -> None:
@@ -198,8 +200,11 @@ class Showing(QObject):
         return False
 
     def on_rest(self) -> None:
-        """The hand has come to rest."""
-        self._word()
+        """The hand has come to rest; where only the program is behind, it may be on its way still."""
+        if self._newest:
+            self._word()
+        else:
+            self._rest.start()
 
     def _word(self) -> None:
         """Ask for the findings of what was only solved until now."""

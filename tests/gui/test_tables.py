@@ -1,5 +1,7 @@
 """The tables under the hand: keys, drafts, previews, blocks of cells, and the signals they send to Qt."""
 
+from itertools import pairwise
+
 import pytest
 from hypothesis import HealthCheck, given, settings
 from hypothesis import strategies as st
@@ -346,8 +348,9 @@ def test_results_touch_only_their_own_columns(table, qtbot):
     model.set_figures(Figures())
     results = {i for i, c in enumerate(model.columns) if c.figure is not None}
     last = model.rowCount() - 1
-    assert {first for first, after, row in touched if row != last} == results
-    assert all(first == after or row == last for first, after, row in touched)
+    runs = [(first, after) for first, after, row in touched if row != last]
+    assert {place for first, after in runs for place in range(first, after + 1)} == results
+    assert all(after < first for (_, after), (first, _) in pairwise(runs)), "each of them once"
 
 
 def test_save_takes_in_an_open_editor(table, pane, document):

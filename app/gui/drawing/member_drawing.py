@@ -251,11 +251,13 @@ class MemberDrawing(QGraphicsObject):
         painter.drawEllipse(QPointF(*circle.centre), circle.radius, circle.radius)
 
     def _paint_texts(self, painter: QPainter, fonts: Fonts) -> None:
-        flags = Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip
+        worn: tuple[str, str] | None = None
         for text in self.picture.texts:
-            painter.setFont(fonts.font(text.face))
-            painter.setPen(QPen(colour(getattr(self._theme, text.ink))))
-            painter.drawText(_rect(text.box), flags, text.text)
+            if worn != (text.face, text.ink):
+                worn = (text.face, text.ink)
+                painter.setFont(fonts.font(text.face))
+                painter.setPen(colour(getattr(self._theme, text.ink)))
+            fonts.write(painter, text.text, text.face, _rect(text.box))
 
 
 def _rect(box: Box) -> QRectF:

@@ -22,6 +22,37 @@ TICK = 7.0
 Line = tuple[Point, Point]
 
 
+class Ghost(Painted):
+    """The outlines of before, dashed. They stand still while all else moves, so their picture is kept."""
+
+    def __init__(self, theme: Theme) -> None:
+        super().__init__(theme, 11.5)
+        self.strokes: tuple[Stroke, ...] = ()
+        self.setVisible(False)
+        self.setCacheMode(self.CacheMode.DeviceCoordinateCache)
+
+    def show_strokes(self, strokes: tuple[Stroke, ...]) -> None:
+        """Paint these and nothing else."""
+        self.strokes = strokes
+        self.setVisible(bool(strokes))
+        self.update()
+
+    def set_rect(self, rect: QRectF) -> None:
+        """Another place; the same one spoils nothing."""
+        if rect != self._rect:
+            super().set_rect(rect)
+
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """Each outline by itself."""
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        pen = QPen(colour(self._theme.quiet), 1.0)
+        pen.setDashPattern(GHOST_DASH)
+        painter.setPen(pen)
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        for stroke in self.strokes:
+            painter.drawPolygon([QPointF(*point) for point in stroke.points])
+
+
 class HandMarks(Painted):
     """Paints the handles that it is told of where the drawing has them now; the mouse goes through."""
 
@@ -31,7 +62,7 @@ class HandMarks(Painted):
         self._selection = Selection()
         self._key: HandleKey | None = None
         self._total_stays = False
-        self._ghost: tuple[Stroke, ...] = ()
+        self.ghost_layer = Ghost(theme)
 
     @property
     def lit(self) -> Handle | None:
@@ -58,7 +89,10 @@ class HandMarks(Painted):
     @property
     def way(self) -> tuple[Line, ...]:
         """What shows which part of the member a pull of the lit joint moves."""
-        sketch, lit = self._drawing.sketch, self.lit
+        return self._way_of(self.lit)
+
+    def _way_of(self, lit: Handle | None) -> tuple[Line, ...]:
+        sketch = self._drawing.sketch
         if sketch is None or lit is None:
             return ()
         return way_of(sketch, lit, total_stays=self._total_stays)
@@ -66,7 +100,7 @@ class HandMarks(Painted):
     @property
     def ghost(self) -> tuple[Stroke, ...]:
         """The outlines of before."""
-        return self._ghost
+        return self.ghost_layer.strokes
 
     def set_selection(self, selection: Selection) -> None:
         """Mark the handles of what is selected."""
@@ -83,30 +117,31 @@ class HandMarks(Painted):
         """The outlines of a sketch, dashed, or none."""
         strokes = [] if sketch is None else sketch.picture.strokes
         outlines = (s for s in strokes if s.closed and s.part is not None and s.part.kind == "segment")
-        self._ghost = tuple(outlines)
-        self.update()
+        self.ghost_layer.show_strokes(tuple(outlines))
+
+    def set_theme(self, theme: Theme) -> None:
+        """Other colours."""
+        super().set_theme(theme)
+        self.ghost_layer.set_theme(theme)
+
+    def set_rect(self, rect: QRectF) -> None:
+        """Another place."""
+        super().set_rect(rect)
+        self.ghost_layer.set_rect(rect)
 
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """Old outlines, quiet marks, the way, the lit handle."""
+        """Quiet marks, the way, the lit handle."""
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        self._paint_ghost(painter)
         painter.setPen(QPen(colour(self._theme.select), 1.2))
         painter.setBrush(QBrush(colour(self._theme.card)))
+        lit = self.lit
         for handle in self.quiet:
             painter.drawRect(QRectF(*(c - SQUARE for c in handle.centre), 2.0 * SQUARE, 2.0 * SQUARE))
         painter.setPen(QPen(colour(self._theme.select), 2.0))
-        for first, last in self.way:
+        for first, last in self._way_of(lit):
             painter.drawLine(QPointF(*first), QPointF(*last))
-        if (lit := self.lit) is not None:
+        if lit is not None:
             self._paint_lit(painter, lit)
-
-    def _paint_ghost(self, painter: QPainter) -> None:
-        pen = QPen(colour(self._theme.quiet), 1.0)
-        pen.setDashPattern(GHOST_DASH)
-        painter.setPen(pen)
-        painter.setBrush(Qt.BrushStyle.NoBrush)
-        for stroke in self._ghost:
-            painter.drawPolygon([QPointF(*point) for point in stroke.points])
 
     def _paint_lit(self, painter: QPainter, handle: Handle) -> None:
         """Its line, and an arrow both ways along the pull."""

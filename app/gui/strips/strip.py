@@ -182,7 +182,7 @@ class Labels(Painted):
                 painter.fillRect(label.rect, colour(getattr(self._theme, label.ground)))
             painter.setFont(self._place.fonts.font(label.face))
             painter.setPen(colour(getattr(self._theme, label.ink)))
-            painter.drawText(label.rect, Qt.AlignmentFlag.AlignCenter | Qt.TextFlag.TextDontClip, label.text)
+            self._place.fonts.write(painter, label.text, label.face, label.rect)
 
     def _paint_extremes(self, painter: QPainter, content: StripContent, place: Place, scale: Scale) -> None:
         """A dot where the extreme is, inside the window."""

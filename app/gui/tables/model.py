@@ -42,11 +42,21 @@ class TableModel(RowsModel):
         """Show these results; touches the columns of results only."""
         self._figures = figures
         last = self.rowCount() - 1
-        for place, column in enumerate(self._columns):
-            if column.figure is not None and last >= 0:
-                self.dataChanged.emit(self.index(0, place), self.index(last, place))
-        if self.table.adding is not None and last >= 0:
+        if last >= 0:
+            for first, after in self._figure_runs:
+                self.dataChanged.emit(self.index(0, first), self.index(last, after))
+        if self.table.total is not None and last >= 0:  # in the adding row
             self.dataChanged.emit(self.index(last, 0), self.index(last, len(self._columns) - 1))
+
+    @property
+    def _figure_runs(self) -> list[tuple[int, int]]:
+        """First and last of the neighbouring columns of results: each run is one signal."""
+        runs: list[tuple[int, int]] = []
+        for place, column in enumerate(self._columns):
+            if column.figure is not None:
+                first = runs.pop()[0] if runs and runs[-1][1] == place - 1 else place
+                runs.append((first, place))
+        return runs
 
     def set_lit(self, records: frozenset[int]) -> None:
         """Light the rows of these records."""
@@ -99,9 +109,13 @@ class TableModel(RowsModel):
         draft = self.draft(index)
         if draft is not None:
             return draft.text
-        row, column = index.row(), self._columns[index.column()]
-        if self.is_adding(row):
+        if self.is_adding(index.row()):
             return self._adding_text(index.column())
+        return self.settled_text(index.row(), index.column())
+
+    def settled_text(self, row: int, place: int) -> str:
+        """What a record's cell shows where nothing is being typed into it."""
+        column = self._columns[place]
         if column.figure is not None:
             return column.figure(self.record_of(row), self._figures, self._sight)
         return column.show(self._rows[row], self._sight)

@@ -153,7 +153,8 @@ class RowsModel(QAbstractTableModel):
 
     def draft(self, index: Index) -> Draft | None:
         """What was typed into the cell and not taken in."""
-        return self._document.snapshot.drafts.get(self.place(index.row(), index.column()))
+        drafts = self._document.snapshot.drafts
+        return drafts.get(self.place(index.row(), index.column())) if drafts else None
 
     def rowCount(self, parent: Index = NONE) -> int:
         """Rows of records, the rows before them and the adding row."""

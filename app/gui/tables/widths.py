@@ -37,7 +37,9 @@ class Widths:
     def widen_for_figures(self) -> None:
         """The same after new results, which change their own columns only."""
         columns = self._view.table_model.columns
-        self._widen(place for place in self._view.shown_columns() if columns[place].figure is not None)
+        if self._view.isVisible() and any(column.figure is not None for column in columns):
+            shown = self._view.shown_columns()
+            self._widen(place for place in shown if columns[place].figure is not None)
 
     def _widen(self, places: Iterable[int]) -> None:
         view = self._view
@@ -56,9 +58,13 @@ class Widths:
     def _needed(self, place: int) -> int:
         """Wide enough for the heading and the texts, but no text takes more than three usual widths."""
         model, metrics = self._view.table_model, self._view.fontMetrics()
-        texts = [str(model.index(row, place).data()) for row in range(min(model.record_rows, MEASURED))]
-        widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
         column = model.columns[place]
+        rows = range(min(model.record_rows, MEASURED))
+        if column.figure is not None:  # nobody types there
+            texts = [model.settled_text(row, place) for row in rows]
+        else:
+            texts = [str(model.index(row, place).data()) for row in rows]
+        widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
         if column.figure is not None:  # room for results before they are there, so that nothing jumps
             widest = max(widest, column.width * metrics.horizontalAdvance("0"))
         bar = BAR_WIDTH + 10 if column.bar is not None else 0

@@ -244,6 +244,11 @@ class TestDisplaced:
         assert displaced_factor(member, ruler, moved) == 20.0
         assert displaced_factor(member, ruler.zoomed(5.0, 100.0), moved) == 20.0
 
+    def test_the_least_of_movements_is_no_overflow(self):
+        member = drawn(read_sample("tie_rod"))
+        ruler = Ruler.fitting(member.position, 0.0, 800.0)
+        assert displaced_factor(member, ruler, np.array([5e-324, *[0.0] * 7, 0.1])) > 0.0
+
     def test_of_what_does_not_move_there_is_none(self):
         member = drawn(read_sample("tie_rod"))
         ruler = Ruler.fitting(member.position, 0.0, 800.0)
