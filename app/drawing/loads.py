@@ -301,8 +301,9 @@ def _draw_bedding(sketch: Sketch) -> None:
 
 
 def no_loads_text(sketch: Sketch) -> str:
-    """Why no loads are drawn: an envelope has none of its own."""
-    if sketch.member.loads is not None or not sketch.member.project.load_cases:
+    """Why no loads are drawn, where others can be picked: an envelope has none of its own."""
+    shown = sketch.member.loads is not None or not sketch.member.project.load_cases
+    if shown or sketch.frame.detail.explained:
         return ""
     return tr("loads: pick a case or combination")
 

@@ -13,19 +13,17 @@ from solver.model import AnySection, UnitSystemName
 NAMED = 4  # segments that are named before the others are counted
 
 
-def not_to_scale(marks: Sequence[str]) -> str:
-    """Which segments are drawn longer than to scale."""
-    if not marks:
-        return ""
-    named, others = ", ".join(marks[:NAMED]), len(marks) - NAMED
+def named(marks: Sequence[str]) -> str:
+    """Segments by their marks, those after the first few by their number."""
+    first, others = ", ".join(marks[:NAMED]), len(marks) - NAMED
     if others <= 0:
-        return tr("{marks}: not to scale along").format(marks=named)
-    text = trn(
-        "{{marks}} and {count} other: not to scale along",
-        "{{marks}} and {count} others: not to scale along",
-        others,
-    )
-    return text.format(marks=named)
+        return first
+    return trn("{{marks}} and {count} other", "{{marks}} and {count} others", others).format(marks=first)
+
+
+def not_to_scale(marks: Sequence[str]) -> str:
+    """Which segments are drawn longer than to scale; empty where none is."""
+    return tr("{marks}: not to scale along").format(marks=named(marks)) if marks else ""
 
 
 def section_text(section: AnySection, system: UnitSystemName) -> str:

@@ -6,7 +6,9 @@ the caption then names. The layout counts in pixels of the window; here one of t
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, fields
+from dataclasses import replace as dataclass_replace
 from typing import Final
 
 from msgspec.structs import replace
@@ -17,7 +19,7 @@ from app.drawing.member import Member
 from app.drawing.rows import depth_for, round_factor, thickest
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Picture
-from app.drawing.words import not_to_scale
+from app.drawing.words import named
 from app.numerals import reading
 from app.sheet.picture_svg import draw_picture, measure
 from app.sheet.svg import Canvas, fitted
@@ -25,11 +27,12 @@ from app.units import format_value
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
-from solver.model import Project, UnitSystemName
+from solver.model import Project
 
 POINT: Final = 0.7
 _ACROSS, _UPRIGHT, _SMALL = 386.0 / POINT, 300.0 / POINT, 190.0 / POINT  # drawn length of the member
 _MARK, _WIDEST_MARK = 12.0, 80.0  # size and width of the longest mark
+BETWEEN: Final = 10.0  # drawing and strips, points
 _BEYOND = 76.0  # room beyond the member's ends
 _LEAST_HALF, _MOST_HALF, _SMALL_HALF = 11.0 / POINT, 34.0 / POINT, 20.0 / POINT
 _WHOLE = Detail(
@@ -53,17 +56,40 @@ def member_figure(
     project: Project, positions: FloatArray, loads: Loads | None = None, state: int = 0, *, chain: bool = True
 ) -> Figure:
     """The drawing with the loads of `state`, if any, and the dimension chain; `positions` (n + 1,) in m."""
-    member = Member(
-        _with_short_marks(project),
-        tuple(map(float, positions)),
-        None if loads is None else _of_state(loads, state),
-    )
+    member = _member(project, positions, loads, state)
     frame = _frame(member, whole=chain)
     picture = lay_out(member, frame)
     canvas = Canvas(scale=POINT)
     draw_picture(canvas, picture)
-    alt = _alt(project, project.display.unit_system)
+    alt = member_alt(project)
     return Figure(canvas.render(alt), *canvas.size, alt, _note(project, frame, picture))
+
+
+def draw_above(
+    canvas: Canvas, project: Project, positions: FloatArray, loads: Loads | None, state: int, extent: float
+) -> None:
+    """The drawing over the strips of a canvas, upright at their left, on their ruler of `extent` points."""
+    member = _member(project, positions, loads, state)
+    frame = _frame(member, whole=True)
+    drawing = Canvas()
+    draw_picture(drawing, lay_out(member, frame))
+    scale = extent / abs(frame.ruler.end - frame.ruler.begin)
+    start = -scale * frame.ruler.begin  # of the first joint, which is at 0 on the canvas
+    if frame.upright:
+        canvas.put(drawing, (canvas.low[0] - BETWEEN - scale * drawing.high[0], start), scale)
+    else:
+        canvas.put(drawing, (start, canvas.low[1] - BETWEEN - scale * drawing.high[1]), scale)
+
+
+def drawn_positions(positions: Sequence[float], extent: float, *, upright: bool) -> Ruler:
+    """The ruler of the drawing on so many points, from 0: short segments are as wide as in the drawing."""
+    drawn = Ruler.fitting(positions, 0.0, _UPRIGHT if upright else _ACROSS)
+    return dataclass_replace(drawn, end=extent)
+
+
+def _member(project: Project, positions: FloatArray, loads: Loads | None, state: int) -> Member:
+    of_state = None if loads is None else _of_state(loads, state)
+    return Member(_with_short_marks(project), tuple(map(float, positions)), of_state)
 
 
 def _with_short_marks(project: Project) -> Project:
@@ -107,17 +133,29 @@ def _half(member: Member, ruler: Ruler, most: float) -> float:
 def _note(project: Project, frame: Frame, picture: Picture) -> str:
     left_out = tr("Labels without room are left out; the tables hold them.") if picture.left_out else ""
     marks = [project.segments[index].mark for index in frame.ruler.widened]
-    unlike = f"{not_to_scale(marks)}." if marks else ""
-    return " ".join(said for said in (_scale_note(frame.ruler, picture.factor), unlike, left_out) if said)
+    return " ".join(said for said in (_scale_note(frame.ruler, picture.factor, marks), left_out) if said)
 
 
-def _scale_note(ruler: Ruler, factor: float) -> str:
+def _scale_note(ruler: Ruler, factor: float, longer: Sequence[str]) -> str:
+    """At which scale lengths and depths are drawn, and which short segments are drawn longer."""
     lengths = 72 / 0.0254 / (POINT * ruler.pixels_per_metre)
+    scale, depths = _ratio(lengths), _ratio(lengths / factor)
     if abs(factor - 1.0) < 1e-9:
-        return tr("Drawn to scale, about 1:{scale}.").format(scale=_ratio(lengths))
-    return tr(
-        "Lengths to scale, about 1:{lengths}; depths to a scale of their own, about 1:{depths}."
-    ).format(lengths=_ratio(lengths), depths=_ratio(lengths / factor))
+        words = (
+            tr("Drawn to scale, about 1:{scale}, except {marks}, drawn longer.")
+            if longer
+            else tr("Drawn to scale, about 1:{scale}.")
+        )
+        return words.format(scale=scale, marks=named(longer))
+    words = (
+        tr(
+            "Lengths to scale, about 1:{lengths}, except {marks}, drawn longer; "
+            "depths to a scale of their own, about 1:{depths}."
+        )
+        if longer
+        else tr("Lengths to scale, about 1:{lengths}; depths to a scale of their own, about 1:{depths}.")
+    )
+    return words.format(lengths=scale, depths=depths, marks=named(longer))
 
 
 def _ratio(value: float) -> str:
@@ -125,7 +163,9 @@ def _ratio(value: float) -> str:
     return reading(float(f"{value:.3g}"), 3, strip=True)
 
 
-def _alt(project: Project, units: UnitSystemName) -> str:
+def member_alt(project: Project) -> str:
+    """The drawing in words."""
+    units = project.display.unit_system
     length = format_value(
         float(sum(s.length for s in project.segments)), "length", units, strip=True, with_unit=True
     )

@@ -7,15 +7,14 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from app.allowable_lines import allowable_lines, allowable_texts, over_least
-from app.drawing.ruler import Ruler as Positions
 from app.drawing.words import not_to_scale
 from app.sheet.colours import QUIET
 from app.sheet.limit_labels import Limit
-from app.sheet.member_figure import Figure
+from app.sheet.member_figure import Figure, draw_above, drawn_positions, member_alt
 from app.sheet.ruler import Ruler
 from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Strip, draw_strip
 from app.sheet.svg import Canvas, fitted, text_width
-from app.strip_choice import KINDS, Kind
+from app.strip_choice import KINDS, Kind, kind_names
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.fields import curves, envelope
@@ -29,8 +28,13 @@ _GAP = 7.0
 _SIZE = 7.0
 
 
-def state_figure(results: Results, state: int, kinds: tuple[Kind, ...] = KINDS) -> Figure:
-    """The strips of one state, these in this order; σ with the allowable band where the state is checked."""
+def state_figure(
+    results: Results, state: int, kinds: tuple[Kind, ...] = KINDS, *, drawing: bool = False
+) -> Figure:
+    """The strips of one state, these in this order; σ with the allowable band where the state is checked.
+
+    On request the drawing with the loads of the state stands over them, on the same ruler.
+    """
     field = curves(results, state, points=POINTS)
     checked = results.states[state].checked
     strips = [
@@ -48,15 +52,14 @@ def state_figure(results: Results, state: int, kinds: tuple[Kind, ...] = KINDS) 
     ]
     if checked:
         strips.append(_utilisation(results, field.x, field.utilisation))
-    name = results.states[state].name
-    return _figure(
-        results,
-        _chosen(strips, kinds),
-        tr("Displacement, axial force, stress and utilisation, {name}").format(name=name),
-    )
+    chosen = _chosen(strips, kinds)
+    canvas = _canvas(results, chosen)
+    if drawing:
+        draw_above(canvas, results.project, results.position, results.loads, state, _extent(results))
+    return _figure(results, canvas, chosen, results.states[state].name, drawing=drawing)
 
 
-def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS) -> Figure:
+def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawing: bool = False) -> Figure:
     """The largest and smallest values over all checked states; extremes, not one state in equilibrium."""
     field = envelope(results, points=POINTS)
     x, stress = field.x, (field.stress_max, field.stress_min)
@@ -75,9 +78,11 @@ def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS) -> Figure
         ),
         _utilisation(results, x, field.utilisation),
     ]
-    return _figure(
-        results, _chosen(strips, kinds), tr("Envelope of displacement, axial force, stress and utilisation")
-    )
+    chosen = _chosen(strips, kinds)
+    canvas = _canvas(results, chosen)
+    if drawing:
+        draw_above(canvas, results.project, results.position, None, 0, _extent(results))
+    return _figure(results, canvas, chosen, tr("envelope of all checked combinations"), drawing=drawing)
 
 
 def _chosen(strips: list[Strip], kinds: tuple[Kind, ...]) -> list[Strip]:
@@ -109,12 +114,16 @@ def _allowables(
     )
 
 
-def _figure(results: Results, strips: list[Strip], title: str) -> Figure:
+def _extent(results: Results) -> float:
+    return _UPRIGHT if results.project.display.layout == "vertical" else _ACROSS
+
+
+def _canvas(results: Results, strips: list[Strip]) -> Canvas:
+    """The strips with the joints' marks, the first joint at 0."""
     upright = results.project.display.layout == "vertical"
     units = results.project.display.unit_system
-    extent = _UPRIGHT if upright else _ACROSS
-    ruler = Ruler(upright, Positions.fitting(results.position.tolist(), 0.0, extent))
-    canvas, place = Canvas(), 0.0
+    positions = drawn_positions(results.position.tolist(), _extent(results), upright=upright)
+    ruler, canvas, place = Ruler(upright, positions), Canvas(), 0.0
     for strip in strips:
         depth = DEPTH_UPRIGHT if upright else DEPTH_ACROSS[strip.kind]
         start = place if upright else -place - depth
@@ -122,7 +131,18 @@ def _figure(results: Results, strips: list[Strip], title: str) -> Figure:
         place += depth + _GAP + (10.0 if upright else 0.0)
     _draw_places(canvas, ruler, results, place)
     _say_scale(canvas, ruler, results, place)
-    return Figure(canvas.render(title), *canvas.size, title)
+    return canvas
+
+
+def _figure(results: Results, canvas: Canvas, strips: list[Strip], of: str, *, drawing: bool) -> Figure:
+    """The canvas with what it shows in words."""
+    names = kind_names()
+    alt = tr("Strips of {strips}: {state}").format(
+        strips="; ".join(names[strip.kind] for strip in strips), state=of
+    )
+    if drawing:
+        alt = f"{member_alt(results.project)}. {alt}"
+    return Figure(canvas.render(alt), *canvas.size, alt)
 
 
 def _say_scale(canvas: Canvas, ruler: Ruler, results: Results, place: float) -> None:

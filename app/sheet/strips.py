@@ -17,6 +17,7 @@ from app.sheet import colours
 from app.sheet.limit_labels import Limit, Scale, draw_limit_labels
 from app.sheet.ruler import Ruler
 from app.sheet.svg import Canvas, Ink, Point
+from app.strip_choice import Kind
 from app.units import Quantity, format_value, symbol, utilisation_text
 from app.words import tr
 from solver.arrays import BoolArray, FloatArray
@@ -34,7 +35,7 @@ class Strip:
     """One strip: curves (k,) over x in SI; of each, `over` (k,) is above 1 where it is hatched."""
 
     name: str
-    kind: str
+    kind: Kind
     quantity: Quantity
     x: FloatArray
     curves: tuple[FloatArray, ...]

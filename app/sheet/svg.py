@@ -153,6 +153,14 @@ class Canvas:
         )
         self.path(points, Ink(fill=f"url(#{name})"), closed=True)
 
+    def put(self, other: Canvas, at: Point, scale: float) -> None:
+        """All of another canvas, `scale` times as large, with its origin at a point."""
+        for corner in (other.low, other.high):
+            self.reach(at[0] + scale * corner[0], at[1] + scale * corner[1])
+        self.definitions |= other.definitions
+        moved = f"translate({number(at[0])} {number(at[1])}) scale({scale:.5g})"
+        self.parts.append(f'<g transform="{moved}">{"".join(other.parts)}</g>')
+
     @property
     def size(self) -> tuple[float, float]:
         """Width and height in points, a small margin included."""

@@ -92,7 +92,8 @@ def texts_of(path):
 
 def test_strips_are_saved_as_lines(window, tmp_path):
     window.taking.write_picture(tmp_path / "strips.svg")
-    assert {"u", "N", "σ"} <= texts_of(tmp_path / "strips.svg")
+    marks = {segment.mark for segment in window.document.project.segments}
+    assert {"u", "N", "σ"} | marks <= texts_of(tmp_path / "strips.svg")
     window.taking.write_picture(tmp_path / "one.svg", ("force",))
     assert {"u", "N", "σ"} & texts_of(tmp_path / "one.svg") == {"N"}
 

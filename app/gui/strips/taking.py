@@ -99,7 +99,7 @@ class StripTaking(QObject):
 
     def save_picture(self, kinds: tuple[Kind, ...] = ()) -> None:
         """To a file that is asked for."""
-        offered = (FileKind(tr("Picture"), "png"), FileKind(tr("Strips as lines"), "svg"))
+        offered = (FileKind(tr("Picture"), "png"), FileKind(tr("Picture as lines"), "svg"))
         self._ask(tr("Save picture"), offered, lambda target: self.write_picture(target, kinds))
 
     def write_picture(self, target: Path, kinds: tuple[Kind, ...] = ()) -> None:
@@ -108,20 +108,25 @@ class StripTaking(QObject):
             self._write(target, png_of(self.picture(kinds)))
             return
         results = self._current()
-        svg = "" if results is None else self._svg(results, kinds or self._view.strips.shown)
+        svg = "" if results is None else self._svg(results, kinds)
         if svg:
             self._write(target, svg.encode())
 
     def _svg(self, results: Results, kinds: tuple[Kind, ...]) -> str:
-        """The calc sheet's figure of these strips; empty, with a word why, where it has none of them."""
+        """The calc sheet's figure of these strips, where none is named of the drawing and all that are shown.
+
+        Empty, with a word why, where there is no such figure.
+        """
         from app.sheet.strip_figure import envelope_figure, state_figure
 
         state = self._sheet.shown_state
         if kinds == ("utilisation",) and state is not None and not results.states[state].checked:
             self.told.emit(tr("No picture saved: this state is not checked, so it has no utilisation"))
             return ""
-        figure = envelope_figure(results, kinds) if state is None else state_figure(results, state, kinds)
-        return figure.svg
+        chosen, drawing = kinds or self._view.strips.shown, not kinds
+        if state is None:
+            return envelope_figure(results, chosen, drawing=drawing).svg
+        return state_figure(results, state, chosen, drawing=drawing).svg
 
     def picture(self, kinds: tuple[Kind, ...] = ()) -> QImage:
         """What the sheet shows of these strips, or all of it, finer than on the screen."""

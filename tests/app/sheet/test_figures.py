@@ -5,22 +5,35 @@ from __future__ import annotations
 import re
 from itertools import combinations
 from xml.etree import ElementTree
+from xml.sax.saxutils import unescape
 
 import hypothesis
 import numpy as np
 import pytest
 from hypothesis import given
 from msgspec import UNSET, structs
+from msgspec.structs import replace
 
+from app.drawing.member import Member
 from app.drawing.shapes import Box
 from app.samples import names, read_sample
 from app.sheet import colours
 from app.sheet.figures import Figure, envelope_figure, member_figure, state_figure
+from app.sheet.member_figure import _frame, drawn_positions
 from app.sheet.printable import printable_in_figure
 from app.sheet.strips import Strip, _with_crossings
 from app.sheet.strips import _scale as _scale_of
 from app.sheet.svg import Canvas, Ink, text_width
-from solver.model import Display, FixedSupport, JointLoad, Limits, LoadCase, Project, SpringSupport
+from solver.model import (
+    Display,
+    FixedSupport,
+    JointLoad,
+    Limits,
+    LoadCase,
+    Orientation,
+    Project,
+    SpringSupport,
+)
 from solver.results import Results
 from solver.solve import solve
 from tests.drawn_members import busy_member, uneven_member
@@ -61,8 +74,37 @@ def figures(results: Results) -> list[Figure]:
 def test_what_is_not_to_scale_is_named_under_the_drawing() -> None:
     results = solve(uneven_member())
     note = member_figure(results.project, results.position).note
-    assert "S0, S2, S4, S5 and 3 others: not to scale along." in note
+    assert "about 1:161, except S0, S2, S4, S5 and 3 others, drawn longer; depths" in note
     assert "S0, S2, S4, S5 and 3 others: not to scale along" in texts(state_figure(results, 0))
+
+
+@pytest.mark.parametrize("layout", ["horizontal", "vertical"])
+def test_drawing_and_strips_in_one_figure_share_the_ruler(layout: Orientation) -> None:
+    project = uneven_member()
+    project = replace(project, display=replace(project.display, orientation=layout))
+    results = solve(project)
+    whole = state_figure(results, 0, drawing=True)
+    group = next(e for e in parsed(whole.svg).iter(f"{SVG}g") if "translate" in e.get("transform", ""))
+    x, y, scale = map(float, re.findall(r"-?[\d.]+", group.get("transform", "")))
+    member = Member(project, tuple(results.position.tolist()), None)
+    drawn = _frame(member, whole=True).ruler
+    upright = layout == "vertical"
+    strips = drawn_positions(results.position.tolist(), 270.0 if upright else 420.0, upright=upright)
+    for place in results.position.tolist():
+        along = scale * drawn.pixel(place) + (y if upright else x)
+        assert along == pytest.approx(strips.pixel(place) * (-1 if upright else 1), abs=0.1)
+    said = " ".join(texts(whole)).split()
+    assert {"u", "N", "σ", "S1"} <= set(said)
+
+
+def test_the_words_of_a_figure_name_what_it_shows() -> None:
+    results = solve(uneven_member())
+    assert state_figure(results, 0, ("stress", "displacement")).alt.startswith("Strips of σ, stress; u, disp")
+    whole = envelope_figure(results, ("force",), drawing=True)
+    assert whole.alt.startswith("Drawing of the member")
+    assert "Strips of N, axial force: envelope" in whole.alt
+    assert whole.alt in unescape(whole.svg)
+    assert "pick" not in " ".join(texts(whole))  # nothing can be picked on paper
 
 
 def test_a_curve_that_ends_at_a_joint_and_changes_sign_elsewhere_is_drawn_whole() -> None:
