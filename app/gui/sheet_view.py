@@ -34,8 +34,13 @@ class Drag:
     """A drag of the sheet: begins once the mouse has moved a little, so that a click stays a click."""
 
     def __init__(self, start: QPointF) -> None:
-        self._last = start
+        self._start = self._last = start
         self.began = False
+
+    def was_click(self, point: QPointF) -> bool:
+        """Whether the mouse has come up where it went down; it may have moved under a hand on the drawing."""
+        away = (point - self._start).manhattanLength()
+        return not self.began and away < QApplication.startDragDistance()
 
     def step(self, point: QPointF) -> QPointF:
         """How far the sheet goes along with the mouse since the last step."""
@@ -55,6 +60,7 @@ class SheetView(QGraphicsView):
         super().__init__(parent)
         self._view = view
         self._drag: Drag | None = None
+        self._narrowed: Selection | None = None  # several that the last click made one; a second brings back
         self._sheet = SheetScene(theme_for(self.palette()), Fonts(self.font()), self)
         self._sheet.show_state(view.shown)
         self._upright = False
@@ -286,6 +292,7 @@ class SheetView(QGraphicsView):
         else:
             return
         chosen = self._view.selection
+        self._narrowed = chosen if chosen.holds(clicked) and not modifiers else None
         if modifiers & Qt.KeyboardModifier.ControlModifier:
             clicked = chosen.toggled(clicked)
         elif modifiers & Qt.KeyboardModifier.ShiftModifier:
@@ -305,6 +312,7 @@ class SheetView(QGraphicsView):
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         """Where no part of the drawing takes the mouse, a drag of the sheet may begin."""
+        self._narrowed = None
         super().mousePressEvent(event)
         taken = self.scene().mouseGrabberItem() is not None
         if not taken and event.button() in (Qt.MouseButton.LeftButton, Qt.MouseButton.MiddleButton):
@@ -315,17 +323,19 @@ class SheetView(QGraphicsView):
         """A click beside every part of the drawing selects nothing."""
         super().mouseReleaseEvent(event)
         drag, self._drag = self._drag, None
-        if drag is not None and not drag.began and self.places.drawing.contains(event.position()):
+        clicked = drag is not None and drag.was_click(event.position())
+        if clicked and self.places.drawing.contains(event.position()):
             self._view.set_selection(Selection())
         event.accept()
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
         """Type what is shown there; show the whole member where nothing is."""
-        super().mouseDoubleClickEvent(event)
         found = self.drawing.label_at(event.position())
         if found is None:
             self.fit()
         elif event.button() == Qt.MouseButton.LeftButton:
+            if self._narrowed is not None:  # it is typed for all that was selected
+                self._view.set_selection(self._narrowed)
             self.opened.emit(found.part, found.box)
         event.accept()
 

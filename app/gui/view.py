@@ -31,6 +31,10 @@ class Selection:
     segments: frozenset[int] = field(default_factory=frozenset)
     joints: frozenset[int] = field(default_factory=frozenset)
 
+    def holds(self, part: Selection) -> bool:
+        """Whether these are all in it."""
+        return part.segments <= self.segments and part.joints <= self.joints
+
     def toggled(self, part: Selection) -> Selection:
         """With these taken in, or out where they are in already."""
         return Selection(self.segments ^ part.segments, self.joints ^ part.joints)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import pytest
 from msgspec.structs import replace
 from PySide6.QtCore import QEvent, QPoint, QPointF, Qt
-from PySide6.QtGui import QFocusEvent, QWheelEvent
+from PySide6.QtGui import QFocusEvent, QMouseEvent, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 
@@ -556,3 +556,32 @@ class TestSlowFindings:
         pointer.drag("joint", 1, "end", 60)
         qtbot.waitUntil(lambda: window.showing.complete)
         assert window.showing.outcome.project is window.document.project
+
+
+class TestBeyondTheWindow:
+    """What is pulled may leave the window; what is said of it does not, and the selection stays."""
+
+    @pytest.mark.parametrize("pixels", [-2000, 400])
+    def test_the_readout_stays_inside(self, window, either, pixels):
+        either.grab("joint", 4, "end")
+        either.pull(pixels)
+        room = window.sheet.viewport().rect()
+        assert room.contains(window.sheet.paper.bubble.boundingRect().toAlignedRect().adjusted(2, 2, -2, -2))
+        window.hand.cancel()
+        either.let_go()
+
+    def test_a_pull_that_began_on_paper_leaves_the_selection(self, window, pointer):
+        window.view.set_selection(Selection(segments=frozenset((0, 2))))
+        pointer.over("edge", 1, "both")
+        down = pointer.at + 4.0 * pointer.outward
+        window.sheet.mousePressEvent(press_at(window, down))  # as where both pixels and halves of them meet
+        window.sheet.mouseReleaseEvent(press_at(window, down + 30.0 * pointer.outward, released=True))
+        assert window.view.selection == Selection(segments=frozenset((0, 2)))
+
+
+def press_at(window, at, *, released=False):
+    """A press or release of the left button as the sheet itself gets it."""
+    kind = QEvent.Type.MouseButtonRelease if released else QEvent.Type.MouseButtonPress
+    glob = QPointF(window.sheet.viewport().mapToGlobal(at.toPoint()))
+    held = Qt.MouseButton.NoButton if released else Qt.MouseButton.LeftButton
+    return QMouseEvent(kind, at, glob, Qt.MouseButton.LeftButton, held, Qt.KeyboardModifier.NoModifier)

@@ -256,3 +256,15 @@ def test_a_stiffness_is_typed_on_its_label(qtbot, window):
     replace_text(line, "spring 500 kN/mm")
     QTest.keyClick(line, Qt.Key.Key_Return)
     assert window.document.project.joints[3].support.stiffness == 5e8
+
+
+def test_a_double_click_on_one_of_several_selected_types_for_all(window):
+    window.view.set_selection(Selection(segments=frozenset((1, 4, 5))))
+    line = double_click(window, Part("length", 4))
+    assert "for 3 segments" in window.in_place.caption
+    replace_text(line, "250")
+    QTest.keyClick(line, Qt.Key.Key_Return)
+    assert [window.document.project.segments[i].length for i in (1, 4, 5)] == [0.25] * 3
+    assert window.view.selection == Selection(segments=frozenset((1, 4, 5)))
+    QTest.mouseClick(window.sheet.viewport(), LEFT, pos=centre_of(window, Part("length", 4)))
+    assert window.view.selection == Selection(segments=frozenset((4,)))

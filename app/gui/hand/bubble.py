@@ -68,9 +68,14 @@ class Bubble(Painted):
 
 
 def _inside(box: QRectF, near: QPointF, room: QRectF) -> QRectF:
-    """The box moved into the room; to the other side of the point where it would cover it."""
+    """The box moved into the room, to the other side of the point where it would cover it.
+
+    A pull may go on beyond the window; what it says stays inside.
+    """
     if box.right() > room.right():
-        box.moveRight(max(near.x() - ASIDE.x(), room.left() + box.width()))
+        box.moveRight(near.x() - ASIDE.x())
     if box.bottom() > room.bottom():
         box.moveBottom(near.y() - ASIDE.y())
+    box.moveLeft(max(min(box.left(), room.right() - box.width()), room.left()))
+    box.moveTop(max(min(box.top(), room.bottom() - box.height()), room.top()))
     return box

@@ -64,10 +64,11 @@ class CellEntry:
         """Which cell it is and in what unit, and for how many it is typed."""
         name = self.model.step_name(self.index)
         unit = self.model.heading(self._column)[1]
-        words = f"{name} ({unit})" if unit else name
-        if self.is_single:
-            return words
-        return tr("{cell}, {many}").format(cell=words, many=self._counted())
+        return self._for_many(f"{name} ({unit})" if unit else name)
+
+    def _for_many(self, words: str) -> str:
+        """Words on the first cell, with how many it is for."""
+        return words if self.is_single else tr("{cell}, {many}").format(cell=words, many=self._counted())
 
     def _counted(self) -> str:
         count = len(self._cells)
@@ -116,7 +117,7 @@ class CellEntry:
             self.model.setData(self.index, text)
             return
         places = tuple(self.model.place(cell.row(), self._column) for cell in self._cells)
-        name = self.caption
+        name = self._for_many(self.model.step_name(self.index))
         try:
             project, notes = self._put_in_all(text)
         except TypingError as error:

@@ -87,6 +87,7 @@ class SheetSweeps(QObject):
         entry = CellEntry(self._tables.document, model, keys.index(cells[0].column), records)
         share = (point.x() - label.box.left) / max(label.box.right - label.box.left, 1.0)
         at = place_in_entry(label.text, int(share * len(label.text)), entry.text or "")
+        self._sheet.setFocus(Qt.FocusReason.MouseFocusReason)  # an undo that follows is of the member
         return self._sweeper.begin(entry, at)
 
     # The hand
