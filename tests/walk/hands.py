@@ -92,11 +92,11 @@ class Hands:
         middle = across[0] if places.axes.upright else across[1]
         return places.axes.point(self.sheet.ruler.pixel(x), middle + beside).toPoint()
 
-    def middle(self, segment: int, share: float = 0.5) -> QPoint:
+    def middle(self, segment: int, share: float = 0.5, beside: int = 4) -> QPoint:
         """A point on a segment."""
         self.look()
         start, end = self.sheet.positions[segment : segment + 2]
-        return self.on_axis(start + share * (end - start), 4)
+        return self.on_axis(start + share * (end - start), beside)
 
     def joint(self, joint: int) -> QPoint:
         """A joint, beside the middle where marks and arrows are."""
@@ -146,7 +146,7 @@ class Hands:
 
     def reshape(self, segment: int, section: str) -> None:
         """Double click a segment's body, beside its mark, and type its section."""
-        self.double_click(self.middle(segment, 0.25))
+        self.double_click(self.middle(segment, 0.25, beside=22))
         assert self.window.in_place.caption.startswith(tr("Section"))
         self.type_over(section)
 
