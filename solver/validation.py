@@ -77,6 +77,8 @@ def _mark_faults(project: Project) -> Iterator[Fault]:
 
 def _duplicates(name: str, key: str, records: Sequence[object]) -> Iterator[Fault]:
     first: dict[str, int] = {}
+    if _all_differ(records, key):
+        return
     for index, record in _records(records):
         mark = _text(record, key)
         if mark is None:
@@ -84,6 +86,12 @@ def _duplicates(name: str, key: str, records: Sequence[object]) -> Iterator[Faul
         if first.setdefault(mark, index) != index:
             facts = {"value": mark, "first": place_text((name, first[mark], key))}
             yield Fault(place_text((name, index, key)), "duplicate_mark", facts)
+
+
+def _all_differ(records: object, key: str) -> bool:
+    """Whether they do, at a glance: every edit asks this of every list."""
+    marks = [getattr(record, key, None) for record in records] if isinstance(records, tuple) else []
+    return set(map(type, marks)) <= {str} and len(set(marks)) == len(marks)
 
 
 # --- references ---
@@ -111,8 +119,8 @@ def _names(records: object, key: str) -> dict[str, None] | None:
     """The names in their order; None where one could not be read, since any reference may mean that one."""
     if not isinstance(records, tuple):
         return None
-    names = [_text(record, key) for record in records]
-    return None if None in names else dict.fromkeys(name for name in names if name is not None)
+    names: list[Any] = [getattr(record, key, None) for record in records]
+    return dict.fromkeys(names) if set(map(type, names)) <= {str} else None
 
 
 def _references(project: Project) -> Iterator[_Reference]:

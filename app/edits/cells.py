@@ -16,8 +16,9 @@ from app.decode import convert, project_type
 from app.edits.checking import EditError, consistent, refused
 from app.edits.renaming import RENAMERS, rename
 from app.encode import plain
+from solver import validation
 from solver.faults import Fault, Place
-from solver.model import Project
+from solver.model import Limits, Project
 
 _Change = Callable[[Any, inspect.Type], Any]
 
@@ -30,7 +31,23 @@ def set_value(project: Project, place: Place, value: object) -> Project:
     """
     if len(place) == 3 and (place[0], place[2]) in RENAMERS and isinstance(value, str):
         return rename(project, place, value)
-    return consistent(_changed(project, project_type(), place, _setter(place, value)))
+    changed = _changed(project, project_type(), place, _setter(place, value))
+    return changed if _is_sound_alone(changed, place) else consistent(changed)
+
+
+def _is_sound_alone(project: Project, place: Place) -> bool:
+    """Whether what was set lies in a segment or joint and is sound there, so that the rest need not be asked.
+
+    No other record depends on it but by its mark and the material it names.
+    """
+    if len(place) < 3 or place[0] not in ("segments", "joints") or place[2] in ("mark", "material"):
+        return False
+    index = int(place[1]) if place[0] == "segments" else 0
+    segments, joints = project.segments[index : index + 1], project.joints[:2]
+    alone = structs.replace(
+        project, segments=segments, joints=joints, load_cases=(), combinations=(), limits=Limits()
+    )
+    return not validation.faults(alone)
 
 
 def value_at(project: Project, place: Place) -> Any:

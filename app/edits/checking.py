@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from msgspec.inspect import VarTupleType
+
 from app.decode import convert, project_type
 from app.encode import plain
 from solver import validation
@@ -30,10 +32,31 @@ def consistent(project: Project) -> Project:
     return project
 
 
-def checked(project: Project) -> Project:
-    """The project itself, every value of it looked at again; EditError where it is not well formed."""
+def checked(project: Project, since: Project | None = None) -> Project:
+    """The project itself, every value of it looked at again; EditError where it is not well formed.
+
+    `since` is a well-formed project that it was made from: records that both hold are not looked at again, so
+    that thousands of edits in a row stay quick.
+    """
     faults: list[Fault] = []
-    convert(plain(project), project_type(), (), faults)
+    if since is None:
+        convert(plain(project), project_type(), (), faults)
+    else:
+        _convert_new(project, since, faults)
     if faults:
         raise EditError(tuple(faults))
     return consistent(project)
+
+
+def _convert_new(project: Project, since: Project, faults: list[Fault]) -> None:
+    for field in project_type().fields:
+        own, old = getattr(project, field.name), getattr(since, field.name)
+        if own is old:
+            continue
+        if not (isinstance(field.type, VarTupleType) and isinstance(own, tuple) and isinstance(old, tuple)):
+            convert(plain(project), project_type(), (), faults)
+            return
+        known = set(map(id, old))
+        for index, record in enumerate(own):
+            if id(record) not in known:
+                convert(plain(record), field.type.item_type, (field.encode_name, index), faults)

@@ -45,7 +45,7 @@ def insert_segment(
     segments, joints = list(project.segments), list(project.joints)
     segments.insert(index, segment)
     joints.insert(index + 1, joint)
-    return checked(structs.replace(project, segments=tuple(segments), joints=tuple(joints)))
+    return checked(structs.replace(project, segments=tuple(segments), joints=tuple(joints)), project)
 
 
 def fresh_joint(project: Project, before: int) -> Joint:

@@ -26,7 +26,7 @@ def rename_segment(project: Project, old: str, new: str) -> Project:
     """The project with the segment marked `old` marked `new`; EditError where `new` is taken or empty."""
     cases = _each(project.load_cases, lambda case: _records_of(case, "segment_loads", "segment", old, new))
     segments = _renamed(project.segments, "mark", old, new)
-    return checked(structs.replace(project, segments=segments, load_cases=cases))
+    return checked(structs.replace(project, segments=segments, load_cases=cases), project)
 
 
 def rename_joint(project: Project, old: str, new: str) -> Project:
@@ -41,14 +41,14 @@ def rename_joint(project: Project, old: str, new: str) -> Project:
     ):
         limits = _records_of(limits, key, end, old, new)
     joints = _renamed(project.joints, "mark", old, new)
-    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits))
+    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits), project)
 
 
 def rename_material(project: Project, old: str, new: str) -> Project:
     """The project with the material `old` called `new`, in its segments as well."""
     segments = _renamed(project.segments, "material", old, new)
     materials = _renamed(project.materials, "name", old, new)
-    return checked(structs.replace(project, materials=materials, segments=segments))
+    return checked(structs.replace(project, materials=materials, segments=segments), project)
 
 
 def rename_case(project: Project, old: str, new: str) -> Project:
@@ -62,13 +62,13 @@ def rename_case(project: Project, old: str, new: str) -> Project:
             else combination
             for combination in combinations
         )
-    return checked(structs.replace(project, load_cases=cases, combinations=combinations))
+    return checked(structs.replace(project, load_cases=cases, combinations=combinations), project)
 
 
 def rename_combination(project: Project, old: str, new: str) -> Project:
     """The project with the combination `old` called `new`."""
     combinations = _renamed(project.combinations, "name", old, new)
-    return checked(structs.replace(project, combinations=combinations))
+    return checked(structs.replace(project, combinations=combinations), project)
 
 
 RENAMERS: Mapping[tuple[str | int, str | int], _Renamer] = {

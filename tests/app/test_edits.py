@@ -289,3 +289,38 @@ def test_a_factor_is_set_or_taken_out() -> None:
         "Dead": 0.5
     }
     assert "Dead" not in edits.set_factor(project(), "Working", "Dead", UNSET).combinations[0].factors
+
+
+def test_a_record_kept_from_a_sound_project_is_not_looked_at_again_and_a_new_one_is():
+    from msgspec import structs
+
+    from app.edits.checking import EditError, checked
+    from app.samples import read_sample
+
+    old = read_sample("tie_rod")
+    bad = structs.replace(old.segments[2], length=-1.0)
+    new = structs.replace(old, segments=(*old.segments[:2], bad, *old.segments[3:]))
+    with pytest.raises(EditError) as since:
+        checked(new, old)
+    with pytest.raises(EditError) as whole:
+        checked(new)
+    assert since.value.faults == whole.value.faults
+    again = structs.replace(old, segments=(*old.segments[:2], old.segments[2], *old.segments[3:]))
+    assert checked(again, old) is again
+
+
+@pytest.mark.parametrize("sound", [True, False])
+def test_a_value_within_a_segment_is_judged_as_in_the_whole_project(sound):
+    from app import edits
+    from app.edits import EditError
+    from app.samples import read_sample
+    from solver.model import TubeSection
+
+    project = read_sample("tie_rod")
+    tube = TubeSection(outer=0.05, inner=0.04 if sound else 0.06)
+    if sound:
+        assert edits.set_value(project, ("segments", 2, "section"), tube).segments[2].section == tube
+        return
+    with pytest.raises(EditError) as error:
+        edits.set_value(project, ("segments", 2, "section"), tube)
+    assert error.value.faults[0].place.startswith("segments[2].section")

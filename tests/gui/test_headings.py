@@ -307,3 +307,26 @@ def test_cells_that_make_no_block_are_not_copied(window, table):
     chord(table, Qt.Key.Key_C)
     assert QGuiApplication.clipboard().text() == "as before"
     assert window.status.news.text() == "choose the same columns in every row"
+
+
+def test_more_rows_than_anyone_waits_for_are_refused_in_words(window, table):
+    paste(table, "\n".join(["Length", *["1"] * 5000]))
+    assert window.document.undo_name is None
+    assert window.status.news.text() == "nothing was pasted: 5001 rows are too many at once, paste up to 2000"
+
+
+def test_a_pasted_row_costs_no_look_at_all_records(window, table, monkeypatch):
+    """Thousands of rows would take minutes if each record were read anew for every cell."""
+    from app.edits import checking
+
+    read, real = [], checking.convert
+
+    def counted(value, described, place, faults):
+        read.append(place)
+        return real(value, described, place, faults)
+
+    monkeypatch.setattr(checking, "convert", counted)
+    paste(table, "Mark\tLength\tSection\n" + "\n".join(f"X{i}\t100\td40" for i in range(40)))
+    assert len(window.document.project.segments) == 40
+    assert () not in read, "the whole project"
+    assert len(read) < 40 * 4

@@ -15,6 +15,8 @@ from app.words import tr, trn
 if TYPE_CHECKING:
     from app.gui.tables.view import TableView
 
+MOST_ROWS = 2000  # pasted at once; every cell is an edit that is checked, so more would take a minute
+
 
 class Blocks:
     """What is done to the selected block of one table."""
@@ -61,6 +63,10 @@ class Blocks:
         """The clipboard's block from the selection's corner on; by its headings where it has some."""
         selected, block = self._selected(), block_of(QGuiApplication.clipboard().text())
         if not block or selected is None:
+            return
+        if len(block) > MOST_ROWS:
+            said = tr("nothing was pasted: {count} rows are too many at once, paste up to {most}")
+            self._model.noted.emit(said.format(count=len(block), most=MOST_ROWS))
             return
         try:
             headed = headed_block(block, self._model.columns, self._model.sight)

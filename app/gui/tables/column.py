@@ -156,3 +156,14 @@ class Table:
     delete: Callable[[Project, tuple[int, ...], Sight], Project] | None = None
     delete_name: str = ""
     movable: bool = False  # whether the order of the rows is a person's to change
+    one: Callable[[Project, int, Sight], object] | None = None  # one row, where all would take long
+
+    def row(self, project: Project, row: int, sight: Sight) -> object:
+        """One of the rows, by its place among all."""
+        return self.rows(project, sight)[row] if self.one is None else self.one(project, row, sight)
+
+    def count(self, project: Project, sight: Sight) -> int:
+        """How many rows there are."""
+        if self.one is None:
+            return len(self.rows(project, sight))
+        return self.lead + len(getattr(project, str(self.records(sight)[0])))

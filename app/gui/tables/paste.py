@@ -56,9 +56,9 @@ class Block:
 
         A blank row empties what may be empty and leaves the rest as it is.
         """
-        records = self._model.table.rows(self._project, self._model.sight)
-        row = min(row, len(records))  # rows that were refused leave no gap
-        if row == len(records) and not self._add(texts):
+        count = self._model.table.count(self._project, self._model.sight)
+        row = min(row, count)  # rows that were refused leave no gap
+        if row == count and not self._add(texts):
             return
         blank = not any(text and text.strip() for text in texts.values())
         said = {c.key for i, c in enumerate(self._model.columns) if (texts.get(i) or "").strip()}
@@ -70,8 +70,8 @@ class Block:
     def _type_in(self, row: int, column: int, text: str) -> None:
         """One cell; those that are not for typing are passed over."""
         wanted = self._model.columns[column]
-        records = self._model.table.rows(self._project, self._model.sight)
-        if wanted.put is None or wanted.entry(records[row], self._model.sight) in (None, text):
+        now = self._model.table.row(self._project, row, self._model.sight)
+        if wanted.put is None or wanted.entry(now, self._model.sight) in (None, text):
             return
         try:
             change = wanted.put(self._project, self._model.record_of(row), text, self._model.sight)
@@ -96,8 +96,8 @@ class Block:
     def _adding_place(self) -> Place:
         """Where the row that adds a record stands now."""
         model = self._model
-        records = model.table.rows(self._project, model.sight)
-        return (*model.table.records(model.sight), model.record_of(len(records)), model.columns[0].key)
+        count = model.table.count(self._project, model.sight)
+        return (*model.table.records(model.sight), model.record_of(count), model.columns[0].key)
 
     def _add(self, texts: Texts) -> bool:
         """Add a record by the text in the column that can; whether there is one now."""

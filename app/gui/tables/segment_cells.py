@@ -56,6 +56,16 @@ def rows(project: Project, sight: Sight) -> tuple[object, ...]:
     return tuple(found)
 
 
+def one_row(project: Project, row: int, sight: Sight) -> object:
+    """One of these rows."""
+    if row == 0:
+        return StartRow(project.joints[0])
+    segment, case = project.segments[row - 1], sight.load_case(project)
+    modulus = next((m.modulus for m in reversed(project.materials) if m.name == segment.material), None)
+    loads = None if case is None else tuple(x for x in case.segment_loads if x.segment == segment.mark)
+    return SegmentRow(segment, project.joints[row], modulus, loads)
+
+
 def _loads_by_mark(case: LoadCase | None) -> dict[str, list[SegmentLoad]] | None:
     if case is None:
         return None

@@ -19,6 +19,7 @@ from app.gui.tables.segment_cells import (
     heat_entry,
     in_segments,
     one_end,
+    one_row,
     put_area,
     put_bedding,
     put_heat,
@@ -179,4 +180,5 @@ SEGMENTS = Table(
     delete=lambda project, indexes, _sight: edits.delete_segments(project, indexes),
     delete_name=later("Delete segments"),
     movable=True,
+    one=one_row,
 )
