@@ -115,6 +115,18 @@ def test_supports_of_the_start_and_of_far_ends_are_chosen_alike(window, table):
     assert [text_at(table, row, "support") for row in range(3)] == ["0: fixed", "1: fixed", "2: fixed"]
 
 
+def test_ctrl_enter_leaves_rows_alone_that_are_chosen_in_another_column(window, table):
+    before = window.document.project.segments
+    go_to(table, 1, "section")
+    spot = table.visualRect(cell(table, 3, "length")).center()
+    QTest.mouseClick(table.viewport(), Qt.MouseButton.LeftButton, CTRL, spot)
+    assert len(table.selectedIndexes()) == 2
+    chord(begin(table, "444"), KEY.Key_Return)
+    after = window.document.project.segments
+    assert after[2].length == 0.444
+    assert after[0] == before[0]
+
+
 def test_ctrl_enter_with_one_cell_or_a_mark_takes_in_that_one(window, table):
     go_to(table, 1, "length")
     chord(begin(table, "444"), KEY.Key_Return)

@@ -17,11 +17,11 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from app.gui.hand.cell_entry import CellEntry
 from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.delegate import ENTER, MARGIN, CellDelegate
 from app.gui.tables.grips import RowGrips
+from app.gui.tables.many_cells import ManyCells
 from app.gui.tables.model import TableModel
 from app.gui.tables.shown_columns import ShownColumns
 from app.gui.tables.widths import Widths
@@ -30,7 +30,6 @@ from app.words import tr
 
 ROW_HEIGHT = 26
 LEAST_ROWS = 2  # in sight, however small the window
-ONE_BY_ONE = ("mark", "name")  # columns of what no two records can share
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 
 
@@ -45,8 +44,9 @@ class TableView(QTableView):
         self._cells = CellDelegate(theme, self)
         self._cells.stepped.connect(self.step)
         self._cells.closeEditor.connect(self.on_editor_closed)
-        self._cells.began.connect(self.on_editor_begun)
-        self._cells.meant_for_all.connect(self.put_in_chosen)
+        self._many = ManyCells(self)
+        self._cells.began.connect(self._many.on_editor_begun)
+        self._cells.meant_for_all.connect(self._many.put_in_chosen)
         self.setItemDelegate(self._cells)
         self.setModel(model)
         self.widths, self.blocks = Widths(self), Blocks(self)
@@ -236,35 +236,6 @@ class TableView(QTableView):
         """Escape takes the preview back."""
         if hint == QAbstractItemDelegate.EndEditHint.RevertModelCache:
             self.table_model.drop_preview()
-
-    def _chosen_for(self, current: QModelIndex) -> tuple[int, ...]:
-        """The records of the chosen cells in the current cell's column that are for typing, its own first."""
-        model = self.table_model
-        alone = (
-            not 0 <= current.row() < model.record_rows or model.columns[current.column()].key in ONE_BY_ONE
-        )
-        rows = (
-            {} if alone else dict.fromkeys((current.row(), *sorted(i.row() for i in self.selectedIndexes())))
-        )
-        typed = (row for row in rows if model.text_to_fill(row, current.column()) is not None)
-        return tuple(model.record_of(row) for row in typed if self.selectionModel().isSelected(current))
-
-    def on_editor_begun(self) -> None:
-        """Say what Ctrl+Enter does where it does more than Enter."""
-        count = len(self._chosen_for(self.currentIndex()))
-        if count > 1:
-            self.table_model.noted.emit(
-                tr("Ctrl+Enter puts it into all {count} chosen cells").format(count=count)
-            )
-
-    def put_in_chosen(self, text: str) -> None:
-        """What was typed into the current cell, into all chosen cells of its column: one undo step."""
-        current, model = self.currentIndex(), self.table_model
-        records = self._chosen_for(current)
-        if len(records) > 1:
-            CellEntry(model.document, model, current.column(), records).commit(text)
-        else:
-            model.setData(current, text)
 
     def commit_open_editor(self) -> None:
         """Take in what an open editor holds, before saving or closing."""
