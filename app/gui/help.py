@@ -37,8 +37,8 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     (later("Tab, Shift+Tab"), later("The next cell or the one before, and out of the table at its ends")),
     ("F2", later("Edit the cell")),
     ("Home, End", later("The first or last cell of the row")),
-    ("Ctrl+← → ↑ ↓ Home End", later("To the edge of the table")),
-    ("Shift+← → ↑ ↓", later("Choose cells")),
+    (later("Ctrl+← → ↑ ↓ Home End"), later("To the edge of the table")),
+    (later("Shift+← → ↑ ↓"), later("Choose cells")),
     ("↓ ↑", later("While a cell is edited: go through the names that it offers")),
     (later("Ctrl+Enter"), later("Take in what is typed, in all chosen cells of the column")),
     (

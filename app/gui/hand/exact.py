@@ -48,7 +48,7 @@ class Exact(QObject):
             self._grasp.preview_reason(pull.outcome.reason)
         else:
             self._grasp.preview()
-        self._grasp.say(tr("Enter takes it, Esc leaves it."))
+        self._grasp.say(tr("Enter takes it, Escape gives it up."))
 
     def on_taken(self) -> None:
         """Enter: commit what can be, else the reason stays beside the text."""

@@ -59,7 +59,7 @@ def _add(project: Project, text: str, _sight: Sight) -> Change:
 _NAME = Column("name", later("Combination"), name_of, name_of, put_name("combinations"), width=16)
 _ALLOWABLE = Column(
     "allowable_factor",
-    later("Allowables times"),
+    later("Factor on allowables"),
     lambda row, sight: format_value(row.allowable_factor, "factor", sight.system, strip=True),
     lambda row, sight: entry_text(row.allowable_factor, "factor", sight.system),
     _put_allowable,

@@ -99,7 +99,7 @@ DISPLACEMENT = _table(
 )
 RELATIVE = _table(
     "relative",
-    later("Displacement between joints"),
+    later("Relative displacement of joints"),
     (
         _mark("relative", "start", "from", later("Displacement from joint")),
         _mark("relative", "end", "to", later("to joint")),

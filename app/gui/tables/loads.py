@@ -165,9 +165,9 @@ SEGMENT_LOADS = _records(
         _reference("segment_loads", "segment", later("Segment"), offers.segments),
         _number("segment_loads", "load_start", later("Load at start"), "distributed"),
         _number("segment_loads", "load_end", later("Load at end"), "distributed", "load_start"),
-        _number("segment_loads", "temperature_start", later("Heated at start"), "temperature"),
+        _number("segment_loads", "temperature_start", later("ΔT at start"), "temperature"),
         _number(
-            "segment_loads", "temperature_end", later("Heated at end"), "temperature", "temperature_start"
+            "segment_loads", "temperature_end", later("ΔT at end"), "temperature", "temperature_start"
         ),
         _number("segment_loads", "lack_of_fit", later("Lack of fit"), "displacement"),
     ),
