@@ -166,9 +166,7 @@ SEGMENT_LOADS = _records(
         _number("segment_loads", "load_start", later("Load at start"), "distributed"),
         _number("segment_loads", "load_end", later("Load at end"), "distributed", "load_start"),
         _number("segment_loads", "temperature_start", later("ΔT at start"), "temperature"),
-        _number(
-            "segment_loads", "temperature_end", later("ΔT at end"), "temperature", "temperature_start"
-        ),
+        _number("segment_loads", "temperature_end", later("ΔT at end"), "temperature", "temperature_start"),
         _number("segment_loads", "lack_of_fit", later("Lack of fit"), "displacement"),
     ),
     Adding(
