@@ -14,7 +14,7 @@ from numpy.polynomial import legendre
 from solver.allowables import no_stress
 from solver.arrays import FloatArray, IntArray, frozen
 from solver.results import Results
-from solver.sampling import Places, places_for, x_of
+from solver.sampling import Places, Window, places_for, x_of
 from solver.sections import area_at
 
 _AT_JOINT = 1e-12  # of the member's length: nearer to a joint than this is at the joint
@@ -122,10 +122,13 @@ class EnvelopeReadout:
     right: EnvelopePoint | None
 
 
-def curves(results: Results, state_index: int, points: int = 600) -> Curves:
-    """The curves of one state through at most `points` places, more only where the joints alone take more."""
+def curves(results: Results, state_index: int, points: int = 600, near: Window | None = None) -> Curves:
+    """The curves of one state through at most `points` places, more only where the joints alone take more.
+
+    A window that is looked at closely has as many again.
+    """
     states = np.array([state_index])
-    places = places_for(results, states, points)
+    places = places_for(results, states, points, near)
     values = _evaluate(results, states, places)
     return Curves(
         places.segment,
@@ -137,16 +140,16 @@ def curves(results: Results, state_index: int, points: int = 600) -> Curves:
     )
 
 
-def envelope(results: Results, points: int = 600) -> Envelope:
+def envelope(results: Results, points: int = 600, near: Window | None = None) -> Envelope:
     """The envelope over the checked states, at places chosen as for `curves`."""
     states = checked_states(results)
-    return _envelope(results, states, places_for(results, states, points))
+    return _envelope(results, states, places_for(results, states, points, near))
 
 
-def bundle(results: Results, points: int = 600) -> Bundle:
+def bundle(results: Results, points: int = 600, near: Window | None = None) -> Bundle:
     """The curves of all checked states, at the places of their envelope."""
     states = checked_states(results)
-    places = places_for(results, states, points)
+    places = places_for(results, states, points, near)
     values = _evaluate(results, states, places)
     return Bundle(
         states,

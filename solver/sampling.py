@@ -4,17 +4,21 @@ A place is a segment and a fraction 0…1 of it, so that the two sides of a join
 places keeps to a budget: the ends are there, the extremes of every segment, and what is left is shared out by
 length. Where ends and extremes alone take more than that, the most extreme of each of many even stretches are
 kept, so that a drawing with no more columns of pixels than stretches still shows every extreme.
+
+A window that is looked at closely gets as many places again for itself, and the extremes of its segments.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TypeAlias
 
 import numpy as np
 
 from solver.arrays import FloatArray, IntArray
 from solver.results import Results, SegmentResults
 
+Window: TypeAlias = tuple[float, float]  # from, to in m
 FINENESS = 8  # stretches for each point of the budget: more than a screen or a sheet has columns of pixels
 _CLOSE = 1e-9  # a place nearer than this part of the segment to the one before adds nothing to a curve
 
@@ -48,8 +52,11 @@ def peaks_of(segments: SegmentResults) -> tuple[Peaks, ...]:
     )
 
 
-def places_for(results: Results, states: IntArray, points: int) -> Places:
-    """Places for curves of these states: about `points`, and more where ends and extremes take more."""
+def places_for(results: Results, states: IntArray, points: int, near: Window | None = None) -> Places:
+    """Places for curves of these states: about `points`, and more where ends and extremes take more.
+
+    In the window `near` (from, to in m) there are about as many again.
+    """
     n = len(results.chain.length)
     peaks = [Peaks(peak.size[states], peak.x[states]) for peak in peaks_of(results.segments)]
     extremes = _inside(results, [_governing(peak) for peak in peaks])
@@ -60,8 +67,10 @@ def places_for(results: Results, states: IntArray, points: int) -> Places:
         )
         room = max(points - 2 * n - len(extremes), points // 2 - 2 * n)
     filling = _filling(results.chain.length, room)
-    segment = np.concatenate([np.repeat(np.arange(n), 2), extremes.segment, filling.segment])
-    fraction = np.concatenate([np.tile([0.0, 1.0], n), extremes.fraction, filling.fraction])
+    closer = [] if near is None else [_closer(results, peaks, near, points)]
+    inside = [extremes, filling, *closer]
+    segment = np.concatenate([np.repeat(np.arange(n), 2), *(part.segment for part in inside)])
+    fraction = np.concatenate([np.tile([0.0, 1.0], n), *(part.fraction for part in inside)])
     return _in_order(results, _Inside(segment, fraction))
 
 
@@ -90,6 +99,26 @@ def _of_stretches(peak: Peaks, position: FloatArray, stretches: int) -> _Inside:
     order = np.lexsort((size, stretch))
     last = order[np.append(np.diff(stretch[order]) > 0, True)]
     return _Inside(found.segment[last], found.fraction[last])
+
+
+def _closer(results: Results, peaks: list[Peaks], near: Window, points: int) -> _Inside:
+    """Even places in a window, and the extremes there, of very many segments those of even stretches."""
+    position = results.position
+    low, high = np.clip(near, 0.0, position[-1])
+    if high <= low:  # beyond the end of a shorter member
+        return _Inside(np.zeros(0, dtype=np.intp), np.zeros(0))
+    found = []
+    for peak in peaks:
+        whole = _governing(peak)
+        shown = np.flatnonzero((whole.fraction >= low) & (whole.fraction <= high))  # still x
+        if len(shown) > points:
+            stretch = np.floor((whole.fraction[shown] - low) / (high - low) * points)
+            order = np.lexsort((peak.size.max(axis=0)[shown], stretch))
+            shown = shown[order[np.append(np.diff(stretch[order]) > 0, True)]]
+        found.append(_Inside(whole.segment[shown], whole.fraction[shown]))
+    x = np.linspace(low, high, points)
+    segment = np.clip(np.searchsorted(position, x, side="right") - 1, 0, len(position) - 2)
+    return _inside(results, [*found, _Inside(segment, x)])
 
 
 def _inside(results: Results, found: list[_Inside]) -> _Inside:

@@ -20,6 +20,7 @@ from app.gui.hand.bubble import Bubble
 from app.gui.hand.marks import HandMarks
 from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
+from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import envelope_contents, state_contents
 from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, state_readout
@@ -46,6 +47,7 @@ class SheetScene(QGraphicsScene):
         self._results: Results | None = None
         self._reference: Reference | None = None
         self._earlier: Earlier | None = None  # the reference's curves, made once for each state
+        self._near: tuple[float, float] | None = None  # the window whose curves have points of their own
         self._current = False
         self._waiting = False
         self._upright = False
@@ -235,20 +237,25 @@ class SheetScene(QGraphicsScene):
         state = self._state(results)
         if state is None and self._shown.kind != "envelope":
             return Earlier(name, results.position, {})
-        return earlier_curves(name, results, state)
+        return earlier_curves(name, results, state, self._near)
 
     def _show_curves(self) -> None:
+        self._show_on_strips()
+        self._show_on_drawing()
+
+    def _show_on_strips(self) -> None:
         contents = None
         if self._results is not None:
             state = self._state(self._results)
             contents = (
-                envelope_contents(self._results, self._earlier, together=self._together)
+                envelope_contents(self._results, self._earlier, together=self._together, near=self._near)
                 if state is None
-                else state_contents(self._results, state, self._earlier, together=self._together)
+                else state_contents(
+                    self._results, state, self._earlier, together=self._together, near=self._near
+                )
             )
         for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
             self._strips[kind].show_content(content)
-        self._show_on_drawing()
 
     def _state(self, results: Results) -> int | None:
         """The index of the shown state; None for the envelope, and for a state the results do not have."""
@@ -290,6 +297,7 @@ class SheetScene(QGraphicsScene):
     def _place_all(self) -> None:
         self._layout = layout = self._laid_out()
         self._ruler = ruler = self._ruler.on(layout.begin, layout.end)
+        self._look_closer(ruler)
         self._place_drawing()
         for strip, rect in zip(self.strips, layout.strips, strict=True):
             strip.set_legend(shown=strip is self.strips[0])
@@ -297,6 +305,14 @@ class SheetScene(QGraphicsScene):
             strip.refresh()
         self._say_notice()
         self.show_cursor(self._cursor)
+
+    def _look_closer(self, ruler: Ruler) -> None:
+        """Give the curves the points that what is shown needs."""
+        near = sampled_window(ruler, self._near)
+        if near != self._near:
+            self._near = near
+            self._earlier = self._earlier_curves()
+            self._show_on_strips()
 
     def _place_drawing(self) -> None:
         layout, ruler = self._layout, self._ruler

@@ -7,12 +7,14 @@ import math
 import numpy as np
 import pytest
 from hypothesis import given
+from msgspec import structs
 from numpy.testing import assert_allclose, assert_array_equal
 
 from solver.fields import at, checked_states, curves, envelope, envelope_at
-from solver.model import Combination, FixedSupport, JointLoad, SegmentLoad
+from solver.model import Combination, FixedSupport, JointLoad, Project, SegmentLoad
 from solver.sampling import FINENESS
 from solver.solve import solve
+from tests.drawn_members import busy_member
 from tests.members import Part, area, case, member, round_bar, segment_mark
 from tests.strategies import projects
 
@@ -202,3 +204,45 @@ def test_curves_cannot_be_written_to():
     found = curves(solve(member(stepped(), HELD, [PULL])), 0)
     with pytest.raises(ValueError, match="read-only"):
         found.stress[0] = 0.0
+
+
+CLOSE = 1e-3  # of the member that a close look shows
+
+
+@pytest.mark.parametrize("where", [0.0, 0.31, 0.62, 1.0 - CLOSE])
+@pytest.mark.parametrize("count", [3, 9000])
+def test_a_window_that_is_looked_at_closely_has_points_of_its_own(where, count):
+    results = solve(close_member(count))
+    total = float(results.position[-1])
+    near = where * total, (where + CLOSE) * total
+    shown, plain = curves(results, 0, near=near), curves(results, 0)
+    inside = (shown.x >= near[0]) & (shown.x <= near[1])
+    assert inside.sum() >= 500
+    assert len(shown.x) <= len(plain.x) + 2000
+    middle = 0.5 * (shown.x[inside][1:] + shown.x[inside][:-1])[::40]
+    for x in middle:
+        left = at(results, 0, float(x)).left
+        low, high = plain.force.min(), plain.force.max()
+        drawn = np.interp(x, shown.x, shown.force)
+        assert drawn == pytest.approx(left.force, abs=1e-4 * (high - low))
+
+
+@pytest.mark.parametrize("count", [3, 9000])
+def test_points_of_a_window_go_nowhere_beyond_the_extremes(count):
+    results = solve(close_member(count))
+    total = float(results.position[-1])
+    for near in ((0.2 * total, 0.4 * total), (2.0 * total, 3.0 * total)):
+        shown, plain = envelope(results, near=near), envelope(results)
+        assert np.all(np.diff(shown.x) >= 0.0)
+        assert set(plain.x.tolist()) <= set(shown.x.tolist())
+        for name in ("displacement_max", "force_max", "stress_max"):
+            assert getattr(shown, name).max() == pytest.approx(getattr(plain, name).max(), rel=1e-12)
+
+
+def close_member(count: int) -> Project:
+    """Bedded so hard that forces fade within a small part of the member, with a load on every segment."""
+    project = busy_member(count)
+    cases = tuple(structs.replace(case, joint_loads=case.joint_loads[:200]) for case in project.load_cases)
+    segments = tuple(structs.replace(s, length=300.0 / count, bedding=1e8) for s in project.segments)
+    both = (Combination("both", {case.name: 1.0 for case in cases[:2]}),)
+    return structs.replace(project, segments=segments, load_cases=cases[:2], combinations=both)

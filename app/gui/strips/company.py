@@ -95,26 +95,28 @@ def _plain_traces(part: Earlier | Beside | None, kind: Kind) -> tuple[Trace, ...
     )
 
 
-def earlier_curves(name: str, results: Results, state: int | None) -> Earlier:
+def earlier_curves(
+    name: str, results: Results, state: int | None, near: tuple[float, float] | None = None
+) -> Earlier:
     """The curves of a reference in one state, or of its envelope."""
     if state is None:
-        whole = envelope(results)
+        whole = envelope(results, near=near)
         return Earlier(name, whole.x, of_envelope(whole))
-    shown = curves(results, state)
+    shown = curves(results, state, near=near)
     return Earlier(name, shown.x, of_state(shown))
 
 
-def envelope_beside(results: Results) -> Beside | None:
+def envelope_beside(results: Results, near: tuple[float, float] | None = None) -> Beside | None:
     """The envelope, where it is of more than one state."""
     if sum(state.checked for state in results.states) < 2:
         return None
-    shown = envelope(results)
+    shown = envelope(results, near=near)
     return Beside(shown.x, of_envelope(shown), is_envelope=True)
 
 
-def singles_beside(results: Results) -> Beside:
+def singles_beside(results: Results, near: tuple[float, float] | None = None) -> Beside:
     """The states that the envelope is of."""
-    shown = bundle(results)
+    shown = bundle(results, near=near)
     values: Values = {
         "displacement": tuple(shown.displacement),
         "force": tuple(shown.force),

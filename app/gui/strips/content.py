@@ -111,22 +111,31 @@ def of_unit_strain(results: Results) -> dict[Kind, float]:
 
 
 def state_contents(
-    results: Results, state: int, earlier: Earlier | None = None, *, together: bool = False
+    results: Results,
+    state: int,
+    earlier: Earlier | None = None,
+    *,
+    together: bool = False,
+    near: tuple[float, float] | None = None,
 ) -> tuple[StripContent, ...]:
-    """The strips of one state; `together` with the envelope around it."""
-    shown = curves(results, state)
-    company = Company(earlier, envelope_beside(results) if together else None)
+    """The strips of one state; `together` with the envelope around it, `near` a window with more points."""
+    shown = curves(results, state, near=near)
+    company = Company(earlier, envelope_beside(results, near) if together else None)
     builder = _Builder(results, (state,), shown.x, shown.segment, shown.utilisation, shown.stress, company)
     return builder.build(of_state(shown))
 
 
 def envelope_contents(
-    results: Results, earlier: Earlier | None = None, *, together: bool = False
+    results: Results,
+    earlier: Earlier | None = None,
+    *,
+    together: bool = False,
+    near: tuple[float, float] | None = None,
 ) -> tuple[StripContent, ...]:
     """The strips of the envelope of the checked states; `together` with each of these states."""
-    shown = envelope(results)
+    shown = envelope(results, near=near)
     states = tuple(index for index, state in enumerate(results.states) if state.checked)
-    company = Company(earlier, singles_beside(results) if together else None)
+    company = Company(earlier, singles_beside(results, near) if together else None)
     builder = _Builder(results, states, shown.x, shown.segment, shown.utilisation, None, company)
     return builder.build(of_envelope(shown))
 
