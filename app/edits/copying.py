@@ -2,36 +2,29 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Mapping, Sequence
 from typing import TypeVar
 
 from msgspec import Struct, structs
 
-from app.edits.records import fresh_mark, with_cases
+from app.edits.records import with_cases
 from solver.model import JointLoad, LoadCase, Project, SegmentLoad
 
 _L = TypeVar("_L", bound=Struct)
 Marks = Mapping[str, str]  # of the copied, to those of the copies
 
 
-def fresh_marks(old: list[str], taken: list[str]) -> dict[str, str]:
-    """A mark of its own for the copy of each, in order, in the manner of the last one given out."""
-    given = list(taken)
-    fresh = {}
-    for mark in old:
-        fresh[mark] = fresh_mark(given, given[-1] if given else mark)
-        given.append(fresh[mark])
-    return fresh
-
-
 def with_loads_copied(
     project: Project,
-    segments: Marks,
-    joints: Marks,
+    segments: Sequence[Marks],
+    joints: Sequence[Marks],
     on_segment: Callable[[SegmentLoad], SegmentLoad] = lambda load: load,
     at_joint: Callable[[JointLoad], JointLoad] = lambda load: load,
 ) -> Project:
-    """The project whose copies carry in every case what the copied carry, behind the loads of now."""
+    """The project whose copies carry in every case what the copied carry, behind the loads of now.
+
+    There is one `Marks` for each copy.
+    """
 
     def grown(case: LoadCase) -> LoadCase:
         return structs.replace(
@@ -43,11 +36,16 @@ def with_loads_copied(
     return with_cases(project, grown)
 
 
-def _grown(loads: tuple[_L, ...], key: str, marks: Marks, change: Callable[[_L], _L]) -> tuple[_L, ...]:
+def _grown(
+    loads: tuple[_L, ...], key: str, copies: Sequence[Marks], change: Callable[[_L], _L]
+) -> tuple[_L, ...]:
     """The loads and their copies; the very same list where nothing is copied."""
-    copies = [
+    copied = {mark for marks in copies for mark in marks}
+    own = [load for load in loads if getattr(load, key) in copied]
+    fresh = [
         structs.replace(change(load), **{key: marks[getattr(load, key)]})
-        for load in loads
+        for marks in copies
+        for load in own
         if getattr(load, key) in marks
     ]
-    return (*loads, *copies) if copies else loads
+    return (*loads, *fresh) if fresh else loads

@@ -11,9 +11,9 @@ from __future__ import annotations
 from msgspec import structs
 
 from app.edits.checking import checked
-from app.edits.copying import Marks, fresh_marks, with_loads_copied
+from app.edits.copying import Marks, with_loads_copied
 from app.edits.member import joint_load_turned, joint_turned, segment_load_turned, segment_turned
-from app.edits.records import kept, with_cases
+from app.edits.records import FreshMarks, kept, with_cases
 from app.encode import is_absent
 from solver.model import Limits, LoadCase, Project
 
@@ -21,10 +21,8 @@ from solver.model import Limits, LoadCase, Project
 def mirror_member(project: Project) -> Project:
     """The project with the whole member's mirror image put behind its far end."""
     middle = project.joints[-1].mark
-    segment_marks = [segment.mark for segment in reversed(project.segments)]
-    joint_marks = [joint.mark for joint in reversed(project.joints[:-1])]
-    segments = fresh_marks(segment_marks, segment_marks[::-1])
-    joints = fresh_marks(joint_marks, [joint.mark for joint in project.joints])
+    segments = _marks_of_images([segment.mark for segment in project.segments], "")
+    joints = _marks_of_images([joint.mark for joint in project.joints[:-1]], middle)
     fresh = structs.replace(
         project,
         segments=(*project.segments, *_images(project, segments)),
@@ -32,7 +30,13 @@ def mirror_member(project: Project) -> Project:
         limits=_limits_mirrored(project.limits, joints, middle),
     )
     fresh = with_cases(fresh, lambda case: _without_joint(case, middle))
-    return checked(with_loads_copied(fresh, segments, joints, segment_load_turned, joint_load_turned))
+    return checked(with_loads_copied(fresh, [segments], [joints], segment_load_turned, joint_load_turned))
+
+
+def _marks_of_images(marks: list[str], middle: str) -> Marks:
+    """A mark for the image of each, from the middle on; `middle` has none, and is gone on from."""
+    taken = [*marks, middle] if middle else marks
+    return dict(zip(reversed(marks), FreshMarks(taken).in_turn(len(marks), taken[-1]), strict=True))
 
 
 def _images(project: Project, marks: Marks) -> tuple[object, ...]:

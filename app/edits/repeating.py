@@ -8,12 +8,18 @@ repeated. Marks are fresh.
 
 from __future__ import annotations
 
+from collections.abc import Iterable, Sequence
+from itertools import chain
+from typing import TypeVar
+
 from msgspec import structs
 
 from app.edits.checking import checked, refused
-from app.edits.copying import fresh_marks, with_loads_copied
-from app.edits.records import fresh_mark
-from solver.model import Joint, Project
+from app.edits.copying import Marks, with_loads_copied
+from app.edits.records import FreshMarks
+from solver.model import Joint, Project, Segment
+
+_R = TypeVar("_R", bound=Joint | Segment)
 
 MOST = 200  # copies at once; a slip of the finger should not make a member of millions
 
@@ -25,30 +31,32 @@ def repeat_segments(project: Project, first: int, last: int, times: int) -> Proj
     """
     if not 1 <= times <= MOST:
         raise refused(("segments", first), "repeats", count=times, most=MOST)
-    for _ in range(times):
-        project = _repeated(project, first, last)
-        first, last = last + 1, 2 * last - first + 1
-    return checked(project)
-
-
-def _repeated(project: Project, first: int, last: int) -> Project:
-    """One copy behind the segments `first` to `last`."""
     block, between = project.segments[first : last + 1], project.joints[first + 1 : last + 1]
-    taken = [joint.mark for joint in project.joints]
-    seam = Joint(fresh_mark(taken, project.joints[last].mark))
-    segments = fresh_marks([s.mark for s in block], _ending_in(project.segments, block[-1].mark))
-    joints = fresh_marks([j.mark for j in between], [*taken, seam.mark])
-    copies = tuple(structs.replace(s, mark=segments[s.mark]) for s in block)
-    inner = tuple(structs.replace(j, mark=joints[j.mark]) for j in between)
+    segments = _marks_of_copies(project.segments, last, block, times)
+    joints = _marks_of_copies(project.joints, last, (project.joints[last + 1], *between), times)
+    inner = [{joint.mark: marks[joint.mark] for joint in between} for marks in joints]
+    copies = (_copied(block, marks) for marks in segments)
+    chains = ((Joint(next(iter(marks.values()))), *_copied(between, marks)) for marks in joints)
     grown = structs.replace(
         project,
-        segments=(*project.segments[: last + 1], *copies, *project.segments[last + 1 :]),
-        joints=(*project.joints[: last + 1], seam, *inner, *project.joints[last + 1 :]),
+        segments=_with(project.segments, last + 1, copies),
+        joints=_with(project.joints, last + 1, chains),
     )
-    return with_loads_copied(grown, segments, joints)
+    return checked(with_loads_copied(grown, segments, inner))
 
 
-def _ending_in(records: tuple[object, ...], mark: str) -> list[str]:
-    """The marks taken, with the one to go on from at the end."""
-    marks = [str(getattr(record, "mark", "")) for record in records]
-    return [*(other for other in marks if other != mark), mark]
+def _marks_of_copies(
+    all_of_them: Sequence[_R], last: int, copied: Sequence[_R], times: int
+) -> list[dict[str, str]]:
+    """For each copy the marks of what is copied, going on in the manner of the record `last`."""
+    fresh = FreshMarks(record.mark for record in all_of_them)
+    given = iter(fresh.in_turn(times * len(copied), all_of_them[last].mark))
+    return [{record.mark: next(given) for record in copied} for _ in range(times)]
+
+
+def _copied(records: Sequence[_R], marks: Marks) -> list[_R]:
+    return [structs.replace(record, mark=marks[record.mark]) for record in records]
+
+
+def _with(records: Sequence[_R], place: int, copies: Iterable[Iterable[_R]]) -> tuple[_R, ...]:
+    return (*records[:place], *chain.from_iterable(copies), *records[place:])

@@ -11,6 +11,7 @@ from msgspec.structs import replace
 
 from app import edits
 from app.edits import EditError
+from app.edits.records import FreshMarks
 from app.edits.repeating import MOST
 from app.project_file import dump, parse
 from solver.model import FixedSupport, Joint, JointLoad, LoadCase, Project, SpringSupport, StopSupport
@@ -177,3 +178,18 @@ def test_a_taper_is_never_joined_as_equal():
     joints = tuple(replace(j, support=UNSET) for j in tapered.joints)
     bare = replace(tapered, joints=joints, load_cases=(), combinations=())
     assert edits.join_equal_neighbours(bare) == bare
+
+
+def test_marks_given_out_many_at_a_time_are_looked_for_once():
+    taken = [f"S{number}" for number in range(5000)]
+    looked_at = []
+
+    class Counting(set):
+        def __contains__(self, mark: object) -> bool:
+            looked_at.append(mark)
+            return super().__contains__(mark)
+
+    marks = FreshMarks(taken)
+    marks._taken = Counting(taken)
+    assert marks.in_turn(3, "S4999") == ["S5000", "S5001", "S5002"]
+    assert len(looked_at) < 5010
