@@ -5,6 +5,7 @@ Arrows show the direction, so values stand without sign, except where a load cha
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from itertools import groupby
 
 import numpy as np
@@ -120,10 +121,8 @@ def _draw_band(sketch: Sketch, index: int, load: tuple[float, float], heights: t
     top = [(a, base - h) for a, h in zip(ends, heights, strict=True)]
     outline = [(ends[0], base), *top, (ends[1], base)]
     sketch.line(*outline, ink="quiet", fill="load_fill", closed=True, part=part, clip=True)
-    count = max(int(abs(ends[1] - ends[0]) / 26.0), 1)
     arrows: list[tuple[float, float]] = []
-    for i in range(count):
-        share = (i + 0.5) / count
+    for share in _shares_of_arrows(sketch, ends):
         value = start + share * (end - start)
         if value:
             direction = sketch.forward if value > 0.0 else -sketch.forward
@@ -136,6 +135,15 @@ def _little_arrow(middle: float, across: float, direction: float) -> list[tuple[
     tail, tip = (middle - 6.0 * direction, across), (middle + 6.0 * direction, across)
     back = tip[0] - 3.0 * direction
     return [tail, tip, (back, across - 2.1), tip, tip, (back, across + 2.1)]
+
+
+def _shares_of_arrows(sketch: Sketch, ends: Span) -> Iterator[float]:
+    """Where along a band its arrows are, in shares of it: only near the window, however far zoomed in."""
+    length = ends[1] - ends[0]
+    count = max(int(abs(length) / 26.0), 1)
+    low, high = sorted((edge - ends[0]) / length * count for edge in sketch.window)
+    for i in range(max(int(low) - 1, 0), min(int(high) + 2, count)):
+        yield (i + 0.5) / count
 
 
 def _arrow(

@@ -6,6 +6,7 @@ that it needs for all of them.
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
@@ -210,7 +211,7 @@ def thickest(member: Member) -> float:
 
 def round_factor(largest: float) -> float:
     """The largest round factor that still fits."""
-    power = 1e-6
+    power = min(1e-6, 10.0 ** math.floor(math.log10(largest))) if largest > 0.0 else 1e-300
     best = power
     while power <= largest:
         best = max(power * f for f in FACTORS if power * f <= largest)

@@ -22,6 +22,7 @@ from app.drawing.shapes import Anchor, Box, Face, Fill, Ink, Part, Picture, Poin
 Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, across
 ANCHORS: dict[Toward, Anchor] = {"low": "end", "middle": "middle", "high": "start"}
 FAR = 1e6  # px along the axis: beyond every label
+MOST_HATCHES = 400  # strokes of one wall; what is longer is far outside the sheet
 LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
@@ -178,7 +179,8 @@ class Sketch:
 
     def hatch(self, along: Span, across: Span, step: tuple[float, float]) -> None:
         """Short slanted strokes along a line from one end to the other: ground that does not move."""
-        count = max(int(max(abs(along[1] - along[0]), abs(across[1] - across[0])) / 6.0), 2)
+        length = max(abs(along[1] - along[0]), abs(across[1] - across[0]))
+        count = min(max(int(length / 6.0), 2), MOST_HATCHES)
         points = []
         for i in range(count + 1):
             a = along[0] + (along[1] - along[0]) * i / count

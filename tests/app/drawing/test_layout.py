@@ -6,15 +6,17 @@ from dataclasses import replace
 from itertools import combinations
 
 import pytest
+from msgspec import structs
 
-from app.drawing.layout import lay_out
+from app.drawing.body import edge_at
+from app.drawing.layout import lay_out, sketched
 from app.drawing.member import Member
 from app.drawing.shapes import Box, Part, Picture, Stroke, Text
 from app.drawing.tips import tip
 from app.samples import names, read_sample
 from app.shown import Shown
 from app.units import format_value
-from solver.model import Project
+from solver.model import Project, RoundSection
 from solver.sections import outline
 from tests.app.drawing.frames import SIZES, window_frame
 from tests.drawn_members import all_members, busy_member, drawn, first_state, stopped_member, uneven_member
@@ -230,3 +232,25 @@ def test_zoomed_in_only_what_is_in_the_window_is_labelled(upright):
 
 def test_first_state_of_the_helpers_is_a_state():
     assert first_state(busy_member(2)) == Shown("combination", "Combination 0")
+
+
+def strokes_of(project: Project, *, zoom: float = 1.0) -> int:
+    member = drawn(project)
+    frame = window_frame(member, SIZES[0], upright=False)
+    middle = 0.5 * (frame.ruler.begin + frame.ruler.end)
+    frame = replace(frame, ruler=frame.ruler.zoomed(zoom, middle))
+    return sum(len(stroke.points) for stroke in sketched(member, frame).picture.strokes)
+
+
+def test_a_close_look_at_a_distributed_load_draws_no_arrow_outside_the_window():
+    assert strokes_of(busy_member(1), zoom=1e4) < 1000
+
+
+def test_the_deepest_section_is_drawn_within_its_room():
+    project = busy_member(1)
+    section = RoundSection(diameter=1e10)
+    deep = structs.replace(project, segments=(structs.replace(project.segments[0], section=section),))
+    member = drawn(deep)
+    sketch = sketched(member, window_frame(member, SIZES[0], upright=False))
+    assert edge_at(sketch, 0) <= sketch.rows.half
+    assert strokes_of(deep) < 1000
