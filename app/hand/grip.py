@@ -70,7 +70,7 @@ class Grip:
     @property
     def _rate(self) -> float:
         """How much of the number a pixel is, where the pull begins."""
-        return abs(self.at(0.5) - self.at(-0.5))
+        return abs(self.at(0.5) - self.at(-0.5)) or math.ulp(self.value)
 
     @property
     def _step(self) -> Fraction:

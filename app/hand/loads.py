@@ -14,6 +14,7 @@ from msgspec import UNSET
 
 from app import edits
 from app.edits.linear import exact, rounded
+from app.hand.cells import case_share
 from app.hand.grip import Grip, Refusal
 from app.hand.sections import Where
 from app.shown import Shown
@@ -44,7 +45,7 @@ def aim_at(project: Project, shown: Shown, case: str | None) -> Aim | Refusal:
     edited = next((found for found in project.load_cases if found.name == case), None)
     if edited is None:
         return Refusal(tr("There is no load case to edit: add one in the Loads table."))
-    factor = _factor(project, shown, edited.name)
+    factor = case_share(project, shown, project.load_cases.index(edited))
     if abs(factor) > NEGLIGIBLE:
         return Aim(edited, factor, shown)
     return Refusal(
@@ -55,19 +56,13 @@ def aim_at(project: Project, shown: Shown, case: str | None) -> Aim | Refusal:
     )
 
 
-def _factor(project: Project, shown: Shown, case: str) -> float:
-    if shown.kind == "case":
-        return 1.0 if shown.name == case else 0.0
-    found = (combination for combination in project.combinations if combination.name == shown.name)
-    combination = next(found, None) if shown.kind == "combination" else None
-    return 0.0 if combination is None else combination.factors.get(case, 0.0)
-
-
 def force_grip(project: Project, joint: int, aim: Aim, total: float) -> Grip:
     """The force at a joint in the edited case; `total` is what is shown there."""
     mark = project.joints[joint].mark
     value = fsum(load.force for load in aim.case.joint_loads if load.joint == mark)
-    rate = (abs(total) or _largest_force(aim.case) or 1.0) / FULL / aim.factor
+    cancelled = abs(total) <= NEGLIGIBLE * abs(aim.factor * value)
+    size = _largest_force(aim.case) if cancelled else abs(total)
+    rate = (size or 1.0) / FULL / aim.factor
 
     def put(force: float) -> Project:
         return edits.set_joint_load(project, aim.case.name, mark, "force", force or UNSET)

@@ -283,3 +283,12 @@ class TestLoads:
         outcome = force_grip(project, 3, aimed(project, DEAD, "Dead"), 3.0).outcome(5.0)
         assert outcome.project is None
         assert "Loads table" in outcome.reason
+
+
+def test_a_force_that_others_cancel_to_the_last_digit_can_still_be_pulled():
+    cases = [case(name, on_joints=[JointLoad("1", force)]) for name, force in (("A", 1e9), ("B", -1e9))]
+    project = bar(cases=cases, combinations=[Combination("Both", {"A": 1.0, "B": 1.0})])
+    aim = aim_at(project, Shown("combination", "Both"), "A")
+    assert isinstance(aim, Aim)
+    grip = force_grip(project, 1, aim, 1e-8)
+    assert grip.pulled(FULL) > grip.value
