@@ -279,7 +279,7 @@ class Window(QMainWindow):
 
     def on_undo(self) -> None:
         """Back one step; what is in the hand or in an open editor is the step taken back first."""
-        if self.hand.cancel():
+        if self.hand.cancel() or self.shaping.cancel():
             return
         self.tables.commit_open_editor()
         self.document.undo()

@@ -12,6 +12,7 @@ from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QSpinBox, QWidget
 
 from app.drawing.shapes import Box
+from app.gui.hand.leaving import keyboard_is_gone
 from app.gui.theme import theme_for
 
 
@@ -56,6 +57,10 @@ class CountPopup(QFrame):
         self.field.setFocus(Qt.FocusReason.OtherFocusReason)
         self.field.selectAll()
 
+    def give_up(self) -> None:
+        """Close it without a number, as what it was for is not there any more."""
+        self._end(None)
+
     def _end(self, count: int | None) -> None:
         self.field.removeEventFilter(self)
         self.hide()
@@ -71,7 +76,7 @@ class CountPopup(QFrame):
             if event.key() == Qt.Key.Key_Escape:
                 self._end(None)
                 return True
-        if event.type() == QEvent.Type.FocusOut:
+        if event.type() == QEvent.Type.FocusOut and keyboard_is_gone(event):
             self._end(None)
             return True
         return super().eventFilter(field, event)

@@ -10,6 +10,7 @@ from PySide6.QtCore import QPointF, QSize, Qt, Signal
 from PySide6.QtGui import QFocusEvent, QKeyEvent
 from PySide6.QtWidgets import QLineEdit, QWidget
 
+from app.gui.hand.leaving import keyboard_is_gone
 from app.words import tr
 
 DIGITS = "0123456789.,+-−(⌀"
@@ -61,5 +62,5 @@ class ExactEntry(QLineEdit):
     def focusOutEvent(self, event: QFocusEvent) -> None:
         """Leaving the field takes its text in, but a menu or another window does not."""
         super().focusOutEvent(event)
-        if event.reason() not in (Qt.FocusReason.PopupFocusReason, Qt.FocusReason.ActiveWindowFocusReason):
+        if keyboard_is_gone(event):
             self.left.emit()

@@ -22,6 +22,7 @@ from app.gui.hand.keys import FREE, GIVE_UP, TOTAL_STAYS
 from app.gui.hand.near import Near
 from app.gui.hand.nudges import Nudges
 from app.gui.view import View
+from app.words import tr
 
 FORGET = 40.0  # px that the pointer goes away before what was pulled is out of the hand
 SHIFT, CTRL = Qt.KeyboardModifier.ShiftModifier, Qt.KeyboardModifier.ControlModifier
@@ -43,6 +44,7 @@ class Hand(QObject):
         self._nudges = Nudges(grasp, view)
         self._pressed: Handle | None = None  # not moved yet
         self._start = self._point = QPointF()
+        self._at_origin = False  # whether the press was on the first joint
         grasp.told.connect(self.told)
         grasp.ended.connect(self._near.plain)
         view.selection_changed.connect(self._on_selection)
@@ -79,9 +81,10 @@ class Hand(QObject):
     def _on_press(self, event: QMouseEvent) -> bool:
         self._grasp.forget()
         if event.button() != Qt.MouseButton.LeftButton or self.phase is not Phase.IDLE:
-            return False
+            return self.phase is Phase.PULLING
         self._pressed = self._near.at(_xy(event.position()))
         self._start = self._point = event.position()
+        self._at_origin = self._pressed is None and self._near.is_at_origin(_xy(self._start))
         return self._pressed is not None and self._is_bare()
 
     def _is_bare(self) -> bool:
@@ -91,6 +94,11 @@ class Hand(QObject):
     def _on_move(self, event: QMouseEvent) -> bool:
         if self._pressed is not None and self._has_moved(event):
             self._begin()
+        if self._at_origin and self._has_moved(event):
+            self._at_origin = False
+            self.told.emit(
+                tr("The first joint stays where x is 0: pull the joint at the far end of its segment.")
+            )
         if self.phase is Phase.PULLING:
             self._point = event.position()
             self._follow(event.modifiers())
@@ -127,6 +135,7 @@ class Hand(QObject):
 
     def _on_release(self, event: QMouseEvent) -> bool:
         pressed, self._pressed = self._pressed, None
+        self._at_origin = False
         if self.phase is Phase.PULLING and event.button() == Qt.MouseButton.LeftButton:
             self._grasp.commit()
         return pressed is not None and self._is_bare()
@@ -146,9 +155,9 @@ class Hand(QObject):
         return False
 
     def _on_wheel(self, _event: QEvent) -> bool:
-        """While a number is pulled the sheet keeps still."""
+        """While a number is pulled or typed the sheet keeps still."""
         self._grasp.forget()
-        return self.phase is Phase.PULLING
+        return self.phase in (Phase.PULLING, Phase.TYPING)
 
     # Keys
 

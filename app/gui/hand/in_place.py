@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from PySide6.QtCore import QEvent, QObject, QSize, Qt, Signal
+from PySide6.QtCore import QEvent, QObject, QSize, Qt, QTimer, Signal
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QFrame, QLabel, QVBoxLayout, QWidget
 
@@ -17,12 +17,14 @@ from app.drawing.shapes import LOADS, OF_JOINT, OF_SEGMENT, Box, Part
 from app.gui.document import Document, Snapshot
 from app.gui.hand.cell_entry import CellEntry
 from app.gui.hand.drafts import drafts_on_drawing
+from app.gui.hand.leaving import keyboard_is_gone
 from app.gui.sheet_view import SheetView
 from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.pane import TablesPane
 from app.gui.theme import Theme, theme_for
 from app.gui.view import View
 from app.hand.cells import ORDER, Cell, case_share, cells_of, loads_behind, part_of
+from app.units import input_text
 from app.words import tr
 
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
@@ -97,6 +99,7 @@ class InPlace(QObject):
         self._entry: CellEntry | None = None
         self._frame: EditorFrame | None = None
         self._part: Part | None = None
+        sheet.viewport().installEventFilter(self)
         sheet.opened.connect(self.open_part)
         tables.committing.connect(self.commit)
         document.opened.connect(self.cancel)
@@ -167,6 +170,9 @@ class InPlace(QObject):
     def _show(self, entry: CellEntry, box: Box, text: str | None) -> None:
         self._entry = entry
         self._frame = frame = EditorFrame(self._sheet.viewport(), theme_for(self._sheet.palette()), entry)
+        if note := self._share_note(entry):
+            frame.caption.setText(f"{entry.caption}\n{note}")
+            frame.line.setAccessibleName(f"{entry.caption}, {note}")
         line = frame.line
         line.setText(entry.text)
         room = line.fontMetrics().horizontalAdvance(entry.text or "") + 28
@@ -186,6 +192,28 @@ class InPlace(QObject):
             self._on_typed(text)
         elif draft := entry.model.draft(entry.index):
             frame.say(draft.reason)
+
+    def _share_note(self, entry: CellEntry) -> str:
+        """How a load's own number counts in what is shown, where the drawing shows another one."""
+        part, shown = self._part_in(entry), self._view.shown
+        case = self._tables.sight.case
+        if part is None or part.kind not in LOADS or case is None:
+            return ""
+        share = case_share(self._document.project, shown, case)
+        if share == 0.0:
+            return tr("takes no part in what is shown")
+        if shown.kind == "case":
+            return ""
+        factor = input_text(share, "factor", self._document.project.display.unit_system)
+        return tr("the number of the case itself; it counts ×{factor} in {shown}").format(
+            factor=factor, shown=shown.name
+        )
+
+    def _part_in(self, entry: CellEntry) -> Part | None:
+        """The part of the drawing that shows what is typed."""
+        column = entry.model.columns[entry.index.column()].key
+        cell = Cell(entry.model.table.key, entry.records[0], column)
+        return part_of(cell, self._document.project, self._tables.sight.case)
 
     def _also_selected(self, part: Part, cell: Cell) -> tuple[int, ...]:
         """The other selected segments or joints where the part is one of them."""
@@ -289,6 +317,11 @@ class InPlace(QObject):
         part = part_of(cell, self._document.project, self._tables.sight.case)
         return self._sheet.box_of(part or Part("note", 0))
 
+    def _follow(self) -> None:
+        """Stand over the part again, wherever zooming or another size of the sheet has put it."""
+        if self._entry is not None and self._frame is not None and self._entry.valid:
+            self._frame.place(self._sheet.box_of(self._part_in(self._entry) or Part("note", 0)))
+
     def eventFilter(self, line: QObject, event: QEvent) -> bool:
         """Enter, Tab and Escape end the editor; so does the loss of the keyboard."""
         if event.type() == QEvent.Type.KeyPress and isinstance(event, QKeyEvent):
@@ -296,7 +329,12 @@ class InPlace(QObject):
             if action is not None:
                 action()
                 return True
-        if event.type() == QEvent.Type.FocusOut and self._frame is not None and line is self._frame.line:
+        if line is self._sheet.viewport():
+            if event.type() in (QEvent.Type.Wheel, QEvent.Type.Resize) and self._frame is not None:
+                QTimer.singleShot(0, self, self._follow)
+            return False
+        mine = self._frame is not None and line is self._frame.line
+        if event.type() == QEvent.Type.FocusOut and mine and keyboard_is_gone(event):
             self.commit()
         return super().eventFilter(line, event)
 

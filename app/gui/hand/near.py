@@ -5,7 +5,8 @@ from __future__ import annotations
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QWidget
 
-from app.drawing.handles import Handle, handle_at
+from app.drawing.body import edge_at
+from app.drawing.handles import JOINT_REACH, Handle, handle_at
 from app.drawing.shapes import Point
 from app.gui.sheet_view import SheetView
 
@@ -27,6 +28,16 @@ class Near:
     def at(self, point: Point) -> Handle | None:
         """The handle at a point."""
         return handle_at(self._sheet.drawing.handles, point)
+
+    def is_at_origin(self, point: Point) -> bool:
+        """Whether a point is on the first joint, which has no handle."""
+        sketch = self._sheet.drawing.sketch
+        if sketch is None:
+            return False
+        along, across = reversed(point) if self._sheet.places.axes.upright else point
+        half = max(edge_at(sketch, 0), JOINT_REACH)
+        near = abs(along - sketch.along(0)) <= JOINT_REACH
+        return near and abs(across - self._sheet.drawing.picture.axis) <= half
 
     def light(self, point: Point, *, total_stays: bool) -> None:
         """Show the handle at a point, if any."""

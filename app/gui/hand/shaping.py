@@ -39,6 +39,8 @@ class Shaping(QObject):
         self._sheet = sheet
         self._tables = tables
         self.popup: CountPopup | None = None
+        document.changed.connect(lambda _snapshot: self.cancel())
+        tables.committing.connect(self.cancel)
 
     def _do(self, name: str, edit: Callable[[Project], Project]) -> bool:
         """Whether it could be done."""
@@ -65,8 +67,7 @@ class Shaping(QObject):
         first, last = chosen[0], chosen[-1]
 
         def preview(times: int) -> None:
-            repeated = edits.repeat_segments(self._document.project, first, last, times)
-            self._document.set_preview(Preview(repeated))
+            self._document.set_preview(self._repeated(first, last, times))
 
         def done(times: int | None) -> None:
             self.popup = None
@@ -81,6 +82,13 @@ class Shaping(QObject):
         self.popup.open_at(self._sheet.box_of(Part("segment", last)))
         preview(1)
 
+    def cancel(self) -> bool:
+        """Give up what is being asked for; False where nothing is."""
+        asking = self.popup is not None
+        if self.popup is not None:
+            self.popup.give_up()
+        return asking
+
     def _repeat(self, first: int, last: int, times: int) -> None:
         if self._do(tr("Repeat segments"), lambda p: edits.repeat_segments(p, first, last, times)):
             count = times * (last - first + 1)
@@ -92,6 +100,12 @@ class Shaping(QObject):
                 count,
             )
             self.told.emit(words.format(count=count))
+
+    def _repeated(self, first: int, last: int, times: int) -> Preview:
+        try:
+            return Preview(edits.repeat_segments(self._document.project, first, last, times))
+        except EditError as error:
+            return Preview(None, reason_of(error, self._document.project.display.unit_system))
 
     # Mirror, join
 

@@ -79,7 +79,9 @@ class SheetMenu(QObject):
         return super().eventFilter(watched, event)
 
     def _on_asked(self, watched: QObject, event: QContextMenuEvent) -> bool:
-        """By mouse on the drawing only: the strips have menus of their own."""
+        """By mouse on the drawing only: the strips have menus of their own. Not while a number is pulled."""
+        if self._document.preview is not None and self._document.preview.moving:
+            return True
         if event.reason() != QContextMenuEvent.Reason.Mouse:
             self._open_by_key()
             return True
