@@ -22,7 +22,7 @@ from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
-from app.gui.strips.content import envelope_contents, state_contents
+from app.gui.strips.content import contents_of
 from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
@@ -247,12 +247,8 @@ class SheetScene(QGraphicsScene):
         contents = None
         if self._results is not None:
             state = self._state(self._results)
-            contents = (
-                envelope_contents(self._results, self._earlier, together=self._together, near=self._near)
-                if state is None
-                else state_contents(
-                    self._results, state, self._earlier, together=self._together, near=self._near
-                )
+            contents = contents_of(
+                self._results, state, self._earlier, together=self._together, near=self._near
             )
         for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
             self._strips[kind].show_content(content)

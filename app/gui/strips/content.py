@@ -110,6 +110,20 @@ def of_unit_strain(results: Results) -> dict[Kind, float]:
     }
 
 
+def contents_of(
+    results: Results,
+    state: int | None,
+    earlier: Earlier | None,
+    *,
+    together: bool,
+    near: tuple[float, float] | None,
+) -> tuple[StripContent, ...]:
+    """The strips of one state, or of the envelope (None)."""
+    if state is None:
+        return envelope_contents(results, earlier, together=together, near=near)
+    return state_contents(results, state, earlier, together=together, near=near)
+
+
 def state_contents(
     results: Results,
     state: int,
