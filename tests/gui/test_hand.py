@@ -550,6 +550,26 @@ class TestSlowFindings:
         assert not window.findings.is_marked_out_of_date
         pointer.let_go()
 
+    def test_a_program_that_is_behind_is_no_rest(self, qtbot, window, pointer, monkeypatch):
+        monkeypatch.setattr("app.gui.show.HURRY", -1.0)
+        pointer.grab("joint", 1, "end")
+        pointer.pull(60)
+        window.showing.on_rest()  # its time is over before the results are there
+        solved(qtbot, window)
+        assert not window.showing.complete
+        qtbot.waitUntil(lambda: window.showing.complete)
+        pointer.let_go()
+
+    def test_nor_does_a_screen_reader_hear_them_as_current(self, qtbot, window, pointer, monkeypatch):
+        monkeypatch.setattr("app.gui.show.HURRY", -1.0)
+        pointer.grab("joint", 1, "end")
+        pointer.pull(60)
+        solved(qtbot, window)
+        assert "out of date" in window.sheet.accessibleDescription()
+        qtbot.waitUntil(lambda: window.showing.complete)
+        assert "out of date" not in window.sheet.accessibleDescription()
+        pointer.let_go()
+
     def test_the_release_words_them_at_once(self, qtbot, window, pointer, monkeypatch):
         monkeypatch.setattr("app.gui.show.HURRY", -1.0)
         monkeypatch.setattr("app.gui.show.REST", 10_000)

@@ -111,9 +111,15 @@ class TableModel(RowsModel):
             return draft.text
         if self.is_adding(index.row()):
             return self._adding_text(index.column())
-        return self.settled_text(index.row(), index.column())
+        return self._settled_text(index.row(), index.column())
 
-    def settled_text(self, row: int, place: int) -> str:
+    def text_at(self, row: int, place: int) -> str:
+        """What a record's cell shows."""
+        if self._swept is None and not self._document.snapshot.drafts:  # most often, and faster
+            return self._settled_text(row, place)
+        return self._display(self.index(row, place))
+
+    def _settled_text(self, row: int, place: int) -> str:
         """What a record's cell shows where nothing is being typed into it."""
         column = self._columns[place]
         if column.figure is not None:

@@ -18,9 +18,16 @@ class Widths:
 
     def __init__(self, view: TableView) -> None:
         self._view = view
+        self._owing = True  # whether widths are to be shared out once the table is seen
 
     def share(self) -> None:
-        """Give each column what its texts need, towards its usual width, and then more in proportion."""
+        """Give each column what its texts need, towards its usual width, and then more in proportion.
+
+        A table behind another tab waits until it is seen.
+        """
+        self._owing = not self._view.isVisible()
+        if self._owing:
+            return
         shown = self._view.shown_columns()
         needed = [self._needed(place) for place in shown]
         usual = [max(width, self._usual(place)) for place, width in zip(shown, needed, strict=True)]
@@ -32,7 +39,10 @@ class Widths:
 
     def widen_if_needed(self) -> None:
         """After a change: share the width out anew only where a text would be cut off."""
-        self._widen(self._view.shown_columns())
+        if self._owing:
+            self.share()
+        else:
+            self._widen(self._view.shown_columns())
 
     def widen_for_figures(self) -> None:
         """The same after new results, which change their own columns only."""
@@ -60,10 +70,7 @@ class Widths:
         model, metrics = self._view.table_model, self._view.fontMetrics()
         column = model.columns[place]
         rows = range(min(model.record_rows, MEASURED))
-        if column.figure is not None:  # nobody types there
-            texts = [model.settled_text(row, place) for row in rows]
-        else:
-            texts = [str(model.index(row, place).data()) for row in rows]
+        texts = [model.text_at(row, place) for row in rows]
         widest = max((metrics.horizontalAdvance(text) for text in texts), default=0)
         if column.figure is not None:  # room for results before they are there, so that nothing jumps
             widest = max(widest, column.width * metrics.horizontalAdvance("0"))
