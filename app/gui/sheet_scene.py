@@ -82,15 +82,9 @@ class SheetScene(QGraphicsScene):
             self.addItem(item)
 
     def _over(self) -> tuple[Painted, ...]:
-        return (
-            self.joint_lines,
-            self.cursor_line,
-            self._readout,
-            self._notice,
-            self.hand_marks.ghost_layer,
-            self.hand_marks,
-            self.bubble,
-        )
+        told = self._readout, self._notice
+        hand = self.hand_marks.ghost_layer, self.hand_marks, self.bubble
+        return (self.joint_lines, self.cursor_line, *told, *hand)
 
     @property
     def strips(self) -> tuple[Strip, ...]:
