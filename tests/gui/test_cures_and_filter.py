@@ -103,6 +103,17 @@ class TestFilter:
         assert seen[4] is window.findings.rows[0]
         assert all(part.accessibleName() for part in (bar.kind, bar.state, bar.marks))
 
+    def test_no_name_is_cut_where_the_font_is_large(self, qtbot, window):
+        bar = window.findings.filter
+        font = bar.font()
+        font.setPointSizeF(2 * font.pointSizeF())
+        bar.setFont(font)
+        qtbot.waitUntil(lambda: bar.state.geometry().top() > bar.kind.geometry().bottom())
+        room = bar.state.fontMetrics().horizontalAdvance("Worst of all")
+        assert bar.state.width() > room + 20
+        order = [bar.kind, bar.state, bar.marks]
+        assert [part.geometry().top() for part in order] == sorted(p.geometry().top() for p in order)
+
     def test_problems_are_never_hidden(self):
         from app.gui.findings.content import problem_rows
 

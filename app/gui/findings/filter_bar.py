@@ -1,7 +1,7 @@
 """The pickers over the findings: kind, combination, marks; and how many are shown, with a way back to all.
 
-One line where there is room, two where the font is large. The last line is there only while something is
-hidden.
+One line where there is room, up to three where the font is large. The last line is there only while something
+is hidden.
 """
 
 from __future__ import annotations
@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from itertools import pairwise
 
-from PySide6.QtCore import QSignalBlocker, Signal
+from PySide6.QtCore import QEvent, QSignalBlocker, Signal
 from PySide6.QtGui import QPalette, QResizeEvent
 from PySide6.QtWidgets import (
     QComboBox,
@@ -28,6 +28,7 @@ from app.gui.theme import Theme, colour
 from app.words import tr
 
 NARROW = 38  # digits; below it the marks go to a line of their own
+TIGHT = 30  # digits; below it the combinations do as well, else their names would be cut
 LONGEST = 200  # characters of marks
 
 
@@ -69,13 +70,12 @@ class FilterBar(QWidget):
         self.count.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Preferred)
         whole = QVBoxLayout(self)
         whole.setContentsMargins(5, 4, 5, 4)
-        self._first, self._second, third = QHBoxLayout(), QHBoxLayout(), QHBoxLayout()
-        for line in (self._first, self._second, third):
+        self._first, self._middle, self._second, third = (QHBoxLayout() for _ in range(4))
+        for line in (self._first, self._middle, self._second, third):
             whole.addLayout(line)
-        for layout in (whole, self._first, self._second, third):
+        for layout in (whole, self._first, self._middle, self._second, third):
             layout.setSpacing(4)
-        for picker in (self.kind, self.state):
-            self._first.addWidget(picker, 1)
+        self._first.addWidget(self.kind, 1)
         third.addWidget(self.count, 1)
         third.addWidget(self.clear_button)
         self._arrange()
@@ -91,11 +91,15 @@ class FilterBar(QWidget):
             part.setPalette(palette)
 
     def _arrange(self) -> None:
-        """The marks stand beside the pickers where there is room, else below."""
-        narrow = self.width() < NARROW * self.fontMetrics().horizontalAdvance("0")
-        wanted = self._second if narrow else self._first
-        if wanted.indexOf(self.marks) < 0:
-            wanted.addWidget(self.marks, 1)  # and no longer in the other
+        """All stand side by side where there is room, else below each other."""
+        digits = self.width() / self.fontMetrics().horizontalAdvance("0")
+        marks_line = self._second if digits < NARROW else self._first
+        for part, wanted in (
+            (self.state, self._middle if digits < TIGHT else self._first),
+            (self.marks, marks_line),
+        ):
+            if wanted.indexOf(part) < 0:
+                wanted.insertWidget(min(1, wanted.count()), part, 1)  # and no longer in the other
 
     @property
     def sift(self) -> Sift:
@@ -142,6 +146,12 @@ class FilterBar(QWidget):
         self.changed.emit()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
-        """One line or two."""
+        """One line, or more."""
         super().resizeEvent(event)
         self._arrange()
+
+    def changeEvent(self, event: QEvent) -> None:
+        """The same with a larger font."""
+        super().changeEvent(event)
+        if event.type() == QEvent.Type.FontChange and hasattr(self, "_first"):
+            self._arrange()
