@@ -62,7 +62,9 @@ class Comparing(QObject):
             return
         asked, self._asked = self._asked, None
         self._set(self._references.kept_as(name, asked))
-        told = tr("Kept as {name} until another project is opened or the window is closed; no file holds it")
+        told = tr(
+            "Kept as “{name}” until another project is opened or the window is closed; no file holds it"
+        )
         self.told.emit(told.format(name=self._references.chosen))
 
     def on_dropped(self) -> None:
@@ -81,7 +83,7 @@ class Comparing(QObject):
             self.told.emit(tr("No reference is looked at: choose one at Against to forget it"))
             return
         self._set(self._references.without_chosen())
-        self.told.emit(tr("{name} forgotten").format(name=name))
+        self.told.emit(tr("“{name}” forgotten").format(name=name))
 
     def on_opened(self) -> None:
         """Another project: nothing to hold against it."""

@@ -57,7 +57,7 @@ def bearings(hands: Hands, steps: Steps) -> None:
     steps.end("spring-by-menu", "The far bearing by the menu at joint 12")
     hands.click(hands.joint(0))
     hands.press(KEY.Key_R)
-    steps.end("set-free", "Joint 0 selected, R: free", undo="Put on: Free: take the support off")
+    steps.end("set-free", "Joint 0 selected, R: free", undo="Take the support off")
 
 
 def hoisting(hands: Hands, steps: Steps) -> None:

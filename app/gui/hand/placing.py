@@ -108,7 +108,8 @@ class Placing(QObject):
         except (EditError, NotPut) as error:
             self._refuse(error)
             return
-        self._document.commit(done.project, tr("Put on: {what}").format(what=tr(kind.name)))
+        put = tr("Put on: {what}").format(what=tr(kind.name))
+        self._document.commit(done.project, tr("Take the support off") if kind is FREE else put)
         self._tell(kind, done)
         self._type(kind, done)
 
