@@ -101,9 +101,26 @@ def test_each_load_goes_on_the_segment_that_is_clicked(qtbot, window, kind):
     assert window.document.project.segments == segments
 
 
-def test_a_symbol_goes_on_all_that_is_selected(window):
+def test_a_symbol_that_is_clicked_waits_for_its_target_whatever_is_selected(window):
+    edit_case(window, 0)
+    window.view.set_selection(Selection(segments=frozenset((0,))))
+    before = window.document.project
+    press(window, "warmth")
+    assert window.document.project is before
+    assert window.symbols.buttons["warmth"].isChecked()
+    assert "click a segment" in window.status.news.text()
+    click(window, middle_of(window, 3))
+    assert before.segments[3].mark in window.in_place.caption
+    had = before.load_cases[0].segment_loads
+    mark = before.segments[3].mark
+    fresh = [load for load in window.document.project.load_cases[0].segment_loads if load not in had]
+    assert {load.segment for load in fresh} == {mark}
+
+
+def test_the_letter_of_a_symbol_puts_it_on_all_that_is_selected(window):
+    window.sheet.setFocus()
     window.view.set_selection(Selection(joints=frozenset((1, 3, 5))))
-    press(window, "fixed")
+    QTest.keyClick(window.sheet, Qt.Key.Key_F)
     supports = [joint.support for joint in window.document.project.joints]
     assert [supports[i] for i in (1, 3, 5)] == [FixedSupport()] * 3
     assert window.document.undo_name == "Put on: Fixed support"
@@ -113,8 +130,9 @@ def test_a_symbol_goes_on_all_that_is_selected(window):
 
 def test_one_typed_value_goes_to_all_that_it_was_put_on(window):
     edit_case(window, 0)
+    window.sheet.setFocus()
     window.view.set_selection(Selection(joints=frozenset((3, 5))))
-    press(window, "force")
+    QTest.keyClick(window.sheet, Qt.Key.Key_L)
     assert "for 2 joints" in window.in_place.caption
     QTest.keyClicks(window.in_place.editor, "7 kN")
     QTest.keyClick(window.in_place.editor, Qt.Key.Key_Return)

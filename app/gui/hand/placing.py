@@ -1,7 +1,8 @@
 """The symbol in the hand: where it would go, and putting it there.
 
-With something fitting selected a chosen symbol goes on all of that at once; else it stays in the hand, the
-sheet lights where a click would put it, and Escape puts it down. What was put on is typed in place at once.
+A symbol that is clicked stays in the hand, whatever is selected: the sheet lights where a click would put it,
+and Escape puts it down. Its letter puts it on all that is selected at once, where something fitting is. What
+was put on is typed in place at once.
 """
 
 from __future__ import annotations
@@ -63,15 +64,20 @@ class Placing(QObject):
         return self._kind
 
     def choose(self, kind: Kind) -> None:
-        """Put it on what is selected; else take it into the hand, or down again."""
+        """Take it into the hand, or put it down again; what goes on the whole member is put there."""
         self._tables.commit_open_editor()
+        if kind.on == "member":
+            self.put(kind, ())
+        else:
+            self.take(None if kind is self._kind else kind)
+
+    def _on_letter(self, kind: Kind) -> None:
+        """Put it on what is selected; where nothing that fits is, as if its symbol were clicked."""
         chosen = self._selected(kind)
-        if kind is self._kind:
-            self.take(None)
-        elif kind.on == "member" or chosen:
+        if chosen and kind is not self._kind:
             self.put(kind, chosen)
         else:
-            self.take(kind)
+            self.choose(kind)
 
     def _selected(self, kind: Kind) -> tuple[int, ...]:
         chosen = self._view.selection
@@ -181,7 +187,7 @@ class Placing(QObject):
         held = Qt.KeyboardModifier.ControlModifier | Qt.KeyboardModifier.AltModifier
         if kind is None or event.modifiers() & held:
             return False
-        self.choose(kind)
+        self._on_letter(kind)
         return True
 
     def _on_mouse(self, event: QMouseEvent) -> bool:

@@ -16,8 +16,10 @@ from app.words import later, tr
 
 LEAST_BUTTON = 26  # px, above the 24 that WCAG 2.5.8 calls easy to hit
 GOES_ON = {
-    "joint": later("{name}, key {letter}: choose it, then click a joint"),
-    "segment": later("{name}, key {letter}: choose it, then click a segment"),
+    "joint": later("{name}: choose it, then click a joint; the key {letter} puts it on the selected joints"),
+    "segment": later(
+        "{name}: choose it, then click a segment; the key {letter} puts it on the selected segments"
+    ),
     "member": later("{name}, key {letter}: for the whole member"),
 }
 
