@@ -211,6 +211,8 @@ class Window(QMainWindow):
         self.document.history_changed.connect(self.on_history_changed)
         self.document.modified_changed.connect(lambda _modified: self.on_file_changed())
         self.document.opened.connect(self.findings.filter.clear)
+        self.document.changed.connect(lambda _snapshot: self.selecting.cancel())
+        self.document.opened.connect(self.placing.put_down)
         self.document.path_changed.connect(lambda _path: self.on_file_changed())
         self.view.shown_changed.connect(lambda _shown: self._show_pickers())
         self.view.strips_changed.connect(self.store.set_strips)

@@ -13,7 +13,7 @@ from app.gui.hand.count_popup import CountPopup
 from app.gui.hand.grasp import Phase
 from app.gui.view import Selection, Shown
 from solver.model import AreaSection, FixedSupport
-from tests.gui.pointer import LEFT, NONE, PLAIN, Pointer
+from tests.gui.pointer import LEFT, NONE, PLAIN, SHIFT, Pointer
 from tests.gui.test_hand import opened
 from tests.members import Part, member
 
@@ -137,3 +137,17 @@ def test_a_load_typed_in_a_combination_says_how_it_counts_there(window):
     note = "the number of the case itself; it counts ×2 in Both"
     assert window.in_place.caption.split("\n")[1] == note
     assert note in line.accessibleName()
+
+
+def test_another_project_puts_band_and_symbol_away(window, pointer):
+    drawing = window.sheet.places.drawing
+    pointer.at, pointer.outward = drawing.topLeft() + QPointF(4.0, 4.0), QPointF(1.0, 0.3)
+    pointer.press(SHIFT)
+    pointer.pull(800.0, SHIFT)
+    window.document.load(member([Part(0.3, AreaSection(area=1e-3))], {0: FixedSupport()}), None)
+    pointer.let_go(SHIFT)
+    assert window.view.selection == Selection()
+    QTest.keyClicks(window.sheet, "D")
+    assert window.placing.kind is not None
+    window.document.load(member([Part(0.4, AreaSection(area=1e-3))], {0: FixedSupport()}), None)
+    assert window.placing.kind is None

@@ -81,7 +81,10 @@ class Placing(QObject):
 
     def _selected(self, kind: Kind) -> tuple[int, ...]:
         chosen = self._view.selection
-        return tuple(sorted(chosen.joints if kind.on == "joint" else chosen.segments))
+        project = self._document.project
+        there = len(project.joints) if kind.on == "joint" else len(project.segments)
+        among = chosen.joints if kind.on == "joint" else chosen.segments
+        return tuple(index for index in sorted(among) if index < there)
 
     def take(self, kind: Kind | None) -> None:
         """Another symbol in the hand, or none."""
@@ -96,6 +99,11 @@ class Placing(QObject):
             self._sheet.viewport().setCursor(Qt.CursorShape.CrossCursor)
             self._sheet.setFocus(Qt.FocusReason.OtherFocusReason)
             self.told.emit(tr(HINTS[kind.on]).format(name=tr(kind.name)))
+
+    def put_down(self) -> None:
+        """Nothing in the hand any more, as for another project."""
+        if self._kind is not None:
+            self.take(None)
 
     def _listen_first(self) -> None:
         """Hear the mouse before whoever pulls and selects: the symbol in the hand comes first."""
