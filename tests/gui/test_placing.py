@@ -273,3 +273,16 @@ def test_a_symbol_in_the_hand_comes_before_what_could_be_pulled(window):
     QTest.mouseRelease(viewport, LEFT, pos=at + QPoint(4, 0))
     assert window.document.project.joints[4].support == FixedSupport()
     assert [segment.length for segment in window.document.project.segments] == lengths
+
+
+def test_the_strip_is_one_stop_of_the_tab_key(window):
+    strip = window.symbols
+    strip.setFocus(Qt.FocusReason.TabFocusReason)
+    first, second, *_rest = strip.buttons.values()
+    assert first.hasFocus()
+    QTest.keyClick(first, Qt.Key.Key_Down)
+    assert second.hasFocus()
+    QTest.keyClick(second, Qt.Key.Key_Tab)
+    assert not any(button.hasFocus() for button in strip.buttons.values())
+    strip.setFocus(Qt.FocusReason.TabFocusReason)
+    assert second.hasFocus()

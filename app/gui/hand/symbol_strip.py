@@ -30,7 +30,7 @@ def words_of(kind: Kind) -> str:
 
 
 class SymbolStrip(QWidget):
-    """One column of buttons; Up and Down go through them."""
+    """One column of buttons: Tab goes to the last one used, Up and Down go through them."""
 
     chosen = Signal(object)  # Kind
 
@@ -47,7 +47,7 @@ class SymbolStrip(QWidget):
         for button in self.buttons.values():
             column.addWidget(button)
         column.addStretch(1)
-        self.setFocusProxy(next(iter(self.buttons.values())))
+        self._make_stop(next(iter(self.buttons.values())))
         self._dress()
 
     def _button(self, kind: Kind) -> QToolButton:
@@ -56,10 +56,18 @@ class SymbolStrip(QWidget):
         button.setToolTip(words_of(kind))
         button.setAccessibleName(tr(kind.name))
         button.setAccessibleDescription(words_of(kind))
-        button.setFocusPolicy(Qt.FocusPolicy.TabFocus)
+        button.setFocusPolicy(Qt.FocusPolicy.NoFocus)  # until it is the one stop of Tab
         button.clicked.connect(lambda _on=False: self.chosen.emit(kind))
         button.installEventFilter(self)
         return button
+
+    def _make_stop(self, button: QToolButton) -> None:
+        """Make a button the only one that Tab stops at."""
+        button.setFocusPolicy(Qt.FocusPolicy.TabFocus)
+        self.setFocusProxy(button)
+        for other in self.buttons.values():
+            if other is not button:
+                other.setFocusPolicy(Qt.FocusPolicy.NoFocus)
 
     def show_chosen(self, kind: Kind | None) -> None:
         """Show which symbol is in the hand."""
@@ -98,7 +106,8 @@ class SymbolStrip(QWidget):
             if steps:
                 all_of_them = list(self.buttons.values())
                 here = all_of_them.index(button)
-                all_of_them[(here + steps) % len(all_of_them)].setFocus(Qt.FocusReason.TabFocusReason)
+                self._make_stop(all_of_them[(here + steps) % len(all_of_them)])
+                self.setFocus(Qt.FocusReason.TabFocusReason)
                 return True
             if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
                 button.click()
