@@ -16,6 +16,8 @@ from app.units import format_value
 TICK = 4.0
 BREAK = ((-3.0, 0.0), (-1.5, -5.0), (1.5, 5.0), (3.0, 0.0))  # the zigzag of what is not to scale
 LEAST_BREAK = 9.0  # px of the segment
+LONGEST_MARK = 10  # of a joint beside its level, in digits
+MARK_RANK = 2  # after all levels
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 
@@ -108,20 +110,40 @@ def level_texts(sketch: Sketch) -> list[str]:
     return texts
 
 
+def level_width(sketch: Sketch) -> float:
+    """The room of the widest level; a mark of a joint gets that of one that is not long."""
+    if not sketch.frame.detail.levels:
+        return 0.0
+    levels = max(sketch.frame.measure(text, "small")[0] for text in level_texts(sketch))
+    marks = max(sketch.frame.measure(joint.mark, "small")[0] for joint in sketch.member.project.joints)
+    return max(levels, min(marks, LONGEST_MARK * sketch.frame.measure("0", "small")[0]))
+
+
 def draw_levels(sketch: Sketch, column: float) -> None:
-    """A triangle standing on each joint's line, its level beside it, from the pixel `column`."""
-    left, wishes = column + 4.0, []
-    ends = (0, len(sketch.member.position) - 1)  # these are written whatever else has no room
-    for joint, text in enumerate(level_texts(sketch)):
-        if sketch.holds(joint):
-            width, height = sketch.frame.measure(text, "small")
-            middle = sketch.along(joint) - 0.5 * height
-            rank = 0 if joint in ends else 1
-            wishes.append(Wish(text, middle, height, width, Part("joint", joint), rank))
+    """A triangle standing on each joint's line, its level beside it, its mark under it, from `column` on."""
+    left, wishes = column + 4.0, _level_wishes(sketch)
+    first = left + LEVEL_GAP
     for label in place(wishes, 1, sketch.room, TIGHT):
         foot = label.span[1]
-        first = left + LEVEL_GAP
         box = Box(first, label.span[0], first + label.wish.depth, foot)
         sketch.picture.texts.append(Text(box, label.wish.text, "small", "quiet", label.wish.part))
-        corners = (left, foot - 9.0), (left + 11.0, foot - 9.0), (left + 5.5, foot - 0.5)
-        sketch.picture.strokes.append(Stroke(corners, "ink", 1.2, closed=True, fill="paper", clip=False))
+        if label.wish.rank < MARK_RANK:
+            corners = (left, foot - 9.0), (left + 11.0, foot - 9.0), (left + 5.5, foot - 0.5)
+            sketch.picture.strokes.append(Stroke(corners, "ink", 1.2, closed=True, fill="paper", clip=False))
+
+
+def _level_wishes(sketch: Sketch) -> list[Wish]:
+    """Levels over the joints' lines, those of the ends before all others, and marks that fit under them."""
+    ends, widest, wishes = (0, len(sketch.member.position) - 1), level_width(sketch), []
+    for joint, text in enumerate(level_texts(sketch)):
+        if not sketch.holds(joint):
+            continue
+        part, along = Part("joint", joint), sketch.along(joint)
+        width, height = sketch.frame.measure(text, "small")
+        rank = 0 if joint in ends else 1
+        wishes.append(Wish(text, along - 0.5 * height, height, width, part, rank))
+        mark = sketch.member.project.joints[joint].mark
+        width = sketch.frame.measure(mark, "small")[0]
+        if width <= widest:
+            wishes.append(Wish(mark, along + TIGHT + 0.5 * height, height, width, part, MARK_RANK))
+    return wishes

@@ -6,7 +6,7 @@ Needs no window and no paper: only a ruler, a box and the measure of texts.
 from __future__ import annotations
 
 from app.drawing.body import aim_at_joints, draw_body
-from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_texts
+from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_width
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
@@ -76,8 +76,7 @@ def _level_column(sketch: Sketch) -> float:
     """Upright, where the column of levels begins, or the room ends where there is none."""
     if not sketch.frame.detail.levels:
         return sketch.frame.box.right
-    width = max(sketch.frame.measure(text, "small")[0] for text in level_texts(sketch))
-    return sketch.frame.box.right - width - LEVEL_GAP - 6.0
+    return sketch.frame.box.right - level_width(sketch) - LEVEL_GAP - 6.0
 
 
 def _give_rows(sketch: Sketch, wishes: Wishes) -> None:

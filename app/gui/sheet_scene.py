@@ -23,7 +23,7 @@ from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import contents_of
-from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, state_readout
+from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, resting, state_readout
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
@@ -350,7 +350,7 @@ class SheetScene(QGraphicsScene):
         self._cursor = cursor
         held = cursor is not None and self._ruler.holds(cursor.x)
         self.cursor_line.set_pixel(self._ruler.pixel(cursor.x) if held else None, self._layout)
-        self._values = "" if cursor is None else self._values_at(cursor.x)
+        self._values = self._values_at(cursor.x) if cursor is not None else resting() if self._results else ""
         self._say_values()
 
     def set_pointer(self, point: QPointF | None) -> None:

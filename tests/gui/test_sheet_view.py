@@ -322,3 +322,10 @@ class TestLargeFonts:
             assert whole.contains(strip.place.rect)
             assert len(strip.labels) >= 2
             assert [label.text for label in strip.labels if not whole.contains(label.rect)] == []
+
+
+def test_without_a_cursor_the_foot_says_how_to_read_values(window):
+    window.view.set_cursor(None)
+    assert "Point at the sheet" in window.sheet.readout
+    window.view.set_cursor(Cursor(0.5))
+    assert "Point at the sheet" not in window.sheet.readout

@@ -18,6 +18,15 @@ BETWEEN = "    "  # the quantities; where a line ends if there is not room for a
 AT_JOINT = 1e-12  # of the member's length, as `solver.fields` has it
 
 
+def resting() -> str:
+    """The line while there is no cursor: how to get one."""
+    words = (
+        tr("Point at the sheet to read the values there"),
+        tr("by keys: arrows, with Ctrl from joint to joint"),
+    )
+    return BETWEEN.join(words)
+
+
 def state_readout(results: Results, state: int, x: float) -> str:
     """The line for one state at the position x (m)."""
     return _line(results, at(results, state, x))

@@ -123,12 +123,31 @@ class TestLevels:
         levels = {t.text for t in shown.texts if t.part is not None and t.part.kind == "joint"}
         assert {"±0", f"+{format_value(member.position[-1], 'length', member.system, strip=True)}"} <= levels
 
+    def test_the_mark_of_a_joint_stands_under_its_level(self):
+        project = read_sample("quay_pile")
+        member = drawn(project)
+        frame = window_frame(member, SIZES[1], upright=True)
+        texts = [t for t in lay_out(member, frame).texts if t.part is not None and t.part.kind == "joint"]
+        marks = {t.text: t for t in texts if t.text[0] not in "±+"}
+        assert set(marks) == {joint.mark for joint in project.joints}
+        for text in marks.values():
+            line = frame.ruler.pixel(member.position[text.part.index])
+            assert line < text.box.top < line + 6.0
+        assert max(t.box.right for t in texts) <= frame.box.right
+
+    @BOTH_SIZES
+    @pytest.mark.parametrize("count", [12, 40, 200])
+    def test_marks_take_no_place_of_a_level(self, size, count):
+        shown = picture(busy_member(count), upright=True, size=size)
+        texts = [t for t in shown.texts if t.part is not None and t.part.kind == "joint"]
+        assert not any(a.box.meets(b.box) for a, b in combinations(texts, 2))
+
     def test_each_is_on_the_line_of_its_joint(self):
         member = drawn(read_sample("quay_pile"))
         frame = window_frame(member, SIZES[1], upright=True)
         shown = lay_out(member, frame)
         for text in shown.texts:
-            if text.part is not None and text.part.kind == "joint":
+            if text.part is not None and text.part.kind == "joint" and text.text[0] in "±+":
                 assert text.box.bottom == pytest.approx(frame.ruler.pixel(member.position[text.part.index]))
 
 
