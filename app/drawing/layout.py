@@ -45,13 +45,13 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     draw_body(sketch)
     if frame.detail.factor:
         _draw_scales(sketch)
-    _keep_legend(sketch)
     draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
     _aim_at_labels(sketch.picture)
     aim_at_joints(sketch)
     _set_edge(sketch)
+    _keep_legend(sketch)
     return sketch
 
 
@@ -106,16 +106,22 @@ def _draw_scales(sketch: Sketch) -> None:
 
 
 def _keep_legend(sketch: Sketch) -> None:
-    """Room for a scale of colours: at the foot right; upright at the top left, under the note on loads."""
+    """Room for a scale of colours: at the foot right; upright in the first corner without other texts."""
     width, height = sketch.frame.detail.legend
     if not width:
         return
     box = sketch.frame.box
-    left, top = box.right - 6.0 - width, box.bottom - 2.0 - height
-    if sketch.frame.upright:
-        left, top = box.left + 6.0, box.top + 6.0
-        top += height if no_loads_text(sketch) else 0.0
-    sketch.picture.legend = Box(left, top, left + width, top + height)
+    if not sketch.frame.upright:
+        corner = box.right - 6.0, box.bottom - 2.0
+        sketch.picture.legend = Box(corner[0] - width, corner[1] - height, *corner)
+        return
+    texts = [text.box for text in sketch.picture.texts]
+    lines = [0.0, *(text.bottom - box.top for text in texts if text.left <= box.left + 6.0)]
+    tops = [box.top + 6.0, *(box.top + line for line in sorted(lines))]
+    rights = box.left + 6.0 + width, _level_column(sketch) - 4.0
+    free = (Box(right - width, top, right, top + height) for right in rights for top in tops)
+    inside = (one for one in free if one.bottom <= box.bottom)
+    sketch.picture.legend = next((one for one in inside if not any(one.meets(t) for t in texts)), None)
 
 
 def _draw_no_loads(sketch: Sketch) -> None:

@@ -214,6 +214,18 @@ class TestTinting:
             if mark.centre[1 - way] == axis:
                 assert all(abs(mark.centre[way] - c.centre[way]) > c.radius for c in picture.circles)
 
+    @pytest.mark.parametrize("size", SIZES)
+    @pytest.mark.parametrize("state", [STORM, None], ids=["state", "envelope"])
+    def test_upright_the_scale_keeps_off_sections_at_the_top(self, size, state):
+        project = read_sample("tie_rod")
+        member = Member.of(project, Shown("envelope")) if state is None else drawn(project)
+        frame = window_frame(member, size, upright=True)
+        shown = graded(ROD, state, "stress")
+        frame = replace(frame, detail=Detail(hollow=True, legend=legend_size(member, frame, shown)))
+        made = lay_out(member, frame)
+        assert made.legend is not None
+        assert not any(made.legend.meets(text.box) for text in made.texts)
+
     def test_signs_keep_off_the_marks(self):
         _frame, picture, found = coloured(read_sample("tie_rod"), ROD, STORM, upright=False)
         assert {mark.sign for mark in found.marks} == {1}
