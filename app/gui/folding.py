@@ -26,7 +26,7 @@ class FoldingRow(QWidget):
         self.more.setText(tr("More"))
         self.more.setAccessibleName(tr("More commands"))
         self.more.setAutoRaise(True)
-        self.more.setFocusPolicy(Qt.FocusPolicy.TabFocus)
+        self.more.setFocusPolicy(Qt.FocusPolicy.NoFocus)  # what is folded is in the menus, too
         self.more.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
         self.more.setMenu(QMenu(self.more))
         self.setSizePolicy(QSizePolicy.Policy.Preferred, QSizePolicy.Policy.Fixed)
@@ -35,7 +35,6 @@ class FoldingRow(QWidget):
         """One more at the end."""
         part.setParent(self)
         self._parts.append((part, action))
-        self.setTabOrder(part, self.more)
         self.updateGeometry()
 
     @property

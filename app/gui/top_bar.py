@@ -100,7 +100,8 @@ def _button(action: QAction, words: str) -> QToolButton:
     button = QToolButton()
     button.setAutoRaise(True)
     button.setToolButtonStyle(Qt.ToolButtonStyle.ToolButtonTextOnly)
-    button.setFocusPolicy(Qt.FocusPolicy.TabFocus)
+    # Never by Tab: a space meant for a cell would be the command. Each command is in a menu, too.
+    button.setFocusPolicy(Qt.FocusPolicy.NoFocus)
     button.setText(words)
     button.setAccessibleName(words)
     button.setToolTip(action.toolTip())

@@ -17,6 +17,7 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.gui.tables.adding_row import AddingRow
 from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_editor import CellEditor
 from app.gui.tables.delegate import ENTER, MARGIN, CellDelegate
@@ -49,7 +50,7 @@ class TableView(QTableView):
         self._cells.meant_for_all.connect(self._many.put_in_chosen)
         self.setItemDelegate(self._cells)
         self.setModel(model)
-        self.widths, self.blocks = Widths(self), Blocks(self)
+        self.widths, self.blocks, self._adding = Widths(self), Blocks(self), AddingRow(self)
         self.setAccessibleName(tr(model.table.title))
         self.horizontalHeader().setAccessibleName(
             tr("Columns of {table}").format(table=tr(model.table.title))
@@ -202,19 +203,28 @@ class TableView(QTableView):
             return True
         if not forward:
             return current.row() == 0 and current.column() == 0
-        reach = current.column() + self.columnSpan(current.row(), current.column()) - 1
-        return current.row() == model.rowCount() - 1 and reach >= self.shown_columns()[-1]
+        last = current.row() == model.rowCount() - 1
+        return model.is_adding(current.row()) or (last and current.column() >= self.shown_columns()[-1])
 
     def _leave(self, *, forward: bool) -> None:
         self.setTabKeyNavigation(False)  # with navigation on, focusNextPrevChild comes back here
         self.focusNextPrevChild(forward)
         self.setTabKeyNavigation(True)
 
+    def commitData(self, editor: QWidget) -> None:
+        """Take in the editor's text, and note whether that has added a row."""
+        self._adding.begin()
+        super().commitData(editor)
+        self._adding.end()
+
     def closeEditor(self, editor: QWidget, hint: QAbstractItemDelegate.EndEditHint) -> None:
         """Tab in an editor goes on to the next cell, and out of the table after the last one as well."""
         forward = hint == QAbstractItemDelegate.EndEditHint.EditNextItem
         back = hint == QAbstractItemDelegate.EndEditHint.EditPreviousItem
-        if (forward or back) and self._leaves(forward=forward):
+        if (forward or back) and self._adding.keeps_the_keyboard:
+            super().closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
+            self._adding.go_on(forward=forward)
+        elif (forward or back) and self._leaves(forward=forward):
             super().closeEditor(editor, QAbstractItemDelegate.EndEditHint.NoHint)
             self.setFocus()
             self._leave(forward=forward)
