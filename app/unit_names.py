@@ -97,11 +97,24 @@ def unit_factor(text: str, quantity: Quantity) -> Fraction:
 
 
 def nearest_unit(text: str, quantity: Quantity) -> str | None:
-    """A spelling that exists for this quantity and looks like `text`, or None."""
-    names = list(dict.fromkeys([*(s[quantity].symbol for s in SYSTEMS.values()), *ALLOWED[quantity][0]]))
+    """A spelling that can be typed for this quantity and looks like `text`, or None.
+
+    A name that only stands in a product, as N in N/mm, is none by itself.
+    """
+    spellings = dict.fromkeys([*(s[quantity].symbol for s in SYSTEMS.values()), *ALLOWED[quantity][0]])
+    names = [name for name in spellings if name != text and _is_unit_of(name, quantity)]
     same = [name for name in names if name and name.casefold() == text.casefold()]
     close = same or difflib.get_close_matches(text[:_LONGEST], names, n=1, cutoff=0.6)
     return close[0] if close else None
+
+
+@lru_cache(maxsize=1024)
+def _is_unit_of(name: str, quantity: Quantity) -> bool:
+    try:
+        unit_factor(name, quantity)
+    except UnknownUnitError:
+        return False
+    return True
 
 
 def _product(text: str, quantity: Quantity) -> Product:

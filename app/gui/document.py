@@ -154,6 +154,12 @@ class Document(QObject):
         self._saved = None
         self._announce_modified()
 
+    @property
+    def file_holds_it(self) -> bool:
+        """Whether the project, its entries that are not taken in aside, is what its file was saved with."""
+        saved = self._saved
+        return self.path is not None and saved is not None and alike(self.project, saved)
+
     def mark_saved(self, project: Project, path: Path) -> None:
         """Note that `path` now holds `project`."""
         self._saved = project

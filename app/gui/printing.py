@@ -25,6 +25,7 @@ class SheetRequest:
     project: Project
     file_name: str
     target: Path
+    changed: bool  # whether the file does not hold it
 
 
 def write_sheet(request: SheetRequest, _cancelled: Callable[[], bool]) -> Path:
@@ -37,7 +38,8 @@ def write_sheet(request: SheetRequest, _cancelled: Callable[[], bool]) -> Path:
     from solver.solve import solve
 
     results = solve(request.project, cases=False)
-    write_bytes(request.target, build_sheet(request.project, results, file_name=request.file_name))
+    name, changed = request.file_name, request.changed
+    write_bytes(request.target, build_sheet(request.project, results, file_name=name, changed=changed))
     return request.target
 
 
@@ -79,8 +81,8 @@ class Printing(QObject):
             return
         path = self._document.path
         self.told.emit(tr("writing {name} …").format(name=target.name))
-        name = path.name if path else tr("not saved")
-        self._worker.request(SheetRequest(self._document.project, name, target))
+        name, changed = path.name if path else "", not self._document.file_holds_it
+        self._worker.request(SheetRequest(self._document.project, name, target, changed))
 
     def on_written(self, delivery: Delivery) -> None:
         """Done; says so, and what is not in it."""

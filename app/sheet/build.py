@@ -27,15 +27,18 @@ _LINE: Final = 38  # characters without a space that every line has room for
 _LONGEST_RUN: Final = {"rows": 12, "fingerprint": 64}  # less in the cells of tables, a whole SHA-256
 
 
-def build_sheet(project: Project, results: Results, *, file_name: str, date: dt.date | None = None) -> bytes:
+def build_sheet(
+    project: Project, results: Results, *, file_name: str, date: dt.date | None = None, changed: bool = False
+) -> bytes:
     """The calc sheet as a PDF; `date` is that of the sheet, today where it is left out.
 
-    `results` are those of `project`. The same arguments give the same bytes.
+    `results` are those of `project`, which is `changed` where the file of that name (empty: none yet) does
+    not hold it. The same arguments give the same bytes.
     """
     import typst
 
     day = date or dt.datetime.now(dt.UTC).astimezone().date()
-    origin = Origin(file_name, day.isoformat(), PROGRAM, sha256(project))
+    origin = Origin(file_name, day.isoformat(), PROGRAM, sha256(project), changed)
     shown = with_short_names(results)
     content = sheet_content(shown.project, shown, origin)
     files = _files(content) | {"project.json": dump(project)}

@@ -28,7 +28,7 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
         "language": language(),
         "kind": tr("Calc sheet, member under axial load"),
         "figure": tr("Figure"),
-        "attachment": tr("The project of this sheet, as saved"),
+        "attachment": _attachment(origin),
         "paper": "us-letter" if units.startswith("in-") else "a4",
         "title_block": title_block(project, origin),
         "verdict": verdict_line(results),
@@ -36,7 +36,7 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
         "failed": results.verdict == "fail",
         "caution": caution(),
         "page": tr("Page {page} of {pages}"),
-        "running": shortened(project.title or origin.file_name, 70),
+        "running": shortened(project.title or origin.file_name or tr("not saved"), 70),
         "program": origin.program,
         "blocks": list(_blocks(project, results, say)),
         "signs": [tr("Made by"), tr("Checked by"), tr("Released by")],
@@ -44,6 +44,12 @@ def sheet_content(project: Project, results: Results, origin: Origin) -> dict[st
         "sign_title": tr("Sign-off"),
         "math": _math_words(),
     }
+
+
+def _attachment(origin: Origin) -> str:
+    if origin.changed:
+        return tr("The project of this sheet, as printed")
+    return tr("The project of this sheet, as saved")
 
 
 def _math_words() -> dict[str, Value]:

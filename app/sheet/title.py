@@ -23,6 +23,7 @@ class Origin:
     date: str
     program: str
     sha256: str
+    changed: bool = False  # whether the file does not hold this project
 
 
 def title_block(project: Project, origin: Origin) -> dict[str, Value]:
@@ -34,8 +35,23 @@ def title_block(project: Project, origin: Origin) -> dict[str, Value]:
         "fields": [
             *fields,
             [tr("Date of this sheet"), origin.date],
-            [tr("File"), shortened(origin.file_name, _LONGEST_FIELD)],
+            [tr("File"), _file(origin)],
             [tr("Program"), origin.program],
         ],
-        "fingerprint": [tr("SHA-256 of the project as saved"), origin.sha256],
+        "fingerprint": [_hash_name(origin), origin.sha256],
     }
+
+
+def _file(origin: Origin) -> str:
+    """The file, and that it is of an earlier state where it is."""
+    name = shortened(origin.file_name, _LONGEST_FIELD)
+    if not origin.changed:
+        return name
+    return tr("{name}, changed since it was saved").format(name=name) if name else tr("not saved")
+
+
+def _hash_name(origin: Origin) -> str:
+    """What the SHA-256 is of: the file's bytes, or those that saving would write."""
+    if origin.changed:
+        return tr("SHA-256 of the project as printed, in the form in which it is saved")
+    return tr("SHA-256 of the project as saved")

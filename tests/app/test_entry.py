@@ -257,3 +257,18 @@ def test_the_display_units_are_read_without_pint() -> None:
 
 def test_every_sentence_is_filled_from_its_facts() -> None:
     assert all(sentence.count("{") == sentence.count("}") for sentence in ENTRIES.values())
+
+
+@pytest.mark.parametrize(
+    ("text", "quantity", "nearest"),
+    [("N", "distributed", None), ("kN", "stress", None), ("KN/m", "distributed", "kN/m")],
+)
+def test_only_units_of_the_same_dimension_are_proposed(text, quantity, nearest) -> None:
+    assert nearest_unit(text, quantity) == nearest
+
+
+def test_every_proposed_unit_can_be_typed() -> None:
+    for quantity in ALLOWED:
+        for text in ("N", "kn", "mm", "Mpa", "k", "m2", "lb", "in", "kg"):
+            nearest = nearest_unit(text, quantity)
+            assert nearest is None or unit_factor(nearest, quantity)

@@ -124,8 +124,7 @@ class CellEntry:
             self._keep_drafts(text, self._reason(error), name)
         else:
             self._document.commit(project, name, settled=places)
-            if notes:
-                self.model.noted.emit(notes[0])
+            self.model.tell_notes(self.model.columns[self._column], text, *notes[:1])
 
     def _put_in_all(self, text: str) -> tuple[Project, tuple[str, ...]]:
         column, sight = self.model.columns[self._column], self.model.sight

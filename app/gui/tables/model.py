@@ -12,10 +12,11 @@ from typing import Any, ClassVar
 from PySide6.QtCore import QObject, Qt
 
 from app.gui.document import Document, Draft, Preview
-from app.gui.tables.column import Change, Figures, Offer, Sight, Table
+from app.gui.tables.column import Change, Column, Figures, Offer, Sight, Table
 from app.gui.tables.paste import Block, Texts
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import Index, RowsModel
+from app.gui.tables.thousands import typed_note
 from app.units import symbol
 from app.words import tr
 
@@ -213,6 +214,17 @@ class TableModel(RowsModel):
             raise NotTaken(tr("this cell is not for typing"))
         return column.put(project, self.record_of(index.row()), text, self._sight)
 
+    def _column_of(self, index: Index) -> Column:
+        """The column that a text in the cell is for; in the row that adds, the one that adds a record."""
+        adding = self.table.adding if self.is_adding(index.row()) else None
+        return self._columns[index.column()] if adding is None else self.column_named(adding.column)
+
+    def tell_notes(self, column: Column, text: str, *notes: str) -> None:
+        """Say what an entry did more than it seems to, and how it was read where that may surprise."""
+        read = typed_note(text, column.quantity, self._sight.system) if column.quantity else ""
+        if said := "; ".join(filter(None, (read, *notes))):
+            self.noted.emit(said)
+
     def offers(self, index: Index) -> tuple[Offer, ...]:
         """The names that a cell offers while it is typed into."""
         adding = self.is_adding(index.row())
@@ -297,6 +309,7 @@ class TableModel(RowsModel):
             self._document.drop_preview()
             return True
         place, name = self.place(index.row(), index.column()), self.step_name(index)
+        column = self._column_of(index)  # before a row that it adds moves the row that adds
         if self.is_adding(index.row()) and not text.strip():
             self._document.commit(self._document.project, name, settled=(place,))
             return True
@@ -307,8 +320,7 @@ class TableModel(RowsModel):
             self._document.commit_draft(place, Draft(text, reason, name), name)
         else:
             self._document.commit(change.project, name, settled=(place,))
-            if change.note:
-                self.noted.emit(change.note)
+            self.tell_notes(column, text, change.note)
         return True
 
     def step_name(self, index: Index) -> str:

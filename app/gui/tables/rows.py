@@ -107,6 +107,10 @@ class RowsModel(QAbstractTableModel):
         """The columns as they are now."""
         return self._columns
 
+    def column_named(self, key: str) -> Column:
+        """One of them."""
+        return next(column for column in self._columns if column.key == key)
+
     @property
     def sight(self) -> Sight:
         """Units and case the table is read in."""

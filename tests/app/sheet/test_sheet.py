@@ -22,7 +22,7 @@ from app.results_file import results_json
 from app.samples import names, read_sample
 from app.sheet import build_sheet
 from app.sheet.content import sheet_content
-from app.sheet.title import Origin
+from app.sheet.title import Origin, title_block
 from solver.model import (
     FORMAT,
     VERSION,
@@ -446,3 +446,16 @@ def test_any_project_prints(project: Project) -> None:
     pdf = sheet(project)
     assert pdf.attachments["project.barwright.json"] == [dump(project)]
     assert f"Page 1 of {len(pdf.pages)}" in pdf.pages[0].extract_text()
+
+
+def test_a_sheet_of_a_changed_project_does_not_claim_to_be_the_files() -> None:
+    project = read_sample("tie_rod")
+    texts = [
+        json.dumps(title_block(project, Origin("a.json", "2026-01-01", "p", "0", changed=changed)))
+        for changed in (False, True)
+    ]
+    assert "SHA-256 of the project as saved" in texts[0]
+    assert "changed since it was saved" not in texts[0]
+    assert "a.json, changed since it was saved" in texts[1]
+    assert "project as saved" not in texts[1]
+    assert "SHA-256 of the project as printed, in the form in which it is saved" in texts[1]
