@@ -18,6 +18,7 @@ from app.gui.sheet_scene import SheetScene
 from app.gui.strips.strip import Strip
 from app.gui.theme import theme_for
 from app.gui.view import Cursor, Selection, View
+from app.hand.owners import kind_of, whole
 from app.references import Reference
 from app.words import tr
 from solver.model import Orientation, Project
@@ -283,13 +284,15 @@ class SheetView(QGraphicsView):
         return min(around, key=lambda joint: abs(self.ruler.pixel(joint) - pixel))
 
     def _on_part_clicked(self, part: Part, modifiers: Qt.KeyboardModifier) -> None:
-        """Select the part; with Ctrl in or out, with Shift all up to it as well."""
+        """Select the part; with Ctrl in or out, with Shift all up to it as well; mean a load by itself."""
         one = frozenset((part.index,))
+        thing = whole(part) if kind_of(part) is not None and not modifiers else None
         if part.kind in OF_SEGMENT:
             clicked = Selection(segments=one)
         elif part.kind in OF_JOINT:
             clicked = Selection(joints=one)
         else:
+            self._view.set_thing(thing)
             return
         chosen = self._view.selection
         self._narrowed = chosen if chosen.holds(clicked) and not modifiers else None
@@ -298,6 +301,7 @@ class SheetView(QGraphicsView):
         elif modifiers & Qt.KeyboardModifier.ShiftModifier:
             clicked = chosen.extended(clicked)
         self._view.set_selection(clicked)
+        self._view.set_thing(thing)
 
     # Qt's own
 

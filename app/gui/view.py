@@ -11,6 +11,7 @@ from typing import Literal
 
 from PySide6.QtCore import QObject, Signal
 
+from app.drawing.shapes import Part
 from app.looks import Looks
 from app.shown import Shown
 from app.strip_choice import StripChoice
@@ -63,6 +64,7 @@ class View(QObject):
     shown_changed = Signal(object)  # Shown
     cursor_changed = Signal(object)  # Cursor or None
     selection_changed = Signal(object)  # Selection
+    thing_changed = Signal(object)  # Part or None
     strips_changed = Signal(object)  # StripChoice
     looks_changed = Signal(object)  # Looks
     together_changed = Signal(bool)
@@ -72,6 +74,7 @@ class View(QObject):
         self._shown = Shown("envelope")
         self._cursor: Cursor | None = None
         self._selection = Selection()
+        self._thing: Part | None = None
         self._strips = StripChoice()
         self._looks = Looks()
         self._together = False
@@ -104,10 +107,22 @@ class View(QObject):
         return self._selection
 
     def set_selection(self, selection: Selection) -> None:
-        """Select segments and joints, replacing what was selected."""
+        """Select segments and joints, replacing what was selected; the thing in hand is put down."""
+        self.set_thing(None)
         if selection != self._selection:
             self._selection = selection
             self.selection_changed.emit(selection)
+
+    @property
+    def thing(self) -> Part | None:
+        """The load or support on the drawing that was clicked last and is meant by itself, or None."""
+        return self._thing
+
+    def set_thing(self, thing: Part | None) -> None:
+        """Mean a load or a support by itself, or none."""
+        if thing != self._thing:
+            self._thing = thing
+            self.thing_changed.emit(thing)
 
     @property
     def strips(self) -> StripChoice:

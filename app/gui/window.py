@@ -39,6 +39,7 @@ from app.gui.hand.shaping import Shaping
 from app.gui.hand.sheet_menu import SheetMenu
 from app.gui.hand.sheet_sweeps import SheetSweeps
 from app.gui.hand.symbol_strip import SymbolStrip
+from app.gui.hand.taking_off import TakingOff
 from app.gui.help import Help
 from app.gui.language_menu import LanguageMenu
 from app.gui.member_edits import MemberEdits
@@ -104,9 +105,12 @@ class Window(QMainWindow):
         self.taking = StripTaking(self, self.sheet, self.view, self.showing, self.store)
         self.jump = Jump(self.document, self.view, self.sheet, self.findings, self.tables, self)
         self.curing = Curing(self.document, self.showing, self.findings, commit, self)
-        self.sweeps = SheetSweeps(self.sheet, self.view, self.tables, self.in_place)
+        self.sweeps = SheetSweeps(self.sheet, self.tables, self.in_place)
         self.symbols = SymbolStrip()
-        self.placing = Placing(self.document, self.view, self.sheet, self.tables, self.in_place, self)
+        self.taking_off = TakingOff(self.document, self.view, self.sheet, self.tables, self)
+        self.placing = Placing(
+            self.document, self.view, self.sheet, self.tables, self.in_place, self.taking_off, self
+        )
         self.shaping = Shaping(self.document, self.view, self.sheet, self.tables, self)
         self.selecting = Selecting(self.view, self.sheet, self)
         self.edits = MemberEdits(self.document, self.tables, self)
@@ -144,13 +148,14 @@ class Window(QMainWindow):
             self.tables,
             self.in_place,
             self.placing,
+            self.taking_off,
             self.shaping,
             self.selecting,
             self.actions_by_key,
             self,
         )
         self.symbols.chosen.connect(self.placing.choose)
-        self.placing.delete_asked.connect(self.edits.delete_segments)
+        self.taking_off.segments_asked.connect(self.edits.delete_segments)
         self.placing.kind_changed.connect(self.symbols.show_chosen)
 
     def _handlers(self) -> dict[str, Callable[[], None]]:
@@ -232,6 +237,7 @@ class Window(QMainWindow):
             self.jump,
             self.curing,
             self.placing,
+            self.taking_off,
             self.shaping,
         ):
             room.told.connect(self.status.tell)

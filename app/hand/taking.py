@@ -6,10 +6,12 @@ from collections.abc import Callable
 from typing import Final
 
 from app.drawing.handles import Handle
+from app.drawing.shapes import Part, PartKind
 from app.drawing.sketch import Sketch
 from app.hand.grip import Grip, Refusal
 from app.hand.lengths import joint_grip
 from app.hand.loads import Aim, aim_at, distributed_grip, force_grip
+from app.hand.owners import why_not_here
 from app.hand.sections import edge_grip
 from app.shown import Shown
 
@@ -25,7 +27,18 @@ def take(
         inner = handle.kind == "bore"
         return edge_grip(project, handle.index, handle.where, 1.0 / sketch.scale, inner=inner)
     aim = aim_at(project, shown, case)
-    return aim if isinstance(aim, Refusal) else _LOADS[handle.kind](handle, sketch, aim)
+    if isinstance(aim, Refusal):
+        return aim
+    edited = project.load_cases.index(aim.case)
+    part = part_of(handle)
+    elsewhere = "" if part is None else why_not_here(part, project, shown, edited)
+    return Refusal(elsewhere) if elsewhere else _LOADS[handle.kind](handle, sketch, aim)
+
+
+def part_of(handle: Handle) -> Part | None:
+    """The load that a handle is of; None for one of the member itself."""
+    kind = _PARTS.get(handle.kind)
+    return None if kind is None else Part(kind, handle.index)
 
 
 def _force(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
@@ -40,6 +53,7 @@ def _distributed(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
     return distributed_grip(sketch.member.project, handle.index, handle.where, aim, (start, end))
 
 
+_PARTS: Final[dict[str, PartKind]] = {"force": "force", "distributed": "distributed"}
 _LOADS: Final[dict[str, Callable[[Handle, Sketch, Aim], Grip]]] = {
     "force": _force,
     "distributed": _distributed,

@@ -28,7 +28,7 @@ from app.drawing.shapes import OF_SEGMENT, Box, Circle, Part, Picture, Stroke, T
 from app.drawing.sketch import Sketch
 from app.drawing.tips import tip
 from app.gui.drawing.draft_marks import paint_marks
-from app.gui.drawing.outlines import paint_lit, paint_selected_joints
+from app.gui.drawing.outlines import paint_lit, paint_selected_joints, paint_thing
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
@@ -54,6 +54,7 @@ class MemberDrawing(QGraphicsObject):
         self._under_mouse: Part | None = None
         self._drafts: Mapping[Part, str] = {}
         self._lit: Part | None = None
+        self._thing: Part | None = None
         self.setZValue(10.0)
         self.setAcceptHoverEvents(True)
         self.setAcceptedMouseButtons(Qt.MouseButton.LeftButton)
@@ -148,6 +149,12 @@ class MemberDrawing(QGraphicsObject):
             self._lit = part
             self.update()
 
+    def set_thing(self, thing: Part | None) -> None:
+        """Light a load or a support by itself instead of what it is on, or none."""
+        if thing != self._thing:
+            self._thing = thing
+            self.update()
+
     def part_at(self, point: QPointF) -> Part | None:
         """The part under a point, or None."""
         target = self.picture.target_at((point.x(), point.y()))
@@ -211,14 +218,17 @@ class MemberDrawing(QGraphicsObject):
         for circle in self.picture.circles:
             self._paint_circle(painter, circle)
         self._paint_texts(painter, self._place.fonts)
-        paint_selected_joints(painter, self.picture, self._selection.joints, self._theme)
+        if self._thing is None:
+            paint_selected_joints(painter, self.picture, self._selection.joints, self._theme)
+        else:
+            paint_thing(painter, self.picture, self._thing, self._theme)
         if self._lit is not None:
             paint_lit(painter, self.picture, self._lit, self._theme)
         paint_marks(painter, self.picture, self._drafts, self._theme, self._place.fonts.font("small"))
 
     def _is_selected(self, part: Part | None) -> bool:
-        if part is None:
-            return False
+        if part is None or self._thing is not None:
+            return part is not None and part == self._thing
         if part.kind == "segment":
             return part.index in self._selection.segments
         return part.kind in ("support", "force") and part.index in self._selection.joints

@@ -1,4 +1,5 @@
-"""Outlines around parts: corners at the selected joints, dashes where a click would put a symbol.
+"""Outlines around parts: corners at the selected joints, dashes where a click would put a symbol, a frame
+around the label of a load or a support that is in hand by itself.
 
 A selected segment is seen by its own thick edge; a joint has none, so it wears corners around it.
 """
@@ -30,6 +31,17 @@ def paint_lit(painter: QPainter, picture: Picture, part: Part, theme: Theme) -> 
         painter.setPen(QPen(colour(theme.select), 2.0, Qt.PenStyle.DashLine))
         painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.drawRect(rect.adjusted(-3, -4, 3, 4))
+
+
+def paint_thing(painter: QPainter, picture: Picture, thing: Part, theme: Theme) -> None:
+    """A frame around the labels of a load or a support; around where it is pointed at if it has none."""
+    boxes = [text.box for text in picture.texts if text.part == thing]
+    around = [QRectF(b.left, b.top, b.right - b.left, b.bottom - b.top) for b in boxes]
+    target = _rect_of(picture, thing)
+    painter.setPen(QPen(colour(theme.select), 1.8))
+    painter.setBrush(Qt.BrushStyle.NoBrush)
+    for rect in around or ([] if target is None else [target]):
+        painter.drawRoundedRect(rect.adjusted(-3, -1, 3, 1), 3.0, 3.0)
 
 
 def _rect_of(picture: Picture, part: Part) -> QRectF | None:

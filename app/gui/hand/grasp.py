@@ -17,6 +17,7 @@ from app.gui.hand.pull import Pull, taken
 from app.gui.sheet_view import SheetView
 from app.gui.view import View
 from app.hand.grip import Refusal
+from app.hand.taking import part_of
 from app.words import tr
 from solver.model import Project
 
@@ -117,8 +118,9 @@ class Grasp(QObject):
         self.paper.bubble.say(self.pull.lines(hint), self.point, room, self.paper.fonts)
 
     def keep(self) -> None:
-        """It stays in hand, its handle marked, until something else is done."""
+        """It stays in hand, its handle marked, until something else is done; a load is meant by itself."""
         self.phase = Phase.AFTER
+        self._view.set_thing(None if self.pull is None else part_of(self.pull.handle))
         self.light()
         self.say(tr("Type a number for the exact value."))
 

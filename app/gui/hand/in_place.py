@@ -24,6 +24,7 @@ from app.gui.tables.pane import TablesPane
 from app.gui.theme import Theme, theme_for
 from app.gui.view import View
 from app.hand.cells import ORDER, Cell, case_share, cells_of, loads_behind, part_of
+from app.hand.owners import why_not_here
 from app.units import input_text
 from app.words import tr
 
@@ -132,8 +133,8 @@ class InPlace(QObject):
         """Type what a part of the drawing shows; for all that is selected where it is one of several."""
         self.commit()
         project, case = self._document.project, self._tables.sight.case
-        if part.kind in LOADS and case_share(project, self._view.shown, case) == 0.0:
-            self.told.emit(self.why_no_part(case))
+        if refused := self.why_not(part):
+            self.told.emit(refused)
             return
         cells = cells_of(part, project, case)
         if not cells:
@@ -226,11 +227,16 @@ class InPlace(QObject):
 
     # What cannot be typed
 
-    def why_no_part(self, case: int | None) -> str:
-        """Why a load on the drawing cannot be edited where the edited case is not in what is shown."""
+    def why_not(self, part: Part) -> str:
+        """Why a load on the drawing cannot be edited in the edited case; empty where it can."""
+        project, shown, case = self._document.project, self._view.shown, self._tables.sight.case
+        if part.kind not in LOADS:
+            return ""
         if case is None:
             return tr("add a load case in the Loads table first")
-        name = self._document.project.load_cases[case].name
+        if case_share(project, shown, case):
+            return why_not_here(part, project, shown, case)
+        name = project.load_cases[case].name
         words = tr("{case} takes no part in what is shown: choose at “Edit loads of” or “Show” one that does")
         return words.format(case=name)
 

@@ -14,15 +14,15 @@ from app.drawing.shapes import Part
 from app.edits import EditError
 from app.gui.document import Document
 from app.gui.hand.in_place import InPlace
+from app.gui.hand.taking_off import TakingOff
 from app.gui.sheet_view import SheetView
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import reason_of
 from app.gui.view import Shown, View
 from app.hand.cells import case_share, part_of
 from app.hand.kinds import KINDS, Kind
-from app.hand.putting import NotPut, Put, put_on, take_off
+from app.hand.putting import NotPut, Put, put_on
 from app.words import later, tr
-from solver.model import Project
 
 LETTERS = {kind.letter: kind for kind in KINDS}
 FREE = next(kind for kind in KINDS if kind.key == "free")
@@ -37,7 +37,6 @@ class Placing(QObject):
 
     told = Signal(str)
     kind_changed = Signal(object)  # Kind or None
-    delete_asked = Signal()  # of the selected segments
 
     def __init__(
         self,
@@ -46,6 +45,7 @@ class Placing(QObject):
         sheet: SheetView,
         tables: TablesPane,
         in_place: InPlace,
+        taking_off: TakingOff,
         parent: QObject,
     ) -> None:
         super().__init__(parent)
@@ -54,6 +54,7 @@ class Placing(QObject):
         self._sheet = sheet
         self._tables = tables
         self._in_place = in_place
+        self._taking_off = taking_off
         self._kind: Kind | None = None
         sheet.installEventFilter(self)
         sheet.viewport().installEventFilter(self)
@@ -111,7 +112,7 @@ class Placing(QObject):
         viewport.removeEventFilter(self)
         viewport.installEventFilter(self)
 
-    # Putting on and taking off
+    # Putting on
 
     def put(self, kind: Kind, indexes: tuple[int, ...]) -> None:
         """Put one on each, as one undo step, and type its value at once."""
@@ -150,30 +151,6 @@ class Placing(QObject):
         records = tuple(cell.record for cell in done.cells)
         self._in_place.open(done.cells[0], self._sheet.box_of(part), None, records)
 
-    def take_off(self, kind: Kind, indexes: tuple[int, ...]) -> None:
-        """Take one off each, as one undo step."""
-        self._tables.commit_open_editor()
-
-        def without(project: Project) -> Project:
-            return take_off(kind, project, indexes, self._tables.sight.case)
-
-        try:
-            project = without(self._document.project)
-        except EditError as error:
-            self._refuse(error)
-        else:
-            self._document.commit(project, tr("Take off: {what}").format(what=tr(kind.name)))
-
-    def _delete(self) -> None:
-        """The selected segments with their loads; of joints, where no segment is selected, the supports."""
-        chosen = self._view.selection
-        if chosen.segments:
-            self.delete_asked.emit()
-        elif chosen.joints:
-            self.put(FREE, tuple(sorted(chosen.joints)))
-        else:
-            self.told.emit(tr("select segments to delete first, or joints to take their supports off"))
-
     # Mouse and keys
 
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
@@ -189,7 +166,7 @@ class Placing(QObject):
             self.take(None)
             return True
         if event.key() in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace) and not event.modifiers():
-            self._delete()
+            self._taking_off.delete()
             return True
         kind = LETTERS.get(event.text().upper()) if event.text() else None
         held = Qt.KeyboardModifier.ControlModifier | Qt.KeyboardModifier.AltModifier

@@ -20,6 +20,7 @@ from app.gui.hand.placing import Placing
 from app.gui.hand.selecting import Selecting
 from app.gui.hand.shaping import Shaping
 from app.gui.hand.symbol_icon import symbol_icon
+from app.gui.hand.taking_off import TakingOff
 from app.gui.sheet_view import SheetView
 from app.gui.tables.pane import TablesPane
 from app.gui.theme import theme_for
@@ -48,6 +49,7 @@ class SheetMenu(QObject):
         tables: TablesPane,
         in_place: InPlace,
         placing: Placing,
+        taking_off: TakingOff,
         shaping: Shaping,
         selecting: Selecting,
         actions: Mapping[str, QAction],
@@ -60,6 +62,7 @@ class SheetMenu(QObject):
         self._tables = tables
         self._in_place = in_place
         self._placing = placing
+        self._taking_off = taking_off
         self._shaping = shaping
         self._selecting = selecting
         self._actions = actions
@@ -177,7 +180,7 @@ class SheetMenu(QObject):
         off = menu.addMenu(tr("Take off"))
         off.setEnabled(bool(there))
         for kind in there:
-            self._add_kind(off, kind, lambda kind=kind: self._placing.take_off(kind, indexes))
+            self._add_kind(off, kind, lambda kind=kind: self._taking_off.take_off(kind, indexes))
 
     def _add_kind(self, menu: QMenu, kind: Kind, do: Callable[[], object]) -> None:
         action = self._add(menu, tr(kind.name), do)

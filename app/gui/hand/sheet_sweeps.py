@@ -14,14 +14,13 @@ from PySide6.QtCore import QEvent, QObject, QPointF, Qt
 from PySide6.QtGui import QMouseEvent, QWheelEvent
 from PySide6.QtWidgets import QApplication
 
-from app.drawing.shapes import LOADS, Text
+from app.drawing.shapes import Text
 from app.gui.hand.cell_entry import CellEntry
 from app.gui.hand.in_place import InPlace
 from app.gui.hand.sweeper import CONTROL, PULL, Wheel
 from app.gui.sheet_view import SheetView
 from app.gui.tables.pane import TablesPane
-from app.gui.view import View
-from app.hand.cells import case_share, cells_of
+from app.hand.cells import cells_of
 from app.sweep import place_in_entry
 
 WORDS = ("note", "mark")  # labels that hold no value
@@ -30,10 +29,9 @@ WORDS = ("note", "mark")  # labels that hold no value
 class SheetSweeps(QObject):
     """Turns what the hand does over the labels of the sheet into steps of the sweeper."""
 
-    def __init__(self, sheet: SheetView, view: View, tables: TablesPane, in_place: InPlace) -> None:
+    def __init__(self, sheet: SheetView, tables: TablesPane, in_place: InPlace) -> None:
         super().__init__(sheet)
         self._sheet = sheet
-        self._view = view
         self._tables = tables
         self._in_place = in_place
         self._sweeper = tables.sweeper
@@ -75,8 +73,8 @@ class SheetSweeps(QObject):
             return None
         self._tables.commit_open_editor()
         project, case = self._tables.document.project, self._tables.sight.case
-        if label.part.kind in LOADS and case_share(project, self._view.shown, case) == 0.0:
-            self._sweeper.told.emit(self._in_place.why_no_part(case))
+        if refused := self._in_place.why_not(label.part):
+            self._sweeper.told.emit(refused)
             return False
         cells = cells_of(label.part, project, case)
         if not cells:
