@@ -1,4 +1,4 @@
-"""Supports as typed text: "free", "fixed", "spring 600 kN/mm", "stop + 0.5 mm, 600 kN/mm".
+"""Supports as typed text: "free", "fixed", "spring 600 kN/mm" or "600 kN/mm", "stop + 0.5 mm, 600 kN/mm".
 
 Numbers in it follow the grammar of every entry, with or without their unit; what is shown can be typed again.
 A sign says the side of a stop; the English words are understood in every language, as the file's own.
@@ -12,7 +12,7 @@ from typing import Final, Literal
 
 from msgspec import UNSET, UnsetType
 
-from app.entry import parse_entry
+from app.entry import parse_entry, read_number
 from app.units import Quantity, entry_text, format_value, symbol
 from app.words import tr
 from solver.model import AnySupport, FixedSupport, SpringSupport, StopSupport, UnitSystemName
@@ -29,15 +29,22 @@ class SupportError(ValueError):
 Wording = Callable[[float, Quantity], str]
 
 
-def parse_support(text: str, system: UnitSystemName) -> AnySupport | UnsetType:
-    """The support a text names, UNSET for none; SupportError with a sentence where it names none."""
+def parse_support(
+    text: str, system: UnitSystemName, old: AnySupport | UnsetType = UNSET
+) -> AnySupport | UnsetType:
+    """The support a text names, UNSET for none; SupportError with a sentence where it names none.
+
+    A number with its unit is a spring; a bare one is where `old`, what the cell holds, is a spring already.
+    """
     if not text.strip():
         return UNSET
     found = _WORD.fullmatch(text)
+    if found is None and (isinstance(old, SpringSupport) or read_number(text, "spring", system)[1]):
+        return _spring(text, system)
     word, rest = (found[1].casefold(), found[2].strip()) if found else ("", "")
     kind = next((name for name in _WORDS for said in (name, tr(name)) if said.casefold() == word), None)
     if kind is None:
-        raise SupportError(tr("a support is free, fixed, spring 600 kN/mm or stop + 0.5 mm"))
+        raise SupportError(tr("a support is free, fixed or a spring, such as spring 600 kN/mm"))
     return _WORDS[kind](rest, system)
 
 

@@ -80,6 +80,7 @@ def graded(results: Results, state: int | None, colour: Colour) -> Graded | None
     else:
         states, curve = [state], curves(results, state)
         value = getattr(curve, colour)
+    value = np.where(_only_rounding(results, states)[curve.segment], 0.0, value)
     stiffness = float(results.chain.modulus.max())
     stiffness *= float(results.chain.area.max()) if colour == "force" else 1.0
     if not value.size or np.abs(value).max() <= NOTHING * stiffness:
@@ -99,6 +100,14 @@ def graded(results: Results, state: int | None, colour: Colour) -> Graded | None
         governing=state is None,
         checked=checked,
     )
+
+
+def _only_rounding(results: Results, states: list[int]) -> BoolArray:
+    """The segments (n,) whose force is within its numerical error in all of these states."""
+    segments = results.segments
+    size = np.maximum(np.abs(segments.force_max[states]), np.abs(segments.force_min[states]))
+    only: BoolArray = np.all(size <= segments.force_bound[states], axis=0)
+    return only
 
 
 def shades(shown: Graded, ruler: Ruler) -> list[Shade]:

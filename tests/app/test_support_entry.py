@@ -19,6 +19,8 @@ KN = "mm-kN-MPa"
         ("", UNSET),
         (" Fixed ", FixedSupport()),
         ("spring 600", SpringSupport(stiffness=6e8)),
+        ("600 kN/mm", SpringSupport(stiffness=6e8)),
+        ("2*(100+200) kN/mm", SpringSupport(stiffness=6e8)),
         ("spring 600 kN/mm", SpringSupport(stiffness=6e8)),
         ("SPRING 600 N/mm", SpringSupport(stiffness=6e5)),
         ("stop + 0.5 mm", StopSupport(side="plus", clearance=5e-4)),
@@ -39,6 +41,7 @@ def test_what_is_typed_is_what_is_meant(text, support):
     [
         ("held", "a support is"),
         ("5", "a support is"),
+        ("-5 kN/mm", "greater than 0"),
         ("fixed 5", "nothing stands behind"),
         ("free 0", "nothing stands behind"),
         ("spring", "needs its stiffness"),
@@ -53,6 +56,23 @@ def test_what_is_typed_is_what_is_meant(text, support):
 def test_what_is_no_support_is_said_in_words(text, reason):
     with pytest.raises(SupportError, match=reason):
         parse_support(text, KN)
+
+
+def test_a_bare_number_is_a_spring_where_there_is_one_already():
+    assert parse_support("150", KN, SpringSupport(stiffness=6e8)) == SpringSupport(stiffness=1.5e8)
+    with pytest.raises(SupportError, match="a support is"):
+        parse_support("150", KN, FixedSupport())
+
+
+def test_a_number_of_something_else_is_no_spring():
+    with pytest.raises(ValueError, match="kg"):
+        parse_support("150 kg", KN)
+
+
+def test_what_cannot_be_solved_is_not_offered():
+    with pytest.raises(SupportError) as raised:
+        parse_support("held", KN)
+    assert "stop" not in str(raised.value)
 
 
 SIZES = st.floats(1e-6, 1e12)

@@ -40,7 +40,8 @@ def rows(project: Project, sight: Sight) -> tuple[object, ...]:
 
 
 def _put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
-    return Change(edits.set_value(project, ("joints", index, "support"), parse_support(text, sight.system)))
+    support = parse_support(text, sight.system, project.joints[index].support)
+    return Change(edits.set_value(project, ("joints", index, "support"), support))
 
 
 def _load(key: str, title: str, quantity: Quantity) -> Column:

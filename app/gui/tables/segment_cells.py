@@ -199,7 +199,7 @@ def entry_of_support(row: StartRow | SegmentRow, sight: Sight) -> str:
 
 def put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
     """Another support at the segment's far joint."""
-    support = parse_support(text, sight.system)
+    support = parse_support(text, sight.system, project.joints[index + 1].support)
     return Change(edits.set_value(project, ("joints", index + 1, "support"), support))
 
 

@@ -28,10 +28,11 @@ from app.drawing.tinting import displaced_outline, legend_size, tinted
 from app.looks import Looks
 from app.samples import read_sample
 from app.shown import Shown
-from solver.model import Project
+from solver.model import FixedSupport, JointLoad, Project, RoundSection, SegmentLoad
 from solver.solve import solve
 from tests.app.drawing.frames import SIZES, window_frame
 from tests.drawn_members import busy_member, drawn, uneven_member
+from tests.members import Part, case, member
 
 ROD = solve(read_sample("tie_rod"))
 STORM = next(i for i, state in enumerate(ROD.states) if state.name == "Storm surge")
@@ -47,6 +48,27 @@ def coloured(project: Project, results, state: int | None, *, upright: bool):
     frame = replace(frame, detail=detail)
     picture = lay_out(member, frame)
     return frame, picture, tinted(member, frame, picture, shown)
+
+
+def balanced():
+    """Four segments held at the start; what acts is in balance on the third, so that only it has a force."""
+    parts = [Part(0.3, RoundSection(diameter=0.05)) for _ in range(4)]
+    load, force = SegmentLoad("C", 1e4 / 3.0, 2e4 / 3.0), JointLoad("3", -1.5 * 1e4 / 3.0 * 0.3)
+    return member(parts, {0: FixedSupport()}, [case("Pull", on_segments=[load], on_joints=[force])], [])
+
+
+class TestRounding:
+    """Where nothing acts the solver leaves the rounding of its sums, which has no sign to be shown."""
+
+    @pytest.mark.parametrize("colour", ["force", "stress"])
+    @pytest.mark.parametrize("state", [0, None])
+    def test_what_is_only_rounding_has_neither_colour_nor_sign(self, state, colour):
+        results = solve(balanced())
+        assert np.abs(results.segments.force_max[0]).all(), "no rounding to be shown"
+        shown = graded(results, state, colour)
+        ruler = Ruler.fitting(results.position.tolist(), 0.0, 800.0)
+        assert {shade.sign for shade in shades(shown, ruler) if shade.segment != 2} == {0}
+        assert {shade.sign for shade in shades(shown, ruler) if shade.segment == 2} == {-1}
 
 
 class TestShades:
