@@ -23,6 +23,7 @@ class MemberEdits(QObject):
     """Commands on the chosen segments and rows."""
 
     told = Signal(str)
+    inserted = Signal(int)  # a segment by its index, chosen by now
 
     def __init__(self, document: Document, tables: TablesPane, parent: QObject | None = None) -> None:
         super().__init__(parent)
@@ -42,22 +43,23 @@ class MemberEdits(QObject):
         else:
             self._document.commit(project, name)
 
+    def _insert(self, index: int) -> None:
+        self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
+        self._choose(index)
+        self.inserted.emit(index)
+
     def _choose(self, segment: int) -> None:
         self._tables.views["segments"].choose_record(segment)
 
     def insert_before(self) -> None:
         """A segment before the first chosen one."""
-        index = min(self._chosen(), default=0)
-        self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
-        self._choose(index)
+        self._insert(min(self._chosen(), default=0))
 
     def insert_after(self) -> None:
         """A segment behind the last chosen one; behind the start, or where none is chosen at the end."""
         chosen, start = self._chosen(), self._tables.views["segments"].lead_is_chosen
         last = -1 if start else len(self._document.project.segments) - 1
-        index = max(chosen, default=last) + 1
-        self._do(tr("Insert segment"), lambda project: edits.insert_segment(project, index))
-        self._choose(index)
+        self._insert(max(chosen, default=last) + 1)
 
     def move_up(self) -> None:
         """The chosen segments one place towards the start."""

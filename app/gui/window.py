@@ -243,6 +243,7 @@ class Window(QMainWindow):
             room.told.connect(self.status.tell)
         self.hand.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
+        self.edits.inserted.connect(self.in_place.open_inserted)
         self.tables.rows_moved.connect(self.edits.move_before)
 
     def _edited_case(self) -> str | None:

@@ -268,3 +268,20 @@ def test_a_double_click_on_one_of_several_selected_types_for_all(window):
     assert window.view.selection == Selection(segments=frozenset((1, 4, 5)))
     QTest.mouseClick(window.sheet.viewport(), LEFT, pos=centre_of(window, Part("length", 4)))
     assert window.view.selection == Selection(segments=frozenset((4,)))
+
+
+def test_the_length_of_a_segment_inserted_on_the_drawing_is_typed_at_once(window):
+    window.sheet.setFocus()
+    window.view.set_selection(Selection(segments=frozenset((2,))))
+    window.actions_by_key["insert_after"].trigger()
+    assert window.in_place.editor is not None
+    assert window.in_place.caption.startswith("Length of")
+    QTest.keyClicks(window.in_place.editor, "123")
+    QTest.keyClick(window.in_place.editor, Qt.Key.Key_Return)
+    assert window.document.project.segments[3].length == 0.123
+
+
+def test_one_inserted_in_the_table_is_typed_there(window):
+    window.tables.views["segments"].setFocus()
+    window.actions_by_key["insert_after"].trigger()
+    assert window.in_place.editor is None

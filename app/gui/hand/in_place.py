@@ -168,6 +168,11 @@ class InPlace(QObject):
         """Type into a cell where the drawing shows it, for these records together."""
         self.open(cell, self._box_of(cell), None, records)
 
+    def open_inserted(self, segment: int) -> None:
+        """Type the length of a segment that was inserted on the sheet."""
+        if self._sheet.hasFocus():
+            self.open_cell(Cell("segments", segment, "length"))
+
     def _show(self, entry: CellEntry, box: Box, text: str | None) -> None:
         self._entry = entry
         self._frame = frame = EditorFrame(self._sheet.viewport(), theme_for(self._sheet.palette()), entry)
