@@ -605,3 +605,34 @@ def press_at(window, at, *, released=False):
     glob = QPointF(window.sheet.viewport().mapToGlobal(at.toPoint()))
     held = Qt.MouseButton.NoButton if released else Qt.MouseButton.LeftButton
     return QMouseEvent(kind, at, glob, Qt.MouseButton.LeftButton, held, Qt.KeyboardModifier.NoModifier)
+
+
+class TestReadoutAfterwards:
+    def test_it_goes_at_the_next_key(self, qtbot, window, pointer):
+        pointer.drag("joint", 2, "end", 60)
+        assert window.sheet.paper.bubble.text
+        QTest.keyClick(window.sheet, Qt.Key.Key_Right)
+        assert not window.sheet.paper.bubble.text
+
+    def test_it_goes_when_the_exact_value_is_taken(self, qtbot, window, pointer):
+        pointer.drag("joint", 2, "end", 60)
+        QTest.keyClick(window.sheet, Qt.Key.Key_4)
+        QTest.keyClicks(window.hand.entry, "20")
+        QTest.keyClick(window.hand.entry, Qt.Key.Key_Return)
+        assert lengths(window)[1] == 0.42
+        assert not window.sheet.paper.bubble.text
+
+    @pytest.mark.parametrize(
+        ("kind", "index", "where"), [("edge", 1, "start"), ("edge", 1, "end"), ("joint", 1, "end")]
+    )
+    def test_it_covers_no_handle_of_what_is_selected(self, qtbot, window, either, kind, index, where):
+        window.view.set_selection(Selection(segments=frozenset((0, 1, 2))))
+        either.drag(kind, index, where, 20)
+        bubble = window.sheet.paper.bubble
+        assert bubble.text
+        covered = [
+            h
+            for h in window.sheet.paper.hand_marks.quiet
+            if bubble.boundingRect().contains(QPointF(*h.centre))
+        ]
+        assert not covered

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QPainter, QPen
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
+from app.drawing.shapes import Point
 from app.gui.fonts import Fonts
 from app.gui.sheet_items import Painted
 from app.gui.theme import Theme, colour
@@ -29,14 +32,21 @@ class Bubble(Painted):
         """What it says; empty while it is hidden."""
         return "\n".join(self._lines)
 
-    def say(self, lines: tuple[str, ...], near: QPointF, room: QRectF, fonts: Fonts) -> None:
-        """Say lines beside a point, inside the room."""
+    def say(
+        self,
+        lines: tuple[str, ...],
+        near: QPointF,
+        room: QRectF,
+        fonts: Fonts,
+        clear: Sequence[Point] = (),
+    ) -> None:
+        """Say lines beside a point, inside the room, with what is `clear` not covered where that can be."""
         self._lines, self._fonts = lines, fonts
         sizes = [fonts.measure(line, self._face(place)) for place, line in enumerate(lines)]
         width = max(size.width() for size in sizes) + 2.0 * EDGE
         height = sum(size.height() + APART for size in sizes) + 2.0 * EDGE - APART
         box = QRectF(near + ASIDE, near + ASIDE + QPointF(width, height))
-        self.set_rect(_inside(box, near, room))
+        self.set_rect(_beside(box, near, room, clear))
         self.setVisible(True)
 
     def hush(self) -> None:
@@ -67,6 +77,23 @@ class Bubble(Painted):
             top += size.height() + APART
 
 
+def _beside(box: QRectF, near: QPointF, room: QRectF, clear: Sequence[Point]) -> QRectF:
+    """The first of some places that covers none of the points; else the one that covers the fewest."""
+    places = [_inside(QRectF(box), near, room)]
+    if clear:
+        across, along = [y for _, y in clear], [x for x, _ in clear]
+        size = box.size()
+        for left, top in (
+            (near.x() + ASIDE.x(), near.y() - ASIDE.y() - size.height()),
+            (near.x() - 0.5 * size.width(), max(across) + ASIDE.y()),
+            (near.x() - 0.5 * size.width(), min(across) - ASIDE.y() - size.height()),
+            (max(along) + ASIDE.x(), near.y() - 0.5 * size.height()),
+            (min(along) - ASIDE.x() - size.width(), near.y() - 0.5 * size.height()),
+        ):
+            places.append(_held(QRectF(QPointF(left, top), size), room))
+    return min(places, key=lambda place: sum(place.contains(QPointF(*point)) for point in clear))
+
+
 def _inside(box: QRectF, near: QPointF, room: QRectF) -> QRectF:
     """The box moved into the room, to the other side of the point where it would cover it.
 
@@ -76,6 +103,11 @@ def _inside(box: QRectF, near: QPointF, room: QRectF) -> QRectF:
         box.moveRight(near.x() - ASIDE.x())
     if box.bottom() > room.bottom():
         box.moveBottom(near.y() - ASIDE.y())
+    return _held(box, room)
+
+
+def _held(box: QRectF, room: QRectF) -> QRectF:
+    """The box moved so far that it lies in the room."""
     box.moveLeft(max(min(box.left(), room.right() - box.width()), room.left()))
     box.moveTop(max(min(box.top(), room.bottom() - box.height()), room.top()))
     return box

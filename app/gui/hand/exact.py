@@ -56,6 +56,7 @@ class Exact(QObject):
             self._grasp.phase = Phase.AFTER
             self._close()
             self._grasp.commit()
+            self._grasp.hush()
 
     def on_left(self) -> None:
         """The keyboard went elsewhere: what is valid is taken in, the rest is named and given up."""

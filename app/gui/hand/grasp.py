@@ -115,7 +115,12 @@ class Grasp(QObject):
         if self.phase is not Phase.PULLING and lit is not None:
             self.point = QPointF(*lit.centre)
         room = QRectF(self._sheet.viewport().rect())
-        self.paper.bubble.say(self.pull.lines(hint), self.point, room, self.paper.fonts)
+        clear = () if self.phase is Phase.PULLING else [h.centre for h in self.paper.hand_marks.quiet]
+        self.paper.bubble.say(self.pull.lines(hint), self.point, room, self.paper.fonts, clear)
+
+    def hush(self) -> None:
+        """What was typed needs no readout any more; it stays in hand."""
+        self.paper.bubble.hush()
 
     def keep(self) -> None:
         """It stays in hand, its handle marked, until something else is done; a load is meant by itself."""

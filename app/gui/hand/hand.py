@@ -26,6 +26,7 @@ from app.words import tr
 
 FORGET = 40.0  # px that the pointer goes away before what was pulled is out of the hand
 SHIFT, CTRL = Qt.KeyboardModifier.ShiftModifier, Qt.KeyboardModifier.ControlModifier
+MODIFIER_KEYS = (Qt.Key.Key_Shift, Qt.Key.Key_Control, Qt.Key.Key_Alt, Qt.Key.Key_AltGr, Qt.Key.Key_Meta)
 MODIFIERS = {TOTAL_STAYS: SHIFT, FREE: CTRL}
 
 
@@ -178,7 +179,7 @@ class Hand(QObject):
         if begins_entry(event.text()) and not event.modifiers() & CTRL:
             self._exact.begin(event.text())
             return True
-        if event.text() or event.key() == GIVE_UP:
+        if event.key() not in MODIFIER_KEYS:
             self._grasp.forget()
         return event.key() == GIVE_UP
 
