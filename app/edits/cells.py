@@ -16,9 +16,8 @@ from app.decode import convert, project_type
 from app.edits.checking import EditError, consistent, refused
 from app.edits.renaming import RENAMERS, rename
 from app.encode import plain
-from solver import validation
 from solver.faults import Fault, Place
-from solver.model import Limits, Project
+from solver.model import Project
 
 _Change = Callable[[Any, inspect.Type], Any]
 
@@ -31,23 +30,7 @@ def set_value(project: Project, place: Place, value: object) -> Project:
     """
     if len(place) == 3 and (place[0], place[2]) in RENAMERS and isinstance(value, str):
         return rename(project, place, value)
-    changed = _changed(project, project_type(), place, _setter(place, value))
-    return changed if _is_sound_alone(changed, place) else consistent(changed)
-
-
-def _is_sound_alone(project: Project, place: Place) -> bool:
-    """Whether what was set lies in a segment or joint and is sound there, so that the rest need not be asked.
-
-    No other record depends on it but by its mark and the material it names.
-    """
-    if len(place) < 3 or place[0] not in ("segments", "joints") or place[2] in ("mark", "material"):
-        return False
-    index = int(place[1]) if place[0] == "segments" else 0
-    segments, joints = project.segments[index : index + 1], project.joints[:2]
-    alone = structs.replace(
-        project, segments=segments, joints=joints, load_cases=(), combinations=(), limits=Limits()
-    )
-    return not validation.faults(alone)
+    return consistent(_changed(project, project_type(), place, _setter(place, value)), project)
 
 
 def value_at(project: Project, place: Place) -> Any:
@@ -61,16 +44,24 @@ def value_at(project: Project, place: Place) -> Any:
 
 def add_record(project: Project, place: Place, record: object, index: int | None = None) -> Project:
     """The project with a record put into the list at `place`, before `index` or at its end."""
-    records = value_at(project, place)
-    at = len(records) if index is None else index
-    return set_value(project, place, (*records[:at], record, *records[at:]))
+
+    def grown(records: tuple[Any, ...], described: inspect.Type) -> tuple[Any, ...]:
+        assert isinstance(described, inspect.VarTupleType)  # noqa: S101 - for the type checker
+        at = len(records) if index is None else index
+        fresh = _setter((*place, at), record)(None, described.item_type)
+        return (*records[:at], fresh, *records[at:])
+
+    return consistent(_changed(project, project_type(), place, grown), project)
 
 
 def remove_records(project: Project, place: Place, indices: Iterable[int]) -> Project:
     """The project without the records at `indices` of the list at `place`."""
     gone = set(indices)
-    kept = [record for index, record in enumerate(value_at(project, place)) if index not in gone]
-    return set_value(project, place, kept)
+
+    def kept(records: tuple[Any, ...], _described: inspect.Type) -> tuple[Any, ...]:
+        return tuple(record for index, record in enumerate(records) if index not in gone)
+
+    return consistent(_changed(project, project_type(), place, kept), project)
 
 
 def _setter(place: Place, value: object) -> _Change:

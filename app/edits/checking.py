@@ -5,6 +5,7 @@ from __future__ import annotations
 from msgspec.inspect import VarTupleType
 
 from app.decode import convert, project_type
+from app.edits.soundness import is_surely_sound
 from app.encode import plain
 from solver import validation
 from solver.faults import Fault, Place, Rule, place_text
@@ -24,8 +25,14 @@ def refused(place: Place, rule: Rule, **facts: object) -> EditError:
     return EditError((Fault(place_text(place), rule, facts),))
 
 
-def consistent(project: Project) -> Project:
-    """The project itself, its single values being right already; EditError for faults of records together."""
+def consistent(project: Project, since: Project | None = None) -> Project:
+    """The project itself, its single values being right already; EditError for faults of records together.
+
+    `since` is a well-formed project that it was made from: only what has changed is then looked at, where
+    that is enough.
+    """
+    if since is not None and is_surely_sound(project, since):
+        return project
     faults = validation.faults(project)
     if faults:
         raise EditError(faults)
@@ -45,7 +52,7 @@ def checked(project: Project, since: Project | None = None) -> Project:
         _convert_new(project, since, faults)
     if faults:
         raise EditError(tuple(faults))
-    return consistent(project)
+    return consistent(project, since)
 
 
 def _convert_new(project: Project, since: Project, faults: list[Fault]) -> None:

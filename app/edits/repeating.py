@@ -14,7 +14,7 @@ from typing import TypeVar
 
 from msgspec import structs
 
-from app.edits.checking import checked, refused
+from app.edits.checking import consistent, refused
 from app.edits.copying import Marks, with_loads_copied
 from app.edits.records import FreshMarks
 from solver.model import Joint, Project, Segment
@@ -42,7 +42,7 @@ def repeat_segments(project: Project, first: int, last: int, times: int) -> Proj
         segments=_with(project.segments, last + 1, copies),
         joints=_with(project.joints, last + 1, chains),
     )
-    return checked(with_loads_copied(grown, segments, inner))
+    return consistent(with_loads_copied(grown, segments, inner), project)
 
 
 def _marks_of_copies(
