@@ -2,6 +2,7 @@
 
 import pytest
 from PySide6.QtCore import Qt
+from PySide6.QtGui import QGuiApplication
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QToolButton
 
@@ -83,3 +84,18 @@ def test_tab_out_of_the_tables_never_stands_on_a_command(window):
     for _ in range(60):
         chord(window.focusWidget(), KEY.Key_Tab, Qt.KeyboardModifier.NoModifier)
         assert window.focusWidget() not in buttons
+
+
+@pytest.mark.parametrize("wrong", ["abc", "", "-5", "1.234.567"])
+def test_a_pasted_row_whose_length_cannot_be_read_keeps_its_place_in_the_chain(window, table, wrong):
+    first = adding_row(window, "segments").table_model.record_rows
+    lines = [f"Length (mm)\tSection (mm)\n100\td41\n{wrong}\td42\n300\td43"]
+    QGuiApplication.clipboard().setText("\n".join(lines))
+    table.blocks.paste()
+    added = window.document.project.segments[first - 1 :]
+    assert [segment.section.diameter for segment in added] == [0.041, 0.042, 0.043]
+    assert [added[0].length, added[2].length] == [0.1, 0.3]
+    ((place, draft),) = window.document.snapshot.drafts.items()
+    assert place == ("segments", first, "length")
+    assert draft.text == wrong
+    assert not window.showing.current

@@ -138,6 +138,7 @@ class Adding:
     name: str  # of the undo step
     column: str  # the key of the column whose text adds a record when rows are pasted past the end
     offers: Offers | None = None
+    unread: Callable[[Project, Sight], Project] | None = None  # the record of a text that cannot be read
 
 
 @dataclass(frozen=True, slots=True)

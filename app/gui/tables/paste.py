@@ -1,7 +1,8 @@
 """A block of texts typed into a table at once: the cells on top of each other, for one undo step.
 
-Nothing that was pasted is lost unsaid: a cell that is no valid entry becomes a draft, and so does the first
-row that cannot be added; the note counts such rows, and passes on what single cells have to say.
+Nothing that was pasted is lost unsaid: a cell that is no valid entry becomes a draft, also the one by which
+its row is added where the row can be made without it, so that those behind keep their places. The first row
+that cannot be added becomes a draft of the adding one; the note counts such rows, and passes on what single cells have to say.
 """
 
 from __future__ import annotations
@@ -109,6 +110,9 @@ class Block:
         try:
             self._follow(self._grown(adding, text, whole=sum(map(bool, texts.values())) > 1))
         except TypingError as error:
+            if adding.unread is not None and texts.get(keys.index(adding.column)) is not None:
+                self._follow(Change(adding.unread(self._project, self._model.sight)))
+                return True  # its own cell then keeps the text, as a draft
             reason = reason_of(error, self._model.sight.system, self._adding_place())
             self._refused.append(Draft(text, reason, tr(adding.name)))
             return False

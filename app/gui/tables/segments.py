@@ -174,7 +174,13 @@ SEGMENTS = Table(
         project.segments[index].mark if index >= 0 else project.joints[0].mark
     ),
     records=lambda _sight: ("segments",),
-    adding=Adding(later("type a length to add a segment"), add_segment, later("Add segment"), "length"),
+    adding=Adding(
+        later("type a length to add a segment"),
+        add_segment,
+        later("Add segment"),
+        "length",
+        unread=lambda project, _sight: edits.insert_segment(project, len(project.segments)),
+    ),
     lead=1,
     total=total_line,
     delete=lambda project, indexes, _sight: edits.delete_segments(project, indexes),
