@@ -29,6 +29,7 @@ class Command:
     bar: str = ""
     tip: str = ""
     role: Role = Role.NoRole
+    also: str = ""  # a key beside the standard ones, on every system
     fallback: str = ""  # a key where the system names none for the standard one
 
 
@@ -63,7 +64,9 @@ COMMANDS: Final[tuple[Command, ...]] = (
     SEPARATOR,
     Command("quit", "&File", later("&Quit"), KEYS.Quit, role=Role.QuitRole, fallback="Ctrl+Q"),
     Command("undo", "&Edit", later("&Undo"), KEYS.Undo, later("Undo")),
-    Command("redo", "&Edit", later("&Redo"), KEYS.Redo, later("Redo"), fallback="Ctrl+Shift+Z"),
+    Command(
+        "redo", "&Edit", later("&Redo"), KEYS.Redo, later("Redo"), fallback="Ctrl+Shift+Z", also="Ctrl+Y"
+    ),
     SEPARATOR,
     Command("copy", "&Edit", later("&Copy"), KEYS.Copy),
     Command("copy_with_headings", "&Edit", later("Copy with &headings"), "Ctrl+Shift+C"),
@@ -145,7 +148,9 @@ def shortcuts_of(command: Command) -> list[QKeySequence]:
         return []
     if isinstance(command.shortcut, str):
         return [QKeySequence(command.shortcut)]
-    return QKeySequence.keyBindings(command.shortcut) or [QKeySequence(command.fallback)]
+    keys = QKeySequence.keyBindings(command.shortcut) or [QKeySequence(command.fallback)]
+    more = [QKeySequence(command.also)] if command.also else []
+    return keys + [key for key in more if key not in keys]
 
 
 def make_actions(parent: QObject, handlers: Mapping[str, Callable[[], None]]) -> dict[str, QAction]:

@@ -51,7 +51,8 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
 )
 FINDINGS_KEYS: Final[tuple[tuple[str, str], ...]] = (
     (later("Tab, Shift+Tab"), later("The next finding or the one before")),
-    ("Enter", later("Show the finding's place in the sheet")),
+    ("Space", later("Show the finding's place in the sheet")),
+    ("Enter", later("Show it and go on to the cell that would be changed")),
 )
 
 

@@ -9,7 +9,8 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QSizePolicy, QWidget
 from app.words import tr
 
 LEAST_WIDTH = 40
-NEWS_SHARE = 0.7  # of the line, at most
+FILE_SHARE = 0.25  # of the line, at most, is kept for the file's name
+NEWS_SHARE = 0.6  # of the line, at most
 
 
 class StatusLine(QWidget):
@@ -42,9 +43,15 @@ class StatusLine(QWidget):
         self._give_room()
         QAccessible.updateAccessibility(QAccessibleEvent(self.news, QAccessible.Event.NameChanged))
 
+    def name_file(self, text: str) -> None:
+        """The file's name and whether it has changed; it keeps its room beside any news."""
+        self.file.setText(text)
+        self._give_room()
+
     def _give_room(self) -> None:
-        needed = self.news.fontMetrics().horizontalAdvance(self.news.text()) + 2
-        self.news.setMinimumWidth(max(LEAST_WIDTH, min(needed, int(NEWS_SHARE * self.width()))))
+        for label, share in ((self.news, NEWS_SHARE), (self.file, FILE_SHARE)):
+            needed = label.fontMetrics().horizontalAdvance(label.text()) + 2
+            label.setMinimumWidth(max(LEAST_WIDTH, min(needed, int(share * self.width()))))
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The news' room follows the width."""

@@ -120,7 +120,9 @@ class Window(QMainWindow):
         self.help = Help(self)
 
     def _make_commands(self) -> None:
-        self.actions_by_key = make_actions(self, self._handlers())
+        self.actions_by_key = make_actions(
+            self, {key: self._begun(act) for key, act in self._handlers().items()}
+        )
         self.recent_menu = RecentMenu(self.store, self.files.open_path, self)
         self.samples_menu = SamplesMenu(self.files.open_sample, self)
         self.typical_menu = TypicalMenu(self.document, self.edits.add_typical, self)
@@ -157,6 +159,15 @@ class Window(QMainWindow):
         self.symbols.chosen.connect(self.placing.choose)
         self.taking_off.segments_asked.connect(self.edits.delete_segments)
         self.placing.kind_changed.connect(self.symbols.show_chosen)
+
+    def _begun(self, act: Callable[[], None]) -> Callable[[], None]:
+        """A command before which the news of the one before it go."""
+
+        def command() -> None:
+            self.status.tell("")
+            act()
+
+        return command
 
     def _handlers(self) -> dict[str, Callable[[], None]]:
         return {
@@ -284,7 +295,7 @@ class Window(QMainWindow):
         self.setWindowTitle(f"{name}[*] – Barwright")
         self.setWindowModified(modified)
         self.setWindowFilePath(str(path) if path else "")
-        self.status.file.setText(tr("{name}, changed").format(name=name) if modified else name)
+        self.status.name_file(tr("{name}, changed").format(name=name) if modified else name)
 
     def on_undo(self) -> None:
         """Back one step; what is in the hand or in an open editor is the step taken back first."""

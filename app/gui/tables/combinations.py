@@ -10,7 +10,7 @@ from app.gui.places import Place
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.materials import name_of, put_name
 from app.units import entry_text, format_value
-from app.words import later
+from app.words import later, tr
 from solver.model import Combination, Project
 
 
@@ -53,7 +53,9 @@ def columns(project: Project, _sight: Sight) -> tuple[Column, ...]:
 def _add(project: Project, text: str, _sight: Sight) -> Change:
     """A new combination takes every case once."""
     factors = {case.name: 1.0 for case in project.load_cases}
-    return Change(edits.add_record(project, ("combinations",), Combination(text.strip(), factors)))
+    combination = Combination(text.strip(), factors)
+    note = tr("“{name}” takes every load case with factor 1").format(name=combination.name) if factors else ""
+    return Change(edits.add_record(project, ("combinations",), combination), note)
 
 
 _NAME = Column("name", later("Combination"), name_of, name_of, put_name("combinations"), width=16)

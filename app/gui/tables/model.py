@@ -24,6 +24,7 @@ ERROR_ROLE = int(Qt.ItemDataRole.UserRole) + 1  # the reason why the cell's text
 BAR_ROLE = ERROR_ROLE + 1  # (utilisation, sign of the stress) or None
 HINT_ROLE = ERROR_ROLE + 2  # whether the text is a hint, not a value
 LIT_ROLE = ERROR_ROLE + 3  # whether the row is selected elsewhere
+LONGEST_CASE = 14  # letters of a load case's name in a heading; its tip has all
 STALE_ROLE = ERROR_ROLE + 4  # whether the figure is of an earlier edit
 
 
@@ -187,19 +188,35 @@ class TableModel(RowsModel):
         if role == Qt.ItemDataRole.DisplayRole:
             return "\n".join(self.heading(section))
         if role in (Qt.ItemDataRole.AccessibleTextRole, Qt.ItemDataRole.ToolTipRole):
-            return self.titled(section)
+            return self._whole_heading(section)
         if role == Qt.ItemDataRole.TextAlignmentRole:
             return int(Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)
         return None
 
     def heading(self, column: int) -> tuple[str, str]:
-        """A column's title and unit."""
+        """The two lines of a column's heading: its title, and its unit with the load case it belongs to."""
+        case, unit = self._case_of(column), self._unit_of(column)
+        if len(case) > LONGEST_CASE:
+            case = case[: LONGEST_CASE - 1] + "…"
+        return self._columns[column].words, " · ".join(filter(None, (unit, case)))
+
+    def _unit_of(self, column: int) -> str:
         quantity = self._columns[column].quantity
-        return self._columns[column].words, symbol(quantity, self._sight.system) if quantity else ""
+        return symbol(quantity, self._sight.system) if quantity else ""
+
+    def _case_of(self, column: int) -> str:
+        """The load case whose loads the column's cells are; empty for other columns."""
+        case = self._sight.load_case(self._document.project) if self._columns[column].of_case else None
+        return "" if case is None else case.name
+
+    def _whole_heading(self, column: int) -> str:
+        """Title, unit and load case in one line."""
+        case, titled = self._case_of(column), self.titled(column)
+        return tr("{column}, load case {case}").format(column=titled, case=case) if case else titled
 
     def titled(self, column: int) -> str:
         """Both in one line."""
-        title, unit = self.heading(column)
+        title, unit = self._columns[column].words, self._unit_of(column)
         return f"{title} ({unit})" if unit else title
 
     # Typing
@@ -319,7 +336,10 @@ class TableModel(RowsModel):
             reason = reason_of(error, self._sight.system, place)
             self._document.commit_draft(place, Draft(text, reason, name), name)
         else:
+            new = self.record_of(index.row()) if self.is_adding(index.row()) else None
             self._document.commit(change.project, name, settled=(place,))
+            if new is not None:
+                self.added.emit(new)
             self.tell_notes(column, text, change.note)
         return True
 

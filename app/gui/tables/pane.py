@@ -60,6 +60,7 @@ class TablesPane(QWidget):
         self._lay_out()
         self.on_document_changed(document.snapshot)
         document.changed.connect(self.on_document_changed)
+        self.views["load_cases"].table_model.added.connect(self.on_case_added)
         self.case_picker.activated.connect(self.on_case_picked)
         self.case_picker.left.connect(lambda: self.current_view().setFocus())
         view.selection_changed.connect(self.on_selection_changed)
@@ -202,6 +203,15 @@ class TablesPane(QWidget):
         """Edit the loads of another case; what is being typed belongs to the one before."""
         self.commit_open_editor()
         self._set_sight(Sight(self._sight.system, index))
+
+    def on_case_added(self, case: int) -> None:
+        """The loads typed next are those of the case just made."""
+        with QSignalBlocker(self.case_picker):
+            self.case_picker.setCurrentIndex(case)
+        self._set_sight(Sight(self._sight.system, case))
+        self.noted.emit(
+            tr("The tables now edit the loads of {case}").format(case=self.case_picker.currentText())
+        )
 
     def _set_sight(self, sight: Sight) -> None:
         self._sight = sight

@@ -2,7 +2,8 @@
 
 Nothing that was pasted is lost unsaid: a cell that is no valid entry becomes a draft, also the one by which
 its row is added where the row can be made without it, so that those behind keep their places. The first row
-that cannot be added becomes a draft of the adding one; the note counts such rows, and passes on what single cells have to say.
+that cannot be added becomes a draft of the adding one; the note counts such rows, and passes on what single
+cells have to say.
 """
 
 from __future__ import annotations

@@ -37,6 +37,7 @@ class RowsModel(QAbstractTableModel):
     """Rows and columns of one `Table` of the document, in the sight of now."""
 
     noted = Signal(str)  # a line about an edit that did more than it seems to
+    added = Signal(int)  # a record was typed into the row that adds, by its index
 
     def __init__(self, table: Table, document: Document, sight: Sight, parent: QObject | None = None) -> None:
         super().__init__(parent)

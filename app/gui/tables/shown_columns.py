@@ -10,7 +10,9 @@ from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QPoint, Qt
+from PySide6.QtGui import QAction, QKeyEvent, QMouseEvent
 from PySide6.QtWidgets import QMenu, QWidget
+from shiboken6 import isValid
 
 from app.gui.tables.column import Column
 from app.words import tr
@@ -95,17 +97,41 @@ class ShownColumns:
             menu.addAction(tr("all columns are shown")).setEnabled(False)
             return
         menu.addSeparator()
-        menu.addAction(tr("As at first"), lambda: self.restore(())).setEnabled(bool(self._turned))
+        back = menu.addAction(tr("As at first"), lambda: self.restore(()))
+        back.setEnabled(bool(self._turned))
+        menu.triggered.connect(lambda _action: back.setEnabled(bool(self._turned)) if isValid(back) else None)
 
     def on_asked(self, at: QPoint) -> None:
         """The menu of the headings."""
-        menu = QMenu(self._view)
+        menu = TickMenu(self._view)
         menu.aboutToHide.connect(menu.deleteLater)
         self.fill(menu)
         menu.popup(self._view.horizontalHeader().mapToGlobal(at))
 
 
-class ColumnsMenu(QMenu):
+class TickMenu(QMenu):
+    """Stays open while entries are ticked, by the mouse or the space bar."""
+
+    def mouseReleaseEvent(self, event: QMouseEvent) -> None:
+        """A tick is no end of the choosing."""
+        if not self._ticked(self.actionAt(event.position().toPoint())):
+            super().mouseReleaseEvent(event)
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        """Space ticks, Enter ticks and closes."""
+        if event.key() != Qt.Key.Key_Space or not self._ticked(self.activeAction()):
+            super().keyPressEvent(event)
+
+    @staticmethod
+    def _ticked(action: QAction | None) -> bool:
+        """Tick an entry that can be ticked; whether it was one."""
+        if action is None or not action.isCheckable() or not action.isEnabled():
+            return False
+        action.trigger()
+        return True
+
+
+class ColumnsMenu(TickMenu):
     """View > Columns: those of the table in front, listed anew each time."""
 
     def __init__(self, tables: TablesPane, parent: QWidget) -> None:
