@@ -13,6 +13,7 @@ import numpy as np
 from app.findings.records import JointDisplacement, JointReaction, StateBooks
 from app.numerals import decimals_for, fixed
 from app.phrases.notes import numerical_error_text
+from app.phrases.states import state_words
 from app.units import format_value, symbol, to_display
 from solver.arrays import FloatArray
 from solver.model import UnitSystemName
@@ -39,7 +40,7 @@ def _books(results: Results, index: int, state: State, bedded: bool, system: Uni
     )
     column = _Column(np.array([*reactions[np.isfinite(reactions)], loads, bedding]), system)
     return StateBooks(
-        name=state.name,
+        name=state_words(state.name),
         kind=state.kind,
         reactions=_reactions(results, reactions, column),
         reactions_text=column.text(float(np.nansum(reactions))),
@@ -81,7 +82,7 @@ def _energy(value: float, system: UnitSystemName) -> str:
 
 def displacements(results: Results, system: UnitSystemName) -> tuple[JointDisplacement, ...]:
     """For each joint the displacement of largest size among the checked states."""
-    states = [state.name for state in results.states if state.checked]
+    states = [state_words(state.name) for state in results.states if state.checked]
     moved = results.solution.joint_displacement[: len(states)]
     worst = np.argmax(np.abs(moved), axis=0).tolist()
     return tuple(

@@ -10,7 +10,7 @@ from app.words import tr
 
 LEAST_WIDTH = 40
 FILE_SHARE = 0.25  # of the line, at most, is kept for the file's name
-NEWS_SHARE = 0.6  # of the line, at most
+NEWS_SHARE = 0.7  # of the line, at most
 
 
 class StatusLine(QWidget):
@@ -49,9 +49,17 @@ class StatusLine(QWidget):
         self._give_room()
 
     def _give_room(self) -> None:
-        for label, share in ((self.news, NEWS_SHARE), (self.file, FILE_SHARE)):
-            needed = label.fontMetrics().horizontalAdvance(label.text()) + 2
-            label.setMinimumWidth(max(LEAST_WIDTH, min(needed, int(share * self.width()))))
+        kept = self._keep(self.file, int(FILE_SHARE * self.width()))
+        around = self.layout().contentsMargins()
+        used = around.left() + around.right() + 2 * self.layout().spacing() + LEAST_WIDTH + kept
+        self._keep(self.news, min(int(NEWS_SHARE * self.width()), self.width() - used))
+
+    @staticmethod
+    def _keep(label: QLabel, most: int) -> int:
+        """Give a label the room that it needs, up to so much; returns it."""
+        needed = label.fontMetrics().horizontalAdvance(label.text()) + 2
+        label.setMinimumWidth(max(LEAST_WIDTH, min(needed, most)))
+        return label.minimumWidth()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The news' room follows the width."""

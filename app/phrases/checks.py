@@ -11,6 +11,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from typing import Final, Literal
 
 from app.numerals import rounded
+from app.phrases.states import state_words
 from app.units import Quantity, format_value, symbol, to_display, utilisation_text
 from app.words import later, tr, trn
 from solver.checks import Check, CheckKind, Reason, Status
@@ -132,7 +133,7 @@ def not_made_sentence(check: Check) -> str:
     subject = tr(SUBJECTS[check.check]).format(**_names(check))
     sentence = tr("{subject} not checked, {combination}: {reason}")
     reason = reason_text(check.reason) if check.reason else tr("it could not be made")
-    return sentence.format(subject=subject, combination=check.combination, reason=reason)
+    return sentence.format(subject=subject, combination=state_words(check.combination), reason=reason)
 
 
 def reason_text(reason: Reason) -> str:
@@ -198,7 +199,7 @@ def _names(check: Check) -> dict[str, str | None]:
         "joint": check.joint,
         "start": check.start,
         "end": check.end,
-        "combination": check.combination,
+        "combination": state_words(check.combination),
     }
 
 

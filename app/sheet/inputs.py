@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 
 from msgspec import UnsetType
+from msgspec.structs import replace
 
 from app.numerals import MINUS
 from app.section_entry import section_text
@@ -45,7 +46,7 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
     yield _joints(project, results, say)
     if not project.load_cases:
         yield paragraph(tr("There are no load cases: the member is unloaded."))
-    for case in project.load_cases:
+    for case in (_in_chain_order(case, project) for case in project.load_cases):
         figure = member_figure(project, results.position, loads, alone[case.name], chain=False)
         yield from _load_case(case, figure, say)
     yield from _combinations(project, say)
@@ -61,13 +62,15 @@ def _materials(project: Project, say: Readings) -> Block:
         column(tr("Allowable in tension"), say.unit("stress")),
         column(tr("Allowable in compression"), say.unit("stress")),
     ]
-    return table(tr("Materials"), columns, [_material_row(m, say) for m in project.materials])
+    used = {segment.material for segment in project.segments}
+    rows = [_material_row(m, say, used=m.name in used) for m in project.materials]
+    return table(tr("Materials"), columns, rows)
 
 
-def _material_row(material: Material, say: Readings) -> list[str]:
+def _material_row(material: Material, say: Readings, *, used: bool) -> list[str]:
     allowables = (material.allowable_tension, material.allowable_compression)
     return [
-        material.name,
+        material.name if used else tr("{name} (not used)").format(name=material.name),
         say.exact(material.modulus, "modulus"),
         say.exact(material.expansion, "expansion"),
         say.exact(material.density, "density"),
@@ -137,6 +140,17 @@ def support_words(joint: Joint, say: Readings) -> str:
             return tr("stop against {sense}, clearance {gap}").format(sense=sense, gap=gap)
         case _:
             return tr("free")
+
+
+def _in_chain_order(case: LoadCase, project: Project) -> LoadCase:
+    """The case with its loads in the order of the chain, in which a checker goes through them."""
+    segments = [segment.mark for segment in project.segments]
+    joints = [joint.mark for joint in project.joints]
+    return replace(
+        case,
+        segment_loads=tuple(sorted(case.segment_loads, key=lambda load: segments.index(load.segment))),
+        joint_loads=tuple(sorted(case.joint_loads, key=lambda load: joints.index(load.joint))),
+    )
 
 
 def _load_case(case: LoadCase, figure: Figure, say: Readings) -> Iterator[Block]:

@@ -12,6 +12,7 @@ from typing import Final
 
 from msgspec import structs
 
+from app.phrases.states import state_words
 from app.sheet.printable import shortened
 from solver.checks import Check
 from solver.model import LoadCase, Project
@@ -35,7 +36,8 @@ class _Names:
 def with_short_names(results: Results) -> Results:
     """The same results with long names cut; the very same object where none is long."""
     names = _names_of(results.project)
-    if all(old == new for mapping in _mappings(names) for old, new in mapping.items()):
+    ours = any(state_words(state.name) != state.name for state in results.states)
+    if not ours and all(old == new for mapping in _mappings(names) for old, new in mapping.items()):
         return results
     return dataclasses.replace(
         results,
@@ -43,7 +45,7 @@ def with_short_names(results: Results) -> Results:
         states=tuple(
             dataclasses.replace(
                 state,
-                name=_of_kind(names, state.kind).get(state.name, state.name),
+                name=_of_kind(names, state.kind).get(state.name, state_words(state.name)),
                 factors={names.cases.get(name, name): value for name, value in state.factors.items()},
             )
             for state in results.states
@@ -130,7 +132,9 @@ def _case(case: LoadCase, names: _Names) -> LoadCase:
 def _check(check: Check, names: _Names) -> Check:
     return structs.replace(
         check,
-        combination=(names.combinations or names.cases).get(check.combination, check.combination),
+        combination=(names.combinations or names.cases).get(
+            check.combination, state_words(check.combination)
+        ),
         segment=None if check.segment is None else names.segments[check.segment],
         joint=None if check.joint is None else names.joints[check.joint],
         start=None if check.start is None else names.joints[check.start],

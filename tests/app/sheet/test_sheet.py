@@ -16,13 +16,16 @@ from hypothesis import given
 from msgspec import UNSET, structs
 from pypdf import PdfReader
 
+from app.findings import findings
 from app.phrases import caution
 from app.project_file import dump, sha256
 from app.results_file import results_json
 from app.samples import names, read_sample
 from app.sheet import build_sheet
 from app.sheet.content import sheet_content
+from app.sheet.short_names import with_short_names
 from app.sheet.title import Origin, title_block
+from app.words import use_language
 from solver.model import (
     FORMAT,
     VERSION,
@@ -459,3 +462,35 @@ def test_a_sheet_of_a_changed_project_does_not_claim_to_be_the_files() -> None:
     assert "a.json, changed since it was saved" in texts[1]
     assert "project as saved" not in texts[1]
     assert "SHA-256 of the project as printed, in the form in which it is saved" in texts[1]
+
+
+def test_loads_stand_in_the_order_of_the_chain_and_an_unused_material_is_marked() -> None:
+    project = read_sample("tie_rod")
+    case = project.load_cases[0]
+    marks = [segment.mark for segment in project.segments]
+    loads = tuple(SegmentLoad(mark, 100.0) for mark in reversed(marks))
+    idle = structs.replace(project.materials[0], name="Idle")
+    changed = structs.replace(
+        project,
+        materials=(*project.materials, idle),
+        load_cases=(structs.replace(case, segment_loads=loads), *project.load_cases[1:]),
+    )
+    said = content(changed)["blocks"]
+    tables = {block["title"]: block for block in reversed(said) if block["kind"] == "table"}
+    assert [row[0] for row in tables["On segments"]["rows"]] == marks
+    names = [row[0] for row in tables["Materials"]["rows"]]
+    assert names == [*(m.name for m in project.materials), "Idle (not used)"]
+
+
+def test_the_name_of_the_unloaded_state_is_in_the_language_of_the_sheet() -> None:
+    project = structs.replace(read_sample("tie_rod"), load_cases=(), combinations=())
+    use_language("de")
+    try:
+        shown = with_short_names(solve(project, cases=False))
+        found = str(sheet_content(shown.project, shown, Origin("f", "2026-03-14", "p", "0" * 64)))
+        said = str(findings(shown, "mm-N-MPa"))
+    finally:
+        use_language("en")
+    assert "in Unloaded" not in said
+    assert "Unloaded" not in found
+    assert "Unbelastet" in found
