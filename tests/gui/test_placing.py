@@ -3,10 +3,10 @@
 import pytest
 from msgspec import UNSET
 from msgspec.structs import replace
-from PySide6.QtCore import QPoint, Qt
-from PySide6.QtGui import QContextMenuEvent
+from PySide6.QtCore import QEvent, QPoint, Qt
+from PySide6.QtGui import QContextMenuEvent, QHelpEvent
 from PySide6.QtTest import QTest
-from PySide6.QtWidgets import QApplication
+from PySide6.QtWidgets import QApplication, QToolTip
 
 from app.gui.view import Selection, Shown
 from app.hand.kinds import KINDS
@@ -286,3 +286,14 @@ def test_the_strip_is_one_stop_of_the_tab_key(window):
     assert not any(button.hasFocus() for button in strip.buttons.values())
     strip.setFocus(Qt.FocusReason.TabFocusReason)
     assert second.hasFocus()
+
+
+def test_the_tip_of_a_symbol_stands_beside_the_strip(qtbot, window):
+    button = window.symbols.buttons["fixed"]
+    middle = button.rect().center()
+    QApplication.sendEvent(button, QHelpEvent(QEvent.Type.ToolTip, middle, button.mapToGlobal(middle)))
+    qtbot.waitUntil(QToolTip.isVisible)
+    (tip,) = [w for w in QApplication.topLevelWidgets() if w.inherits("QTipLabel") and w.isVisible()]
+    right = window.symbols.mapToGlobal(window.symbols.rect().topRight()).x()
+    assert tip.geometry().left() >= right - 8
+    QToolTip.hideText()

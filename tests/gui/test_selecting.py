@@ -133,3 +133,13 @@ def test_a_selection_extends_from_the_nearest(sign):
     assert chosen.extended(wanted).segments == frozenset(
         range(min(10, 10 + 3 * sign), max(10, 10 + 3 * sign) + 1)
     )
+
+
+def test_a_joint_that_is_selected_leaves_no_segment_chosen_in_the_tables(window):
+    click(window, middle_of(window, 2) + QPoint(14, 0))
+    segments, joints = window.tables.views["segments"], window.tables.views["joints"]
+    assert segments.chosen_records() == (2,)
+    click(window, joint_at(window, 4))
+    assert segments.chosen_records() == ()
+    assert joints.chosen_records() == (4,)
+    assert window.view.selection == Selection(joints=frozenset((4,)))

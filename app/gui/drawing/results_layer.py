@@ -29,6 +29,7 @@ from solver.arrays import FloatArray
 from solver.results import Results
 
 UNDER_Z, OVER_Z = 9.0, 11.0  # of the drawing, which has 10
+DISPLACED_Z = 12.5  # over the marks of what is selected, which would hide it
 STRONGEST = 0.42  # share of the ink in the darkest shade, on which marks still stand out
 BEYOND = 40.0  # px, as far as the displaced shape may reach out of the window
 
@@ -191,7 +192,7 @@ class Displaced(Painted):
     """The displaced outline, thin, over the drawing."""
 
     def __init__(self, theme: Theme) -> None:
-        super().__init__(theme, OVER_Z)
+        super().__init__(theme, DISPLACED_Z)
         self.strokes: tuple[Stroke, ...] = ()
         self._place: Place | None = None
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it

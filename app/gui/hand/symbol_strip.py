@@ -5,9 +5,9 @@ A chosen symbol is in the hand until it is put down; the strip only shows which 
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, QSize, Qt, Signal
+from PySide6.QtCore import QEvent, QPoint, QSize, Qt, Signal
 from PySide6.QtGui import QKeyEvent
-from PySide6.QtWidgets import QToolButton, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QToolButton, QToolTip, QVBoxLayout, QWidget
 
 from app.gui.hand.symbol_icon import symbol_icon
 from app.gui.theme import Theme, theme_for
@@ -15,6 +15,7 @@ from app.hand.kinds import KINDS, Kind
 from app.words import later, tr
 
 LEAST_BUTTON = 26  # px, above the 24 that WCAG 2.5.8 calls easy to hit
+TIP_ASIDE = QPoint(4, -18)  # px; a tip stands below the point it is given, and would hide the next symbol
 GOES_ON = {
     "joint": later("{name}: choose it, then click a joint; the key {letter} puts it on the selected joints"),
     "segment": later(
@@ -100,7 +101,11 @@ class SymbolStrip(QWidget):
             self._dress()
 
     def eventFilter(self, button: QWidget, event: QEvent) -> bool:
-        """Up and Down go to the next button; Enter presses it like Space does."""
+        """Up and Down go to the next button; Enter presses it like Space does; tips stand beside."""
+        if event.type() == QEvent.Type.ToolTip:
+            beside = button.mapToGlobal(QPoint(button.width() + TIP_ASIDE.x(), TIP_ASIDE.y()))
+            QToolTip.showText(beside, button.toolTip(), button)
+            return True
         if event.type() == QEvent.Type.KeyPress and isinstance(event, QKeyEvent):
             steps = {Qt.Key.Key_Up: -1, Qt.Key.Key_Down: 1}.get(Qt.Key(event.key()), 0)
             if steps:

@@ -280,7 +280,9 @@ class TableView(QTableView):
         self.choose_records(frozenset((record,)))
 
     def choose_records(self, records: frozenset[int]) -> None:
-        """Choose these records' rows in the column that is current, unless they are chosen already."""
+        """Choose these records' rows in the column that is current, unless they are already; or none."""
+        if not records and self.chosen_records():
+            self.clearSelection()
         column, model = max(self.currentIndex().column(), 0), self.table_model
         cells = [model.index(model.row_of(record), column) for record in sorted(records)]
         cells = [index for index in cells if index.isValid()]
