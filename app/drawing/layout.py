@@ -5,8 +5,9 @@ Needs no window and no paper: only a ruler, a box and the measure of texts.
 
 from __future__ import annotations
 
-from app.drawing.body import aim_at_joints, draw_body
+from app.drawing.body import aim_at_joints, draw_body, edge_at
 from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_width
+from app.drawing.crowded import say_left_out
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
@@ -17,6 +18,9 @@ from app.drawing.supports import draw_supports
 from app.units import format_value
 from app.words import tr
 
+NOTE_INSET = 6.0  # px, of a note from the edge of the drawing
+HANGING = 13.0  # upright, from the line that supports hang on to what is said under them
+BESIDE_WALL = 10.0  # upright, from what is said under the member to what holds its foot
 BESIDE_AXIS = 24.0  # upright, from what is said under the member to its axis
 
 
@@ -52,6 +56,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     aim_at_joints(sketch)
     _set_edge(sketch)
     _keep_legend(sketch)
+    say_left_out(sketch)
     return sketch
 
 
@@ -98,11 +103,19 @@ def _draw_scales(sketch: Sketch) -> None:
     foot = sketch.frame.box.bottom - 2.0 - (sketch.frame.detail.legend[1] if legend_below(sketch) else 0.0)
     said = said_of(sketch)
     if sketch.frame.upright:
-        said = sketch.in_lines(said, "small", sketch.point(0.0, sketch.rows.axis)[0] - BESIDE_AXIS)
+        said = sketch.in_lines(said, "small", _said_width(sketch))
     for line in (*reversed(said.split("\n")), text):
         if line:
             foot -= sketch.frame.measure(line, "small")[1]
             _note(sketch, line, foot, index=-1)
+
+
+def _said_width(sketch: Sketch) -> float:
+    """Upright, how far texts at the foot may reach: up to the axis, or to what hangs beside it."""
+    hanging = sketch.rows.under_label[1] > sketch.rows.under_label[0]
+    aside = max(edge_at(sketch, 0) + BESIDE_WALL, BESIDE_AXIS)
+    end = sketch.rows.under + HANGING if hanging else sketch.rows.axis + aside
+    return sketch.point(0.0, end)[0] - sketch.frame.box.left - NOTE_INSET
 
 
 def _keep_legend(sketch: Sketch) -> None:
@@ -133,6 +146,6 @@ def _draw_no_loads(sketch: Sketch) -> None:
 
 def _note(sketch: Sketch, text: str, top: float, index: int) -> None:
     width, height = sketch.frame.measure(text, "small")
-    left = sketch.frame.box.left + 6.0
+    left = sketch.frame.box.left + NOTE_INSET
     box = Box(left, top, left + width, top + height)
     sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", index)))

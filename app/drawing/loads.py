@@ -11,7 +11,7 @@ from itertools import groupby
 import numpy as np
 from msgspec.structs import replace
 
-from app.drawing.placing import Span, Wish
+from app.drawing.placing import CLEAR, STACKED, Span, Wish
 from app.drawing.shapes import Part, PartKind, Point
 from app.drawing.sketch import Sketch
 from app.drawing.supports import support_of
@@ -32,6 +32,7 @@ from solver.model import UnitSystemName, end_of
 ARROW = 32.0  # length of the arrow of a joint force, px
 LEAST_ARROW = 13.0
 HEAD = 5.0
+GRAVITY_RANK = 2  # before what is said of many segments
 LEAST_BAND = 5.0  # height of the smallest distributed load, px
 HIGHEST_BAND = 60.0  # while a load is pulled beyond its row
 
@@ -45,7 +46,7 @@ def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
         _draw_forces(sketch, sketch.member.loads.joint_force[0])
     rows = sketch.rows.labels
     others = sketch.texts_in(rows)
-    for label in sketch.placed(wishes, rows):
+    for label in sketch.placed(wishes, rows, STACKED if sketch.frame.upright else CLEAR):
         if not sketch.is_free(label.wish, label.span, rows[label.row], "high", others):
             sketch.picture.left_out += 1
         elif label.wish.part.kind == "force":
@@ -64,8 +65,8 @@ def load_wishes(sketch: Sketch) -> list[Wish]:
     wishes += _distributed_wishes(sketch, loads.distributed[0])
     wishes += _movement_wishes(sketch, loads.movement[0])
     system = sketch.member.system
-    wishes += _run_wishes(sketch, _misfits(loads, system), "fit", rank=2)
-    wishes += _run_wishes(sketch, _warmths(loads, system), "warmth", rank=3)
+    wishes += _run_wishes(sketch, _misfits(loads, system), "fit", rank=3)
+    wishes += _run_wishes(sketch, _warmths(loads, system), "warmth", rank=4)
     return wishes + _gravity_wishes(sketch, float(loads.gravity[0]))
 
 
@@ -296,7 +297,7 @@ def _bedding_wishes(sketch: Sketch) -> list[Wish]:
     for segment in sketch.member.project.segments:
         end = end_of(segment.bedding, segment.bedding_end)
         texts.append(bedding_text(segment.bedding, end, sketch.member.system))
-    return _run_wishes(sketch, texts, "bedding", rank=4)
+    return _run_wishes(sketch, texts, "bedding", rank=5)
 
 
 def _draw_bedding(sketch: Sketch) -> None:
@@ -320,5 +321,9 @@ def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
     text = gravity_text(gravity, sketch.member.system)
     if not text:
         return []
-    middle = 0.5 * (sketch.window[0] + sketch.window[1])
-    return [sketch.wish(text, middle, Part("gravity", 0), rank=5, slide=sketch.window[1] - sketch.window[0])]
+    low, high = sketch.room if sketch.frame.upright else sketch.window
+    middle = 0.5 * (low + high)
+    wish = sketch.wish(text, middle, Part("gravity", 0), rank=GRAVITY_RANK, slide=high - low)
+    if not sketch.frame.upright:
+        return [wish]
+    return [replace(wish, along=low)]  # slides down from the top, where no segment needs the place

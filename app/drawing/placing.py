@@ -15,9 +15,10 @@ from operator import itemgetter
 
 from msgspec import Struct
 
-from app.drawing.shapes import Part
+from app.drawing.shapes import Face, Part
 
 CLEAR = 9.0  # least pixels between two labels in a row, so that they do not read as one
+STACKED = 3.0  # of labels of loads that stand under each other
 TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart
 Span = tuple[float, float]
 
@@ -32,6 +33,7 @@ class Wish(Struct, frozen=True):
     part: Part
     rank: int = 0
     slide: float = 0.0
+    face: Face = "small"
 
 
 class Placed(Struct, frozen=True):

@@ -11,9 +11,9 @@ from dataclasses import dataclass
 
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
 from app.drawing.frame import Frame
-from app.drawing.loads import bracketed, lies_outside, load_wishes, no_loads_text
+from app.drawing.loads import GRAVITY_RANK, bracketed, lies_outside, load_wishes, no_loads_text
 from app.drawing.member import Member
-from app.drawing.placing import TIGHT, Span, Wish, fits
+from app.drawing.placing import STACKED, TIGHT, Span, Wish, fits
 from app.drawing.sketch import Rows, Sketch
 from app.drawing.supports import hanging_wishes, hangs, support_of
 from app.drawing.words import not_to_scale
@@ -27,7 +27,7 @@ UNDER = 20.0  # the row of hanging supports
 THINNEST = 10.0  # of the thickest section, before lengths and sections give way, px
 EDGE = 10.0  # upright, between sections and the edge of the sheet
 BEDDING = 6.0  # for the hatch along the member
-BESIDE = 6.0  # between labels of hanging supports and lengths
+BESIDE = 6.0  # between labels of hanging supports and lengths, and between columns of labels of loads
 CHAIN = 7.0  # to either side of the dimension line
 FACTORS = (1.0, 1.2, 1.5, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0)  # of each power of ten
 AMPLE = 1e5  # across: room enough for any label, px
@@ -62,7 +62,9 @@ def no_rows() -> Rows:
 
 
 def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
-    """As many rows of labels as leave the member enough of the room across."""
+    """As many rows of labels as leave the member enough of the room across; upright columns as wide."""
+    if sketch.frame.upright:
+        return _rows_upright(sketch, wishes, room)
     for most in range(sketch.frame.detail.load_rows, 0, -1):
         rows = _rows_with(sketch, wishes, room, most)
         if rows.half >= (sketch.frame.detail.least_half if most > 1 else THINNEST):
@@ -70,19 +72,42 @@ def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
     return _rows_with(sketch, wishes, room, 0)
 
 
+def _rows_upright(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
+    """Columns of labels that leave the member enough: the narrower, the more lines a label takes."""
+    column = sketch.frame.detail.column * room
+    rows = _rows_with(sketch, wishes, room, 1, column)
+    missing = 2.0 * (sketch.frame.detail.least_half - rows.half)
+    if missing > 0.0:
+        taken = rows.labels[0][1] - rows.labels[-1][0]
+        least = _least_column(sketch, wishes.loads)
+        rows = _rows_with(sketch, wishes, room, 1, min(max(taken - missing, least), column))
+    return rows if rows.half >= THINNEST else _rows_with(sketch, wishes, room, 0, 0.0)
+
+
+def _least_column(sketch: Sketch, wishes: list[Wish]) -> float:
+    """What forces need in one line, and what all else that comes before warming needs in many."""
+    forces = [w.depth for w in wishes if w.part.kind == "force"]
+    words = [sketch.narrowed(w, 0.0).depth for w in wishes if w.rank <= GRAVITY_RANK]
+    return max((*forces, *words), default=0.0)
+
+
 def depth_for(member: Member, frame: Frame, half: float) -> float:
     """The room across that all labels need and a member whose thickest section has `half`, px."""
     sketch = Sketch(member, frame, no_rows(), zero=0.0, scale=0.0)
-    rows = _rows_with(sketch, Wishes.of(sketch), AMPLE, frame.detail.load_rows)
+    rows = _rows_with(sketch, Wishes.of(sketch), AMPLE, frame.detail.load_rows, frame.detail.column * AMPLE)
     return AMPLE - 2.0 * (rows.half - half)
 
 
-def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int) -> Rows:
+def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: float = 0.0) -> Rows:
     """The rows from both sides inward; the member gets what is left between them.
 
     Of labels of loads there are at most `most` rows; with 0 one, and one of lengths and of sections each.
+    Upright they have a width of `column` together.
     """
-    labels = _label_rows(sketch, wishes.loads, room, max(most, 1))
+    if sketch.frame.upright:
+        labels = _label_columns(sketch, wishes.loads, column)
+    else:
+        labels = _label_rows(sketch, wishes.loads, max(most, 1))
     brackets = _bracket_rows(sketch, labels[-1][1] + 2.0)
     top = brackets[-1][1] if brackets else labels[-1][1] + 2.0
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
@@ -111,22 +136,25 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int) -> Rows:
     )
 
 
-def _label_rows(sketch: Sketch, wishes: list[Wish], room: float, most: int) -> tuple[Span, ...]:
-    """As many rows as the labels of loads need, up to `most`; upright one column as wide as they are."""
-    first = 4.0 if sketch.frame.upright else 4.0 + _note_height(sketch)
+def _label_rows(sketch: Sketch, wishes: list[Wish], most: int) -> tuple[Span, ...]:
+    """As many rows as the labels of loads need, up to `most`."""
+    first = 4.0 + _note_height(sketch)
     if not wishes:
         return ((first, first),)
-    depth = max(w.depth for w in wishes)
-    if sketch.frame.upright:
-        forces = max((w.depth for w in wishes if w.part.kind == "force"), default=0.0)
-        column = sketch.frame.detail.column * room
-        column = min(max(column * most / sketch.frame.detail.load_rows, forces), column)
-        widest = max((w.depth for w in wishes if w.depth <= column), default=0.0)
-        return ((first, first + widest),)
-    count = 1
+    depth, count = max(w.depth for w in wishes), 1
     while count < most and not fits(wishes, count, sketch.room):
         count += 1
     return tuple((first + i * depth, first + (i + 1) * depth) for i in range(count))
+
+
+def _label_columns(sketch: Sketch, wishes: list[Wish], width: float) -> tuple[Span, ...]:
+    """Upright: a column as wide as the labels of loads, and others beside it while they are of use."""
+    fitting = [w for wish in wishes if (w := sketch.narrowed(wish, width)).depth <= width]
+    widest, count = max((w.depth for w in fitting), default=0.0), 1
+    step = widest + BESIDE
+    while count * step + widest <= width and not fits(fitting, count, sketch.room, STACKED):
+        count += 1
+    return tuple((4.0 + i * step, 4.0 + i * step + widest) for i in range(count))
 
 
 def _bracket_rows(sketch: Sketch, first: float) -> tuple[Span, ...]:

@@ -13,6 +13,7 @@ from itertools import pairwise
 from typing import Literal, TypeAlias
 
 import numpy as np
+from msgspec.structs import replace
 
 from app.drawing.frame import Frame
 from app.drawing.member import Member
@@ -195,7 +196,15 @@ class Sketch:
         if self.frame.upright:
             text = self.in_lines(text, face, LONGEST_LINE * self.frame.measure("0", face)[0])
         extent, depth = self.extents(text, face)
-        return Wish(text, along, extent, depth, part, rank, slide)
+        return Wish(text, along, extent, depth, part, rank, slide, face)
+
+    def narrowed(self, wish: Wish, widest: float) -> Wish:
+        """The label in more lines where it is too wide for its column (upright) and has words to break at."""
+        if not self.frame.upright or wish.depth <= widest:
+            return wish
+        text = self.in_even_lines(wish.text.replace("\n", " "), wish.face, widest)
+        extent, depth = self.extents(text, wish.face)
+        return replace(wish, text=text, extent=extent, depth=depth)
 
     def in_lines(self, text: str, face: Face, widest: float) -> str:
         """The text with line breaks at spaces, so that it stays within a width."""
@@ -208,10 +217,20 @@ class Sketch:
                 lines[-1] = longer
         return "\n".join(lines)
 
+    def in_even_lines(self, text: str, face: Face, widest: float) -> str:
+        """As few lines as a width allows, none much longer than the others: no unit is left alone."""
+        found = narrower = self.in_lines(text, face, widest)
+        while narrower.count("\n") == found.count("\n"):
+            found = narrower
+            narrower = self.in_lines(text, face, self.frame.measure(found, face)[0] - 1.0)
+            if narrower == found:
+                break
+        return found
+
     def placed(self, wishes: list[Wish], rows: tuple[Span, ...], clear: float = CLEAR) -> list[Placed]:
         """Places for labels in rows; those wider than a row (upright) are dropped like those without room."""
-        widest = max((high - low for low, high in rows), default=0.0)
-        fitting = [w for w in wishes if w.depth <= widest + 0.5]
+        widest = max((high - low for low, high in rows), default=0.0) + 0.5
+        fitting = [w for wish in wishes if (w := self.narrowed(wish, widest)).depth <= widest]
         found = place(fitting, len(rows), self.room, clear)
         self.picture.left_out += len(wishes) - len(found)
         return found

@@ -19,7 +19,7 @@ from solver.arrays import FloatArray
 from solver.sections import outline
 
 LEAST_HALF = 2.0  # pixels, as the body is drawn
-STEP_WIDTH, BAR = 9.0, 8.0  # of the scale, px
+STEP_WIDTH, BAR, GAP = 9.0, 8.0, 5.0  # of the scale, px
 SAMPLES = 6  # of a stretch whose edge may be curved
 
 
@@ -91,27 +91,55 @@ def _scale(
     """From the largest compression through 0 to the largest tension, numbers at the ends."""
     if picture.legend is None:
         return [], ()
-    box = picture.legend
-    height = frame.measure("0", "small")[1]
-    middle = box.bottom - 0.5 * height
-    ends = _ends(shown)
-    number = format_value(shown.largest, shown.quantity, member.system, strip=True)
-    before, after = (f"{sign}{number}" if of in ends else "" for sign, of in (("−", -1), ("+", 1)))
-    title = scale_title(shown, member)
-    width = frame.measure(title, "small")[0]
-    found = [Text(Box(box.left, box.top, box.left + width, box.top + height), title, "small", "quiet")]
-    at = box.left if frame.upright else box.left + width + 5.0
-    tints: list[Tint] = []
-    for text in (before or "0", None, after or "0"):
-        if text is None:
-            tints, at = _bar(at, middle, ends)
-        else:
-            width = frame.measure(text, "small")[0]
-            place = Box(at, middle - 0.5 * height, at + width, middle + 0.5 * height)
-            found.append(Text(place, text, "small", "quiet"))
-            at += width
-        at += 5.0
-    return tints, tuple(found)
+    return (
+        _upright_scale(frame, picture.legend, shown, member)
+        if frame.upright
+        else _flat_scale(frame, picture.legend, shown, member)
+    )
+
+
+def _flat_scale(frame: Frame, box: Box, shown: Graded, member: Member) -> tuple[list[Tint], tuple[Text, ...]]:
+    """In one line: title, number, steps, number."""
+    height = box.bottom - box.top
+    title, at = _word(frame, scale_title(shown, member), (box.left, box.top))
+    before, at = _word(frame, _numbers(shown, member)[0], (at + GAP, box.top))
+    tints, at = _bar(at + GAP, box.top + 0.5 * height, _ends(shown))
+    after, _ = _word(frame, _numbers(shown, member)[1], (at + GAP, box.top))
+    return tints, (title, before, after)
+
+
+def _upright_scale(
+    frame: Frame, box: Box, shown: Graded, member: Member
+) -> tuple[list[Tint], tuple[Text, ...]]:
+    """In three lines, as narrow as the dimensions beside it: title, numbers, steps."""
+    height = (box.bottom - box.top) / 3.0
+    title, _ = _word(frame, scale_title(shown, member), (box.left, box.top))
+    tints, right = _bar(
+        box.left, box.bottom - 0.5 * height, _ends(shown), _upright_step(member, frame, shown)
+    )
+    first, last = _numbers(shown, member)
+    before, _ = _word(frame, first, (box.left, box.top + height))
+    after, _ = _word(frame, last, (right - frame.measure(last, "small")[0], box.top + height))
+    return tints, (title, before, after)
+
+
+def _upright_step(member: Member, frame: Frame, shown: Graded) -> float:
+    """So wide that the numbers at the ends keep apart."""
+    numbers = GAP + sum(frame.measure(text, "small")[0] for text in _numbers(shown, member))
+    return max(STEP_WIDTH, numbers / (len(_ends(shown)) * STEPS))
+
+
+def _word(frame: Frame, text: str, corner: Point) -> tuple[Text, float]:
+    """A text from its top left corner on, and where it ends."""
+    width, height = frame.measure(text, "small")
+    (left, top), right = corner, corner[0] + width
+    return Text(Box(left, top, right, top + height), text, "small", "quiet"), right
+
+
+def _numbers(shown: Graded, member: Member) -> tuple[str, str]:
+    """What stands at the ends of the scale."""
+    number, ends = format_value(shown.largest, shown.quantity, member.system, strip=True), _ends(shown)
+    return (f"−{number}" if -1 in ends else "0", f"+{number}" if 1 in ends else "0")
 
 
 def _ends(shown: Graded) -> tuple[Sign, ...]:
@@ -119,15 +147,17 @@ def _ends(shown: Graded) -> tuple[Sign, ...]:
     return tuple(sign for sign in signs if (shown.value * sign > 0).any())
 
 
-def _bar(left: float, middle: float, ends: tuple[Sign, ...]) -> tuple[list[Tint], float]:
+def _bar(
+    left: float, middle: float, ends: tuple[Sign, ...], width: float = STEP_WIDTH
+) -> tuple[list[Tint], float]:
     """The steps of the scale, from compression to tension."""
     steps = [(sign, step) for sign in ends for step in _steps(sign)]
     tints = []
     for index, (sign, step) in enumerate(steps):
-        a, b = left + index * STEP_WIDTH, left + (index + 1) * STEP_WIDTH
+        a, b = left + index * width, left + (index + 1) * width
         top, foot = middle - 0.5 * BAR, middle + 0.5 * BAR
         tints.append(Tint(((a, top), (b, top), (b, foot), (a, foot)), sign, step))
-    return tints, left + len(steps) * STEP_WIDTH
+    return tints, left + len(steps) * width
 
 
 def _steps(sign: Sign) -> list[int]:
@@ -146,13 +176,13 @@ def scale_title(shown: Graded, member: Member) -> str:
 
 
 def legend_size(member: Member, frame: Frame, shown: Graded) -> tuple[float, float]:
-    """The room that the scale takes: beside its title, upright under it."""
-    number = format_value(shown.largest, shown.quantity, member.system, strip=True)
-    ends = len(_ends(shown))
-    texts = [*([f"+{number}"] * ends), *(["0"] * (2 - ends))]
+    """The room that the scale takes: beside its title, upright in two lines under it."""
     title, height = frame.measure(scale_title(shown, member), "small")
-    bar = sum(frame.measure(text, "small")[0] for text in texts) + ends * STEPS * STEP_WIDTH + 10.0
-    return (max(title, bar), 2.0 * height) if frame.upright else (title + 5.0 + bar, height)
+    ends = len(_ends(shown))
+    if frame.upright:
+        return max(title, ends * STEPS * _upright_step(member, frame, shown)), 3.0 * height
+    numbers = sum(frame.measure(text, "small")[0] for text in _numbers(shown, member))
+    return title + numbers + ends * STEPS * STEP_WIDTH + 3.0 * GAP, height
 
 
 def displaced_outline(

@@ -1,0 +1,82 @@
+"""The word that labels are left out: it stands in a free corner of the drawing, whatever else is there.
+
+A drawing that leaves out a load without saying so would pass for the whole of what acts. The word therefore
+takes the place of quieter labels where no corner is free.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from itertools import product
+from operator import itemgetter
+
+import numpy as np
+
+from app.drawing.shapes import Box, Part, Text
+from app.drawing.sketch import Sketch
+from app.words import tr, trn
+from solver.arrays import FloatArray
+
+INSET = 6.0  # px, from the edge of the drawing
+SHARES = (1.0, 0.5, 0.34, 0.25)  # of the words' length in one line, that lines may have
+STEP = 6.0  # px, between the places that are tried
+ASIDE = 24.0  # px, from another note, so that it does not read on
+WORTH = 100  # of the scale of colours, in labels
+SPACES = ("length", "joint")  # parts that are pointed at where nothing is drawn
+
+
+def say_left_out(sketch: Sketch) -> None:
+    """How many labels found no room, and how to see them."""
+    if sketch.picture.left_out and sketch.frame.detail.factor:
+        box, words = _place(sketch, left_out_words(sketch.picture.left_out))
+        standing = sketch.picture.texts
+        sketch.picture.texts[:] = [text for text in standing if not text.box.meets(box)]
+        sketch.picture.texts.append(Text(box, words, "small", "quiet", Part("note", -1)))
+
+
+def left_out_words(count: int) -> tuple[str, str]:
+    """The words, and those for where they are too long."""
+    words = trn("{count} label without room", "{count} labels without room", count).format(count=count)
+    return tr("{labels}: point at the parts, or zoom in").format(labels=words), words
+
+
+def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
+    """The first free box, in as few lines as fit there; where none is free the one over the least."""
+    taken = _taken(sketch)
+    found: list[tuple[int, Box, str]] = []
+    for text, share in product(words, SHARES):
+        width = share * sketch.frame.measure(text, "small")[0] + 1.0
+        lines = sketch.in_even_lines(text, "small", width)
+        for box in _corners(sketch.frame.box, *sketch.frame.measure(lines, "small")):
+            found.append((_met(box, taken), box, lines))
+            if not found[-1][0]:
+                return box, lines
+    _, box, lines = min(found, key=itemgetter(0))
+    return box, lines
+
+
+def _corners(room: Box, width: float, height: float) -> Iterator[Box]:
+    """Boxes of a size along the right edge from the foot up, then along the left edge."""
+    count = max(int((room.bottom - room.top - height - 4.0) / STEP), 0) + 1
+    for left in (room.right - INSET - width, room.left + INSET):
+        for index in range(count):
+            top = room.bottom - 2.0 - height - index * STEP
+            yield Box(left, top, left + width, top + height)
+
+
+def _taken(sketch: Sketch) -> FloatArray:
+    """The boxes of all that is drawn, (n, 4): texts, parts, the scale of colours."""
+    picture = sketch.picture
+    notes = [text.box for text in picture.texts if text.part is not None and text.part.kind == "note"]
+    boxes = [Box(b.left - ASIDE, b.top, b.right + ASIDE, b.bottom) for b in notes]
+    boxes += [text.box for text in picture.texts]
+    boxes += [target.box for target in picture.targets if target.part.kind not in SPACES]
+    boxes += [picture.legend] * WORTH if picture.legend is not None else []
+    return np.array([(b.left, b.top, b.right, b.bottom) for b in boxes])
+
+
+def _met(box: Box, taken: FloatArray) -> int:
+    """How many of these boxes a box meets."""
+    left, top, right, bottom = taken.T
+    apart = (left >= box.right) | (right <= box.left) | (top >= box.bottom) | (bottom <= box.top)
+    return len(taken) - int(np.count_nonzero(apart))

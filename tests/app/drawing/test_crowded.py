@@ -1,0 +1,117 @@
+"""Drawings with more to say than there is room for: the important first, and never silently less than all."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from itertools import combinations
+
+import pytest
+
+from app.drawing.crowded import left_out_words
+from app.drawing.frame import Detail
+from app.drawing.layout import lay_out
+from app.drawing.member import Member
+from app.drawing.overlay import graded
+from app.drawing.shapes import Box
+from app.drawing.tinting import legend_size, tinted
+from app.samples import names, read_sample
+from app.shown import Shown
+from solver.solve import solve
+from tests.app.drawing.frames import SIZES, window_frame
+from tests.drawn_members import all_members, drawn
+
+MEMBERS = all_members()
+BOTH_WAYS = pytest.mark.parametrize("upright", [False, True], ids=["across", "upright"])
+BOTH_SIZES = pytest.mark.parametrize("size", SIZES, ids=["small", "large"])
+DISPLACED = "displaced ×100"
+
+
+def around(stroke):
+    xs, ys = zip(*stroke.points, strict=True)
+    return Box(min(xs), min(ys), max(xs), max(ys))
+
+
+def everything_on(project, results, state, size, *, upright):
+    """The texts of a drawing with colours and displaced shape, its scale's among them, and the picture."""
+    shown = results.states[state]
+    member = Member.of(project, Shown(shown.kind, shown.name))
+    frame = window_frame(member, size, upright=upright)
+    of_force = graded(results, state, "force")
+    detail = Detail(hollow=True, words=DISPLACED, legend=legend_size(member, frame, of_force))
+    frame = replace(frame, detail=detail)
+    picture = lay_out(member, frame)
+    tinting = tinted(member, frame, picture, of_force)
+    return [*picture.texts, *tinting.texts], picture, tinting
+
+
+@pytest.mark.parametrize("name", names())
+@BOTH_WAYS
+@BOTH_SIZES
+def test_with_everything_on_no_text_lies_on_another_or_on_a_part(name, upright, size):
+    project = read_sample(name)
+    results = solve(project)
+    for state in range(len(results.states)):
+        if graded(results, state, "force") is None:
+            continue
+        texts, picture, _ = everything_on(project, results, state, size, upright=upright)
+        assert [(a.text, b.text) for a, b in combinations(texts, 2) if a.box.meets(b.box)] == []
+        notes = [t for t in texts if t.part is None or t.part.kind == "note"]
+        drawn_parts = [(stroke.part, around(stroke)) for stroke in picture.strokes if stroke.part is not None]
+        assert [(n.text, part) for n in notes for part, box in drawn_parts if n.box.meets(box)] == []
+
+
+@pytest.mark.parametrize("name", names())
+def test_upright_the_scale_of_colours_has_a_place(name):
+    project = read_sample(name)
+    results = solve(project)
+    states = [s for s in range(len(results.states)) if graded(results, s, "force") is not None]
+    for state in states:
+        texts, _, tinting = everything_on(project, results, state, SIZES[0], upright=True)
+        assert tinting.scale, results.states[state].name
+        assert any(t.text.startswith("N ") for t in texts)
+
+
+def warm_running(size, *, upright):
+    project = read_sample("hoist_shaft")
+    member = Member.of(project, Shown("combination", "Warm running"))
+    return lay_out(member, window_frame(member, size, upright=upright))
+
+
+def kinds(picture):
+    return [text.part.kind for text in picture.texts if text.part is not None]
+
+
+class TestUpright:
+    def test_forces_distributed_loads_movements_and_weight_come_before_warmth(self):
+        shown = kinds(warm_running(SIZES[0], upright=True))
+        assert [shown.count(kind) for kind in ("force", "distributed", "movement", "gravity")] == [1, 1, 1, 1]
+        assert shown.count("warmth") >= 6
+
+    def test_with_room_nothing_that_acts_is_left_out(self):
+        assert kinds(warm_running(SIZES[1], upright=True)).count("warmth") == 12
+
+    def test_a_label_is_broken_into_even_lines(self):
+        shown = warm_running(SIZES[0], upright=True)
+        broken = [t.text for t in shown.texts if t.part is not None and t.part.kind == "warmth"]
+        assert not any(line in ("K", "→") for text in broken for line in text.split("\n"))
+
+
+class TestLeftOut:
+    @pytest.mark.parametrize("name", MEMBERS)
+    @BOTH_WAYS
+    @BOTH_SIZES
+    def test_is_said_in_a_corner(self, name, upright, size):
+        member = drawn(MEMBERS[name])
+        frame = window_frame(member, size, upright=upright)
+        picture = lay_out(member, frame)
+        texts = [text.text.replace("\n", " ") for text in picture.texts]
+        said = [text for text in texts if "without room" in text]
+        assert len(said) == (1 if picture.left_out else 0)
+        assert all(text in left_out_words(picture.left_out) for text in said)
+
+    def test_not_on_paper_which_says_it_below(self):
+        member = drawn(MEMBERS["busy 40"])
+        frame = window_frame(member, SIZES[0], upright=False)
+        picture = lay_out(member, replace(frame, detail=Detail(factor=False)))
+        assert picture.left_out
+        assert not any("without room" in text.text for text in picture.texts)
