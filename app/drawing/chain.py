@@ -126,6 +126,8 @@ def draw_levels(sketch: Sketch, column: float) -> None:
     for label in place(wishes, 1, sketch.room, TIGHT):
         foot = label.span[1]
         box = Box(first, label.span[0], first + label.wish.depth, foot)
+        if label.wish.rank == MARK_RANK and any(text.box.meets(box) for text in sketch.picture.texts):
+            continue
         sketch.picture.texts.append(Text(box, label.wish.text, "small", "quiet", label.wish.part))
         if label.wish.rank < MARK_RANK:
             corners = (left, foot - 9.0), (left + 11.0, foot - 9.0), (left + 5.5, foot - 0.5)

@@ -22,7 +22,7 @@ SHARES = (1.0, 0.5, 0.34, 0.25)  # of the words' length in one line, that lines 
 STEP = 6.0  # px, between the places that are tried
 ASIDE = 24.0  # px, from another note, so that it does not read on
 WORTH = 100  # of the scale of colours, in labels
-SPACES = ("length", "joint")  # parts that are pointed at where nothing is drawn
+SPACES = ("joint",)  # parts that are pointed at where nothing is drawn
 
 
 def say_left_out(sketch: Sketch) -> None:
@@ -31,7 +31,7 @@ def say_left_out(sketch: Sketch) -> None:
         box, words = _place(sketch, left_out_words(sketch.picture.left_out))
         standing = sketch.picture.texts
         sketch.picture.texts[:] = [text for text in standing if not text.box.meets(box)]
-        sketch.picture.texts.append(Text(box, words, "small", "quiet", Part("note", -1)))
+        sketch.picture.texts.append(Text(box, words, "small", "quiet", Part("note", -2)))
 
 
 def left_out_words(count: int) -> tuple[str, str]:

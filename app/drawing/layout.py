@@ -102,20 +102,31 @@ def _draw_scales(sketch: Sketch) -> None:
     text = tr("across ×{factor}").format(factor=factor)
     foot = sketch.frame.box.bottom - 2.0 - (sketch.frame.detail.legend[1] if legend_below(sketch) else 0.0)
     said = said_of(sketch)
+    notes = _notes_up(sketch, [text, *said.split("\n")], foot)
     if sketch.frame.upright:
-        said = sketch.in_lines(said, "small", _said_width(sketch))
-    for line in (*reversed(said.split("\n")), text):
-        if line:
-            foot -= sketch.frame.measure(line, "small")[1]
-            _note(sketch, line, foot, index=-1)
+        for width in _said_widths(sketch):
+            notes = _notes_up(sketch, [text, *sketch.in_lines(said, "small", width).split("\n")], foot)
+            if not any(one.box.meets(other.box) for one in notes for other in sketch.picture.texts):
+                break
+    sketch.picture.texts += notes
 
 
-def _said_width(sketch: Sketch) -> float:
-    """Upright, how far texts at the foot may reach: up to the axis, or to what hangs beside it."""
+def _notes_up(sketch: Sketch, lines: list[str], foot: float) -> list[Text]:
+    """The lines from the last one at the foot up."""
+    notes = []
+    for line in filter(None, reversed(lines)):
+        foot -= sketch.frame.measure(line, "small")[1]
+        notes.append(_note(sketch, line, foot, index=-1))
+    return notes
+
+
+def _said_widths(sketch: Sketch) -> tuple[float, float]:
+    """Upright, how far texts at the foot may reach: up to what hangs beside the axis, else to the axis."""
     hanging = sketch.rows.under_label[1] > sketch.rows.under_label[0]
     aside = max(edge_at(sketch, 0) + BESIDE_WALL, BESIDE_AXIS)
     end = sketch.rows.under + HANGING if hanging else sketch.rows.axis + aside
-    return sketch.point(0.0, end)[0] - sketch.frame.box.left - NOTE_INSET
+    left = sketch.frame.box.left + NOTE_INSET
+    return sketch.point(0.0, end)[0] - left, sketch.point(0.0, sketch.rows.axis + BESIDE_AXIS)[0] - left
 
 
 def _keep_legend(sketch: Sketch) -> None:
@@ -141,11 +152,11 @@ def _draw_no_loads(sketch: Sketch) -> None:
     """Why no loads are drawn, in the corner."""
     text = no_loads_text(sketch)
     if text:
-        _note(sketch, text, sketch.frame.box.top + 4.0, index=0)
+        sketch.picture.texts.append(_note(sketch, text, sketch.frame.box.top + 4.0, index=0))
 
 
-def _note(sketch: Sketch, text: str, top: float, index: int) -> None:
+def _note(sketch: Sketch, text: str, top: float, index: int) -> Text:
     width, height = sketch.frame.measure(text, "small")
     left = sketch.frame.box.left + NOTE_INSET
     box = Box(left, top, left + width, top + height)
-    sketch.picture.texts.append(Text(box, text, "small", "quiet", Part("note", index)))
+    return Text(box, text, "small", "quiet", Part("note", index))

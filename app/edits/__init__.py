@@ -11,6 +11,7 @@ from app.edits.member import delete_segments, insert_segment, move_segments, rev
 from app.edits.mirroring import mirror_member
 from app.edits.parts import join_segments, split_segment
 from app.edits.renaming import (
+    number_joints,
     rename_case,
     rename_combination,
     rename_joint,
@@ -29,6 +30,7 @@ __all__ = [
     "join_segments",
     "mirror_member",
     "move_segments",
+    "number_joints",
     "remove_case",
     "remove_records",
     "rename_case",

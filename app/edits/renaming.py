@@ -33,14 +33,30 @@ def rename_joint(project: Project, old: str, new: str) -> Project:
     """The project with the joint marked `old` marked `new`, in loads and limits as well."""
     cases = _each(project.load_cases, lambda case: _records_of(case, "joint_loads", "joint", old, new))
     limits = project.limits
-    for key, end in (
-        ("displacement", "joint"),
-        ("relative", "start"),
-        ("relative", "end"),
-        ("reaction", "joint"),
-    ):
+    for key, end in LIMIT_JOINTS:
         limits = _records_of(limits, key, end, old, new)
     joints = _renamed(project.joints, "mark", old, new)
+    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits), project)
+
+
+def number_joints(project: Project) -> Project:
+    """The project with its joints that are numbers numbered 0…n along the chain; other marks stay.
+
+    A number stands for the joint's place in the chain, so joint 3 is the fourth, also behind one with a name.
+    All change at once, since one by one each would meet the one whose mark it takes.
+    """
+    marks = {
+        joint.mark: str(place)
+        for place, joint in enumerate(project.joints)
+        if joint.mark.isdecimal() and joint.mark != str(place)
+    }
+    if not marks:
+        return project
+    cases = _each(project.load_cases, lambda case: _marked(case, "joint_loads", "joint", marks))
+    limits = project.limits
+    for key, end in LIMIT_JOINTS:
+        limits = _marked(limits, key, end, marks)
+    joints = tuple(structs.replace(j, mark=marks.get(j.mark, j.mark)) for j in project.joints)
     return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits), project)
 
 
@@ -100,6 +116,18 @@ def _records_of(holder: _R, field: str, key: str, old: str, new: str) -> _R:
     records = getattr(holder, field)
     renamed = _renamed(records, key, old, new)
     return holder if renamed is records else structs.replace(holder, **{field: renamed})
+
+
+def _marked(holder: _R, field: str, key: str, marks: Mapping[str, str]) -> _R:
+    """The holder with all of these marks replaced at once in one of its lists; itself where it names none."""
+    records = getattr(holder, field, ())
+    if not any(getattr(record, key) in marks for record in records or ()):
+        return holder
+    renamed = [
+        structs.replace(record, **{key: marks.get(getattr(record, key), getattr(record, key))})
+        for record in records
+    ]
+    return structs.replace(holder, **{field: tuple(renamed)})
 
 
 def _each(cases: tuple[LoadCase, ...], change: Callable[[LoadCase], LoadCase]) -> tuple[LoadCase, ...]:

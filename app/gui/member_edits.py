@@ -131,6 +131,20 @@ class MemberEdits(QObject):
         self._tables.commit_open_editor()
         self._do(tr("Reverse member"), edits.reverse_member)
 
+    def number_joints(self) -> None:
+        """Joints that are numbers in order along the chain; those with names keep them."""
+        self._tables.commit_open_editor()
+        before = self._document.project
+        if edits.number_joints(before) is before:
+            self.told.emit(tr("the joints are in order; marks that are not numbers stay as they are"))
+            return
+        self._do(tr("Number joints"), edits.number_joints)
+        changed = sum(
+            a.mark != b.mark for a, b in zip(before.joints, self._document.project.joints, strict=True)
+        )
+        words = trn("{count} joint has another number now", "{count} joints have another number now", changed)
+        self.told.emit(words.format(count=changed))
+
     def add_typical(self, material: Material) -> None:
         """A typical material, with its row in front for the allowable stresses that it lacks."""
         self._tables.commit_open_editor()

@@ -202,6 +202,7 @@ class Window(QMainWindow):
             "repeat": self.shaping.repeat,
             "mirror": self.shaping.mirror,
             "reverse": self.edits.reverse,
+            "number_joints": self.edits.number_joints,
             "choose_case": self.tables.choose_case,
             **{
                 f"table_{place + 1}": lambda place=place: self.tables.open_tab(place)

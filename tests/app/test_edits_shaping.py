@@ -14,7 +14,19 @@ from app.edits import EditError
 from app.edits.records import FreshMarks
 from app.edits.repeating import MOST
 from app.project_file import dump, parse
-from solver.model import FixedSupport, Joint, JointLoad, LoadCase, Project, SpringSupport, StopSupport
+from solver.model import (
+    DisplacementLimit,
+    FixedSupport,
+    Joint,
+    JointLoad,
+    Limits,
+    LoadCase,
+    Project,
+    ReactionLimit,
+    RelativeLimit,
+    SpringSupport,
+    StopSupport,
+)
 from solver.solve import solve
 from tests.drawn_members import busy_member
 from tests.strategies import projects
@@ -193,3 +205,38 @@ def test_marks_given_out_many_at_a_time_are_looked_for_once():
     marks._taken = Counting(taken)
     assert marks.in_turn(3, "S4999") == ["S5000", "S5001", "S5002"]
     assert len(looked_at) < 5010
+
+
+# --- number the joints ---
+
+
+def with_joint_marks(project, *marks):
+    for index, mark in enumerate(marks):  # by way of marks that nobody has
+        project = edits.rename_joint(project, project.joints[index].mark, f"way {index} {mark}")
+    for index, mark in enumerate(marks):
+        project = edits.rename_joint(project, f"way {index} {mark}", mark)
+    return project
+
+
+@pytest.mark.parametrize(
+    ("before", "after"),
+    [
+        (["0", "2", "1", "3", "4"], ["0", "1", "2", "3", "4"]),
+        (["4", "3", "2", "1", "0"], ["0", "1", "2", "3", "4"]),
+        (["toe", "7", "bed", "03", "top 2"], ["toe", "1", "bed", "3", "top 2"]),
+    ],
+)
+def test_joints_that_are_numbers_are_numbered_in_order_with_all_that_names_them(before, after):
+    member = busy_member(4)
+    limits = Limits(
+        displacement=(DisplacementLimit(joint="1", limit=1e-3),),
+        relative=(RelativeLimit(start="0", end="3", limit=1e-3),),
+        reaction=(ReactionLimit(joint="2", limit=1e5),),
+    )
+    member = replace(member, limits=limits)
+    assert edits.number_joints(with_joint_marks(member, *before)) == with_joint_marks(member, *after)
+
+
+def test_joints_in_order_give_the_very_same_project():
+    member = busy_member(3)
+    assert edits.number_joints(member) is member

@@ -5,6 +5,7 @@ from msgspec.structs import replace
 from PySide6.QtCore import QPoint, Qt
 from PySide6.QtTest import QTest
 
+from app import edits
 from app.gui.view import Cursor, Selection
 from tests.gui.test_placing import click, joint_at, middle_of
 from tests.gui.test_sheet_view import move_mouse
@@ -105,6 +106,18 @@ def test_mirror_says_what_it_did(window):
     assert len(window.document.project.segments) == 2 * count
     assert "middle" in window.status.news.text()
     assert "limit" in window.status.news.text()
+
+
+def test_joints_are_numbered_in_order_in_one_step(window):
+    before = window.document.project
+    window.actions_by_key["number_joints"].trigger()
+    assert "in order" in window.status.news.text()
+    window.document.commit(edits.rename_joint(before, before.joints[2].mark, "99"), "another mark")
+    window.actions_by_key["number_joints"].trigger()
+    assert window.document.project.joints[2].mark == "2"
+    assert "1 joint" in window.status.news.text()
+    window.document.undo()
+    assert window.document.project.joints[2].mark == "99"
 
 
 def test_a_joint_is_inserted_at_the_cursor_and_equal_neighbours_joined_again(qtbot, window):
