@@ -55,6 +55,13 @@ def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
     return box, lines
 
 
+def free_box(sketch: Sketch, width: float, height: float) -> Box | None:
+    """A box of a size at an edge of the drawing that nothing else reaches into, if there is one."""
+    taken = _taken(sketch)
+    corners = _corners(sketch.frame.box, width, height)
+    return next((box for box in corners if not _met(box, taken)), None)
+
+
 def _corners(room: Box, width: float, height: float) -> Iterator[Box]:
     """Boxes of a size along the right edge from the foot up, then along the left edge."""
     count = max(int((room.bottom - room.top - height - 4.0) / STEP), 0) + 1

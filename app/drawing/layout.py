@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from app.drawing.body import aim_at_joints, draw_body, edge_at
 from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_width
-from app.drawing.crowded import say_left_out
+from app.drawing.crowded import free_box, say_left_out
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
@@ -145,7 +145,8 @@ def _keep_legend(sketch: Sketch) -> None:
     rights = box.left + 6.0 + width, _level_column(sketch) - 4.0
     free = (Box(right - width, top, right, top + height) for right in rights for top in tops)
     inside = (one for one in free if one.bottom <= box.bottom)
-    sketch.picture.legend = next((one for one in inside if not any(one.meets(t) for t in texts)), None)
+    corner_free = (one for one in inside if not any(one.meets(t) for t in texts))
+    sketch.picture.legend = next(corner_free, free_box(sketch, width, height))
 
 
 def _draw_no_loads(sketch: Sketch) -> None:

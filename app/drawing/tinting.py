@@ -19,7 +19,7 @@ from solver.arrays import FloatArray
 from solver.sections import outline
 
 LEAST_HALF = 2.0  # pixels, as the body is drawn
-STEP_WIDTH, BAR, GAP = 9.0, 8.0, 5.0  # of the scale, px
+STEP_WIDTH, BAR, GAP = 9.0, 6.0, 5.0  # of the scale, px
 SAMPLES = 6  # of a stretch whose edge may be curved
 
 
@@ -111,12 +111,10 @@ def _flat_scale(frame: Frame, box: Box, shown: Graded, member: Member) -> tuple[
 def _upright_scale(
     frame: Frame, box: Box, shown: Graded, member: Member
 ) -> tuple[list[Tint], tuple[Text, ...]]:
-    """In three lines, as narrow as the dimensions beside it: title, numbers, steps."""
-    height = (box.bottom - box.top) / 3.0
+    """As narrow as the dimensions under it: title, numbers, steps, one under the other."""
+    height = 0.5 * (box.bottom - box.top - BAR)
     title, _ = _word(frame, scale_title(shown, member), (box.left, box.top))
-    tints, right = _bar(
-        box.left, box.bottom - 0.5 * height, _ends(shown), _upright_step(member, frame, shown)
-    )
+    tints, right = _bar(box.left, box.bottom - 0.5 * BAR, _ends(shown), _upright_step(member, frame, shown))
     first, last = _numbers(shown, member)
     before, _ = _word(frame, first, (box.left, box.top + height))
     after, _ = _word(frame, last, (right - frame.measure(last, "small")[0], box.top + height))
@@ -176,11 +174,11 @@ def scale_title(shown: Graded, member: Member) -> str:
 
 
 def legend_size(member: Member, frame: Frame, shown: Graded) -> tuple[float, float]:
-    """The room that the scale takes: beside its title, upright in two lines under it."""
+    """The room that the scale takes: beside its title, upright under it."""
     title, height = frame.measure(scale_title(shown, member), "small")
     ends = len(_ends(shown))
     if frame.upright:
-        return max(title, ends * STEPS * _upright_step(member, frame, shown)), 3.0 * height
+        return max(title, ends * STEPS * _upright_step(member, frame, shown)), 2.0 * height + BAR
     numbers = sum(frame.measure(text, "small")[0] for text in _numbers(shown, member))
     return title + numbers + ends * STEPS * STEP_WIDTH + 3.0 * GAP, height
 
