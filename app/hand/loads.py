@@ -75,7 +75,7 @@ def force_grip(project: Project, joint: int, aim: Aim, total: float) -> Grip:
         )
 
     return Grip(
-        name=tr("Force at {mark}, {case}").format(mark=mark, case=aim.case.name),
+        name=_as_typed(tr("Force along +x"), mark, aim),
         quantity="force",
         system=project.display.unit_system,
         value=value,
@@ -115,7 +115,7 @@ def distributed_grip(
         return text + _as_shown(project, aim, "distributed", value, shown)
 
     return Grip(
-        name=tr("Load on {mark}, {case}").format(mark=mark, case=aim.case.name),
+        name=_as_typed(tr(COLUMNS["start" if where == "both" and start == end else where]), mark, aim),
         quantity="distributed",
         system=project.display.unit_system,
         value=at_hand,
@@ -125,6 +125,16 @@ def distributed_grip(
     )
 
 
+def _as_typed(column: str, mark: str, aim: Aim) -> str:
+    """A step is called the same whether it is pulled or typed into the table."""
+    return tr("{column} of {row}, {case}").format(column=column, row=mark, case=aim.case.name)
+
+
+COLUMNS: Final = {
+    "start": later("Load at start"),
+    "end": later("Load at end"),
+    "both": later("Load"),
+}
 DISTRIBUTED: Final = {
     "start": later("Load on {mark} at its start: {value} {unit}, {case}"),
     "end": later("Load on {mark} at its end: {last} {unit}, {case}"),

@@ -213,6 +213,7 @@ def loaded(**more) -> Project:
     return bar(cases=cases, combinations=[both, Combination("Dead alone", {"Dead": 1.0})], **more)
 
 
+WAYS = ("start", "end", "both")
 BOTH, DEAD = Shown("combination", "Both"), Shown("case", "Dead")
 
 
@@ -228,6 +229,17 @@ class TestLoads:
         grip = force_grip(project, 3, aimed(project, DEAD, "Dead"), 8000.0)
         assert grip.pulled(FULL) == 16000.0
         assert grip.tell(9000.0) == "Force at 3: 9000 N, Dead"
+
+    def test_a_step_is_called_as_that_of_typing_into_the_table(self):
+        project = loaded()
+        grip = force_grip(project, 3, aimed(project, DEAD, "Dead"), 8000.0)
+        assert grip.name == "Force along +x of 3, Dead"
+        ends = {
+            w: distributed_grip(project, 0, w, aimed(project, DEAD, "Dead"), (1.0, 1.0)).name for w in WAYS
+        }
+        mark = project.segments[0].mark
+        assert ends["start"] == f"Load at start of {mark}, Dead"
+        assert ends["end"] == f"Load at end of {mark}, Dead"
 
     @pytest.mark.parametrize(("name", "factor"), [("Dead", 1.5), ("Live", -0.5)])
     def test_under_a_factor_what_is_shown_follows_the_hand(self, name, factor):
