@@ -285,3 +285,14 @@ def test_one_inserted_in_the_table_is_typed_there(window):
     window.tables.views["segments"].setFocus()
     window.actions_by_key["insert_after"].trigger()
     assert window.in_place.editor is None
+
+
+def test_the_editor_leaves_what_is_typed_about_to_be_seen(window):
+    window.sheet.setFocus()
+    for part in (Part("length", 2), Part("section", 2), Part("support", 0)):
+        box = window.sheet.box_of(part)
+        window.in_place.open_part(part, box)
+        frame = window.in_place.editor.parentWidget().geometry()
+        assert frame.top() >= box.bottom or frame.bottom() <= box.top
+        assert window.sheet.viewport().rect().contains(frame)
+        window.in_place.cancel()

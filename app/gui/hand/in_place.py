@@ -30,6 +30,7 @@ from app.words import tr
 
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
+ASIDE = 4.0  # px, between the box that is typed about and the editor
 LEAST_WIDTH = 110  # px, of the line that is typed into
 ONE_BY_ONE = ("mark",)  # what cannot be the same for several
 
@@ -70,7 +71,7 @@ class EditorFrame(QFrame):
         self.place(self._anchor)
 
     def place(self, box: Box) -> None:
-        """With the line over the box, and all of it inside the sheet."""
+        """Under the box, or over it where there is no room under it, and all of it inside the sheet."""
         self._anchor = box
         room = self.parentWidget().size()
         self.reason.setMaximumWidth(max(room.width() - 24, 80))
@@ -78,7 +79,8 @@ class EditorFrame(QFrame):
         if self.reason.isVisibleTo(self):
             size.setHeight(max(size.height(), self.heightForWidth(size.width())))
         left = box.centre[0] - 0.5 * size.width()
-        top = box.centre[1] - self.caption.sizeHint().height() - 0.5 * self.line.sizeHint().height() - 5.0
+        under, over = box.bottom + ASIDE, box.top - ASIDE - size.height()
+        top = under if under + size.height() <= room.height() or over < 0.0 else over
         left = min(max(left, 2.0), max(room.width() - size.width() - 2.0, 0.0))
         top = min(max(top, 2.0), max(room.height() - size.height() - 2.0, 0.0))
         self.setGeometry(round(left), round(top), size.width(), size.height())
