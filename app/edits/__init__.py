@@ -19,17 +19,20 @@ from app.edits.renaming import (
     rename_segment,
 )
 from app.edits.repeating import repeat_segments
+from app.edits.supports import free_joints, moving_joints
 from app.edits.uniting import join_equal_neighbours
 
 __all__ = [
     "EditError",
     "add_record",
     "delete_segments",
+    "free_joints",
     "insert_segment",
     "join_equal_neighbours",
     "join_segments",
     "mirror_member",
     "move_segments",
+    "moving_joints",
     "number_joints",
     "remove_case",
     "remove_records",

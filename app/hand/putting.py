@@ -16,6 +16,7 @@ from app import edits
 from app.drawing.shapes import Part
 from app.entry import parse_entry
 from app.hand.cells import Cell, cell_of
+from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
 from app.support_entry import parse_support
 from app.words import tr
@@ -45,11 +46,17 @@ def put_on(kind: Kind, project: Project, indexes: Iterable[int], case: int | Non
     note = ""
     if kind.of_case and case is None:
         project, case, note = _with_case(project)
+    old = project
     for index in where:
         if not _is_there(kind, project, index, case):
             project = _put(kind, project, index, case)
     found = (cell_of(Part(kind.part, index), project, case) for index in where)
-    return Put(project, case, tuple(cell for cell in found if cell is not None), note)
+    return Put(
+        project,
+        case,
+        tuple(cell for cell in found if cell is not None),
+        note or gone_with_supports(old, project),
+    )
 
 
 def _with_case(project: Project) -> tuple[Project, int, str]:
@@ -103,7 +110,10 @@ def _begins(kind: Kind, project: Project) -> float:
 
 def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
     if kind.part == "support":
-        return edits.set_value(project, ("joints", index, "support"), _support(kind, project))
+        support = _support(kind, project)
+        if isinstance(support, UnsetType):
+            return edits.free_joints(project, (index,))
+        return edits.set_value(project, ("joints", index, "support"), support)
     if kind.part == "bedding":
         return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
     if kind.part == "movement" and isinstance(project.joints[index].support, UnsetType):
@@ -139,6 +149,8 @@ def take_off(kind: Kind, project: Project, indexes: Iterable[int], case: int | N
 def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: str) -> Project:
     if kind.of_case:
         return _set_load(kind, project, index, case, key, UNSET)
+    if kind.part == "support":
+        return edits.free_joints(project, (index,))
     records = "joints" if kind.on == "joint" else "segments"
     return edits.set_value(project, (records, index, key), UNSET)
 

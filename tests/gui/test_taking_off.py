@@ -8,13 +8,17 @@ from PySide6.QtCore import QPoint, Qt
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 
+from app import edits
 from app.drawing.shapes import Part
+from app.edits.supports import moving_joints
 from app.gui.hand.grasp import Phase
 from app.gui.view import Selection, Shown
+from app.hand.kinds import KINDS
 from tests.gui.pointer import Pointer
 from tests.gui.test_hand import shaft
 from tests.gui.windows import solved
 
+BY_KEY = {kind.key: kind for kind in KINDS}
 LEFT = Qt.MouseButton.LeftButton
 
 
@@ -71,6 +75,28 @@ def test_delete_takes_off_the_support_that_was_clicked(window, pointer):
     assert window.document.project.joints[0].support is UNSET
     assert len(window.document.project.segments) == 4
     assert window.document.undo_name == "Take the support off"
+
+
+@pytest.mark.parametrize("way", ["delete", "letter", "menu", "table"])
+def test_a_movement_goes_with_the_support_that_moved_and_is_said_to(window, pointer, way):
+    moved = edits.set_joint_load(
+        window.document.project, "Live", window.document.project.joints[0].mark, "movement", 0.001
+    )
+    window.document.load(moved, None)
+    window.view.set_selection(Selection(joints=frozenset({0})))
+    if way in ("delete", "letter"):
+        QTest.keyClick(window.sheet, Qt.Key.Key_Delete if way == "delete" else Qt.Key.Key_R)
+    elif way == "menu":
+        window.taking_off.take_off(BY_KEY["fixed"], (0,))
+    else:
+        view = window.tables.views["segments"]
+        keys = [column.key for column in view.table_model.columns]
+        view.table_model.setData(view.table_model.index(0, keys.index("support")), "")
+    assert window.document.project.joints[0].support is UNSET
+    assert moving_joints(window.document.project, (0,)) == ()
+    assert "went with its support" in window.status.news.text()
+    window.document.undo()
+    assert window.document.project == moved
 
 
 def test_a_click_on_the_segment_puts_the_thing_down(window, pointer):

@@ -8,7 +8,6 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from msgspec import UNSET
 from PySide6.QtCore import QObject, Signal
 
 from app import edits
@@ -20,6 +19,7 @@ from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import reason_of
 from app.gui.view import View
 from app.hand.cells import case_share, neighbours_alike
+from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
 from app.hand.owners import is_there, kind_of, whole, why_not_here
 from app.hand.putting import take_off
@@ -106,13 +106,7 @@ class TakingOff(QObject):
                 tr("no support there; to take a load off, click it and press Delete (menu: Take off)")
             )
             return
-
-        def without(project: Project) -> Project:
-            for joint in held:
-                project = edits.set_value(project, ("joints", joint, "support"), UNSET)
-            return project
-
-        self._do(tr("Take the support off"), without)
+        self._do(tr("Take the support off"), lambda project: edits.free_joints(project, held))
 
     def take_off(self, kind: Kind, indexes: tuple[int, ...]) -> None:
         """Take one off each, as one undo step."""
@@ -121,12 +115,15 @@ class TakingOff(QObject):
         self._do(name, lambda project: take_off(kind, project, indexes, self._tables.sight.case))
 
     def _do(self, name: str, edit: Callable[[Project], Project]) -> None:
+        old = self._document.project
         try:
-            project = edit(self._document.project)
+            project = edit(old)
         except EditError as error:
-            self.told.emit(reason_of(error, self._document.project.display.unit_system))
+            self.told.emit(reason_of(error, old.display.unit_system))
         else:
             self._document.commit(project, name)
+            if note := gone_with_supports(old, project):
+                self.told.emit(note)
 
 
 def _named(project: Project, part: Part) -> str:

@@ -12,6 +12,7 @@ from app import edits
 from app.entry import parse_entry
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import needed_case
+from app.gui.tables.supports import with_support
 from app.support_entry import parse_support, support_entry, support_text
 from app.units import Quantity, entry_text, format_value
 from app.words import later
@@ -41,7 +42,7 @@ def rows(project: Project, sight: Sight) -> tuple[object, ...]:
 
 def _put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
     support = parse_support(text, sight.system, project.joints[index].support)
-    return Change(edits.set_value(project, ("joints", index, "support"), support))
+    return with_support(project, index, support)
 
 
 def _load(key: str, title: str, quantity: Quantity) -> Column:

@@ -19,6 +19,7 @@ from app.gui.tables.column import Change, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
+from app.gui.tables.supports import with_support
 from app.section_entry import parse_section, taken_as
 from app.support_entry import parse_support, support_entry, support_text
 from app.typical_materials import typical_named, with_typical
@@ -200,7 +201,7 @@ def entry_of_support(row: StartRow | SegmentRow, sight: Sight) -> str:
 def put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
     """Another support at the segment's far joint."""
     support = parse_support(text, sight.system, project.joints[index + 1].support)
-    return Change(edits.set_value(project, ("joints", index + 1, "support"), support))
+    return with_support(project, index + 1, support)
 
 
 # Loads of the edited case
