@@ -14,6 +14,7 @@ from collections.abc import Sequence
 from typing import TYPE_CHECKING
 
 from app.numerals import localised
+from app.phrases.states import state_words
 from app.strip_choice import KINDS, Kind, kind_symbols
 from app.units import Quantity, symbol, to_display
 from app.words import decimal_sign, tr
@@ -34,11 +35,20 @@ def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = KIN
     x, segment, columns = _envelope_columns(results) if state is None else _state_columns(results, state)
     shown = [(head, kind, values) for kind in kinds for head, values in columns[kind]]
     heads = [_head("x", "length", units), tr("Segment")]
-    heads += [_head(head, quantity_of(kind), units) for head, kind, _values in shown]
+    of = _state_words(results, state)
+    heads += [_head(f"{head}, {of}", quantity_of(kind), units) for head, kind, _values in shown]
     marks = [results.project.segments[index].mark for index in segment.tolist()]
     written = [_written(x, "length", units), marks]
     written += [_written(values, quantity_of(kind), units) for _head, kind, values in shown]
     return [heads, *map(list, zip(*written, strict=True))]
+
+
+def _state_words(results: Results, state: int | None) -> str:
+    """Which state the numbers are of, for the heads: a spreadsheet outlives what the window showed."""
+    if state is None:
+        return tr("Envelope")
+    shown = results.states[state]
+    return tr("Case {name}").format(name=shown.name) if shown.kind == "case" else state_words(shown.name)
 
 
 def csv_text(rows: Rows) -> str:

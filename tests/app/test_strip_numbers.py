@@ -66,7 +66,7 @@ def test_a_joint_stands_in_two_rows_one_for_each_side(rod):
 
 def test_the_envelope_has_largest_and_smallest_with_the_exact_extremes(rod):
     heads, _marks, columns = read(number_rows(rod, None, ("stress", "utilisation")))
-    assert [head.partition(" (")[0] for head in heads[2:]] == ["σ max", "σ min", "utilisation"]
+    assert [head.partition(", ")[0] for head in heads[2:]] == ["σ max", "σ min", "utilisation"]
     units = rod.project.display.unit_system
     largest = rod.segments.stress_max[checked_states(rod)].max()
     assert columns[1].max() == pytest.approx(to_display(float(largest), "stress", units), rel=1e-12)
@@ -77,7 +77,7 @@ def test_heads_say_the_units_of_each_system(rod, system):
     project = replace(rod.project, display=replace(rod.project.display, units=system))
     heads = number_rows(solve(project), 0)[0]
     assert all("(" in head and head.endswith(")") for head in (heads[0], *heads[2:5]))
-    assert heads[5] == "utilisation"
+    assert heads[5] == f"utilisation, {rod.states[0].name}"
 
 
 def test_what_was_not_checked_is_empty():
@@ -96,3 +96,8 @@ def test_german_numbers_have_a_comma_and_semicolons_between(rod, german):
     assert any("," in row[3] for row in rows[1:])
     assert not any("." in cell for row in rows[1:] for cell in (row[0], *row[2:]))
     assert list(csv.reader(io.StringIO(csv_text(rows), newline=""), delimiter=";")) == rows
+
+
+def test_the_heads_say_which_state_the_numbers_are_of(rod):
+    assert number_rows(rod, 0, ("force",))[0][2].startswith(f"N, {rod.states[0].name} (")
+    assert all(", Envelope (" in head for head in number_rows(rod, None, ("force",))[0][2:])
