@@ -47,7 +47,7 @@ def test_the_numbers_of_one_strip_are_copied_from_its_menu(window):
     ask_for_menu(window, grip(window, 1))
     pick(window.strip_menu, "Copy numbers")
     heads = clipboard().text().split("\n")[0].split("\t")
-    assert [head.split(" (")[0] for head in heads] == ["x", "Segment", "N max", "N min"]
+    assert [head.split(" (")[0].split(", ")[0] for head in heads] == ["x", "Segment", "N max", "N min"]
 
 
 def test_the_sheet_is_copied_as_a_picture_twice_as_fine(window):
