@@ -17,6 +17,7 @@ from app.gui.findings.panel import FindingsPanel
 from app.gui.outcome import Outcome, compute, figures_of, governing
 from app.gui.sheet_view import SheetView
 from app.gui.style import style_sheet
+from app.gui.tables.pages import PLACES
 from app.gui.tables.pane import TablesPane
 from app.gui.tables.view import TableView
 from app.gui.theme import theme_for
@@ -138,7 +139,7 @@ class Pictures:
         """One table with all its rows, as wide as its columns."""
         room = self._tables(width)
         view = room.views[key]
-        _bring_to_front(room, view)
+        room.tabs.setCurrentIndex(PLACES[key])
         room.resize(max(width, view.widths.needed), room.height())
         return _narrowed(_grabbed(room, view, _used(view)), width)
 
@@ -146,8 +147,8 @@ class Pictures:
         """The three tables of the tab, as wide as their columns."""
         room = self._tables(width)
         views = [room.views[key] for key in ("load_cases", "segment_loads", "joint_loads")]
-        _bring_to_front(room, views[0])
-        page = room.tabs.currentWidget()
+        room.tabs.setCurrentIndex(PLACES["load_cases"])
+        page = views[0].parentWidget()
         room.resize(max(width, sum(view.widths.needed for view in views) + 12), room.height())
         if isinstance(page, QSplitter):
             page.setSizes([view.widths.needed for view in views])
@@ -159,13 +160,6 @@ def governing_of(outcome: Outcome) -> Shown:
     """The state that governs, of an outcome that has results."""
     assert outcome.results is not None  # noqa: S101 - the example can be solved
     return governing(outcome.results)
-
-
-def _bring_to_front(room: TablesPane, view: QWidget) -> None:
-    pages = [room.tabs.widget(place) for place in range(room.tabs.count())]
-    room.tabs.setCurrentIndex(
-        next(i for i, page in enumerate(pages) if page is view or page.isAncestorOf(view))
-    )
 
 
 def _used(view: TableView) -> QRect:

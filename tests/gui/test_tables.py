@@ -16,7 +16,8 @@ from app.gui.member_edits import MemberEdits, also_gone
 from app.gui.show import drafts_line
 from app.gui.tables.column import Figures, Sight
 from app.gui.tables.model import ERROR_ROLE, TableModel
-from app.gui.tables.pane import TABS, TablesPane
+from app.gui.tables.pages import TABS
+from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import NotTaken
 from app.gui.tables.segments import SEGMENTS
 from app.gui.theme import LIGHT

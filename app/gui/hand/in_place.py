@@ -152,7 +152,7 @@ class InPlace(QObject):
         `records` are all those that the text is for, the cell's own among them; only that one if empty.
         """
         self.commit()
-        model = self._tables.views[cell.table].table_model
+        model = self._tables.models[cell.table]
         columns = [column.key for column in model.columns]
         if cell.column not in columns:
             return

@@ -161,7 +161,7 @@ class SheetMenu(QObject):
     def _add_cells(self, menu: QMenu, table: str, record: int, records: tuple[int, ...]) -> None:
         """The cells of the segment or joint, to be typed in place for all that is selected."""
         cells = menu.addMenu(tr("Type in place"))
-        model = self._tables.views[table].table_model
+        model = self._tables.models[table]
         titles = {column.key: column.words for column in model.columns}
         for key in ORDER[table]:
             cell = Cell(table, record, key)

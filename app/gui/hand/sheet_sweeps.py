@@ -79,7 +79,7 @@ class SheetSweeps(QObject):
         cells = cells_of(label.part, project, case)
         if not cells:
             return None
-        model = self._tables.views[cells[0].table].table_model
+        model = self._tables.models[cells[0].table]
         keys = [column.key for column in model.columns]
         records = tuple(dict.fromkeys(cell.record for cell in cells))
         entry = CellEntry(self._tables.document, model, keys.index(cells[0].column), records)

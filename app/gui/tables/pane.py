@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from PySide6.QtCore import QSignalBlocker, Qt, Signal
-from PySide6.QtWidgets import QHBoxLayout, QLabel, QSplitter, QTabWidget, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 
 from app.gui.choice import Choice
 from app.gui.document import Document, Snapshot
@@ -12,28 +12,13 @@ from app.gui.settings import Settings
 from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_sweeps import CellSweeps
 from app.gui.tables.column import Figures, Sight, Table
-from app.gui.tables.combinations import COMBINATIONS
-from app.gui.tables.joints import JOINTS
-from app.gui.tables.limits import DISPLACEMENT, REACTION, RELATIVE
-from app.gui.tables.loads import CASES, JOINT_LOADS, SEGMENT_LOADS
-from app.gui.tables.materials import MATERIALS
 from app.gui.tables.model import TableModel
-from app.gui.tables.segments import SEGMENTS
+from app.gui.tables.pages import PLACES, TABLES, Pages
 from app.gui.tables.view import TableView
 from app.gui.theme import Theme
 from app.gui.view import Selection, View
 from app.hand.cells import Cell
-from app.words import later, tr
-
-# Each tab with the tables that stand in it side by side, and their shares of its width
-TABS: tuple[tuple[str, tuple[tuple[Table, int], ...]], ...] = (
-    (later("Segments"), ((SEGMENTS, 1),)),
-    (later("Joints"), ((JOINTS, 1),)),
-    (later("Loads"), ((CASES, 30), (SEGMENT_LOADS, 66), (JOINT_LOADS, 34))),
-    (later("Combinations"), ((COMBINATIONS, 1),)),
-    (later("Materials"), ((MATERIALS, 1),)),
-    (later("Limits"), ((DISPLACEMENT, 30), (RELATIVE, 40), (REACTION, 30))),
-)
+from app.words import tr
 
 
 class TablesPane(QWidget):
@@ -50,13 +35,16 @@ class TablesPane(QWidget):
         self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
         self._document = document
         self._view = view
-        self.views: dict[str, TableView] = {}
+        self._theme = theme
+        self._store: Settings | None = None
         self.sweeper = Sweeper(document, self)
         self.sweeper.told.connect(self.noted)
         self._sight = Sight(document.project.display.unit_system, 0 if document.project.load_cases else None)
         self._following = False
         self.case_picker = Choice()
-        self.tabs = self._make_tabs(theme)
+        self.models = {table.key: self._make_model(table) for table in TABLES}
+        self.views = Pages(self._make_view)
+        self.tabs = self.views.tabs
         self._lay_out()
         self.on_document_changed(document.snapshot)
         document.changed.connect(self.on_document_changed)
@@ -64,41 +52,25 @@ class TablesPane(QWidget):
         self.case_picker.activated.connect(self.on_case_picked)
         self.case_picker.left.connect(lambda: self.current_view().setFocus())
         view.selection_changed.connect(self.on_selection_changed)
-        for key in ("segments", "joints"):
-            self.views[key].record_chosen.connect(self.on_record_chosen)
+        self.views.in_front()
         self.tabs.currentChanged.connect(lambda _index: self.current_table_changed.emit())
 
-    def _make_tabs(self, theme: Theme) -> QTabWidget:
-        tabs = QTabWidget()
-        tabs.setDocumentMode(True)
-        tabs.tabBar().setDrawBase(False)
-        tabs.setAccessibleName(tr("Tables"))
-        for title, tables in TABS:
-            shown = [self._make_view(table, theme) for table, _share in tables]
-            tabs.addTab(self._side_by_side(shown, [share for _table, share in tables]), tr(title))
-        return tabs
-
-    def _make_view(self, table: Table, theme: Theme) -> TableView:
+    def _make_model(self, table: Table) -> TableModel:
         model = TableModel(table, self._document, self._sight, self)
         model.noted.connect(self.noted)
-        view = TableView(model, theme)
-        self.views[table.key] = view
+        return model
+
+    def _make_view(self, table: Table) -> TableView:
+        view = TableView(self.models[table.key], self._theme)
         CellSweeps(view, self.sweeper)
         if view.grips is not None:
             view.grips.moved.connect(self.rows_moved)
+        if self._store is not None:
+            view.columns_choice.restore(self._store.columns(table.key))
+        if table.key in ("segments", "joints"):
+            view.choose_records(getattr(self._view.selection, table.key))
+            view.record_chosen.connect(self.on_record_chosen)
         return view
-
-    @staticmethod
-    def _side_by_side(shown: list[TableView], shares: list[int]) -> QWidget:
-        if len(shown) == 1:
-            return shown[0]
-        splitter = QSplitter()
-        splitter.setChildrenCollapsible(False)
-        for place, (view, share) in enumerate(zip(shown, shares, strict=True)):
-            splitter.addWidget(view)
-            splitter.setStretchFactor(place, share)
-        splitter.setSizes([share * 12 for share in shares])
-        return splitter
 
     def _lay_out(self) -> None:
         label = QLabel(tr("Edit loads of"))
@@ -117,13 +89,14 @@ class TablesPane(QWidget):
         whole.addWidget(self.tabs)
 
     def restore(self, store: Settings) -> None:
-        """The columns chosen last time."""
-        for key, view in self.views.items():
+        """The columns chosen last time, for the tables that are not made yet as well."""
+        self._store = store
+        for key, view in self.views.made.items():
             view.columns_choice.restore(store.columns(key))
 
     def remember(self, store: Settings) -> None:
         """Keep the choice of columns for the next time."""
-        for key, view in self.views.items():
+        for key, view in self.views.made.items():
             store.set_columns(key, view.columns_choice.turned)
 
     # What is shown
@@ -140,9 +113,7 @@ class TablesPane(QWidget):
 
     def current_view(self) -> TableView:
         """The table of the tab in front that has or last had the keyboard, else its first."""
-        page = self.tabs.currentWidget()
-        shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
-        last = page.focusWidget()
+        shown, last = self.views.in_front(), self.tabs.currentWidget().focusWidget()
         return next((view for view in shown if view is last or view.isAncestorOf(last)), shown[0])
 
     def blocks(self) -> Blocks:
@@ -154,8 +125,7 @@ class TablesPane(QWidget):
         self.commit_open_editor()
         had_it = self.tabs.currentIndex() == place and self.current_view().hasFocus()
         self.tabs.setCurrentIndex(place)
-        page, last = self.tabs.currentWidget(), self.current_view()
-        shown = [view for view in self.views.values() if view is page or page.isAncestorOf(view)]
+        shown, last = self.views.in_front(), self.current_view()
         chosen = shown[(shown.index(last) + 1) % len(shown)] if had_it else last
         chosen.setFocus(Qt.FocusReason.ShortcutFocusReason)
 
@@ -166,10 +136,8 @@ class TablesPane(QWidget):
 
     def show_record(self, key: str, record: int) -> None:
         """Bring a record's row to the front, with the keyboard in it."""
+        self.tabs.setCurrentIndex(PLACES[key])
         view = self.views[key]
-        pages = range(self.tabs.count())
-        page = next(i for i in pages if self.tabs.widget(i) in (view, view.parentWidget()))
-        self.tabs.setCurrentIndex(page)
         view.choose_record(record)
         view.setFocus()
 
@@ -215,26 +183,29 @@ class TablesPane(QWidget):
 
     def _set_sight(self, sight: Sight) -> None:
         self._sight = sight
-        for view in self.views.values():
-            view.table_model.set_sight(sight)
+        for model in self.models.values():
+            model.set_sight(sight)
+        for view in self.views.made.values():
             view.columns_choice.follow_drafts()
             view.widths.widen_if_needed()
 
     def set_figures(self, figures: Figures) -> None:
         """Show results in the columns that have them."""
-        for view in self.views.values():
-            view.table_model.set_figures(figures)
+        for model in self.models.values():
+            model.set_figures(figures)
+        for view in self.views.made.values():
             view.widths.widen_for_figures()
 
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""
-        for view in self.views.values():
+        self._theme = theme
+        for view in self.views.made.values():
             view.set_theme(theme)
 
     def commit_open_editor(self) -> None:
         """Take in what an open editor holds, and a number that is run up and down."""
         self.sweeper.commit()
-        for view in self.views.values():
+        for view in self.views.made.values():
             view.commit_open_editor()
         self.committing.emit()
 
@@ -244,7 +215,7 @@ class TablesPane(QWidget):
         """The rows chosen in the tables are what the view has selected."""
         if self._following:
             return
-        if self.sender() is self.views["segments"]:
+        if self.sender() is self.views.made["segments"]:
             self._view.set_selection(Selection(segments=records))
         else:
             self._view.set_selection(Selection(joints=records))
@@ -253,6 +224,7 @@ class TablesPane(QWidget):
         """Light what is selected elsewhere, and choose its rows, as commands work on the rows chosen."""
         self._following = True  # the rows chosen here are no choice of a person's
         for key, records in (("segments", selection.segments), ("joints", selection.joints)):
-            self.views[key].table_model.set_lit(records)
-            self.views[key].choose_records(records)
+            self.models[key].set_lit(records)
+            if key in self.views.made:
+                self.views[key].choose_records(records)
         self._following = False
