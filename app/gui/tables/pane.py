@@ -48,7 +48,7 @@ class TablesPane(QWidget):
         self._lay_out()
         self.on_document_changed(document.snapshot)
         document.changed.connect(self.on_document_changed)
-        self.views["load_cases"].table_model.added.connect(self.on_case_added)
+        self.models["load_cases"].added.connect(self.on_case_added)
         self.case_picker.activated.connect(self.on_case_picked)
         self.case_picker.left.connect(lambda: self.current_view().setFocus())
         view.selection_changed.connect(self.on_selection_changed)
