@@ -131,6 +131,7 @@ def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figur
     return Figures(
         utilisation=utilisation,
         governs=governs,
+        checked=state is None or results.states[state].checked,
         displacement=nothing if state is None else results.solution.joint_displacement[state],
         reaction=nothing if state is None else results.solution.reaction[state],
         mass=results.mass,

@@ -13,6 +13,8 @@ from app.gui.outcome import (
     shown_states,
     still_shown,
 )
+from app.gui.tables.column import Figures
+from app.gui.tables.segment_figures import utilisation, why_no_utilisation
 from app.gui.view import Shown
 from solver.errors import Cancelled
 from solver.model import Combination, FixedSupport, JointLoad, SpringSupport
@@ -44,6 +46,15 @@ def test_figures_of_the_envelope_are_the_largest_over_the_checked_states(outcome
     largest = np.nanmax(results.segments.utilisation[checked], axis=0)
     np.testing.assert_allclose(figures.utilisation, largest, rtol=1e-12)
     assert figures.displacement.size == 0, "an envelope is no state, so it has no reactions in equilibrium"
+
+
+def test_where_no_check_was_made_the_table_says_so_and_why():
+    figures = Figures(utilisation=np.array([0.0, np.nan]))
+    assert [utilisation(i, figures, None) for i in (0, 1, 2)] == ["0.00", "–", ""]
+    assert why_no_utilisation(0, figures) == ""
+    assert "no allowable" in why_no_utilisation(1, figures)
+    unchecked = Figures(utilisation=np.array([np.nan]), checked=False)
+    assert why_no_utilisation(0, unchecked).startswith("not checked")
 
 
 def test_a_case_that_is_not_checked_has_no_utilisation(outcome):

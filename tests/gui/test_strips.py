@@ -378,3 +378,14 @@ class TestReadout:
     def test_says_where_nothing_is_checked(self):
         results = solve(member([Part(1.0, round_bar(0.04))], {0: FixedSupport()}))
         assert state_readout(results, 0, 0.5).endswith("utilisation not checked")
+
+
+def test_a_segment_without_force_has_no_sign():
+    results = solve(read_sample("hoist_shaft"))
+    state = next(i for i, one in enumerate(results.states) if one.name == "Warm")
+    for content in state_contents(results, state)[1:3]:
+        (trace,) = content.traces
+        inside = trace.x[:-1] < results.position[1] - 1e-9
+        assert TENSION not in trace.drawn[inside]
+        assert COMPRESSION not in trace.drawn[inside]
+        assert COMPRESSION in trace.drawn

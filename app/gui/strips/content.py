@@ -225,7 +225,8 @@ class _Builder:
         if kind == "displacement" or (kind == "utilisation" and self._stress is None):
             drawn = np.full(middle.shape[1], PLAIN)
         else:
-            drawn = np.where(middle[2] < 0, COMPRESSION, np.where(middle[2] > 0, TENSION, PLAIN))
+            none = self._nothing("force" if kind == "force" else "stress")  # round-off has no sign
+            drawn = np.where(middle[2] < -none, COMPRESSION, np.where(middle[2] > none, TENSION, PLAIN))
         drawn = np.where(middle[3] > 1 + PASS_MARGIN, OVER, drawn)
         return np.where((np.diff(columns[0]) > 0) & np.isfinite(middle[1]), drawn, NONE)
 

@@ -55,6 +55,7 @@ class Figures:
     segment_mass: FloatArray = field(default_factory=lambda: np.zeros(0))
     force: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
     stress: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
+    checked: bool = True  # whether checks are made of the state
     current: bool = True
 
     @staticmethod
@@ -112,6 +113,7 @@ class Column:
     width: int = 9  # in digits
     figure: Callable[[int, Figures, Sight], str] | None = None
     bar: Callable[[int, Figures], tuple[float, float] | None] | None = None  # utilisation, sign of the stress
+    why_none: Callable[[int, Figures], str] | None = None  # why there is no figure, where there is none
     of_case: bool = False  # the cell belongs to the load case that is edited
     named_by_user: bool = False  # the title is the user's own word
     offers: Offers | None = None  # names for a cell that refers to something

@@ -144,7 +144,13 @@ class TableModel(RowsModel):
         return tr("{text}, not taken in: {reason}").format(text=text, reason=error) if error else text
 
     def _tip(self, index: Index) -> str | None:
-        return self._error(index) or self.why_not(index) or None
+        return self._error(index) or self._why_none(index) or self.why_not(index) or None
+
+    def _why_none(self, index: Index) -> str:
+        column = self._columns[index.column()]
+        if column.why_none is None or not self.is_record(index.row()):
+            return ""
+        return column.why_none(self.record_of(index.row()), self._figures)
 
     def _bar(self, index: Index) -> tuple[float, float] | None:
         column = self._columns[index.column()]

@@ -17,7 +17,18 @@ from solver.model import Project
 def utilisation(index: int, figures: Figures, _sight: Sight) -> str:
     """The utilisation in words, with the digits that its verdict needs."""
     value = figures.value(figures.utilisation, index)
-    return "" if value is None else utilisation_text(value, "pass" if value <= 1 + PASS_MARGIN else "fail")
+    if value is None:
+        return "–" if 0 <= index < len(figures.utilisation) else ""
+    return utilisation_text(value, "pass" if value <= 1 + PASS_MARGIN else "fail")
+
+
+def why_no_utilisation(index: int, figures: Figures) -> str:
+    """Why no check of stress was made of a segment; empty where one was, or there are no results."""
+    if not 0 <= index < len(figures.utilisation) or figures.value(figures.utilisation, index) is not None:
+        return ""
+    if not figures.checked:
+        return tr("not checked: checks are made of the combinations, not of the cases in them")
+    return tr("no check was made here: there is no stress, or no allowable stress for it")
 
 
 def mass(index: int, figures: Figures, sight: Sight) -> str:

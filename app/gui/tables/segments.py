@@ -35,7 +35,7 @@ from app.gui.tables.segment_cells import (
     show_mark,
     show_support,
 )
-from app.gui.tables.segment_figures import bar, between, mass, total_line, utilisation
+from app.gui.tables.segment_figures import bar, between, mass, total_line, utilisation, why_no_utilisation
 from app.section_entry import section_label, section_text
 from app.units import entry_text, format_value
 from app.words import later
@@ -162,7 +162,9 @@ COLUMNS = (
         "force", later("Axial force"), quantity="force", figure=between("force"), width=13, at_first=False
     ),
     Column("stress", later("Stress"), quantity="stress", figure=between("stress"), width=13, at_first=False),
-    Column("utilisation", later("Utilisation"), figure=utilisation, bar=bar, width=6),
+    Column(
+        "utilisation", later("Utilisation"), figure=utilisation, bar=bar, width=6, why_none=why_no_utilisation
+    ),
 )
 
 SEGMENTS = Table(
