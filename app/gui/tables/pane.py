@@ -225,6 +225,6 @@ class TablesPane(QWidget):
         self._following = True  # the rows chosen here are no choice of a person's
         for key, records in (("segments", selection.segments), ("joints", selection.joints)):
             self.models[key].set_lit(records)
-            if key in self.views.made:
+            if key in self.views.made and selection != Selection():  # a click on paper chooses nothing
                 self.views[key].choose_records(records)
         self._following = False
