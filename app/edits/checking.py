@@ -5,7 +5,7 @@ from __future__ import annotations
 from msgspec.inspect import VarTupleType
 
 from app.decode import convert, project_type
-from app.edits.soundness import is_surely_sound
+from app.edits.soundness import changed, is_surely_sound, unchanged_before
 from app.encode import plain
 from solver import validation
 from solver.faults import Fault, Place, Rule, place_text
@@ -63,7 +63,8 @@ def _convert_new(project: Project, since: Project, faults: list[Fault]) -> None:
         if not (isinstance(field.type, VarTupleType) and isinstance(own, tuple) and isinstance(old, tuple)):
             convert(plain(project), project_type(), (), faults)
             return
-        known = set(map(id, old))
-        for index, record in enumerate(own):
+        records, were = changed(own, old)
+        first, known = unchanged_before(own, old), set(map(id, were))
+        for index, record in enumerate(records, first):
             if id(record) not in known:
                 convert(plain(record), field.type.item_type, (field.encode_name, index), faults)

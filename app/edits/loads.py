@@ -5,6 +5,7 @@ Several records may stand for one segment in one case; their cell shows a sum an
 
 from __future__ import annotations
 
+from operator import attrgetter
 from typing import Any
 
 from msgspec import UNSET, UnsetType
@@ -39,12 +40,8 @@ def _case_index(project: Project, name: str) -> int:
 
 def _places(project: Project, case: str, kind: str, mark: str) -> tuple[Place, ...]:
     index, name = _case_index(project, case), _LISTS[kind]
-    loads = getattr(project.load_cases[index], name)
-    return tuple(
-        ("load_cases", index, name, number)
-        for number, load in enumerate(loads)
-        if getattr(load, kind) == mark
-    )
+    marks = map(attrgetter(kind), getattr(project.load_cases[index], name))
+    return tuple(("load_cases", index, name, number) for number, on in enumerate(marks) if on == mark)
 
 
 def _set_load(

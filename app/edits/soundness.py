@@ -42,14 +42,14 @@ def changed(new: Sequence[Any], old: Sequence[Any]) -> _Span:
     """All that lies between what is the very same record at both ends."""
     if new is old:
         return (), ()
-    front = _alike(new, old)
+    front = unchanged_before(new, old)
     new, old = new[front:], old[front:]
-    back = _alike(new[::-1], old[::-1])
+    back = unchanged_before(new[::-1], old[::-1])
     return new[: len(new) - back], old[: len(old) - back]
 
 
-def _alike(new: Sequence[Any], old: Sequence[Any]) -> int:
-    """How many records are the very same from the front on."""
+def unchanged_before(new: Sequence[Any], old: Sequence[Any]) -> int:
+    """How many records are the very same from the front on, before the first that is not."""
     return next(compress(count(), map(is_not, new, old)), min(len(new), len(old)))
 
 

@@ -9,6 +9,7 @@ from __future__ import annotations
 from collections.abc import Callable
 from dataclasses import dataclass
 from math import fsum
+from operator import attrgetter
 from typing import Any
 
 from msgspec import UNSET
@@ -63,8 +64,15 @@ def one_row(project: Project, row: int, sight: Sight) -> object:
         return StartRow(project.joints[0])
     segment, case = project.segments[row - 1], sight.load_case(project)
     modulus = next((m.modulus for m in reversed(project.materials) if m.name == segment.material), None)
-    loads = None if case is None else tuple(x for x in case.segment_loads if x.segment == segment.mark)
+    loads = None if case is None else _loads_on(segment.mark, case)
     return SegmentRow(segment, project.joints[row], modulus, loads)
+
+
+def _loads_on(mark: str, case: LoadCase) -> tuple[SegmentLoad, ...]:
+    marks = list(map(attrgetter("segment"), case.segment_loads))
+    if mark not in marks:
+        return ()  # at a glance: a paste asks this for every cell
+    return tuple(load for load, on in zip(case.segment_loads, marks, strict=True) if on == mark)
 
 
 def _loads_by_mark(case: LoadCase | None) -> dict[str, list[SegmentLoad]] | None:
