@@ -94,7 +94,7 @@ def test_ctrl_enter_puts_a_text_into_all_chosen_cells_as_one_step(window, table)
     chord(line, KEY.Key_Return)
     assert [segment.length for segment in window.document.project.segments[:4]][:3] == [0.444] * 3
     assert window.document.project.segments[3] == before.segments[3]
-    assert window.document.undo_name == "Length of C (mm), for 3 segments"
+    assert window.document.undo_name == "Length of C, for 3 segments"
     window.document.undo()
     assert window.document.project == before
 
