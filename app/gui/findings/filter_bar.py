@@ -133,10 +133,10 @@ class FilterBar(QWidget):
         """Ask for all again; the keyboard does not stay on what goes."""
         if self.clear_button.hasFocus():
             self.kind.setFocus()
-        with QSignalBlocker(self.marks):
-            self.marks.clear()
         self.kind.setCurrentIndex(0)
         self.state.setCurrentIndex(0)
+        with QSignalBlocker(self):  # and not the field's, whose own button for clearing would stay
+            self.marks.clear()
         self._on_changed()
 
     def _on_changed(self, *_what: object) -> None:
