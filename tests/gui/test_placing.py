@@ -58,6 +58,8 @@ def test_a_spring_is_put_on_the_joint_that_is_clicked_and_typed_at_once(qtbot, w
     press(window, "spring")
     assert window.symbols.buttons["spring"].isChecked()
     QTest.mouseMove(window.sheet.viewport(), joint_at(window, 3))
+    assert window.sheet.paper.hand_marks.lit is None  # a click puts the spring on and takes no handle
+    assert window.sheet.viewport().cursor().shape() == Qt.CursorShape.CrossCursor
     assert window.sheet.drawing._lit.index == 3
     click(window, joint_at(window, 3))
     assert window.document.project.joints[3].support == SpringSupport(stiffness=1e8)

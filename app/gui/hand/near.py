@@ -42,8 +42,8 @@ class Near:
     def light(self, point: Point, *, total_stays: bool) -> None:
         """Show the handle at a point, if any."""
         handle = self.at(point)
-        if handle is None:
-            self.leave()
+        if handle is None or self._viewport.cursor().shape() == Qt.CursorShape.CrossCursor:
+            self.leave()  # with a symbol in the hand a click puts it on, and nothing can be pulled
         else:
             self._sheet.paper.hand_marks.light(handle.key, total_stays=total_stays)
             self.shape(handle, total_stays=total_stays)
