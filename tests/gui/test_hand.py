@@ -25,7 +25,7 @@ from solver.model import (
     TubeSection,
 )
 from tests.gui.pointer import CTRL, SHIFT, Pointer, handle_of
-from tests.gui.windows import solved
+from tests.gui.windows import beyond_window, solved
 from tests.members import Part, case, member
 
 SECTIONS = (
@@ -179,6 +179,16 @@ class TestEdges:
         assert abs(moved.centre[1] - pointer.at.y()) < 3.0
         pointer.let_go()
         assert window.sheet.paper.hand_marks.ghost == ()
+
+    @pytest.mark.parametrize("end", [-1, 1])
+    def test_zoomed_in_the_ghost_is_cut_where_the_member_goes_on(self, window, either, end):
+        window.view.set_selection(Selection(segments=frozenset((1,))))
+        window.sheet.zoom_to_selection()
+        either.grab("edge", 1, "both")
+        either.pull(-30)
+        assert window.sheet.paper.hand_marks.ghost
+        assert not beyond_window(window, window.sheet.paper.hand_marks.ghost_layer, end)
+        either.let_go()
 
 
 class TestLoads:

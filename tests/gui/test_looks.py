@@ -12,6 +12,7 @@ from app.gui.theme import DARK, LIGHT, contrast, mixed
 from app.gui.view import Selection, Shown
 from app.looks import Looks
 from tests.gui.hand import chord, enter
+from tests.gui.windows import beyond_window
 
 
 def pick(window, action):
@@ -99,3 +100,13 @@ class TestZoom:
         axis = round(window.sheet.drawing.picture.axis)
         beside = drawn.pixelColor(round(window.sheet.ruler.begin) - 12, axis - 4).name().upper()
         assert beside == LIGHT.paper
+
+    @pytest.mark.parametrize("end", [-1, 1])
+    @pytest.mark.parametrize("layout", ["horizontal", "vertical"])
+    def test_the_displaced_shape_is_cut_where_the_member_goes_on(self, window, layout, end):
+        window.on_layout_picked(layout)
+        window.view.set_looks(Looks(displaced=True))
+        shown = window.sheet.scene().on_drawing.displaced
+        window.view.set_selection(Selection(segments=frozenset((2,))))
+        window.sheet.zoom_to_selection()
+        assert not beyond_window(window, shown, end)

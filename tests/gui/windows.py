@@ -26,3 +26,16 @@ def finish(qtbot, dialog, act):
     """End a dialog by what `act` does."""
     with qtbot.waitSignal(dialog.finished, timeout=2000):
         act()
+
+
+def beyond_window(window, item, end: int) -> bool:
+    """Whether an item paints anything beyond one end of what the ruler shows."""
+    ruler, places = window.sheet.ruler, window.sheet.places
+    low, high = sorted((ruler.begin, ruler.end))
+    span = (high + 3.0, high + 30.0) if end > 0 else (low - 30.0, low - 3.0)
+    room = places.axes.rect(span, places.axes.across_of(places.drawing)).toRect()
+    seen = window.sheet.viewport().grab(room).toImage()
+    item.setOpacity(0.0)
+    without = window.sheet.viewport().grab(room).toImage()
+    item.setOpacity(1.0)
+    return seen != without

@@ -31,7 +31,7 @@ from solver.results import Results
 UNDER_Z, OVER_Z = 9.0, 11.0  # of the drawing, which has 10
 DISPLACED_Z = 12.5  # over the marks of what is selected, which would hide it
 STRONGEST = 0.42  # share of the ink in the darkest shade, on which marks still stand out
-BEYOND = 40.0  # px, as far as the displaced shape may reach out of the window
+BEYOND = 40.0  # px, as far as the displaced shape of an end may reach out of the window
 
 
 class ResultsOnDrawing:
@@ -131,7 +131,7 @@ class Colours(Painted):
         if self._place is None:
             return
         painter.setPen(Qt.PenStyle.NoPen)
-        painter.setClipRect(_window(self._place, 0.0))
+        painter.setClipRect(_window(self._place))
         for tint in self.tinting.tints:
             self._paint_tint(painter, tint)
         painter.setClipping(False)
@@ -209,16 +209,22 @@ class Displaced(Painted):
         if self._place is None:
             return
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        painter.setClipRect(_window(self._place, BEYOND))
+        painter.setClipRect(
+            _window(self._place, BEYOND)
+        )  # where the member goes on it is cut like the member
         for stroke in self.strokes:
             painter.setPen(QPen(colour(self._theme.displacement), stroke.width))
             painter.drawPolygon([QPointF(x, y) for x, y in stroke.points])
 
 
-def _window(place: Place, beyond: float) -> QRectF:
-    """What the ruler shows, and some pixels on either side."""
-    low, high = sorted((place.ruler.begin, place.ruler.end))
-    return place.axes.rect((low - beyond, high + beyond), place.axes.across_of(place.rect))
+def _window(place: Place, beyond: float = 0.0) -> QRectF:
+    """What the ruler shows, and some pixels on the sides where the member ends there."""
+    ruler = place.ruler
+    forward = 1.0 if ruler.end > ruler.begin else -1.0
+    first = ruler.begin - forward * beyond * ruler.holds(0.0)
+    last = ruler.end + forward * beyond * ruler.holds(ruler.length)
+    low, high = sorted((first, last))
+    return place.axes.rect((low, high), place.axes.across_of(place.rect))
 
 
 @lru_cache(64)

@@ -7,7 +7,7 @@ from PySide6.QtGui import QBrush, QPainter, QPen, QPolygonF
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
 from app.drawing.handles import Handle, HandleKey, handles_of
-from app.drawing.shapes import Point, Stroke
+from app.drawing.shapes import Box, Point, Stroke
 from app.drawing.sketch import Sketch
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.sheet_items import Painted
@@ -18,6 +18,7 @@ SQUARE = 3.0  # half of a quiet mark, px
 ARROW = 9.0  # from a handle's middle to the tip of its arrows, px
 GHOST_DASH = [4.0, 4.0]
 TICK = 7.0
+FAR = 1e5  # px, beyond any screen
 
 Line = tuple[Point, Point]
 
@@ -28,12 +29,13 @@ class Ghost(Painted):
     def __init__(self, theme: Theme) -> None:
         super().__init__(theme, 11.5)
         self.strokes: tuple[Stroke, ...] = ()
+        self._window = Box(0.0, 0.0, 0.0, 0.0)
         self.setVisible(False)
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)
 
-    def show_strokes(self, strokes: tuple[Stroke, ...]) -> None:
-        """Paint these and nothing else."""
-        self.strokes = strokes
+    def show_strokes(self, strokes: tuple[Stroke, ...], window: Box) -> None:
+        """Paint these and nothing else, as far as they are in the window along the member."""
+        self.strokes, self._window = strokes, window
         self.setVisible(bool(strokes))
         self.update()
 
@@ -49,6 +51,9 @@ class Ghost(Painted):
         pen.setDashPattern(GHOST_DASH)
         painter.setPen(pen)
         painter.setBrush(Qt.BrushStyle.NoBrush)
+        box = self._window
+        corners = QPointF(box.left, box.top), QPointF(box.right, box.bottom)
+        painter.setClipRect(QRectF(*corners).adjusted(-1.0, -1.0, 1.0, 1.0))
         for stroke in self.strokes:
             painter.drawPolygon([QPointF(*point) for point in stroke.points])
 
@@ -115,9 +120,12 @@ class HandMarks(Painted):
 
     def show_ghost(self, sketch: Sketch | None) -> None:
         """The outlines of a sketch, dashed, or none."""
-        strokes = [] if sketch is None else sketch.picture.strokes
+        if sketch is None:
+            self.ghost_layer.show_strokes((), Box(0.0, 0.0, 0.0, 0.0))
+            return
+        strokes = sketch.picture.strokes
         outlines = (s for s in strokes if s.closed and s.part is not None and s.part.kind == "segment")
-        self.ghost_layer.show_strokes(tuple(outlines))
+        self.ghost_layer.show_strokes(tuple(outlines), sketch.box(sketch.window, (-FAR, FAR)))
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours."""
