@@ -63,9 +63,10 @@ def bearings(hands: Hands, steps: Steps) -> None:
 def hoisting(hands: Hands, steps: Steps) -> None:
     """A force dragged and typed, a distributed load by the menu, dragged and typed."""
     hands.symbol("force")
+    hands.click(hands.joint(0))
     steps.end(
         "force-put-on",
-        "Force, on the selected joint: a load case is made for it",
+        "The force of the strip of symbols, clicked on joint 0: a load case is made for it",
         undo="Put on: Force at a joint",
     )
     hands.type_over("2")
@@ -106,8 +107,8 @@ def running_warm(hands: Hands, steps: Steps) -> None:
     hands.cell("segments", 1, "heat")
     hands.press(KEY.Key_V, CTRL)
     steps.end("warmth-pasted", "The rise of each segment pasted from a spreadsheet", undo="Paste")
-    hands.click(hands.joint(12))
     hands.symbol("movement")
+    hands.click(hands.joint(12))
     hands.type_over("0.08")
     steps.end("movement", "The far bearing moves by 0.08 mm")
 
