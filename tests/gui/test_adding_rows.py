@@ -6,7 +6,7 @@ from PySide6.QtGui import QGuiApplication
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QToolButton
 
-from app.gui.tables.pane import TABS
+from app.gui.tables.pages import TABS
 from solver.model import RoundSection
 from tests.gui.hand import begin, chord, editor
 
