@@ -2,14 +2,17 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from PySide6.QtCore import QDeadlineTimer, QEvent, QEventLoop, QPoint, QPointF, Qt
-from PySide6.QtGui import QContextMenuEvent, QWheelEvent
+from PySide6.QtGui import QAction, QContextMenuEvent, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QComboBox, QMenu, QWidget
 
+from app.catalogue import read_catalogue
 from app.drawing.shapes import Part
 from app.gui.window import Window
-from app.words import tr
+from app.words import SOURCE, catalogue_path, language, tr
 from tests.gui.hand import cell
 from tests.gui.pointer import CTRL, LEFT, PLAIN, SHIFT, Pointer
 from tests.walk.steps import LONGEST_WAIT
@@ -205,7 +208,7 @@ class Hands:
     def choose(self, menu: QMenu, *words: str) -> None:
         """Click through a menu and its submenus."""
         for word in words:
-            action = next(a for a in menu.actions() if a.text().replace("&", "").rstrip("…") == word)
+            action = _named(menu.actions(), word)
             place = menu.actionGeometry(action).center()
             QTest.mouseMove(menu, place)
             QTest.mouseClick(menu, LEFT, PLAIN, place)
@@ -214,12 +217,13 @@ class Hands:
     def command(self, *words: str) -> None:
         """Click through the menus of the window."""
         bar = self.window.menuBar()
-        action = next(a for a in bar.actions() if a.text().replace("&", "") == words[0])
+        action = _named(bar.actions(), words[0])
         QTest.mouseClick(bar, LEFT, PLAIN, bar.actionGeometry(action).center())
         self.choose(action.menu(), *words[1:])
 
     def pick(self, picker: QComboBox, text: str) -> None:
         """Go through a picker's list by keys, and take an entry."""
+        text = said(text)
         picker.setFocus(Qt.FocusReason.MouseFocusReason)
         self.press(KEY.Key_Home)
         while picker.currentText() != text:
@@ -250,3 +254,20 @@ class Hands:
         """Choose the case whose loads are edited."""
         self.pick(self.window.tables.case_picker, name)
         self.press(KEY.Key_Return)
+
+
+def said(word: str) -> str:
+    """What a menu or a picker says for an English word, in the language of the window, without its key."""
+    if language() == SOURCE:
+        return word
+    messages = read_catalogue(catalogue_path(language())).messages
+    found = (texts[0] for (_context, message), texts in messages.items() if _plain(message) == word)
+    return _plain(next(found, word))
+
+
+def _plain(text: str) -> str:
+    return text.replace("&", "").rstrip("…")
+
+
+def _named(actions: Sequence[QAction], word: str) -> QAction:
+    return next(action for action in actions if _plain(action.text()) == said(word))

@@ -70,7 +70,7 @@ def hoisting(hands: Hands, steps: Steps) -> None:
         undo="Put on: Force at a joint",
     )
     hands.type_over("2")
-    hands.take("force", 0, "both", -60)
+    hands.take("force", 0, "both", -110)
     steps.end("force-pulled", "Its arrow is dragged through nothing to the other side")
     hands.exact("-6")
     steps.end("force-typed", "-6 typed meanwhile")

@@ -5,7 +5,7 @@ from __future__ import annotations
 from PySide6.QtCore import Qt
 
 from tests.gui.pointer import CTRL
-from tests.walk.hands import Hands
+from tests.walk.hands import Hands, said
 from tests.walk.steps import Steps
 
 KEY = Qt.Key
@@ -41,6 +41,6 @@ def both_ways(hands: Hands, steps: Steps) -> None:
     """The other way round, and across as the sample lies."""
     picker = hands.window.top_bar.layout_picker
     for text, slug in (("Upright", "whole-upright"), ("Across", "whole-across")):
-        if picker.currentText() != text:
+        if picker.currentText() != said(text):
             hands.pick(picker, text)
             steps.end(slug, f"Lay: {text.lower()}", undo="Lay")

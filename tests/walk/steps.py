@@ -8,6 +8,7 @@ from typing import Protocol
 from PySide6.QtCore import QCoreApplication, QDeadlineTimer, QEventLoop
 
 from app.gui.window import Window
+from app.words import SOURCE, language
 
 LONGEST_WAIT = 20_000  # ms for a solve; this member takes a few
 
@@ -41,12 +42,13 @@ class Steps:
     def end(self, name: str, words: str, *, undo: str | None = "", stale: bool = False) -> Step:
         """The step called `name` (a slug) is done; `words` tell what was done.
 
-        `undo` is what `Edit > Undo` must name now, where it is given; `stale` where the results must be
-        said to be out of date, as while something that cannot be read stands in a cell.
+        `undo` is what `Edit > Undo` must name now, where it is given and the window speaks English; `stale`
+        where the results must be said to be out of date, as while something that cannot be read stands in a
+        cell.
         """
         self._settle(stale=stale)
         step = self._seen(name)
-        if undo != "":
+        if undo != "" and language() == SOURCE:
             assert step.undo == undo, f"{name}: undo is {step.undo!r}, not {undo!r}"
         assert step.current is not stale, f"{name}: results are {'current' if step.current else 'stale'}"
         self.done.append(step)

@@ -63,7 +63,7 @@ class CellEntry:
     def caption(self) -> str:
         """Which cell it is and in what unit, and for how many it is typed."""
         name = self.model.step_name(self.index)
-        unit = self.model.heading(self._column)[1]
+        unit = self.model.unit_of(self._column)
         return self._for_many(f"{name} ({unit})" if unit else name)
 
     def _for_many(self, words: str) -> str:

@@ -201,12 +201,13 @@ class TableModel(RowsModel):
 
     def heading(self, column: int) -> tuple[str, str]:
         """The two lines of a column's heading: its title, and its unit with the load case it belongs to."""
-        case, unit = self._case_of(column), self._unit_of(column)
+        case, unit = self._case_of(column), self.unit_of(column)
         if len(case) > LONGEST_CASE:
             case = case[: LONGEST_CASE - 1] + "…"
         return self._columns[column].words, " · ".join(filter(None, (unit, case)))
 
-    def _unit_of(self, column: int) -> str:
+    def unit_of(self, column: int) -> str:
+        """The unit of a column's numbers, empty for texts."""
         quantity = self._columns[column].quantity
         return symbol(quantity, self._sight.system) if quantity else ""
 
@@ -222,7 +223,7 @@ class TableModel(RowsModel):
 
     def titled(self, column: int) -> str:
         """Both in one line."""
-        title, unit = self._columns[column].words, self._unit_of(column)
+        title, unit = self._columns[column].words, self.unit_of(column)
         return f"{title} ({unit})" if unit else title
 
     # Typing
