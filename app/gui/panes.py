@@ -12,6 +12,7 @@ from app.gui.sheet_view import SheetView
 from app.gui.status_line import StatusLine
 from app.gui.tables.pane import TablesPane
 from app.gui.top_bar import TopBar
+from app.gui.whole_rows import WholeRows
 
 _TABLES = ("entering", "")
 _TABLE_TOPICS = {
@@ -48,6 +49,7 @@ class Panes(QWidget):
         self.across = QSplitter(Qt.Orientation.Horizontal)
         self.down = QSplitter(Qt.Orientation.Vertical)
         self._lay_out()
+        self.whole_rows = WholeRows(self.down, tables)
 
     def _lay_out(self) -> None:
         self.across.addWidget(self._beside(self._symbols, self._sheet))
