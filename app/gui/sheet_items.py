@@ -14,6 +14,7 @@ from PySide6.QtWidgets import QGraphicsObject, QStyleOptionGraphicsItem, QWidget
 from app.drawing.ruler import Ruler
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import SheetLayout
+from app.gui.sheet_texts import Stretch, rest_of
 from app.gui.theme import Theme, colour
 
 
@@ -86,13 +87,16 @@ class CursorLine(Painted):
     def __init__(self, theme: Theme) -> None:
         super().__init__(theme, 20.0)
         self._line: tuple[QPointF, QPointF] | None = None
+        self._drawn: list[QLineF] = []
 
-    def set_pixel(self, along: float | None, layout: SheetLayout) -> None:
-        """The cursor's pixel along the axis, or None where it is not shown."""
-        across = layout.axes.across_of(layout.crossing)
-        self._line = None
+    def set_pixel(self, along: float | None, layout: SheetLayout, gaps: Sequence[Stretch] = ()) -> None:
+        """The cursor's pixel along the axis, or None where it is not shown; texts stand in the gaps."""
+        across, axes = layout.axes.across_of(layout.crossing), layout.axes
+        self._line, self._drawn = None, []
         if along is not None:
-            self._line = (layout.axes.point(along, across[0]), layout.axes.point(along, across[1]))
+            self._line = (axes.point(along, across[0]), axes.point(along, across[1]))
+            shown = rest_of(across, gaps)
+            self._drawn = [QLineF(axes.point(along, low), axes.point(along, high)) for low, high in shown]
         self.setVisible(along is not None)
         if self._line is not None:
             self.set_rect(QRectF(*self._line).normalized().adjusted(-2, -2, 2, 2))
@@ -102,11 +106,16 @@ class CursorLine(Painted):
         """The line's ends, or None."""
         return self._line
 
+    @property
+    def drawn(self) -> list[QLineF]:
+        """What is drawn of it, between the texts."""
+        return self._drawn
+
     def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """One crisp line."""
-        if self._line is not None:
-            painter.setPen(QPen(colour(self._theme.select), 1.4))
-            painter.drawLine(*self._line)
+        """One crisp line, with gaps; its caps would fill them."""
+        pen = QPen(colour(self._theme.select), 1.4, Qt.PenStyle.SolidLine, Qt.PenCapStyle.FlatCap)
+        painter.setPen(pen)
+        painter.drawLines(self._drawn)
 
 
 class Message(Painted):

@@ -20,6 +20,7 @@ from app.gui.hand.bubble import Bubble
 from app.gui.hand.marks import HandMarks
 from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
+from app.gui.sheet_texts import Stretch, texts_under
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import contents_of
@@ -156,6 +157,7 @@ class SheetScene(QGraphicsScene):
         """Draw a member at once, before there are results of it; the curves stay as they are until then."""
         self._take(project)
         self._place_drawing()
+        self._draw_cursor()
 
     def _take(self, project: Project) -> None:
         if project is not self._project:
@@ -348,10 +350,17 @@ class SheetScene(QGraphicsScene):
     def show_cursor(self, cursor: Cursor | None) -> None:
         """Draw the cursor, where it is in the window, and read the values there."""
         self._cursor = cursor
-        held = cursor is not None and self._ruler.holds(cursor.x)
-        self.cursor_line.set_pixel(self._ruler.pixel(cursor.x) if held else None, self._layout)
+        self._draw_cursor()
         self._values = self._values_at(cursor.x) if cursor is not None else resting() if self._results else ""
         self._say_values()
+
+    def _draw_cursor(self) -> None:
+        along, cursor, gaps = None, self._cursor, list[Stretch]()
+        if cursor is not None and self._ruler.holds(cursor.x):
+            along = self._ruler.pixel(cursor.x)
+            labels = (label.rect for strip in self.strips for label in strip.labels)
+            gaps = texts_under(along, self._layout.axes, self.drawing.picture.texts, labels)
+        self.cursor_line.set_pixel(along, self._layout, gaps)
 
     def set_pointer(self, point: QPointF | None) -> None:
         """Where the mouse is: of states drawn with their envelope the nearest is named."""

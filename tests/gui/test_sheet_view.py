@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import pytest
 from msgspec.structs import replace
-from PySide6.QtCore import QEvent, QPoint, QPointF, QSize, Qt
+from PySide6.QtCore import QEvent, QPoint, QPointF, QRectF, QSize, Qt
 from PySide6.QtGui import QColor, QMouseEvent, QPalette, QWheelEvent
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
@@ -329,3 +329,24 @@ def test_without_a_cursor_the_foot_says_how_to_read_values(window):
     assert "Point at the sheet" in window.sheet.readout
     window.view.set_cursor(Cursor(0.5))
     assert "Point at the sheet" not in window.sheet.readout
+
+
+@BOTH_WAYS
+def test_the_cursor_leaves_room_for_the_texts_that_it_meets(sheet, view, orientation):
+    sheet.set_orientation(orientation)
+    line, axes = sheet.scene().cursor_line, sheet.places.axes
+    met = 0
+    for part in range(1, 40):
+        x = PILE_RESULTS.position[-1] * part / 40
+        view.set_cursor(Cursor(float(x)))
+        along = sheet.ruler.pixel(x)
+        drawn = [sorted((axes.across_of(QRectF(s.p1(), s.p2())))) for s in line.drawn]
+        boxes = [t.box for t in sheet.drawing.picture.texts]
+        rects = [QRectF(b.left, b.top, b.right - b.left, b.bottom - b.top) for b in boxes]
+        for rect in (*rects, *(label.rect for strip in sheet.strips for label in strip.labels)):
+            first, last = axes.along_of(rect)
+            if first < along < last:
+                low, high = axes.across_of(rect)
+                met += 1
+                assert all(end <= low or begin >= high for begin, end in drawn)
+    assert met > 10
