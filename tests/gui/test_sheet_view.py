@@ -340,7 +340,7 @@ def test_the_cursor_leaves_room_for_the_texts_that_it_meets(sheet, view, orienta
         x = PILE_RESULTS.position[-1] * part / 40
         view.set_cursor(Cursor(float(x)))
         along = sheet.ruler.pixel(x)
-        drawn = [sorted((axes.across_of(QRectF(s.p1(), s.p2())))) for s in line.drawn]
+        drawn = [sorted(axes.across_of(QRectF(s.p1(), s.p2()))) for s in line.drawn]
         boxes = [t.box for t in sheet.drawing.picture.texts]
         rects = [QRectF(b.left, b.top, b.right - b.left, b.bottom - b.top) for b in boxes]
         for rect in (*rects, *(label.rect for strip in sheet.strips for label in strip.labels)):
