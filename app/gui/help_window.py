@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
+from math import inf
+from typing import NamedTuple
+
 from PySide6.QtCore import QEvent, QSize, Qt
-from PySide6.QtGui import QKeySequence, QPalette, QShortcut, QTextDocument
+from PySide6.QtGui import QKeySequence, QPalette, QShortcut, QTextCursor, QTextDocument
 from PySide6.QtWidgets import (
     QDialog,
     QHBoxLayout,
@@ -17,11 +20,20 @@ from PySide6.QtWidgets import (
 )
 
 from app.gui.help_page import HelpPage, marked
+from app.gui.help_search import Hit, hits
 from app.gui.theme import colour, theme_for
 from app.help.pages import PAGES
 from app.words import tr
 
 SIZE = (1020, 700)
+LEAST_TYPED = 2  # letters that are looked for while more are typed
+
+
+class _Began(NamedTuple):
+    page: str
+    begin: int  # position of the cursor or of what is selected
+    scroll: int
+    way: int  # how many pages Back led through
 
 
 class HelpWindow(QDialog):
@@ -31,6 +43,8 @@ class HelpWindow(QDialog):
         super().__init__(parent, Qt.WindowType.Window)
         self.setWindowTitle(tr("Help"))
         self._way: list[tuple[str, int]] = []  # pages gone through, with where they were scrolled to
+        self._began: _Began | None = None  # where the reading was when what is being typed was begun
+        self._others: dict[str, QTextDocument] = {}
         self.page = HelpPage()
         self.page.page_wanted.connect(self.show_page)
         self.list = self._make_list()
@@ -60,7 +74,7 @@ class HelpWindow(QDialog):
         self.search.setAccessibleName(tr("Find in help"))
         self.search.setClearButtonEnabled(True)
         self.search.returnPressed.connect(self.on_find)
-        self.search.textEdited.connect(lambda _text: self.told.clear())
+        self.search.textChanged.connect(self.on_typed)
         for keys, act in (
             (QKeySequence(QKeySequence.StandardKey.Find), self._go_to_search),
             (QKeySequence(Qt.KeyboardModifier.AltModifier | Qt.Key.Key_Left), self.on_back),
@@ -153,29 +167,71 @@ class HelpWindow(QDialog):
         self.search.setFocus(Qt.FocusReason.ShortcutFocusReason)
         self.search.selectAll()
 
+    def on_typed(self, text: str) -> None:
+        """The first place from where the reading was when the search began; Back leads there at once."""
+        self.told.clear()
+        if self._began is None:
+            self._began = self._here()
+        del self._way[self._began.way :]
+        began = self._began
+        if len(text.strip()) < LEAST_TYPED or not self._find(began, began.begin):
+            self._return_to(began)
+        if not text:
+            self._began = None
+        self._follow()
+
+    def _return_to(self, began: _Began) -> None:
+        if self.page.page != began.page:
+            self.page.show_page(began.page)
+            self.page.verticalScrollBar().setValue(began.scroll)
+
     def on_find(self) -> None:
         """The next place on this page, then on the pages after it, then from the top of this one."""
-        text = self.search.text().strip()
-        if not text or self.page.find(text):
-            self.told.clear()
-            return
-        pages = [page for page, _title in PAGES]
-        here = pages.index(self.page.page)
-        for page in (*pages[here + 1 :], *pages[: here + 1]):
-            if self._find_on(page, text):
-                self.told.clear()
-                return
-        self.told.setText(tr("“{text}” is nowhere in the help").format(text=text))
+        self._began = None
+        if self.search.text().strip():
+            here = self._here()
+            self._find(here, here.begin + 1)
 
-    def _find_on(self, page: str, text: str) -> bool:
-        """Go to a page if it holds the text."""
+    def _here(self) -> _Began:
+        begin = self.page.textCursor().selectionStart()
+        return _Began(self.page.page, begin, self.page.verticalScrollBar().value(), len(self._way))
+
+    def _find(self, here: _Began, begin: int) -> bool:
+        words = self.search.text().split()
+        for under_heading in (False, True):
+            for page, first, end in self._round(here.page, begin):
+                for hit in hits(self._document(page), words, under_heading=under_heading):
+                    if first <= hit.begin < end:
+                        self._show_hit(here, page, hit)
+                        return True
+        self.told.setText(tr("“{text}” is nowhere in the help").format(text=self.search.text().strip()))
+        return False
+
+    @staticmethod
+    def _round(here: str, begin: int) -> list[tuple[str, int, float]]:
+        """The pages in the order of the search, each with the positions between which to look."""
+        pages = [page for page, _title in PAGES]
+        at = pages.index(here)
+        others = [(page, 0, inf) for page in (*pages[at + 1 :], *pages[:at])]
+        return [(here, begin, inf), *others, (here, 0, begin)]
+
+    def _document(self, page: str) -> QTextDocument:
+        """The page that is shown, or another one's text, kept while the window is."""
+        if page == self.page.page:
+            return self.page.document()
+        if page not in self._others:
+            self._others[page] = QTextDocument(self)
+            self._others[page].setMarkdown(marked(page).text)
+        return self._others[page]
+
+    def _show_hit(self, here: _Began, page: str, hit: Hit) -> None:
+        self.told.clear()
+        if page != here.page:
+            self._way.append((here.page, here.scroll))
         if page != self.page.page:
-            other = QTextDocument()
-            other.setMarkdown(marked(page).text)
-            if other.find(text).isNull():
-                return False
-            self.show_page(page)
+            self.page.show_page(page)
         cursor = self.page.textCursor()
-        cursor.setPosition(0)
+        cursor.setPosition(hit.begin)
+        cursor.setPosition(hit.end, QTextCursor.MoveMode.KeepAnchor)
         self.page.setTextCursor(cursor)
-        return self.page.find(text)
+        self._follow()

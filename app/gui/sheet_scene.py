@@ -20,7 +20,7 @@ from app.gui.hand.bubble import Bubble
 from app.gui.hand.marks import HandMarks
 from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
-from app.gui.sheet_texts import Stretch, texts_under
+from app.gui.sheet_texts import texts_under
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import contents_of
@@ -355,11 +355,10 @@ class SheetScene(QGraphicsScene):
         self._say_values()
 
     def _draw_cursor(self) -> None:
-        along, cursor, gaps = None, self._cursor, list[Stretch]()
-        if cursor is not None and self._ruler.holds(cursor.x):
-            along = self._ruler.pixel(cursor.x)
-            labels = (label.rect for strip in self.strips for label in strip.labels)
-            gaps = texts_under(along, self._layout.axes, self.drawing.picture.texts, labels)
+        x = None if self._cursor is None else self._cursor.x
+        along = self._ruler.pixel(x) if x is not None and self._ruler.holds(x) else None
+        labels = (label.rect for strip in self.strips for label in strip.labels)
+        gaps = texts_under(along, self._layout.axes, self.drawing.picture.texts, labels)
         self.cursor_line.set_pixel(along, self._layout, gaps)
 
     def set_pointer(self, point: QPointF | None) -> None:

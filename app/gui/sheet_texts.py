@@ -13,8 +13,12 @@ Stretch = tuple[float, float]  # pixels across the axis
 AIR = 2.0  # px between a text and the line
 
 
-def texts_under(along: float, axes: Axes, texts: Iterable[Text], labels: Iterable[QRectF]) -> list[Stretch]:
-    """The stretches of texts that the line at the pixel `along` would run through."""
+def texts_under(
+    along: float | None, axes: Axes, texts: Iterable[Text], labels: Iterable[QRectF]
+) -> list[Stretch]:
+    """The stretches of texts that the line at the pixel `along` would run through; none without a line."""
+    if along is None:
+        return []
     boxes = [(text.box.left, text.box.right, text.box.top, text.box.bottom) for text in texts]
     boxes += [(rect.left(), rect.right(), rect.top(), rect.bottom()) for rect in labels]
     found = []

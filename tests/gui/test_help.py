@@ -236,3 +236,45 @@ def test_the_words_of_pictures_follow_the_language(qtbot, german):
     made.show_page("reading")
     assert made.page.toPlainText().startswith("Die Ergebnisse lesen")
     assert not picture(made.page, "findings").isNull()
+
+
+@pytest.mark.parametrize("typed", ["delete load", "loads delete", "LOAD  Delete"])
+def test_search_finds_all_words_in_any_order_as_they_are_typed(help_window, typed):
+    help_window.show_page("limits")
+    QTest.keyClicks(help_window.search, typed)
+    assert help_window.page.page == "shaping"
+    assert help_window.page.textCursor().block().text().startswith("To delete loads")
+    QTest.mouseClick(help_window.back, Qt.MouseButton.LeftButton)
+    assert help_window.page.page == "limits"
+    assert not help_window.back.isEnabled()
+
+
+def test_search_says_while_typing_that_nothing_is_found_and_takes_it_back(help_window):
+    help_window.show_page("entering")
+    QTest.keyClicks(help_window.search, "zeppelin")
+    assert "zeppelin" in help_window.told.text()
+    help_window.search.clear()
+    assert help_window.told.text() == ""
+
+
+def test_enter_goes_on_to_every_place_and_round(help_window):
+    help_window.show_page("entering")
+    QTest.keyClicks(help_window.search, "support")
+    seen = set()
+    for _time in range(200):
+        place = help_window.page.page, help_window.page.textCursor().selectionStart()
+        if place in seen:
+            break
+        seen.add(place)
+        assert help_window.page.textCursor().selectedText().lower() == "support"
+        QTest.keyClick(help_window.search, Qt.Key.Key_Return)
+    assert len({page for page, _at in seen}) > 3
+
+
+def test_words_of_one_heading_are_found_where_no_paragraph_has_them_all(help_window):
+    help_window.show_page("entering")
+    QTest.keyClicks(help_window.search, "lighter taper nudges")
+    assert help_window.told.text() != ""
+    help_window.search.clear()
+    QTest.keyClicks(help_window.search, "taper nudges")
+    assert help_window.page.page == "shaping"
