@@ -67,6 +67,7 @@ class Preview:
     project: Project | None
     reason: str = ""
     moving: bool = False  # under a hand that has not come to rest
+    by_hand: bool = False  # of a hand on the drawing, so that no cell holds its text
 
 
 class Document(QObject):

@@ -24,6 +24,7 @@ from solver.model import (
     SegmentLoad,
     TubeSection,
 )
+from tests.gui.hand import text_at
 from tests.gui.pointer import CTRL, SHIFT, Pointer, handle_of
 from tests.gui.windows import beyond_window, solved
 from tests.members import Part, case, member
@@ -108,6 +109,20 @@ class TestJoint:
         assert results.project is window.document.shown_project
         assert window.document.project.segments[3].length == 0.3
         assert results.project.segments[3].length > 0.3
+
+    def test_the_table_follows_too_and_goes_back(self, window, pointer):
+        table = window.tables.views["segments"]
+        total = table.table_model.index(table.table_model.rowCount() - 1, table.table_model.total_column)
+        before = text_at(table, 2, "length"), total.data()
+        pointer.grab("joint", 2, "end")
+        pointer.pull(40)
+        pulled = lengths(window, preview=True)
+        assert (text_at(table, 2, "length"), total.data()) != before
+        assert text_at(table, 2, "length") == f"{1000 * pulled[1]:g}"
+        assert f"{1000 * sum(pulled):g}" in total.data().replace("\u2009", "")
+        QTest.keyClick(window.sheet, Qt.Key.Key_Escape)
+        assert text_at(table, 2, "length") == before[0]
+        assert total.data().split(",")[0] == before[1].split(",")[0]
 
     def test_the_joint_stays_under_the_pointer_and_the_sheet_fits_afterwards(self, window, either):
         either.grab("joint", 2, "end")

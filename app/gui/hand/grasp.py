@@ -96,7 +96,7 @@ class Grasp(QObject):
     def _preview_of(self, project: Project) -> Preview | None:
         """None where it is what is committed."""
         moving = self.phase is Phase.PULLING
-        return None if project is self._document.project else Preview(project, moving=moving)
+        return None if project is self._document.project else Preview(project, moving=moving, by_hand=True)
 
     def preview_reason(self, reason: str) -> None:
         """What is typed makes no project: the results are not of it."""

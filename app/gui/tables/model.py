@@ -132,7 +132,7 @@ class TableModel(RowsModel):
         if column == 0 and self.table.adding is not None:
             return "+ " + tr(self.table.adding.hint)
         if column == self.total_column and self.table.total is not None:
-            return self.table.total(self._document.project, self._figures, self._sight)
+            return self.table.total(self._shown, self._figures, self._sight)
         return ""
 
     def _error(self, index: Index) -> str:

@@ -9,7 +9,7 @@ from collections.abc import Sequence
 
 from PySide6.QtCore import QAbstractTableModel, QModelIndex, QObject, QPersistentModelIndex, Qt, Signal
 
-from app.gui.document import Document, Draft, Snapshot
+from app.gui.document import Document, Draft, Preview, Snapshot
 from app.gui.places import Place
 from app.gui.tables.column import Column, Sight, Table
 from app.words import tr
@@ -44,9 +44,11 @@ class RowsModel(QAbstractTableModel):
         self.table = table
         self._document = document
         self._sight = sight
+        self._shown = document.project
         self._rows = table.rows(document.project, sight)
         self._columns = table.columns(document.project, sight)
         document.changed.connect(self.on_document_changed)
+        document.preview_changed.connect(self.on_preview_changed)
 
     def on_document_changed(self, snapshot: Snapshot) -> None:
         """Follow the document; the case that was edited may be gone."""
@@ -56,6 +58,25 @@ class RowsModel(QAbstractTableModel):
             self._sight = Sight(self._sight.system, cases - 1 if cases else None)
         self._follow(snapshot.project)
 
+    def on_preview_changed(self, preview: Preview | None) -> None:
+        """Follow a hand on the drawing; what is typed into a cell is shown by its editor alone."""
+        pulled = preview.project if preview is not None and preview.by_hand else None
+        shown = pulled or self._document.project
+        if shown is not self._shown:
+            self._shown = shown
+            self._renew_rows(self.table.rows(shown, self._sight))
+
+    def _renew_rows(self, new: tuple[object, ...]) -> None:
+        """Other values in the rows that there are; a hand seldom makes one or takes one away."""
+        old = self._rows
+        self._sync_rows(new)
+        differing = [row for row, (a, b) in enumerate(zip(old, new, strict=False)) if a != b]
+        if differing or len(old) != len(new):
+            last, columns = self.rowCount() - 1, len(self._columns) - 1
+            first, end = (differing[0], differing[-1]) if len(old) == len(new) else (0, last)
+            self.dataChanged.emit(self.index(first, 0), self.index(end, columns))
+            self.dataChanged.emit(self.index(last, 0), self.index(last, columns))  # the totals
+
     def set_sight(self, sight: Sight) -> None:
         """Read the table in other units or with the loads of another case."""
         if sight != self._sight:
@@ -63,6 +84,7 @@ class RowsModel(QAbstractTableModel):
             self._follow(self._document.project)
 
     def _follow(self, project: Project) -> None:
+        self._shown = project
         self._sync_columns(self.table.columns(project, self._sight))
         self._sync_rows(self.table.rows(project, self._sight))
         # Drafts and units can change any cell, so all are announced; an open editor keeps its text by itself.
