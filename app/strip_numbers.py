@@ -2,7 +2,8 @@
 
 A joint stands in two rows, one for each side, told apart by the segment. The points are those of the drawn
 curve, exact extremes included. Numbers have no thin spaces and a plain minus, so that they can be computed
-with, and the decimal sign of the user's language, as spreadsheets in that language read it.
+with, and the decimal sign of the user's language, as spreadsheets in that language read it. Rows of joints and
+of extremes have every digit; between them, where a curve is only drawn, numbers are rounded.
 """
 
 from __future__ import annotations
@@ -12,6 +13,8 @@ import io
 import math
 from collections.abc import Sequence
 from typing import TYPE_CHECKING
+
+import numpy as np
 
 from app.numerals import localised
 from app.phrases.states import state_words
@@ -27,6 +30,7 @@ if TYPE_CHECKING:
 
 Rows = list[list[str]]
 _DIGITS = 15  # all that survive a change of units
+_BETWEEN = 7  # digits between joints and extremes
 
 
 def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = KINDS) -> Rows:
@@ -38,9 +42,29 @@ def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = KIN
     of = _state_words(results, state)
     heads += [_head(f"{head}, {of}", quantity_of(kind), units) for head, kind, _values in shown]
     marks = [results.project.segments[index].mark for index in segment.tolist()]
-    written = [_written(x, "length", units), marks]
-    written += [_written(values, quantity_of(kind), units) for _head, kind, values in shown]
-    return [heads, *map(list, zip(*written, strict=True))]
+    values = [to_display(x, "length", units)]
+    values += [to_display(column, quantity_of(kind), units) for _head, kind, column in shown]
+    first, *others = map(_written, _rounded_between(values, segment))
+    return [heads, *map(list, zip(first, marks, *others, strict=True))]
+
+
+def _rounded_between(columns: list[FloatArray], segment: IntArray) -> list[FloatArray]:
+    """The columns, x first, rounded where no joint and no extreme is; nothing leaves its segment's range."""
+    begins = np.flatnonzero(np.diff(segment, prepend=-1))
+    counts = np.diff(begins, append=len(segment))
+    ranges = [
+        tuple(np.repeat(end.reduceat(values, begins), counts) for end in (np.fmin, np.fmax))
+        for values in columns
+    ]
+    exact = np.zeros(len(segment), dtype=bool)
+    for values, (low, high) in zip(columns, ranges, strict=True):
+        exact |= ((values == low) | (values == high)) & (low < high)
+    rounded = []
+    for values, (low, high) in zip(columns, ranges, strict=True):
+        short = np.array([float(f"{value:.{_BETWEEN}g}") for value in values.tolist()])
+        rounded.append(np.where(exact | (short < low) | (short > high), values, short))
+    in_order = bool(np.all(np.diff(rounded[0]) >= 0.0))
+    return rounded if in_order else [columns[0], *rounded[1:]]
 
 
 def _state_words(results: Results, state: int | None) -> str:
@@ -88,7 +112,6 @@ def _head(name: str, quantity: Quantity, units: UnitSystemName) -> str:
     return f"{name} ({unit})" if unit else name
 
 
-def _written(values: FloatArray, quantity: Quantity, units: UnitSystemName) -> list[str]:
+def _written(shown: FloatArray) -> list[str]:
     """Numbers in display units; empty where there is none, as where nothing was checked."""
-    shown = to_display(values, quantity, units).tolist()
-    return ["" if math.isnan(value) else localised(f"{value + 0.0:.{_DIGITS}g}") for value in shown]
+    return ["" if math.isnan(value) else localised(f"{value + 0.0:.{_DIGITS}g}") for value in shown.tolist()]

@@ -13,6 +13,7 @@ from app.gui import log
 from app.gui.document import Document
 from app.gui.settings import Settings
 from app.gui.worker import Delivery, LatestSolver
+from app.title_fields import TITLE_FIELDS
 from app.words import tr
 from solver.errors import InputError
 from solver.model import Project
@@ -56,6 +57,7 @@ class Printing(QObject):
         self._document = document
         self._settings = settings
         self._commit_editor = commit_editor
+        self._nameless = False  # whether nobody stands in the title block of what is being written
         self._worker = LatestSolver(write_sheet, self)
         self._worker.ready.connect(self.on_written)
         self._worker.failed.connect(self.on_failed)
@@ -82,13 +84,19 @@ class Printing(QObject):
         path = self._document.path
         self.told.emit(tr("writing {name} …").format(name=target.name))
         name, changed = path.name if path else "", not self._document.file_holds_it
+        sheet = self._document.project.sheet
+        self._nameless = not any(getattr(sheet, key).strip() for key, _words in TITLE_FIELDS)
         self._worker.request(SheetRequest(self._document.project, name, target, changed))
 
     def on_written(self, delivery: Delivery) -> None:
         """Done; says so, and what is not in it."""
         line = tr("{name} written").format(name=getattr(delivery.value, "name", ""))
         left_out = ", ".join(draft.name for draft in self._document.snapshot.drafts.values())
-        self.told.emit(tr("{line}, without: {cells}").format(line=line, cells=left_out) if left_out else line)
+        if left_out:
+            line = tr("{line}, without: {cells}").format(line=line, cells=left_out)
+        if self._nameless:
+            line = tr("{line}; its title block is empty: File > Title block…").format(line=line)
+        self.told.emit(line)
 
     def on_failed(self, delivery: Delivery) -> None:
         """Not done; says why. A fault of ours is logged."""

@@ -5,6 +5,7 @@ import threading
 
 import pytest
 from msgspec import UNSET
+from msgspec.structs import replace
 from PySide6.QtCore import QItemSelectionModel, QMimeData, QPoint, QPointF, Qt, QUrl
 from PySide6.QtGui import QAccessible, QColor, QDropEvent, QPalette, QWheelEvent
 from PySide6.QtTest import QTest
@@ -32,6 +33,7 @@ from app.gui.view import Shown
 from app.sheet.title import Origin, title_block
 from app.units import SYSTEM_NAMES
 from solver.errors import Cancelled
+from solver.model import SheetTexts
 from tests.gui.hand import begin, cell, chord, editor, enter, go_to
 from tests.gui.windows import dialog_of, end, finish, solved
 
@@ -712,6 +714,17 @@ def test_the_calc_sheet_is_written_in_the_background_under_the_files_name(qtbot,
         window.printing.write(target)
     assert target.read_bytes().startswith(b"%PDF")
     assert "rod.pdf written" in window.status.news.text()
+
+
+@pytest.mark.parametrize(
+    ("texts", "told"), [({}, True), ({"job": " "}, True), ({"checker": "E. Lund"}, False)]
+)
+def test_a_calc_sheet_with_an_empty_title_block_says_where_it_is(qtbot, window, tmp_path, texts, told):
+    window.document.commit(replace(window.document.project, sheet=SheetTexts(**texts)), "Title block")
+    with qtbot.waitSignal(window.printing._worker.ready, timeout=20000):
+        window.printing.write(tmp_path / "rod.pdf")
+    assert "rod.pdf written" in window.status.news.text()
+    assert ("empty: File > Title block…" in window.status.news.text()) is told
 
 
 def test_one_calc_sheet_at_a_time_and_none_is_dropped_unsaid(qtbot, window, tmp_path):
