@@ -2,8 +2,8 @@
 
 A joint stands in two rows, one for each side, told apart by the segment. The points are those of the drawn
 curve, exact extremes included. Numbers have no thin spaces and a plain minus, so that they can be computed
-with, and the decimal sign of the user's language, as spreadsheets in that language read it. Rows of joints and
-of extremes have every digit; between them, where a curve is only drawn, numbers are rounded.
+with, and the decimal sign of the user's language, as spreadsheets in that language read it. Rows of joints
+and of extremes have every digit; between them, where a curve is only drawn, numbers are rounded.
 """
 
 from __future__ import annotations
