@@ -234,4 +234,8 @@ class HelpWindow(QDialog):
         cursor.setPosition(hit.begin)
         cursor.setPosition(hit.end, QTextCursor.MoveMode.KeepAnchor)
         self.page.setTextCursor(cursor)
+        below = self.page.cursorRect().top() - self.page.viewport().height() // 2
+        if below > 0:  # what follows is to be read as well
+            bar = self.page.verticalScrollBar()
+            bar.setValue(bar.value() + below)
         self._follow()

@@ -244,6 +244,7 @@ def test_search_finds_all_words_in_any_order_as_they_are_typed(help_window, type
     QTest.keyClicks(help_window.search, typed)
     assert help_window.page.page == "shaping"
     assert help_window.page.textCursor().block().text().startswith("To delete loads")
+    assert help_window.page.cursorRect().top() < 0.6 * help_window.page.viewport().height()
     QTest.mouseClick(help_window.back, Qt.MouseButton.LeftButton)
     assert help_window.page.page == "limits"
     assert not help_window.back.isEnabled()
