@@ -2,7 +2,7 @@
 
 import numpy as np
 import pytest
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QEvent, Qt
 from PySide6.QtTest import QTest
 
 from app.gui.strips.company import Company, envelope_beside
@@ -14,6 +14,7 @@ from app.samples import read_sample
 from solver.fields import at, checked_states
 from solver.solve import solve
 from tests.drawn_members import busy_member
+from tests.gui.pointer import Pointer
 
 KINDS = ("displacement", "force", "stress", "utilisation")
 
@@ -77,8 +78,9 @@ def test_the_window_draws_them_and_names_the_nearest(window):
     strip = window.sheet.strips[1]
     assert len(thin(strip)) == len(strip.content.singles) > 1
     assert "thin: states" in [label.text for label in window.sheet.strips[0].labels]
-    for corner in (strip.place.rect.topLeft(), strip.place.rect.center()):  # it may be there already
-        QTest.mouseMove(window.sheet.viewport(), corner.toPoint())
+    pointer = Pointer(window)
+    pointer.at = strip.place.rect.center()
+    pointer.send(QEvent.Type.MouseMove)
     assert "nearest in N: " in window.sheet.readout
     window.sheet.setFocus()
     QTest.keyClick(window.sheet, Qt.Key.Key_Home)  # the pointer is not where the cursor is now

@@ -23,7 +23,7 @@ from app.gui.theme import Theme
 from app.words import tr
 
 MARGIN = 6  # px left and right of a cell's text
-BAR_WIDTH = 54
+BAR_WIDTH = 50
 BAR_HEIGHT = 8
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 

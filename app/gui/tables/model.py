@@ -204,7 +204,7 @@ class TableModel(RowsModel):
         case, unit = self._case_of(column), self.unit_of(column)
         if len(case) > LONGEST_CASE:
             case = case[: LONGEST_CASE - 1] + "…"
-        return self._columns[column].words, " · ".join(filter(None, (unit, case)))
+        return self._columns[column].words, ", ".join(filter(None, (unit, case)))
 
     def unit_of(self, column: int) -> str:
         """The unit of a column's numbers, empty for texts."""
