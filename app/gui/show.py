@@ -40,6 +40,7 @@ if TYPE_CHECKING:
 REST = 150  # ms without a move until the findings of what is pulled are worded
 HURRY = 0.003  # s of wording from which it waits for that
 GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
+GRACE_OF_A_PULL = 120  # ms: while a hand moves, each move is late by about a solve, and a mark would only flicker
 
 
 class Sheet(Protocol):
@@ -144,7 +145,7 @@ class Showing(QObject):
         self._newest = False
         self._fault = ""
         if not self._late.isActive():  # a burst of edits does not put the mark off
-            self._late.start()
+            self._late.start(GRACE_OF_A_PULL if self._is_pulled() else GRACE)
         self._wanted = Wanted(project, worded=not self._hurries())
         self.solver.request(self._wanted)
         if self._document.has_drafts:  # nothing that comes will be current, so there is nothing to wait for
@@ -190,11 +191,15 @@ class Showing(QObject):
         if not self._newest:
             self._show()
 
+    def _is_pulled(self) -> bool:
+        """Whether a number is moving under a hand."""
+        preview = self._document.preview
+        return preview is not None and preview.moving
+
     def _hurries(self) -> bool:
         """Whether a number is moving under a hand, so that findings which take long to word wait for rest."""
-        preview, worded = self._document.preview, self._worded
-        moving = preview is not None and preview.moving
-        if moving and worded is not None and worded.wording > HURRY:
+        worded = self._worded
+        if self._is_pulled() and worded is not None and worded.wording > HURRY:
             self._rest.start()
             return True
         return False
