@@ -40,7 +40,7 @@ if TYPE_CHECKING:
 REST = 150  # ms without a move until the findings of what is pulled are worded
 HURRY = 0.003  # s of wording from which it waits for that
 GRACE = 40  # ms, two frames: results that come sooner replace the old ones without a flicker
-GRACE_OF_A_PULL = 120  # ms: while a hand moves, each move is late by about a solve, and a mark would only flicker
+GRACE_OF_A_PULL = 120  # ms: while a hand moves, every move is late by about a solve; a mark would flicker
 
 
 class Sheet(Protocol):
