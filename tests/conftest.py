@@ -21,6 +21,7 @@ os.environ.pop("LANGUAGE", None)
 hypothesis.settings.register_profile(
     "quick",
     deadline=None,  # two shared cores: a slow example is no fault
+    suppress_health_check=[hypothesis.HealthCheck.too_slow],  # nor is one that is slow to make
     max_examples=40,
     derandomize=True,  # the same examples everywhere; the thorough profile looks for new ones
     database=None,
