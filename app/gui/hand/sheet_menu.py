@@ -7,6 +7,7 @@ and holds nothing that cannot be reached without it.
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
+from functools import partial
 from typing import Final
 
 from PySide6.QtCore import QEvent, QObject, QPoint, QPointF, Qt
@@ -166,8 +167,7 @@ class SheetMenu(QObject):
         for key in ORDER[table]:
             cell = Cell(table, record, key)
             if key in titles:
-                open_it = lambda cell=cell: self._in_place.open_cell(cell, records)  # noqa: E731
-                self._add(cells, titles[key], open_it)
+                self._add(cells, titles[key], partial(self._in_place.open_cell, cell, records))
 
     def _add_kinds(self, menu: QMenu, on: tuple[str, ...], indexes: tuple[int, ...]) -> None:
         """What can be put on, and what of it is there to be taken off."""
