@@ -147,7 +147,9 @@ def _record(value: object, described: inspect.StructType, place: Place, faults: 
 
 
 def _one_of(value: object, described: inspect.UnionType, place: Place, faults: Faults) -> Any:
-    """One of several records, told apart by their tag (`shape`, `kind`)."""
+    """One of several records, told apart by their tag (`shape`, `kind`), or a word or a number."""
+    if not any(isinstance(kind, inspect.StructType) for kind in described.types):
+        return _word_or_number(value, described, place, faults)
     kinds = {kind.tag: kind for kind in described.types if isinstance(kind, inspect.StructType)}
     key = next(iter(kinds.values())).tag_field or ""
     if not isinstance(value, Mapping):
@@ -162,6 +164,12 @@ def _one_of(value: object, described: inspect.UnionType, place: Place, faults: F
     if not isinstance(tag, str):
         return _wrong_type(faults, (*place, key), "text", tag)
     return _not_a_choice(tag, tuple(kinds), (*place, key), faults)
+
+
+def _word_or_number(value: object, described: inspect.UnionType, place: Place, faults: Faults) -> Any:
+    by_type = {type(kind): kind for kind in described.types}
+    number = isinstance(value, int | float) and not isinstance(value, bool)
+    return convert(value, by_type[inspect.FloatType if number else inspect.LiteralType], place, faults)
 
 
 _CONVERTERS: Mapping[type[inspect.Type], Callable[[Any, Any, Place, Faults], Any]] = {

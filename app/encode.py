@@ -13,16 +13,8 @@ from typing import Any
 
 from msgspec import UNSET, Struct, structs
 
-from solver.model import (
-    ABSENT_DISPLAY,
-    ABSENT_LIMITS,
-    ABSENT_SHEET,
-    AbsentList,
-    AbsentNumber,
-    AbsentTable,
-    AbsentText,
-    Project,
-)
+from solver.absent import AbsentList, AbsentNumber, AbsentTable, AbsentText
+from solver.model import ABSENT_DISPLAY, ABSENT_LIMITS, ABSENT_SHEET, Project
 
 _ABSENT_KINDS = (AbsentNumber, AbsentText, AbsentList, AbsentTable)
 _ABSENT_RECORDS = (ABSENT_SHEET, ABSENT_DISPLAY, ABSENT_LIMITS)

@@ -20,7 +20,11 @@ _QUANTITIES: Final[Mapping[str, Quantity]] = {
          "diameter_end", "outer_end", "inner_end", "width_end", "depth_end"), "size"),
     **dict.fromkeys(("area", "area_end"), "area"),
     **dict.fromkeys(("second_moment", "second_moment_end"), "second_moment"),
-    **dict.fromkeys(("allowable_tension", "allowable_compression"), "stress"),
+    "fillet_radius": "size",
+    **dict.fromkeys(("allowable_tension", "allowable_compression", "allowable_peak",
+                     "amplitude", "ultimate"), "stress"),
+    "translation": "spring",
+    "rotation": "rotation_spring",
     "modulus": "modulus",
     "expansion": "expansion",
     "density": "density",
@@ -31,7 +35,7 @@ _QUANTITIES: Final[Mapping[str, Quantity]] = {
     **dict.fromkeys(("temperature_start", "temperature_end"), "temperature"),
     "force": "force",
     "gravity": "acceleration",
-    "allowable_factor": "factor",
+    **dict.fromkeys(("allowable_factor", "factor", "stability_factor"), "factor"),
 }  # fmt: skip
 
 _WORDS: Final[Mapping[str, str]] = {
@@ -63,6 +67,13 @@ _WORDS: Final[Mapping[str, str]] = {
     "segment": later("segment"), "joint": later("joint"), "from": later("from"), "to": later("to"),
     "force": later("force"), "movement": later("movement"), "gravity": later("gravity"),
     "factors": later("factor"), "allowable_factor": later("factor on the allowable stresses"),
+    "supports": later("support"), "shoulder": later("shoulder"), "fillet_radius": later("fillet radius"),
+    "factor": later("factor"), "lateral": later("lateral support"), "translation": later("translation"),
+    "rotation": later("rotation"), "bonded": later("bonded part"), "companions": later("companion"),
+    "acts": later("way of acting"), "allowable_peak": later("allowable peak stress"),
+    "endurance": later("endurance"), "amplitude": later("amplitude"), "ultimate": later("ultimate stress"),
+    "fatigue": later("fatigue range"), "stability_factor": later("required stability factor"),
+    "waived": later("waiver"), "check": later("check"), "reason": later("reason"),
     "limit": later("limit"), "format": later("format"), "version": later("version"),
 }  # fmt: skip
 

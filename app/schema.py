@@ -13,15 +13,22 @@ from msgspec import NODEFAULT, Struct, inspect
 
 from app.encode import plain
 from solver.model import (
+    DEFAULT_ACTION,
     DEFAULT_ORIENTATION,
     DEFAULT_UNITS,
     AreaSection,
+    BondedPart,
     Combination,
+    Companion,
+    CompanionSegment,
     DisplacementLimit,
     Display,
+    Endurance,
+    FatigueRange,
     FixedSupport,
     Joint,
     JointLoad,
+    Lateral,
     Limits,
     LoadCase,
     Material,
@@ -33,9 +40,11 @@ from solver.model import (
     Segment,
     SegmentLoad,
     SheetTexts,
+    Shoulder,
     SpringSupport,
     StopSupport,
     TubeSection,
+    Waiver,
 )
 
 _DIALECT: Final = "https://json-schema.org/draft/2020-12/schema"
@@ -52,8 +61,10 @@ KEYS: Final[dict[type[Struct], dict[str, str]]] = {
         "materials": "Materials; their names are unique",
         "joints": "The n + 1 joints in order along the axis; their marks are unique",
         "segments": "The n segments in order along the axis, each between two joints; their marks are unique",
+        "companions": "Second chains beside the member; the marks of their segments differ from the member's",
         "load_cases": "Loads that come together; their names are unique",
         "combinations": "Factored load cases that are checked; with none, each case is checked alone",
+        "fatigue": "Pairs of combinations between which the stress goes back and forth",
         "limits": "What the member must keep within beside the allowable stresses",
     },
     SheetTexts: {
@@ -75,10 +86,27 @@ KEYS: Final[dict[type[Struct], dict[str, str]]] = {
         "allowable_tension": "Allowable stress in tension, Pa; without it tension is not checked",
         "allowable_compression": "Allowable stress in compression, Pa, positive; without it compression "
         "is not checked",
+        "allowable_peak": "Allowable peak stress at shoulders, Pa, either sign; without it it is not checked",
+        "endurance": "What the material endures under stress that goes back and forth",
+    },
+    Endurance: {
+        "amplitude": "Amplitude endured without mean stress, Pa; size, finish and reliability are in it",
+        "ultimate": "Mean stress endured without amplitude, Pa",
     },
     Joint: {
         "mark": "Label on the drawing, that loads and limits refer to",
         "support": "What holds the joint along the axis; free where left out",
+        "supports": "Several supports at one joint, instead of support",
+        "shoulder": "Step that raises the stress, by its fillet radius or its factor",
+        "lateral": "What holds the joint sideways, for stability; free where left out",
+    },
+    Shoulder: {
+        "fillet_radius": "Fillet radius of a step from round to round, m",
+        "factor": "Stress concentration factor on the nominal stress of the smaller side",
+    },
+    Lateral: {
+        "translation": "free, fixed, or a stiffness, N/m; free where left out",
+        "rotation": "free, fixed, or a stiffness, N·m/rad; free where left out",
     },
     FixedSupport: {"kind": "Held at its movement"},
     SpringSupport: {"kind": "Pulled back in proportion", "stiffness": "Stiffness, N/m"},
@@ -95,6 +123,21 @@ KEYS: Final[dict[type[Struct], dict[str, str]]] = {
         "section": "Cross-section, told apart by its shape",
         "bedding": "Elastic resistance along the axis per length and displacement at the start, N/m²",
         "bedding_end": f"The same at the end, N/m²{_FOLLOWS}",
+        "bonded": "Parts that share the segment's strain, beside its own material and section",
+    },
+    BondedPart: {"material": "Name of a material", "section": "Cross-section, told apart by its shape"},
+    Companion: {
+        "mark": "Label on the drawing",
+        "from": "Mark of the joint where it begins; it stays tied there",
+        "to": "Mark of a joint further along, where one that acts one way only parts",
+        "acts": "both, or in compression only (it can separate), or in tension only (it can go slack)",
+        "segments": "Its segments in order along the axis; their lengths add up to the distance spanned",
+    },
+    CompanionSegment: {
+        "mark": "Label on the drawing, that loads refer to",
+        "length": "Length, m",
+        "material": "Name of a material",
+        "section": "Cross-section, told apart by its shape",
     },
     AreaSection: {
         "shape": "Known by its area alone",
@@ -150,7 +193,11 @@ KEYS: Final[dict[type[Struct], dict[str, str]]] = {
         "displacement": "Limits on displacements, at most one a joint",
         "relative": "Limits on displacements of one joint against another",
         "reaction": "Limits on reactions, at most one a joint",
+        "stability_factor": "Least factor between the loads and the elastic critical load",
+        "waived": "Checks that are done without, each with its reason",
     },
+    Waiver: {"check": "Which check", "reason": "Why it is done without; printed"},
+    FatigueRange: {"from": "Name of one combination", "to": "Name of the other combination"},
     DisplacementLimit: {"joint": "Mark of the joint", "limit": "Largest displacement either way, m"},
     RelativeLimit: {
         "from": "Mark of one joint",
@@ -162,7 +209,9 @@ KEYS: Final[dict[type[Struct], dict[str, str]]] = {
 
 # Defaults that stand in no field, since the model keeps "left out" apart from them.
 _RESOLVED: Final[dict[type[Struct], dict[str, str]]] = {
-    Display: {"units": DEFAULT_UNITS, "orientation": DEFAULT_ORIENTATION}
+    Display: {"units": DEFAULT_UNITS, "orientation": DEFAULT_ORIENTATION},
+    Companion: {"acts": DEFAULT_ACTION},
+    Lateral: {"translation": "free", "rotation": "free"},
 }
 
 
@@ -174,6 +223,9 @@ def schema() -> dict[str, Any]:
         _describe(definitions[record.__name__], record, words)
     definitions["Project"]["properties"]["segments"]["minItems"] = 1
     definitions["Project"]["properties"]["joints"]["minItems"] = 2
+    definitions["Companion"]["properties"]["segments"]["minItems"] = 1
+    definitions["Shoulder"]["oneOf"] = [{"required": ["fillet_radius"]}, {"required": ["factor"]}]
+    definitions["Joint"]["not"] = {"required": ["support", "supports"]}
     area = definitions[AreaSection.__name__]
     area["dependentRequired"] = {"second_moment_end": ["second_moment"]}
     return {"$schema": _DIALECT, "title": "Barwright project", **made}

@@ -68,6 +68,7 @@ ALLOWED: Final[Mapping[Quantity, tuple[Mapping[str, Product], Product]]] = {
     "stress": (_STRESSES | _FORCES | _LENGTHS, _PASCAL),
     "modulus": (_STRESSES | _FORCES | _LENGTHS, _PASCAL),
     "spring": (_FORCES | _LENGTHS | _PER_LENGTH, {"newton": 1, "meter": -1}),
+    "rotation_spring": (_FORCES | _LENGTHS | _plain(rad="radian"), {"newton": 1, "meter": 1, "radian": -1}),
     "bedding": (_STRESSES | _FORCES | _LENGTHS | _PER_LENGTH, _PASCAL),
     "temperature": (_TEMPERATURES, {"kelvin": 1}),
     "expansion": (_TEMPERATURES | _LENGTHS | _RATIOS, {"kelvin": -1}),

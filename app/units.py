@@ -31,6 +31,7 @@ Quantity: TypeAlias = Literal[
     "stress",
     "modulus",
     "spring",
+    "rotation_spring",  # moment per radian
     "bedding",
     "temperature",
     "expansion",
@@ -88,6 +89,7 @@ _KILONEWTONS: _Units = {
     "force": Unit("kN", _KILO),
     "distributed": Unit("kN/m", _KILO),
     "spring": Unit("kN/mm", _KILO**2),
+    "rotation_spring": Unit("kN·m/rad", _KILO),
 }
 
 
@@ -106,6 +108,7 @@ def _inches(force: str, stress: str, force_factor: Fraction) -> _Units:
         "stress": Unit(stress, per_area),
         "modulus": Unit(stress, per_area),
         "spring": Unit(f"{force}/in", per_inch),
+        "rotation_spring": Unit(f"{force}·in/rad", force_factor * _INCH),
         "bedding": Unit(f"{force}/in²", per_area),
         "temperature": Unit("°F", Fraction(5, 9)),
         "expansion": Unit("1/°F", Fraction(9, 5)),
@@ -120,6 +123,7 @@ _NEWTONS: Final[_Units] = {
     "force": Unit("N", _ONE),
     "distributed": Unit("N/mm", _KILO),
     "spring": Unit("N/mm", _KILO),
+    "rotation_spring": Unit("N·m/rad", _ONE),
 }
 _METRES: Final[_Units] = {"length": Unit("m", _ONE), "bedding": Unit("kN/m²", _KILO)}
 

@@ -29,10 +29,15 @@ Rule: TypeAlias = Literal[
     "too_few_segments",
     "joint_count",  # facts: joints, segments
     "duplicate_mark",  # facts: value, first (place)
-    "unknown_reference",  # facts: kind (segment, joint, material, load case), value, nearest (or None)
+    "unknown_reference",  # facts: kind (segment, joint, material, …), value, nearest (or None)
     "inner_not_below_outer",  # facts: inner, outer, end (start or end)
     "duplicate_limit",  # facts: joint, first
     "same_joint",  # facts: joint
+    "both_keys",  # facts: key, other: only one of the two may stand there
+    "neither_key",  # facts: key, other: one of the two must
+    "no_companion_segments",
+    "companion_order",  # facts: from, to (joints)
+    "same_combination",  # facts: combination
     # of an edit that cannot be made
     "not_inside",  # facts: length, value: a split must lie inside the segment
     "parts_differ",  # facts: kind (material, section): segments to be joined are unlike in it
@@ -43,6 +48,7 @@ Rule: TypeAlias = Literal[
     "not_held",
     "stop_not_yet",  # facts: joint
     "movement_without_support",  # facts: joint, case
+    "companion_length",  # facts: companion, length, span, difference, kind (too_long, too_short)
 ]
 
 

@@ -20,63 +20,16 @@ from typing import Annotated, Final, Literal, TypeAlias
 
 from msgspec import UNSET, Meta, Struct, UnsetType, field
 
+from solver.absent import absent_list, absent_one, absent_table, absent_text, absent_zero
+
 FORMAT: Final = "barwright-project"
 VERSION: Final = 1
-
-
-class AbsentNumber(float):
-    """A number the file does not hold; computes and compares as its default."""
-
-    __slots__ = ()
-
-
-class AbsentText(str):
-    """A text the file does not hold; reads as its default."""
-
-    __slots__ = ()
-
-
-class AbsentList(tuple[()]):
-    """A list the file does not hold; empty."""
-
-    __slots__ = ()
-
-
-class AbsentTable(dict[str, float]):
-    """A table of numbers the file does not hold; empty."""
-
-    __slots__ = ()
-
-
-# Factories rather than shared default objects: msgspec's JSON Schema cannot show a default of our own type.
-def absent_zero() -> float:
-    """A 0 that was never written."""
-    return AbsentNumber(0.0)
-
-
-def absent_one() -> float:
-    """A 1 that was never written."""
-    return AbsentNumber(1.0)
-
-
-def absent_text() -> str:
-    """An empty text that was never written."""
-    return AbsentText("")
-
-
-def absent_list() -> tuple[()]:
-    """An empty list that was never written."""
-    return AbsentList()
-
-
-def absent_table() -> Mapping[str, float]:
-    """An empty table that was never written."""
-    return AbsentTable()
 
 
 Number: TypeAlias = float
 Positive: TypeAlias = Annotated[float, Meta(gt=0)]
 NotNegative: TypeAlias = Annotated[float, Meta(ge=0)]
+AtLeastOne: TypeAlias = Annotated[float, Meta(ge=1)]
 Name: TypeAlias = Annotated[str, Meta(min_length=1)]
 
 
@@ -130,8 +83,21 @@ def end_of(start: float, end: float | UnsetType) -> float:
     return start if isinstance(end, UnsetType) else end
 
 
+class Endurance(Record, frozen=True, kw_only=True):
+    """The straight line of fatigue, both in Pa: amplitude alone at one end, mean alone at the other.
+
+    The amplitude is the one of the part: size, finish and reliability are in it already.
+    """
+
+    amplitude: Positive
+    ultimate: Positive
+
+
 class Material(Record, frozen=True):
-    """Modulus in Pa, expansion in 1/K, density in kg/m³, allowables in Pa (both positive)."""
+    """Modulus in Pa, expansion in 1/K, density in kg/m³, allowables in Pa (all positive).
+
+    `allowable_peak` is for the peak stress at shoulders, either sign.
+    """
 
     name: Name
     modulus: Positive
@@ -139,6 +105,8 @@ class Material(Record, frozen=True):
     density: NotNegative = field(default_factory=absent_zero)
     allowable_tension: Positive | UnsetType = UNSET
     allowable_compression: Positive | UnsetType = UNSET
+    allowable_peak: Positive | UnsetType = UNSET
+    endurance: Endurance | UnsetType = UNSET
 
 
 class Support(Record, frozen=True, kw_only=True, tag_field="kind"):
@@ -166,11 +134,49 @@ class StopSupport(Support, frozen=True, kw_only=True, tag="stop"):
 AnySupport: TypeAlias = FixedSupport | SpringSupport | StopSupport
 
 
+class Shoulder(Record, frozen=True, kw_only=True):
+    """A step between two segments that raises the stress; exactly one of the two is given.
+
+    `fillet_radius` in m for steps from round to round, `factor` the stress concentration factor Kt.
+    """
+
+    fillet_radius: Positive | UnsetType = UNSET
+    factor: AtLeastOne | UnsetType = UNSET
+
+
+LateralHold: TypeAlias = Literal["free", "fixed"] | Positive
+
+
+class Lateral(Record, frozen=True, kw_only=True):
+    """What holds a joint sideways, for stability: free where left out, or a stiffness (N/m; N m/rad)."""
+
+    translation: LateralHold | UnsetType = UNSET
+    rotation: LateralHold | UnsetType = UNSET
+
+
 class Joint(Record, frozen=True):
-    """An end of a segment; free where it has no support."""
+    """An end of a segment; free where it has no support.
+
+    `support` holds one support, `supports` several in their order; never both (see `supports_of`).
+    """
 
     mark: Name
     support: AnySupport | UnsetType = UNSET
+    supports: tuple[AnySupport, ...] = field(default_factory=absent_list)
+    shoulder: Shoulder | UnsetType = UNSET
+    lateral: Lateral | UnsetType = UNSET
+
+
+def supports_of(joint: Joint) -> tuple[AnySupport, ...]:
+    """All supports of a joint, however the file writes them; empty for a free joint."""
+    return joint.supports if isinstance(joint.support, UnsetType) else (joint.support,)
+
+
+class BondedPart(Record, frozen=True):
+    """A part that shares the strain of a segment, beside the segment's own material and section."""
+
+    material: Name
+    section: AnySection
 
 
 class Segment(Record, frozen=True):
@@ -182,6 +188,38 @@ class Segment(Record, frozen=True):
     section: AnySection
     bedding: NotNegative = field(default_factory=absent_zero)
     bedding_end: NotNegative | UnsetType = UNSET
+    bonded: tuple[BondedPart, ...] = field(default_factory=absent_list)
+
+
+class CompanionSegment(Record, frozen=True):
+    """A part of a companion; its mark is unique over the member and all companions."""
+
+    mark: Name
+    length: Positive
+    material: Name
+    section: AnySection
+
+
+CompanionAction: TypeAlias = Literal["both", "compression", "tension"]
+DEFAULT_ACTION: Final[CompanionAction] = "both"
+
+
+class Companion(Record, frozen=True, kw_only=True, rename={"start": "from", "end": "to"}):
+    """A second chain beside the member, from one of its joints to a later one; the file's keys: `from`, `to`.
+
+    One that acts in compression or tension only is tied at `from` and parts at `to`.
+    """
+
+    mark: Name
+    start: Name
+    end: Name
+    acts: CompanionAction | UnsetType = UNSET
+    segments: tuple[CompanionSegment, ...]
+
+    @property
+    def action(self) -> CompanionAction:
+        """How it acts, both ways where the file says nothing."""
+        return self.acts or DEFAULT_ACTION
 
 
 class SegmentLoad(Record, frozen=True):
@@ -220,6 +258,13 @@ class Combination(Record, frozen=True):
     allowable_factor: Positive = field(default_factory=absent_one)
 
 
+class FatigueRange(Record, frozen=True, rename={"start": "from", "end": "to"}):
+    """Stress that goes back and forth between two combinations; the file's keys are `from` and `to`."""
+
+    start: Name
+    end: Name
+
+
 class DisplacementLimit(Record, frozen=True):
     """|u| at a joint stays within `limit` (m)."""
 
@@ -242,12 +287,24 @@ class ReactionLimit(Record, frozen=True):
     limit: Positive
 
 
+class Waiver(Record, frozen=True):
+    """A check that the engineer does without, with the reason; it is shown as waived, never as passed."""
+
+    check: Literal["stability"]
+    reason: Name
+
+
 class Limits(Record, frozen=True):
-    """What the member must keep within beside the allowable stresses."""
+    """What the member must keep within beside the allowable stresses.
+
+    `stability_factor` is the least factor between the loads and the elastic critical load.
+    """
 
     displacement: tuple[DisplacementLimit, ...] = field(default_factory=absent_list)
     relative: tuple[RelativeLimit, ...] = field(default_factory=absent_list)
     reaction: tuple[ReactionLimit, ...] = field(default_factory=absent_list)
+    stability_factor: Positive | UnsetType = UNSET
+    waived: tuple[Waiver, ...] = field(default_factory=absent_list)
 
 
 ABSENT_LIMITS: Final = Limits()
@@ -311,7 +368,7 @@ def absent_display() -> Display:
 
 
 class Project(Record, frozen=True, kw_only=True):
-    """A whole project; n segments in a chain between n + 1 joints."""
+    """A whole project; n segments in a chain between n + 1 joints, companions beside them."""
 
     format: Literal["barwright-project"]
     version: Literal[1]
@@ -322,6 +379,8 @@ class Project(Record, frozen=True, kw_only=True):
     materials: tuple[Material, ...] = field(default_factory=absent_list)
     joints: tuple[Joint, ...]
     segments: tuple[Segment, ...]
+    companions: tuple[Companion, ...] = field(default_factory=absent_list)
     load_cases: tuple[LoadCase, ...] = field(default_factory=absent_list)
     combinations: tuple[Combination, ...] = field(default_factory=absent_list)
+    fatigue: tuple[FatigueRange, ...] = field(default_factory=absent_list)
     limits: Limits = field(default_factory=absent_limits)

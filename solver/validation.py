@@ -8,49 +8,41 @@ the others nor brings forth new ones.
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator
 from functools import cache
 from itertools import chain
-from typing import Any
 
 from msgspec import UNSET
 
 from solver.faults import Fault, Place, place_text
-from solver.model import (
-    AreaSection,
-    FixedSupport,
-    LoadCase,
-    Project,
-    SpringSupport,
-    StopSupport,
-    TubeSection,
-    end_of,
-)
+from solver.model import AreaSection, LoadCase, Project, StopSupport, TubeSection, end_of, supports_of
 from solver.nearest import nearest
+from solver.readable import duplicates, names, records, text
+from solver.rules_of_companions import companion_faults, companion_segments, length_faults
+from solver.rules_of_joints import joint_faults
 
 
 def faults(project: Project) -> tuple[Fault, ...]:
     """All faults of records together; empty for a well-formed project."""
-    rules = (_count_faults, _mark_faults, _reference_faults, _section_faults, _limit_faults)
+    rules = (
+        _count_faults,
+        _mark_faults,
+        joint_faults,
+        companion_faults,
+        _reference_faults,
+        _section_faults,
+        _limit_faults,
+    )
     return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
 def unsolvable(project: Project) -> tuple[Fault, ...]:
     """What keeps a well-formed project from being solved: not held, a stop, a movement without support."""
-    return (*_hold_faults(project), *_stop_faults(project), *_movement_faults(project))
+    rules = (_hold_faults, _stop_faults, _movement_faults, length_faults)
+    return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
 # --- records together ---
-
-
-def _records(value: object) -> Iterator[tuple[int, Any]]:
-    """The records of a list with their index; nothing where the list could not be read."""
-    return iter(enumerate(value)) if isinstance(value, tuple) else iter(())
-
-
-def _text(record: object, key: str) -> str | None:
-    value = getattr(record, key, None)
-    return value if isinstance(value, str) else None
 
 
 def _count_faults(project: Project) -> Iterator[Fault]:
@@ -64,7 +56,7 @@ def _count_faults(project: Project) -> Iterator[Fault]:
 _NAMED = (
     ("materials", "name"),
     ("joints", "mark"),
-    ("segments", "mark"),
+    ("companions", "mark"),
     ("load_cases", "name"),
     ("combinations", "name"),
 )
@@ -72,20 +64,13 @@ _NAMED = (
 
 def _mark_faults(project: Project) -> Iterator[Fault]:
     for name, key in _NAMED:
-        yield from _duplicates(name, key, getattr(project, name))
-
-
-def _duplicates(name: str, key: str, records: Sequence[object]) -> Iterator[Fault]:
-    first: dict[str, int] = {}
-    if _all_differ(records, key):
-        return
-    for index, record in _records(records):
-        mark = _text(record, key)
-        if mark is None:
-            continue
-        if first.setdefault(mark, index) != index:
-            facts = {"value": mark, "first": place_text((name, first[mark], key))}
-            yield Fault(place_text((name, index, key)), "duplicate_mark", facts)
+        listed = getattr(project, name)
+        if not _all_differ(listed, key):
+            yield from duplicates([((name, index, key), text(r, key)) for index, r in records(listed)])
+    beside = [((*place, "mark"), text(segment, "mark")) for place, segment in companion_segments(project)]
+    if beside or not _all_differ(project.segments, "mark"):
+        own = [(("segments", index, "mark"), text(s, "mark")) for index, s in records(project.segments)]
+        yield from duplicates([*own, *beside])
 
 
 def _all_differ(records: object, key: str) -> bool:
@@ -97,65 +82,83 @@ def _all_differ(records: object, key: str) -> bool:
 # --- references ---
 
 _KINDS = {
-    "segment": ("segments", "mark"),
     "joint": ("joints", "mark"),
     "material": ("materials", "name"),
     "load case": ("load_cases", "name"),
+    "combination": ("combinations", "name"),
 }
 _Reference = tuple[str, Place, object]
 
 
 def _reference_faults(project: Project) -> Iterator[Fault]:
-    names = {kind: _names(getattr(project, field), key) for kind, (field, key) in _KINDS.items()}
-    suggest = cache(lambda kind, value: nearest(value, names[kind] or ()))
+    known_names = {kind: names(getattr(project, field), key) for kind, (field, key) in _KINDS.items()}
+    known_names["segment"] = _segment_marks(project)
+    suggest = cache(lambda kind, value: nearest(value, known_names[kind] or ()))
     for kind, place, value in _references(project):
-        known = names[kind]
+        known = known_names[kind]
         if known is not None and isinstance(value, str) and value not in known:
             facts = {"kind": kind, "value": value, "nearest": suggest(kind, value)}
             yield Fault(place_text(place), "unknown_reference", facts)
 
 
-def _names(records: object, key: str) -> dict[str, None] | None:
-    """The names in their order; None where one could not be read, since any reference may mean that one."""
-    if not isinstance(records, tuple):
+def _segment_marks(project: Project) -> dict[str, None] | None:
+    """The marks of the member's segments and of the companions'; None where one could not be read."""
+    own = names(project.segments, "mark")
+    lists = [getattr(companion, "segments", None) for _, companion in records(project.companions)]
+    beside = [names(segments, "mark") for segments in lists]
+    if own is None or None in beside or not isinstance(project.companions, tuple):
         return None
-    names: list[Any] = [getattr(record, key, None) for record in records]
-    return dict.fromkeys(names) if set(map(type, names)) <= {str} else None
+    return dict.fromkeys(chain(own, *(marks for marks in beside if marks)))
 
 
 def _references(project: Project) -> Iterator[_Reference]:
     """Everything that names another record: of what kind, where, and the name."""
-    for index, segment in _records(project.segments):
-        yield "material", ("segments", index, "material"), _text(segment, "material")
-    for index, case in _records(project.load_cases):
+    for place, part in _parts(project):
+        yield "material", (*place, "material"), text(part, "material")
+    for index, companion in records(project.companions):
+        yield "joint", ("companions", index, "from"), text(companion, "start")
+        yield "joint", ("companions", index, "to"), text(companion, "end")
+    for index, case in records(project.load_cases):
         yield from _load_references(case, ("load_cases", index))
-    for index, combination in _records(project.combinations):
+    for index, combination in records(project.combinations):
         factors = getattr(combination, "factors", None)
         for name in factors if isinstance(factors, dict) else ():
             yield "load case", ("combinations", index, "factors", name), name
+    for index, span in records(project.fatigue):
+        yield "combination", ("fatigue", index, "from"), text(span, "start")
+        yield "combination", ("fatigue", index, "to"), text(span, "end")
     yield from _limit_references(project)
+
+
+def _parts(project: Project) -> Iterator[tuple[Place, object]]:
+    """All that has a material and a section: segments, what is bonded to them, companions' segments."""
+    for index, segment in records(project.segments):
+        yield ("segments", index), segment
+        for number, part in records(getattr(segment, "bonded", None)):
+            yield ("segments", index, "bonded", number), part
+    yield from companion_segments(project)
 
 
 def _load_references(case: LoadCase, place: Place) -> Iterator[_Reference]:
     for key, kind in (("segment_loads", "segment"), ("joint_loads", "joint")):
-        for index, load in _records(getattr(case, key, None)):
-            yield kind, (*place, key, index, kind), _text(load, kind)
+        for index, load in records(getattr(case, key, None)):
+            yield kind, (*place, key, index, kind), text(load, kind)
 
 
 def _limit_references(project: Project) -> Iterator[_Reference]:
     for key, ends in (("displacement", ("joint",)), ("relative", ("start", "end")), ("reaction", ("joint",))):
-        for index, limit in _records(getattr(project.limits, key, None)):
+        for index, limit in records(getattr(project.limits, key, None)):
             for end in ends:
                 file_key = {"start": "from", "end": "to"}.get(end, end)
-                yield "joint", ("limits", key, index, file_key), _text(limit, end)
+                yield "joint", ("limits", key, index, file_key), text(limit, end)
 
 
 # --- sections and limits ---
 
 
 def _section_faults(project: Project) -> Iterator[Fault]:
-    for index, segment in _records(project.segments):
-        section, place = getattr(segment, "section", None), ("segments", index, "section")
+    for part, record in _parts(project):
+        section, place = getattr(record, "section", None), (*part, "section")
         if isinstance(section, TubeSection):
             yield from _wall_faults(section, place)
         if isinstance(section, AreaSection) and _ends_in_nothing(section):
@@ -185,16 +188,27 @@ def _wall_fault(inner: object, outer: object, end: str, place: Place) -> Iterato
 def _limit_faults(project: Project) -> Iterator[Fault]:
     for key in ("displacement", "reaction"):
         yield from _duplicate_limits(key, getattr(project.limits, key, None))
-    for index, limit in _records(getattr(project.limits, "relative", None)):
-        start, end = _text(limit, "start"), _text(limit, "end")
+    for index, limit in records(getattr(project.limits, "relative", None)):
+        start, end = text(limit, "start"), text(limit, "end")
         if start is not None and start == end:
             yield Fault(place_text(("limits", "relative", index, "to")), "same_joint", {"joint": end})
+    yield from _waiver_faults(getattr(project.limits, "waived", None))
+    for index, span in records(project.fatigue):
+        start, end = text(span, "start"), text(span, "end")
+        if start is not None and start == end:
+            yield Fault(place_text(("fatigue", index, "to")), "same_combination", {"combination": end})
+
+
+def _waiver_faults(waived: object) -> Iterator[Fault]:
+    """A check is waived once, with one reason."""
+    named = [(("limits", "waived", index, "check"), text(w, "check")) for index, w in records(waived)]
+    yield from duplicates(named)
 
 
 def _duplicate_limits(key: str, limits: object) -> Iterator[Fault]:
     first: dict[str, int] = {}
-    for index, limit in _records(limits):
-        joint = _text(limit, "joint")
+    for index, limit in records(limits):
+        joint = text(limit, "joint")
         if joint is not None and first.setdefault(joint, index) != index:
             facts = {"joint": joint, "first": place_text(("limits", key, first[joint], "joint"))}
             yield Fault(place_text(("limits", key, index, "joint")), "duplicate_limit", facts)
@@ -205,8 +219,7 @@ def _duplicate_limits(key: str, limits: object) -> Iterator[Fault]:
 
 def _hold_faults(project: Project) -> Iterator[Fault]:
     """Held by any support or bedding; whether a stop holds depends on the loads, so it counts here."""
-    held = (FixedSupport, SpringSupport, StopSupport)
-    supported = any(isinstance(joint.support, held) for joint in project.joints)
+    supported = any(supports_of(joint) for joint in project.joints)
     bedded = any(s.bedding > 0 or end_of(s.bedding, s.bedding_end) > 0 for s in project.segments)
     if not (supported or bedded):
         yield Fault("joints", "not_held")
@@ -214,12 +227,12 @@ def _hold_faults(project: Project) -> Iterator[Fault]:
 
 def _stop_faults(project: Project) -> Iterator[Fault]:
     for index, joint in enumerate(project.joints):
-        if isinstance(joint.support, StopSupport):
+        if any(isinstance(support, StopSupport) for support in supports_of(joint)):
             yield Fault(place_text(("joints", index, "support")), "stop_not_yet", {"joint": joint.mark})
 
 
 def _movement_faults(project: Project) -> Iterator[Fault]:
-    free = {joint.mark for joint in project.joints if joint.support is UNSET}
+    free = {joint.mark for joint in project.joints if not supports_of(joint)}
     for index, case in enumerate(project.load_cases):
         for number, load in enumerate(case.joint_loads):
             if load.movement != 0 and load.joint in free:

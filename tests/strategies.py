@@ -7,18 +7,24 @@ is a fault of the program and not of floating point at its limits; tests of limi
 from __future__ import annotations
 
 from hypothesis import strategies as st
-from msgspec import UNSET
+from msgspec import UNSET, structs
 
 from solver.model import (
     FORMAT,
     VERSION,
     AreaSection,
+    BondedPart,
     Combination,
+    Companion,
+    CompanionSegment,
     DisplacementLimit,
     Display,
+    Endurance,
+    FatigueRange,
     FixedSupport,
     Joint,
     JointLoad,
+    Lateral,
     Limits,
     LoadCase,
     Material,
@@ -30,8 +36,11 @@ from solver.model import (
     Segment,
     SegmentLoad,
     SheetTexts,
+    Shoulder,
     SpringSupport,
+    StopSupport,
     TubeSection,
+    Waiver,
 )
 
 
@@ -234,3 +243,98 @@ def projects(draw: st.DrawFn, max_segments: int = 4) -> Project:
         combinations=tuple(draw(combinations(name, case_names)) for name in together),
         limits=draw(limits(between)),
     )
+
+
+# --- what few members have: the file holds it, each feature's own tests solve it ---
+
+
+def stops() -> st.SearchStrategy[StopSupport]:
+    """To either side, rigid or not."""
+    return st.builds(
+        StopSupport,
+        side=st.sampled_from(["plus", "minus"]),
+        clearance=numbers(0.0, 5e-3),
+        stiffness=maybe(numbers(1e5, 1e10)),
+    )
+
+
+def shoulders() -> st.SearchStrategy[Shoulder]:
+    """By fillet or by factor."""
+    fillets = st.builds(Shoulder, fillet_radius=numbers(1e-4, 0.02))
+    return fillets | st.builds(Shoulder, factor=numbers(1.0, 4.0))
+
+
+def laterals() -> st.SearchStrategy[Lateral]:
+    """Held, free, on a spring or left out."""
+    holds = maybe(st.sampled_from(["free", "fixed"]) | numbers(1e3, 1e9))
+    return st.builds(Lateral, translation=holds, rotation=holds)
+
+
+@st.composite
+def companions(draw: st.DrawFn, project: Project, mark: str) -> Companion:
+    """Of as many segments as the member has between the two joints, and as long."""
+    joints = project.joints
+    first = draw(st.integers(0, len(joints) - 2))
+    last = draw(st.integers(first + 1, len(joints) - 1))
+    parts = tuple(
+        CompanionSegment(f"{mark} of {s.mark}", s.length, s.material, draw(sections()))
+        for s in project.segments[first:last]
+    )
+    acts = draw(maybe(st.sampled_from(["both", "compression", "tension"])))
+    return Companion(mark=mark, start=joints[first].mark, end=joints[last].mark, acts=acts, segments=parts)
+
+
+@st.composite
+def full_projects(draw: st.DrawFn, max_segments: int = 4) -> Project:
+    """A well-formed project with every record that a file can hold."""
+    project = draw(projects(max_segments))
+    whole = structs.replace(
+        project,
+        materials=tuple(draw(_full_material(material)) for material in project.materials),
+        joints=tuple(draw(_full_joint(joint)) for joint in project.joints),
+        segments=tuple(structs.replace(s, bonded=draw(bonded(project))) for s in project.segments),
+        companions=tuple(draw(companions(project, mark)) for mark in draw(_few("beside", "around"))),
+        limits=draw(_full_limits(project.limits)),
+    )
+    named = [combination.name for combination in project.combinations]
+    if len(named) == 2:
+        whole = structs.replace(whole, fatigue=draw(st.just(()) | st.just((FatigueRange(*named),))))
+    return whole
+
+
+def _few(*marks: str) -> st.SearchStrategy[tuple[str, ...]]:
+    return st.integers(0, len(marks)).map(lambda count: marks[:count])
+
+
+def bonded(project: Project) -> st.SearchStrategy[tuple[BondedPart, ...]]:
+    """Parts that share a segment's strain, of the project's materials."""
+    named = st.sampled_from([material.name for material in project.materials])
+    return st.lists(st.builds(BondedPart, named, sections()), max_size=2).map(tuple)
+
+
+@st.composite
+def _full_material(draw: st.DrawFn, material: Material) -> Material:
+    line = st.builds(Endurance, amplitude=numbers(1e6, 4e8), ultimate=numbers(1e7, 1e9))
+    peak = draw(maybe(numbers(1e6, 8e8)))
+    return structs.replace(material, allowable_peak=peak, endurance=draw(maybe(line)))
+
+
+@st.composite
+def _full_joint(draw: st.DrawFn, joint: Joint) -> Joint:
+    beside = {"shoulder": draw(maybe(shoulders())), "lateral": draw(maybe(laterals()))}
+    return structs.replace(joint, **beside, **draw(_held(joint)))
+
+
+@st.composite
+def _full_limits(draw: st.DrawFn, limits: Limits) -> Limits:
+    reasons = texts().filter(bool)
+    waivers = st.just(()) | reasons.map(lambda reason: (Waiver("stability", reason),))
+    factor = draw(maybe(numbers(1.0, 5.0)))
+    return structs.replace(limits, stability_factor=factor, waived=draw(waivers))
+
+
+def _held(joint: Joint) -> st.SearchStrategy[dict[str, object]]:
+    """As it is, or by several supports, stops among them."""
+    lists = st.lists(supports() | stops(), min_size=1, max_size=3).map(tuple)
+    several = lists.map(lambda found: {"support": UNSET, "supports": found})
+    return st.just({}) | (several if joint.support is not UNSET else st.nothing())

@@ -26,10 +26,12 @@ _LOADS: Final = (("segment_loads", "segment", "segments"), ("joint_loads", "join
 def is_surely_sound(project: Project, since: Project) -> bool:
     """Whether it is as well formed as the project it was made from; False where that is not sure.
 
-    Values by themselves are taken to be right.
+    Values by themselves are taken to be right. Companions tie joints, marks and lengths together: not sure.
     """
     return (
-        project.combinations is since.combinations
+        not project.companions
+        and project.fatigue is since.fatigue
+        and project.combinations is since.combinations
         and project.limits is since.limits
         and len(project.joints) == len(project.segments) + 1
         and all(_names_stay(getattr(project, key), getattr(since, key), name) for key, name in _NAMED)
@@ -67,7 +69,7 @@ def _segments_are_sound(project: Project, since: Project) -> bool:
     if not segments:
         return True
     joints = project.joints[: len(segments) + 1]
-    rest = {"load_cases": (), "combinations": (), "limits": Limits()}
+    rest = {"load_cases": (), "combinations": (), "fatigue": (), "limits": Limits()}
     return not validation.faults(structs.replace(project, segments=segments, joints=joints, **rest))
 
 

@@ -11,7 +11,8 @@ from msgspec import UNSET, UnsetType, structs
 from app.edits.checking import checked
 from app.edits.linear import PAIRS
 from app.edits.parts import carried, join_segments
-from solver.model import LoadCase, Project, Record, SegmentLoad, absent_zero
+from solver.absent import absent_zero
+from solver.model import LoadCase, Project, Record, SegmentLoad
 
 
 def join_equal_neighbours(project: Project) -> Project:

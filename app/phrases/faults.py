@@ -58,6 +58,20 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("keep one of them"),
     ),
     "same_joint": (later("both ends are joint {joint}"), later("choose two different joints")),
+    "both_keys": (later("{key} and {other} cannot both stand here"), later("keep one of them")),
+    "neither_key": (later("either {key} or {other} must stand here"), later("add one of them")),
+    "no_companion_segments": (
+        later("a companion has at least one segment, this has none"),
+        later("add a segment"),
+    ),
+    "companion_order": (
+        later("a companion runs along the axis, but joint {from} lies beyond joint {to}"),
+        later("swap the two joints"),
+    ),
+    "same_combination": (
+        later("both ends are the combination {combination}"),
+        later("choose two different combinations"),
+    ),
     "not_inside": (
         later("a split must lie inside the segment, which is {length} long; given is {value}"),
         later("choose a place between its ends"),
@@ -90,6 +104,10 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("joint {joint} is moved by {case} but has no support to move"),
         later("give it a support or take the movement out"),
     ),
+    "companion_length": (
+        later("companion {companion} is {length} long and spans {span}; it is {difference} {kind}"),
+        later("make the lengths add up; a mismatch that is meant is a lack of fit"),
+    ),
 }
 
 _TYPES: Final[Mapping[str, str]] = {
@@ -103,6 +121,7 @@ _KINDS: Final[Mapping[str, str]] = {
     "load case": later("load case"), "load_case": later("load case"),
     "start": later("start"), "end": later("end"), "section": later("section shape"),
     "support": later("support"), "load": later("load"), "limit": later("limit"),
+    "combination": later("combination"), "too_long": later("too long"), "too_short": later("too short"),
 }  # fmt: skip
 JSON_SLIPS: Final[Mapping[str, str]] = {
     "empty": later("the file is empty"),

@@ -62,6 +62,11 @@ FACTS: dict[str, dict[str, object]] = {
     "inner_not_below_outer": {"inner": 0.06, "outer": 0.05, "end": "end"},
     "duplicate_limit": {"joint": "2", "first": "limits.displacement[0].joint"},
     "same_joint": {"joint": "2"},
+    "both_keys": {"key": "supports", "other": "support"},
+    "neither_key": {"key": "fillet_radius", "other": "factor"},
+    "no_companion_segments": {},
+    "companion_order": {"from": "2", "to": "0"},
+    "same_combination": {"combination": "Working"},
     "not_inside": {"length": 0.35, "value": 0.4},
     "parts_differ": {"kind": "material"},
     "joint_carries": {"kind": "support", "joint": "2"},
@@ -70,6 +75,13 @@ FACTS: dict[str, dict[str, object]] = {
     "not_held": {},
     "stop_not_yet": {"joint": "2"},
     "movement_without_support": {"joint": "1", "case": "Service"},
+    "companion_length": {
+        "companion": "S",
+        "length": 0.9,
+        "span": 0.85,
+        "difference": 0.05,
+        "kind": "too_long",
+    },
 }
 
 

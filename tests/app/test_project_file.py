@@ -18,10 +18,10 @@ from app.project_file import dump, parse, read, sha256, write
 from app.samples import names, sample_path
 from solver.model import ABSENT_LIMITS, Limits, Project
 from tests.documents import changed, documents, encoded, example, without
-from tests.strategies import projects
+from tests.strategies import full_projects
 
 
-@given(projects())
+@given(full_projects())
 def test_a_project_is_read_back_as_it_was(project: Project) -> None:
     assert parse(dump(project)) == project
 

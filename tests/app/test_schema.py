@@ -18,7 +18,7 @@ from tests.documents import changed, documents, encoded, example, faults_of
 SCHEMA = schema()
 # rules that concern records together or the text, which a schema cannot say
 BEYOND = {"joint_count", "duplicate_mark", "unknown_reference", "inner_not_below_outer", "duplicate_limit",
-          "same_joint", "not_utf8"}  # fmt: skip
+          "same_joint", "not_utf8", "companion_order", "same_combination"}  # fmt: skip
 
 
 def fits(value: Any, part: dict[str, Any]) -> bool:
@@ -48,6 +48,8 @@ WORDS: dict[str, Any] = {
     "$ref": lambda value, rule, _: fits(value, SCHEMA["$defs"][rule.rpartition("/")[2]]),
     "$defs": lambda *_: True,
     "type": lambda value, rule, _: TYPES[rule](value),
+    "oneOf": lambda value, rule, _: sum(fits(value, one) for one in rule) == 1,
+    "not": lambda value, rule, _: not isinstance(value, dict) or not fits(value, rule),
     "enum": lambda value, rule, _: any(value == one and isinstance(value, bool) is False for one in rule),
     "anyOf": lambda value, rule, _: any(fits(value, one) for one in rule),
     "discriminator": lambda *_: True,

@@ -15,13 +15,18 @@ from solver.nearest import nearest
 from solver.validation import faults, unsolvable
 from tests.documents import changed, encoded, example, faults_of
 from tests.members import Part, area, case, member
-from tests.strategies import projects
+from tests.strategies import full_projects, projects
 
 
 @given(projects())
 def test_a_well_formed_project_has_no_fault(project: Project) -> None:
     assert faults(project) == ()
     assert unsolvable(project) == ()
+
+
+@given(full_projects())
+def test_every_record_of_a_file_can_be_well_formed(project: Project) -> None:
+    assert faults(project) == ()
 
 
 def added(*place: Any, record: Any) -> Any:
