@@ -132,6 +132,11 @@ class Message(Painted):
         """What it says."""
         return self._text
 
+    @property
+    def boxes(self) -> list[QRectF]:
+        """Where it stands; empty while it says nothing."""
+        return [self._rect] if self._text else []
+
     def set_text(self, text: str, fonts: Fonts) -> None:
         """Say something else; nothing where empty."""
         self._text, self._fonts = text, fonts

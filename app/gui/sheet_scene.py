@@ -357,7 +357,7 @@ class SheetScene(QGraphicsScene):
     def _draw_cursor(self) -> None:
         x = None if self._cursor is None else self._cursor.x
         along = self._ruler.pixel(x) if x is not None and self._ruler.holds(x) else None
-        labels = (label.rect for strip in self.strips for label in strip.labels)
+        labels = [label.rect for strip in self.strips for label in strip.labels] + self._notice.boxes
         gaps = texts_under(along, self._layout.axes, self.drawing.picture.texts, labels)
         self.cursor_line.set_pixel(along, self._layout, gaps)
 

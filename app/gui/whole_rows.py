@@ -30,9 +30,9 @@ class WholeRows(QObject):
         return False
 
     def fit(self) -> None:
-        """Give the tables a little more or less; not where every row is in sight."""
+        """Give the tables a little more or less, before rows are more than are in sight."""
         view = self._tables.current_view()
-        if not view.isVisible() or view.verticalScrollBar().maximum() == 0:
+        if not view.isVisible():
             return
         row = view.verticalHeader().defaultSectionSize()
         over = view.viewport().height() % row

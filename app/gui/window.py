@@ -232,28 +232,20 @@ class Window(QMainWindow):
         self.document.opened.connect(self.placing.put_down)
         self.document.path_changed.connect(lambda _path: self.on_file_changed())
         self.view.shown_changed.connect(lambda _shown: self._show_pickers())
+        view = self.view
+        picked = self.top_bar.show_picked, view.strips_changed, view.looks_changed, view.together_changed
+        for signal in picked:  # what was done before is no news any more
+            signal.connect(lambda _how: self.status.tell(""))
         self.view.strips_changed.connect(self.store.set_strips)
         self.view.looks_changed.connect(self.store.set_looks)
         self.view.together_changed.connect(self.store.set_together)
         self.top_bar.show_picked.connect(self.view.set_shown)
         self.top_bar.units_picked.connect(self.on_units_picked)
         self.top_bar.layout_picked.connect(self.on_layout_picked)
-        for room in (
-            self.files,
-            self.printing,
-            self.edits,
-            self.recovery,
-            self.comparing,
-            self.taking,
-            self.in_place,
-            self.jump,
-            self.curing,
-            self.placing,
-            self.taking_off,
-            self.shaping,
-        ):
+        rooms = self.files, self.printing, self.edits, self.recovery, self.comparing, self.taking
+        at_hand = self.in_place, self.jump, self.curing, self.placing, self.taking_off, self.shaping
+        for room in (*rooms, *at_hand, self.hand):
             room.told.connect(self.status.tell)
-        self.hand.told.connect(self.status.tell)
         self.tables.noted.connect(self.status.tell)
         self.edits.inserted.connect(self.in_place.open_inserted)
         self.tables.rows_moved.connect(self.edits.move_before)

@@ -183,6 +183,19 @@ def test_results_on_their_way_are_not_kept(qtbot, window, table):
     solved(qtbot, window)
 
 
+@pytest.mark.parametrize("act", ["show", "look"])
+def test_what_was_forgotten_is_no_news_once_something_else_is_picked(window, act):
+    keep(window)
+    chord(window, KEY.Key_K, Qt.KeyboardModifier.ControlModifier | Qt.KeyboardModifier.ShiftModifier)
+    assert "forgotten" in window.status.news.text()
+    if act == "show":
+        window.top_bar.show_picker.setFocus()
+        QTest.keyClick(window.top_bar.show_picker, KEY.Key_Down)
+    else:
+        window.view.set_looks(replace(window.view.looks, displaced=True))
+    assert window.status.news.text() == ""
+
+
 def test_several_are_picked_and_forgotten_by_keys(window):
     keep(window, "One")
     keep(window, "Two")

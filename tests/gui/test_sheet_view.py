@@ -332,6 +332,19 @@ def test_without_a_cursor_the_foot_says_how_to_read_values(window):
 
 
 @BOTH_WAYS
+def test_the_cursor_leaves_room_for_what_says_that_results_are_out_of_date(sheet, view, orientation):
+    sheet.set_orientation(orientation)
+    sheet.show_results(PILE, PILE_RESULTS, current=False, waiting=False)
+    (box,) = sheet.scene()._notice.boxes
+    axes = sheet.places.axes
+    view.set_cursor(Cursor(sheet.ruler.position_at(axes.along(box.center()))))
+    low, high = axes.across_of(box)
+    drawn = [sorted(axes.across_of(QRectF(s.p1(), s.p2()))) for s in sheet.scene().cursor_line.drawn]
+    assert drawn
+    assert all(last <= low or first >= high for first, last in drawn)
+
+
+@BOTH_WAYS
 def test_the_cursor_leaves_room_for_the_texts_that_it_meets(sheet, view, orientation):
     sheet.set_orientation(orientation)
     line, axes = sheet.scene().cursor_line, sheet.places.axes

@@ -24,6 +24,17 @@ def test_the_row_for_adding_to_five_segments_is_seen_whole(qtbot, window, table)
     qtbot.waitUntil(lambda: table.viewport().rect().contains(table.visualRect(last)))
 
 
+@pytest.mark.parametrize("page", ["segments", "materials"])
+def test_rows_are_whole_before_there_are_more_than_are_in_sight(qtbot, window, page):
+    view = window.tables.views[page]
+    window.files.new()
+    window.tables.open_tab(0 if page == "segments" else 4)
+    window.resize(1280, 837)
+    row = view.verticalHeader().defaultSectionSize()
+    qtbot.waitUntil(lambda: window.height() == 837 and view.viewport().height() % row == 0)
+    assert view.verticalScrollBar().maximum() == 0
+
+
 @pytest.mark.parametrize("height", [771, 800])
 def test_rows_are_whole_in_any_window(qtbot, window, table, height):
     window.resize(1280, height)
