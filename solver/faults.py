@@ -42,12 +42,14 @@ Rule: TypeAlias = Literal[
     "not_inside",  # facts: length, value: a split must lie inside the segment
     "parts_differ",  # facts: kind (material, section): segments to be joined are unlike in it
     "joint_carries",  # facts: joint, kind (support, load, limit): joining would lose it
+    "companion_full",  # facts: companion: its other segments alone are too long
     "repeats",  # facts: count, most: how often segments can be repeated at once
     "several_records",  # facts: count: the cell stands for more than one load record
     # of solvability (place is the part of the model; facts name the combination where it matters)
     "not_held",
     "stop_not_yet",  # facts: joint
     "movement_without_support",  # facts: joint, case
+    "companions_not_yet",  # facts: companion
     "companion_length",  # facts: companion, length, span, difference, kind (too_long, too_short)
 ]
 

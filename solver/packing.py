@@ -130,6 +130,8 @@ def _segment_values(project: Project) -> FloatArray:
     values = np.zeros((len(project.load_cases), len(project.segments), 5))
     for case, row in zip(project.load_cases, values, strict=True):
         loads = case.segment_loads
+        if project.companions:  # theirs are no loads of the member
+            loads = tuple(load for load in loads if load.segment in index_of)
         places = np.fromiter((index_of[load.segment] for load in loads), dtype=np.intp, count=len(loads))
         numbers = _array(_numbers(loads)).reshape(-1, 5)
         if len(np.unique(places)) == len(places):  # which is most often so, and much faster

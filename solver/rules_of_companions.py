@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
+from decimal import Decimal
 
 from solver.faults import Fault, Place, place_text
 from solver.model import Companion, Project
@@ -51,7 +52,9 @@ def length_faults(project: Project) -> Iterator[Fault]:
         length = math.fsum(segment.length for segment in companion.segments)
         if abs(length - span) > LENGTH_TOLERANCE * span:
             kind = "too_long" if length > span else "too_short"
-            facts = {"companion": companion.mark, "length": length, "span": span, "kind": kind}
-            facts["difference"] = abs(length - span)
+            facts: dict[str, object] = {"companion": companion.mark, "kind": kind}
+            whole = Decimal(repr(float(span)))
+            own = sum(Decimal(repr(float(segment.length))) for segment in companion.segments)
+            facts |= {"length": float(own), "span": float(whole), "difference": float(abs(own - whole))}
             last = ("companions", index, "segments", len(companion.segments) - 1, "length")
             yield Fault(place_text(last), "companion_length", facts)

@@ -38,7 +38,7 @@ def faults(project: Project) -> tuple[Fault, ...]:
 
 def unsolvable(project: Project) -> tuple[Fault, ...]:
     """What keeps a well-formed project from being solved: not held, a stop, a movement without support."""
-    rules = (_hold_faults, _stop_faults, _movement_faults, length_faults)
+    rules = (_hold_faults, _stop_faults, _movement_faults, length_faults, _companion_faults)
     return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
@@ -229,6 +229,12 @@ def _stop_faults(project: Project) -> Iterator[Fault]:
     for index, joint in enumerate(project.joints):
         if any(isinstance(support, StopSupport) for support in supports_of(joint)):
             yield Fault(place_text(("joints", index, "support")), "stop_not_yet", {"joint": joint.mark})
+
+
+def _companion_faults(project: Project) -> Iterator[Fault]:
+    for index, companion in enumerate(project.companions):
+        place = place_text(("companions", index))
+        yield Fault(place, "companions_not_yet", {"companion": companion.mark})
 
 
 def _movement_faults(project: Project) -> Iterator[Fault]:

@@ -6,6 +6,15 @@ An edit that would give anything else raises `EditError` with the faults, and no
 from app.edits.cases import remove_case, set_factor
 from app.edits.cells import add_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
+from app.edits.companions import (
+    add_companion,
+    companions_at,
+    extend_companion,
+    fit_companion,
+    missing_length,
+    remove_companion_segments,
+    remove_companions,
+)
 from app.edits.loads import set_joint_load, set_segment_load
 from app.edits.member import delete_segments, insert_segment, move_segments, reverse_member
 from app.edits.mirroring import mirror_member
@@ -24,17 +33,24 @@ from app.edits.uniting import join_equal_neighbours
 
 __all__ = [
     "EditError",
+    "add_companion",
     "add_record",
+    "companions_at",
     "delete_segments",
+    "extend_companion",
+    "fit_companion",
     "free_joints",
     "insert_segment",
     "join_equal_neighbours",
     "join_segments",
     "mirror_member",
+    "missing_length",
     "move_segments",
     "moving_joints",
     "number_joints",
     "remove_case",
+    "remove_companion_segments",
+    "remove_companions",
     "remove_records",
     "rename_case",
     "rename_combination",

@@ -14,7 +14,7 @@ from msgspec import NODEFAULT, UNSET, Struct, inspect, structs
 
 from app.decode import convert, project_type
 from app.edits.checking import EditError, consistent, refused
-from app.edits.renaming import RENAMERS, rename
+from app.edits.renaming import is_of_a_name, rename
 from app.encode import plain
 from solver.faults import Fault, Place
 from solver.model import Project
@@ -28,7 +28,7 @@ def set_value(project: Project, place: Place, value: object) -> Project:
     A mark or name takes everything that refers to it along. EditError where the result is not well formed,
     KeyError or IndexError where there is no such place.
     """
-    if len(place) == 3 and (place[0], place[2]) in RENAMERS and isinstance(value, str):
+    if is_of_a_name(place) and isinstance(value, str):
         return rename(project, place, value)
     return consistent(_changed(project, project_type(), place, _setter(place, value)), project)
 

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from typing import TypeVar
 
 from msgspec import Struct, structs
 
+from app.edits.companions import fresh_companion_mark, fresh_piece_mark
 from app.edits.records import with_cases
-from solver.model import JointLoad, LoadCase, Project, SegmentLoad
+from solver.model import Companion, JointLoad, LoadCase, Project, SegmentLoad
 
 _L = TypeVar("_L", bound=Struct)
 Marks = Mapping[str, str]  # of the copied, to those of the copies
@@ -34,6 +35,35 @@ def with_loads_copied(
         )
 
     return with_cases(project, grown)
+
+
+def with_companions_copied(
+    project: Project, companions: Iterable[Companion], moved: Callable[[Companion], Companion]
+) -> tuple[Project, Marks]:
+    """The project with copies of companions, moved to other joints under marks of their own; not checked.
+
+    With it come the marks of the copies' segments, by those of the copied.
+    """
+    marks: dict[str, str] = {}
+    for companion in companions:
+        copy = structs.replace(moved(companion), mark=fresh_companion_mark(project))
+        of = {s.mark: mark for s, mark in zip(companion.segments, _piece_marks(project, copy), strict=True)}
+        segments = tuple(structs.replace(segment, mark=of[segment.mark]) for segment in copy.segments)
+        project = structs.replace(
+            project, companions=(*project.companions, structs.replace(copy, segments=segments))
+        )
+        marks |= of
+    return project, marks
+
+
+def _piece_marks(project: Project, companion: Companion) -> list[str]:
+    """Marks for the segments of a companion that is not there yet."""
+    empty = structs.replace(companion, segments=())
+    for piece in companion.segments:
+        whole = structs.replace(project, companions=(*project.companions, empty))
+        fresh = structs.replace(piece, mark=fresh_piece_mark(whole, companion.mark))
+        empty = structs.replace(empty, segments=(*empty.segments, fresh))
+    return [piece.mark for piece in empty.segments]
 
 
 def _grown(

@@ -12,6 +12,7 @@ from typing import TypeVar
 from msgspec import Struct, structs
 
 from app.edits.checking import checked
+from app.edits.companions import segment_marks, turned_companion, without_those_at
 from app.edits.linear import turned
 from app.edits.records import fresh_mark, kept, mapped, with_cases
 from app.encode import is_absent
@@ -55,7 +56,7 @@ def fresh_joint(project: Project, before: int) -> Joint:
 
 def fresh_segment_mark(project: Project, like: str) -> str:
     """A mark that no segment has yet."""
-    return fresh_mark((segment.mark for segment in project.segments), like)
+    return fresh_mark(segment_marks(project), like)
 
 
 def _like(project: Project, neighbour: int, *, at_start: bool) -> Segment:
@@ -88,16 +89,27 @@ def move_segments(project: Project, indices: Iterable[int], before: int) -> Proj
 
 
 def delete_segments(project: Project, indices: Iterable[int]) -> Project:
-    """The project without these segments and their loads, and without their far joints, loads and limits."""
+    """The project without these segments and their loads, and without their far joints, loads and limits.
+
+    Companions that end at one of those joints go with it.
+    """
     gone = set(indices)
     segments = tuple(segment for index, segment in enumerate(project.segments) if index not in gone)
     joints = tuple(joint for index, joint in enumerate(project.joints) if index - 1 not in gone)
     marks = {project.segments[index].mark for index in gone}
-    joint_marks = {project.joints[index + 1].mark for index in gone}
+    joint_marks = far_joints(project, gone)
     fresh = structs.replace(
-        project, segments=segments, joints=joints, limits=_limits_without(project.limits, joint_marks)
+        without_those_at(project, joint_marks),
+        segments=segments,
+        joints=joints,
+        limits=_limits_without(project.limits, joint_marks),
     )
     return checked(with_cases(fresh, lambda case: _without(case, marks, joint_marks)))
+
+
+def far_joints(project: Project, indices: Iterable[int]) -> set[str]:
+    """The marks of the joints that come and go with these segments."""
+    return {project.joints[index + 1].mark for index in indices}
 
 
 def _without(case: LoadCase, segments: set[str], joints: set[str]) -> LoadCase:
@@ -123,6 +135,7 @@ def reverse_member(project: Project) -> Project:
         project,
         joints=tuple(joint_turned(joint) for joint in reversed(project.joints)),
         segments=tuple(segment_turned(segment) for segment in reversed(project.segments)),
+        companions=mapped(project.companions, turned_companion),
     )
     return checked(with_cases(fresh, _case_turned))
 

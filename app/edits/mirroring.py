@@ -1,27 +1,31 @@
 """Mirroring the half: the member becomes symmetrical about its far end, which is then its middle.
 
 Segments and joints follow in reverse order with start and end swapped. Forces, loads and movements turn round
-with the side they are on; temperatures, lack of fit and bedding stay. Limits of joints are those of their
-mirror images too. The middle joint keeps its support; a force or movement of its own would push the halves
-the same way, which no symmetry has, so it is taken off. Gravity acts on both halves alike and stays.
+with the side they are on; temperatures, lack of fit and bedding stay. Companions have images too, and limits
+of joints are those of their mirror images. The middle joint keeps its support; a force or movement of its own
+would push the halves the same way, which no symmetry has, so it is taken off. Gravity acts on both halves
+alike and stays.
 """
 
 from __future__ import annotations
 
+from collections.abc import Callable, Sequence
+
 from msgspec import structs
 
 from app.edits.checking import checked
-from app.edits.copying import Marks, with_loads_copied
+from app.edits.companions import segment_marks, turned_companion
+from app.edits.copying import Marks, with_companions_copied, with_loads_copied
 from app.edits.member import joint_load_turned, joint_turned, segment_load_turned, segment_turned
 from app.edits.records import FreshMarks, kept, with_cases
 from app.encode import is_absent
-from solver.model import Limits, LoadCase, Project
+from solver.model import Companion, Limits, LoadCase, Project
 
 
 def mirror_member(project: Project) -> Project:
     """The project with the whole member's mirror image put behind its far end."""
     middle = project.joints[-1].mark
-    segments = _marks_of_images([segment.mark for segment in project.segments], "")
+    segments = _marks_of_images([segment.mark for segment in project.segments], "", segment_marks(project))
     joints = _marks_of_images([joint.mark for joint in project.joints[:-1]], middle)
     fresh = structs.replace(
         project,
@@ -29,14 +33,25 @@ def mirror_member(project: Project) -> Project:
         joints=(*project.joints, *_joint_images(project, joints)),
         limits=_limits_mirrored(project.limits, joints, middle),
     )
+    fresh, beside = with_companions_copied(fresh, project.companions, _turned_to({**joints, middle: middle}))
     fresh = with_cases(fresh, lambda case: _without_joint(case, middle))
-    return checked(with_loads_copied(fresh, [segments], [joints], segment_load_turned, joint_load_turned))
+    return checked(
+        with_loads_copied(fresh, [{**segments, **beside}], [joints], segment_load_turned, joint_load_turned)
+    )
 
 
-def _marks_of_images(marks: list[str], middle: str) -> Marks:
-    """A mark for the image of each, from the middle on; `middle` has none, and is gone on from."""
+def _turned_to(joints: Marks) -> Callable[[Companion], Companion]:
+    return lambda companion: turned_companion(companion, joints)
+
+
+def _marks_of_images(marks: list[str], middle: str, others: Sequence[str] = ()) -> Marks:
+    """A mark for the image of each, from the middle on; `middle` has none, and is gone on from.
+
+    `others` are taken as well.
+    """
     taken = [*marks, middle] if middle else marks
-    return dict(zip(reversed(marks), FreshMarks(taken).in_turn(len(marks), taken[-1]), strict=True))
+    fresh = FreshMarks((*taken, *others))
+    return dict(zip(reversed(marks), fresh.in_turn(len(marks), taken[-1]), strict=True))
 
 
 def _images(project: Project, marks: Marks) -> tuple[object, ...]:

@@ -13,6 +13,7 @@ from itertools import count, pairwise, zip_longest
 from msgspec import UNSET, structs
 
 from app.edits.checking import EditError, checked, refused
+from app.edits.companions import companions_at
 from app.edits.linear import cut, exact, parted, rounded, sum_of, united
 from app.edits.member import fresh_joint, fresh_segment_mark
 from app.edits.records import expanded, with_cases
@@ -100,6 +101,8 @@ def carried(project: Project, index: int) -> Iterator[str]:
         yield "load"
     if any(getattr(x, end) == joint.mark for key, end in LIMIT_JOINTS for x in getattr(project.limits, key)):
         yield "limit"
+    if companions_at(project, (joint.mark,)):
+        yield "companion"
 
 
 def _joined(project: Project, index: int) -> Project:

@@ -8,6 +8,7 @@ from typing import Final, TypeVar
 from msgspec import Struct, structs
 
 from app.edits.checking import checked
+from app.edits.companions import with_joints_marked, with_segments
 from solver.faults import Place
 from solver.model import LoadCase, Project
 
@@ -29,14 +30,30 @@ def rename_segment(project: Project, old: str, new: str) -> Project:
     return checked(structs.replace(project, segments=segments, load_cases=cases), project)
 
 
+def rename_companion_segment(project: Project, old: str, new: str) -> Project:
+    """The project with the companion's segment marked `old` marked `new`, in its loads as well."""
+    cases = _each(project.load_cases, lambda case: _records_of(case, "segment_loads", "segment", old, new))
+    companions = with_segments(
+        project.companions,
+        lambda segment: structs.replace(segment, mark=new) if segment.mark == old else segment,
+    )
+    return checked(structs.replace(project, companions=companions, load_cases=cases), project)
+
+
 def rename_joint(project: Project, old: str, new: str) -> Project:
     """The project with the joint marked `old` marked `new`, in loads and limits as well."""
     cases = _each(project.load_cases, lambda case: _records_of(case, "joint_loads", "joint", old, new))
     limits = project.limits
     for key, end in LIMIT_JOINTS:
         limits = _records_of(limits, key, end, old, new)
-    joints = _renamed(project.joints, "mark", old, new)
-    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits), project)
+    fresh = structs.replace(
+        project,
+        joints=_renamed(project.joints, "mark", old, new),
+        companions=with_joints_marked(project.companions, {old: new}),
+        load_cases=cases,
+        limits=limits,
+    )
+    return checked(fresh, project)
 
 
 def number_joints(project: Project) -> Project:
@@ -56,15 +73,26 @@ def number_joints(project: Project) -> Project:
     limits = project.limits
     for key, end in LIMIT_JOINTS:
         limits = _marked(limits, key, end, marks)
-    joints = tuple(structs.replace(j, mark=marks.get(j.mark, j.mark)) for j in project.joints)
-    return checked(structs.replace(project, joints=joints, load_cases=cases, limits=limits), project)
+    fresh = structs.replace(
+        project,
+        joints=tuple(structs.replace(j, mark=marks.get(j.mark, j.mark)) for j in project.joints),
+        companions=with_joints_marked(project.companions, marks),
+        load_cases=cases,
+        limits=limits,
+    )
+    return checked(fresh, project)
 
 
 def rename_material(project: Project, old: str, new: str) -> Project:
-    """The project with the material `old` called `new`, in its segments as well."""
+    """The project with the material `old` called `new`, in all segments as well."""
     segments = _renamed(project.segments, "material", old, new)
     materials = _renamed(project.materials, "name", old, new)
-    return checked(structs.replace(project, materials=materials, segments=segments), project)
+    companions = with_segments(
+        project.companions,
+        lambda segment: structs.replace(segment, material=new) if segment.material == old else segment,
+    )
+    fresh = structs.replace(project, materials=materials, segments=segments, companions=companions)
+    return checked(fresh, project)
 
 
 def rename_case(project: Project, old: str, new: str) -> Project:
@@ -96,8 +124,18 @@ RENAMERS: Mapping[tuple[str | int, str | int], _Renamer] = {
 }
 
 
+def is_of_a_name(place: Place) -> bool:
+    """Whether what stands at the place is a mark or name that others may refer to."""
+    if len(place) == 3:
+        return (place[0], place[2]) in RENAMERS
+    return len(place) == 5 and place[0] == "companions" and place[4] == "mark"
+
+
 def rename(project: Project, place: Place, new: str) -> Project:
     """Rename what stands at the place of a mark or name, such as ("joints", 1, "mark")."""
+    if place[0] == "companions":
+        old = project.companions[int(place[1])].segments[int(place[3])]
+        return rename_companion_segment(project, old.mark, new)
     record = getattr(project, str(place[0]))[place[1]]
     return RENAMERS[place[0], place[2]](project, getattr(record, str(place[2])), new)
 

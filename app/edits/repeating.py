@@ -2,8 +2,8 @@
 
 A copy has the segments with their bedding and their loads, and the joints between them with their supports
 and loads. The joints where copies meet are free and carry nothing, so that a support at the far end is not
-multiplied unasked; that far joint stays at the end of the last copy, with what lies beyond. Limits are not
-repeated. Marks are fresh.
+multiplied unasked; that far joint stays at the end of the last copy, with what lies beyond. Companions of the
+part are repeated with it. Limits are not repeated. Marks are fresh.
 """
 
 from __future__ import annotations
@@ -15,9 +15,10 @@ from typing import TypeVar
 from msgspec import structs
 
 from app.edits.checking import consistent, refused
-from app.edits.copying import Marks, with_loads_copied
+from app.edits.companions import segment_marks
+from app.edits.copying import Marks, with_companions_copied, with_loads_copied
 from app.edits.records import FreshMarks
-from solver.model import Joint, Project, Segment
+from solver.model import Companion, Joint, Project, Segment
 
 _R = TypeVar("_R", bound=Joint | Segment)
 
@@ -32,7 +33,7 @@ def repeat_segments(project: Project, first: int, last: int, times: int) -> Proj
     if not 1 <= times <= MOST:
         raise refused(("segments", first), "repeats", count=times, most=MOST)
     block, between = project.segments[first : last + 1], project.joints[first + 1 : last + 1]
-    segments = _marks_of_copies(project.segments, last, block, times)
+    segments = _marks_of_copies(project.segments, last, block, times, segment_marks(project))
     joints = _marks_of_copies(project.joints, last, (project.joints[last + 1], *between), times)
     inner = [{joint.mark: marks[joint.mark] for joint in between} for marks in joints]
     copies = (_copied(block, marks) for marks in segments)
@@ -42,14 +43,50 @@ def repeat_segments(project: Project, first: int, last: int, times: int) -> Proj
         segments=_with(project.segments, last + 1, copies),
         joints=_with(project.joints, last + 1, chains),
     )
-    return consistent(with_loads_copied(grown, segments, inner), project)
+    grown, beside = _with_companions(grown, project, first, last, joints)
+    marks = [{**own, **others} for own, others in zip(segments, beside, strict=True)]
+    return consistent(with_loads_copied(grown, marks, inner), project)
+
+
+def _with_companions(
+    grown: Project, project: Project, first: int, last: int, joints: Sequence[Marks]
+) -> tuple[Project, list[Marks]]:
+    """The companions of the repeated part at every copy of it; one that ended at the far joint stays put.
+
+    The marks of the joints where copies meet are those of the far joint in `joints`.
+    """
+    places = {joint.mark: index for index, joint in enumerate(project.joints)}
+    near, far = project.joints[first].mark, project.joints[last + 1].mark
+    whole = [c for c in project.companions if first <= places[c.start] and places[c.end] <= last + 1]
+    meets = [*(marks[far] for marks in joints), far]
+    held = {companion.mark for companion in whole}
+    grown = structs.replace(
+        grown,
+        companions=tuple(
+            structs.replace(c, end=meets[0]) if c.mark in held and c.end == far else c
+            for c in grown.companions
+        ),
+    )
+    copied: list[Marks] = []
+    for marks, begins, ends in zip(joints, meets, meets[1:], strict=False):
+        moved = {**marks, near: begins, far: ends}
+        grown, of = with_companions_copied(grown, whole, lambda c, to=moved: _moved(c, to))  # type: ignore[misc]
+        copied.append(of)
+    return grown, copied
+
+
+def _moved(companion: Companion, marks: Marks) -> Companion:
+    return structs.replace(companion, start=marks[companion.start], end=marks[companion.end])
 
 
 def _marks_of_copies(
-    all_of_them: Sequence[_R], last: int, copied: Sequence[_R], times: int
+    all_of_them: Sequence[_R], last: int, copied: Sequence[_R], times: int, others: Sequence[str] = ()
 ) -> list[dict[str, str]]:
-    """For each copy the marks of what is copied, going on in the manner of the record `last`."""
-    fresh = FreshMarks(record.mark for record in all_of_them)
+    """For each copy the marks of what is copied, going on in the manner of the record `last`.
+
+    `others` are taken as well.
+    """
+    fresh = FreshMarks((*(record.mark for record in all_of_them), *others))
     given = iter(fresh.in_turn(times * len(copied), all_of_them[last].mark))
     return [{record.mark: next(given) for record in copied} for _ in range(times)]
 

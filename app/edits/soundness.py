@@ -29,7 +29,7 @@ def is_surely_sound(project: Project, since: Project) -> bool:
     Values by themselves are taken to be right. Companions tie joints, marks and lengths together: not sure.
     """
     return (
-        not project.companions
+        not (project.companions or since.companions)
         and project.fatigue is since.fatigue
         and project.combinations is since.combinations
         and project.limits is since.limits

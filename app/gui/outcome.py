@@ -64,9 +64,8 @@ def compute(project: Project, cancelled: Callable[[], bool], *, worded: bool = T
     try:
         results = solve(project, cancelled=cancelled)
     except InputError as error:
-        return Outcome(
-            project, None, None, error_sentences(error, project=project), time.perf_counter() - start
-        )
+        sentences = error_sentences(error, project=project, system=project.display.unit_system)
+        return Outcome(project, None, None, sentences, time.perf_counter() - start)
     seconds, begun = time.perf_counter() - start, time.thread_time()
     found = findings(results, project.display.unit_system) if worded else None
     return Outcome(project, results, found, (), seconds, time.thread_time() - begun)

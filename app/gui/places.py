@@ -48,7 +48,7 @@ def follow(place: Place, old: Project, new: Project) -> Place | None:
             old_node, new_node = _item(old_node, step), _item(new_node, index)
         else:
             found.append(step)
-            root = hasattr(old, step)
+            root = hasattr(old, step) and not hasattr(old_node, step)
             old_node = getattr(old if root else old_node, step, None)
             new_node = getattr(new if root else new_node, step, None)
     return tuple(found)

@@ -84,6 +84,10 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("joint {joint} has a {kind}, which joining would lose"),
         later("take it out first"),
     ),
+    "companion_full": (
+        later("the other segments of companion {companion} alone are as long as its span"),
+        later("make one of them shorter"),
+    ),
     "repeats": (
         later("segments are repeated between 1 and {most} times at once; given is {count}"),
         later("choose a number in between"),
@@ -104,6 +108,10 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("joint {joint} is moved by {case} but has no support to move"),
         later("give it a support or take the movement out"),
     ),
+    "companions_not_yet": (
+        later("companion {companion} is kept, but this version does not solve companions yet"),
+        later("nothing is computed while it is there"),
+    ),
     "companion_length": (
         later("companion {companion} is {length} long and spans {span}; it is {difference} {kind}"),
         later("make the lengths add up; a mismatch that is meant is a lack of fit"),
@@ -121,7 +129,8 @@ _KINDS: Final[Mapping[str, str]] = {
     "load case": later("load case"), "load_case": later("load case"),
     "start": later("start"), "end": later("end"), "section": later("section shape"),
     "support": later("support"), "load": later("load"), "limit": later("limit"),
-    "combination": later("combination"), "too_long": later("too long"), "too_short": later("too short"),
+    "combination": later("combination"), "companion": later("companion"),
+    "too_long": later("too long"), "too_short": later("too short"),
 }  # fmt: skip
 JSON_SLIPS: Final[Mapping[str, str]] = {
     "empty": later("the file is empty"),
