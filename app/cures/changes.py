@@ -29,6 +29,7 @@ from solver.model import (
     TubeSection,
     UnitSystemName,
     end_of,
+    supports_of,
 )
 
 LARGEST: Final = 3.0  # times a dimension, and so nine times an area
@@ -154,16 +155,18 @@ def _paired(first: _Ends, second: _Ends) -> str:
 
 
 def spring_knobs(project: Project, index: int) -> tuple[Knob, ...]:
-    """The stiffness of a joint's spring, stiffer and softer; none where it has no spring."""
+    """The stiffness of a joint's spring, stiffer and softer; none where it has no spring, or several."""
     joint, system = project.joints[index], project.display.unit_system
-    if not isinstance(joint.support, SpringSupport):
+    springs = [(n, s) for n, s in enumerate(supports_of(joint)) if isinstance(s, SpringSupport)]
+    if len(springs) != 1:
         return ()
+    number, spring = springs[0]
+    place: Place = ("joints", index, "supports", number) if joint.supports else ("joints", index, "support")
 
     def change(value: float) -> Change:
         text = format_value(value, "spring", system, 6, strip=True, with_unit=True)
         support = SpringSupport(stiffness=value)
-        return Change((("joints", index, "support"),), support, text, (joint.mark,), "spring")
+        return Change((place,), support, text, (joint.mark,), "spring")
 
-    start = joint.support.stiffness
     reaches = (SPRING, 1.0 / SPRING)
-    return tuple(Knob(round_numbers(start, reach, "spring", system), change) for reach in reaches)
+    return tuple(Knob(round_numbers(spring.stiffness, reach, "spring", system), change) for reach in reaches)

@@ -86,11 +86,13 @@ class Box(Struct, frozen=True):
 class Part(Struct, frozen=True):
     """What a point of the drawing stands for: `index` along the chain, of segments or of joints.
 
-    A label that stands for neighbours alike has the first one's index.
+    A label that stands for neighbours alike has the first one's index. `number` tells the supports of one
+    joint apart, in their order.
     """
 
     kind: PartKind
     index: int
+    number: int = 0
 
 
 class Stroke(Struct, frozen=True):

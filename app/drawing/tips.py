@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from msgspec import UnsetType
-
 from app.drawing.member import Member
 from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Part
 from app.drawing.words import (
@@ -16,9 +14,9 @@ from app.drawing.words import (
     value_text,
     warmth_text,
 )
-from app.support_entry import support_text
+from app.support_entry import supports_text
 from app.words import tr
-from solver.model import end_of
+from solver.model import end_of, supports_of
 
 
 def tip(member: Member, part: Part) -> str:
@@ -64,7 +62,8 @@ def _joint_tip(member: Member, index: int) -> str:
     first = tr("Joint {mark} at {position}").format(
         mark=joint.mark, position=value_text(member.position[index], "length", member.system)
     )
-    held = "" if isinstance(joint.support, UnsetType) else support_text(joint.support, member.system)
+    supports = supports_of(joint)
+    held = supports_text(supports, member.system) if supports else ""
     return _lines(first, held, *_on_joint(member, index))
 
 

@@ -28,7 +28,7 @@ from app.edits.renaming import (
     rename_segment,
 )
 from app.edits.repeating import repeat_segments
-from app.edits.supports import free_joints, moving_joints
+from app.edits.supports import free_joints, hold_joint, moving_joints, without_support
 from app.edits.uniting import join_equal_neighbours
 
 __all__ = [
@@ -40,6 +40,7 @@ __all__ = [
     "extend_companion",
     "fit_companion",
     "free_joints",
+    "hold_joint",
     "insert_segment",
     "join_equal_neighbours",
     "join_segments",
@@ -65,4 +66,5 @@ __all__ = [
     "set_value",
     "split_segment",
     "value_at",
+    "without_support",
 ]

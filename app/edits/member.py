@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from typing import TypeVar
 
-from msgspec import Struct, structs
+from msgspec import Struct, UnsetType, structs
 
 from app.edits.checking import checked
 from app.edits.companions import segment_marks, turned_companion, without_those_at
@@ -18,6 +18,7 @@ from app.edits.records import fresh_mark, kept, mapped, with_cases
 from app.encode import is_absent
 from solver.model import (
     AnySection,
+    AnySupport,
     Joint,
     JointLoad,
     Limits,
@@ -141,11 +142,18 @@ def reverse_member(project: Project) -> Project:
 
 
 def joint_turned(joint: Joint) -> Joint:
-    """The joint seen from the other end: a stop changes its side."""
-    if not isinstance(joint.support, StopSupport):
-        return joint
-    side = "minus" if joint.support.side == "plus" else "plus"
-    return structs.replace(joint, support=structs.replace(joint.support, side=side))
+    """The joint seen from the other end: every stop changes its side."""
+    return structs.replace(
+        joint,
+        support=joint.support if isinstance(joint.support, UnsetType) else _support_turned(joint.support),
+        supports=mapped(joint.supports, _support_turned),
+    )
+
+
+def _support_turned(support: AnySupport) -> AnySupport:
+    if not isinstance(support, StopSupport):
+        return support
+    return structs.replace(support, side="minus" if support.side == "plus" else "plus")
 
 
 def segment_turned(segment: Segment) -> Segment:

@@ -10,7 +10,7 @@ from collections.abc import Iterator
 from fractions import Fraction
 from itertools import count, pairwise, zip_longest
 
-from msgspec import UNSET, structs
+from msgspec import structs
 
 from app.edits.checking import EditError, checked, refused
 from app.edits.companions import companions_at
@@ -20,7 +20,7 @@ from app.edits.records import expanded, with_cases
 from app.edits.renaming import LIMIT_JOINTS
 from app.encode import is_absent
 from solver.faults import Fault, place_text
-from solver.model import LoadCase, Project, Segment, SegmentLoad
+from solver.model import LoadCase, Project, Segment, SegmentLoad, supports_of
 
 
 def split_segment(project: Project, index: int, at: float) -> Project:
@@ -95,7 +95,7 @@ def _hindrances(project: Project, first: int, last: int) -> Iterator[Fault]:
 def carried(project: Project, index: int) -> Iterator[str]:
     """What the joint carries, by kind; nothing where joining over it loses nothing."""
     joint = project.joints[index]
-    if joint.support is not UNSET:
+    if supports_of(joint):
         yield "support"
     if any(load.joint == joint.mark for case in project.load_cases for load in case.joint_loads):
         yield "load"

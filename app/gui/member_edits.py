@@ -7,7 +7,6 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from msgspec import UnsetType
 from PySide6.QtCore import QObject, Signal
 
 from app import edits
@@ -16,7 +15,7 @@ from app.gui.tables.pane import TablesPane
 from app.gui.tables.reasons import TypingError, reason_of
 from app.typical_materials import with_typical
 from app.words import tr, trn
-from solver.model import Material, Project
+from solver.model import Material, Project, supports_of
 
 
 class MemberEdits(QObject):
@@ -171,13 +170,13 @@ def _joints_carry(project: Project, segments: set[int]) -> bool:
     """Whether a joint between these segments is held or loaded."""
     between = project.joints[min(segments) + 1 : max(segments) + 1]
     loaded = {load.joint for case in project.load_cases for load in case.joint_loads}
-    return any(joint.mark in loaded or not isinstance(joint.support, UnsetType) for joint in between)
+    return any(joint.mark in loaded or supports_of(joint) for joint in between)
 
 
 def also_gone(before: Project, after: Project) -> str:
     """What went with the segments that a person did not choose, in words; empty where nothing did."""
     kept = {joint.mark for joint in after.joints}
-    held = [j.mark for j in before.joints if j.mark not in kept and not isinstance(j.support, UnsetType)]
+    held = [j.mark for j in before.joints if j.mark not in kept and supports_of(j)]
     loads, limits = (count(before) - count(after) for count in (_loads, _limits))
     parts = [tr("the support of joint {mark}").format(mark=mark) for mark in held]
     parts += [trn("{count} load", "{count} loads", loads)] if loads else []

@@ -17,7 +17,7 @@ from app.gui.top_bar import shown_text
 from app.gui.view import Selection, View
 from app.units import format_value
 from app.words import tr, trn
-from solver.model import Project
+from solver.model import Project, supports_of
 
 
 class SheetVoice(QObject):
@@ -87,7 +87,7 @@ def member_line(project: Project) -> str:
         strip=True,
         with_unit=True,
     )
-    held = [joint.mark for joint in project.joints if joint.support]
+    held = [joint.mark for joint in project.joints if supports_of(joint)]
     segments = trn("Member of {count} segment", "Member of {count} segments", len(project.segments))
     if not held:
         return tr("{segments}, {length} long, held nowhere").format(segments=segments, length=length)

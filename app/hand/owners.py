@@ -8,15 +8,13 @@ from __future__ import annotations
 
 from typing import Final
 
-from msgspec import UnsetType
-
 from app.drawing.shapes import LOADS, Part, PartKind
 from app.hand.cells import case_share
 from app.hand.kinds import KINDS, Kind
 from app.hand.putting import has
 from app.shown import Shown
 from app.words import tr
-from solver.model import Project
+from solver.model import Project, supports_of
 
 ENDS: Final[dict[PartKind, PartKind]] = {"distributed_end": "distributed"}
 _BY_PART: Final[dict[PartKind, Kind]] = {kind.part: kind for kind in KINDS if kind.part != "support"}
@@ -25,7 +23,7 @@ _FREE: Final = next(kind for kind in KINDS if kind.key == "free")
 
 def whole(part: Part) -> Part:
     """The thing that a part is of: a distributed load for its end."""
-    return Part(ENDS.get(part.kind, part.kind), part.index)
+    return Part(ENDS.get(part.kind, part.kind), part.index, part.number)
 
 
 def kind_of(part: Part) -> Kind | None:
@@ -40,7 +38,7 @@ def is_there(part: Part, project: Project, case: int | None) -> bool:
     if kind is None or part.index >= count:
         return False
     if kind is _FREE:
-        return not isinstance(project.joints[part.index].support, UnsetType)
+        return part.number < len(supports_of(project.joints[part.index]))
     return has(kind, project, part.index, case)
 
 

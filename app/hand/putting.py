@@ -9,8 +9,10 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 from dataclasses import dataclass
+from typing import Final, Literal
 
 from msgspec import UNSET, UnsetType
+from msgspec.structs import replace
 
 from app import edits
 from app.drawing.shapes import Part
@@ -18,9 +20,9 @@ from app.entry import parse_entry
 from app.hand.cells import Cell, cell_of
 from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
-from app.support_entry import parse_support
+from app.support_entry import Supports, parse_supports
 from app.words import tr
-from solver.model import LoadCase, Project
+from solver.model import FixedSupport, LoadCase, Project, SpringSupport, StopSupport, supports_of
 
 
 class NotPut(ValueError):  # noqa: N818 - its message is the sentence for the status line
@@ -72,7 +74,8 @@ def _with_case(project: Project) -> tuple[Project, int, str]:
 def _is_there(kind: Kind, project: Project, index: int, case: int | None) -> bool:
     """Whether such a thing is there already."""
     if kind.part == "support":
-        return type(project.joints[index].support) is type(_support(kind, project))
+        there = supports_of(project.joints[index])
+        return bool(_of_this_kind(kind, there)) if _support(kind, project) else not there
     if kind.part == "bedding":
         return any(_written(getattr(project.segments[index], key)) for key in kind.keys)
     if kind.part == "gravity":
@@ -96,9 +99,32 @@ def loads_of(kind: Kind, project: Project, index: int, case: int | None) -> tupl
     return tuple(load for load in project.load_cases[case].segment_loads if load.segment == mark)
 
 
-def _support(kind: Kind, project: Project) -> object:
+def _support(kind: Kind, project: Project) -> Supports:
+    """What a support begins with; none for a free joint."""
     system = project.display.unit_system
-    return parse_support(kind.begins_in(system), system)
+    return parse_supports(kind.begins_in(system), system)
+
+
+def _of_this_kind(kind: Kind, supports: Supports) -> Supports:
+    return tuple(support for support in supports if _TYPES.get(kind.key) is type(support))
+
+
+def _held_with(kind: Kind, project: Project, index: int) -> Supports:
+    """The supports of a joint with one more: a stop and a spring act beside others, a wall makes them idle.
+
+    At the first joint a stop stands before the member's end, as it does behind it at any other.
+    """
+    fresh, held = _support(kind, project), supports_of(project.joints[index])
+    if kind.key == "stop":
+        side: Literal["plus", "minus"] = "plus" if index else "minus"
+        fresh = tuple(replace(stop, side=side) for stop in fresh if isinstance(stop, StopSupport))
+        return (*(other for other in held if not isinstance(other, FixedSupport)), *fresh)
+    if kind.key == "spring":
+        return (*fresh, *(other for other in held if isinstance(other, StopSupport)))
+    return fresh
+
+
+_TYPES: Final = {"fixed": FixedSupport, "spring": SpringSupport, "stop": StopSupport}
 
 
 def _begins(kind: Kind, project: Project) -> float:
@@ -110,13 +136,10 @@ def _begins(kind: Kind, project: Project) -> float:
 
 def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
     if kind.part == "support":
-        support = _support(kind, project)
-        if isinstance(support, UnsetType):
-            return edits.free_joints(project, (index,))
-        return edits.set_value(project, ("joints", index, "support"), support)
+        return edits.hold_joint(project, index, _held_with(kind, project, index))
     if kind.part == "bedding":
         return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
-    if kind.part == "movement" and isinstance(project.joints[index].support, UnsetType):
+    if kind.part == "movement" and not supports_of(project.joints[index]):
         words = tr("joint {mark} has no support that could move: put one on first")
         raise NotPut(words.format(mark=project.joints[index].mark))
     return _set_load(kind, project, index, case, kind.keys[0], _begins(kind, project))
@@ -150,7 +173,9 @@ def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: 
     if kind.of_case:
         return _set_load(kind, project, index, case, key, UNSET)
     if kind.part == "support":
-        return edits.free_joints(project, (index,))
+        supports = supports_of(project.joints[index])
+        own = _of_this_kind(kind, supports)
+        return edits.hold_joint(project, index, tuple(s for s in supports if s not in own))
     records = "joints" if kind.on == "joint" else "segments"
     return edits.set_value(project, (records, index, key), UNSET)
 
@@ -158,6 +183,5 @@ def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: 
 def has(kind: Kind, project: Project, index: int, case: int | None) -> bool:
     """Whether there is something of this kind that can be taken off."""
     if kind.part == "support":
-        support = project.joints[index].support
-        return not isinstance(support, UnsetType) and type(support) is type(_support(kind, project))
+        return bool(_of_this_kind(kind, supports_of(project.joints[index])))
     return _is_there(kind, project, index, case)

@@ -15,6 +15,7 @@ from app.sheet.readings import NOTHING, Readings, legible
 from app.words import tr
 from solver.model import (
     AnySection,
+    AnySupport,
     AreaSection,
     FixedSupport,
     Joint,
@@ -25,6 +26,7 @@ from solver.model import (
     SpringSupport,
     StopSupport,
     end_of,
+    supports_of,
 )
 from solver.packing import pack
 from solver.results import Results
@@ -121,25 +123,32 @@ def _joints(project: Project, results: Results, say: Readings) -> Block:
         column(tr("Support"), align="left"),
     ]
     rows = [
-        [joint.mark, say.plain(x, "length"), support_words(joint, say)]
+        [joint.mark, say.plain(x, "length"), supports_words(joint, say)]
         for joint, x in zip(project.joints, results.position.tolist(), strict=True)
     ]
     return table(tr("Joints and supports"), columns, rows)
 
 
-def support_words(joint: Joint, say: Readings) -> str:
-    """The support in words."""
-    match joint.support:
+def supports_words(joint: Joint, say: Readings) -> str:
+    """All supports of a joint in words."""
+    return "; ".join(_support_words(support, say) for support in supports_of(joint)) or tr("free")
+
+
+def _support_words(support: AnySupport, say: Readings) -> str:
+    match support:
         case FixedSupport():
             return tr("fixed")
         case SpringSupport(stiffness=stiffness):
             return tr("spring, {stiffness}").format(stiffness=say.exact(stiffness, "spring", unit=True))
-        case StopSupport(side=side, clearance=clearance):
-            gap = say.exact(clearance, "displacement", unit=True)
-            sense = "+x" if side == "plus" else "−x"
-            return tr("stop against {sense}, clearance {gap}").format(sense=sense, gap=gap)
-        case _:
-            return tr("free")
+        case StopSupport(side=side, clearance=clearance, stiffness=stiffness):
+            parts = {
+                "sense": "+x" if side == "plus" else "−x",
+                "gap": say.exact(clearance, "displacement", unit=True),
+            }
+            if isinstance(stiffness, UnsetType):
+                return tr("stop against {sense}, clearance {gap}, rigid").format(**parts)
+            words = tr("stop against {sense}, clearance {gap}, stiffness {stiffness}")
+            return words.format(**parts, stiffness=say.exact(stiffness, "spring", unit=True))
 
 
 def _in_chain_order(case: LoadCase, project: Project) -> LoadCase:

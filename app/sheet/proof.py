@@ -29,6 +29,7 @@ from solver.model import (
     SpringSupport,
     TubeSection,
     end_of,
+    supports_of,
 )
 from solver.results import Results
 from solver.sections import area_at
@@ -192,9 +193,10 @@ def _against_limit(check: Check, say: Readings) -> dict[str, str]:
 
 
 def _spring_by_hand(results: Results, check: Check, say: Readings) -> list[dict[str, Value]]:
-    """A spring's reaction from its stiffness and the joint's displacement."""
+    """The reaction of a spring that holds a joint alone, from its stiffness and the joint's displacement."""
     place = next(i for i, j in enumerate(results.project.joints) if j.mark == check.joint)
-    support, state = results.project.joints[place].support, _state(results, check)
+    supports, state = supports_of(results.project.joints[place]), _state(results, check)
+    support = supports[0] if len(supports) == 1 else None
     if not isinstance(support, SpringSupport):
         return []
     parts = {

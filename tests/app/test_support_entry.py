@@ -4,8 +4,9 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 from msgspec import UNSET
+from msgspec.structs import replace
 
-from app.support_entry import SupportError, parse_support, support_entry, support_text
+from app.support_entry import SupportError, parse_supports, supports_entry, supports_text
 from app.units import SYSTEM_NAMES
 from solver.model import FixedSupport, SpringSupport, StopSupport
 
@@ -15,8 +16,8 @@ KN = "mm-kN-MPa"
 @pytest.mark.parametrize(
     ("text", "support"),
     [
-        ("free", UNSET),
-        ("", UNSET),
+        ("free", ()),
+        ("", ()),
         (" Fixed ", FixedSupport()),
         ("spring 600", SpringSupport(stiffness=6e8)),
         ("600 kN/mm", SpringSupport(stiffness=6e8)),
@@ -33,7 +34,7 @@ KN = "mm-kN-MPa"
     ],
 )
 def test_what_is_typed_is_what_is_meant(text, support):
-    assert parse_support(text, KN) == support
+    assert parse_supports(text, KN) == (support if isinstance(support, tuple) else (support,))
 
 
 @pytest.mark.parametrize(
@@ -55,29 +56,28 @@ def test_what_is_typed_is_what_is_meant(text, support):
 )
 def test_what_is_no_support_is_said_in_words(text, reason):
     with pytest.raises(SupportError, match=reason):
-        parse_support(text, KN)
+        parse_supports(text, KN)
 
 
 def test_a_bare_number_is_a_spring_where_there_is_one_already():
-    assert parse_support("150", KN, SpringSupport(stiffness=6e8)) == SpringSupport(stiffness=1.5e8)
+    assert parse_supports("150", KN, (SpringSupport(stiffness=6e8),)) == (SpringSupport(stiffness=1.5e8),)
     with pytest.raises(SupportError, match="a support is"):
-        parse_support("150", KN, FixedSupport())
+        parse_supports("150", KN, (FixedSupport(),))
 
 
 def test_a_number_of_something_else_is_no_spring():
     with pytest.raises(ValueError, match="kg"):
-        parse_support("150 kg", KN)
+        parse_supports("150 kg", KN)
 
 
 def test_what_cannot_be_solved_is_not_offered():
     with pytest.raises(SupportError) as raised:
-        parse_support("held", KN)
+        parse_supports("held", KN)
     assert "stop" not in str(raised.value)
 
 
 SIZES = st.floats(1e-6, 1e12)
 SUPPORTS = st.one_of(
-    st.just(UNSET),
     st.just(FixedSupport()),
     st.builds(SpringSupport, stiffness=SIZES),
     st.builds(
@@ -89,12 +89,64 @@ SUPPORTS = st.one_of(
 )
 
 
-@given(support=SUPPORTS, system=st.sampled_from(SYSTEM_NAMES))
-def test_what_an_editor_shows_means_the_same_support(support, system):
-    assert parse_support(support_entry(support, system), system) == support
+@given(supports=st.lists(SUPPORTS, max_size=4).map(tuple), system=st.sampled_from(SYSTEM_NAMES))
+def test_what_an_editor_shows_means_the_same_supports(supports, system):
+    assert parse_supports(supports_entry(supports, system), system) == supports
+
+
+PLUS, MINUS = StopSupport(side="plus", clearance=5e-4), StopSupport(side="minus", clearance=5e-4)
+SPRING = SpringSupport(stiffness=6e8)
+
+
+@pytest.mark.parametrize(
+    ("text", "supports"),
+    [
+        ("spring 600 kN/mm and stop + 0.5 mm", (SPRING, PLUS)),
+        ("spring 600 and stop +0.5", (SPRING, PLUS)),
+        ("stop + 0.5 mm; spring 600 kN/mm", (PLUS, SPRING)),
+        ("stop + 0.5 mm, stop - 0,5 mm", (PLUS, MINUS)),
+        ("stop + 0.5 mm & stop - 0.5 mm & 600 kN/mm", (PLUS, MINUS, SPRING)),
+        ("stop + 0.5; 600; stop - 0.5; 600", (replace(PLUS, stiffness=6e8), replace(MINUS, stiffness=6e8))),
+        ("stop ± 0.5 mm", (PLUS, MINUS)),
+        ("stop +- 0.5 mm", (PLUS, MINUS)),
+        ("fixed AND stop + 0.5 mm", (FixedSupport(), PLUS)),
+    ],
+)
+def test_several_supports_stand_one_after_the_other(text, supports):
+    assert parse_supports(text, KN) == supports
+
+
+@pytest.mark.parametrize(
+    ("text", "reason"),
+    [
+        ("free and stop + 0.5 mm", "no other support"),
+        ("stop + 0.5 mm and", "missing"),
+        ("and fixed", "missing"),
+        ("fixed & & fixed", "missing"),
+        ("stop + 0.5 mm and 600", "a support is"),
+        ("spring 600 and stop 0.5", "side and clearance"),
+    ],
+)
+def test_what_is_wrong_with_one_of_several_is_said(text, reason):
+    with pytest.raises(SupportError, match=reason):
+        parse_supports(text, KN)
+
+
+@pytest.mark.parametrize("text", ["0.3", "0.3 mm", "0,3"])
+def test_a_bare_number_is_the_clearance_where_there_is_one_stop(text):
+    assert parse_supports(text, KN, (PLUS,)) == (replace(PLUS, clearance=3e-4),)
+    assert parse_supports("600 kN/mm", KN, (PLUS,)) == (SPRING,)
+    with pytest.raises(ValueError, match="a support is|no unit"):
+        parse_supports(text, KN, (PLUS, MINUS))
+
+
+def test_a_bare_clearance_is_not_negative():
+    with pytest.raises(SupportError, match="at least 0"):
+        parse_supports("-0.3", KN, (PLUS,))
 
 
 def test_for_reading_numbers_are_short_and_carry_their_units():
     stop = StopSupport(side="minus", clearance=1 / 3000, stiffness=6e8)
-    assert support_text(stop, KN) == "stop − 0.3333 mm; 600 kN/mm"
-    assert support_text(UNSET, KN) == "free"
+    assert supports_text((stop,), KN) == "stop − 0.3333 mm; 600 kN/mm"
+    assert supports_text((SPRING, PLUS, MINUS), KN) == "spring 600 kN/mm and stop ± 0.5 mm"
+    assert supports_text((), KN) == "free"

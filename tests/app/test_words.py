@@ -18,7 +18,7 @@ from app.entry import parse_entry
 from app.numerals import decimals_of, fixed, laid_out, reading
 from app.section_entry import parse_section, section_text
 from app.sheet.readings import legible
-from app.support_entry import parse_support, support_entry
+from app.support_entry import parse_supports, supports_entry
 from app.units import (
     QUANTITIES,
     SYSTEM_NAMES,
@@ -189,7 +189,7 @@ def test_sections_and_supports_typed_back_are_the_same(size, share, system, code
             SpringSupport(stiffness=size * 1e6),
             StopSupport(side="plus", clearance=size, stiffness=share * 1e6),
         ):
-            assert parse_support(support_entry(support, system), system) == support
+            assert parse_supports(supports_entry((support,), system), system) == (support,)
     finally:
         words.use_language(words.SOURCE)
 
@@ -202,8 +202,9 @@ def test_thousands_are_never_meant(typed: str, language: str) -> None:
 @pytest.mark.usefixtures("german")
 def test_the_trade_s_words_are_read_in_either_language() -> None:
     system = "mm-N-MPa"
-    assert parse_support("Feder 600 kN/mm", system) == parse_support("spring 600 kN/mm", system)
-    assert parse_support("anschlag + 0,5 mm", system) == parse_support("stop + 0.5 mm", system)
+    assert parse_supports("Feder 600 kN/mm", system) == parse_supports("spring 600 kN/mm", system)
+    assert parse_supports("anschlag + 0,5 mm", system) == parse_supports("stop + 0.5 mm", system)
+    assert parse_supports("fest und Anschlag ± 0,5", system) == parse_supports("fixed and stop ± 0.5", system)
     assert parse_section("d60 Bohrung 50", system) == parse_section("d60 bore 50", system)
 
 

@@ -23,8 +23,9 @@ from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
 from app.hand.owners import is_there, kind_of, whole, why_not_here
 from app.hand.putting import take_off
+from app.support_entry import support_text
 from app.words import tr
-from solver.model import Project
+from solver.model import Project, supports_of
 
 
 class TakingOff(QObject):
@@ -51,8 +52,7 @@ class TakingOff(QObject):
         if part is None or kind is None:
             self.told.emit("")
         elif part.kind == "support":
-            mark = self._document.project.joints[part.index].mark
-            self.told.emit(tr("Support of joint {mark}: Delete takes it off").format(mark=mark))
+            self.told.emit(_support_in_hand(self._document.project, part))
         else:
             self.told.emit(
                 tr("{what}: Delete takes it off").format(what=_named(self._document.project, part))
@@ -83,7 +83,7 @@ class TakingOff(QObject):
         self._tables.commit_open_editor()
         project, case = self._document.project, self._tables.sight.case
         if thing.kind == "support":
-            self._take_supports_off((thing.index,))
+            self._take_support_off(thing)
             return
         kind, refused = kind_of(thing), self._why_not(thing, project, case)
         if refused or kind is None:
@@ -97,6 +97,14 @@ class TakingOff(QObject):
             share = thing.kind == "bedding" or case_share(project, self._view.shown, case)
             return "" if share else _elsewhere(project, case)
         return why_not_here(thing, project, self._view.shown, case) or _elsewhere(project, case)
+
+    def _take_support_off(self, thing: Part) -> None:
+        """The one in hand, which is in no hand any more; others at its joint stay."""
+        self._view.set_thing(None)
+        self._do(
+            tr("Take the support off"),
+            lambda project: edits.without_support(project, thing.index, thing.number),
+        )
 
     def _take_supports_off(self, joints: tuple[int, ...]) -> None:
         project = self._document.project
@@ -124,6 +132,18 @@ class TakingOff(QObject):
             self._document.commit(project, name)
             if note := gone_with_supports(old, project):
                 self.told.emit(note)
+
+
+def _support_in_hand(project: Project, part: Part) -> str:
+    """What Delete takes off: the support of a joint, or one of several by its words."""
+    joint = project.joints[part.index]
+    supports = supports_of(joint)
+    if len(supports) < 2:
+        return tr("Support of joint {mark}: Delete takes it off").format(mark=joint.mark)
+    words = tr("{support} of joint {mark}: Delete takes it off, the other supports stay")
+    return words.format(
+        support=support_text(supports[part.number], project.display.unit_system), mark=joint.mark
+    )
 
 
 def _named(project: Project, part: Part) -> str:

@@ -12,11 +12,11 @@ from app import edits
 from app.entry import parse_entry
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import needed_case
-from app.gui.tables.supports import with_support
-from app.support_entry import parse_support, support_entry, support_text
+from app.gui.tables.supports import with_supports
+from app.support_entry import parse_supports, supports_entry, supports_text
 from app.units import Quantity, entry_text, format_value
 from app.words import later
-from solver.model import Joint, JointLoad, Project
+from solver.model import Joint, JointLoad, Project, supports_of
 
 
 @dataclass(frozen=True, slots=True)
@@ -41,8 +41,9 @@ def rows(project: Project, sight: Sight) -> tuple[object, ...]:
 
 
 def _put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
-    support = parse_support(text, sight.system, project.joints[index].support)
-    return with_support(project, index, support)
+    return with_supports(
+        project, index, parse_supports(text, sight.system, supports_of(project.joints[index]))
+    )
 
 
 def _load(key: str, title: str, quantity: Quantity) -> Column:
@@ -97,8 +98,8 @@ COLUMNS = (
     Column(
         "support",
         later("Support"),
-        lambda row, sight: support_text(row.joint.support, sight.system),
-        lambda row, sight: support_entry(row.joint.support, sight.system),
+        lambda row, sight: supports_text(supports_of(row.joint), sight.system),
+        lambda row, sight: supports_entry(supports_of(row.joint), sight.system),
         _put_support,
         optional=True,
         width=20,

@@ -7,13 +7,11 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-from msgspec import UNSET
-
 from app.gui.tables.column import Offer, Sight
 from app.typical_materials import not_in
 from app.units import format_value
 from app.words import tr
-from solver.model import Material, Project
+from solver.model import Material, Project, supports_of
 
 
 def materials(project: Project, sight: Sight) -> tuple[Offer, ...]:
@@ -44,7 +42,7 @@ def joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
 
 def held_joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
     """The marks of the joints that have a support."""
-    return _named(joint.mark for joint in project.joints if joint.support is not UNSET)
+    return _named(joint.mark for joint in project.joints if supports_of(joint))
 
 
 def _named(names: Iterable[str]) -> tuple[Offer, ...]:

@@ -20,13 +20,23 @@ from app.gui.tables.column import Change, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
-from app.gui.tables.supports import with_support
+from app.gui.tables.supports import with_supports
 from app.section_entry import parse_section, taken_as
-from app.support_entry import parse_support, support_entry, support_text
+from app.support_entry import parse_supports, supports_entry, supports_text
 from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value
 from app.words import tr
-from solver.model import AnySection, AreaSection, Joint, LoadCase, Project, Segment, SegmentLoad, end_of
+from solver.model import (
+    AnySection,
+    AreaSection,
+    Joint,
+    LoadCase,
+    Project,
+    Segment,
+    SegmentLoad,
+    end_of,
+    supports_of,
+)
 from solver.sections import area_coefficients
 
 
@@ -197,19 +207,19 @@ def put_bedding(project: Project, index: int, text: str, sight: Sight) -> Change
 
 
 def show_support(row: StartRow | SegmentRow, sight: Sight) -> str:
-    """The joint's mark and what holds it."""
-    return f"{row.joint.mark}: {support_text(row.joint.support, sight.system)}"
+    """The joint's mark and all that holds it."""
+    return f"{row.joint.mark}: {supports_text(supports_of(row.joint), sight.system)}"
 
 
 def entry_of_support(row: StartRow | SegmentRow, sight: Sight) -> str:
     """What holds the joint, as it is typed."""
-    return support_entry(row.joint.support, sight.system)
+    return supports_entry(supports_of(row.joint), sight.system)
 
 
 def put_support(project: Project, index: int, text: str, sight: Sight) -> Change:
-    """Another support at the segment's far joint."""
-    support = parse_support(text, sight.system, project.joints[index + 1].support)
-    return with_support(project, index + 1, support)
+    """Other supports at the segment's far joint."""
+    held = supports_of(project.joints[index + 1])
+    return with_supports(project, index + 1, parse_supports(text, sight.system, held))
 
 
 # Loads of the edited case

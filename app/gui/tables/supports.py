@@ -1,18 +1,15 @@
-"""Another support typed at a joint, in the table of segments as in that of joints."""
+"""Other supports typed at a joint, in the table of segments as in that of joints."""
 
 from __future__ import annotations
-
-from msgspec import UnsetType
 
 from app import edits
 from app.gui.tables.column import Change
 from app.hand.freeing import gone_with_supports
-from solver.model import AnySupport, Project
+from app.support_entry import Supports
+from solver.model import Project
 
 
-def with_support(project: Project, joint: int, support: AnySupport | UnsetType) -> Change:
+def with_supports(project: Project, joint: int, supports: Supports) -> Change:
     """The joint held so; with no support its movements go as well, which the note says."""
-    if isinstance(support, UnsetType):
-        freed = edits.free_joints(project, (joint,))
-        return Change(freed, gone_with_supports(project, freed))
-    return Change(edits.set_value(project, ("joints", joint, "support"), support))
+    held = edits.hold_joint(project, joint, supports)
+    return Change(held, "" if supports else gone_with_supports(project, held))
