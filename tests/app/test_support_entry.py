@@ -136,7 +136,7 @@ def test_what_is_wrong_with_one_of_several_is_said(text, reason):
 def test_a_bare_number_is_the_clearance_where_there_is_one_stop(text):
     assert parse_supports(text, KN, (PLUS,)) == (replace(PLUS, clearance=3e-4),)
     assert parse_supports("600 kN/mm", KN, (PLUS,)) == (SPRING,)
-    with pytest.raises(ValueError, match="a support is|no unit"):
+    with pytest.raises(ValueError, match=r"a support is|no unit"):
         parse_supports(text, KN, (PLUS, MINUS))
 
 
