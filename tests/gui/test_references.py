@@ -291,7 +291,32 @@ def test_a_long_name_neither_widens_the_bar_nor_leaves_the_strip(window):
         window.on_layout_picked(layout)
         strip = window.sheet.strips[0]
         (legend,) = [label for label in strip.labels if label.text.startswith("dashed")]
-        assert strip.place.rect.contains(legend.rect)
+        room = strip.place.rect
+        assert room.left() <= legend.rect.left() < legend.rect.right() <= room.right()
+
+
+@pytest.mark.parametrize(
+    ("layout", "together"), [("vertical", False), ("vertical", True), ("horizontal", False)]
+)
+@pytest.mark.parametrize("sample", samples.names())
+def test_the_words_for_the_lines_are_whole_and_lie_on_no_curve(qtbot, window, sample, layout, together):
+    window.files.open_path(samples.sample_path(sample))
+    solved(qtbot, window)
+    window.on_layout_picked(layout)
+    window.view.set_together(together)
+    solved(qtbot, window)
+    keep(window, "As drawn")
+    strip = window.sheet.strips[0]
+    (legend,) = [label for label in strip.labels if "dashed" in label.text]
+    assert "dashed: As drawn" in legend.text.replace("\n", " ")
+    if not legend.rect.intersects(strip.place.rect):
+        return
+    content, axes, ruler = strip.content, strip.place.axes, strip.place.ruler
+    along, (low, high) = axes.along_of(legend.rect), axes.across_of(legend.rect)
+    x = np.array([ruler.position_at(a) for a in np.linspace(*along, 50)])
+    for trace in (*content.traces, *content.earlier, *content.singles, *content.around):
+        curve = strip.scale.pixels(np.interp(x, trace.x, trace.value))
+        assert not np.any((curve > low) & (curve < high))
 
 
 # Without a window

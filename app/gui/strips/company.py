@@ -16,6 +16,7 @@ from solver.arrays import FloatArray, IntArray
 from solver.fields import Curves, Envelope, bundle, curves, envelope
 from solver.results import Results
 
+LEGEND_BETWEEN = " · "  # the parts of a legend
 Values: TypeAlias = dict[Kind, tuple[FloatArray, ...]]
 
 NONE, PLAIN, TENSION, COMPRESSION, OVER = -1, 0, 1, 2, 3  # how an interval of a curve is drawn
@@ -80,7 +81,7 @@ class Company:
             parts.append(words.format(name=self.earlier.name))
         if self.beside is not None:
             parts.append(tr("dotted: envelope") if self.beside.is_envelope else tr("thin: states"))
-        return " · ".join(parts)
+        return LEGEND_BETWEEN.join(parts)
 
 
 def _plain_traces(part: Earlier | Beside | None, kind: Kind) -> tuple[Trace, ...]:

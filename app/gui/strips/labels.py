@@ -20,6 +20,7 @@ from app.gui.fonts import Face
 from app.gui.sheet_layout import GAP, Axes
 from app.gui.strips.company import COMPRESSION, NONE, TENSION, Trace
 from app.gui.strips.content import Extreme, Limit, StripContent
+from app.gui.strips.legend import cost_of_lines, legend_place
 from app.gui.strips.paths import Scale, stretches
 from app.words import tr
 from solver.arrays import BoolArray
@@ -31,7 +32,6 @@ OVER_EDGE = 0.4 * GAP  # how far the label of a limit may reach over the edge of
 SHARES = (1.0, 0.0, 0.5, 0.75, 0.25)  # of the way along a limit, where its label is tried
 HARDLY = 2  # pixels of a curve that a label may cover
 NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
-SHORTEST = 8  # characters that a legend keeps
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
 
@@ -53,7 +53,7 @@ def strip_labels(
     placer = _Placer(content, rect, ruler, axes, measure, scale)
     title = placer.title()
     standing = [*title, *placer.extremes(title), *placer.limits(), *placer.unchecked()]
-    standing += placer.legend()
+    standing += placer.legend(standing)
     return (*standing, *(sign for sign in placer.signs() if not _meets(sign.rect, standing)))
 
 
@@ -215,23 +215,23 @@ class _Placer:
             deepest = max(deepest, float(overlap))
         return deepest if deepest > HARDLY else 0.0
 
-    def legend(self) -> list[Label]:
-        """What the dashed lines of a reference are, in the corner of the strip that covers least."""
+    def legend(self, standing: list[Label]) -> list[Label]:
+        """What the dashed, dotted and thin lines are, where it hides least."""
+
+        def cost(box: QRectF) -> float:
+            if _meets(box, standing):
+                return np.inf
+            if not box.intersects(self.rect):  # below
+                return 0.0
+            fill = self._covered(box) if self.content.filled else 0.0
+            return fill + cost_of_lines(self.content, box, self.ruler, self.axes, self.scale)
+
         if not self.content.legend:
             return []
-        text = self._cut(self.content.legend)
-        size = self.measure(text, "small")
-        inner = self.rect.adjusted(4.0, 2.0, -4.0 - size.width(), -2.0 - size.height())
-        corners = product((inner.right(), inner.left()), (inner.top(), inner.bottom()))
-        boxes = [QRectF(QPointF(x, y), size) for x, y in corners]
-        return [Label(min(boxes, key=self._covered), text, "small", "quiet", "card")]
-
-    def _cut(self, text: str) -> str:
-        """The text as far as the strip is wide; a name may be long, and a strip upright is narrow."""
-        room = self.rect.width() - 8.0
-        while len(text) > SHORTEST and self.measure(text, "small").width() > room:
-            text = text.rstrip("…")[:-1] + "…"
-        return text
+        box, words = legend_place(
+            self.content.legend, self.rect, self.axes, lambda words: self.measure(words, "small"), cost
+        )
+        return [Label(box, words, "small", "quiet", "card")]
 
     def _shown(self, x: float) -> float:
         """The pixel of a position, kept within the strip."""
