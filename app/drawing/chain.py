@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from itertools import groupby
 
-from app.drawing.placing import TIGHT, Wish, place
+from app.drawing.placing import TIGHT, UNDER_EACH_OTHER, Wish, place
 from app.drawing.shapes import Box, Part, Stroke, Text
 from app.drawing.sketch import Sketch
 from app.drawing.words import section_text
@@ -18,6 +18,7 @@ BREAK = ((-3.0, 0.0), (-1.5, -5.0), (1.5, 5.0), (3.0, 0.0))  # the zigzag of wha
 LEAST_BREAK = 9.0  # px of the segment
 LONGEST_MARK = 10  # of a joint beside its level, in digits
 MARK_RANK = 2  # after all levels
+NUDGE = 4.0  # px that lengths and sections may stand off the middle upright, where segments are short
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 
@@ -33,8 +34,9 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
         for end in ((along - TICK, rows.chain + TICK), (along + TICK, rows.chain - TICK))
     ]
     sketch.lines(ticks, width=1.6)
-    sketch.put(lengths, rows.lengths, "high", TIGHT)
-    sketch.put(sections, rows.sections, "low", TIGHT)
+    clear = UNDER_EACH_OTHER if sketch.frame.upright else TIGHT
+    sketch.put(lengths, rows.lengths, "high", clear)
+    sketch.put(sections, rows.sections, "low", clear)
     for index in range(len(sketch.member.project.segments)):
         span = sketch.shown_span(index)
         if span is not None:
@@ -79,26 +81,45 @@ def length_wishes(sketch: Sketch) -> list[Wish]:
         span = sketch.shown_span(index)
         if span is not None:
             text = format_value(segment.length, "length", sketch.member.system, strip=True)
-            wishes.append(sketch.wish(text, 0.5 * (span[0] + span[1]), Part("length", index)))
+            wishes.append(
+                sketch.wish(text, 0.5 * (span[0] + span[1]), Part("length", index), slide=_nudge(sketch))
+            )
     return wishes
 
 
+def _nudge(sketch: Sketch) -> float:
+    return NUDGE if sketch.frame.upright else 0.0
+
+
 def section_wishes(sketch: Sketch) -> list[Wish]:
-    """One text for neighbours of the same section; upright a taper takes two lines."""
+    """One text for neighbours of the same section."""
     if not sketch.frame.detail.dimensions:
         return []
     segments = sketch.member.project.segments
-    wishes = []
+    found: list[tuple[str, int, float]] = []
     for _, group in groupby(range(len(segments)), key=lambda index: segments[index].section):
         members = list(group)
         spans = [span for index in members if (span := sketch.shown_span(index)) is not None]
         if spans:
             text = section_text(segments[members[0]].section, sketch.member.system)
-            if sketch.frame.upright:
-                text = text.replace("→", "\n→")
-            middle = 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))
-            wishes.append(sketch.wish(text, middle, Part("section", members[0])))
-    return wishes
+            found.append((text, members[0], 0.5 * (min(s[0] for s in spans) + max(s[1] for s in spans))))
+    texts = _in_a_column(sketch, [text for text, _, _ in found])
+    return [
+        sketch.wish(text, middle, Part("section", first), slide=_nudge(sketch))
+        for text, (_, first, middle) in zip(texts, found, strict=True)
+    ]
+
+
+def _in_a_column(sketch: Sketch, texts: list[str]) -> list[str]:
+    """Upright, tapers in two lines where they would widen the column."""
+    if not sketch.frame.upright:
+        return texts
+    broken = [text.replace("→", "\n→") for text in texts]
+    widest = max((sketch.frame.measure(text, "small")[0] for text in broken), default=0.0)
+    return [
+        text if sketch.frame.measure(text, "small")[0] <= widest else lines
+        for text, lines in zip(texts, broken, strict=True)
+    ]
 
 
 def level_texts(sketch: Sketch) -> list[str]:

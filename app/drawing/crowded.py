@@ -42,10 +42,10 @@ def left_out_words(count: int) -> tuple[str, str]:
 
 def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
     """The first free box, in as few lines as fit there; where none is free the one over the least."""
-    taken = _taken(sketch)
+    taken, room = _taken(sketch), sketch.frame.box.right - sketch.frame.box.left - 2.0 * INSET
     found: list[tuple[int, Box, str]] = []
     for text, share in product(words, SHARES):
-        width = share * sketch.frame.measure(text, "small")[0] + 1.0
+        width = min(share * sketch.frame.measure(text, "small")[0] + 1.0, room)
         lines = sketch.in_even_lines(text, "small", width)
         for box in _corners(sketch.frame.box, *sketch.frame.measure(lines, "small")):
             found.append((_met(box, taken), box, lines))

@@ -11,8 +11,8 @@ from itertools import groupby
 import numpy as np
 from msgspec.structs import replace
 
-from app.drawing.placing import CLEAR, STACKED, Span, Wish
-from app.drawing.shapes import Part, PartKind, Point
+from app.drawing.placing import CLEAR, STACKED, Placed, Span, Wish
+from app.drawing.shapes import Box, Part, PartKind, Point
 from app.drawing.sketch import Sketch
 from app.drawing.supports import support_of
 from app.drawing.words import (
@@ -32,7 +32,8 @@ from solver.model import UnitSystemName, end_of
 ARROW = 32.0  # length of the arrow of a joint force, px
 LEAST_ARROW = 13.0
 HEAD = 5.0
-GRAVITY_RANK = 2  # before what is said of many segments
+GRAVITY_RANK = 2  # before what is said of many segments, where it finds no room after them
+LAST_RANK = 6  # it is of no one segment, so that it stands where the others leave room
 LEAST_BAND = 5.0  # height of the smallest distributed load, px
 HIGHEST_BAND = 60.0  # while a load is pulled beyond its row
 
@@ -46,13 +47,27 @@ def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
         _draw_forces(sketch, sketch.member.loads.joint_force[0])
     rows = sketch.rows.labels
     others = sketch.texts_in(rows)
-    for label in sketch.placed(wishes, rows, STACKED if sketch.frame.upright else CLEAR):
+    for label in _placed(sketch, wishes, others):
         if not sketch.is_free(label.wish, label.span, rows[label.row], "high", others):
             sketch.picture.left_out += 1
         elif label.wish.part.kind == "force":
             sketch.text(label.wish, label.span, rows[label.row], "high", "small_strong", "ink")
         else:
             sketch.text(label.wish, label.span, rows[label.row], "high")
+
+
+def _placed(sketch: Sketch, wishes: list[Wish], others: list[Box]) -> list[Placed]:
+    """The labels with a place; self-weight after all others, but before them rather than not at all."""
+    rows, clear = sketch.rows.labels, STACKED if sketch.frame.upright else CLEAR
+    before = sketch.picture.left_out
+    found = sketch.placed(wishes, rows, clear)
+    weights = [label for label in found if label.wish.part.kind == "gravity"]
+    stands = any(sketch.is_free(w.wish, w.span, rows[w.row], "high", others) for w in weights)
+    if stands or all(wish.part.kind != "gravity" for wish in wishes):
+        return found
+    sketch.picture.left_out = before
+    first = [replace(w, rank=GRAVITY_RANK) if w.part.kind == "gravity" else w for w in wishes]
+    return sketch.placed(first, rows, clear)
 
 
 def load_wishes(sketch: Sketch) -> list[Wish]:
@@ -242,8 +257,20 @@ def _movement_wishes(sketch: Sketch, movement: FloatArray) -> list[Wish]:
     for joint, value in enumerate(movement.tolist()):
         if value and sketch.holds(joint):
             text = tr("moved {value}").format(value=signed_text(value, "displacement", sketch.member.system))
-            wishes.append(sketch.wish(text, sketch.along(joint), Part("movement", joint), rank=1, slide=60.0))
+            wish = sketch.wish(text, sketch.along(joint), Part("movement", joint), rank=1, slide=60.0)
+            wishes.append(replace(wish, along=_beyond_end(sketch, joint, wish)))
     return wishes
+
+
+def _beyond_end(sketch: Sketch, joint: int, wish: Wish) -> float:
+    """At an end of the member beyond it, as far as there is room: segments need the place beside them."""
+    if 0 < joint < len(sketch.member.project.segments):
+        return wish.along
+    low, high = sketch.margin_beyond(joint)
+    half = 0.5 * wish.extent
+    outward = low < sketch.window[0]
+    along = min(wish.along, high - half) if outward else max(wish.along, low + half)
+    return min(max(along, sketch.room[0] + half), sketch.room[1] - half)
 
 
 def _misfits(loads: Loads, system: UnitSystemName) -> list[str]:
@@ -323,7 +350,7 @@ def _gravity_wishes(sketch: Sketch, gravity: float) -> list[Wish]:
         return []
     low, high = sketch.room if sketch.frame.upright else sketch.window
     middle = 0.5 * (low + high)
-    wish = sketch.wish(text, middle, Part("gravity", 0), rank=GRAVITY_RANK, slide=high - low)
+    wish = sketch.wish(text, middle, Part("gravity", 0), rank=LAST_RANK, slide=high - low)
     if not sketch.frame.upright:
         return [wish]
-    return [replace(wish, along=low)]  # slides down from the top, where no segment needs the place
+    return [replace(wish, along=high)]  # slides up from the foot, where no segment needs the place

@@ -20,6 +20,7 @@ from app.drawing.shapes import Face, Part
 CLEAR = 9.0  # least pixels between two labels in a row, so that they do not read as one
 STACKED = 3.0  # of labels of loads that stand under each other
 TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart
+UNDER_EACH_OTHER = 0.5  # of the same upright, where a line of text has air of its own
 Span = tuple[float, float]
 
 

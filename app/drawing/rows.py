@@ -87,7 +87,8 @@ def _rows_upright(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
 def _least_column(sketch: Sketch, wishes: list[Wish]) -> float:
     """What forces need in one line, and what all else that comes before warming needs in many."""
     forces = [w.depth for w in wishes if w.part.kind == "force"]
-    words = [sketch.narrowed(w, 0.0).depth for w in wishes if w.rank <= GRAVITY_RANK]
+    first = [w for w in wishes if w.rank <= GRAVITY_RANK or w.part.kind == "gravity"]
+    words = [sketch.narrowed(w, 0.0).depth for w in first]
     return max((*forces, *words), default=0.0)
 
 

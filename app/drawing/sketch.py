@@ -194,7 +194,7 @@ class Sketch:
     ) -> Wish:
         """A label that wants a place; upright a long one takes several lines."""
         if self.frame.upright:
-            text = self.in_lines(text, face, LONGEST_LINE * self.frame.measure("0", face)[0])
+            text = self.in_even_lines(text, face, LONGEST_LINE * self.frame.measure("0", face)[0])
         extent, depth = self.extents(text, face)
         return Wish(text, along, extent, depth, part, rank, slide, face)
 
@@ -220,6 +220,8 @@ class Sketch:
     def in_even_lines(self, text: str, face: Face, widest: float) -> str:
         """As few lines as a width allows, none much longer than the others: no unit is left alone."""
         found = narrower = self.in_lines(text, face, widest)
+        if "\n" not in found:
+            return found
         while narrower.count("\n") == found.count("\n"):
             found = narrower
             narrower = self.in_lines(text, face, self.frame.measure(found, face)[0] - 1.0)

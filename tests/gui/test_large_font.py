@@ -1,5 +1,7 @@
 """At twice the font, and with another font or palette while the window is open, everything stays usable."""
 
+from itertools import pairwise
+
 import pytest
 from PySide6.QtCore import QEvent, QSize, Qt
 from PySide6.QtGui import QFont
@@ -52,6 +54,14 @@ def test_a_kept_reference_in_the_bar_does_not_either(qtbot, doubled):
     QApplication.processEvents()
     assert doubled.against.picker.isVisible()
     assert doubled.minimumSizeHint().width() <= 1280
+
+
+def test_titles_of_strips_side_by_side_stay_on_the_sheet(doubled):
+    doubled.on_layout_picked("vertical")
+    sheet = doubled.sheet
+    titles = [strip.labels[0].rect for strip in sheet.strips]
+    assert all(rect.right() <= sheet.viewport().width() for rect in titles)
+    assert not any(one.intersects(other) for one, other in pairwise(titles))
 
 
 def test_rows_of_every_room_grow_with_the_font(doubled):

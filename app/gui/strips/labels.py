@@ -99,7 +99,10 @@ class _Placer:
     def title(self) -> list[Label]:
         """Symbol and unit: left of the strip, or above it upright."""
         size = self.measure(self.content.title, "strong")
-        at = QPointF(self.rect.left(), self.rect.top() - 2.6 * size.height())
+        left = min(
+            self.rect.left(), self.rect.right() + GAP - size.width()
+        )  # beyond the last one is the edge
+        at = QPointF(left, self.rect.top() - 2.6 * size.height())
         if not self.axes.upright:
             at = QPointF(EDGE, self.rect.top())
         title = Label(QRectF(at, size), self.content.title, "strong")

@@ -85,7 +85,11 @@ class TestUpright:
     def test_forces_distributed_loads_movements_and_weight_come_before_warmth(self):
         shown = kinds(warm_running(SIZES[0], upright=True))
         assert [shown.count(kind) for kind in ("force", "distributed", "movement", "gravity")] == [1, 1, 1, 1]
-        assert shown.count("warmth") >= 6
+        assert shown.count("warmth") == 12
+
+    def test_all_lengths_and_sections_have_a_place_beside_short_segments(self):
+        shown = kinds(warm_running(SIZES[0], upright=True))
+        assert (shown.count("length"), shown.count("section")) == (12, 12)
 
     def test_with_room_nothing_that_acts_is_left_out(self):
         assert kinds(warm_running(SIZES[1], upright=True)).count("warmth") == 12
@@ -108,6 +112,14 @@ class TestLeftOut:
         said = [text for text in texts if "without room" in text]
         assert len(said) == (1 if picture.left_out else 0)
         assert all(text in left_out_words(picture.left_out) for text in said)
+
+    @pytest.mark.parametrize("width", [240.0, 400.0, 900.0])
+    @BOTH_WAYS
+    def test_is_said_within_the_drawing_however_narrow(self, width, upright):
+        member = drawn(MEMBERS["busy 40"])
+        frame = window_frame(member, (width, 480.0), upright=upright)
+        (said,) = [text for text in lay_out(member, frame).texts if "without" in text.text]
+        assert frame.box.left <= said.box.left < said.box.right <= frame.box.right
 
     def test_not_on_paper_which_says_it_below(self):
         member = drawn(MEMBERS["busy 40"])
