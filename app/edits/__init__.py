@@ -11,9 +11,11 @@ from app.edits.companions import (
     companions_at,
     extend_companion,
     fit_companion,
+    is_unfit,
     missing_length,
     remove_companion_segments,
     remove_companions,
+    span_joints,
 )
 from app.edits.loads import set_joint_load, set_segment_load
 from app.edits.member import delete_segments, insert_segment, move_segments, reverse_member
@@ -42,6 +44,7 @@ __all__ = [
     "free_joints",
     "hold_joint",
     "insert_segment",
+    "is_unfit",
     "join_equal_neighbours",
     "join_segments",
     "mirror_member",
@@ -64,6 +67,7 @@ __all__ = [
     "set_joint_load",
     "set_segment_load",
     "set_value",
+    "span_joints",
     "split_segment",
     "value_at",
     "without_support",

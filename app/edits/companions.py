@@ -16,6 +16,7 @@ from app.edits.checking import checked, refused
 from app.edits.linear import exact, parted, rounded, turned
 from app.edits.records import expanded, kept, mapped, with_cases
 from solver.model import AnySection, Companion, CompanionSegment, Project, Segment, end_of
+from solver.rules_of_companions import LENGTH_TOLERANCE
 
 _Segments = tuple[CompanionSegment, ...]
 
@@ -79,6 +80,19 @@ def extend_companion(project: Project, companion: int) -> Project:
         halves = (structs.replace(last, length=first), structs.replace(last, mark=mark, length=rest))
         segments = (*found.segments[:-1], *halves)
     return _with(project, companion, segments)
+
+
+def span_joints(project: Project, companion: int, start: str, end: str) -> Project:
+    """The project with a companion between two other joints; its lengths stay."""
+    fresh = list(project.companions)
+    fresh[companion] = structs.replace(fresh[companion], start=start, end=end)
+    return checked(structs.replace(project, companions=tuple(fresh)))
+
+
+def is_unfit(project: Project, companion: Companion) -> bool:
+    """Whether a companion is too long or too short for its span, as the solver sees it."""
+    span = span_of(project, companion.start, companion.end)
+    return abs(missing_length(project, companion)) > LENGTH_TOLERANCE * span
 
 
 def missing_length(project: Project, companion: Companion) -> float:

@@ -108,6 +108,7 @@ COMMANDS: Final[tuple[Command, ...]] = (
                 later("&4 Combinations"),
                 later("&5 Materials"),
                 later("&6 Limits"),
+                later("&7 Companions"),
             ),
             1,
         )

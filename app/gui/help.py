@@ -47,7 +47,7 @@ TABLE_KEYS: Final[tuple[tuple[str, str], ...]] = (
     ),
     ("Esc", later("Leave the cell as it was")),
     (later("Delete"), later("Clear cells")),
-    (later("Ctrl+1 … Ctrl+6"), later("A table; once more: the next one beside it")),
+    (later("Ctrl+1 … Ctrl+7"), later("A table; once more: the next one beside it")),
 )
 FINDINGS_KEYS: Final[tuple[tuple[str, str], ...]] = (
     (later("Tab, Shift+Tab"), later("The next finding or the one before")),

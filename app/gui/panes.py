@@ -21,6 +21,7 @@ _TABLE_TOPICS = {
     "segment_loads": ("loads", "cases"),
     "joint_loads": ("loads", "cases"),
     "combinations": ("loads", "combinations"),
+    "companions": ("loads", "companions"),
     "materials": ("entering", "materials"),
     **dict.fromkeys(("limits displacement", "limits relative", "limits reaction"), ("loads", "limits")),
 }

@@ -196,7 +196,7 @@ SITUATIONS = (
 @pytest.mark.parametrize("situation", SITUATIONS, ids=lambda act: act.__name__)
 def test_the_window(qtbot, window, painted, situation):
     situation(qtbot, window)
-    assert len(window.tables.views.values()) == 10  # those of the tabs not seen yet are made for it
+    assert len(window.tables.views.values()) == 11  # those of the tabs not seen yet are made for it
     for menu in window.findChildren(QMenu):
         menu.aboutToShow.emit()
     texts = list(texts_below(window))

@@ -21,6 +21,7 @@ from solver.model import Project
 
 COUNTED = {
     "segments": lambda n: trn("for {count} segment", "for {count} segments", n),
+    "companions": lambda n: trn("for {count} segment", "for {count} segments", n),
     "joints": lambda n: trn("for {count} joint", "for {count} joints", n),
 }
 

@@ -123,7 +123,7 @@ class Column:
     @property
     def holds_a_name(self) -> bool:
         """Whether its cells name something, be it by a mark such as "2"."""
-        return self.key in ("mark", "name") or self.offers is not None
+        return self.key in ("mark", "name", "companion") or self.offers is not None
 
     @property
     def words(self) -> str:
@@ -158,6 +158,7 @@ class Table:
     total: Callable[[Project, Figures, Sight], str] | None = None
     delete: Callable[[Project, tuple[int, ...], Sight], Project] | None = None
     delete_name: str = ""
+    place: Callable[[Project, int, str], Place] | None = None  # of a cell, where rows are no plain list
     movable: bool = False  # whether the order of the rows is a person's to change
     one: Callable[[Project, int, Sight], object] | None = None  # one row, where all would take long
 
@@ -167,6 +168,6 @@ class Table:
 
     def count(self, project: Project, sight: Sight) -> int:
         """How many rows there are."""
-        if self.one is None:
+        if self.one is None or self.place is not None:
             return len(self.rows(project, sight))
         return self.lead + len(getattr(project, str(self.records(sight)[0])))

@@ -9,6 +9,7 @@ from msgspec import UNSET, UnsetType
 from msgspec.structs import replace
 
 from app import edits
+from app.beside import beside
 from app.entry import parse_entry
 from app.gui.tables import offers
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
@@ -27,7 +28,8 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
         raise NotTaken(tr("name a material from the Materials table first"))
     if project.materials[place].modulus == modulus:
         return Change(project)
-    if sum(other.material == segment.material for other in project.segments) == 1:
+    others = (*project.segments, *(of.segment for of in beside(project)))
+    if sum(other.material == segment.material for other in others) == 1:
         note = tr("Modulus of material {name} changed").format(name=segment.material)
         return Change(edits.set_value(project, ("materials", place, "modulus"), modulus), note)
     name = free_name(f"{segment.material} {segment.mark}", {m.name for m in project.materials})
@@ -118,7 +120,7 @@ def _add_typical(project: Project, text: str, typical: Material) -> Change:
 def _delete(project: Project, indexes: tuple[int, ...], _sight: Sight) -> Project:
     """The project without these materials; NotTaken where a segment is made of one."""
     names = {project.materials[index].name for index in indexes}
-    for segment in project.segments:
+    for segment in (*project.segments, *(of.segment for of in beside(project))):
         if segment.material in names:
             used = tr("{mark} is made of {name}: give it another material first")
             raise NotTaken(used.format(mark=segment.mark, name=segment.material))

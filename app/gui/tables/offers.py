@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
+from app.edits.companions import segment_marks
 from app.gui.tables.column import Offer, Sight
 from app.typical_materials import not_in
 from app.units import format_value
@@ -31,8 +32,8 @@ def _modulus(material: Material, sight: Sight) -> str:
 
 
 def segments(project: Project, _sight: Sight) -> tuple[Offer, ...]:
-    """The marks of the segments."""
-    return _named(segment.mark for segment in project.segments)
+    """The marks of the segments, of the companions' behind those of the member."""
+    return _named(segment_marks(project))
 
 
 def joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:

@@ -1,6 +1,6 @@
 """The tabs of the tables; a tab's tables are made when they are first looked up or shown.
 
-Ten tables are most of what a window costs to make, and one of them is seen at first.
+Eleven tables are most of what a window costs to make, and one of them is seen at first.
 """
 
 from __future__ import annotations
@@ -11,6 +11,7 @@ from PySide6.QtWidgets import QSplitter, QTabWidget, QVBoxLayout, QWidget
 
 from app.gui.tables.column import Table
 from app.gui.tables.combinations import COMBINATIONS
+from app.gui.tables.companions import COMPANIONS
 from app.gui.tables.joints import JOINTS
 from app.gui.tables.limits import DISPLACEMENT, REACTION, RELATIVE
 from app.gui.tables.loads import CASES, JOINT_LOADS, SEGMENT_LOADS
@@ -27,6 +28,7 @@ TABS: tuple[tuple[str, tuple[tuple[Table, int], ...]], ...] = (
     (later("Combinations"), ((COMBINATIONS, 1),)),
     (later("Materials"), ((MATERIALS, 1),)),
     (later("Limits"), ((DISPLACEMENT, 30), (RELATIVE, 40), (REACTION, 30))),
+    (later("Companions"), ((COMPANIONS, 1),)),
 )
 PLACES = {table.key: place for place, (_title, tables) in enumerate(TABS) for table, _share in tables}
 TABLES = tuple(table for _title, tables in TABS for table, _share in tables)

@@ -93,12 +93,14 @@ class Block:
             self._notes[change.note] = None
 
     def _place(self, row: int, column: int) -> Place:
-        return self._model.cell_place(self._model.record_of(row), column)
+        return self._model.cell_place(self._model.record_of(row), column, self._project)
 
     def _adding_place(self) -> Place:
         """Where the row that adds a record stands now."""
         model = self._model
         count = model.table.count(self._project, model.sight)
+        if model.table.place is not None:
+            return model.cell_place(model.record_of(count), 0, self._project)
         return (*model.table.records(model.sight), model.record_of(count), model.columns[0].key)
 
     def _add(self, texts: Texts) -> bool:

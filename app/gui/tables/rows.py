@@ -157,16 +157,18 @@ class RowsModel(QAbstractTableModel):
 
     def place(self, row: int, column: int) -> Place:
         """The place of a cell in the project."""
-        if self.is_adding(row):
+        if self.is_adding(row) and self.table.place is None:
             return (*self.table.records(self._sight), self.record_of(row), self._columns[column].key)
         return self.cell_place(self.record_of(row), column)
 
-    def cell_place(self, record: int, column: int) -> Place:
-        """The place of a record's cell, also of a record that is not shown yet."""
+    def cell_place(self, record: int, column: int, project: Project | None = None) -> Place:
+        """The place of a record's cell, also of a record of `project` that is not shown yet."""
         wanted = self._columns[column]
         if wanted.place is not None:
             return wanted.place(record, self._sight)
         case = self._sight.case_place if wanted.of_case else ()
+        if self.table.place is not None:
+            return (*self.table.place(project or self._document.project, record, wanted.key), *case)
         return (*self.table.records(self._sight), record, wanted.key, *case)
 
     def cell_name(self, project: Project, record: int, column: int) -> str:

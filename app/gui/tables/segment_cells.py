@@ -8,29 +8,26 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from math import fsum
-from operator import attrgetter
 from typing import Any
 
 from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
+from app.gui.tables.case_loads import Ends, end_of_load, heat_of, loads_by_mark, loads_on
 from app.gui.tables.column import Change, Sight
-from app.gui.tables.loads import needed_case
 from app.gui.tables.materials import with_modulus
-from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
+from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
 from app.gui.tables.supports import with_supports
 from app.section_entry import parse_section, taken_as
 from app.support_entry import parse_supports, supports_entry, supports_text
 from app.typical_materials import typical_named, with_typical
-from app.units import Quantity, entry_text, format_value
 from app.words import tr
+from solver.faults import Place
 from solver.model import (
     AnySection,
     AreaSection,
     Joint,
-    LoadCase,
     Project,
     Segment,
     SegmentLoad,
@@ -60,7 +57,7 @@ class SegmentRow:
 def rows(project: Project, sight: Sight) -> tuple[object, ...]:
     """The start row and a row for each segment."""
     moduli = {material.name: material.modulus for material in project.materials}
-    loads = _loads_by_mark(sight.load_case(project))
+    loads = loads_by_mark(sight.load_case(project))
     found: list[object] = [StartRow(project.joints[0])]
     for segment, joint in zip(project.segments, project.joints[1:], strict=True):
         own = None if loads is None else tuple(loads.get(segment.mark, ()))
@@ -74,24 +71,8 @@ def one_row(project: Project, row: int, sight: Sight) -> object:
         return StartRow(project.joints[0])
     segment, case = project.segments[row - 1], sight.load_case(project)
     modulus = next((m.modulus for m in reversed(project.materials) if m.name == segment.material), None)
-    loads = None if case is None else _loads_on(segment.mark, case)
+    loads = None if case is None else loads_on(segment.mark, case)
     return SegmentRow(segment, project.joints[row], modulus, loads)
-
-
-def _loads_on(mark: str, case: LoadCase) -> tuple[SegmentLoad, ...]:
-    marks = list(map(attrgetter("segment"), case.segment_loads))
-    if mark not in marks:
-        return ()  # at a glance: a paste asks this for every cell
-    return tuple(load for load, on in zip(case.segment_loads, marks, strict=True) if on == mark)
-
-
-def _loads_by_mark(case: LoadCase | None) -> dict[str, list[SegmentLoad]] | None:
-    if case is None:
-        return None
-    found: dict[str, list[SegmentLoad]] = {}
-    for load in case.segment_loads:
-        found.setdefault(load.segment, []).append(load)
-    return found
 
 
 def in_segments(read: Callable[[SegmentRow, Sight], Any], otherwise: Any) -> Callable[[Any, Sight], Any]:
@@ -136,10 +117,10 @@ def put_section(project: Project, index: int, text: str, sight: Sight) -> Change
     """The old section settles what bare numbers are, and keeps second moments that no text shows."""
     old = project.segments[index].section
     section = parse_section(text, sight.system, old)
-    return Change(edits.set_value(project, ("segments", index, "section"), section), _guess(text, old))
+    return Change(edits.set_value(project, ("segments", index, "section"), section), guess(text, old))
 
 
-def _guess(text: str, old: AnySection) -> str:
+def guess(text: str, old: AnySection) -> str:
     """What a bare "60x5" was taken as, and how to type the other."""
     notes = {
         "tube": tr("“{text}” is taken as a tube, outside × wall; type r{text} for a rectangle"),
@@ -176,12 +157,17 @@ def put_area(project: Project, index: int, text: str, sight: Sight) -> Change:
 
 def put_material(project: Project, index: int, text: str, _sight: Sight) -> Change:
     """A material of the project, or a typical one, which is then added to it."""
+    return material_put(project, ("segments", index, "material"), text)
+
+
+def material_put(project: Project, place: Place, text: str) -> Change:
+    """The same at any place of a material's name."""
     name, note = text.strip(), ""
     typical = None if any(own.name == name for own in project.materials) else typical_named(name)
     if typical is not None:
         project, note = with_typical(project, typical)
         name = typical.name
-    return Change(edits.set_value(project, ("segments", index, "material"), name), note)
+    return Change(edits.set_value(project, place, name), note)
 
 
 def put_modulus(project: Project, index: int, text: str, sight: Sight) -> Change:
@@ -225,76 +211,19 @@ def put_support(project: Project, index: int, text: str, sight: Sight) -> Change
 # Loads of the edited case
 
 
-@dataclass(frozen=True, slots=True)
-class Ends:
-    """The two keys of a load that varies along the segment."""
-
-    start: str
-    end: str
-    quantity: Quantity
-
-    def of(self, load: SegmentLoad) -> tuple[float, float]:
-        """The load at both ends."""
-        start: float = getattr(load, self.start)
-        return start, end_of(start, getattr(load, self.end))
-
-    def total(self, row: SegmentRow) -> tuple[float, float] | None:
-        """The sum of the segment's records; None where no case is edited."""
-        if row.loads is None:
-            return None
-        pairs = [self.of(load) for load in row.loads]
-        return fsum(start for start, _ in pairs), fsum(end for _, end in pairs)
+def _mark_of(project: Project, index: int) -> str:
+    return project.segments[index].mark
 
 
-FORCE = Ends("load_start", "load_end", "distributed")
-HEAT = Ends("temperature_start", "temperature_end", "temperature")
+def in_segment_rows(functions: dict[str, Any]) -> dict[str, Any]:
+    """A column's functions for segments, with nothing in the row before the first."""
+    show, entry = functions["show"], functions["entry"]
+    return functions | {"show": in_segments(show, ""), "entry": in_segments(entry, None)}
 
 
 def one_end(ends: Ends, which: int) -> dict[str, Any]:
     """A column's functions for the load at the start (0) or the end (1) of the segment."""
-
-    def show(row: SegmentRow, sight: Sight) -> str:
-        total = ends.total(row)
-        return "" if total is None else format_value(total[which], ends.quantity, sight.system, strip=True)
-
-    def entry(row: SegmentRow, sight: Sight) -> str | None:
-        total = ends.total(row)
-        editable = total is not None and row.loads is not None and len(row.loads) <= 1
-        return entry_text(total[which], ends.quantity, sight.system) if editable and total else None
-
-    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
-        if which == 0 and len(parts_of_pair(text)) == 2:
-            return _put_ends(ends, project, index, text, sight)
-        value = parse_entry(text, ends.quantity, sight.system) if text.strip() else UNSET
-        key = ends.start if which == 0 else ends.end
-        case, mark = needed_case(project, sight).name, project.segments[index].mark
-        return Change(edits.set_segment_load(project, case, mark, key, value))
-
-    return {"show": in_segments(show, ""), "entry": in_segments(entry, None), "put": put}
+    return in_segment_rows(end_of_load(ends, which, _mark_of))
 
 
-def _put_ends(ends: Ends, project: Project, index: int, text: str, sight: Sight) -> Change:
-    """Both ends at once, "3 -> 5"; an empty text takes both away."""
-    start, end = parse_pair(text, ends.quantity, sight.system) if text.strip() else (UNSET, UNSET)
-    case, mark = needed_case(project, sight).name, project.segments[index].mark
-    begun = edits.set_segment_load(project, case, mark, ends.start, start)
-    return Change(edits.set_segment_load(begun, case, mark, ends.end, end))
-
-
-def show_heat(row: SegmentRow, sight: Sight) -> str:
-    """Both ends of the temperature rise, for reading."""
-    total = HEAT.total(row)
-    return "" if total is None else pair_text(*total, HEAT.quantity, sight.system)
-
-
-def heat_entry(row: SegmentRow, sight: Sight) -> str | None:
-    """Both ends, all digits; None where several records stand for them."""
-    total = HEAT.total(row)
-    if total is None or row.loads is None or len(row.loads) > 1:
-        return None
-    return pair_entry(*total, HEAT.quantity, sight.system)
-
-
-def put_heat(project: Project, index: int, text: str, sight: Sight) -> Change:
-    """Both ends of the temperature rise; an empty text takes it away."""
-    return _put_ends(HEAT, project, index, text, sight)
+HEAT_CELLS = in_segment_rows(heat_of(_mark_of))

@@ -8,21 +8,20 @@ from __future__ import annotations
 from app import edits
 from app.entry import parse_entry
 from app.gui.tables import offers
+from app.gui.tables.case_loads import FORCE
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.numbers import pair_entry, pair_text
 from app.gui.tables.segment_cells import (
-    FORCE,
+    HEAT_CELLS,
     SegmentRow,
     bedding_entry,
     end_areas,
     entry_of_support,
-    heat_entry,
     in_segments,
     one_end,
     one_row,
     put_area,
     put_bedding,
-    put_heat,
     put_mark,
     put_material,
     put_modulus,
@@ -31,7 +30,6 @@ from app.gui.tables.segment_cells import (
     rows,
     set_in_segment,
     show_bedding,
-    show_heat,
     show_mark,
     show_support,
 )
@@ -131,9 +129,7 @@ COLUMNS = (
     Column(
         "heat",
         later("Temperature rise"),
-        in_segments(show_heat, ""),
-        in_segments(heat_entry, None),
-        put_heat,
+        **HEAT_CELLS,
         of_case=True,
         quantity="temperature",
         optional=True,
