@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import TypeAlias
 
 import numpy as np
@@ -90,6 +91,7 @@ def part_of(coefficients: FloatArray, start: FloatArray, end: FloatArray) -> Flo
     return np.stack([blossom(start, start), blossom(start, end), blossom(end, end)], axis=-1)
 
 
+@lru_cache(4096)  # a drawing asks for the same ones several times, and again at every edit
 def outline(section: AnySection, s: float) -> Outline:
     """The outline at the fraction s = 0…1; a bare area is drawn as the round bar of that area."""
     match section:

@@ -6,16 +6,17 @@ takes the place of quieter labels where no corner is free.
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from itertools import product
 from operator import itemgetter
 
 import numpy as np
+from msgspec.structs import astuple
 
 from app.drawing.shapes import Box, Part, Text
 from app.drawing.sketch import Sketch
 from app.words import tr, trn
-from solver.arrays import FloatArray
+from solver.arrays import FloatArray, IntArray
 
 INSET = 6.0  # px, from the edge of the drawing
 SHARES = (1.0, 0.5, 0.34, 0.25)  # of the words' length in one line, that lines may have
@@ -47,19 +48,26 @@ def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
     for text, share in product(words, SHARES):
         width = min(share * sketch.frame.measure(text, "small")[0] + 1.0, room)
         lines = sketch.in_even_lines(text, "small", width)
-        for box in _corners(sketch.frame.box, *sketch.frame.measure(lines, "small")):
-            found.append((_met(box, taken), box, lines))
-            if not found[-1][0]:
-                return box, lines
+        met, box = _freest(sketch, taken, *sketch.frame.measure(lines, "small"))
+        found.append((met, box, lines))
+        if not met:
+            break
     _, box, lines = min(found, key=itemgetter(0))
     return box, lines
 
 
 def free_box(sketch: Sketch, width: float, height: float) -> Box | None:
     """A box of a size at an edge of the drawing that nothing else reaches into, if there is one."""
-    taken = _taken(sketch)
-    corners = _corners(sketch.frame.box, width, height)
-    return next((box for box in corners if not _met(box, taken)), None)
+    met, box = _freest(sketch, _taken(sketch), width, height)
+    return None if met else box
+
+
+def _freest(sketch: Sketch, taken: FloatArray, width: float, height: float) -> tuple[int, Box]:
+    """The first of the boxes of a size at the edges that meets the fewest that are taken, and how many."""
+    corners = tuple(_corners(sketch.frame.box, width, height))
+    met = _met(corners, taken)
+    best = int(np.argmin(met))
+    return int(met[best]), corners[best]
 
 
 def _corners(room: Box, width: float, height: float) -> Iterator[Box]:
@@ -79,11 +87,11 @@ def _taken(sketch: Sketch) -> FloatArray:
     boxes += [text.box for text in picture.texts]
     boxes += [target.box for target in picture.targets if target.part.kind not in SPACES]
     boxes += [picture.legend] * WORTH if picture.legend is not None else []
-    return np.array([(b.left, b.top, b.right, b.bottom) for b in boxes])
+    return np.array([astuple(box) for box in boxes]).reshape(-1, 4)
 
 
-def _met(box: Box, taken: FloatArray) -> int:
-    """How many of these boxes a box meets."""
-    left, top, right, bottom = taken.T
-    apart = (left >= box.right) | (right <= box.left) | (top >= box.bottom) | (bottom <= box.top)
-    return len(taken) - int(np.count_nonzero(apart))
+def _met(boxes: Sequence[Box], taken: FloatArray) -> IntArray:
+    """How many of the taken boxes each of the others (k,) meets."""
+    left, top, right, bottom = np.array([astuple(box) for box in boxes]).T[:, :, np.newaxis]
+    apart = (taken[:, 0] >= right) | (taken[:, 2] <= left) | (taken[:, 1] >= bottom) | (taken[:, 3] <= top)
+    return len(taken) - np.count_nonzero(apart, axis=1)

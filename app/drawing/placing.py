@@ -10,8 +10,6 @@ from __future__ import annotations
 import bisect
 import math
 from collections.abc import Iterable, Sequence
-from itertools import pairwise
-from operator import itemgetter
 
 from msgspec import Struct
 
@@ -21,6 +19,7 @@ CLEAR = 9.0  # least pixels between two labels in a row, so that they do not rea
 STACKED = 3.0  # of labels of loads that stand under each other
 TIGHT = 4.0  # of lengths and sections, which ticks and lines tell apart
 UNDER_EACH_OTHER = 0.5  # of the same upright, where a line of text has air of its own
+ROUNDING = 1e-6
 Span = tuple[float, float]
 
 
@@ -47,13 +46,17 @@ class Placed(Struct, frozen=True):
 
 def place(wishes: Iterable[Wish], rows: int, room: Span, clear: float = CLEAR) -> list[Placed]:
     """Place what fits into `rows` rows between the two pixels of `room`."""
-    taken: list[list[Span]] = [[] for _ in range(rows)]
+    gaps: list[list[Span]] = [[room] for _ in range(rows)]
     placed = []
     for wish in sorted(wishes, key=lambda w: (w.rank, w.along)):
         for row in range(rows):
-            span = _free_span(wish, taken[row], room, clear)
-            if span is not None:
-                bisect.insort(taken[row], span)
+            found = _nearest_gap(wish, gaps[row])
+            if found is not None:
+                gap, centre = found
+                span = centre - 0.5 * wish.extent, centre + 0.5 * wish.extent
+                low, high = gaps[row][gap]
+                beside = ((low, span[0] - clear), (span[1] + clear, high))
+                gaps[row][gap : gap + 1] = [free for free in beside if free[1] > free[0]]
                 placed.append(Placed(wish, row, span))
                 break
     return placed
@@ -66,50 +69,33 @@ def fits(wishes: Sequence[Wish], rows: int, room: Span, clear: float = CLEAR) ->
     return together <= longest and len(place(wishes, rows, room, clear)) == len(wishes)
 
 
-def _free_span(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> Span | None:
-    """The free span nearest to where the label wants to be, or None; `taken` grows along the row."""
-    half = 0.5 * wish.extent
-    own = wish.along - half, wish.along + half
-    if _inside(own, room) and _is_free(own, taken, clear):
-        return own
-    for centre in _centres(wish, taken, room, clear) if wish.slide else ():
-        span = centre - half, centre + half
-        if _inside(span, room) and _is_free(span, taken, clear):
-            return span
+def _nearest_gap(wish: Wish, gaps: Sequence[Span]) -> tuple[int, float] | None:
+    """The gap in which the label stands nearest to where it wants to be, and its centre there, or None.
+
+    `gaps` are what is free of a row, growing, less what keeps clear of the labels that stand.
+    """
+    along, half = wish.along, 0.5 * wish.extent
+    at = bisect.bisect_right(gaps, (along, math.inf)) - 1  # the gap that the place wanted is in or behind
+    if at >= 0 and gaps[at][0] <= along - half + ROUNDING and along + half <= gaps[at][1] + ROUNDING:
+        return at, along
+    if not wish.slide:
+        return None
+    reach = wish.slide + ROUNDING
+    before = _first_wide(gaps, range(at, -1, -1), along, half, reach)
+    after = _first_wide(gaps, range(at + 1, len(gaps)), along, half, reach)
+    found = [one for one in (before, after) if one is not None]
+    return min(found, key=lambda one: abs(one[1] - along), default=None)
+
+
+def _first_wide(
+    gaps: Sequence[Span], order: range, along: float, half: float, reach: float
+) -> tuple[int, float] | None:
+    """The first gap that is wide enough and within reach, nearest first, and the centre of a label in it."""
+    for gap in order:
+        low, high = gaps[gap]
+        centre = min(max(along, low + half), high - half)
+        if high - low + ROUNDING >= 2.0 * half:
+            return (gap, centre) if abs(centre - along) <= reach else None
+        if low - along > reach or along - high > reach:  # and so are all that follow
+            return None
     return None
-
-
-def _centres(wish: Wish, taken: Sequence[Span], room: Span, clear: float) -> list[float]:
-    """Where the label may slide: the ends of the room, beside what stands; nearest first."""
-    half, reach = 0.5 * wish.extent, wish.slide + 1e-6
-    far = reach + clear + half
-    first = bisect.bisect_left(taken, wish.along - far, key=itemgetter(1))
-    last = bisect.bisect_right(taken, wish.along + far, key=itemgetter(0))
-    beside = taken[first:last]
-    centres = [room[0] + half, room[1] - half]
-    for low, high in _gaps(beside, wish.extent + 2.0 * clear - 1e-5):
-        centres += [high - clear - half, low + clear + half]
-    near = [centre for centre in centres if abs(centre - wish.along) <= reach]
-    return sorted(near, key=lambda centre: abs(centre - wish.along))
-
-
-def _gaps(standing: Sequence[Span], least: float) -> list[Span]:
-    """What is free before, between and after labels in a row, where it is wide enough."""
-    if not standing:
-        return []
-    inner = [(one[1], other[0]) for one, other in pairwise(standing) if other[0] - one[1] >= least]
-    return [(-math.inf, standing[0][0]), *inner, (standing[-1][1], math.inf)]
-
-
-def _is_free(span: Span, taken: Sequence[Span], clear: float) -> bool:
-    """Whether a span keeps clear of what stands: as that keeps clear of itself, its neighbours decide."""
-    after = bisect.bisect(taken, span)
-    return not any(_meets(span, other, clear) for other in taken[max(after - 1, 0) : after + 1])
-
-
-def _inside(span: Span, room: Span) -> bool:
-    return span[0] >= room[0] - 1e-6 and span[1] <= room[1] + 1e-6
-
-
-def _meets(span: Span, other: Span, clear: float) -> bool:
-    return span[0] < other[1] + clear - 1e-6 and other[0] < span[1] + clear - 1e-6

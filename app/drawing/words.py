@@ -48,7 +48,12 @@ def signed_text(value: float, quantity: Quantity, system: UnitSystemName) -> str
 
 
 def range_text(start: float, end: float, quantity: Quantity, system: UnitSystemName) -> str:
-    """ "520 → 320 kN/m", or one value where both are equal."""
+    """ "520 → 320 kN/m", or one value where both are equal; kept like those of sections."""
+    return _range_text(start, end, quantity, system, language())
+
+
+@lru_cache(maxsize=4096)
+def _range_text(start: float, end: float, quantity: Quantity, system: UnitSystemName, _language: str) -> str:
     if start == end:
         return value_text(start, quantity, system)
     return f"{format_value(start, quantity, system, strip=True)} → {value_text(end, quantity, system)}"

@@ -8,6 +8,7 @@ date is drawn with the same theme after `greyed`, so that nothing needs a second
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import lru_cache
 
 from PySide6.QtGui import QColor, QPalette
 
@@ -132,6 +133,7 @@ def greyed(theme: Theme) -> Theme:
     return replace(theme, **dict.fromkeys(names, grey), **dict.fromkeys(fills, thin))
 
 
+@lru_cache(256)  # everything that is painted asks for some of a few
 def colour(name: str) -> QColor:
-    """The colour for Qt."""
+    """The colour for Qt; it is shared, so nobody changes it."""
     return QColor(name)

@@ -8,23 +8,26 @@ the table is told of changes.
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QModelIndex, QObject, QPersistentModelIndex, QRect, QRectF, Qt, Signal
-from PySide6.QtGui import QBrush, QColor, QFontMetrics, QKeyEvent, QPainter, QPen
+from PySide6.QtGui import QBrush, QKeyEvent, QPainter, QPen
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QLineEdit,
+    QStyle,
     QStyledItemDelegate,
     QStyleOptionViewItem,
     QWidget,
 )
 
 from app.gui.tables.cell_editor import CellEditor
-from app.gui.tables.model import BAR_ROLE, ERROR_ROLE, HINT_ROLE, LIT_ROLE, STALE_ROLE, TableModel
-from app.gui.theme import Theme
+from app.gui.tables.model import Look, TableModel
+from app.gui.theme import Theme, colour
 from app.words import tr
 
 MARGIN = 6  # px left and right of a cell's text
 BAR_WIDTH = 50
 BAR_HEIGHT = 8
+LEFT = int(Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignLeft)
+RIGHT = int(Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignRight)
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 
 Index = QModelIndex | QPersistentModelIndex
@@ -44,62 +47,62 @@ class CellDelegate(QStyledItemDelegate):
     # Painting
 
     def paint(self, painter: QPainter, option: QStyleOptionViewItem, index: Index) -> None:
-        """Ground, bar, text, mark and the frame of the current cell."""
+        """Ground, bar, text, mark and the frame of the current cell.
+
+        The model is asked once for all of it: some dozens of cells are painted at every step of a pull.
+        """
+        model = index.model()
+        if not isinstance(model, TableModel):
+            super().paint(painter, option, index)
+            return
+        look, state = model.look(index), option.state
         painter.save()
-        cell = QStyleOptionViewItem(option)
-        self.initStyleOption(cell, index)
-        self._paint_ground(painter, cell, index)
-        area = QRect(cell.rect).adjusted(MARGIN, 0, -MARGIN, 0)
-        bar = index.data(BAR_ROLE)
-        if bar is not None:
-            self._paint_bar(painter, area, bar, stale=bool(index.data(STALE_ROLE)))
+        chosen = look.lit or bool(state & QStyle.StateFlag.State_Selected)
+        self._paint_ground(painter, option.rect, chosen=chosen)
+        area = option.rect.adjusted(MARGIN, 0, -MARGIN, 0)
+        if look.bar is not None:
+            self._paint_bar(painter, area, look.bar, stale=look.stale)
             area.setLeft(area.left() + BAR_WIDTH + 10)
-        self._paint_text(painter, cell, area, index)
-        if index.data(ERROR_ROLE):
-            self._paint_mark(painter, cell, area)
-        if bool(cell.state & cell.state.State_HasFocus):
-            painter.setPen(QPen(QColor(self.theme.select), 2))
-            painter.drawRect(QRect(cell.rect).adjusted(1, 1, -1, -1))
+        self._paint_text(painter, option, area, look)
+        if look.error:
+            self._paint_mark(painter, option, area)
+        if bool(state & QStyle.StateFlag.State_HasFocus):
+            painter.setPen(QPen(colour(self.theme.select), 2))
+            painter.drawRect(option.rect.adjusted(1, 1, -1, -1))
         painter.restore()
 
-    def _paint_ground(self, painter: QPainter, cell: QStyleOptionViewItem, index: Index) -> None:
-        chosen = bool(cell.state & cell.state.State_Selected) or bool(index.data(LIT_ROLE))
-        painter.fillRect(cell.rect, QColor(self.theme.select_fill if chosen else self.theme.card))
-        painter.setPen(QColor(self.theme.edge))
-        painter.drawLine(cell.rect.bottomLeft(), cell.rect.bottomRight())
+    def _paint_ground(self, painter: QPainter, rect: QRect, *, chosen: bool) -> None:
+        painter.fillRect(rect, colour(self.theme.select_fill if chosen else self.theme.card))
+        painter.setPen(colour(self.theme.edge))
+        painter.drawLine(rect.bottomLeft(), rect.bottomRight())
 
-    def _paint_text(self, painter: QPainter, cell: QStyleOptionViewItem, area: QRect, index: Index) -> None:
-        quiet = (
-            index.data(HINT_ROLE) or index.data(STALE_ROLE) or not index.flags() & Qt.ItemFlag.ItemIsEditable
-        )
-        wrong = bool(index.data(ERROR_ROLE))
-        painter.setPen(QColor(self.theme.over if wrong else self.theme.quiet if quiet else self.theme.ink))
+    def _paint_text(self, painter: QPainter, cell: QStyleOptionViewItem, area: QRect, look: Look) -> None:
+        wrong, quiet = bool(look.error), look.hint or look.stale or not look.for_typing
+        painter.setPen(colour(self.theme.over if wrong else self.theme.quiet if quiet else self.theme.ink))
         painter.setFont(cell.font)
         if wrong:
             area = area.adjusted(0, 0, -14, 0)
-        text = QFontMetrics(cell.font).elidedText(cell.text, Qt.TextElideMode.ElideRight, area.width())
-        total = index.data(HINT_ROLE) and index.column() > 0
-        side = Qt.AlignmentFlag.AlignRight if total else Qt.AlignmentFlag.AlignLeft
-        painter.drawText(area, int(Qt.AlignmentFlag.AlignVCenter | side), text)
+        text = cell.fontMetrics.elidedText(look.text, Qt.TextElideMode.ElideRight, area.width())
+        painter.drawText(area, RIGHT if look.sum else LEFT, text)
 
     def _paint_mark(self, painter: QPainter, cell: QStyleOptionViewItem, area: QRect) -> None:
         """A boxed "!" at the right and a dashed underline."""
-        painter.setPen(QPen(QColor(self.theme.over), 2, Qt.PenStyle.DotLine))
+        painter.setPen(QPen(colour(self.theme.over), 2, Qt.PenStyle.DotLine))
         painter.drawLine(area.left(), area.bottom() - 3, area.right() - 14, area.bottom() - 3)
         box = QRect(area.right() - 11, area.center().y() - 7, 14, 14)
-        painter.fillRect(box, QColor(self.theme.over))
-        painter.setPen(QColor(self.theme.card))
+        painter.fillRect(box, colour(self.theme.over))
+        painter.setPen(colour(self.theme.card))
         painter.setFont(cell.font)
         painter.drawText(box, int(Qt.AlignmentFlag.AlignCenter), "!")
 
     def _paint_bar(self, painter: QPainter, area: QRect, bar: tuple[float, float], *, stale: bool) -> None:
         utilisation, sign = bar
         top = area.center().y() - BAR_HEIGHT / 2
-        painter.fillRect(QRectF(area.left(), top, BAR_WIDTH, BAR_HEIGHT), QColor(self.theme.body_fill))
+        painter.fillRect(QRectF(area.left(), top, BAR_WIDTH, BAR_HEIGHT), colour(self.theme.body_fill))
         filled = QRectF(area.left(), top, BAR_WIDTH * min(max(utilisation, 0.0), 1.0), BAR_HEIGHT)
         over = utilisation > 1
         name = "quiet" if stale else "over" if over else "tension" if sign > 0 else "compression"
-        shade = QColor(getattr(self.theme, name))
+        shade = colour(getattr(self.theme, name))
         painter.fillRect(filled, QBrush(shade, Qt.BrushStyle.BDiagPattern) if over else shade)
         if over:
             painter.setPen(QPen(shade, 1.5))

@@ -9,6 +9,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from typing import Any, ClassVar
 
+from msgspec import Struct
 from PySide6.QtCore import QObject, Qt
 
 from app.gui.document import Document, Draft, Preview
@@ -20,12 +21,23 @@ from app.gui.tables.thousands import typed_note
 from app.units import symbol
 from app.words import tr
 
+CHOSEN = Qt.ItemFlag.ItemIsEnabled | Qt.ItemFlag.ItemIsSelectable
+TYPED = CHOSEN | Qt.ItemFlag.ItemIsEditable
 ERROR_ROLE = int(Qt.ItemDataRole.UserRole) + 1  # the reason why the cell's text is not taken in, or ""
-BAR_ROLE = ERROR_ROLE + 1  # (utilisation, sign of the stress) or None
-HINT_ROLE = ERROR_ROLE + 2  # whether the text is a hint, not a value
-LIT_ROLE = ERROR_ROLE + 3  # whether the row is selected elsewhere
 LONGEST_CASE = 14  # letters of a load case's name in a heading; its tip has all
-STALE_ROLE = ERROR_ROLE + 4  # whether the figure is of an earlier edit
+
+
+class Look(Struct, frozen=True):
+    """All that is painted of a cell."""
+
+    text: str
+    for_typing: bool
+    error: str  # why its text is not taken in, or empty
+    bar: tuple[float, float] | None  # utilisation, sign of the stress
+    hint: bool  # the text is a hint, not a value
+    sum: bool  # the text is a sum over the rows
+    lit: bool  # the row is selected elsewhere
+    stale: bool  # the figure is of an earlier edit
 
 
 class TableModel(RowsModel):
@@ -68,7 +80,7 @@ class TableModel(RowsModel):
             rows = [row for row in touched if 0 <= row < self.rowCount()]
             if rows:
                 last = len(self._columns) - 1
-                self.dataChanged.emit(self.index(min(rows), 0), self.index(max(rows), last), [LIT_ROLE])
+                self.dataChanged.emit(self.index(min(rows), 0), self.index(max(rows), last))
 
     def show_swept(self, rows: frozenset[int], column: int, text: str | None) -> None:
         """Show a text in the cells of these rows while their number runs; None for their own again."""
@@ -85,8 +97,15 @@ class TableModel(RowsModel):
         """Every cell can be chosen, those with an entry can be edited."""
         if not index.isValid():
             return Qt.ItemFlag.NoItemFlags
-        chosen = Qt.ItemFlag.ItemIsEnabled | Qt.ItemFlag.ItemIsSelectable
-        return chosen | Qt.ItemFlag.ItemIsEditable if self.entry(index) is not None else chosen
+        return TYPED if self._is_for_typing(index) else CHOSEN
+
+    def _is_for_typing(self, index: Index) -> bool:
+        """Whether a cell has an entry; kept, as Qt asks for it several times while it paints a cell."""
+        cells = self._for_typing.setdefault(index.row(), {})
+        found = cells.get(index.column())
+        if found is None:
+            found = cells[index.column()] = self.entry(index) is not None
+        return found
 
     def entry(self, index: Index) -> str | None:
         """What an editor starts from; None where the cell is not for typing."""
@@ -104,6 +123,20 @@ class TableModel(RowsModel):
             return None
         answer = self._ANSWERS.get(role)
         return None if answer is None else answer(self, index)
+
+    def look(self, index: Index) -> Look:
+        """What is painted of a cell."""
+        hint = self._is_hint(index)
+        return Look(
+            text=self._display(index),
+            for_typing=self._is_for_typing(index),
+            error=self._error(index),
+            bar=self._bar(index),
+            hint=hint,
+            sum=hint and index.column() > 0,
+            lit=self._is_lit(index),
+            stale=self._stale(index),
+        )
 
     def _display(self, index: Index) -> str:
         if self._swept is not None and self._is_swept(index):
@@ -176,10 +209,6 @@ class TableModel(RowsModel):
         Qt.ItemDataRole.ToolTipRole: _tip,
         Qt.ItemDataRole.AccessibleTextRole: _spoken,
         ERROR_ROLE: _error,
-        BAR_ROLE: _bar,
-        HINT_ROLE: _is_hint,
-        LIT_ROLE: _is_lit,
-        STALE_ROLE: _stale,
     }
 
     def headerData(

@@ -47,6 +47,7 @@ class RowsModel(QAbstractTableModel):
         self._shown = document.project
         self._rows = table.rows(document.project, sight)
         self._columns = table.columns(document.project, sight)
+        self._for_typing: dict[int, dict[int, bool]] = {}  # by row and column, of the cells asked for so far
         document.changed.connect(self.on_document_changed)
         document.preview_changed.connect(self.on_preview_changed)
 
@@ -71,6 +72,8 @@ class RowsModel(QAbstractTableModel):
         old = self._rows
         self._sync_rows(new)
         differing = [row for row, (a, b) in enumerate(zip(old, new, strict=False)) if a != b]
+        for row in differing:
+            self._for_typing.pop(row, None)
         if differing or len(old) != len(new):
             last, columns = self.rowCount() - 1, len(self._columns) - 1
             first, end = (differing[0], differing[-1]) if len(old) == len(new) else (0, last)
@@ -87,6 +90,7 @@ class RowsModel(QAbstractTableModel):
         self._shown = project
         self._sync_columns(self.table.columns(project, self._sight))
         self._sync_rows(self.table.rows(project, self._sight))
+        self._for_typing.clear()
         # Drafts and units can change any cell, so all are announced; an open editor keeps its text by itself.
         if self.rowCount():
             self.dataChanged.emit(self.index(0, 0), self.index(self.rowCount() - 1, len(self._columns) - 1))
@@ -117,6 +121,8 @@ class RowsModel(QAbstractTableModel):
             self._rows = old[:at] + old[at - grown :]
             self.endRemoveRows()
         self._rows = new
+        if grown:
+            self._for_typing.clear()
 
     # What stands where
 
