@@ -94,4 +94,5 @@ def _met(boxes: Sequence[Box], taken: FloatArray) -> IntArray:
     """How many of the taken boxes each of the others (k,) meets."""
     left, top, right, bottom = np.array([astuple(box) for box in boxes]).T[:, :, np.newaxis]
     apart = (taken[:, 0] >= right) | (taken[:, 2] <= left) | (taken[:, 1] >= bottom) | (taken[:, 3] <= top)
-    return len(taken) - np.count_nonzero(apart, axis=1)
+    met: IntArray = np.count_nonzero(~apart, axis=1)
+    return met

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QEvent, QSize, Qt
 from PySide6.QtGui import QAccessible, QAccessibleEvent, QPainter, QPaintEvent, QResizeEvent
-from PySide6.QtWidgets import QHBoxLayout, QLabel, QSizePolicy, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QSizePolicy, QStyle, QStyleOption, QWidget
 
 from app.words import tr
 
 LEAST_WIDTH = 40
+ROOM_STEP = 32  # px
 FILE_SHARE = 0.25  # of the line, at most, is kept for the file's name
 NEWS_SHARE = 0.7  # of the line, at most
 
@@ -19,7 +20,7 @@ class StatusLine(QWidget):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self.setObjectName("status_line")
-        self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
+        self.setAttribute(Qt.WidgetAttribute.WA_OpaquePaintEvent)  # what lies under it is not painted with it
         self.setMinimumWidth(1)  # however long the news, the window can be made smaller
         self.solver = self._label(tr("Solver"))
         self.news = self._label(tr("News"))
@@ -61,6 +62,12 @@ class StatusLine(QWidget):
         label.setMinimumWidth(max(LEAST_WIDTH, min(needed, most)))
         return label.minimumWidth()
 
+    def paintEvent(self, _event: QPaintEvent) -> None:
+        """The ground, as the style sheet has it."""
+        option = QStyleOption()
+        option.initFrom(self)
+        self.style().drawPrimitive(QStyle.PrimitiveElement.PE_Widget, option, QPainter(self), self)
+
     def resizeEvent(self, event: QResizeEvent) -> None:
         """The news' room follows the width."""
         super().resizeEvent(event)
@@ -73,16 +80,45 @@ class ElidedLabel(QLabel):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._whole = ""
+        self._room = 0
         self.setTextFormat(Qt.TextFormat.PlainText)
         self.setSizePolicy(QSizePolicy.Policy.Preferred, QSizePolicy.Policy.Fixed)
         self.setMinimumWidth(LEAST_WIDTH)
 
     def setText(self, text: str) -> None:
         """Show a text."""
-        self._whole = text
-        self.setToolTip(text)
-        self.setAccessibleName(text)
-        super().setText(text)
+        if text != self._whole:
+            self._whole = text
+            self.setToolTip(text)
+            self.setAccessibleName(text)
+            self._ask_for_room()
+            self.update()
+
+    def text(self) -> str:
+        """The whole text."""
+        return self._whole
+
+    def _ask_for_room(self) -> None:
+        """What the text needs, in steps, so that a figure that changes does not lay the window out anew."""
+        needed = self.fontMetrics().horizontalAdvance(self._whole) + 2
+        room = ROOM_STEP * -(-needed // ROOM_STEP)
+        if room != self._room:
+            self._room = room
+            self.updateGeometry()
+
+    def sizeHint(self) -> QSize:
+        """Room for the text in a line."""
+        return QSize(self._room, self.fontMetrics().height())
+
+    def minimumSizeHint(self) -> QSize:
+        """Any width, since the text can be shortened."""
+        return QSize(0, self.fontMetrics().height())
+
+    def changeEvent(self, event: QEvent) -> None:
+        """Follow the font."""
+        super().changeEvent(event)
+        if event.type() == QEvent.Type.FontChange:
+            self._ask_for_room()
 
     def paintEvent(self, _event: QPaintEvent) -> None:
         """The text, with an ellipsis where it does not fit."""

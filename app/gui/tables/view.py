@@ -7,7 +7,7 @@ can be empty, Escape restores.
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QItemSelection, QItemSelectionModel, QModelIndex, QSize, Qt, Signal
-from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
+from PySide6.QtGui import QKeyEvent, QPainter, QPaintEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import (
     QAbstractButton,
     QAbstractItemDelegate,
@@ -26,7 +26,7 @@ from app.gui.tables.many_cells import ManyCells
 from app.gui.tables.model import TableModel
 from app.gui.tables.shown_columns import ShownColumns
 from app.gui.tables.widths import Widths
-from app.gui.theme import Theme
+from app.gui.theme import Theme, colour
 from app.words import tr
 
 ROW_HEIGHT = 26
@@ -69,6 +69,7 @@ class TableView(QTableView):
         self.on_shape_changed()
 
     def _dress(self) -> None:
+        self.viewport().setAttribute(Qt.WidgetAttribute.WA_OpaquePaintEvent)
         self.setShowGrid(False)
         self.setFrameShape(QTableView.Shape.NoFrame)
         self.setCornerButtonEnabled(False)
@@ -104,6 +105,13 @@ class TableView(QTableView):
         if event.type() == QEvent.Type.FontChange and hasattr(self, "widths"):
             self._fit_rows()
             self.widths.share()
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        """The cells on their ground, so that nothing that lies under the table is painted with them."""
+        painter = QPainter(self.viewport())
+        painter.fillRect(event.rect(), colour(self._cells.theme.card))
+        painter.end()
+        super().paintEvent(event)
 
     def set_theme(self, theme: Theme) -> None:
         """Take over the colours."""
