@@ -16,7 +16,7 @@ from solver.arrays import BoolArray, FloatArray, IntArray
 MOST: Final = 4  # points of a column of pixels that are drawn as they are
 STRAIGHT: Final = 0.03  # pixels across the axis that a point left out may lie off the line, in each pass
 PASSES: Final = 6
-FEW: Final = 40  # points that are painted as fast as they are thinned
+FEW: Final = 700  # points that are painted as fast as they are thinned
 
 
 @dataclass(frozen=True, slots=True)

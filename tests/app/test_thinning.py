@@ -5,7 +5,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from app.thinning import MOST, Chain, chain_of, thinned
+from app.thinning import FEW, MOST, Chain, chain_of, thinned
 
 
 def all_joined(count):
@@ -24,19 +24,26 @@ def test_a_chain_breaks_where_an_interval_is_not_chosen():
 
 
 def test_a_straight_line_keeps_its_ends():
-    along = np.linspace(0.0, 600.0, 61)
-    chain = thinned(all_joined(61), along, 3.0 * along)
-    assert len(chain.index) <= 3
-    assert {0, 60} <= set(chain.index.tolist())
+    count = 10 * FEW
+    along = np.linspace(0.0, 5.0 * count, count)
+    chain = thinned(all_joined(count), along, 3.0 * along)
+    assert len(chain.index) <= count / 50
+    assert {0, count - 1} <= set(chain.index.tolist())
 
 
 def test_a_spike_on_a_vertical_line_stays():
-    along = np.concatenate([np.arange(60.0), [60.0, 60.0, 60.0, 61.0]])
-    across = np.zeros(64)
-    across[61] = 50.0
-    chain = thinned(all_joined(64), along, across)
-    assert 61 in chain.index.tolist()
-    assert len(chain.index) < 10
+    at = FEW
+    along = np.concatenate([np.arange(at + 0.0), [at, at, at, at + 1.0]])
+    across = np.zeros(at + 4)
+    across[at + 1] = 50.0
+    chain = thinned(all_joined(at + 4), along, across)
+    assert at + 1 in chain.index.tolist()
+    assert len(chain.index) < at / 10
+
+
+def test_few_points_are_left_as_they_are():
+    along = np.arange(0.0, FEW)
+    assert len(thinned(all_joined(FEW), along, along).index) == FEW
 
 
 def test_a_break_stays_where_columns_are_not_crowded():
@@ -66,9 +73,9 @@ def test_no_column_of_pixels_loses_its_lowest_or_highest_value(seed, count):
 
 @given(st.floats(0.5, 9.0), st.floats(0.0, 6.0))
 def test_a_smooth_curve_is_off_by_less_than_a_pixel_shows(waves, phase):
-    along = np.linspace(0.0, 650.0, 600)
+    along = np.linspace(0.0, 650.0, 2 * FEW)
     across = 60.0 * np.sin(waves * along / 100.0 + phase)
-    chain = thinned(all_joined(600), along, across)
+    chain = thinned(all_joined(2 * FEW), along, across)
     assert np.abs(height_at(chain, along, across, along) - across).max() < 0.2
 
 

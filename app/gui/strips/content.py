@@ -283,6 +283,8 @@ def with_crossings(columns: FloatArray, row: int, level: float) -> FloatArray:
     values = columns[row] - level
     with np.errstate(invalid="ignore"):
         at = np.flatnonzero((values[:-1] * values[1:] < 0) & (np.diff(columns[0]) > 0))
+    if not len(at):
+        return columns
     share = values[at] / (values[at] - values[at + 1])
     between = columns[:, at] + share * (columns[:, at + 1] - columns[:, at])
     between[row] = level
