@@ -7,8 +7,18 @@ the table is told of changes.
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, QModelIndex, QObject, QPersistentModelIndex, QRect, QRectF, Qt, Signal
-from PySide6.QtGui import QBrush, QKeyEvent, QPainter, QPen
+from PySide6.QtCore import (
+    QEvent,
+    QModelIndex,
+    QObject,
+    QPersistentModelIndex,
+    QPointF,
+    QRect,
+    QRectF,
+    Qt,
+    Signal,
+)
+from PySide6.QtGui import QBrush, QFont, QKeyEvent, QPainter, QPen, QStaticText, QTransform
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
     QLineEdit,
@@ -26,8 +36,9 @@ from app.words import tr
 MARGIN = 6  # px left and right of a cell's text
 BAR_WIDTH = 50
 BAR_HEIGHT = 8
-LEFT = int(Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignLeft)
-RIGHT = int(Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignRight)
+SELECTED = QStyle.StateFlag.State_Selected.value  # as numbers: flags of enums are slow to combine
+FOCUSED = QStyle.StateFlag.State_HasFocus.value
+MOST_LINES = 8192  # texts that are kept laid out
 ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 
 Index = QModelIndex | QPersistentModelIndex
@@ -43,6 +54,8 @@ class CellDelegate(QStyledItemDelegate):
     def __init__(self, theme: Theme, parent: QObject | None = None) -> None:
         super().__init__(parent)
         self.theme = theme
+        self._font: QFont | None = None  # of the lines that are kept
+        self._lines: dict[tuple[str, int], QStaticText] = {}
 
     # Painting
 
@@ -55,9 +68,9 @@ class CellDelegate(QStyledItemDelegate):
         if not isinstance(model, TableModel):
             super().paint(painter, option, index)
             return
-        look, state = model.look(index), option.state
+        look, state = model.look(index), option.state.value
         painter.save()
-        chosen = look.lit or bool(state & QStyle.StateFlag.State_Selected)
+        chosen = look.lit or bool(state & SELECTED)
         self._paint_ground(painter, option.rect, chosen=chosen)
         area = option.rect.adjusted(MARGIN, 0, -MARGIN, 0)
         if look.bar is not None:
@@ -66,7 +79,7 @@ class CellDelegate(QStyledItemDelegate):
         self._paint_text(painter, option, area, look)
         if look.error:
             self._paint_mark(painter, option, area)
-        if bool(state & QStyle.StateFlag.State_HasFocus):
+        if state & FOCUSED:
             painter.setPen(QPen(colour(self.theme.select), 2))
             painter.drawRect(option.rect.adjusted(1, 1, -1, -1))
         painter.restore()
@@ -82,8 +95,22 @@ class CellDelegate(QStyledItemDelegate):
         painter.setFont(cell.font)
         if wrong:
             area = area.adjusted(0, 0, -14, 0)
-        text = cell.fontMetrics.elidedText(look.text, Qt.TextElideMode.ElideRight, area.width())
-        painter.drawText(area, RIGHT if look.sum else LEFT, text)
+        line = self._laid_out(look.text, area.width(), cell)
+        left = area.right() - line.size().width() if look.sum else area.left()
+        painter.drawStaticText(QPointF(left, area.center().y() + 1 - 0.5 * line.size().height()), line)
+
+    def _laid_out(self, text: str, width: int, cell: QStyleOptionViewItem) -> QStaticText:
+        """A text cut to a width, kept: laying it out is what takes time, and most stay as they are."""
+        if cell.font != self._font or len(self._lines) > MOST_LINES:
+            self._font = QFont(cell.font)
+            self._lines.clear()
+        line = self._lines.get((text, width))
+        if line is None:
+            line = QStaticText(cell.fontMetrics.elidedText(text, Qt.TextElideMode.ElideRight, width))
+            line.setTextFormat(Qt.TextFormat.PlainText)
+            line.prepare(QTransform(), cell.font)
+            self._lines[text, width] = line
+        return line
 
     def _paint_mark(self, painter: QPainter, cell: QStyleOptionViewItem, area: QRect) -> None:
         """A boxed "!" at the right and a dashed underline."""
