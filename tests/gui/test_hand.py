@@ -2,11 +2,10 @@
 
 from __future__ import annotations
 
-import numpy as np
 import pytest
 from msgspec.structs import replace
 from PySide6.QtCore import QEvent, QPoint, QPointF, Qt
-from PySide6.QtGui import QFocusEvent, QImage, QMouseEvent, QWheelEvent
+from PySide6.QtGui import QFocusEvent, QMouseEvent, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 
@@ -662,25 +661,3 @@ class TestReadoutAfterwards:
             if bubble.boundingRect().contains(QPointF(*h.centre))
         ]
         assert not covered
-
-
-HARDLY = 8  # of 255: the rounding of shades where Qt puts a part of a picture into it
-
-
-def shades(widget):
-    """The colours of all pixels, as numbers that can be subtracted."""
-    image = widget.grab().toImage().convertToFormat(QImage.Format.Format_RGB32)
-    return np.frombuffer(image.constBits(), np.uint8).astype(int)
-
-
-@pytest.mark.parametrize(("kind", "where"), [("joint", "end"), ("edge", "both")])
-def test_each_step_of_a_pull_is_painted_as_if_all_were_painted_anew(qtbot, window, either, kind, where):
-    window.view.set_selection(Selection(segments=frozenset((1,)), joints=frozenset((2,))))
-    either.grab(kind, 2, where)
-    for pixels in (30.0, 9.0, -14.0):
-        either.move(pixels)
-        solved(qtbot, window)
-        step = shades(window.sheet)
-        window.sheet.drawing.update()
-        assert np.abs(step - shades(window.sheet)).max() <= HARDLY
-    either.let_go()

@@ -20,7 +20,6 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from app.drawing.difference import bounds_of, differing_box
 from app.drawing.frame import Detail, Frame
 from app.drawing.handles import Handle, handles_of
 from app.drawing.layout import sketched
@@ -34,8 +33,6 @@ from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place
 from app.gui.theme import Theme, colour
 from app.gui.view import Selection
-
-AROUND = 10.0  # px that widths of lines, and what lights a part, reach around it
 
 
 class MemberDrawing(QGraphicsObject):
@@ -51,7 +48,6 @@ class MemberDrawing(QGraphicsObject):
         self._place: Place | None = None
         self._detail = Detail()
         self._sketch: Sketch | None = None  # None: to be made when next asked for
-        self._last: Picture | None = None  # that was laid out last
         self._handles: list[Handle] | None = None  # likewise
         self._held: Sketch | None = None  # whose rows and proportions are kept while something is pulled
         self._selection = Selection()
@@ -60,7 +56,6 @@ class MemberDrawing(QGraphicsObject):
         self._lit: Part | None = None
         self._thing: Part | None = None
         self.setZValue(10.0)
-        self.setFlag(self.GraphicsItemFlag.ItemUsesExtendedStyleOption)  # says what is to be painted
         self.setAcceptHoverEvents(True)
         self.setAcceptedMouseButtons(Qt.MouseButton.LeftButton)
         self.setCacheMode(self.CacheMode.DeviceCoordinateCache)  # the cursor moves over it
@@ -76,7 +71,6 @@ class MemberDrawing(QGraphicsObject):
         """The member as it is laid out; None while there is nothing to draw."""
         if self._sketch is None and self._member is not None and self._place is not None:
             self._sketch = sketched(self._member, self.frame, self._held)
-            self._renew(self._sketch.picture)
         return self._sketch
 
     @property
@@ -102,17 +96,7 @@ class MemberDrawing(QGraphicsObject):
 
     def _forget(self) -> None:
         self._sketch = self._handles = None
-        if self._held is None:
-            self.update()
-
-    def _renew(self, picture: Picture) -> None:
-        """Paint anew where a laid out picture differs from the last one: a pull leaves most as it was."""
-        last, self._last = self._last, picture
-        differing = None if last is None else differing_box(last, picture)
-        if last is None:
-            self.update()
-        elif differing is not None:
-            self.update(_rect(differing).adjusted(-AROUND, -AROUND, AROUND, AROUND))
+        self.update()
 
     @property
     def frame(self) -> Frame:
@@ -222,21 +206,18 @@ class MemberDrawing(QGraphicsObject):
         if part is not None and moved.manhattanLength() < QApplication.startDragDistance():
             self.clicked.emit(part, event.modifiers())
 
-    def paint(self, painter: QPainter, option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
-        """Strokes, circles, texts, as far as they reach into what is to be painted."""
+    def paint(self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None) -> None:
+        """Strokes, circles, texts."""
         if self._place is None:
             return
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         self._clip(painter, self._place)
-        room = _box(option.exposedRect.adjusted(-AROUND, -AROUND, AROUND, AROUND))
         for stroke in self.picture.strokes:
-            if room.meets(bounds_of(stroke)):
-                self._paint_stroke(painter, stroke)
+            self._paint_stroke(painter, stroke)
         painter.setClipping(False)
         for circle in self.picture.circles:
-            if room.meets(bounds_of(circle)):
-                self._paint_circle(painter, circle)
-        self._paint_texts(painter, self._place.fonts, room)
+            self._paint_circle(painter, circle)
+        self._paint_texts(painter, self._place.fonts)
         if self._thing is None:
             paint_selected_joints(painter, self.picture, self._selection.joints, self._theme)
         else:
@@ -279,11 +260,9 @@ class MemberDrawing(QGraphicsObject):
         painter.setBrush(QBrush(colour(self._theme.card)))
         painter.drawEllipse(QPointF(*circle.centre), circle.radius, circle.radius)
 
-    def _paint_texts(self, painter: QPainter, fonts: Fonts, room: Box) -> None:
+    def _paint_texts(self, painter: QPainter, fonts: Fonts) -> None:
         worn: tuple[str, str] | None = None
         for text in self.picture.texts:
-            if not room.meets(text.box):
-                continue
             if worn != (text.face, text.ink):
                 worn = (text.face, text.ink)
                 painter.setFont(fonts.font(text.face))
@@ -293,10 +272,6 @@ class MemberDrawing(QGraphicsObject):
 
 def _rect(box: Box) -> QRectF:
     return QRectF(box.left, box.top, box.right - box.left, box.bottom - box.top)
-
-
-def _box(rect: QRectF) -> Box:
-    return Box(rect.left(), rect.top(), rect.right(), rect.bottom())
 
 
 @lru_cache(256)  # a drawing has hundreds of strokes and a few pens
