@@ -134,6 +134,11 @@ class Ruler:
         """This very ruler for a member that has another length for now: every position keeps its pixel."""
         return replace(self, length=length)
 
+    def reaching(self, joints: Sequence[float]) -> Ruler:
+        """From where this window begins to the end of a changed member, however long that has become."""
+        fitting = Ruler.fitting(joints, self.begin, self.end, true=self.true)
+        return replace(fitting, first=min(fitting.sheet(self.position(self.first)), 0.5 * fitting.last))
+
     def truly(self, *, true: bool) -> Ruler:
         """The same window with all segments to one scale, or with least widths."""
         return self if true == self.true else self._anew(self.joints, self.begin, self.end, true=true)

@@ -29,7 +29,7 @@ def joint_grip(project: Project, joint: int, ruler: Ruler, *, total_stays: bool 
         quantity="length",
         system=project.display.unit_system,
         value=segment.length,
-        at=_length_at(project, joint, ruler),
+        at=length_at(project, joint, ruler),
         put=put,
         tell=lambda value: _told(project, joint, value, whole if kept else None),
         above=0.0,
@@ -37,7 +37,7 @@ def joint_grip(project: Project, joint: int, ruler: Ruler, *, total_stays: bool 
     )
 
 
-def _length_at(project: Project, joint: int, ruler: Ruler) -> Callable[[float], float]:
+def length_at(project: Project, joint: int, ruler: Ruler) -> Callable[[float], float]:
     """The length with which the joint is so many pixels further along +x."""
     start = sum(segment.length for segment in project.segments[: joint - 1])
     end = start + project.segments[joint - 1].length

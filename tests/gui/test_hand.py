@@ -137,6 +137,26 @@ class TestJoint:
         assert window.sheet.ruler.whole_shown
         assert window.sheet.ruler.last == pytest.approx(sum(lengths(window)))
 
+    def test_the_end_stays_on_the_sheet_however_far_it_is_pulled(self, window, either):
+        last = len(lengths(window))
+        before = lengths(window)[-1]
+        either.grab("joint", last, "end")
+        grown = before
+        for _ in range(12):
+            either.move(40, CTRL)
+            low, high = window.sheet.places.axes.along_of(window.sheet.places.drawing)
+            end = window.sheet.ruler.pixel(sum(lengths(window, preview=True)))
+            assert low <= end <= high
+            assert lengths(window, preview=True)[-1] > grown
+            grown = lengths(window, preview=True)[-1]
+        assert handle_of(window, "joint", last, "end")
+        either.move(-40, CTRL)
+        assert before < lengths(window, preview=True)[-1] < grown
+        QTest.keyClick(window.sheet, Qt.Key.Key_Escape)
+        assert lengths(window)[-1] == before
+        assert window.sheet.ruler.whole_shown
+        assert window.sheet.ruler.last == pytest.approx(sum(lengths(window)))
+
     def test_shift_in_mid_pull_changes_the_way_and_both_look_different(self, window, pointer):
         pointer.grab("joint", 2, "end")
         pointer.pull(30)

@@ -14,6 +14,7 @@ from PySide6.QtCore import QObject, QPointF, QRectF, Signal
 from app.drawing.handles import Handle
 from app.gui.document import Document, Preview
 from app.gui.hand.pull import Pull, taken
+from app.gui.hand.reach import follow_end
 from app.gui.sheet_view import SheetView
 from app.gui.view import View
 from app.hand.grip import Refusal
@@ -92,6 +93,15 @@ class Grasp(QObject):
         if project is not None:
             self._document.set_preview(self._preview_of(project))
             self.paper.show_member(project)
+
+    def follow_end(self) -> bool:
+        """Keep the end of the member on the sheet; whether the pull begins anew, by another ruler."""
+        if self.pull is None or not self.pull.is_of_end:
+            return False
+        moved = follow_end(self.paper, self.pull.sketch.member)
+        if moved:
+            self.pull.go_on(self.paper.ruler)
+        return moved
 
     def _preview_of(self, project: Project) -> Preview | None:
         """None where it is what is committed."""

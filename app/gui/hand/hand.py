@@ -129,6 +129,8 @@ class Hand(QObject):
         pixels = pull.handle.pull(_xy(self._start), _xy(self._point))
         if pull.go(pull.grips[total].pulled(pixels, free=bool(modifiers & CTRL)), total_stays=total):
             self._grasp.preview()
+            if self._grasp.follow_end():
+                self._start = self._point
         self._grasp.light()
         self._near.shape(pull.handle, total_stays=total)
         self._grasp.point = self._point

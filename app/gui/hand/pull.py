@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from app.drawing.handles import Handle
+from app.drawing.ruler import Ruler
 from app.drawing.sketch import Sketch
 from app.hand.grip import Grip, Outcome, Refusal
+from app.hand.lengths import length_at
 from app.hand.taking import take
 from app.shown import Shown
 from app.words import tr
@@ -39,6 +41,18 @@ class Pull:
     def changed(self) -> bool:
         """Whether the number is another one than at the start."""
         return self.outcome.value != self.grip.value
+
+    @property
+    def is_of_end(self) -> bool:
+        """Whether the end of the member is pulled."""
+        return self.handle.kind == "joint" and not self.has_two_ways
+
+    def go_on(self, ruler: Ruler) -> None:
+        """Let the end of the member be pulled from where it is now, by another ruler."""
+        if self.outcome.project is not None:
+            at = length_at(self.outcome.project, self.handle.index, ruler)
+            grip = replace(self.grip, at=at)
+            self.grips = grip, grip
 
     def go(self, value: float, *, total_stays: bool) -> bool:
         """Take another value or way; False where nothing differs."""

@@ -74,3 +74,12 @@ def test_another_length_keeps_a_close_window_but_not_beyond_the_end():
     close = ruler.zoomed(5.0, 0.0)
     assert (close.of((0.0, 12.0)).first, close.of((0.0, 12.0)).last) == (close.first, close.last)
     assert close.of((0.0, 1.0)).whole_shown
+
+
+@pytest.mark.parametrize("end", [800.0, -800.0])
+def test_a_ruler_reaches_to_the_end_of_a_member_that_has_grown(end):
+    near = Ruler.fitting((0.0, 1.0, 2.0), 0.0, end).showing(0.5, 2.0, air=0.0)
+    far = near.reaching((0.0, 1.0, 5.0))
+    assert far.pixel(5.0) == pytest.approx(end)
+    assert far.pixel(0.5) == pytest.approx(0.0)
+    assert Ruler.fitting((0.0, 1.0), 0.0, end).reaching((0.0, 3.0)).whole_shown
