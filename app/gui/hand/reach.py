@@ -13,7 +13,7 @@ EDGE = 6.0  # px from the edge of the sheet
 
 
 def follow_end(paper: SheetScene, before: Member) -> bool:
-    """Show all up to the end where it has left the sheet; whether it had. The outlines are those of before."""
+    """Show all up to an end that has left the sheet; whether it had. The ghost is that of `before`."""
     low, high = paper.places.axes.along_of(paper.places.drawing)
     if low + EDGE <= paper.ruler.pixel(paper.positions[-1]) <= high - EDGE:
         return False
