@@ -7,6 +7,7 @@ rounding, and no stress has a sign.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import TypeAlias
 
@@ -16,16 +17,18 @@ from msgspec import UnsetType
 from solver.arrays import BoolArray, FloatArray, frozen
 from solver.checks import NO_STRESS
 from solver.extremes import SAME, Extremes
-from solver.model import Project
+from solver.model import BondedPart, Project, Segment
 from solver.results import Allowables, State
 
 Range: TypeAlias = tuple[FloatArray, FloatArray]  # largest and smallest by segment, (m, n) each
 
 
-def allowables(project: Project, states: tuple[State, ...]) -> Allowables:
-    """The allowable stresses of every segment in every state."""
+def allowables(
+    project: Project, states: tuple[State, ...], parts: Sequence[Segment | BondedPart]
+) -> Allowables:
+    """The allowable stresses of parts (p,) in every state, (m, p) each."""
     by_name = {material.name: material for material in project.materials}
-    materials = [by_name[segment.material] for segment in project.segments]
+    materials = [by_name[part.material] for part in parts]
     factor = np.array([[state.allowable_factor] for state in states])
     tension = np.array([_or_nan(material.allowable_tension) for material in materials])
     compression = np.array([_or_nan(material.allowable_compression) for material in materials])
@@ -36,9 +39,16 @@ def _or_nan(value: float | UnsetType) -> float:
     return np.nan if isinstance(value, UnsetType) else value
 
 
-def no_stress(stress: Range, force: Range, force_bound: FloatArray) -> FloatArray:
-    """The stress (m,) up to which a state's stress counts as zero; infinite where all of it is rounding."""
+def no_stress(
+    stress: Range, force: Range, force_bound: FloatArray, constrained: BoolArray | None
+) -> FloatArray:
+    """The stress (m,) up to which a state's stress counts as zero; infinite where all of it is rounding.
+
+    Where bonded parts constrain each other (m,), there is stress without any axial force.
+    """
     rounding = np.all(_size(force) <= force_bound, axis=1)
+    if constrained is not None:
+        rounding &= ~constrained
     return np.where(rounding, np.inf, NO_STRESS * np.max(_size(stress), axis=1))
 
 
@@ -64,7 +74,10 @@ class Side:
 
 @dataclass(frozen=True, slots=True)
 class StressChecks:
-    """Both sides, and the larger utilisation with the smallest x that has it; NaN where none was made."""
+    """Both sides, and the larger utilisation with the smallest x that has it; NaN where none was made.
+
+    By segment, or by part where parts are bonded.
+    """
 
     tension: Side
     compression: Side
@@ -72,14 +85,11 @@ class StressChecks:
     utilisation_at: FloatArray
 
 
-def check_stresses(
-    stress: Extremes, force: Extremes, force_bound: FloatArray, limits: Allowables
-) -> StressChecks:
-    """Compare the extremes of stress with the allowables."""
-    ranges = (stress.largest, stress.smallest), (force.largest, force.smallest)
-    zero = no_stress(*ranges, force_bound)[:, np.newaxis]
-    tension = _side(stress.largest > zero, stress.largest, stress.largest_at, limits.tension)
-    compression = _side(-stress.smallest > zero, stress.smallest, stress.smallest_at, limits.compression)
+def check_stresses(stress: Extremes, zero: FloatArray, limits: Allowables) -> StressChecks:
+    """Compare the extremes of stress with the allowables; up to `zero` (m,) a stress is none."""
+    nothing = zero[:, np.newaxis]
+    tension = _side(stress.largest > nothing, stress.largest, stress.largest_at, limits.tension)
+    compression = _side(-stress.smallest > nothing, stress.smallest, stress.smallest_at, limits.compression)
     largest = np.fmax(tension.utilisation, compression.utilisation)
     places = [
         np.where(side.utilisation >= largest * (1.0 - SAME), side.at, np.nan)

@@ -8,13 +8,21 @@ coefficients, which are all positive for every section, so that nothing cancels 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TypeAlias
 
-from solver.arrays import BoolArray, FloatArray
+from solver.arrays import BoolArray, FloatArray, IntArray
+from solver.bonded import Bonded
+
+Where: TypeAlias = slice | IntArray
 
 
 @dataclass(frozen=True, slots=True)
 class Chain:
-    """The member without loads. Shapes by segment (n, …) or by joint (n + 1)."""
+    """The member without loads. Shapes by segment (n, …) or by joint (n + 1).
+
+    Modulus, area, expansion and density are those of a segment's own part; `bonded` is None where no segment
+    has others beside it.
+    """
 
     length: FloatArray  # (n,) m
     modulus: FloatArray  # (n,) Pa
@@ -24,6 +32,19 @@ class Chain:
     density: FloatArray  # (n,) kg/m³
     fixed: BoolArray  # (n + 1,) joints held at their movement
     spring: FloatArray  # (n + 1,) N/m, 0 where there is none
+    bonded: Bonded | None = None
+
+    def rigidity(self, where: Where) -> FloatArray:
+        """(b, 3) EA of the segments `where`, all their parts together."""
+        if self.bonded is None:
+            return self.modulus[where][:, None] * self.area[where]
+        return self.bonded.rigidity[where]
+
+    def mass(self, where: Where) -> FloatArray:
+        """(b, 3) kg/m of the segments `where`, all their parts together."""
+        if self.bonded is None:
+            return self.density[where][:, None] * self.area[where]
+        return self.bonded.mass[where]
 
 
 @dataclass(frozen=True, slots=True)

@@ -11,13 +11,14 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
+import numpy as np
 from msgspec import Struct, UnsetType
 
 from solver.allowables import Side, StressChecks
 from solver.arrays import FloatArray
 from solver.checks import PASS_MARGIN, Check, Reason, Status, Verdict
 from solver.model import Project
-from solver.results import State
+from solver.results import PartResults, State
 from solver.solution import Solution
 
 _MISSING: dict[Literal["tension", "compression"], Reason] = {
@@ -34,7 +35,8 @@ class Checker:
     states: tuple[State, ...]
     solution: Solution
     position: FloatArray
-    stress: StressChecks
+    stress: StressChecks  # by segment, or by part where there are `parts`
+    parts: PartResults | None = None
 
     def checks(self) -> tuple[Check, ...]:
         """All checks of the checked states, in order."""
@@ -53,14 +55,18 @@ class Checker:
         yield from self._reactions(index, name, joints)
 
     def _stresses(self, index: int, name: str) -> Iterator[Check]:
-        marks = [segment.mark for segment in self.project.segments]
-        tension = _compared(self.stress.tension, index)
-        compression = _compared(self.stress.compression, index)
-        for mark, pulled, pushed in zip(marks, tension, compression, strict=True):
+        tension = list(_compared(self.stress.tension, index))
+        compression = list(_compared(self.stress.compression, index))
+        if self.parts is None:
+            subjects = [_Subject(segment.mark) for segment in self.project.segments]
+        else:
+            subjects, order = _along_the_chain(self.project, self.parts)
+            tension, compression = ([side[part] for part in order] for side in (tension, compression))
+        for subject, pulled, pushed in zip(subjects, tension, compression, strict=True):
             if pulled.present:
-                yield pulled.check("tension", name, mark)
+                yield pulled.check("tension", name, subject)
             if pushed.present:
-                yield pushed.check("compression", name, mark)
+                yield pushed.check("compression", name, subject)
 
     def _displacements(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
         for limit in self.project.limits.displacement:
@@ -112,6 +118,14 @@ class Checker:
         )
 
 
+class _Subject(Struct, frozen=True):
+    """A segment, or one of its bonded parts with its number and material."""
+
+    segment: str
+    part: int | None = None
+    material: str | None = None
+
+
 class _Compared(Struct, frozen=True):
     """A segment's stress of one sign against its allowable; `limit` is NaN where there is none."""
 
@@ -121,15 +135,26 @@ class _Compared(Struct, frozen=True):
     limit: float
     utilisation: float
 
-    def check(self, kind: Literal["tension", "compression"], name: str, mark: str) -> Check:
+    def check(self, kind: Literal["tension", "compression"], name: str, of: _Subject) -> Check:
         """The record."""
         if math.isnan(self.limit):
-            return Check(kind, name, "not_made", segment=mark, position=self.position, reason=_MISSING[kind])
+            return Check(
+                check=kind,
+                combination=name,
+                status="not_made",
+                segment=of.segment,
+                part=of.part,
+                material=of.material,
+                position=self.position,
+                reason=_MISSING[kind],
+            )
         return Check(
             check=kind,
             combination=name,
             status=_status(self.utilisation),
-            segment=mark,
+            segment=of.segment,
+            part=of.part,
+            material=of.material,
             position=self.position,
             value=self.value,
             limit=self.limit,
@@ -140,6 +165,17 @@ class _Compared(Struct, frozen=True):
 def _compared(side: Side, index: int) -> Iterator[_Compared]:
     arrays = (side.present, side.at, side.value, side.limit, side.utilisation)
     return map(_Compared, *(array[index].tolist() for array in arrays))
+
+
+def _along_the_chain(project: Project, parts: PartResults) -> tuple[list[_Subject], list[int]]:
+    """Every part with its place among the parts, segment by segment, the segment's own part first."""
+    order: list[int] = np.argsort(parts.segment, kind="stable").tolist()
+    subjects = []
+    for part in order:
+        segment = project.segments[parts.segment[part]]
+        named = (int(parts.number[part]), parts.material[part]) if segment.bonded else (None, None)
+        subjects.append(_Subject(segment.mark, *named))
+    return subjects, order
 
 
 def _status(utilisation: float) -> Status:

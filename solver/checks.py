@@ -22,6 +22,8 @@ NO_STRESS = 1e-9  # |σ| up to this part of the state's largest |σ| has no sign
 class Check(Struct, frozen=True):
     """One comparison. `segment` or `joint` or `start` and `end` (the file's `from` and `to`) say of what.
 
+    Where a segment has bonded parts, `part` is which of them, 0 its own, and `material` what it is of.
+
     `position` is in m along the member (None for `relative`), `value` and `limit` are in SI and never
     negative except that `value` of a stress, displacement or reaction keeps its sign. None where not made.
     """
@@ -30,6 +32,8 @@ class Check(Struct, frozen=True):
     combination: str
     status: Status
     segment: str | None = None
+    part: int | None = None
+    material: str | None = None
     joint: str | None = None
     start: str | None = None
     end: str | None = None

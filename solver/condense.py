@@ -163,6 +163,9 @@ class Stacked:
         block, ref = self._block, self._ref
         applied = (block.length / 2)[:, None] * (block.load.transpose(1, 2, 0) @ ref.load)
         forces = block.stiffness[:, :, None] * block.strain.transpose(1, 2, 0)[:, :, None, :]
+        if block.constraint is not None:
+            rise = block.constraint.temperature.transpose(1, 2, 0)
+            forces += block.constraint.excess[:, :, None] * rise[:, :, None, :]
         applied[:, :, 1:] += forces.reshape(*forces.shape[:2], 6) @ ref.strain
         return np.asarray(applied)
 
@@ -198,7 +201,7 @@ class Stacked:
         weights = half[:, None] * ref.weights
         elastic, inverse = weights * rigidity, weights / rigidity
         slope = (u @ ref.slope) / half[:, None]
-        strain = block.strain.transpose(1, 2, 0) @ ref.value[:2]
+        strain = self._strain(rigidity)
         force = y @ ref.force
         elongation = slope - strain
         leftover = force - rigidity * elongation
@@ -223,6 +226,15 @@ class Stacked:
             load=q[0] @ block.length,
             bedding_force=-(u[..., 0] @ k0 + u[..., 1] @ k1),
         )
+
+    def _strain(self, rigidity: FloatArray) -> FloatArray:
+        """(m, b, g) ε₀ at the points; of bonded parts, the mean that their stiffnesses weigh."""
+        block, ref = self._block, self._ref
+        strain = block.strain.transpose(1, 2, 0) @ ref.value[:2]
+        if block.constraint is not None:
+            rise = block.constraint.temperature.transpose(1, 2, 0) @ ref.value[:2]
+            strain += rise * ((block.constraint.excess @ ref.bernstein) / rigidity)
+        return np.asarray(strain)
 
     def _bed(self, u: FloatArray, weights: FloatArray) -> FloatArray:
         """(m,) Σ ∫ k u²."""

@@ -11,9 +11,9 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.polynomial import legendre
 
-from solver.allowables import no_stress
 from solver.arrays import FloatArray, IntArray, frozen
-from solver.results import Results
+from solver.bonded import constraint_at
+from solver.results import Allowables, PartResults, Results
 from solver.sampling import Places, Window, places_for, x_of
 from solver.sections import area_at
 
@@ -81,6 +81,7 @@ class PointValues:
     force: float
     stress: float
     utilisation: float
+    parts: tuple[float, ...] = ()  # the stress of each bonded part, the segment's own first; empty without
 
 
 @dataclass(frozen=True, slots=True)
@@ -201,13 +202,40 @@ def _evaluate(results: Results, states: IntArray, places: Places) -> _Values:
     start, end = solution.start[element], solution.end[element]
     t = np.clip((2.0 * places.fraction - start - end) / (end - start), -1.0, 1.0)
     force = _legendre_values(solution.force, states, element, t)
-    stress = force / area_at(results.chain.area[places.segment], places.fraction)
-    return _Values(
-        _legendre_values(solution.displacement, states, element, t),
-        force,
-        stress,
-        _utilisation(results, states, places.segment, stress),
-    )
+    stress = stress_at(results, states, places.segment, places, force)
+    utilisation = _utilisation(results, states, places.segment, stress, results.allowables)
+    if results.parts is not None:
+        utilisation = np.fmax(utilisation, _of_bonded(results, results.parts, states, places, force))
+    return _Values(_legendre_values(solution.displacement, states, element, t), force, stress, utilisation)
+
+
+def stress_at(
+    results: Results, states: IntArray, part: IntArray, places: Places, force: FloatArray
+) -> FloatArray:
+    """(s, k) the stress of parts (k,) at places with their axial force (s, k); part i is segment i's own."""
+    bonded, s = results.chain.bonded, places.fraction
+    if bonded is None:
+        return np.asarray(force / area_at(results.chain.area[places.segment], s))
+    held = constraint_at(bonded, part, results.loads.temperature[states], s)
+    return np.asarray((force + held) / area_at(bonded.transformed[part], s))
+
+
+def _of_bonded(
+    results: Results, parts: PartResults, states: IntArray, places: Places, force: FloatArray
+) -> FloatArray:
+    """(s, k) the largest utilisation of the bonded parts at each place, NaN where there are none."""
+    largest = np.full(force.shape, np.nan)
+    for number in range(1, int(parts.number.max()) + 1):
+        part_of_segment = np.full(len(results.chain.length), -1)
+        numbered = np.flatnonzero(parts.number == number)
+        part_of_segment[parts.segment[numbered]] = numbered
+        part = part_of_segment[places.segment]
+        here = part >= 0
+        own = Places(places.segment[here], places.fraction[here], places.x[here])
+        stress = stress_at(results, states, part[here], own, force[:, here])
+        used = _utilisation(results, states, part[here], stress, parts.allowables)
+        largest[:, here] = np.fmax(largest[:, here], used)
+    return largest
 
 
 def _elements(results: Results, places: Places) -> IntArray:
@@ -229,16 +257,13 @@ def _legendre_values(
     return values
 
 
-def _utilisation(results: Results, states: IntArray, segment: IntArray, stress: FloatArray) -> FloatArray:
+def _utilisation(
+    results: Results, states: IntArray, part: IntArray, stress: FloatArray, limits: Allowables
+) -> FloatArray:
     """|σ| over the allowable of its sign; 0 where there is no stress but an allowable of either sign."""
-    where = states[:, np.newaxis], segment
-    tension, compression = results.allowables.tension[where], results.allowables.compression[where]
-    segments = results.segments
-    zero = no_stress(
-        (segments.stress_max[states], segments.stress_min[states]),
-        (segments.force_max[states], segments.force_min[states]),
-        segments.force_bound[states],
-    )[:, np.newaxis]
+    where = states[:, np.newaxis], part
+    tension, compression = limits.tension[where], limits.compression[where]
+    zero = results.no_stress[states][:, np.newaxis]
     nothing = np.where(np.isnan(tension) & np.isnan(compression), np.nan, 0.0)
     with np.errstate(over="ignore"):  # the side that is not taken may overflow
         pressed = np.where(stress < -zero, -stress / compression, nothing)
@@ -301,7 +326,20 @@ def _point(results: Results, states: IntArray, place: Places | None) -> PointVal
         return None
     values = _evaluate(results, states, place)
     arrays = (values.displacement, values.force, values.stress, values.utilisation)
-    return PointValues(int(place.segment[0]), *(float(array[0, 0]) for array in arrays))
+    u, force, stress, utilisation = (float(array[0, 0]) for array in arrays)
+    parts = tuple(each[0] for each in _part_stresses(results, states, place, values.force))
+    return PointValues(int(place.segment[0]), u, force, stress, utilisation, parts)
+
+
+def _part_stresses(
+    results: Results, states: IntArray, place: Places, force: FloatArray
+) -> list[tuple[float, ...]]:
+    """The stress of each bonded part at one place by state, the segment's own first; empty without any."""
+    parts = results.parts
+    own = [] if parts is None else parts.of_segment(int(place.segment[0])).tolist()
+    if len(own) < 2:
+        return []
+    return [tuple(stress_at(results, states, np.array([part]), place, force)[:, 0].tolist()) for part in own]
 
 
 def _envelope_point(results: Results, states: IntArray, place: Places | None) -> EnvelopePoint | None:

@@ -12,10 +12,11 @@ from typing import TypeAlias
 import numpy as np
 
 from solver.arrays import BoolArray, FloatArray, IntArray
-from solver.chain import Chain, Loads
+from solver.bonded import even
+from solver.chain import Chain, Loads, Where
 from solver.sections import part_of
 
-Where: TypeAlias = slice | IntArray
+Parts: TypeAlias = tuple[FloatArray, FloatArray]  # (b,) where parts of segments start and end, as fractions
 
 
 @dataclass(frozen=True, slots=True)
@@ -46,13 +47,21 @@ class Block:
     bedding: FloatArray  # (b, 2) k, Legendre
     strain: FloatArray  # (2, m, b) stress-free strain ε₀, Legendre
     load: FloatArray  # (3, m, b) q with self-weight, Legendre
+    constraint: Constraint | None = None  # what bonded parts add to E A ε₀ beside E A times `strain`
+
+
+@dataclass(frozen=True, slots=True)
+class Constraint:
+    """Of bonded parts that expand differently: the force C ΔT that belongs to `Block.strain`'s own part."""
+
+    excess: FloatArray  # (b, 3) C, Bernstein
+    temperature: FloatArray  # (2, m, b) Legendre
 
 
 def closed_segments(chain: Chain) -> BoolArray:
     """(n,) True where the area is the same throughout (up to rounding) and nothing beds the segment."""
-    area = chain.area
-    spread = area.max(axis=1) - area.min(axis=1)
-    return np.asarray((spread <= 4e-16 * area[:, 1]) & (chain.bedding == 0).all(axis=1))
+    prismatic = even(chain.area) if chain.bonded is None else chain.bonded.even
+    return np.asarray(prismatic & (chain.bedding == 0).all(axis=1))
 
 
 def block(chain: Chain, loads: Loads, mesh: Mesh, where: Where) -> Block:
@@ -63,17 +72,36 @@ def block(chain: Chain, loads: Loads, mesh: Mesh, where: Where) -> Block:
     temperature = _linear(loads.temperature[:, segment], parts)
     strain = chain.expansion[segment] * temperature
     strain[0] += loads.lack_of_fit[:, segment] / length
-    area = chain.area[segment] if parts is None else part_of(chain.area[segment], *parts)
+    stiffness = _on(chain.rigidity(segment), parts)
+    constraint = _constraint(chain, segment, temperature, parts)
+    if constraint is not None and mesh.closed[where].all():  # everything is even: the mean strain is linear
+        strain += (constraint.excess[:, 1] / stiffness[:, 1]) * temperature
+        constraint = None
     return Block(
         length=length if parts is None else length * (parts[1] - parts[0]),
-        stiffness=chain.modulus[segment][:, None] * area,
+        stiffness=stiffness,
         bedding=np.ascontiguousarray(_linear(chain.bedding[segment], parts).T),
         strain=strain,
-        load=_load(loads, segment, area, chain.density[segment], parts),
+        load=_load(loads, segment, _on(chain.mass(segment), parts), parts),
+        constraint=constraint,
     )
 
 
-def _linear(ends: FloatArray, parts: tuple[FloatArray, FloatArray] | None) -> FloatArray:
+def _on(coefficients: FloatArray, parts: Parts | None) -> FloatArray:
+    """Bernstein coefficients (b, 3) of segments on their parts."""
+    return coefficients if parts is None else part_of(coefficients, *parts)
+
+
+def _constraint(
+    chain: Chain, segment: Where, temperature: FloatArray, parts: Parts | None
+) -> Constraint | None:
+    if chain.bonded is None:
+        return None
+    excess = chain.bonded.excess[: chain.length.size][segment]  # of the segments' own parts
+    return Constraint(_on(excess, parts), temperature) if excess.any() else None
+
+
+def _linear(ends: FloatArray, parts: Parts | None) -> FloatArray:
     """Values at start and end (…, b, 2) to Legendre coefficients (2, …, b) on the parts."""
     first, last = ends[..., 0], ends[..., 1]
     if parts is not None:
@@ -89,15 +117,14 @@ def _linear(ends: FloatArray, parts: tuple[FloatArray, FloatArray] | None) -> Fl
 def _load(
     loads: Loads,
     segment: Where,
-    area: FloatArray,
-    density: FloatArray,
-    parts: tuple[FloatArray, FloatArray] | None,
+    mass: FloatArray,
+    parts: Parts | None,
 ) -> FloatArray:
-    weight = loads.gravity[:, None] * density
-    first, middle, last = area.T
+    gravity = loads.gravity[:, None]
+    first, middle, last = mass.T
     linear = _linear(loads.distributed[:, segment], parts)
-    load = np.empty((3, *weight.shape))
-    load[0] = linear[0] + weight * ((first + middle + last) / 3)
-    load[1] = linear[1] + weight * ((last - first) / 2)
-    load[2] = weight * ((first - 2 * middle + last) / 6)
+    load = np.empty((3, gravity.size, first.size))
+    load[0] = linear[0] + gravity * ((first + middle + last) / 3)
+    load[1] = linear[1] + gravity * ((last - first) / 2)
+    load[2] = gravity * ((first - 2 * middle + last) / 6)
     return load

@@ -191,6 +191,11 @@ class Segment(Record, frozen=True):
     bonded: tuple[BondedPart, ...] = field(default_factory=absent_list)
 
 
+def parts_of(segment: Segment) -> tuple[BondedPart, ...]:
+    """All parts of a segment that share its strain, its own material and section first."""
+    return (BondedPart(segment.material, segment.section), *segment.bonded)
+
+
 class CompanionSegment(Record, frozen=True):
     """A part of a companion; its mark is unique over the member and all companions."""
 

@@ -8,13 +8,23 @@ cases, so that any number of combinations costs one product.
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 
 import numpy as np
 
 from solver.arrays import BoolArray, FloatArray, frozen
+from solver.bonded import Bonded, bonded_parts
 from solver.chain import Chain, Loads
-from solver.model import FixedSupport, Project, Segment, SegmentLoad, SpringSupport, end_of
+from solver.model import (
+    BondedPart,
+    FixedSupport,
+    Material,
+    Project,
+    Segment,
+    SegmentLoad,
+    SpringSupport,
+    end_of,
+)
 from solver.results import State
 from solver.sections import area_coefficients
 
@@ -62,6 +72,24 @@ def pack_chain(project: Project) -> Chain:
         density=_array(material.density for material in materials),
         fixed=fixed,
         spring=spring,
+        bonded=_bonded(segments, by_name),
+    )
+
+
+def _bonded(segments: tuple[Segment, ...], by_name: Mapping[str, Material]) -> Bonded | None:
+    """All parts, the segments' own first; None where no segment has bonded parts."""
+    added = [(index, part) for index, segment in enumerate(segments) for part in segment.bonded]
+    if not added:
+        return None
+    every: list[Segment | BondedPart] = [*segments, *(part for _, part in added)]
+    materials = [by_name[part.material] for part in every]
+    sections = [part.section for part in every]
+    return bonded_parts(
+        segment=np.array([*range(len(segments)), *(index for index, _ in added)], dtype=np.intp),
+        modulus=_array(material.modulus for material in materials),
+        area=_array(value for section in sections for value in area_coefficients(section)).reshape(-1, 3),
+        expansion=_array(material.expansion for material in materials),
+        density=_array(material.density for material in materials),
     )
 
 

@@ -13,12 +13,13 @@ from typing import TypeAlias
 import numpy as np
 
 from solver.arrays import FloatArray, IntArray, frozen
+from solver.bonded import self_stress
 from solver.bound import FLOOR, Bound, displacement_share, field_share, joint_roundings, joint_share
-from solver.chain import Chain, Loads
+from solver.chain import Chain, Loads, Where
 from solver.condense import ClosedForm, Condensation, Condensed, Stacked
 from solver.errors import Cancelled
 from solver.joints import JointSystem, held, largest_load, spring_force, unbalanced
-from solver.mesh import Mesh, Where, block
+from solver.mesh import Mesh, block
 from solver.solution import Solution
 
 CLOSED_BLOCK = 4096
@@ -106,6 +107,15 @@ class Pass:
         applied = fields.load + self.held.force.sum(axis=1)
         balance = applied + np.where(np.isnan(reaction), 0.0, reaction).sum(axis=1) + fields.bedding_force
         strain = fields.strain_energy + spring_energy
+        if self.chain.bonded is not None:
+            strain = strain + self_stress(
+                self.chain.bonded,
+                self.chain.length,
+                self.loads.temperature,
+                mesh.start,
+                mesh.end,
+                mesh.segment,
+            )
         arrays = {
             "start": mesh.start,
             "end": mesh.end,

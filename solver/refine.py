@@ -24,6 +24,7 @@ SAFETY = 0.1  # part of the tolerance the first degree aims at
 COARSEST = (
     1e-3  # tolerance aimed at where a larger one is asked: 1/A must stay smooth to the bound's quadrature
 )
+COMPLEX = 1e-12  # up to this part a negative square is rounding
 STEP = 2  # by which a degree is raised
 FEW = 256  # up to so many stacked elements share one degree: the calls cost more than the arithmetic
 MOST_HALVINGS = 20_000
@@ -56,8 +57,9 @@ def wanted_degree(chain: Chain, mesh: Mesh, tolerance: float) -> IntArray:
     wanted = np.full(mesh.segment.size, CLOSED_DEGREE)
     opened = np.flatnonzero(~mesh.closed)
     segment, start, end = mesh.segment[opened], mesh.start[opened], mesh.end[opened]
-    area = chain.area[segment] if mesh.whole else part_of(chain.area[segment], start, end)
-    error = expected_error(pole_decay(area), bedding_number(chain, segment, area, end - start))
+    whole = chain.rigidity(segment)
+    rigidity = whole if mesh.whole else part_of(whole, start, end)
+    error = expected_error(pole_decay(rigidity), bedding_number(chain, segment, rigidity, end - start))
     met = error < SAFETY * min(tolerance, COARSEST)
     met[end - start <= SHORTEST, -1] = True  # as good as it gets
     degree = np.where(met.any(axis=1), np.maximum(met.argmax(axis=1) + 1, LEAST_DEGREE), GREATEST_DEGREE + 1)
@@ -78,18 +80,24 @@ def expected_error(decay: FloatArray, z: FloatArray) -> FloatArray:
 
 
 def pole_decay(area: FloatArray) -> FloatArray:
-    """(e,) 1/ρ of the nearer pole of 1/A, from Bernstein coefficients (e, 3); 0 where A is constant."""
+    """(e,) 1/ρ of the nearer pole of 1/A, from Bernstein coefficients (e, 3); 0 where A is constant.
+
+    A sum of bonded parts may have a pair of complex poles; a single part has none.
+    """
     first, middle, last = area.T
-    root = np.sqrt(np.maximum(middle * middle - first * last, 0.0))
+    square = middle * middle - first * last
+    if (square < -COMPLEX * middle * middle).any():
+        root = np.sqrt(square + 0j)
+    else:
+        root = np.sqrt(np.maximum(square, 0.0))
     one, other = np.sqrt((middle + root) / last), np.sqrt(first / (middle + root))
-    return np.asarray(np.maximum(np.abs(1 - one) / (1 + one), np.abs(1 - other) / (1 + other)))
+    return np.asarray(np.maximum(np.abs((1 - one) / (1 + one)), np.abs((1 - other) / (1 + other))))
 
 
-def bedding_number(chain: Chain, segment: IntArray, area: FloatArray, part: FloatArray) -> FloatArray:
+def bedding_number(chain: Chain, segment: IntArray, rigidity: FloatArray, part: FloatArray) -> FloatArray:
     """(e,) μL/2 with the segment's largest bedding and the element's least rigidity."""
-    rigidity = chain.modulus[segment] * area.min(axis=1)
     bedding = chain.bedding[segment].max(axis=1)
-    return np.asarray(np.sqrt(bedding / rigidity) * chain.length[segment] * part / 2)
+    return np.asarray(np.sqrt(bedding / rigidity.min(axis=1)) * chain.length[segment] * part / 2)
 
 
 def with_degrees(mesh: Mesh, degree: IntArray) -> Mesh:

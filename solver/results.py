@@ -8,7 +8,9 @@ from __future__ import annotations
 from dataclasses import dataclass, fields
 from typing import Literal, TypeAlias
 
-from solver.arrays import FloatArray
+import numpy as np
+
+from solver.arrays import FloatArray, IntArray
 from solver.chain import Chain, Loads
 from solver.checks import Check, Verdict
 from solver.model import Project
@@ -68,8 +70,35 @@ class SegmentResults:
 
 
 @dataclass(frozen=True, slots=True)
+class PartResults:
+    """Extremes of the stress in every part where parts are bonded, all (m, s), as in `SegmentResults`.
+
+    In the order of `solver.bonded`: the first n parts are the segments' own.
+    """
+
+    segment: IntArray  # (s,)
+    number: IntArray  # (s,) within its segment: 0 is the segment's own part
+    material: tuple[str, ...]  # (s,)
+    stress_max: FloatArray
+    stress_max_at: FloatArray
+    stress_min: FloatArray
+    stress_min_at: FloatArray
+    utilisation: FloatArray
+    utilisation_at: FloatArray
+    allowables: Allowables
+
+    def of_segment(self, segment: int) -> IntArray:
+        """The parts of one segment in their order."""
+        return np.flatnonzero(self.segment == segment)
+
+
+@dataclass(frozen=True, slots=True)
 class Results:
-    """The results of one project: states first the checked ones, in the project's order, then the others."""
+    """The results of one project: states first the checked ones, in the project's order, then the others.
+
+    Stress and allowables of a segment are those of its own part, its utilisation is the largest of all parts;
+    `parts` has each of them and is None where nothing is bonded.
+    """
 
     project: Project
     chain: Chain
@@ -78,7 +107,9 @@ class Results:
     solution: Solution
     position: FloatArray  # (n + 1,) x of the joints, m
     segments: SegmentResults
+    parts: PartResults | None
     allowables: Allowables
+    no_stress: FloatArray  # (m,) Pa: up to this a stress has no sign and no check
     checks: tuple[Check, ...]
     verdict: Verdict
     governing: Check | None

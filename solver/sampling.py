@@ -40,9 +40,11 @@ class Peaks:
     x: FloatArray
 
 
-def peaks_of(segments: SegmentResults) -> tuple[Peaks, ...]:
-    """The extremes that a curve must pass through."""
+def peaks_of(segments: SegmentResults, *, bonded: bool) -> tuple[Peaks, ...]:
+    """The extremes that a curve must pass through; bonded parts show in the utilisation alone."""
+    used = np.nan_to_num(segments.utilisation, nan=-1.0), np.nan_to_num(segments.utilisation_at)
     return (
+        *([Peaks(*used)] if bonded else []),
         Peaks(segments.displacement_max, segments.displacement_max_at),
         Peaks(-segments.displacement_min, segments.displacement_min_at),
         Peaks(segments.force_max, segments.force_max_at),
@@ -58,7 +60,8 @@ def places_for(results: Results, states: IntArray, points: int, near: Window | N
     In the window `near` (from, to in m) there are about as many again.
     """
     n = len(results.chain.length)
-    peaks = [Peaks(peak.size[states], peak.x[states]) for peak in peaks_of(results.segments)]
+    found = peaks_of(results.segments, bonded=results.parts is not None)
+    peaks = [Peaks(peak.size[states], peak.x[states]) for peak in found]
     extremes = _inside(results, [_governing(peak) for peak in peaks])
     room = points - 2 * n - len(extremes)
     if room < 0:

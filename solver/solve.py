@@ -7,9 +7,10 @@ from collections.abc import Callable
 
 import numpy as np
 
-from solver.allowables import StressChecks, allowables, check_stresses
+from solver.allowables import allowables, check_stresses, no_stress
 from solver.arrays import BoolArray, FloatArray, frozen
 from solver.axial import never, solve_axial
+from solver.bonded import constrained
 from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
 from solver.errors import Cancelled, NotSolvable, OutOfRange
@@ -17,6 +18,13 @@ from solver.extremes import ExtremeFinder, Extremes
 from solver.faults import Fault
 from solver.model import Project
 from solver.packing import pack, states_of
+from solver.part_results import (
+    every_part,
+    own_limits,
+    own_stress,
+    part_results,
+    utilisation_of_segments,
+)
 from solver.results import Results, SegmentResults, State
 from solver.solution import Solution
 from solver.validation import unsolvable
@@ -60,13 +68,17 @@ def _results(
     solution: Solution,
     cancelled: Callable[[], bool],
 ) -> Results:
+    count = len(chain.length)
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
-    finder = ExtremeFinder(chain, solution, position)
+    finder = ExtremeFinder(chain, solution, loads, position)
     stress, force = finder.stress(), finder.force()
-    limits = allowables(project, states)
-    stress_checks = check_stresses(stress, force, solution.force_bound, limits)
+    ranges = (stress.largest, stress.smallest), (force.largest, force.smallest)
+    zero = frozen(no_stress(*ranges, solution.force_bound, constrained(chain.bonded, loads.temperature)))
+    limits = allowables(project, states, every_part(project))
+    stress_checks = check_stresses(stress, zero, limits)
     _ask(cancelled)
-    checks = Checker(project, states, solution, position, stress_checks).checks()
+    parts = part_results(project, chain.bonded, stress, stress_checks, limits)
+    checks = Checker(project, states, solution, position, stress_checks, parts).checks()
     segment_mass = frozen(_segment_mass(chain))
     return Results(
         project=project,
@@ -75,8 +87,16 @@ def _results(
         states=states,
         solution=solution,
         position=position,
-        segments=_segment_results(stress, force, finder.displacement(), stress_checks, solution.force_bound),
-        allowables=limits,
+        segments=_segment_results(
+            own_stress(stress, count),
+            force,
+            finder.displacement(),
+            utilisation_of_segments(stress_checks, chain.bonded),
+            solution.force_bound,
+        ),
+        parts=parts,
+        allowables=own_limits(limits, count),
+        no_stress=zero,
         checks=checks,
         verdict=verdict_of(checks),
         governing=governing_of(checks),
@@ -104,7 +124,7 @@ def _states_with(project: Project, faults: tuple[Fault, ...]) -> tuple[str, ...]
 def _refuse_out_of_range(chain: Chain, states: tuple[State, ...]) -> None:
     """Stiffnesses that floating point cannot hold; what follows from loads is the solver's to see."""
     with np.errstate(over="ignore"):
-        stiffness = chain.modulus[:, np.newaxis] * chain.area
+        stiffness = chain.rigidity(slice(None))
     if not (np.all(np.isfinite(stiffness)) and np.all(stiffness > 0.0)):
         raise OutOfRange(states[0].name, "stiffness")
 
@@ -114,6 +134,10 @@ def _refuse_overflow(results: Results) -> None:
     segments, limits = results.segments, results.allowables
     stress = [segments.stress_max, segments.stress_min, segments.stress_max_at]
     _require(np.all(np.isfinite(stress), axis=0), "stress", results)
+    if results.parts is not None:
+        of_parts = [results.parts.stress_max, results.parts.stress_min]
+        _require(np.all(np.isfinite(of_parts), axis=0), "stress", results)
+        limits = results.parts.allowables
     for limit in (limits.tension, limits.compression):
         _require(np.isnan(limit) | (np.isfinite(limit) & (limit > 0.0)), "allowable", results)
     _require(~np.isinf(segments.utilisation), "utilisation", results)
@@ -132,7 +156,11 @@ def _require(sound: BoolArray, what: str, results: Results) -> None:
 
 
 def _segment_results(
-    stress: Extremes, force: Extremes, displacement: Extremes, checks: StressChecks, force_bound: FloatArray
+    stress: Extremes,
+    force: Extremes,
+    displacement: Extremes,
+    utilisation: tuple[FloatArray, FloatArray],
+    force_bound: FloatArray,
 ) -> SegmentResults:
     return SegmentResults(
         force_start=force.start,
@@ -143,8 +171,8 @@ def _segment_results(
         stress_max_at=stress.largest_at,
         stress_min=stress.smallest,
         stress_min_at=stress.smallest_at,
-        utilisation=checks.utilisation,
-        utilisation_at=checks.utilisation_at,
+        utilisation=utilisation[0],
+        utilisation_at=utilisation[1],
         force_bound=force_bound,
         force_max_at=force.largest_at,
         force_min_at=force.smallest_at,
@@ -157,5 +185,5 @@ def _segment_results(
 
 def _segment_mass(chain: Chain) -> FloatArray:
     """∫ ρ A dx of each segment (n,) in kg; the mean of an area is that of its Bernstein coefficients."""
-    masses: FloatArray = chain.density * chain.length * np.mean(chain.area, axis=-1)
+    masses: FloatArray = chain.length * np.mean(chain.mass(slice(None)), axis=-1)
     return masses
