@@ -14,6 +14,8 @@ from app.project_file import sha256
 from app.version import PROGRAM
 from solver.arrays import FloatArray
 from solver.checks import Check
+from solver.model import StopSupport
+from solver.outcomes import SupportOutcome, support_outcomes
 from solver.results import Results
 
 FORMAT = "barwright-results"
@@ -80,13 +82,32 @@ def _state(results: Results, state: int) -> Values:
 
 
 def _joints(results: Results, state: int) -> list[Values]:
+    """One row a joint; where there is a stop or more than one support, what each of them does as well."""
     columns = {
         "mark": [joint.mark for joint in results.project.joints],
         "position": _column(results.position),
         "displacement": _column(results.solution.joint_displacement[state]),
         "reaction": _column(results.solution.reaction[state]),
     }
-    return _rows(columns)
+    rows = _rows(columns)
+    for index, joint in enumerate(results.project.joints):
+        if joint.supports or isinstance(joint.support, StopSupport):
+            rows[index] |= _contacts(support_outcomes(results, state, index), several=bool(joint.supports))
+    return rows
+
+
+def _contacts(outcomes: tuple[SupportOutcome, ...], *, several: bool) -> Values:
+    """Whether a stop is open or closed, and what clearance it has left; lists where the file has a list.
+
+    In a list, what is no stop is null, and there is the force of each support on the member as well.
+    """
+    values: Values = {
+        "contact": [one.contact for one in outcomes],
+        "clearance": [_plain(one.clearance) for one in outcomes],
+    }
+    if not several:
+        return {key: found[0] for key, found in values.items()}
+    return values | {"support_forces": [_plain(one.force) for one in outcomes]}
 
 
 def _segments(results: Results, state: int) -> list[Values]:

@@ -13,11 +13,13 @@ import numpy as np
 
 from solver.arrays import BoolArray
 from solver.chain import Chain, Loads
+from solver.closing import Loose
 from solver.errors import BoundNotMet, Cancelled, NotSolvable, OutOfRange, StiffnessContrast
 from solver.faults import Fault
 from solver.joints import FactorError
 from solver.mesh import Mesh
 from solver.passes import Pass
+from solver.patterns import Unsettled
 from solver.refine import first_mesh, refined
 from solver.solution import Solution
 
@@ -42,11 +44,12 @@ def solve_axial(
 ) -> Solution:
     """Displacement, force, reactions, energies and bounds of m states, whose names (m) errors mention.
 
-    `tolerance` is relative, in the energy norm. Raises NotSolvable for a member that nothing holds,
+    `tolerance` is relative, in the energy norm. Raises NotSolvable for a member that nothing holds or that
+    stops alone would hold if the loads pressed on them, with those states,
     OutOfRange where numbers overflow or vanish, StiffnessContrast where joints do not balance, BoundNotMet
     where refinement ends above the tolerance, Cancelled when `cancelled` says so between two stages.
     """
-    if not (chain.fixed.any() or chain.spring.any() or chain.bedding.any()):
+    if not (chain.fixed.any() or chain.spring.any() or chain.bedding.any() or chain.stops.joint.size):
         raise NotSolvable((Fault("joints", "not_held"),), tuple(names))
     with np.errstate(all="ignore"):  # what overflows is found by its result, state by state
         return _refined_until_met(chain, loads, names, tolerance, cancelled)
@@ -85,6 +88,13 @@ def _sound_pass(
         raise Cancelled
     try:
         trial = Pass(chain, loads, mesh, cancelled)
+    except Loose as loose:
+        states = tuple(loose.states.tolist())
+        faults = (Fault("joints", "not_pressed"),)
+        raise NotSolvable(faults, tuple(names[state] for state in states), states) from loose
+    except Unsettled as lost:
+        joint = int(np.searchsorted(mesh.joints(), lost.at))
+        raise StiffnessContrast(names[lost.state], joint, lost.force, lost.force) from lost
     except FactorError as lost:
         state = int(np.argmax(lost.largest_load))
         largest = float(lost.largest_load[state])

@@ -64,6 +64,15 @@ def joint_share(system: JointSystem, leftover: FloatArray, roundings: FloatArray
 def joint_roundings(
     at: Held, ends: Condensed, u: Displacements, mean: FloatArray, stretch: FloatArray
 ) -> FloatArray:
+    """(m, e + 1) as `force_roundings`, but 0 where a support takes whatever comes."""
+    roundings = force_roundings(at, ends, u, mean, stretch)
+    roundings[:, at.fixed] = 0.0
+    return roundings
+
+
+def force_roundings(
+    at: Held, ends: Condensed, u: Displacements, mean: FloatArray, stretch: FloatArray
+) -> FloatArray:
     """(m, e + 1) how far rounding can have moved the sum of forces at each end of an element."""
     size = np.abs(ends.stretch_stretch * stretch) + np.abs(ends.load_stretch) + np.abs(ends.load_mean) / 2
     if ends.mean_mean.any():
@@ -73,7 +82,6 @@ def joint_roundings(
     total[:, at.sprung] += at.spring * (np.abs(at.movement[:, at.sprung]) + np.abs(u.high[:, at.sprung]))
     total[:, :-1] += size
     total[:, 1:] += size
-    total[:, at.fixed] = 0.0
     return np.asarray((FORCE_ROUNDINGS * EPSILON) * total)
 
 

@@ -10,10 +10,27 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TypeAlias
 
-from solver.arrays import BoolArray, FloatArray, IntArray
+import numpy as np
+
+from solver.arrays import BoolArray, FloatArray, IntArray, frozen
 from solver.bonded import Bonded
 
 Where: TypeAlias = slice | IntArray
+
+
+@dataclass(frozen=True, slots=True)
+class Stops:
+    """The one-sided supports, s in all, several at one joint among them."""
+
+    joint: IntArray  # (s,) in chain order, at one joint in the order of its supports
+    side: FloatArray  # (s,) +1 blocks motion along +x, −1 along −x
+    clearance: FloatArray  # (s,) m
+    stiffness: FloatArray  # (s,) N/m, infinite for a rigid one
+
+
+_NOWHERE = np.zeros(0, dtype=np.intp)
+_NOWHERE.setflags(write=False)
+NO_STOPS = Stops(_NOWHERE, *(frozen(np.zeros(0)) for _ in range(3)))
 
 
 @dataclass(frozen=True, slots=True)
@@ -31,7 +48,8 @@ class Chain:
     expansion: FloatArray  # (n,) 1/K
     density: FloatArray  # (n,) kg/m³
     fixed: BoolArray  # (n + 1,) joints held at their movement
-    spring: FloatArray  # (n + 1,) N/m, 0 where there is none
+    spring: FloatArray  # (n + 1,) N/m, 0 where there is none, the sum where there are several
+    stops: Stops = NO_STOPS
     bonded: Bonded | None = None
 
     def rigidity(self, where: Where) -> FloatArray:

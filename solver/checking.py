@@ -12,12 +12,12 @@ from dataclasses import dataclass
 from typing import Literal
 
 import numpy as np
-from msgspec import Struct, UnsetType
+from msgspec import Struct
 
 from solver.allowables import Side, StressChecks
 from solver.arrays import FloatArray
 from solver.checks import PASS_MARGIN, Check, Reason, Status, Verdict
-from solver.model import Project
+from solver.model import Project, supports_of
 from solver.results import PartResults, State
 from solver.solution import Solution
 
@@ -94,7 +94,7 @@ class Checker:
         for limit in self.project.limits.reaction:
             place = joints[limit.joint]
             value = float(self.solution.reaction[index, place])
-            if isinstance(self.project.joints[place].support, UnsetType):
+            if not supports_of(self.project.joints[place]):
                 position = float(self.position[place])
                 yield Check(
                     "reaction", name, "not_made", joint=limit.joint, position=position, reason="no_support"

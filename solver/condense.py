@@ -12,12 +12,12 @@ others of one degree are solved together as one stack of small matrices.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Protocol
 
 import numpy as np
 
-from solver.arrays import FloatArray
+from solver.arrays import FloatArray, IntArray
 from solver.elements import reference
 from solver.mesh import Block
 
@@ -31,6 +31,10 @@ class Condensed:
     stretch_stretch: FloatArray  # (b,) N/m
     load_mean: FloatArray  # (m, b) N
     load_stretch: FloatArray  # (m, b) N
+
+    def of(self, states: slice | IntArray) -> Condensed:
+        """The same elements in some of the states."""
+        return replace(self, load_mean=self.load_mean[states], load_stretch=self.load_stretch[states])
 
 
 @dataclass(frozen=True, slots=True)

@@ -18,12 +18,18 @@ class InputError(Exception):
 
 
 class NotSolvable(InputError):  # noqa: N818 - the contract's own word
-    """Well formed but not solvable; `combinations` names where, `faults` say what is missing."""
+    """Well formed but not solvable; `combinations` names where, `faults` say what is missing.
 
-    def __init__(self, faults: tuple[Fault, ...], combinations: tuple[str, ...]) -> None:
+    `states` are the indices of those states among the ones to be solved, where only some are concerned.
+    """
+
+    def __init__(
+        self, faults: tuple[Fault, ...], combinations: tuple[str, ...], states: tuple[int, ...] = ()
+    ) -> None:
         super().__init__(f"not solvable in {', '.join(combinations)}: {', '.join(f.rule for f in faults)}")
         self.faults = faults
         self.combinations = combinations
+        self.states = states
 
 
 class StiffnessContrast(InputError):  # noqa: N818

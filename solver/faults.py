@@ -47,7 +47,7 @@ Rule: TypeAlias = Literal[
     "several_records",  # facts: count: the cell stands for more than one load record
     # of solvability (place is the part of the model; facts name the combination where it matters)
     "not_held",
-    "stop_not_yet",  # facts: joint
+    "not_pressed",
     "movement_without_support",  # facts: joint, case
     "companions_not_yet",  # facts: companion
     "companion_length",  # facts: companion, length, span, difference, kind (too_long, too_short)

@@ -31,10 +31,10 @@ class Held:
     """Supports and joint loads at the ends of the elements."""
 
     fixed: IntArray  # which ends are held
-    sprung: IntArray  # (s,) which ends have a spring
+    sprung: IntArray  # (s,) which other ends have a spring
     spring: FloatArray  # (s,) its stiffness
     force: FloatArray  # (m, e + 1)
-    movement: FloatArray  # (m, e + 1)
+    movement: FloatArray  # (m, e + 1) where what holds the end would have it
 
 
 @dataclass(frozen=True, slots=True)
@@ -71,7 +71,7 @@ class FactorError(Exception):
 
 def held(chain: Chain, loads: Loads, mesh: Mesh) -> Held:
     """Supports and joint loads spread from the joints to the ends of the elements."""
-    fixed, sprung = np.flatnonzero(chain.fixed), np.flatnonzero(chain.spring)
+    fixed, sprung = np.flatnonzero(chain.fixed), np.flatnonzero((chain.spring > 0.0) & ~chain.fixed)
     spring, force, movement = chain.spring[sprung], loads.joint_force, loads.movement
     if not mesh.whole:
         joints, shape = mesh.joints(), (force.shape[0], mesh.segment.size + 1)
@@ -117,15 +117,19 @@ class JointSystem:
         start = np.zeros_like(self._held.movement)
         start[:, self._held.fixed] = self._held.movement[:, self._held.fixed]
         u = Displacements(start, np.zeros_like(start))
-        u = u.corrected(self.solve(self._unbalanced(u)))
+        u = u.corrected(self.solve(self._leftover(u)))
         for _ in range(REFINEMENTS):
-            correction = self.solve(self._unbalanced(u))
+            correction = self.solve(self._leftover(u))
             u = u.corrected(correction)
             if np.abs(correction).max() <= SETTLED * np.abs(u.high).max():
                 break
         return u
 
-    def _unbalanced(self, u: Displacements) -> FloatArray:
+    def _leftover(self, u: Displacements) -> FloatArray:
+        return unbalanced(self._held, u, *self.end_forces(u))
+
+    def end_forces(self, u: Displacements) -> tuple[FloatArray, FloatArray]:
+        """(m, e) each, the axial force at the start and at the end of every element."""
         ends, stretch = self._ends, u.stretch()
         half_sum = ends.stretch_stretch * stretch - ends.load_stretch
         difference = -ends.load_mean
@@ -133,7 +137,7 @@ class JointSystem:
             mean = u.mean()
             half_sum += ends.mean_stretch * mean
             difference = ends.mean_mean * mean + ends.mean_stretch * stretch - ends.load_mean
-        return unbalanced(self._held, u, half_sum - difference / 2, half_sum + difference / 2)
+        return half_sum - difference / 2, half_sum + difference / 2
 
 
 def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
@@ -144,6 +148,14 @@ def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: F
     left[:, 1:] -= end_force
     left[:, at.fixed] = 0.0
     return left
+
+
+def taken(at: Held, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
+    """(m, e + 1) what the support at each end of an element exerts, along +x, to balance all other forces."""
+    whole = -at.force
+    whole[:, :-1] -= start_force
+    whole[:, 1:] += end_force
+    return whole
 
 
 def spring_force(at: Held, u: Displacements) -> FloatArray:

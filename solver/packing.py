@@ -11,10 +11,11 @@ import math
 from collections.abc import Iterable, Mapping
 
 import numpy as np
+from msgspec import UnsetType
 
 from solver.arrays import BoolArray, FloatArray, frozen
 from solver.bonded import Bonded, bonded_parts
-from solver.chain import Chain, Loads
+from solver.chain import NO_STOPS, Chain, Loads, Stops
 from solver.model import (
     BondedPart,
     FixedSupport,
@@ -23,7 +24,9 @@ from solver.model import (
     Segment,
     SegmentLoad,
     SpringSupport,
+    StopSupport,
     end_of,
+    supports_of,
 )
 from solver.results import State
 from solver.sections import area_coefficients
@@ -62,7 +65,7 @@ def pack_chain(project: Project) -> Chain:
     segments = project.segments
     by_name = {material.name: material for material in project.materials}
     materials = [by_name[segment.material] for segment in segments]
-    fixed, spring = _supports(project)
+    fixed, spring, stops = _supports(project)
     return Chain(
         length=_array(segment.length for segment in segments),
         modulus=_array(material.modulus for material in materials),
@@ -72,6 +75,7 @@ def pack_chain(project: Project) -> Chain:
         density=_array(material.density for material in materials),
         fixed=fixed,
         spring=spring,
+        stops=stops,
         bonded=_bonded(segments, by_name),
     )
 
@@ -108,16 +112,36 @@ def _beddings(segments: tuple[Segment, ...]) -> Iterable[float]:
         yield end_of(segment.bedding, segment.bedding_end)
 
 
-def _supports(project: Project) -> tuple[BoolArray, FloatArray]:
+def _supports(project: Project) -> tuple[BoolArray, FloatArray, Stops]:
+    """Fixed joints, springs and stops; springs at one joint add up, several fixed supports are one."""
     fixed = np.zeros(len(project.joints), dtype=np.bool_)
     spring = np.zeros(len(project.joints))
+    stops: list[tuple[int, StopSupport]] = []
     for index, joint in enumerate(project.joints):
-        if isinstance(joint.support, FixedSupport):
-            fixed[index] = True
-        elif isinstance(joint.support, SpringSupport):
-            spring[index] = joint.support.stiffness
+        for support in supports_of(joint):
+            if isinstance(support, FixedSupport):
+                fixed[index] = True
+            elif isinstance(support, SpringSupport):
+                spring[index] += support.stiffness
+            else:
+                stops.append((index, support))
     fixed.setflags(write=False)
-    return fixed, frozen(spring)
+    return fixed, frozen(spring), _stops(stops) if stops else NO_STOPS
+
+
+def _stops(found: list[tuple[int, StopSupport]]) -> Stops:
+    joint = np.array([index for index, _ in found], dtype=np.intp)
+    joint.setflags(write=False)
+    return Stops(
+        joint=joint,
+        side=_array(1.0 if stop.side == "plus" else -1.0 for _, stop in found),
+        clearance=_array(stop.clearance for _, stop in found),
+        stiffness=_array(_stiffness_of(stop) for _, stop in found),
+    )
+
+
+def _stiffness_of(stop: StopSupport) -> float:
+    return np.inf if isinstance(stop.stiffness, UnsetType) else stop.stiffness
 
 
 def pack_loads(project: Project, states: tuple[State, ...]) -> Loads:

@@ -16,10 +16,12 @@ from solver.arrays import FloatArray, IntArray, frozen
 from solver.bonded import self_stress
 from solver.bound import FLOOR, Bound, displacement_share, field_share, joint_roundings, joint_share
 from solver.chain import Chain, Loads, Where
+from solver.closing import CLOSED
 from solver.condense import ClosedForm, Condensation, Condensed, Stacked
 from solver.errors import Cancelled
-from solver.joints import JointSystem, held, largest_load, spring_force, unbalanced
+from solver.joints import largest_load, spring_force, taken, unbalanced
 from solver.mesh import Mesh, block
+from solver.patterns import Group, patterns
 from solver.solution import Solution
 
 CLOSED_BLOCK = 4096
@@ -65,48 +67,63 @@ class Pass:
     def __init__(self, chain: Chain, loads: Loads, mesh: Mesh, cancelled: Callable[[], bool]) -> None:
         self.chain, self.loads, self.mesh = chain, loads, mesh
         parts = condensations(chain, loads, mesh)
-        self.held = held(chain, loads, mesh)
         self.condensed = joined(parts, loads.gravity.size, mesh.segment.size)
-        system = JointSystem(self.condensed, self.held)
-        self.ends = system.displacements()
+        self.patterns = patterns(chain, loads, mesh, self.condensed)
+        self.ends = self.patterns.ends
         if cancelled():
             raise Cancelled
         mean, stretch = self.ends.mean(), self.ends.stretch()
         self.fields = gathered(parts, mean, stretch, mesh)
         del parts  # a long member's are as large as its results: their memory serves the rest of the pass
-        self.leftover = unbalanced(self.held, self.ends, self.fields.start_force, self.fields.end_force)
-        self.bound = self._bound(system, joint_roundings(self.held, self.condensed, self.ends, mean, stretch))
+        self.leftover = self.patterns.each(self._leftover)
+        self.bound = self._bound(mean, stretch)
 
-    def _bound(self, system: JointSystem, roundings: FloatArray) -> Bound:
+    def _leftover(self, group: Group) -> FloatArray:
+        return unbalanced(group.held, group.ends, *self._end_forces(group))
+
+    def _end_forces(self, group: Group) -> tuple[FloatArray, FloatArray]:
+        return self.fields.start_force[group.states], self.fields.end_force[group.states]
+
+    def _bound(self, mean: FloatArray, stretch: FloatArray) -> Bound:
+        def leftover(group: Group) -> FloatArray:
+            at, rows = group.held, (mean[group.states], stretch[group.states])
+            roundings = joint_roundings(at, group.condensed, group.ends, *rows)
+            return joint_share(group.system, self.leftover[group.states], roundings)
+
         rounding = displacement_share(self.condensed, self.ends)
         rounding += field_share(self.fields.force_norm + self.fields.strain_norm)
         return Bound(
             discretisation=np.sqrt(self.fields.error.sum(axis=1)),
-            leftover=joint_share(system, self.leftover, roundings),
+            leftover=self.patterns.each(leftover),
             rounding=rounding,
             size=np.sqrt(self._size_squared()),
         )
 
     def _size_squared(self) -> FloatArray:
-        u, fields = self.ends.high, self.fields
-        floor = FLOOR * np.abs(u).max(axis=1) ** 2 * fields.stretching
-        springs = u[:, self.held.sprung] ** 2 @ self.held.spring
+        fields = self.fields
+        floor = FLOOR * np.abs(self.ends.high).max(axis=1) ** 2 * fields.stretching
+        springs = self.patterns.each(
+            lambda group: np.asarray(group.ends.high[:, group.held.sprung] ** 2 @ group.held.spring)
+        )
         return np.asarray(fields.norm + fields.strain_norm + springs + floor)
 
     def largest_force(self) -> FloatArray:
         """(m,) N, the largest of all forces that meet at a joint, and of what the loads do there."""
         found = (np.abs(self.fields.start_force).max(axis=1), np.abs(self.fields.end_force).max(axis=1))
-        return np.asarray(np.max([*found, largest_load(self.held, self.condensed)], axis=0))
+        loads = self.patterns.each(lambda group: largest_load(group.held, group.condensed))
+        return np.asarray(np.max([*found, loads], axis=0))
 
     def solution(self) -> Solution:
         """What the caller gets."""
         fields, mesh, joints = self.fields, self.mesh, self.mesh.joints()
         u = self.ends.high + self.ends.low
-        reaction = self._reactions()[:, joints]
-        spring_energy, work = self._spring_energy(u), np.einsum("mj,mj->m", self.held.force, u)
-        applied = fields.load + self.held.force.sum(axis=1)
+        reaction = self.patterns.each(self._reactions)[:, joints]
+        push, gap = self._contacts(u)
+        force = self.loads.joint_force
+        work = np.einsum("mj,mj->m", force, u[:, joints])
+        applied = fields.load + force.sum(axis=1)
         balance = applied + np.where(np.isnan(reaction), 0.0, reaction).sum(axis=1) + fields.bedding_force
-        strain = fields.strain_energy + spring_energy
+        strain = fields.strain_energy + self._spring_energy(u[:, joints], push)
         if self.chain.bonded is not None:
             strain = strain + self_stress(
                 self.chain.bonded,
@@ -123,6 +140,8 @@ class Pass:
             "force": fields.force,
             "joint_displacement": u[:, joints],
             "reaction": reaction,
+            "push": push,
+            "gap": gap,
             "loads": applied,
             "bedding": fields.bedding_force,
             "residual": balance,
@@ -134,20 +153,31 @@ class Pass:
         mesh.segment.setflags(write=False)
         return Solution(segment=mesh.segment, **{name: frozen(array) for name, array in arrays.items()})
 
-    def _reactions(self) -> FloatArray:
-        at, fields = self.held, self.fields
+    def _reactions(self, group: Group) -> FloatArray:
+        at = group.held
         reaction = np.full(at.force.shape, np.nan)
-        reaction[:, at.sprung] = spring_force(at, self.ends)
-        whole = -at.force
-        whole[:, :-1] -= fields.start_force
-        whole[:, 1:] += fields.end_force
-        reaction[:, at.fixed] = whole[:, at.fixed]
+        reaction[:, self.patterns.contacts.node] = 0.0
+        reaction[:, at.sprung] = spring_force(at, group.ends)
+        reaction[:, at.fixed] = taken(at, *self._end_forces(group))[:, at.fixed]
         return reaction
 
-    def _spring_energy(self, u: FloatArray) -> FloatArray:
-        at = self.held
-        shortening = u[:, at.sprung] - at.movement[:, at.sprung]
-        return np.asarray((shortening * shortening) @ at.spring / 2)
+    def _contacts(self, u: FloatArray) -> tuple[FloatArray, FloatArray]:
+        """(m, s) contact forces, 0 where next to nothing pushes, and the clearances that remain."""
+        found, fields = self.patterns, self.fields
+        if not found.contacts.node.size:
+            return np.zeros(found.closed.shape), np.zeros(found.closed.shape)
+        push = found.contact_forces(fields.start_force, fields.end_force)
+        largest = np.maximum(self.largest_force(), push.max(axis=1))
+        push = np.where(push > CLOSED * largest[:, None], push, 0.0)
+        gap = np.maximum(found.contacts.gap(u[:, found.contacts.node]), 0.0)
+        return push, np.where(push > 0.0, 0.0, gap)
+
+    def _spring_energy(self, u: FloatArray, push: FloatArray) -> FloatArray:
+        """(m,) of the springs and the closed stops, from the displacements (m, n + 1) of the joints."""
+        sprung = np.flatnonzero(self.chain.spring)
+        shortening = u[:, sprung] - self.loads.movement[:, sprung]
+        in_springs = (shortening * shortening) @ self.chain.spring[sprung] / 2
+        return np.asarray(in_springs + (push * push) @ (1.0 / self.chain.stops.stiffness) / 2)
 
     def _force_bound(self, joints: IntArray) -> FloatArray:
         flexibility = np.add.reduceat(self.fields.flexibility, joints[:-1])

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable
+from dataclasses import fields
 
 import numpy as np
 
@@ -39,20 +40,43 @@ def solve(
 ) -> Results:
     """The results of a well-formed project, for every combination and, with `cases`, every case alone.
 
-    `tolerance` is what every state's relative error bound must meet. `cancelled` is asked between stages.
+    A case alone that is beside the checks is left out where nothing holds the member in it: stops that its
+    loads do not press. `tolerance` is what every state's relative error bound must meet. `cancelled` is asked
+    between stages.
     Raises an `InputError` (`NotSolvable`, `StiffnessContrast`, `BoundNotMet`, `OutOfRange`) or `Cancelled`.
     """
     _refuse_unsolvable(project)
     _ask(cancelled)
     chain, loads, states = pack(project, cases=cases)
     _refuse_out_of_range(chain, states)
-    names = tuple(state.name for state in states)
-    solution = solve_axial(chain, loads, names=names, tolerance=tolerance, cancelled=cancelled)
+    try:
+        solution = _solved(chain, loads, states, tolerance, cancelled)
+    except NotSolvable as loose:
+        if any(states[index].checked for index in loose.states):
+            raise
+        states, loads = _without(states, loads, loose.states)
+        solution = _solved(chain, loads, states, tolerance, cancelled)
     _ask(cancelled)
     with np.errstate(all="ignore"):  # what overflows is found by its result
         results = _results(project, chain, loads, states, solution, cancelled)
     _refuse_overflow(results)
     return results
+
+
+def _solved(
+    chain: Chain, loads: Loads, states: tuple[State, ...], tolerance: float, cancelled: Callable[[], bool]
+) -> Solution:
+    names = tuple(state.name for state in states)
+    return solve_axial(chain, loads, names=names, tolerance=tolerance, cancelled=cancelled)
+
+
+def _without(
+    states: tuple[State, ...], loads: Loads, dropped: tuple[int, ...]
+) -> tuple[tuple[State, ...], Loads]:
+    """The states but those dropped, with their loads; checked states come first and keep their places."""
+    kept = [index for index in range(len(states)) if index not in dropped]
+    some = {field.name: frozen(getattr(loads, field.name)[kept]) for field in fields(loads)}
+    return tuple(states[index] for index in kept), Loads(**some)
 
 
 def _ask(cancelled: Callable[[], bool]) -> None:

@@ -15,7 +15,7 @@ from itertools import chain
 from msgspec import UNSET
 
 from solver.faults import Fault, Place, place_text
-from solver.model import AreaSection, LoadCase, Project, StopSupport, TubeSection, end_of, supports_of
+from solver.model import AreaSection, LoadCase, Project, TubeSection, end_of, supports_of
 from solver.nearest import nearest
 from solver.readable import duplicates, names, records, text
 from solver.rules_of_companions import companion_faults, companion_segments, length_faults
@@ -37,8 +37,8 @@ def faults(project: Project) -> tuple[Fault, ...]:
 
 
 def unsolvable(project: Project) -> tuple[Fault, ...]:
-    """What keeps a well-formed project from being solved: not held, a stop, a movement without support."""
-    rules = (_hold_faults, _stop_faults, _movement_faults, length_faults, _companion_faults)
+    """What keeps a well-formed project from being solved: not held, a movement without support, lengths."""
+    rules = (_hold_faults, _movement_faults, length_faults, _companion_faults)
     return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
@@ -223,12 +223,6 @@ def _hold_faults(project: Project) -> Iterator[Fault]:
     bedded = any(s.bedding > 0 or end_of(s.bedding, s.bedding_end) > 0 for s in project.segments)
     if not (supported or bedded):
         yield Fault("joints", "not_held")
-
-
-def _stop_faults(project: Project) -> Iterator[Fault]:
-    for index, joint in enumerate(project.joints):
-        if any(isinstance(support, StopSupport) for support in supports_of(joint)):
-            yield Fault(place_text(("joints", index, "support")), "stop_not_yet", {"joint": joint.mark})
 
 
 def _companion_faults(project: Project) -> Iterator[Fault]:

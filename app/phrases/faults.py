@@ -100,9 +100,9 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("nothing holds the member along its axis"),
         later("give a joint a fixed or a spring support, or a segment a bedding"),
     ),
-    "stop_not_yet": (
-        later("joint {joint} has a stop, which this version keeps but does not solve yet"),
-        later("nothing is computed while it is there"),
+    "not_pressed": (
+        later("only stops could hold the member, and the loads do not press it against them"),
+        later("give a joint a fixed or a spring support, or a stop on the side to which the loads push"),
     ),
     "movement_without_support": (
         later("joint {joint} is moved by {case} but has no support to move"),

@@ -75,7 +75,7 @@ FACTS: dict[str, dict[str, object]] = {
     "repeats": {"count": 0, "most": 200},
     "several_records": {"count": 2},
     "not_held": {},
-    "stop_not_yet": {"joint": "2"},
+    "not_pressed": {},
     "movement_without_support": {"joint": "1", "case": "Service"},
     "companion_length": {
         "companion": "S",

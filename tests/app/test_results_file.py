@@ -143,3 +143,19 @@ def names_in(project: Project) -> list[str]:
 def test_a_zero_has_no_sign() -> None:
     text = json.dumps(solved(member([Part(1.0, area(1e-3))], {0: FixedSupport()}))[1])
     assert "-0.0" not in text
+
+
+def test_contacts_stand_at_their_joint_as_one_or_as_a_list():
+    document = example()
+    document["joints"][1] = {"mark": "1", "support": {"kind": "stop", "side": "plus", "clearance": 0.5}}
+    soft = {"kind": "stop", "side": "minus", "clearance": 0.25, "stiffness": 1e8}
+    document["joints"][2] = {"mark": "2", "supports": [{"kind": "spring", "stiffness": 4e7}, soft]}
+    _results, file = solved(parse(encoded(document)))
+    joints = file["combinations"][0]["joints"]
+    assert "contact" not in joints[0]
+    assert joints[1]["contact"] == "open"
+    assert joints[1]["clearance"] == pytest.approx(0.5, rel=0.05)
+    assert joints[1]["reaction"] == 0.0
+    assert joints[2]["contact"] == [None, "open"]
+    assert joints[2]["clearance"] == [None, pytest.approx(0.25, rel=0.05)]
+    assert joints[2]["support_forces"] == [joints[2]["reaction"], 0.0]

@@ -124,7 +124,7 @@ def test_total_load_is_what_adding_the_records_by_hand_gives(project):
 @given(projects())
 def test_arrays_cannot_be_written_to(project):
     chain, loads, _ = pack(project)
-    for record in (chain, loads):
+    for record in (chain, chain.stops, loads):
         values = [getattr(record, name) for name in record.__slots__]
         arrays = [value for value in values if isinstance(value, np.ndarray)]
         assert not any(array.flags.writeable for array in arrays)

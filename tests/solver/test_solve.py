@@ -12,7 +12,7 @@ from msgspec.structs import replace
 from numpy.testing import assert_allclose
 
 from solver.errors import Cancelled, InputError, NotSolvable, OutOfRange
-from solver.model import Combination, FixedSupport, Joint, JointLoad, StopSupport
+from solver.model import Combination, FixedSupport, Joint, JointLoad, SegmentLoad, StopSupport
 from solver.solve import solve
 from tests.members import Part, area, case, member, round_bar
 from tests.strategies import projects
@@ -59,11 +59,27 @@ def test_a_movement_without_support_concerns_the_states_that_use_its_case():
     assert refused.value.combinations == ("Moved",)
 
 
-def test_a_stop_is_refused_for_now():
-    project = member(PARTS, {**HELD, 2: StopSupport(side="plus", clearance=1e-3)}, [PULL])
+def test_stops_that_the_loads_do_not_press_are_refused_with_the_combination():
+    away = Combination("Away", {"Pull": -1.0})
+    project = member(
+        PARTS, {2: StopSupport(side="plus", clearance=1e-3)}, [PULL], [Combination("On", {"Pull": 1.0}), away]
+    )
     with pytest.raises(NotSolvable) as refused:
-        solve(project)
-    assert "stop_not_yet" in {fault.rule for fault in refused.value.faults}
+        solve(project, cases=False)
+    assert {fault.rule for fault in refused.value.faults} == {"not_pressed"}
+    assert refused.value.combinations == ("Away",)
+
+
+def test_a_case_alone_that_does_not_press_the_stops_is_left_out_beside_the_checks():
+    cold = case("Cold", on_segments=[SegmentLoad("A", lack_of_fit=-1e-4)])
+    both = Combination("Both", {"Pull": 1.0, "Cold": 1.0})
+    stop = {2: StopSupport(side="plus", clearance=1e-3)}
+    results = solve(member(PARTS, stop, [PULL, cold], [both]))
+    assert [state.name for state in results.states] == ["Both", "Pull"]
+    assert results.loads.gravity.shape == (2,)
+    with pytest.raises(NotSolvable) as refused:
+        solve(member(PARTS, stop, [PULL, cold]))
+    assert refused.value.combinations == ("Cold",)
 
 
 @pytest.mark.parametrize("size", [1e-170, 1e160])

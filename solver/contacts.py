@@ -1,0 +1,133 @@
+"""The contacts of a member on one mesh: one-sided supports with play, their gaps and their forces.
+
+A contact blocks motion of its node beyond the clearance to its side; s contacts, m states. Its force counts
+positive where it pushes, so that the member feels −side · force along +x. Some never enter the search for the
+closed ones: at a joint that is held anyway nothing moves against them. And two rigid ones that face each
+other at one joint without any clearance hold it like a fixed support: the one that pushes has its reaction.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, fields, replace
+
+import numpy as np
+
+from solver.arrays import BoolArray, FloatArray, IntArray
+from solver.chain import Chain, Loads, Stops, Where
+from solver.joints import Held
+from solver.mesh import Mesh
+
+
+@dataclass(frozen=True, slots=True)
+class Contacts:
+    """One-sided supports as the ends of the elements see them."""
+
+    node: IntArray  # (s,) the end of an element
+    side: FloatArray  # (s,) ±1
+    clearance: FloatArray  # (s,)
+    stiffness: FloatArray  # (s,) infinite for a rigid one
+    spring: FloatArray  # (s,) N/m, of the spring beside it at the joint
+    movement: FloatArray  # (m, s) what the play is measured from
+    live: BoolArray  # (s,) False where something else holds the node first
+    rigid: BoolArray  # (s,)
+    facing: BoolArray  # (s,) one of a rigid pair without play
+
+    def of(self, states: Where) -> Contacts:
+        """The same contacts in some of the states."""
+        return replace(self, movement=self.movement[states])
+
+    def only(self, some: IntArray) -> Contacts:
+        """Some of the contacts."""
+        movement = self.movement[:, some]
+        rest = {name.name: getattr(self, name.name)[some] for name in fields(self) if name.name != "movement"}
+        return Contacts(movement=movement, **rest)
+
+    def rest(self) -> FloatArray:
+        """(m, s) where the nodes touch."""
+        return np.asarray(self.movement + self.side * self.clearance)
+
+    def gap(self, u: FloatArray) -> FloatArray:
+        """(m, s) the clearance that remains where the nodes move by u (m, s); below 0 where pressed in."""
+        return np.asarray(self.clearance - self.side * (u - self.movement))
+
+    def forces(self, closed: BoolArray, gap: FloatArray, reaction: FloatArray) -> FloatArray:
+        """(m, s) what each contact pushes with, where it is `closed` (m, s); 0 where it is not.
+
+        `reaction` is what fixed and one-sided supports together exert at the contact's node, along +x.
+        """
+        sprung = np.where(closed, np.where(self.rigid, 0.0, self.stiffness) * -gap, 0.0)
+        beside = (self.side * sprung) @ (self.node[:, None] == self.node)
+        left = -self.side * (reaction + beside)
+        force = np.where(closed & self.rigid, left, sprung)
+        return np.where(self.facing, np.maximum(left, 0.0), force)
+
+
+def contacts_of(chain: Chain, loads: Loads, mesh: Mesh) -> Contacts:
+    """The stops as contacts."""
+    stops = chain.stops
+    facing = facing_pairs(stops) & ~chain.fixed[stops.joint]
+    held = chain.fixed.copy()
+    held[stops.joint[facing]] = True
+    return Contacts(
+        node=mesh.joints()[stops.joint],
+        side=stops.side,
+        clearance=stops.clearance,
+        stiffness=stops.stiffness,
+        spring=chain.spring[stops.joint],
+        movement=loads.movement[:, stops.joint],
+        live=~held[stops.joint] & ~_behind_another(stops),
+        rigid=np.isinf(stops.stiffness),
+        facing=facing,
+    )
+
+
+def facing_pairs(stops: Stops) -> BoolArray:
+    """(s,) the first rigid stop without clearance of each side, at joints where both sides have one."""
+    tight = np.isinf(stops.stiffness) & (stops.clearance == 0.0)
+    found = np.zeros(tight.shape, dtype=np.bool_)
+    plus = {int(stops.joint[i]): i for i in np.flatnonzero(tight & (stops.side > 0))[::-1]}
+    minus = {int(stops.joint[i]): i for i in np.flatnonzero(tight & (stops.side < 0))[::-1]}
+    for joint in plus.keys() & minus.keys():
+        found[[plus[joint], minus[joint]]] = True
+    return found
+
+
+def _behind_another(stops: Stops) -> BoolArray:
+    """(s,) those that another one at the same joint always meets first: a rigid one of the same side."""
+    number = np.arange(stops.joint.size)
+    alike = (stops.joint[:, None] == stops.joint) & (stops.side[:, None] == stops.side)
+    nearer = stops.clearance[:, None] > stops.clearance
+    first = (stops.clearance[:, None] == stops.clearance) & (number[:, None] > number)
+    same_kind = first & np.isinf(stops.stiffness[:, None])
+    return np.asarray((alike & np.isinf(stops.stiffness) & (nearer | same_kind)).any(axis=1))
+
+
+def held_by(base: Held, contacts: Contacts, closed: BoolArray) -> Held:
+    """The supports with the `closed` (s,) contacts as supports that hold both ways; states as in both."""
+    shut = np.flatnonzero(closed)
+    if not shut.size:
+        return base
+    rest, movement = contacts.rest(), base.movement.copy()
+    rigid, soft = shut[contacts.rigid[shut]], shut[~contacts.rigid[shut]]
+    held = contacts.node[rigid]
+    sprung, spring = base.sprung, base.spring
+    if soft.size:
+        sprung, spring, meant = _together(base, contacts, soft, rest)
+        movement[:, sprung] = meant
+    movement[:, held] = rest[:, rigid]
+    fixed = np.append(base.fixed, held)
+    if held.size:
+        free = ~np.isin(sprung, held)
+        sprung, spring = sprung[free], spring[free]
+    return Held(fixed, sprung, spring, base.force, movement)
+
+
+def _together(
+    base: Held, contacts: Contacts, soft: IntArray, rest: FloatArray
+) -> tuple[IntArray, FloatArray, FloatArray]:
+    """Springs and closed stops with stiffness as one spring a node: which, how stiff, where at rest."""
+    sprung, which = np.unique(np.append(base.sprung, contacts.node[soft]), return_inverse=True)
+    each = np.append(base.spring, contacts.stiffness[soft])
+    spring = np.bincount(which, each, sprung.size).astype(np.float64)
+    wanted = each * np.concatenate([base.movement[:, base.sprung], rest[:, soft]], axis=1)
+    return sprung, spring, (wanted @ (which[:, None] == np.arange(sprung.size))) / spring
