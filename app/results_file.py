@@ -28,6 +28,7 @@ _CHECK_KEYS = {"start": "from", "end": "to"}
 _CHECK_FIELDS = (
     "check", "combination", "segment", "joint", "start", "end", "position",
     "value", "limit", "utilisation", "status", "reason",
+    "factor", "nominal", "nominal_to", "amplitude", "mean", "ultimate",
 )  # fmt: skip
 # of a segment, all of them arrays by state and segment
 _SEGMENT_FIELDS = (
@@ -54,10 +55,12 @@ def results_json(results: Results) -> Values:
 
 
 def _check(check: Check) -> Values:
-    """Only the keys that apply to it."""
+    """Only the keys that apply to it; fatigue is of two combinations, `from` and `to`."""
     values = {_CHECK_KEYS.get(name, name): getattr(check, name) for name in _CHECK_FIELDS}
     if check.reason is not None:
-        values["reason"] = reason_text(check.reason)
+        values["reason"] = reason_text(check.reason, check.ratio)
+    if check.between is not None:
+        values |= {"combination": None, "from": check.between[0], "to": check.between[1]}
     return {key: _plain(value) for key, value in values.items() if value is not None}
 
 

@@ -14,15 +14,15 @@ from app.columns import one_line, table
 from app.cures import Cures
 from app.findings import Findings, StateBooks, findings
 from app.phrases import caution, check_sentence
-from app.phrases.checks import SUBJECTS
+from app.phrases.checks import subject_text
 from app.phrases.cures import cures_sentences, subject_words
+from app.phrases.fatigue import swing_text
 from app.units import utilisation_text
 from app.words import tr
-from solver.checks import Check
+from solver.checks import STRESSES, Check
 from solver.model import Project, UnitSystemName
 from solver.results import Results
 
-STRESSES = ("tension", "compression")
 NOT_MADE = "?"  # beside a utilisation: another check of the same thing could not be made
 NOTHING = "–"
 
@@ -41,6 +41,7 @@ def report(
         verdict(results, found, system),
         *utilisations(results),
         *limits(results),
+        *fatigue(results),
         *cures(cured, unsought),
         forces(found.books),
         remarks(found),
@@ -74,11 +75,23 @@ def utilisations(results: Results) -> Iterator[str]:
 
 def limits(results: Results) -> Iterator[str]:
     """The utilisation of every other limit, a column for each combination."""
-    others = [check for check in results.checks if check.check not in STRESSES]
+    others = [check for check in results.checks if check.check not in (*STRESSES, "fatigue")]
     if others:
-        rows = by_combination(results, others, subject)
+        rows = by_combination(results, others, subject_text)
         head = [tr("Utilisation of limits"), *checked(results)]
         yield table(head, [[name, *row] for name, row in rows.items()])
+
+
+def fatigue(results: Results) -> Iterator[str]:
+    """The utilisation by fatigue of every segment and shoulder, a column for each pair of combinations."""
+    swings = [check for check in results.checks if check.between is not None]
+    if swings:
+        names = list(dict.fromkeys(check.between for check in swings))
+        groups: defaultdict[str, defaultdict[object, list[Check]]] = defaultdict(lambda: defaultdict(list))
+        for check in swings:
+            groups[subject_text(check)][check.between].append(check)
+        head = [tr("Utilisation by fatigue"), *(swing_text(name) for name in names if name is not None)]
+        yield table(head, [[row, *(cell(group[name]) for name in names)] for row, group in groups.items()])
 
 
 def cures(cured: Sequence[Cures], unsought: str) -> Iterator[str]:
@@ -96,11 +109,6 @@ def _cure_lines(item: Cures) -> Iterator[str]:
             yield sentence  # which names them
         else:
             yield tr("{subject}: {sentence}").format(subject=subject_words(item.subject), sentence=sentence)
-
-
-def subject(check: Check) -> str:
-    """What a limit is of, in a few words."""
-    return tr(SUBJECTS[check.check]).format(joint=check.joint, start=check.start, end=check.end)
 
 
 def by_combination(

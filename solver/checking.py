@@ -1,7 +1,8 @@
 """The making of checks: one record for each comparison, in the contract's order, and the verdict over them.
 
-By combination, then along the chain (tension before compression), then the limits on displacement, relative
-displacement and reaction. The numbers come compared from `solver.allowables`; here they get their names.
+By combination, then along the chain (tension before compression), then the peak stresses at shoulders, then
+the limits on displacement, relative displacement and reaction; fatigue, which is of two combinations, comes
+last. The numbers of stresses come compared from `solver.allowables`; here they get their names.
 """
 
 from __future__ import annotations
@@ -16,8 +17,10 @@ from msgspec import Struct
 
 from solver.allowables import Side, StressChecks
 from solver.arrays import FloatArray
-from solver.checks import PASS_MARGIN, Check, Reason, Status, Verdict
+from solver.checks import Check, Reason, Verdict, status_of
+from solver.fatigue import FatigueChecker
 from solver.model import Project, supports_of
+from solver.peaks import PeakChecker
 from solver.results import PartResults, State
 from solver.solution import Solution
 
@@ -36,20 +39,24 @@ class Checker:
     solution: Solution
     position: FloatArray
     stress: StressChecks  # by segment, or by part where there are `parts`
+    peaks: PeakChecker
+    fatigue: FatigueChecker
     parts: PartResults | None = None
 
     def checks(self) -> tuple[Check, ...]:
         """All checks of the checked states, in order."""
         joints = {joint.mark: index for index, joint in enumerate(self.project.joints)}
-        return tuple(
+        of_states = (
             check
             for index, state in enumerate(self.states)
             if state.checked
             for check in self._of_state(index, state.name, joints)
         )
+        return (*of_states, *self.fatigue.checks())
 
     def _of_state(self, index: int, name: str, joints: dict[str, int]) -> Iterator[Check]:
         yield from self._stresses(index, name)
+        yield from self.peaks.checks(index, self.states[index])
         yield from self._displacements(index, name, joints)
         yield from self._relatives(index, name, joints)
         yield from self._reactions(index, name, joints)
@@ -82,7 +89,7 @@ class Checker:
             yield Check(
                 check="relative",
                 combination=name,
-                status=_status(utilisation),
+                status=status_of(utilisation),
                 start=limit.start,
                 end=limit.end,
                 value=value,
@@ -109,7 +116,7 @@ class Checker:
         return Check(
             check=kind,
             combination=name,
-            status=_status(utilisation),
+            status=status_of(utilisation),
             joint=self.project.joints[place].mark,
             position=float(self.position[place]),
             value=value,
@@ -151,7 +158,7 @@ class _Compared(Struct, frozen=True):
         return Check(
             check=kind,
             combination=name,
-            status=_status(self.utilisation),
+            status=status_of(self.utilisation),
             segment=of.segment,
             part=of.part,
             material=of.material,
@@ -176,10 +183,6 @@ def _along_the_chain(project: Project, parts: PartResults) -> tuple[list[_Subjec
         named = (int(parts.number[part]), parts.material[part]) if segment.bonded else (None, None)
         subjects.append(_Subject(segment.mark, *named))
     return subjects, order
-
-
-def _status(utilisation: float) -> Status:
-    return "pass" if utilisation <= 1.0 + PASS_MARGIN else "fail"
 
 
 def verdict_of(checks: tuple[Check, ...]) -> Verdict:

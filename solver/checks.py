@@ -6,14 +6,30 @@ There are as many as segments times combinations, hence a struct, which is made 
 
 from __future__ import annotations
 
-from typing import Literal, TypeAlias
+from typing import Final, Literal, TypeAlias
 
 from msgspec import Struct
 
-CheckKind: TypeAlias = Literal["tension", "compression", "displacement", "relative", "reaction"]
+CheckKind: TypeAlias = Literal[
+    "tension", "compression", "peak", "displacement", "relative", "reaction", "fatigue"
+]
 Status: TypeAlias = Literal["pass", "fail", "not_made"]
 Verdict: TypeAlias = Literal["pass", "fail", "incomplete"]
-Reason: TypeAlias = Literal["no_allowable_tension", "no_allowable_compression", "no_support"]
+Reason: TypeAlias = Literal[
+    "no_allowable_tension",
+    "no_allowable_compression",
+    "no_support",
+    "no_allowable_peak",
+    "no_endurance",
+    "shoulder_at_end",
+    "shoulder_no_step",
+    "shoulder_not_round",
+    "shoulder_out_of_range",  # with `ratio`
+    "shoulder_bonded",
+    "fatigue_companion",
+]
+
+STRESSES: Final = ("tension", "compression")  # the checks of stress by segment
 
 PASS_MARGIN = 1e-9  # a utilisation up to 1 + this passes: room for rounding, not for judgement
 NO_STRESS = 1e-9  # |σ| up to this part of the state's largest |σ| has no sign and is not checked
@@ -26,6 +42,11 @@ class Check(Struct, frozen=True):
 
     `position` is in m along the member (None for `relative`), `value` and `limit` are in SI and never
     negative except that `value` of a stress, displacement or reaction keeps its sign. None where not made.
+
+    `peak` is of a shoulder: `joint`, and `segment` for its smaller side. `fatigue` is of a segment, or of a
+    shoulder alike; `between` are the combinations between which the stress swings (`combination` is the
+    second), its `value` is the amplitude and its `limit` the one endured without a mean, so that
+    `utilisation` is more than their ratio where there is a tensile `mean`.
     """
 
     check: CheckKind
@@ -42,3 +63,17 @@ class Check(Struct, frozen=True):
     limit: float | None = None
     utilisation: float | None = None
     reason: Reason | None = None
+    # of shoulders and fatigue alone
+    between: tuple[str, str] | None = None  # the file's `from` and `to`
+    factor: float | None = None  # Kt
+    nominal: float | None = None  # the stress that Kt raises; of fatigue in the first combination
+    nominal_to: float | None = None  # of fatigue in the second one
+    amplitude: float | None = None
+    mean: float | None = None
+    ultimate: float | None = None  # the mean endured without an amplitude
+    ratio: float | None = None  # h/r, where that is why a check was not made
+
+
+def status_of(utilisation: float) -> Status:
+    """Whether a check with this utilisation passes."""
+    return "pass" if utilisation <= 1.0 + PASS_MARGIN else "fail"

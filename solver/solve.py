@@ -16,6 +16,7 @@ from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
 from solver.errors import Cancelled, NotSolvable, OutOfRange
 from solver.extremes import ExtremeFinder, Extremes
+from solver.fatigue import FatigueChecker
 from solver.faults import Fault
 from solver.model import Project
 from solver.packing import pack, states_of
@@ -26,7 +27,9 @@ from solver.part_results import (
     part_results,
     utilisation_of_segments,
 )
+from solver.peaks import PeakChecker
 from solver.results import Results, SegmentResults, State
+from solver.shoulders import notches
 from solver.solution import Solution
 from solver.validation import unsolvable
 
@@ -102,7 +105,10 @@ def _results(
     stress_checks = check_stresses(stress, zero, limits)
     _ask(cancelled)
     parts = part_results(project, chain.bonded, stress, stress_checks, limits)
-    checks = Checker(project, states, solution, position, stress_checks, parts).checks()
+    shoulders = notches(project)
+    peaks = PeakChecker(project, position, stress, shoulders)
+    fatigue = FatigueChecker(project, chain, loads, states, solution, position, shoulders)
+    checks = Checker(project, states, solution, position, stress_checks, peaks, fatigue, parts).checks()
     segment_mass = frozen(_segment_mass(chain))
     return Results(
         project=project,

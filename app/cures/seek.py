@@ -25,6 +25,7 @@ from solver.model import Project
 from solver.results import Results
 from solver.solve import solve
 
+UNSOUGHT: Final = ("peak", "fatigue", "fatigue_joint")
 MOST_SPRINGS: Final = 3
 MOST_SECTIONS: Final = 3
 MOST_CURES: Final = 2
@@ -64,7 +65,12 @@ def is_small(results: Results) -> bool:
 
 
 def seek(results: Results, subject: Subject, cancelled: Callable[[], bool] = never) -> Cures:
-    """The cures of a subject that fails in these results. Raises Cancelled."""
+    """The cures of a subject that fails in these results. Raises Cancelled.
+
+    Of peak stresses and fatigue none is sought: a radius or a surface helps there, not another size.
+    """
+    if subject.kind in UNSOUGHT:
+        return Cures(subject, ())
     trials = _Trials(results, (subject,), cancelled)
     alone = _nearest_first(trials, _knobs(results, subject))
     alike = _fail_alike(results, subject)

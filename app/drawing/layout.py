@@ -13,6 +13,7 @@ from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
 from app.drawing.rows import Wishes, foot_of, legend_below, no_rows, round_factor, rows_in, said_of, thickest
 from app.drawing.shapes import LOADS, Box, Part, Picture, Target, Text
+from app.drawing.shoulders import draw_shoulders
 from app.drawing.sketch import Sketch
 from app.drawing.supports import draw_supports
 from app.units import format_value
@@ -49,6 +50,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     draw_body(sketch)
     if frame.detail.factor:
         _draw_scales(sketch)
+    draw_shoulders(sketch)
     draw_supports(sketch, wishes.hanging)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
@@ -63,7 +65,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
 def _aim_at_labels(picture: Picture) -> None:
     """What acts is pointed at by its label as well; some of it is said in words only."""
     for text in picture.texts:
-        if text.part is not None and text.part.kind in LOADS | {"bedding", "support"}:
+        if text.part is not None and text.part.kind in LOADS | {"bedding", "support", "shoulder"}:
             picture.targets.append(Target(text.box, text.part))
 
 

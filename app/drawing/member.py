@@ -10,6 +10,7 @@ from app.shown import Shown
 from solver.chain import Loads
 from solver.model import Project, UnitSystemName
 from solver.packing import pack_loads, states_of
+from solver.shoulders import Notch, notches
 
 
 @dataclass(frozen=True, slots=True)
@@ -19,13 +20,14 @@ class Member:
     project: Project
     position: tuple[float, ...]
     loads: Loads | None
+    shoulders: tuple[Notch, ...] = ()
 
     @classmethod
     def of(cls, project: Project, shown: Shown) -> Member:
         """The member with the loads of what is shown."""
         lengths = [segment.length for segment in project.segments]
         position = tuple(map(float, np.concatenate([[0.0], np.cumsum(lengths)])))
-        return cls(project, position, _loads(project, shown))
+        return cls(project, position, _loads(project, shown), notches(project))
 
     @property
     def system(self) -> UnitSystemName:

@@ -14,6 +14,7 @@ from app.drawing.frame import Frame
 from app.drawing.loads import GRAVITY_RANK, bracketed, lies_outside, load_wishes, no_loads_text
 from app.drawing.member import Member
 from app.drawing.placing import STACKED, TIGHT, Span, Wish, fits
+from app.drawing.shoulders import shoulder_wishes
 from app.drawing.sketch import Rows, Sketch
 from app.drawing.supports import hanging_wishes, hangs, support_of
 from app.drawing.words import not_to_scale
@@ -50,7 +51,7 @@ class Wishes:
             load_wishes(sketch),
             length_wishes(sketch),
             section_wishes(sketch),
-            hanging_wishes(sketch),
+            [*hanging_wishes(sketch), *shoulder_wishes(sketch)],
             joint_wishes(sketch),
         )
 

@@ -27,6 +27,7 @@ PartKind: TypeAlias = Literal[
     "bedding",
     "joint",
     "support",
+    "shoulder",
     "force",
     "movement",
     "gravity",
@@ -35,7 +36,7 @@ PartKind: TypeAlias = Literal[
 OF_SEGMENT: frozenset[PartKind] = frozenset(
     ("segment", "mark", "length", "section", "distributed", "distributed_end", "warmth", "fit", "bedding")
 )
-OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "force", "movement"))
+OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "shoulder", "force", "movement"))
 LOADS: frozenset[PartKind] = frozenset(  # of the shown state
     ("distributed", "distributed_end", "warmth", "fit", "force", "movement", "gravity")
 )

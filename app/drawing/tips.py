@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from app.drawing.member import Member
 from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Part
+from app.drawing.shoulders import shoulder_label
 from app.drawing.words import (
     bedding_text,
     distributed_text,
@@ -64,7 +65,8 @@ def _joint_tip(member: Member, index: int) -> str:
     )
     supports = supports_of(joint)
     held = supports_text(supports, member.system) if supports else ""
-    return _lines(first, held, *_on_joint(member, index))
+    shoulders = (shoulder_label(notch, member.project) for notch in member.shoulders if notch.joint == index)
+    return _lines(first, held, next(shoulders, ""), *_on_joint(member, index))
 
 
 def _on_joint(member: Member, index: int) -> tuple[str, ...]:

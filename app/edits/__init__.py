@@ -3,7 +3,7 @@
 An edit that would give anything else raises `EditError` with the faults, and nothing changes.
 """
 
-from app.edits.cases import remove_case, set_factor
+from app.edits.cases import remove_case, remove_combinations, set_factor
 from app.edits.cells import add_record, remove_records, set_value, value_at
 from app.edits.checking import EditError
 from app.edits.companions import (
@@ -53,6 +53,7 @@ __all__ = [
     "moving_joints",
     "number_joints",
     "remove_case",
+    "remove_combinations",
     "remove_companion_segments",
     "remove_companions",
     "remove_records",

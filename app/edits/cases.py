@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+
 from msgspec import UnsetType, structs
 
 from app.edits.cells import set_value
@@ -20,6 +22,14 @@ def remove_case(project: Project, name: str) -> Project:
     cases = kept(project.load_cases, lambda case: case.name != name)
     combinations = mapped(project.combinations, without)
     return consistent(structs.replace(project, load_cases=cases, combinations=combinations))
+
+
+def remove_combinations(project: Project, indices: Iterable[int]) -> Project:
+    """The project without these combinations, and without the ranges of fatigue from or to one of them."""
+    names = {project.combinations[index].name for index in indices}
+    combinations = kept(project.combinations, lambda combination: combination.name not in names)
+    fatigue = kept(project.fatigue, lambda swing: not {swing.start, swing.end} & names)
+    return consistent(structs.replace(project, combinations=combinations, fatigue=fatigue))
 
 
 def set_factor(project: Project, combination: str, case: str, factor: float | UnsetType) -> Project:

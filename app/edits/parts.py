@@ -70,7 +70,7 @@ def join_segments(project: Project, first: int, last: int) -> Project:
     """The project with the segments `first` to `last` made one, marked as the first.
 
     EditError, naming every hindrance, where they differ in material or shape or where a joint between them
-    has a support, a load or a limit.
+    has a support, a load, a shoulder or a limit.
     """
     faults = tuple(_hindrances(project, first, last))
     if faults:
@@ -97,6 +97,8 @@ def carried(project: Project, index: int) -> Iterator[str]:
     joint = project.joints[index]
     if supports_of(joint):
         yield "support"
+    if joint.shoulder:
+        yield "shoulder"
     if any(load.joint == joint.mark for case in project.load_cases for load in case.joint_loads):
         yield "load"
     if any(getattr(x, end) == joint.mark for key, end in LIMIT_JOINTS for x in getattr(project.limits, key)):

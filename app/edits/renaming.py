@@ -110,9 +110,10 @@ def rename_case(project: Project, old: str, new: str) -> Project:
 
 
 def rename_combination(project: Project, old: str, new: str) -> Project:
-    """The project with the combination `old` called `new`."""
+    """The project with the combination `old` called `new`, in the ranges of fatigue as well."""
     combinations = _renamed(project.combinations, "name", old, new)
-    return checked(structs.replace(project, combinations=combinations), project)
+    fatigue = _renamed(_renamed(project.fatigue, "start", old, new), "end", old, new)
+    return checked(structs.replace(project, combinations=combinations, fatigue=fatigue), project)
 
 
 RENAMERS: Mapping[tuple[str | int, str | int], _Renamer] = {

@@ -14,6 +14,8 @@ from solver.model import Project
 _ALLOWABLES: Final[dict[Reason, str]] = {
     "no_allowable_tension": "allowable_tension",
     "no_allowable_compression": "allowable_compression",
+    "no_allowable_peak": "allowable_peak",
+    "no_endurance": "endured_amplitude",
 }
 
 
@@ -24,7 +26,9 @@ def cell_of_finding(of: Subject | NotMade, project: Project) -> Cell | None:
 
 def _of_subject(subject: Subject, project: Project) -> Cell | None:
     marks = subject.marks
-    if subject.kind == "stress":
+    if subject.kind in ("peak", "fatigue_joint"):
+        return _cell("joints", "shoulder", project.joints, lambda joint: (joint.mark,) == marks)
+    if subject.kind in ("stress", "fatigue"):
         return _cell("segments", "section", project.segments, lambda segment: (segment.mark,) == marks)
     limits = getattr(project.limits, subject.kind)
     if subject.kind == "relative":
@@ -36,7 +40,8 @@ def _of_missing(missing: NotMade, project: Project) -> Cell | None:
     if missing.reason in _ALLOWABLES:
         column = _ALLOWABLES[missing.reason]
         return _cell("materials", column, project.materials, lambda found: found.name == missing.material)
-    return Cell("joints", missing.joints[0], "support") if missing.joints else None
+    column = "support" if missing.reason == "no_support" else "shoulder"
+    return Cell("joints", missing.joints[0], column) if missing.joints else None
 
 
 def _cell(table: str, column: str, records: Iterable[object], is_it: Callable[..., bool]) -> Cell | None:

@@ -7,29 +7,38 @@ from collections.abc import Iterable, Mapping, Sequence
 from app.findings.listing import listed
 from app.findings.records import LimitFinding, NotMade
 from app.findings.subjects import subject_of, worst_first
-from app.phrases.checks import NOT_MADE, check_sentence, remedy_text
+from app.phrases.checks import NOT_MADE, check_sentence, remedy_text, state_text, why_text
+from app.phrases.shoulders import not_made_words
 from app.units import utilisation_text
 from app.words import tr
-from solver.checks import Check, Reason
+from solver.checks import STRESSES, Check, Reason
 from solver.model import Project, UnitSystemName
 from solver.results import Results
+
+_Group = tuple[Reason, str, str, float | None]  # reason, material, kind, and how far out of range
 
 
 def limit_findings(
     results: Results, system: UnitSystemName, checks: Iterable[Check]
 ) -> tuple[LimitFinding, ...]:
-    """One finding for each limit that was checked among `checks` of the results."""
-    places = {joint.mark: index for index, joint in enumerate(results.project.joints)}
-    worst = worst_first(check for check in checks if check.segment is None)
-    return tuple(_finding(check, places, system) for check in worst)
+    """One finding for each limit, shoulder and place of fatigue checked among `checks` of the results."""
+    project = results.project
+    joints = {joint.mark: index for index, joint in enumerate(project.joints)}
+    segments = {segment.mark: index for index, segment in enumerate(project.segments)}
+    worst = worst_first(check for check in checks if check.check not in STRESSES)
+    return tuple(_finding(check, joints, segments, system) for check in worst)
 
 
-def _finding(check: Check, places: Mapping[str, int], system: UnitSystemName) -> LimitFinding:
+def _finding(
+    check: Check, joints: Mapping[str, int], segments: Mapping[str, int], system: UnitSystemName
+) -> LimitFinding:
     marks = (check.joint, check.start, check.end)
+    on_segment = check.segment if check.joint is None else None
     utilisation = check.utilisation or 0.0
     return LimitFinding(
         subject=subject_of(check),
-        joints=tuple(places[mark] for mark in marks if mark is not None),
+        joints=tuple(joints[mark] for mark in marks if mark is not None),
+        segments=() if on_segment is None else (segments[on_segment],),
         sentence=check_sentence(check, system),
         state=check.combination,
         utilisation=utilisation,
@@ -42,25 +51,35 @@ def _finding(check: Check, places: Mapping[str, int], system: UnitSystemName) ->
 def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:
     """The checks not made `among` those of the results, together by reason and material, as they come up."""
     materials = {segment.mark: segment.material for segment in results.project.segments}
-    groups: dict[tuple[Reason, str], list[Check]] = {}
+    groups: dict[_Group, list[Check]] = {}
     for check in among:
         if check.reason is not None:
-            groups.setdefault((check.reason, materials.get(check.segment or "", "")), []).append(check)
+            material = materials.get(check.segment or "", "")
+            groups.setdefault((check.reason, material, _kind(check), check.ratio), []).append(check)
     return tuple(
-        _not_made(reason, material, checks, results.project) for (reason, material), checks in groups.items()
+        _not_made(reason, material, checks, results.project)
+        for (reason, material, *_), checks in groups.items()
     )
 
 
+def _kind(check: Check) -> str:
+    """What was not checked, where one reason can keep from several things."""
+    return "" if check.check in STRESSES else subject_of(check).kind
+
+
 def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: Project) -> NotMade:
-    segments = {check.segment for check in checks}
+    segments = {check.segment for check in checks if check.joint is None}
     joints = {check.joint for check in checks}
-    states = list(dict.fromkeys(check.combination for check in checks))
-    places = [s.mark for s in project.segments if s.mark in segments]
+    states = list(dict.fromkeys(map(state_text, checks)))
+    places = list(dict.fromkeys(c.segment for c in checks if c.joint is None and c.segment is not None))
     places += [j.mark for j in project.joints if j.mark in joints]
+    template = tr(NOT_MADE[reason]) if reason in NOT_MADE else not_made_words(checks[0])
     return NotMade(
         reason=reason,
         material=material,
-        sentence=tr(NOT_MADE[reason]).format(places=listed(places), states=listed(states)),
+        sentence=template.format(
+            places=listed(places), states=listed(states), reason=why_text(reason, checks[0].ratio)
+        ),
         remedy=remedy_text(reason, material),
         count=len(checks),
         marks=tuple(places),

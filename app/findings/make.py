@@ -39,7 +39,7 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
 
 def findings_in(found: Findings, results: Results, state: str, system: UnitSystemName) -> Findings:
     """The findings with only those checks listed that one state has; the verdict stays that of all states."""
-    checks = [check for check in results.checks if check.combination == state]
+    checks = [check for check in results.checks if state in (check.between or (check.combination,))]
     return replace(
         found,
         segments=segment_findings(results, system, state),

@@ -45,10 +45,14 @@ class SegmentFinding:
 
 @dataclass(frozen=True, slots=True)
 class LimitFinding:
-    """The worst made check of one limit; `joints` are one index, or two for a relative displacement."""
+    """The worst made check of one limit, peak stress or fatigue.
+
+    `joints` are one index, or two for a relative displacement; of fatigue away from shoulders `segments` is.
+    """
 
     subject: Subject
     joints: tuple[int, ...]
+    segments: tuple[int, ...]
     sentence: str
     state: str
     utilisation: float

@@ -11,7 +11,7 @@ from app.findings.records import Band, SegmentFinding
 from app.findings.subjects import subject_of, utilisation_of, worst_first
 from app.phrases.checks import check_sentence, short_sentence
 from app.units import format_value, utilisation_text
-from solver.checks import Check
+from solver.checks import STRESSES, Check
 from solver.model import UnitSystemName
 from solver.results import Results
 
@@ -23,7 +23,7 @@ def segment_findings(
     checks = (check for check in results.checks if state in (None, check.combination))
     places = {segment.mark: index for index, segment in enumerate(results.project.segments)}
     bands = _Bands(results, system, state)
-    worst = worst_first(check for check in checks if check.segment is not None)
+    worst = worst_first(check for check in checks if check.check in STRESSES)
     return tuple(_finding(check, places, bands, system) for check in worst)
 
 

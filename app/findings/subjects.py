@@ -12,12 +12,15 @@ from typing import Literal, TypeAlias
 
 from solver.checks import Check
 
-SubjectKind: TypeAlias = Literal["stress", "displacement", "relative", "reaction"]
+# Of fatigue, that of a segment and that of a shoulder at a joint.
+SubjectKind: TypeAlias = Literal[
+    "stress", "peak", "displacement", "relative", "reaction", "fatigue", "fatigue_joint"
+]
 
 
 @dataclass(frozen=True, slots=True)
 class Subject:
-    """A segment's stress, or the limit of a joint (of two, for a relative displacement), by mark."""
+    """What checks are of: a segment, or a joint (two, for a relative displacement), by mark."""
 
     kind: SubjectKind
     marks: tuple[str, ...]
@@ -27,8 +30,16 @@ def subject_of(check: Check) -> Subject:
     """What the check is of."""
     if check.check == "tension" or check.check == "compression":
         return Subject("stress", (str(check.segment),))
+    if check.check == "fatigue":
+        return _fatigue(check)
     marks = (check.joint,) if check.joint is not None else (check.start, check.end)
     return Subject(check.check, tuple(map(str, marks)))
+
+
+def _fatigue(check: Check) -> Subject:
+    if check.joint is None:
+        return Subject("fatigue", (str(check.segment),))
+    return Subject("fatigue_joint", (check.joint,))
 
 
 def worst_by_subject(checks: Iterable[Check]) -> dict[Subject, Check]:

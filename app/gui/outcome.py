@@ -16,6 +16,7 @@ import numpy as np
 from app.gui.tables.column import Figures
 from app.gui.view import Shown
 from solver.arrays import FloatArray
+from solver.checks import STRESSES
 from solver.errors import InputError
 from solver.model import Project
 from solver.results import Results
@@ -164,9 +165,9 @@ def _utilisation(results: Results, state: int | None, segments: int) -> tuple[Fl
         return found, signs
     place = {segment.mark: index for index, segment in enumerate(results.project.segments)}
     for check in results.checks:
-        if check.segment is None or check.utilisation is None or name not in (None, check.combination):
+        if check.check not in STRESSES or check.utilisation is None or name not in (None, check.combination):
             continue
-        index = place[check.segment]
+        index = place[str(check.segment)]
         if not check.utilisation <= found[index]:  # also where nothing was found yet
             found[index] = check.utilisation
             signs[index] = 1.0 if check.check == "tension" else -1.0

@@ -39,13 +39,14 @@ _SEGMENT_COLUMNS: Final[dict[PartKind, str]] = {
 _JOINT_COLUMNS: Final[dict[PartKind, str]] = {
     "joint": "support",
     "support": "support",
+    "shoulder": "shoulder",
     "force": "force",
     "movement": "movement",
 }
 # The order in which Tab goes from cell to cell of one segment or joint
 ORDER: Final[dict[str, tuple[str, ...]]] = {
     "segments": ("length", "section", "material", "load_start", "load_end", "heat", "bedding", "mark"),
-    "joints": ("support", "force", "movement", "mark"),
+    "joints": ("support", "shoulder", "force", "movement", "mark"),
 }
 
 
@@ -155,7 +156,12 @@ _SEGMENT_PARTS: Final[dict[str, PartKind]] = {
     "bedding": "bedding",
     "lack_of_fit": "fit",
 }
-_JOINT_PARTS: Final[dict[str, PartKind]] = {"support": "support", "force": "force", "movement": "movement"}
+_JOINT_PARTS: Final[dict[str, PartKind]] = {
+    "support": "support",
+    "shoulder": "shoulder",
+    "force": "force",
+    "movement": "movement",
+}
 
 
 def part_of(cell: Cell, project: Project, case: int | None) -> Part | None:

@@ -78,6 +78,17 @@ KINDS: Final[tuple[Kind, ...]] = (
         typed_next=False,
     ),
     Kind(
+        "shoulder",
+        later("Shoulder: fillet radius or factor"),
+        "joint",
+        "A",
+        symbols.SHOULDER,
+        "shoulder",
+        ("r 1 mm", "r 1/32 in"),
+        "size",
+        ("shoulder",),
+    ),
+    Kind(
         "movement",
         later("Movement of a support"),
         "joint",

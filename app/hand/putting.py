@@ -20,6 +20,7 @@ from app.entry import parse_entry
 from app.hand.cells import Cell, cell_of
 from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
+from app.hand.shoulders import begun_shoulder, is_at_end
 from app.support_entry import Supports, parse_supports
 from app.words import tr
 from solver.model import FixedSupport, LoadCase, Project, SpringSupport, StopSupport, supports_of
@@ -78,6 +79,8 @@ def _is_there(kind: Kind, project: Project, index: int, case: int | None) -> boo
         return bool(_of_this_kind(kind, there)) if _support(kind, project) else not there
     if kind.part == "bedding":
         return any(_written(getattr(project.segments[index], key)) for key in kind.keys)
+    if kind.part == "shoulder":
+        return bool(project.joints[index].shoulder)
     if kind.part == "gravity":
         return case is not None and project.load_cases[case].gravity != 0.0
     loads = loads_of(kind, project, index, case)
@@ -139,10 +142,21 @@ def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
         return edits.hold_joint(project, index, _held_with(kind, project, index))
     if kind.part == "bedding":
         return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
+    if kind.part == "shoulder":
+        return _with_shoulder(kind, project, index)
     if kind.part == "movement" and not supports_of(project.joints[index]):
         words = tr("joint {mark} has no support that could move: put one on first")
         raise NotPut(words.format(mark=project.joints[index].mark))
     return _set_load(kind, project, index, case, kind.keys[0], _begins(kind, project))
+
+
+def _with_shoulder(kind: Kind, project: Project, joint: int) -> Project:
+    if is_at_end(project, joint):
+        words = tr("joint {mark} is an end of the member, where there is no step")
+        raise NotPut(words.format(mark=project.joints[joint].mark))
+    system = project.display.unit_system
+    shoulder = begun_shoulder(project, joint, kind.begins_in(system), system)
+    return edits.set_value(project, ("joints", joint, "shoulder"), shoulder)
 
 
 def _set_load(

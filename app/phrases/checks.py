@@ -10,17 +10,21 @@ from collections import Counter
 from collections.abc import Iterator, Mapping, Sequence
 from typing import Final, Literal
 
-from app.numerals import rounded
+from app.numerals import reading, rounded
+from app.phrases.fatigue import fatigue_place, fatigue_sentence, fatigue_subject, swing_text
+from app.phrases.shoulders import REASONS_OF_SHOULDERS, REMEDIES_OF_SHOULDERS, ratio_facts
 from app.phrases.states import state_words
 from app.units import Quantity, format_value, symbol, to_display, utilisation_text
 from app.words import later, tr, trn
-from solver.checks import Check, CheckKind, Reason, Status
+from solver.checks import STRESSES, Check, CheckKind, Reason, Status
 from solver.model import UnitSystemName
 from solver.results import Results
 
 QUANTITIES: Final[Mapping[CheckKind, Quantity]] = {
     "tension": "stress",
     "compression": "stress",
+    "peak": "stress",
+    "fatigue": "stress",
     "displacement": "displacement",
     "relative": "displacement",
     "reaction": "force",
@@ -33,6 +37,7 @@ CHECKS: Final[Mapping[CheckKind, str]] = {
     "compression": later(
         "{segment}: {value} of {limit} {unit} in compression, {utilisation}, at {position}, {combination}"
     ),
+    "peak": later("Joint {joint}: peak {value} of {limit} {unit}, Kt {factor}, {utilisation}, {combination}"),
     "displacement": later(
         "Joint {joint}: displacement {value} of {limit} {unit}, {utilisation}, {combination}"
     ),
@@ -52,6 +57,7 @@ SHORT: Final[Mapping[Literal["tension", "compression"], str]] = {
 SUBJECTS: Final[Mapping[CheckKind, str]] = {
     "tension": later("{segment}: tension"),
     "compression": later("{segment}: compression"),
+    "peak": later("Joint {joint}: peak stress"),
     "displacement": later("Joint {joint}: displacement"),
     "relative": later("Joints {start} to {end}: relative displacement"),
     "reaction": later("Joint {joint}: reaction"),
@@ -59,6 +65,7 @@ SUBJECTS: Final[Mapping[CheckKind, str]] = {
 
 # Why a check was not made.
 REASONS: Final[Mapping[Reason, str]] = {
+    **REASONS_OF_SHOULDERS,
     "no_allowable_tension": later("the material has no allowable stress in tension"),
     "no_allowable_compression": later("the material has no allowable stress in compression"),
     "no_support": later("the joint has no support and so no reaction"),
@@ -66,6 +73,7 @@ REASONS: Final[Mapping[Reason, str]] = {
 
 # What to enter for it; a second wording names the material.
 REMEDIES: Final[Mapping[Reason, tuple[str, str]]] = {
+    **REMEDIES_OF_SHOULDERS,
     "no_allowable_tension": (
         later("enter the material's allowable stress in tension"),
         later("enter an allowable stress in tension for {material}"),
@@ -80,7 +88,7 @@ REMEDIES: Final[Mapping[Reason, tuple[str, str]]] = {
     ),
 }
 
-# Several checks not made for the same reason, in one sentence.
+# Several checks not made for the same reason, in one sentence; those of shoulders and fatigue have their own.
 NOT_MADE: Final[Mapping[Reason, str]] = {
     "no_allowable_tension": later("Not checked: tension in {places} ({states})"),
     "no_allowable_compression": later("Not checked: compression in {places} ({states})"),
@@ -90,6 +98,7 @@ NOT_MADE: Final[Mapping[Reason, str]] = {
 _PLACES: Final[Mapping[CheckKind, str]] = {
     "tension": later("segment {segment}, {combination}"),
     "compression": later("segment {segment}, {combination}"),
+    "peak": later("peak stress at joint {joint}, {combination}"),
     "displacement": later("joint {joint}, {combination}"),
     "relative": later("joints {start} to {end}, {combination}"),
     "reaction": later("joint {joint}, {combination}"),
@@ -100,6 +109,8 @@ def check_sentence(check: Check, system: UnitSystemName) -> str:
     """A check in one sentence: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"."""
     if check.value is None or check.limit is None or check.utilisation is None:
         return not_made_sentence(check)
+    if check.check == "fatigue":
+        return fatigue_sentence(check, position_text(check.position, system), system)
     return _filled(CHECKS[check.check], check, check.value, check.limit, check.utilisation, system)
 
 
@@ -116,7 +127,7 @@ def _filled(
 ) -> str:
     quantity = QUANTITIES[check.check]
     # A stress has its sign in words, tension or compression.
-    size = abs(value) if quantity == "stress" else value
+    size = abs(value) if check.check in STRESSES else value
     value_text, limit_text = compared(size, limit, check.status, quantity, system)
     return tr(template).format(
         **_names(check),
@@ -125,20 +136,37 @@ def _filled(
         unit=symbol(quantity, system),
         utilisation=utilisation_text(utilisation, check.status),
         position=position_text(check.position, system),
+        factor="" if check.factor is None else reading(check.factor, 3),
     )
 
 
 def not_made_sentence(check: Check) -> str:
     """A check that was not made, with the reason and what to enter."""
-    subject = tr(SUBJECTS[check.check]).format(**_names(check))
     sentence = tr("{subject} not checked, {combination}: {reason}")
-    reason = reason_text(check.reason) if check.reason else tr("it could not be made")
-    return sentence.format(subject=subject, combination=state_words(check.combination), reason=reason)
+    reason = reason_text(check.reason, check.ratio) if check.reason else tr("it could not be made")
+    return sentence.format(subject=subject_text(check), combination=state_text(check), reason=reason)
 
 
-def reason_text(reason: Reason) -> str:
-    """Why a check was not made, and what to enter for it."""
-    return f"{tr(REASONS[reason])}; {remedy_text(reason)}"
+def subject_text(check: Check) -> str:
+    """What a check is of, in a few words at the head of a line."""
+    if check.check == "fatigue":
+        return fatigue_subject(check)
+    return tr(SUBJECTS[check.check]).format(**_names(check))
+
+
+def state_text(check: Check) -> str:
+    """The combination a check is of, of fatigue both."""
+    return state_words(check.combination) if check.between is None else swing_text(check.between)
+
+
+def reason_text(reason: Reason, ratio: float | None = None) -> str:
+    """Why a check was not made, and what to enter for it; `ratio` is the check's."""
+    return f"{why_text(reason, ratio)}; {remedy_text(reason)}"
+
+
+def why_text(reason: Reason, ratio: float | None = None) -> str:
+    """Why a check was not made."""
+    return tr(REASONS[reason]).format(**ratio_facts(ratio))
 
 
 def remedy_text(reason: Reason, material: str = "") -> str:
@@ -246,7 +274,7 @@ def verdict_detail(results: Results) -> str:
     if governing is None or governing.utilisation is None:
         return _nothing_made(results)
     text = utilisation_text(governing.utilisation, governing.status)
-    place = tr(_PLACES[governing.check]).format(**_names(governing))
+    place = fatigue_place(governing) or tr(_PLACES[governing.check]).format(**_names(governing))
     largest = tr("Largest utilisation {utilisation}: {place}").format(utilisation=text, place=place)
     return f"{largest}. {_counted(results)}" if results.verdict == "fail" else largest
 

@@ -25,6 +25,9 @@ SUBJECTS: Final[Mapping[SubjectKind, str]] = {
     "displacement": later("displacement of joint {mark}"),
     "relative": later("relative displacement of joints {mark} to {end}"),
     "reaction": later("reaction at joint {mark}"),
+    "peak": later("peak stress at joint {mark}"),
+    "fatigue": later("fatigue in {mark}"),
+    "fatigue_joint": later("fatigue at joint {mark}"),
 }
 
 

@@ -129,6 +129,7 @@ _KINDS: Final[Mapping[str, str]] = {
     "load case": later("load case"), "load_case": later("load case"),
     "start": later("start"), "end": later("end"), "section": later("section shape"),
     "support": later("support"), "load": later("load"), "limit": later("limit"),
+    "shoulder": later("shoulder"),
     "combination": later("combination"), "companion": later("companion"),
     "too_long": later("too long"), "too_short": later("too short"),
 }  # fmt: skip

@@ -63,13 +63,46 @@ def _formulas(project: Project) -> Iterator[dict[str, Value]]:
     yield formula(
         tr("utilisation of a limit"), "limit", tr("η equals the magnitude of the value over its limit")
     )
+    yield from _notch_formulas(project)
+
+
+def _notch_words(project: Project) -> str:
+    if any(joint.shoulder for joint in project.joints):
+        return tr(
+            "Stress is the mean over the section, at the shoulders entered also its peak Kt σ: no other notch"
+            " effect, no bending, no residual stress."
+        )
+    return tr("Stress is the mean over the section: no notch effect, no bending, no residual stress.")
+
+
+def _notch_formulas(project: Project) -> Iterator[dict[str, Value]]:
+    """What is needed for shoulders and fatigue, where there are any."""
+    shoulders = [joint.shoulder for joint in project.joints if joint.shoulder]
+    if any(shoulder.fillet_radius for shoulder in shoulders):
+        yield formula(
+            tr("factor of a fillet"),
+            "factor",
+            tr("Kt equals C1 plus C2 times 2h over D plus C3 times its square plus C4 times its cube"),
+        )
+    if shoulders:
+        yield formula(
+            tr("peak stress"),
+            "peak",
+            tr("peak σ equals Kt times σ; η equals its size over f times its allowable"),
+        )
+    if project.fatigue:
+        yield formula(
+            tr("fatigue"),
+            "fatigue",
+            tr("η equals the amplitude over Sa plus the tensile mean over Su, both with Kt"),
+        )
 
 
 def _assumptions(project: Project) -> list[str]:
     items = [
         tr("Within a segment every dimension of the section varies linearly, and so do q, ΔT and bedding."),
         tr("A combination scales loads, temperatures, lack of fit, movements and gravity alike."),
-        tr("Stress is the mean over the section: no notch effect, no bending, no residual stress."),
+        _notch_words(project),
         tr("A check passes at a utilisation up to 1."),
     ]
     if any(s.bedding or end_of(s.bedding, s.bedding_end) for s in project.segments):

@@ -60,6 +60,8 @@ def _math_words() -> dict[str, Value]:
         "tension": trc("index in a formula", "t,allow"),
         "compression": trc("index in a formula", "c,allow"),
         "limit": trc("index in a formula", "limit"),
+        "peak": trc("index in a formula", "peak"),
+        "allow": trc("index in a formula", "allow"),
         "from": trc("index in a formula", "from"),
         "to": trc("index in a formula", "to"),
         "or": trc("between two formulas", "or"),

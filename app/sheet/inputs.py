@@ -12,6 +12,7 @@ from app.section_entry import section_text
 from app.sheet.blocks import Block, column, heading, paragraph, picture, table
 from app.sheet.member_figure import Figure, member_figure
 from app.sheet.readings import NOTHING, Readings, legible
+from app.sheet.shoulders import shoulder_words, strength_columns
 from app.words import tr
 from solver.model import (
     AnySection,
@@ -56,6 +57,7 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
 
 
 def _materials(project: Project, say: Readings) -> Block:
+    strength, strength_cells = strength_columns(project, say)
     columns = [
         column(tr("Material"), align="left"),
         column("E", say.unit("modulus")),
@@ -63,9 +65,10 @@ def _materials(project: Project, say: Readings) -> Block:
         column("ρ", say.unit("density")),
         column(tr("Allowable in tension"), say.unit("stress")),
         column(tr("Allowable in compression"), say.unit("stress")),
+        *strength,
     ]
     used = {segment.material for segment in project.segments}
-    rows = [_material_row(m, say, used=m.name in used) for m in project.materials]
+    rows = [[*_material_row(m, say, used=m.name in used), *strength_cells(m)] for m in project.materials]
     return table(tr("Materials"), columns, rows)
 
 
@@ -117,13 +120,20 @@ def _section(section: AnySection, say: Readings) -> str:
 
 
 def _joints(project: Project, results: Results, say: Readings) -> Block:
+    shouldered = any(joint.shoulder for joint in project.joints)
     columns = [
         column(tr("Joint"), align="left"),
         column("x", say.unit("length")),
         column(tr("Support"), align="left"),
+        *([column(tr("Shoulder"), align="left")] if shouldered else []),
     ]
     rows = [
-        [joint.mark, say.plain(x, "length"), supports_words(joint, say)]
+        [
+            joint.mark,
+            say.plain(x, "length"),
+            supports_words(joint, say),
+            *([shoulder_words(joint, say)] if shouldered else []),
+        ]
         for joint, x in zip(project.joints, results.position.tolist(), strict=True)
     ]
     return table(tr("Joints and supports"), columns, rows)
@@ -234,6 +244,9 @@ def _combinations(project: Project, say: Readings) -> Iterator[Block]:
         for combination in project.combinations
     ]
     yield table(tr("Combinations"), columns, rows)
+    if project.fatigue:
+        heads = [column(tr("Fatigue from"), align="left"), column(tr("to combination"), align="left")]
+        yield table(tr("Ranges of fatigue"), heads, [[swing.start, swing.end] for swing in project.fatigue])
 
 
 def factors_text(factors: Mapping[str, float], say: Readings) -> str:

@@ -28,6 +28,7 @@ from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
 from solver.model import Project
+from solver.shoulders import notches
 
 POINT: Final = 0.7
 _ACROSS, _UPRIGHT, _SMALL = 386.0 / POINT, 300.0 / POINT, 190.0 / POINT  # drawn length of the member
@@ -89,7 +90,8 @@ def drawn_positions(positions: Sequence[float], extent: float, *, upright: bool)
 
 def _member(project: Project, positions: FloatArray, loads: Loads | None, state: int) -> Member:
     of_state = None if loads is None else _of_state(loads, state)
-    return Member(_with_short_marks(project), tuple(map(float, positions)), of_state)
+    shown = _with_short_marks(project)
+    return Member(shown, tuple(map(float, positions)), of_state, notches(shown))
 
 
 def _with_short_marks(project: Project) -> Project:

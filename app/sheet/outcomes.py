@@ -10,14 +10,16 @@ import numpy as np
 from app.findings.books import state_books
 from app.findings.records import StateBooks
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
+from app.sheet.fatigue import fatigue_blocks
 from app.sheet.figures import envelope_figure, state_figure
 from app.sheet.inputs import factors_text
 from app.sheet.readings import NOTHING, Readings
+from app.sheet.shoulders import peak_tables
 from app.sheet.verdicts import check_table, status_word
 from app.units import utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray
-from solver.checks import Check
+from solver.checks import STRESSES, Check
 from solver.results import Results, State
 
 
@@ -31,6 +33,7 @@ def outcome_blocks(results: Results, say: Readings) -> Iterator[Block]:
         yield _balance(book)
     if len(checked) > 1:
         yield from _envelope_blocks(results, say)
+    yield from fatigue_blocks(results, say)
 
 
 def _state_blocks(results: Results, index: int, state: State, say: Readings) -> Iterator[Block]:
@@ -48,9 +51,14 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
     yield picture(state_figure(results, index), caption.format(name=state.name))
     yield _segments(results, index, say)
     yield _joints(results, index, say)
-    limits = [c for c in results.checks if c.segment is None and c.combination == state.name]
+    yield from peak_tables(results, state.name, say)
+    limits = [c for c in results.checks if _is_limit(c) and c.combination == state.name]
     if limits:
         yield check_table(tr("Limits"), limits, say)
+
+
+def _is_limit(check: Check) -> bool:
+    return check.check not in (*STRESSES, "peak", "fatigue")
 
 
 def state_title(state: State) -> str:
@@ -116,7 +124,8 @@ def _position(results: Results, x: float, say: Readings) -> str:
 
 def _of_segment(results: Results, index: int, mark: str) -> list[Check]:
     name = results.states[index].name
-    return [c for c in results.checks if c.segment == mark and c.combination == name]
+    own = (c for c in results.checks if c.check in STRESSES and c.combination == name)
+    return [c for c in own if c.segment == mark]
 
 
 def _utilisation(results: Results, index: int, place: int, say: Readings) -> list[str]:
@@ -136,7 +145,7 @@ def _failing(results: Results, index: int) -> list[int]:
     marks = {
         c.segment
         for c in results.checks
-        if c.status == "fail" and c.segment and c.combination == results.states[index].name
+        if c.status == "fail" and c.check in STRESSES and c.combination == results.states[index].name
     }
     return [place for place, segment in enumerate(results.project.segments) if segment.mark in marks]
 

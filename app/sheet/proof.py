@@ -12,13 +12,15 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.findings import findings
-from app.numerals import decimals_of, fixed, reading
-from app.phrases.checks import has_compression
+from app.findings.subjects import worst_first
+from app.numerals import reading
+from app.phrases.checks import has_compression, state_text
 from app.phrases.notes import BUCKLING
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
+from app.sheet.peak_proof import peak_or_fatigue_by_hand
 from app.sheet.readings import Readings
-from app.sheet.verdicts import check_table, kind_words, quantity_of, subject
-from app.units import utilisation_text
+from app.sheet.shoulders import factor_blocks
+from app.sheet.verdicts import check_table, kind_words, quantity_of, subject, utilisation_by_hand
 from app.words import tr
 from solver.checks import Check
 from solver.fields import PointValues, at
@@ -42,6 +44,7 @@ def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
         yield paragraph(tr("No check could be made."), "caution")
     else:
         yield from _governing_blocks(results, results.governing, say)
+    yield from factor_blocks(results.project, results.governing, say)
     made = [check for check in results.checks if check.status != "not_made"]
     if made:
         yield _worst_table(made, say)
@@ -55,11 +58,13 @@ def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator
     yield heading(tr("The governing check, by hand"), 2)
     yield paragraph(
         tr("Largest utilisation of all checks: {kind}, {subject}, {combination}.").format(
-            kind=kind_words(check), subject=subject(check), combination=check.combination
+            kind=kind_words(check), subject=subject(check), combination=state_text(check)
         ),
         "lead",
     )
-    if check.segment is not None:
+    if check.check in ("peak", "fatigue"):
+        yield from peak_or_fatigue_by_hand(results, check, say)
+    elif check.segment is not None:
         yield from _stress_by_hand(results, check, say)
     elif check.joint is not None:
         yield from _joint_by_hand(results, check, say)
@@ -165,13 +170,6 @@ def _utilisation_by_hand(
     return formula(tr("utilisation"), f"{check.check}_numbers", alt.format(sign=sign, **parts), **parts)
 
 
-def utilisation_by_hand(check: Check) -> str:
-    """The utilisation to four decimals at least, more where its verdict needs them."""
-    value = check.utilisation or 0.0
-    shown = utilisation_text(value, check.status)
-    return shown if decimals_of(shown) >= 4 else fixed(value, 4)
-
-
 def _joint_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
     quantity = quantity_of(check)
     parts = _against_limit(check, say)
@@ -222,19 +220,10 @@ def _relative_by_hand(results: Results, check: Check, say: Readings) -> Iterator
     yield formulas([formula(tr("utilisation"), "relative_numbers", spoken, **parts)])
 
 
-def _key(check: Check) -> tuple[str | None, ...]:
-    return (check.segment, check.joint, check.start, check.end, None if check.segment else check.check)
-
-
 def _worst_table(made: Iterable[Check], say: Readings) -> Block:
     """The largest utilisation of every segment and of every limit, worst first."""
-    worst: dict[tuple[str | None, ...], Check] = {}
-    for check in made:
-        other = worst.get(_key(check))
-        if other is None or (check.utilisation or 0.0) > (other.utilisation or 0.0):
-            worst[_key(check)] = check
-    ordered = sorted(worst.values(), key=lambda check: -(check.utilisation or 0.0))
-    return check_table(tr("Largest utilisation of each segment and limit, the worst first"), ordered, say)
+    title = tr("Largest utilisation of each segment and limit, the worst first")
+    return check_table(title, worst_first(made), say)
 
 
 def _not_made(results: Results, say: Readings) -> Iterator[Block]:

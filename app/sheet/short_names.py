@@ -104,6 +104,10 @@ def _renamed(project: Project, names: _Names) -> Project:
             )
             for c in project.combinations
         ),
+        fatigue=tuple(
+            structs.replace(v, start=names.combinations[v.start], end=names.combinations[v.end])
+            for v in project.fatigue
+        ),
         limits=structs.replace(
             project.limits,
             displacement=tuple(
@@ -139,4 +143,5 @@ def _check(check: Check, names: _Names) -> Check:
         joint=None if check.joint is None else names.joints[check.joint],
         start=None if check.start is None else names.joints[check.start],
         end=None if check.end is None else names.joints[check.end],
+        between=check.between and tuple(names.combinations[name] for name in check.between),
     )

@@ -4,12 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from app.numerals import rounded
+from app.numerals import decimals_of, fixed, rounded
+from app.phrases.checks import state_text
 from app.sheet.blocks import Block, column, table
 from app.sheet.readings import DIGITS, NOTHING, PLAIN, Readings
 from app.units import Quantity, to_display, utilisation_text
 from app.words import tr
-from solver.checks import PASS_MARGIN, Check, Status
+from solver.checks import PASS_MARGIN, STRESSES, Check, Status
 
 _MOST_DIGITS = 17
 
@@ -21,7 +22,7 @@ def status_word(status: Status | str) -> str:
 
 def quantity_of(check: Check) -> Quantity:
     """What the value of a check is measured in."""
-    if check.check in ("tension", "compression"):
+    if check.check in (*STRESSES, "peak", "fatigue"):
         return "stress"
     return "force" if check.check == "reaction" else "displacement"
 
@@ -34,12 +35,14 @@ def kind_words(check: Check) -> str:
         "displacement": tr("displacement"),
         "relative": tr("relative displacement"),
         "reaction": tr("reaction"),
+        "peak": tr("peak stress"),
+        "fatigue": tr("fatigue, amplitude (the mean adds)"),
     }[check.check]
 
 
 def subject(check: Check) -> str:
     """Of what: a segment, a joint, or two joints."""
-    if check.segment is not None:
+    if check.segment is not None and check.joint is None:
         return tr("segment {mark}").format(mark=check.segment)
     if check.joint is not None:
         return tr("joint {mark}").format(mark=check.joint)
@@ -56,7 +59,7 @@ def check_row(check: Check, say: Readings) -> list[str]:
             *against(check.value, check.limit, quantity, say),
             utilisation_text(check.utilisation, check.status),
         ]
-    return [subject(check), kind_words(check), check.combination, place, *numbers, status_word(check.status)]
+    return [subject(check), kind_words(check), state_text(check), place, *numbers, status_word(check.status)]
 
 
 def against(value: float, limit: float, quantity: Quantity, say: Readings) -> list[str]:
@@ -92,3 +95,10 @@ def check_table(title: str, checks: Sequence[Check], say: Readings) -> Block:
     ]
     strong = [index for index, check in enumerate(checks) if check.status == "fail"]
     return table(title, columns, [check_row(check, say) for check in checks], strong=strong)
+
+
+def utilisation_by_hand(check: Check) -> str:
+    """The utilisation to four decimals at least, more where its verdict needs them."""
+    value = check.utilisation or 0.0
+    shown = utilisation_text(value, check.status)
+    return shown if decimals_of(shown) >= 4 else fixed(value, 4)

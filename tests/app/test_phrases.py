@@ -25,6 +25,7 @@ from app.phrases.checks import CHECKS, NOT_MADE, QUANTITIES, REASONS, REMEDIES, 
 from app.phrases.entries import ENTRIES, EntryRule
 from app.phrases.errors import ERRORS
 from app.phrases.faults import FAULTS, JSON_SLIPS
+from app.phrases.shoulders import REASONS_OF_SHOULDERS
 from app.places import place_words, quantity_at
 from app.project_file import ProjectFileError, parse
 from app.strict_json import JsonSlip
@@ -91,8 +92,10 @@ def test_every_rule_reason_kind_and_error_has_words() -> None:
     assert set(FAULTS) == set(FACTS) == set(get_args(Rule))
     assert set(ENTRIES) == set(get_args(EntryRule))
     assert set(JSON_SLIPS) == set(get_args(JsonSlip))
-    assert set(REASONS) == set(REMEDIES) == set(NOT_MADE) == set(get_args(Reason))
-    assert set(CHECKS) == set(SUBJECTS) == set(QUANTITIES) == set(get_args(CheckKind))
+    assert set(REASONS) == set(REMEDIES) == set(get_args(Reason))
+    assert set(NOT_MADE) | set(REASONS_OF_SHOULDERS) == set(get_args(Reason))
+    assert set(QUANTITIES) == set(get_args(CheckKind))
+    assert set(CHECKS) == set(SUBJECTS) == set(QUANTITIES) - {"fatigue"}  # its words follow from two facts
     assert {*ERRORS, NotSolvable} == set(InputError.__subclasses__())
 
 

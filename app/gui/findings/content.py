@@ -109,6 +109,7 @@ def _limit_row(item: LimitFinding) -> tuple[float, Row]:
         spoken=item.sentence,
         value=item.utilisation_text,
         position=item.position,
+        segments=frozenset(item.segments),
         joints=frozenset(item.joints),
     )
     return item.utilisation, row

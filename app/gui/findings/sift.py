@@ -19,6 +19,8 @@ KINDS: Final[tuple[tuple[RowKind | None, str], ...]] = (
     (None, later("All kinds")),
     ("fails", later("Does not pass")),
     ("stress", later("Stress")),
+    ("peak", later("Peak stress")),
+    ("fatigue", later("Fatigue")),
     ("displacement", later("Displacement")),
     ("relative", later("Relative displacement")),
     ("reaction", later("Reaction")),
@@ -48,7 +50,8 @@ def sifted(rows: Sequence[Row], sift: Sift) -> tuple[Row, ...]:
 
 
 def _is_of(row: Row, kind: RowKind | None, wanted: frozenset[str] | None) -> bool:
-    right_kind = kind is None or row.kind == kind or (kind == "fails" and row.tone == "fail")
+    kinds: tuple[RowKind | None, ...] = ("fatigue", "fatigue_joint") if kind == "fatigue" else (kind,)
+    right_kind = kind is None or row.kind in kinds or (kind == "fails" and row.tone == "fail")
     return right_kind and (wanted is None or bool(wanted & row.marks))
 
 

@@ -119,6 +119,7 @@ class Column:
     offers: Offers | None = None  # names for a cell that refers to something
     settled_by: str = ""  # the column that says more, where a pasted row brings both
     at_first: bool = True  # whether it is shown before anyone has chosen
+    filled: Callable[[Project], bool] | None = None  # shown in any case where something stands in it
 
     @property
     def holds_a_name(self) -> bool:

@@ -76,6 +76,6 @@ COMBINATIONS = Table(
     row_name=lambda project, index, _sight: project.combinations[index].name,
     records=lambda _sight: ("combinations",),
     adding=Adding(later("type a name to add a combination"), _add, later("Add combination"), "name"),
-    delete=lambda project, indexes, _sight: edits.remove_records(project, ("combinations",), indexes),
+    delete=lambda project, indexes, _sight: edits.remove_combinations(project, indexes),
     delete_name=later("Delete combinations"),
 )

@@ -13,6 +13,7 @@ from app.entry import parse_entry
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import needed_case
 from app.gui.tables.supports import with_supports
+from app.shoulder_entry import parse_shoulder, shoulder_entry, shoulder_text
 from app.support_entry import parse_supports, supports_entry, supports_text
 from app.units import Quantity, entry_text, format_value
 from app.words import later
@@ -44,6 +45,11 @@ def _put_support(project: Project, index: int, text: str, sight: Sight) -> Chang
     return with_supports(
         project, index, parse_supports(text, sight.system, supports_of(project.joints[index]))
     )
+
+
+def _put_shoulder(project: Project, index: int, text: str, sight: Sight) -> Change:
+    shoulder = parse_shoulder(text, sight.system, project.joints[index].shoulder)
+    return Change(edits.set_value(project, ("joints", index, "shoulder"), shoulder))
 
 
 def _load(key: str, title: str, quantity: Quantity) -> Column:
@@ -103,6 +109,15 @@ COLUMNS = (
         _put_support,
         optional=True,
         width=20,
+    ),
+    Column(
+        "shoulder",
+        later("Shoulder"),
+        lambda row, sight: shoulder_text(row.joint.shoulder, sight.system),
+        lambda row, sight: shoulder_entry(row.joint.shoulder, sight.system),
+        _put_shoulder,
+        optional=True,
+        width=10,
     ),
     _load("force", later("Force along +x"), "force"),
     _load("movement", later("Support movement"), "displacement"),

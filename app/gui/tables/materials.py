@@ -13,6 +13,7 @@ from app.beside import beside
 from app.entry import parse_entry
 from app.gui.tables import offers
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
+from app.gui.tables.fatigue import ENDURED_AMPLITUDE, ENDURED_ULTIMATE
 from app.gui.tables.reasons import NotTaken
 from app.typical_materials import typical_named, with_typical
 from app.units import Quantity, entry_text, format_value
@@ -47,7 +48,13 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
 
 def has_allowables(material: Material) -> bool:
     """Whether an allowable stress is given for it."""
-    return not (material.allowable_tension is UNSET and material.allowable_compression is UNSET)
+    own = (
+        material.allowable_tension,
+        material.allowable_compression,
+        material.allowable_peak,
+        material.endurance,
+    )
+    return any(one is not UNSET for one in own)
 
 
 def free_name(wished: str, taken: set[str]) -> str:
@@ -58,8 +65,16 @@ def free_name(wished: str, taken: set[str]) -> str:
     return name
 
 
-def _number(key: str, title: str, quantity: Quantity, *, optional: bool = True, width: int = 10) -> Column:
-    """A column for one number of a material."""
+def _number(
+    key: str,
+    title: str,
+    quantity: Quantity,
+    *,
+    optional: bool = True,
+    width: int = 10,
+    at_first: bool = True,
+) -> Column:
+    """A column for one number of a material; one not shown at first is shown where it holds something."""
 
     def value(row: Material) -> float | UnsetType:
         return getattr(row, key)  # type: ignore[no-any-return]
@@ -79,7 +94,21 @@ def _number(key: str, title: str, quantity: Quantity, *, optional: bool = True, 
         number = UNSET if empty else parse_entry(text, quantity, sight.system)
         return Change(edits.set_value(project, ("materials", index, key), number))
 
-    return Column(key, title, show, entry, put, quantity=quantity, optional=optional, width=width)
+    def filled(project: Project) -> bool:
+        return any(value(material) is not UNSET for material in project.materials)
+
+    return Column(
+        key,
+        title,
+        show,
+        entry,
+        put,
+        quantity=quantity,
+        optional=optional,
+        width=width,
+        at_first=at_first,
+        filled=None if at_first else filled,
+    )
 
 
 def put_name(records: str) -> Callable[[Project, int, str, Sight], Change]:
@@ -134,6 +163,9 @@ COLUMNS = (
     _number("density", later("Density"), "density"),
     _number("allowable_tension", later("Allowable in tension"), "stress", width=14),
     _number("allowable_compression", later("Allowable in compression"), "stress", width=14),
+    _number("allowable_peak", later("Allowable peak stress"), "stress", width=14, at_first=False),
+    ENDURED_AMPLITUDE,
+    ENDURED_ULTIMATE,
 )
 
 MATERIALS = Table(

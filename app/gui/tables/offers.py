@@ -46,6 +46,11 @@ def held_joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
     return _named(joint.mark for joint in project.joints if supports_of(joint))
 
 
+def combinations(project: Project, _sight: Sight) -> tuple[Offer, ...]:
+    """The names of the combinations."""
+    return _named(combination.name for combination in project.combinations)
+
+
 def _named(names: Iterable[str]) -> tuple[Offer, ...]:
     return tuple(Offer(name) for name in names)
 

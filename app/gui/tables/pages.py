@@ -1,6 +1,7 @@
 """The tabs of the tables; a tab's tables are made when they are first looked up or shown.
 
 Eleven tables are most of what a window costs to make, and one of them is seen at first.
+A dozen tables are most of what a window costs to make, and one of them is seen at first.
 """
 
 from __future__ import annotations
@@ -12,6 +13,7 @@ from PySide6.QtWidgets import QSplitter, QTabWidget, QVBoxLayout, QWidget
 from app.gui.tables.column import Table
 from app.gui.tables.combinations import COMBINATIONS
 from app.gui.tables.companions import COMPANIONS
+from app.gui.tables.fatigue import FATIGUE
 from app.gui.tables.joints import JOINTS
 from app.gui.tables.limits import DISPLACEMENT, REACTION, RELATIVE
 from app.gui.tables.loads import CASES, JOINT_LOADS, SEGMENT_LOADS
@@ -25,7 +27,7 @@ TABS: tuple[tuple[str, tuple[tuple[Table, int], ...]], ...] = (
     (later("Segments"), ((SEGMENTS, 1),)),
     (later("Joints"), ((JOINTS, 1),)),
     (later("Loads"), ((CASES, 30), (SEGMENT_LOADS, 66), (JOINT_LOADS, 34))),
-    (later("Combinations"), ((COMBINATIONS, 1),)),
+    (later("Combinations"), ((COMBINATIONS, 70), (FATIGUE, 30))),
     (later("Materials"), ((MATERIALS, 1),)),
     (later("Limits"), ((DISPLACEMENT, 30), (RELATIVE, 40), (REACTION, 30))),
     (later("Companions"), ((COMPANIONS, 1),)),

@@ -186,7 +186,7 @@ class TablesPane(QWidget):
         for model in self.models.values():
             model.set_sight(sight)
         for view in self.views.made.values():
-            view.columns_choice.follow_drafts()
+            view.columns_choice.follow_entries()
             view.widths.widen_if_needed()
 
     def set_figures(self, figures: Figures) -> None:

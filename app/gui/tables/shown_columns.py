@@ -1,7 +1,8 @@
 """Which columns of a table are shown: those of the table's own choice until a person takes another.
 
 Only what differs from the table's own choice is remembered, so that a column that comes later is seen. The
-first column always stays, and so do columns named by the user: a combination's factors stand in them.
+first column always stays, and so do columns named by the user: a combination's factors stand in them. What
+few members need waits hidden, and is shown where the project has it.
 """
 
 from __future__ import annotations
@@ -48,7 +49,12 @@ class ShownColumns:
 
     def is_shown(self, column: Column) -> bool:
         """Whether a column is chosen to be shown."""
-        return column not in self.choices() or column.at_first != (column.key in self._turned)
+        if column not in self.choices() or self._is_filled(column):
+            return True
+        return column.at_first != (column.key in self._turned)
+
+    def _is_filled(self, column: Column) -> bool:
+        return column.filled is not None and column.filled(self._view.table_model.document.project)
 
     def turn(self, key: str) -> None:
         """Show a column that is hidden, hide one that is shown."""
@@ -70,8 +76,8 @@ class ShownColumns:
         for place, hide in enumerate(self._hidden()):
             self._view.setColumnHidden(place, hide)
 
-    def follow_drafts(self) -> None:
-        """The same where an entry that is not taken in came or went."""
+    def follow_entries(self) -> None:
+        """The same where an entry came or went that keeps a column in sight, taken in or not."""
         columns = range(self._view.table_model.columnCount())
         if [self._view.isColumnHidden(place) for place in columns] != self._hidden():
             self._view.on_shape_changed()
