@@ -7,12 +7,13 @@ from __future__ import annotations
 
 from app.drawing.body import aim_at_joints, draw_body, edge_at
 from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_width
+from app.drawing.companions import draw_companions
 from app.drawing.crowded import free_box, say_left_out
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
 from app.drawing.rows import Wishes, foot_of, legend_below, no_rows, round_factor, rows_in, said_of, thickest
-from app.drawing.shapes import LOADS, Box, Part, Picture, Target, Text
+from app.drawing.shapes import LOADS, OF_COMPANION, Box, Part, Picture, Target, Text
 from app.drawing.shoulders import draw_shoulders
 from app.drawing.sketch import Sketch
 from app.drawing.supports import draw_supports
@@ -52,6 +53,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
         _draw_scales(sketch)
     draw_shoulders(sketch)
     draw_supports(sketch, wishes.hanging)
+    draw_companions(sketch, wishes.companions)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
     _aim_at_labels(sketch.picture)
@@ -65,7 +67,8 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
 def _aim_at_labels(picture: Picture) -> None:
     """What acts is pointed at by its label as well; some of it is said in words only."""
     for text in picture.texts:
-        if text.part is not None and text.part.kind in LOADS | {"bedding", "support", "shoulder"}:
+        labelled = LOADS | {"bedding", "support", "shoulder"} | OF_COMPANION
+        if text.part is not None and text.part.kind in labelled:
             picture.targets.append(Target(text.box, text.part))
 
 

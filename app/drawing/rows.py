@@ -10,6 +10,7 @@ import math
 from dataclasses import dataclass
 
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
+from app.drawing.companions import companion_wishes, lane_rows
 from app.drawing.frame import Frame
 from app.drawing.loads import GRAVITY_RANK, bracketed, lies_outside, load_wishes, no_loads_text
 from app.drawing.member import Member
@@ -18,6 +19,7 @@ from app.drawing.shoulders import shoulder_wishes
 from app.drawing.sketch import Rows, Sketch
 from app.drawing.supports import hanging_wishes, hangs, support_of
 from app.drawing.words import not_to_scale
+from app.words import tr
 from solver.model import end_of
 from solver.sections import outline
 
@@ -43,6 +45,7 @@ class Wishes:
     sections: list[Wish]
     hanging: list[Wish]
     joints: list[Wish]
+    companions: list[list[Wish]]  # by lane
 
     @classmethod
     def of(cls, sketch: Sketch) -> Wishes:
@@ -53,6 +56,7 @@ class Wishes:
             section_wishes(sketch),
             [*hanging_wishes(sketch), *shoulder_wishes(sketch)],
             joint_wishes(sketch),
+            companion_wishes(sketch),
         )
 
 
@@ -121,6 +125,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     marks = _text_rows(sketch, wishes.joints, lengths[0][0], most)
     under_label, under = _under_rows(wishes.hanging, marks[0][0])
     last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
+    lanes, last = lane_rows(sketch, wishes.companions, last, room, labelled=most > 0)
     last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(
         labels=tuple(reversed(labels)),
@@ -135,6 +140,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
         lengths=tuple(reversed(lengths)),
         chain=chain,
         sections=sections,
+        lanes=lanes,
     )
 
 
@@ -231,7 +237,8 @@ def said_of(sketch: Sketch) -> str:
         return ""
     segments = sketch.member.project.segments
     unlike = not_to_scale([segments[index].mark for index in sketch.frame.ruler.widened])
-    return "; ".join(text for text in (sketch.frame.detail.words, unlike) if text)
+    beside = tr("companions: not to scale across") if sketch.member.project.companions else ""
+    return "; ".join(text for text in (sketch.frame.detail.words, unlike, beside) if text)
 
 
 def thickest(member: Member) -> float:

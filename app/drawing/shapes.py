@@ -31,14 +31,30 @@ PartKind: TypeAlias = Literal[
     "force",
     "movement",
     "gravity",
+    "companion",
+    "companion_mark",
+    "companion_length",
+    "companion_section",
+    "companion_load",
+    "companion_name",
     "note",
 ]
 OF_SEGMENT: frozenset[PartKind] = frozenset(
     ("segment", "mark", "length", "section", "distributed", "distributed_end", "warmth", "fit", "bedding")
 )
 OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "shoulder", "force", "movement"))
+OF_COMPANION: frozenset[PartKind] = frozenset(  # of its segments, counted over all companions
+    (
+        "companion",
+        "companion_mark",
+        "companion_length",
+        "companion_section",
+        "companion_load",
+        "companion_name",
+    )
+)
 LOADS: frozenset[PartKind] = frozenset(  # of the shown state
-    ("distributed", "distributed_end", "warmth", "fit", "force", "movement", "gravity")
+    ("distributed", "distributed_end", "warmth", "fit", "force", "movement", "gravity", "companion_load")
 )
 Ink: TypeAlias = Literal["ink", "quiet", "joint", "select"]
 Fill: TypeAlias = Literal["", "body_fill", "band_fill", "select_fill", "load_fill", "paper", "ink"]
@@ -85,7 +101,8 @@ class Box(Struct, frozen=True):
 
 
 class Part(Struct, frozen=True):
-    """What a point of the drawing stands for: `index` along the chain, of segments or of joints.
+    """What a point of the drawing stands for: `index` along the chain, of segments or of joints, or of the
+    segments of all companions in the order of the file.
 
     A label that stands for neighbours alike has the first one's index. `number` tells the supports of one
     joint apart, in their order.
@@ -94,6 +111,13 @@ class Part(Struct, frozen=True):
     kind: PartKind
     index: int
     number: int = 0
+
+
+def body_of(part: Part) -> Part:
+    """The segment, the companion's segment or the joint that a part belongs to."""
+    if part.kind in OF_COMPANION:
+        return Part("companion", part.index)
+    return Part("segment" if part.kind in OF_SEGMENT else "joint", part.index)
 
 
 class Stroke(Struct, frozen=True):

@@ -28,6 +28,14 @@ LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
 @dataclass(frozen=True, slots=True)
+class Lane:
+    """Where companions lie across the axis: their bodies, and the rows of labels beside them."""
+
+    body: Span
+    labels: tuple[Span, ...]
+
+
+@dataclass(frozen=True, slots=True)
 class Rows:
     """Where the parts lie across the axis: each a span (or one coordinate), from the side of the loads."""
 
@@ -43,6 +51,7 @@ class Rows:
     lengths: tuple[Span, ...]
     chain: float
     sections: tuple[Span, ...]
+    lanes: tuple[Lane, ...] = ()  # of companions, the nearest to the member first
 
 
 @dataclass

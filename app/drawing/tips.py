@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+from app.drawing.companions import companion_tip
 from app.drawing.member import Member
-from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Part
+from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Part
 from app.drawing.shoulders import shoulder_label
 from app.drawing.words import (
     bedding_text,
@@ -22,6 +23,8 @@ from solver.model import end_of, supports_of
 
 def tip(member: Member, part: Part) -> str:
     """The tooltip of a part."""
+    if part.kind in OF_COMPANION:
+        return companion_tip(member, part.index)
     if part.kind in OF_SEGMENT:
         return _segment_tip(member, part.index)
     if part.kind in OF_JOINT:

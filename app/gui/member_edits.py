@@ -6,6 +6,7 @@ Each is one undo step on the records chosen in the tables; what cannot be done i
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import reduce
 
 from PySide6.QtCore import QObject, Signal
 
@@ -129,6 +130,18 @@ class MemberEdits(QObject):
         """The member described from its other end."""
         self._tables.commit_open_editor()
         self._do(tr("Reverse member"), edits.reverse_member)
+        if any(companion.action != "both" for companion in self._document.project.companions):
+            self.told.emit(tr("companions that act one way only part at their other end now"))
+
+    def fit_companions(self) -> None:
+        """The last segment of every companion that does not fit as long as it must be."""
+        self._tables.commit_open_editor()
+        before = self._document.project
+        unfit = [i for i, one in enumerate(before.companions) if edits.is_unfit(before, one)]
+        if not unfit:
+            self.told.emit(tr("every companion fits its span"))
+            return
+        self._do(tr("Make companions fit"), lambda project: reduce(edits.fit_companion, unfit, project))
 
     def number_joints(self) -> None:
         """Joints that are numbers in order along the chain; those with names keep them."""
@@ -179,6 +192,8 @@ def also_gone(before: Project, after: Project) -> str:
     held = [j.mark for j in before.joints if j.mark not in kept and supports_of(j)]
     loads, limits = (count(before) - count(after) for count in (_loads, _limits))
     parts = [tr("the support of joint {mark}").format(mark=mark) for mark in held]
+    beside = {companion.mark for companion in after.companions}
+    parts += [tr("companion {mark}").format(mark=c.mark) for c in before.companions if c.mark not in beside]
     parts += [trn("{count} load", "{count} loads", loads)] if loads else []
     parts += [trn("{count} limit", "{count} limits", limits)] if limits else []
     return tr("also gone: {things}").format(things=", ".join(parts)) if parts else ""

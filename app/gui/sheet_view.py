@@ -10,7 +10,7 @@ from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWh
 from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
 from app.drawing.ruler import Ruler
-from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Box, Part
+from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Box, Part, body_of
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import SheetLayout, least_height
@@ -188,12 +188,13 @@ class SheetView(QGraphicsView):
 
     def zoom_to_selection(self) -> None:
         """Show what is selected as large as it goes, a joint with its segments; else that at the cursor."""
-        if not (self._view.selection.segments or self._view.selection.joints):
+        if self._view.selection == Selection():
             self._select_at_cursor()
         chosen, positions = self._view.selection, self._sheet.positions
         last = len(positions) - 1
         ends = [end for index in chosen.segments for end in (index, index + 1)]
         ends += [end for index in chosen.joints for end in (index - 1, index + 1)]
+        ends += self.drawing.joints_beside(chosen.companions)
         if ends:
             places = [positions[min(max(end, 0), last)] for end in ends]
             self._sheet.set_ruler(self.ruler.showing(min(places), max(places)))
@@ -231,29 +232,32 @@ class SheetView(QGraphicsView):
         return min(range(len(positions)), key=lambda joint: abs(ruler.pixel(positions[joint]) - pixel))
 
     def _select_at_cursor(self) -> None:
-        """Select the segment the cursor is in; at a joint that joint, the next time the segment there."""
+        """Select the segment the cursor is in, at a joint first that joint; then what lies beside."""
         if self._view.cursor is None:
             return
         x, positions = self._view.cursor.x, self._sheet.positions
+        joints = (Selection(joints=frozenset((i,))) for i, place in enumerate(positions) if place == x)
         segment = Selection(segments=frozenset((self.segment_at(x),)))
-        joint = Selection(joints=frozenset(i for i, place in enumerate(positions) if place == x))
-        at_joint = bool(joint.joints) and self._view.selection != joint
-        self._view.set_selection(joint if at_joint else segment)
+        beside = (Selection(companions=frozenset((i,))) for i in self.drawing.companions_at(x))
+        choices = [*joints, segment, *beside]
+        chosen = self._view.selection
+        here = choices.index(chosen) if chosen in choices else -1
+        self._view.set_selection(choices[(here + 1) % len(choices)])
 
     def _open_selected(self) -> None:
         """Type the selected part in place: a length, a support; else of the segment at the cursor."""
-        if not (self._view.selection.segments or self._view.selection.joints):
+        if self._view.selection == Selection():
             self._select_at_cursor()
         chosen = self._view.selection
         parts = [Part("length", index) for index in sorted(chosen.segments)]
+        parts += [Part("companion_length", index) for index in sorted(chosen.companions)]
         parts += [Part("support", index) for index in sorted(chosen.joints)]
         if parts:
             self.opened.emit(parts[0], self.box_of(parts[0]))
 
     def box_of(self, part: Part) -> Box:
         """Where a part is drawn; else its segment or joint, else the middle of the drawing."""
-        body = Part("segment" if part.kind in OF_SEGMENT else "joint", part.index)
-        found = self.drawing.picture.box_of(part) or self.drawing.picture.box_of(body)
+        found = self.drawing.picture.box_of(part) or self.drawing.picture.box_of(body_of(part))
         middle = self.places.drawing.center()
         return found or Box.around((middle.x(), middle.y()), 0.0, 0.0)
 
@@ -291,6 +295,8 @@ class SheetView(QGraphicsView):
             clicked = Selection(segments=one)
         elif part.kind in OF_JOINT:
             clicked = Selection(joints=one)
+        elif part.kind in OF_COMPANION:
+            clicked = Selection(companions=one)
         else:
             self._view.set_thing(thing)
             return

@@ -27,26 +27,37 @@ class Cursor:
 
 @dataclass(frozen=True, slots=True)
 class Selection:
-    """Selected segments and joints, by index along the chain."""
+    """Selected segments and joints, by index along the chain, and segments of companions, among all."""
 
     segments: frozenset[int] = field(default_factory=frozenset)
     joints: frozenset[int] = field(default_factory=frozenset)
+    companions: frozenset[int] = field(default_factory=frozenset)
 
     def holds(self, part: Selection) -> bool:
         """Whether these are all in it."""
-        return part.segments <= self.segments and part.joints <= self.joints
+        mine = (self.segments, self.joints, self.companions)
+        theirs = (part.segments, part.joints, part.companions)
+        return all(part <= whole for part, whole in zip(theirs, mine, strict=True))
 
     def toggled(self, part: Selection) -> Selection:
         """With these taken in, or out where they are in already."""
-        return Selection(self.segments ^ part.segments, self.joints ^ part.joints)
+        return Selection(
+            self.segments ^ part.segments, self.joints ^ part.joints, self.companions ^ part.companions
+        )
 
     def joined(self, part: Selection) -> Selection:
         """With these as well."""
-        return Selection(self.segments | part.segments, self.joints | part.joints)
+        return Selection(
+            self.segments | part.segments, self.joints | part.joints, self.companions | part.companions
+        )
 
     def extended(self, part: Selection) -> Selection:
         """With these as well, and all between them and the nearest of their kind."""
-        return Selection(_up_to(self.segments, part.segments), _up_to(self.joints, part.joints))
+        return Selection(
+            _up_to(self.segments, part.segments),
+            _up_to(self.joints, part.joints),
+            _up_to(self.companions, part.companions),
+        )
 
 
 def _up_to(chosen: frozenset[int], wanted: frozenset[int]) -> frozenset[int]:

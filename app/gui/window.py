@@ -195,6 +195,7 @@ class Window(QMainWindow):
             "move_up": self.edits.move_up,
             "move_down": self.edits.move_down,
             "delete_segments": self.edits.delete_segments,
+            "fit_companions": self.edits.fit_companions,
             "split": self.edits.split,
             "join": self.edits.join,
             "split_at_cursor": self.shaping.split_at_cursor,

@@ -12,6 +12,7 @@ from dataclasses import dataclass
 from itertools import takewhile
 from typing import Final
 
+from app.beside import beside_at, index_of, index_of_mark
 from app.drawing.shapes import LOADS, Part, PartKind
 from app.shown import Shown
 from solver.model import Project, SegmentLoad, end_of
@@ -43,10 +44,31 @@ _JOINT_COLUMNS: Final[dict[PartKind, str]] = {
     "force": "force",
     "movement": "movement",
 }
+_COMPANION_COLUMNS: Final[dict[PartKind, str]] = {
+    "companion": "section",
+    "companion_mark": "mark",
+    "companion_length": "length",
+    "companion_section": "section",
+    "companion_name": "acts",
+}
 # The order in which Tab goes from cell to cell of one segment or joint
 ORDER: Final[dict[str, tuple[str, ...]]] = {
     "segments": ("length", "section", "material", "load_start", "load_end", "heat", "bedding", "mark"),
     "joints": ("support", "shoulder", "force", "movement", "mark"),
+    "companions": (
+        "length",
+        "section",
+        "material",
+        "acts",
+        "load_start",
+        "load_end",
+        "heat",
+        "lack_of_fit",
+        "mark",
+        "companion",
+        "start",
+        "end",
+    ),
 }
 
 
@@ -60,12 +82,26 @@ def cell_of(part: Part, project: Project, case: int | None) -> Cell | None:
         return Cell("segments", part.index, _SEGMENT_COLUMNS[part.kind])
     if part.kind in _JOINT_COLUMNS:
         return Cell("joints", part.index, _JOINT_COLUMNS[part.kind])
+    if part.kind in _COMPANION_COLUMNS:
+        return Cell("companions", part.index, _COMPANION_COLUMNS[part.kind])
     if case is None:
         return None
+    if part.kind == "companion_load":
+        return Cell("companions", part.index, _load_column(project, part.index, case))
     if part.kind == "gravity":
         return Cell("load_cases", case, "gravity")
     records = loads_behind(part, project, case) if part.kind == "fit" else ()
     return Cell("segment_loads", records[0], "lack_of_fit") if len(records) == 1 else None
+
+
+def _load_column(project: Project, index: int, case: int) -> str:
+    """The column of what acts on a companion's segment in the case; of temperatures where nothing does."""
+    mark = beside_at(project, index).segment.mark
+    loads = [load for load in project.load_cases[case].segment_loads if load.segment == mark]
+    if any(load.load_start or end_of(load.load_start, load.load_end) for load in loads):
+        return "load_start"
+    heated = any(load.temperature_start or load.temperature_end for load in loads)
+    return "heat" if heated or not any(load.lack_of_fit for load in loads) else "lack_of_fit"
 
 
 def cells_of(part: Part, project: Project, case: int | None) -> tuple[Cell, ...]:
@@ -128,7 +164,10 @@ def loads_behind(part: Part, project: Project, case: int | None) -> tuple[int, .
     if part.kind in _JOINT_COLUMNS:
         mark = project.joints[part.index].mark
         return tuple(i for i, load in enumerate(loads.joint_loads) if load.joint == mark)
-    mark = project.segments[part.index].mark
+    if part.kind == "companion_load":
+        mark = beside_at(project, part.index).segment.mark
+    else:
+        mark = project.segments[part.index].mark
     own = [i for i, load in enumerate(loads.segment_loads) if load.segment == mark]
     if part.kind == "fit":
         return tuple(i for i in own if loads.segment_loads[i].lack_of_fit)
@@ -156,6 +195,14 @@ _SEGMENT_PARTS: Final[dict[str, PartKind]] = {
     "bedding": "bedding",
     "lack_of_fit": "fit",
 }
+_COMPANION_PARTS: Final[dict[str, PartKind]] = {
+    "length": "companion_length",
+    "section": "companion_section",
+    "mark": "companion_mark",
+    "acts": "companion_name",
+    "companion": "companion_name",
+    **dict.fromkeys(("load_start", "load_end", "heat", "lack_of_fit"), "companion_load"),
+}
 _JOINT_PARTS: Final[dict[str, PartKind]] = {
     "support": "support",
     "shoulder": "shoulder",
@@ -170,6 +217,8 @@ def part_of(cell: Cell, project: Project, case: int | None) -> Part | None:
         return Part(_SEGMENT_PARTS.get(cell.column, "segment"), cell.record)
     if cell.table == "joints":
         return Part(_JOINT_PARTS.get(cell.column, "joint"), cell.record)
+    if cell.table == "companions":
+        return Part(_COMPANION_PARTS.get(cell.column, "companion"), cell.record)
     if cell.table == "load_cases":
         return Part("gravity", 0) if cell.column == "gravity" and cell.record == case else None
     return _part_of_load(cell, project, case)
@@ -184,7 +233,9 @@ def _part_of_load(cell: Cell, project: Project, case: int | None) -> Part | None
     if cell.table == "joint_loads":
         return _marked(project.joints, records[cell.record].joint, _JOINT_PARTS.get(cell.column, "joint"))
     kind = _SEGMENT_PARTS.get(cell.column, "segment")
-    return _marked(project.segments, records[cell.record].segment, kind)
+    found = _marked(project.segments, records[cell.record].segment, kind)
+    index = index_of_mark(project, records[cell.record].segment) if found is None else None
+    return found if index is None else Part("companion_load", index)
 
 
 def _marked(records: tuple[object, ...], mark: str, kind: PartKind) -> Part | None:
@@ -193,11 +244,24 @@ def _marked(records: tuple[object, ...], mark: str, kind: PartKind) -> Part | No
     return None if index is None else Part(kind, index)
 
 
+def _part_of_companion(project: Project, at: int, rest: Sequence[str | int]) -> Part | None:
+    """The part that shows a cell of a companion or of one of its segments, by the rest of its place."""
+    match rest:
+        case ("segments", int(number), str(column), *_):
+            return part_of(Cell("companions", index_of(project, at, number), column), project, None)
+        case (str(key),):
+            column = "companion" if key == "mark" else key
+            return part_of(Cell("companions", index_of(project, at), column), project, None)
+    return None
+
+
 def part_at(place: Sequence[str | int], project: Project) -> Part | None:
     """The part that shows the cell at a place of the project (of a draft); None where none does."""
     match place:
         case ("segments" | "joints" as table, int(record), str(column), *_):
             return part_of(Cell(table, record, column), project, None)
+        case ("companions", int(at), *rest) if at < len(project.companions):
+            return _part_of_companion(project, at, rest)
         case ("load_cases", int(case), str(column)) if case < len(project.load_cases):
             return part_of(Cell("load_cases", case, column), project, case)
         case ("load_cases", int(case), str(table), int(record), str(column)) if case < len(

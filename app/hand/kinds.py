@@ -160,6 +160,17 @@ KINDS: Final[tuple[Kind, ...]] = (
         ("bedding", "bedding_end"),
     ),
     Kind(
+        "companion",
+        later("Companion"),
+        "segment",
+        "C",
+        symbols.COMPANION,
+        "companion",
+        ("", ""),
+        "length",
+        (),
+    ),
+    Kind(
         "weight",
         later("Self-weight"),
         "member",

@@ -17,7 +17,8 @@ from app.words import tr
 from solver.model import Project, supports_of
 
 ENDS: Final[dict[PartKind, PartKind]] = {"distributed_end": "distributed"}
-_BY_PART: Final[dict[PartKind, Kind]] = {kind.part: kind for kind in KINDS if kind.part != "support"}
+_APART: Final = ("support", "companion")  # of which what is clicked is no thing by itself, or one of several
+_BY_PART: Final[dict[PartKind, Kind]] = {kind.part: kind for kind in KINDS if kind.part not in _APART}
 _FREE: Final = next(kind for kind in KINDS if kind.key == "free")
 
 

@@ -18,6 +18,7 @@ from app import edits
 from app.drawing.shapes import Part
 from app.entry import parse_entry
 from app.hand.cells import Cell, cell_of
+from app.hand.companions import companions_beside, lay_beside
 from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
 from app.hand.shoulders import begun_shoulder, is_at_end
@@ -46,6 +47,9 @@ def put_on(kind: Kind, project: Project, indexes: Iterable[int], case: int | Non
     NotPut or EditError where one of them cannot take it; then nothing is changed.
     """
     where = (0,) if kind.on == "member" else tuple(indexes)
+    if kind.part == "companion":
+        fresh, cells, note = lay_beside(project, where)
+        return Put(fresh, case, cells, note)
     note = ""
     if kind.of_case and case is None:
         project, case, note = _with_case(project)
@@ -175,6 +179,8 @@ def _set_load(
 
 def take_off(kind: Kind, project: Project, indexes: Iterable[int], case: int | None) -> Project:
     """The project without such a thing on each of them; EditError where several loads stand behind one."""
+    if kind.part == "companion":
+        return edits.remove_companions(project, companions_beside(project, indexes))
     for index in (0,) if kind.on == "member" else tuple(indexes):
         if not has(kind, project, index, case):
             continue
@@ -196,6 +202,8 @@ def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: 
 
 def has(kind: Kind, project: Project, index: int, case: int | None) -> bool:
     """Whether there is something of this kind that can be taken off."""
+    if kind.part == "companion":
+        return bool(companions_beside(project, (index,)))
     if kind.part == "support":
         return bool(_of_this_kind(kind, supports_of(project.joints[index])))
     return _is_there(kind, project, index, case)

@@ -15,7 +15,7 @@ from msgspec.structs import replace
 
 from app.drawing.frame import Detail, Frame
 from app.drawing.layout import lay_out
-from app.drawing.member import Member
+from app.drawing.member import Member, acting_beside
 from app.drawing.rows import depth_for, round_factor, thickest
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Picture
@@ -27,7 +27,8 @@ from app.units import format_value
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
-from solver.model import Project
+from solver.model import Companion, Project
+from solver.packing import states_of
 from solver.shoulders import notches
 
 POINT: Final = 0.7
@@ -91,7 +92,9 @@ def drawn_positions(positions: Sequence[float], extent: float, *, upright: bool)
 def _member(project: Project, positions: FloatArray, loads: Loads | None, state: int) -> Member:
     of_state = None if loads is None else _of_state(loads, state)
     shown = _with_short_marks(project)
-    return Member(shown, tuple(map(float, positions)), of_state, notches(shown))
+    factors = {} if loads is None else states_of(project)[state].factors
+    beside = acting_beside(project, factors)
+    return Member(shown, tuple(map(float, positions)), of_state, notches(shown), beside)
 
 
 def _with_short_marks(project: Project) -> Project:
@@ -100,7 +103,14 @@ def _with_short_marks(project: Project) -> Project:
         project,
         segments=tuple(replace(s, mark=fitted(s.mark, _MARK, _WIDEST_MARK)) for s in project.segments),
         joints=tuple(replace(j, mark=fitted(j.mark, _MARK, _WIDEST_MARK)) for j in project.joints),
+        companions=tuple(map(_with_short_joints, project.companions)),
     )
+
+
+def _with_short_joints(companion: Companion) -> Companion:
+    """The companion between joints whose marks are cut alike."""
+    start, end = (fitted(mark, _MARK, _WIDEST_MARK) for mark in (companion.start, companion.end))
+    return replace(companion, start=start, end=end)
 
 
 def _of_state(loads: Loads, state: int) -> Loads:
@@ -135,7 +145,9 @@ def _half(member: Member, ruler: Ruler, most: float) -> float:
 def _note(project: Project, frame: Frame, picture: Picture) -> str:
     left_out = tr("Labels without room are left out; the tables hold them.") if picture.left_out else ""
     marks = [project.segments[index].mark for index in frame.ruler.widened]
-    return " ".join(said for said in (_scale_note(frame.ruler, picture.factor, marks), left_out) if said)
+    beside = tr("Companions are not to scale across.") if project.companions else ""
+    scale = _scale_note(frame.ruler, picture.factor, marks)
+    return " ".join(said for said in (scale, beside, left_out) if said)
 
 
 def _scale_note(ruler: Ruler, factor: float, longer: Sequence[str]) -> str:

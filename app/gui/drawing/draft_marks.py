@@ -10,7 +10,7 @@ from collections.abc import Iterable
 from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QFont, QPainter, QPen
 
-from app.drawing.shapes import OF_SEGMENT, Box, Part, Picture
+from app.drawing.shapes import Box, Part, Picture, body_of
 from app.gui.theme import Theme, colour
 
 SIZE = 14.0
@@ -28,8 +28,7 @@ def paint_marks(
 
 def box_to_mark(picture: Picture, part: Part) -> Box | None:
     """Where a part's mark goes; None where neither it nor its segment or joint is in the window."""
-    body = Part("segment" if part.kind in OF_SEGMENT else "joint", part.index)
-    return picture.box_of(part) or picture.box_of(body)
+    return picture.box_of(part) or picture.box_of(body_of(part))
 
 
 def _paint_mark(painter: QPainter, box: Box, theme: Theme, font: QFont) -> None:

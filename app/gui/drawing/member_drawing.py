@@ -5,7 +5,7 @@ Knows parts by kind and index only; what a click does is up to whoever listens.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import replace
 from functools import lru_cache
 
@@ -20,11 +20,13 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
+from app.beside import beside
+from app.drawing.companions import joints_of, pieces_of
 from app.drawing.frame import Detail, Frame
 from app.drawing.handles import Handle, handles_of
 from app.drawing.layout import sketched
 from app.drawing.member import Member
-from app.drawing.shapes import OF_SEGMENT, Box, Circle, Part, Picture, Stroke, Target
+from app.drawing.shapes import Box, Circle, Part, Picture, Stroke, Target, body_of
 from app.drawing.sketch import Sketch
 from app.drawing.tips import tip
 from app.gui.drawing.draft_marks import paint_marks
@@ -84,6 +86,23 @@ class MemberDrawing(QGraphicsObject):
     def member(self) -> Member | None:
         """What is drawn, as it was given."""
         return self._member
+
+    def companions_at(self, x: float) -> tuple[int, ...]:
+        """The segments of companions that lie beside a position, by their index among all."""
+        sketch = self.sketch
+        if sketch is None:
+            return ()
+        pixel = sketch.frame.ruler.pixel(x)
+        found = (piece for piece in pieces_of(sketch) if min(piece.ends) <= pixel <= max(piece.ends))
+        return tuple(piece.index for piece in found)
+
+    def joints_beside(self, companions: Iterable[int]) -> list[int]:
+        """The joints that the companions of these segments lie between."""
+        if self._member is None:
+            return []
+        found = beside(self._member.project)
+        whole = [found[index].companion for index in companions if index < len(found)]
+        return [joint for companion in whole for joint in joints_of(self._member, companion)]
 
     def hold(self) -> None:
         """Keep rows and proportions from now on."""
@@ -187,11 +206,7 @@ class MemberDrawing(QGraphicsObject):
     def _tip(self, part: Part | None) -> str:
         if part is None or self._member is None:
             return ""
-        drafts = [
-            words
-            for marked, words in self._drafts.items()
-            if (marked.kind in OF_SEGMENT, marked.index) == (part.kind in OF_SEGMENT, part.index)
-        ]
+        drafts = [words for marked, words in self._drafts.items() if body_of(marked) == body_of(part)]
         return "\n".join([tip(self._member, part), *drafts])
 
     def mousePressEvent(self, event: QGraphicsSceneMouseEvent) -> None:
@@ -231,6 +246,8 @@ class MemberDrawing(QGraphicsObject):
             return part is not None and part == self._thing
         if part.kind == "segment":
             return part.index in self._selection.segments
+        if part.kind == "companion":
+            return part.index in self._selection.companions
         return part.kind in ("support", "force") and part.index in self._selection.joints
 
     def _clip(self, painter: QPainter, place: Place) -> None:

@@ -13,7 +13,7 @@ from PySide6.QtCore import QEvent, QObject, QSize, Qt, QTimer, Signal
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QFrame, QLabel, QVBoxLayout, QWidget
 
-from app.drawing.shapes import LOADS, OF_JOINT, OF_SEGMENT, Box, Part
+from app.drawing.shapes import LOADS, OF_COMPANION, OF_JOINT, OF_SEGMENT, Box, Part
 from app.gui.document import Document, Snapshot
 from app.gui.hand.cell_entry import CellEntry
 from app.gui.hand.drafts import drafts_on_drawing
@@ -32,7 +32,7 @@ ENTER = (Qt.Key.Key_Return, Qt.Key.Key_Enter)
 TAB = (Qt.Key.Key_Tab, Qt.Key.Key_Backtab)
 ASIDE = 4.0  # px, between the box that is typed about and the editor
 LEAST_WIDTH = 110  # px, of the line that is typed into
-ONE_BY_ONE = ("mark",)  # what cannot be the same for several
+ONE_BY_ONE = ("mark", "companion")  # what cannot be the same for several
 
 
 class EditorFrame(QFrame):
@@ -226,6 +226,8 @@ class InPlace(QObject):
     def _also_selected(self, part: Part, cell: Cell) -> tuple[int, ...]:
         """The other selected segments or joints where the part is one of them."""
         chosen = self._view.selection
+        if part.kind in OF_COMPANION:
+            return tuple(sorted(chosen.companions)) if part.index in chosen.companions else ()
         among = chosen.segments if part.kind in OF_SEGMENT else chosen.joints
         of_table = cell.table == ("segments" if part.kind in OF_SEGMENT else "joints")
         if part.kind not in OF_SEGMENT | OF_JOINT or not of_table or part.index not in among:

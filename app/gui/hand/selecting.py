@@ -81,18 +81,19 @@ class Selecting(QObject):
         """Segments that the band holds from end to end, and joints between its ends, if it meets them."""
         places, ruler = self._sheet.places, self._sheet.ruler
         low, high = places.axes.along_of(band)
-        found: dict[str, set[int]] = {"segment": set(), "joint": set()}
+        found: dict[str, set[int]] = {"segment": set(), "joint": set(), "companion": set()}
         for target in self._sheet.drawing.picture.targets:
             box = target.box
             rect = QRectF(box.left, box.top, box.right - box.left, box.bottom - box.top)
-            if target.part.kind in found and band.intersects(rect):
+            beside = target.part.kind == "companion"
+            if target.part.kind in found and (band.contains(rect) if beside else band.intersects(rect)):
                 found[target.part.kind].add(target.part.index)
         pixels = [ruler.pixel(x) for x in self._sheet.positions]
         held = {i for i in found["joint"] if low <= pixels[i] <= high}
         whole = {
             i for i in found["segment"] if low <= min(pixels[i : i + 2]) and max(pixels[i : i + 2]) <= high
         }
-        return Selection(frozenset(whole), frozenset(held))
+        return Selection(frozenset(whole), frozenset(held), frozenset(found["companion"]))
 
     def cancel(self) -> None:
         """Put the band away and leave the selection as it was."""

@@ -14,7 +14,9 @@ from PySide6.QtCore import QEvent, QObject, QPoint, QPointF, Qt
 from PySide6.QtGui import QAction, QContextMenuEvent, QKeyEvent
 from PySide6.QtWidgets import QMenu
 
-from app.drawing.shapes import OF_JOINT, OF_SEGMENT, Part
+from app import edits
+from app.beside import beside_at
+from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Part
 from app.gui.document import Document
 from app.gui.hand.in_place import InPlace
 from app.gui.hand.placing import Placing
@@ -27,9 +29,11 @@ from app.gui.tables.pane import TablesPane
 from app.gui.theme import theme_for
 from app.gui.view import Selection, View
 from app.hand.cells import ORDER, Cell
+from app.hand.companions import companions_of
 from app.hand.kinds import KINDS, Kind
 from app.hand.putting import has
 from app.words import tr
+from solver.model import Project
 
 ICON = 20
 # Commands of the window, by what the menu is opened on; an empty key is a line between
@@ -106,6 +110,7 @@ class SheetMenu(QObject):
         chosen = self._view.selection
         parts = [Part("segment", i) for i in sorted(chosen.segments)]
         parts += [Part("joint", i) for i in sorted(chosen.joints)]
+        parts += [Part("companion", i) for i in sorted(chosen.companions)]
         box = self._sheet.box_of(parts[0] if parts else Part("note", 0))
         x = self._view.cursor.x if self._view.cursor else 0.0
         self._open(parts[0] if parts else None, x, QPoint(*map(round, box.centre)))
@@ -113,7 +118,7 @@ class SheetMenu(QObject):
     def _open(self, part: Part | None, x: float, point: QPoint) -> None:
         self._tables.commit_open_editor()
         self._placing.take(None)
-        if part is not None and part.kind in OF_SEGMENT | OF_JOINT:
+        if part is not None and part.kind in OF_SEGMENT | OF_JOINT | OF_COMPANION:
             self._select(part)
         if self.menu is not None:
             self.menu.deleteLater()
@@ -128,10 +133,15 @@ class SheetMenu(QObject):
             self._view.set_selection(Selection(segments=one))
         elif part.kind in OF_JOINT and part.index not in chosen.joints:
             self._view.set_selection(Selection(joints=one))
+        elif part.kind in OF_COMPANION and part.index not in chosen.companions:
+            self._view.set_selection(Selection(companions=one))
 
     # What is in it
 
     def _fill(self, menu: QMenu, part: Part | None, x: float) -> None:
+        if part is not None and part.kind in OF_COMPANION:
+            self._fill_for_companion(menu, part.index)
+            return
         if part is None or part.kind not in OF_SEGMENT | OF_JOINT:
             self._add_type_label(menu, part)
             self._add_kinds(menu, ("member",), ())
@@ -147,6 +157,30 @@ class SheetMenu(QObject):
             menu.addSeparator()
             self._add(menu, tr("Insert joint here"), lambda: self._shaping.split_at(x))
             self._add_commands(menu, ON_SEGMENT)
+
+    def _fill_for_companion(self, menu: QMenu, index: int) -> None:
+        """Its cells, one more segment, what makes it fit, and what takes it off."""
+        pieces = tuple(sorted(self._view.selection.companions)) or (index,)
+        self._add_cells(menu, "companions", index, pieces)
+        menu.addSeparator()
+        at = beside_at(self._document.project, index).at
+        self._add(
+            menu,
+            tr("Add companion segment"),
+            lambda: self._change(tr("Add companion segment"), lambda p: edits.extend_companion(p, at)),
+        )
+        self._add_commands(menu, ("fit_companions",))
+        menu.addSeparator()
+        self._add(menu, tr("Delete companion segments"), self._taking_off.delete)
+        whole = companions_of(self._document.project, pieces)
+        self._add(
+            menu,
+            tr("Take the companion off"),
+            lambda: self._change(tr("Take the companion off"), lambda p: edits.remove_companions(p, whole)),
+        )
+
+    def _change(self, name: str, edit: Callable[[Project], Project]) -> None:
+        self._document.commit(edit(self._document.project), name)
 
     def _add(self, menu: QMenu, words: str, do: Callable[[], object]) -> QAction:
         action = menu.addAction(words)

@@ -11,6 +11,7 @@ from collections.abc import Callable
 from PySide6.QtCore import QObject, Signal
 
 from app import edits
+from app.beside import beside
 from app.drawing.shapes import Part
 from app.edits import EditError
 from app.gui.document import Document
@@ -72,6 +73,8 @@ class TakingOff(QObject):
         chosen, thing = self._view.selection, self._view.thing
         if thing is not None:
             self._take_off_thing(thing)
+        elif chosen.companions:
+            self._take_companions_off(tuple(sorted(chosen.companions)))
         elif chosen.segments:
             self.segments_asked.emit()
         elif chosen.joints:
@@ -105,6 +108,13 @@ class TakingOff(QObject):
             tr("Take the support off"),
             lambda project: edits.without_support(project, thing.index, thing.number),
         )
+
+    def _take_companions_off(self, pieces: tuple[int, ...]) -> None:
+        """These segments of companions; a companion goes with its last."""
+        found = beside(self._document.project)
+        places = [(found[index].at, found[index].number) for index in pieces if index < len(found)]
+        name = tr("Delete companion segments")
+        self._do(name, lambda project: edits.remove_companion_segments(project, places))
 
     def _take_supports_off(self, joints: tuple[int, ...]) -> None:
         project = self._document.project

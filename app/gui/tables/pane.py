@@ -20,6 +20,8 @@ from app.gui.view import Selection, View
 from app.hand.cells import Cell
 from app.words import tr
 
+SELECTED = ("segments", "joints", "companions")  # tables whose rows are what the view has selected
+
 
 class TablesPane(QWidget):
     """All tables of one document; their selection is the view's."""
@@ -67,7 +69,7 @@ class TablesPane(QWidget):
             view.grips.moved.connect(self.rows_moved)
         if self._store is not None:
             view.columns_choice.restore(self._store.columns(table.key))
-        if table.key in ("segments", "joints"):
+        if table.key in SELECTED:
             view.choose_records(getattr(self._view.selection, table.key))
             view.record_chosen.connect(self.on_record_chosen)
         return view
@@ -215,15 +217,14 @@ class TablesPane(QWidget):
         """The rows chosen in the tables are what the view has selected."""
         if self._following:
             return
-        if self.sender() is self.views.made["segments"]:
-            self._view.set_selection(Selection(segments=records))
-        else:
-            self._view.set_selection(Selection(joints=records))
+        key = next(key for key in SELECTED if self.views.made.get(key) is self.sender())
+        self._view.set_selection(Selection(**{key: records}))
 
     def on_selection_changed(self, selection: Selection) -> None:
         """Light what is selected elsewhere, and choose its rows, as commands work on the rows chosen."""
         self._following = True  # the rows chosen here are no choice of a person's
-        for key, records in (("segments", selection.segments), ("joints", selection.joints)):
+        for key in SELECTED:
+            records = getattr(selection, key)
             self.models[key].set_lit(records)
             if key in self.views.made and selection != Selection():  # a click on paper chooses nothing
                 self.views[key].choose_records(records)
