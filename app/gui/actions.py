@@ -92,7 +92,7 @@ COMMANDS: Final[tuple[Command, ...]] = (
     Command("repeat", "&Member", later("Re&peat segments"), "Ctrl+R"),
     Command("mirror", "&Member", later("&Mirror the half")),
     Command("reverse", "&Member", later("&Reverse the member")),
-    Command("fit_companions", "&Member", later("Make &companions fit"), "Ctrl+E"),
+    Command("fit_companions", "&Member", later("Make companions &fit"), "Ctrl+E"),
     Command("number_joints", "&Member", later("Number the joints in &order")),
     SEPARATOR,
     Command(TYPICAL, "&Member", later("Add &typical material")),

@@ -11,6 +11,7 @@ from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Box, Part, body_of
+from app.gui.at_cursor import choices_at, next_of
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import SheetLayout, least_height
@@ -236,13 +237,9 @@ class SheetView(QGraphicsView):
         if self._view.cursor is None:
             return
         x, positions = self._view.cursor.x, self._sheet.positions
-        joints = (Selection(joints=frozenset((i,))) for i, place in enumerate(positions) if place == x)
-        segment = Selection(segments=frozenset((self.segment_at(x),)))
-        beside = (Selection(companions=frozenset((i,))) for i in self.drawing.companions_at(x))
-        choices = [*joints, segment, *beside]
-        chosen = self._view.selection
-        here = choices.index(chosen) if chosen in choices else -1
-        self._view.set_selection(choices[(here + 1) % len(choices)])
+        joints = [i for i, place in enumerate(positions) if place == x]
+        choices = choices_at(joints, self.segment_at(x), self.drawing.companions_at(x))
+        self._view.set_selection(next_of(choices, self._view.selection))
 
     def _open_selected(self) -> None:
         """Type the selected part in place: a length, a support; else of the segment at the cursor."""

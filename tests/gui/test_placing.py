@@ -81,7 +81,9 @@ def test_escape_puts_the_symbol_down_and_nothing_is_put_on(window):
     assert window.view.selection == Selection(joints=frozenset((4,)))
 
 
-@pytest.mark.parametrize("kind", [k for k in KINDS if k.on == "segment"], ids=lambda kind: kind.key)
+@pytest.mark.parametrize(
+    "kind", [k for k in KINDS if k.on == "segment" and k.keys], ids=lambda kind: kind.key
+)
 def test_each_load_goes_on_the_segment_that_is_clicked(qtbot, window, kind):
     name = edit_case(window, 0)
     window.view.set_shown(Shown("envelope"))
