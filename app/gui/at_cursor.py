@@ -1,9 +1,10 @@
-"""What the space bar selects at the cursor: one thing after another, again from the first after the last."""
+"""What a click selects, and what the space bar does at the cursor: one thing after another."""
 
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
+from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Part
 from app.gui.view import Selection
 
 
@@ -14,6 +15,16 @@ def choices_at(joints: Iterable[int], segment: int, companions: Iterable[int]) -
         Selection(segments=frozenset((segment,))),
         *(Selection(companions=frozenset((index,))) for index in companions),
     )
+
+
+def selection_of(part: Part) -> Selection | None:
+    """The segment, the joint or the companion's segment that a part belongs to; None for other parts."""
+    one = frozenset((part.index,))
+    if part.kind in OF_SEGMENT:
+        return Selection(segments=one)
+    if part.kind in OF_JOINT:
+        return Selection(joints=one)
+    return Selection(companions=one) if part.kind in OF_COMPANION else None
 
 
 def next_of(choices: Sequence[Selection], chosen: Selection) -> Selection:

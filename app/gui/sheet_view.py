@@ -10,8 +10,8 @@ from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWh
 from PySide6.QtWidgets import QApplication, QFrame, QGraphicsView, QWidget
 
 from app.drawing.ruler import Ruler
-from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Box, Part, body_of
-from app.gui.at_cursor import choices_at, next_of
+from app.drawing.shapes import Box, Part, body_of
+from app.gui.at_cursor import choices_at, next_of, selection_of
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import SheetLayout, least_height
@@ -286,15 +286,9 @@ class SheetView(QGraphicsView):
 
     def _on_part_clicked(self, part: Part, modifiers: Qt.KeyboardModifier) -> None:
         """Select the part; with Ctrl in or out, with Shift all up to it as well; mean a load by itself."""
-        one = frozenset((part.index,))
         thing = whole(part) if kind_of(part) is not None and not modifiers else None
-        if part.kind in OF_SEGMENT:
-            clicked = Selection(segments=one)
-        elif part.kind in OF_JOINT:
-            clicked = Selection(joints=one)
-        elif part.kind in OF_COMPANION:
-            clicked = Selection(companions=one)
-        else:
+        clicked = selection_of(part)
+        if clicked is None:
             self._view.set_thing(thing)
             return
         chosen = self._view.selection
