@@ -6,7 +6,6 @@ Each is one undo step on the records chosen in the tables; what cannot be done i
 from __future__ import annotations
 
 from collections.abc import Callable
-from functools import reduce
 
 from PySide6.QtCore import QObject, Signal
 
@@ -141,7 +140,16 @@ class MemberEdits(QObject):
         if not unfit:
             self.told.emit(tr("every companion fits its span"))
             return
-        self._do(tr("Make companions fit"), lambda project: reduce(edits.fit_companion, unfit, project))
+        project, refused = before, ""
+        for at in unfit:  # one that cannot be made to fit keeps none of the others from it
+            try:
+                project = edits.fit_companion(project, at)
+            except edits.EditError as error:
+                refused = reason_of(error, before.display.unit_system)
+        if project is not before:
+            self._document.commit(project, tr("Make companions fit"))
+        if refused:
+            self.told.emit(refused)
 
     def number_joints(self) -> None:
         """Joints that are numbers in order along the chain; those with names keep them."""

@@ -28,6 +28,7 @@ from app.gui.drawing_menu import DrawingMenu
 from app.gui.file_menus import RecentMenu, SamplesMenu
 from app.gui.files import Files
 from app.gui.findings.curing import Curing
+from app.gui.findings.fit_offer import FitOffer
 from app.gui.findings.jump import Jump
 from app.gui.findings.panel import FindingsPanel
 from app.gui.hand.grasp import Grasp
@@ -114,6 +115,9 @@ class Window(QMainWindow):
         self.shaping = Shaping(self.document, self.view, self.sheet, self.tables, self)
         self.selecting = Selecting(self.view, self.sheet, self)
         self.edits = MemberEdits(self.document, self.tables, self)
+        self.fit_offer = FitOffer(self.document)
+        self.fit_offer.clicked.connect(lambda _on=False: self.edits.fit_companions())
+        self.findings.add_offer(self.fit_offer)
         grasp = Grasp(self.document, self.view, self.sheet, self._edited_case, commit, self)
         self.hand = Hand(grasp, self.view, self)
         self.recovery = Recovery(self.document, recovery_folder, self)

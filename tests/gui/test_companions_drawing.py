@@ -4,6 +4,7 @@ import pytest
 from PySide6.QtCore import Qt
 from PySide6.QtTest import QTest
 
+from app import edits
 from app.drawing.shapes import Part
 from app.gui.view import Cursor, Selection
 from app.project_file import dump
@@ -130,12 +131,30 @@ def test_a_span_that_changes_is_said_and_one_key_makes_the_companion_fit(qtbot, 
     QTest.keyClick(line, KEY.Key_Return)
     solved(qtbot, window)
     (problem, *_) = window.showing.outcome.problems
+    assert window.fit_offer.text() == "Make Sb 110 mm long: S fits"
+    assert window.fit_offer.isVisible()
     assert 'companion "S" is 240 mm long and spans 250 mm; it is 10 mm too short' in problem
     chord(window.sheet, KEY.Key_E)
     assert [s.length for s in companions(window)[0].segments] == [0.14, 0.11]
     assert window.document.undo_name == "Make companions fit"
     chord(window.sheet, KEY.Key_E)
     assert window.status.news.text() == "every companion fits its span"
+
+
+def test_a_click_in_the_findings_makes_them_fit(qtbot, window):
+    window.document.commit(edits.set_value(window.document.project, ("segments", 1, "length"), 0.3), "Length")
+    solved(qtbot, window)
+    QTest.mouseClick(window.fit_offer, LEFT)
+    assert [s.length for s in companions(window)[0].segments] == [0.14, 0.16]
+    assert not window.fit_offer.isVisible()
+
+
+def test_one_whose_last_segment_cannot_mend_it_is_said_and_not_offered(qtbot, window):
+    window.document.commit(edits.set_value(window.document.project, ("segments", 1, "length"), 0.1), "Length")
+    solved(qtbot, window)
+    assert not window.fit_offer.isVisible()
+    chord(window.sheet, KEY.Key_E)
+    assert 'the other segments of companion "S" alone' in window.status.news.text()
 
 
 def test_what_goes_with_a_segment_is_said(window):

@@ -103,6 +103,13 @@ class FindingsPanel(QScrollArea):
         self._list.cure_wanted.connect(self.cure_wanted)
         self.filter.changed.connect(self._on_filter_changed)
 
+    def add_offer(self, offer: QWidget) -> None:
+        """Something to press under the verdict."""
+        column = self._body.layout()
+        assert isinstance(column, QVBoxLayout)  # noqa: S101 - for the type checker
+        column.insertWidget(column.indexOf(self._detail) + 1, offer)
+        QWidget.setTabOrder(self, offer)
+
     # What is shown
 
     @property
