@@ -60,6 +60,25 @@ def test_the_wheel_with_ctrl_runs_a_number_and_everything_follows(window, table,
     assert window.document.undo_name is None
 
 
+def total_of(table):
+    model = table.table_model
+    return model.index(model.rowCount() - 1, model.total_column).data().split(",")[0]
+
+
+def test_cells_that_follow_from_a_swept_one_go_with_it_and_back(window, table):
+    before = text_at(table, 1, "area"), total_of(table)
+    wheel(table, 1, "section", 3)
+    area = text_at(table, 1, "area")
+    assert area not in ("", before[0])
+    wheel(table, 1, "length", 3)  # takes the section in
+    assert text_at(table, 1, "area") == area
+    assert total_of(table) != before[1]
+    QTest.keyClick(table, KEY.Key_Escape)
+    assert total_of(table) == before[1]
+    window.document.undo()
+    assert text_at(table, 1, "area") == before[0]
+
+
 def test_shift_takes_larger_steps_and_a_smooth_wheel_whole_ones(window, table):
     wheel(table, 1, "length", 1, CTRL | SHIFT)
     assert text_at(table, 1, "length") == "190"

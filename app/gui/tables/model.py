@@ -156,10 +156,10 @@ class TableModel(RowsModel):
 
     def _settled_text(self, row: int, place: int) -> str:
         """What a record's cell shows where nothing is being typed into it."""
-        column = self._columns[place]
+        column = self._read_columns[place]
         if column.figure is not None:
             return column.figure(self.record_of(row), self._figures, self._sight)
-        return column.show(self._rows[row], self._sight)
+        return column.show(self._read[row], self._sight)
 
     def _adding_text(self, column: int) -> str:
         if column == 0 and self.table.adding is not None:

@@ -46,6 +46,7 @@ class RowsModel(QAbstractTableModel):
         self._sight = sight
         self._shown = document.project
         self._rows = table.rows(document.project, sight)
+        self._typed: tuple[tuple[object, ...], tuple[Column, ...]] | None = None  # of what is typed or swept
         self._columns = table.columns(document.project, sight)
         self._for_typing: dict[int, dict[int, bool]] = {}  # by row and column, of the cells asked for so far
         document.changed.connect(self.on_document_changed)
@@ -60,25 +61,46 @@ class RowsModel(QAbstractTableModel):
         self._follow(snapshot.project)
 
     def on_preview_changed(self, preview: Preview | None) -> None:
-        """Follow a hand on the drawing; what is typed into a cell is shown by its editor alone."""
-        pulled = preview.project if preview is not None and preview.by_hand else None
-        shown = pulled or self._document.project
-        if shown is not self._shown:
-            self._shown = shown
-            self._renew_rows(self.table.rows(shown, self._sight))
+        """Follow a hand on the drawing in all rows, and what is being typed or swept in how they read.
 
-    def _renew_rows(self, new: tuple[object, ...]) -> None:
-        """Other values in the rows that there are; a hand seldom makes one or takes one away."""
-        old = self._rows
-        self._sync_rows(new)
-        differing = [row for row, (a, b) in enumerate(zip(old, new, strict=False)) if a != b]
+        What an editor starts from, and what a typed text is held against, is of the document meanwhile.
+        """
+        wanted = None if preview is None else preview.project
+        shown = wanted or self._document.project
+        if shown is self._shown:
+            return
+        before, self._shown = self._read, shown
+        rows = self.table.rows(shown, self._sight)
+        if wanted is None or (preview is not None and preview.by_hand):
+            self._sync_rows(rows)
+        else:  # an editor stands in its row, so none comes or goes
+            columns = self.table.columns(shown, self._sight)
+            alike = len(rows) == len(self._rows) and len(columns) == len(self._columns)
+            self._typed = (rows, columns) if alike else None
+        self._announce(before)
+
+    @property
+    def _read(self) -> tuple[object, ...]:
+        """The rows as they are read: with what is being typed, and what follows from it."""
+        return self._rows if self._typed is None else self._typed[0]
+
+    @property
+    def _read_columns(self) -> tuple[Column, ...]:
+        """The columns that they are read by: a case that is being renamed has its new name there."""
+        return self._columns if self._typed is None else self._typed[1]
+
+    def _announce(self, before: tuple[object, ...]) -> None:
+        """Tell Qt of the rows that read otherwise than before, and of the totals."""
+        now, last, columns = self._read, self.rowCount() - 1, len(self._columns) - 1
+        differing = [row for row, (a, b) in enumerate(zip(before, now, strict=False)) if a != b]
         for row in differing:
             self._for_typing.pop(row, None)
-        if differing or len(old) != len(new):
-            last, columns = self.rowCount() - 1, len(self._columns) - 1
-            first, end = (differing[0], differing[-1]) if len(old) == len(new) else (0, last)
-            self.dataChanged.emit(self.index(first, 0), self.index(end, columns))
-            self.dataChanged.emit(self.index(last, 0), self.index(last, columns))  # the totals
+        if len(before) != len(now):
+            self.dataChanged.emit(self.index(0, 0), self.index(last, columns))
+        elif differing:
+            self.dataChanged.emit(self.index(differing[0], 0), self.index(differing[-1], columns))
+        if self.table.total is not None:
+            self.dataChanged.emit(self.index(last, 0), self.index(last, columns))
 
     def set_sight(self, sight: Sight) -> None:
         """Read the table in other units or with the loads of another case."""
@@ -110,7 +132,7 @@ class RowsModel(QAbstractTableModel):
         self.headerDataChanged.emit(Qt.Orientation.Horizontal, 0, len(new) - 1)
 
     def _sync_rows(self, new: tuple[object, ...]) -> None:
-        old = self._rows
+        old, self._typed = self._rows, None
         at, grown = changed_span(old, new)
         if grown > 0:
             self.beginInsertRows(NONE, at, at + grown - 1)
