@@ -14,7 +14,7 @@ import numpy as np
 from solver.arrays import BoolArray
 from solver.chain import Chain, Loads
 from solver.closing import Loose
-from solver.errors import BoundNotMet, Cancelled, NotSolvable, OutOfRange, StiffnessContrast
+from solver.errors import BoundNotMet, Cancelled, NotSolvable, OutOfRange, StiffnessContrast, never
 from solver.faults import Fault
 from solver.joints import FactorError
 from solver.mesh import Mesh
@@ -28,11 +28,6 @@ LEFTOVER = 1e-9  # part of the largest force that may be left over at a joint
 PASSES = 60
 SMALLEST_SIZE = 1e-140  # √J; the squares of smaller numbers have lost digits to underflow
 AIM = 0.25  # part of the allowed Σ η² that refinement aims at
-
-
-def never() -> bool:
-    """The answer of a caller that never cancels."""
-    return False
 
 
 def solve_axial(

@@ -13,6 +13,11 @@ class Cancelled(Exception):  # noqa: N818 - not an error: the caller asked for i
     """The caller withdrew the request between two stages of the solution."""
 
 
+def never() -> bool:
+    """The answer of a caller that never cancels."""
+    return False
+
+
 class InputError(Exception):
     """Base of everything that a change of the input cures."""
 

@@ -10,11 +10,11 @@ import numpy as np
 
 from solver.allowables import allowables, check_stresses, no_stress
 from solver.arrays import BoolArray, FloatArray, frozen
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
 from solver.bonded import constrained
 from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
-from solver.errors import Cancelled, NotSolvable, OutOfRange
+from solver.errors import Cancelled, NotSolvable, OutOfRange, never
 from solver.extremes import ExtremeFinder, Extremes
 from solver.fatigue import FatigueChecker
 from solver.faults import Fault

@@ -18,12 +18,10 @@ from app.cures.search import first_passing
 from app.edits import EditError
 from app.entry import EntryError
 from app.findings.subjects import Subject, subject_of, utilisation_of, worst_by_subject
-from solver.axial import never
 from solver.checks import Check
-from solver.errors import InputError
+from solver.errors import InputError, never
 from solver.model import Project
 from solver.results import Results
-from solver.solve import solve
 
 UNSOUGHT: Final = ("peak", "fatigue", "fatigue_joint")
 MOST_SPRINGS: Final = 3
@@ -184,6 +182,8 @@ class _Trials:
 
     def _solved(self, change: Change | None, *, cases: bool = False) -> Results | None:
         """The results with the change; None where there are none."""
+        from solver.solve import solve  # with libraries that a window which opens need not wait for
+
         try:
             changed = change.applied(self._before.project) if change else None
             return solve(changed, cases=cases, cancelled=self._cancelled) if changed else None

@@ -15,8 +15,9 @@ from scipy.linalg.lapack import dptsv
 from skfem import ElementLineP1, ElementLineP2
 
 from app.samples import read_sample
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
 from solver.chain import Chain, Loads
+from solver.errors import never
 from solver.packing import pack
 from solver.passes import Pass
 from solver.refine import first_mesh

@@ -196,7 +196,10 @@ window.close()
 
 
 def seconds_of(script, *arguments):
-    """What the script says it took, in a process of its own, with compiled modules as an installation has."""
+    """What the script says it took, in a process of its own, with compiled modules as an installation has.
+
+    Up to the window with the member drawn in it; what only results need is imported when they come.
+    """
     environment = {**os.environ, "QT_QPA_PLATFORM": "offscreen", "PYTHONPATH": os.pathsep.join(sys.path)}
     environment.pop("PYTHONDONTWRITEBYTECODE", None)
     environment["PYTHONPYCACHEPREFIX"] = arguments[-1]

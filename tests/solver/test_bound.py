@@ -14,7 +14,8 @@ from mpmath import mp
 from numpy.polynomial import legendre
 from numpy.testing import assert_allclose
 
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
+from solver.errors import never
 from solver.passes import Pass
 from solver.refine import first_mesh
 from tests.solver.chains import chain_of, loads_of, random_loads, random_prismatic, random_tapered

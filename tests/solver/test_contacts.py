@@ -11,9 +11,9 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
 from solver.chain import Stops
-from solver.errors import NotSolvable
+from solver.errors import NotSolvable, never
 from solver.passes import Pass
 from solver.refine import first_mesh
 from tests.solver.chains import chain_of, loads_of, random_loads, random_prismatic, random_tapered

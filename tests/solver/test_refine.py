@@ -10,9 +10,9 @@ from numpy.polynomial import legendre
 from numpy.testing import assert_allclose
 
 from solver import axial, refine
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
 from solver.elements import GREATEST_DEGREE
-from solver.errors import BoundNotMet
+from solver.errors import BoundNotMet, never
 from solver.passes import Pass
 from solver.refine import first_mesh, pole_decay, refined
 from tests.solver.chains import chain_of, loads_of, random_loads, random_tapered

@@ -1,4 +1,4 @@
-"""The curves of a strip as items of pyqtgraph, kept from one result to the next and fed with new points.
+"""What the curves of a strip are and in which order they lie; `curve` paints each.
 
 The points are in pixels already: the one ruler and the strip's scale place them, so no view box does, and
 all strips stay on one axis to the pixel, whichever way the sheet is turned.
@@ -7,10 +7,10 @@ all strips stay on one axis to the pixel, whichever way the sheet is turned.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
-import pyqtgraph as pg
 from PySide6.QtCore import Qt
-from PySide6.QtGui import QBrush, QPainter, QPen
+from PySide6.QtGui import QPainter, QPen
 
 from app.gui.sheet_layout import Place
 from app.gui.strips.company import COMPRESSION, OVER, PLAIN, TENSION
@@ -18,11 +18,13 @@ from app.gui.strips.content import StripContent
 from app.gui.strips.paths import Pixels, Polyline, Scale, band
 from app.gui.theme import Theme, colour
 
+if TYPE_CHECKING:
+    from app.gui.strips.curve import Curve
+
 LINES = {TENSION: "tension", COMPRESSION: "compression", OVER: "over"}
 FILLS = {PLAIN: "load_fill", TENSION: "tension_fill", COMPRESSION: "compression_fill", OVER: "over_fill"}
 FILL_Z, THIN_Z, LINE_Z = 1.0, 2.5, 3.0
 HAIRLINE = 1.0
-BESIDE = ((-0.4, -0.4), (0.4, 0.4), (-0.4, 0.4), (0.4, -0.4))  # hairlines that make one of 1.8 pixels
 DASHES = (6.0, 4.0)  # of a reference, unlike those of the limits
 DOTS = (1.5, 2.5)  # of the envelope around a state
 
@@ -84,47 +86,6 @@ def _bands(content: StripContent, place: Place, scale: Scale) -> list[Polyline]:
     return [band(*content.around, place.ruler, scale, place.axes)]
 
 
-class Curve(pg.PlotCurveItem):
-    """A curve in pixels of the sheet; its strip paints it, so that a strip is one picture that is kept."""
-
-    def __init__(self) -> None:
-        super().__init__(antialias=True)
-        self.setSegmentedLineMode("off")
-
-    def getViewBox(self) -> None:
-        """None: it lies in no view box of the library."""
-
-    def show_shape(self, shape: Shape, theme: Theme) -> None:
-        """Draw this."""
-        self.setZValue(shape.height)
-        pattern = Qt.BrushStyle.BDiagPattern if shape.hatched else Qt.BrushStyle.SolidPattern
-        filled = bool(shape.fill)
-        self.setData(
-            shape.points.x,
-            shape.points.y,
-            connect="all" if filled else shape.points.joined,  # which the library makes a path of much faster
-            pen=shape.pen(theme),
-            fillLevel="enclosed" if filled else None,
-            brush=QBrush(colour(getattr(theme, shape.fill)), pattern) if filled else None,
-        )
-
-    def paint_on(self, painter: QPainter) -> None:
-        """A fill with hard edges, which lie under its line; a line as hairlines beside each other.
-
-        Qt draws a line of one pixel twenty times as fast as any wider one.
-        """
-        path, brush, pen = self.getPath(), self.opts["brush"], self.opts["pen"]
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing, brush is None)
-        if brush is not None:
-            painter.fillPath(path, brush)
-            return
-        painter.setPen(pen)
-        for x, y in ((0.0, 0.0),) if self.zValue() == THIN_Z else BESIDE:
-            painter.translate(x, y)
-            painter.drawPath(path)
-            painter.translate(-x, -y)
-
-
 class Curves:
     """As many curves as a strip needs, kept from one result to the next."""
 
@@ -134,8 +95,12 @@ class Curves:
 
     def show_shapes(self, shown: tuple[Shape, ...], theme: Theme) -> None:
         """Draw these and nothing else; among fills and among lines the later lie above."""
-        while len(self._items) < len(shown):
-            self._items.append(Curve())
+        if len(self._items) < len(shown):
+            from app.gui.strips.curve import (
+                Curve,  # with a library that a window which opens need not wait for
+            )
+
+            self._items += [Curve() for _ in range(len(shown) - len(self._items))]
         self.shown = self._items[: len(shown)]
         for item, shape in zip(self.shown, shown, strict=True):
             item.show_shape(shape, theme)
@@ -143,6 +108,6 @@ class Curves:
     def paint(self, painter: QPainter, *, lines: bool) -> None:
         """The fills, or the lines, the lower ones first."""
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        for curve in sorted(self.shown, key=Curve.zValue):
+        for curve in sorted(self.shown, key=lambda curve: curve.zValue()):
             if (curve.opts["brush"] is None) is lines:
                 curve.paint_on(painter)

@@ -8,6 +8,7 @@ beside the strip.
 from __future__ import annotations
 
 from dataclasses import replace
+from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPen
@@ -16,10 +17,13 @@ from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 from app.gui.sheet_items import Painted
 from app.gui.sheet_layout import Place
 from app.gui.strips.content import StripContent
-from app.gui.strips.curves import Curve, Curves, shapes
+from app.gui.strips.curves import Curves, shapes
 from app.gui.strips.labels import Label, strip_labels
 from app.gui.strips.paths import Scale
 from app.gui.theme import Theme, colour
+
+if TYPE_CHECKING:
+    from app.gui.strips.curve import Curve
 
 LABELS_Z = 6.0  # above the joint lines
 
