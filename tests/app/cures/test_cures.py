@@ -265,7 +265,7 @@ def test_a_cure_stands_only_where_each_case_alone_is_solved_too(monkeypatch):
         return solve(project, cases=False, cancelled=cancelled)
 
     results = solve(bar, cases=False)
-    monkeypatch.setattr(import_module("app.cures.seek"), "solve", refusing)
+    monkeypatch.setattr(import_module("solver.solve"), "solve", refusing)
     assert seek(results, failing(results)[0]).found == ()
 
 
