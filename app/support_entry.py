@@ -84,8 +84,12 @@ def _parse_one(text: str, system: UnitSystemName, old: Supports) -> Supports:
     word, rest = (found[1].casefold(), found[2].strip()) if found else ("", "")
     kind = next((name for name in _WORDS for said in (name, tr(name)) if said.casefold() == word), None)
     if kind is None:
-        raise SupportError(tr("a support is free, fixed or a spring, such as spring 600 kN/mm"))
+        raise SupportError(_what_it_is())
     return _WORDS[kind](rest, system)
+
+
+def _what_it_is() -> str:
+    return tr("a support is free, fixed, a spring such as spring 600 kN/mm, or a stop such as stop + 0.5 mm")
 
 
 def _are_one_spring(supports: Supports) -> bool:

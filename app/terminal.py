@@ -139,8 +139,10 @@ def checked(results: Results) -> list[str]:
 
 def forces(books: Sequence[StateBooks]) -> str:
     """The forces on the member along it, by combination: what holds it, what loads it, what is left over."""
-    names = [reaction.mark for reaction in books[0].reactions]
-    rows = [[tr("Joint {mark}").format(mark=mark), *_reactions(books, row)] for row, mark in enumerate(names)]
+    rows: list[list[str]] = []
+    for row, reaction in enumerate(books[0].reactions):
+        rows.append([tr("Joint {mark}").format(mark=reaction.mark), *_reactions(books, row)])
+        rows += _parts(books, row)
     rows.append([tr("Loads"), *(book.loads_text for book in books)])
     if books[0].bedding_text:
         rows.append([tr("Bedding"), *(book.bedding_text for book in books)])
@@ -151,6 +153,14 @@ def forces(books: Sequence[StateBooks]) -> str:
 def _reactions(books: Sequence[StateBooks], row: int) -> list[str]:
     """The reactions at one support."""
     return [book.reactions[row].text for book in books]
+
+
+def _parts(books: Sequence[StateBooks], row: int) -> Iterator[list[str]]:
+    """What the supports of a joint do one by one, where there are several or a stop."""
+    words = tr("Joint {mark}, {support}")
+    for number, part in enumerate(books[0].reactions[row].parts):
+        name = words.format(mark=books[0].reactions[row].mark, support=part.name)
+        yield [name, *(book.reactions[row].parts[number].text for book in books)]
 
 
 def remarks(found: Findings) -> str:

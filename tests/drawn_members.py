@@ -84,7 +84,7 @@ def _case(number: int, segments: tuple[Segment, ...], joints: tuple[Joint, ...])
 
 
 def stopped_member() -> Project:
-    """Stops on either side, which the drawing shows although they are not solved yet."""
+    """A stop of either side at its joint, before the member and behind it."""
     project = busy_member(4)
     joints = (
         Joint("0", StopSupport(side="minus", clearance=2e-4)),
@@ -103,6 +103,21 @@ def stopped_member() -> Project:
     )
 
 
+def crowded_supports() -> Project:
+    """Several supports at one joint: at both ends, and between them on up to three levels."""
+    plus, minus = StopSupport(side="plus", clearance=2e-4), StopSupport(side="minus", clearance=2e-4)
+    tight = StopSupport(side="plus", clearance=0.0, stiffness=3.5e8)
+    several = {
+        0: (plus, minus),
+        1: (SpringSupport(stiffness=6e8), replace(minus, clearance=1.25e-3), plus, tight),
+        3: (plus, minus),
+        4: (SpringSupport(stiffness=4e7), tight),
+    }
+    project = stopped_member()
+    joints = (replace(j, support=UNSET, supports=several.get(i, ())) for i, j in enumerate(project.joints))
+    return replace(project, joints=tuple(joints))
+
+
 def uneven_member(count: int = 12) -> Project:
     """A busy member of which some segments are a thousand times as long as others."""
     project = busy_member(count)
@@ -115,7 +130,7 @@ def all_members() -> dict[str, Project]:
     """The samples, busy members of 1 to 40 segments, and one with stops."""
     found = {name: read_sample(name) for name in names()}
     found |= {f"busy {count}": busy_member(count) for count in (1, 12, 25, 40)}
-    return found | {"stops": stopped_member(), "uneven": uneven_member()}
+    return found | {"stops": stopped_member(), "several": crowded_supports(), "uneven": uneven_member()}
 
 
 def first_state(project: Project) -> Shown:

@@ -84,7 +84,7 @@ def _taken(sketch: Sketch) -> FloatArray:
     picture = sketch.picture
     notes = [text.box for text in picture.texts if text.part is not None and text.part.kind == "note"]
     boxes = [Box(b.left - ASIDE, b.top, b.right + ASIDE, b.bottom) for b in notes]
-    boxes += [text.box for text in picture.texts]
+    boxes += [text.box for text in (*picture.texts, *picture.contact_texts)]
     boxes += [target.box for target in picture.targets if target.part.kind not in SPACES]
     boxes += [picture.legend] * WORTH if picture.legend is not None else []
     return np.array([astuple(box) for box in boxes]).reshape(-1, 4)

@@ -18,6 +18,15 @@ from app.drawing.shapes import Box, Face
 Measure: TypeAlias = Callable[[str, Face], tuple[float, float]]  # width and height; line breaks count
 
 
+class StopMark(Struct, frozen=True):
+    """What a stop does in the shown state, in words; the joint by mark, the number among its supports."""
+
+    joint: str
+    number: int
+    closed: bool
+    text: str
+
+
 class Detail(Struct, frozen=True):
     """What is drawn beside the member, and how much room it may take."""
 
@@ -32,6 +41,7 @@ class Detail(Struct, frozen=True):
     hollow: bool = False  # bodies without their fill, where results colour them
     words: str = ""  # more to be said of the drawing
     legend: tuple[float, float] = (0.0, 0.0)  # room for a scale of colours, px
+    contacts: tuple[StopMark, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

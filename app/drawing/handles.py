@@ -12,17 +12,19 @@ from collections.abc import Callable, Sequence
 from typing import Literal, TypeAlias
 
 from msgspec import Struct
+from msgspec.structs import replace
 
 from app.drawing.body import half_depth
 from app.drawing.loads import band_heights, force_line
 from app.drawing.shapes import Point
 from app.drawing.sketch import Sketch
-from solver.model import TubeSection
+from app.drawing.supports import faces_of
+from solver.model import StopSupport, TubeSection
 from solver.sections import outline
 
-HandleKind: TypeAlias = Literal["joint", "edge", "bore", "force", "distributed"]
+HandleKind: TypeAlias = Literal["joint", "edge", "bore", "stop", "force", "distributed"]
 Where: TypeAlias = Literal["start", "end", "both"]
-HandleKey: TypeAlias = tuple[HandleKind, int, Where, Point]
+HandleKey: TypeAlias = tuple[HandleKind, int, Where, int, Point]
 Direction: TypeAlias = Literal["along", "across"]
 Half: TypeAlias = Callable[[float], float]  # half the thickness at a share of the segment, px
 
@@ -31,6 +33,7 @@ JOINT_REACH = 7.0
 LEAST_THIRD = 14.0  # px: below, the ends of a segment are too near to each other to be told apart
 END_ZONE = 44.0  # px at most that belong to an end
 ARROW_REACH = 9.0
+STOP_REACH = 5.0
 
 
 class Handle(Struct, frozen=True):
@@ -43,6 +46,7 @@ class Handle(Struct, frozen=True):
     reach: float
     outward: Point
     direction: Direction
+    number: int = 0  # of one of several supports at a joint
 
     @property
     def centre(self) -> Point:
@@ -53,7 +57,7 @@ class Handle(Struct, frozen=True):
     @property
     def key(self) -> HandleKey:
         """Which number it holds and on which side, wherever it lies."""
-        return self.kind, self.index, self.where, self.outward
+        return self.kind, self.index, self.where, self.number, self.outward
 
     def distance(self, point: Point) -> float:
         """How far a point is from the line, px."""
@@ -86,7 +90,7 @@ def handles_of(sketch: Sketch, only: frozenset[int] | None = None) -> list[Handl
             handles += _edges(sketch, index)
             if isinstance(segments[index].section, TubeSection):
                 handles += _bores(sketch, index)
-    return handles + _loads(sketch, chosen)
+    return handles + _stops(sketch, only) + _loads(sketch, chosen)
 
 
 def _make(
@@ -171,6 +175,20 @@ def _zones(sketch: Sketch, index: int) -> list[tuple[Where, float, float]]:
         ("end", 1.0 - share, 1.0),
     ]
     return [(where, max(a, first), min(b, last)) for where, a, b in zones if max(a, first) < min(b, last)]
+
+
+def _stops(sketch: Sketch, only: frozenset[int] | None) -> list[Handle]:
+    """The wall of every stop, which is pulled away from what meets it."""
+    handles = []
+    for one in sketch.supports:
+        wanted = only is None or one.joint in only
+        if wanted and isinstance(one.support, StopSupport) and sketch.holds(one.joint):
+            faces = faces_of(sketch, one)
+            line = (faces.wall, faces.across - faces.half), (faces.wall, faces.across + faces.half)
+            out = (1.0 if faces.wall > faces.nose else -1.0, 0.0)
+            handle = _make(sketch, "stop", one.joint, "both", line, STOP_REACH, out)
+            handles.append(replace(handle, number=one.number))
+    return handles
 
 
 def _loads(sketch: Sketch, chosen: Sequence[int]) -> list[Handle]:

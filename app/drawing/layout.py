@@ -8,6 +8,7 @@ from __future__ import annotations
 from app.drawing.body import aim_at_joints, draw_body, edge_at
 from app.drawing.chain import LEVEL_GAP, draw_chain, draw_joint_marks, draw_levels, level_width
 from app.drawing.companions import draw_companions
+from app.drawing.contacts import draw_contacts, put_under
 from app.drawing.crowded import free_box, say_left_out
 from app.drawing.frame import Frame
 from app.drawing.loads import draw_loads, no_loads_text
@@ -16,7 +17,7 @@ from app.drawing.rows import Wishes, foot_of, legend_below, no_rows, round_facto
 from app.drawing.shapes import LOADS, OF_COMPANION, Box, Part, Picture, Target, Text
 from app.drawing.shoulders import draw_shoulders
 from app.drawing.sketch import Sketch
-from app.drawing.supports import draw_supports
+from app.drawing.supports import LEVEL, draw_supports
 from app.units import format_value
 from app.words import tr
 
@@ -52,7 +53,9 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     if frame.detail.factor:
         _draw_scales(sketch)
     draw_shoulders(sketch)
-    draw_supports(sketch, wishes.hanging)
+    draw_supports(sketch)
+    draw_contacts(sketch)
+    put_under(sketch, wishes.hanging, wishes.contacts)
     draw_companions(sketch, wishes.companions)
     _draw_no_loads(sketch)
     draw_loads(sketch, wishes.loads)
@@ -127,9 +130,10 @@ def _notes_up(sketch: Sketch, lines: list[str], foot: float) -> list[Text]:
 
 def _said_widths(sketch: Sketch) -> tuple[float, float]:
     """Upright, how far texts at the foot may reach: up to what hangs beside the axis, else to the axis."""
-    hanging = sketch.rows.under_label[1] > sketch.rows.under_label[0]
+    hanging = sketch.rows.under_label[-1][1] > sketch.rows.under_label[0][0]
     aside = max(edge_at(sketch, 0) + BESIDE_WALL, BESIDE_AXIS)
-    end = sketch.rows.under + HANGING if hanging else sketch.rows.axis + aside
+    lowest = sketch.rows.under + LEVEL * max(sketch.levels - 1, 0)
+    end = lowest + HANGING if hanging else sketch.rows.axis + aside
     left = sketch.frame.box.left + NOTE_INSET
     return sketch.point(0.0, end)[0] - left, sketch.point(0.0, sketch.rows.axis + BESIDE_AXIS)[0] - left
 

@@ -14,7 +14,6 @@ from msgspec.structs import replace
 from app.drawing.placing import CLEAR, STACKED, Placed, Span, Wish
 from app.drawing.shapes import Box, Part, PartKind, Point
 from app.drawing.sketch import Sketch
-from app.drawing.supports import support_of
 from app.drawing.words import (
     bedding_text,
     distributed_text,
@@ -27,7 +26,7 @@ from app.drawing.words import (
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.chain import Loads
-from solver.model import UnitSystemName, end_of
+from solver.model import UnitSystemName, end_of, supports_of
 
 ARROW = 32.0  # length of the arrow of a joint force, px
 LEAST_ARROW = 13.0
@@ -218,7 +217,7 @@ def _force_span(sketch: Sketch, joint: int, force: float) -> tuple[float, float]
 def lies_outside(sketch: Sketch, joint: int) -> bool:
     """Whether a force lies on the axis outside the member: at a free end; else it is in the row of arrows."""
     at_end = joint in (0, len(sketch.member.project.segments))
-    return at_end and support_of(sketch, joint) is None
+    return at_end and not supports_of(sketch.member.project.joints[joint])
 
 
 def _outside_wish(sketch: Sketch, joint: int, force: float) -> Wish | None:

@@ -11,13 +11,14 @@ from dataclasses import dataclass
 
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
 from app.drawing.companions import companion_wishes, lane_rows
+from app.drawing.contacts import contact_wishes
 from app.drawing.frame import Frame
 from app.drawing.loads import GRAVITY_RANK, bracketed, lies_outside, load_wishes, no_loads_text
 from app.drawing.member import Member
-from app.drawing.placing import STACKED, TIGHT, Span, Wish, fits
+from app.drawing.placing import CLEAR, STACKED, TIGHT, Span, Wish, fits
 from app.drawing.shoulders import shoulder_wishes
 from app.drawing.sketch import Rows, Sketch
-from app.drawing.supports import hanging_wishes, hangs, support_of
+from app.drawing.supports import LEVEL, support_wishes
 from app.drawing.words import not_to_scale
 from app.words import tr
 from solver.model import end_of
@@ -44,6 +45,7 @@ class Wishes:
     lengths: list[Wish]
     sections: list[Wish]
     hanging: list[Wish]
+    contacts: list[Wish]
     joints: list[Wish]
     companions: list[list[Wish]]  # by lane
 
@@ -54,7 +56,8 @@ class Wishes:
             load_wishes(sketch),
             length_wishes(sketch),
             section_wishes(sketch),
-            [*hanging_wishes(sketch), *shoulder_wishes(sketch)],
+            [*support_wishes(sketch), *shoulder_wishes(sketch)],
+            contact_wishes(sketch),
             joint_wishes(sketch),
             companion_wishes(sketch),
         )
@@ -63,7 +66,8 @@ class Wishes:
 def no_rows() -> Rows:
     """Rows without any room, for a sketch whose rows are not known yet."""
     nothing = (0.0, 0.0)
-    return Rows((nothing,), (), nothing, 0.0, 0.0, 0.0, 0.0, nothing, (nothing,), (nothing,), 0.0, (nothing,))
+    none = (nothing,)
+    return Rows(none, (), nothing, 0.0, 0.0, 0.0, 0.0, none, none, none, none, 0.0, none)
 
 
 def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
@@ -123,8 +127,9 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     chain = sections[0][0] - CHAIN
     lengths = _text_rows(sketch, wishes.lengths, chain - CHAIN, most)
     marks = _text_rows(sketch, wishes.joints, lengths[0][0], most)
-    under_label, under = _under_rows(wishes.hanging, marks[0][0])
-    last = (under - 0.5 * UNDER if _has_hanging(sketch) else under_label[0]) - 9.0
+    under_label, contact = _under_rows(sketch, wishes, marks[0][0], most)
+    under = under_label[0][0] - 0.5 * UNDER - LEVEL * max(sketch.levels - 1, 0)
+    last = (under - 0.5 * UNDER if sketch.levels else under_label[0][0]) - 9.0
     lanes, last = lane_rows(sketch, wishes.companions, last, room, labelled=most > 0)
     last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(
@@ -136,6 +141,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
         half=max(0.5 * (last - first), 4.0),
         under=under,
         under_label=under_label,
+        contact=contact,
         marks=tuple(reversed(marks)),
         lengths=tuple(reversed(lengths)),
         chain=chain,
@@ -171,20 +177,27 @@ def _bracket_rows(sketch: Sketch, first: float) -> tuple[Span, ...]:
     return tuple((first + i * BRACKET, first + (i + 1) * BRACKET - 3.0) for i in range(count))
 
 
-def _under_rows(wishes: list[Wish], foot: float) -> tuple[Span, float]:
-    """The row of labels of hanging supports, which ends at `foot`, and the line the supports hang on."""
-    depth = max((w.depth for w in wishes), default=0.0)
-    foot -= BESIDE if depth else 0.0
-    return (foot - depth, foot), foot - depth - 0.5 * UNDER
+def _under_rows(
+    sketch: Sketch, wishes: Wishes, foot: float, most: int
+) -> tuple[tuple[Span, ...], tuple[Span, ...]]:
+    """The rows of labels of supports and of what stops do, ending at `foot`; upright one column for both."""
+    foot -= BESIDE if wishes.hanging or wishes.contacts else 0.0
+    if sketch.frame.upright:
+        depth = max((w.depth for w in (*wishes.hanging, *wishes.contacts)), default=0.0)
+        return ((foot - depth, foot),), ((foot - depth, foot),)
+    contact = _text_rows(sketch, wishes.contacts, foot, most, CLEAR)
+    return _text_rows(sketch, wishes.hanging, contact[0][0], most, CLEAR), contact
 
 
-def _text_rows(sketch: Sketch, wishes: list[Wish], foot: float, most: int) -> tuple[Span, ...]:
+def _text_rows(
+    sketch: Sketch, wishes: list[Wish], foot: float, most: int, clear: float = TIGHT
+) -> tuple[Span, ...]:
     """One row, or more where a text is too long for one; the last ends at `foot`."""
     if not wishes:
         return ((foot, foot),)
     depth = max(w.depth for w in wishes)
     count, limit = 1, sketch.frame.detail.text_rows if most and not sketch.frame.upright else 1
-    while count < limit and not fits(wishes, count, sketch.room, TIGHT):
+    while count < limit and not fits(wishes, count, sketch.room, clear):
         count += 1
     return tuple((foot - (count - i) * depth, foot - (count - i - 1) * depth) for i in range(count))
 
@@ -205,11 +218,6 @@ def _has_inner_forces(sketch: Sketch) -> bool:
 
 def _has_bedding(sketch: Sketch) -> bool:
     return any(s.bedding or end_of(s.bedding, s.bedding_end) for s in sketch.member.project.segments)
-
-
-def _has_hanging(sketch: Sketch) -> bool:
-    last = len(sketch.member.project.segments)
-    return any(hangs(support_of(sketch, j), inner=0 < j < last) for j in range(last + 1))
 
 
 def _note_height(sketch: Sketch) -> float:

@@ -173,6 +173,8 @@ class Picture:
     left_out: int = 0  # labels that found no room
     texts: list[Text] = field(default_factory=list)
     targets: list[Target] = field(default_factory=list)
+    contact_strokes: list[Stroke] = field(default_factory=list)  # of results, as stale as they are
+    contact_texts: list[Text] = field(default_factory=list)
 
     def target_at(self, point: Point) -> Target | None:
         """The topmost target at a point, or None."""

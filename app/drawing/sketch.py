@@ -16,6 +16,7 @@ import numpy as np
 from msgspec.structs import replace
 
 from app.drawing.frame import Frame
+from app.drawing.hanging import Drawn, drawn_supports
 from app.drawing.member import Member
 from app.drawing.placing import CLEAR, Placed, Span, Wish, place
 from app.drawing.shapes import Anchor, Box, Face, Fill, Ink, Part, Picture, Point, Stroke, Target, Text
@@ -45,8 +46,9 @@ class Rows:
     arrows: float  # joint forces
     axis: float
     half: float  # of the thickest section
-    under: float  # springs and stops of inner joints
-    under_label: Span
+    under: float  # the first level of supports that hang from joints
+    under_label: tuple[Span, ...]
+    contact: tuple[Span, ...]  # what stops do in the shown state; upright in the column of their labels
     marks: tuple[Span, ...]  # of joints
     lengths: tuple[Span, ...]
     chain: float
@@ -125,6 +127,20 @@ class Sketch:
     @cached_property
     def _held(self) -> Span:
         return self.frame.ruler.held_pixels
+
+    @cached_property
+    def supports(self) -> tuple[Drawn, ...]:
+        """All supports along the chain, each with its place."""
+        return drawn_supports(self.member.project)
+
+    @cached_property
+    def levels(self) -> int:
+        """How many levels the supports that hang take together; 0 where none does."""
+        return max((one.level + 1 for one in self.supports if one.hangs), default=0)
+
+    def is_lowest(self, one: Drawn) -> bool:
+        """Whether no support of the same joint hangs below this one."""
+        return all(other.level <= one.level for other in self.supports if other.joint == one.joint)
 
     def shown_span(self, segment: int) -> Span | None:
         """The pixels of a segment inside the window, growing; None where it is outside."""
@@ -261,9 +277,15 @@ class Sketch:
         ink: Ink = "quiet",
     ) -> None:
         """A text in a box of exactly its size within the given spans."""
+        self.picture.texts.append(self.text_at(wish, along, across, toward, face, ink))
+
+    def text_at(
+        self, wish: Wish, along: Span, across: Span, toward: Toward, face: Face = "small", ink: Ink = "quiet"
+    ) -> Text:
+        """That text, not put on the picture."""
         box = self._box(wish, along, across, toward, face)
         anchor = ANCHORS[toward] if self.frame.upright else "middle"
-        self.picture.texts.append(Text(box, wish.text, face, ink, wish.part, anchor))
+        return Text(box, wish.text, face, ink, wish.part, anchor)
 
     def is_free(
         self, wish: Wish, along: Span, across: Span, toward: Toward, others: list[Box] | None = None

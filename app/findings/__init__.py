@@ -9,6 +9,7 @@ from app.findings.comparison import Change, Comparison, comparison
 from app.findings.make import findings, findings_in
 from app.findings.records import (
     Band,
+    ContactFinding,
     Findings,
     JointDisplacement,
     JointReaction,
@@ -16,12 +17,14 @@ from app.findings.records import (
     NotMade,
     SegmentFinding,
     StateBooks,
+    SupportPart,
 )
 
 __all__ = [
     "Band",
     "Change",
     "Comparison",
+    "ContactFinding",
     "Findings",
     "JointDisplacement",
     "JointReaction",
@@ -29,6 +32,7 @@ __all__ = [
     "NotMade",
     "SegmentFinding",
     "StateBooks",
+    "SupportPart",
     "comparison",
     "findings",
     "findings_in",

@@ -10,13 +10,16 @@ import math
 
 import numpy as np
 
-from app.findings.records import JointDisplacement, JointReaction, StateBooks
+from app.findings.records import JointDisplacement, JointReaction, StateBooks, SupportPart
 from app.numerals import decimals_for, fixed
 from app.phrases.notes import numerical_error_text
 from app.phrases.states import state_words
+from app.support_entry import support_text
 from app.units import format_value, symbol, to_display
+from app.words import tr
 from solver.arrays import FloatArray
-from solver.model import UnitSystemName
+from solver.model import StopSupport, UnitSystemName, supports_of
+from solver.outcomes import SupportOutcome, support_outcomes
 from solver.results import Results, State
 
 _DIGITS = 4
@@ -42,7 +45,7 @@ def _books(results: Results, index: int, state: State, bedded: bool, system: Uni
     return StateBooks(
         name=state_words(state.name),
         kind=state.kind,
-        reactions=_reactions(results, reactions, column),
+        reactions=_reactions(results, index, column),
         reactions_text=column.text(float(np.nansum(reactions))),
         loads_text=column.text(loads),
         bedding_text=column.text(bedding) if bedded else "",
@@ -60,20 +63,41 @@ class _Column:
     def __init__(self, forces: FloatArray, system: UnitSystemName) -> None:
         largest = to_display(float(np.max(np.abs(forces), initial=0.0)), "force", system)
         self._decimals = decimals_for(largest, _DIGITS)
-        self._system = system
+        self.system = system
 
     def text(self, force: float) -> str:
         """A force with its unit."""
-        number = fixed(to_display(force, "force", self._system), self._decimals)
-        return f"{number} {symbol('force', self._system)}"
+        number = fixed(to_display(force, "force", self.system), self._decimals)
+        return f"{number} {symbol('force', self.system)}"
 
 
-def _reactions(results: Results, reactions: FloatArray, column: _Column) -> tuple[JointReaction, ...]:
+def _reactions(results: Results, state: int, column: _Column) -> tuple[JointReaction, ...]:
+    reactions = results.solution.reaction[state].tolist()
     return tuple(
-        JointReaction(index, joint.mark, value, column.text(value))
-        for index, (joint, value) in enumerate(zip(results.project.joints, reactions.tolist(), strict=True))
+        JointReaction(index, joint.mark, value, column.text(value), _parts(results, state, index, column))
+        for index, (joint, value) in enumerate(zip(results.project.joints, reactions, strict=True))
         if not math.isnan(value)
     )
+
+
+def _parts(results: Results, state: int, joint: int, column: _Column) -> tuple[SupportPart, ...]:
+    """The supports of a joint one by one; none where there is only one and no stop."""
+    supports = supports_of(results.project.joints[joint])
+    if len(supports) == 1 and not isinstance(supports[0], StopSupport):
+        return ()
+    outcomes = support_outcomes(results, state, joint)
+    return tuple(
+        SupportPart(support_text(support, column.system), _does(outcome, column))
+        for support, outcome in zip(supports, outcomes, strict=True)
+    )
+
+
+def _does(outcome: SupportOutcome, column: _Column) -> str:
+    if outcome.contact == "open":
+        left = format_value(outcome.clearance or 0.0, "displacement", column.system, with_unit=True)
+        return tr("open, {gap} left").format(gap=left)
+    force = column.text(outcome.force)
+    return tr("closed, {force}").format(force=force) if outcome.contact == "closed" else force
 
 
 def _energy(value: float, system: UnitSystemName) -> str:

@@ -19,8 +19,10 @@ _ALLOWABLES: Final[dict[Reason, str]] = {
 }
 
 
-def cell_of_finding(of: Subject | NotMade, project: Project) -> Cell | None:
+def cell_of_finding(of: Subject | NotMade | Cell, project: Project) -> Cell | None:
     """The cell; None where this project has no such thing (any more)."""
+    if isinstance(of, Cell):
+        return of if of.record < len(project.joints) else None
     return _of_missing(of, project) if isinstance(of, NotMade) else _of_subject(of, project)
 
 

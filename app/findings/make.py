@@ -4,12 +4,15 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from app.contacts import has_stops
 from app.findings.books import displacements, state_books
+from app.findings.contacts import contact_findings
 from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
 from app.findings.records import Findings
 from app.findings.stress import segment_findings
 from app.phrases.checks import has_compression, verdict_detail, verdict_line
+from app.phrases.contacts import SUPERPOSITION
 from app.phrases.notes import BEDDING, BUCKLING, numerical_error_sentence
 from app.units import format_value
 from app.words import tr
@@ -28,6 +31,7 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
         segments=segment_findings(results, system),
         limits=limit_findings(results, system, results.checks),
         not_made=not_made(results, results.checks),
+        contacts=contact_findings(results, system),
         notes=notes(results),
         books=state_books(results, system),
         displacements=moved,
@@ -45,6 +49,7 @@ def findings_in(found: Findings, results: Results, state: str, system: UnitSyste
         segments=segment_findings(results, system, state),
         limits=limit_findings(results, system, checks),
         not_made=not_made(results, checks),
+        contacts=contact_findings(results, system, state),
     )
 
 
@@ -55,4 +60,6 @@ def notes(results: Results) -> tuple[str, ...]:
         standing.append(tr(BUCKLING))
     if (results.chain.bedding > 0).any():
         standing.append(tr(BEDDING))
+    if has_stops(results.project):
+        standing.append(tr(SUPERPOSITION))
     return (*standing, *idle_notes(results))

@@ -76,13 +76,36 @@ class NotMade:
 
 
 @dataclass(frozen=True, slots=True)
+class ContactFinding:
+    """What one stop does over the states; `number` is its place among the supports of its joint."""
+
+    joint: int
+    mark: str
+    number: int
+    sentence: str  # "Joint 3, stop + 0.2 mm: closed in Hot (12.4 kN); open in Cold (0.13 mm left)"
+    position: float
+
+
+@dataclass(frozen=True, slots=True)
+class SupportPart:
+    """What one of the supports of a joint does, both in words: the support, its force or what is left."""
+
+    name: str
+    text: str
+
+
+@dataclass(frozen=True, slots=True)
 class JointReaction:
-    """The force of one support on the member along +x."""
+    """The force of the supports of a joint on the member along +x.
+
+    `parts` tells them apart where there are several, and says what a stop does.
+    """
 
     joint: int
     mark: str
     value: float
     text: str  # with unit
+    parts: tuple[SupportPart, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -123,6 +146,7 @@ class Findings:
     segments: tuple[SegmentFinding, ...]  # the worst first
     limits: tuple[LimitFinding, ...]  # the worst first
     not_made: tuple[NotMade, ...]
+    contacts: tuple[ContactFinding, ...]  # of stops, along the chain
     notes: tuple[str, ...]
     books: tuple[StateBooks, ...]  # in the states' order
     displacements: tuple[JointDisplacement, ...]  # along the chain

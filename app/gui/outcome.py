@@ -15,6 +15,7 @@ import numpy as np
 
 from app.gui.tables.column import Figures
 from app.gui.view import Shown
+from app.phrases.contacts import contact_texts
 from solver.arrays import FloatArray
 from solver.checks import STRESSES
 from solver.errors import InputError
@@ -134,6 +135,7 @@ def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figur
         checked=state is None or results.states[state].checked,
         displacement=nothing if state is None else results.solution.joint_displacement[state],
         reaction=nothing if state is None else results.solution.reaction[state],
+        contacts=() if state is None else contact_texts(results, state),
         mass=results.mass,
         segment_mass=results.segment_mass,
         force=_between(results, state, results.segments.force_min, results.segments.force_max),

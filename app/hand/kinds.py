@@ -2,7 +2,7 @@
 
 A new kind of support, load or companion is a line here: its symbol, what it goes on, the cell that holds it
 and what it begins with. What it begins with is a text as typed into that cell, with its unit, one for metric
-and one for inch systems. Stops have no line: the solver does not solve them yet.
+and one for inch systems.
 """
 
 from __future__ import annotations
@@ -63,6 +63,17 @@ KINDS: Final[tuple[Kind, ...]] = (
         "support",
         ("spring 100 kN/mm", "spring 500 kip/in"),
         "spring",
+        ("support",),
+    ),
+    Kind(
+        "stop",
+        later("Stop with a gap"),
+        "joint",
+        "A",
+        symbols.STOP,
+        "support",
+        ("stop + 0.2 mm", "stop + 0.01 in"),
+        "displacement",
         ("support",),
     ),
     Kind(

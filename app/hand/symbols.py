@@ -66,6 +66,11 @@ SPRING: Final[Symbol] = (
     ),
     *_wall(18.0, 5.0, 19.0),
 )
+STOP: Final[Symbol] = (
+    *_bar(2.0, 11.0),
+    Line(((11.0, 7.0), (11.0, 17.0)), 2.4),
+    *_wall(17.0),
+)
 FREE: Final[Symbol] = (
     *_bar(2.0, 12.0),
     Line(((15.5, 8.5), (22.0, 15.5)), 1.8),

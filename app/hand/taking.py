@@ -13,6 +13,7 @@ from app.hand.lengths import joint_grip
 from app.hand.loads import Aim, aim_at, distributed_grip, force_grip
 from app.hand.owners import why_not_here
 from app.hand.sections import edge_grip
+from app.hand.stops import stop_grip
 from app.shown import Shown
 
 
@@ -26,6 +27,8 @@ def take(
     if handle.kind in ("edge", "bore"):
         inner = handle.kind == "bore"
         return edge_grip(project, handle.index, handle.where, 1.0 / sketch.scale, inner=inner)
+    if handle.kind == "stop":
+        return stop_grip(project, handle.index, handle.number)
     aim = aim_at(project, shown, case)
     if isinstance(aim, Refusal):
         return aim
@@ -36,9 +39,9 @@ def take(
 
 
 def part_of(handle: Handle) -> Part | None:
-    """The load that a handle is of; None for one of the member itself."""
+    """The load or the stop that a handle is of; None for one of the member itself."""
     kind = _PARTS.get(handle.kind)
-    return None if kind is None else Part(kind, handle.index)
+    return None if kind is None else Part(kind, handle.index, handle.number)
 
 
 def _force(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
@@ -53,7 +56,7 @@ def _distributed(handle: Handle, sketch: Sketch, aim: Aim) -> Grip:
     return distributed_grip(sketch.member.project, handle.index, handle.where, aim, (start, end))
 
 
-_PARTS: Final[dict[str, PartKind]] = {"force": "force", "distributed": "distributed"}
+_PARTS: Final[dict[str, PartKind]] = {"stop": "support", "force": "force", "distributed": "distributed"}
 _LOADS: Final[dict[str, Callable[[Handle, Sketch, Aim], Grip]]] = {
     "force": _force,
     "distributed": _distributed,

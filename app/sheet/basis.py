@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
+from app.sheet.contacts import stop_assumptions
 from app.words import tr
 from solver.model import AreaSection, Project, RectangleSection, RoundSection, TubeSection, end_of
 
@@ -112,6 +113,7 @@ def _assumptions(project: Project) -> list[str]:
                 " limit: compare it with what the ground can carry."
             )
         )
+    items += stop_assumptions(project)
     if any(isinstance(s.section, AreaSection) for s in project.segments):
         items.append(tr("Where only an area is given, the drawing shows the round bar of that area."))
     return items

@@ -141,10 +141,11 @@ def _joints(project: Project, results: Results, say: Readings) -> Block:
 
 def supports_words(joint: Joint, say: Readings) -> str:
     """All supports of a joint in words."""
-    return "; ".join(_support_words(support, say) for support in supports_of(joint)) or tr("free")
+    return "; ".join(support_words(support, say) for support in supports_of(joint)) or tr("free")
 
 
-def _support_words(support: AnySupport, say: Readings) -> str:
+def support_words(support: AnySupport, say: Readings) -> str:
+    """One support in words."""
     match support:
         case FixedSupport():
             return tr("fixed")

@@ -10,6 +10,7 @@ import numpy as np
 from app.findings.books import state_books
 from app.findings.records import StateBooks
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
+from app.sheet.contacts import contact_blocks
 from app.sheet.fatigue import fatigue_blocks
 from app.sheet.figures import envelope_figure, state_figure
 from app.sheet.inputs import factors_text
@@ -51,6 +52,7 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
     yield picture(state_figure(results, index), caption.format(name=state.name))
     yield _segments(results, index, say)
     yield _joints(results, index, say)
+    yield from contact_blocks(results, index, say)
     yield from peak_tables(results, state.name, say)
     limits = [c for c in results.checks if _is_limit(c) and c.combination == state.name]
     if limits:

@@ -12,12 +12,13 @@ from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPen, QPolygonF
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
-from app.drawing.frame import Detail
+from app.drawing.frame import Detail, StopMark
 from app.drawing.member import Member
 from app.drawing.overlay import STEPS, Graded, displaced_factor, displacements, graded
 from app.drawing.shapes import Stroke
 from app.drawing.signs import GROUND, Mark
 from app.drawing.tinting import Tint, Tinting, displaced_outline, legend_size, tinted
+from app.gui.drawing.contacts_layer import Contacts, stop_marks
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.sheet_items import Painted
 from app.gui.sheet_layout import Place
@@ -46,6 +47,8 @@ class ResultsOnDrawing:
         self._factor = 0.0
         self.colours = Colours(theme)
         self.displaced = Displaced(theme)
+        self.contacts = Contacts(theme, OVER_Z)
+        self._marks: tuple[StopMark, ...] = ()
 
     @property
     def factor(self) -> float:
@@ -55,12 +58,13 @@ class ResultsOnDrawing:
     @property
     def items(self) -> tuple[Painted, ...]:
         """What lies on the sheet."""
-        return self.colours, self.colours.signs, self.displaced
+        return self.colours, self.colours.signs, self.contacts, self.displaced
 
     def set_theme(self, theme: Theme) -> None:
         """Other colours, or those of what is out of date."""
         self.colours.set_theme(theme)
         self.displaced.set_theme(theme)
+        self.contacts.set_theme(theme)
 
     def show(self, looks: Looks, results: Results | None, state: int | None) -> None:
         """Take what is chosen of these results in a state, or of the envelope (None)."""
@@ -68,6 +72,9 @@ class ResultsOnDrawing:
         self._graded = None if results is None else graded(results, state, looks.colour)
         single = looks.displaced and results is not None and state is not None
         self._moved = displacements(results, state) if single else None
+        self._marks = ()
+        if results is not None and state is not None:
+            self._marks = stop_marks(results, state, results.project.display.unit_system)
 
     def place(self, member: Member, place: Place) -> None:
         """Tell the drawing what room is needed and lie on what it lays out there."""
@@ -78,7 +85,12 @@ class ResultsOnDrawing:
         if self._graded is not None:
             legend = legend_size(member, place.frame, self._graded)
         self._drawing.set_detail(
-            Detail(hollow=self._graded is not None, words=self._words(member), legend=legend)
+            Detail(
+                hollow=self._graded is not None,
+                words=self._words(member),
+                legend=legend,
+                contacts=self._marks,
+            )
         )
         self._lie_on(member, place)
 
@@ -90,6 +102,7 @@ class ResultsOnDrawing:
         if self._factor and self._moved is not None:
             strokes = displaced_outline(member, frame, picture, self._moved, self._factor)
         self.displaced.show_strokes(strokes, place)
+        self.contacts.show_contacts(picture, place)
 
     def _words(self, member: Member) -> str:
         """How much the displaced shape is exaggerated, or why there is none."""

@@ -6,14 +6,25 @@ from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, replace
 from typing import Literal, TypeAlias
 
-from app.findings import Band, Change, Comparison, Findings, LimitFinding, NotMade, SegmentFinding, StateBooks
+from app.findings import (
+    Band,
+    Change,
+    Comparison,
+    ContactFinding,
+    Findings,
+    LimitFinding,
+    NotMade,
+    SegmentFinding,
+    StateBooks,
+)
 from app.findings.subjects import Subject, SubjectKind
 from app.gui.view import Shown
+from app.hand.cells import Cell
 from app.units import unbroken
 from app.words import tr
 
 Tone: TypeAlias = Literal["pass", "fail", "not_made", "problem", "note"]
-RowKind: TypeAlias = SubjectKind | Literal["fails", "not_made", "note", "problem"]
+RowKind: TypeAlias = SubjectKind | Literal["fails", "not_made", "contact", "note", "problem"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -33,7 +44,7 @@ class Row:
     segments: frozenset[int] = frozenset()
     joints: frozenset[int] = frozenset()
     marks: frozenset[str] = frozenset()  # of the segments and joints it is about
-    about: Subject | NotMade | None = None
+    about: Subject | NotMade | Cell | None = None
 
     @property
     def leads_somewhere(self) -> bool:
@@ -59,12 +70,14 @@ class Block:
 
 
 def rows(findings: Findings) -> tuple[Row, ...]:
-    """Checks, the worst first, then what was not checked, then what the calculation does not say."""
+    """Checks, the worst first, what was not checked, what stops do, what the calculation does not say."""
     found = [*map(_segment_row, findings.segments), *map(_limit_row, findings.limits)]
     checked = sorted(found, key=lambda pair: -pair[0])
     not_made = [_not_made_row(item) for item in findings.not_made]
     notes = [Row("note", "note", "!", unbroken(text), text) for text in findings.notes]
-    return with_named_scales((*(row for _, row in checked), *not_made, *notes))
+    return with_named_scales(
+        (*(row for _, row in checked), *not_made, *map(_contact_row, findings.contacts), *notes)
+    )
 
 
 def with_named_scales(listed: Iterable[Row]) -> tuple[Row, ...]:
@@ -130,6 +143,20 @@ def _not_made_row(item: NotMade) -> Row:
     )
 
 
+def _contact_row(item: ContactFinding) -> Row:
+    return Row(
+        tone="note",
+        kind="contact",
+        marks=frozenset((item.mark,)),
+        about=Cell("joints", item.joint, "support"),
+        mark="",
+        text=unbroken(item.sentence),
+        spoken=item.sentence,
+        position=item.position,
+        joints=frozenset((item.joint,)),
+    )
+
+
 def problem_rows(problems: tuple[str, ...]) -> tuple[Row, ...]:
     """Why there are no results."""
     return tuple(Row("problem", "problem", "!", unbroken(text), text) for text in problems)
@@ -177,7 +204,10 @@ def _change(change: Change, *, quiet: bool = False) -> Line:
 
 
 def _reactions(book: StateBooks) -> Block:
-    lines = [Line(tr("joint {mark}").format(mark=r.mark), r.text) for r in book.reactions]
+    lines = []
+    for reaction in book.reactions:
+        lines.append(Line(tr("joint {mark}").format(mark=reaction.mark), reaction.text))
+        lines += [Line(part.name, part.text, quiet=True) for part in reaction.parts]
     lines.append(Line(tr("loads"), book.loads_text, quiet=True))
     if book.bedding_text:
         lines.append(Line(tr("bedding"), book.bedding_text, quiet=True))

@@ -25,6 +25,7 @@ KINDS: Final[tuple[tuple[RowKind | None, str], ...]] = (
     ("relative", later("Relative displacement")),
     ("reaction", later("Reaction")),
     ("not_made", later("Not checked")),
+    ("contact", later("Contact of stops")),
     ("note", later("Notes")),
 )
 

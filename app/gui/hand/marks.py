@@ -168,7 +168,7 @@ class HandMarks(Painted):
 
 def belongs(handle: Handle, selection: Selection) -> bool:
     """Whether a handle is one of what is selected: a segment's own and the joint at its far end."""
-    if handle.kind == "force":
+    if handle.kind in ("force", "stop"):
         return handle.index in selection.joints
     if handle.kind == "joint":
         return handle.index in selection.joints or handle.index - 1 in selection.segments

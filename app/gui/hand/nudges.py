@@ -39,9 +39,9 @@ class Nudges:
         """What can be taken of the selection, each number once: the sides of an edge are the same."""
         ways: dict[tuple[object, ...], Way] = {}
         for handle in self._grasp.paper.hand_marks.quiet:
-            ways.setdefault((*handle.key[:3], False), (handle, False))
+            ways.setdefault((*handle.key[:4], False), (handle, False))
             if handle.kind == "joint":
-                ways.setdefault((*handle.key[:3], True), (handle, True))
+                ways.setdefault((*handle.key[:4], True), (handle, True))
         return list(ways.values())
 
     def _next(self, direction: int) -> None:
@@ -50,8 +50,8 @@ class Nudges:
         if not ways:
             self._grasp.told.emit(tr("Select a segment or a joint first: Space takes the one at the cursor."))
             return
-        held = None if pull is None else (pull.handle.key[:3], pull.total_stays)
-        places = [place for place, (h, total) in enumerate(ways) if (h.key[:3], total) == held]
+        held = None if pull is None else (pull.handle.key[:4], pull.total_stays)
+        places = [place for place, (h, total) in enumerate(ways) if (h.key[:4], total) == held]
         first = places[0] + direction if places else 0 if direction > 0 else -1
         for offset in range(len(ways)):  # past those that cannot be taken
             handle, total = ways[(first + direction * offset) % len(ways)]

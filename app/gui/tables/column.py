@@ -42,7 +42,8 @@ class Figures:
     """What the tables show of the results of the state that is looked at; empty arrays where there is none.
 
     `utilisation` (n,), NaN where no check was made; `governs` (n,) the sign of the stress that governs it;
-    `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support.
+    `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support; `contacts` what
+    the stops of each joint do, in words.
     `segment_mass` (n,) in kg; `force` and `stress` (n, 2), the least and the largest within the segment.
     `current` is False for results of an earlier edit.
     """
@@ -51,6 +52,7 @@ class Figures:
     governs: FloatArray = field(default_factory=lambda: np.zeros(0))
     displacement: FloatArray = field(default_factory=lambda: np.zeros(0))
     reaction: FloatArray = field(default_factory=lambda: np.zeros(0))
+    contacts: tuple[str, ...] = ()
     mass: float | None = None
     segment_mass: FloatArray = field(default_factory=lambda: np.zeros(0))
     force: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
@@ -124,7 +126,8 @@ class Column:
     @property
     def holds_a_name(self) -> bool:
         """Whether its cells name something, be it by a mark such as "2"."""
-        return self.key in ("mark", "name", "companion") or self.offers is not None
+        by_offer = self.offers is not None and self.key != "support"
+        return by_offer or self.key in ("mark", "name", "companion")
 
     @property
     def words(self) -> str:

@@ -10,6 +10,7 @@ from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
+from app.gui.tables import offers
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import needed_case
 from app.gui.tables.supports import with_supports
@@ -84,6 +85,11 @@ def _figure(name: str, quantity: Quantity) -> Column:
     return Column(name, titles[name], quantity=quantity, figure=text, width=10)
 
 
+def _contact(index: int, figures: Figures, _sight: Sight) -> str:
+    """What the stops of the joint do."""
+    return figures.contacts[index] if index < len(figures.contacts) else ""
+
+
 COLUMNS = (
     Column(
         "mark",
@@ -109,6 +115,7 @@ COLUMNS = (
         _put_support,
         optional=True,
         width=20,
+        offers=offers.supports,
     ),
     Column(
         "shoulder",
@@ -123,6 +130,7 @@ COLUMNS = (
     _load("movement", later("Support movement"), "displacement"),
     _figure("displacement", "displacement"),
     _figure("reaction", "force"),
+    Column("contact", later("Contact"), figure=_contact, width=18),
 )
 
 JOINTS = Table(

@@ -9,6 +9,8 @@ from collections.abc import Iterable
 
 from app.edits.companions import segment_marks
 from app.gui.tables.column import Offer, Sight
+from app.hand.kinds import KINDS
+from app.support_entry import parse_supports, supports_entry
 from app.typical_materials import not_in
 from app.units import format_value
 from app.words import tr
@@ -49,6 +51,24 @@ def held_joints(project: Project, _sight: Sight) -> tuple[Offer, ...]:
 def combinations(project: Project, _sight: Sight) -> tuple[Offer, ...]:
     """The names of the combinations."""
     return _named(combination.name for combination in project.combinations)
+
+
+def supports(_project: Project, sight: Sight) -> tuple[Offer, ...]:
+    """What can hold a joint, as it is typed; the numbers are there to be typed over."""
+    begins = {kind.key: kind.begins_in(sight.system) for kind in KINDS if kind.part == "support"}
+    both = begins["stop"].replace("+", "±")
+    texts = (
+        (begins["free"], tr("no support")),
+        (begins["fixed"], tr("holds both ways")),
+        (begins["spring"], tr("pulls back both ways")),
+        (begins["stop"], tr("pushes back beyond the gap, on this side")),
+        (both, tr("on either side")),
+        (f"{begins['spring']} and {begins['stop']}", tr("several at one joint")),
+    )
+    return tuple(
+        Offer(supports_entry(parse_supports(text, sight.system), sight.system), remark)
+        for text, remark in texts
+    )
 
 
 def _named(names: Iterable[str]) -> tuple[Offer, ...]:

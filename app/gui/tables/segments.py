@@ -152,6 +152,7 @@ COLUMNS = (
         place=lambda index, _sight: ("joints", index + 1, "support"),
         optional=True,
         width=17,
+        offers=offers.supports,
     ),
     Column("mass", later("Mass"), quantity="mass", figure=mass, width=7, at_first=False),
     Column(

@@ -189,7 +189,10 @@ class TestParts:
 
     def test_stops_show_their_gap(self):
         texts = {text.text for text in picture(stopped_member(), size=SIZES[1]).texts}
-        assert {"gap 0.2 mm", "gap 0.5 mm"} <= texts
+        assert {
+            "gap 0.2 mm, rigid",
+            f"gap 0.5 mm, {format_value(1e8, 'spring', 'mm-N-MPa', with_unit=True)}",
+        } <= texts
 
     def test_a_tooltip_keeps_what_a_label_says(self):
         member = drawn(busy_member(12))
