@@ -6,6 +6,8 @@ the joint in rows of their own on the far side of the loads, one below the other
 
 from __future__ import annotations
 
+from itertools import zip_longest
+
 from msgspec import Struct, UnsetType
 from msgspec.structs import replace
 
@@ -76,7 +78,7 @@ def support_wishes(sketch: Sketch) -> list[Wish]:
     if not sketch.frame.detail.dimensions:
         return []
     wishes, said = [], False
-    for one, after in zip(sketch.supports, (*sketch.supports[1:], None), strict=True):
+    for one, after in zip_longest(sketch.supports, sketch.supports[1:]):
         both = not said and _speaks_for(one, after)
         text = "" if said else _label(sketch, one, both=both)
         said = both
