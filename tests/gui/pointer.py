@@ -11,10 +11,11 @@ PLAIN = Qt.KeyboardModifier.NoModifier
 SHIFT, CTRL = Qt.KeyboardModifier.ShiftModifier, Qt.KeyboardModifier.ControlModifier
 
 
-def handle_of(window, kind, index, where):
+def handle_of(window, kind, index, where, number=0):
     """The first handle of a number on the drawing."""
     handles = window.sheet.drawing.handles
-    return next(h for h in handles if (h.kind, h.index, h.where) == (kind, index, where))
+    wanted = kind, index, where, number
+    return next(h for h in handles if (h.kind, h.index, h.where, h.number) == wanted)
 
 
 class Pointer:
@@ -31,9 +32,9 @@ class Pointer:
         event = QMouseEvent(kind, self.at, glob, button, buttons, modifiers)
         QApplication.sendEvent(self.viewport, event)
 
-    def over(self, kind, index, where, modifiers=PLAIN):
+    def over(self, kind, index, where, modifiers=PLAIN, number=0):
         """Go over a handle."""
-        handle = handle_of(self.window, kind, index, where)
+        handle = handle_of(self.window, kind, index, where, number)
         self.outward = QPointF(*handle.outward)
         self.at = QPointF(*handle.centre)
         if kind == "joint":  # beside the mark of a segment and the force on the axis
@@ -41,8 +42,8 @@ class Pointer:
             self.at = QPointF(0.7 * x + 0.3 * cx, 0.7 * y + 0.3 * cy)
         self.send(QEvent.Type.MouseMove, modifiers=modifiers)
 
-    def grab(self, kind, index, where, modifiers=PLAIN):
-        self.over(kind, index, where, modifiers)
+    def grab(self, kind, index, where, modifiers=PLAIN, number=0):
+        self.over(kind, index, where, modifiers, number)
         self.press(modifiers)
 
     def press(self, modifiers=PLAIN):

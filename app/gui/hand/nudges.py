@@ -38,9 +38,10 @@ class Nudges:
     def _ways(self) -> list[Way]:
         """What can be taken of the selection, each number once: the sides of an edge are the same."""
         ways: dict[tuple[object, ...], Way] = {}
+        last = len(self._grasp.sheet.positions) - 1  # beyond the last joint there is nothing that could stay
         for handle in self._grasp.paper.hand_marks.quiet:
             ways.setdefault((*handle.key[:4], False), (handle, False))
-            if handle.kind == "joint":
+            if handle.kind == "joint" and handle.index < last:
                 ways.setdefault((*handle.key[:4], True), (handle, True))
         return list(ways.values())
 
