@@ -1,4 +1,4 @@
-"""Stops by hand on the real window: put on, typed in place, pulled, taken off; what they do said and shown."""
+"""Stops by hand on the real window: put on, typed, pulled, taken off; what they do is said and seen."""
 
 from __future__ import annotations
 
