@@ -13,6 +13,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from app.gui.shown_results import results_to_show
 from app.gui.tables.column import Figures
 from app.gui.view import Shown
 from app.phrases.contacts import contact_texts
@@ -123,6 +124,7 @@ def governing(results: Results) -> Shown:
 
 def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figures:
     """What the tables show of the results of the shown state."""
+    results = results_to_show(results, shown, current=current)
     if results is None:
         return Figures(current=current)
     state = None if shown.kind == "envelope" else _index(results, shown)

@@ -21,6 +21,7 @@ from app.gui.hand.marks import HandMarks
 from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.sheet_texts import texts_under
+from app.gui.shown_results import notice_words, results_to_show
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import contents_of
@@ -45,7 +46,8 @@ class SheetScene(QGraphicsScene):
         super().__init__(parent)
         self._theme, self._fonts = theme, fonts
         self._project: Project | None = None
-        self._results: Results | None = None
+        self._results: Results | None = None  # what is shown of those given
+        self._given: Results | None = None
         self._reference: Reference | None = None
         self._earlier: Earlier | None = None  # the reference's curves, made once for each state
         self._near: tuple[float, float] | None = None  # the window whose curves have points of their own
@@ -144,11 +146,11 @@ class SheetScene(QGraphicsScene):
     ) -> None:
         """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
         self._waiting = waiting
-        fresh = results is not self._results
-        self._results = results
+        before = self._results
         self._current = current and results is not None
+        self._given, self._results = results, results_to_show(results, self._shown, current=self._current)
         self._take(project)
-        if fresh:
+        if self._results is not before:
             self._show_curves()
         self._hand_out_colours()
         self._place_all()
@@ -186,6 +188,7 @@ class SheetScene(QGraphicsScene):
     def show_state(self, shown: Shown) -> None:
         """Show the curves and loads of another state."""
         self._shown = shown
+        self._results = results_to_show(self._given, shown, current=self._current)
         self._earlier = self._earlier_curves()
         self._show_curves()
         if self._project is not None:
@@ -316,13 +319,10 @@ class SheetScene(QGraphicsScene):
         self.joint_lines.set_joints(self._positions, ruler, layout, self.drawing.chain_edge)
 
     def _say_notice(self) -> None:
-        text = ""
-        if self._waiting:
-            text = tr("Solving…")
-        elif self._results is None and self._project is not None:
-            text = tr("No results yet: the findings say what is missing.")
-        elif self._results is not None and not self._current:
-            text = tr("out of date")
+        drawn = self._project is not None
+        text = notice_words(
+            self._given, self._shown, current=self._current, waiting=self._waiting, drawn=drawn
+        )
         width = min(self._fonts.measure(text, "plain").width() + 20.0, self._layout.readout.width())
         box = QRectF(0.0, 0.0, width, 1.7 * self._fonts.text_height)
         box.moveCenter(self._layout.strips[0].center())

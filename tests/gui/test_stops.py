@@ -14,6 +14,7 @@ from app.gui.view import Selection, Shown
 from solver.model import (
     Combination,
     FixedSupport,
+    JointLoad,
     RoundSection,
     SegmentLoad,
     SpringSupport,
@@ -242,3 +243,36 @@ class TestResults:
         window.document.commit(edits.hold_joint(window.document.project, 0, ()), "Free")
         qtbot.waitUntil(lambda: window.findings.headline == "Cannot be solved yet", timeout=5000)
         assert any("stop" in row.row.spoken for row in window.findings.rows if row.row.tone == "problem")
+
+
+class TestACaseThatIsNotPressed:
+    @pytest.fixture
+    def pulled(self, qtbot, window, ready):
+        """A stop alone holds the shaft: in Push it is pressed, in Pull it is not."""
+        forces = {"Push": -2e4, "Pull": 1e4}
+        cases = [case(name, on_joints=[JointLoad("2", force)]) for name, force in forces.items()]
+        bar = Segment(1.0, RoundSection(diameter=0.05), allowable_compression=2e8)
+        stop = StopSupport(side="minus", clearance=0.0)
+        both = (Combination("Both", {"Push": 1.0, "Pull": 1.0}),)
+        window.document.load(member([bar, bar], {0: stop}, cases, both), None)
+        solved(qtbot, window)
+        window.view.set_shown(Shown("case", "Pull"))
+        QApplication.processEvents()
+        return window
+
+    def test_nothing_is_shown_of_another_state_and_it_is_said_why(self, pulled):
+        assert pulled.sheet.notice.startswith("No results of Pull alone")
+        assert all(strip.content is None for strip in pulled.sheet.paper.strips)
+        assert text_at(pulled.tables.views["segments"], 1, "utilisation") == ""
+        assert pulled.sheet.paper.on_drawing.contacts.texts == ()
+
+    def test_nothing_can_be_copied_as_if_it_were_its_own(self, pulled):
+        QApplication.clipboard().setText("before")
+        pulled.taking.copy_numbers(("force",))
+        assert QApplication.clipboard().text() == "before"
+
+    def test_another_state_is_shown_again(self, pulled):
+        pulled.view.set_shown(Shown("combination", "Both"))
+        QApplication.processEvents()
+        assert pulled.sheet.notice == ""
+        assert all(strip.content is not None for strip in pulled.sheet.paper.strips)

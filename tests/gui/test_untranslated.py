@@ -161,7 +161,7 @@ def with_an_entry_not_taken_in(qtbot, window):
 
 def held_nowhere(qtbot, window):
     project = window.document.project
-    free = tuple(replace(joint, support=None) for joint in project.joints)
+    free = tuple(replace(joint, support=UNSET) for joint in project.joints)
     window.document.commit(replace(project, joints=free), "")
 
 

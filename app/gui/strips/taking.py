@@ -21,6 +21,7 @@ from app.gui.outcome import Outcome
 from app.gui.settings import Settings
 from app.gui.sheet_layout import GAP
 from app.gui.sheet_view import SheetView
+from app.gui.shown_results import results_to_show
 from app.gui.strips.hand import Grips
 from app.gui.tables.clipboard import block_text
 from app.gui.theme import colour, theme_for
@@ -153,7 +154,8 @@ class StripTaking(QObject):
     def _current(self) -> Results | None:
         """The results that are shown, if they are current; else says why nothing is taken."""
         outcome = self._showing.outcome
-        results = outcome.results if outcome else None
+        given = outcome.results if outcome else None
+        results = results_to_show(given, self._view.shown, current=self._showing.current)
         if results is None:
             self.told.emit(tr("Nothing to take: there are no results"))
             return None
