@@ -69,7 +69,7 @@ KINDS: Final[tuple[Kind, ...]] = (
         "stop",
         later("Stop with a gap"),
         "joint",
-        "A",
+        "P",
         symbols.STOP,
         "support",
         ("stop + 0.2 mm", "stop + 0.01 in"),

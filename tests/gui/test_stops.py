@@ -75,7 +75,7 @@ class TestPuttingOn:
     def test_a_letter_puts_one_on_and_its_clearance_is_typed_at_once(self, qtbot, window, ready):
         ready({})
         window.view.set_selection(Selection(joints=frozenset((2,))))
-        QTest.keyClick(window.sheet, Qt.Key.Key_A)
+        QTest.keyClick(window.sheet, Qt.Key.Key_P)
         line = window.in_place.editor
         assert line is not None
         assert line.text() == "stop + 0.2 mm"
@@ -87,7 +87,7 @@ class TestPuttingOn:
     def test_before_the_first_joint_it_stands_on_the_other_side(self, window, ready):
         ready({0: (SpringSupport(stiffness=1e9),)})
         window.view.set_selection(Selection(joints=frozenset((0,))))
-        QTest.keyClick(window.sheet, Qt.Key.Key_A)
+        QTest.keyClick(window.sheet, Qt.Key.Key_P)
         QTest.keyClick(window.in_place.editor, Qt.Key.Key_Escape)
         assert supports(window, 0) == (
             SpringSupport(stiffness=1e9),
