@@ -177,6 +177,12 @@ def support_text(support: AnySupport, system: UnitSystemName) -> str:
     return supports_text((support,), system)
 
 
+def support_name(support: AnySupport, system: UnitSystemName) -> str:
+    """What one support is called beside what it does: a stop by its side and clearance alone."""
+    is_stop = isinstance(support, StopSupport)
+    return support_text(replace(support, stiffness=UNSET) if is_stop else support, system)
+
+
 def _worded(supports: Supports, number: Wording) -> str:
     """All of them; two stops alike but for their side become one with both signs."""
     texts, taken = [], False

@@ -14,7 +14,7 @@ from app.findings.records import JointDisplacement, JointReaction, StateBooks, S
 from app.numerals import decimals_for, fixed
 from app.phrases.notes import numerical_error_text
 from app.phrases.states import state_words
-from app.support_entry import support_text
+from app.support_entry import support_name
 from app.units import format_value, symbol, to_display
 from app.words import tr
 from solver.arrays import FloatArray
@@ -87,7 +87,7 @@ def _parts(results: Results, state: int, joint: int, column: _Column) -> tuple[S
         return ()
     outcomes = support_outcomes(results, state, joint)
     return tuple(
-        SupportPart(support_text(support, column.system), _does(outcome, column))
+        SupportPart(support_name(support, column.system), _does(outcome, column))
         for support, outcome in zip(supports, outcomes, strict=True)
     )
 

@@ -11,7 +11,7 @@ from app.findings.listing import listed
 from app.findings.records import ContactFinding
 from app.phrases.contacts import left_text, push_text
 from app.phrases.states import state_words
-from app.support_entry import support_text
+from app.support_entry import support_name
 from app.words import later, tr
 from solver.model import UnitSystemName
 from solver.results import Results
@@ -56,7 +56,7 @@ def _sentence(states: Sequence[tuple[str, StopState]], system: UnitSystemName) -
     first = states[0][1]
     return tr(_SENTENCES[bool(closed), bool(opened)]).format(
         mark=first.mark,
-        stop=support_text(first.stop, system),
+        stop=support_name(first.stop, system),
         closed=listed([pushed.format(state=name, force=push_text(s, system)) for name, s in closed]),
         open=listed([left.format(state=name, gap=left_text(s, system)) for name, s in opened]),
     )
