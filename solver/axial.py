@@ -18,6 +18,7 @@ from solver.errors import BoundNotMet, Cancelled, NotSolvable, OutOfRange, Stiff
 from solver.faults import Fault
 from solver.joints import FactorError
 from solver.mesh import Mesh
+from solver.net import net_of
 from solver.passes import Pass
 from solver.patterns import Unsettled
 from solver.refine import first_mesh, refined
@@ -88,12 +89,12 @@ def _sound_pass(
         faults = (Fault("joints", "not_pressed"),)
         raise NotSolvable(faults, tuple(names[state] for state in states), states) from loose
     except Unsettled as lost:
-        joint = int(np.searchsorted(mesh.joints(), lost.at))
+        joint = net_of(chain, mesh).joint_of(lost.at)
         raise StiffnessContrast(names[lost.state], joint, lost.force, lost.force) from lost
     except FactorError as lost:
         state = int(np.argmax(lost.largest_load))
         largest = float(lost.largest_load[state])
-        joint = int(np.searchsorted(mesh.joints(), lost.at))
+        joint = net_of(chain, mesh).joint_of(lost.at)
         raise StiffnessContrast(names[state], joint, largest, largest) from lost
     _require_range(trial, names)
     _require_balance(trial, names)
@@ -123,5 +124,5 @@ def _require_balance(trial: Pass, names: Sequence[str]) -> None:
     if lost.any():
         state = int(np.argmax(lost))
         at = int(np.argmax(leftover[state]))
-        joint = int(np.searchsorted(trial.mesh.joints(), at))
+        joint = trial.patterns.net.joint_of(at)
         raise StiffnessContrast(names[state], joint, float(leftover[state, at]), float(largest[state]))

@@ -21,6 +21,7 @@ import numpy as np
 from solver.arrays import FloatArray
 from solver.condense import Condensed
 from solver.joints import Displacements, Held, JointSystem
+from solver.net import Net
 
 EPSILON = float(np.finfo(np.float64).eps)
 FLOOR = 1e-10  # of max|u|² Σ ∫ EA dx/L², so that a rigid movement has a size to compare with
@@ -55,7 +56,7 @@ class Bound:
 
 
 def joint_share(system: JointSystem, leftover: FloatArray, roundings: FloatArray) -> FloatArray:
-    """(m,) √(r̃ᵀ K⁻¹ r̃) with r̃ = |r| + ρ, from r and ρ (m, e + 1)."""
+    """(m,) √(r̃ᵀ K⁻¹ r̃) with r̃ = |r| + ρ, from r and ρ (m, nodes)."""
     worst = np.abs(leftover) + roundings
     energy = np.einsum("mj,mj->m", worst, system.solve(worst))
     return np.asarray(np.sqrt(np.maximum(energy, 0.0)))
@@ -64,7 +65,7 @@ def joint_share(system: JointSystem, leftover: FloatArray, roundings: FloatArray
 def joint_roundings(
     at: Held, ends: Condensed, u: Displacements, mean: FloatArray, stretch: FloatArray
 ) -> FloatArray:
-    """(m, e + 1) as `force_roundings`, but 0 where a support takes whatever comes."""
+    """(m, nodes) as `force_roundings`, but 0 where a support takes whatever comes."""
     roundings = force_roundings(at, ends, u, mean, stretch)
     roundings[:, at.fixed] = 0.0
     return roundings
@@ -73,23 +74,23 @@ def joint_roundings(
 def force_roundings(
     at: Held, ends: Condensed, u: Displacements, mean: FloatArray, stretch: FloatArray
 ) -> FloatArray:
-    """(m, e + 1) how far rounding can have moved the sum of forces at each end of an element."""
+    """(m, nodes) how far rounding can have moved the sum of forces at each node."""
     size = np.abs(ends.stretch_stretch * stretch) + np.abs(ends.load_stretch) + np.abs(ends.load_mean) / 2
     if ends.mean_mean.any():
         size += np.abs(ends.mean_stretch) * (np.abs(mean) + np.abs(stretch) / 2)
         size += ends.mean_mean * np.abs(mean) / 2
     total = np.abs(at.force)
     total[:, at.sprung] += at.spring * (np.abs(at.movement[:, at.sprung]) + np.abs(u.high[:, at.sprung]))
-    total[:, :-1] += size
-    total[:, 1:] += size
+    total[:, at.net.start] += size
+    total[:, at.net.end] += size
     return np.asarray((FORCE_ROUNDINGS * EPSILON) * total)
 
 
-def displacement_share(ends: Condensed, u: Displacements) -> FloatArray:
+def displacement_share(ends: Condensed, u: Displacements, net: Net) -> FloatArray:
     """(m,) 2 ε √Σ κ (|u_i| + |u_j|)², κ the largest diagonal entry of an element's condensed stiffness."""
     largest = ends.mean_mean / 4 + np.abs(ends.mean_stretch) + ends.stretch_stretch
     size = np.abs(u.high)
-    both = size[:, 1:] + size[:, :-1]
+    both = size[:, net.end] + size[:, net.start]
     return np.asarray(2 * EPSILON * np.sqrt((both * both) @ largest))
 
 

@@ -34,6 +34,18 @@ NO_STOPS = Stops(_NOWHERE, *(frozen(np.zeros(0)) for _ in range(3)))
 
 
 @dataclass(frozen=True, slots=True)
+class Companions:
+    """Chains beside the member, c in all; their segments follow the member's n in all arrays by segment."""
+
+    start: IntArray  # (c,) joint where each is tied
+    end: IntArray  # (c,) joint at the other end
+    first: IntArray  # (c + 1,) its first segment, counted from the first companion's; ends with their number
+    parting: (
+        FloatArray  # (c,) 0 tied at both ends, +1 where the far end can only push its joint, −1 only pull
+    )
+
+
+@dataclass(frozen=True, slots=True)
 class Chain:
     """The member without loads. Shapes by segment (n, …) or by joint (n + 1).
 
@@ -50,6 +62,7 @@ class Chain:
     fixed: BoolArray  # (n + 1,) joints held at their movement
     spring: FloatArray  # (n + 1,) N/m, 0 where there is none, the sum where there are several
     stops: Stops = NO_STOPS
+    companions: Companions | None = None
     bonded: Bonded | None = None
 
     def rigidity(self, where: Where) -> FloatArray:

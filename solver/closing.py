@@ -5,8 +5,9 @@ so that the gaps under the contact forces z are w = A z + q (on the diagonal of 
 too): a linear complementarity problem of the size of the contacts, not of the member.
 
 Where contacts alone hold the member, it has a rigid movement α that no stiffness resists, and A is found with
-the node of the first contact held. Then α is a further unknown, w = A z + q − side α, and the balance of all
-forces, Σ side z = F with F the resultant of the loads, a further equation. Both leave by one step: the first
+the node of the first contact held. Then α is a further unknown, w = A z + q − turn α, and the balance of all
+forces, Σ turn z = F with F the resultant of the loads, a further equation; turn is the side of a contact with
+the ground and 0 of one between the member and a companion. Both leave by one step: the first
 contact's force and α are expressed by the others, which makes its gap the first unknown of a problem of the
 same kind, with the first contact's force as the first of its answers.
 """
@@ -72,20 +73,38 @@ def _closed_of_loose(condensed: Condensed, base: Held, contacts: Contacts) -> Bo
     compliance = _compliance(system, pinned, contacts, base.force.shape[1])
     closed = np.zeros(gaps.shape, dtype=np.bool_)
     reach = TOUCHING * (np.abs(contacts.rest()) + np.abs(gaps)).max(axis=1)
-    holds = [_hold(*state, contacts.side) for state in zip(gaps, resultant, reach, strict=True)]
+    inner, settled = _without_ground(compliance, gaps, resultant, contacts)
+    holds = [_hold(*state, contacts.turn) for state in zip(settled, resultant, reach, strict=True)]
     if LOOSE in holds:
         raise Loose(np.flatnonzero(np.array(holds) == LOOSE))
     for state, hold in enumerate(holds):
         if hold == PRESSED:
-            closed[state] = _pushing(_balanced(compliance, contacts.side, gaps[state], resultant[state]))
+            closed[state] = _pushing(_balanced(compliance, contacts.turn, gaps[state], resultant[state]))
         else:
+            closed[state] = inner[state]
             closed[state, hold] = True
     return closed
 
 
-def _hold(gap: FloatArray, resultant: float, reach: float, side: FloatArray) -> int:
+def _without_ground(
+    compliance: FloatArray, gaps: FloatArray, resultant: FloatArray, contacts: Contacts
+) -> tuple[BoolArray, FloatArray]:
+    """Where no resultant presses: which contacts within close by themselves, and the gaps (m, s) then."""
+    closed, settled = np.zeros(gaps.shape, dtype=np.bool_), gaps.copy()
+    within = np.flatnonzero(contacts.other >= 0)
+    if not within.size:
+        return closed, settled
+    for state in np.flatnonzero(resultant == 0.0):
+        force = complementary(compliance[np.ix_(within, within)], gaps[state, within])
+        closed[state, within] = _pushing(force)
+        if force is not None:
+            settled[state] += compliance[:, within] @ force
+    return closed, settled
+
+
+def _hold(gap: FloatArray, resultant: float, reach: float, turn: FloatArray) -> int:
     """PRESSED, or LOOSE, or the contact that the member touches without a force and without play."""
-    plus, minus = np.flatnonzero(side > 0.0), np.flatnonzero(side < 0.0)
+    plus, minus = np.flatnonzero(turn > 0.0), np.flatnonzero(turn < 0.0)
     if resultant != 0.0:
         return PRESSED if (plus if resultant > 0.0 else minus).size else LOOSE
     if not (plus.size and minus.size):
@@ -98,20 +117,19 @@ def _hold(gap: FloatArray, resultant: float, reach: float, side: FloatArray) -> 
 
 
 def _balanced(
-    compliance: FloatArray, side: FloatArray, gap: FloatArray, resultant: float
+    compliance: FloatArray, turn: FloatArray, gap: FloatArray, resultant: float
 ) -> FloatArray | None:
     """(s,) the contact forces that balance the resultant; the first contact's node held in the rest."""
-    own, turn = compliance[0, 0], side[0] * side
-    matrix = compliance + own * np.outer(side, side)
-    matrix[0], matrix[:, 0] = -turn, turn
+    own, first = compliance[0, 0], turn[0]
+    matrix = compliance + own * np.outer(turn, turn)
+    matrix[0], matrix[:, 0] = -first * turn, first * turn
     matrix[0, 0] = 0.0
-    constant = gap - turn * gap[0] - own * resultant * side
-    constant[0] = side[0] * resultant
+    constant = gap - first * turn * gap[0] - own * resultant * turn
+    constant[0] = first * resultant
     found = complementary(matrix, constant)
     if found is None:
         return None
-    first = constant[0] + matrix[0] @ found
-    return np.append(first, found[1:])
+    return np.append(constant[0] + matrix[0] @ found, found[1:])
 
 
 def _resultant(base: Held, condensed: Condensed) -> FloatArray:
@@ -124,20 +142,21 @@ def _resultant(base: Held, condensed: Condensed) -> FloatArray:
 def _gaps(system: JointSystem, contacts: Contacts) -> FloatArray:
     """(m, s) with all contacts open."""
     u = system.displacements()
-    return contacts.gap(u.high[:, contacts.node] + u.low[:, contacts.node])
+    return contacts.gap(contacts.relative(u.high) + contacts.relative(u.low))
 
 
 def _compliance(system: JointSystem, base: Held, contacts: Contacts, count: int) -> FloatArray:
     """(s, s) by how much a unit force of one contact widens the gap of another, `count` ends of elements."""
-    node = contacts.node
-    movable = np.flatnonzero(~np.isin(node, base.fixed))
-    matrix = np.zeros((node.size, node.size))
-    for some in np.array_split(movable, 1 + movable.size * count // CHUNK):
-        unit = np.zeros((some.size, count))
-        unit[np.arange(some.size), node[some]] = contacts.side[some]
-        matrix[some] = system.solve(unit)[:, node] * contacts.side
-    matrix[:, np.isin(node, base.fixed)] = 0.0
-    matrix[np.diag_indices(node.size)] += 1.0 / contacts.stiffness
+    every = np.arange(contacts.node.size)
+    within = contacts.other >= 0
+    matrix = np.zeros((every.size, every.size))
+    for some in np.array_split(every, 1 + every.size * count // CHUNK):
+        unit, row = np.zeros((some.size, count)), np.arange(some.size)
+        unit[row, contacts.node[some]] = contacts.side[some]
+        unit[row[within[some]], contacts.other[some[within[some]]]] = -contacts.side[some[within[some]]]
+        unit[:, base.fixed] = 0.0
+        matrix[some] = contacts.relative(system.solve(unit)) * contacts.side
+    matrix[every, every] += 1.0 / contacts.stiffness
     return matrix
 
 

@@ -13,16 +13,17 @@ from dataclasses import dataclass, fields, replace
 import numpy as np
 
 from solver.arrays import BoolArray, FloatArray, IntArray
-from solver.chain import Chain, Loads, Stops, Where
+from solver.chain import Chain, Companions, Loads, Stops, Where
 from solver.joints import Held
-from solver.mesh import Mesh
+from solver.net import Net
 
 
 @dataclass(frozen=True, slots=True)
 class Contacts:
     """One-sided supports as the ends of the elements see them."""
 
-    node: IntArray  # (s,) the end of an element
+    node: IntArray  # (s,)
+    other: IntArray  # (s,) the node that it moves against, −1 for the ground
     side: FloatArray  # (s,) ±1
     clearance: FloatArray  # (s,)
     stiffness: FloatArray  # (s,) infinite for a rigid one
@@ -46,6 +47,15 @@ class Contacts:
         """(m, s) where the nodes touch."""
         return np.asarray(self.movement + self.side * self.clearance)
 
+    @property
+    def turn(self) -> FloatArray:
+        """(s,) the side of a contact with the ground, and 0 of one within, which no rigid movement closes."""
+        return np.where(self.other < 0, self.side, 0.0)
+
+    def relative(self, u: FloatArray) -> FloatArray:
+        """(m, s) how far each node moves from what it moves against, from u (m, nodes)."""
+        return np.asarray(u[:, self.node] - np.where(self.other < 0, 0.0, u[:, self.other]))
+
     def gap(self, u: FloatArray) -> FloatArray:
         """(m, s) the clearance that remains where the nodes move by u (m, s); below 0 where pressed in."""
         return np.asarray(self.clearance - self.side * (u - self.movement))
@@ -62,14 +72,15 @@ class Contacts:
         return np.where(self.facing, np.maximum(left, 0.0), force)
 
 
-def contacts_of(chain: Chain, loads: Loads, mesh: Mesh) -> Contacts:
-    """The stops as contacts."""
+def contacts_of(chain: Chain, loads: Loads, net: Net) -> Contacts:
+    """The stops as contacts, and after them the far ends of companions that can part."""
     stops = chain.stops
     facing = facing_pairs(stops) & ~chain.fixed[stops.joint]
     held = chain.fixed.copy()
     held[stops.joint[facing]] = True
-    return Contacts(
-        node=mesh.joints()[stops.joint],
+    found = Contacts(
+        node=net.joints[stops.joint],
+        other=np.full(stops.joint.size, -1),
         side=stops.side,
         clearance=stops.clearance,
         stiffness=stops.stiffness,
@@ -79,6 +90,26 @@ def contacts_of(chain: Chain, loads: Loads, mesh: Mesh) -> Contacts:
         rigid=np.isinf(stops.stiffness),
         facing=facing,
     )
+    return found if chain.companions is None else _with_parting(found, chain.companions, net)
+
+
+def _with_parting(stops: Contacts, companions: Companions, net: Net) -> Contacts:
+    parting = np.flatnonzero(companions.parting)
+    none, yes = np.zeros(parting.size), np.ones(parting.size, dtype=np.bool_)
+    ends = Contacts(
+        node=net.far[parting],
+        other=net.joints[companions.end[parting]],
+        side=companions.parting[parting],
+        clearance=none,
+        stiffness=np.full(parting.size, np.inf),
+        spring=none,
+        movement=np.zeros((stops.movement.shape[0], parting.size)),
+        live=yes,
+        rigid=yes,
+        facing=~yes,
+    )
+    both = {f.name: (getattr(stops, f.name), getattr(ends, f.name)) for f in fields(Contacts)}
+    return Contacts(**{name: np.concatenate(two, axis=-1) for name, two in both.items()})
 
 
 def facing_pairs(stops: Stops) -> BoolArray:
@@ -114,12 +145,15 @@ def held_by(base: Held, contacts: Contacts, closed: BoolArray) -> Held:
     if soft.size:
         sprung, spring, meant = _together(base, contacts, soft, rest)
         movement[:, sprung] = meant
+    parting = contacts.other[rigid] >= 0
+    net = base.net.with_ties(held[parting], contacts.other[rigid[parting]])
+    rigid, held = rigid[~parting], held[~parting]
     movement[:, held] = rest[:, rigid]
     fixed = np.append(base.fixed, held)
     if held.size:
         free = ~np.isin(sprung, held)
         sprung, spring = sprung[free], spring[free]
-    return Held(fixed, sprung, spring, base.force, movement)
+    return Held(net, fixed, sprung, spring, base.force, movement)
 
 
 def _together(

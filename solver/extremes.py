@@ -53,9 +53,18 @@ class _Candidates:
 class ExtremeFinder:
     """Finds the extremes on one solution; holds what all three quantities need."""
 
-    def __init__(self, chain: Chain, solution: Solution, loads: Loads, position: FloatArray) -> None:
-        self._chain, self._solution, self._loads, self._position = chain, solution, loads, position
-        places = (solution.start, solution.end, position[:-1], position[1:], chain.length)
+    def __init__(
+        self, chain: Chain, solution: Solution, loads: Loads, begins: FloatArray, ends: FloatArray
+    ) -> None:
+        """`begins` and `ends` (n,) are the positions x of the segments."""
+        self._chain, self._solution, self._loads, self._begins, self._ends = (
+            chain,
+            solution,
+            loads,
+            begins,
+            ends,
+        )
+        places = (solution.start, solution.end, begins, ends, chain.length)
         self._segments = _owners(solution.segment, *places)
 
     def displacement(self) -> Extremes:
@@ -81,7 +90,7 @@ class ExtremeFinder:
         part = np.repeat(np.arange(of.size), counts)
         element = np.arange(part.size) - np.repeat(np.cumsum(counts) - counts, counts) + first[part]
         start, end = solution.start[element], solution.end[element]
-        begins, ends = self._position[of], self._position[of + 1]
+        begins, ends = self._begins[of], self._ends[of]
         owners = _owners(part, start, end, begins, ends, self._chain.length[of])
         force = solution.force[:, element]
         held = constraint(bonded, part, self._loads.temperature, start, end)

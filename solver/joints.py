@@ -1,8 +1,9 @@
 """The tridiagonal system of the joints: assembled, factored once, solved for all states together.
 
-"Joints" are here the ends of all elements, 0…e. A support that holds a joint takes its equation out (one on
-the diagonal, nothing beside it), so that the matrix stays symmetric, positive definite and tridiagonal, as
-LAPACK's pttrf and pttrs want it.
+"Joints" are here the nodes: the ends of all elements. A support that holds a joint takes its equation out
+(one on the diagonal, nothing beside it), so that the matrix stays symmetric, positive definite and
+tridiagonal, as LAPACK's pttrf and pttrs want it. Where companions make loops it is sparse instead
+(`solver.sparse_system`).
 
 The solution is kept as a sum of two doubles, the second being what iterative refinement adds: the stretch of
 an element is the difference of its ends, and where a stiff part hangs on a soft spring it lies in digits that
@@ -13,6 +14,7 @@ stiffnesses some 1e9 apart, and only beyond are there more.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 import numpy as np
 from scipy.linalg.lapack import dpttrf, dpttrs
@@ -20,7 +22,10 @@ from scipy.linalg.lapack import dpttrf, dpttrs
 from solver.arrays import FloatArray, IntArray
 from solver.chain import Chain, Loads
 from solver.condense import Condensed
-from solver.mesh import Mesh
+from solver.net import Net
+
+if TYPE_CHECKING:
+    from solver.sparse_system import SparseSystem  # costly, and needed only where there are companions
 
 REFINEMENTS = 4
 SETTLED = 1e-9  # a correction up to this part of the displacement needs no other after it
@@ -30,16 +35,17 @@ SETTLED = 1e-9  # a correction up to this part of the displacement needs no othe
 class Held:
     """Supports and joint loads at the ends of the elements."""
 
-    fixed: IntArray  # which ends are held
-    sprung: IntArray  # (s,) which other ends have a spring
+    net: Net
+    fixed: IntArray  # which nodes are held
+    sprung: IntArray  # (s,) which other nodes have a spring
     spring: FloatArray  # (s,) its stiffness
-    force: FloatArray  # (m, e + 1)
-    movement: FloatArray  # (m, e + 1) where what holds the end would have it
+    force: FloatArray  # (m, nodes)
+    movement: FloatArray  # (m, nodes) where what holds the node would have it
 
 
 @dataclass(frozen=True, slots=True)
 class Displacements:
-    """Of the ends of the elements, (m, e + 1) each: the displacement is their sum."""
+    """Of the nodes, (m, nodes) each: the displacement is their sum."""
 
     high: FloatArray
     low: FloatArray
@@ -50,18 +56,19 @@ class Displacements:
         high = self.high + low
         return Displacements(high, low - (high - self.high))
 
-    def mean(self) -> FloatArray:
+    def mean(self, net: Net) -> FloatArray:
         """(m, e) the mean of each element's ends."""
         total = self.high + self.low
-        return np.asarray((total[:, 1:] + total[:, :-1]) / 2)
+        return np.asarray((total[:, net.end] + total[:, net.start]) / 2)
 
-    def stretch(self) -> FloatArray:
+    def stretch(self, net: Net) -> FloatArray:
         """(m, e) end less start of each element."""
-        return np.asarray((self.high[:, 1:] - self.high[:, :-1]) + (self.low[:, 1:] - self.low[:, :-1]))
+        high, low = self.high, self.low
+        return np.asarray((high[:, net.end] - high[:, net.start]) + (low[:, net.end] - low[:, net.start]))
 
 
 class FactorError(Exception):
-    """The factor met a pivot that is not positive, at the end `at` of an element: no digit is left there."""
+    """The factor met a pivot that is not positive, at the node `at`: no digit is left there."""
 
     def __init__(self, at: int, largest_load: FloatArray) -> None:
         super().__init__(f"pivot {at}")
@@ -69,16 +76,16 @@ class FactorError(Exception):
         self.largest_load = largest_load  # (m,) N
 
 
-def held(chain: Chain, loads: Loads, mesh: Mesh) -> Held:
-    """Supports and joint loads spread from the joints to the ends of the elements."""
+def held(chain: Chain, loads: Loads, net: Net) -> Held:
+    """Supports and joint loads spread from the joints to the nodes."""
     fixed, sprung = np.flatnonzero(chain.fixed), np.flatnonzero((chain.spring > 0.0) & ~chain.fixed)
     spring, force, movement = chain.spring[sprung], loads.joint_force, loads.movement
-    if not mesh.whole:
-        joints, shape = mesh.joints(), (force.shape[0], mesh.segment.size + 1)
+    if net.count > net.joints.size:
+        joints, shape = net.joints, (force.shape[0], net.count)
         fixed, sprung = joints[fixed], joints[sprung]
         force, movement = np.zeros(shape), np.zeros(shape)
         force[:, joints], movement[:, joints] = loads.joint_force, loads.movement
-    return Held(fixed, sprung, spring, force, movement)
+    return Held(net, fixed, sprung, spring, force, movement)
 
 
 class JointSystem:
@@ -88,10 +95,22 @@ class JointSystem:
         self._ends = condensed
         self._held = at
         self._bedded = bool(condensed.mean_mean.any())
+        self._sparse = None if at.net.plain else self._of_loops()
+        if self._sparse is not None:
+            return
         diagonal, beside = self._assembled()
         self._diagonal, self._beside, failed = dpttrf(diagonal, beside, overwrite_d=1, overwrite_e=1)
         if failed:
             raise FactorError(failed - 1, largest_load(at, condensed))
+
+    def _of_loops(self) -> SparseSystem:
+        from solver.sparse_system import NotPositive, SparseSystem
+
+        at = self._held
+        try:
+            return SparseSystem(self._ends, at.net, at.fixed, at.sprung, at.spring)
+        except NotPositive as lost:
+            raise FactorError(0, largest_load(at, self._ends)) from lost
 
     def _assembled(self) -> tuple[FloatArray, FloatArray]:
         ends, fixed = self._ends, self._held.fixed
@@ -108,7 +127,9 @@ class JointSystem:
         return diagonal, beside
 
     def solve(self, right: FloatArray) -> FloatArray:
-        """K⁻¹ right for (r, e + 1); zero at held ends where right is."""
+        """K⁻¹ right for (r, nodes); zero at held nodes where right is."""
+        if self._sparse is not None:
+            return self._sparse.solve(right)
         solution, _ = dpttrs(self._diagonal, self._beside, right.T)
         return np.asarray(solution.T)
 
@@ -116,6 +137,7 @@ class JointSystem:
         """Solve, and refine: once, and again only while a correction is more than rounding."""
         start = np.zeros_like(self._held.movement)
         start[:, self._held.fixed] = self._held.movement[:, self._held.fixed]
+        start[:, self._held.net.tied] = start[:, self._held.net.to]
         u = Displacements(start, np.zeros_like(start))
         u = u.corrected(self.solve(self._leftover(u)))
         for _ in range(REFINEMENTS):
@@ -130,31 +152,34 @@ class JointSystem:
 
     def end_forces(self, u: Displacements) -> tuple[FloatArray, FloatArray]:
         """(m, e) each, the axial force at the start and at the end of every element."""
-        ends, stretch = self._ends, u.stretch()
+        ends, stretch = self._ends, u.stretch(self._held.net)
         half_sum = ends.stretch_stretch * stretch - ends.load_stretch
         difference = -ends.load_mean
         if self._bedded:
-            mean = u.mean()
+            mean = u.mean(self._held.net)
             half_sum += ends.mean_stretch * mean
             difference = ends.mean_mean * mean + ends.mean_stretch * stretch - ends.load_mean
         return half_sum - difference / 2, half_sum + difference / 2
 
 
 def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
-    """(m, e + 1) the force along +x left over at each end; 0 where the support takes whatever comes."""
+    """(m, nodes) the force along +x left over at each node; 0 where a support takes whatever comes."""
     left = at.force.copy()
     left[:, at.sprung] += spring_force(at, u)
-    left[:, :-1] += start_force
-    left[:, 1:] -= end_force
+    left[:, at.net.start] += start_force
+    left[:, at.net.end] -= end_force
+    at.net.hand_on(left)
+    left[:, at.net.tied] = 0.0
     left[:, at.fixed] = 0.0
     return left
 
 
 def taken(at: Held, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
-    """(m, e + 1) what the support at each end of an element exerts, along +x, to balance all other forces."""
+    """(m, nodes) what a support at each node exerts, along +x, to balance all others that meet there."""
     whole = -at.force
-    whole[:, :-1] -= start_force
-    whole[:, 1:] += end_force
+    whole[:, at.net.start] -= start_force
+    whole[:, at.net.end] += end_force
+    at.net.hand_on(whole)
     return whole
 
 
@@ -166,9 +191,12 @@ def spring_force(at: Held, u: Displacements) -> FloatArray:
 
 def largest_load(at: Held, ends: Condensed) -> FloatArray:
     """(m,) N, the largest of what loads do to a joint: by forces, by elements, by movements of supports."""
-    beside = np.pad(ends.stretch_stretch + ends.mean_mean, 1)
-    stiffness = np.zeros(at.force.shape[1])
+    own, net = ends.stretch_stretch + ends.mean_mean, at.net
+    beside, stiffness = np.zeros(net.count), np.zeros(net.count)
+    beside[net.start] = own
+    beside[net.end] = np.maximum(beside[net.end], own)
+    np.maximum.at(beside, net.to, beside[net.tied])
     stiffness[at.sprung] = at.spring
-    stiffness[at.fixed] = np.maximum(beside[1:], beside[:-1])[at.fixed]
+    stiffness[at.fixed] = beside[at.fixed]
     loads = (at.force, ends.load_stretch, ends.load_mean, stiffness * at.movement)
     return np.asarray(np.max([np.abs(load).max(axis=1) for load in loads], axis=0))

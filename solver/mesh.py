@@ -30,12 +30,11 @@ class Mesh:
     closed: BoolArray  # (e,)
     whole: bool  # every element is a whole segment
 
-    def joints(self) -> IntArray:
-        """(n + 1,) the element ends (counted 0…e) at which the joints of the chain lie."""
+    def joints(self, segments: int) -> IntArray:
+        """(n + 1,) the element ends (counted 0…e) at which the joints of the first n segments lie."""
         if self.whole:
-            return np.arange(self.segment.size + 1)
-        first = np.flatnonzero(np.diff(self.segment, prepend=-1))
-        return np.append(first, self.segment.size)
+            return np.arange(segments + 1)
+        return np.searchsorted(self.segment, np.arange(segments + 1))
 
 
 @dataclass(frozen=True, slots=True)

@@ -8,7 +8,8 @@ cases, so that any number of combinations costs one product.
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
+from typing import TypeAlias
 
 import numpy as np
 from msgspec import UnsetType
@@ -18,6 +19,7 @@ from solver.bonded import Bonded, bonded_parts
 from solver.chain import NO_STOPS, Chain, Loads, Stops
 from solver.model import (
     BondedPart,
+    CompanionSegment,
     FixedSupport,
     Material,
     Project,
@@ -32,6 +34,7 @@ from solver.results import State
 from solver.sections import area_coefficients
 
 UNLOADED = "Unloaded"
+AnySegment: TypeAlias = Segment | CompanionSegment
 
 
 def pack(project: Project, *, cases: bool = True) -> tuple[Chain, Loads, tuple[State, ...]]:
@@ -64,20 +67,34 @@ def pack_chain(project: Project) -> Chain:
     """The member as arrays."""
     segments = project.segments
     by_name = {material.name: material for material in project.materials}
-    materials = [by_name[segment.material] for segment in segments]
+    own = segment_arrays(project, segments)
     fixed, spring, stops = _supports(project)
     return Chain(
-        length=_array(segment.length for segment in segments),
-        modulus=_array(material.modulus for material in materials),
-        area=_array(_areas(segments)).reshape(-1, 3),
-        bedding=_array(_beddings(segments)).reshape(-1, 2),
-        expansion=_array(material.expansion for material in materials),
-        density=_array(material.density for material in materials),
+        length=own["length"],
+        modulus=own["modulus"],
+        area=own["area"],
+        expansion=own["expansion"],
+        density=own["density"],
+        bedding=array_of(_beddings(segments)).reshape(-1, 2),
         fixed=fixed,
         spring=spring,
         stops=stops,
         bonded=_bonded(segments, by_name),
     )
+
+
+def segment_arrays(project: Project, segments: Sequence[AnySegment]) -> dict[str, FloatArray]:
+    """What segments of the member and of companions have alike, by the name of the chain's array."""
+    by_name = {material.name: material for material in project.materials}
+    materials = [by_name[segment.material] for segment in segments]
+    areas = (area for segment in segments for area in area_coefficients(segment.section))
+    return {
+        "length": array_of(segment.length for segment in segments),
+        "modulus": array_of(material.modulus for material in materials),
+        "area": array_of(areas).reshape(-1, 3),
+        "expansion": array_of(material.expansion for material in materials),
+        "density": array_of(material.density for material in materials),
+    }
 
 
 def _bonded(segments: tuple[Segment, ...], by_name: Mapping[str, Material]) -> Bonded | None:
@@ -90,20 +107,16 @@ def _bonded(segments: tuple[Segment, ...], by_name: Mapping[str, Material]) -> B
     sections = [part.section for part in every]
     return bonded_parts(
         segment=np.array([*range(len(segments)), *(index for index, _ in added)], dtype=np.intp),
-        modulus=_array(material.modulus for material in materials),
-        area=_array(value for section in sections for value in area_coefficients(section)).reshape(-1, 3),
-        expansion=_array(material.expansion for material in materials),
-        density=_array(material.density for material in materials),
+        modulus=array_of(material.modulus for material in materials),
+        area=array_of(value for section in sections for value in area_coefficients(section)).reshape(-1, 3),
+        expansion=array_of(material.expansion for material in materials),
+        density=array_of(material.density for material in materials),
     )
 
 
-def _array(values: Iterable[float]) -> FloatArray:
+def array_of(values: Iterable[float]) -> FloatArray:
+    """The numbers as a read-only array."""
     return frozen(np.fromiter(values, dtype=np.float64))
-
-
-def _areas(segments: tuple[Segment, ...]) -> Iterable[float]:
-    for segment in segments:
-        yield from area_coefficients(segment.section)
 
 
 def _beddings(segments: tuple[Segment, ...]) -> Iterable[float]:
@@ -134,9 +147,9 @@ def _stops(found: list[tuple[int, StopSupport]]) -> Stops:
     joint.setflags(write=False)
     return Stops(
         joint=joint,
-        side=_array(1.0 if stop.side == "plus" else -1.0 for _, stop in found),
-        clearance=_array(stop.clearance for _, stop in found),
-        stiffness=_array(_stiffness_of(stop) for _, stop in found),
+        side=array_of(1.0 if stop.side == "plus" else -1.0 for _, stop in found),
+        clearance=array_of(stop.clearance for _, stop in found),
+        stiffness=array_of(_stiffness_of(stop) for _, stop in found),
     )
 
 
@@ -147,17 +160,26 @@ def _stiffness_of(stop: StopSupport) -> float:
 def pack_loads(project: Project, states: tuple[State, ...]) -> Loads:
     """The loads of the states, factored and summed."""
     factors = _factors(project, states)
-    on_segments = _combined(factors, _segment_values(project))
     on_joints = _combined(factors, _joint_values(project))
-    gravity = _array(case.gravity for case in project.load_cases)
+    gravity = array_of(case.gravity for case in project.load_cases)
     return Loads(
-        distributed=_part(on_segments[..., 0:2]),
+        **loads_on(project, states, project.segments),
         gravity=_part(factors @ gravity),
-        temperature=_part(on_segments[..., 2:4]),
-        lack_of_fit=_part(on_segments[..., 4]),
         joint_force=_part(on_joints[..., 0]),
         movement=_part(on_joints[..., 1]),
     )
+
+
+def loads_on(
+    project: Project, states: tuple[State, ...], segments: Sequence[AnySegment]
+) -> dict[str, FloatArray]:
+    """The loads of the states on some segments, by the name of the loads' array."""
+    values = _combined(_factors(project, states), _segment_values(project, segments))
+    return {
+        "distributed": _part(values[..., 0:2]),
+        "temperature": _part(values[..., 2:4]),
+        "lack_of_fit": _part(values[..., 4]),
+    }
 
 
 def _part(array: FloatArray) -> FloatArray:
@@ -176,16 +198,16 @@ def _combined(factors: FloatArray, values: FloatArray) -> FloatArray:
     return flat.reshape(len(factors), *values.shape[1:])
 
 
-def _segment_values(project: Project) -> FloatArray:
+def _segment_values(project: Project, segments: Sequence[AnySegment]) -> FloatArray:
     """By case and segment: load and temperature at start and end, lack of fit; (c, n, 5)."""
-    index_of = {segment.mark: index for index, segment in enumerate(project.segments)}
-    values = np.zeros((len(project.load_cases), len(project.segments), 5))
+    index_of = {segment.mark: index for index, segment in enumerate(segments)}
+    values = np.zeros((len(project.load_cases), len(segments), 5))
     for case, row in zip(project.load_cases, values, strict=True):
         loads = case.segment_loads
-        if project.companions:  # theirs are no loads of the member
+        if project.companions:  # member and companions have their loads in the same list
             loads = tuple(load for load in loads if load.segment in index_of)
         places = np.fromiter((index_of[load.segment] for load in loads), dtype=np.intp, count=len(loads))
-        numbers = _array(_numbers(loads)).reshape(-1, 5)
+        numbers = array_of(_numbers(loads)).reshape(-1, 5)
         if len(np.unique(places)) == len(places):  # which is most often so, and much faster
             row[places] += numbers
         else:

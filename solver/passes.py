@@ -72,7 +72,8 @@ class Pass:
         self.ends = self.patterns.ends
         if cancelled():
             raise Cancelled
-        mean, stretch = self.ends.mean(), self.ends.stretch()
+        net = self.patterns.net
+        mean, stretch = self.ends.mean(net), self.ends.stretch(net)
         self.fields = gathered(parts, mean, stretch, mesh)
         del parts  # a long member's are as large as its results: their memory serves the rest of the pass
         self.leftover = self.patterns.each(self._leftover)
@@ -90,7 +91,7 @@ class Pass:
             roundings = joint_roundings(at, group.condensed, group.ends, *rows)
             return joint_share(group.system, self.leftover[group.states], roundings)
 
-        rounding = displacement_share(self.condensed, self.ends)
+        rounding = displacement_share(self.condensed, self.ends, self.patterns.net)
         rounding += field_share(self.fields.force_norm + self.fields.strain_norm)
         return Bound(
             discretisation=np.sqrt(self.fields.error.sum(axis=1)),
@@ -115,7 +116,7 @@ class Pass:
 
     def solution(self) -> Solution:
         """What the caller gets."""
-        fields, mesh, joints = self.fields, self.mesh, self.mesh.joints()
+        fields, mesh, joints = self.fields, self.mesh, self.patterns.net.joints
         u = self.ends.high + self.ends.low
         reaction = self.patterns.each(self._reactions)[:, joints]
         push, gap = self._contacts(u)
@@ -148,7 +149,7 @@ class Pass:
             "strain_energy": strain,
             "potential": strain - fields.work - work,
             "error_bound": self.bound.relative(),
-            "force_bound": self._force_bound(joints),
+            "force_bound": self._force_bound(),
         }
         mesh.segment.setflags(write=False)
         return Solution(segment=mesh.segment, **{name: frozen(array) for name, array in arrays.items()})
@@ -156,7 +157,7 @@ class Pass:
     def _reactions(self, group: Group) -> FloatArray:
         at = group.held
         reaction = np.full(at.force.shape, np.nan)
-        reaction[:, self.patterns.contacts.node] = 0.0
+        reaction[:, self.patterns.net.joints[self.chain.stops.joint]] = 0.0
         reaction[:, at.sprung] = spring_force(at, group.ends)
         reaction[:, at.fixed] = taken(at, *self._end_forces(group))[:, at.fixed]
         return reaction
@@ -169,7 +170,7 @@ class Pass:
         push = found.contact_forces(fields.start_force, fields.end_force)
         largest = np.maximum(self.largest_force(), push.max(axis=1))
         push = np.where(push > CLOSED * largest[:, None], push, 0.0)
-        gap = np.maximum(found.contacts.gap(u[:, found.contacts.node]), 0.0)
+        gap = np.maximum(found.contacts.gap(found.contacts.relative(u)), 0.0)
         return push, np.where(push > 0.0, 0.0, gap)
 
     def _spring_energy(self, u: FloatArray, push: FloatArray) -> FloatArray:
@@ -177,10 +178,11 @@ class Pass:
         sprung = np.flatnonzero(self.chain.spring)
         shortening = u[:, sprung] - self.loads.movement[:, sprung]
         in_springs = (shortening * shortening) @ self.chain.spring[sprung] / 2
-        return np.asarray(in_springs + (push * push) @ (1.0 / self.chain.stops.stiffness) / 2)
+        return np.asarray(in_springs + (push * push) @ (1.0 / self.patterns.contacts.stiffness) / 2)
 
-    def _force_bound(self, joints: IntArray) -> FloatArray:
-        flexibility = np.add.reduceat(self.fields.flexibility, joints[:-1])
+    def _force_bound(self) -> FloatArray:
+        first = self.mesh.joints(self.chain.length.size)[:-1]
+        flexibility = np.add.reduceat(self.fields.flexibility, first)
         return self.bound.of_force(flexibility, self.chain.bedding.mean(axis=1) * self.chain.length)
 
 

@@ -21,6 +21,7 @@ from solver.condense import Condensed
 from solver.contacts import Contacts, contacts_of, held_by
 from solver.joints import Displacements, FactorError, Held, JointSystem, held, taken
 from solver.mesh import Mesh
+from solver.net import Net, net_of
 
 REPAIRS = 20
 _ROUNDINGS = 8 * EPSILON  # of a gap's terms
@@ -28,10 +29,10 @@ ALL = slice(None)
 
 
 class Unsettled(Exception):  # noqa: N818 - a finding: rounding decides about a contact
-    """No choice of closed contacts is free of contradiction in `state`, at the end `at` of an element."""
+    """No choice of closed contacts is free of contradiction in `state`, at the node `at`."""
 
     def __init__(self, state: int, at: int, force: float) -> None:
-        super().__init__(f"state {state}, end {at}")
+        super().__init__(f"state {state}, node {at}")
         self.state = state
         self.at = at
         self.force = force  # N
@@ -50,20 +51,30 @@ class Group:
     closed: BoolArray  # (s,)
 
     def displacements_at(self, node: IntArray) -> FloatArray:
-        """(m, s) of some ends of elements."""
+        """(m, s) of some nodes."""
         return np.asarray(self.ends.high[:, node] + self.ends.low[:, node])
 
     def contact_forces(self, start_force: FloatArray, end_force: FloatArray) -> FloatArray:
         """(m, s) what the contacts push with, from the axial forces (m, e) of this group's states."""
         contacts = self.contacts
-        u = self.displacements_at(contacts.node)
         whole = taken(self.held, start_force, end_force)[:, contacts.node]
-        springs = contacts.spring * (contacts.movement - u)
-        return contacts.forces(self.closed, contacts.gap(u), whole - springs)
+        springs = contacts.spring * (contacts.movement - self.displacements_at(contacts.node))
+        return contacts.forces(self.closed, self.gaps(), whole - springs)
+
+    def gaps(self) -> FloatArray:
+        """(m, s) the clearances that remain, below 0 where a contact is pressed in."""
+        moved = self.contacts.relative(self.ends.high) + self.contacts.relative(self.ends.low)
+        return self.contacts.gap(moved)
 
     def force_roundings(self) -> FloatArray:
-        """(m, e + 1) N, how far rounding can have moved the sum of forces at the ends of the elements."""
-        return force_roundings(self.held, self.condensed, self.ends, self.ends.mean(), self.ends.stretch())
+        """(m, nodes) N, how far rounding can have moved the sum of forces at the nodes."""
+        return force_roundings(
+            self.held,
+            self.condensed,
+            self.ends,
+            self.ends.mean(self.held.net),
+            self.ends.stretch(self.held.net),
+        )
 
 
 @dataclass(frozen=True, slots=True)
@@ -74,6 +85,7 @@ class Patterns:
     ends: Displacements
     contacts: Contacts
     closed: BoolArray
+    net: Net
 
     def each(self, work: Callable[[Group], FloatArray]) -> FloatArray:
         """Rows of all states (m, …) from the rows of each group."""
@@ -94,11 +106,12 @@ class Patterns:
 
 def patterns(chain: Chain, loads: Loads, mesh: Mesh, condensed: Condensed) -> Patterns:
     """The joints solved. Raises Loose where nothing holds, Unsettled, or FactorError."""
-    base, contacts = held(chain, loads, mesh), contacts_of(chain, loads, mesh)
+    net = net_of(chain, mesh)
+    base, contacts = held(chain, loads, net), contacts_of(chain, loads, net)
     closed = np.zeros(contacts.movement.shape, dtype=np.bool_)
     if not contacts.node.size:
         group = _group(condensed, base, contacts, closed, ALL)
-        return Patterns((group,), group.ends, contacts, closed)
+        return Patterns((group,), group.ends, contacts, closed, net)
     base = _with_facing(base, contacts)
     closed = closed_contacts(condensed, base, contacts)
     return _settled(condensed, base, contacts, closed)
@@ -135,7 +148,7 @@ def _solved(condensed: Condensed, base: Held, contacts: Contacts, closed: BoolAr
     whole = Displacements(np.empty(shape), np.empty(shape))
     for group in groups:
         whole.high[group.states], whole.low[group.states] = group.ends.high, group.ends.low
-    return Patterns(groups, whole, contacts, closed)
+    return Patterns(groups, whole, contacts, closed, base.net)
 
 
 def _alike(closed: BoolArray) -> Iterator[Where]:
@@ -166,9 +179,9 @@ def _contradictions(found: Patterns) -> BoolArray:
     wrong = np.zeros(found.closed.shape, dtype=np.bool_)
     for group in found.groups:
         contacts = group.contacts
-        u = group.displacements_at(contacts.node)
-        gap = contacts.gap(u)
-        roundings = _ROUNDINGS * (np.abs(u) + np.abs(contacts.movement) + contacts.clearance)
+        gap, u = group.gaps(), np.abs(group.displacements_at(contacts.node))
+        terms = u + np.abs(contacts.movement) + contacts.clearance
+        roundings = _ROUNDINGS * (terms + np.where(contacts.other < 0, 0.0, u))
         force = group.contact_forces(*group.system.end_forces(group.ends))
         pulls = force < -group.force_roundings()[:, contacts.node]
         lets_go = (contacts.rigid & pulls) | (gap > roundings)

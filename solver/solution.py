@@ -22,7 +22,9 @@ class Solution:
     force: FloatArray  # (m, e, q + 1) equilibrated axial force y, N
     joint_displacement: FloatArray  # (m, n + 1) m
     reaction: FloatArray  # (m, n + 1) N on the member along +x, NaN where the joint has no support
-    push: FloatArray  # (m, s) N, what each of the chain's stops pushes with; 0 where it is open
+    push: (
+        FloatArray  # (m, s) N, what each of the chain's stops pushes with, then each companion that can part
+    )
     gap: FloatArray  # (m, s) m, the clearance that each of them has left; 0 where it is closed
     loads: FloatArray  # (m,) N, sum of all applied loads along +x, self-weight included
     bedding: FloatArray  # (m,) N, what the bedding exerts on the member along +x, −∫ k u dx

@@ -97,7 +97,7 @@ def _results(
 ) -> Results:
     count = len(chain.length)
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
-    finder = ExtremeFinder(chain, solution, loads, position)
+    finder = ExtremeFinder(chain, solution, loads, position[:-1], position[1:])
     stress, force = finder.stress(), finder.force()
     ranges = (stress.largest, stress.smallest), (force.largest, force.smallest)
     zero = frozen(no_stress(*ranges, solution.force_bound, constrained(chain.bonded, loads.temperature)))
