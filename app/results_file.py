@@ -70,6 +70,7 @@ def _state(results: Results, state: int) -> Values:
         "name": results.states[state].name,
         "joints": _joints(results, state),
         "segments": _segments(results, state),
+        **_companions(results, state),
         "equilibrium": {
             "loads": _plain(solution.loads[state]),
             "reactions": _plain(math.fsum(r for r in solution.reaction[state] if not math.isnan(r))),
@@ -117,6 +118,28 @@ def _segments(results: Results, state: int) -> list[Values]:
     marks: Values = {"mark": [segment.mark for segment in results.project.segments]}
     columns = {name: _column(getattr(results.segments, name)[state]) for name in _SEGMENT_FIELDS}
     return _rows(marks | columns)
+
+
+def _companions(results: Results, state: int) -> Values:
+    """What companions do, where there are any; whether one has parted only where it can."""
+    found = results.companions
+    if found is None:
+        return {}
+    rows = []
+    for index, companion in enumerate(results.project.companions):
+        first, last = found.companions.first[index : index + 2].tolist()
+        row: Values = {
+            "mark": companion.mark,
+            "force_from": _plain(float(found.force_from[state, index])),
+            "force_to": _plain(float(found.force_to[state, index])),
+        }
+        if companion.action != "both":
+            row["separated"] = bool(found.separated[state, index])
+            row["gap"] = _plain(float(found.gap[state, index]))
+        marks: Values = {"mark": [segment.mark for segment in companion.segments]}
+        columns = {n: _column(getattr(found.segments, n)[state, first:last]) for n in _SEGMENT_FIELDS}
+        rows.append(row | {"segments": _rows(marks | columns)})
+    return {"companions": rows}
 
 
 def _rows(columns: Values) -> list[Values]:

@@ -17,14 +17,14 @@ from msgspec import UnsetType
 from solver.arrays import BoolArray, FloatArray, frozen
 from solver.checks import NO_STRESS
 from solver.extremes import SAME, Extremes
-from solver.model import BondedPart, Project, Segment
+from solver.model import BondedPart, CompanionSegment, Project, Segment
 from solver.results import Allowables, State
 
 Range: TypeAlias = tuple[FloatArray, FloatArray]  # largest and smallest by segment, (m, n) each
 
 
 def allowables(
-    project: Project, states: tuple[State, ...], parts: Sequence[Segment | BondedPart]
+    project: Project, states: tuple[State, ...], parts: Sequence[Segment | BondedPart | CompanionSegment]
 ) -> Allowables:
     """The allowable stresses of parts (p,) in every state, (m, p) each."""
     by_name = {material.name: material for material in project.materials}

@@ -42,6 +42,7 @@ class Checker:
     peaks: PeakChecker
     fatigue: FatigueChecker
     parts: PartResults | None = None
+    beside: StressChecks | None = None  # of the companions' segments, one companion after the other
 
     def checks(self) -> tuple[Check, ...]:
         """All checks of the checked states, in order."""
@@ -69,6 +70,11 @@ class Checker:
         else:
             subjects, order = _along_the_chain(self.project, self.parts)
             tension, compression = ([side[part] for part in order] for side in (tension, compression))
+        if self.beside is not None:
+            every = (segment for companion in self.project.companions for segment in companion.segments)
+            subjects = [*subjects, *(_Subject(segment.mark) for segment in every)]
+            tension += _compared(self.beside.tension, index)
+            compression += _compared(self.beside.compression, index)
         for subject, pulled, pushed in zip(subjects, tension, compression, strict=True):
             if pulled.present:
                 yield pulled.check("tension", name, subject)

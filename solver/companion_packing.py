@@ -85,8 +85,3 @@ def _with_whole_segments(bonded: Bonded, own: dict[str, FloatArray]) -> Bonded:
         for field in fields(bonded)
     }
     return Bonded(**parts)
-
-
-def loads_of_member(loads: Loads, segments: int) -> Loads:
-    """The loads of the first n segments and of the joints."""
-    return replace(loads, **{name: getattr(loads, name)[:, :segments] for name in BY_SEGMENT})

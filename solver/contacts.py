@@ -66,8 +66,10 @@ class Contacts:
         `reaction` is what fixed and one-sided supports together exert at the contact's node, along +x.
         """
         sprung = np.where(closed, np.where(self.rigid, 0.0, self.stiffness) * -gap, 0.0)
-        beside = (self.side * sprung) @ (self.node[:, None] == self.node)
-        left = -self.side * (reaction + beside)
+        others = reaction
+        if sprung.any():  # at the same node, which only stops share
+            others = reaction + (self.side * sprung) @ (self.node[:, None] == self.node)
+        left = -self.side * others
         force = np.where(closed & self.rigid, left, sprung)
         return np.where(self.facing, np.maximum(left, 0.0), force)
 

@@ -109,7 +109,7 @@ class FatigueChecker:
         amplitude, mean = (0.5 / line.amplitude, 0.5 / line.ultimate) if line is not None else (0.5, 0.0)
         half = np.array([amplitude, -amplitude])
         sums = np.stack([half, half + mean, mean - half])
-        finder = ExtremeFinder(self.chain, *self._summed(swing, sums), self.position)
+        finder = ExtremeFinder(self.chain, *self._summed(swing, sums), self.position[:-1], self.position[1:])
         stress = finder.stress()
         sizes = np.concatenate([stress.largest, -stress.smallest[:1]])
         places = np.concatenate([stress.largest_at, stress.smallest_at[:1]])

@@ -49,7 +49,6 @@ Rule: TypeAlias = Literal[
     "not_held",
     "not_pressed",
     "movement_without_support",  # facts: joint, case
-    "companions_not_yet",  # facts: companion
     "companion_length",  # facts: companion, length, span, difference, kind (too_long, too_short)
 ]
 

@@ -10,8 +10,8 @@ from typing import Literal, TypeAlias
 
 import numpy as np
 
-from solver.arrays import FloatArray, IntArray
-from solver.chain import Chain, Loads
+from solver.arrays import BoolArray, FloatArray, IntArray
+from solver.chain import Chain, Companions, Loads
 from solver.checks import Check, Verdict
 from solver.model import Project
 from solver.solution import Solution
@@ -93,11 +93,38 @@ class PartResults:
 
 
 @dataclass(frozen=True, slots=True)
+class CompanionResults:
+    """All companions, c in all, in the states of the results; their k segments stand one after the other.
+
+    Companion i has the segments `companions.first[i]` to before `companions.first[i + 1]`. One-sided ones
+    (`companions.parting` is not 0) are `separated` where they have parted from their far joint.
+    """
+
+    chain: Chain  # of the k segments, as loads and solution
+    loads: Loads
+    solution: Solution
+    companions: Companions
+    begins: FloatArray  # (k,) x along the member, m
+    ends: FloatArray  # (k,)
+    force_from: FloatArray  # (m, c) N, axial force at the joint where it is tied
+    force_to: FloatArray  # (m, c) N, axial force at the other joint, 0 where separated
+    separated: BoolArray  # (m, c)
+    gap: FloatArray  # (m, c) m, how far it has parted; 0 where it has not
+    clamp: FloatArray  # (m, c) N, what a one-sided one pushes or pulls its far joint with; else 0
+    least_clamp: FloatArray  # (c,) N, the least of it over the checked states; NaN where tied at both ends
+    least_clamp_state: IntArray  # (c,) the state that has it, the first of equals
+    segments: SegmentResults  # (m, k)
+    allowables: Allowables  # (m, k)
+    segment_mass: FloatArray  # (k,) kg
+
+
+@dataclass(frozen=True, slots=True)
 class Results:
     """The results of one project: states first the checked ones, in the project's order, then the others.
 
     Stress and allowables of a segment are those of its own part, its utilisation is the largest of all parts;
-    `parts` has each of them and is None where nothing is bonded.
+    `parts` has each of them and is None where nothing is bonded. `companions` is None where there are none:
+    what goes by segment is the member's, while energies, balance and error bound are those of the whole.
     """
 
     project: Project
@@ -114,14 +141,16 @@ class Results:
     verdict: Verdict
     governing: Check | None
     segment_mass: FloatArray  # (n,) kg
-    mass: float  # kg
+    mass: float  # kg, companions included
+    companions: CompanionResults | None = None
 
     @property
     def unloaded(self) -> tuple[State, ...]:
         """The checked states in which nothing loads the member; their checks pass without saying anything."""
-        every = fields(self.loads)
+        every = [self.loads] if self.companions is None else [self.loads, self.companions.loads]
         loaded = [
-            any(getattr(self.loads, load.name)[i].any() for load in every) for i in range(len(self.states))
+            any(getattr(loads, load.name)[i].any() for loads in every for load in fields(loads))
+            for i in range(len(self.states))
         ]
         return tuple(
             state for state, some in zip(self.states, loaded, strict=True) if state.checked and not some

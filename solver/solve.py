@@ -8,12 +8,14 @@ from dataclasses import fields
 
 import numpy as np
 
-from solver.allowables import allowables, check_stresses, no_stress
+from solver.allowables import Range, allowables, check_stresses, no_stress
 from solver.arrays import BoolArray, FloatArray, frozen
 from solver.axial import solve_axial
 from solver.bonded import constrained
 from solver.chain import Chain, Loads
 from solver.checking import Checker, governing_of, verdict_of
+from solver.companion_packing import with_companions
+from solver.companion_results import Beside, beside, companion_results, part_of_loads, part_of_solution
 from solver.errors import Cancelled, NotSolvable, OutOfRange, never
 from solver.extremes import ExtremeFinder, Extremes
 from solver.fatigue import FatigueChecker
@@ -28,7 +30,8 @@ from solver.part_results import (
     utilisation_of_segments,
 )
 from solver.peaks import PeakChecker
-from solver.results import Results, SegmentResults, State
+from solver.results import Results, State
+from solver.segment_results import segment_results
 from solver.shoulders import notches
 from solver.solution import Solution
 from solver.validation import unsolvable
@@ -51,17 +54,18 @@ def solve(
     _refuse_unsolvable(project)
     _ask(cancelled)
     chain, loads, states = pack(project, cases=cases)
-    _refuse_out_of_range(chain, states)
+    whole, loads = with_companions(project, chain, loads, states)
+    _refuse_out_of_range(whole, states)
     try:
-        solution = _solved(chain, loads, states, tolerance, cancelled)
+        solution = _solved(whole, loads, states, tolerance, cancelled)
     except NotSolvable as loose:
         if any(states[index].checked for index in loose.states):
             raise
         states, loads = _without(states, loads, loose.states)
-        solution = _solved(chain, loads, states, tolerance, cancelled)
+        solution = _solved(whole, loads, states, tolerance, cancelled)
     _ask(cancelled)
     with np.errstate(all="ignore"):  # what overflows is found by its result
-        results = _results(project, chain, loads, states, solution, cancelled)
+        results = _results(project, (chain, whole), loads, states, solution, cancelled)
     _refuse_overflow(results)
     return results
 
@@ -89,18 +93,22 @@ def _ask(cancelled: Callable[[], bool]) -> None:
 
 def _results(
     project: Project,
-    chain: Chain,
+    chains: tuple[Chain, Chain],
     loads: Loads,
     states: tuple[State, ...],
     solution: Solution,
     cancelled: Callable[[], bool],
 ) -> Results:
-    count = len(chain.length)
+    """`chains` are the member's and the one with companions behind it, which loads and solution belong to."""
+    chain, count = chains[0], len(chains[0].length)
     position = frozen(np.concatenate([[0.0], np.cumsum(chain.length)]))
+    row = beside(project, chains[1], loads, solution, position)
+    if row is not None:
+        loads, solution = part_of_loads(loads, slice(count)), part_of_solution(solution, 0, count)
     finder = ExtremeFinder(chain, solution, loads, position[:-1], position[1:])
     stress, force = finder.stress(), finder.force()
-    ranges = (stress.largest, stress.smallest), (force.largest, force.smallest)
-    zero = frozen(no_stress(*ranges, solution.force_bound, constrained(chain.bonded, loads.temperature)))
+    held = constrained(chain.bonded, loads.temperature)
+    zero = frozen(no_stress(*_ranges(stress, force, solution.force_bound, row), held))
     limits = allowables(project, states, every_part(project))
     stress_checks = check_stresses(stress, zero, limits)
     _ask(cancelled)
@@ -108,7 +116,9 @@ def _results(
     shoulders = notches(project)
     peaks = PeakChecker(project, position, stress, shoulders)
     fatigue = FatigueChecker(project, chain, loads, states, solution, position, shoulders)
-    checks = Checker(project, states, solution, position, stress_checks, peaks, fatigue, parts).checks()
+    companions, others = (None, None) if row is None else companion_results(project, states, row, zero)
+    checker = Checker(project, states, solution, position, stress_checks, peaks, fatigue, parts, others)
+    checks = checker.checks()
     segment_mass = frozen(_segment_mass(chain))
     return Results(
         project=project,
@@ -117,7 +127,7 @@ def _results(
         states=states,
         solution=solution,
         position=position,
-        segments=_segment_results(
+        segments=segment_results(
             own_stress(stress, count),
             force,
             finder.displacement(),
@@ -131,8 +141,23 @@ def _results(
         verdict=verdict_of(checks),
         governing=governing_of(checks),
         segment_mass=segment_mass,
-        mass=float(np.sum(segment_mass)),
+        mass=float(np.sum(segment_mass) + (0.0 if companions is None else np.sum(companions.segment_mass))),
+        companions=companions,
     )
+
+
+def _ranges(
+    stress: Extremes, force: Extremes, bound: FloatArray, row: Beside | None
+) -> tuple[Range, Range, FloatArray]:
+    """Largest and smallest stress and force with the bound of the force, over the companions as well."""
+    own = (stress.largest, stress.smallest), (force.largest, force.smallest)
+    if row is None:
+        return *own, bound
+    of_stress, of_force = (
+        (np.concatenate([one[0], other[0]], axis=1), np.concatenate([one[1], other[1]], axis=1))
+        for one, other in zip(own, row.ranges(), strict=True)
+    )
+    return of_stress, of_force, np.concatenate([bound, row.solution.force_bound], axis=1)
 
 
 def _refuse_unsolvable(project: Project) -> None:
@@ -164,6 +189,10 @@ def _refuse_overflow(results: Results) -> None:
     segments, limits = results.segments, results.allowables
     stress = [segments.stress_max, segments.stress_min, segments.stress_max_at]
     _require(np.all(np.isfinite(stress), axis=0), "stress", results)
+    if results.companions is not None:
+        other = results.companions.segments
+        _require(np.all(np.isfinite([other.stress_max, other.stress_min]), axis=0), "stress", results)
+        _require(~np.isinf(other.utilisation), "utilisation", results)
     if results.parts is not None:
         of_parts = [results.parts.stress_max, results.parts.stress_min]
         _require(np.all(np.isfinite(of_parts), axis=0), "stress", results)
@@ -183,34 +212,6 @@ def _require(sound: BoolArray, what: str, results: Results) -> None:
     states = np.all(sound, axis=1)
     if not np.all(states):
         raise OutOfRange(results.states[int(np.argmin(states))].name, what)
-
-
-def _segment_results(
-    stress: Extremes,
-    force: Extremes,
-    displacement: Extremes,
-    utilisation: tuple[FloatArray, FloatArray],
-    force_bound: FloatArray,
-) -> SegmentResults:
-    return SegmentResults(
-        force_start=force.start,
-        force_end=force.end,
-        force_max=force.largest,
-        force_min=force.smallest,
-        stress_max=stress.largest,
-        stress_max_at=stress.largest_at,
-        stress_min=stress.smallest,
-        stress_min_at=stress.smallest_at,
-        utilisation=utilisation[0],
-        utilisation_at=utilisation[1],
-        force_bound=force_bound,
-        force_max_at=force.largest_at,
-        force_min_at=force.smallest_at,
-        displacement_max=displacement.largest,
-        displacement_max_at=displacement.largest_at,
-        displacement_min=displacement.smallest,
-        displacement_min_at=displacement.smallest_at,
-    )
 
 
 def _segment_mass(chain: Chain) -> FloatArray:

@@ -38,7 +38,7 @@ def faults(project: Project) -> tuple[Fault, ...]:
 
 def unsolvable(project: Project) -> tuple[Fault, ...]:
     """What keeps a well-formed project from being solved: not held, a movement without support, lengths."""
-    rules = (_hold_faults, _movement_faults, length_faults, _companion_faults)
+    rules = (_hold_faults, _movement_faults, length_faults)
     return tuple(chain.from_iterable(rule(project) for rule in rules))
 
 
@@ -223,12 +223,6 @@ def _hold_faults(project: Project) -> Iterator[Fault]:
     bedded = any(s.bedding > 0 or end_of(s.bedding, s.bedding_end) > 0 for s in project.segments)
     if not (supported or bedded):
         yield Fault("joints", "not_held")
-
-
-def _companion_faults(project: Project) -> Iterator[Fault]:
-    for index, companion in enumerate(project.companions):
-        place = place_text(("companions", index))
-        yield Fault(place, "companions_not_yet", {"companion": companion.mark})
 
 
 def _movement_faults(project: Project) -> Iterator[Fault]:

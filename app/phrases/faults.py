@@ -108,10 +108,6 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
         later("joint {joint} is moved by {case} but has no support to move"),
         later("give it a support or take the movement out"),
     ),
-    "companions_not_yet": (
-        later("companion {companion} is kept, but this version does not solve companions yet"),
-        later("nothing is computed while it is there"),
-    ),
     "companion_length": (
         later("companion {companion} is {length} long and spans {span}; it is {difference} {kind}"),
         later("make the lengths add up; a mismatch that is meant is a lack of fit"),

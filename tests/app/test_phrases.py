@@ -72,7 +72,6 @@ FACTS: dict[str, dict[str, object]] = {
     "parts_differ": {"kind": "material"},
     "joint_carries": {"kind": "support", "joint": "2"},
     "companion_full": {"companion": "S"},
-    "companions_not_yet": {"companion": "S"},
     "repeats": {"count": 0, "most": 200},
     "several_records": {"count": 2},
     "not_held": {},

@@ -145,6 +145,25 @@ def test_a_zero_has_no_sign() -> None:
     assert "-0.0" not in text
 
 
+def test_companions_have_a_list_of_their_own():
+    document = example()
+    tube = {"mark": "T", "length": 0.85, "material": "Steel", "section": {"shape": "area", "area": 1e-3}}
+    tie = {"mark": "Tie", "from": "0", "to": "2", "acts": "tension", "segments": [tube]}
+    sleeve = {"mark": "Sleeve", "from": "0", "to": "2", "segments": [tube | {"mark": "U"}]}
+    document["joints"][1] = {"mark": "1"}
+    document["companions"] = [tie, sleeve]
+    results, file = solved(parse(encoded(document)))
+    combination = file["combinations"][0]
+    one, other = combination["companions"]
+    assert (one["mark"], other["mark"]) == ("Tie", "Sleeve")
+    assert (one["separated"], one["gap"] == 0.0) in ((False, True), (True, False))
+    assert "separated" not in other
+    assert other["force_from"] == pytest.approx(results.companions.force_from[0, 1])
+    assert [segment["mark"] for segment in other["segments"]] == ["U"]
+    assert set(other["segments"][0]) == set(combination["segments"][0])
+    assert {"T", "U"} & {check.get("segment") for check in file["checks"]}
+
+
 def test_contacts_stand_at_their_joint_as_one_or_as_a_list():
     document = example()
     document["joints"][1] = {"mark": "1", "support": {"kind": "stop", "side": "plus", "clearance": 0.5}}

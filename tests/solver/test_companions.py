@@ -11,12 +11,13 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 
-from solver.axial import never, solve_axial
+from solver.axial import solve_axial
 from solver.chain import Companions
-from solver.errors import NotSolvable
+from solver.errors import NotSolvable, never
 from solver.passes import Pass
 from solver.refine import first_mesh
 from tests.solver.chains import chain_of, loads_of, random_loads, random_prismatic, random_tapered
+from tests.solver.test_contacts import stops_of
 
 NAMES = ("First", "Second", "Third")
 
@@ -123,7 +124,9 @@ class Dense:
                 continue
             u, push = self.with_closed(closed)
             gap = -self.chain.companions.parting * (u[self.far] - u[self.chain.companions.end])
-            worst = max(-push.min(initial=0) / np.abs(self.right).max(), -gap.min(initial=0) / np.abs(u).max())
+            worst = max(
+                -push.min(initial=0) / np.abs(self.right).max(), -gap.min(initial=0) / np.abs(u).max()
+            )
             if best is None or worst < best[0]:
                 best = (worst, u[: self.chain.fixed.size], push[self.parting])
         return best
@@ -197,8 +200,6 @@ def test_a_companion_over_a_fixed_joint_and_between_two():
 
 
 def test_a_member_between_stops_floats_unless_the_clamped_companion_makes_it_long():
-    from tests.solver.test_contacts import stops_of
-
     chain = chain_of(length=[1.0], rigidity_or_area=[1e-3], modulus=2e11)
     chain = replace(chain, stops=stops_of((0, -1, 0.0), (1, 1, 1e-4)))
     chain = beside(chain, (0, 1, 1, [1.0], [1e-3]))
@@ -218,11 +219,11 @@ def test_the_bound_covers_the_companions(seed):
     mesh = first_mesh(chain, 1e-3)
     coarse = Pass(chain, loads, replace(mesh, degree=np.where(mesh.closed, 3, 2)), never).solution()
     fine = solve_axial(chain, loads, NAMES[:1])
-    first = np.searchsorted(fine.segment, np.arange(chain.length.size))
-    ends = np.array([series[0] - series[1] + series[2:].sum() for series in np.zeros((1, 3))])
-    assert ends.size == 1
-    start = [np.polynomial.legendre.legval(-1, fine.force[0, e]) for e in first]
-    other = np.searchsorted(coarse.segment, np.arange(chain.length.size))
-    rough = [np.polynomial.legendre.legval(-1, coarse.force[0, e]) for e in other]
+    begun = [_first_forces(solution, chain.length.size) for solution in (coarse, fine)]
     allowed = coarse.force_bound[0] + fine.force_bound[0]
-    assert (np.abs(np.array(start) - rough) <= allowed * (1 + 1e-6)).all()
+    assert (np.abs(begun[0] - begun[1]) <= allowed * (1 + 1e-6)).all()
+
+
+def _first_forces(solution, segments):
+    first = np.searchsorted(solution.segment, np.arange(segments))
+    return np.polynomial.legendre.legval(-1.0, solution.force[0, first].T)

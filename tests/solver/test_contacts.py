@@ -11,6 +11,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 
+from solver import patterns
 from solver.axial import solve_axial
 from solver.chain import Stops
 from solver.errors import NotSolvable, never
@@ -266,6 +267,25 @@ def test_of_two_alike_one_takes_the_force():
     chain = replace(chain_of(**BAR), stops=stops_of((2, 1, 1e-3), (2, 1, 1e-3)))
     solution = solve_axial(chain, loads_of(chain, force=[(0, 1e4)]), NAMES[:1])
     assert_allclose(sorted(solution.push[0]), [0, 1e4], atol=1e-8)
+
+
+def test_changing_sides_finds_the_same_contacts_and_most_often_alone(monkeypatch):
+    asked, whole = [], patterns.closed_contacts
+    monkeypatch.setattr(patterns, "closed_contacts", lambda *given: asked.append(1) or whole(*given))
+    fallen_back = 0
+    for seed in range(24):
+        rng = np.random.default_rng(seed)
+        chain = random_tapered(rng)
+        chain = replace(chain, stops=random_stops(rng, chain.length.size + 1))
+        loads = random_loads(rng, chain, 3)
+        expected = solve_axial(chain, loads, NAMES)
+        asked.clear()
+        with monkeypatch.context() as at_once:
+            at_once.setattr(patterns, "FEW", 0)
+            found = solve_axial(chain, loads, NAMES)
+        fallen_back += len(asked)
+        assert_allclose(found.push, expected.push, rtol=1e-9, atol=1e-9 * np.abs(expected.force).max())
+    assert 1 <= fallen_back <= 3
 
 
 @pytest.mark.parametrize("seed", range(12))
