@@ -41,15 +41,28 @@ def shoulder_wishes(sketch: Sketch) -> list[Wish]:
 
 
 def _wish(sketch: Sketch, notch: Notch) -> Wish:
-    """Beside the line of the joint, under the smaller side."""
+    """Beside the line of the joint, under the thinner side."""
     text = shoulder_label(notch, sketch.member.project)
     wish = sketch.wish(text, sketch.along(notch.joint), Part("shoulder", notch.joint), slide=60.0)
     return replace(wish, along=wish.along + _outward(sketch, notch) * (0.5 * wish.extent + BESIDE))
 
 
+def _halves(sketch: Sketch, notch: Notch) -> tuple[float, float]:
+    """Half the drawn thickness before and behind the joint; at an end of the member twice the same."""
+    segments, joint = sketch.member.project.segments, notch.joint
+    before = None if joint == 0 else half_depth(sketch, segments[joint - 1], 1.0)
+    behind = None if joint == len(segments) else half_depth(sketch, segments[joint], 0.0)
+    return before or behind or 0.0, behind or before or 0.0
+
+
 def _outward(sketch: Sketch, notch: Notch) -> float:
-    """The sense along the pixels from the joint into the smaller side."""
-    return sketch.forward * (1.0 if notch.at_start else -1.0)
+    """The sense along the pixels from the joint to where the corner of the step is, the thinner side.
+
+    It need not be the side of smaller area, as where a tube meets a round bar.
+    """
+    before, behind = _halves(sketch, notch)
+    forward = notch.at_start if before == behind else behind < before
+    return sketch.forward * (1.0 if forward else -1.0)
 
 
 def shoulder_label(notch: Notch, project: Project) -> str:
@@ -63,10 +76,9 @@ def shoulder_label(notch: Notch, project: Project) -> str:
 
 
 def _draw(sketch: Sketch, notch: Notch) -> None:
-    """Dark corners between the smaller side and the face of the step, above and below the axis."""
+    """Dark corners between the thinner side and the face of the step, above and below the axis."""
     part, axis, along = Part("shoulder", notch.joint), sketch.rows.axis, sketch.along(notch.joint)
-    segment = sketch.member.project.segments[notch.segment]
-    edge = half_depth(sketch, segment, 0.0 if notch.at_start else 1.0)
+    edge = min(_halves(sketch, notch))
     size = _size(sketch, notch)
     out = _outward(sketch, notch)
     for side in (-1.0, 1.0):

@@ -47,8 +47,12 @@ REMEDIES_OF_SHOULDERS: Final[Mapping[Reason, tuple[str, str]]] = {
 
 def ratio_facts(ratio: float | None) -> dict[str, str]:
     """What the sentence on the range of the fit is filled with."""
-    found = "" if ratio is None else reading(ratio, 3)
-    return {"ratio": found, "least": reading(LEAST_RATIO, 3), "most": reading(MOST_RATIO, 3)}
+    found = "" if ratio is None else reading(ratio, 3, strip=True)
+    return {
+        "ratio": found,
+        "least": reading(LEAST_RATIO, 3, strip=True),
+        "most": reading(MOST_RATIO, 3, strip=True),
+    }
 
 
 def not_made_words(check: Check) -> str:

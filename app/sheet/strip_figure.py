@@ -8,6 +8,7 @@ import numpy as np
 
 from app.allowable_lines import allowable_lines, allowable_texts, over_least
 from app.drawing.words import not_to_scale
+from app.point_marks import point_marks
 from app.sheet.colours import QUIET
 from app.sheet.limit_labels import Limit
 from app.sheet.member_figure import Figure, draw_above, drawn_positions, member_alt
@@ -48,10 +49,11 @@ def state_figure(
             (field.stress,),
             over=(field.utilisation,) if checked else (),
             limits=_allowables(results, (state,), (field.stress,)) if checked else (),
+            marks=point_marks(results, (state,), "stress"),
         ),
     ]
     if checked:
-        strips.append(_utilisation(results, field.x, field.utilisation))
+        strips.append(_utilisation(results, (state,), field.x, field.utilisation))
     chosen = _chosen(strips, kinds)
     canvas = _canvas(results, chosen)
     if drawing:
@@ -75,8 +77,9 @@ def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawin
             stress,
             over=tuple(over_least(results, checked, field.segment, c, field.utilisation) for c in stress),
             limits=_allowables(results, checked, stress),
+            marks=point_marks(results, checked, "stress"),
         ),
-        _utilisation(results, x, field.utilisation),
+        _utilisation(results, checked, x, field.utilisation),
     ]
     chosen = _chosen(strips, kinds)
     canvas = _canvas(results, chosen)
@@ -91,7 +94,7 @@ def _chosen(strips: list[Strip], kinds: tuple[Kind, ...]) -> list[Strip]:
     return [made[kind] for kind in kinds if kind in made]
 
 
-def _utilisation(results: Results, x: FloatArray, values: FloatArray) -> Strip:
+def _utilisation(results: Results, states: tuple[int, ...], x: FloatArray, values: FloatArray) -> Strip:
     return Strip(
         tr("utilisation"),
         "utilisation",
@@ -100,6 +103,7 @@ def _utilisation(results: Results, x: FloatArray, values: FloatArray) -> Strip:
         (values,),
         over=(values,),
         limits=(Limit(0.0, float(results.position[-1]), 1.0),),
+        marks=point_marks(results, states, "utilisation"),
     )
 
 

@@ -13,8 +13,10 @@ from typing import Final
 
 import numpy as np
 
+from app.point_marks import PointMark
 from app.sheet import colours
 from app.sheet.limit_labels import Limit, Scale, draw_limit_labels
+from app.sheet.point_marks import draw_point_marks
 from app.sheet.ruler import Ruler
 from app.sheet.svg import Canvas, Ink, Point
 from app.strip_choice import Kind
@@ -41,6 +43,7 @@ class Strip:
     curves: tuple[FloatArray, ...]
     over: tuple[FloatArray, ...] = ()
     limits: tuple[Limit, ...] = field(default_factory=tuple)
+    marks: tuple[PointMark, ...] = field(default_factory=tuple)
 
 
 def draw_strip(
@@ -65,6 +68,7 @@ def draw_strip(
             canvas.path(_line(ruler, limit, scale.aside(limit.value)), _LIMIT)
     draw_limit_labels(canvas, ruler, scale, strip.limits, (strip.x, strip.curves))
     _draw_words(canvas, ruler, strip, scale, (least, most), units)
+    draw_point_marks(canvas, ruler, scale, strip.marks)
 
 
 def _scale(strip: Strip, start: float, depth: float) -> tuple[Scale, float, float]:
@@ -74,6 +78,7 @@ def _scale(strip: Strip, start: float, depth: float) -> tuple[Scale, float, floa
     largest = max(abs(least), abs(most))
     least, most = (0.0 if abs(value) <= 1e-12 * largest else value for value in (least, most))  # rounding
     near = [limit.value for limit in strip.limits if not limit.far]
+    near += [mark.value for mark in strip.marks]
     low, high = min(0.0, least, *near), max(0.0, most, *near)
     if high - low <= 1e-12 * largest or high == low:
         low, high = low - 1.0, high + 1.0

@@ -12,7 +12,7 @@ from PySide6.QtCore import QObject, Signal
 
 from app import edits
 from app.beside import beside
-from app.drawing.shapes import Part
+from app.drawing.shapes import LOADS, Part
 from app.edits import EditError
 from app.gui.document import Document
 from app.gui.sheet_view import SheetView
@@ -97,7 +97,7 @@ class TakingOff(QObject):
     def _why_not(self, thing: Part, project: Project, case: int | None) -> str:
         """Why the edited case has nothing to take off there."""
         if is_there(thing, project, case):
-            share = thing.kind == "bedding" or case_share(project, self._view.shown, case)
+            share = thing.kind not in LOADS or case_share(project, self._view.shown, case)
             return "" if share else _elsewhere(project, case)
         return why_not_here(thing, project, self._view.shown, case) or _elsewhere(project, case)
 

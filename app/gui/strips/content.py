@@ -34,6 +34,7 @@ from app.gui.strips.company import (
     of_state,
     singles_beside,
 )
+from app.point_marks import PointMark, point_marks
 from app.strip_choice import Kind, kind_symbols
 from app.units import format_value, symbol, utilisation_text
 from solver.arrays import FloatArray, IntArray
@@ -85,6 +86,7 @@ class StripContent:
     singles: tuple[Trace, ...] = ()
     around: tuple[Trace, ...] = ()
     legend: str = ""
+    marks: tuple[PointMark, ...] = ()  # peak stresses and fatigue, at single places
 
 
 def unit_of(kind: Kind, system: UnitSystemName) -> str:
@@ -181,7 +183,8 @@ class _Builder:
         least = self._nothing(kind)
         others = self._company.values(kind)
         drawn, beyond = self._limits(kind, columns + others)
-        low, high = _range(columns + others, drawn, least)
+        marks = point_marks(self._results, self._states, kind)
+        low, high = _range(columns + others, drawn, least, marks)
         return StripContent(
             kind=kind,
             title=title,
@@ -198,6 +201,7 @@ class _Builder:
             singles=self._company.singles(kind),
             around=self._company.around(kind),
             legend=self._company.legend,
+            marks=marks,
         )
 
     def _nothing(self, kind: Kind) -> float:
@@ -266,9 +270,11 @@ class _Builder:
         return tuple((float(position[i]), float(position[i + 1])) for i in sorted(found))
 
 
-def _range(columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float) -> tuple[float, float]:
+def _range(
+    columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float, marks: tuple[PointMark, ...]
+) -> tuple[float, float]:
     """Low and high of a strip: always with 0, with a little air, never less than `least`."""
-    ends = [0.0, *(limit.value for limit in limits)]
+    ends = [0.0, *(limit.value for limit in limits), *(mark.value for mark in marks)]
     for column in columns:
         if np.isfinite(column).any():
             ends += [float(np.nanmin(column)), float(np.nanmax(column))]

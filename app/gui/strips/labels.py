@@ -30,6 +30,7 @@ EDGE = 6.0  # between a strip and its labels
 BELOW = 0.8 * GAP  # how far a value beside a strip may reach below it
 OVER_EDGE = 0.4 * GAP  # how far the label of a limit may reach over the edge of the strip
 SHARES = (1.0, 0.0, 0.5, 0.75, 0.25)  # of the way along a limit, where its label is tried
+DIAMOND = 4.0  # half a mark of a single place, px
 HARDLY = 2  # pixels of a curve that a label may cover
 NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
@@ -53,6 +54,7 @@ def strip_labels(
     placer = _Placer(content, rect, ruler, axes, measure, scale)
     title = placer.title()
     standing = [*title, *placer.extremes(title), *placer.limits(), *placer.unchecked()]
+    standing += placer.marks(standing)
     standing += placer.legend(standing)
     return (*standing, *(sign for sign in placer.signs() if not _meets(sign.rect, standing)))
 
@@ -217,6 +219,33 @@ class _Placer:
             overlap = min(np.nanmax(reached), across[1]) - max(np.nanmin(reached), across[0])
             deepest = max(deepest, float(overlap))
         return deepest if deepest > HARDLY else 0.0
+
+    def marks(self, standing: list[Label]) -> list[Label]:
+        """The words beside the diamonds of single places, as many as have room, the worst first."""
+        found: list[Label] = []
+        shown = [mark for mark in self.content.marks if self.ruler.holds(mark.x)]
+        places = [self.axes.point(self.ruler.pixel(mark.x), self.scale.pixel(mark.value)) for mark in shown]
+        half = QPointF(DIAMOND, DIAMOND)
+        diamonds = [Label(QRectF(at - half, at + half), "") for at in places]
+        for mark, at in zip(shown, places, strict=True):
+            size = self.measure(mark.text, "small")
+            corners = (
+                QPointF(DIAMOND + 3.0, -0.5 * size.height()),
+                QPointF(-DIAMOND - 3.0 - size.width(), -0.5 * size.height()),
+                QPointF(-0.5 * size.width(), DIAMOND + 2.0),
+                QPointF(-0.5 * size.width(), -DIAMOND - 2.0 - size.height()),
+                QPointF(-size.width(), DIAMOND + 2.0),
+                QPointF(-size.width(), -DIAMOND - 2.0 - size.height()),
+            )
+            boxes = (QRectF(at + corner, size) for corner in corners)
+            taken = [*standing, *diamonds, *found]
+            box = next((b for b in boxes if self._is_inside(b) and not _meets(b, taken)), None)
+            if box is not None:
+                found.append(Label(box, mark.text, "small", "over" if mark.over else "ink", "card"))
+        return found
+
+    def _is_inside(self, box: QRectF) -> bool:
+        return self.rect.adjusted(0.0, -OVER_EDGE, 0.0, OVER_EDGE).contains(box)
 
     def legend(self, standing: list[Label]) -> list[Label]:
         """What the dashed, dotted and thin lines are, where it hides least."""

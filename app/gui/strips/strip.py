@@ -10,7 +10,7 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import TYPE_CHECKING
 
-from PySide6.QtCore import QRectF, Qt
+from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QBrush, QPainter, QPen
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
@@ -18,7 +18,7 @@ from app.gui.sheet_items import Painted
 from app.gui.sheet_layout import Place
 from app.gui.strips.content import StripContent
 from app.gui.strips.curves import Curves, shapes
-from app.gui.strips.labels import Label, strip_labels
+from app.gui.strips.labels import DIAMOND, Label, strip_labels
 from app.gui.strips.paths import Scale
 from app.gui.theme import Theme, colour
 
@@ -181,6 +181,7 @@ class Labels(Painted):
             return
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         self._paint_extremes(painter, self._content, self._place, self._scale)
+        self._paint_marks(painter, self._content, self._place, self._scale)
         for label in self.labels:
             if label.ground:
                 painter.fillRect(label.rect, colour(getattr(self._theme, label.ground)))
@@ -196,3 +197,13 @@ class Labels(Painted):
             if place.ruler.holds(extreme.x):
                 point = place.axes.point(place.ruler.pixel(extreme.x), scale.pixel(extreme.value))
                 painter.drawEllipse(point, 3.0, 3.0)
+
+    def _paint_marks(self, painter: QPainter, content: StripContent, place: Place, scale: Scale) -> None:
+        """A diamond for what is at a single place, filled where it is beyond what is allowed."""
+        for mark in content.marks:
+            if place.ruler.holds(mark.x):
+                at = place.axes.point(place.ruler.pixel(mark.x), scale.pixel(mark.value))
+                corners = ((0.0, -DIAMOND), (DIAMOND, 0.0), (0.0, DIAMOND), (-DIAMOND, 0.0))
+                painter.setPen(QPen(colour(self._theme.over if mark.over else self._theme.ink), 1.4))
+                painter.setBrush(colour(self._theme.over if mark.over else self._theme.card))
+                painter.drawPolygon([at + QPointF(*corner) for corner in corners])
