@@ -18,7 +18,7 @@ from app.point_marks import point_marks
 from app.results_file import results_json
 from app.shown import Shown
 from app.terminal import report
-from solver.model import FatigueRange, Shoulder
+from solver.model import Companion, CompanionSegment, FatigueRange, Shoulder
 from solver.shoulders import Step
 from solver.solve import solve
 from tests.shouldered import FILLET, spindle, with_shoulders, without_strength
@@ -129,6 +129,15 @@ def test_the_results_file_has_what_the_checks_are_made_of():
         swing["amplitude"] / swing["limit"] + swing["mean"] / swing["ultimate"]
     )
     assert swing["amplitude"] == pytest.approx(0.9 * abs(swing["nominal"] - swing["nominal_to"]))
+
+
+def test_companions_are_listed_as_not_checked_for_fatigue():
+    sleeve = CompanionSegment("S", 0.3, "of A", SPINDLE.segments[0].section)
+    beside = replace(SPINDLE, companions=(Companion(mark="K", start="0", end="1", segments=(sleeve,)),))
+    results = solve(beside)
+    checks = [c for c in results.checks if c.segment == "S" and c.check == "fatigue"]
+    assert [(c.status, c.reason) for c in checks] == [("not_made", "fatigue_companion")]
+    assert results.verdict != "pass"
 
 
 # --- marks in the strips ---
