@@ -271,7 +271,10 @@ class _Builder:
 
 
 def _range(
-    columns: tuple[FloatArray, ...], limits: tuple[Limit, ...], least: float, marks: tuple[PointMark, ...]
+    columns: tuple[FloatArray, ...],
+    limits: tuple[Limit, ...],
+    least: float,
+    marks: tuple[PointMark, ...] = (),
 ) -> tuple[float, float]:
     """Low and high of a strip: always with 0, with a little air, never less than `least`."""
     ends = [0.0, *(limit.value for limit in limits), *(mark.value for mark in marks)]
