@@ -9,6 +9,8 @@ from __future__ import annotations
 import math
 from typing import Any
 
+import numpy as np
+
 from app.phrases import reason_text
 from app.project_file import sha256
 from app.version import PROGRAM
@@ -16,7 +18,7 @@ from solver.arrays import FloatArray
 from solver.checks import Check
 from solver.model import StopSupport
 from solver.outcomes import SupportOutcome, support_outcomes
-from solver.results import Results
+from solver.results import PartResults, Results
 
 FORMAT = "barwright-results"
 VERSION = 1
@@ -26,7 +28,7 @@ Values = dict[str, Any]
 # of a check: the field, and the file's key where that differs
 _CHECK_KEYS = {"start": "from", "end": "to"}
 _CHECK_FIELDS = (
-    "check", "combination", "segment", "joint", "start", "end", "position",
+    "check", "combination", "segment", "part", "material", "joint", "start", "end", "position",
     "value", "limit", "utilisation", "status", "reason",
     "factor", "nominal", "nominal_to", "amplitude", "mean", "ultimate",
 )  # fmt: skip
@@ -35,6 +37,10 @@ _SEGMENT_FIELDS = (
     "force_start", "force_end", "force_max", "force_min",
     "stress_max", "stress_max_at", "stress_min", "stress_min_at",
     "utilisation", "utilisation_at", "force_bound",
+)  # fmt: skip
+# of a bonded part, likewise by state and part
+_PART_FIELDS = (
+    "stress_max", "stress_max_at", "stress_min", "stress_min_at", "utilisation", "utilisation_at",
 )  # fmt: skip
 
 
@@ -117,7 +123,20 @@ def _contacts(outcomes: tuple[SupportOutcome, ...], *, several: bool) -> Values:
 def _segments(results: Results, state: int) -> list[Values]:
     marks: Values = {"mark": [segment.mark for segment in results.project.segments]}
     columns = {name: _column(getattr(results.segments, name)[state]) for name in _SEGMENT_FIELDS}
-    return _rows(marks | columns)
+    rows = _rows(marks | columns)
+    if results.parts is not None:
+        _add_parts(rows, results.parts, state)
+    return rows
+
+
+def _add_parts(rows: list[Values], parts: PartResults, state: int) -> None:
+    """Every part of the segments with bonded ones, the segment's own first; the others have no such key."""
+    columns = {name: _column(getattr(parts, name)[state]) for name in _PART_FIELDS}
+    of_parts = _rows({"material": parts.material} | columns)
+    for part in np.argsort(parts.segment, kind="stable").tolist():
+        row = rows[parts.segment[part]]
+        if parts.number[part] or len(parts.of_segment(int(parts.segment[part]))) > 1:
+            row.setdefault("parts", []).append(of_parts[part])
 
 
 def _companions(results: Results, state: int) -> Values:

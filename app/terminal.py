@@ -14,13 +14,13 @@ from app.columns import one_line, table
 from app.cures import Cures
 from app.findings import Findings, StateBooks, findings
 from app.phrases import caution, check_sentence
-from app.phrases.checks import subject_text
+from app.phrases.checks import segment_words, subject_text
 from app.phrases.cures import cures_sentences, subject_words
 from app.phrases.fatigue import swing_text
 from app.units import utilisation_text
 from app.words import tr
 from solver.checks import STRESSES, Check
-from solver.model import Project, UnitSystemName
+from solver.model import Project, Segment, UnitSystemName, parts_of
 from solver.results import Results
 
 NOT_MADE = "?"  # beside a utilisation: another check of the same thing could not be made
@@ -67,10 +67,17 @@ def utilisations(results: Results) -> Iterator[str]:
     """The largest utilisation of stress in every segment, a column for each combination."""
     stresses = [check for check in results.checks if check.check in STRESSES]
     if stresses:
-        marks = [segment.mark for segment in results.project.segments]
-        rows = by_combination(results, stresses, lambda check: check.segment or "")
+        marks = [name for segment in results.project.segments for name in _row_names(segment)]
+        rows = by_combination(results, stresses, lambda check: segment_words(check) or "")
         head = [tr("Utilisation of stress"), *checked(results)]
         yield table(head, [[mark, *rows[mark]] for mark in marks])
+
+
+def _row_names(segment: Segment) -> list[str]:
+    """The segment, or each of its parts where some are bonded."""
+    parts = enumerate(parts_of(segment) if segment.bonded else ())
+    names = [segment_words(Check("tension", "", "pass", segment.mark, n, p.material)) for n, p in parts]
+    return [str(name) for name in names] or [segment.mark]
 
 
 def limits(results: Results) -> Iterator[str]:

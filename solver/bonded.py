@@ -134,10 +134,14 @@ def _part_energy(
 
 def constrained(bonded: Bonded | None, temperature: FloatArray) -> BoolArray | None:
     """(m,) whether parts hold each other against their expansion; None where nothing is bonded."""
-    if bonded is None:
-        return None
-    uneven = np.unique(bonded.segment[bonded.excess.any(axis=1)])
-    return np.asarray(temperature[:, uneven].any(axis=(1, 2)))
+    return None if bonded is None else np.asarray(constrained_segments(bonded, temperature).any(axis=1))
+
+
+def constrained_segments(bonded: Bonded, temperature: FloatArray) -> BoolArray:
+    """(m, n) in which segments they do."""
+    uneven = np.zeros(len(bonded.rigidity), dtype=np.bool_)
+    uneven[bonded.segment[bonded.excess.any(axis=1)]] = True
+    return np.asarray(temperature.any(axis=2) & uneven)
 
 
 _PRODUCT = 5  # points that make the product of a quadratic and a linear function exact

@@ -40,7 +40,7 @@ Rule: TypeAlias = Literal[
     "same_combination",  # facts: combination
     # of an edit that cannot be made
     "not_inside",  # facts: length, value: a split must lie inside the segment
-    "parts_differ",  # facts: kind (material, section): segments to be joined are unlike in it
+    "parts_differ",  # facts: kind (material, section, bonded): segments to be joined are unlike in it
     "joint_carries",  # facts: joint, kind (support, load, shoulder …): joining would lose it
     "companion_full",  # facts: companion: its other segments alone are too long
     "repeats",  # facts: count, most: how often segments can be repeated at once

@@ -112,6 +112,7 @@ class EnvelopePoint:
     stress_min_state: int
     utilisation: float
     utilisation_state: int
+    parts: tuple[tuple[float, float], ...] = ()  # smallest and largest stress of each bonded part
 
 
 @dataclass(frozen=True, slots=True)
@@ -346,5 +347,7 @@ def _envelope_point(results: Results, states: IntArray, place: Places | None) ->
     if place is None:
         return None
     found = _envelope(results, states, place)
-    names = EnvelopePoint.__dataclass_fields__
-    return EnvelopePoint(**{name: getattr(found, name)[0].item() for name in names})
+    names = [name for name in EnvelopePoint.__dataclass_fields__ if name != "parts"]
+    force = _evaluate(results, states, place).force if results.parts is not None else np.zeros(0)
+    parts = tuple((min(each), max(each)) for each in _part_stresses(results, states, place, force))
+    return EnvelopePoint(**{name: getattr(found, name)[0].item() for name in names}, parts=parts)

@@ -65,7 +65,12 @@ class Knob:
 
 
 def section_knobs(project: Project, *indices: int) -> tuple[Knob, ...]:
-    """The dimensions of the one section that these segments have, each made larger by itself."""
+    """The dimensions of the one section that these segments have, each made larger by itself.
+
+    None where parts are bonded to it: which of them would have to give way is not for a search to say.
+    """
+    if any(project.segments[index].bonded for index in indices):
+        return ()
     section_now, system = project.segments[indices[0]].section, project.display.unit_system
     places = tuple(("segments", index, "section") for index in indices)
     marks = tuple(project.segments[index].mark for index in indices)

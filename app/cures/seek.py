@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
-from typing import Final
+from typing import Final, TypeAlias
 
 from app.cures.changes import Change, Knob, section_knobs, spring_knobs
 from app.cures.search import first_passing
@@ -213,7 +213,8 @@ class _Trials:
         )
 
 
-_Missing = frozenset[tuple[str, str, Subject]]
+_MissingKey: TypeAlias = tuple[str, str, Subject, int | None]
+_Missing = frozenset[_MissingKey]
 
 
 def _not_made(checks: Sequence[Check]) -> _Missing:
@@ -224,5 +225,5 @@ def _not_made_checks(checks: Sequence[Check], known: _Missing) -> Iterator[Check
     return (check for check in checks if check.status == "not_made" and _key(check) not in known)
 
 
-def _key(check: Check) -> tuple[str, str, Subject]:
-    return check.check, check.combination, subject_of(check)
+def _key(check: Check) -> _MissingKey:
+    return check.check, check.combination, subject_of(check), check.part

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from app.drawing.bonded import draw_layer, layers_around, layers_inside, outer_of
 from app.drawing.placing import TIGHT, place
 from app.drawing.shapes import Box, Circle, Fill, Part, Text
 from app.drawing.sketch import Sketch
@@ -27,11 +28,16 @@ def half_depth(sketch: Sketch, segment: Segment, s: float) -> float:
     return max(outline(segment.section, s).outer * sketch.scale, LEAST_HALF)
 
 
+def _whole_depth(sketch: Sketch, segment: Segment, s: float) -> float:
+    """The same with the parts bonded around it."""
+    return max(outer_of(segment, s) * sketch.scale, LEAST_HALF)
+
+
 def edge_at(sketch: Sketch, joint: int) -> float:
     """The half thickness of the thicker side at a joint, px."""
     segments = sketch.member.project.segments
-    left = half_depth(sketch, segments[joint - 1], 1.0) if joint > 0 else 0.0
-    right = half_depth(sketch, segments[joint], 0.0) if joint < len(segments) else 0.0
+    left = _whole_depth(sketch, segments[joint - 1], 1.0) if joint > 0 else 0.0
+    right = _whole_depth(sketch, segments[joint], 0.0) if joint < len(segments) else 0.0
     return max(left, right)
 
 
@@ -45,12 +51,16 @@ def _draw_segment(sketch: Sketch, index: int) -> None:
     halves = [(start + s * (end - start), half_depth(sketch, segment, s)) for s in fractions]
     upper = [(a, axis - h) for a, h in halves]
     lower = [(a, axis + h) for a, h in reversed(halves)]
+    for section in layers_around(segment):
+        draw_layer(sketch, section, (start, end), part)
     fill: Fill = "" if sketch.frame.detail.hollow else "band_fill" if bare else "body_fill"
     dash = (5.0, 3.0) if bare else ()
     sketch.line(*upper, *lower, width=1.4, fill=fill, closed=True, dash=dash, part=part, clip=True)
     if isinstance(segment.section, TubeSection):
         _draw_bore(sketch, segment, start, end)
-    thick = max(*(h for _, h in halves), 12.0)
+    for section in layers_inside(segment):
+        draw_layer(sketch, section, (start, end), part)
+    thick = max(*(_whole_depth(sketch, segment, s) for s in fractions), 12.0)
     span = sketch.shown_span(index) or (start, end)
     sketch.target(span, (axis - thick, axis + thick), part)
 

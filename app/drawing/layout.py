@@ -70,7 +70,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
 def _aim_at_labels(picture: Picture) -> None:
     """What acts is pointed at by its label as well; some of it is said in words only."""
     for text in (*picture.texts, *picture.contact_texts):
-        labelled = LOADS | {"bedding", "support", "shoulder"} | OF_COMPANION
+        labelled = LOADS | {"bedding", "bonded", "support", "shoulder"} | OF_COMPANION
         if text.part is not None and text.part.kind in labelled:
             picture.targets.append(Target(text.box, text.part))
 

@@ -11,6 +11,7 @@ from itertools import groupby
 import numpy as np
 from msgspec.structs import replace
 
+from app.drawing.bonded import bonded_text
 from app.drawing.placing import CLEAR, STACKED, Placed, Span, Wish
 from app.drawing.shapes import Box, Part, PartKind, Point
 from app.drawing.sketch import Sketch
@@ -71,7 +72,7 @@ def _placed(sketch: Sketch, wishes: list[Wish], others: list[Box]) -> list[Place
 
 def load_wishes(sketch: Sketch) -> list[Wish]:
     """The labels that want a place in the rows of labels; forces come first."""
-    wishes = _bedding_wishes(sketch)
+    wishes = _bedding_wishes(sketch) + _bonded_wishes(sketch)
     loads = sketch.member.loads
     if loads is None:
         return wishes
@@ -324,6 +325,14 @@ def _bedding_wishes(sketch: Sketch) -> list[Wish]:
         end = end_of(segment.bedding, segment.bedding_end)
         texts.append(bedding_text(segment.bedding, end, sketch.member.system))
     return _run_wishes(sketch, texts, "bedding", rank=5)
+
+
+def _bonded_wishes(sketch: Sketch) -> list[Wish]:
+    segments = sketch.member.project.segments
+    if not sketch.frame.detail.dimensions or not any(segment.bonded for segment in segments):
+        return []
+    texts = [bonded_text(segment.bonded, sketch.member.system) for segment in segments]
+    return _run_wishes(sketch, texts, "bonded", rank=5)
 
 
 def _draw_bedding(sketch: Sketch) -> None:

@@ -18,6 +18,7 @@ from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.looks import Colour
 from solver.arrays import BoolArray, FloatArray, IntArray
+from solver.bonded import constrained_segments
 from solver.checks import PASS_MARGIN
 from solver.fields import Curves, Envelope, checked_states, curves, envelope
 from solver.results import Results
@@ -107,6 +108,8 @@ def _only_rounding(results: Results, states: list[int]) -> BoolArray:
     segments = results.segments
     size = np.maximum(np.abs(segments.force_max[states]), np.abs(segments.force_min[states]))
     only: BoolArray = np.all(size <= segments.force_bound[states], axis=0)
+    if results.chain.bonded is not None:  # its parts can stress each other without any force
+        only &= ~constrained_segments(results.chain.bonded, results.loads.temperature[states]).any(axis=0)
     return only
 
 

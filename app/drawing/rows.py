@@ -9,6 +9,7 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass
 
+from app.drawing.bonded import outer_of
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
 from app.drawing.companions import companion_wishes, lane_rows
 from app.drawing.contacts import contact_wishes
@@ -22,7 +23,6 @@ from app.drawing.supports import LEVEL, support_wishes
 from app.drawing.words import not_to_scale
 from app.words import tr
 from solver.model import end_of
-from solver.sections import outline
 
 BAND = 17.0  # distributed loads at their largest, px
 BRACKET = 7.0  # a row of brackets and the gap under it
@@ -251,7 +251,7 @@ def said_of(sketch: Sketch) -> str:
 
 def thickest(member: Member) -> float:
     """The largest half depth of any section, m."""
-    return max(outline(s.section, at).outer for s in member.project.segments for at in (0.0, 1.0))
+    return max(outer_of(s, at) for s in member.project.segments for at in (0.0, 1.0))
 
 
 def round_factor(largest: float) -> float:

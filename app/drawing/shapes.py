@@ -25,6 +25,7 @@ PartKind: TypeAlias = Literal[
     "warmth",
     "fit",
     "bedding",
+    "bonded",
     "joint",
     "support",
     "shoulder",
@@ -40,7 +41,18 @@ PartKind: TypeAlias = Literal[
     "note",
 ]
 OF_SEGMENT: frozenset[PartKind] = frozenset(
-    ("segment", "mark", "length", "section", "distributed", "distributed_end", "warmth", "fit", "bedding")
+    (
+        "segment",
+        "mark",
+        "length",
+        "section",
+        "distributed",
+        "distributed_end",
+        "warmth",
+        "fit",
+        "bedding",
+        "bonded",
+    )
 )
 OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "shoulder", "force", "movement"))
 OF_COMPANION: frozenset[PartKind] = frozenset(  # of its segments, counted over all companions

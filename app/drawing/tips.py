@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from app.drawing.bonded import bonded_text
 from app.drawing.companions import companion_tip
 from app.drawing.member import Member
 from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Part
@@ -42,7 +43,8 @@ def _segment_tip(member: Member, index: int) -> str:
         material=segment.material,
     )
     bedding = bedding_text(segment.bedding, end_of(segment.bedding, segment.bedding_end), member.system)
-    return _lines(first, *_on_segment(member, index), bedding)
+    bonded = bonded_text(segment.bonded, member.system)
+    return _lines(first, bonded, *_on_segment(member, index), bedding)
 
 
 def _on_segment(member: Member, index: int) -> tuple[str, ...]:

@@ -11,6 +11,7 @@ from typing import TypeVar
 
 from msgspec import Struct, UnsetType, structs
 
+from app.edits.bonded import sections_turned, with_sections
 from app.edits.checking import checked
 from app.edits.companions import segment_marks, turned_companion, without_those_at
 from app.edits.linear import turned
@@ -38,7 +39,8 @@ def insert_segment(
 ) -> Project:
     """The project with a segment put in at `index` (0…n), with a new joint at its far end.
 
-    Without a segment given it is like its neighbour before (or after), without taper and bedding.
+    Without a segment given it is like its neighbour before (or after), with the parts bonded there, without
+    taper and bedding.
     """
     if segment is None:
         segment = _like(project, max(index - 1, 0), at_start=index == 0)
@@ -62,8 +64,9 @@ def fresh_segment_mark(project: Project, like: str) -> str:
 
 def _like(project: Project, neighbour: int, *, at_start: bool) -> Segment:
     model = project.segments[neighbour]
-    section = _prismatic(model.section, at_start=at_start)
-    return Segment(fresh_segment_mark(project, model.mark), model.length, model.material, section)
+    mark = fresh_segment_mark(project, model.mark)
+    like = Segment(mark, model.length, model.material, model.section, bonded=model.bonded)
+    return with_sections(like, lambda section: _prismatic(section, at_start=at_start))
 
 
 def _prismatic(section: AnySection, *, at_start: bool) -> AnySection:
@@ -158,7 +161,7 @@ def _support_turned(support: AnySupport) -> AnySupport:
 
 def segment_turned(segment: Segment) -> Segment:
     """The segment seen from its other end."""
-    return structs.replace(turned(segment), section=turned(segment.section))
+    return sections_turned(turned(segment))
 
 
 def _case_turned(case: LoadCase) -> LoadCase:

@@ -12,6 +12,7 @@ from itertools import count, pairwise, zip_longest
 
 from msgspec import structs
 
+from app.edits.bonded import can_be_united, sections_cut, sections_united
 from app.edits.checking import EditError, checked, refused
 from app.edits.companions import companions_at
 from app.edits.linear import cut, exact, parted, rounded, sum_of, united
@@ -42,11 +43,11 @@ def split_segment(project: Project, index: int, at: float) -> Project:
 
 def _segment_parts(whole: Segment, at: float, fraction: Fraction, mark: str) -> tuple[Segment, Segment]:
     first, second = cut(whole, fraction)
-    first_section, second_section = cut(whole.section, fraction)
+    ones, others = sections_cut(whole, fraction)
     length, rest = parted(whole.length, at)
     return (
-        structs.replace(first, length=length, section=first_section),
-        structs.replace(second, mark=mark, length=rest, section=second_section),
+        structs.replace(first, length=length, section=ones.section, bonded=ones.bonded),
+        structs.replace(second, mark=mark, length=rest, section=others.section, bonded=others.bonded),
     )
 
 
@@ -87,6 +88,8 @@ def _hindrances(project: Project, first: int, last: int) -> Iterator[Fault]:
             yield Fault(place_text(("segments", other, "material")), "parts_differ", {"kind": "material"})
         if type(a.section) is not type(b.section):
             yield Fault(place_text(("segments", other, "section")), "parts_differ", {"kind": "section"})
+        if not can_be_united(a, b):
+            yield Fault(place_text(("segments", other, "bonded")), "parts_differ", {"kind": "bonded"})
         for what in carried(project, other):
             facts = {"joint": project.joints[other].mark, "kind": what}
             yield Fault(place_text(("joints", other)), "joint_carries", facts)
@@ -110,10 +113,12 @@ def carried(project: Project, index: int) -> Iterator[str]:
 def _joined(project: Project, index: int) -> Project:
     """Two neighbours made one."""
     first, second = project.segments[index : index + 2]
+    sections = sections_united(first, second)
     whole = structs.replace(
         united(first, second),
         length=sum_of(first.length, second.length),
-        section=united(first.section, second.section),
+        section=sections.section,
+        bonded=sections.bonded,
     )
     segments = (*project.segments[:index], whole, *project.segments[index + 2 :])
     joints = (*project.joints[: index + 1], *project.joints[index + 2 :])

@@ -7,8 +7,10 @@ from typing import Final, TypeVar
 
 from msgspec import Struct, structs
 
+from app.edits.bonded import with_materials_named
 from app.edits.checking import checked
 from app.edits.companions import with_joints_marked, with_segments
+from app.edits.records import mapped
 from solver.faults import Place
 from solver.model import LoadCase, Project
 
@@ -85,7 +87,8 @@ def number_joints(project: Project) -> Project:
 
 def rename_material(project: Project, old: str, new: str) -> Project:
     """The project with the material `old` called `new`, in all segments as well."""
-    segments = _renamed(project.segments, "material", old, new)
+    own = _renamed(project.segments, "material", old, new)
+    segments = mapped(own, lambda segment: with_materials_named(segment, {old: new}))
     materials = _renamed(project.materials, "name", old, new)
     companions = with_segments(
         project.companions,

@@ -12,7 +12,7 @@ from app.edits.checking import checked
 from app.edits.linear import PAIRS
 from app.edits.parts import carried, join_segments
 from solver.absent import absent_zero
-from solver.model import LoadCase, Project, Record, SegmentLoad
+from solver.model import LoadCase, Project, Record, SegmentLoad, parts_of
 
 
 def join_equal_neighbours(project: Project) -> Project:
@@ -32,7 +32,7 @@ def _are_equal(project: Project, index: int) -> bool:
         and first.section == second.section
         and structs.replace(first, mark="", length=1.0) == structs.replace(second, mark="", length=1.0)
         and _is_uniform(first)
-        and _is_uniform(first.section)
+        and all(_is_uniform(part.section) for part in parts_of(first))
         and not any(carried(project, index + 1))
         and all(_are_loaded_alike(case, first.mark, second.mark) for case in project.load_cases)
     )

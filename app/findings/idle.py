@@ -8,9 +8,9 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 
 from app.findings.listing import listed
-from app.phrases.notes import NO_DENSITY, NO_EXPANSION
+from app.phrases.notes import NO_DENSITY, NO_DENSITY_IN_PART, NO_EXPANSION
 from app.words import tr
-from solver.model import LoadCase, Project, SegmentLoad, end_of
+from solver.model import LoadCase, Project, SegmentLoad, end_of, parts_of
 from solver.results import Results
 
 
@@ -24,6 +24,9 @@ def idle_notes(results: Results) -> Iterator[str]:
     weightless = _marks(project, {m.name for m in project.materials if not m.density})
     pulled = [(case.name, mark) for case in cases if case.gravity for mark in weightless]
     yield from _note(NO_DENSITY, pulled, project)
+    partly = _marks_in_part(project, {m.name for m in project.materials if not m.density}) - weightless
+    lighter = [(case.name, mark) for case in cases if case.gravity for mark in partly]
+    yield from _note(NO_DENSITY_IN_PART, lighter, project)
 
 
 def _is_used(case: LoadCase, results: Results) -> bool:
@@ -35,7 +38,13 @@ def _heats(load: SegmentLoad) -> bool:
 
 
 def _marks(project: Project, materials: set[str]) -> set[str]:
-    return {segment.mark for segment in project.segments if segment.material in materials}
+    """The segments in which every part is of these materials."""
+    return {s.mark for s in project.segments if all(part.material in materials for part in parts_of(s))}
+
+
+def _marks_in_part(project: Project, materials: set[str]) -> set[str]:
+    """The segments in which any part is of these materials."""
+    return {s.mark for s in project.segments if any(part.material in materials for part in parts_of(s))}
 
 
 def _note(template: str, found: Iterable[tuple[str, str]], project: Project) -> Iterator[str]:

@@ -54,7 +54,7 @@ def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:
     groups: dict[_Group, list[Check]] = {}
     for check in among:
         if check.reason is not None:
-            material = materials.get(check.segment or "", "")
+            material = check.material or materials.get(check.segment or "", "")
             groups.setdefault((check.reason, material, _kind(check), check.ratio), []).append(check)
     return tuple(
         _not_made(reason, material, checks, results.project)

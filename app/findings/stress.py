@@ -43,7 +43,7 @@ def _finding(
         utilisation_text=utilisation_text(utilisation, check.status),
         status=check.status,
         position=float(check.position or 0.0),
-        band=bands.of(places[mark], check.combination),
+        band=bands.of(places[mark], check.part, check.combination),
     )
 
 
@@ -57,24 +57,30 @@ class _Bands:
         self._factors = {state.name: state.allowable_factor for state in states}
         factors = np.array([state.allowable_factor for state in states])[:, np.newaxis]
         chosen = [index for index, state in enumerate(states) if only in (None, state.name)]
-        high, low = results.segments.stress_max, results.segments.stress_min  # the checked states come first
+        found = results.segments if results.parts is None else results.parts
+        self._limits = results.allowables if results.parts is None else results.parts.allowables
+        high, low = found.stress_max, found.stress_min  # the checked states come first
         self._high = np.max(high[chosen] / factors[chosen], axis=0)
         self._low = np.min(low[chosen] / factors[chosen], axis=0)
 
-    def of(self, segment: int, state: str) -> Band:
-        """The scale of a segment at the allowable factor of a state."""
+    def of(self, segment: int, part: int | None, state: str) -> Band:
+        """The scale of a segment, or of one of its bonded parts, at the allowable factor of a state."""
         factor = self._factors[state]
-        row = self._results.state_index(state)
-        tension = _given(self._results.allowables.tension[row, segment])
-        compression = _given(self._results.allowables.compression[row, segment])
+        row, column = self._results.state_index(state), self._column(segment, part)
+        tension = _given(self._limits.tension[row, column])
+        compression = _given(self._limits.compression[row, column])
         return Band(
-            low=float(self._low[segment]) * factor,
-            high=float(self._high[segment]) * factor,
+            low=float(self._low[column]) * factor,
+            high=float(self._high[column]) * factor,
             compression=None if compression is None else -compression,
             tension=tension,
             compression_text=self._label(compression, -1.0),
             tension_text=self._label(tension, 1.0),
         )
+
+    def _column(self, segment: int, part: int | None) -> int:
+        parts = self._results.parts
+        return segment if parts is None else int(parts.of_segment(segment)[part or 0])
 
     def _label(self, allowable: float | None, sign: float) -> str:
         if allowable is None:

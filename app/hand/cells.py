@@ -36,6 +36,7 @@ _SEGMENT_COLUMNS: Final[dict[PartKind, str]] = {
     "distributed_end": "load_end",
     "warmth": "heat",
     "bedding": "bedding",
+    "bonded": "bonded",
 }
 _JOINT_COLUMNS: Final[dict[PartKind, str]] = {
     "joint": "support",
@@ -53,7 +54,17 @@ _COMPANION_COLUMNS: Final[dict[PartKind, str]] = {
 }
 # The order in which Tab goes from cell to cell of one segment or joint
 ORDER: Final[dict[str, tuple[str, ...]]] = {
-    "segments": ("length", "section", "material", "load_start", "load_end", "heat", "bedding", "mark"),
+    "segments": (
+        "length",
+        "section",
+        "material",
+        "bonded",
+        "load_start",
+        "load_end",
+        "heat",
+        "bedding",
+        "mark",
+    ),
     "joints": ("support", "shoulder", "force", "movement", "mark"),
     "companions": (
         "length",
@@ -130,6 +141,10 @@ def _bedding(project: Project, _case: int | None, index: int) -> Hashable:
     return segment.bedding, end_of(segment.bedding, segment.bedding_end)
 
 
+def _bonded(project: Project, _case: int | None, index: int) -> Hashable:
+    return project.segments[index].bonded
+
+
 def _warmth(project: Project, case: int | None, index: int) -> Hashable:
     return tuple(
         (load.temperature_start, end_of(load.temperature_start, load.temperature_end))
@@ -144,6 +159,7 @@ def _fit(project: Project, case: int | None, index: int) -> Hashable:
 _SAYINGS: Final[dict[PartKind, Callable[[Project, int | None, int], Hashable]]] = {
     "section": _section,
     "bedding": _bedding,
+    "bonded": _bonded,
     "warmth": _warmth,
     "fit": _fit,
 }
@@ -192,6 +208,7 @@ _SEGMENT_PARTS: Final[dict[str, PartKind]] = {
     "load_start": "distributed",
     "load_end": "distributed_end",
     "heat": "warmth",
+    "bonded": "bonded",
     "bedding": "bedding",
     "lack_of_fit": "fit",
 }

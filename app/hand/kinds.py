@@ -171,6 +171,17 @@ KINDS: Final[tuple[Kind, ...]] = (
         ("bedding", "bedding_end"),
     ),
     Kind(
+        "bonded",
+        later("Bonded part: another material that shares the strain"),
+        "segment",
+        "P",
+        symbols.BONDED,
+        "bonded",
+        ("A 1000 mm²", "A 1.5 in²"),
+        "area",
+        ("bonded",),
+    ),
+    Kind(
         "companion",
         later("Companion"),
         "segment",

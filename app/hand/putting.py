@@ -17,6 +17,7 @@ from msgspec.structs import replace
 from app import edits
 from app.drawing.shapes import Part
 from app.entry import parse_entry
+from app.hand.bonding import bond, materials_added
 from app.hand.cells import Cell, cell_of
 from app.hand.companions import companions_beside, lay_beside
 from app.hand.freeing import gone_with_supports
@@ -62,7 +63,7 @@ def put_on(kind: Kind, project: Project, indexes: Iterable[int], case: int | Non
         project,
         case,
         tuple(cell for cell in found if cell is not None),
-        note or gone_with_supports(old, project),
+        note or materials_added(old, project) or gone_with_supports(old, project),
     )
 
 
@@ -81,6 +82,8 @@ def _is_there(kind: Kind, project: Project, index: int, case: int | None) -> boo
     if kind.part == "support":
         there = supports_of(project.joints[index])
         return bool(_of_this_kind(kind, there)) if _support(kind, project) else not there
+    if kind.part == "bonded":
+        return bool(project.segments[index].bonded)
     if kind.part == "bedding":
         return any(_written(getattr(project.segments[index], key)) for key in kind.keys)
     if kind.part == "shoulder":
@@ -144,6 +147,8 @@ def _begins(kind: Kind, project: Project) -> float:
 def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
     if kind.part == "support":
         return edits.hold_joint(project, index, _held_with(kind, project, index))
+    if kind.part == "bonded":
+        return bond(project, index, kind.begins_in(project.display.unit_system))
     if kind.part == "bedding":
         return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
     if kind.part == "shoulder":

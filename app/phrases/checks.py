@@ -119,7 +119,8 @@ def short_sentence(check: Check, system: UnitSystemName) -> str:
     if check.value is None or check.limit is None or check.utilisation is None:
         return not_made_sentence(check)
     template = SHORT["tension" if check.check == "tension" else "compression"]
-    return _filled(template, check, check.value, check.limit, check.utilisation, system)
+    sentence = _filled(template, check, check.value, check.limit, check.utilisation, system)
+    return sentence if check.part is None else f"{part_words(check.part, check.material)}: {sentence}"
 
 
 def _filled(
@@ -220,10 +221,23 @@ def position_text(position: float | None, system: UnitSystemName) -> str:
     return "" if position is None else format_value(position, "length", system, strip=True, with_unit=True)
 
 
+def part_words(part: int, material: str | None) -> str:
+    """One of several bonded parts, counted from 1 as people do, the segment's own first."""
+    return tr("part {number}, {material}").format(number=part + 1, material=material)
+
+
+def segment_words(check: Check) -> str | None:
+    """The segment that a check is of, and which of its parts where several are bonded."""
+    if check.part is None or check.segment is None:
+        return check.segment
+    words = tr("{segment}, {part}")
+    return words.format(segment=check.segment, part=part_words(check.part, check.material))
+
+
 def _names(check: Check) -> dict[str, str | None]:
     """What a check is of, for the templates."""
     return {
-        "segment": check.segment,
+        "segment": segment_words(check),
         "joint": check.joint,
         "start": check.start,
         "end": check.end,

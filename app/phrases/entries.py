@@ -12,6 +12,7 @@ EntryRule: TypeAlias = Literal[
     "bracket_open", "bracket_stray", "zero_divisor", "too_large", "too_small", "unknown_unit", "near_unit",
     "no_unit", "section_unknown", "section_flat", "section_dimensions", "section_units",
     "wall_too_thick", "bore_too_wide", "size_not_positive", "section_change",
+    "part_unknown", "part_near", "part_section", "part_shape",
 ]  # fmt: skip
 
 ENTRIES: Final[Mapping[EntryRule, str]] = {
@@ -44,6 +45,12 @@ ENTRIES: Final[Mapping[EntryRule, str]] = {
     "wall_too_thick": later("The wall is thicker than half the outside diameter"),
     "bore_too_wide": later("The bore must be smaller than the outside diameter"),
     "size_not_positive": later("Every dimension must be greater than 0"),
+    "part_unknown": later(
+        "“{found}” is no material; a bonded part is a material and its section, such as Steel d20"
+    ),
+    "part_near": later("“{found}” is no material; did you mean “{nearest}”?"),
+    "part_section": later("The section of the part of {name} is missing; type it behind, such as {name} d20"),
+    "part_shape": later("Say the shape of “{found}”: d20 (round), d60x5 (a tube), r20x30 or A 1200"),
     "section_change": later("Start and end of a segment have the same shape; “{found}” is another"),
 }
 

@@ -124,6 +124,7 @@ _KINDS: Final[Mapping[str, str]] = {
     "segment": later("segment"), "joint": later("joint"), "material": later("material"),
     "load case": later("load case"), "load_case": later("load case"),
     "start": later("start"), "end": later("end"), "section": later("section shape"),
+    "bonded": later("bonded parts"),
     "support": later("support"), "load": later("load"), "limit": later("limit"),
     "shoulder": later("shoulder"),
     "combination": later("combination"), "companion": later("companion"),

@@ -15,6 +15,9 @@ BEDDING: Final = later(
 NO_EXPANSION: Final = later(
     "The temperature of {places} in {cases} has no effect: the material has no expansion"
 )
+NO_DENSITY_IN_PART: Final = later(
+    "Gravity in {cases} leaves out a part of {places}: the material of one of its bonded parts has no density"
+)
 NO_DENSITY: Final = later("Gravity in {cases} gives no weight to {places}: the material has no density")
 
 

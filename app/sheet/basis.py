@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
+from app.sheet.bonded import bonded_formulas, is_bonded
 from app.sheet.contacts import stop_assumptions
 from app.words import tr
-from solver.model import AreaSection, Project, RectangleSection, RoundSection, TubeSection, end_of
+from solver.model import AreaSection, Project, RectangleSection, RoundSection, TubeSection, end_of, parts_of
 
 
 def basis_blocks(project: Project) -> Iterator[Block]:
@@ -44,7 +45,7 @@ def _formulas(project: Project) -> Iterator[dict[str, Value]]:
         "spring",
         tr("R equals minus k times u minus δ, or u equals δ where it is fixed"),
     )
-    shapes = {type(segment.section) for segment in project.segments}
+    shapes = {type(part.section) for segment in project.segments for part in parts_of(segment)}
     for shape, label, name, alt in (
         (RoundSection, tr("area, round"), "round", tr("A equals π over 4 times d squared")),
         (TubeSection, tr("area, tube"), "tube", tr("A equals π over 4 times D squared minus d squared")),
@@ -53,6 +54,8 @@ def _formulas(project: Project) -> Iterator[dict[str, Value]]:
         if shape in shapes:
             yield formula(label, name, alt)
     yield formula(tr("stress"), "stress", tr("σ equals N over A"))
+    if is_bonded(project):
+        yield from bonded_formulas()
     yield formula(
         tr("utilisation in tension"), "tension", tr("η equals σ over f times the allowable stress in tension")
     )
@@ -114,6 +117,15 @@ def _assumptions(project: Project) -> list[str]:
             )
         )
     items += stop_assumptions(project)
+    if is_bonded(project):
+        items.append(
+            tr(
+                "Bonded parts share the strain of their segment along its whole length: no slip, no creep, no"
+                " cracking, and nothing bends. ΔT and lack of fit act on all of them, each with its own"
+                " expansion; the strain energy holds what they store against each other. The stress of a"
+                " segment in strips and tables is that of its own part, its utilisation the largest of all."
+            )
+        )
     if any(isinstance(s.section, AreaSection) for s in project.segments):
         items.append(tr("Where only an area is given, the drawing shows the round bar of that area."))
     return items

@@ -18,6 +18,7 @@ from solver.model import (
     AnySection,
     AnySupport,
     AreaSection,
+    BondedPart,
     FixedSupport,
     Joint,
     LoadCase,
@@ -27,6 +28,7 @@ from solver.model import (
     SpringSupport,
     StopSupport,
     end_of,
+    parts_of,
     supports_of,
 )
 from solver.packing import pack
@@ -67,7 +69,7 @@ def _materials(project: Project, say: Readings) -> Block:
         column(tr("Allowable in compression"), say.unit("stress")),
         *strength,
     ]
-    used = {segment.material for segment in project.segments}
+    used = {part.material for segment in project.segments for part in parts_of(segment)}
     rows = [[*_material_row(m, say, used=m.name in used), *strength_cells(m)] for m in project.materials]
     return table(tr("Materials"), columns, rows)
 
@@ -99,20 +101,34 @@ def _segments(project: Project, say: Readings) -> Block:
 
 def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[list[str]]:
     for index, segment in enumerate(project.segments):
-        first, _, last = area_coefficients(segment.section)
-        area = [say.read(a, "area") for a in (first, last)]
         ends = f"{project.joints[index].mark} – {project.joints[index + 1].mark}"
         row = [
             segment.mark,
             ends,
             say.exact(segment.length, "length"),
             _section(segment.section, say),
-            area[0] if first == last else " → ".join(area),
+            _areas(segment.section, say),
             segment.material,
         ]
         if bedded:
             row.append(say.pair(segment.bedding, end_of(segment.bedding, segment.bedding_end), "bedding"))
         yield row
+        for number, part in enumerate(segment.bonded, start=2):
+            yield _part_row(number, part, len(row), say)
+
+
+def _part_row(number: int, part: BondedPart, cells: int, say: Readings) -> list[str]:
+    """A bonded part, under the segment's own."""
+    words = tr("part {number}").format(number=number)
+    row = ["", words, "", _section(part.section, say), _areas(part.section, say), part.material]
+    return row + [""] * (cells - len(row))
+
+
+def _areas(section: AnySection, say: Readings) -> str:
+    """At the start, and at the end where that differs."""
+    first, _, last = area_coefficients(section)
+    area = [say.read(a, "area") for a in (first, last)]
+    return area[0] if first == last else " → ".join(area)
 
 
 def _section(section: AnySection, say: Readings) -> str:

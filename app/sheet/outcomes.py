@@ -10,6 +10,7 @@ import numpy as np
 from app.findings.books import state_books
 from app.findings.records import StateBooks
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
+from app.sheet.bonded import part_table
 from app.sheet.contacts import contact_blocks
 from app.sheet.fatigue import fatigue_blocks
 from app.sheet.figures import envelope_figure, state_figure
@@ -51,6 +52,8 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
     )
     yield picture(state_figure(results, index), caption.format(name=state.name))
     yield _segments(results, index, say)
+    if results.parts is not None:
+        yield part_table(results, results.parts, index, say)
     yield _joints(results, index, say)
     yield from contact_blocks(results, index, say)
     yield from peak_tables(results, state.name, say)

@@ -14,9 +14,10 @@ from msgspec import UnsetType
 from app.findings import findings
 from app.findings.subjects import worst_first
 from app.numerals import reading
-from app.phrases.checks import has_compression, state_text
+from app.phrases.checks import has_compression, segment_words, state_text
 from app.phrases.notes import BUCKLING
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
+from app.sheet.bonded import part_by_hand
 from app.sheet.peak_proof import peak_or_fatigue_by_hand
 from app.sheet.readings import Readings
 from app.sheet.shoulders import factor_blocks
@@ -25,16 +26,18 @@ from app.words import tr
 from solver.checks import Check
 from solver.fields import PointValues, at
 from solver.model import (
+    AnySection,
     AreaSection,
     RectangleSection,
     RoundSection,
     SpringSupport,
     TubeSection,
     end_of,
+    parts_of,
     supports_of,
 )
 from solver.results import Results
-from solver.sections import area_at
+from solver.sections import area_at, area_coefficients
 
 
 def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
@@ -78,24 +81,40 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
     x = float(check.position or 0.0)
     s = _share(x, float(results.position[place]), float(results.chain.length[place]))
     values = _in_segment(results, state, x, place)
-    area = float(area_at(results.chain.area[place], np.array(s)))
     yield paragraph(
         _place_words(s).format(
-            x=say.plain(x, "length", unit=True), share=reading(s, 6, strip=True), mark=check.segment
+            x=say.plain(x, "length", unit=True),
+            share=reading(s, 6, strip=True),
+            mark=segment_words(check),
         ),
         "lead",
     )
+    section = parts_of(results.project.segments[place])[int(check.part or 0)].section
+    area = float(area_at(np.array(area_coefficients(section)), np.array(s)))
+    if check.part is not None:
+        yield formulas(
+            [
+                _area_by_hand(section, s, area, say),
+                *part_by_hand(results, check, state, place, s, values.force, say),
+                _utilisation_by_hand(results, check, state, _stress_text(check, say), say),
+            ]
+        )
+        return
     stress = say.plain(values.stress, "stress", unit=True, digits=6)
     force = say.plain(values.force, "force", unit=True)
     size = say.plain(area, "area", unit=True)
     alt = tr("σ = N / A = {force} / {area} = {stress}").format(force=force, area=size, stress=stress)
     yield formulas(
         [
-            _area_by_hand(results, place, s, area, say),
+            _area_by_hand(section, s, area, say),
             formula(tr("stress"), "stress_numbers", alt, force=force, area=size, stress=stress),
             _utilisation_by_hand(results, check, state, stress, say),
         ]
     )
+
+
+def _stress_text(check: Check, say: Readings) -> str:
+    return say.plain(float(check.value or 0.0), "stress", unit=True, digits=6)
 
 
 def _share(x: float, start: float, length: float) -> float:
@@ -123,9 +142,8 @@ def _in_segment(results: Results, state: int, x: float, place: int) -> PointValu
     return next((side for side in sides if side.segment == place), sides[0])
 
 
-def _area_by_hand(results: Results, place: int, s: float, area: float, say: Readings) -> dict[str, Value]:
+def _area_by_hand(section: AnySection, s: float, area: float, say: Readings) -> dict[str, Value]:
     """The area from the dimensions at that place, which vary linearly along the segment."""
-    section = results.project.segments[place].section
 
     def size(start: float, end: float | UnsetType) -> str:
         return say.plain((1 - s) * start + s * end_of(start, end), "size", unit=True)
@@ -152,12 +170,9 @@ def _area_by_hand(results: Results, place: int, s: float, area: float, say: Read
 def _utilisation_by_hand(
     results: Results, check: Check, state: int, stress: str, say: Readings
 ) -> dict[str, Value]:
-    material = next(
-        m
-        for m in results.project.materials
-        for s in results.project.segments
-        if s.mark == check.segment and m.name == s.material
-    )
+    segment = next(s for s in results.project.segments if s.mark == check.segment)
+    name = check.material or segment.material
+    material = next(m for m in results.project.materials if m.name == name)
     allowable = material.allowable_tension if check.check == "tension" else material.allowable_compression
     parts = {
         "stress": stress,

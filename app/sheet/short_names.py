@@ -12,11 +12,12 @@ from typing import Final
 
 from msgspec import structs
 
+from app.edits.bonded import with_materials_named
 from app.phrases.states import state_words
 from app.sheet.printable import shortened
 from solver.checks import Check
 from solver.model import LoadCase, Project
-from solver.results import Results, StateKind
+from solver.results import PartResults, Results, StateKind
 
 LONGEST: Final = 32
 LONGEST_MARK: Final = 18
@@ -50,6 +51,7 @@ def with_short_names(results: Results) -> Results:
             )
             for state in results.states
         ),
+        parts=_parts(results.parts, names),
         checks=tuple(_check(check, names) for check in results.checks),
         governing=_check(results.governing, names) if results.governing else None,
     )
@@ -92,7 +94,11 @@ def _renamed(project: Project, names: _Names) -> Project:
         materials=tuple(structs.replace(m, name=names.materials[m.name]) for m in project.materials),
         joints=tuple(structs.replace(j, mark=names.joints[j.mark]) for j in project.joints),
         segments=tuple(
-            structs.replace(s, mark=names.segments[s.mark], material=names.materials[s.material])
+            structs.replace(
+                with_materials_named(s, names.materials),
+                mark=names.segments[s.mark],
+                material=names.materials[s.material],
+            )
             for s in project.segments
         ),
         load_cases=tuple(_case(case, names) for case in project.load_cases),
@@ -122,6 +128,12 @@ def _renamed(project: Project, names: _Names) -> Project:
     )
 
 
+def _parts(parts: PartResults | None, names: _Names) -> PartResults | None:
+    if parts is None:
+        return None
+    return dataclasses.replace(parts, material=tuple(names.materials[name] for name in parts.material))
+
+
 def _case(case: LoadCase, names: _Names) -> LoadCase:
     return structs.replace(
         case,
@@ -140,6 +152,7 @@ def _check(check: Check, names: _Names) -> Check:
             check.combination, state_words(check.combination)
         ),
         segment=None if check.segment is None else names.segments[check.segment],
+        material=None if check.material is None else names.materials[check.material],
         joint=None if check.joint is None else names.joints[check.joint],
         start=None if check.start is None else names.joints[check.start],
         end=None if check.end is None else names.joints[check.end],

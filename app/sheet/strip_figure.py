@@ -38,6 +38,9 @@ def state_figure(
     """
     field = curves(results, state, points=POINTS)
     checked = results.states[state].checked
+    over = field.utilisation
+    if results.parts is not None:  # of the stress drawn, not of another part's
+        over = over_least(results, (state,), field.segment, field.stress, field.utilisation)
     strips = [
         Strip("u", "displacement", "displacement", field.x, (field.displacement,)),
         Strip("N", "force", "force", field.x, (field.force,)),
@@ -47,7 +50,7 @@ def state_figure(
             "stress",
             field.x,
             (field.stress,),
-            over=(field.utilisation,) if checked else (),
+            over=(over,) if checked else (),
             limits=_allowables(results, (state,), (field.stress,)) if checked else (),
             marks=point_marks(results, (state,), "stress"),
         ),

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from app.numerals import decimals_of, fixed, rounded
-from app.phrases.checks import state_text
+from app.phrases.checks import segment_words, state_text
 from app.sheet.blocks import Block, column, table
 from app.sheet.readings import DIGITS, NOTHING, PLAIN, Readings
 from app.units import Quantity, to_display, utilisation_text
@@ -43,7 +43,7 @@ def kind_words(check: Check) -> str:
 def subject(check: Check) -> str:
     """Of what: a segment, a joint, or two joints."""
     if check.segment is not None and check.joint is None:
-        return tr("segment {mark}").format(mark=check.segment)
+        return tr("segment {mark}").format(mark=segment_words(check))
     if check.joint is not None:
         return tr("joint {mark}").format(mark=check.joint)
     return tr("joints {start} to {end}").format(start=check.start, end=check.end)

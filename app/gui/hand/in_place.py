@@ -43,7 +43,9 @@ class EditorFrame(QFrame):
         self.setObjectName("in_place")
         self.caption = QLabel(entry.caption)
         self.reason = QLabel()
-        self.line = CellEditor(self, theme, entry.model.offers(entry.index))
+        self.line = CellEditor(
+            self, theme, entry.model.offers(entry.index), entry.model.separator(entry.index)
+        )
         self.line.setAccessibleName(entry.caption)
         self.reason.hide()
         for label in (self.caption, self.reason):

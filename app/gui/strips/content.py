@@ -103,10 +103,11 @@ def number(kind: Kind, value: float, system: UnitSystemName) -> str:
 
 def of_unit_strain(results: Results) -> dict[Kind, float]:
     """How much each quantity is at most where the strain is 1: what is small and what is not, SI."""
-    modulus, area = float(results.chain.modulus.max()), float(results.chain.area.max())
+    modulus = float(results.chain.modulus.max())
+    rigidity = float(results.chain.rigidity(slice(None)).max())
     return {
         "displacement": float(results.position[-1]),
-        "force": modulus * area,
+        "force": rigidity,
         "stress": modulus,
         "utilisation": 1.0,
     }
@@ -210,15 +211,23 @@ class _Builder:
 
     def _trace(self, kind: Kind, value: FloatArray) -> Trace:
         """The curve with points put in where it changes sign or passes its limit."""
-        sign = value if self._stress is None or kind == "force" else self._stress
+        sign = value if self._stress is None or kind == "force" else self._sign(kind, self._stress)
         columns = np.vstack([self._x, value, sign, self._over_measure(kind, value)])
         if kind != "displacement":
             columns = with_crossings(with_crossings(columns, 2, 0.0), 3, 1.0)
         return Trace(columns[0], columns[1], self._drawn(kind, columns))
 
+    def _sign(self, kind: Kind, stress: FloatArray) -> FloatArray:
+        """Whose sign colours the curve: of a utilisation that any of several parts may govern, none."""
+        bonded = self._results.chain.bonded
+        if kind != "utilisation" or bonded is None:
+            return stress
+        return np.where(bonded.several[self._segment], 0.0, stress)
+
     def _over_measure(self, kind: Kind, value: FloatArray) -> FloatArray:
         """What is above 1 where the limit is passed: of the envelope's stress, each side by itself."""
-        if kind == "utilisation" or (kind == "stress" and self._stress is not None):
+        own = kind == "stress" and self._stress is not None and self._results.parts is None
+        if kind == "utilisation" or own:
             return self._utilisation
         if kind != "stress":
             return np.zeros_like(value)

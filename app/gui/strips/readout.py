@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 
 import numpy as np
 
@@ -11,6 +12,7 @@ from app.strip_choice import Kind, kind_symbols
 from app.units import format_value
 from app.words import tr
 from solver.fields import EnvelopePoint, PointValues, Readout, at, checked_states, envelope_at
+from solver.model import parts_of
 from solver.results import Results
 
 ROUNDING = 1e-15  # a strain this small is rounding and reads as 0
@@ -29,18 +31,16 @@ def resting() -> str:
 
 def state_readout(results: Results, state: int, x: float) -> str:
     """The line for one state at the position x (m)."""
-    return _line(results, at(results, state, x))
+    readout = at(results, state, x)
+    return BETWEEN.join([_line(results, readout), *_parts(results, (readout.left, readout.right))])
 
 
 def envelope_readout(results: Results, x: float) -> str:
     """The line for the envelope at x: smallest … largest of each quantity over the checked states."""
     readout = envelope_at(results, x)
     sides = [side for side in (readout.left, readout.right) if side is not None]
-    return _joined(
-        results,
-        x,
-        [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in kind_symbols()],
-    )
+    pairs = [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in kind_symbols()]
+    return BETWEEN.join([_joined(results, x, pairs), *_parts(results, (readout.left, readout.right))])
 
 
 def nearest_state(results: Results, kind: Kind, x: float, value: float) -> str:
@@ -63,6 +63,24 @@ def _line(results: Results, readout: Readout) -> str:
     sides = [side for side in (readout.left, readout.right) if side is not None]
     pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in kind_symbols()]
     return _joined(results, readout.x, pairs)
+
+
+def _parts(results: Results, sides: Sequence[PointValues | EnvelopePoint | None]) -> list[str]:
+    """The stress of every bonded part, segment by segment: "B: Concrete −1.56, Steel −19.0 MPa"."""
+    found = {side.segment: side.parts for side in sides if side is not None and side.parts}
+    unit = unit_of("stress", results.project.display.unit_system)
+    texts = []
+    for index, stresses in found.items():
+        segment = results.project.segments[index]
+        named = zip(parts_of(segment), stresses, strict=True)
+        said = ", ".join(f"{part.material} {_stress_text(results, stress)}" for part, stress in named)
+        texts.append(f"{segment.mark}: {said} {unit}")
+    return texts
+
+
+def _stress_text(results: Results, stress: float | tuple[float, float]) -> str:
+    ends = stress if isinstance(stress, tuple) else (stress,)
+    return " … ".join(dict.fromkeys(_number("stress", value, results) for value in ends))
 
 
 def _joined(results: Results, x: float, pairs: list[str]) -> str:

@@ -30,11 +30,14 @@ class CellEditor(QLineEdit):
     offered = Signal(str)  # a name that the keys went to, not taken in yet
     picked = Signal()  # a name was clicked: it is the cell's text
 
-    def __init__(self, parent: QWidget, theme: Theme, offers: tuple[Offer, ...] = ()) -> None:
+    def __init__(
+        self, parent: QWidget, theme: Theme, offers: tuple[Offer, ...] = (), separator: str = ""
+    ) -> None:
         super().__init__(parent)
         self.setObjectName("cell")
         self._theme = theme
         self._offers = offers
+        self._separator = separator  # names are offered for what stands behind the last of these
         self._typed = ""  # what the names in the list were matched with
         self._list: OfferList | None = None
         if offers:
@@ -66,7 +69,18 @@ class CellEditor(QLineEdit):
     def on_typed(self, text: str) -> None:
         """Offer what goes with the text; nothing where it is empty."""
         self._typed = text
-        self._opened().show_offers(matching(self._offers, text) if text.strip() else ())
+        self._opened().show_offers(matching(self._offers, self._last(text)) if text.strip() else ())
+
+    def _last(self, text: str) -> str:
+        """What is being named: the text, or the last of several parts of it."""
+        return text.rpartition(self._separator)[2].strip() if self._separator else text
+
+    def _with_name(self, name: str) -> str:
+        """The typed text with the offered name for what is being named."""
+        if not self._separator:
+            return name
+        before, cut, _ = self._typed.rpartition(self._separator)
+        return f"{before}{cut} {name} " if cut else f"{name} "
 
     def _opened(self) -> OfferList:
         if self._list is None:
@@ -86,7 +100,7 @@ class CellEditor(QLineEdit):
             shown.choose(next((i for i, o in enumerate(self._offers) if o.name == self._typed), -1))
         row = min(max(shown.currentIndex().row() + steps, -1), len(shown.offers) - 1)
         shown.choose(row)
-        self._put(shown.offers[row].name if row >= 0 else self._typed)
+        self._put(self._with_name(shown.offers[row].name) if row >= 0 else self._typed)
         spoken = shown.offers[row].spoken if row >= 0 else self._typed
         QAccessible.updateAccessibility(QAccessibleAnnouncementEvent(self, spoken))
 
@@ -97,8 +111,11 @@ class CellEditor(QLineEdit):
 
     def on_clicked(self, index: QModelIndex) -> None:
         """A clicked name is chosen for good."""
-        self._put(index.data())
-        self.picked.emit()
+        self._put(self._with_name(index.data()))
+        if self._separator:  # its section follows
+            self._opened().show_offers(())
+        else:
+            self.picked.emit()
 
     def moveEvent(self, event: QMoveEvent) -> None:
         """The list stays with its cell."""

@@ -122,6 +122,7 @@ class Column:
     settled_by: str = ""  # the column that says more, where a pasted row brings both
     at_first: bool = True  # whether it is shown before anyone has chosen
     filled: Callable[[Project], bool] | None = None  # shown in any case where something stands in it
+    separator: str = ""  # what stands between several names with their values in one cell
 
     @property
     def holds_a_name(self) -> bool:

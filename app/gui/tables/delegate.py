@@ -140,7 +140,8 @@ class CellDelegate(QStyledItemDelegate):
     def createEditor(self, parent: QWidget, _option: QStyleOptionViewItem, index: Index) -> QWidget:
         """A line with the cell's full digits; each keystroke is previewed."""
         model = index.model()
-        editor = CellEditor(parent, self.theme, model.offers(index) if isinstance(model, TableModel) else ())
+        offered = (model.offers(index), model.separator(index)) if isinstance(model, TableModel) else ()
+        editor = CellEditor(parent, self.theme, *offered)
         editor.setTextMargins(MARGIN - 5, 0, 0, 0)
         editor.picked.connect(lambda: self._take_in(editor))
         if isinstance(model, TableModel):

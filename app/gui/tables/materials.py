@@ -10,6 +10,7 @@ from msgspec.structs import replace
 
 from app import edits
 from app.beside import beside
+from app.edits.bonded import uses_of_material
 from app.entry import parse_entry
 from app.gui.tables import offers
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
@@ -29,8 +30,8 @@ def with_modulus(project: Project, index: int, modulus: float) -> Change:
         raise NotTaken(tr("name a material from the Materials table first"))
     if project.materials[place].modulus == modulus:
         return Change(project)
-    others = (*project.segments, *(of.segment for of in beside(project)))
-    if sum(other.material == segment.material for other in others) == 1:
+    others = sum(of.segment.material == segment.material for of in beside(project))
+    if uses_of_material(project, segment.material) + others == 1:
         note = tr("Modulus of material {name} changed").format(name=segment.material)
         return Change(edits.set_value(project, ("materials", place, "modulus"), modulus), note)
     name = free_name(f"{segment.material} {segment.mark}", {m.name for m in project.materials})
@@ -153,6 +154,11 @@ def _delete(project: Project, indexes: tuple[int, ...], _sight: Sight) -> Projec
         if segment.material in names:
             used = tr("{mark} is made of {name}: give it another material first")
             raise NotTaken(used.format(mark=segment.mark, name=segment.material))
+    for segment in project.segments:
+        for part in segment.bonded:
+            if part.material in names:
+                used = tr("{mark} has a bonded part of {name}: take it out or give it another material first")
+                raise NotTaken(used.format(mark=segment.mark, name=part.material))
     return edits.remove_records(project, ("materials",), indexes)
 
 

@@ -286,6 +286,10 @@ class TableModel(RowsModel):
             return ()
         return source.offers(self._document.project, self._sight)
 
+    def separator(self, index: Index) -> str:
+        """What stands between several names in a cell; empty where it holds one."""
+        return "" if self.is_adding(index.row()) else self._columns[index.column()].separator
+
     def why_not(self, index: Index) -> str:
         """Why a cell is not for typing, in words; empty where it is, or where nothing could ever be typed."""
         if self.entry(index) is not None or not self.is_record(index.row()):

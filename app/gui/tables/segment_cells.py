@@ -13,6 +13,7 @@ from typing import Any
 from msgspec import UNSET
 
 from app import edits
+from app.bonded_entry import parse_bonded
 from app.entry import parse_entry
 from app.gui.tables.case_loads import Ends, end_of_load, heat_of, loads_by_mark, loads_on
 from app.gui.tables.column import Change, Sight
@@ -21,7 +22,7 @@ from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
 from app.gui.tables.supports import with_supports
 from app.section_entry import parse_section, taken_as
 from app.support_entry import parse_supports, supports_entry, supports_text
-from app.typical_materials import typical_named, with_typical
+from app.typical_materials import not_in, typical_named, with_typical
 from app.words import tr
 from solver.faults import Place
 from solver.model import (
@@ -168,6 +169,20 @@ def material_put(project: Project, place: Place, text: str) -> Change:
         project, note = with_typical(project, typical)
         name = typical.name
     return Change(edits.set_value(project, place, name), note)
+
+
+def put_bonded(project: Project, index: int, text: str, sight: Sight) -> Change:
+    """Other bonded parts; a typical material among them is added to the project, an empty text has none."""
+    typical = {material.name: material for material in not_in(project)}
+    names = (*(material.name for material in project.materials), *typical)
+    parts = parse_bonded(text, sight.system, names, project.segments[index].bonded)
+    notes = []
+    for name in dict.fromkeys(part.material for part in parts):
+        if name in typical:
+            project, note = with_typical(project, typical[name])
+            notes.append(note)
+    place = ("segments", index, "bonded")
+    return Change(edits.set_value(project, place, parts or UNSET), "; ".join(notes))
 
 
 def put_modulus(project: Project, index: int, text: str, sight: Sight) -> Change:

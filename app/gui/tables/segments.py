@@ -6,6 +6,7 @@ The row before the first holds the first joint's support; a segment's row holds 
 from __future__ import annotations
 
 from app import edits
+from app.bonded_entry import SEPARATOR, bonded_label, bonded_text
 from app.entry import parse_entry
 from app.gui.tables import offers
 from app.gui.tables.case_loads import FORCE
@@ -22,6 +23,7 @@ from app.gui.tables.segment_cells import (
     one_row,
     put_area,
     put_bedding,
+    put_bonded,
     put_mark,
     put_material,
     put_modulus,
@@ -109,6 +111,20 @@ COLUMNS = (
         ),
         put_modulus,
         quantity="modulus",
+    ),
+    Column(
+        "bonded",
+        later("Bonded parts"),
+        in_segments(lambda row, s: bonded_label(row.segment.bonded, s.system), ""),
+        in_segments(lambda row, s: bonded_text(row.segment.bonded, s.system), None),
+        put_bonded,
+        quantity="size",
+        optional=True,
+        width=18,
+        offers=offers.materials,
+        at_first=False,
+        filled=lambda project: any(segment.bonded for segment in project.segments),
+        separator=SEPARATOR,
     ),
     Column(
         "load_start",
