@@ -174,7 +174,7 @@ KINDS: Final[tuple[Kind, ...]] = (
         "bonded",
         later("Bonded part: another material that shares the strain"),
         "segment",
-        "P",
+        "M",
         symbols.BONDED,
         "bonded",
         ("A 1000 mm²", "A 1.5 in²"),
