@@ -14,7 +14,7 @@ from msgspec.structs import replace
 from app.drawing.bonded import bonded_text
 from app.drawing.placing import CLEAR, STACKED, Placed, Span, Wish
 from app.drawing.shapes import Box, Part, PartKind, Point
-from app.drawing.sketch import Sketch
+from app.drawing.sketch import Sketch, Toward
 from app.drawing.words import (
     bedding_text,
     distributed_text,
@@ -48,12 +48,18 @@ def draw_loads(sketch: Sketch, wishes: list[Wish]) -> None:
     rows = sketch.rows.labels
     others = sketch.texts_in(rows)
     for label in _placed(sketch, wishes, others):
-        if not sketch.is_free(label.wish, label.span, rows[label.row], "high", others):
+        toward = _toward(label.wish)
+        if not sketch.is_free(label.wish, label.span, rows[label.row], toward, others):
             sketch.picture.left_out += 1
         elif label.wish.part.kind == "force":
             sketch.text(label.wish, label.span, rows[label.row], "high", "small_strong", "ink")
         else:
-            sketch.text(label.wish, label.span, rows[label.row], "high")
+            sketch.text(label.wish, label.span, rows[label.row], toward)
+
+
+def _toward(wish: Wish) -> Toward:
+    """The side of its row that a label keeps to: the member's, but for weight, which is of no place on it."""
+    return "low" if wish.part.kind == "gravity" else "high"
 
 
 def _placed(sketch: Sketch, wishes: list[Wish], others: list[Box]) -> list[Placed]:
@@ -62,7 +68,7 @@ def _placed(sketch: Sketch, wishes: list[Wish], others: list[Box]) -> list[Place
     before = sketch.picture.left_out
     found = sketch.placed(wishes, rows, clear)
     weights = [label for label in found if label.wish.part.kind == "gravity"]
-    stands = any(sketch.is_free(w.wish, w.span, rows[w.row], "high", others) for w in weights)
+    stands = any(sketch.is_free(w.wish, w.span, rows[w.row], _toward(w.wish), others) for w in weights)
     if stands or all(wish.part.kind != "gravity" for wish in wishes):
         return found
     sketch.picture.left_out = before

@@ -20,6 +20,7 @@ QFrame#rule {{ color: {edge}; }}
 QToolButton {{ border: 1px solid transparent; border-radius: 3px; padding: 4px 9px; color: {ink}; }}
 QToolButton:hover, QToolButton:pressed {{ background: {select_fill}; }}
 QToolButton:focus {{ border: 1px solid {select}; }}
+QToolButton#hidden_line {{ color: {quiet}; padding: 2px 14px; text-align: left; }}
 QToolButton:disabled {{ color: {quiet}; }}
 QTabWidget::pane {{ border: none; background: {card}; }}
 QTabWidget {{ background: {card}; }}

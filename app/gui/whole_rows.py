@@ -21,6 +21,7 @@ class WholeRows(QObject):
         self._soon.setInterval(0)
         self._soon.timeout.connect(self.fit)
         splitter.splitterMoved.connect(lambda _place, _index: self._soon.start())
+        tables.hidden_line.came_or_went.connect(self._soon.start)
         splitter.installEventFilter(self)
 
     def eventFilter(self, _watched: QObject, event: QEvent) -> bool:

@@ -11,7 +11,7 @@ from app.gui.settings import Settings
 from app.gui.tables.shown_columns import ColumnsMenu
 from app.gui.view import Shown
 from app.hand.cells import Cell
-from tests.gui.hand import cell, go_to, text_at
+from tests.gui.hand import cell, enter, go_to, text_at
 
 KEY = Qt.Key
 
@@ -159,3 +159,52 @@ def test_a_cell_that_is_gone_to_is_shown(window, table):
     window.tables.show_cell(Cell("segments", 2, "section"))
     assert table.currentIndex() == cell(table, 3, "section")
     assert "section" in shown(table)
+
+
+class TestHiddenAndNotEmpty:
+    """A hidden column that holds something is named under the table and in the menus."""
+
+    @pytest.mark.parametrize(("text", "said"), [("20", True), ("0", False)])
+    def test_is_named_under_the_table_in_front(self, window, table, qtbot, text, said):
+        line = window.tables.hidden_line
+        enter(table, 2, "bedding", text)
+        hide(table, "bedding")
+        line.look()
+        assert line.isVisible() is said
+        if said:
+            assert line.text() == "Hidden and not empty: Bedding" == line.accessibleName()
+            window.tables.tabs.setCurrentIndex(4)
+            qtbot.waitUntil(lambda: not line.isVisible())
+            window.tables.tabs.setCurrentIndex(0)
+            qtbot.waitUntil(line.isVisible)
+            window.document.undo()
+            qtbot.waitUntil(lambda: not line.isVisible())
+
+    def test_supports_are_something_and_free_joints_are_not(self, window, table, qtbot):
+        hide(table, "support")
+        qtbot.waitUntil(window.tables.hidden_line.isVisible)
+        window.files.new()
+        go_to(table, 1, "length")
+        qtbot.waitUntil(lambda: window.tables.hidden_line.text().endswith("Support at far end"))
+        hide(table, "support")
+        enter(table, 0, "support", "free")
+        hide(table, "support")
+        qtbot.waitUntil(lambda: not window.tables.hidden_line.isVisible())
+
+    def test_a_click_offers_the_columns_where_it_is_marked(self, window, table, qtbot):
+        hide(table, "support", "bedding")
+        line = window.tables.hidden_line
+        qtbot.waitUntil(line.isVisible)
+        QTest.mouseClick(line, Qt.MouseButton.LeftButton)
+        menu = QApplication.activePopupWidget()
+        texts = [action.text() for action in menu.actions()]
+        assert "Support at far end (not empty)" in texts
+        assert "Bedding" in texts
+        menu.close()
+
+    def test_rows_stay_whole_beside_it(self, window, table, qtbot):
+        hide(table, "support")
+        line, row = window.tables.hidden_line, table.verticalHeader().defaultSectionSize()
+        qtbot.waitUntil(lambda: line.isVisible() and table.viewport().height() % row == 0)
+        hide(table, "support")
+        qtbot.waitUntil(lambda: not line.isVisible() and table.viewport().height() % row == 0)

@@ -144,9 +144,7 @@ class TestJoint:
         grown = before
         for _ in range(12):
             either.move(40, CTRL)
-            low, high = window.sheet.places.axes.along_of(window.sheet.places.drawing)
-            end = window.sheet.ruler.pixel(sum(lengths(window, preview=True)))
-            assert low <= end <= high
+            assert window.sheet.ruler.holds(sum(lengths(window, preview=True)))
             assert lengths(window, preview=True)[-1] > grown
             grown = lengths(window, preview=True)[-1]
         assert handle_of(window, "joint", last, "end")

@@ -67,11 +67,12 @@ def _below(text: str, rect: QRectF, axes: Axes, size_of: SizeOf) -> Iterator[tup
 
 
 def _wordings(text: str, width: float, size_of: SizeOf) -> list[str]:
-    """In one line, a line for each part, and in lines that fit whatever is said; those that fit."""
+    """In one line, in one for each part, the name below; else in lines that fit whatever is said."""
     parts = text.split(LEGEND_BETWEEN)
     lines = "\n".join(_cut(line, width, size_of) for part in parts for line in _lines(part, width, size_of))
-    fitting = [words for words in (text, "\n".join(parts)) if size_of(words).width() <= width]
-    return list(dict.fromkeys([*fitting, lines]))
+    behind_colon = "\n".join(parts).replace(": ", ":\n")
+    fitting = [w for w in (text, "\n".join(parts), behind_colon) if size_of(w).width() <= width]
+    return list(dict.fromkeys(fitting)) or [lines]
 
 
 def _lines(part: str, width: float, size_of: SizeOf) -> list[str]:

@@ -18,6 +18,7 @@ from app.gui.tables.paste import Block, Texts
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
 from app.gui.tables.rows import Index, RowsModel
 from app.gui.tables.thousands import typed_note
+from app.support_entry import supports_entry
 from app.units import symbol
 from app.words import tr
 
@@ -116,6 +117,15 @@ class TableModel(RowsModel):
         if self.is_adding(row):
             return "" if column == 0 else None
         return self._columns[column].entry(self._rows[row], self._sight)
+
+    def is_entered(self, place: int) -> bool:
+        """Whether any cell of a column holds something that could be left out."""
+        column, nothing = self._columns[place], ("", "0", supports_entry((), self._sight.system))
+        last = self.rowCount() - (self.table.adding is not None)
+        return column.optional and any(
+            (column.entry(self._rows[row], self._sight) or self._settled_text(row, place)) not in nothing
+            for row in range(last)
+        )
 
     def data(self, index: Index, role: int = Qt.ItemDataRole.DisplayRole) -> Any:
         """One cell's answer for a role."""

@@ -12,6 +12,7 @@ from app.gui.settings import Settings
 from app.gui.tables.blocks import Blocks
 from app.gui.tables.cell_sweeps import CellSweeps
 from app.gui.tables.column import Figures, Sight, Table
+from app.gui.tables.hidden_line import HiddenLine
 from app.gui.tables.model import TableModel
 from app.gui.tables.pages import PLACES, TABLES, Pages
 from app.gui.tables.view import TableView
@@ -47,6 +48,7 @@ class TablesPane(QWidget):
         self.models = {table.key: self._make_model(table) for table in TABLES}
         self.views = Pages(self._make_view)
         self.tabs = self.views.tabs
+        self.hidden_line = HiddenLine(self.views.in_front)
         self._lay_out()
         self.on_document_changed(document.snapshot)
         document.changed.connect(self.on_document_changed)
@@ -56,6 +58,7 @@ class TablesPane(QWidget):
         view.selection_changed.connect(self.on_selection_changed)
         self.views.in_front()
         self.tabs.currentChanged.connect(lambda _index: self.current_table_changed.emit())
+        self.current_table_changed.connect(self.hidden_line.look_soon)
 
     def _make_model(self, table: Table) -> TableModel:
         model = TableModel(table, self._document, self._sight, self)
@@ -64,6 +67,7 @@ class TablesPane(QWidget):
 
     def _make_view(self, table: Table) -> TableView:
         view = TableView(self.models[table.key], self._theme)
+        view.columns_shown.connect(self.hidden_line.look_soon)
         CellSweeps(view, self.sweeper)
         if view.grips is not None:
             view.grips.moved.connect(self.rows_moved)
@@ -88,7 +92,9 @@ class TablesPane(QWidget):
         self.tabs.setCornerWidget(corner)
         whole = QVBoxLayout(self)
         whole.setContentsMargins(0, 0, 0, 0)
+        whole.setSpacing(0)
         whole.addWidget(self.tabs)
+        whole.addWidget(self.hidden_line)
 
     def restore(self, store: Settings) -> None:
         """The columns chosen last time, for the tables that are not made yet as well."""
@@ -190,6 +196,7 @@ class TablesPane(QWidget):
         for view in self.views.made.values():
             view.columns_choice.follow_entries()
             view.widths.widen_if_needed()
+        self.hidden_line.look_soon()
 
     def set_figures(self, figures: Figures) -> None:
         """Show results in the columns that have them."""

@@ -75,6 +75,7 @@ class ShownColumns:
         """Bring the table in line with the choice; an entry that is not taken in is never out of sight."""
         for place, hide in enumerate(self._hidden()):
             self._view.setColumnHidden(place, hide)
+        self._view.columns_shown.emit()
 
     def follow_entries(self) -> None:
         """The same where an entry came or went that keeps a column in sight, taken in or not."""
@@ -91,11 +92,21 @@ class ShownColumns:
         rows = range(model.rowCount() if model.document.snapshot.drafts else 0)
         return any(model.draft(model.index(row, place)) is not None for row in rows)
 
+    def not_seen(self) -> list[Column]:
+        """The hidden columns in which something was entered that could be left out."""
+        model = self._view.table_model
+        hidden = [place for place in range(len(model.columns)) if self._view.isColumnHidden(place)]
+        return [model.columns[place] for place in hidden if model.is_entered(place)]
+
     def fill(self, menu: QMenu) -> None:
         """An entry with a tick for each column, and one to go back to the table's own choice."""
         menu.clear()
+        not_seen = self.not_seen()
         for column in self.choices():
-            action = menu.addAction(column.words.replace("&", "&&"))
+            words = (
+                tr("{column} (not empty)").format(column=column.words) if column in not_seen else column.words
+            )
+            action = menu.addAction(words.replace("&", "&&"))
             action.setCheckable(True)
             action.setChecked(self.is_shown(column))
             action.triggered.connect(lambda _checked, key=column.key: self.turn(key))

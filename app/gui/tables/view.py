@@ -38,6 +38,7 @@ class TableView(QTableView):
     """One table of the document."""
 
     record_chosen = Signal(object)  # frozenset of the records that hold a selected cell
+    columns_shown = Signal()  # or hidden
 
     def __init__(self, model: TableModel, theme: Theme, parent: QWidget | None = None) -> None:
         super().__init__(parent)
