@@ -30,6 +30,7 @@ ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
 THINNEST = 10.0  # of the thickest section, before lengths and sections give way, px
 EDGE = 10.0  # upright, between sections and the edge of the sheet
+HANDLE = 7.0  # upright, between a distributed load, where it is taken hold of, and its label
 BEDDING = 6.0  # for the hatch along the member
 BESIDE = 6.0  # between labels of hanging supports and lengths, and between columns of labels of loads
 CHAIN = 7.0  # to either side of the dimension line
@@ -118,8 +119,9 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
         labels = _label_columns(sketch, wishes.loads, column)
     else:
         labels = _label_rows(sketch, wishes.loads, max(most, 1))
-    brackets = _bracket_rows(sketch, labels[-1][1] + 2.0)
-    top = brackets[-1][1] if brackets else labels[-1][1] + 2.0
+    beside = HANDLE if sketch.frame.upright and _has_distributed(sketch) else 2.0
+    brackets = _bracket_rows(sketch, labels[-1][1] + beside)
+    top = brackets[-1][1] if brackets else labels[-1][1] + beside
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
     edge = EDGE if sketch.frame.upright else 4.0 + foot_of(sketch)

@@ -9,7 +9,8 @@ import pytest
 
 from app.drawing.crowded import left_out_words
 from app.drawing.frame import Detail
-from app.drawing.layout import lay_out
+from app.drawing.handles import handles_of
+from app.drawing.layout import lay_out, sketched
 from app.drawing.member import Member
 from app.drawing.overlay import graded
 from app.drawing.shapes import Box
@@ -93,6 +94,13 @@ class TestUpright:
 
     def test_with_room_nothing_that_acts_is_left_out(self):
         assert kinds(warm_running(SIZES[1], upright=True)).count("warmth") == 12
+
+    def test_the_label_of_a_distributed_load_stands_off_where_it_is_taken_hold_of(self):
+        member = Member.of(read_sample("hoist_shaft"), Shown("combination", "Warm running"))
+        sketch = sketched(member, window_frame(member, SIZES[0], upright=True))
+        (label,) = [t for t in sketch.picture.texts if t.part is not None and t.part.kind == "distributed"]
+        edge = max(handle.centre[0] for handle in handles_of(sketch) if handle.kind == "distributed")
+        assert edge + 5.0 <= label.box.left
 
     def test_a_label_is_broken_into_even_lines(self):
         shown = warm_running(SIZES[0], upright=True)
