@@ -20,7 +20,10 @@ QFrame#rule {{ color: {edge}; }}
 QToolButton {{ border: 1px solid transparent; border-radius: 3px; padding: 4px 9px; color: {ink}; }}
 QToolButton:hover, QToolButton:pressed {{ background: {select_fill}; }}
 QToolButton:focus {{ border: 1px solid {select}; }}
-QToolButton#hidden_line {{ color: {quiet}; padding: 2px 14px; text-align: left; }}
+QPushButton#hidden_line {{ color: {quiet}; padding: 2px 14px; text-align: left;
+    border: 1px solid transparent; }}
+QPushButton#hidden_line:hover {{ background: {select_fill}; }}
+QPushButton#hidden_line:focus {{ border: 1px solid {select}; }}
 QToolButton:disabled {{ color: {quiet}; }}
 QTabWidget::pane {{ border: none; background: {card}; }}
 QTabWidget {{ background: {card}; }}

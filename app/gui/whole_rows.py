@@ -35,6 +35,7 @@ class WholeRows(QObject):
         view = self._tables.current_view()
         if not view.isVisible():
             return
+        self._tables.layout().activate()
         row = view.verticalHeader().defaultSectionSize()
         over = view.viewport().height() % row
         if over:

@@ -1,7 +1,7 @@
 """The column chooser: what is shown, hidden, remembered, and what goes by the columns that are shown."""
 
 import pytest
-from PySide6.QtCore import QPoint, Qt
+from PySide6.QtCore import QEvent, QPoint, Qt
 from PySide6.QtGui import QContextMenuEvent, QGuiApplication
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
@@ -205,6 +205,8 @@ class TestHiddenAndNotEmpty:
     def test_rows_stay_whole_beside_it(self, window, table, qtbot):
         hide(table, "support")
         line, row = window.tables.hidden_line, table.verticalHeader().defaultSectionSize()
-        qtbot.waitUntil(lambda: line.isVisible() and table.viewport().height() % row == 0)
+        qtbot.waitUntil(line.isVisible)
+        QApplication.sendPostedEvents(None, QEvent.Type.LayoutRequest)
+        qtbot.waitUntil(lambda: table.viewport().height() % row == 0)
         hide(table, "support")
         qtbot.waitUntil(lambda: not line.isVisible() and table.viewport().height() % row == 0)

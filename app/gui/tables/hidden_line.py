@@ -8,7 +8,8 @@ from __future__ import annotations
 from collections.abc import Callable
 
 from PySide6.QtCore import QPoint, Qt, QTimer, Signal
-from PySide6.QtWidgets import QSizePolicy, QToolButton, QWidget
+from PySide6.QtGui import QResizeEvent
+from PySide6.QtWidgets import QPushButton, QSizePolicy, QWidget
 
 from app.gui.tables.view import TableView
 from app.words import tr
@@ -16,7 +17,7 @@ from app.words import tr
 BETWEEN = ", "
 
 
-class HiddenLine(QToolButton):
+class HiddenLine(QPushButton):
     """Names the columns; not there while there is nothing to say."""
 
     came_or_went = Signal()
@@ -51,6 +52,11 @@ class HiddenLine(QToolButton):
         if self.isHidden() is bool(found):
             self.setVisible(bool(found))
             self.came_or_went.emit()
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """It has been given its place: now the rows above have theirs."""
+        super().resizeEvent(event)
+        self.came_or_went.emit()
 
     def _offer(self) -> None:
         if self._view is not None:
