@@ -10,15 +10,10 @@ from numpy.testing import assert_allclose
 
 from app import edits
 from app.edits import EditError
-from app.gui.tables.column import Sight
-from app.gui.tables.materials import MATERIALS
-from app.gui.tables.reasons import NotTaken
 from solver.model import BondedPart, Material, RoundSection
 from solver.solve import solve
 from tests.members import Part, area, case, member
 from tests.solver.test_bonded import composite_projects
-
-SIGHT = Sight("mm-N-MPa", None)
 
 
 def two_segments(second=None):
@@ -75,12 +70,6 @@ def test_a_new_segment_goes_on_with_the_parts_of_its_neighbour():
 def test_renaming_a_material_renames_it_in_the_parts():
     renamed = edits.set_value(two_segments(), ("materials", 1, "name"), "Core")
     assert [segment.bonded[0].material for segment in renamed.segments] == ["Core", "Core"]
-
-
-def test_a_material_that_a_part_is_made_of_is_not_deleted():
-    with pytest.raises(NotTaken, match="A has a bonded part of of B"):
-        MATERIALS.delete(two_segments(), (1,), SIGHT)
-    assert len(MATERIALS.delete(two_segments(), (2,), SIGHT).materials) == 2
 
 
 @pytest.mark.parametrize("edit", [edits.mirror_member, lambda p: edits.repeat_segments(p, 0, 1, 1)])
