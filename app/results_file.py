@@ -15,6 +15,7 @@ from app.phrases import reason_text
 from app.project_file import sha256
 from app.version import PROGRAM
 from solver.arrays import FloatArray
+from solver.buckling_mode import Mode
 from solver.checks import Check
 from solver.model import StopSupport
 from solver.outcomes import SupportOutcome, support_outcomes
@@ -22,6 +23,7 @@ from solver.results import PartResults, Results
 
 FORMAT = "barwright-results"
 VERSION = 1
+MODE_PARTS = 8  # of every segment, at whose ends the mode of buckling is told
 
 Values = dict[str, Any]
 
@@ -29,7 +31,7 @@ Values = dict[str, Any]
 _CHECK_KEYS = {"start": "from", "end": "to"}
 _CHECK_FIELDS = (
     "check", "combination", "segment", "part", "material", "joint", "start", "end", "position",
-    "value", "limit", "utilisation", "status", "reason",
+    "value", "limit", "utilisation", "status", "reason", "waiver",
     "factor", "nominal", "nominal_to", "amplitude", "mean", "ultimate",
 )  # fmt: skip
 # of a segment, all of them arrays by state and segment
@@ -88,7 +90,31 @@ def _state(results: Results, state: int) -> Values:
             "potential": _plain(solution.potential[state]),
         },
         "error_bound": _plain(solution.error_bound[state]),
+        "stability": _stability(results, state),
     }
+
+
+def _stability(results: Results, state: int) -> Values:
+    """Status, factor and mode, or the reason why there are none; the mode is a shape, its largest value 1."""
+    found = results.stability[state]
+    if found is None or found.status == "no_compression":
+        return {"status": "no_compression", "critical_factor": None, "mode": []}
+    values: Values = {
+        "status": found.status,
+        "critical_factor": _plain(found.critical_factor),
+        "mode": [] if found.mode is None else _mode(results, found.mode),
+    }
+    return values if found.reason is None else values | {"reason": reason_text(found.reason)}
+
+
+def _mode(results: Results, mode: Mode) -> list[Values]:
+    """The shape at the joints and at even places within every segment."""
+    count = len(results.chain.length)
+    segment = np.repeat(np.arange(count), MODE_PARTS)
+    fraction = np.tile(np.arange(MODE_PARTS) / MODE_PARTS, count)
+    segment, fraction = np.append(segment, count - 1), np.append(fraction, 1.0)
+    position = results.position[segment] + fraction * results.chain.length[segment]
+    return _rows({"position": _column(position), "value": _column(mode.at(segment, fraction))})
 
 
 def _joints(results: Results, state: int) -> list[Values]:

@@ -1,4 +1,5 @@
-"""A cross-section as typed text: ⌀40, a taper ⌀75→⌀52, a tube ⌀60×5 (outside × wall), ▭20×30, or A 1200.
+"""A cross-section as typed text: ⌀40, a taper ⌀75→⌀52, a tube ⌀60×5 (outside × wall), ▭20×30, or A 1200,
+behind which its second moment may stand (`app.second_moment_entry`): A 1200 I 4.5e4.
 
     section := end [→ end]      end := [shape] dimension [(× | bore) dimension]      (dimension: `app.entry`)
 
@@ -21,6 +22,7 @@ from msgspec import UNSET, UnsetType, structs
 
 from app.entry import MOST_CHARACTERS, factor_of, nearest_double, read_number, refusal
 from app.numerals import localised, shortest_decimal
+from app.second_moment_entry import ARROW, area_words, cleared, with_second_moments, without_second_moments
 from app.units import Quantity, decimal_text, entry_text, format_value, input_text, rounds_to, unit
 from app.words import tr
 from solver.model import (
@@ -43,7 +45,6 @@ _SHAPES: Final[dict[str, _Shape]] = {
 _COUNTS: Final[dict[_Shape, tuple[int, str]]] = {
     "round": (1, "d40"), "tube": (2, "d60x5"), "rectangle": (2, "r20x30"), "area": (1, "A 1200"),
 }  # fmt: skip
-_ARROW: Final = re.compile(r"→|->|=>")
 _SECOND: Final = re.compile(r"[×xX]|\bbore\b")
 _NUMBER_START: Final = re.compile(r"\s*[0-9.,(+−-]")
 _LONGEST_WALL: Final = 7
@@ -61,12 +62,21 @@ class _End:
 def parse_section(text: str, system: UnitSystemName, previous: AnySection | None = None) -> AnySection:
     """The section a text names, in SI; raises EntryError.
 
-    `previous` is the section the text replaces: it settles what bare numbers are, keeps what the text cannot
-    say (second moments), and is returned as it is where the text is still its own.
+    `previous` is the section the text replaces: it settles what bare numbers are, keeps second moments where
+    a bare number is an area, and is returned as it is where the text is still its own.
     """
     if previous is not None and text.strip() == section_text(previous, system):
         return previous
-    ends = _read_ends(text.strip())
+    alone, moments = without_second_moments(text.strip())
+    section = _parsed(alone, system, previous)
+    if not moments and alone[:1] in "aA":
+        section = cleared(section)
+    return with_second_moments(section, moments, system)
+
+
+def _parsed(text: str, system: UnitSystemName, previous: AnySection | None) -> AnySection:
+    """The section without what is said of its second moment."""
+    ends = _read_ends(text)
     shape = _shape_of(ends, previous)
     if _is_bare_pair(ends) and shape == "tube":
         _refuse_bare_flat(ends, _sizes(ends, "size", system))
@@ -83,7 +93,7 @@ def _read_ends(text: str) -> list[_End]:
         raise refusal("empty", example="d40")
     if len(text) > MOST_CHARACTERS:
         raise refusal("too_long", length=len(text), most=MOST_CHARACTERS)
-    parts = _ARROW.split(text)
+    parts = ARROW.split(text)
     if len(parts) > 2:
         raise refusal("section_unknown", found=text[:30])
     return [_read_end(part.strip()) for part in parts]
@@ -136,7 +146,7 @@ def _refuse_bare_flat(ends: Sequence[_End], sizes: Sequence[Sequence[Fraction]])
 
 def taken_as(text: str, previous: AnySection | None) -> Literal["tube", "rectangle", ""]:
     """What a valid text with a bare pair, such as 60x5, was taken as; empty where it needed no guess."""
-    if not _is_bare_pair(_read_ends(text.strip())):
+    if not _is_bare_pair(_read_ends(without_second_moments(text.strip())[0])):
         return ""
     return "rectangle" if isinstance(previous, RectangleSection) else "tube"
 
@@ -198,7 +208,7 @@ def _rectangle(ends: Sequence[_Sizes], _previous: AnySection | None) -> Rectangl
 
 
 def _area(ends: Sequence[_Sizes], previous: AnySection | None) -> AreaSection:
-    """The second moments of an area stay: the text does not speak of them."""
+    """The second moments of an area stay until the text speaks of them."""
     area, area_end = ends[0][0], _end(ends, 0)
     if isinstance(previous, AreaSection):
         return structs.replace(previous, area=area, area_end=area_end)
@@ -243,27 +253,21 @@ def section_label(section: AnySection, system: UnitSystemName) -> str:
 
 def _worded(section: AnySection, number: _Wording, second: Callable[[float, float], str]) -> str:
     """The section as text, start and end where a dimension of the end is given."""
+    if isinstance(section, AreaSection):
+        return area_words(section, number)
 
     def written(sizes: _Sizes) -> str:
-        match section:
-            case AreaSection():
-                return number(sizes[0], "area")
-            case RoundSection():
-                return f"⌀{number(sizes[0], 'size')}"
-            case TubeSection():
-                return f"⌀{number(sizes[0], 'size')}{second(sizes[0], sizes[1])}"
-            case RectangleSection():
-                return f"▭{number(sizes[0], 'size')}×{number(sizes[1], 'size')}"
+        first = number(sizes[0], "size")
+        if isinstance(section, RectangleSection):
+            return f"▭{first}×{number(sizes[1], 'size')}"
+        return f"⌀{first}" if len(sizes) == 1 else f"⌀{first}{second(sizes[0], sizes[1])}"
 
-    ends = "→".join(map(written, _ends(section)))
-    return f"A {ends}" if isinstance(section, AreaSection) else ends
+    return "→".join(map(written, _ends(section)))
 
 
-def _ends(section: AnySection) -> list[_Sizes]:
+def _ends(section: RoundSection | TubeSection | RectangleSection) -> list[_Sizes]:
     """The dimensions at the start, and at the end where the section names one of them there."""
     match section:
-        case AreaSection(area=area, area_end=area_end):
-            pairs = [(area, area_end)]
         case RoundSection(diameter=diameter, diameter_end=diameter_end):
             pairs = [(diameter, diameter_end)]
         case TubeSection(outer=outer, outer_end=outer_end, inner=inner, inner_end=inner_end):

@@ -1,8 +1,9 @@
 """The making of checks: one record for each comparison, in the contract's order, and the verdict over them.
 
 By combination, then along the chain (tension before compression), then the peak stresses at shoulders, then
-the limits on displacement, relative displacement and reaction; fatigue, which is of two combinations, comes
-last. The numbers of stresses come compared from `solver.allowables`; here they get their names.
+the limits on displacement, relative displacement and reaction, then stability; fatigue, which is of two
+combinations, comes last. The numbers of stresses come compared from `solver.allowables`; here they get their
+names.
 """
 
 from __future__ import annotations
@@ -23,6 +24,8 @@ from solver.model import Project, supports_of
 from solver.peaks import PeakChecker
 from solver.results import PartResults, State
 from solver.solution import Solution
+from solver.stability import Stability
+from solver.stability_checks import stability_checks
 
 _MISSING: dict[Literal["tension", "compression"], Reason] = {
     "tension": "no_allowable_tension",
@@ -40,6 +43,7 @@ class Checker:
     position: FloatArray
     stress: StressChecks  # by segment, or by part where there are `parts`
     peaks: PeakChecker
+    stability: tuple[Stability | None, ...]
     fatigue: FatigueChecker
     parts: PartResults | None = None
     beside: StressChecks | None = None  # of the companions' segments, one companion after the other
@@ -61,6 +65,7 @@ class Checker:
         yield from self._displacements(index, name, joints)
         yield from self._relatives(index, name, joints)
         yield from self._reactions(index, name, joints)
+        yield from stability_checks(self.project, self.position, self.stability[index], name)
 
     def _stresses(self, index: int, name: str) -> Iterator[Check]:
         tension = list(_compared(self.stress.tension, index))
@@ -192,8 +197,11 @@ def _along_the_chain(project: Project, parts: PartResults) -> tuple[list[_Subjec
 
 
 def verdict_of(checks: tuple[Check, ...]) -> Verdict:
-    """`fail` if any check fails; else `incomplete` if any was not made, or none exists; else `pass`."""
-    statuses = {check.status for check in checks}
+    """`fail` if any check fails; else `incomplete` if any was not made, or none was; else `pass`.
+
+    A waived check counts neither way, but alone it is no check.
+    """
+    statuses = {check.status for check in checks} - {"waived"}
     if "fail" in statuses:
         return "fail"
     return "pass" if statuses == {"pass"} else "incomplete"

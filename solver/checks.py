@@ -11,10 +11,18 @@ from typing import Final, Literal, TypeAlias
 from msgspec import Struct
 
 CheckKind: TypeAlias = Literal[
-    "tension", "compression", "peak", "displacement", "relative", "reaction", "fatigue"
+    "tension", "compression", "peak", "displacement", "relative", "reaction", "stability", "fatigue"
 ]
-Status: TypeAlias = Literal["pass", "fail", "not_made"]
+Status: TypeAlias = Literal["pass", "fail", "not_made", "waived"]
 Verdict: TypeAlias = Literal["pass", "fail", "incomplete"]
+StabilityReason: TypeAlias = Literal[
+    "no_lateral",
+    "lateral_insufficient",
+    "no_second_moment",
+    "no_stability_factor",
+    "not_settled",
+    "companion_compressed",
+]
 Reason: TypeAlias = Literal[
     "no_allowable_tension",
     "no_allowable_compression",
@@ -27,6 +35,12 @@ Reason: TypeAlias = Literal[
     "shoulder_out_of_range",  # with `ratio`
     "shoulder_bonded",
     "fatigue_companion",
+    "no_lateral",
+    "lateral_insufficient",
+    "no_second_moment",
+    "no_stability_factor",
+    "not_settled",
+    "companion_compressed",
 ]
 
 STRESSES: Final = ("tension", "compression")  # the checks of stress by segment
@@ -47,6 +61,9 @@ class Check(Struct, frozen=True):
     shoulder alike; `between` are the combinations between which the stress swings (`combination` is the
     second), its `value` is the amplitude and its `limit` the one endured without a mean, so that
     `utilisation` is more than their ratio where there is a tensile `mean`.
+    Stability compares the other way round: `value` is the critical factor, `limit` the least that is
+    required, and `position` where the member bends out most. One that was not made is `waived` where the
+    engineer does without it, `waiver` being the reason given; it is neither passed nor failed.
     """
 
     check: CheckKind
@@ -63,6 +80,7 @@ class Check(Struct, frozen=True):
     limit: float | None = None
     utilisation: float | None = None
     reason: Reason | None = None
+    waiver: str | None = None
     # of shoulders and fatigue alone
     between: tuple[str, str] | None = None  # the file's `from` and `to`
     factor: float | None = None  # Kt

@@ -15,6 +15,7 @@ from solver.chain import Chain, Companions, Loads
 from solver.checks import Check, Verdict
 from solver.model import Project
 from solver.solution import Solution
+from solver.stability import Stability
 
 StateKind: TypeAlias = Literal["combination", "case", "unloaded"]
 
@@ -142,6 +143,7 @@ class Results:
     governing: Check | None
     segment_mass: FloatArray  # (n,) kg
     mass: float  # kg, companions included
+    stability: tuple[Stability | None, ...]  # by state, None where it is not checked at all
     companions: CompanionResults | None = None
 
     @property

@@ -30,10 +30,11 @@ from solver.part_results import (
     utilisation_of_segments,
 )
 from solver.peaks import PeakChecker
-from solver.results import Results, State
+from solver.results import CompanionResults, Results, State
 from solver.segment_results import segment_results
 from solver.shoulders import notches
 from solver.solution import Solution
+from solver.stability import Assessor, Stability, compressed_states
 from solver.validation import unsolvable
 
 
@@ -117,7 +118,10 @@ def _results(
     peaks = PeakChecker(project, position, stress, shoulders)
     fatigue = FatigueChecker(project, chain, loads, states, solution, position, shoulders)
     companions, others = (None, None) if row is None else companion_results(project, states, row, zero)
-    checker = Checker(project, states, solution, position, stress_checks, peaks, fatigue, parts, others)
+    stability = _stability(project, (chain, solution), states, force, companions, cancelled)
+    checker = Checker(
+        project, states, solution, position, stress_checks, peaks, stability, fatigue, parts, others
+    )
     checks = checker.checks()
     segment_mass = frozen(_segment_mass(chain))
     return Results(
@@ -142,8 +146,28 @@ def _results(
         governing=governing_of(checks),
         segment_mass=segment_mass,
         mass=float(np.sum(segment_mass) + (0.0 if companions is None else np.sum(companions.segment_mass))),
+        stability=stability,
         companions=companions,
     )
+
+
+def _stability(
+    project: Project,
+    solved: tuple[Chain, Solution],
+    states: tuple[State, ...],
+    force: Extremes,
+    companions: CompanionResults | None,
+    cancelled: Callable[[], bool],
+) -> tuple[Stability | None, ...]:
+    """Of the checked states, which come first; None for the others."""
+    checked = sum(state.checked for state in states)
+    compressed = compressed_states((force.largest, force.smallest), solved[1].force_bound)
+    beside = np.zeros_like(compressed)
+    if companions is not None:
+        forces = companions.segments.force_max, companions.segments.force_min
+        beside = compressed_states(forces, companions.solution.force_bound)
+    found = Assessor(project, *solved, cancelled).states(compressed[:checked], beside[:checked])
+    return (*found, *(None,) * (len(states) - checked))
 
 
 def _ranges(

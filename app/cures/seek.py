@@ -23,7 +23,7 @@ from solver.errors import InputError, never
 from solver.model import Project
 from solver.results import Results
 
-UNSOUGHT: Final = ("peak", "fatigue", "fatigue_joint")
+UNSOUGHT: Final = ("peak", "fatigue", "fatigue_joint", "stability")
 MOST_SPRINGS: Final = 3
 MOST_SECTIONS: Final = 3
 MOST_CURES: Final = 2
@@ -65,7 +65,8 @@ def is_small(results: Results) -> bool:
 def seek(results: Results, subject: Subject, cancelled: Callable[[], bool] = never) -> Cures:
     """The cures of a subject that fails in these results. Raises Cancelled.
 
-    Of peak stresses and fatigue none is sought: a radius or a surface helps there, not another size.
+    Of peak stresses and fatigue none is sought: a radius or a surface helps there, not another size. Nor of
+    stability, where it is the supports that help most.
     """
     if subject.kind in UNSOUGHT:
         return Cures(subject, ())

@@ -17,6 +17,7 @@ from app.edits.companions import (
     remove_companions,
     span_joints,
 )
+from app.edits.lateral import hold_sideways
 from app.edits.loads import set_joint_load, set_segment_load
 from app.edits.member import delete_segments, insert_segment, move_segments, reverse_member
 from app.edits.mirroring import mirror_member
@@ -43,6 +44,7 @@ __all__ = [
     "fit_companion",
     "free_joints",
     "hold_joint",
+    "hold_sideways",
     "insert_segment",
     "is_unfit",
     "join_equal_neighbours",

@@ -10,7 +10,7 @@ from collections.abc import Iterator
 from fractions import Fraction
 from itertools import count, pairwise, zip_longest
 
-from msgspec import structs
+from msgspec import UnsetType, structs
 
 from app.edits.bonded import can_be_united, sections_cut, sections_united
 from app.edits.checking import EditError, checked, refused
@@ -102,6 +102,8 @@ def carried(project: Project, index: int) -> Iterator[str]:
         yield "support"
     if joint.shoulder:
         yield "shoulder"
+    if not isinstance(joint.lateral, UnsetType):
+        yield "lateral support"
     if any(load.joint == joint.mark for case in project.load_cases for load in case.joint_loads):
         yield "load"
     if any(getattr(x, end) == joint.mark for key, end in LIMIT_JOINTS for x in getattr(project.limits, key)):

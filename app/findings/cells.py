@@ -17,6 +17,11 @@ _ALLOWABLES: Final[dict[Reason, str]] = {
     "no_allowable_peak": "allowable_peak",
     "no_endurance": "endured_amplitude",
 }
+_OF_STABILITY: Final[dict[Reason, Cell]] = {
+    "no_lateral": Cell("joints", 0, "lateral_translation"),
+    "lateral_insufficient": Cell("joints", 0, "lateral_translation"),
+    "no_stability_factor": Cell("limits stability", 0, "stability_factor"),
+}
 
 
 def cell_of_finding(of: Subject | NotMade | Cell, project: Project) -> Cell | None:
@@ -32,6 +37,8 @@ def _of_subject(subject: Subject, project: Project) -> Cell | None:
         return _cell("joints", "shoulder", project.joints, lambda joint: (joint.mark,) == marks)
     if subject.kind in ("stress", "fatigue"):
         return _cell("segments", "section", project.segments, lambda segment: (segment.mark,) == marks)
+    if subject.kind == "stability":
+        return Cell("limits stability", 0, "stability_factor")
     limits = getattr(project.limits, subject.kind)
     if subject.kind == "relative":
         return _cell("limits relative", "limit", limits, lambda limit: (limit.start, limit.end) == marks)
@@ -42,6 +49,10 @@ def _of_missing(missing: NotMade, project: Project) -> Cell | None:
     if missing.reason in _ALLOWABLES:
         column = _ALLOWABLES[missing.reason]
         return _cell("materials", column, project.materials, lambda found: found.name == missing.material)
+    if missing.reason in _OF_STABILITY:
+        return _OF_STABILITY[missing.reason]
+    if missing.reason == "no_second_moment" and missing.segments:
+        return Cell("segments", missing.segments[0], "section")
     column = "support" if missing.reason == "no_support" else "shoulder"
     return Cell("joints", missing.joints[0], column) if missing.joints else None
 

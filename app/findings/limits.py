@@ -9,10 +9,11 @@ from app.findings.records import LimitFinding, NotMade
 from app.findings.subjects import subject_of, worst_first
 from app.phrases.checks import NOT_MADE, check_sentence, remedy_text, state_text, why_text
 from app.phrases.shoulders import not_made_words
+from app.phrases.stability import factor_text
 from app.units import utilisation_text
 from app.words import tr
 from solver.checks import STRESSES, Check, Reason
-from solver.model import Project, UnitSystemName
+from solver.model import UnitSystemName
 from solver.results import Results
 
 _Group = tuple[Reason, str, str, float | None]  # reason, material, kind, and how far out of range
@@ -53,12 +54,11 @@ def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:
     materials = {segment.mark: segment.material for segment in results.project.segments}
     groups: dict[_Group, list[Check]] = {}
     for check in among:
-        if check.reason is not None:
+        if check.reason is not None and check.waiver is None:
             material = check.material or materials.get(check.segment or "", "")
             groups.setdefault((check.reason, material, _kind(check), check.ratio), []).append(check)
     return tuple(
-        _not_made(reason, material, checks, results.project)
-        for (reason, material, *_), checks in groups.items()
+        _not_made(reason, material, checks, results) for (reason, material, *_), checks in groups.items()
     )
 
 
@@ -67,8 +67,9 @@ def _kind(check: Check) -> str:
     return "" if check.check in STRESSES else subject_of(check).kind
 
 
-def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: Project) -> NotMade:
-    segments = {check.segment for check in checks if check.joint is None}
+def _not_made(reason: Reason, material: str, checks: Sequence[Check], results: Results) -> NotMade:
+    project = results.project
+    segments = {check.segment for check in checks if check.joint is None} | _unknown(reason, results)
     joints = {check.joint for check in checks}
     states = list(dict.fromkeys(map(state_text, checks)))
     places = list(dict.fromkeys(c.segment for c in checks if c.joint is None and c.segment is not None))
@@ -78,7 +79,10 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: P
         reason=reason,
         material=material,
         sentence=template.format(
-            places=listed(places), states=listed(states), reason=why_text(reason, checks[0].ratio)
+            places=listed(places),
+            states=listed(states),
+            reason=why_text(reason, checks[0].ratio),
+            factor=_least_factor(checks),
         ),
         remedy=remedy_text(reason, material),
         count=len(checks),
@@ -86,3 +90,17 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], project: P
         segments=tuple(i for i, s in enumerate(project.segments) if s.mark in segments),
         joints=tuple(i for i, j in enumerate(project.joints) if j.mark in joints),
     )
+
+
+def _unknown(reason: Reason, results: Results) -> set[str | None]:
+    """The marks of the segments whose second moment stability lacks."""
+    if reason != "no_second_moment":
+        return set()
+    places = {place for found in results.stability if found is not None for place in found.segments}
+    return {results.project.segments[place].mark for place in places}
+
+
+def _least_factor(checks: Sequence[Check]) -> str:
+    """The smallest critical factor of checks that have one and were not made all the same."""
+    found = [check.value for check in checks if check.check == "stability" and check.value is not None]
+    return factor_text(min(found)) if found else ""

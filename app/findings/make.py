@@ -10,10 +10,11 @@ from app.findings.contacts import contact_findings
 from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
 from app.findings.records import Findings
+from app.findings.stability import stability_notes
 from app.findings.stress import segment_findings
-from app.phrases.checks import has_compression, verdict_detail, verdict_line
+from app.phrases.checks import verdict_detail, verdict_line
 from app.phrases.contacts import SUPERPOSITION
-from app.phrases.notes import BEDDING, BUCKLING, numerical_error_sentence
+from app.phrases.notes import BEDDING, numerical_error_sentence
 from app.units import format_value
 from app.words import tr
 from solver.model import UnitSystemName
@@ -55,9 +56,7 @@ def findings_in(found: Findings, results: Results, state: str, system: UnitSyste
 
 def notes(results: Results) -> tuple[str, ...]:
     """What this calculation does not say, and what was entered in vain, where it matters for this member."""
-    standing = []
-    if has_compression(results.checks):
-        standing.append(tr(BUCKLING))
+    standing = list(stability_notes(results))
     if (results.chain.bedding > 0).any():
         standing.append(tr(BEDDING))
     if has_stops(results.project):

@@ -14,13 +14,16 @@ from solver.checks import Check
 
 # Of fatigue, that of a segment and that of a shoulder at a joint.
 SubjectKind: TypeAlias = Literal[
-    "stress", "peak", "displacement", "relative", "reaction", "fatigue", "fatigue_joint"
+    "stress", "peak", "displacement", "relative", "reaction", "fatigue", "fatigue_joint", "stability"
 ]
 
 
 @dataclass(frozen=True, slots=True)
 class Subject:
-    """What checks are of: a segment, or a joint (two, for a relative displacement), by mark."""
+    """What checks are of: a segment, or a joint (two, for a relative displacement), by mark.
+
+    Stability is the whole member's and has no mark.
+    """
 
     kind: SubjectKind
     marks: tuple[str, ...]
@@ -32,6 +35,8 @@ def subject_of(check: Check) -> Subject:
         return Subject("stress", (str(check.segment),))
     if check.check == "fatigue":
         return _fatigue(check)
+    if check.check == "stability":
+        return Subject("stability", ())
     marks = (check.joint,) if check.joint is not None else (check.start, check.end)
     return Subject(check.check, tuple(map(str, marks)))
 

@@ -23,7 +23,9 @@ _TABLE_TOPICS = {
     "combinations": ("loads", "combinations"),
     "companions": ("loads", "companions"),
     "materials": ("entering", "materials"),
-    **dict.fromkeys(("limits displacement", "limits relative", "limits reaction"), ("loads", "limits")),
+    **dict.fromkeys(
+        ("limits displacement", "limits relative", "limits reaction", "limits stability"), ("loads", "limits")
+    ),
 }
 
 

@@ -1,16 +1,17 @@
 """The sentences of checks and of the verdict over them.
 
-Careful with what is said: "Passes" alone stands only where every check was made and passes and nothing in the
-member is compressed; since buckling is not covered, compression is named in the same line.
+Careful with what is said: "Passes" alone stands only where every check was made and passes; a waived check is
+named in the same line.
 """
 
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Mapping
 from typing import Final, Literal
 
 from app.numerals import reading, rounded
+from app.phrases import stability
 from app.phrases.fatigue import fatigue_place, fatigue_sentence, fatigue_subject, swing_text
 from app.phrases.shoulders import REASONS_OF_SHOULDERS, REMEDIES_OF_SHOULDERS, ratio_facts
 from app.phrases.states import state_words
@@ -28,6 +29,7 @@ QUANTITIES: Final[Mapping[CheckKind, Quantity]] = {
     "displacement": "displacement",
     "relative": "displacement",
     "reaction": "force",
+    "stability": "factor",
 }
 
 CHECKS: Final[Mapping[CheckKind, str]] = {
@@ -46,6 +48,7 @@ CHECKS: Final[Mapping[CheckKind, str]] = {
         " {combination}"
     ),
     "reaction": later("Joint {joint}: reaction {value} of {limit} {unit}, {utilisation}, {combination}"),
+    "stability": stability.CHECK,
 }
 
 # Of a stress beside a mark and a utilisation of its own.
@@ -61,6 +64,7 @@ SUBJECTS: Final[Mapping[CheckKind, str]] = {
     "displacement": later("Joint {joint}: displacement"),
     "relative": later("Joints {start} to {end}: relative displacement"),
     "reaction": later("Joint {joint}: reaction"),
+    "stability": stability.SUBJECT,
 }
 
 # Why a check was not made.
@@ -69,6 +73,7 @@ REASONS: Final[Mapping[Reason, str]] = {
     "no_allowable_tension": later("the material has no allowable stress in tension"),
     "no_allowable_compression": later("the material has no allowable stress in compression"),
     "no_support": later("the joint has no support and so no reaction"),
+    **stability.REASONS,
 }
 
 # What to enter for it; a second wording names the material.
@@ -86,6 +91,7 @@ REMEDIES: Final[Mapping[Reason, tuple[str, str]]] = {
         later("give it a support or take the limit out"),
         later("give it a support or take the limit out"),
     ),
+    **{reason: (remedy, remedy) for reason, remedy in stability.REMEDIES.items()},
 }
 
 # Several checks not made for the same reason, in one sentence; those of shoulders and fatigue have their own.
@@ -93,6 +99,7 @@ NOT_MADE: Final[Mapping[Reason, str]] = {
     "no_allowable_tension": later("Not checked: tension in {places} ({states})"),
     "no_allowable_compression": later("Not checked: compression in {places} ({states})"),
     "no_support": later("Not checked: reaction at joint {places} ({states})"),
+    **stability.NOT_MADE,
 }
 
 _PLACES: Final[Mapping[CheckKind, str]] = {
@@ -102,6 +109,7 @@ _PLACES: Final[Mapping[CheckKind, str]] = {
     "displacement": later("joint {joint}, {combination}"),
     "relative": later("joints {start} to {end}, {combination}"),
     "reaction": later("joint {joint}, {combination}"),
+    "stability": later("stability, {combination}"),
 }
 
 
@@ -129,7 +137,10 @@ def _filled(
     quantity = QUANTITIES[check.check]
     # A stress has its sign in words, tension or compression.
     size = abs(value) if check.check in STRESSES else value
-    value_text, limit_text = compared(size, limit, check.status, quantity, system)
+    if check.check == "stability":
+        value_text, limit_text = stability.factor_texts(value, limit, check.status)
+    else:
+        value_text, limit_text = compared(size, limit, check.status, quantity, system)
     return tr(template).format(
         **_names(check),
         value=value_text,
@@ -143,9 +154,16 @@ def _filled(
 
 def not_made_sentence(check: Check) -> str:
     """A check that was not made, with the reason and what to enter."""
+    if check.waiver is not None:
+        return _waived_sentence(check, check.waiver)
     sentence = tr("{subject} not checked, {combination}: {reason}")
     reason = reason_text(check.reason, check.ratio) if check.reason else tr("it could not be made")
     return sentence.format(subject=subject_text(check), combination=state_text(check), reason=reason)
+
+
+def _waived_sentence(check: Check, reason: str) -> str:
+    words = tr("{subject} waived, {combination}: {reason}")
+    return words.format(subject=subject_text(check), combination=state_text(check), reason=reason)
 
 
 def subject_text(check: Check) -> str:
@@ -245,25 +263,20 @@ def _names(check: Check) -> dict[str, str | None]:
     }
 
 
-def has_compression(checks: Sequence[Check]) -> bool:
-    """Whether any checked state compresses any segment: such a stress always has a check, made or not."""
-    return any(check.check == "compression" for check in checks)
-
-
 def verdict_line(results: Results) -> str:
     """The verdict, which never flatters: what speaks against a pass stands in the same line.
 
-    Compression takes its note along, since buckling is not covered, and so does a state without any load. No
-    note where the line says that the member does not pass, or nothing was checked.
+    A waived check is named, and so is a state without any load. No note where the line says that the member
+    does not pass, or nothing was checked.
     """
-    made = any(check.status != "not_made" for check in results.checks)
+    made = any(check.status in ("pass", "fail") for check in results.checks)
     notes = _reservations(results) if made and results.verdict != "fail" else ()
     return "; ".join((_verdict(results), *notes))
 
 
 def _reservations(results: Results) -> Iterator[str]:
-    if has_compression(results.checks):
-        yield tr("buckling not checked")
+    if any(check.status == "waived" for check in results.checks):
+        yield tr("stability waived")
     names = [state.name for state in results.unloaded if state.kind != "unloaded"]
     if names:
         yield tr("no load in {names}").format(names=", ".join(names))
@@ -304,6 +317,8 @@ def _counted(results: Results) -> str:
     counts = Counter(check.status for check in results.checks)
     fails = trn("{count} of {{total}} checks fails", "{count} of {{total}} checks fail", counts["fail"])
     fails = fails.format(total=len(results.checks))
-    if not counts["not_made"]:
-        return fails
-    return f"{fails}, {tr('{count} not made').format(count=counts['not_made'])}"
+    if counts["not_made"]:
+        fails += f", {tr('{count} not made').format(count=counts['not_made'])}"
+    if counts["waived"]:
+        fails += f", {tr('{count} waived').format(count=counts['waived'])}"
+    return fails

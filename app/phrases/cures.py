@@ -21,6 +21,7 @@ CHANGES: Final[Mapping[str, str]] = {
     "spring": later("a spring of {value} at joint {mark}"),
 }
 
+# Of what has marks and is no stress.
 SUBJECTS: Final[Mapping[SubjectKind, str]] = {
     "displacement": later("displacement of joint {mark}"),
     "relative": later("relative displacement of joints {mark} to {end}"),
@@ -35,6 +36,8 @@ def subject_words(subject: Subject) -> str:
     """What a check is of, in the middle of a sentence."""
     if subject.kind == "stress":
         return subject.marks[0]
+    if subject.kind == "stability":
+        return tr("stability")
     return tr(SUBJECTS[subject.kind]).format(mark=subject.marks[0], end=subject.marks[-1])
 
 

@@ -11,7 +11,7 @@ EntryRule: TypeAlias = Literal[
     "empty", "too_long", "too_deep", "not_a_number", "two_decimal_signs", "two_numbers", "number_missing",
     "bracket_open", "bracket_stray", "zero_divisor", "too_large", "too_small", "unknown_unit", "near_unit",
     "no_unit", "section_unknown", "section_flat", "section_dimensions", "section_units",
-    "wall_too_thick", "bore_too_wide", "size_not_positive", "section_change",
+    "wall_too_thick", "bore_too_wide", "size_not_positive", "section_change", "second_moment",
     "part_unknown", "part_near", "part_section", "part_shape",
 ]  # fmt: skip
 
@@ -51,6 +51,9 @@ ENTRIES: Final[Mapping[EntryRule, str]] = {
     "part_near": later("“{found}” is no material; did you mean “{nearest}”?"),
     "part_section": later("The section of the part of {name} is missing; type it behind, such as {name} d20"),
     "part_shape": later("Say the shape of “{found}”: d20 (round), d60x5 (a tube), r20x30 or A 1200"),
+    "second_moment": later(
+        "A second moment I stands behind an area, at the start of the segment first, as in {example}"
+    ),
     "section_change": later("Start and end of a segment have the same shape; “{found}” is another"),
 }
 

@@ -129,6 +129,7 @@ _KINDS: Final[Mapping[str, str]] = {
     "shoulder": later("shoulder"),
     "combination": later("combination"), "companion": later("companion"),
     "too_long": later("too long"), "too_short": later("too short"),
+    "lateral support": later("lateral support"),
 }  # fmt: skip
 JSON_SLIPS: Final[Mapping[str, str]] = {
     "empty": later("the file is empty"),

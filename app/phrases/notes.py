@@ -8,7 +8,6 @@ from typing import Final
 from app.numerals import at_most
 from app.words import later, tr
 
-BUCKLING: Final = later("Buckling in compression is not covered by this version: check it separately")
 BEDDING: Final = later(
     "The bedding pushes and pulls alike and has no slip limit: check that the ground can do so"
 )

@@ -7,7 +7,7 @@ from itertools import chain
 
 from app.contacts import has_stops
 from app.sheet.blocks import Block, column, table
-from app.sheet.inputs import support_words
+from app.sheet.joint_inputs import support_words
 from app.sheet.readings import NOTHING, Readings
 from app.words import tr
 from solver.model import Project, StopSupport, supports_of

@@ -14,6 +14,7 @@ from app.sheet.outcomes import outcome_blocks, state_title
 from app.sheet.printable import shortened
 from app.sheet.proof import proof_blocks
 from app.sheet.readings import Readings
+from app.sheet.stability import stability_blocks
 from app.sheet.title import Origin, title_block
 from app.words import language, tr, trc
 from solver.model import Project
@@ -63,6 +64,8 @@ def _math_words() -> dict[str, Value]:
         "peak": trc("index in a formula", "peak"),
         "allow": trc("index in a formula", "allow"),
         "from": trc("index in a formula", "from"),
+        "required": trc("index in a formula", "required"),
+        "critical": trc("index in a formula", "critical"),
         "to": trc("index in a formula", "to"),
         "or": trc("between two formulas", "or"),
     }
@@ -73,6 +76,7 @@ def _blocks(project: Project, results: Results, say: Readings) -> Iterator[Block
     yield from input_blocks(results, say)
     yield from basis_blocks(project)
     yield from outcome_blocks(results, say)
+    yield from stability_blocks(results, say)
     yield from proof_blocks(results, say)
     yield from note_blocks(results, say)
 

@@ -10,26 +10,21 @@ from msgspec.structs import replace
 from app.numerals import MINUS
 from app.section_entry import section_text
 from app.sheet.blocks import Block, column, heading, paragraph, picture, table
+from app.sheet.joint_inputs import joint_inputs
 from app.sheet.member_figure import Figure, member_figure
 from app.sheet.readings import NOTHING, Readings, legible
-from app.sheet.shoulders import shoulder_words, strength_columns
+from app.sheet.shoulders import strength_columns
 from app.words import tr
 from solver.model import (
     AnySection,
-    AnySupport,
     AreaSection,
     BondedPart,
-    FixedSupport,
-    Joint,
     LoadCase,
     Material,
     Project,
     SegmentLoad,
-    SpringSupport,
-    StopSupport,
     end_of,
     parts_of,
-    supports_of,
 )
 from solver.packing import pack
 from solver.results import Results
@@ -48,7 +43,7 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
     )
     yield _materials(project, say)
     yield _segments(project, say)
-    yield _joints(project, results, say)
+    yield joint_inputs(project, results, say)
     if not project.load_cases:
         yield paragraph(tr("There are no load cases: the member is unloaded."))
     for case in (_in_chain_order(case, project) for case in project.load_cases):
@@ -132,50 +127,15 @@ def _areas(section: AnySection, say: Readings) -> str:
 
 
 def _section(section: AnySection, say: Readings) -> str:
-    return tr("area given") if isinstance(section, AreaSection) else legible(section_text(section, say.units))
-
-
-def _joints(project: Project, results: Results, say: Readings) -> Block:
-    shouldered = any(joint.shoulder for joint in project.joints)
-    columns = [
-        column(tr("Joint"), align="left"),
-        column("x", say.unit("length")),
-        column(tr("Support"), align="left"),
-        *([column(tr("Shoulder"), align="left")] if shouldered else []),
-    ]
-    rows = [
-        [
-            joint.mark,
-            say.plain(x, "length"),
-            supports_words(joint, say),
-            *([shoulder_words(joint, say)] if shouldered else []),
-        ]
-        for joint, x in zip(project.joints, results.position.tolist(), strict=True)
-    ]
-    return table(tr("Joints and supports"), columns, rows)
-
-
-def supports_words(joint: Joint, say: Readings) -> str:
-    """All supports of a joint in words."""
-    return "; ".join(support_words(support, say) for support in supports_of(joint)) or tr("free")
-
-
-def support_words(support: AnySupport, say: Readings) -> str:
-    """One support in words."""
-    match support:
-        case FixedSupport():
-            return tr("fixed")
-        case SpringSupport(stiffness=stiffness):
-            return tr("spring, {stiffness}").format(stiffness=say.exact(stiffness, "spring", unit=True))
-        case StopSupport(side=side, clearance=clearance, stiffness=stiffness):
-            parts = {
-                "sense": "+x" if side == "plus" else "−x",
-                "gap": say.exact(clearance, "displacement", unit=True),
-            }
-            if isinstance(stiffness, UnsetType):
-                return tr("stop against {sense}, clearance {gap}, rigid").format(**parts)
-            words = tr("stop against {sense}, clearance {gap}, stiffness {stiffness}")
-            return words.format(**parts, stiffness=say.exact(stiffness, "spring", unit=True))
+    """As typed; of a bare area, which has a column of its own, its second moment."""
+    if not isinstance(section, AreaSection):
+        return legible(section_text(section, say.units))
+    if isinstance(section.second_moment, UnsetType):
+        return tr("area given")
+    moment = say.pair(
+        section.second_moment, end_of(section.second_moment, section.second_moment_end), "second_moment"
+    )
+    return tr("area given, I {value} {unit}").format(value=moment, unit=say.unit("second_moment"))
 
 
 def _in_chain_order(case: LoadCase, project: Project) -> LoadCase:

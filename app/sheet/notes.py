@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from app.findings import findings
-from app.phrases.notes import BUCKLING
 from app.sheet.blocks import Block, bullets, heading
 from app.sheet.readings import Readings
 from app.words import tr
@@ -15,11 +14,10 @@ from solver.results import Results
 def note_blocks(results: Results, say: Readings) -> Iterator[Block]:
     """The closing chapter before the sign-off."""
     found = findings(results, say.units)
-    buckling = tr(BUCKLING)  # stands in the chapter of what was not checked
     yield heading(tr("Notes"))
     yield bullets(
         [
-            *(note for note in found.notes if note != buckling),
+            *found.notes,
             found.numerical_error,
             tr("The project of this sheet is attached to this PDF; its SHA-256 stands on the first page."),
         ]

@@ -12,15 +12,16 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.findings import findings
+from app.findings.stability import waived_notes
 from app.findings.subjects import worst_first
 from app.numerals import reading
-from app.phrases.checks import has_compression, segment_words, state_text
-from app.phrases.notes import BUCKLING
+from app.phrases.checks import segment_words, state_text
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.sheet.bonded import part_by_hand
 from app.sheet.peak_proof import peak_or_fatigue_by_hand
 from app.sheet.readings import Readings
 from app.sheet.shoulders import factor_blocks
+from app.sheet.stability import stability_by_hand
 from app.sheet.verdicts import check_table, kind_words, quantity_of, subject, utilisation_by_hand
 from app.words import tr
 from solver.checks import Check
@@ -48,7 +49,7 @@ def proof_blocks(results: Results, say: Readings) -> Iterator[Block]:
     else:
         yield from _governing_blocks(results, results.governing, say)
     yield from factor_blocks(results.project, results.governing, say)
-    made = [check for check in results.checks if check.status != "not_made"]
+    made = [check for check in results.checks if check.status in ("pass", "fail")]
     if made:
         yield _worst_table(made, say)
     failing = [check for check in made if check.status == "fail"]
@@ -65,7 +66,9 @@ def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator
         ),
         "lead",
     )
-    if check.check in ("peak", "fatigue"):
+    if check.check == "stability":
+        yield from stability_by_hand(results, check, say)
+    elif check.check in ("peak", "fatigue"):
         yield from peak_or_fatigue_by_hand(results, check, say)
     elif check.segment is not None:
         yield from _stress_by_hand(results, check, say)
@@ -242,13 +245,15 @@ def _worst_table(made: Iterable[Check], say: Readings) -> Block:
 
 
 def _not_made(results: Results, say: Readings) -> Iterator[Block]:
-    """What could not be checked, and what this version never checks but the member needs."""
+    """What could not be checked, and what of it the engineer does without."""
     yield heading(tr("Not checked"), 2)
     missing = [f"{found.sentence}: {found.remedy}" for found in findings(results, say.units).not_made]
-    if not missing:
+    if not missing and not any(check.waiver for check in results.checks):
         yield paragraph(tr("Every check of stresses and limits that the input asks for was made."))
-    if has_compression(results.checks):
-        missing.append(tr(BUCKLING))
     if missing:
         yield paragraph(tr("NOT CHECKED, and so not passed:"), "caution")
         yield bullets(missing)
+    waived = list(waived_notes(results))
+    if waived:
+        yield paragraph(tr("WAIVED by the engineer, and so neither passed nor failed:"), "caution")
+        yield bullets(waived)

@@ -6,6 +6,7 @@ from collections.abc import Sequence
 
 from app.numerals import decimals_of, fixed, rounded
 from app.phrases.checks import segment_words, state_text
+from app.phrases.stability import factor_texts
 from app.sheet.blocks import Block, column, table
 from app.sheet.readings import DIGITS, NOTHING, PLAIN, Readings
 from app.units import Quantity, to_display, utilisation_text
@@ -17,13 +18,17 @@ _MOST_DIGITS = 17
 
 def status_word(status: Status | str) -> str:
     """The verdict of a check in a word."""
-    return {"pass": tr("passes"), "fail": tr("FAILS"), "not_made": tr("NOT CHECKED")}[status]
+    return {"pass": tr("passes"), "fail": tr("FAILS"), "not_made": tr("NOT CHECKED"), "waived": tr("WAIVED")}[
+        status
+    ]
 
 
 def quantity_of(check: Check) -> Quantity:
     """What the value of a check is measured in."""
     if check.check in (*STRESSES, "peak", "fatigue"):
         return "stress"
+    if check.check == "stability":
+        return "factor"
     return "force" if check.check == "reaction" else "displacement"
 
 
@@ -37,6 +42,7 @@ def kind_words(check: Check) -> str:
         "reaction": tr("reaction"),
         "peak": tr("peak stress"),
         "fatigue": tr("fatigue, amplitude (the mean adds)"),
+        "stability": tr("critical factor"),
     }[check.check]
 
 
@@ -46,6 +52,8 @@ def subject(check: Check) -> str:
         return tr("segment {mark}").format(mark=segment_words(check))
     if check.joint is not None:
         return tr("joint {mark}").format(mark=check.joint)
+    if check.check == "stability":
+        return tr("member")
     return tr("joints {start} to {end}").format(start=check.start, end=check.end)
 
 
@@ -64,6 +72,9 @@ def check_row(check: Check, say: Readings) -> list[str]:
 
 def against(value: float, limit: float, quantity: Quantity, say: Readings) -> list[str]:
     """Value and limit to so many digits that, read side by side, they say what the verdict says."""
+    if quantity == "factor":
+        factor, least = factor_texts(value, limit, "fail" if value * (1 + PASS_MARGIN) < limit else "pass")
+        return [factor, f"≥ {least}"]
     shown, bound = (to_display(v, quantity, say.units) for v in (abs(value), limit))
     for digits in range(DIGITS, _MOST_DIGITS):
         if (rounded(shown, digits) > rounded(bound, max(digits, PLAIN))) == value_over(value, limit):

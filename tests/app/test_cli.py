@@ -168,7 +168,7 @@ def test_the_table_has_every_segment_and_every_combination_in_display_units(
         assert words in out
     assert "Numerical error at most" in out
     assert "competent engineer" in out
-    assert "uckling" in out
+    assert "elastic critical load" in out
 
 
 def test_the_failing_segment_stands_in_the_table_with_a_failing_number(

@@ -25,7 +25,7 @@ from solver.model import (
     SpringSupport,
 )
 from solver.solve import solve
-from tests.members import Part, area, case, member
+from tests.members import Part, area, case, member, waived
 from tests.strategies import projects
 
 MM = "mm-N-MPa"
@@ -78,8 +78,9 @@ def test_the_scale_is_that_of_the_governing_allowable_factor() -> None:
 def test_without_an_allowable_the_check_is_missing_and_says_what_to_enter() -> None:
     result = found(stepped(allowable_tension=160e6))
     assert result.verdict == "incomplete"
-    assert result.headline == "No check fails, 2 not made; buckling not checked"
-    (missing,) = result.not_made
+    assert result.headline == "No check fails, 4 not made"
+    missing, stability = result.not_made
+    assert stability.sentence == "Not checked: stability, no joint is held sideways (Both, Rare)"
     assert missing.sentence == "Not checked: compression in B (Both, Rare)"
     assert missing.remedy == "enter an allowable stress in compression for of B"
     assert (missing.count, missing.segments, missing.joints) == (2, (1,), ())
@@ -103,14 +104,15 @@ def test_limits() -> None:
         ((1,), "0.38", "pass"),
     ]
     assert result.limits[1].sentence == "Joint 0: reaction −80\u202f000 of 100\u202f000 N, 0.80, Rare"
-    (missing,) = result.not_made
+    missing, _stability = result.not_made
     assert (missing.sentence, missing.joints) == ("Not checked: reaction at joint 2 (Both, Rare)", (2,))
 
 
-def test_buckling_is_named_wherever_something_is_compressed() -> None:
-    pushed = found(stepped(**ALLOWABLES))
-    assert pushed.headline == "Passes; buckling not checked"
-    assert any("Buckling" in note for note in pushed.notes)
+def test_a_waived_check_is_named_wherever_something_is_compressed() -> None:
+    pushed = found(waived(stepped(**ALLOWABLES), "guided in its sleeve"))
+    assert pushed.headline == "Passes; stability waived"
+    assert pushed.notes[0] == "Stability waived (Both, Rare): guided in its sleeve"
+    assert pushed.not_made == ()
     pulled = structs.replace(
         stepped(**ALLOWABLES), combinations=(Combination(name="P", factors={"Pull": 1.0}),)
     )
@@ -242,4 +244,4 @@ def test_a_combination_without_any_load_never_passes_unsaid() -> None:
     assert found(structs.replace(empty, combinations=pair)).headline == "Passes; no load in ULS, SLS"
     bare = structs.replace(loaded, combinations=(), load_cases=())
     assert found(bare).headline == "Passes; no load entered"
-    assert found(loaded).headline == "Passes; buckling not checked"
+    assert found(waived(loaded)).headline == "Passes; stability waived"

@@ -25,15 +25,15 @@ from tests.strategies import projects
 
 TOP = ["format", "version", "title", "program", "project_sha256", "verdict", "governing", "checks",
        "combinations"]  # fmt: skip
-STATE = ["name", "joints", "segments", "equilibrium", "energy", "error_bound"]
+STATE = ["name", "joints", "segments", "equilibrium", "energy", "error_bound", "stability"]
 JOINT = ["mark", "position", "displacement", "reaction"]
 SEGMENT = ["mark", "force_start", "force_end", "force_max", "force_min", "stress_max", "stress_max_at",
            "stress_min", "stress_min_at", "utilisation", "utilisation_at", "force_bound"]  # fmt: skip
 EQUILIBRIUM = ["loads", "reactions", "bedding", "residual"]
 CHECK = ["check", "combination", "segment", "joint", "from", "to", "position", "value", "limit",
-         "utilisation", "status", "reason"]  # fmt: skip
+         "utilisation", "status", "reason", "waiver"]  # fmt: skip
 WHAT = {"tension": ["segment"], "compression": ["segment"], "displacement": ["joint"], "reaction": ["joint"],
-        "relative": ["from", "to"]}  # fmt: skip
+        "relative": ["from", "to"], "stability": []}  # fmt: skip
 
 
 def solved(project: Project) -> tuple[Results, Any]:
@@ -65,8 +65,10 @@ def test_keys_stand_in_the_order_of_the_format(project: Project) -> None:
         assert list(check) == [key for key in CHECK if key in check]
         assert None not in check.values()
         assert [key for key in CHECK[2:6] if key in check] == WHAT[check["check"]]
-        assert ("reason" in check) == (check["status"] == "not_made")
-        assert ("utilisation" in check) == (check["status"] != "not_made")
+        unmade = check["status"] in ("not_made", "waived")
+        assert ("reason" in check) == unmade
+        assert ("waiver" in check) == (check["status"] == "waived")
+        assert ("utilisation" in check) != unmade
     for state in file["combinations"]:
         assert list(state) == STATE
         assert all(list(joint) == JOINT for joint in state["joints"])

@@ -37,7 +37,8 @@ def parts(**allowables):
 
 
 def made(project):
-    return solve(project).checks
+    """All checks but those of stability, which have tests of their own."""
+    return [check for check in solve(project).checks if check.check != "stability"]
 
 
 def test_a_bar_pulled_in_the_middle_is_checked_on_both_sides():
@@ -113,7 +114,7 @@ def test_a_missing_allowable_nobody_needs_is_no_finding():
 
 def test_a_failure_outweighs_what_was_not_made():
     results = solve(member(parts(allowable_compression=5e6), BOTH_ENDS, [PULL]))
-    assert [c.status for c in results.checks] == ["not_made", "fail"]
+    assert [c.status for c in results.checks] == ["not_made", "fail", "not_made"]
     assert results.verdict == "fail"
 
 
@@ -179,7 +180,7 @@ def test_equal_tension_and_compression_count_at_the_smaller_x():
     held = {0: FixedSupport(), 1: FixedSupport()}
     loaded = case(on_segments=[SegmentLoad("A", load_start=1e4)])
     results = solve(member(parts(allowable_tension=1e8, allowable_compression=1e8)[:1], held, [loaded]))
-    assert_allclose([c.utilisation for c in results.checks], 0.05, rtol=1e-12)
+    assert_allclose([c.utilisation for c in results.checks[:2]], 0.05, rtol=1e-12)
     assert results.segments.utilisation_at[0, 0] == 0.0
 
 

@@ -24,6 +24,7 @@ KINDS: Final[tuple[tuple[RowKind | None, str], ...]] = (
     ("displacement", later("Displacement")),
     ("relative", later("Relative displacement")),
     ("reaction", later("Reaction")),
+    ("stability", later("Stability")),
     ("not_made", later("Not checked")),
     ("contact", later("Contact of stops")),
     ("note", later("Notes")),

@@ -14,6 +14,7 @@ from app.gui.tables import offers
 from app.gui.tables.column import Change, Column, Figures, Sight, Table
 from app.gui.tables.loads import needed_case
 from app.gui.tables.supports import with_supports
+from app.lateral_entry import LateralKey, hold_entry, hold_text, parse_hold
 from app.shoulder_entry import parse_shoulder, shoulder_entry, shoulder_text
 from app.support_entry import parse_supports, supports_entry, supports_text
 from app.units import Quantity, entry_text, format_value
@@ -76,6 +77,24 @@ def _load(key: str, title: str, quantity: Quantity) -> Column:
     return Column(key, title, show, entry, put, quantity=quantity, optional=True, width=12, of_case=True)
 
 
+def _lateral(key: LateralKey, title: str) -> Column:
+    """A column for what holds the joint sideways, or against turning sideways."""
+
+    def put(project: Project, index: int, text: str, sight: Sight) -> Change:
+        hold = parse_hold(text, key, sight.system)
+        return Change(edits.hold_sideways(project, (index,), key, hold))
+
+    return Column(
+        f"lateral_{key}",
+        title,
+        lambda row, sight: hold_text(row.joint.lateral, key, sight.system),
+        lambda row, sight: hold_entry(row.joint.lateral, key, sight.system),
+        put,
+        optional=True,
+        width=12,
+    )
+
+
 def _figure(name: str, quantity: Quantity) -> Column:
     def text(index: int, figures: Figures, sight: Sight) -> str:
         value = figures.value(getattr(figures, name), index)
@@ -126,6 +145,8 @@ COLUMNS = (
         optional=True,
         width=10,
     ),
+    _lateral("translation", later("Held sideways")),
+    _lateral("rotation", later("Held against turning")),
     _load("force", later("Force along +x"), "force"),
     _load("movement", later("Support movement"), "displacement"),
     _figure("displacement", "displacement"),

@@ -1,6 +1,5 @@
 """The tabs of the tables; a tab's tables are made when they are first looked up or shown.
 
-Eleven tables are most of what a window costs to make, and one of them is seen at first.
 A dozen tables are most of what a window costs to make, and one of them is seen at first.
 """
 
@@ -19,6 +18,7 @@ from app.gui.tables.limits import DISPLACEMENT, REACTION, RELATIVE
 from app.gui.tables.loads import CASES, JOINT_LOADS, SEGMENT_LOADS
 from app.gui.tables.materials import MATERIALS
 from app.gui.tables.segments import SEGMENTS
+from app.gui.tables.stability_limits import STABILITY
 from app.gui.tables.view import TableView
 from app.words import later, tr
 
@@ -29,7 +29,7 @@ TABS: tuple[tuple[str, tuple[tuple[Table, int], ...]], ...] = (
     (later("Loads"), ((CASES, 30), (SEGMENT_LOADS, 66), (JOINT_LOADS, 34))),
     (later("Combinations"), ((COMBINATIONS, 70), (FATIGUE, 30))),
     (later("Materials"), ((MATERIALS, 1),)),
-    (later("Limits"), ((DISPLACEMENT, 30), (RELATIVE, 40), (REACTION, 30))),
+    (later("Limits"), ((DISPLACEMENT, 27), (RELATIVE, 36), (REACTION, 27), (STABILITY, 40))),
     (later("Companions"), ((COMPANIONS, 1),)),
 )
 PLACES = {table.key: place for place, (_title, tables) in enumerate(TABS) for table, _share in tables}

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from app.edits import EditError
 from app.entry import EntryError
+from app.lateral_entry import LateralError
 from app.phrases import fault_sentence
 from app.places import place_words
 from app.support_entry import SupportError
@@ -15,7 +16,7 @@ class NotTaken(ValueError):  # noqa: N818 - its message is the sentence beside t
     """A text that a table cannot take in, for a reason that only the table knows."""
 
 
-TypingError = (EntryError, EditError, SupportError, NotTaken)
+TypingError = (EntryError, EditError, SupportError, LateralError, NotTaken)
 
 
 def reason_of(error: Exception, system: UnitSystemName, place: Place = ()) -> str:

@@ -12,6 +12,7 @@ from app.gui.tables import offers
 from app.gui.tables.case_loads import FORCE
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.numbers import pair_entry, pair_text
+from app.gui.tables.second_moments import put_second_moment, second_moment_entry, show_second_moment
 from app.gui.tables.segment_cells import (
     HEAT_CELLS,
     SegmentRow,
@@ -169,6 +170,18 @@ COLUMNS = (
         optional=True,
         width=17,
         offers=offers.supports,
+    ),
+    Column(
+        "second_moment",
+        later("Second moment"),
+        in_segments(show_second_moment, ""),
+        in_segments(second_moment_entry, None),
+        put_second_moment,
+        quantity="second_moment",
+        settled_by="section",
+        optional=True,
+        width=13,
+        at_first=False,
     ),
     Column("mass", later("Mass"), quantity="mass", figure=mass, width=7, at_first=False),
     Column(

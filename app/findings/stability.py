@@ -1,0 +1,30 @@
+"""What is said of stability beside its checks: why it was waived, and what a critical factor is not."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from app.findings.listing import listed
+from app.phrases.stability import CONTACT, ELASTIC, WAIVED
+from app.phrases.states import state_words
+from app.words import tr
+from solver.model import StopSupport, supports_of
+from solver.results import Results
+
+
+def stability_notes(results: Results) -> Iterator[str]:
+    """The standing sentences that this member needs; the waiver first."""
+    yield from waived_notes(results)
+    if any(found is not None and found.critical_factor is not None for found in results.stability):
+        yield tr(ELASTIC)
+        supports = (support for joint in results.project.joints for support in supports_of(joint))
+        if any(isinstance(support, StopSupport) for support in supports):
+            yield tr(CONTACT)
+
+
+def waived_notes(results: Results) -> Iterator[str]:
+    """That the check is waived, in which states and for which reason; nothing where it is not."""
+    waived = [check for check in results.checks if check.waiver is not None]
+    if waived:
+        states = listed([state_words(check.combination) for check in waived])
+        yield tr(WAIVED).format(states=states, reason=waived[0].waiver)
