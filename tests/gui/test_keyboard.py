@@ -163,6 +163,13 @@ def limits(keys: Keyboard) -> None:
     keys.enter(1, 12)
     keys.to("limit")
     keys.enter(240, 220)
+    keys.press(KEY.Key_6, CTRL)
+    keys.to("stability_factor")
+    keys.enter(3)
+    keys.press(KEY.Key_2, CTRL)
+    for joint in (1, 12):
+        keys.to("lateral_translation", joint)
+        keys.enter("fixed")
 
 
 def title_block(keys: Keyboard, qtbot, window, sample) -> None:

@@ -38,7 +38,12 @@ def limits(hands: Hands, steps: Steps) -> None:
     hands.enter("limits relative", 0, "limit", "0.3")
     hands.enter("limits reaction", 0, "joint", "1", "12")
     hands.enter("limits reaction", 0, "limit", "240", "220")
-    steps.end("limits", "All limits: the shaft is whole")
+    steps.end("limits", "Displacements and reactions are limited")
+    hands.enter("limits stability", 0, "stability_factor", "3")
+    hands.tab(2)
+    hands.enter("joints", 1, "lateral_translation", "fixed")
+    hands.enter("joints", 12, "lateral_translation", "fixed")
+    steps.end("stability", "Both bearings hold the shaft sideways: stability is checked, the shaft is whole")
     hands.tab(1)
 
 
