@@ -21,7 +21,7 @@ from solver.buckling import Buckled, critical_factors
 from solver.buckling_mode import Mode
 from solver.chain import Chain
 from solver.checks import NO_STRESS, StabilityReason
-from solver.model import AnySection, Lateral, LateralHold, Project, Segment
+from solver.model import BondedPart, Lateral, LateralHold, Project, Segment, parts_of
 from solver.second_moments import second_moment, stretches
 from solver.solution import Solution
 
@@ -120,15 +120,8 @@ def stiffness(lateral: Lateral | UnsetType, key: Literal["translation", "rotatio
 
 def _without_second_moment(segments: tuple[Segment, ...]) -> Iterator[int]:
     for index, segment in enumerate(segments):
-        if any(second_moment(section) is None for section, _ in parts_of(segment)):
+        if any(second_moment(part.section) is None for part in parts_of(segment)):
             yield index
-
-
-def parts_of(segment: Segment) -> Iterator[tuple[AnySection, str]]:
-    """Sections and materials that bend together: the segment's own, then what is bonded to it."""
-    yield segment.section, segment.material
-    for part in segment.bonded:
-        yield part.section, part.material
 
 
 def column_of(project: Project, chain: Chain) -> Column:
@@ -136,8 +129,8 @@ def column_of(project: Project, chain: Chain) -> Column:
     modulus = {material.name: float(material.modulus) for material in project.materials}
     of, starts, rigidities = [], [], []
     for index, segment in enumerate(project.segments):
-        parts = tuple(parts_of(segment))
-        for start, end in stretches(tuple(section for section, _ in parts)):
+        parts = parts_of(segment)
+        for start, end in stretches(tuple(part.section for part in parts)):
             of.append(index)
             starts.append(start)
             rigidities.append(_rigidity(parts, modulus, 0.5 * (start + end)))
@@ -151,9 +144,9 @@ def column_of(project: Project, chain: Chain) -> Column:
     )
 
 
-def _rigidity(parts: tuple[tuple[AnySection, str], ...], modulus: dict[str, float], s: float) -> FloatArray:
-    """Σ E I, as it is about the fraction s."""
-    each = [modulus[material] * _known(second_moment(section, s)) for section, material in parts]
+def _rigidity(parts: tuple[BondedPart, ...], modulus: dict[str, float], s: float) -> FloatArray:
+    """Σ E I of what bends together, as it is about the fraction s."""
+    each = [modulus[part.material] * _known(second_moment(part.section, s)) for part in parts]
     return np.asarray(np.sum(each, axis=0))
 
 

@@ -17,7 +17,7 @@ from msgspec import structs
 from app.edits.checking import consistent, refused
 from app.edits.companions import segment_marks
 from app.edits.copying import Marks, with_companions_copied, with_loads_copied
-from app.edits.records import FreshMarks
+from app.edits.records import FreshMarks, mapped
 from solver.model import Companion, Joint, Project, Segment
 
 _R = TypeVar("_R", bound=Joint | Segment)
@@ -62,9 +62,9 @@ def _with_companions(
     held = {companion.mark for companion in whole}
     grown = structs.replace(
         grown,
-        companions=tuple(
-            structs.replace(c, end=meets[0]) if c.mark in held and c.end == far else c
-            for c in grown.companions
+        companions=mapped(
+            grown.companions,
+            lambda c: structs.replace(c, end=meets[0]) if c.mark in held and c.end == far else c,
         ),
     )
     copied: list[Marks] = []

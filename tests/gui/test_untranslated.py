@@ -25,6 +25,7 @@ from PySide6.QtWidgets import (
 from app import samples
 from app.gui.dialogs import ask_unsaved
 from app.gui.help import key_groups
+from app.gui.tables.pages import TABLES
 from app.gui.view import Selection, Shown
 from app.hand.kinds import KINDS
 from app.looks import Looks
@@ -196,7 +197,7 @@ SITUATIONS = (
 @pytest.mark.parametrize("situation", SITUATIONS, ids=lambda act: act.__name__)
 def test_the_window(qtbot, window, painted, situation):
     situation(qtbot, window)
-    assert len(window.tables.views.values()) == 11  # those of the tabs not seen yet are made for it
+    assert len(window.tables.views.values()) == len(TABLES)  # of the tabs not seen yet as well
     for menu in window.findChildren(QMenu):
         menu.aboutToShow.emit()
     texts = list(texts_below(window))
