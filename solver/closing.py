@@ -26,7 +26,7 @@ from solver.joints import Held, JointSystem
 
 CLOSED = 1e-12  # of the largest force: a contact that pushes with less is open
 TOUCHING = 1e-12  # of the largest displacement: play up to this is none
-BEYOND_ROUNDING = 1e-14  # of the largest contact force
+BEYOND_ROUNDING = 1e-11  # of the largest contact force; a smaller one is settled by its gap
 CHUNK = 1 << 21  # numbers in a set of unit loads
 PRESSED, LOOSE = -1, -2
 
@@ -126,10 +126,22 @@ def _balanced(
     matrix[0, 0] = 0.0
     constant = gap - first * turn * gap[0] - own * resultant * turn
     constant[0] = first * resultant
-    found = complementary(matrix, constant)
+    found = complementary(matrix, constant, _scale_of_balanced(matrix, gap, resultant))
     if found is None:
         return None
     return np.append(constant[0] + matrix[0] @ found, found[1:])
+
+
+def _scale_of_balanced(matrix: FloatArray, gap: FloatArray, resultant: float) -> FloatArray:
+    """Forces are scaled by the roots of compliances, and the first unknown, a gap, the other way round."""
+    compliance = np.diagonal(matrix).copy()
+    largest = float(compliance.max())
+    if largest == 0.0:  # all of them rigid and at one node
+        largest = float(np.abs(gap).max()) / abs(resultant) if resultant and gap.any() else 1.0
+    compliance[compliance == 0.0] = largest
+    scale: FloatArray = 1.0 / np.sqrt(compliance)
+    scale[0] = np.sqrt(largest)
+    return scale
 
 
 def _resultant(base: Held, condensed: Condensed) -> FloatArray:

@@ -23,9 +23,15 @@ NEXT_TO_NOTHING = 1e-8  # of the artificial variable: what is left is for the ca
 PIVOTS = 20  # times the size, plus some: more is a circle, which only rounding can close
 
 
-def complementary(matrix: FloatArray, constant: FloatArray) -> FloatArray | None:
-    """A solution z (s,) for the matrix (s, s) and the constant q (s,); None where there is none."""
-    scale = _scale(matrix)
+def complementary(
+    matrix: FloatArray, constant: FloatArray, scale: FloatArray | None = None
+) -> FloatArray | None:
+    """A solution z (s,) for the matrix (s, s) and the constant q (s,); None where there is none.
+
+    `scale` are positive factors for rows and columns alike that bring the matrix to the size of 1; where it
+    is not given, the diagonal gives them.
+    """
+    scale = _scale(matrix) if scale is None else scale
     scaled = scale[:, None] * matrix * scale
     gaps = scale * constant
     size = float(np.abs(gaps).max(initial=0.0))

@@ -74,9 +74,26 @@ class Contacts:
         return np.where(self.facing, np.maximum(left, 0.0), force)
 
 
+_NOWHERE, _NOTHING, _NEVER = np.zeros(0, dtype=np.intp), np.zeros(0), np.zeros(0, dtype=np.bool_)
+_NONE = Contacts(
+    node=_NOWHERE,
+    other=_NOWHERE,
+    side=_NOTHING,
+    clearance=_NOTHING,
+    stiffness=_NOTHING,
+    spring=_NOTHING,
+    movement=np.zeros((1, 0)),
+    live=_NEVER,
+    rigid=_NEVER,
+    facing=_NEVER,
+)
+
+
 def contacts_of(chain: Chain, loads: Loads, net: Net) -> Contacts:
     """The stops as contacts, and after them the far ends of companions that can part."""
     stops = chain.stops
+    if not stops.joint.size and chain.companions is None:
+        return replace(_NONE, movement=np.zeros((loads.gravity.size, 0)))
     facing = facing_pairs(stops) & ~chain.fixed[stops.joint]
     held = chain.fixed.copy()
     held[stops.joint[facing]] = True

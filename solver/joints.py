@@ -137,7 +137,7 @@ class JointSystem:
         """Solve, and refine: once, and again only while a correction is more than rounding."""
         start = np.zeros_like(self._held.movement)
         start[:, self._held.fixed] = self._held.movement[:, self._held.fixed]
-        start[:, self._held.net.tied] = start[:, self._held.net.to]
+        self._held.net.follow(start)
         u = Displacements(start, np.zeros_like(start))
         u = u.corrected(self.solve(self._leftover(u)))
         for _ in range(REFINEMENTS):
@@ -169,7 +169,7 @@ def unbalanced(at: Held, u: Displacements, start_force: FloatArray, end_force: F
     left[:, at.net.start] += start_force
     left[:, at.net.end] -= end_force
     at.net.hand_on(left)
-    left[:, at.net.tied] = 0.0
+    at.net.clear(left)
     left[:, at.fixed] = 0.0
     return left
 
@@ -195,7 +195,8 @@ def largest_load(at: Held, ends: Condensed) -> FloatArray:
     beside, stiffness = np.zeros(net.count), np.zeros(net.count)
     beside[net.start] = own
     beside[net.end] = np.maximum(beside[net.end], own)
-    np.maximum.at(beside, net.to, beside[net.tied])
+    if net.tied.size:
+        np.maximum.at(beside, net.to, beside[net.tied])
     stiffness[at.sprung] = at.spring
     stiffness[at.fixed] = beside[at.fixed]
     loads = (at.force, ends.load_stretch, ends.load_mean, stiffness * at.movement)

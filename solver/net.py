@@ -48,6 +48,16 @@ class Net:
         if self.tied.size:
             np.add.at(force.T, self.to, force[:, self.tied].T)
 
+    def clear(self, force: FloatArray) -> None:
+        """Take the forces (m, count) off the tied nodes, in place."""
+        if self.tied.size:
+            force[:, self.tied] = 0.0
+
+    def follow(self, moved: FloatArray) -> None:
+        """Move the tied nodes with the others, displacements (m, count) in place."""
+        if self.tied.size:
+            moved[:, self.tied] = moved[:, self.to]
+
     def joint_of(self, node: int) -> int:
         """The index of the joint at a node or before it; of a companion's node the joint where it starts."""
         members = int(self.joints[-1]) + 1

@@ -1,7 +1,7 @@
 """What each support of a joint does in a state: a joint may have several, and a stop is open or closed.
 
 The reaction at a joint is the sum of its supports' forces. Springs and stops follow from how far they are
-pushed; the rest is the fixed support's, the first one's where there are several.
+pushed; beside a fixed support, the first one where there are several, they have nothing to do.
 """
 
 from __future__ import annotations
@@ -61,10 +61,10 @@ def _stops(results: Results, state: int, joint: int) -> list[SupportOutcome]:
 
 
 def _with_the_rest(found: list[SupportOutcome], reaction: float) -> tuple[SupportOutcome, ...]:
-    """Give the fixed support what the others leave; where it is the only support, that is the reaction."""
+    """The reaction is the fixed support's, beside which nothing gives way, or that of a spring alone."""
     for index, one in enumerate(found):
         if one.kind == "fixed":
-            found[index] = SupportOutcome("fixed", reaction - sum(other.force for other in found))
+            found[index] = SupportOutcome("fixed", reaction)
             break
     else:
         if len(found) == 1 and found[0].kind == "spring":

@@ -157,7 +157,8 @@ class Pass:
     def _reactions(self, group: Group) -> FloatArray:
         at = group.held
         reaction = np.full(at.force.shape, np.nan)
-        reaction[:, self.patterns.net.joints[self.chain.stops.joint]] = 0.0
+        if self.chain.stops.joint.size:
+            reaction[:, self.patterns.net.joints[self.chain.stops.joint]] = 0.0
         reaction[:, at.sprung] = spring_force(at, group.ends)
         reaction[:, at.fixed] = taken(at, *self._end_forces(group))[:, at.fixed]
         return reaction
@@ -178,6 +179,8 @@ class Pass:
         sprung = np.flatnonzero(self.chain.spring)
         shortening = u[:, sprung] - self.loads.movement[:, sprung]
         in_springs = (shortening * shortening) @ self.chain.spring[sprung] / 2
+        if not push.shape[1]:
+            return np.asarray(in_springs)
         return np.asarray(in_springs + (push * push) @ (1.0 / self.patterns.contacts.stiffness) / 2)
 
     def _force_bound(self) -> FloatArray:

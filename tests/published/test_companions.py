@@ -140,6 +140,9 @@ def test_checks_mass_and_weight_know_the_companions():
     assert_allclose(results.mass, mass, rtol=1e-12)
     assert_allclose(results.solution.reaction[0, 0], -9.81 * mass, rtol=1e-9)
     assert_allclose(results.solution.joint_displacement[0, 0], 9.81 * mass / 1e8, rtol=1e-9)
+    found, weight = results.companions, 9.81 * LENGTH * TUBE * 8900
+    assert_allclose(found.force_from - found.force_to, weight, rtol=1e-9)
+    assert found.force_from[0, 0] != found.force_to[0, 0]
     own = [check for check in results.checks if check.segment in ("T1", "T2")]
     assert [check.check for check in own] == ["compression"] * 2
     assert own[1].position == pytest.approx(LENGTH)  # where the tube also carries what hangs on it
@@ -169,6 +172,28 @@ def test_curves_along_a_companion():
     assert set(along.segment) == {0, 1, 2}
     assert_allclose(along.displacement[0], 0.0, atol=1e-15)
     assert_allclose(along.displacement[-1], results.solution.joint_displacement[0, 1], rtol=1e-9)
+
+
+def test_a_companion_has_its_place_along_the_member():
+    plates = Companion(
+        mark="Plates",
+        start="1",
+        end="2",
+        acts="compression",
+        segments=(
+            CompanionSegment("P", 0.3, "of A", area(4e-4)),
+            CompanionSegment("Q", 0.2, "of A", area(1e-3)),
+        ),
+    )
+    press = case(on_joints=[JointLoad("2", force=-1e4)])
+    project = member([Part(1.0, area(1e-3)), Part(0.5, area(1e-3))], {0: FixedSupport()}, [press])
+    results = solve(structs.replace(project, companions=(plates,)))
+    found = results.companions
+    assert_allclose([found.begins, found.ends], [[1.0, 1.3], [1.3, 1.5]])
+    assert_allclose(companion_curves(results, 0, 0).x[[0, -1]], [1.0, 1.5])
+    flexibility = (0.3 / 4e-4 + 0.2 / 1e-3) / STEEL
+    share = 1e4 * (0.5 / (STEEL * 1e-3)) / (0.5 / (STEEL * 1e-3) + flexibility)
+    assert_allclose(found.clamp[0, 0], share, rtol=1e-9)
 
 
 def test_a_length_that_does_not_fit_is_refused():

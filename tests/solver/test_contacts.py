@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from contextlib import suppress
 from dataclasses import replace
 from itertools import product
 
@@ -11,7 +12,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from numpy.testing import assert_allclose
 
-from solver import patterns
+from solver import closing, patterns
 from solver.axial import solve_axial
 from solver.chain import Stops
 from solver.errors import NotSolvable, never
@@ -183,10 +184,11 @@ def test_a_movement_takes_the_stop_along_and_the_clearance_is_never_factored():
     assert_allclose(solution.reaction[:, 2], [1e4, 3e4], rtol=1e-11)
 
 
-def test_facing_rigid_stops_without_clearance_hold_like_a_fixed_support():
+def test_facing_rigid_stops_without_clearance_hold_like_a_fixed_support(monkeypatch):
     chain = replace(chain_of(**BAR), stops=stops_of((0, 1, 0.0), (0, -1, 0.0)))
     loads = loads_of(chain, 3, movement=[(0, 1e-3)])
     loads.joint_force[:, 2] = [3e4, -3e4, 0.0]
+    monkeypatch.setattr(closing, "complementary", None)  # there is nothing to find out
     solution = solve_axial(chain, loads, NAMES)
     fixed = solve_axial(chain_of(**BAR, fixed=[0]), loads, NAMES)
     assert_allclose(solution.joint_displacement, fixed.joint_displacement, rtol=1e-14)
@@ -345,6 +347,34 @@ def test_the_books_of_the_energies_balance():
         books = work + sum(part.sum(axis=1) for part in parts)
         scale = np.abs(work) + sum(np.abs(part).sum(axis=1) for part in parts) + solution.strain_energy
         assert (np.abs(2 * solution.strain_energy - books) <= 1e-9 * scale).all(), seed
+
+
+@pytest.mark.parametrize("alone", [False, True])
+def test_their_own_problem_needs_no_repair(monkeypatch, alone):
+    monkeypatch.setattr(patterns, "REPAIRS", 1)
+    solved = 0
+    for seed in range(60):
+        rng = np.random.default_rng(seed)
+        chain = random_prismatic(rng)
+        size = chain.length.size + 1
+        chain = replace(chain, modulus=np.full(size - 1, 2e11), stops=random_stops(rng, size))
+        if alone:
+            chain = replace(chain, fixed=np.zeros(size, bool), spring=np.zeros(size))
+        loads = random_loads(rng, replace(chain, fixed=np.ones(size, bool)), 2)
+        with suppress(NotSolvable):
+            solve_axial(chain, loads, NAMES[:2])
+            solved += 1
+    assert solved >= 30
+
+
+def test_what_is_rounding_does_not_close_a_stop():
+    rng = np.random.default_rng(7)
+    sizes = rng.uniform(0.1, 2, 5), rng.uniform(1e-3, 4e-3, 5)
+    chain = chain_of(*sizes, modulus=2.1e11, expansion=1.17e-5)
+    chain = replace(chain, stops=stops_of((5, 1, 0.0), (5, -1, 0.0)))
+    solution = solve_axial(chain, loads_of(chain, temperature=33.3), NAMES[:1])
+    assert 0.0 < abs(solution.reaction[0, 5]) < 1e-6
+    assert not solution.push.any()
 
 
 def test_two_hundred_stops_of_a_member():
