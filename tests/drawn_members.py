@@ -27,6 +27,7 @@ from solver.model import (
     TubeSection,
 )
 from solver.packing import states_of
+from tests.shouldered import spindle
 
 SECTIONS = (
     RoundSection(diameter=0.050, diameter_end=0.060),
@@ -127,10 +128,15 @@ def uneven_member(count: int = 12) -> Project:
 
 
 def all_members() -> dict[str, Project]:
-    """The samples, busy members of 1 to 40 segments, and one with stops."""
+    """The samples, busy members of 1 to 40 segments, and some with stops or shoulders."""
     found = {name: read_sample(name) for name in names()}
     found |= {f"busy {count}": busy_member(count) for count in (1, 12, 25, 40)}
-    return found | {"stops": stopped_member(), "several": crowded_supports(), "uneven": uneven_member()}
+    return found | {
+        "stops": stopped_member(),
+        "several": crowded_supports(),
+        "uneven": uneven_member(),
+        "spindle": spindle(),
+    }
 
 
 def first_state(project: Project) -> Shown:

@@ -69,7 +69,9 @@ def shoulder_label(notch: Notch, project: Project) -> str:
     """What was entered, and the factor that follows from it: "r 2 mm, Kt 1.62"."""
     entered = shoulder_text(project.joints[notch.joint].shoulder, project.display.unit_system)
     if notch.factor is None:
-        return tr("{shoulder}, no Kt").format(shoulder=entered)
+        shoulder = project.joints[notch.joint].shoulder
+        unused = tr("{shoulder}, not used") if shoulder and shoulder.factor else tr("{shoulder}, no Kt")
+        return unused.format(shoulder=entered)
     if notch.step is None:
         return entered
     return tr("{shoulder}, Kt {factor}").format(shoulder=entered, factor=reading(notch.factor, 3))

@@ -50,21 +50,6 @@ def test_a_larger_radius_never_makes_it_worse(depth, ratio, times):
         assert step(other, depth).factor <= step(ratio, depth).factor * 1.02
 
 
-@pytest.mark.parametrize(
-    ("large", "radius", "read"),
-    [
-        # D/d and r/d with d = 1; factors of the chart from memory, in the form A (r/d)^b that R. L. Norton,
-        # Machine Design, gives for it; two fits of one chart differ by some per cent
-        (2.0, 0.1, 1.01470 * 0.1**-0.30035),
-        (1.5, 0.1, 0.99957 * 0.1**-0.28221),
-        (1.2, 0.1, 0.96272 * 0.1**-0.25527),
-        (2.0, 0.25, 1.01470 * 0.25**-0.30035),
-    ],
-)
-def test_values_read_from_the_chart(large, radius, read):
-    assert Step(large, 1.0, radius).factor == pytest.approx(read, rel=0.05)
-
-
 def test_by_hand():
     # D = 50, d = 40, r = 5: h/r = 1, 2h/D = 0.2
     found = Step(50.0, 40.0, 5.0)
