@@ -14,9 +14,10 @@ from app.columns import one_line, table
 from app.cures import Cures
 from app.findings import Findings, StateBooks, findings
 from app.phrases import caution, check_sentence
-from app.phrases.checks import segment_words, subject_text
+from app.phrases.checks import subject_text
 from app.phrases.cures import cures_sentences, subject_words
 from app.phrases.fatigue import swing_text
+from app.phrases.segments import segment_words
 from app.units import utilisation_text
 from app.words import tr
 from solver.checks import STRESSES, Check

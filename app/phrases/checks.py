@@ -13,6 +13,7 @@ from typing import Final, Literal
 from app.numerals import reading, rounded
 from app.phrases import stability
 from app.phrases.fatigue import fatigue_place, fatigue_sentence, fatigue_subject, swing_text
+from app.phrases.segments import part_words, segment_words
 from app.phrases.shoulders import REASONS_OF_SHOULDERS, REMEDIES_OF_SHOULDERS, ratio_facts
 from app.phrases.states import state_words
 from app.units import Quantity, format_value, symbol, to_display, utilisation_text
@@ -237,19 +238,6 @@ def _contradicts(value: float, limit: float, status: Status) -> bool:
 def position_text(position: float | None, system: UnitSystemName) -> str:
     """A position along the member, with its unit."""
     return "" if position is None else format_value(position, "length", system, strip=True, with_unit=True)
-
-
-def part_words(part: int, material: str | None) -> str:
-    """One of several bonded parts, counted from 1 as people do, the segment's own first."""
-    return tr("part {number}, {material}").format(number=part + 1, material=material)
-
-
-def segment_words(check: Check) -> str | None:
-    """The segment that a check is of, and which of its parts where several are bonded."""
-    if check.part is None or check.segment is None:
-        return check.segment
-    words = tr("{segment}, {part}")
-    return words.format(segment=check.segment, part=part_words(check.part, check.material))
 
 
 def _names(check: Check) -> dict[str, str | None]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Final
 
+from app.phrases.segments import segment_words
 from app.units import format_value, symbol, utilisation_text
 from app.words import later, tr
 from solver.checks import Check
@@ -41,7 +42,7 @@ def fatigue_sentence(check: Check, position: str, system: UnitSystemName) -> str
     mean = check.mean or 0.0
     return tr(_SENTENCES[check.joint is not None, mean > 0.0]).format(
         joint=check.joint,
-        segment=check.segment,
+        segment=segment_words(check),
         amplitude=format_value(check.amplitude or 0.0, "stress", system, 3),
         limit=format_value(check.limit or 0.0, "stress", system, 6, strip=True),
         mean=format_value(mean, "stress", system, 3),
@@ -56,7 +57,7 @@ def fatigue_sentence(check: Check, position: str, system: UnitSystemName) -> str
 def fatigue_subject(check: Check) -> str:
     """What it is of, at the head of a line."""
     words = tr("{segment}: fatigue") if check.joint is None else tr("Joint {joint}: fatigue")
-    return words.format(segment=check.segment, joint=check.joint)
+    return words.format(segment=segment_words(check), joint=check.joint)
 
 
 def fatigue_place(check: Check) -> str:
@@ -65,7 +66,7 @@ def fatigue_place(check: Check) -> str:
         return ""
     shoulder = tr("fatigue at joint {joint}, {states}")
     words = tr("fatigue in segment {segment}, {states}") if check.joint is None else shoulder
-    return words.format(segment=check.segment, joint=check.joint, states=_states(check))
+    return words.format(segment=segment_words(check), joint=check.joint, states=_states(check))
 
 
 def _states(check: Check) -> str:

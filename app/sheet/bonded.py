@@ -7,7 +7,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from app.numerals import reading
-from app.phrases.checks import part_words
+from app.phrases.segments import part_words
 from app.sheet.blocks import Block, Value, column, formula, table
 from app.sheet.readings import NOTHING, Readings
 from app.sheet.verdicts import status_word

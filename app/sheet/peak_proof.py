@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from app.phrases.segments import segment_words
 from app.sheet.blocks import Block, Value, formula, formulas, paragraph
 from app.sheet.fatigue import by_hand as fatigue_by_hand
 from app.sheet.readings import Readings
@@ -25,7 +26,7 @@ def peak_or_fatigue_by_hand(results: Results, check: Check, say: Readings) -> It
     else:
         words = tr("Segment {mark} at x = {x}.")
         x = say.plain(check.position or 0.0, "length", unit=True)
-        yield paragraph(words.format(mark=check.segment, x=x), "lead")
+        yield paragraph(words.format(mark=segment_words(check), x=x), "lead")
     factor = [] if notch is None else list(factor_by_hand(notch, results.project, say))
     if check.check == "fatigue" or notch is None:
         yield formulas([*factor, *fatigue_by_hand(check, say)])

@@ -15,7 +15,8 @@ from app.findings import findings
 from app.findings.stability import waived_notes
 from app.findings.subjects import worst_first
 from app.numerals import reading
-from app.phrases.checks import segment_words, state_text
+from app.phrases.checks import state_text
+from app.phrases.segments import segment_words
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.sheet.bonded import part_by_hand
 from app.sheet.peak_proof import peak_or_fatigue_by_hand

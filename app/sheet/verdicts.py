@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from app.numerals import decimals_of, fixed, rounded
-from app.phrases.checks import segment_words, state_text
+from app.phrases.checks import state_text
+from app.phrases.segments import segment_words
 from app.phrases.stability import factor_texts
 from app.sheet.blocks import Block, column, table
 from app.sheet.readings import DIGITS, NOTHING, PLAIN, Readings

@@ -45,11 +45,12 @@ class ShownColumns:
 
     def choices(self) -> tuple[Column, ...]:
         """The columns that can be shown and hidden."""
-        return tuple(column for column in self._view.table_model.columns[1:] if not column.named_by_user)
+        columns = self._view.table_model.columns[1:]
+        return tuple(c for c in columns if not c.named_by_user and not self._is_filled(c))
 
     def is_shown(self, column: Column) -> bool:
         """Whether a column is chosen to be shown."""
-        if column not in self.choices() or self._is_filled(column):
+        if column not in self.choices():
             return True
         return column.at_first != (column.key in self._turned)
 
