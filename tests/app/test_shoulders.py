@@ -41,7 +41,7 @@ def test_findings_say_peaks_and_fatigue():
     )
     assert any(s.startswith("C: fatigue, amplitude 77.3 of 140 MPa") and "at 550 mm" in s for s in found)
     assert verdict_detail(RESULTS) == (
-        "Largest utilisation 1.07: fatigue at joint 1, Pulling to Pushing. 2 of 15 checks fail"
+        "Largest utilisation 1.07: fatigue at joint 1, Pulling to Pushing. 2 of 16 checks fail, 1 waived"
     )
 
 
