@@ -10,6 +10,7 @@ from collections.abc import Callable, Iterator, Sequence
 from itertools import zip_longest
 from pathlib import Path
 
+from app.beside import beside
 from app.columns import one_line, table
 from app.cures import Cures
 from app.findings import Findings, StateBooks, findings
@@ -45,6 +46,7 @@ def report(
         *fatigue(results),
         *cures(cured, unsought),
         forces(found.books),
+        *companions(found),
         remarks(found),
     ]
     return "\n".join(blocks)
@@ -69,6 +71,7 @@ def utilisations(results: Results) -> Iterator[str]:
     stresses = [check for check in results.checks if check.check in STRESSES]
     if stresses:
         marks = [name for segment in results.project.segments for name in _row_names(segment)]
+        marks += [of.segment.mark for of in beside(results.project)]
         rows = by_combination(results, stresses, lambda check: segment_words(check) or "")
         head = [tr("Utilisation of stress"), *checked(results)]
         yield table(head, [[mark, *rows[mark]] for mark in marks])
@@ -169,6 +172,15 @@ def _parts(books: Sequence[StateBooks], row: int) -> Iterator[list[str]]:
     for number, part in enumerate(books[0].reactions[row].parts):
         name = words.format(mark=books[0].reactions[row].mark, support=part.name)
         yield [name, *(book.reactions[row].parts[number].text for book in books)]
+
+
+def companions(found: Findings) -> Iterator[str]:
+    """The force in each companion by combination, or that it has parted, and what clamp force is left."""
+    if found.companions:
+        head = [tr("Force in companions"), *(state.name for state in found.companions[0].states)]
+        rows = [[one.mark, *(state.text for state in one.states)] for one in found.companions]
+        said = "".join(f"{one_line(one.sentence)}\n" for one in found.companions if one.sentence)
+        yield table(head, rows) + said
 
 
 def remarks(found: Findings) -> str:

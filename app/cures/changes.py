@@ -15,6 +15,7 @@ from typing import Final, Literal, TypeAlias
 from msgspec import UnsetType
 
 from app import edits
+from app.beside import beside, beside_at
 from app.cures.rounds import above, round_numbers
 from app.section_entry import parse_section, section_text, wall_text
 from app.units import Quantity, entry_text, format_value, symbol
@@ -22,9 +23,11 @@ from solver.faults import Place
 from solver.model import (
     AnySection,
     AreaSection,
+    CompanionSegment,
     Project,
     RectangleSection,
     RoundSection,
+    Segment,
     SpringSupport,
     TubeSection,
     UnitSystemName,
@@ -67,13 +70,16 @@ class Knob:
 def section_knobs(project: Project, *indices: int) -> tuple[Knob, ...]:
     """The dimensions of the one section that these segments have, each made larger by itself.
 
-    None where parts are bonded to it: which of them would have to give way is not for a search to say.
+    They count over the member's segments and, behind those, the companions'. None where parts are bonded to
+    one: which of them would have to give way is not for a search to say.
     """
-    if any(project.segments[index].bonded for index in indices):
+    own = len(project.segments)
+    if any(index < own and project.segments[index].bonded for index in indices):
         return ()
-    section_now, system = project.segments[indices[0]].section, project.display.unit_system
-    places = tuple(("segments", index, "section") for index in indices)
-    marks = tuple(project.segments[index].mark for index in indices)
+    every, system = every_segment(project), project.display.unit_system
+    section_now = every[indices[0]].section
+    places = tuple(_place(project, index) for index in indices)
+    marks = tuple(every[index].mark for index in indices)
 
     def knob(dimension: _Dimension) -> Knob:
         def change(value: float) -> Change:
@@ -85,6 +91,18 @@ def section_knobs(project: Project, *indices: int) -> tuple[Knob, ...]:
         return Knob(round_numbers(dimension.start, reach, dimension.quantity, system), change)
 
     return tuple(map(knob, _dimensions(section_now, system)))
+
+
+def every_segment(project: Project) -> tuple[Segment | CompanionSegment, ...]:
+    """The member's segments, then those of its companions."""
+    return (*project.segments, *(of.segment for of in beside(project)))
+
+
+def _place(project: Project, index: int) -> Place:
+    own = len(project.segments)
+    return (
+        ("segments", index, "section") if index < own else (*beside_at(project, index - own).place, "section")
+    )
 
 
 @dataclass(frozen=True, slots=True)

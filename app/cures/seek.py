@@ -13,7 +13,7 @@ from dataclasses import dataclass
 from itertools import pairwise
 from typing import Final, TypeAlias
 
-from app.cures.changes import Change, Knob, section_knobs, spring_knobs
+from app.cures.changes import Change, Knob, every_segment, section_knobs, spring_knobs
 from app.cures.search import first_passing
 from app.edits import EditError
 from app.entry import EntryError
@@ -85,14 +85,14 @@ def _fail_alike(results: Results, subject: Subject) -> list[int]:
     if subject.kind != "stress":
         return []
     failed = {mark for found in failing(results) if found.kind == "stress" for mark in found.marks}
-    segments = results.project.segments
+    segments = every_segment(results.project)
     section = next(segment.section for segment in segments if segment.mark == subject.marks[0])
     return [i for i, one in enumerate(segments) if one.mark in failed and one.section == section]
 
 
 def _together(results: Results, alike: Sequence[int], cancelled: Callable[[], bool]) -> list[Cure]:
     """The nearest cure of all these segments at once, as the only one."""
-    subjects = tuple(Subject("stress", (results.project.segments[index].mark,)) for index in alike)
+    subjects = tuple(Subject("stress", (every_segment(results.project)[index].mark,)) for index in alike)
     trials = _Trials(results, subjects, cancelled)
     return _nearest_first(trials, [(knob,) for knob in section_knobs(results.project, *alike)])[:1]
 
@@ -114,7 +114,7 @@ def _knobs(results: Results, subject: Subject) -> list[tuple[Knob, ...]]:
     """The knobs to try, those for the same number together."""
     project = results.project
     if subject.kind == "stress":
-        marks = [segment.mark for segment in project.segments]
+        marks = [segment.mark for segment in every_segment(project)]
         return [(knob,) for knob in section_knobs(project, marks.index(subject.marks[0]))]
     springs = [knobs for joint in _joints(project, subject) if (knobs := spring_knobs(project, joint))]
     stretched = _most_stretched(results, subject) if subject.kind != "reaction" else []

@@ -9,6 +9,8 @@ from app.findings.comparison import Change, Comparison, comparison
 from app.findings.make import findings, findings_in
 from app.findings.records import (
     Band,
+    CompanionFinding,
+    CompanionState,
     ContactFinding,
     Findings,
     JointDisplacement,
@@ -23,6 +25,8 @@ from app.findings.records import (
 __all__ = [
     "Band",
     "Change",
+    "CompanionFinding",
+    "CompanionState",
     "Comparison",
     "ContactFinding",
     "Findings",

@@ -23,6 +23,7 @@ from solver.outcomes import SupportOutcome, support_outcomes
 from solver.results import Results, State
 
 _DIGITS = 4
+_ROUNDING = 1e-9  # of the largest axial force: the tolerance that the solver solves to
 
 
 def state_books(results: Results, system: UnitSystemName) -> tuple[StateBooks, ...]:
@@ -41,7 +42,8 @@ def _books(results: Results, index: int, state: State, bedded: bool, system: Uni
     loads, bedding, residual = (
         float(part[index]) for part in (solution.loads, solution.bedding, solution.residual)
     )
-    column = _Column(np.array([*reactions[np.isfinite(reactions)], loads, bedding]), system)
+    forces = np.array([*reactions[np.isfinite(reactions)], loads, bedding])
+    column = _Column(forces, _largest_inside(results, index), system)
     return StateBooks(
         name=state_words(state.name),
         kind=state.kind,
@@ -57,12 +59,22 @@ def _books(results: Results, index: int, state: State, bedded: bool, system: Uni
     )
 
 
+def _largest_inside(results: Results, index: int) -> float:
+    """The largest axial force of the state, in the member and its companions."""
+    rows = (
+        [results.segments] if results.companions is None else [results.segments, results.companions.segments]
+    )
+    return max(float(np.max(np.abs([row.force_max[index], row.force_min[index]]))) for row in rows)
+
+
 class _Column:
     """Forces that are added up: all with the decimals of the largest."""
 
-    def __init__(self, forces: FloatArray, system: UnitSystemName) -> None:
-        largest = to_display(float(np.max(np.abs(forces), initial=0.0)), "force", system)
-        self._decimals = decimals_for(largest, _DIGITS)
+    def __init__(self, forces: FloatArray, inside: float, system: UnitSystemName) -> None:
+        largest = float(np.max(np.abs(forces), initial=0.0))
+        if largest <= _ROUNDING * inside:  # what is left of forces that hold each other within the member
+            largest = inside
+        self._decimals = decimals_for(to_display(largest, "force", system), _DIGITS)
         self.system = system
 
     def text(self, force: float) -> str:

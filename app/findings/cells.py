@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from typing import Final
 
+from app.beside import index_of_mark
 from app.findings.records import NotMade
 from app.findings.subjects import Subject
 from app.hand.cells import Cell
@@ -36,6 +37,9 @@ def _of_subject(subject: Subject, project: Project) -> Cell | None:
     if subject.kind in ("peak", "fatigue_joint"):
         return _cell("joints", "shoulder", project.joints, lambda joint: (joint.mark,) == marks)
     if subject.kind in ("stress", "fatigue"):
+        index = index_of_mark(project, marks[0])
+        if index is not None:
+            return Cell("companions", index, "section")
         return _cell("segments", "section", project.segments, lambda segment: (segment.mark,) == marks)
     if subject.kind == "stability":
         return Cell("limits stability", 0, "stability_factor")

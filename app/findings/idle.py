@@ -7,10 +7,11 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
 
+from app.beside import beside
 from app.findings.listing import listed
 from app.phrases.notes import NO_DENSITY, NO_DENSITY_IN_PART, NO_EXPANSION
 from app.words import tr
-from solver.model import LoadCase, Project, SegmentLoad, end_of, parts_of
+from solver.model import CompanionSegment, LoadCase, Project, Segment, SegmentLoad, end_of, parts_of
 from solver.results import Results
 
 
@@ -37,14 +38,25 @@ def _heats(load: SegmentLoad) -> bool:
     return bool(load.temperature_start or end_of(load.temperature_start, load.temperature_end))
 
 
+def _segments(project: Project) -> Iterator[Segment | CompanionSegment]:
+    """All that can be loaded: of the member, then of its companions."""
+    yield from project.segments
+    yield from (of.segment for of in beside(project))
+
+
 def _marks(project: Project, materials: set[str]) -> set[str]:
     """The segments in which every part is of these materials."""
-    return {s.mark for s in project.segments if all(part.material in materials for part in parts_of(s))}
+    return {s.mark for s in _segments(project) if _materials(s) <= materials}
 
 
 def _marks_in_part(project: Project, materials: set[str]) -> set[str]:
     """The segments in which any part is of these materials."""
-    return {s.mark for s in project.segments if any(part.material in materials for part in parts_of(s))}
+    return {s.mark for s in _segments(project) if _materials(s) & materials}
+
+
+def _materials(segment: Segment | CompanionSegment) -> set[str]:
+    parts = parts_of(segment) if isinstance(segment, Segment) else (segment,)
+    return {part.material for part in parts}
 
 
 def _note(template: str, found: Iterable[tuple[str, str]], project: Project) -> Iterator[str]:
@@ -54,5 +66,5 @@ def _note(template: str, found: Iterable[tuple[str, str]], project: Project) -> 
     if pairs:
         yield tr(template).format(
             cases=listed([case.name for case in project.load_cases if case.name in cases]),
-            places=listed([segment.mark for segment in project.segments if segment.mark in marks]),
+            places=listed([segment.mark for segment in _segments(project) if segment.mark in marks]),
         )

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 
+from app.beside import beside
 from app.findings.listing import listed
 from app.findings.records import LimitFinding, NotMade
 from app.findings.subjects import subject_of, worst_first
@@ -52,6 +53,7 @@ def _finding(
 def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:
     """The checks not made `among` those of the results, together by reason and material, as they come up."""
     materials = {segment.mark: segment.material for segment in results.project.segments}
+    materials |= {of.segment.mark: of.segment.material for of in beside(results.project)}
     groups: dict[_Group, list[Check]] = {}
     for check in among:
         if check.reason is not None and check.waiver is None:
@@ -89,6 +91,7 @@ def _not_made(reason: Reason, material: str, checks: Sequence[Check], results: R
         marks=tuple(places),
         segments=tuple(i for i, s in enumerate(project.segments) if s.mark in segments),
         joints=tuple(i for i, j in enumerate(project.joints) if j.mark in joints),
+        companions=tuple(i for i, of in enumerate(beside(project)) if of.segment.mark in segments),
     )
 
 

@@ -6,6 +6,7 @@ from dataclasses import replace
 
 from app.contacts import has_stops
 from app.findings.books import displacements, state_books
+from app.findings.companions import companion_findings
 from app.findings.contacts import contact_findings
 from app.findings.idle import idle_notes
 from app.findings.limits import limit_findings, not_made
@@ -33,6 +34,7 @@ def findings(results: Results, system: UnitSystemName) -> Findings:
         limits=limit_findings(results, system, results.checks),
         not_made=not_made(results, results.checks),
         contacts=contact_findings(results, system),
+        companions=companion_findings(results, system),
         notes=notes(results),
         books=state_books(results, system),
         displacements=moved,

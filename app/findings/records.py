@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 from app.findings.subjects import Subject
 from solver.checks import Reason, Status, Verdict
+from solver.model import CompanionAction
 from solver.results import StateKind
 
 
@@ -31,7 +32,7 @@ class SegmentFinding:
     """The worst made check of stress in one segment."""
 
     subject: Subject
-    segment: int
+    segment: int  # along the chain, or among the segments of all companions
     mark: str
     sentence: str  # the whole: "C: 129 of 160 MPa in tension, 0.80, at 760 mm, Hot start"
     short: str  # without mark and utilisation, which stand beside it: "129 of 160 MPa in tension, at 760 mm"
@@ -41,6 +42,7 @@ class SegmentFinding:
     status: Status
     position: float
     band: Band
+    beside: bool = False  # whether it is a companion's segment
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,6 +75,37 @@ class NotMade:
     marks: tuple[str, ...]  # of segments and joints
     segments: tuple[int, ...]
     joints: tuple[int, ...]
+    companions: tuple[int, ...] = ()  # among the segments of all companions
+
+
+@dataclass(frozen=True, slots=True)
+class CompanionState:
+    """A companion in one checked state; forces in N, tension positive, at the joints that it lies between."""
+
+    name: str
+    kind: StateKind
+    force_from: float
+    force_to: float
+    separated: bool
+    gap: float  # m
+    text: str  # the force with its unit, or that it has parted
+
+
+@dataclass(frozen=True, slots=True)
+class CompanionFinding:
+    """A companion over the checked states; `sentence` tells its least clamp force, empty where it is tied."""
+
+    at: int
+    mark: str
+    acts: CompanionAction
+    segments: tuple[int, ...]  # among the segments of all companions
+    position: float  # of its far end
+    sentence: str
+    clamp: float | None  # N, the least
+    clamp_text: str
+    clamp_state: str
+    parts: bool  # whether it parts in some checked state
+    states: tuple[CompanionState, ...]
 
 
 @dataclass(frozen=True, slots=True)
@@ -147,6 +180,7 @@ class Findings:
     limits: tuple[LimitFinding, ...]  # the worst first
     not_made: tuple[NotMade, ...]
     contacts: tuple[ContactFinding, ...]  # of stops, along the chain
+    companions: tuple[CompanionFinding, ...]  # in the order of the file
     notes: tuple[str, ...]
     books: tuple[StateBooks, ...]  # in the states' order
     displacements: tuple[JointDisplacement, ...]  # along the chain

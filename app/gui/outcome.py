@@ -7,12 +7,13 @@ reason in the input is an outcome like any other; what else escapes is a fault o
 from __future__ import annotations
 
 import time
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 import numpy as np
 
+from app.beside import beside
 from app.gui.shown_results import results_to_show
 from app.gui.tables.column import Figures
 from app.gui.view import Shown
@@ -128,8 +129,7 @@ def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figur
     if results is None:
         return Figures(current=current)
     state = None if shown.kind == "envelope" else _index(results, shown)
-    segments = len(results.project.segments)
-    utilisation, governs = _utilisation(results, state, segments)
+    utilisation, governs = _utilisation(results, state, [s.mark for s in results.project.segments])
     nothing: FloatArray = np.zeros(0)
     return Figures(
         utilisation=utilisation,
@@ -142,6 +142,24 @@ def figures_of(results: Results | None, shown: Shown, *, current: bool) -> Figur
         segment_mass=results.segment_mass,
         force=_between(results, state, results.segments.force_min, results.segments.force_max),
         stress=_between(results, state, results.segments.stress_min, results.segments.stress_max),
+        current=current,
+        beside=_beside(results, state, current=current),
+    )
+
+
+def _beside(results: Results, state: int | None, *, current: bool) -> Figures | None:
+    """The same of the companions' segments."""
+    found = results.companions
+    if found is None:
+        return None
+    utilisation, governs = _utilisation(results, state, [of.segment.mark for of in beside(results.project)])
+    return Figures(
+        utilisation=utilisation,
+        governs=governs,
+        checked=state is None or results.states[state].checked,
+        segment_mass=found.segment_mass,
+        force=_between(results, state, found.segments.force_min, found.segments.force_max),
+        stress=_between(results, state, found.segments.stress_min, found.segments.stress_max),
         current=current,
     )
 
@@ -160,18 +178,20 @@ def _index(results: Results, shown: Shown) -> int | None:
         return None
 
 
-def _utilisation(results: Results, state: int | None, segments: int) -> tuple[FloatArray, FloatArray]:
+def _utilisation(results: Results, state: int | None, marks: Sequence[str]) -> tuple[FloatArray, FloatArray]:
     """The largest utilisation of each segment over the made checks of stress, and the sign of that stress."""
     name = None if state is None else results.states[state].name
-    found = np.full(segments, np.nan)
-    signs = np.zeros(segments)
+    found = np.full(len(marks), np.nan)
+    signs = np.zeros(len(marks))
     if state is not None and not results.states[state].checked:
         return found, signs
-    place = {segment.mark: index for index, segment in enumerate(results.project.segments)}
+    place = {mark: index for index, mark in enumerate(marks)}
     for check in results.checks:
         if check.check not in STRESSES or check.utilisation is None or name not in (None, check.combination):
             continue
-        index = place[str(check.segment)]
+        index = place.get(str(check.segment))
+        if index is None:  # of the member where the companions are asked for, and the other way round
+            continue
         if not check.utilisation <= found[index]:  # also where nothing was found yet
             found[index] = check.utilisation
             signs[index] = 1.0 if check.check == "tension" else -1.0

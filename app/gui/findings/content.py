@@ -9,6 +9,7 @@ from typing import Literal, TypeAlias
 from app.findings import (
     Band,
     Change,
+    CompanionFinding,
     Comparison,
     ContactFinding,
     Findings,
@@ -24,7 +25,7 @@ from app.units import unbroken
 from app.words import tr
 
 Tone: TypeAlias = Literal["pass", "fail", "not_made", "problem", "note"]
-RowKind: TypeAlias = SubjectKind | Literal["fails", "not_made", "contact", "note", "problem"]
+RowKind: TypeAlias = SubjectKind | Literal["fails", "not_made", "contact", "companion", "note", "problem"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,13 +44,14 @@ class Row:
     position: float | None = None
     segments: frozenset[int] = frozenset()
     joints: frozenset[int] = frozenset()
+    companions: frozenset[int] = frozenset()  # among the segments of all companions
     marks: frozenset[str] = frozenset()  # of the segments and joints it is about
     about: Subject | NotMade | Cell | None = None
 
     @property
     def leads_somewhere(self) -> bool:
         """Whether choosing the row shows something."""
-        return bool(self.segments or self.joints)
+        return bool(self.segments or self.joints or self.companions)
 
 
 @dataclass(frozen=True, slots=True)
@@ -74,10 +76,10 @@ def rows(findings: Findings) -> tuple[Row, ...]:
     found = [*map(_segment_row, findings.segments), *map(_limit_row, findings.limits)]
     checked = sorted(found, key=lambda pair: -pair[0])
     not_made = [_not_made_row(item) for item in findings.not_made]
+    beside = [_companion_row(item) for item in findings.companions if item.sentence]
     notes = [Row("note", "note", "!", unbroken(text), text) for text in findings.notes]
-    return with_named_scales(
-        (*(row for _, row in checked), *not_made, *map(_contact_row, findings.contacts), *notes)
-    )
+    contacts = map(_contact_row, findings.contacts)
+    return with_named_scales((*(row for _, row in checked), *not_made, *contacts, *beside, *notes))
 
 
 def with_named_scales(listed: Iterable[Row]) -> tuple[Row, ...]:
@@ -106,7 +108,8 @@ def _segment_row(item: SegmentFinding) -> tuple[float, Row]:
         value=item.utilisation_text,
         band=item.band,
         position=item.position,
-        segments=frozenset((item.segment,)),
+        segments=frozenset(() if item.beside else (item.segment,)),
+        companions=frozenset((item.segment,) if item.beside else ()),
     )
     return item.utilisation, row
 
@@ -140,6 +143,22 @@ def _not_made_row(item: NotMade) -> Row:
         remedy=item.remedy,
         segments=frozenset(item.segments),
         joints=frozenset(item.joints),
+        companions=frozenset(item.companions),
+    )
+
+
+def _companion_row(item: CompanionFinding) -> Row:
+    """What remains of a clamping; a companion that has parted wears the sign of what is to be looked at."""
+    return Row(
+        tone="note",
+        kind="companion",
+        mark="!" if item.parts else item.mark,
+        text=unbroken(item.sentence),
+        spoken=item.sentence,
+        value="" if item.parts else item.clamp_text,
+        position=item.position,
+        companions=frozenset(item.segments),
+        marks=frozenset((item.mark,)),
     )
 
 
@@ -170,7 +189,9 @@ def blocks(findings: Findings, shown: Shown) -> tuple[Block, ...]:
         Line(tr("joint {mark}, {state}").format(mark=m.mark, state=m.state), m.text)
         for m in findings.displacements
     )
-    return (*reactions, Block(tr("Largest displacements"), moved), _rest(findings, chosen or findings.books))
+    beside = _companions(findings, shown)
+    rest = Block(tr("Largest displacements"), moved), _rest(findings, chosen or findings.books)
+    return (*reactions, *beside, *rest)
 
 
 def overall_block(compared: Comparison) -> Block:
@@ -213,6 +234,24 @@ def _reactions(book: StateBooks) -> Block:
         lines.append(Line(tr("bedding"), book.bedding_text, quiet=True))
     lines.append(Line(tr("sum of all forces"), book.residual_text, quiet=True))
     return Block(tr("Reactions, {state}").format(state=book.name), tuple(lines))
+
+
+def _companions(findings: Findings, shown: Shown) -> tuple[Block, ...]:
+    """The forces of the companions in the shown state; in every checked one for the envelope."""
+    states = list(dict.fromkeys((s.kind, s.name) for one in findings.companions for s in one.states))
+    chosen = [state for state in states if state == (shown.kind, shown.name)] or states
+    return tuple(
+        Block(
+            tr("Force in companions, {state}").format(state=name),
+            tuple(
+                Line(one.mark, s.text)
+                for one in findings.companions
+                for s in one.states
+                if (s.kind, s.name) == (kind, name)
+            ),
+        )
+        for kind, name in chosen
+    )
 
 
 def _rest(findings: Findings, books: tuple[StateBooks, ...] | list[StateBooks]) -> Block:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from PySide6.QtCore import QObject, Qt, Signal
 from PySide6.QtWidgets import QApplication
 
+from app.beside import beside
 from app.findings.cells import cell_of_finding
 from app.gui.document import Document
 from app.gui.findings.content import Row
@@ -42,7 +43,8 @@ class Jump(QObject):
 
     def on_chosen(self, row: Row) -> None:
         """Zoom or pan so far that all of what the finding is about is seen."""
-        self._sheet.bring_into_view(row.segments, row.joints)
+        between = frozenset(self._sheet.drawing.joints_beside(row.companions))
+        self._sheet.bring_into_view(row.segments, row.joints | between)
 
     def to_cell(self, row: Row) -> None:
         """The cell that would be changed, with the keyboard in it."""
@@ -75,6 +77,7 @@ class Jump(QObject):
         project, selection = self._document.project, self._view.selection
         marks = [segment.mark for i, segment in enumerate(project.segments) if i in selection.segments]
         marks += [joint.mark for i, joint in enumerate(project.joints) if i in selection.joints]
+        marks += [of.segment.mark for i, of in enumerate(beside(project)) if i in selection.companions]
         if marks:
             self._panel.filter.ask_for_marks(marks)
         else:

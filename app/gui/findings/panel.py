@@ -245,7 +245,7 @@ class FindingsPanel(QScrollArea):
         if not row.leads_somewhere:
             return
         self.row_chosen.emit(row)
-        self._view.set_selection(Selection(row.segments, row.joints))
+        self._view.set_selection(Selection(row.segments, row.joints, row.companions))
         if row.position is not None:
             self._view.set_cursor(Cursor(row.position))
 

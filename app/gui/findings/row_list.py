@@ -108,7 +108,11 @@ class RowList(QObject):
         """Light the rows of what is selected."""
         for entry in self._entries:
             row = entry.row.row
-            lit = row is not None and bool(row.segments & selection.segments or row.joints & selection.joints)
+            lit = row is not None and bool(
+                row.segments & selection.segments
+                or row.joints & selection.joints
+                or row.companions & selection.companions
+            )
             entry.row.set_lit(lit)
 
     def dress(self, theme: Theme, of_problems: Theme) -> None:

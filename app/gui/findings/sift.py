@@ -27,6 +27,7 @@ KINDS: Final[tuple[tuple[RowKind | None, str], ...]] = (
     ("stability", later("Stability")),
     ("not_made", later("Not checked")),
     ("contact", later("Contact of stops")),
+    ("companion", later("Companions")),
     ("note", later("Notes")),
 )
 

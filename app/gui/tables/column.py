@@ -45,7 +45,7 @@ class Figures:
     `displacement` and `reaction` (n + 1,), NaN in an envelope and where there is no support; `contacts` what
     the stops of each joint do, in words.
     `segment_mass` (n,) in kg; `force` and `stress` (n, 2), the least and the largest within the segment.
-    `current` is False for results of an earlier edit.
+    `current` is False for results of an earlier edit. `beside` has the same for the segments of companions.
     """
 
     utilisation: FloatArray = field(default_factory=lambda: np.zeros(0))
@@ -59,6 +59,7 @@ class Figures:
     stress: FloatArray = field(default_factory=lambda: np.zeros((0, 2)))
     checked: bool = True  # whether checks are made of the state
     current: bool = True
+    beside: Figures | None = None  # of the companions' segments
 
     @staticmethod
     def value(values: FloatArray, index: int) -> float | None:

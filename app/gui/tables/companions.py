@@ -2,15 +2,26 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 from app.action_entry import action_text
 from app.beside import beside_at
 from app.gui.tables import companion_cells as cells
 from app.gui.tables import offers
 from app.gui.tables.case_loads import FORCE, end_of_load, heat_of
-from app.gui.tables.column import Adding, Column, Table
+from app.gui.tables.column import Adding, Column, Figures, Sight, Table
+from app.gui.tables.segment_figures import bar, between, utilisation, why_no_utilisation
 from app.section_entry import section_label, section_text
 from app.units import entry_text, format_value
 from app.words import later
+
+Shown = Callable[[int, Figures, Sight], str]
+
+
+def _beside(figure: Shown) -> Shown:
+    """A figure of the companions' segments."""
+    return lambda index, figures, sight: figure(index, figures.beside or Figures(), sight)
+
 
 COLUMNS = (
     Column(
@@ -116,6 +127,23 @@ COLUMNS = (
         of_case=True,
         quantity="displacement",
         optional=True,
+    ),
+    Column("force", later("Axial force"), quantity="force", figure=_beside(between("force")), width=13),
+    Column(
+        "stress",
+        later("Stress"),
+        quantity="stress",
+        figure=_beside(between("stress")),
+        width=13,
+        at_first=False,
+    ),
+    Column(
+        "utilisation",
+        later("Utilisation"),
+        figure=_beside(utilisation),
+        bar=lambda index, figures: bar(index, figures.beside or Figures()),
+        width=6,
+        why_none=lambda index, figures: why_no_utilisation(index, figures.beside or Figures()),
     ),
 )
 
