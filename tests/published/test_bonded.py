@@ -204,3 +204,14 @@ def test_the_bound_holds_where_stiffnesses_run_against_each_other():
     assert np.all(np.abs(results.segments.force_max[0]) <= results.segments.force_bound[0])
     without = solve(replace(project, segments=(replace(project.segments[0], bonded=()),)))
     assert without.parts is None
+
+
+def test_a_tapered_layer_around_an_even_core():
+    # The own part alone is prismatic, the whole is not: EA is linear, and ∫ dx / EA a logarithm.
+    pulled = case(on_joints=[JointLoad("1", force=1e5)])
+    results = solve(rod([STEEL, CONCRETE], [area(1e-3), area(1e-3, 9e-2)], pulled, length=1.0))
+    first, last = 200e9 * 1e-3 + 31e9 * 1e-3, 200e9 * 1e-3 + 31e9 * 9e-2
+    end = 1e5 * math.log(last / first) / (last - first)
+    assert_allclose(results.solution.joint_displacement[0, 1], end, rtol=1e-9)
+    assert_allclose(results.parts.stress_max[0], [1e5 / first * 200e9, 1e5 / first * 31e9], rtol=1e-9)
+    assert_allclose(results.parts.stress_max_at[0], 0.0, atol=1e-9)
