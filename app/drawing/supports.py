@@ -28,7 +28,7 @@ NOSE = 8.0  # from the joint to the plate of a hanging stop, px
 GAP = 8.0  # from a plate, or the member's end, to the wall it can meet, px
 LEVEL = 20.0  # from one hanging support to the next below it, px
 SLIDE = 60.0  # how far a label may go aside, px; beside others of its joint further
-FAR = 3  # times as far at most
+FAR = 3.0  # times as far
 
 
 class Faces(Struct, frozen=True):
@@ -91,7 +91,7 @@ def support_wishes(sketch: Sketch) -> list[Wish]:
 def slide_of(sketch: Sketch, one: Drawn) -> float:
     """How far a label may go aside."""
     beside = len(supports_of(sketch.member.project.joints[one.joint]))
-    return SLIDE * min(beside, FAR)
+    return SLIDE * (FAR if beside > 1 else 1.0)
 
 
 def _speaks_for(one: Drawn, after: Drawn | None) -> bool:
