@@ -8,6 +8,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from msgspec.structs import replace
+
 from app.drawing.frame import StopMark
 from app.drawing.hanging import Drawn
 from app.drawing.placing import CLEAR, STACKED, Placed, Wish
@@ -17,7 +19,7 @@ from app.drawing.supports import faces_of, part_of, slide_of, span_of
 from solver.model import StopSupport
 
 BAR = 4.0  # half the width of the bar of a closed stop, px
-RANK = 1  # after the labels of the supports themselves
+BEHIND = 0.1  # px, so that it comes after the label of its stop
 
 
 def contact_wishes(sketch: Sketch) -> list[Wish]:
@@ -28,8 +30,9 @@ def contact_wishes(sketch: Sketch) -> list[Wish]:
             low, high = span_of(sketch, one)
             face: Face = "small_strong" if mark.closed else "small"
             slide = slide_of(sketch, one)
-            wish = sketch.wish(mark.text, 0.5 * (low + high), part_of(one), face=face, rank=RANK, slide=slide)
-            wishes.append(wish)
+            along = 0.5 * (low + high) + BEHIND
+            wish = sketch.wish(mark.text, along, part_of(one), face=face, slide=slide)
+            wishes.append(replace(wish, of_results=True))
     return wishes
 
 
@@ -45,7 +48,7 @@ def put_under(sketch: Sketch, labels: list[Wish], contacts: list[Wish]) -> None:
 
 def _put(sketch: Sketch, placed: list[Placed], rows: tuple[tuple[float, float], ...]) -> None:
     for label in placed:
-        if label.wish.rank == RANK:
+        if label.wish.of_results:
             wish, row = label.wish, rows[label.row]
             text = sketch.text_at(wish, label.span, row, "low", wish.face, "ink")
             sketch.picture.contact_texts.append(text)

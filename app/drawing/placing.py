@@ -34,6 +34,7 @@ class Wish(Struct, frozen=True):
     rank: int = 0
     slide: float = 0.0
     face: Face = "small"
+    of_results: bool = False
 
 
 class Placed(Struct, frozen=True):
