@@ -90,8 +90,12 @@ def support_wishes(sketch: Sketch) -> list[Wish]:
 
 def slide_of(sketch: Sketch, one: Drawn) -> float:
     """How far a label may go aside."""
-    beside = len(supports_of(sketch.member.project.joints[one.joint]))
-    return SLIDE * (FAR if beside > 1 else 1.0)
+    return SLIDE if _is_alone(sketch, one) else SLIDE * FAR
+
+
+def _is_alone(sketch: Sketch, one: Drawn) -> bool:
+    """Whether its joint has no other support."""
+    return len(supports_of(sketch.member.project.joints[one.joint])) == 1
 
 
 def _speaks_for(one: Drawn, after: Drawn | None) -> bool:
@@ -105,7 +109,7 @@ def _wide_wishes(sketch: Sketch) -> list[Wish]:
         return []
     wishes = []
     for one in sketch.supports:
-        if not one.hangs and isinstance(one.support, SpringSupport):
+        if not one.hangs and isinstance(one.support, SpringSupport) and _is_alone(sketch, one):
             wish = _stiffness_wish(sketch, one, one.support, sketch.along(one.joint))
             if _is_wide(sketch, one.joint, wish):
                 wishes.append(replace(wish, slide=wish.extent))
@@ -125,15 +129,18 @@ def _is_wide(sketch: Sketch, joint: int, wish: Wish) -> bool:
 def _label(sketch: Sketch, one: Drawn, *, both: bool) -> str:
     """What stands in the row under the supports; the side of a stop where there is more at its joint."""
     support = one.support
-    if isinstance(support, SpringSupport) and one.hangs:
+    if isinstance(support, SpringSupport) and (one.hangs or not _is_alone(sketch, one)):
         return _stiffness(sketch, support.stiffness)
     if not isinstance(support, StopSupport):
         return ""
     gap = value_text(support.clearance, "displacement", sketch.member.system)
     how = tr("rigid") if isinstance(support.stiffness, UnsetType) else _stiffness(sketch, support.stiffness)
     words = tr("gap {value}, {how}").format(value=gap, how=how)
-    alone = len(supports_of(sketch.member.project.joints[one.joint])) == 1
-    return words if alone else f"{'±' if both else '+' if side_of(support) > 0 else '−'} {words}"
+    return (
+        words
+        if _is_alone(sketch, one)
+        else f"{'±' if both else '+' if side_of(support) > 0 else '−'} {words}"
+    )
 
 
 def _stiffness(sketch: Sketch, stiffness: float) -> str:
@@ -171,7 +178,7 @@ def _draw_at_end(sketch: Sketch, one: Drawn) -> None:
         _zigzag(sketch, along, ground, axis, part)
         _wall(sketch, ground, 12.0, out)
         reach, half = SPRING + WALL, max(half, 12.0)
-        if sketch.frame.detail.dimensions:
+        if sketch.frame.detail.dimensions and _is_alone(sketch, one):
             _label_end_spring(sketch, one, one.support, 0.5 * (along + ground))
     span = (along, along + out * max(reach, 24.0))
     sketch.target(span, (axis - half - 8.0, axis + half + 8.0), part)
