@@ -11,13 +11,16 @@ from typing import Any
 import numpy as np
 from scipy.linalg import LinAlgError, cholesky_banded, eigh
 from scipy.linalg.blas import dsbmv
-from scipy.linalg.lapack import dtbtrs
+from scipy.linalg.lapack import dpbtrf, dpbtrs, dtbtrs
 from scipy.sparse.linalg import ArpackError, LinearOperator, eigsh
 
 from solver.arrays import FloatArray
 
-SMALL = 130  # unknowns up to which the dense solution is the faster one
+SMALL = 64  # unknowns up to which the dense solution is the faster one, and runs in one thread
 _SEARCHED = 60  # Lanczos vectors at most
+_BELOW = 0.98  # of the factor that is known, for the shift of inverse iteration
+_SURE = 2e-8  # no other factor may lie further below than this part
+_STEPS = 12
 
 
 class NoFactor(Exception):  # noqa: N818 - the caller asks whether there is one
@@ -34,6 +37,38 @@ def largest(stiffness: FloatArray, load: FloatArray) -> tuple[float, FloatArray]
         return _by_lanczos(stiffness, load)
     except (LinAlgError, ArpackError) as lost:
         raise NoFactor from lost
+
+
+def near(
+    stiffness: FloatArray, load: FloatArray, factor: float, guess: FloatArray
+) -> tuple[float, FloatArray] | None:
+    """The largest μ, knowing about where 1/μ lies and a vector like the one wanted; None where in doubt.
+
+    Inverse iteration below the factor. That no smaller factor was passed over is proved by K − λ G being
+    positive definite just below the one found.
+    """
+    shifted = _factored(stiffness, load, _BELOW * factor)
+    if shifted is None:
+        return None
+    vector, value, below = guess, factor, len(stiffness) - 1
+    bands = np.asfortranarray(stiffness), np.asfortranarray(load)
+    for _ in range(_STEPS):
+        vector = np.asarray(dpbtrs(shifted, dsbmv(below, 1.0, bands[0], vector, lower=1), lower=1)[0])
+        vector = vector.reshape(-1) / np.abs(vector).max()
+        stored, work = (float(vector @ dsbmv(below, 1.0, band, vector, lower=1)) for band in bands)
+        if not work > 0.0:
+            return None
+        value, before = stored / work, value
+        if abs(value - before) <= 1e-13 * value:
+            break
+    sure = _factored(stiffness, load, (1.0 - _SURE) * value) is not None
+    return (1.0 / value, vector) if sure else None
+
+
+def _factored(stiffness: FloatArray, load: FloatArray, factor: float) -> FloatArray | None:
+    """Cholesky's factor of K − factor G; None where that is not positive definite."""
+    lower, failed = dpbtrf(np.asfortranarray(stiffness - factor * load), lower=1)
+    return None if failed else np.asarray(lower)
 
 
 def _dense(stiffness: FloatArray, load: FloatArray) -> tuple[float, FloatArray]:

@@ -85,6 +85,15 @@ def strains_of(unknowns: FloatArray, length: FloatArray, degree: int) -> FloatAr
     return strains
 
 
+def raised(unknowns: FloatArray, degree: int, higher: int) -> FloatArray:
+    """The same deflection in a higher degree: what is new is zero."""
+    count = (len(unknowns) - OF_END) // step(degree)
+    fresh = np.zeros((count + 1, step(higher)))
+    fresh[:count, : step(degree)] = unknowns[:-OF_END].reshape(count, -1)
+    fresh[count, :OF_END] = unknowns[-OF_END:]
+    return np.ascontiguousarray(fresh.ravel()[: count * step(higher) + OF_END])
+
+
 def strain_matrix(length: FloatArray, degree: int) -> FloatArray:
     """(e, p, p + 1): the strains of each element from its own unknowns."""
     turn = length / 2.0

@@ -15,8 +15,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from solver.arrays import BoolArray, FloatArray
-from solver.banded_eigen import NoFactor, largest
-from solver.beam_elements import banded, reference, step, strain_matrix, strains_of
+from solver.banded_eigen import NoFactor, largest, near
+from solver.beam_elements import banded, raised, reference, step, strain_matrix, strains_of
 from solver.beam_mesh import BeamMesh, Column, first_mesh, halved
 from solver.buckling_mode import Mode, mode_of
 from solver.errors import Cancelled
@@ -54,7 +54,7 @@ def _settled(
     column: Column, solution: Solution, pending: list[int], cancelled: Callable[[], bool]
 ) -> Iterator[tuple[int, Buckled]]:
     """The states as they settle."""
-    before = dict.fromkeys(pending, np.nan)
+    before: dict[int, Shape | None] = dict.fromkeys(pending)
     mesh, degrees = first_mesh(column, solution), iter(DEGREES)
     degree, most = next(degrees), GROWTH * len(mesh.segment) + MOST_MORE
     for _ in range(len(DEGREES) + HALVINGS):
@@ -63,17 +63,22 @@ def _settled(
         for state in tuple(pending):
             if cancelled():
                 raise Cancelled
-            shape = space.lowest(state)
-            if shape is not None and abs(shape.factor - before[state]) <= SETTLED * shape.factor:
+            shape = space.lowest(state, before[state])
+            if shape is not None and _has_settled(before[state], shape):
                 pending.remove(state)
                 yield state, Buckled(space.in_units(shape.factor, state), space.mode(shape))
             else:
-                before[state] = np.nan if shape is None else shape.factor
+                before[state] = shape
                 coarse |= space.coarse(shape)
         finer = next(degrees, None)
         if not pending or (finer is None and len(mesh.segment) > most):
             return
         mesh, degree = (halved(mesh, coarse), degree) if finer is None else (mesh, finer)
+
+
+def _has_settled(before: Shape | None, shape: Shape) -> bool:
+    """Whether the factor is the same in two spaces."""
+    return before is not None and abs(shape.factor - before.factor) <= SETTLED * shape.factor
 
 
 @dataclass(frozen=True, slots=True)
@@ -136,16 +141,36 @@ class Space:
         scaled = -force / np.abs(self._force[state]).sum(axis=-1).max()
         return self._quadrature(scaled, self._reference.slope) * (2.0 / self._length)[:, None, None]
 
+    def _near(
+        self, pencil: tuple[FloatArray, FloatArray], coarser: Shape | None
+    ) -> tuple[float, FloatArray] | None:
+        """From what the coarser space has found, where it has and its elements are the same."""
+        if coarser is None or len(coarser.strains) != len(self._length):
+            return None
+        degree = coarser.strains.shape[1]
+        return near(*pencil, coarser.factor, raised(coarser.unknowns, degree, self._degree))
+
+    def _pencil(self, driving: FloatArray) -> tuple[FloatArray, FloatArray]:
+        return self._stiffness, self._held(banded(self._of_unknowns(driving), self._degree), 0.0)
+
+    def pencil(self, state: int) -> tuple[FloatArray, FloatArray]:
+        """The lower bands of K and G of a state."""
+        return self._pencil(self._driving(state))
+
     def in_units(self, factor: float, state: int) -> float:
         """The factor on the loads."""
         unit = self._largest / self._whole**2
         return float(factor * unit / np.abs(self._force[state]).sum(axis=-1).max())
 
-    def lowest(self, state: int) -> Shape | None:
-        """The lowest shape; None where this space has none that compression drives."""
+    def lowest(self, state: int, coarser: Shape | None = None) -> Shape | None:
+        """The lowest shape; None where this space has none that compression drives.
+
+        One on the same elements in a lower degree is where to begin from.
+        """
         driving = self._driving(state)
-        load = self._held(banded(self._of_unknowns(driving), self._degree), 0.0)
-        value, unknowns = largest(self._stiffness, load)
+        pencil = self._pencil(driving)
+        found = self._near(pencil, coarser)
+        value, unknowns = largest(*pencil) if found is None else found
         if not value > 0.0:
             return None
         unknowns[self._fixed] = 0.0

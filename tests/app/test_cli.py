@@ -431,7 +431,7 @@ def test_samples_are_listed_by_title_and_copied_once(
 
 def test_an_unknown_sample_is_answered_with_the_known_ones(capsys: pytest.CaptureFixture[str]) -> None:
     assert cli.main(["sample", "crane"]) == 2
-    assert "hoist_shaft, capstan_shaft, quay_pile, tie_rod" in capsys.readouterr().err
+    assert "hoist_shaft, capstan_shaft, loft_column, quay_pile, tie_rod" in capsys.readouterr().err
 
 
 @pytest.mark.parametrize(

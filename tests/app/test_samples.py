@@ -12,7 +12,13 @@ from solver.model import Project
 from solver.outcomes import support_outcomes
 from solver.solve import solve
 
-VERDICTS = {"hoist_shaft": "pass", "capstan_shaft": "pass", "tie_rod": "fail", "quay_pile": "pass"}
+VERDICTS = {
+    "hoist_shaft": "pass",
+    "capstan_shaft": "pass",
+    "loft_column": "pass",
+    "tie_rod": "fail",
+    "quay_pile": "pass",
+}
 
 
 @pytest.fixture(scope="module")
@@ -80,6 +86,7 @@ def test_together_they_show_everything() -> None:
     assert {"load_start", "load_end", "temperature_start", "temperature_end", "lack_of_fit"} <= shown
     assert {"gravity", "force", "movement", "bedding", "bedding_end", "allowable_factor"} <= shown
     assert {"displacement", "relative", "reaction"} <= shown
+    assert {"bonded", "lateral", "translation", "rotation", "stability_factor"} <= shown
     assert {"stop", "side", "clearance", "fillet_radius", "factor", "allowable_peak"} <= shown
 
 
