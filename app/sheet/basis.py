@@ -4,11 +4,21 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+from app.beside import beside
 from app.sheet.blocks import Block, Value, bullets, formula, formulas, heading, paragraph
 from app.sheet.bonded import bonded_formulas, is_bonded
 from app.sheet.contacts import stop_assumptions
 from app.words import tr
-from solver.model import AreaSection, Project, RectangleSection, RoundSection, TubeSection, end_of, parts_of
+from solver.model import (
+    AnySection,
+    AreaSection,
+    Project,
+    RectangleSection,
+    RoundSection,
+    TubeSection,
+    end_of,
+    parts_of,
+)
 
 
 def basis_blocks(project: Project) -> Iterator[Block]:
@@ -45,7 +55,7 @@ def _formulas(project: Project) -> Iterator[dict[str, Value]]:
         "spring",
         tr("R equals minus k times u minus δ, or u equals δ where it is fixed"),
     )
-    shapes = {type(part.section) for segment in project.segments for part in parts_of(segment)}
+    shapes = {type(section) for section in _sections(project)}
     for shape, label, name, alt in (
         (RoundSection, tr("area, round"), "round", tr("A equals π over 4 times d squared")),
         (TubeSection, tr("area, tube"), "tube", tr("A equals π over 4 times D squared minus d squared")),
@@ -67,7 +77,46 @@ def _formulas(project: Project) -> Iterator[dict[str, Value]]:
     yield formula(
         tr("utilisation of a limit"), "limit", tr("η equals the magnitude of the value over its limit")
     )
+    yield from _companion_formulas(project)
     yield from _notch_formulas(project)
+
+
+def _sections(project: Project) -> Iterator[AnySection]:
+    """Those of the member and of its companions."""
+    yield from (part.section for segment in project.segments for part in parts_of(segment))
+    yield from (of.segment.section for of in beside(project))
+
+
+def _drawn(project: Project) -> Iterator[AnySection]:
+    """Those that the drawing shows by themselves."""
+    yield from (segment.section for segment in project.segments)
+    yield from (of.segment.section for of in beside(project))
+
+
+def _companion_formulas(project: Project) -> Iterator[dict[str, Value]]:
+    """At the joints that companions are tied to, and where they can part, as far as there are such."""
+    if project.companions:
+        yield formula(
+            tr("joint with companions"),
+            "companion_joint",
+            tr(
+                "N right minus N left, plus N of companions from it, minus N of those to it, plus P plus R"
+                " is 0"
+            ),
+        )
+    actions = {companion.action for companion in project.companions}
+    if "compression" in actions:
+        yield formula(
+            tr("acts in compression only"),
+            "companion_compression",
+            tr("N is at most 0, the gap g at least 0, and N times g equals 0"),
+        )
+    if "tension" in actions:
+        yield formula(
+            tr("acts in tension only"),
+            "companion_tension",
+            tr("N is at least 0, the gap g at least 0, and N times g equals 0"),
+        )
 
 
 def _notch_words(project: Project) -> str:
@@ -126,6 +175,14 @@ def _assumptions(project: Project) -> list[str]:
                 " segment in strips and tables is that of its own part, its utilisation the largest of all."
             )
         )
-    if any(isinstance(s.section, AreaSection) for s in project.segments):
+    if project.companions:
+        items.append(
+            tr(
+                "A companion moves with the member at the two joints that it lies between, nowhere else:"
+                " there is no friction between them and no clearance, except where one that acts one way only"
+                " has parted from its far joint."
+            )
+        )
+    if any(isinstance(section, AreaSection) for section in _drawn(project)):
         items.append(tr("Where only an area is given, the drawing shows the round bar of that area."))
     return items

@@ -7,17 +7,18 @@ from collections.abc import Iterator, Mapping
 from msgspec import UnsetType
 from msgspec.structs import replace
 
+from app.beside import beside
+from app.edits.companions import segment_marks
 from app.numerals import MINUS
-from app.section_entry import section_text
 from app.sheet.blocks import Block, column, heading, paragraph, picture, table
+from app.sheet.companions import companion_inputs
 from app.sheet.joint_inputs import joint_inputs
 from app.sheet.member_figure import Figure, member_figure
-from app.sheet.readings import NOTHING, Readings, legible
+from app.sheet.readings import NOTHING, Readings
+from app.sheet.section_words import area_words, section_words
 from app.sheet.shoulders import strength_columns
 from app.words import tr
 from solver.model import (
-    AnySection,
-    AreaSection,
     BondedPart,
     LoadCase,
     Material,
@@ -28,7 +29,6 @@ from solver.model import (
 )
 from solver.packing import pack
 from solver.results import Results
-from solver.sections import area_coefficients
 
 
 def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
@@ -43,6 +43,7 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
     )
     yield _materials(project, say)
     yield _segments(project, say)
+    yield from companion_inputs(project, say)
     yield joint_inputs(project, results, say)
     if not project.load_cases:
         yield paragraph(tr("There are no load cases: the member is unloaded."))
@@ -65,6 +66,7 @@ def _materials(project: Project, say: Readings) -> Block:
         *strength,
     ]
     used = {part.material for segment in project.segments for part in parts_of(segment)}
+    used |= {of.segment.material for of in beside(project)}
     rows = [[*_material_row(m, say, used=m.name in used), *strength_cells(m)] for m in project.materials]
     return table(tr("Materials"), columns, rows)
 
@@ -101,8 +103,8 @@ def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[
             segment.mark,
             ends,
             say.exact(segment.length, "length"),
-            _section(segment.section, say),
-            _areas(segment.section, say),
+            section_words(segment.section, say),
+            area_words(segment.section, say),
             segment.material,
         ]
         if bedded:
@@ -115,32 +117,13 @@ def _segment_rows(project: Project, say: Readings, *, bedded: bool) -> Iterator[
 def _part_row(number: int, part: BondedPart, cells: int, say: Readings) -> list[str]:
     """A bonded part, under the segment's own."""
     words = tr("part {number}").format(number=number)
-    row = ["", words, "", _section(part.section, say), _areas(part.section, say), part.material]
+    row = ["", words, "", section_words(part.section, say), area_words(part.section, say), part.material]
     return row + [""] * (cells - len(row))
-
-
-def _areas(section: AnySection, say: Readings) -> str:
-    """At the start, and at the end where that differs."""
-    first, _, last = area_coefficients(section)
-    area = [say.read(a, "area") for a in (first, last)]
-    return area[0] if first == last else " → ".join(area)
-
-
-def _section(section: AnySection, say: Readings) -> str:
-    """As typed; of a bare area, which has a column of its own, its second moment."""
-    if not isinstance(section, AreaSection):
-        return legible(section_text(section, say.units))
-    if isinstance(section.second_moment, UnsetType):
-        return tr("area given")
-    moment = say.pair(
-        section.second_moment, end_of(section.second_moment, section.second_moment_end), "second_moment"
-    )
-    return tr("area given, I {value} {unit}").format(value=moment, unit=say.unit("second_moment"))
 
 
 def _in_chain_order(case: LoadCase, project: Project) -> LoadCase:
     """The case with its loads in the order of the chain, in which a checker goes through them."""
-    segments = [segment.mark for segment in project.segments]
+    segments = segment_marks(project)
     joints = [joint.mark for joint in project.joints]
     return replace(
         case,

@@ -4,13 +4,16 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterator
+from dataclasses import dataclass
 
 import numpy as np
 
+from app.beside import beside
 from app.findings.books import state_books
 from app.findings.records import StateBooks
 from app.sheet.blocks import Block, column, facts, heading, paragraph, picture, table
 from app.sheet.bonded import part_table
+from app.sheet.companions import clamp_blocks, companion_forces
 from app.sheet.contacts import contact_blocks
 from app.sheet.fatigue import fatigue_blocks
 from app.sheet.figures import envelope_figure, state_figure
@@ -22,7 +25,7 @@ from app.units import utilisation_text
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.checks import STRESSES, Check
-from solver.results import Results, State
+from solver.results import Results, SegmentResults, State
 
 
 def outcome_blocks(results: Results, say: Readings) -> Iterator[Block]:
@@ -35,6 +38,7 @@ def outcome_blocks(results: Results, say: Readings) -> Iterator[Block]:
         yield _balance(book)
     if len(checked) > 1:
         yield from _envelope_blocks(results, say)
+    yield from clamp_blocks(results, say)
     yield from fatigue_blocks(results, say)
 
 
@@ -51,9 +55,11 @@ def _state_blocks(results: Results, index: int, state: State, say: Readings) -> 
         "{name}: u, N (+ tension, − compression), σ, utilisation; allowables dashed, beyond them hatched"
     )
     yield picture(state_figure(results, index), caption.format(name=state.name))
-    yield _segments(results, index, say)
+    for row in _rows(results):
+        yield _segments(results, row, index, say)
     if results.parts is not None:
         yield part_table(results, results.parts, index, say)
+    yield from companion_forces(results, index, say)
     yield _joints(results, index, say)
     yield from contact_blocks(results, index, say)
     yield from peak_tables(results, state.name, say)
@@ -79,7 +85,28 @@ def _largest(values: FloatArray) -> float:
     return float(finite.max()) if finite.size else 0.0
 
 
-def _segments(results: Results, index: int, say: Readings) -> Block:
+@dataclass(frozen=True, slots=True)
+class _Row:
+    """Segments that stand one after the other in the results: the member's, or those of all companions."""
+
+    title: str
+    of_envelope: str
+    marks: tuple[str, ...]
+    segments: SegmentResults
+
+
+def _rows(results: Results) -> Iterator[_Row]:
+    marks = tuple(segment.mark for segment in results.project.segments)
+    title, of_envelope = tr("Segments: axial force, stress, utilisation"), tr("Envelope by segment")
+    yield _Row(title, of_envelope, marks, results.segments)
+    if results.companions is not None:
+        beside_it = tuple(of.segment.mark for of in beside(results.project))
+        title = tr("Segments of companions: axial force, stress, utilisation")
+        of_envelope = tr("Envelope by segment of companions")
+        yield _Row(title, of_envelope, beside_it, results.companions.segments)
+
+
+def _segments(results: Results, row: _Row, index: int, say: Readings) -> Block:
     length, stress = say.unit("length"), say.unit("stress")
     columns = [
         column(tr("Segment"), align="left"),
@@ -94,15 +121,15 @@ def _segments(results: Results, index: int, say: Readings) -> Block:
         column(tr("Check"), align="left"),
     ]
     return table(
-        tr("Segments: axial force, stress, utilisation"),
+        row.title,
         columns,
-        [_segment_row(results, index, place, say) for place in range(len(results.project.segments))],
-        strong=_failing(results, index),
+        [_segment_row(results, row, index, place, say) for place in range(len(row.marks))],
+        strong=_failing(results, row, index),
     )
 
 
-def _segment_row(results: Results, index: int, place: int, say: Readings) -> list[str]:
-    segments, mark = results.segments, results.project.segments[place].mark
+def _segment_row(results: Results, row: _Row, index: int, place: int, say: Readings) -> list[str]:
+    segments = row.segments
     force = max(_largest(segments.force_max[index]), _largest(segments.force_min[index]))
     stress = max(_largest(segments.stress_max[index]), _largest(segments.stress_min[index]))
 
@@ -110,14 +137,14 @@ def _segment_row(results: Results, index: int, place: int, say: Readings) -> lis
         return _position(results, float(values[index, place]), say)
 
     return [
-        mark,
+        row.marks[place],
         say.read(segments.force_start[index, place], "force", beside=force),
         say.read(segments.force_end[index, place], "force", beside=force),
         say.read(segments.stress_max[index, place], "stress", beside=stress),
         at(segments.stress_max_at),
         say.read(segments.stress_min[index, place], "stress", beside=stress),
         at(segments.stress_min_at),
-        *_utilisation(results, index, place, say),
+        *_utilisation(results, row, index, place, say),
     ]
 
 
@@ -133,26 +160,26 @@ def _of_segment(results: Results, index: int, mark: str) -> list[Check]:
     return [c for c in own if c.segment == mark]
 
 
-def _utilisation(results: Results, index: int, place: int, say: Readings) -> list[str]:
+def _utilisation(results: Results, row: _Row, index: int, place: int, say: Readings) -> list[str]:
     """Utilisation, its place, and the verdict of all checks of the segment in this state."""
-    checks = _of_segment(results, index, results.project.segments[place].mark)
+    checks = _of_segment(results, index, row.marks[place])
     statuses = {c.status for c in checks}
-    value = float(results.segments.utilisation[index, place])
+    value = float(row.segments.utilisation[index, place])
     status = next((status for status in ("fail", "not_made") if status in statuses), "pass")
     words = status_word(status) if checks else tr("no stress")
     if math.isnan(value):
         return [NOTHING, NOTHING, words]
     number = utilisation_text(value, "fail" if status == "fail" else "pass")
-    return [number, _position(results, float(results.segments.utilisation_at[index, place]), say), words]
+    return [number, _position(results, float(row.segments.utilisation_at[index, place]), say), words]
 
 
-def _failing(results: Results, index: int) -> list[int]:
+def _failing(results: Results, row: _Row, index: int) -> list[int]:
     marks = {
         c.segment
         for c in results.checks
         if c.status == "fail" and c.check in STRESSES and c.combination == results.states[index].name
     }
-    return [place for place, segment in enumerate(results.project.segments) if segment.mark in marks]
+    return [place for place, mark in enumerate(row.marks) if mark in marks]
 
 
 def _joints(results: Results, index: int, say: Readings) -> Block:
@@ -213,18 +240,19 @@ def _envelope_blocks(results: Results, say: Readings) -> Iterator[Block]:
         column(tr("at x"), length),
         column(tr("In"), align="left"),
     ]
-    rows = [_envelope_row(results, place, say) for place in range(len(results.project.segments))]
-    yield table(tr("Envelope by segment"), columns, rows)
+    for row in _rows(results):
+        rows = [_envelope_row(results, row, place, say) for place in range(len(row.marks))]
+        yield table(row.of_envelope, columns, rows)
 
 
-def _envelope_row(results: Results, place: int, say: Readings) -> list[str]:
-    segments = results.segments
+def _envelope_row(results: Results, of: _Row, place: int, say: Readings) -> list[str]:
+    segments = of.segments
     count = sum(state.checked for state in results.states)
     force = max(_largest(segments.force_max[:count]), _largest(segments.force_min[:count]))
     stress = max(_largest(segments.stress_max[:count]), _largest(segments.stress_min[:count]))
     values = segments.utilisation[:count, place]
     row = [
-        results.project.segments[place].mark,
+        of.marks[place],
         say.read(float(segments.force_max[:count, place].max()), "force", beside=force),
         say.read(float(segments.force_min[:count, place].min()), "force", beside=force),
         say.read(float(segments.stress_max[:count, place].max()), "stress", beside=stress),

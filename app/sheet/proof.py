@@ -11,6 +11,7 @@ from collections.abc import Iterable, Iterator
 import numpy as np
 from msgspec import UnsetType
 
+from app.beside import beside, beside_at, index_of_mark
 from app.findings import findings
 from app.findings.stability import waived_notes
 from app.findings.subjects import worst_first
@@ -26,6 +27,7 @@ from app.sheet.stability import stability_by_hand
 from app.sheet.verdicts import check_table, kind_words, quantity_of, subject, utilisation_by_hand
 from app.words import tr
 from solver.checks import Check
+from solver.companion_fields import companion_curves
 from solver.fields import PointValues, at
 from solver.model import (
     AnySection,
@@ -80,6 +82,9 @@ def _governing_blocks(results: Results, check: Check, say: Readings) -> Iterator
 
 
 def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    if index_of_mark(results.project, str(check.segment)) is not None:
+        yield from _beside_by_hand(results, check, say)
+        return
     state = _state(results, check)
     place = next(i for i, s in enumerate(results.project.segments) if s.mark == check.segment)
     x = float(check.position or 0.0)
@@ -119,6 +124,32 @@ def _stress_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
 
 def _stress_text(check: Check, say: Readings) -> str:
     return say.plain(float(check.value or 0.0), "stress", unit=True, digits=6)
+
+
+def _beside_by_hand(results: Results, check: Check, say: Readings) -> Iterator[Block]:
+    """The stress in a segment of a companion."""
+    index, found = index_of_mark(results.project, str(check.segment)), results.companions
+    if index is None or found is None:
+        return
+    state, x, of = _state(results, check), float(check.position or 0.0), beside_at(results.project, index)
+    s = _share(x, float(found.begins[index]), float(found.chain.length[index]))
+    area = float(area_at(found.chain.area[index], np.array(s)))
+    curves = companion_curves(results, state, of.at)
+    own = curves.segment == of.number
+    force = say.plain(float(np.interp(x, curves.x[own], curves.force[own])), "force", unit=True)
+    stress, size = _stress_text(check, say), say.plain(area, "area", unit=True)
+    where = _place_words(s).format(
+        x=say.plain(x, "length", unit=True), share=reading(s, 6, strip=True), mark=check.segment
+    )
+    yield paragraph(where, "lead")
+    alt = tr("σ = N / A = {force} / {area} = {stress}").format(force=force, area=size, stress=stress)
+    yield formulas(
+        [
+            _area_by_hand(of.segment.section, s, area, say),
+            formula(tr("stress"), "stress_numbers", alt, force=force, area=size, stress=stress),
+            _utilisation_by_hand(results, check, state, stress, say),
+        ]
+    )
 
 
 def _share(x: float, start: float, length: float) -> float:
@@ -174,8 +205,9 @@ def _area_by_hand(section: AnySection, s: float, area: float, say: Readings) -> 
 def _utilisation_by_hand(
     results: Results, check: Check, state: int, stress: str, say: Readings
 ) -> dict[str, Value]:
-    segment = next(s for s in results.project.segments if s.mark == check.segment)
-    name = check.material or segment.material
+    made_of = {segment.mark: segment.material for segment in results.project.segments}
+    made_of |= {of.segment.mark: of.segment.material for of in beside(results.project)}
+    name = check.material or made_of[str(check.segment)]
     material = next(m for m in results.project.materials if m.name == name)
     allowable = material.allowable_tension if check.check == "tension" else material.allowable_compression
     parts = {

@@ -13,10 +13,11 @@ from typing import Final
 from msgspec import structs
 
 from app.edits.bonded import with_materials_named
+from app.edits.companions import segment_marks
 from app.phrases.states import state_words
 from app.sheet.printable import shortened
 from solver.checks import Check
-from solver.model import LoadCase, Project
+from solver.model import Companion, LoadCase, Project
 from solver.results import PartResults, Results, StateKind
 
 LONGEST: Final = 32
@@ -32,6 +33,7 @@ class _Names:
     materials: Mapping[str, str]
     cases: Mapping[str, str]
     combinations: Mapping[str, str]
+    companions: Mapping[str, str]
 
 
 def with_short_names(results: Results) -> Results:
@@ -58,7 +60,8 @@ def with_short_names(results: Results) -> Results:
 
 
 def _mappings(names: _Names) -> tuple[Mapping[str, str], ...]:
-    return names.segments, names.joints, names.materials, names.cases, names.combinations
+    every = (getattr(names, field.name) for field in dataclasses.fields(names))
+    return tuple(every)
 
 
 def _of_kind(names: _Names, kind: StateKind) -> Mapping[str, str]:
@@ -67,11 +70,12 @@ def _of_kind(names: _Names, kind: StateKind) -> Mapping[str, str]:
 
 def _names_of(project: Project) -> _Names:
     return _Names(
-        distinct((s.mark for s in project.segments), LONGEST_MARK),
+        distinct(segment_marks(project), LONGEST_MARK),
         distinct((j.mark for j in project.joints), LONGEST_MARK),
         distinct((m.name for m in project.materials), LONGEST),
         distinct((c.name for c in project.load_cases), LONGEST),
         distinct((c.name for c in project.combinations), LONGEST),
+        distinct((c.mark for c in project.companions), LONGEST_MARK),
     )
 
 
@@ -101,6 +105,7 @@ def _renamed(project: Project, names: _Names) -> Project:
             )
             for s in project.segments
         ),
+        companions=tuple(_companion(companion, names) for companion in project.companions),
         load_cases=tuple(_case(case, names) for case in project.load_cases),
         combinations=tuple(
             structs.replace(
@@ -132,6 +137,19 @@ def _parts(parts: PartResults | None, names: _Names) -> PartResults | None:
     if parts is None:
         return None
     return dataclasses.replace(parts, material=tuple(names.materials[name] for name in parts.material))
+
+
+def _companion(companion: Companion, names: _Names) -> Companion:
+    return structs.replace(
+        companion,
+        mark=names.companions[companion.mark],
+        start=names.joints[companion.start],
+        end=names.joints[companion.end],
+        segments=tuple(
+            structs.replace(s, mark=names.segments[s.mark], material=names.materials[s.material])
+            for s in companion.segments
+        ),
+    )
 
 
 def _case(case: LoadCase, names: _Names) -> LoadCase:
