@@ -136,7 +136,7 @@ class Checker:
         )
 
 
-class _Subject(Struct, frozen=True):
+class _Subject(Struct, frozen=True, gc=False):
     """A segment, or one of its bonded parts with its number and material."""
 
     segment: str
@@ -144,7 +144,7 @@ class _Subject(Struct, frozen=True):
     material: str | None = None
 
 
-class _Compared(Struct, frozen=True):
+class _Compared(Struct, frozen=True, gc=False):
     """A segment's stress of one sign against its allowable; `limit` is NaN where there is none."""
 
     present: bool

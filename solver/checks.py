@@ -49,7 +49,7 @@ PASS_MARGIN = 1e-9  # a utilisation up to 1 + this passes: room for rounding, no
 NO_STRESS = 1e-9  # |σ| up to this part of the state's largest |σ| has no sign and is not checked
 
 
-class Check(Struct, frozen=True):
+class Check(Struct, frozen=True, gc=False):
     """One comparison. `segment` or `joint` or `start` and `end` (the file's `from` and `to`) say of what.
 
     Where a segment has bonded parts, `part` is which of them, 0 its own, and `material` what it is of.

@@ -33,7 +33,7 @@ AtLeastOne: TypeAlias = Annotated[float, Meta(ge=1)]
 Name: TypeAlias = Annotated[str, Meta(min_length=1)]
 
 
-class Record(Struct, frozen=True, forbid_unknown_fields=True):
+class Record(Struct, frozen=True, gc=False, forbid_unknown_fields=True):
     """Base of everything that stands in a project file."""
 
 

@@ -18,7 +18,7 @@ from app.drawing.shapes import Box, Face
 Measure: TypeAlias = Callable[[str, Face], tuple[float, float]]  # width and height; line breaks count
 
 
-class StopMark(Struct, frozen=True):
+class StopMark(Struct, frozen=True, gc=False):
     """What a stop does in the shown state, in words; the joint by mark, the number among its supports."""
 
     joint: str
@@ -27,7 +27,7 @@ class StopMark(Struct, frozen=True):
     text: str
 
 
-class Detail(Struct, frozen=True):
+class Detail(Struct, frozen=True, gc=False):
     """What is drawn beside the member, and how much room it may take."""
 
     load_rows: int = 3  # of labels of loads, at most; upright one column

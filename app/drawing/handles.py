@@ -36,7 +36,7 @@ ARROW_REACH = 9.0
 STOP_REACH = 5.0
 
 
-class Handle(Struct, frozen=True):
+class Handle(Struct, frozen=True, gc=False):
     """A number's handle: the `line` to be near, the pull that makes it grow as a unit vector (x, y)."""
 
     kind: HandleKind

@@ -23,7 +23,7 @@ ROUNDING = 1e-6
 Span = tuple[float, float]
 
 
-class Wish(Struct, frozen=True):
+class Wish(Struct, frozen=True, gc=False):
     """A label that wants to be centred at `along`; `slide` is how far it may move; low ranks come first."""
 
     text: str
@@ -37,7 +37,7 @@ class Wish(Struct, frozen=True):
     of_results: bool = False
 
 
-class Placed(Struct, frozen=True):
+class Placed(Struct, frozen=True, gc=False):
     """A label that has found its place: row and span along the axis."""
 
     wish: Wish

@@ -72,7 +72,7 @@ Ink: TypeAlias = Literal["ink", "quiet", "joint", "select"]
 Fill: TypeAlias = Literal["", "body_fill", "band_fill", "select_fill", "load_fill", "paper", "ink"]
 
 
-class Box(Struct, frozen=True):
+class Box(Struct, frozen=True, gc=False):
     """A rectangle; `left` ≤ `right` and `top` ≤ `bottom`."""
 
     left: float
@@ -112,7 +112,7 @@ class Box(Struct, frozen=True):
         )
 
 
-class Part(Struct, frozen=True):
+class Part(Struct, frozen=True, gc=False):
     """What a point of the drawing stands for: `index` along the chain, of segments or of joints, or of the
     segments of all companions in the order of the file.
 
@@ -132,7 +132,7 @@ def body_of(part: Part) -> Part:
     return Part("segment" if part.kind in OF_SEGMENT else "joint", part.index)
 
 
-class Stroke(Struct, frozen=True):
+class Stroke(Struct, frozen=True, gc=False):
     """A line through points, closed or not; `fill` names a colour of the theme, empty for none."""
 
     points: tuple[Point, ...]
@@ -146,14 +146,14 @@ class Stroke(Struct, frozen=True):
     pairs: bool = False  # every two points are a line of their own
 
 
-class Circle(Struct, frozen=True):
+class Circle(Struct, frozen=True, gc=False):
     """A circle on paper around a mark."""
 
     centre: Point
     radius: float
 
 
-class Text(Struct, frozen=True):
+class Text(Struct, frozen=True, gc=False):
     """A text centred in its box."""
 
     box: Box
@@ -164,7 +164,7 @@ class Text(Struct, frozen=True):
     anchor: Anchor = "middle"  # which end keeps its place where a font runs narrower than was measured
 
 
-class Target(Struct, frozen=True):
+class Target(Struct, frozen=True, gc=False):
     """Where a part can be pointed at."""
 
     box: Box

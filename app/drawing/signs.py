@@ -20,7 +20,7 @@ GROUND = 6.5  # px, radius of the ground of a sign
 SIGN = 12.0  # px, of a sign on its ground and a gap
 
 
-class Mark(Struct, frozen=True):
+class Mark(Struct, frozen=True, gc=False):
     """A + or − on a ground of its own."""
 
     centre: Point

@@ -31,7 +31,7 @@ SLIDE = 60.0  # how far a label may go aside, px; beside others of its joint fur
 FAR = 3.0  # times as far
 
 
-class Faces(Struct, frozen=True):
+class Faces(Struct, frozen=True, gc=False):
     """What of a stop can meet: the pixels along the axis of plate and wall, and their place across."""
 
     nose: float

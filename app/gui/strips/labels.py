@@ -36,7 +36,7 @@ NEAR = 0.5  # of a limit: nearer than this its label may cover a curve
 SIGN_ROOM = 15.0  # a fill this wide and high carries its sign
 
 
-class Label(Struct, frozen=True):
+class Label(Struct, frozen=True, gc=False):
     """A text in its box; `ink` and `ground` name colours of the theme."""
 
     rect: QRectF

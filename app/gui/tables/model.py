@@ -28,7 +28,7 @@ ERROR_ROLE = int(Qt.ItemDataRole.UserRole) + 1  # the reason why the cell's text
 LONGEST_CASE = 14  # letters of a load case's name in a heading; its tip has all
 
 
-class Look(Struct, frozen=True):
+class Look(Struct, frozen=True, gc=False):
     """All that is painted of a cell."""
 
     text: str
