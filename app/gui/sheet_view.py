@@ -14,6 +14,7 @@ from app.drawing.shapes import Box, Part, body_of
 from app.gui.at_cursor import choices_at, next_of, selection_of
 from app.gui.drawing.member_drawing import MemberDrawing
 from app.gui.fonts import Fonts
+from app.gui.one_picture import OnePicture
 from app.gui.sheet_layout import SheetLayout, least_height
 from app.gui.sheet_scene import SheetScene
 from app.gui.strips.strip import Strip
@@ -67,6 +68,7 @@ class SheetView(QGraphicsView):
         self._sheet.show_state(view.shown)
         self._upright = False
         self._set_up()
+        self.one_picture = OnePicture(self)
         self._sheet.drawing.clicked.connect(self._on_part_clicked)
         view.shown_changed.connect(self._sheet.show_state)
         view.strips_changed.connect(self._sheet.set_strips)
@@ -147,6 +149,7 @@ class SheetView(QGraphicsView):
     ) -> None:
         """Show the project, and results of it (`current`) or of an earlier edit, or none (yet, `waiting`)."""
         self._sheet.show_results(project, results, current=current, waiting=waiting)
+        self.one_picture.paint()
 
     def set_reference(self, reference: Reference | None) -> None:
         """Show a reference's curves dashed beside those of the results, or none."""

@@ -53,6 +53,11 @@ def spread_out(found):
     return np.nanmin(low, axis=0), np.nanmax(high, axis=0)
 
 
+def points_of(curve):
+    """Where its points lie, (x, y) in pixels."""
+    return curve.shape.points.x, curve.shape.points.y
+
+
 @BOTH_WAYS
 @pytest.mark.parametrize("size", SIZES, ids=["small", "large"])
 @pytest.mark.usefixtures("qapp")
@@ -62,7 +67,7 @@ def test_every_column_reaches_its_extremes(long, size, upright):
         KINDS, state_contents(long, 0), places(long, size, upright=upright), strict=False
     ):
         strip = strip_in(shown, place)
-        data = [curve.getData() for curve in strip.curves if curve.opts["brush"] is None]
+        data = [points_of(curve) for curve in strip.curves if curve.brush is None]
         drawn = np.hstack([np.array(pair[:: -1 if upright else 1]) for pair in data])
         wanted = columns(place.ruler.pixel(whole.x), strip.scale.pixels(getattr(whole, kind)), place)
         found = columns(drawn[0], drawn[1], place)
@@ -109,7 +114,7 @@ def test_the_edges_of_what_there_is_are_drawn_inside_their_strips(results, toget
             assert np.isfinite([shown.low, shown.high]).all()
             assert shown.low < shown.high
             for curve in strip.curves:
-                assert np.isfinite(curve.getData()).all()
+                assert np.isfinite(points_of(curve)).all()
             image.fill(QColor(LIGHT.paper))
             painter = QPainter(image)
             strip.paint(painter, None, None)
@@ -127,7 +132,7 @@ def test_zoomed_far_in_only_what_is_seen_is_drawn(long):
     strip = strip_in(state_contents(long, 0)[1], close)
     first, last = close.ruler.begin, close.ruler.end
     for curve in strip.curves:
-        x, _y = curve.getData()
+        x, _y = points_of(curve)
         assert len(x) < 2_000
         assert x.min() > first - (last - first)
         assert x.max() < last + (last - first)

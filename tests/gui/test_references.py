@@ -49,8 +49,7 @@ def dashed(window):
 
 
 def is_dashed(curve):
-    pen = curve.opts["pen"]
-    return pen is not None and pen.dashPattern() == [*DASHES]
+    return curve.pen is not None and curve.pen.dashPattern() == [*DASHES]
 
 
 def block_titles(window):
@@ -362,11 +361,12 @@ def test_a_reference_is_thin_dashed_and_under_the_new_curve(qapp, theme, upright
     strip.set_place(Place(layout.strips[1], ruler, layout.axes, Fonts(QFont())))
     strip.show_content(state_contents(new, 0, earlier_curves("Before 1", old, 0))[1])
     strip.refresh()
-    lines = [curve for curve in strip.curves if curve.opts["pen"] is not None]
+    lines = [curve for curve in strip.curves if curve.pen is not None]
     (thin,) = [curve for curve in lines if is_dashed(curve)]
-    assert thin.opts["pen"].color().name().upper() == theme.quiet
-    assert all(thin.zValue() < curve.zValue() for curve in lines if curve is not thin)
-    along = thin.getData()[1 if upright else 0]
+    assert thin.pen.color().name().upper() == theme.quiet
+    assert lines[0] is thin  # under the others
+    points = thin.shape.points
+    along = points.y if upright else points.x
     assert along[[0, -1]] == pytest.approx(ruler.pixel(curves(old, 0).x[[0, -1]]))
     strip.show_content(state_contents(new, 0)[1])
     strip.refresh()

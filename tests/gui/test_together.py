@@ -7,7 +7,7 @@ from PySide6.QtTest import QTest
 
 from app.gui.strips.company import Company, envelope_beside
 from app.gui.strips.content import envelope_contents, state_contents
-from app.gui.strips.curves import DOTS, THIN_Z
+from app.gui.strips.curves import DOTS
 from app.gui.strips.readout import nearest_state
 from app.gui.view import Shown
 from app.samples import read_sample
@@ -69,7 +69,7 @@ def test_the_nearest_state_is_the_one_whose_value_is_nearest(shaft):
 
 
 def thin(strip):
-    return [curve for curve in strip.curves if curve.zValue() == THIN_Z]
+    return [curve for curve in strip.curves if curve.shape.thin]
 
 
 def test_the_window_draws_them_and_names_the_nearest(window):
@@ -87,7 +87,7 @@ def test_the_window_draws_them_and_names_the_nearest(window):
     assert "nearest" not in window.sheet.readout
     window.view.set_shown(Shown("combination", window.document.project.combinations[0].name))
     strip = window.sheet.strips[1]
-    assert [list(curve.opts["pen"].dashPattern()) for curve in thin(strip)] == [[*DOTS]] * 2
+    assert [list(curve.pen.dashPattern()) for curve in thin(strip)] == [[*DOTS]] * 2
     assert "dotted: envelope" in [label.text for label in window.sheet.strips[0].labels]
     window.view.set_together(False)
     assert thin(window.sheet.strips[1]) == []

@@ -93,6 +93,8 @@ class Grasp(QObject):
         if project is not None:
             self._document.set_preview(self._preview_of(project))
             self.paper.show_member(project)
+            if self.phase is Phase.PULLING:
+                self._sheet.one_picture.wait()
 
     def follow_end(self) -> bool:
         """Keep the end of the member on the sheet; whether the pull begins anew, by another ruler."""

@@ -87,27 +87,24 @@ def _bands(content: StripContent, place: Place, scale: Scale) -> list[Polyline]:
 
 
 class Curves:
-    """As many curves as a strip needs, kept from one result to the next."""
+    """The curves of a strip, the lower ones first."""
 
     def __init__(self) -> None:
-        self._items: list[Curve] = []
         self.shown: list[Curve] = []
 
     def show_shapes(self, shown: tuple[Shape, ...], theme: Theme) -> None:
         """Draw these and nothing else; among fills and among lines the later lie above."""
-        if len(self._items) < len(shown):
+        self.shown = []
+        if shown:
             from app.gui.strips.curve import (
                 Curve,  # with a library that a window which opens need not wait for
             )
 
-            self._items += [Curve() for _ in range(len(shown) - len(self._items))]
-        self.shown = self._items[: len(shown)]
-        for item, shape in zip(self.shown, shown, strict=True):
-            item.show_shape(shape, theme)
+            self.shown = [Curve(shape, theme) for shape in sorted(shown, key=lambda shape: shape.height)]
 
     def paint(self, painter: QPainter, *, lines: bool) -> None:
-        """The fills, or the lines, the lower ones first."""
+        """The fills, or the lines."""
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        for curve in sorted(self.shown, key=lambda curve: curve.zValue()):
-            if (curve.opts["brush"] is None) is lines:
+        for curve in self.shown:
+            if (curve.brush is None) is lines:
                 curve.paint_on(painter)
