@@ -52,6 +52,7 @@ def test_results_that_are_late_do_not_hold_the_drawing_back(window, pulled, qtbo
     paints = Paints(window.sheet.viewport())
     pulled.move(12.0)
     assert window.hand.phase is Phase.PULLING
+    window.showing._late.stop()  # which would paint by and by
     qtbot.waitUntil(lambda: paints.count > 0)
     assert not window.showing.current
     assert not window.sheet.one_picture.waits
