@@ -14,18 +14,17 @@ from PySide6.QtCore import QObject, Qt
 
 from app.gui.document import Document, Draft, Preview
 from app.gui.tables.column import Change, Column, Figures, Offer, Sight, Table
+from app.gui.tables.headed import HeadedModel
 from app.gui.tables.paste import Block, Texts
 from app.gui.tables.reasons import NotTaken, TypingError, reason_of
-from app.gui.tables.rows import Index, RowsModel
+from app.gui.tables.rows import Index
 from app.gui.tables.thousands import typed_note
 from app.support_entry import supports_entry
-from app.units import symbol
 from app.words import tr
 
 CHOSEN = Qt.ItemFlag.ItemIsEnabled | Qt.ItemFlag.ItemIsSelectable
 TYPED = CHOSEN | Qt.ItemFlag.ItemIsEditable
 ERROR_ROLE = int(Qt.ItemDataRole.UserRole) + 1  # the reason why the cell's text is not taken in, or ""
-LONGEST_CASE = 14  # letters of a load case's name in a heading; its tip has all
 
 
 class Look(Struct, frozen=True, gc=False):
@@ -41,7 +40,7 @@ class Look(Struct, frozen=True, gc=False):
     stale: bool  # the figure is of an earlier edit
 
 
-class TableModel(RowsModel):
+class TableModel(HeadedModel):
     """Shows one `Table` of the document; typed texts go to the document as undo steps."""
 
     def __init__(self, table: Table, document: Document, sight: Sight, parent: QObject | None = None) -> None:
@@ -120,12 +119,17 @@ class TableModel(RowsModel):
 
     def is_entered(self, place: int) -> bool:
         """Whether any cell of a column holds something that could be left out."""
-        column, nothing = self._columns[place], ("", "0", supports_entry((), self._sight.system))
-        last = self.rowCount() - (self.table.adding is not None)
-        return column.optional and any(
-            (column.entry(self._rows[row], self._sight) or self._settled_text(row, place)) not in nothing
-            for row in range(last)
-        )
+        nothing = ("", "0", supports_entry((), self._sight.system))
+        rows = range(self.rowCount() - (self.table.adding is not None))
+        return self._columns[place].optional and any(self._entered(row, place) not in nothing for row in rows)
+
+    def _entered(self, row: int, place: int) -> str:
+        """What a cell holds by itself; nothing where it follows from the column that says more."""
+        column = self._columns[place]
+        text = column.entry(self._rows[row], self._sight)
+        if text is None and column.settled_by:
+            return ""
+        return text or self._settled_text(row, place)
 
     def data(self, index: Index, role: int = Qt.ItemDataRole.DisplayRole) -> Any:
         """One cell's answer for a role."""
@@ -220,50 +224,6 @@ class TableModel(RowsModel):
         Qt.ItemDataRole.AccessibleTextRole: _spoken,
         ERROR_ROLE: _error,
     }
-
-    def headerData(
-        self, section: int, orientation: Qt.Orientation, role: int = Qt.ItemDataRole.DisplayRole
-    ) -> Any:
-        """The column's title over its unit; a row's name is for screen readers only."""
-        if orientation == Qt.Orientation.Vertical and self.is_record(section):
-            name = self.table.row_name(self._document.project, self.record_of(section), self._sight)
-            return name if role == Qt.ItemDataRole.AccessibleTextRole else None
-        if orientation != Qt.Orientation.Horizontal or not 0 <= section < len(self._columns):
-            return None
-        if role == Qt.ItemDataRole.DisplayRole:
-            return "\n".join(self.heading(section))
-        if role in (Qt.ItemDataRole.AccessibleTextRole, Qt.ItemDataRole.ToolTipRole):
-            return self._whole_heading(section)
-        if role == Qt.ItemDataRole.TextAlignmentRole:
-            return int(Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)
-        return None
-
-    def heading(self, column: int) -> tuple[str, str]:
-        """The two lines of a column's heading: its title, and its unit with the load case it belongs to."""
-        case, unit = self._case_of(column), self.unit_of(column)
-        if len(case) > LONGEST_CASE:
-            case = case[: LONGEST_CASE - 1] + "…"
-        return self._columns[column].words, ", ".join(filter(None, (unit, case)))
-
-    def unit_of(self, column: int) -> str:
-        """The unit of a column's numbers, empty for texts."""
-        quantity = self._columns[column].quantity
-        return symbol(quantity, self._sight.system) if quantity else ""
-
-    def _case_of(self, column: int) -> str:
-        """The load case whose loads the column's cells are; empty for other columns."""
-        case = self._sight.load_case(self._document.project) if self._columns[column].of_case else None
-        return "" if case is None else case.name
-
-    def _whole_heading(self, column: int) -> str:
-        """Title, unit and load case in one line."""
-        case, titled = self._case_of(column), self.titled(column)
-        return tr("{column}, load case {case}").format(column=titled, case=case) if case else titled
-
-    def titled(self, column: int) -> str:
-        """Both in one line."""
-        title, unit = self._columns[column].words, self.unit_of(column)
-        return f"{title} ({unit})" if unit else title
 
     # Typing
 
