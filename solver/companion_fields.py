@@ -50,3 +50,23 @@ def _curves(
     return CompanionCurves(
         np.repeat(segment - first, t.size), *(frozen(v.ravel()) for v in (x, displacement, force, stress))
     )
+
+
+def companion_force_at(results: Results, state: int, companion: int, x: float) -> float | None:
+    """The axial force (N) in a companion at x along the member; None where it does not lie beside x."""
+    found = results.companions
+    if found is None:
+        return None
+    first, last = found.companions.first[[companion, companion + 1]].tolist()
+    segment = found.solution.segment
+    element = np.flatnonzero((segment >= first) & (segment < last))
+    own, length = segment[element], found.chain.length[segment[element]]
+    begins = found.begins[own] + found.solution.start[element] * length
+    ends = found.begins[own] + found.solution.end[element] * length
+    near = 1e-12 * float(results.position[-1])
+    holds = np.flatnonzero((begins - near <= x) & (x <= ends + near))
+    if not holds.size:
+        return None
+    at = holds[0]
+    t = min(max(2.0 * (x - begins[at]) / (ends[at] - begins[at]) - 1.0, -1.0), 1.0)
+    return float(legendre.legval(t, found.solution.force[state, element[at]]))

@@ -185,7 +185,8 @@ def _failing(results: Results, row: _Row, index: int) -> list[int]:
 def _joints(results: Results, index: int, say: Readings) -> Block:
     solution = results.solution
     moved, reactions = solution.joint_displacement[index], solution.reaction[index]
-    far, strong = _largest(moved), max(_largest(reactions), abs(float(solution.loads[index])))
+    inside = max(_largest(row.segments.force_max[index]) for row in _rows(results))
+    far, strong = _largest(moved), max(_largest(reactions), abs(float(solution.loads[index])), inside)
     columns = [
         column(tr("Joint"), align="left"),
         column("x", say.unit("length")),

@@ -27,7 +27,7 @@ from app.sheet.stability import stability_by_hand
 from app.sheet.verdicts import check_table, kind_words, quantity_of, subject, utilisation_by_hand
 from app.words import tr
 from solver.checks import Check
-from solver.companion_fields import companion_curves
+from solver.companion_fields import companion_force_at
 from solver.fields import PointValues, at
 from solver.model import (
     AnySection,
@@ -134,9 +134,7 @@ def _beside_by_hand(results: Results, check: Check, say: Readings) -> Iterator[B
     state, x, of = _state(results, check), float(check.position or 0.0), beside_at(results.project, index)
     s = _share(x, float(found.begins[index]), float(found.chain.length[index]))
     area = float(area_at(found.chain.area[index], np.array(s)))
-    curves = companion_curves(results, state, of.at)
-    own = curves.segment == of.number
-    force = say.plain(float(np.interp(x, curves.x[own], curves.force[own])), "force", unit=True)
+    force = say.plain(companion_force_at(results, state, of.at, x) or 0.0, "force", unit=True)
     stress, size = _stress_text(check, say), say.plain(area, "area", unit=True)
     where = _place_words(s).format(
         x=say.plain(x, "length", unit=True), share=reading(s, 6, strip=True), mark=check.segment

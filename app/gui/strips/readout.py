@@ -8,6 +8,7 @@ from collections.abc import Sequence
 import numpy as np
 
 from app.gui.strips.content import number, of_unit_strain, unit_of
+from app.gui.strips.readout_beside import beside_cursor
 from app.strip_choice import Kind, kind_symbols
 from app.units import format_value
 from app.words import tr
@@ -32,7 +33,8 @@ def resting() -> str:
 def state_readout(results: Results, state: int, x: float) -> str:
     """The line for one state at the position x (m)."""
     readout = at(results, state, x)
-    return BETWEEN.join([_line(results, readout), *_parts(results, (readout.left, readout.right))])
+    more = [*_parts(results, (readout.left, readout.right)), *beside_cursor(results, (state,), readout.x)]
+    return BETWEEN.join([_line(results, readout), *more])
 
 
 def envelope_readout(results: Results, x: float) -> str:
@@ -40,7 +42,10 @@ def envelope_readout(results: Results, x: float) -> str:
     readout = envelope_at(results, x)
     sides = [side for side in (readout.left, readout.right) if side is not None]
     pairs = [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in kind_symbols()]
-    return BETWEEN.join([_joined(results, x, pairs), *_parts(results, (readout.left, readout.right))])
+    more = [*_parts(results, (readout.left, readout.right))]
+    if results.companions is not None:
+        more += beside_cursor(results, checked_states(results).tolist(), x)
+    return BETWEEN.join([_joined(results, x, pairs), *more])
 
 
 def nearest_state(results: Results, kind: Kind, x: float, value: float) -> str:
