@@ -100,7 +100,7 @@ class Dense:
         return None
 
     def _holds(self, force):
-        return self.held or force.max(initial=0.0) > 1e-9 * np.abs(self.right).max(initial=1e-3)
+        return self.held or force.max(initial=0.0) > 1e-9 * np.abs(self.right).max(initial=1.0)
 
 
 @settings(max_examples=150)
