@@ -11,6 +11,7 @@ from app.drawing.companions import draw_companions
 from app.drawing.contacts import draw_contacts, put_under
 from app.drawing.crowded import free_box, say_left_out
 from app.drawing.frame import Frame
+from app.drawing.laterals import draw_laterals
 from app.drawing.loads import draw_loads, no_loads_text
 from app.drawing.member import Member
 from app.drawing.rows import Wishes, foot_of, legend_below, no_rows, round_factor, rows_in, said_of, thickest
@@ -53,6 +54,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
     if frame.detail.factor:
         _draw_scales(sketch)
     draw_shoulders(sketch)
+    draw_laterals(sketch)
     draw_supports(sketch)
     draw_contacts(sketch)
     put_under(sketch, wishes.hanging, wishes.contacts)
@@ -70,7 +72,7 @@ def sketched(member: Member, frame: Frame, like: Sketch | None = None) -> Sketch
 def _aim_at_labels(picture: Picture) -> None:
     """What acts is pointed at by its label as well; some of it is said in words only."""
     for text in (*picture.texts, *picture.contact_texts):
-        labelled = LOADS | {"bedding", "bonded", "support", "shoulder"} | OF_COMPANION
+        labelled = LOADS | {"bedding", "bonded", "support", "shoulder", "lateral", "turning"} | OF_COMPANION
         if text.part is not None and text.part.kind in labelled:
             picture.targets.append(Target(text.box, text.part))
 

@@ -14,6 +14,7 @@ from app.drawing.chain import joint_wishes, length_wishes, section_wishes
 from app.drawing.companions import companion_wishes, lane_rows
 from app.drawing.contacts import contact_wishes
 from app.drawing.frame import Frame
+from app.drawing.laterals import lateral_wishes, room_beside
 from app.drawing.loads import GRAVITY_RANK, bracketed, lies_outside, load_wishes, no_loads_text
 from app.drawing.member import Member
 from app.drawing.placing import CLEAR, STACKED, TIGHT, Span, Wish, fits
@@ -57,7 +58,7 @@ class Wishes:
             load_wishes(sketch),
             length_wishes(sketch),
             section_wishes(sketch),
-            [*support_wishes(sketch), *shoulder_wishes(sketch)],
+            [*support_wishes(sketch), *shoulder_wishes(sketch), *lateral_wishes(sketch)],
             contact_wishes(sketch),
             joint_wishes(sketch),
             companion_wishes(sketch),
@@ -124,6 +125,8 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     top = brackets[-1][1] if brackets else labels[-1][1] + beside
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
+    held = room_beside(sketch)
+    first += held
     edge = EDGE if sketch.frame.upright else 4.0 + foot_of(sketch)
     sections = _text_rows(sketch, wishes.sections, room - edge, most)
     chain = sections[0][0] - CHAIN
@@ -131,7 +134,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     marks = _text_rows(sketch, wishes.joints, lengths[0][0], most)
     under_label, contact = _under_rows(sketch, wishes, marks[0][0], most)
     under = under_label[0][0] - 0.5 * UNDER - LEVEL * max(sketch.levels - 1, 0)
-    last = (under - 0.5 * UNDER if sketch.levels else under_label[0][0]) - 9.0
+    last = (under - 0.5 * UNDER if sketch.levels else under_label[0][0]) - 9.0 - held
     lanes, last = lane_rows(sketch, wishes.companions, last, room, labelled=most > 0)
     last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(

@@ -29,6 +29,8 @@ PartKind: TypeAlias = Literal[
     "joint",
     "support",
     "shoulder",
+    "lateral",
+    "turning",
     "force",
     "movement",
     "gravity",
@@ -54,7 +56,9 @@ OF_SEGMENT: frozenset[PartKind] = frozenset(
         "bonded",
     )
 )
-OF_JOINT: frozenset[PartKind] = frozenset(("joint", "support", "shoulder", "force", "movement"))
+OF_JOINT: frozenset[PartKind] = frozenset(
+    ("joint", "support", "shoulder", "lateral", "turning", "force", "movement")
+)
 OF_COMPANION: frozenset[PartKind] = frozenset(  # of its segments, counted over all companions
     (
         "companion",

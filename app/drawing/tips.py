@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from app.drawing.bonded import bonded_text
 from app.drawing.companions import companion_tip
+from app.drawing.laterals import lateral_lines
 from app.drawing.member import Member
 from app.drawing.shapes import OF_COMPANION, OF_JOINT, OF_SEGMENT, Part
 from app.drawing.shoulders import shoulder_label
@@ -71,7 +72,8 @@ def _joint_tip(member: Member, index: int) -> str:
     supports = supports_of(joint)
     held = supports_text(supports, member.system) if supports else ""
     shoulders = (shoulder_label(notch, member.project) for notch in member.shoulders if notch.joint == index)
-    return _lines(first, held, next(shoulders, ""), *_on_joint(member, index))
+    sideways = lateral_lines(joint, member.system)
+    return _lines(first, held, next(shoulders, ""), *sideways, *_on_joint(member, index))
 
 
 def _on_joint(member: Member, index: int) -> tuple[str, ...]:

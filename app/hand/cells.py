@@ -42,6 +42,8 @@ _JOINT_COLUMNS: Final[dict[PartKind, str]] = {
     "joint": "support",
     "support": "support",
     "shoulder": "shoulder",
+    "lateral": "lateral_translation",
+    "turning": "lateral_rotation",
     "force": "force",
     "movement": "movement",
 }
@@ -65,7 +67,15 @@ ORDER: Final[dict[str, tuple[str, ...]]] = {
         "bedding",
         "mark",
     ),
-    "joints": ("support", "shoulder", "force", "movement", "mark"),
+    "joints": (
+        "support",
+        "shoulder",
+        "lateral_translation",
+        "lateral_rotation",
+        "force",
+        "movement",
+        "mark",
+    ),
     "companions": (
         "length",
         "section",
@@ -223,6 +233,8 @@ _COMPANION_PARTS: Final[dict[str, PartKind]] = {
 _JOINT_PARTS: Final[dict[str, PartKind]] = {
     "support": "support",
     "shoulder": "shoulder",
+    "lateral_translation": "lateral",
+    "lateral_rotation": "turning",
     "force": "force",
     "movement": "movement",
 }

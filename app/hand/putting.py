@@ -15,7 +15,7 @@ from msgspec import UNSET, UnsetType
 from msgspec.structs import replace
 
 from app import edits
-from app.drawing.shapes import Part
+from app.drawing.shapes import Part, PartKind
 from app.entry import parse_entry
 from app.hand.bonding import bond, materials_added
 from app.hand.cells import Cell, cell_of
@@ -23,6 +23,7 @@ from app.hand.companions import companions_beside, lay_beside
 from app.hand.freeing import gone_with_supports
 from app.hand.kinds import Kind
 from app.hand.shoulders import begun_shoulder, is_at_end
+from app.lateral_entry import LateralKey, hold_of
 from app.support_entry import Supports, parse_supports
 from app.words import tr
 from solver.model import FixedSupport, LoadCase, Project, SpringSupport, StopSupport, supports_of
@@ -88,6 +89,8 @@ def _is_there(kind: Kind, project: Project, index: int, case: int | None) -> boo
         return any(_written(getattr(project.segments[index], key)) for key in kind.keys)
     if kind.part == "shoulder":
         return bool(project.joints[index].shoulder)
+    if kind.part in LATERAL:
+        return hold_of(project.joints[index].lateral, LATERAL[kind.part]) != "free"
     if kind.part == "gravity":
         return case is not None and project.load_cases[case].gravity != 0.0
     loads = loads_of(kind, project, index, case)
@@ -134,6 +137,7 @@ def _held_with(kind: Kind, project: Project, index: int) -> Supports:
     return fresh
 
 
+LATERAL: Final[dict[PartKind, LateralKey]] = {"lateral": "translation", "turning": "rotation"}
 _TYPES: Final = {"fixed": FixedSupport, "spring": SpringSupport, "stop": StopSupport}
 
 
@@ -153,6 +157,8 @@ def _put(kind: Kind, project: Project, index: int, case: int | None) -> Project:
         return edits.set_value(project, ("segments", index, "bedding"), _begins(kind, project))
     if kind.part == "shoulder":
         return _with_shoulder(kind, project, index)
+    if kind.part in LATERAL:
+        return edits.hold_sideways(project, (index,), LATERAL[kind.part], "fixed")
     if kind.part == "movement" and not supports_of(project.joints[index]):
         words = tr("joint {mark} has no support that could move: put one on first")
         raise NotPut(words.format(mark=project.joints[index].mark))
@@ -201,6 +207,8 @@ def _taken_off(kind: Kind, project: Project, index: int, case: int | None, key: 
         supports = supports_of(project.joints[index])
         own = _of_this_kind(kind, supports)
         return edits.hold_joint(project, index, tuple(s for s in supports if s not in own))
+    if kind.part in LATERAL:
+        return edits.hold_sideways(project, (index,), LATERAL[kind.part], UNSET)
     records = "joints" if kind.on == "joint" else "segments"
     return edits.set_value(project, (records, index, key), UNSET)
 

@@ -179,7 +179,6 @@ COLUMNS = (
         put_second_moment,
         quantity="second_moment",
         settled_by="section",
-        optional=True,
         width=13,
         at_first=False,
     ),
