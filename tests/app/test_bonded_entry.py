@@ -14,8 +14,8 @@ from tests.strategies import sections
 NAMES = ("Concrete", "Steel", "Steel A", "S355; hot")
 
 
-def parsed(text, old=()):
-    return parse_bonded(text, "mm-N-MPa", NAMES, old)
+def parsed(text):
+    return parse_bonded(text, "mm-N-MPa", NAMES)
 
 
 def test_several_parts_are_read_in_their_order():
@@ -64,10 +64,10 @@ def test_what_is_wrong_is_said(text, said):
     assert said in refused.value.sentence
 
 
-def test_second_moments_stay_where_the_text_cannot_say_them():
-    old = (BondedPart("Steel", AreaSection(area=1e-3, second_moment=5e-8)),)
-    assert parsed("Steel A 1200", old)[0].section.second_moment == 5e-8
-    assert parsed("Concrete A 1200", old)[0].section == AreaSection(area=1.2e-3)
+def test_the_second_moment_of_an_area_is_typed_behind_it():
+    (part,) = parsed("Steel A 1200 I 4.5e4")
+    assert part.section.second_moment == pytest.approx(4.5e-8)
+    assert "I" in bonded_label((part,), "mm-N-MPa")
 
 
 PARTS = st.lists(st.builds(BondedPart, st.sampled_from(NAMES), sections()), max_size=3).map(tuple)
