@@ -122,11 +122,16 @@ def whole_looks(monkeypatch):
     return looks
 
 
-@pytest.mark.parametrize("kind", KINDS, ids=lambda kind: kind.key)
+# one companion stands beside all that is selected: there is only one look to take
+EACH_ALONE = [kind for kind in KINDS if kind.key != "companion"]
+
+
+@pytest.mark.parametrize("kind", EACH_ALONE, ids=lambda kind: kind.key)
 def test_putting_on_many_and_taking_off_looks_at_each_alone(kind, whole_looks):
     member = busy_member(30)
     member = structs.replace(member, load_cases=(LoadCase("L"),), combinations=())
-    index = [i for i, joint in enumerate(member.joints) if kind.on != "joint" or joint.support]
+    inner = range(1, len(member.segments))  # a shoulder needs a step between two segments
+    index = [i for i in inner if kind.on != "joint" or member.joints[i].support or kind.key == "shoulder"]
     on = put_on(kind, member, index[:20], 0)
     take_off(kind, on.project, index[:20], 0)
     assert whole_looks == []
