@@ -14,8 +14,20 @@ from msgspec import UnsetType
 
 from app.numerals import reading
 from app.phrases.stability import CONTACT, ELASTIC, factor_text
-from app.sheet.blocks import Block, Value, bullets, column, formula, formulas, heading, paragraph, table
+from app.sheet.blocks import (
+    Block,
+    Value,
+    bullets,
+    column,
+    formula,
+    formulas,
+    heading,
+    paragraph,
+    picture,
+    table,
+)
 from app.sheet.readings import NOTHING, Readings
+from app.sheet.strip_figure import mode_figure
 from app.sheet.verdicts import against, status_word
 from app.units import utilisation_text
 from app.words import tr
@@ -49,6 +61,7 @@ def stability_blocks(results: Results, say: Readings) -> Iterator[Block]:
     )
     yield bullets(_said(results))
     yield _table(results, states, say)
+    yield from _mode(results, states)
 
 
 def _spoken() -> str:
@@ -87,6 +100,20 @@ def _table(results: Results, states: list[int], say: Readings) -> Block:
         " smallest N, that has the same critical load"
     )
     return table(title, columns, rows, strong=failing)
+
+
+def _mode(results: Results, states: list[int]) -> Iterator[Block]:
+    """The shape in the state of the least factor."""
+    found = [(s, r.critical_factor, r.mode) for s in states if (r := results.stability[s]) is not None]
+    shapes = [(factor, state, mode) for state, factor, mode in found if factor and mode is not None]
+    if not shapes:
+        return
+    _factor, state, mode = min(shapes, key=lambda shape: shape[0])
+    words = tr(
+        "The shape in which the member bends out first, with the least critical factor: {state}. A shape"
+        " only, its largest value set to 1."
+    )
+    yield picture(mode_figure(results, state, mode), words.format(state=results.states[state].name))
 
 
 def _check_of(results: Results, state: int) -> Check:

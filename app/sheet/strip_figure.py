@@ -21,9 +21,11 @@ from solver.arrays import FloatArray
 from solver.fields import curves, envelope
 
 if TYPE_CHECKING:
+    from solver.buckling_mode import Mode
     from solver.results import Results
 
 POINTS = 240
+MODE_POINTS = 25  # of a segment
 _ACROSS, _UPRIGHT = 420.0, 270.0
 _GAP = 7.0
 _SIZE = 7.0
@@ -89,6 +91,17 @@ def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawin
     if drawing:
         draw_above(canvas, results.project, results.position, None, 0, _extent(results))
     return _figure(results, canvas, chosen, tr("envelope of all checked combinations"), drawing=drawing)
+
+
+def mode_figure(results: Results, state: int, mode: Mode) -> Figure:
+    """The shape in which the member bends out; it has no size and no unit."""
+    count = len(results.chain.length)
+    segment = np.repeat(np.arange(count), MODE_POINTS)
+    fraction = np.tile(np.linspace(0.0, 1.0, MODE_POINTS), count)
+    x = results.position[segment] + fraction * results.chain.length[segment]
+    canvas = _canvas(results, [Strip("w", "displacement", "factor", x, (mode.at(segment, fraction),))])
+    alt = tr("Shape of buckling: {state}").format(state=results.states[state].name)
+    return Figure(canvas.render(alt), *canvas.size, alt)
 
 
 def _chosen(strips: list[Strip], kinds: tuple[Kind, ...]) -> list[Strip]:

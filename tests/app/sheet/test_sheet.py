@@ -501,3 +501,20 @@ def test_the_name_of_the_unloaded_state_is_in_the_language_of_the_sheet() -> Non
     assert "in Unloaded" not in said
     assert "Unloaded" not in found
     assert "Unbelastet" in found
+
+
+def test_stability_has_its_chapter_with_factor_and_shape() -> None:
+    blocks = content(read_sample("loft_column"))["blocks"]
+    start = next(i for i, block in enumerate(blocks) if block.get("text") == "Stability")
+    end = next(i for i, block in enumerate(blocks) if block.get("text") == "Checks")
+    chapter = blocks[start:end]
+    (rows,) = [block["rows"] for block in chapter if block["kind"] == "table"]
+    assert [(row[0], row[3], row[6], row[7]) for row in rows] == [
+        ("Full use", "4.25", "≥ 4", "0.94"),
+        ("Winter, full", "4.25", "≥ 4", "0.94"),
+        ("Empty", "8.06", "≥ 4", "0.50"),
+    ]
+    (shape,) = [block for block in chapter if block["kind"] == "figure"]
+    assert "A shape only" in shape["caption"]
+    hand = next(block for block in blocks[end:] if block["kind"] == "formulas")
+    assert hand["items"][0]["name"] == "stability_numbers"
