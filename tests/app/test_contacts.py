@@ -66,6 +66,13 @@ class TestFindings:
         assert any("do not add up" in note for note in found.notes)
         assert cell_of_finding(Cell("joints", contact.joint, "support"), bar(STOP)) is not None
 
+    def test_the_largest_force_and_the_least_left_come_first(self):
+        project = bar(STOP)
+        more = [Combination(name, {"Warm": share}) for name, share in (("Hotter", 1.5), ("Tepid", 0.3))]
+        found = findings(solve(replace(project, combinations=(*project.combinations, *more))), MM)
+        order = [found.contacts[0].sentence.index(name) for name in ("Hotter (", "Hot (", "Tepid (", "Cold (")]
+        assert order == sorted(order)
+
     def test_of_one_combination_alone(self):
         results = solve(bar(STOP, BACK))
         found = findings_in(findings(results, MM), results, "Cold", MM)
