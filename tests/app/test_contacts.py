@@ -70,7 +70,8 @@ class TestFindings:
         project = bar(STOP)
         more = [Combination(name, {"Warm": share}) for name, share in (("Hotter", 1.5), ("Tepid", 0.3))]
         found = findings(solve(replace(project, combinations=(*project.combinations, *more))), MM)
-        order = [found.contacts[0].sentence.index(name) for name in ("Hotter (", "Hot (", "Tepid (", "Cold (")]
+        words = found.contacts[0].sentence
+        order = [words.index(name) for name in ("Hotter (", "Hot (", "Tepid (", "Cold (")]
         assert order == sorted(order)
 
     def test_of_one_combination_alone(self):
