@@ -14,6 +14,7 @@ import numpy as np
 from app.phrases import reason_text
 from app.project_file import sha256
 from app.version import PROGRAM
+from app.words import in_source_language
 from solver.arrays import FloatArray
 from solver.buckling_mode import Mode
 from solver.checks import Check
@@ -47,7 +48,15 @@ _PART_FIELDS = (
 
 
 def results_json(results: Results) -> Values:
-    """The results file as dict, list, str, float and None, in SI units, ready for a strict JSON writer."""
+    """The results file as dict, list, str, float and None, in SI units, ready for a strict JSON writer.
+
+    It is the same whatever language is spoken.
+    """
+    with in_source_language():
+        return _whole(results)
+
+
+def _whole(results: Results) -> Values:
     governing = results.governing
     return {
         "format": FORMAT,

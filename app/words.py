@@ -8,7 +8,8 @@ from __future__ import annotations
 
 import locale
 import os
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
+from contextlib import contextmanager
 from functools import cache
 from pathlib import Path
 from typing import Final
@@ -30,6 +31,17 @@ def use_language(language: str) -> None:
     global _language, _catalogue  # noqa: PLW0603 - one language for the process, as gettext has it
     _catalogue = Catalogue() if language == SOURCE else _read_once(language)
     _language = language
+
+
+@contextmanager
+def in_source_language() -> Iterator[None]:
+    """Words of the sources meanwhile, for what programs read."""
+    spoken = _language
+    use_language(SOURCE)
+    try:
+        yield
+    finally:
+        use_language(spoken)
 
 
 def catalogue_path(language: str) -> Path:

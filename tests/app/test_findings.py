@@ -204,7 +204,8 @@ def test_many_names_are_cut_short() -> None:
 def test_samples_have_findings_in_every_system(name: str, system: str) -> None:
     results = solve(read_sample(name))
     result = findings(results, system)
-    assert len(result.segments) == len(results.project.segments)
+    beside = sum(len(companion.segments) for companion in results.project.companions)
+    assert len(result.segments) == len(results.project.segments) + beside
     worst = max(item.utilisation for item in (*result.segments, *result.limits))
     assert worst == results.governing.utilisation
     texts = [item.sentence for item in (*result.segments, *result.limits)]
