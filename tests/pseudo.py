@@ -66,4 +66,6 @@ def words_of(project: Project) -> frozenset[str]:
     names = [project.title, project.notes, *msgspec.structs.astuple(project.sheet)]
     names += [named.name for named in (*project.materials, *project.load_cases, *project.combinations)]
     names += [marked.mark for marked in (*project.segments, *project.joints)]
+    names += [waiver.reason for waiver in project.limits.waived]
+    names += [part.mark for companion in project.companions for part in (companion, *companion.segments)]
     return frozenset(word.casefold() for word in _WORD.findall(" ".join(names)))
