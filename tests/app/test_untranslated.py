@@ -16,7 +16,7 @@ from solver.solve import solve
 from tests.pseudo import bare, brackets, words_of
 
 FOR_LAYOUT = ("kind", "weight", "align", "name")  # read by the layout, not by people
-UNITS = frozenset(("mpa",))
+UNITS = frozenset(("mpa", "rad"))
 OF_FIGURE = re.compile(r">([^<>]+)<")
 PLACE = re.compile(r"\{\w+\}")  # filled in by the layout
 
