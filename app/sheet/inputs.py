@@ -17,6 +17,7 @@ from app.sheet.member_figure import Figure, member_figure
 from app.sheet.readings import NOTHING, Readings
 from app.sheet.section_words import area_words, section_words
 from app.sheet.shoulders import strength_columns
+from app.sheet.stability_inputs import stability_inputs
 from app.words import tr
 from solver.model import (
     BondedPart,
@@ -52,6 +53,7 @@ def input_blocks(results: Results, say: Readings) -> Iterator[Block]:
         yield from _load_case(case, figure, say)
     yield from _combinations(project, say)
     yield from _limits(project, say)
+    yield from stability_inputs(project, say)
 
 
 def _materials(project: Project, say: Readings) -> Block:

@@ -96,8 +96,10 @@ def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawin
 def mode_figure(results: Results, state: int, mode: Mode) -> Figure:
     """The shape in which the member bends out; it has no size and no unit."""
     count = len(results.chain.length)
-    segment = np.repeat(np.arange(count), MODE_POINTS)
-    fraction = np.tile(np.linspace(0.0, 1.0, MODE_POINTS), count)
+    segment = np.append(np.repeat(np.arange(count), MODE_POINTS), mode.peak_segment)
+    fraction = np.append(np.tile(np.linspace(0.0, 1.0, MODE_POINTS), count), mode.peak)
+    order = np.lexsort((fraction, segment))
+    segment, fraction = segment[order], fraction[order]
     x = results.position[segment] + fraction * results.chain.length[segment]
     canvas = _canvas(results, [Strip("w", "displacement", "factor", x, (mode.at(segment, fraction),))])
     alt = tr("Shape of buckling: {state}").format(state=results.states[state].name)
