@@ -72,8 +72,27 @@ def _overall(old: Results, new: Results, system: UnitSystemName) -> Iterator[Cha
     lengths = float(old.position[-1]), float(new.position[-1])
     if not _same(*lengths, max(lengths)):
         yield Change(tr("length"), change_text(*lengths, "length", system))
+    yield from _clamp_changes(old, new, system)
     masses = old.mass, new.mass
     yield Change(tr("mass"), change_text(*masses, "mass", system, scale=max(masses)))
+
+
+def _clamp_changes(old: Results, new: Results, system: UnitSystemName) -> Iterator[Change]:
+    """The least clamp force of companions that both have, where it has changed."""
+    then, now = _clamps(old), _clamps(new)
+    scale = max([abs(force) for force in (*then.values(), *now.values())], default=0.0)
+    for mark, force in now.items():
+        if mark in then and not _same(then[mark], force, scale):
+            name = tr("least clamp force of {mark}").format(mark=mark)
+            yield Change(name, change_text(then[mark], force, "force", system, scale=scale))
+
+
+def _clamps(results: Results) -> dict[str, float]:
+    """By the mark of those companions that act one way only."""
+    if results.companions is None:
+        return {}
+    least = zip(results.project.companions, results.companions.least_clamp.tolist(), strict=True)
+    return {companion.mark: force for companion, force in least if companion.action != "both"}
 
 
 def _not_made(results: Results) -> int:

@@ -7,10 +7,11 @@ from msgspec.structs import replace
 
 from app import edits
 from app.cures import failing, seek
-from app.findings import findings, findings_in
+from app.findings import comparison, findings, findings_in
 from app.findings.cells import cell_of_finding
 from app.gui.findings.content import blocks, rows
 from app.hand.cells import Cell
+from app.references import Reference
 from app.shown import Shown
 from app.terminal import report
 from solver.model import Combination, Project
@@ -118,3 +119,11 @@ def test_reactions_that_are_rounding_alone_read_as_none():
 def test_what_heats_nothing_in_a_companion_is_said():
     cold = edits.set_value(draw_bolt(), ("materials", 0, "expansion"), 0.0)
     assert any("Sa" in note for note in findings(solve(cold), UNITS).notes)
+
+
+def test_what_is_left_of_a_clamping_is_held_against_a_reference():
+    turned = edits.set_value(draw_bolt(), ("load_cases", 0, "segment_loads", 0, "lack_of_fit"), 0.0004)
+    compared = comparison(Reference("before", solve(draw_bolt())), solve(turned), UNITS)
+    (change,) = [one for one in compared.overall if "clamp" in one.name]
+    assert change.name == "least clamp force of S"
+    assert change.text.startswith("42\u202f457 → 60\u202f0")

@@ -1,0 +1,63 @@
+"""The calc sheet of a member with companions: entered, in every state, by hand, left of the clamping."""
+
+from __future__ import annotations
+
+import json
+
+from app import edits
+from app.sheet.content import sheet_content
+from app.sheet.short_names import with_short_names
+from app.sheet.title import Origin
+from solver.solve import solve
+from tests.sleeves import draw_bolt
+
+
+def content(project):
+    results = with_short_names(solve(project))
+    return sheet_content(results.project, results, origin())
+
+
+def origin():
+    from datetime import date
+    from inspect import signature
+
+    given = {"today": date(2030, 1, 2), "changed": False}
+    names = signature(Origin).parameters
+    return Origin(**{name: given.get(name, "") for name in names})
+
+
+def tables(project):
+    return {b["title"]: b for b in content(project)["blocks"] if b["kind"] == "table"}
+
+
+def test_companions_are_listed_with_what_is_theirs():
+    found = tables(draw_bolt())
+    entered = found["Companions beside the member, each along +x"]["rows"]
+    assert entered[0][:5] == ["S", "1 – 2", "compression only", "Sa", "140"]
+    assert entered[1][:4] == ["", "", "", "Sb"]
+    forces = found["Companions: axial force, and whether the far end has parted"]["rows"]
+    assert forces[0][3] == "pressed"
+    assert "Segments of companions: axial force, stress, utilisation" in found
+    assert "Envelope by segment of companions" in found
+
+
+def test_a_reaction_of_rounding_alone_reads_nothing():
+    joints = [b for b in content(draw_bolt())["blocks"] if b.get("title", "").startswith("Joints: disp")]
+    assert joints[0]["rows"][0][3] == "0"
+
+
+def test_the_governing_check_of_a_sleeve_is_done_by_hand():
+    weak = edits.set_value(draw_bolt(), ("materials", 1, "allowable_compression"), 5e7)
+    said = json.dumps(content(weak), ensure_ascii=False)
+    assert "Segment Sb at its end, x = 290 mm." in said
+    assert "tube_numbers" in said
+    assert "companion_compression" in said
+    assert "least clamp force" in said
+
+
+def test_long_marks_are_cut_with_all_that_names_them():
+    long = edits.set_value(draw_bolt(), ("companions", 0, "segments", 0, "mark"), "lower sleeve of the stack")
+    long = edits.set_value(long, ("companions", 0, "mark"), "stack of sleeves about the bolt")
+    rows = tables(long)["Companions beside the member, each along +x"]["rows"]
+    assert len(rows[0][0]) <= 18
+    assert len(rows[0][3]) <= 18
