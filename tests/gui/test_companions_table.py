@@ -5,6 +5,7 @@ from PySide6.QtCore import Qt
 from PySide6.QtGui import QGuiApplication
 from PySide6.QtTest import QTest
 
+from app import edits
 from app.project_file import dump
 from tests.gui.hand import begin, chord, enter, go_to, text_at
 from tests.sleeves import draw_bolt
@@ -124,6 +125,14 @@ def test_what_cannot_be_stays_with_its_reason_and_is_mended(window, beside, key,
     table = window.tables.views["segments"]
     enter(table, table.table_model.record_rows, "mark", "50")
     assert text_at(beside, 1, key) == text
+
+
+def test_a_draft_stays_at_its_segment_whatever_comes_and_goes_in_the_member(window, beside):
+    enter(beside, 1, "length", "long")
+    window.document.commit(edits.insert_segment(window.document.project, 0), "Insert segment")
+    assert text_at(beside, 1, "length") == "long"
+    window.document.commit(edits.remove_companion_segments(window.document.project, [(0, 0)]), "Delete")
+    assert text_at(beside, 0, "length") == "long"
 
 
 def test_a_length_that_does_not_fit_is_said_in_the_table(window, beside):
