@@ -137,10 +137,13 @@ def by_combination(
 
 
 def cell(checks: Sequence[Check]) -> str:
-    """The largest utilisation of some checks, marked where one of them could not be made."""
+    """The largest utilisation of some checks, marked where one of them could not be made or was waived."""
     made = [(check.utilisation, check.status) for check in checks if check.utilisation is not None]
     texts = [utilisation_text(*max(made))] if made else []
-    return " ".join([*texts, *([NOT_MADE] if len(made) < len(checks) else [])]) or NOTHING
+    statuses = {check.status for check in checks}
+    texts += [NOT_MADE] if "not_made" in statuses else []
+    texts += [tr("waived")] if "waived" in statuses else []
+    return " ".join(texts) or NOTHING
 
 
 def checked(results: Results) -> list[str]:

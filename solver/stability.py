@@ -20,7 +20,7 @@ from solver.beam_mesh import Column
 from solver.buckling import Buckled, critical_factors
 from solver.buckling_mode import Mode
 from solver.chain import Chain
-from solver.checks import NO_STRESS, StabilityReason
+from solver.checks import NO_STRESS, StabilityReason, status_of
 from solver.model import BondedPart, Lateral, LateralHold, Project, Segment, parts_of
 from solver.second_moments import second_moment, stretches
 from solver.solution import Solution
@@ -60,7 +60,7 @@ class Assessor:
             return (_NO_COMPRESSION,) * len(compressed)
         of_member = self._of_member([int(state) for state in np.flatnonzero(compressed)])
         return tuple(
-            _beside(of_member.get(state)) if squeezed else of_member.get(state, _NO_COMPRESSION)
+            self._beside(of_member.get(state)) if squeezed else of_member.get(state, _NO_COMPRESSION)
             for state, squeezed in enumerate(beside)
         )
 
@@ -83,14 +83,24 @@ class Assessor:
             return Stability("not_checked", buckled.factor, buckled.mode, "no_stability_factor")
         return Stability("checked", buckled.factor, buckled.mode)
 
+    def _beside(self, of_member: Stability | None) -> Stability:
+        """Where a companion is compressed: it is not part of the beam, so that nothing is known of it.
 
-def _beside(of_member: Stability | None) -> Stability:
-    """Where a companion is compressed: it is not part of the beam, so that nothing is known of it."""
-    if of_member is None:
-        return Stability("not_checked", reason="companion_compressed")
-    if of_member.reason in (None, "no_stability_factor"):
-        return replace(of_member, status="not_checked", reason="companion_compressed")
-    return of_member
+        A member that fails by itself fails all the same; that is no missing check, which might be waived.
+        """
+        if of_member is None:
+            return Stability("not_checked", reason="companion_compressed")
+        if of_member.status == "checked" and self._fails(of_member):
+            return of_member
+        if of_member.reason in (None, "no_stability_factor"):
+            return replace(of_member, status="not_checked", reason="companion_compressed")
+        return of_member
+
+    def _fails(self, stability: Stability) -> bool:
+        required, factor = self.project.limits.stability_factor, stability.critical_factor
+        if factor is None or isinstance(required, UnsetType):
+            return False
+        return status_of(required / factor) == "fail"
 
 
 def compressed_states(forces: tuple[FloatArray, FloatArray], force_bound: FloatArray) -> BoolArray:

@@ -297,7 +297,8 @@ def verdict_detail(results: Results) -> str:
 def _nothing_made(results: Results) -> str:
     if not results.checks:
         return tr("Nothing stresses the member and it has no limits: enter loads or limits to check")
-    return trn("{count} check could not be made", "{count} checks could not be made", len(results.checks))
+    missing = sum(check.status == "not_made" for check in results.checks)
+    return trn("{count} check could not be made", "{count} checks could not be made", missing)
 
 
 def _counted(results: Results) -> str:

@@ -17,6 +17,7 @@ from solver.model import (
     DisplacementLimit,
     FixedSupport,
     JointLoad,
+    Lateral,
     Limits,
     Project,
     ReactionLimit,
@@ -25,7 +26,7 @@ from solver.model import (
     SpringSupport,
 )
 from solver.solve import solve
-from tests.members import Part, area, case, member, waived
+from tests.members import STEEL, Part, area, case, member, round_bar, waived
 from tests.strategies import projects
 
 MM = "mm-N-MPa"
@@ -118,6 +119,15 @@ def test_a_waived_check_is_named_wherever_something_is_compressed() -> None:
     )
     assert found(pulled).headline == "Passes"
     assert found(pulled).notes == ()
+
+
+def test_a_waiver_does_not_hide_a_critical_factor_that_is_known() -> None:
+    parts = [Part(1.0, round_bar(0.02), **ALLOWABLES)]
+    pushed = member(parts, {0: FixedSupport()}, [case("Push", on_joints=[JointLoad("1", force=-40e3)])])
+    pinned = tuple(structs.replace(j, lateral=Lateral(translation="fixed")) for j in pushed.joints)
+    factor = math.pi**3 * STEEL * 0.02**4 / 64 / 40e3
+    notes = found(waived(structs.replace(pushed, joints=pinned), "guided")).notes
+    assert notes[0] == f"Stability waived (Push with critical factor {factor:.3f}): guided"
 
 
 def test_bedding_is_said_to_have_no_slip_limit() -> None:

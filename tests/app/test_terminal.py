@@ -24,6 +24,7 @@ def check(utilisation: float | None, status: Status) -> Check:
         ([check(1.0004, "fail")], "1.0004"),
         ([check(0.2, "pass"), check(None, "not_made")], "0.20 ?"),
         ([check(None, "not_made")], "?"),
+        ([check(None, "waived")], "waived"),
         ([], "–"),
     ],
 )

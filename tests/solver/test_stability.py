@@ -17,14 +17,17 @@ from solver.model import (
     JointLoad,
     Lateral,
     Limits,
+    LoadCase,
     RectangleSection,
     RoundSection,
     SegmentLoad,
     TubeSection,
+    Waiver,
 )
 from solver.second_moments import rigidity_at, second_moment, stretches, turning_place
 from solver.solve import solve
 from tests.members import STEEL, Part, area, case, member, round_bar, waived
+from tests.sleeves import draw_bolt
 
 PINNED = Lateral(translation="fixed")
 TURNING = Lateral(rotation="fixed")
@@ -197,3 +200,29 @@ def test_stiffnesses_far_apart_settle_or_say_so():
     ends = {0: Lateral(translation=1e-3), 1: Lateral(translation=1e18, rotation=1e15), 2: PINNED}
     found = solve(column(ends)).stability[0]
     assert found.status == "checked" or found.reason == "not_settled"
+
+
+def clamped_column(required):
+    """A slender bolt pushed in by more than its compressed sleeve takes; the check is waived."""
+    bolt = draw_bolt()
+    push = LoadCase("Push", joint_loads=(JointLoad("3", force=-60e3),))
+    held = tuple(structs.replace(j, lateral=PINNED) if i in (0, 3) else j for i, j in enumerate(bolt.joints))
+    return structs.replace(
+        bolt,
+        joints=held,
+        load_cases=(push,),
+        combinations=(),
+        limits=Limits(stability_factor=required, waived=(Waiver("stability", "sleeves guide it"),)),
+    )
+
+
+def test_a_waiver_hides_no_member_that_fails_beside_a_compressed_companion():
+    factor = solve(clamped_column(UNSET)).stability[0].critical_factor
+    below, above = (solve(clamped_column(factor * share)) for share in (1.01, 0.99))
+    assert [(r.stability[0].status, r.stability[0].reason) for r in (below, above)] == [
+        ("checked", None),
+        ("not_checked", "companion_compressed"),
+    ]
+    statuses = [[c.status for c in r.checks if c.check == "stability"] for r in (below, above)]
+    assert statuses == [["fail"], ["waived"]]
+    assert below.verdict == "fail"
