@@ -301,3 +301,12 @@ def test_the_tip_of_a_symbol_stands_beside_the_strip(qtbot, window):
     right = window.symbols.mapToGlobal(window.symbols.rect().topRight()).x()
     assert tip.geometry().left() >= right - 8
     QToolTip.hideText()
+
+
+def test_the_symbols_take_two_columns_in_a_low_window_and_none_is_cut_off(qtbot, window):
+    window.resize(1000, 580)
+    qtbot.waitUntil(lambda: len({b.x() for b in window.symbols.buttons.values()}) == 2)
+    room = window.symbols.rect()
+    assert all(room.contains(button.geometry()) for button in window.symbols.buttons.values())
+    window.resize(1400, 1000)
+    qtbot.waitUntil(lambda: len({b.x() for b in window.symbols.buttons.values()}) == 1)

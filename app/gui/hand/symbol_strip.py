@@ -6,8 +6,8 @@ A chosen symbol is in the hand until it is put down; the strip only shows which 
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QPoint, QSize, Qt, Signal
-from PySide6.QtGui import QKeyEvent
-from PySide6.QtWidgets import QToolButton, QToolTip, QVBoxLayout, QWidget
+from PySide6.QtGui import QKeyEvent, QResizeEvent
+from PySide6.QtWidgets import QGridLayout, QToolButton, QToolTip, QWidget
 
 from app.gui.hand.symbol_icon import symbol_icon
 from app.gui.theme import Theme, theme_for
@@ -15,6 +15,7 @@ from app.hand.kinds import KINDS, Kind
 from app.words import later, tr
 
 LEAST_BUTTON = 26  # px, above the 24 that WCAG 2.5.8 calls easy to hit
+TOP = 6  # px, above and below the buttons
 TIP_ASIDE = QPoint(4, -18)  # px; a tip stands below the point it is given, and would hide the next symbol
 GOES_ON = {
     "joint": later("{name}: choose it, then click a joint; the key {letter} puts it on the selected joints"),
@@ -31,7 +32,7 @@ def words_of(kind: Kind) -> str:
 
 
 class SymbolStrip(QWidget):
-    """One column of buttons: Tab goes to the last one used, Up and Down go through them."""
+    """A column of buttons, two where it is low: Tab goes to the last one used, Up and Down through them."""
 
     chosen = Signal(object)  # Kind
 
@@ -42,12 +43,10 @@ class SymbolStrip(QWidget):
         self.setAccessibleName(tr("Symbols to put on the drawing"))
         self._dressed: tuple[Theme, int] | None = None
         self.buttons = {kind.key: self._button(kind) for kind in KINDS}
-        column = QVBoxLayout(self)
-        column.setContentsMargins(3, 6, 3, 6)
-        column.setSpacing(1)
-        for button in self.buttons.values():
-            column.addWidget(button)
-        column.addStretch(1)
+        self._grid = QGridLayout(self)
+        self._grid.setContentsMargins(3, TOP, 3, TOP)
+        self._grid.setSpacing(1)
+        self._arrange(1)
         self._make_stop(next(iter(self.buttons.values())))
         self._dress()
 
@@ -61,6 +60,29 @@ class SymbolStrip(QWidget):
         button.clicked.connect(lambda _on=False: self.chosen.emit(kind))
         button.installEventFilter(self)
         return button
+
+    def _arrange(self, columns: int) -> None:
+        """All buttons in so many columns, from the top down."""
+        self._columns, rows = columns, -(-len(self.buttons) // columns)
+        for place, button in enumerate(self.buttons.values()):
+            self._grid.addWidget(button, place % rows, place // rows)
+        for row in range(len(self.buttons) + 1):
+            self._grid.setRowStretch(row, 1 if row == rows else 0)
+
+    def _height_in(self, columns: int) -> int:
+        rows = -(-len(self.buttons) // columns)
+        return rows * (next(iter(self.buttons.values())).height() + 1) + 2 * TOP
+
+    def minimumSizeHint(self) -> QSize:
+        """As low as two columns allow."""
+        return QSize(self._grid.minimumSize().width(), self._height_in(2))
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """A second column where the window is too low for one."""
+        super().resizeEvent(event)
+        columns = 1 if self._height_in(1) <= self.height() else 2
+        if columns != self._columns:
+            self._arrange(columns)
 
     def _make_stop(self, button: QToolButton) -> None:
         """Make a button the only one that Tab stops at."""
