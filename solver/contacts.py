@@ -65,13 +65,27 @@ class Contacts:
 
         `reaction` is what fixed and one-sided supports together exert at the contact's node, along +x.
         """
-        sprung = np.where(closed, np.where(self.rigid, 0.0, self.stiffness) * -gap, 0.0)
+        soft = closed & ~self.rigid
+        sprung = np.where(soft, np.where(self.rigid, 0.0, self.stiffness) * -gap, 0.0)
         others = reaction
-        if sprung.any():  # at the same node, which only stops share
-            others = reaction + (self.side * sprung) @ (self.node[:, None] == self.node)
+        if soft.any():  # at the same node, which only stops share
+            alike = (self.node[:, None] == self.node).astype(np.float64)
+            others = reaction + (self.side * sprung) @ alike
+            sprung = sprung - self.side * self._share(closed, soft, alike) * others
         left = -self.side * others
         force = np.where(closed & self.rigid, left, sprung)
         return np.where(self.facing, np.maximum(left, 0.0), force)
+
+    def _share(self, closed: BoolArray, soft: BoolArray, alike: FloatArray) -> FloatArray:
+        """(m, s) of what the balance of its node leaves over, the part of each contact that is soft.
+
+        A very stiff one is pressed in by less than a displacement has digits for. Nothing is left to the soft
+        ones where a rigid one at the node takes it.
+        """
+        stiffness = np.where(soft, np.where(self.rigid, 0.0, self.stiffness), 0.0)
+        taken = (closed & self.rigid) @ alike > 0.0
+        whole = stiffness @ alike + self.spring
+        return np.where(soft & ~taken, stiffness / np.where(soft, whole, 1.0), 0.0)
 
 
 _NOWHERE, _NOTHING, _NEVER = np.zeros(0, dtype=np.intp), np.zeros(0), np.zeros(0, dtype=np.bool_)

@@ -197,7 +197,7 @@ def largest_load(at: Held, ends: Condensed) -> FloatArray:
     beside[net.end] = np.maximum(beside[net.end], own)
     if net.tied.size:
         np.maximum.at(beside, net.to, beside[net.tied])
-    stiffness[at.sprung] = at.spring
+    stiffness[at.sprung] = np.minimum(at.spring, beside[at.sprung])  # a stiffer one moves the element
     stiffness[at.fixed] = beside[at.fixed]
     loads = (at.force, ends.load_stretch, ends.load_mean, stiffness * at.movement)
     return np.asarray(np.max([np.abs(load).max(axis=1) for load in loads], axis=0))

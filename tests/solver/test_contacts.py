@@ -174,6 +174,18 @@ def test_a_stop_with_stiffness_is_a_spring_behind_its_gap():
     assert_allclose(solution.potential[0], strain - 3e4 * u, rtol=1e-11)
 
 
+@pytest.mark.parametrize("stiffness", [1e15, 1e18, 1e21, 1e24])
+def test_a_stop_that_hardly_gives_way_pushes_with_what_its_joint_is_held(stiffness):
+    # it is pressed in by less than a displacement has digits for; a second one shares the force with it
+    stops = stops_of((2, 1, 1e-3, stiffness), (2, 1, 1e-3, stiffness / 4), (1, 1, 1.0, 1e8))
+    chain = replace(chain_of(**BAR, fixed=[0]), stops=stops)
+    loads = loads_of(chain, 2, movement=[(2, -1e-3)])
+    loads.joint_force[:, 2] = [100.0, 1e5]
+    solution = solve_axial(chain, loads, NAMES[:2])
+    assert_allclose(solution.push[:, 1:], [[80.0, 20.0], [8e4, 2e4]], rtol=1e-6)
+    assert_allclose(-solution.push.sum(axis=1), solution.reaction[:, 2], rtol=1e-11)
+
+
 def test_a_movement_takes_the_stop_along_and_the_clearance_is_never_factored():
     chain = replace(chain_of(**BAR, fixed=[0]), stops=stops_of((2, -1, 1e-4)))
     loads = loads_of(chain, 2, movement=[(2, 0.0)])
