@@ -16,9 +16,9 @@ JOINT_REACH = 8.0  # pixels to either side in which a joint is pointed at
 
 def draw_body(sketch: Sketch) -> None:
     """All segments, their targets, their marks, the axis."""
-    for index in range(len(sketch.member.project.segments)):
+    for index, segment in enumerate(sketch.member.project.segments):
         if sketch.shown_span(index) is not None:
-            _draw_segment(sketch, index)
+            _draw_segment(sketch, index, segment)
     _draw_axis(sketch)
     _draw_marks(sketch)
 
@@ -41,14 +41,14 @@ def edge_at(sketch: Sketch, joint: int) -> float:
     return max(left, right)
 
 
-def _draw_segment(sketch: Sketch, index: int) -> None:
-    segment = sketch.member.project.segments[index]
+def _draw_segment(sketch: Sketch, index: int, segment: Segment) -> None:
     part = Part("segment", index)
     bare = isinstance(segment.section, AreaSection)
     fractions = [i / SAMPLES for i in range(SAMPLES + 1)] if bare else [0.0, 1.0]
     start, end = sketch.along(index), sketch.along(index + 1)
     axis = sketch.rows.axis
-    halves = [(start + s * (end - start), half_depth(sketch, segment, s)) for s in fractions]
+    depths = [half_depth(sketch, segment, s) for s in fractions]
+    halves = [(start + s * (end - start), h) for s, h in zip(fractions, depths, strict=True)]
     upper = [(a, axis - h) for a, h in halves]
     lower = [(a, axis + h) for a, h in reversed(halves)]
     for section in layers_around(segment):
@@ -60,7 +60,8 @@ def _draw_segment(sketch: Sketch, index: int) -> None:
         _draw_bore(sketch, segment, start, end)
     for section in layers_inside(segment):
         draw_layer(sketch, section, (start, end), part)
-    thick = max(*(_whole_depth(sketch, segment, s) for s in fractions), 12.0)
+    whole = [_whole_depth(sketch, segment, s) for s in fractions] if segment.bonded else depths
+    thick = max(*whole, 12.0)
     span = sketch.shown_span(index) or (start, end)
     sketch.target(span, (axis - thick, axis + thick), part)
 

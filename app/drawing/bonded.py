@@ -37,6 +37,8 @@ def layers_inside(segment: Segment) -> list[AnySection]:
 
 
 def _by_thickness(segment: Segment) -> list[AnySection]:
+    if not segment.bonded:
+        return []
     return sorted((part.section for part in segment.bonded), key=_thickness, reverse=True)
 
 

@@ -6,7 +6,6 @@ takes the place of quieter labels where no corner is free.
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
 from itertools import product
 from operator import itemgetter
 
@@ -64,19 +63,16 @@ def free_box(sketch: Sketch, width: float, height: float) -> Box | None:
 
 def _freest(sketch: Sketch, taken: FloatArray, width: float, height: float) -> tuple[int, Box]:
     """The first of the boxes of a size at the edges that meets the fewest that are taken, and how many."""
-    corners = tuple(_corners(sketch.frame.box, width, height))
-    met = _met(corners, taken)
-    best = int(np.argmin(met))
-    return int(met[best]), corners[best]
-
-
-def _corners(room: Box, width: float, height: float) -> Iterator[Box]:
-    """Boxes of a size along the right edge from the foot up, then along the left edge."""
+    room, columns = sketch.frame.box, []
     count = max(int((room.bottom - room.top - height - 4.0) / STEP), 0) + 1
+    tops = room.bottom - 2.0 - height - np.arange(count, dtype=np.float64) * STEP  # from the foot up
     for left in (room.right - INSET - width, room.left + INSET):
-        for index in range(count):
-            top = room.bottom - 2.0 - height - index * STEP
-            yield Box(left, top, left + width, top + height)
+        beside = taken[(taken[:, 0] < left + width) & (taken[:, 2] > left)]
+        met = _met(tops, height, beside)
+        best = int(np.argmin(met))
+        top = float(tops[best])
+        columns.append((int(met[best]), Box(left, top, left + width, top + height)))
+    return min(columns, key=itemgetter(0))
 
 
 def _taken(sketch: Sketch) -> FloatArray:
@@ -90,9 +86,8 @@ def _taken(sketch: Sketch) -> FloatArray:
     return np.array([astuple(box) for box in boxes]).reshape(-1, 4)
 
 
-def _met(boxes: Sequence[Box], taken: FloatArray) -> IntArray:
-    """How many of the taken boxes each of the others (k,) meets."""
-    left, top, right, bottom = np.array([astuple(box) for box in boxes]).T[:, :, np.newaxis]
-    apart = (taken[:, 0] >= right) | (taken[:, 2] <= left) | (taken[:, 1] >= bottom) | (taken[:, 3] <= top)
-    met: IntArray = np.count_nonzero(~apart, axis=1)
+def _met(tops: FloatArray, height: float, taken: FloatArray) -> IntArray:
+    """How many of the boxes taken beside a column each of its places (k,) meets."""
+    top = tops[:, np.newaxis]
+    met: IntArray = np.count_nonzero((taken[:, 1] < top + height) & (taken[:, 3] > top), axis=1)
     return met

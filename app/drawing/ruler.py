@@ -95,7 +95,7 @@ class Ruler:
     @property
     def to_scale(self) -> bool:
         """Whether every segment is as wide as its length asks for."""
-        return self.sheet_joints == self.joints
+        return self.sheet_joints is self.joints or self.sheet_joints == self.joints
 
     @property
     def widened(self) -> tuple[int, ...]:

@@ -85,13 +85,6 @@ class Box(Struct, frozen=True, gc=False):
     bottom: float
 
     @classmethod
-    def between(cls, one: Point, other: Point) -> Box:
-        """The box between two corners, in any order."""
-        left, right = (one[0], other[0]) if one[0] <= other[0] else (other[0], one[0])
-        top, bottom = (one[1], other[1]) if one[1] <= other[1] else (other[1], one[1])
-        return cls(left, top, right, bottom)
-
-    @classmethod
     def around(cls, centre: Point, width: float, height: float) -> Box:
         """The box of a size around its centre."""
         left, top = centre[0] - 0.5 * width, centre[1] - 0.5 * height

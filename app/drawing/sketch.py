@@ -115,9 +115,12 @@ class Sketch:
 
     def shortest_beside(self, joint: int) -> float:
         """The length in pixels of the shorter of the segments that meet at a joint."""
-        last = len(self.member.position) - 1
-        beside = [s for s in (joint - 1, joint) if 0 <= s < last]
-        return min(abs(self.along(s + 1) - self.along(s)) for s in beside)
+        return self._shortest[joint]
+
+    @cached_property
+    def _shortest(self) -> tuple[float, ...]:
+        widths = [abs(last - first) for first, last in pairwise(self.joints)]
+        return tuple(map(min, [widths[0], *widths], [*widths, widths[-1]]))
 
     def holds(self, joint: int) -> bool:
         """Whether a joint is inside the window."""
@@ -161,7 +164,13 @@ class Sketch:
 
     def box(self, along: Span, across: Span) -> Box:
         """The box between two corners (along, across)."""
-        return Box.between(self.point(along[0], across[0]), self.point(along[1], across[1]))
+        (a, b), (c, d), zero = along, across, self.zero
+        a, b = (a, b) if a <= b else (b, a)
+        if self.frame.upright:
+            c, d = zero - c, zero - d
+            return Box(c, a, d, b) if c <= d else Box(d, a, c, b)
+        c, d = zero + c, zero + d
+        return Box(a, c, b, d) if c <= d else Box(a, d, b, c)
 
     def extents(self, text: str, face: Face = "small") -> tuple[float, float]:
         """How much of (along, across) a text takes; texts are never turned."""
