@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import os
 import sys
 from pathlib import Path
@@ -86,6 +87,20 @@ def offer_recovery(window: Window, found: tuple[Recovered, ...]) -> None:
     dialogs.ask_recover(window, name, on_answer)
 
 
+def set_aside(window: Window) -> None:
+    """With the first results all libraries are there: what stays to the end is not searched for cycles again.
+
+    A search through all of it takes several frames, and would come while a hand pulls.
+    """
+
+    def on_shown() -> None:
+        if window.showing.current:
+            window.showing.shown.disconnect(on_shown)
+            gc.freeze()
+
+    window.showing.shown.connect(on_shown)
+
+
 def run(path: str | os.PathLike[str] | None = None, asked: str = "") -> int:
     """Open the window on a file or on a new project; returns the exit code when it is closed.
 
@@ -100,6 +115,7 @@ def run(path: str | os.PathLike[str] | None = None, asked: str = "") -> int:
     recovery_folder = folder / "recovery"
     found = left_behind(recovery_folder)
     window = open_window(path, store, recovery_folder)
+    set_aside(window)
     errors = log.UncaughtErrors(window.help.show_fault)
     errors.install()
     QTimer.singleShot(0, window, lambda: offer_recovery(window, found))

@@ -1,8 +1,10 @@
 """The program as it is started: opens, and ends without leaving anything behind."""
 
+import gc
 import sys
 
 import pytest
+from msgspec.structs import replace
 from PySide6.QtCore import QTimer
 from PySide6.QtWidgets import QApplication
 
@@ -59,3 +61,21 @@ def test_a_file_that_is_not_there_is_said_and_the_window_stays(tmp_path):
     code, texts = run_and_look(tmp_path / "gone.barwright.json", look)
     assert code == 0
     assert "no such file" in texts[0]
+
+
+def test_what_the_first_results_brought_is_set_aside_once(window, qtbot):
+    gc.unfreeze()
+    try:
+        main.set_aside(window)
+        assert gc.get_freeze_count() == 0
+        project = window.document.project
+        window.document.commit(replace(project, title="another"), "Title")
+        qtbot.waitUntil(lambda: window.showing.current)
+        set_aside = gc.get_freeze_count()
+        assert set_aside > 100_000  # the libraries
+        gc.unfreeze()
+        window.document.undo()
+        qtbot.waitUntil(lambda: window.showing.current)
+        assert gc.get_freeze_count() == 0
+    finally:
+        gc.unfreeze()
