@@ -53,6 +53,7 @@ FIXED = frozenset(
         "kip",
         "lbf",
         "psi",
+        "rad",
         "alt",
         "esc",
         "enter",
