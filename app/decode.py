@@ -106,9 +106,11 @@ def _choice(value: object, described: inspect.LiteralType, place: Place, faults:
     return _not_a_choice(value, described.values, place, faults)
 
 
-def _not_a_choice(value: object, choices: Sequence[object], place: Place, faults: Faults) -> None:
+def _not_a_choice(
+    value: object, choices: Sequence[object], place: Place, faults: Faults, rule: Rule = "not_a_choice"
+) -> None:
     close = nearest(value, map(str, choices)) if isinstance(value, str) else None
-    _fault(faults, place, "not_a_choice", value=shown(value), choices=tuple(choices), nearest=close)
+    _fault(faults, place, rule, value=shown(value), choices=tuple(choices), nearest=close)
 
 
 def _list(value: object, described: inspect.VarTupleType, place: Place, faults: Faults) -> Any:
@@ -168,8 +170,14 @@ def _one_of(value: object, described: inspect.UnionType, place: Place, faults: F
 
 def _word_or_number(value: object, described: inspect.UnionType, place: Place, faults: Faults) -> Any:
     by_type = {type(kind): kind for kind in described.types}
-    number = isinstance(value, int | float) and not isinstance(value, bool)
-    return convert(value, by_type[inspect.FloatType if number else inspect.LiteralType], place, faults)
+    if isinstance(value, int | float) and not isinstance(value, bool):
+        return convert(value, by_type[inspect.FloatType], place, faults)
+    words = [
+        word for kind in described.types if isinstance(kind, inspect.LiteralType) for word in kind.values
+    ]
+    if isinstance(value, str) and value in words:
+        return value
+    return _not_a_choice(value, words, place, faults, "no_word_or_number")
 
 
 _CONVERTERS: Mapping[type[inspect.Type], Callable[[Any, Any, Place, Faults], Any]] = {

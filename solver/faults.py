@@ -24,7 +24,9 @@ Rule: TypeAlias = Literal[
     "not_greater_than",  # facts: bound, value
     "below_least",  # facts: bound, value
     "not_a_choice",  # facts: value, choices, nearest (or None)
+    "no_word_or_number",  # facts: value, choices, nearest (or None)
     "empty_text",
+    "no_reason",  # of a waiver
     # of records together
     "too_few_segments",
     "joint_count",  # facts: joints, segments

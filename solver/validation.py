@@ -203,6 +203,10 @@ def _waiver_faults(waived: object) -> Iterator[Fault]:
     """A check is waived once, with one reason."""
     named = [(("limits", "waived", index, "check"), text(w, "check")) for index, w in records(waived)]
     yield from duplicates(named)
+    for index, waiver in records(waived):
+        reason = text(waiver, "reason")
+        if reason is not None and not reason.strip():
+            yield Fault(place_text(("limits", "waived", index, "reason")), "no_reason")
 
 
 def _duplicate_limits(key: str, limits: object) -> Iterator[Fault]:

@@ -327,7 +327,7 @@ def _full_joint(draw: st.DrawFn, joint: Joint) -> Joint:
 
 @st.composite
 def _full_limits(draw: st.DrawFn, limits: Limits) -> Limits:
-    reasons = texts().filter(bool)
+    reasons = texts().filter(str.strip)
     waivers = st.just(()) | reasons.map(lambda reason: (Waiver("stability", reason),))
     factor = draw(maybe(numbers(1.0, 5.0)))
     return structs.replace(limits, stability_factor=factor, waived=draw(waivers))

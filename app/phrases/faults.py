@@ -41,6 +41,8 @@ FAULTS: Final[Mapping[Rule, tuple[str, str]]] = {
     "not_greater_than": (later("must be greater than {bound}, is {value}"), ""),
     "below_least": (later("must be at least {bound}, is {value}"), ""),
     "not_a_choice": (later("must be {choices}, is {value}"), ""),
+    "no_word_or_number": (later("must be a number or {choices}, is {value}"), ""),
+    "no_reason": (later("a check is waived for a reason, and none is given"), later("enter the reason")),
     "empty_text": (later("must not be empty"), later("enter a name")),
     "too_few_segments": (later("a member has at least one segment, this has none"), later("add a segment")),
     "joint_count": (

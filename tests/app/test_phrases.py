@@ -55,6 +55,8 @@ FACTS: dict[str, dict[str, object]] = {
     "not_greater_than": {"bound": 0, "value": -0.04},
     "below_least": {"bound": 0, "value": -1.0},
     "not_a_choice": {"value": "fixd", "choices": ("fixed", "spring"), "nearest": None},
+    "no_word_or_number": {"value": "stuck", "choices": ("fixed", "free"), "nearest": None},
+    "no_reason": {},
     "empty_text": {},
     "too_few_segments": {},
     "joint_count": {"joints": 3, "segments": 3},

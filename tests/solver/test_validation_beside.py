@@ -57,7 +57,7 @@ FAULTY: list[tuple[Any, str, str, dict[str, Any]]] = [
     (
         changed("joints", 1, "lateral", {"translation": "fixd"}),
         "joints[1].lateral.translation",
-        "not_a_choice",
+        "no_word_or_number",
         {"nearest": "fixed"},
     ),
     (
@@ -69,7 +69,7 @@ FAULTY: list[tuple[Any, str, str, dict[str, Any]]] = [
     (
         changed("joints", 1, "lateral", {"rotation": True}),
         "joints[1].lateral.rotation",
-        "wrong_type",
+        "no_word_or_number",
         {},
     ),
     (
@@ -128,6 +128,12 @@ FAULTY: list[tuple[Any, str, str, dict[str, Any]]] = [
         beside(limits={"waived": [{"check": "stability", "reason": ""}]}),
         "limits.waived[0].reason",
         "empty_text",
+        {},
+    ),
+    (
+        beside(limits={"waived": [{"check": "stability", "reason": " \n"}]}),
+        "limits.waived[0].reason",
+        "no_reason",
         {},
     ),
 ]
