@@ -1,7 +1,7 @@
 """What the strips show at single places beside their curves: peak stresses at shoulders, and fatigue.
 
 A mark is a diamond with a word; the same on screen and paper. Fatigue away from shoulders is one of every
-segment, so only the worst of them is marked.
+segment, so only the worst of them is marked; that of companions, which the strips do not show, is not.
 """
 
 from __future__ import annotations
@@ -57,9 +57,10 @@ def _peaks(results: Results, names: set[str]) -> Iterator[PointMark]:
 def _utilisations(results: Results, names: set[str]) -> Iterator[PointMark]:
     """The largest of each shoulder, of peak stress and of fatigue; elsewhere the largest of all."""
     made = [c for c in results.checks if c.utilisation is not None and names & {*_states(c)}]
+    marks = {segment.mark for segment in results.project.segments}
     peaks = [c for c in made if c.check == "peak"]
     swings = [c for c in made if c.check == "fatigue" and c.joint is not None]
-    plain = [c for c in made if c.check == "fatigue" and c.joint is None]
+    plain = [c for c in made if c.check == "fatigue" and c.joint is None and c.segment in marks]
     for own in _by_place(peaks):
         yield _used(max(own, key=utilisation_of), tr("peak {value}"))
     for own in (*_by_place(swings), *([plain] if plain else [])):

@@ -34,7 +34,6 @@ Reason: TypeAlias = Literal[
     "shoulder_not_round",
     "shoulder_out_of_range",  # with `ratio`
     "shoulder_bonded",
-    "fatigue_companion",
     "no_lateral",
     "lateral_insufficient",
     "no_second_moment",

@@ -35,6 +35,7 @@ from solver.segment_results import segment_results
 from solver.shoulders import notches
 from solver.solution import Solution
 from solver.stability import Assessor, Stability, compressed_states
+from solver.swings import Row
 from solver.validation import unsolvable
 
 
@@ -116,7 +117,8 @@ def _results(
     parts = part_results(project, chain.bonded, stress, stress_checks, limits)
     shoulders = notches(project)
     peaks = PeakChecker(project, position, stress, shoulders)
-    fatigue = FatigueChecker(project, chain, loads, states, solution, position, shoulders)
+    rows = _rows((chain, loads, solution), position, row, zero)
+    fatigue = FatigueChecker(project, states, *rows, shoulders)
     companions, others = (None, None) if row is None else companion_results(project, states, row, zero)
     stability = _stability(project, (chain, solution), states, force, companions, cancelled)
     checker = Checker(
@@ -149,6 +151,16 @@ def _results(
         stability=stability,
         companions=companions,
     )
+
+
+def _rows(
+    member: tuple[Chain, Loads, Solution], position: FloatArray, others: Beside | None, zero: FloatArray
+) -> tuple[Row, Row | None]:
+    """The member's segments and the companions', for what swings along them."""
+    own = Row(*member, position[:-1], position[1:], zero)
+    if others is None:
+        return own, None
+    return own, Row(others.chain, others.loads, others.solution, others.begins, others.ends, zero)
 
 
 def _stability(

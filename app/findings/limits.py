@@ -27,27 +27,39 @@ def limit_findings(
     project = results.project
     joints = {joint.mark: index for index, joint in enumerate(project.joints)}
     segments = {segment.mark: index for index, segment in enumerate(project.segments)}
+    companions = {of.segment.mark: index for index, of in enumerate(beside(project))}
     worst = worst_first(check for check in checks if check.check not in STRESSES)
-    return tuple(_finding(check, joints, segments, system) for check in worst)
+    return tuple(_finding(check, joints, (segments, companions), system) for check in worst)
 
 
 def _finding(
-    check: Check, joints: Mapping[str, int], segments: Mapping[str, int], system: UnitSystemName
+    check: Check,
+    joints: Mapping[str, int],
+    segments: tuple[Mapping[str, int], Mapping[str, int]],
+    system: UnitSystemName,
 ) -> LimitFinding:
+    """`segments` are the places of the member's, and of the companions' among themselves."""
     marks = (check.joint, check.start, check.end)
-    on_segment = check.segment if check.joint is None else None
+    mark = check.segment if check.joint is None else None
+    on_member, on_companion = (_at(places, mark) for places in segments)
     utilisation = check.utilisation or 0.0
     return LimitFinding(
         subject=subject_of(check),
         joints=tuple(joints[mark] for mark in marks if mark is not None),
-        segments=() if on_segment is None else (segments[on_segment],),
+        segments=on_member,
         sentence=check_sentence(check, system),
         state=check.combination,
         utilisation=utilisation,
         utilisation_text=utilisation_text(utilisation, check.status),
         status=check.status,
         position=check.position,
+        companions=on_companion,
     )
+
+
+def _at(places: Mapping[str, int], mark: str | None) -> tuple[int, ...]:
+    """The place of a mark, if it is among them."""
+    return () if mark is None or mark not in places else (places[mark],)
 
 
 def not_made(results: Results, among: Iterable[Check]) -> tuple[NotMade, ...]:

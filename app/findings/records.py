@@ -49,7 +49,8 @@ class SegmentFinding:
 class LimitFinding:
     """The worst made check of one limit, peak stress or fatigue.
 
-    `joints` are one index, or two for a relative displacement; of fatigue away from shoulders `segments` is.
+    `joints` are one index, or two for a relative displacement; of fatigue away from shoulders `segments` is,
+    or `companions`.
     """
 
     subject: Subject
@@ -61,6 +62,7 @@ class LimitFinding:
     utilisation_text: str
     status: Status
     position: float | None
+    companions: tuple[int, ...] = ()  # among the segments of all companions
 
 
 @dataclass(frozen=True, slots=True)

@@ -20,7 +20,6 @@ REASONS_OF_SHOULDERS: Final[Mapping[Reason, str]] = {
         "the step is {ratio} times as high as the fillet radius, the fit holds for {least} to {most} times"
     ),
     "shoulder_bonded": later("no stress concentration is known beside bonded parts"),
-    "fatigue_companion": later("fatigue of companions is not worked out"),
 }
 
 _FACTOR: Final = later("enter the factor itself at the joint, such as Kt 1.8")
@@ -41,7 +40,6 @@ REMEDIES_OF_SHOULDERS: Final[Mapping[Reason, tuple[str, str]]] = {
     "shoulder_not_round": 2 * (_FACTOR,),
     "shoulder_out_of_range": 2 * (_FACTOR,),
     "shoulder_bonded": 2 * (_OTHERWISE,),
-    "fatigue_companion": 2 * (_OTHERWISE,),
 }  # fmt: skip
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import pytest
+from msgspec import UNSET, UnsetType
 from msgspec.structs import replace
 
 from app import edits
@@ -12,13 +13,15 @@ from app.drawing.tips import tip
 from app.edits import EditError
 from app.findings import findings, findings_in
 from app.findings.cells import cell_of_finding
+from app.findings.subjects import Subject
+from app.gui.findings.content import rows
 from app.hand.cells import Cell
 from app.phrases import check_sentence, verdict_detail
 from app.point_marks import point_marks
 from app.results_file import results_json
 from app.shown import Shown
 from app.terminal import report
-from solver.model import Companion, CompanionSegment, FatigueRange, Shoulder
+from solver.model import Companion, CompanionSegment, Endurance, FatigueRange, Project, Shoulder
 from solver.shoulders import Step
 from solver.solve import solve
 from tests.shouldered import FILLET, spindle, with_shoulders, without_strength
@@ -131,13 +134,49 @@ def test_the_results_file_has_what_the_checks_are_made_of():
     assert swing["amplitude"] == pytest.approx(0.9 * abs(swing["nominal"] - swing["nominal_to"]))
 
 
-def test_companions_are_listed_as_not_checked_for_fatigue():
-    sleeve = CompanionSegment("S", 0.3, "of A", SPINDLE.segments[0].section)
-    beside = replace(SPINDLE, companions=(Companion(mark="K", start="0", end="1", segments=(sleeve,)),))
-    results = solve(beside)
-    checks = [c for c in results.checks if c.segment == "S" and c.check == "fatigue"]
-    assert [(c.status, c.reason) for c in checks] == [("not_made", "fatigue_companion")]
-    assert results.verdict != "pass"
+def sleeved(endurance: Endurance | UnsetType) -> Project:
+    """The spindle with a sleeve over its first segment, of a material of its own."""
+    soft = replace(SPINDLE.materials[0], name="Soft", endurance=endurance)
+    sleeve = CompanionSegment("S", 0.3, "Soft", SPINDLE.segments[0].section)
+    companions = (Companion(mark="K", start="0", end="1", segments=(sleeve,)),)
+    return replace(SPINDLE, materials=(*SPINDLE.materials, soft), companions=companions)
+
+
+def test_fatigue_of_a_companion_is_found_told_and_written_by_its_segment():
+    project = sleeved(Endurance(amplitude=20e6, ultimate=600e6))
+    results = solve(project)
+    (check,) = (c for c in results.checks if c.segment == "S" and c.check == "fatigue")
+    assert check.status == "fail"
+    assert verdict_detail(results).startswith("Largest utilisation 1.09: fatigue in segment S, Pulling to")
+    found = next(f for f in findings(results, MM).limits if f.subject == Subject("fatigue", ("S",)))
+    assert (found.segments, found.joints, found.companions) == ((), (), (0,))
+    assert found.sentence.startswith("S: fatigue, amplitude 21.6 of 20 MPa and mean ")
+    assert cell_of_finding(found.subject, project) == Cell("companions", 0, "section")
+    row = next(r for r in rows(findings(results, MM)) if r.about == found.subject)
+    assert (row.companions, row.leads_somewhere) == ({0}, True)
+    lines = report(project, results, "spindle.barwright.json").splitlines()
+    assert ["S:", "fatigue", "1.09"] in [line.split() for line in lines]
+    (written,) = (c for c in results_json(results)["checks"] if c.get("segment") == "S" and "from" in c)
+    assert (written["from"], written["to"], written["status"]) == ("Pulling", "Pushing", "fail")
+
+
+def test_the_strips_of_the_member_mark_no_fatigue_of_companions():
+    results = solve(sleeved(Endurance(amplitude=20e6, ultimate=600e6)))
+    worst = {c.segment: c.utilisation for c in results.checks if c.check == "fatigue" and c.joint is None}
+    assert max(worst, key=worst.get) == "S"
+    marks = point_marks(results, (0, 1), "utilisation")
+    plain = max(value for mark, value in worst.items() if mark != "S")
+    assert any(mark.value == plain for mark in marks)
+    assert all(mark.value != worst["S"] for mark in marks)
+
+
+def test_without_endurance_fatigue_of_a_companion_is_listed_as_not_checked():
+    project = sleeved(UNSET)
+    results = solve(project)
+    (missing,) = findings(results, MM).not_made
+    assert (missing.marks, missing.companions) == (("S",), (0,))
+    assert missing.remedy == "enter endured amplitude and ultimate stress for Soft"
+    assert cell_of_finding(missing, project) == Cell("materials", 3, "endured_amplitude")
 
 
 # --- marks in the strips ---

@@ -127,6 +127,7 @@ def _limit_row(item: LimitFinding) -> tuple[float, Row]:
         position=item.position,
         segments=frozenset(item.segments),
         joints=frozenset(item.joints),
+        companions=frozenset(item.companions),
     )
     return item.utilisation, row
 

@@ -4,10 +4,13 @@ from __future__ import annotations
 
 import json
 
+from msgspec import structs
+
 from app import edits
 from app.sheet.content import sheet_content
 from app.sheet.short_names import with_short_names
 from app.sheet.title import Origin
+from solver.model import Endurance, FatigueRange
 from solver.solve import solve
 from tests.sleeves import draw_bolt
 
@@ -61,3 +64,16 @@ def test_long_marks_are_cut_with_all_that_names_them():
     rows = tables(long)["Companions beside the member, each along +x"]["rows"]
     assert len(rows[0][0]) <= 18
     assert len(rows[0][3]) <= 18
+
+
+def test_fatigue_of_a_sleeve_is_listed_and_done_by_hand_where_it_governs():
+    lines = {"Steel": Endurance(amplitude=4e8, ultimate=9e8), "Brass": Endurance(amplitude=5e6, ultimate=3e8)}
+    bolt = draw_bolt()
+    materials = tuple(structs.replace(m, endurance=lines[m.name]) for m in bolt.materials)
+    swinging = structs.replace(bolt, materials=materials, fatigue=(FatigueRange("Tight", "Pulled"),))
+    rows = tables(swinging)["Fatigue, Tight to Pulled"]["rows"]
+    assert [row[0] for row in rows] == [f"segment {mark}" for mark in ("A", "B", "C", "Sa", "Sb")]
+    assert rows[4][1] == "290"  # its far end, the thinner one, along the member
+    said = json.dumps(content(swinging), ensure_ascii=False)
+    assert "Segment Sb at x = 290 mm." in said
+    assert "endured_numbers" in said
