@@ -107,17 +107,18 @@ def test_the_envelope_is_the_largest_and_smallest_of_the_states(project):
     results = solve(project)
     states = checked_states(results)
     found = envelope(results, points=60)
+    sides = []
     for k, x in enumerate(found.x):
         readouts = [at(results, state, float(x)) for state in states]
         first = readouts[0].left is not None and readouts[0].left.segment == found.segment[k]
-        sides = [readout.left if first else readout.right for readout in readouts]
-        for name in NAMES:
-            values = [getattr(side, name) for side in sides]
-            largest, smallest = getattr(found, f"{name}_max")[k], getattr(found, f"{name}_min")[k]
-            # x found again as a fraction loses digits where a curve is steep
-            near = 1e-11 * np.max(np.abs([getattr(found, f"{name}_max"), getattr(found, f"{name}_min")]))
-            assert_allclose([largest, smallest], [max(values), min(values)], rtol=1e-9, atol=near)
-            assert getattr(found, f"{name}_max_state")[k] in states
+        sides.append([readout.left if first else readout.right for readout in readouts])
+    for name in NAMES:
+        values = np.array([[getattr(side, name) for side in row] for row in sides])
+        largest, smallest = getattr(found, f"{name}_max"), getattr(found, f"{name}_min")
+        near = 1e-11 * np.max(np.abs([largest, smallest]))  # x found again as a fraction loses digits
+        assert_allclose(largest, values.max(axis=1), rtol=1e-9, atol=near)
+        assert_allclose(smallest, values.min(axis=1), rtol=1e-9, atol=near)
+        assert np.isin(getattr(found, f"{name}_max_state"), states).all()
 
 
 @given(projects())
