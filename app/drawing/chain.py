@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from itertools import groupby
 
-from app.drawing.placing import TIGHT, UNDER_EACH_OTHER, Wish, place
+from app.drawing.placing import TIGHT, UNDER_EACH_OTHER, Span, Wish, place
 from app.drawing.shapes import Box, Part, Stroke, Text
 from app.drawing.sketch import Sketch
 from app.drawing.words import section_text
@@ -19,6 +19,7 @@ LEAST_BREAK = 9.0  # px of the segment
 LONGEST_MARK = 10  # of a joint beside its level, in digits
 MARK_RANK = 2  # after all levels
 NUDGE = 4.0  # px that lengths and sections may stand off the middle upright, where segments are short
+OUTWARD = 8.0  # px upright, of the margin beyond sections
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 
@@ -36,12 +37,18 @@ def draw_chain(sketch: Sketch, lengths: list[Wish], sections: list[Wish]) -> Non
     sketch.lines(ticks, width=1.6)
     clear = UNDER_EACH_OTHER if sketch.frame.upright else TIGHT
     sketch.put(lengths, rows.lengths, "high", clear)
-    sketch.put(sections, rows.sections, "low", clear)
+    sketch.put(sections, _reaching_out(sketch), "low", clear)
     for index in range(len(sketch.member.project.segments)):
         span = sketch.shown_span(index)
         if span is not None:
             across = rows.lengths[0][0], rows.sections[-1][1]
             sketch.target(span, across, Part("length", index))
+
+
+def _reaching_out(sketch: Sketch) -> tuple[Span, ...]:
+    """The rows of sections, upright with the margin beyond: the text of a pulled one grows into it."""
+    last = sketch.rows.sections[-1]
+    return (*sketch.rows.sections[:-1], (last[0], last[1] + (OUTWARD if sketch.frame.upright else 0.0)))
 
 
 def _breaks(sketch: Sketch) -> list[tuple[float, float]]:

@@ -1,4 +1,4 @@
-"""The word that labels are left out: it stands in a free corner of the drawing, whatever else is there.
+"""The word that labels are left out: it stands at a free edge of the drawing, whatever else is there.
 
 A drawing that leaves out a load without saying so would pass for the whole of what acts. The word therefore
 takes the place of quieter labels where no corner is free.
@@ -15,7 +15,7 @@ from msgspec.structs import astuple
 from app.drawing.shapes import Box, Part, Text
 from app.drawing.sketch import Sketch
 from app.words import tr, trn
-from solver.arrays import FloatArray, IntArray
+from solver.arrays import FloatArray
 
 INSET = 6.0  # px, from the edge of the drawing
 SHARES = (1.0, 0.5, 0.34, 0.25)  # of the words' length in one line, that lines may have
@@ -41,13 +41,16 @@ def left_out_words(count: int) -> tuple[str, str]:
 
 
 def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
-    """The first free box, in as few lines as fit there; where none is free the one over the least."""
+    """The first free box, at the foot or head in as few lines as fit there, else between them at the sides.
+
+    Where none is free it is the one over the least.
+    """
     taken, room = _taken(sketch), sketch.frame.box.right - sketch.frame.box.left - 2.0 * INSET
     found: list[tuple[int, Box, str]] = []
-    for text, share in product(words, SHARES):
+    for freest, text, share in product((_freest_at_foot_or_head, _freest_at_sides), words, SHARES):
         width = min(share * sketch.frame.measure(text, "small")[0] + 1.0, room)
         lines = sketch.in_even_lines(text, "small", width)
-        met, box = _freest(sketch, taken, *sketch.frame.measure(lines, "small"))
+        met, box = freest(sketch.frame.box, taken, *sketch.frame.measure(lines, "small"))
         found.append((met, box, lines))
         if not met:
             break
@@ -57,21 +60,32 @@ def _place(sketch: Sketch, words: tuple[str, str]) -> tuple[Box, str]:
 
 def free_box(sketch: Sketch, width: float, height: float) -> Box | None:
     """A box of a size at an edge of the drawing that nothing else reaches into, if there is one."""
-    met, box = _freest(sketch, _taken(sketch), width, height)
+    met, box = _freest_at_sides(sketch.frame.box, _taken(sketch), width, height)
     return None if met else box
 
 
-def _freest(sketch: Sketch, taken: FloatArray, width: float, height: float) -> tuple[int, Box]:
-    """The first of the boxes of a size at the edges that meets the fewest that are taken, and how many."""
-    room, columns = sketch.frame.box, []
+def _freest_at_foot_or_head(room: Box, taken: FloatArray, width: float, height: float) -> tuple[int, Box]:
+    """The first of the boxes along the foot from the right, then the head from the left, over the least."""
+    count = max(int((room.right - room.left - 2.0 * INSET - width) / STEP), 0) + 1
+    steps, rows = np.arange(count, dtype=np.float64) * STEP, []
+    foot = room.bottom - 2.0 - height, room.right - INSET - width - steps
+    head = room.top + 2.0, room.left + INSET + steps
+    for top, lefts in (foot, head):
+        beside = taken[(taken[:, 1] < top + height) & (taken[:, 3] > top)]
+        met, left = _least_met(lefts, width, beside[:, 0], beside[:, 2])
+        rows.append((met, Box(left, top, left + width, top + height)))
+    return min(rows, key=itemgetter(0))
+
+
+def _freest_at_sides(room: Box, taken: FloatArray, width: float, height: float) -> tuple[int, Box]:
+    """The first of the boxes along the right edge from the foot up, then the left, that meets the fewest."""
+    columns = []
     count = max(int((room.bottom - room.top - height - 4.0) / STEP), 0) + 1
     tops = room.bottom - 2.0 - height - np.arange(count, dtype=np.float64) * STEP  # from the foot up
     for left in (room.right - INSET - width, room.left + INSET):
         beside = taken[(taken[:, 0] < left + width) & (taken[:, 2] > left)]
-        met = _met(tops, height, beside)
-        best = int(np.argmin(met))
-        top = float(tops[best])
-        columns.append((int(met[best]), Box(left, top, left + width, top + height)))
+        met, top = _least_met(tops, height, beside[:, 1], beside[:, 3])
+        columns.append((met, Box(left, top, left + width, top + height)))
     return min(columns, key=itemgetter(0))
 
 
@@ -86,8 +100,9 @@ def _taken(sketch: Sketch) -> FloatArray:
     return np.array([astuple(box) for box in boxes]).reshape(-1, 4)
 
 
-def _met(tops: FloatArray, height: float, taken: FloatArray) -> IntArray:
-    """How many of the boxes taken beside a column each of its places (k,) meets."""
-    top = tops[:, np.newaxis]
-    met: IntArray = np.count_nonzero((taken[:, 1] < top + height) & (taken[:, 3] > top), axis=1)
-    return met
+def _least_met(starts: FloatArray, length: float, low: FloatArray, high: FloatArray) -> tuple[int, float]:
+    """How many of the taken spans the first of the places (k,) that meets the fewest meets, and the place."""
+    start = starts[:, np.newaxis]
+    met = np.count_nonzero((low < start + length) & (high > start), axis=1)
+    best = int(np.argmin(met))
+    return int(met[best]), float(starts[best])

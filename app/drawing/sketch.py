@@ -6,6 +6,7 @@ The parts (body, supports, loads, chain) draw in these coordinates and need not 
 
 from __future__ import annotations
 
+import re
 from collections.abc import Sequence
 from dataclasses import dataclass, field
 from functools import cached_property
@@ -25,6 +26,7 @@ Toward: TypeAlias = Literal["low", "middle", "high"]  # the side of a row, acros
 ANCHORS: dict[Toward, Anchor] = {"low": "end", "middle": "middle", "high": "start"}
 FAR = 1e6  # px along the axis: beyond every label
 MOST_HATCHES = 400  # strokes of one wall; what is longer is far outside the sheet
+BARE_ARROW = re.compile(r"(?<! )→")  # of a taper, before which a line may end
 LONGEST_LINE = 13.0  # of a label upright, in widths of a digit
 
 
@@ -233,10 +235,11 @@ class Sketch:
         return Wish(text, along, extent, depth, part, rank, slide, face)
 
     def narrowed(self, wish: Wish, widest: float) -> Wish:
-        """The label in more lines where it is too wide for its column (upright) and has words to break at."""
+        """The label in more lines where it is too wide for its column (upright) and has where to break."""
         if not self.frame.upright or wish.depth <= widest:
             return wish
-        text = self.in_even_lines(wish.text.replace("\n", " "), wish.face, widest)
+        words = BARE_ARROW.sub(" →", wish.text.replace("\n", " "))
+        text = self.in_even_lines(words, wish.face, widest)
         extent, depth = self.extents(text, wish.face)
         return replace(wish, text=text, extent=extent, depth=depth)
 

@@ -20,6 +20,7 @@ from app.gui.hand.bubble import Bubble
 from app.gui.hand.marks import HandMarks
 from app.gui.sheet_items import CursorLine, JointLines, Message, Painted
 from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
+from app.gui.sheet_notice import Notice
 from app.gui.sheet_texts import texts_under
 from app.gui.shown_results import notice_words, results_to_show
 from app.gui.strips.closer import sampled_window
@@ -78,14 +79,15 @@ class SheetScene(QGraphicsScene):
         self.hand_marks = HandMarks(self._theme, self.drawing)
         self.bubble = Bubble(self._theme)
         self._readout = Message(self._theme)
-        self._notice = Message(self._theme, ground="paper", ink="quiet")
+        self.notice_box = Notice(self._theme)
+        self.notice_box.moved.connect(self._draw_cursor)
         labels = [strip.label_layer for strip in self._strips.values()]
         on_drawing = self.on_drawing.items
         for item in (self.drawing, *on_drawing, *self._strips.values(), *labels, *self._over()):
             self.addItem(item)
 
     def _over(self) -> tuple[Painted, ...]:
-        told = self._readout, self._notice
+        told = self._readout, self.notice_box
         hand = self.hand_marks.ghost_layer, self.hand_marks, self.bubble
         return (self.joint_lines, self.cursor_line, *told, *hand)
 
@@ -132,7 +134,7 @@ class SheetScene(QGraphicsScene):
     @property
     def notice(self) -> str:
         """Why the strips show nothing, or that they are out of date; else empty."""
-        return self._notice.text
+        return self.notice_box.text
 
     @property
     def fonts(self) -> Fonts:
@@ -323,11 +325,8 @@ class SheetScene(QGraphicsScene):
         text = notice_words(
             self._given, self._shown, current=self._current, waiting=self._waiting, drawn=drawn
         )
-        width = min(self._fonts.measure(text, "plain").width() + 20.0, self._layout.readout.width())
-        box = QRectF(0.0, 0.0, width, 1.7 * self._fonts.text_height)
-        box.moveCenter(self._layout.strips[0].center())
-        self._notice.set_text(text, self._fonts)
-        self._notice.set_rect(box)
+        layout = self._layout
+        self.notice_box.say(text, self._fonts, layout.strips, layout.readout.width())
 
     def dress(self, theme: Theme) -> None:
         """Give everything its colours; results that are out of date have none."""
@@ -357,7 +356,7 @@ class SheetScene(QGraphicsScene):
     def _draw_cursor(self) -> None:
         x = None if self._cursor is None else self._cursor.x
         along = self._ruler.pixel(x) if x is not None and self._ruler.holds(x) else None
-        labels = [label.rect for strip in self.strips for label in strip.labels] + self._notice.boxes
+        labels = [label.rect for strip in self.strips for label in strip.labels] + self.notice_box.boxes
         gaps = texts_under(along, self._layout.axes, self.drawing.picture.texts, labels)
         self.cursor_line.set_pixel(along, self._layout, gaps)
 

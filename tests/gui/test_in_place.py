@@ -296,3 +296,23 @@ def test_the_editor_leaves_what_is_typed_about_to_be_seen(window):
         assert frame.top() >= box.bottom or frame.bottom() <= box.top
         assert window.sheet.viewport().rect().contains(frame)
         window.in_place.cancel()
+
+
+@pytest.mark.parametrize("size", [(1280, 800), (2560, 1440)], ids=["small", "large"])
+@pytest.mark.parametrize("orientation", ["horizontal", "vertical"])
+@pytest.mark.parametrize("kind", ["length", "section", "support"])
+def test_out_of_date_is_not_hidden_by_the_line_whose_text_makes_it_so(window, qtbot, size, orientation, kind):
+    window.resize(*size)
+    window.sheet.set_orientation(orientation)
+    indices = range(len(window.document.project.joints))
+    parts = [Part(kind, i) for i in indices if window.sheet.drawing.picture.box_of(Part(kind, i)) is not None]
+    for part in parts:
+        line = double_click(window, part)
+        replace_text(line, "5x")
+        assert window.in_place.reason
+        qtbot.waitUntil(lambda: window.sheet.notice == "out of date")
+        (notice,) = window.sheet.paper.notice_box.boxes
+        assert not notice.intersects(window.in_place._frame.geometry().toRectF()), part
+        QTest.keyClick(line, Qt.Key.Key_Escape)
+    (strip, *_) = window.sheet.places.strips
+    assert window.sheet.paper.notice_box.boundingRect().center() == strip.center()

@@ -335,7 +335,7 @@ def test_without_a_cursor_the_foot_says_how_to_read_values(window):
 def test_the_cursor_leaves_room_for_what_says_that_results_are_out_of_date(sheet, view, orientation):
     sheet.set_orientation(orientation)
     sheet.show_results(PILE, PILE_RESULTS, current=False, waiting=False)
-    (box,) = sheet.scene()._notice.boxes
+    (box,) = sheet.paper.notice_box.boxes
     axes = sheet.places.axes
     view.set_cursor(Cursor(sheet.ruler.position_at(axes.along(box.center()))))
     low, high = axes.across_of(box)

@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from PySide6.QtCore import QEvent, QObject, QSize, Qt, QTimer, Signal
+from PySide6.QtCore import QEvent, QObject, QRectF, QSize, Qt, QTimer, Signal
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QFrame, QLabel, QVBoxLayout, QWidget
 
@@ -37,6 +37,8 @@ ONE_BY_ONE = ("mark", "companion")  # what cannot be the same for several
 
 class EditorFrame(QFrame):
     """The caption, the line and the reason, in the colours of now."""
+
+    placed = Signal(QRectF)
 
     def __init__(self, parent: QWidget, theme: Theme, entry: CellEntry) -> None:
         super().__init__(parent)
@@ -86,6 +88,7 @@ class EditorFrame(QFrame):
         left = min(max(left, 2.0), max(room.width() - size.width() - 2.0, 0.0))
         top = min(max(top, 2.0), max(room.height() - size.height() - 2.0, 0.0))
         self.setGeometry(round(left), round(top), size.width(), size.height())
+        self.placed.emit(QRectF(self.geometry()))
 
 
 class InPlace(QObject):
@@ -191,6 +194,7 @@ class InPlace(QObject):
         for typed in (line.textEdited, line.offered):
             typed.connect(self._on_typed)
         line.picked.connect(self._take_in)
+        frame.placed.connect(self._sheet.paper.notice_box.keep_clear_of)
         frame.place(box)
         frame.show()
         line.setFocus(Qt.FocusReason.OtherFocusReason)
@@ -302,6 +306,7 @@ class InPlace(QObject):
             had_focus = frame.line.hasFocus()
             frame.line.removeEventFilter(self)
             frame.hide()
+            self._sheet.paper.notice_box.keep_clear_of(QRectF())
             frame.deleteLater()
             if had_focus:
                 self._sheet.setFocus(Qt.FocusReason.OtherFocusReason)

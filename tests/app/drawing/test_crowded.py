@@ -13,13 +13,15 @@ from app.drawing.handles import handles_of
 from app.drawing.layout import lay_out, sketched
 from app.drawing.member import Member
 from app.drawing.overlay import graded
-from app.drawing.shapes import Box
+from app.drawing.shapes import Box, Part
 from app.drawing.tinting import legend_size, tinted
 from app.samples import names, read_sample
 from app.shown import Shown
 from solver.solve import solve
+from tests import members
 from tests.app.drawing.frames import SIZES, window_frame
 from tests.drawn_members import all_members, drawn
+from tests.members import round_bar
 
 MEMBERS = all_members()
 BOTH_WAYS = pytest.mark.parametrize("upright", [False, True], ids=["across", "upright"])
@@ -135,3 +137,25 @@ class TestLeftOut:
         picture = lay_out(member, replace(frame, detail=Detail(factor=False)))
         assert picture.left_out
         assert not any("without room" in text.text for text in picture.texts)
+
+    @pytest.mark.parametrize("case", ["Hoisting", "Weight"])
+    def test_is_said_over_or_under_the_member_upright_and_not_beside_it(self, case):
+        member = Member.of(read_sample("hoist_shaft"), Shown("case", case))
+        frame = window_frame(member, SIZES[0], upright=True)
+        (said,) = [text for text in lay_out(member, frame).texts if "without" in text.text]
+        low, high = sorted((frame.ruler.begin, frame.ruler.end))
+        assert said.box.bottom <= low or said.box.top >= high
+
+
+@pytest.mark.parametrize("end", [0.058, 0.040])
+def test_while_a_segment_is_pulled_to_a_taper_its_section_stays_written(end):
+    straight, taper = (
+        Member.of(
+            members.member([members.Part(0.2, s) for s in (round_bar(0.05), last)], {}), Shown("envelope")
+        )
+        for last in (round_bar(0.06), round_bar(0.06, end))
+    )
+    frame = window_frame(straight, SIZES[1], upright=True)
+    pulled = sketched(taper, frame, sketched(straight, frame))
+    said = [t.text for t in pulled.picture.texts if t.part == Part("section", 1)]
+    assert said == [f"⌀60\n→⌀{1000 * end:.0f}"]
