@@ -284,6 +284,16 @@ def _part_of_companion(project: Project, at: int, rest: Sequence[str | int]) -> 
     return None
 
 
+def _part_of_case(project: Project, case: int, rest: Sequence[str | int]) -> Part | None:
+    """The part that shows a cell of a load case or of one of its loads, by the rest of its place."""
+    match rest:
+        case (str(column),):
+            return part_of(Cell("load_cases", case, column), project, case)
+        case (str(table), int(record), str(column)):
+            return part_of(Cell(table, record, column), project, case)
+    return None
+
+
 def part_at(place: Sequence[str | int], project: Project) -> Part | None:
     """The part that shows the cell at a place of the project (of a draft); None where none does."""
     match place:
@@ -291,10 +301,6 @@ def part_at(place: Sequence[str | int], project: Project) -> Part | None:
             return part_of(Cell(table, record, column), project, None)
         case ("companions", int(at), *rest) if at < len(project.companions):
             return _part_of_companion(project, at, rest)
-        case ("load_cases", int(case), str(column)) if case < len(project.load_cases):
-            return part_of(Cell("load_cases", case, column), project, case)
-        case ("load_cases", int(case), str(table), int(record), str(column)) if case < len(
-            project.load_cases
-        ):
-            return part_of(Cell(table, record, column), project, case)
+        case ("load_cases", int(case), *rest) if 0 <= case < len(project.load_cases):
+            return _part_of_case(project, case, rest)
     return None

@@ -78,6 +78,7 @@ def test_the_share_of_a_case_in_what_is_shown():
         (("load_cases", 1, "gravity"), Part("gravity", 0)),
         (("load_cases", 0, "segment_loads", 0, "lack_of_fit"), Part("fit", 1)),
         (("load_cases", 0, "segment_loads", 9, "segment"), None),
+        (("load_cases", -1, "gravity"), None),  # of the row for a load, where there is no case yet
         (("materials", 0, "name"), None),
     ],
 )
