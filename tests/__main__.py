@@ -1,6 +1,7 @@
 """`python3 -m tests`: from a fresh clone to the whole suite, on a Python with nothing installed.
 
-Arguments go to pytest, such as `python3 -m tests -k tie_rod`. Only the standard library is used here.
+Without arguments the tests are shared among the processors. Arguments go to pytest, which then runs as they say:
+`python3 -m tests -k tie_rod`. Only the standard library is used here.
 """
 
 from __future__ import annotations
@@ -12,6 +13,8 @@ import sys
 from app.environment import ROOT, SetupFailed, prepare
 from app.qt_libraries import DRAWING, missing_packages
 
+MOST_PROCESSES = 8  # each collects all tests first, so that many more gain nothing
+
 
 def main(arguments: list[str]) -> int:
     """Set up with everything the tests need, then run pytest; gives its exit code."""
@@ -22,8 +25,13 @@ def main(arguments: list[str]) -> int:
         sys.stderr.write(f"{failure}\n")
         return 1
     environment = {"QT_QPA_PLATFORM": "offscreen"} | os.environ
-    command = [python, "-m", "pytest", *arguments]
+    command = [python, "-m", "pytest", *(arguments or shared())]
     return subprocess.run(command, cwd=ROOT, env=environment, check=False).returncode
+
+
+def shared() -> list[str]:
+    """The whole suite, a part on each processor; benchmarks need one for themselves and are not in it."""
+    return ["--numprocesses", str(min(os.cpu_count() or 1, MOST_PROCESSES)), "--benchmark-disable"]
 
 
 def require_libraries() -> None:
