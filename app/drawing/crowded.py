@@ -12,7 +12,7 @@ from operator import itemgetter
 import numpy as np
 from msgspec.structs import astuple
 
-from app.drawing.shapes import Box, Part, Text
+from app.drawing.shapes import Box, Part, Stroke, Text
 from app.drawing.sketch import Sketch
 from app.words import tr, trn
 from solver.arrays import FloatArray
@@ -89,13 +89,19 @@ def _freest_at_sides(room: Box, taken: FloatArray, width: float, height: float) 
     return min(columns, key=itemgetter(0))
 
 
+def _around(stroke: Stroke) -> Box:
+    xs, ys = zip(*stroke.points, strict=True)
+    return Box(min(xs), min(ys), max(xs), max(ys))
+
+
 def _taken(sketch: Sketch) -> FloatArray:
-    """The boxes of all that is drawn, (n, 4): texts, parts, the scale of colours."""
+    """The boxes of all that is drawn, (n, 4): texts, parts, hatches, the scale of colours."""
     picture = sketch.picture
     notes = [text.box for text in picture.texts if text.part is not None and text.part.kind == "note"]
     boxes = [Box(b.left - ASIDE, b.top, b.right + ASIDE, b.bottom) for b in notes]
     boxes += [text.box for text in (*picture.texts, *picture.contact_texts)]
     boxes += [target.box for target in picture.targets if target.part.kind not in SPACES]
+    boxes += [_around(stroke) for stroke in picture.strokes if stroke.pairs]
     boxes += [picture.legend] * WORTH if picture.legend is not None else []
     return np.array([astuple(box) for box in boxes]).reshape(-1, 4)
 

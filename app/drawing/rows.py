@@ -7,7 +7,7 @@ that it needs for all of them.
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from app.drawing.bonded import outer_of
 from app.drawing.chain import joint_wishes, length_wishes, section_wishes
@@ -29,7 +29,7 @@ BAND = 17.0  # distributed loads at their largest, px
 BRACKET = 7.0  # a row of brackets and the gap under it
 ARROWS = 18.0  # the row of joint forces
 UNDER = 20.0  # the row of hanging supports
-THINNEST = 10.0  # of the thickest section, before lengths and sections give way, px
+THINNEST = 9.0  # of the thickest section, before lengths and sections give way, px
 EDGE = 10.0  # upright, between sections and the edge of the sheet
 HANDLE = 5.0  # upright, between a distributed load, where it is taken hold of, and its label
 BEDDING = 6.0  # for the hatch along the member
@@ -50,6 +50,8 @@ class Wishes:
     contacts: list[Wish]
     joints: list[Wish]
     companions: list[list[Wish]]  # by lane
+    held: float  # what the signs of lateral supports want on either side, px
+    lanes_labelled: bool = True
 
     @classmethod
     def of(cls, sketch: Sketch) -> Wishes:
@@ -62,7 +64,13 @@ class Wishes:
             contact_wishes(sketch),
             joint_wishes(sketch),
             companion_wishes(sketch),
+            room_beside(sketch),
         )
+
+    def without_lateral(self) -> Wishes:
+        """Those but of lateral supports, which only stability needs; their signs get no room of their own."""
+        others = [w for w in self.hanging if w.part.kind not in ("lateral", "turning")]
+        return replace(self, hanging=others, held=0.0)
 
 
 def no_rows() -> Rows:
@@ -84,7 +92,22 @@ def rows_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
 
 
 def _rows_upright(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
-    """Columns of labels that leave the member enough: the narrower, the more lines a label takes."""
+    """Columns of labels that leave the member enough.
+
+    Before the loads lose their labels, lateral supports give theirs up, then the companions.
+    """
+    fewer = wishes.without_lateral()
+    fewest = replace(fewer, lanes_labelled=False)
+    for those in (wishes, fewer, fewest):
+        rows = _columns_in(sketch, those, room)
+        if rows.half >= THINNEST:
+            return rows
+    rows = _rows_with(sketch, wishes, room, 0, 0.0)
+    return rows if rows.half >= THINNEST else _rows_with(sketch, fewest, room, 0, 0.0)
+
+
+def _columns_in(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
+    """The column of loads as wide as the member can spare: the narrower, the more lines a label takes."""
     column = sketch.frame.detail.column * room
     rows = _rows_with(sketch, wishes, room, 1, column)
     missing = 2.0 * (sketch.frame.detail.least_half - rows.half)
@@ -92,7 +115,7 @@ def _rows_upright(sketch: Sketch, wishes: Wishes, room: float) -> Rows:
         taken = rows.labels[0][1] - rows.labels[-1][0]
         least = _least_column(sketch, wishes.loads)
         rows = _rows_with(sketch, wishes, room, 1, min(max(taken - missing, least), column))
-    return rows if rows.half >= THINNEST else _rows_with(sketch, wishes, room, 0, 0.0)
+    return rows
 
 
 def _least_column(sketch: Sketch, wishes: list[Wish]) -> float:
@@ -125,8 +148,7 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     top = brackets[-1][1] if brackets else labels[-1][1] + beside
     band = (top, top + (BAND if _has_distributed(sketch) else 0.0))
     first = band[1] + (ARROWS if _has_inner_forces(sketch) else 5.0)
-    held = room_beside(sketch)
-    first += held
+    first += wishes.held
     edge = EDGE if sketch.frame.upright else 4.0 + foot_of(sketch)
     sections = _text_rows(sketch, wishes.sections, room - edge, most)
     chain = sections[0][0] - CHAIN
@@ -134,8 +156,10 @@ def _rows_with(sketch: Sketch, wishes: Wishes, room: float, most: int, column: f
     marks = _text_rows(sketch, wishes.joints, lengths[0][0], most)
     under_label, contact = _under_rows(sketch, wishes, marks[0][0], most)
     under = under_label[0][0] - 0.5 * UNDER - LEVEL * max(sketch.levels - 1, 0)
-    last = (under - 0.5 * UNDER if sketch.levels else under_label[0][0]) - 9.0 - held
-    lanes, last = lane_rows(sketch, wishes.companions, last, room, labelled=most > 0)
+    last = (under - 0.5 * UNDER if sketch.levels else under_label[0][0]) - 9.0 - wishes.held
+    lanes, last = lane_rows(
+        sketch, wishes.companions, last, room, labelled=wishes.lanes_labelled and most > 0
+    )
     last -= BEDDING if _has_bedding(sketch) else 0.0
     return Rows(
         labels=tuple(reversed(labels)),

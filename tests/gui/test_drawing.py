@@ -9,11 +9,13 @@ from msgspec import structs
 from PySide6.QtGui import QFont
 
 from app.drawing.layout import lay_out
+from app.drawing.member import Member
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box, Stroke, Text
 from app.gui.fonts import Fonts
 from app.gui.sheet_layout import Place, sheet_layout
 from app.samples import names, read_sample
+from app.shown import Shown
 from app.units import SYSTEM_NAMES
 from tests.drawn_members import all_members, drawn
 from tests.gui.sheets import SIZES, drawing_place
@@ -73,3 +75,13 @@ class TestLabels:
         shown = lay_out(member, Place(layout.drawing, ruler, layout.axes, Fonts(font)).frame)
         assert len([t for t in shown.texts if t.part is not None and t.part.kind == "force"]) == 3
         assert crossing(shown.texts) == []
+
+    def test_upright_companions_give_their_labels_up_before_loads_do(self):
+        member = Member.of(read_sample("capstan_shaft"), Shown("combination", "Paying out, warm"))
+        layout = sheet_layout(880, 473, True, Fonts(QFont()).text_height)
+        ruler = Ruler.whole(member.position[-1], layout.begin, layout.end)
+        shown = lay_out(member, Place(layout.drawing, ruler, layout.axes, Fonts(QFont())).frame)
+        kinds = [text.part.kind for text in shown.texts if text.part is not None]
+        assert kinds.count("force") == 2
+        assert "warmth" in kinds
+        assert not {"companion", "companion_section", "companion_length"} & set(kinds)
