@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from app.findings.listing import listed
-from app.phrases.stability import CONTACT, ELASTIC, WAIVED, factor_text
+from app.phrases.stability import BESIDE, CONTACT, ELASTIC, WAIVED, factor_text
 from app.phrases.states import state_words
 from app.words import tr
 from solver.checks import Check
@@ -21,6 +21,8 @@ def stability_notes(results: Results) -> Iterator[str]:
         supports = (support for joint in results.project.joints for support in supports_of(joint))
         if any(isinstance(support, StopSupport) for support in supports):
             yield tr(CONTACT)
+        if results.project.companions:
+            yield tr(BESIDE)
 
 
 def waived_notes(results: Results) -> Iterator[str]:

@@ -65,6 +65,8 @@ CONTACT: Final = later(
     "For stability every stop stays in contact or open as it is under the loads themselves"
 )
 
+BESIDE: Final = later("For stability companions neither brace nor load the member")
+
 _DIGITS: Final = 3
 _LIMIT_DIGITS: Final = 6
 _MOST_DIGITS: Final = 17

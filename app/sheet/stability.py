@@ -13,7 +13,7 @@ import numpy as np
 from msgspec import UnsetType
 
 from app.numerals import reading
-from app.phrases.stability import CONTACT, ELASTIC, factor_text
+from app.phrases.stability import BESIDE, CONTACT, ELASTIC, factor_text
 from app.sheet.blocks import (
     Block,
     Value,
@@ -78,6 +78,8 @@ def _said(results: Results) -> list[str]:
     supports = (support for joint in results.project.joints for support in supports_of(joint))
     if any(isinstance(support, StopSupport) for support in supports):
         said.append(tr(CONTACT))
+    if results.project.companions:
+        said.append(tr(BESIDE))
     return said
 
 

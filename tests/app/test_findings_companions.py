@@ -14,7 +14,7 @@ from app.hand.cells import Cell
 from app.references import Reference
 from app.shown import Shown
 from app.terminal import report
-from solver.model import Combination, Project
+from solver.model import Combination, JointLoad, Lateral, LoadCase, Project
 from solver.solve import solve
 from tests.sleeves import draw_bolt
 
@@ -127,3 +127,14 @@ def test_what_is_left_of_a_clamping_is_held_against_a_reference():
     (change,) = [one for one in compared.overall if "clamp" in one.name]
     assert change.name == "least clamp force of S"
     assert change.text.startswith("42\u202f457 → 60\u202f0")
+
+
+def test_what_companions_are_for_stability_is_said_where_there_is_a_factor():
+    said = "For stability companions neither brace nor load the member"
+    held = tuple(replace(j, lateral=Lateral(translation="fixed")) for j in draw_bolt().joints)
+    push = LoadCase("Push", joint_loads=(JointLoad("3", force=-1e3),))
+    pushed = replace(draw_bolt(), joints=held, load_cases=(push,), combinations=())
+    results = solve(pushed)
+    assert results.stability[0].critical_factor is not None
+    assert said in findings(results, UNITS).notes
+    assert said not in findings(solve(draw_bolt()), UNITS).notes
