@@ -1,6 +1,6 @@
 """`python3 -m tests`: from a fresh clone to the whole suite, on a Python with nothing installed.
 
-Without arguments the tests are shared among the processors. Arguments go to pytest, which then runs as they say:
+Without arguments the tests are shared among the processors. Arguments go to pytest as they are:
 `python3 -m tests -k tie_rod`. Only the standard library is used here.
 """
 
