@@ -1,14 +1,18 @@
-"""Which strips are looked at, and in what order; at least one always is. Remembered as a line of names."""
+"""Which strips are looked at, and in what order; at least one always is. Remembered as a line of names.
+
+The mode shape waits hidden: few members are checked for stability, and a fifth strip takes room from four.
+"""
 
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Literal, TypeAlias, get_args
+from typing import Final, Literal, TypeAlias, get_args
 
 from app.words import tr
 
-Kind: TypeAlias = Literal["displacement", "force", "stress", "utilisation"]
+Kind: TypeAlias = Literal["displacement", "force", "stress", "utilisation", "mode"]
 KINDS: tuple[Kind, ...] = get_args(Kind)
+USUAL: Final = KINDS[:4]  # shown unless chosen otherwise
 
 
 def kind_names() -> dict[Kind, str]:
@@ -18,19 +22,26 @@ def kind_names() -> dict[Kind, str]:
         "force": tr("N, axial force"),
         "stress": tr("σ, stress"),
         "utilisation": tr("utilisation"),
+        "mode": tr("w, mode shape"),
     }
 
 
 def kind_symbols() -> dict[Kind, str]:
     """The strips' symbols, in their usual order."""
-    return {"displacement": "u", "force": "N", "stress": "σ", "utilisation": tr("utilisation")}
+    return {
+        "displacement": "u",
+        "force": "N",
+        "stress": "σ",
+        "utilisation": tr("utilisation"),
+        "mode": "w",
+    }
 
 
 @dataclass(frozen=True, slots=True)
 class StripChoice:
     """The shown strips in order, each once and at least one."""
 
-    shown: tuple[Kind, ...] = KINDS
+    shown: tuple[Kind, ...] = USUAL
 
     @property
     def hidden(self) -> tuple[Kind, ...]:
@@ -70,7 +81,7 @@ class StripChoice:
 
     @classmethod
     def of_text(cls, text: str) -> StripChoice:
-        """The choice in a line of names; what is no strip is left out, nothing means all."""
+        """The choice in a line of names; what is no strip is left out, nothing means the usual."""
         known: dict[str, Kind] = {kind: kind for kind in KINDS}
         shown = dict.fromkeys(known[name] for name in text.split() if name in known)
-        return cls(tuple(shown) or KINDS)
+        return cls(tuple(shown) or USUAL)

@@ -18,14 +18,16 @@ import numpy as np
 
 from app.numerals import localised
 from app.phrases.states import state_words
-from app.strip_choice import KINDS, Kind, kind_symbols
+from app.strip_choice import USUAL, Kind, kind_symbols
 from app.units import Quantity, symbol, to_display
 from app.words import decimal_sign, tr
 from solver.arrays import FloatArray, IntArray
 from solver.fields import curves, envelope
+from solver.mode_fields import mode_along, mode_in, peak_of
 from solver.model import UnitSystemName
 
 if TYPE_CHECKING:
+    from solver.buckling_mode import Mode
     from solver.results import Results
 
 Rows = list[list[str]]
@@ -33,10 +35,13 @@ _DIGITS = 15  # all that survive a change of units
 _BETWEEN = 7  # digits between joints and extremes
 
 
-def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = KINDS) -> Rows:
+def number_rows(results: Results, state: int | None, kinds: Sequence[Kind] = USUAL) -> Rows:
     """Head and rows of one state, or of the envelope where `state` is None."""
     units = results.project.display.unit_system
-    x, segment, columns = _envelope_columns(results) if state is None else _state_columns(results, state)
+    mode = mode_in(results, state) if "mode" in kinds else None
+    made = _envelope_columns(results) if state is None else _state_columns(results, state, mode)
+    x, segment, columns = made
+    columns["mode"] = [(tr("w, shape only"), _shape(results, mode, x, segment))]
     shown = [(head, kind, values) for kind in kinds for head, values in columns[kind]]
     heads = [_head("x", "length", units), tr("Segment")]
     of = _state_words(results, state)
@@ -85,26 +90,34 @@ def csv_text(rows: Rows) -> str:
 
 def quantity_of(kind: Kind) -> Quantity:
     """What a strip is measured in."""
-    return "factor" if kind == "utilisation" else kind
+    return "factor" if kind == "utilisation" or kind == "mode" else kind
 
 
 _Columns = dict[Kind, list[tuple[str, FloatArray]]]
 
 
-def _state_columns(results: Results, state: int) -> tuple[FloatArray, IntArray, _Columns]:
-    shown, symbols = curves(results, state), kind_symbols()
-    columns: _Columns = {kind: [(symbols[kind], getattr(shown, kind))] for kind in KINDS}
+def _state_columns(results: Results, state: int, mode: Mode | None) -> tuple[FloatArray, IntArray, _Columns]:
+    also = () if mode is None else (peak_of(results, mode),)
+    shown, symbols = curves(results, state, also=also), kind_symbols()
+    columns: _Columns = {kind: [(symbols[kind], getattr(shown, kind))] for kind in USUAL}
     return shown.x, shown.segment, columns
 
 
 def _envelope_columns(results: Results) -> tuple[FloatArray, IntArray, _Columns]:
     """Largest and smallest; of utilisation the largest."""
     shown, columns = envelope(results), _Columns()
-    for kind, name in kind_symbols().items():
-        ends = ("max", "min") if kind != "utilisation" else ()
-        columns[kind] = [(f"{name} {end}", getattr(shown, f"{kind}_{end}")) for end in ends]
-    columns["utilisation"] = [(kind_symbols()["utilisation"], shown.utilisation)]
+    names = kind_symbols()
+    for kind in USUAL[:-1]:
+        ends = (f"{kind}_max", f"{kind}_min")
+        heads = (f"{names[kind]} max", f"{names[kind]} min")
+        columns[kind] = [(head, getattr(shown, end)) for head, end in zip(heads, ends, strict=True)]
+    columns["utilisation"] = [(names["utilisation"], shown.utilisation)]
     return shown.x, shown.segment, columns
+
+
+def _shape(results: Results, mode: Mode | None, x: FloatArray, segment: IntArray) -> FloatArray:
+    """The mode shape; no numbers where there is none."""
+    return np.full(len(x), np.nan) if mode is None else mode_along(results, mode, segment, x)
 
 
 def _head(name: str, quantity: Quantity, units: UnitSystemName) -> str:

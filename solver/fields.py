@@ -124,13 +124,19 @@ class EnvelopeReadout:
     right: EnvelopePoint | None
 
 
-def curves(results: Results, state_index: int, points: int = 600, near: Window | None = None) -> Curves:
+def curves(
+    results: Results,
+    state_index: int,
+    points: int = 600,
+    near: Window | None = None,
+    also: tuple[float, ...] = (),
+) -> Curves:
     """The curves of one state through at most `points` places, more only where the joints alone take more.
 
-    A window that is looked at closely has as many again.
+    A window that is looked at closely has as many again; `also` are further places, m.
     """
     states = np.array([state_index])
-    places = places_for(results, states, points, near)
+    places = places_for(results, states, points, near, also)
     values = _evaluate(results, states, places)
     return Curves(
         places.segment,

@@ -54,10 +54,16 @@ def peaks_of(segments: SegmentResults, *, bonded: bool) -> tuple[Peaks, ...]:
     )
 
 
-def places_for(results: Results, states: IntArray, points: int, near: Window | None = None) -> Places:
+def places_for(
+    results: Results,
+    states: IntArray,
+    points: int,
+    near: Window | None = None,
+    also: tuple[float, ...] = (),
+) -> Places:
     """Places for curves of these states: about `points`, and more where ends and extremes take more.
 
-    In the window `near` (from, to in m) there are about as many again.
+    In the window `near` (from, to in m) there are about as many again; `also` are further places, m.
     """
     n = len(results.chain.length)
     found = peaks_of(results.segments, bonded=results.parts is not None)
@@ -71,7 +77,8 @@ def places_for(results: Results, states: IntArray, points: int, near: Window | N
         room = max(points - 2 * n - len(extremes), points // 2 - 2 * n)
     filling = _filling(results.chain.length, room)
     closer = [] if near is None else [_closer(results, peaks, near, points)]
-    inside = [extremes, filling, *closer]
+    further = [_at(results, np.array(also))] if also else []
+    inside = [extremes, filling, *closer, *further]
     segment = np.concatenate([np.repeat(np.arange(n), 2), *(part.segment for part in inside)])
     fraction = np.concatenate([np.tile([0.0, 1.0], n), *(part.fraction for part in inside)])
     return _in_order(results, _Inside(segment, fraction))
@@ -120,8 +127,17 @@ def _closer(results: Results, peaks: list[Peaks], near: Window, points: int) -> 
             shown = shown[order[np.append(np.diff(stretch[order]) > 0, True)]]
         found.append(_Inside(whole.segment[shown], whole.fraction[shown]))
     x = np.linspace(low, high, points)
-    segment = np.clip(np.searchsorted(position, x, side="right") - 1, 0, len(position) - 2)
-    return _inside(results, [*found, _Inside(segment, x)])
+    return _inside(results, [*found, _Inside(_segments_at(position, x), x)])
+
+
+def _at(results: Results, x: FloatArray) -> _Inside:
+    """Places that are asked for."""
+    return _inside(results, [_Inside(_segments_at(results.position, x), x)])
+
+
+def _segments_at(position: FloatArray, x: FloatArray) -> IntArray:
+    """In which segment each x lies."""
+    return np.clip(np.searchsorted(position, x, side="right") - 1, 0, len(position) - 2)
 
 
 def _inside(results: Results, found: list[_Inside]) -> _Inside:

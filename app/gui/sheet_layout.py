@@ -16,11 +16,12 @@ from app.drawing.frame import Frame
 from app.drawing.ruler import Ruler
 from app.drawing.shapes import Box
 from app.gui.fonts import Fonts
-from app.strip_choice import KINDS, Kind
+from app.strip_choice import KINDS, USUAL, Kind
 
 Shares: TypeAlias = Mapping[Kind, float]
-SHARES_ACROSS: Shares = dict(zip(KINDS, (0.22, 0.26, 0.31, 0.21), strict=True))  # stress carries the most
-SHARES_UPRIGHT: Shares = dict(zip(KINDS, (0.23, 0.25, 0.29, 0.23), strict=True))  # each has words above it
+# Stress carries the most; upright each has words above it.
+SHARES_ACROSS: Shares = dict(zip(KINDS, (0.22, 0.26, 0.31, 0.21, 0.21), strict=True))
+SHARES_UPRIGHT: Shares = dict(zip(KINDS, (0.23, 0.25, 0.29, 0.23, 0.23), strict=True))
 GAP = 12.0
 READOUT_LINES, LINE_EDGES = 2, 0.6  # lines kept free for the readout; above and below them, in text heights
 LEAST_STRIP = 1.9  # across, the least depth of a strip in heights of the text: its title and one value
@@ -95,7 +96,7 @@ def least_height(text_height: float) -> float:
 
 
 def sheet_layout(
-    width: float, height: float, upright: bool, text_height: float, kinds: tuple[Kind, ...] = KINDS
+    width: float, height: float, upright: bool, text_height: float, kinds: tuple[Kind, ...] = USUAL
 ) -> SheetLayout:
     """The layout with some strips on a sheet of the given pixels; margins follow the height of the text.
 
@@ -112,7 +113,8 @@ def _across(
     left, right = 7.2 * text_height, 5.2 * text_height
     begin, end = left, max(width - right, left + 50.0)
     drawing_height = min(max(0.45 * height, 11.0 * text_height), 28.0 * text_height)
-    drawing_height = min(drawing_height, height - 4 * (LEAST_STRIP * text_height + GAP))
+    strips_height = max(len(kinds), 4) * (LEAST_STRIP * text_height + GAP)
+    drawing_height = min(drawing_height, height - strips_height)
     drawing = QRectF(0.0, 4.0, width, drawing_height)
     spans = _spans(drawing.bottom() + 6.0, height, SHARES_ACROSS, kinds)
     strips = tuple(QRectF(QPointF(begin, a), QPointF(end, b)) for a, b in spans)

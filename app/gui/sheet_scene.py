@@ -23,21 +23,20 @@ from app.gui.sheet_layout import LINE_EDGES, Place, SheetLayout, sheet_layout
 from app.gui.sheet_notice import Notice
 from app.gui.sheet_texts import texts_under
 from app.gui.shown_results import notice_words, results_to_show
+from app.gui.strips.at_cursor import nearest_to, values_at
 from app.gui.strips.closer import sampled_window
 from app.gui.strips.company import Earlier, earlier_curves
 from app.gui.strips.content import contents_of
-from app.gui.strips.readout import BETWEEN, envelope_readout, nearest_state, resting, state_readout
+from app.gui.strips.mode import mode_content
+from app.gui.strips.readout import BETWEEN, resting
 from app.gui.strips.strip import Strip
 from app.gui.theme import Theme, colour, greyed
 from app.gui.view import Cursor, Shown
 from app.looks import Looks
 from app.references import Reference
-from app.strip_choice import KINDS, StripChoice
-from app.words import tr
+from app.strip_choice import KINDS, USUAL, StripChoice
 from solver.model import Project
 from solver.results import Results
-
-BESIDE = 6.0  # pixels that the pointer may be from the cursor, which takes joints
 
 
 class SheetScene(QGraphicsScene):
@@ -205,8 +204,7 @@ class SheetScene(QGraphicsScene):
         self._place_all()
 
     def _show_on_drawing(self) -> None:
-        state = None if self._results is None else self._state(self._results)
-        self.on_drawing.show(self._looks, self._results, state)
+        self.on_drawing.show(self._looks, self._results, self.shown_state)
 
     def set_strips(self, choice: StripChoice) -> None:
         """Show these strips in their order."""
@@ -214,6 +212,7 @@ class SheetScene(QGraphicsScene):
         for kind, strip in self._strips.items():
             strip.setVisible(kind in choice.shown)
             strip.label_layer.setVisible(kind in choice.shown)
+        self._show_mode()
         self._place_all()
 
     def set_together(self, together: bool) -> None:
@@ -235,10 +234,8 @@ class SheetScene(QGraphicsScene):
         if self._reference is None:
             return None
         name, results = self._reference.name, self._reference.results
-        state = self._state(results)
-        if state is None and self._shown.kind != "envelope":
-            return Earlier(name, results.position, {})
-        return earlier_curves(name, results, state, self._near)
+        state, whole = self._state(results), self._shown.kind == "envelope"
+        return earlier_curves(name, results, state, self._near, whole=whole)
 
     def _show_curves(self) -> None:
         self._show_on_strips()
@@ -247,12 +244,24 @@ class SheetScene(QGraphicsScene):
     def _show_on_strips(self) -> None:
         contents = None
         if self._results is not None:
-            state = self._state(self._results)
             contents = contents_of(
-                self._results, state, self._earlier, together=self._together, near=self._near
+                self._results, self.shown_state, self._earlier, together=self._together, near=self._near
             )
-        for kind, content in zip(KINDS, contents or (None,) * len(KINDS), strict=True):
+        for kind, content in zip(USUAL, contents or (None,) * len(USUAL), strict=True):
             self._strips[kind].show_content(content)
+        self._show_mode()
+
+    def _show_mode(self) -> None:
+        """The mode shape, where its strip is shown: nobody else waits for it."""
+        if "mode" not in self._choice.shown:
+            return
+        content = None
+        if self._results is not None:
+            kept = self._reference.results if self._reference else None
+            before = None if kept is None else (kept, self._state(kept))
+            other = self._strips["displacement"].content
+            content = mode_content(self._results, self.shown_state, before, other, near=self._near)
+        self._strips["mode"].show_content(content)
 
     def _state(self, results: Results) -> int | None:
         """The index of the shown state; None for the envelope, and for a state the results do not have."""
@@ -350,7 +359,7 @@ class SheetScene(QGraphicsScene):
         """Draw the cursor, where it is in the window, and read the values there."""
         self._cursor = cursor
         self._draw_cursor()
-        self._values = self._values_at(cursor.x) if cursor is not None else resting() if self._results else ""
+        self._values = "" if self._results is None else self._values_at(self._results, cursor)
         self._say_values()
 
     def _draw_cursor(self) -> None:
@@ -369,16 +378,11 @@ class SheetScene(QGraphicsScene):
     def _nearest(self) -> str:
         """The state drawn nearest to the pointer, where it is on a strip of an envelope."""
         point, cursor, results = self._pointer, self._cursor, self._results
-        if point is None or cursor is None or results is None or self._state(results) is not None:
+        if point is None or cursor is None or results is None or self.shown_state is not None:
             return ""
-        strip = next((s for s in self.strips if s.place and s.place.rect.contains(point)), None)
-        if not self._together or strip is None or strip.scale is None or strip.content is None:
+        if not self._together:
             return ""
-        axes = self._layout.axes
-        if abs(axes.along(point) - self._ruler.pixel(cursor.x)) > BESIDE:  # keys have moved the cursor
-            return ""
-        across = axes.across_of(QRectF(point, point))[0]
-        return nearest_state(results, strip.content.kind, cursor.x, strip.scale.value(across))
+        return nearest_to(point, self.strips, results, cursor.x, self._ruler, self._layout.axes)
 
     def _say_values(self) -> None:
         """At the foot of the sheet, in as many lines as it takes."""
@@ -390,10 +394,7 @@ class SheetScene(QGraphicsScene):
         self._readout.set_text(text, self._fonts)
         self._readout.set_rect(QRectF(room.left(), room.bottom() - height, room.width(), height))
 
-    def _values_at(self, x: float) -> str:
-        if self._results is None:
-            return ""
-        x = min(max(x, 0.0), float(self._results.position[-1]))
-        state = self._state(self._results)
-        text = envelope_readout(self._results, x) if state is None else state_readout(self._results, state, x)
-        return text if self._current else tr("{values}  (out of date)").format(values=text)
+    def _values_at(self, results: Results, cursor: Cursor | None) -> str:
+        if cursor is None:
+            return resting()
+        return values_at(results, self.shown_state, cursor.x, self._choice, current=self._current)

@@ -106,16 +106,16 @@ def _table(results: Results, states: list[int], say: Readings) -> Block:
 
 def _mode(results: Results, states: list[int]) -> Iterator[Block]:
     """The shape in the state of the least factor."""
-    found = [(s, r.critical_factor, r.mode) for s in states if (r := results.stability[s]) is not None]
-    shapes = [(factor, state, mode) for state, factor, mode in found if factor and mode is not None]
+    found = [(s, r) for s in states if (r := results.stability[s]) is not None]
+    shapes = [(r.critical_factor, state) for state, r in found if r.critical_factor and r.mode is not None]
     if not shapes:
         return
-    _factor, state, mode = min(shapes, key=lambda shape: shape[0])
+    _factor, state = min(shapes, key=lambda shape: shape[0])
     words = tr(
         "The shape in which the member bends out first, with the least critical factor: {state}. A shape"
         " only, its largest value set to 1."
     )
-    yield picture(mode_figure(results, state, mode), words.format(state=results.states[state].name))
+    yield picture(mode_figure(results, state), words.format(state=results.states[state].name))
 
 
 def _check_of(results: Results, state: int) -> Check:

@@ -15,24 +15,23 @@ from app.sheet.member_figure import Figure, draw_above, drawn_positions, member_
 from app.sheet.ruler import Ruler
 from app.sheet.strips import DEPTH_ACROSS, DEPTH_UPRIGHT, Strip, draw_strip
 from app.sheet.svg import Canvas, fitted, text_width
-from app.strip_choice import KINDS, Kind, kind_names
+from app.strip_choice import USUAL, Kind, kind_names
 from app.words import tr
 from solver.arrays import FloatArray
 from solver.fields import curves, envelope
+from solver.mode_fields import mode_curve
 
 if TYPE_CHECKING:
-    from solver.buckling_mode import Mode
     from solver.results import Results
 
 POINTS = 240
-MODE_POINTS = 25  # of a segment
 _ACROSS, _UPRIGHT = 420.0, 270.0
 _GAP = 7.0
 _SIZE = 7.0
 
 
 def state_figure(
-    results: Results, state: int, kinds: tuple[Kind, ...] = KINDS, *, drawing: bool = False
+    results: Results, state: int, kinds: tuple[Kind, ...] = USUAL, *, drawing: bool = False
 ) -> Figure:
     """The strips of one state, these in this order; σ with the allowable band where the state is checked.
 
@@ -59,6 +58,8 @@ def state_figure(
     ]
     if checked:
         strips.append(_utilisation(results, (state,), field.x, field.utilisation))
+    if "mode" in kinds:
+        strips += _shapes(results, state)
     chosen = _chosen(strips, kinds)
     canvas = _canvas(results, chosen)
     if drawing:
@@ -66,7 +67,7 @@ def state_figure(
     return _figure(results, canvas, chosen, results.states[state].name, drawing=drawing)
 
 
-def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawing: bool = False) -> Figure:
+def envelope_figure(results: Results, kinds: tuple[Kind, ...] = USUAL, *, drawing: bool = False) -> Figure:
     """The largest and smallest values over all checked states; extremes, not one state in equilibrium."""
     field = envelope(results, points=POINTS)
     x, stress = field.x, (field.stress_max, field.stress_min)
@@ -93,17 +94,17 @@ def envelope_figure(results: Results, kinds: tuple[Kind, ...] = KINDS, *, drawin
     return _figure(results, canvas, chosen, tr("envelope of all checked combinations"), drawing=drawing)
 
 
-def mode_figure(results: Results, state: int, mode: Mode) -> Figure:
+def mode_figure(results: Results, state: int) -> Figure:
     """The shape in which the member bends out; it has no size and no unit."""
-    count = len(results.chain.length)
-    segment = np.append(np.repeat(np.arange(count), MODE_POINTS), mode.peak_segment)
-    fraction = np.append(np.tile(np.linspace(0.0, 1.0, MODE_POINTS), count), mode.peak)
-    order = np.lexsort((fraction, segment))
-    segment, fraction = segment[order], fraction[order]
-    x = results.position[segment] + fraction * results.chain.length[segment]
-    canvas = _canvas(results, [Strip("w", "displacement", "factor", x, (mode.at(segment, fraction),))])
+    canvas = _canvas(results, _shapes(results, state))
     alt = tr("Shape of buckling: {state}").format(state=results.states[state].name)
     return Figure(canvas.render(alt), *canvas.size, alt)
+
+
+def _shapes(results: Results, state: int) -> list[Strip]:
+    """The strip of the mode shape, where there is one."""
+    curve = mode_curve(results, state, points=POINTS)
+    return [] if curve is None else [Strip("w", "mode", "factor", curve.x, (curve.deflection,))]
 
 
 def _chosen(strips: list[Strip], kinds: tuple[Kind, ...]) -> list[Strip]:

@@ -26,7 +26,7 @@ from solver.arrays import BoolArray, FloatArray
 from solver.checks import PASS_MARGIN
 from solver.model import UnitSystemName
 
-DEPTH_ACROSS: Final = {"displacement": 44.0, "force": 56.0, "stress": 70.0, "utilisation": 44.0}
+DEPTH_ACROSS: Final = {"displacement": 44.0, "force": 56.0, "stress": 70.0, "utilisation": 44.0, "mode": 44.0}
 DEPTH_UPRIGHT: Final = 96.0
 _SIZE = 7.5
 _LIMIT = Ink(colours.INK, 0.7, dashes="4 2.5")
@@ -116,7 +116,7 @@ def _draw_curve(canvas: Canvas, ruler: Ruler, strip: Strip, scale: Scale, number
 
 def _colours(strip: Strip, value: FloatArray) -> list[tuple[BoolArray, str, str]]:
     """Which part of a curve is drawn in which colour and over which ground."""
-    if strip.kind == "displacement":
+    if strip.kind in ("displacement", "mode"):
         return [(np.ones(value.shape, dtype=np.bool_), colours.DISPLACEMENT, "")]
     if strip.kind == "utilisation":
         return [(np.ones(value.shape, dtype=np.bool_), colours.INK, colours.LOAD)]

@@ -7,7 +7,7 @@ from hypothesis import strategies as st
 from app.strip_choice import KINDS, StripChoice, kind_names
 
 CHOICES = st.lists(st.sampled_from(KINDS), min_size=1, unique=True).map(lambda s: StripChoice(tuple(s)))
-U, N, SIGMA, UTILISATION = KINDS
+U, N, SIGMA, UTILISATION, MODE = KINDS
 
 
 @given(CHOICES, st.sampled_from(KINDS), st.integers(-5, 5))

@@ -8,10 +8,10 @@ from PySide6.QtWidgets import QApplication
 
 from app.gui.main import open_window
 from app.gui.settings import Settings
-from app.strip_choice import KINDS, StripChoice
+from app.strip_choice import KINDS, USUAL, StripChoice
 from tests.gui.windows import end, solved
 
-U, N, SIGMA, UTILISATION = KINDS
+U, N, SIGMA, UTILISATION, MODE = KINDS
 LEFT = Qt.MouseButton.LeftButton
 BOTH_WAYS = pytest.mark.parametrize("layout", ["horizontal", "vertical"])
 
@@ -71,12 +71,12 @@ def test_escape_leaves_a_dragged_strip_where_it_was(window):
     drag(window, grip(window, 2), grip(window, 0), release=False)
     QTest.keyClick(window.sheet, Qt.Key.Key_Escape)
     QTest.mouseRelease(window.sheet.viewport(), LEFT, pos=grip(window, 0))
-    assert shown(window) == KINDS
+    assert shown(window) == USUAL
 
 
 def test_a_click_on_a_title_moves_nothing(window):
     QTest.mouseClick(window.sheet.viewport(), LEFT, pos=grip(window, 2))
-    assert shown(window) == KINDS
+    assert shown(window) == USUAL
 
 
 @BOTH_WAYS
@@ -106,7 +106,7 @@ def test_the_room_of_hidden_strips_goes_to_the_others(window, layout):
     two = [axes.across_of(rect) for rect in window.sheet.places.strips]
     assert (two[0][0], two[-1][1]) == pytest.approx((whole[0][0], whole[-1][1]))
     assert all(high - low > 1.5 * (whole[2][1] - whole[2][0]) for low, high in two)
-    assert [s.isVisible() for s in window.sheet.scene()._strips.values()] == [False, True, True, False]
+    assert [s.isVisible() for s in window.sheet.scene()._strips.values()] == [False, True, True, False, False]
 
 
 def test_the_menu_of_the_window_does_the_same_from_the_keyboard(window):
@@ -116,8 +116,8 @@ def test_the_menu_of_the_window_does_the_same_from_the_keyboard(window):
     assert shown(window) == (U, SIGMA, UTILISATION)
     menu.popup(QPoint(0, 0))
     assert [a.isChecked() for a in menu.actions()[:4]] == [True, True, True, False]
-    pick(menu, "All strips in their usual order")
-    assert shown(window) == KINDS
+    pick(menu, "The usual strips in their usual order")
+    assert shown(window) == USUAL
 
 
 def test_the_last_strip_cannot_be_hidden(window):

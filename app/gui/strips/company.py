@@ -97,9 +97,16 @@ def _plain_traces(part: Earlier | Beside | None, kind: Kind) -> tuple[Trace, ...
 
 
 def earlier_curves(
-    name: str, results: Results, state: int | None, near: tuple[float, float] | None = None
+    name: str,
+    results: Results,
+    state: int | None,
+    near: tuple[float, float] | None = None,
+    *,
+    whole: bool = True,
 ) -> Earlier:
-    """The curves of a reference in one state, or of its envelope."""
+    """The curves of a reference in one state, or of its envelope where that is shown (`whole`)."""
+    if state is None and not whole:
+        return Earlier(name, results.position, {})
     if state is None:
         whole = envelope(results, near=near)
         return Earlier(name, whole.x, of_envelope(whole))

@@ -1,4 +1,4 @@
-"""What the four strips show of one state or of the envelope: plain values, made once per result.
+"""What the usual strips show of one state or of the envelope: plain values, made once per result.
 
 No mechanics here: curves come from `solver.fields`, allowables from the materials times the state's factor.
 Every strip includes 0, so that nothing looks larger than it is, and has a least range, so that round-off
@@ -35,7 +35,7 @@ from app.gui.strips.company import (
     singles_beside,
 )
 from app.point_marks import PointMark, point_marks
-from app.strip_choice import Kind, kind_symbols
+from app.strip_choice import USUAL, Kind, kind_symbols
 from app.units import format_value, symbol, utilisation_text
 from solver.arrays import FloatArray, IntArray
 from solver.checks import PASS_MARGIN
@@ -86,6 +86,7 @@ class StripContent:
     singles: tuple[Trace, ...] = ()
     around: tuple[Trace, ...] = ()
     legend: str = ""
+    notes: tuple[str, ...] = ()  # what is to know of the whole strip, then the same in fewer words
     marks: tuple[PointMark, ...] = ()  # peak stresses and fatigue, at single places
 
 
@@ -178,7 +179,8 @@ class _Builder:
         self._company = company
 
     def build(self, values: Values) -> tuple[StripContent, ...]:
-        return tuple(self._content(kind, title, values[kind]) for kind, title in kind_symbols().items())
+        symbols = kind_symbols()
+        return tuple(self._content(kind, symbols[kind], values[kind]) for kind in USUAL)
 
     def _content(self, kind: Kind, title: str, columns: tuple[FloatArray, ...]) -> StripContent:
         least = self._nothing(kind)

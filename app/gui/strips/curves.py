@@ -73,7 +73,7 @@ def shapes(content: StripContent, place: Place, scale: Scale) -> tuple[Shape, ..
     for others, ink, dashes in manners:
         lines = [line for other in others for line in Pixels.of(other, *where).lines().values()]
         drawn += [Shape(line, ink=ink, thin=True, dashes=dashes) for line in lines]
-    plain = "displacement" if content.kind == "displacement" else "quiet"
+    plain = "displacement" if content.kind in ("displacement", "mode") else "quiet"
     for trace in traces:
         drawn += [Shape(line, ink=LINES.get(way, plain)) for way, line in trace.lines().items()]
     return tuple(drawn)

@@ -174,9 +174,13 @@ class StripHand(QObject):
         return True
 
     def _on_help(self, event: QHelpEvent) -> bool:
-        """What a title can do."""
-        if self._grips.held(QPointF(event.pos())) is None:
+        """What is to know of a strip, and what its title can do."""
+        index = self._grips.held(QPointF(event.pos()))
+        if index is None:
             return False
         words = tr("Drag to put this strip elsewhere; the right mouse button hides it, copies it, and more")
+        content = self._sheet.strips[index].content
+        if content is not None and content.notes:
+            words = f"{content.title}: {content.notes[0]}\n{words}"
         QToolTip.showText(event.globalPos() + QPoint(0, 8), words, self._sheet)
         return True

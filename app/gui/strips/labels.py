@@ -20,7 +20,7 @@ from app.gui.fonts import Face
 from app.gui.sheet_layout import GAP, Axes
 from app.gui.strips.company import COMPRESSION, NONE, TENSION, Trace
 from app.gui.strips.content import Extreme, Limit, StripContent
-from app.gui.strips.legend import cost_of_lines, legend_place
+from app.gui.strips.legend import ON_ZERO, cost_of_lines, legend_place
 from app.gui.strips.paths import Scale, stretches
 from app.words import tr
 from solver.arrays import BoolArray
@@ -56,6 +56,7 @@ def strip_labels(
     standing = [*title, *placer.extremes(title), *placer.limits(), *placer.unchecked()]
     standing += placer.marks(standing)
     standing += placer.legend(standing)
+    standing += placer.note(standing)
     return (*standing, *(sign for sign in placer.signs() if not _meets(sign.rect, standing)))
 
 
@@ -249,6 +250,18 @@ class _Placer:
 
     def legend(self, standing: list[Label]) -> list[Label]:
         """What the dashed, dotted and thin lines are, where it hides least."""
+        if not self.content.legend:
+            return []
+        return [self._quiet(self.content.legend, standing)[0]]
+
+    def note(self, standing: list[Label]) -> list[Label]:
+        """What is to know of the strip: as many words as fit beside the curves, else the fewest."""
+        found = [self._quiet(words, standing) for words in self.content.notes]
+        roomy = [label for label, cost in found if cost <= ON_ZERO and self.rect.contains(label.rect)]
+        return [next(iter(roomy), found[-1][0])] if found else []
+
+    def _quiet(self, said: str, standing: list[Label]) -> tuple[Label, float]:
+        """Words where they hide least, and what they cost there."""
 
         def cost(box: QRectF) -> float:
             if _meets(box, standing):
@@ -258,12 +271,10 @@ class _Placer:
             fill = self._covered(box) if self.content.filled else 0.0
             return fill + cost_of_lines(self.content, box, self.ruler, self.axes, self.scale)
 
-        if not self.content.legend:
-            return []
         box, words = legend_place(
-            self.content.legend, self.rect, self.axes, lambda words: self.measure(words, "small"), cost
+            said, self.rect, self.axes, lambda words: self.measure(words, "small"), cost
         )
-        return [Label(box, words, "small", "quiet", "card")]
+        return Label(box, words, "small", "quiet", "card"), cost(box)
 
     def _shown(self, x: float) -> float:
         """The pixel of a position, kept within the strip."""

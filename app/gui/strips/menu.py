@@ -103,7 +103,7 @@ class StripsMenu(QMenu):
             self._of_strip.add_moves(moves, kind)
         self.addSeparator()
         self.addAction(together_action(self._view, self))
-        usual = self.addAction(tr("&All strips in their usual order"))
+        usual = self.addAction(tr("The &usual strips in their usual order"))
         usual.setEnabled(choice != StripChoice())
         usual.triggered.connect(lambda: self._view.set_strips(StripChoice()))
 

@@ -9,7 +9,7 @@ import numpy as np
 
 from app.gui.strips.content import number, of_unit_strain, unit_of
 from app.gui.strips.readout_beside import beside_cursor
-from app.strip_choice import Kind, kind_symbols
+from app.strip_choice import USUAL, Kind, kind_symbols
 from app.units import format_value
 from app.words import tr
 from solver.fields import EnvelopePoint, PointValues, Readout, at, checked_states, envelope_at
@@ -41,7 +41,7 @@ def envelope_readout(results: Results, x: float) -> str:
     """The line for the envelope at x: smallest … largest of each quantity over the checked states."""
     readout = envelope_at(results, x)
     sides = [side for side in (readout.left, readout.right) if side is not None]
-    pairs = [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in kind_symbols()]
+    pairs = [_joint_pair(kind, [_span(kind, s, results) for s in sides], results) for kind in USUAL]
     more = [*_parts(results, (readout.left, readout.right))]
     if results.companions is not None:
         more += beside_cursor(results, checked_states(results).tolist(), x)
@@ -66,7 +66,7 @@ def nearest_state(results: Results, kind: Kind, x: float, value: float) -> str:
 
 def _line(results: Results, readout: Readout) -> str:
     sides = [side for side in (readout.left, readout.right) if side is not None]
-    pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in kind_symbols()]
+    pairs = [_joint_pair(kind, [_value(kind, s, results) for s in sides], results) for kind in USUAL]
     return _joined(results, readout.x, pairs)
 
 

@@ -26,6 +26,7 @@ from app.gui.strips.hand import Grips
 from app.gui.tables.clipboard import block_text
 from app.gui.theme import colour, theme_for
 from app.gui.view import View
+from app.mode_shape import why_no_shape
 from app.strip_choice import Kind
 from app.strip_numbers import csv_text, number_rows
 from app.words import tr
@@ -71,7 +72,7 @@ class StripTaking(QObject):
 
     def copy_numbers(self, kinds: tuple[Kind, ...]) -> None:
         """To the clipboard, as spreadsheets exchange cells."""
-        results = self._current()
+        results = self._drawn(kinds)
         if results is not None:
             rows = number_rows(results, self._sheet.shown_state, kinds)
             QGuiApplication.clipboard().setText(block_text(rows))
@@ -79,12 +80,12 @@ class StripTaking(QObject):
 
     def save_numbers(self, kinds: tuple[Kind, ...]) -> None:
         """To a file that is asked for."""
-        if self._current() is not None:
+        if self._drawn(kinds) is not None:
             self._ask(tr("Save numbers"), (FileKind("CSV", "csv"),), lambda to: self.write_numbers(to, kinds))
 
     def write_numbers(self, target: Path, kinds: tuple[Kind, ...]) -> None:
         """With a mark at its start by which spreadsheets know the letters."""
-        results = self._current()
+        results = self._drawn(kinds)
         if results is not None:
             rows = number_rows(results, self._sheet.shown_state, kinds)
             self._write(target, csv_text(rows).encode("utf-8-sig"))
@@ -108,7 +109,7 @@ class StripTaking(QObject):
         if target.suffix.lower() != ".svg":
             self._write(target, png_of(self.picture(kinds)))
             return
-        results = self._current()
+        results = self._drawn(kinds)
         svg = "" if results is None else self._svg(results, kinds)
         if svg:
             self._write(target, svg.encode())
@@ -163,6 +164,16 @@ class StripTaking(QObject):
             self.told.emit(tr("Nothing taken: the results are out of date"))
             return None
         return results
+
+    def _drawn(self, kinds: tuple[Kind, ...]) -> Results | None:
+        """The current results; none, and a word why, if only the mode shape is wanted and there is none."""
+        results = self._current()
+        if results is None or kinds != ("mode",):
+            return results
+        why = why_no_shape(results, self._sheet.shown_state)
+        if why:
+            self.told.emit(tr("Nothing to take: {why}").format(why=why))
+        return None if why else results
 
     def _ask(self, title: str, kinds: tuple[FileKind, ...], write: Callable[[Path], None]) -> None:
         filters = ";;".join(f"{kind.words} (*.{kind.ending})" for kind in kinds)
