@@ -19,7 +19,7 @@ LEAST_BREAK = 9.0  # px of the segment
 LONGEST_MARK = 10  # of a joint beside its level, in digits
 MARK_RANK = 2  # after all levels
 NUDGE = 4.0  # px that lengths and sections may stand off the middle upright, where segments are short
-OUTWARD = 8.0  # px upright, of the margin beyond sections
+OUTWARD = 10.0  # px upright, the margin beyond sections: an arrow is as wide
 LEVEL_GAP = 16.0  # room of the triangle before a level's text
 
 

@@ -21,6 +21,7 @@ INSET = 6.0  # px, from the edge of the drawing
 SHARES = (1.0, 0.5, 0.34, 0.25)  # of the words' length in one line, that lines may have
 STEP = 6.0  # px, between the places that are tried
 ASIDE = 24.0  # px, from another note, so that it does not read on
+GAP = 8.0  # px, from any other text beside
 WORTH = 100  # of the scale of colours, in labels
 SPACES = ("joint",)  # parts that are pointed at where nothing is drawn
 
@@ -98,8 +99,9 @@ def _taken(sketch: Sketch) -> FloatArray:
     """The boxes of all that is drawn, (n, 4): texts, parts, hatches, the scale of colours."""
     picture = sketch.picture
     notes = [text.box for text in picture.texts if text.part is not None and text.part.kind == "note"]
-    boxes = [Box(b.left - ASIDE, b.top, b.right + ASIDE, b.bottom) for b in notes]
-    boxes += [text.box for text in (*picture.texts, *picture.contact_texts)]
+    texts = [text.box for text in (*picture.texts, *picture.contact_texts)]
+    beside = [(box, ASIDE) for box in notes] + [(box, GAP) for box in texts]
+    boxes = [Box(b.left - gap, b.top, b.right + gap, b.bottom) for b, gap in beside]
     boxes += [target.box for target in picture.targets if target.part.kind not in SPACES]
     boxes += [_around(stroke) for stroke in picture.strokes if stroke.pairs]
     boxes += [picture.legend] * WORTH if picture.legend is not None else []

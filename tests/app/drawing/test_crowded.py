@@ -159,3 +159,14 @@ def test_while_a_segment_is_pulled_to_a_taper_its_section_stays_written(end):
     pulled = sketched(taper, frame, sketched(straight, frame))
     said = [t.text for t in pulled.picture.texts if t.part == Part("section", 1)]
     assert said == [f"⌀60\n→⌀{1000 * end:.0f}"]
+
+
+@BOTH_SIZES
+def test_the_word_for_labels_left_out_does_not_read_on_from_another_text(size):
+    project = read_sample("hoist_shaft")
+    results = solve(project)
+    for state in range(len(results.states)):
+        texts, _, _ = everything_on(project, results, state, size, upright=True)
+        for said in (t for t in texts if "without" in t.text):
+            wider = Box(said.box.left - 6.0, said.box.top, said.box.right + 6.0, said.box.bottom)
+            assert [t.text for t in texts if t is not said and t.box.meets(wider)] == []
