@@ -103,7 +103,7 @@ KINDS: Final[tuple[Kind, ...]] = (
         "lateral",
         later("Held sideways"),
         "joint",
-        "H",
+        "W",
         symbols.LATERAL,
         "lateral",
         ("fixed", "fixed"),

@@ -11,11 +11,13 @@ from PySide6.QtGui import QGuiApplication, QHelpEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QToolTip
 
+from app.gui.hand.keys import NEXT_HANDLE
 from app.gui.main import open_window
 from app.gui.settings import Settings
 from app.gui.strips import mode
 from app.gui.theme import greyed
-from app.gui.view import Cursor, Shown
+from app.gui.view import Cursor, Selection, Shown
+from app.hand import kinds
 from app.samples import read_sample
 from app.strip_choice import KINDS, USUAL, StripChoice
 from solver.model import Combination, FixedSupport, JointLoad, Lateral, Limits
@@ -193,3 +195,25 @@ def test_without_a_shape_there_is_nothing_to_take(qtbot, window, tmp_path):
     assert list(tmp_path.glob("none.*")) == []
     window.taking.write_numbers(tmp_path / "all.csv", KINDS)
     assert "w, shape only, Pulled" in (tmp_path / "all.csv").read_text(encoding="utf-8-sig")
+
+
+def test_lateral_supports_put_on_by_their_letters_make_the_shape(qtbot, window):
+    bare = column()
+    bare = structs.replace(bare, joints=tuple(structs.replace(j, lateral=UNSET) for j in bare.joints))
+    strip = open_column(qtbot, window, bare)
+    assert "no joint is held sideways" in texts(strip)
+    window.sheet.setFocus()
+    for letter in (Qt.Key.Key_W, Qt.Key.Key_N):
+        window.view.set_selection(Selection(joints=frozenset((0,))))
+        QTest.keyClick(window.sheet, letter)
+        if window.in_place.editor is not None:
+            QTest.keyClick(window.in_place.editor, Qt.Key.Key_Return)
+        window.sheet.setFocus()
+    assert window.document.project.joints[0].lateral == Lateral(translation="fixed", rotation="fixed")
+    solved(qtbot, window)
+    (trace,) = strip.content.traces
+    assert_allclose(trace.value, 1.0 - np.cos(0.25 * np.pi * trace.x), atol=1e-6)  # a cantilever's
+
+
+def test_no_letter_of_a_symbol_belongs_to_the_handles():
+    assert NEXT_HANDLE.value not in {ord(kind.letter) for kind in kinds.KINDS}

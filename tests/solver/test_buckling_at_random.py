@@ -37,7 +37,9 @@ class Drawn:
         self.ends[-1] = -2e4
         self.spread = -rng.uniform(0.0, 5e3, n)
         stiffness = 10.0 ** rng.uniform(4.0, 7.0, n + 1)
-        self.laterals = {i: Lateral(translation=float(k)) for i, k in enumerate(stiffness) if rng.random() < 0.5}
+        self.laterals = {
+            i: Lateral(translation=float(k)) for i, k in enumerate(stiffness) if rng.random() < 0.5
+        }
         self.laterals |= {0: Lateral(translation="fixed", rotation=float(10.0 ** rng.uniform(3.0, 6.0)))}
 
     def project(self):
