@@ -1,4 +1,4 @@
-"""Random members against plain cubic Hermite beams on a fine mesh, their forces from statics; stops as they are."""
+"""Random members against plain cubic beams on a fine mesh, forces from statics; stops; companions."""
 
 from __future__ import annotations
 
