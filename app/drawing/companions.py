@@ -31,7 +31,7 @@ CLOSE = 3.0  # between a body and its labels
 PART = 7.0  # of an end that can part from its joint, px
 LEAST_HALF = 2.0
 SHARE = 0.45  # of the room across that lanes may take
-MOST_ROWS = 2  # of labels of a lane
+MOST_ROWS = 3  # of labels of a lane
 
 
 @dataclass(frozen=True, slots=True)
@@ -122,7 +122,8 @@ def _wishes(sketch: Sketch, piece: Piece, span: Span) -> Iterator[Wish]:
     def wish(text: str, kind: PartKind, rank: int, share: float) -> Wish:
         made = sketch.wish(text, span[0] + share * length, Part(kind, piece.index), rank=rank, slide=slide)
         half = min(0.5 * made.extent, slide)  # inside its own segment, where it is not longer
-        return replace(made, along=min(max(made.along, span[0] + half), span[1] - half))
+        along = min(max(made.along, span[0] + half), span[1] - half)
+        return replace(made, along=along, slide=min(along - span[0], span[1] - along) - half)
 
     named = piece.of.number == 0
     if named:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from msgspec.structs import replace
+from msgspec.structs import astuple, replace
 
 from app import edits
 from app.drawing.companions import lanes_of, pieces_of
@@ -11,12 +11,14 @@ from app.drawing.layout import lay_out, sketched
 from app.drawing.member import Member
 from app.drawing.shapes import OF_COMPANION, Box, Part
 from app.drawing.tips import tip
+from app.samples import read_sample
 from app.shown import Shown
 from solver.model import Display, Project
 from tests.app.drawing.frames import SIZES, window_frame
 from tests.sleeves import draw_bolt
 
 PULLED = Shown("combination", "Pulled")
+WARM = Shown("combination", "Paying out, warm")
 BOTH_WAYS = pytest.mark.parametrize("upright", [False, True], ids=["across", "upright"])
 
 
@@ -141,3 +143,20 @@ def test_a_member_without_companions_has_no_lanes():
     member = Member.of(project, PULLED)
     picture = lay_out(member, window_frame(member, SIZES[0], upright=False))
     assert not any("companions" in text.text for text in picture.texts)
+
+
+@pytest.mark.parametrize("width", [560, 640, 760, 900, 1200])
+@BOTH_WAYS
+def test_a_label_stays_beside_its_own_segment_where_it_is_not_longer(upright, width):
+    sketch = laid(read_sample("capstan_shaft"), upright=upright, size=(width, 1400), shown=WARM)
+    labels = {"companion_name", "companion_load", "companion_section", "companion_length"}
+    along = (1, 3) if upright else (0, 2)
+    for text in sketch.picture.texts:
+        if text.part is None or text.part.kind not in labels:
+            continue
+        piece = pieces_of(sketch)[text.part.index]
+        low, high = (astuple(text.box)[i] for i in along)
+        start, end = sorted(piece.ends)
+        if high - low <= end - start:
+            assert start - 0.01 <= low
+            assert high <= end + 0.01
