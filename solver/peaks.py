@@ -25,6 +25,7 @@ class PeakChecker:
     project: Project
     position: FloatArray
     stress: Extremes
+    zero: FloatArray  # (m,) up to this a stress is none
     shoulders: tuple[Notch, ...]
 
     def checks(self, index: int, state: State) -> Iterator[Check]:
@@ -38,6 +39,7 @@ class PeakChecker:
             return self._not_made(notch, state, notch.reason or "no_allowable_peak")
         side = self.stress.start if notch.at_start else self.stress.end
         nominal = float(side[index, notch.segment])
+        nominal = 0.0 if abs(nominal) <= self.zero[index] else nominal
         value, limit = notch.factor * nominal, state.allowable_factor * allowable
         return Check(
             check="peak",

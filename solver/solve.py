@@ -116,7 +116,7 @@ def _results(
     _ask(cancelled)
     parts = part_results(project, chain.bonded, stress, stress_checks, limits)
     shoulders = notches(project)
-    peaks = PeakChecker(project, position, stress, shoulders)
+    peaks = PeakChecker(project, position, stress, zero, shoulders)
     rows = _rows((chain, loads, solution), position, row, zero)
     fatigue = FatigueChecker(project, states, *rows, shoulders)
     companions, others = (None, None) if row is None else companion_results(project, states, row, zero)

@@ -20,6 +20,7 @@ from solver.model import (
     Material,
     SegmentLoad,
     Shoulder,
+    SpringSupport,
 )
 from solver.shoulders import Step
 from solver.solve import solve
@@ -67,6 +68,17 @@ def test_the_peak_is_the_factor_times_the_stress_of_the_smaller_side():
     assert pushed.utilisation == pytest.approx(0.5 * KT * SIGMA / 200e6)
     assert (pulled.status, pushed.status) == ("pass", "pass")
     assert found(shaft(allowable_peak=100e6), "peak")[0].status == "fail"
+
+
+def test_a_nominal_stress_of_rounding_alone_is_none():
+    """Both bars of a free end carry nothing beside the one that is pulled."""
+    parts = [Part(0.1, round_bar(0.03)), Part(0.13, round_bar(0.045)), Part(0.36, round_bar(0.05))]
+    pull = case("Pull", on_joints=[JointLoad("2", force=77e3), JointLoad("3", force=-77e3)])
+    project = member(parts, {1: SpringSupport(stiffness=5e8)}, [pull], [Combination("Pulled", {"Pull": 1.0})])
+    joints = tuple(replace(j, shoulder=FILLET) if j.mark in "12" else j for j in project.joints)
+    materials = tuple(replace(m, allowable_peak=200e6) for m in project.materials)
+    peaks = found(replace(project, joints=joints, materials=materials), "peak")
+    assert [(c.nominal, c.value, c.utilisation) for c in peaks] == [(0.0, 0.0, 0.0)] * 2
 
 
 @pytest.mark.parametrize(
