@@ -83,7 +83,7 @@ def against(value: float, limit: float, quantity: Quantity, say: Readings) -> li
     else:
         digits = _MOST_DIGITS
     return [
-        say.read(value, quantity, digits=digits),
+        say.read(value, quantity, digits=digits, beside=limit),
         say.plain(limit, quantity, unit=True, digits=max(digits, PLAIN)),
     ]
 

@@ -7,6 +7,7 @@ import json
 from msgspec import structs
 
 from app import edits
+from app.samples import read_sample
 from app.sheet.content import sheet_content
 from app.sheet.short_names import with_short_names
 from app.sheet.title import Origin
@@ -47,6 +48,14 @@ def test_companions_are_listed_with_what_is_theirs():
 def test_a_reaction_of_rounding_alone_reads_nothing():
     joints = [b for b in content(draw_bolt())["blocks"] if b.get("title", "").startswith("Joints: disp")]
     assert joints[0]["rows"][0][3] == "0"
+
+
+def test_a_limited_reaction_and_a_peak_of_rounding_alone_read_nothing():
+    found = [b for b in content(read_sample("capstan_shaft"))["blocks"] if b["kind"] == "table"]
+    limits = next(b for b in found if b["title"] == "Limits" and b["columns"][0]["head"] == "Of")
+    assert limits["rows"][1][:5] == ["joint 1", "reaction", "Drawn tight", "90 mm", "0"]
+    peaks = next(b for b in found if b["title"].startswith("Shoulders: peak stress"))
+    assert [row[2] for row in peaks["rows"]] == ["0", "0"]
 
 
 def test_the_governing_check_of_a_sleeve_is_done_by_hand():
