@@ -214,17 +214,18 @@ class _Trials:
         )
 
 
-_MissingKey: TypeAlias = tuple[str, str, Subject, int | None]
+_MissingKey: TypeAlias = tuple[str, str, Subject, int | None, tuple[str, str] | None]
 _Missing = frozenset[_MissingKey]
 
 
 def _not_made(checks: Sequence[Check]) -> _Missing:
-    return frozenset(map(_key, (check for check in checks if check.status == "not_made")))
+    return frozenset(_key(check) for check in checks if check.utilisation is None)
 
 
 def _not_made_checks(checks: Sequence[Check], known: _Missing) -> Iterator[Check]:
-    return (check for check in checks if check.status == "not_made" and _key(check) not in known)
+    """Those that have no value, be they waived or not, and had one before."""
+    return (check for check in checks if check.utilisation is None and _key(check) not in known)
 
 
 def _key(check: Check) -> _MissingKey:
-    return check.check, check.combination, subject_of(check), check.part
+    return check.check, check.combination, subject_of(check), check.part, check.between

@@ -23,6 +23,7 @@ from app.phrases.cures import cure_sentence, cures_sentences, unsought_sentence
 from app.samples import read_sample
 from app.section_entry import parse_section
 from app.units import SYSTEM_NAMES, entry_text
+from solver.checks import Check
 from solver.errors import Cancelled, OutOfRange
 from solver.model import (
     DisplacementLimit,
@@ -329,3 +330,23 @@ def test_what_is_not_sought_is_said():
     assert unsought_sentence(8, 8, small=True) == ""
     assert unsought_sentence(9, 8, small=True) == "Cures are sought for the 8 worst only"
     assert unsought_sentence(1, 8, small=False) == "No cures are sought: the member has too many checks"
+
+
+SEEKING = import_module("app.cures.seek")
+
+
+class TestChecksThatAreLost:
+    """What a change keeps from being made is said, be it waived or not."""
+
+    def test_a_check_that_is_waived_from_then_on_counts(self):
+        made = Check("stability", "Working", "pass", value=5.0, limit=4.0, utilisation=0.8)
+        waived = Check("stability", "Working", "waived", reason="no_lateral")
+        assert list(SEEKING._not_made_checks([waived], SEEKING._not_made([made]))) == [waived]
+        assert list(SEEKING._not_made_checks([waived], SEEKING._not_made([waived]))) == []
+
+    def test_two_ranges_of_fatigue_with_one_end_are_told_apart(self):
+        first, other = (
+            Check("fatigue", "Full", "not_made", segment="A", between=(start, "Full"))
+            for start in ("Empty", "Cold")
+        )
+        assert list(SEEKING._not_made_checks([first, other], SEEKING._not_made([first]))) == [other]
