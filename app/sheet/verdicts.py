@@ -72,7 +72,10 @@ def check_row(check: Check, say: Readings) -> list[str]:
 
 
 def against(value: float, limit: float, quantity: Quantity, say: Readings) -> list[str]:
-    """Value and limit to so many digits that, read side by side, they say what the verdict says."""
+    """Value and limit to so many digits that, read side by side, they say what the verdict says.
+
+    A value that is nothing but rounding beside its limit reads 0, as in the tables of results.
+    """
     if quantity == "factor":
         factor, least = factor_texts(value, limit, "fail" if value * (1 + PASS_MARGIN) < limit else "pass")
         return [factor, f"≥ {least}"]

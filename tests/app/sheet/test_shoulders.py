@@ -5,6 +5,7 @@ from __future__ import annotations
 import pytest
 from msgspec.structs import replace
 
+from app.samples import read_sample
 from solver.model import Shoulder
 from solver.shoulders import Step
 from tests.app.sheet.test_sheet import content, formula_parts, in_units, read, sheet, value
@@ -104,6 +105,15 @@ def test_the_tables_of_results_name_each_place_with_its_verdict():
         ("1", "B", "0.33", "passes"),
         ("2", "C", "0.33", "passes"),
     ]
+
+
+def test_what_is_rounding_alone_reads_0_beside_its_limit():
+    blocks = content(read_sample("capstan_shaft"))["blocks"]
+    named = [block for block in blocks if block["kind"] == "table"]
+    peaks = next(b for b in named if b["title"].startswith("Shoulders: peak"))  # of Drawn tight, the first
+    assert [row[2:5] for row in peaks["rows"]] == [["0", "1.8965", "0"], ["0", "2.2", "0"]]
+    limits = next(b for b in named if b["title"] == "Limits" and b["rows"][0][2] == "Drawn tight")
+    assert [row[4] for row in limits["rows"] if row[1] == "reaction"] == ["0", "0"]
 
 
 def test_what_has_no_factor_is_named_as_not_checked():
