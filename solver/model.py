@@ -302,13 +302,14 @@ class Waiver(Record, frozen=True):
 class Limits(Record, frozen=True):
     """What the member must keep within beside the allowable stresses.
 
-    `stability_factor` is the least factor between the loads and the elastic critical load.
+    `stability_factor` is the least factor between the loads and the elastic critical load; below 1 a member
+    that buckles under its own loads would pass.
     """
 
     displacement: tuple[DisplacementLimit, ...] = field(default_factory=absent_list)
     relative: tuple[RelativeLimit, ...] = field(default_factory=absent_list)
     reaction: tuple[ReactionLimit, ...] = field(default_factory=absent_list)
-    stability_factor: Positive | UnsetType = UNSET
+    stability_factor: AtLeastOne | UnsetType = UNSET
     waived: tuple[Waiver, ...] = field(default_factory=absent_list)
 
 
