@@ -17,7 +17,6 @@ from app.words import tr
 from solver.checks import Check
 from solver.results import Results
 
-ROUNDING: Final = 1e-10  # of the limit: a peak stress below this is none
 MOST: Final = 60  # in one strip; a chain of thousands of shoulders would be all diamonds
 
 
@@ -50,7 +49,7 @@ def _peaks(results: Results, names: set[str]) -> Iterator[PointMark]:
         for sign in (1.0, -1.0):
             check = max(own, key=lambda c: sign * (c.value or 0.0))
             value = check.value or 0.0
-            if sign * value > ROUNDING * (check.limit or 0.0):
+            if sign * value > 0.0:
                 text = format_value(value, "stress", results.project.display.unit_system, 3)
                 yield _mark(check, value, tr("peak {value}").format(value=text))
 

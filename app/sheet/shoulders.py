@@ -72,7 +72,7 @@ def _peak_row(check: Check, say: Readings) -> list[str]:
     value, limit = against(check.value, check.limit, "stress", say)
     return [
         *place,
-        say.read(check.nominal or 0.0, "stress", beside=check.limit),
+        say.read(check.nominal or 0.0, "stress"),
         factor_text(check.factor or 1.0),
         value,
         limit,
