@@ -25,6 +25,7 @@ from solver.model import BondedPart, Lateral, LateralHold, Project, Segment, par
 from solver.second_moments import second_moment, stretches
 from solver.solution import Solution
 
+UNSTABLE = 1.0  # a critical factor below this: the loads themselves buckle the member
 StabilityStatus: TypeAlias = Literal["checked", "no_compression", "not_checked"]
 
 
@@ -79,7 +80,7 @@ class Assessor:
     def _assessed(self, buckled: Buckled | None) -> Stability:
         if buckled is None:
             return Stability("not_checked", reason="not_settled")
-        if isinstance(self.project.limits.stability_factor, UnsetType):
+        if isinstance(self.project.limits.stability_factor, UnsetType) and buckled.factor >= UNSTABLE:
             return Stability("not_checked", buckled.factor, buckled.mode, "no_stability_factor")
         return Stability("checked", buckled.factor, buckled.mode)
 
@@ -98,9 +99,10 @@ class Assessor:
 
     def _fails(self, stability: Stability) -> bool:
         required, factor = self.project.limits.stability_factor, stability.critical_factor
-        if factor is None or isinstance(required, UnsetType):
+        if factor is None:
             return False
-        return status_of(required / factor) == "fail"
+        least = UNSTABLE if isinstance(required, UnsetType) else required
+        return status_of(least / factor) == "fail"
 
 
 def compressed_states(forces: tuple[FloatArray, FloatArray], force_bound: FloatArray) -> BoolArray:

@@ -1,7 +1,8 @@
 """The check of stability of one state: the critical factor against the least that is required.
 
 The allowable factor of a combination has no part in it: it is about stresses. A check that could not be made
-is waived where the engineer gave a reason for doing without; a check that was made is never waived.
+is waived where the engineer gave a reason for doing without; a check that was made is never waived. A factor
+that is known and below 1 is no missing check, whatever was entered: such a member buckles under its own loads.
 """
 
 from __future__ import annotations
@@ -13,7 +14,7 @@ from msgspec import UnsetType
 from solver.arrays import FloatArray
 from solver.checks import Check, status_of
 from solver.model import Project
-from solver.stability import Stability
+from solver.stability import UNSTABLE, Stability
 
 
 def stability_checks(
@@ -23,7 +24,9 @@ def stability_checks(
     if stability is None or stability.status == "no_compression":
         return
     required, factor = project.limits.stability_factor, stability.critical_factor
-    if stability.reason is not None or factor is None or isinstance(required, UnsetType):
+    if isinstance(required, UnsetType) and factor is not None and factor < UNSTABLE:
+        required = UNSTABLE
+    elif stability.reason is not None or factor is None or isinstance(required, UnsetType):
         waiver = waiver_of(project)
         yield Check(
             check="stability",

@@ -79,9 +79,9 @@ def _edges(
 
 def bonded_text(parts: tuple[BondedPart, ...], system: UnitSystemName) -> str:
     """What is bonded, for labels and tooltips; empty where nothing is."""
-    return _bonded_text(parts, system, language()) if parts else ""
+    return tr("bonded: {parts}").format(parts=_label(parts, system, language())) if parts else ""
 
 
 @lru_cache(maxsize=1024)
-def _bonded_text(parts: tuple[BondedPart, ...], system: UnitSystemName, _language: str) -> str:
-    return tr("bonded: {parts}").format(parts=bonded_label(parts, system))
+def _label(parts: tuple[BondedPart, ...], system: UnitSystemName, _language: str) -> str:
+    return bonded_label(parts, system)

@@ -115,6 +115,17 @@ class TestWaiver:
         project = column({0: PINNED, 2: PINNED}, factor=1e6)
         assert solve(waived(project)).verdict == "fail"
 
+    @pytest.mark.parametrize(("critical", "status"), [(0.99, "fail"), (1.01, "waived")])
+    def test_it_covers_no_member_that_its_own_loads_buckle(self, critical, status):
+        """Also where no factor is required: the one that is known is below 1."""
+        euler = math.pi**2 * STEEL * math.pi * 0.04**4 / 64 / 2.0**2
+        at = case("Push", on_joints=[JointLoad("2", force=-euler / critical)])
+        project = waived(column({0: PINNED, 2: PINNED}, [at], factor=UNSET))
+        (check,) = stability_check(project)
+        assert check.status == status
+        assert_allclose(check.value, critical, rtol=1e-6)
+        assert (solve(project).verdict == "fail") == (status == "fail")
+
     def test_alone_it_is_no_check(self):
         bare = structs.replace(
             column({}),
