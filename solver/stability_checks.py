@@ -2,7 +2,7 @@
 
 The allowable factor of a combination has no part in it: it is about stresses. A check that could not be made
 is waived where the engineer gave a reason for doing without; a check that was made is never waived. A factor
-that is known and below 1 is no missing check, whatever was entered: such a member buckles under its own loads.
+that is known and below 1 is no missing check, whatever was entered: the loads themselves buckle the member.
 """
 
 from __future__ import annotations

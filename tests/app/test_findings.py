@@ -123,11 +123,11 @@ def test_a_waived_check_is_named_wherever_something_is_compressed() -> None:
 
 def test_a_waiver_does_not_hide_a_critical_factor_that_is_known() -> None:
     parts = [Part(1.0, round_bar(0.02), **ALLOWABLES)]
-    pushed = member(parts, {0: FixedSupport()}, [case("Push", on_joints=[JointLoad("1", force=-40e3)])])
+    pushed = member(parts, {0: FixedSupport()}, [case("Push", on_joints=[JointLoad("1", force=-10e3)])])
     pinned = tuple(structs.replace(j, lateral=Lateral(translation="fixed")) for j in pushed.joints)
-    factor = math.pi**3 * STEEL * 0.02**4 / 64 / 40e3
+    factor = math.pi**3 * STEEL * 0.02**4 / 64 / 10e3
     notes = found(waived(structs.replace(pushed, joints=pinned), "guided")).notes
-    assert notes[0] == f"Stability waived (Push with critical factor {factor:.3f}): guided"
+    assert notes[0] == f"Stability waived (Push with critical factor {factor:.3g}): guided"
 
 
 def test_bedding_is_said_to_have_no_slip_limit() -> None:
