@@ -9,10 +9,8 @@ from app import edits
 from app.cures import failing, seek
 from app.findings import comparison, findings, findings_in
 from app.findings.cells import cell_of_finding
-from app.gui.findings.content import blocks, rows
 from app.hand.cells import Cell
 from app.references import Reference
-from app.shown import Shown
 from app.terminal import report
 from solver.model import Combination, JointLoad, Lateral, LoadCase, Project
 from solver.solve import solve
@@ -77,16 +75,6 @@ def _unset() -> object:
     from msgspec import UNSET
 
     return UNSET
-
-
-def test_rows_and_blocks_of_the_panel_lead_to_the_companion():
-    found = findings(solve(overpulled()), UNITS)
-    (note,) = [row for row in rows(found) if row.kind == "companion"]
-    assert note.mark == "!"
-    assert note.companions == {0, 1}
-    assert note.leads_somewhere
-    (block,) = [b for b in blocks(found, Shown("combination", "Pulled")) if "companions" in b.title]
-    assert [(line.name, line.value[0]) for line in block.lines] == [("S", "−")]
 
 
 def test_the_terminal_prints_forces_and_what_is_left():
