@@ -34,12 +34,7 @@ Reason: TypeAlias = Literal[
     "shoulder_not_round",
     "shoulder_out_of_range",  # with `ratio`
     "shoulder_bonded",
-    "no_lateral",
-    "lateral_insufficient",
-    "no_second_moment",
-    "no_stability_factor",
-    "not_settled",
-    "companion_compressed",
+    StabilityReason,
 ]
 
 STRESSES: Final = ("tension", "compression")  # the checks of stress by segment

@@ -13,6 +13,7 @@ from dataclasses import dataclass
 
 import numpy as np
 from msgspec import UnsetType
+from msgspec.structs import replace
 
 from solver.arrays import FloatArray, IntArray
 from solver.checks import Check, Reason, status_of
@@ -141,15 +142,15 @@ def _share(row: Row, segment: int, x: float) -> float:
 
 
 def _check(swing: _Swing, place: _Place) -> Check:
-    line, names = place.line, _of(swing, place)
+    line, bare = place.line, _unmade(swing, place)
     if place.reason is not None or line is None:
-        reason = place.reason or "no_endurance"
-        return Check(status="not_made", reason=reason, ratio=place.ratio, **names)  # type: ignore[arg-type]
+        return replace(bare, reason=place.reason or "no_endurance", ratio=place.ratio)
     first, second = place.row.stresses(swing.states, place.part, place.fraction)
     amplitude = 0.5 * place.factor * abs(first - second)
     mean = 0.5 * place.factor * (first + second)
     utilisation = amplitude / line.amplitude + max(mean, 0.0) / line.ultimate
-    return Check(
+    return replace(
+        bare,
         status=status_of(utilisation),
         value=amplitude,
         limit=float(line.amplitude),
@@ -160,15 +161,10 @@ def _check(swing: _Swing, place: _Place) -> Check:
         amplitude=amplitude,
         mean=mean,
         ultimate=float(line.ultimate),
-        **names,  # type: ignore[arg-type]
     )
 
 
-def _of(swing: _Swing, place: _Place) -> dict[str, object]:
-    return {
-        "check": "fatigue",
-        "combination": swing.between[1],
-        "between": swing.between,
-        "position": place.x,
-        **place.names,
-    }
+def _unmade(swing: _Swing, place: _Place) -> Check:
+    """What the check is of, before anything is compared."""
+    bare = Check("fatigue", swing.between[1], "not_made", between=swing.between, position=place.x)
+    return replace(bare, **place.names)

@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import numpy as np
 from scipy.sparse import coo_matrix
-from scipy.sparse.linalg import splu
+from scipy.sparse.linalg import SuperLU, splu
 
 from solver.arrays import FloatArray, IntArray
 from solver.condense import Condensed
@@ -34,7 +34,7 @@ class SparseSystem:
         if self._free.size:
             self._factor = self._factored(ends, sprung, spring)
 
-    def _factored(self, ends: Condensed, sprung: IntArray, spring: FloatArray):  # type: ignore[no-untyped-def]
+    def _factored(self, ends: Condensed, sprung: IntArray, spring: FloatArray) -> SuperLU:
         start, end = self._unknown[self._net.start], self._unknown[self._net.end]
         quarter = ends.mean_mean / 4
         own, beside = quarter + ends.stretch_stretch, quarter - ends.stretch_stretch

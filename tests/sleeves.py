@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from msgspec.structs import replace
+
 from solver.model import (
     FORMAT,
     VERSION,
@@ -56,3 +58,10 @@ def draw_bolt(acts: CompanionAction = "compression") -> Project:
             Combination("Pulled", {"Nut": 1.0, "Pull": 1.0}),
         ),
     )
+
+
+def overpulled() -> Project:
+    """The bolt under a pull at which the sleeves separate."""
+    project = draw_bolt()
+    apart = Combination("Apart", {"Nut": 1.0, "Pull": 8.0})
+    return replace(project, combinations=(*project.combinations, apart))

@@ -7,7 +7,7 @@ structs: hundreds are made for every edit, and they are made faster than datacla
 from __future__ import annotations
 
 from dataclasses import dataclass, field
-from typing import Literal, TypeAlias
+from typing import Literal, TypeAlias, get_args
 
 from msgspec import Struct
 
@@ -15,7 +15,7 @@ HAIR = 1e-6  # px
 Point: TypeAlias = tuple[float, float]  # (x, y), y downward
 Face: TypeAlias = Literal["plain", "strong", "small", "small_strong", "mark"]
 Anchor: TypeAlias = Literal["start", "middle", "end"]
-PartKind: TypeAlias = Literal[
+SegmentPart: TypeAlias = Literal[
     "segment",
     "mark",
     "length",
@@ -26,49 +26,20 @@ PartKind: TypeAlias = Literal[
     "fit",
     "bedding",
     "bonded",
-    "joint",
-    "support",
-    "shoulder",
-    "lateral",
-    "turning",
-    "force",
-    "movement",
-    "gravity",
+]
+JointPart: TypeAlias = Literal["joint", "support", "shoulder", "lateral", "turning", "force", "movement"]
+CompanionPart: TypeAlias = Literal[  # of its segments, counted over all companions
     "companion",
     "companion_mark",
     "companion_length",
     "companion_section",
     "companion_load",
     "companion_name",
-    "note",
 ]
-OF_SEGMENT: frozenset[PartKind] = frozenset(
-    (
-        "segment",
-        "mark",
-        "length",
-        "section",
-        "distributed",
-        "distributed_end",
-        "warmth",
-        "fit",
-        "bedding",
-        "bonded",
-    )
-)
-OF_JOINT: frozenset[PartKind] = frozenset(
-    ("joint", "support", "shoulder", "lateral", "turning", "force", "movement")
-)
-OF_COMPANION: frozenset[PartKind] = frozenset(  # of its segments, counted over all companions
-    (
-        "companion",
-        "companion_mark",
-        "companion_length",
-        "companion_section",
-        "companion_load",
-        "companion_name",
-    )
-)
+PartKind: TypeAlias = Literal[SegmentPart, JointPart, CompanionPart, "gravity", "note"]
+OF_SEGMENT: frozenset[PartKind] = frozenset(get_args(SegmentPart))
+OF_JOINT: frozenset[PartKind] = frozenset(get_args(JointPart))
+OF_COMPANION: frozenset[PartKind] = frozenset(get_args(CompanionPart))
 LOADS: frozenset[PartKind] = frozenset(  # of the shown state
     ("distributed", "distributed_end", "warmth", "fit", "force", "movement", "gravity", "companion_load")
 )

@@ -9,6 +9,7 @@ part are repeated with it. Limits are not repeated. Marks are fresh.
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
+from functools import partial
 from itertools import chain
 from typing import TypeVar
 
@@ -69,8 +70,8 @@ def _with_companions(
     )
     copied: list[Marks] = []
     for marks, begins, ends in zip(joints, meets, meets[1:], strict=False):
-        moved = {**marks, near: begins, far: ends}
-        grown, of = with_companions_copied(grown, whole, lambda c, to=moved: _moved(c, to))  # type: ignore[misc]
+        moved = partial(_moved, marks={**marks, near: begins, far: ends})
+        grown, of = with_companions_copied(grown, whole, moved)
         copied.append(of)
     return grown, copied
 

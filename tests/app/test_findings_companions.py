@@ -12,18 +12,11 @@ from app.findings.cells import cell_of_finding
 from app.hand.cells import Cell
 from app.references import Reference
 from app.terminal import report
-from solver.model import Combination, JointLoad, Lateral, LoadCase, Project
+from solver.model import JointLoad, Lateral, LoadCase
 from solver.solve import solve
-from tests.sleeves import draw_bolt
+from tests.sleeves import draw_bolt, overpulled
 
 UNITS = "mm-N-MPa"
-
-
-def overpulled() -> Project:
-    """The bolt under a pull at which the sleeves separate."""
-    project = draw_bolt()
-    apart = Combination("Apart", {"Nut": 1.0, "Pull": 8.0})
-    return replace(project, combinations=(*project.combinations, apart))
 
 
 def test_the_least_clamp_force_is_told_with_its_combination():

@@ -2,23 +2,13 @@
 
 from __future__ import annotations
 
-from msgspec.structs import replace
-
 from app.findings import findings
 from app.gui.findings.content import blocks, rows
 from app.shown import Shown
-from solver.model import Combination, Project
 from solver.solve import solve
-from tests.sleeves import draw_bolt
+from tests.sleeves import overpulled
 
 UNITS = "mm-N-MPa"
-
-
-def overpulled() -> Project:
-    """The bolt under a pull at which the sleeves separate."""
-    project = draw_bolt()
-    apart = Combination("Apart", {"Nut": 1.0, "Pull": 8.0})
-    return replace(project, combinations=(*project.combinations, apart))
 
 
 def test_rows_and_blocks_of_the_panel_lead_to_the_companion():

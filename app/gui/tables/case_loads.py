@@ -15,12 +15,14 @@ from msgspec import UNSET
 
 from app import edits
 from app.entry import parse_entry
-from app.gui.tables.column import Change, Sight
+from app.gui.tables.column import Change, Column, Sight
 from app.gui.tables.loads import needed_case
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair, parts_of_pair
 from app.units import Quantity, entry_text, format_value
+from app.words import later
 from solver.model import LoadCase, Project, SegmentLoad, end_of
 
+Functions = dict[str, Any]  # a column's show, entry and put, by these names
 MarkOf = Callable[[Project, int], str]  # of the segment in a row, by its index
 
 
@@ -75,7 +77,7 @@ FORCE: Final = Ends("load_start", "load_end", "distributed")
 HEAT: Final = Ends("temperature_start", "temperature_end", "temperature")
 
 
-def end_of_load(ends: Ends, which: int, mark_of: MarkOf) -> dict[str, Any]:
+def _end_of_load(ends: Ends, which: int, mark_of: MarkOf) -> Functions:
     """A column's functions for the load at the start (0) or the end (1) of the segment."""
 
     def show(row: Loaded, sight: Sight) -> str:
@@ -106,7 +108,7 @@ def _put_ends(ends: Ends, project: Project, mark: str, text: str, sight: Sight) 
     return Change(edits.set_segment_load(begun, case, mark, ends.end, end))
 
 
-def heat_of(mark_of: MarkOf) -> dict[str, Any]:
+def _heat_of(mark_of: MarkOf) -> Functions:
     """A column's functions for the temperature rise, both ends in one cell."""
 
     def show(row: Loaded, sight: Sight) -> str:
@@ -123,3 +125,16 @@ def heat_of(mark_of: MarkOf) -> dict[str, Any]:
         return _put_ends(HEAT, project, mark_of(project, index), text, sight)
 
     return {"show": show, "entry": entry, "put": put}
+
+
+def load_columns(mark_of: MarkOf, of: Callable[[Functions], Functions] = dict) -> tuple[Column, ...]:
+    """The columns of the edited case's loads; `of` makes their functions fit the rows of a table."""
+    columns = (
+        ("load_start", later("Load at start"), _end_of_load(FORCE, 0, mark_of), FORCE),
+        ("load_end", later("Load at end"), _end_of_load(FORCE, 1, mark_of), FORCE),
+        ("heat", later("Temperature rise"), _heat_of(mark_of), HEAT),
+    )
+    return tuple(
+        Column(key, title, **of(functions), of_case=True, quantity=ends.quantity, optional=True)
+        for key, title, functions, ends in columns
+    )

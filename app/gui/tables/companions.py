@@ -8,7 +8,7 @@ from app.action_entry import action_text
 from app.beside import beside_at
 from app.gui.tables import companion_cells as cells
 from app.gui.tables import offers
-from app.gui.tables.case_loads import FORCE, end_of_load, heat_of
+from app.gui.tables.case_loads import load_columns
 from app.gui.tables.column import Adding, Column, Figures, Sight, Table
 from app.gui.tables.segment_figures import bar, between, utilisation, why_no_utilisation
 from app.section_entry import section_label, section_text
@@ -94,30 +94,7 @@ COLUMNS = (
         width=11,
         offers=offers.materials,
     ),
-    Column(
-        "load_start",
-        later("Load at start"),
-        **end_of_load(FORCE, 0, cells.mark_of),
-        of_case=True,
-        quantity="distributed",
-        optional=True,
-    ),
-    Column(
-        "load_end",
-        later("Load at end"),
-        **end_of_load(FORCE, 1, cells.mark_of),
-        of_case=True,
-        quantity="distributed",
-        optional=True,
-    ),
-    Column(
-        "heat",
-        later("Temperature rise"),
-        **heat_of(cells.mark_of),
-        of_case=True,
-        quantity="temperature",
-        optional=True,
-    ),
+    *load_columns(cells.mark_of),
     Column(
         "lack_of_fit",
         later("Lack of fit"),

@@ -15,7 +15,7 @@ from msgspec import UNSET
 from app import edits
 from app.bonded_entry import parse_bonded
 from app.entry import parse_entry
-from app.gui.tables.case_loads import Ends, end_of_load, heat_of, loads_by_mark, loads_on
+from app.gui.tables.case_loads import Functions, load_columns, loads_by_mark, loads_on
 from app.gui.tables.column import Change, Sight
 from app.gui.tables.materials import with_modulus
 from app.gui.tables.numbers import pair_entry, pair_text, parse_pair
@@ -230,15 +230,10 @@ def _mark_of(project: Project, index: int) -> str:
     return project.segments[index].mark
 
 
-def in_segment_rows(functions: dict[str, Any]) -> dict[str, Any]:
+def in_segment_rows(functions: Functions) -> Functions:
     """A column's functions for segments, with nothing in the row before the first."""
     show, entry = functions["show"], functions["entry"]
     return functions | {"show": in_segments(show, ""), "entry": in_segments(entry, None)}
 
 
-def one_end(ends: Ends, which: int) -> dict[str, Any]:
-    """A column's functions for the load at the start (0) or the end (1) of the segment."""
-    return in_segment_rows(end_of_load(ends, which, _mark_of))
-
-
-HEAT_CELLS = in_segment_rows(heat_of(_mark_of))
+LOAD_COLUMNS = load_columns(_mark_of, in_segment_rows)

@@ -9,18 +9,16 @@ from app import edits
 from app.bonded_entry import SEPARATOR, bonded_label, bonded_text
 from app.entry import parse_entry
 from app.gui.tables import offers
-from app.gui.tables.case_loads import FORCE
 from app.gui.tables.column import Adding, Change, Column, Sight, Table
 from app.gui.tables.numbers import pair_entry, pair_text
 from app.gui.tables.second_moments import put_second_moment, second_moment_entry, show_second_moment
 from app.gui.tables.segment_cells import (
-    HEAT_CELLS,
+    LOAD_COLUMNS,
     SegmentRow,
     bedding_entry,
     end_areas,
     entry_of_support,
     in_segments,
-    one_end,
     one_row,
     put_area,
     put_bedding,
@@ -127,30 +125,7 @@ COLUMNS = (
         filled=lambda project: any(segment.bonded for segment in project.segments),
         separator=SEPARATOR,
     ),
-    Column(
-        "load_start",
-        later("Load at start"),
-        **one_end(FORCE, 0),
-        of_case=True,
-        quantity="distributed",
-        optional=True,
-    ),
-    Column(
-        "load_end",
-        later("Load at end"),
-        **one_end(FORCE, 1),
-        of_case=True,
-        quantity="distributed",
-        optional=True,
-    ),
-    Column(
-        "heat",
-        later("Temperature rise"),
-        **HEAT_CELLS,
-        of_case=True,
-        quantity="temperature",
-        optional=True,
-    ),
+    *LOAD_COLUMNS,
     Column(
         "bedding",
         later("Bedding"),
